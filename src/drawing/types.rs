@@ -1,0 +1,116 @@
+//! What a drawing holds, in metres.
+
+use geo::Coord;
+
+use crate::geometry::Path;
+
+/// A drawing's model space: the entities on the layers that were asked for, in metres, world axes, blocks exploded.
+#[derive(Debug, Clone, Default)]
+pub struct Drawing {
+    /// `$ACADVER`, such as `AC1027`.
+    pub version: String,
+    /// Metres in one drawing unit.
+    pub unit_m: f64,
+    /// Where the unit came from.
+    pub unit_from: UnitFrom,
+    /// Every layer, in the table's order; layers that only entities name follow, in order of first use.
+    pub layers: Vec<Layer>,
+    /// Lines, polylines, arcs, circles, splines.
+    pub shapes: Vec<Shape>,
+    /// Texts, multi-line texts and attribute values.
+    pub texts: Vec<Text>,
+    /// Block inserts (also those that were exploded into shapes and texts).
+    pub inserts: Vec<Insert>,
+}
+
+/// Where a drawing's unit came from.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
+pub enum UnitFrom {
+    /// The job file names it.
+    Job,
+    /// `$INSUNITS` of the drawing.
+    Header,
+    /// Neither: millimetres are assumed, and that is said.
+    #[default]
+    Assumed,
+}
+
+/// A layer and how it stands in the drawing.
+#[derive(Debug, Clone, Default, PartialEq, Eq)]
+pub struct Layer {
+    /// Name as written in the layer table.
+    pub name: String,
+    /// Switched off (negative colour).
+    pub off: bool,
+    /// Frozen.
+    pub frozen: bool,
+    /// Model-space entities by DXF type name, sorted by name.
+    pub counts: Vec<(String, usize)>,
+}
+
+/// The entity that a shape came from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum ShapeKind {
+    /// LINE.
+    Line,
+    /// LWPOLYLINE or POLYLINE.
+    Polyline,
+    /// ARC.
+    Arc,
+    /// CIRCLE.
+    Circle,
+    /// SPLINE, as arcs that leave it by no more than 1 mm.
+    Spline,
+}
+
+/// A plan line.
+#[derive(Debug, Clone)]
+pub struct Shape {
+    /// Handle, upper-case hexadecimal without leading zeros; for a shape inside a block, the outermost insert's;
+    /// for a drawing without handles, `#` and the entity's number.
+    pub handle: String,
+    /// Layer (of the insert, where the block's entity lies on layer 0).
+    pub layer: String,
+    /// Entity type.
+    pub kind: ShapeKind,
+    /// The line, in metres.
+    pub path: Path,
+    /// Whether the entity is closed (the path's end is its start).
+    pub closed: bool,
+}
+
+/// A text.
+#[derive(Debug, Clone)]
+pub struct Text {
+    /// Handle as for [`Shape`].
+    pub handle: String,
+    /// Layer as for [`Shape`].
+    pub layer: String,
+    /// What a reader sees: codes decoded, lines separated by `\n`.
+    pub content: String,
+    /// The point that the drafter placed (insertion or alignment point), metres.
+    pub place: Coord<f64>,
+    /// Corners of the text's box in drawing order around it, metres; its width is estimated from the characters.
+    pub corners: [Coord<f64>; 4],
+    /// Height of capitals, metres.
+    pub height_m: f64,
+    /// Direction of the base line, radians from x.
+    pub rotation_rad: f64,
+}
+
+/// A block insert.
+#[derive(Debug, Clone)]
+pub struct Insert {
+    /// Handle as for [`Shape`].
+    pub handle: String,
+    /// Layer as for [`Shape`].
+    pub layer: String,
+    /// Block name.
+    pub block: String,
+    /// Insertion point, metres.
+    pub place: Coord<f64>,
+    /// Rotation, radians from x.
+    pub rotation_rad: f64,
+    /// Attribute tags and values, in order.
+    pub attributes: Vec<(String, String)>,
+}
