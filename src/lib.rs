@@ -24,4 +24,23 @@ pub mod geometry;
 pub mod numerics;
 pub mod units;
 
+pub mod job;
+
 pub mod drawing;
+
+pub mod floor;
+
+pub mod profile;
+
+pub mod losses;
+
+pub mod checks;
+
+pub mod analysis;
+
+pub mod annotate;
+pub mod report;
+
+pub mod cli;
+pub mod commands;
+pub mod terminal;

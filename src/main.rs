@@ -1,3 +1,5 @@
-//! The program.
+//! The program: argv to exit status, nothing else.
 
-fn main() {}
+fn main() -> std::process::ExitCode {
+    tautplan::cli::run(std::env::args_os())
+}

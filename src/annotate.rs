@@ -1,0 +1,1 @@
+//! Decides what to draw back onto the plan; knows nothing of DXF.

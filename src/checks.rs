@@ -1,0 +1,1 @@
+//! The rules: one rule, one documented name, grouped by what they look at.

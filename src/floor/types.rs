@@ -1,0 +1,130 @@
+//! A floor as read: tendons with what the drawing says of each, and the slab.
+
+use geo::{Coord, Polygon};
+
+use crate::geometry::Path;
+
+/// A floor.
+#[derive(Debug, Clone, Default)]
+pub struct Floor {
+    /// Tendons, in an order that does not depend on the order of the entities (by mark, naturally: B2 before B10).
+    pub tendons: Vec<Tendon>,
+    /// The slab.
+    pub slab: Slab,
+}
+
+/// One tendon line as drawn; what the drawing does not say is `None`, never assumed.
+#[derive(Debug, Clone)]
+pub struct Tendon {
+    /// Mark, from the drawing or from the tendon's place on the plan.
+    pub mark: String,
+    /// Whether the drawing gives the mark.
+    pub mark_drawn: bool,
+    /// Handle of the (first) piece.
+    pub handle: String,
+    /// Layer of the pieces.
+    pub layer: String,
+    /// Banded or distributed, by layer.
+    pub run: Run,
+    /// Plan line, from its first drawn vertex.
+    pub path: Path,
+    /// Tendons that the line stands for.
+    pub tendons: u32,
+    /// Strands in each of those tendons.
+    pub strands: Option<u32>,
+    /// Strand size as written, such as `12.7`.
+    pub strand: Option<String>,
+    /// The two ends: at station 0 and at the path's end.
+    pub ends: [End; 2],
+    /// Profile points in order of station: anchor first, anchor last.
+    pub points: Vec<Point>,
+}
+
+/// Which way a tendon serves the floor.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, serde::Serialize)]
+#[serde(rename_all = "lowercase")]
+pub enum Run {
+    /// Gathered along a column line.
+    Banded,
+    /// Spread over the floor.
+    Distributed,
+}
+
+/// An end of a tendon.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct End {
+    /// Live or dead; `None` where no symbol was found.
+    pub kind: Option<EndKind>,
+    /// Place on the plan, metres.
+    pub place: Coord<f64>,
+}
+
+/// What is at an end.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, serde::Serialize)]
+#[serde(rename_all = "lowercase")]
+pub enum EndKind {
+    /// Stressed from here.
+    Live,
+    /// Fixed.
+    Dead,
+}
+
+/// A point at which the drawing fixes the tendon's level, or should.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Point {
+    /// What the point is.
+    pub kind: PointKind,
+    /// Station along the plan line, metres.
+    pub station_m: f64,
+    /// Place on the plan line, metres.
+    pub place: Coord<f64>,
+    /// Strand centroid above the local soffit, metres; `None` where the drawing does not say.
+    pub height_m: Option<f64>,
+    /// Slab thickness here, metres; `None` where the drawing does not say.
+    pub thickness_m: Option<f64>,
+}
+
+impl Point {
+    /// Strand centroid above the top of the slab (negative below it), metres.
+    pub fn level_m(&self) -> Option<f64> {
+        Some(self.height_m? - self.thickness_m?)
+    }
+}
+
+/// Kinds of profile point.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, serde::Serialize)]
+#[serde(rename_all = "lowercase")]
+pub enum PointKind {
+    /// An end.
+    Anchor,
+    /// A high point.
+    High,
+    /// A low point.
+    Low,
+    /// A support height between a high and a low point: it checks the curve and does not bend it.
+    Support,
+}
+
+/// The slab on plan.
+#[derive(Debug, Clone, Default)]
+pub struct Slab {
+    /// Outlines (a floor may be drawn as several slabs).
+    pub outlines: Vec<Polygon<f64>>,
+    /// Openings.
+    pub openings: Vec<Polygon<f64>>,
+    /// Zones with a thickness of their own.
+    pub zones: Vec<Zone>,
+    /// Thickness outside every zone, metres, from the job or the drawing.
+    pub thickness_m: Option<f64>,
+    /// Columns and walls.
+    pub columns: Vec<Polygon<f64>>,
+}
+
+/// A zone of the slab.
+#[derive(Debug, Clone)]
+pub struct Zone {
+    /// Its outline.
+    pub outline: Polygon<f64>,
+    /// Its thickness, metres.
+    pub thickness_m: f64,
+}

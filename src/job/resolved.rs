@@ -1,0 +1,263 @@
+//! The job as every stage reads it: all values present, in internal units.
+
+use regex::Regex;
+
+use crate::units::LengthUnit;
+
+/// Everything a job decides.
+#[derive(Debug, Clone)]
+pub struct Job {
+    /// How the drawing is to be read.
+    pub conventions: Conventions,
+    /// The slab, where the drawing does not say.
+    pub slab: SlabJob,
+    /// Strand and duct.
+    pub system: System,
+    /// Jacking, friction, draw-in.
+    pub stressing: Stressing,
+    /// Shape between the marked heights.
+    pub profile: Profiling,
+    /// Elastic shortening and long-term loss.
+    pub long_term: LongTerm,
+    /// Limits of the rules.
+    pub limits: Limits,
+}
+
+/// How the drawing is to be read.
+#[derive(Debug, Clone)]
+pub struct Conventions {
+    /// Drawing unit; `None`: the drawing's own `$INSUNITS`.
+    pub unit: Option<LengthUnit>,
+    /// Layer patterns by what lies on them.
+    pub layers: Layers,
+    /// Names of the blocks that mark a live end (shell patterns, any case).
+    pub live_end_blocks: Vec<String>,
+    /// Names of the blocks that mark a dead end.
+    pub dead_end_blocks: Vec<String>,
+    /// Patterns of marks and strand counts; groups `mark`, `tendons`, `strands`, `strand`, each optional.
+    pub mark_patterns: Vec<Regex>,
+    /// Patterns of heights; groups `word` (see `high_words`, `low_words`; optional) and `value`.
+    pub height_patterns: Vec<Regex>,
+    /// Words for a high point.
+    pub high_words: Vec<String>,
+    /// Words for a low point.
+    pub low_words: Vec<String>,
+    /// Patterns of slab thickness; group `value`.
+    pub thickness_patterns: Vec<Regex>,
+    /// Unit of thickness texts.
+    pub thickness_unit: LengthUnit,
+    /// What a height number means.
+    pub height: HeightReading,
+    /// Reach of a label from its tendon, in text heights.
+    pub label_reach: f64,
+    /// How far an end symbol may lie from the end, metres.
+    pub end_reach_m: f64,
+    /// Gap that still counts as end to end, metres.
+    pub join_gap_m: f64,
+}
+
+/// Layer patterns (shell patterns, any letter case).
+#[derive(Debug, Clone)]
+pub struct Layers {
+    /// Banded tendons.
+    pub banded: Vec<String>,
+    /// Distributed tendons.
+    pub distributed: Vec<String>,
+    /// Height labels.
+    pub heights: Vec<String>,
+    /// Lines that give one height to every tendon they cross, and their labels.
+    pub level_lines: Vec<String>,
+    /// Marks and strand counts.
+    pub marks: Vec<String>,
+    /// End symbols.
+    pub ends: Vec<String>,
+    /// Slab edge.
+    pub slab_edge: Vec<String>,
+    /// Openings.
+    pub slab_opening: Vec<String>,
+    /// Thickness zones and thickness texts.
+    pub slab_zone: Vec<String>,
+    /// Columns and walls.
+    pub column: Vec<String>,
+}
+
+/// What a height number on the drawing means.
+#[derive(Debug, Clone)]
+pub struct HeightReading {
+    /// Unit of the number.
+    pub unit: LengthUnit,
+    /// What is measured to.
+    pub datum: Datum,
+    /// What is measured from.
+    pub from: FromFace,
+    /// Strand centroid above the duct's underside at a low point, metres (the strand rises to the duct's top).
+    pub strand_in_duct_low_m: f64,
+    /// Strand centroid above the duct's underside at a high point, metres.
+    pub strand_in_duct_high_m: f64,
+}
+
+/// What a height is measured to.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Datum {
+    /// The strands' centroid.
+    Centroid,
+    /// The duct's underside.
+    DuctUnderside,
+}
+
+/// The face a height is measured from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum FromFace {
+    /// The local soffit, upwards.
+    Soffit,
+    /// The top of the slab, downwards.
+    Top,
+}
+
+/// The slab, where the drawing does not say.
+#[derive(Debug, Clone)]
+pub struct SlabJob {
+    /// General thickness, metres; `None`: the drawing's own text.
+    pub thickness_m: Option<f64>,
+}
+
+/// A size of strand.
+#[derive(Debug, Clone)]
+pub struct StrandSize {
+    /// Name as written in marks, such as `12.7`.
+    pub name: String,
+    /// Steel area, mm².
+    pub area_mm2: f64,
+    /// Characteristic tensile strength, MPa.
+    pub strength_mpa: f64,
+}
+
+/// Strand and duct.
+#[derive(Debug, Clone)]
+pub struct System {
+    /// Known strand sizes.
+    pub strands: Vec<StrandSize>,
+    /// Size of a strand where a mark gives only a count; `None`: a finding.
+    pub default_strand: Option<String>,
+    /// Strand modulus, MPa.
+    pub strand_modulus_mpa: f64,
+    /// Yield (0.1 % proof or as the limit's standard says) as a fraction of strength.
+    pub yield_ratio: f64,
+    /// Overall height of a duct, metres.
+    pub duct_height_m: f64,
+}
+
+/// Jacking, friction, draw-in.
+#[derive(Debug, Clone)]
+pub struct Stressing {
+    /// Jacking stress over strength.
+    pub jacking_ratio: f64,
+    /// Friction coefficient, per radian.
+    pub mu_per_rad: f64,
+    /// Wobble in either form.
+    pub wobble: Wobble,
+    /// Wedge draw-in at each live end, metres.
+    pub draw_in_m: f64,
+}
+
+/// Unintended curvature: φ = μ (α + k s), or φ = μ α + K s.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Wobble {
+    /// k, radians per metre, multiplied by μ (EN 1992-1-1 5.10.5.2).
+    RadPerM(f64),
+    /// K, per metre, on its own (ACI, BS form).
+    PerM(f64),
+}
+
+/// Shape between the marked heights.
+#[derive(Debug, Clone)]
+pub struct Profiling {
+    /// Hogging length at a high point as a fraction of the span.
+    pub inflection: f64,
+    /// Fit the hogging length to support heights by least squares.
+    pub fit_inflection: bool,
+}
+
+/// Elastic shortening and long-term loss.
+#[derive(Debug, Clone)]
+pub struct LongTerm {
+    /// Which method.
+    pub method: LongTermMethod,
+    /// Concrete modulus at stressing, MPa.
+    pub concrete_modulus_transfer_mpa: f64,
+    /// Concrete modulus at 28 days, MPa.
+    pub concrete_modulus_mpa: f64,
+    /// Share of (Ep/Eci) σc lost by elastic shortening: 0.5 stressed in turn, 0 all at once (common practice).
+    pub shortening_share: f64,
+    /// Mean concrete stress, MPa; `None`: from the floor's own tendons and slab.
+    pub concrete_stress_mpa: Option<f64>,
+    /// Shrinkage strain after stressing.
+    pub shrinkage_strain: f64,
+    /// Creep coefficient.
+    pub creep_coefficient: f64,
+    /// Relaxation at 1000 hours, as a fraction of the stress after lock-off.
+    pub relaxation_1000h: f64,
+    /// Final relaxation over the 1000-hour value.
+    pub relaxation_factor: f64,
+}
+
+/// A long-term method.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum LongTermMethod {
+    /// The job gives strain and coefficients.
+    Direct,
+}
+
+/// Limits of the rules; each field's sentence says which.
+#[derive(Debug, Clone)]
+pub struct Limits {
+    /// Clear concrete between duct and either face, metres.
+    pub cover_m: f64,
+    /// Hogging radius below which is an error, metres.
+    pub hogging_radius_error_m: f64,
+    /// Hogging radius below which is a warning, metres.
+    pub hogging_radius_warning_m: f64,
+    /// Plan radius below which is a warning, metres.
+    pub plan_radius_m: f64,
+    /// Force at the far end over jacking force, below which is a warning.
+    pub far_end_ratio: f64,
+    /// Share of jacking force lost to angle alone, above which is a warning.
+    pub curvature_loss_ratio: f64,
+    /// Angle turned per metre, radians, above which is a warning.
+    pub angle_per_m_rad: f64,
+    /// Jacking stress over strength, above which is an error.
+    pub jacking_stress_ratio: f64,
+    /// Jacking stress over yield, above which is an error.
+    pub jacking_yield_ratio: f64,
+    /// Stress at the anchor after lock-off over strength, above which is an error.
+    pub anchor_stress_ratio: f64,
+    /// Length of a tendon stressed from one end, metres, above which is a warning.
+    pub one_end_length_m: f64,
+    /// Clear distance between a tendon and an opening, metres, below which is a warning.
+    pub opening_clearance_m: f64,
+    /// How far a tendon may stand outside the slab edge, metres.
+    pub edge_tolerance_m: f64,
+}
+
+impl Job {
+    /// Patterns of all layers that the job names.
+    pub fn layer_patterns(&self) -> Vec<String> {
+        let layers = &self.conventions.layers;
+        [
+            &layers.banded,
+            &layers.distributed,
+            &layers.heights,
+            &layers.level_lines,
+            &layers.marks,
+            &layers.ends,
+            &layers.slab_edge,
+            &layers.slab_opening,
+            &layers.slab_zone,
+            &layers.column,
+        ]
+        .into_iter()
+        .flatten()
+        .cloned()
+        .collect()
+    }
+}

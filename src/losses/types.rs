@@ -1,0 +1,91 @@
+//! Steel in, forces out.
+
+use crate::floor::EndKind;
+
+/// The strands of one tendon.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Steel {
+    /// Steel area of all strands of one tendon, mm².
+    pub area_mm2: f64,
+    /// Characteristic strength, MPa.
+    pub strength_mpa: f64,
+    /// Modulus, MPa.
+    pub modulus_mpa: f64,
+}
+
+/// The four stages, in order.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub enum Stage {
+    /// The jacks hold.
+    Jacking,
+    /// The wedges have drawn in.
+    LockOff,
+    /// The concrete has shortened elastically.
+    Transfer,
+    /// Shrinkage, creep and relaxation are over: the effective force.
+    Service,
+}
+
+/// Why a tendon has no forces although its curve is known.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
+pub enum CannotStress {
+    /// No end is live.
+    #[error("neither end is live")]
+    NoLiveEnd,
+    /// The draw-in is longer than the strand's whole extension.
+    #[error("the draw-in takes up the whole extension and leaves no force")]
+    DrawInTakesAll,
+}
+
+/// Forces of one tendon, each list along the points of the tendon that was given.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Forces {
+    /// The steel.
+    pub steel: Steel,
+    /// Jacking force, kN.
+    pub jack_kn: f64,
+    /// The two ends, at station 0 and at the path's end.
+    pub ends: [EndForces; 2],
+    /// Losses by cause.
+    pub totals: LossTotals,
+    /// Mean of the service force along the tendon, kN.
+    pub mean_service_kn: f64,
+    /// Least jacking-stage force, kN (the far end of a tendon stressed from one end).
+    pub least_jacking_kn: f64,
+    /// Station of the least jacking-stage force, metres of plan line.
+    pub least_jacking_station_m: f64,
+}
+
+/// Forces at an end.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct EndForces {
+    /// Live or dead.
+    pub kind: EndKind,
+    /// Extension at jacking, before draw-in, mm; live ends only.
+    pub extension_mm: Option<f64>,
+    /// Extension after draw-in, mm; live ends only.
+    pub extension_net_mm: Option<f64>,
+    /// Length of tendon over which draw-in is felt, metres; live ends only.
+    pub draw_in_reach_m: Option<f64>,
+    /// Whether the draw-in is felt as far as the other end, or as the other end's draw-in.
+    pub draw_in_reaches_far: bool,
+}
+
+/// Losses by cause; forces per tendon.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct LossTotals {
+    /// Jacking force lost to angle alone, down to the point of least force: P0 (1 − exp(−μ α)), kN.
+    pub friction_curvature_kn: f64,
+    /// The rest of the friction loss down to the same point: wobble, kN.
+    pub friction_wobble_kn: f64,
+    /// Drop at the (first) live anchor by draw-in, kN.
+    pub draw_in_kn: f64,
+    /// Elastic shortening, MPa.
+    pub shortening_mpa: f64,
+    /// Shrinkage, MPa.
+    pub shrinkage_mpa: f64,
+    /// Creep, MPa.
+    pub creep_mpa: f64,
+    /// Relaxation, mean along the tendon, MPa.
+    pub relaxation_mpa: f64,
+}

@@ -1,0 +1,1 @@
+//! Results as bytes, one format per file; computes nothing and opens no file.

@@ -1,0 +1,1 @@
+//! Colour decided once, messages, escaping of text that came from a drawing.
