@@ -9,6 +9,8 @@ use crate::floor::Floor;
 use crate::geometry::{distance_m, step, turn_rad};
 
 pub(super) use boxes::{Boxes, Quad};
+#[cfg(test)]
+pub(super) use extent::corners;
 pub(super) use extent::{Block, Extent};
 
 /// Clear distance between two texts, in text heights.
@@ -165,7 +167,10 @@ mod tests {
         for degree in -720..=720 {
             let heading = f64::from(degree).to_radians();
             let read = readable_rad(heading);
-            assert!(read > -FRAC_PI_2 + 1e-4 && read < FRAC_PI_2 + 2e-3, "{degree}");
+            assert!(
+                read > -FRAC_PI_2 + 1e-4 && read < FRAC_PI_2 + 2e-3,
+                "{degree}"
+            );
             assert!((heading - read).sin().abs() < 1e-9, "{degree}");
         }
         assert!((readable_rad(-FRAC_PI_2) - FRAC_PI_2).abs() < 1e-12);
