@@ -25,7 +25,7 @@ pub(crate) fn profile(slab: &Slab, run: Run, path: &Path, supports: &[f64], drap
     let [start, end] = [0.0, length_mm].map(|station| axis.along(path.at(station).0));
     let crossed = supports.iter().copied().filter(|at| start + 300.0 < *at && *at < end - 300.0).collect::<Vec<_>>();
     let mut places = vec![(Kind::Anchor, 0.0)];
-    let mut low = |places: &mut Vec<(Kind, f64)>, [from, to]: [f64; 2], share: f64| {
+    let low = |places: &mut Vec<(Kind, f64)>, [from, to]: [f64; 2], share: f64| {
         if to - from > LEAST_SPAN_MM {
             places.push((Kind::Low, path.station_at(axis, from + share * (to - from))));
         }

@@ -10,6 +10,7 @@ mod dice;
 mod dxf;
 mod path;
 mod plan;
+mod real;
 mod slab;
 mod small;
 mod tendon;
@@ -60,7 +61,7 @@ fn main() -> ExitCode {
 fn demos() -> io::Result<()> {
     let top = PathBuf::from(env!("CARGO_MANIFEST_DIR"));
     let (drawings, truths) = (top.join("demo-drawings"), top.join("tests/data/demos"));
-    for floor in [small::floor()] {
+    for floor in [small::floor(), real::floor()] {
         let floor = floor.finish();
         let file = format!("{}.dxf", floor.name);
         write(&drawings.join(&file), &floor.drawing.to_dxf())?;

@@ -1,4 +1,4 @@
-//! The first drawing to read: two spans one way, one the other, a dozen tendons, every height labelled.
+//! The first drawing to read: two spans one way, one the other, fourteen tendons, every height labelled.
 
 use crate::Floor;
 use crate::background::{Title, dimensions, gridlines, title_strip};
@@ -8,10 +8,10 @@ use crate::plan;
 use crate::slab::Slab;
 use crate::tendon::{DrawnAs, End, Run};
 
-/// `small-floor`: 19 m by 10 m, 250 mm thick.
+/// `small-floor`: 14 m by 10 m, 250 mm thick.
 pub(crate) fn floor() -> Floor {
-    let [wide, high] = [19_000.0, 10_000.0];
-    let grid = [vec![1500.0, 9500.0, 17_500.0], vec![1500.0, 8500.0]];
+    let [wide, high] = [14_000.0, 10_000.0];
+    let grid = [vec![1500.0, 7000.0, 12_500.0], vec![1500.0, 8500.0]];
     let columns = grid[0].iter().flat_map(|x| grid[1].iter().map(|y| [*x, *y])).collect();
     let slab = Slab {
         edge: plan::rectangle([[0.0, 0.0], [wide, high]]),
@@ -31,7 +31,8 @@ pub(crate) fn floor() -> Floor {
         band.lettering.far_side = y_mm > 1500.0 && y_mm != 8350.0;
         tendons.push(band);
     }
-    for (index, x_mm) in [700.0, 2900.0, 5100.0, 7300.0, 11_700.0, 13_900.0, 16_100.0, 18_300.0].into_iter().enumerate() {
+    for index in 0..10_u8 {
+        let x_mm = (600.0 + 12_800.0 / 9.0 * f64::from(index)).round();
         let path = Path::straight([x_mm, 0.0], [x_mm, high]);
         let drape = Drape { below_top_mm: 45.0, low_mm: 45.0 };
         let ends = if index % 2 == 0 { [End::Live, End::Dead] } else { [End::Dead, End::Live] };
@@ -44,7 +45,7 @@ pub(crate) fn floor() -> Floor {
     }
     bays::number(&mut tendons);
     let mut drawing = plan::start(&slab);
-    plan::draw_slab(&mut drawing, &slab, [9700.0, 4000.0]);
+    plan::draw_slab(&mut drawing, &slab, [7150.0, 3600.0]);
     gridlines(&mut drawing, &slab);
     dimensions(&mut drawing, &slab);
     let title = Title {

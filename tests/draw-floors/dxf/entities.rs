@@ -118,7 +118,7 @@ impl Measure {
 
 /// Writes one entity into the block (or space) named.
 pub(super) fn write(tags: &mut Tags, entity: &Entity, owner: &str) {
-    let mut head = |tags: &mut Tags, kind: &str, class: &str| {
+    let head = |tags: &mut Tags, kind: &str, class: &str| {
         let [record, _, _] = tags.block_handles(owner);
         tags.put(0, kind);
         let handle = tags.fresh();
@@ -203,7 +203,7 @@ fn heavy_polyline(
     entity: &Entity,
     owner: &str,
     corners: &[(Xy, f64)],
-    mut head: impl FnMut(&mut Tags, &str, &str) -> u64,
+    head: impl Fn(&mut Tags, &str, &str) -> u64,
 ) {
     let [record, _, _] = tags.block_handles(owner);
     let whole = head(tags, "POLYLINE", "AcDb2dPolyline");
