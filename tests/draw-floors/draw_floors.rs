@@ -8,9 +8,12 @@ mod background;
 mod bays;
 mod dice;
 mod dxf;
+mod faulty;
+mod growth;
 mod path;
 mod plan;
 mod real;
+mod reference;
 mod slab;
 mod small;
 mod tendon;
@@ -46,6 +49,11 @@ fn main() -> ExitCode {
     let words = words.iter().map(String::as_str).collect::<Vec<_>>();
     let done = match words.as_slice() {
         ["demos"] => demos(),
+        ["reference", path] => anywhere(path, reference::floor()),
+        ["tendons", count, path] => match count.parse::<u32>() {
+            Ok(count @ 1..=100_000) => anywhere(path, growth::floor(count)),
+            _ => Err(io::Error::other(format!("'{count}' is no number of tendons from 1 to 100000; {USAGE}"))),
+        },
         _ => Err(io::Error::other(USAGE)),
     };
     match done {
@@ -61,14 +69,26 @@ fn main() -> ExitCode {
 fn demos() -> io::Result<()> {
     let top = PathBuf::from(env!("CARGO_MANIFEST_DIR"));
     let (drawings, truths) = (top.join("demo-drawings"), top.join("tests/data/demos"));
-    for floor in [small::floor(), real::floor()] {
-        let floor = floor.finish();
-        let file = format!("{}.dxf", floor.name);
-        write(&drawings.join(&file), &floor.drawing.to_dxf())?;
-        let json = truth::to_json(&file, &floor.slab, &floor.tendons);
-        write(&truths.join(format!("{}-truth.json", floor.name)), &json)?;
+    let (faulty, faults) = faulty::floor();
+    for floor in [small::floor(), real::floor(), faulty] {
+        let truth = truths.join(format!("{}-truth.json", floor.name));
+        save(&drawings.join(format!("{}.dxf", floor.name)), &truth, floor)?;
     }
-    Ok(())
+    write(&drawings.join("faulty-floor-faults.csv"), &faulty::to_csv(&faults))
+}
+
+fn anywhere(path: &str, floor: Floor) -> io::Result<()> {
+    let path = FilePath::new(path);
+    let stem = path.file_stem().unwrap_or_default().to_string_lossy();
+    save(path, &path.with_file_name(format!("{stem}-truth.json")), floor)
+}
+
+/// The drawing, and what was drawn in it.
+fn save(drawing: &FilePath, truth: &FilePath, floor: Floor) -> io::Result<()> {
+    let floor = floor.finish();
+    let file = drawing.file_name().unwrap_or_default().to_string_lossy();
+    write(drawing, &floor.drawing.to_dxf())?;
+    write(truth, &truth::to_json(&file, &floor.slab, &floor.tendons))
 }
 
 fn write(path: &FilePath, text: &str) -> io::Result<()> {

@@ -11,6 +11,7 @@ use crate::tendon::{DrawnAs, End, Kind, Run, Shown, Tendon};
 
 const WIDE_MM: f64 = 50_000.0;
 const HIGH_MM: f64 = 34_000.0;
+const GRID_X: [f64; 7] = [1600.0, 9400.0, 17_800.0, 25_600.0, 33_400.0, 40_600.0, 48_400.0];
 /// Distributed tendons pass over the banded ones, so that the ducts never meet.
 const DISTRIBUTED: Drape = Drape { below_top_mm: 45.0, low_mm: 45.0 };
 const BANDED: Drape = Drape { below_top_mm: 90.0, low_mm: 45.0 };
@@ -19,6 +20,8 @@ const LABELLED_BEYOND: usize = 3;
 /// The bay, counted from 0, whose middle opening two tendons sweep around, and the one with the small riser.
 const OPENING_BAY: usize = 2;
 const RISER_BAY: usize = 0;
+/// The line of columns, counted from 0, whose band comes in two lengths.
+const LAPPED_LINE: usize = 3;
 
 /// `harbour-level-2`: 50 m by 34 m.
 pub(crate) fn floor() -> Floor {
@@ -34,7 +37,7 @@ pub(crate) fn floor() -> Floor {
 
 fn slab() -> Slab {
     let grid = [
-        vec![1600.0, 9400.0, 17_800.0, 25_600.0, 33_400.0, 40_600.0, 48_400.0],
+        GRID_X.to_vec(),
         vec![1600.0, 8800.0, 17_200.0, 25_200.0, 32_400.0],
     ];
     let columns = grid[0].iter().flat_map(|x| grid[1].iter().map(|y| [*x, *y])).collect();
@@ -89,11 +92,15 @@ fn banded(slab: &Slab) -> Vec<Tendon> {
         tendons.push(band);
     };
     for (line, y_mm) in y.iter().enumerate() {
-        for offset in [-450.0, -150.0, 150.0, 450.0] {
-            if line == 3 {
-                add(y_mm + offset - 75.0, [0.0, x[3] + 2000.0], [End::Live, End::Dead], BANDED);
-                add(y_mm + offset + 75.0, [x[3] - 2000.0, WIDE_MM], [End::Dead, End::Live], BANDED);
-            } else {
+        if line == LAPPED_LINE {
+            // Two lengths that lap, none of them on the column line itself, where the distributed heights stand.
+            let lapped = Drape { below_top_mm: 100.0, ..BANDED };
+            for offset in [-600.0, -300.0, 150.0, 450.0] {
+                add(y_mm + offset, [0.0, x[3] + 2000.0], [End::Live, End::Dead], lapped);
+                add(y_mm - offset, [x[3] - 2000.0, WIDE_MM], [End::Dead, End::Live], lapped);
+            }
+        } else {
+            for offset in [-450.0, -150.0, 150.0, 450.0] {
                 add(y_mm + offset, [0.0, WIDE_MM], [End::Live, End::Live], BANDED);
             }
         }
@@ -203,14 +210,7 @@ fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
             short if tendon.ends[0] == End::Live => short - 4900.0,
             _ => 3000.0,
         };
-        tendon.lettering.along = dice.once_in(3);
-        tendon.lettering.word = dice.once_in(5);
-        // Tendons close beside a column are lettered on the side away from it.
-        let nearest = COLUMN_LINES.iter().copied().find(|x_mm| (x_mm - across).abs() < 300.0);
-        tendon.lettering.far_side = nearest.map_or_else(|| !dice.once_in(4), |x_mm| across > x_mm);
-        if nearest.is_some() {
-            tendon.lettering.along = false;
-        }
+        letter(&mut tendon, across, dice);
     }
     if dice.once_in(7) {
         // Said although it is what mid-depth gives anyhow.
@@ -228,7 +228,18 @@ fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
     if dice.once_in(3) { tendon.reversed() } else { tendon }
 }
 
-const COLUMN_LINES: [f64; 7] = [1600.0, 9400.0, 17_800.0, 25_600.0, 33_400.0, 40_600.0, 48_400.0];
+/// Chooses sides so that no two labels share one gap: away from columns, and never towards a shorter tendon's label.
+fn letter(tendon: &mut Tendon, across_mm: f64, dice: &mut Dice) {
+    let spacing = GRID_X.windows(2).find(|bay| across_mm < bay[1]).map_or(6.0, |bay| {
+        let [left, right] = [bay[0] + 200.0, bay[1] - 200.0];
+        (across_mm - left) / (right - left) * 6.0
+    });
+    let short = (spacing - spacing.round()).abs() > 0.2;
+    let odd = [1.0, 3.0, 5.0].iter().any(|odd| (spacing - odd).abs() < 0.2);
+    tendon.lettering.far_side = spacing < 5.8 && !(odd && dice.once_in(2));
+    tendon.lettering.along = short || (odd && dice.once_in(3));
+    tendon.lettering.word = dice.once_in(5);
+}
 
 fn background(slab: &Slab, dice: &mut Dice) -> crate::dxf::Drawing {
     let mut drawing = plan::start(slab);
