@@ -19,11 +19,21 @@ const END_SPAN_LOW: f64 = 0.43;
 const LEAST_SPAN_MM: f64 = 3000.0;
 
 /// Anchors, highs over the supports that the path crosses, lows between. The path goes forward along its run's axis.
-pub(crate) fn profile(slab: &Slab, run: Run, path: &Path, supports: &[f64], drape: Drape) -> Vec<Point> {
+pub(crate) fn profile(
+    slab: &Slab,
+    run: Run,
+    path: &Path,
+    supports: &[f64],
+    drape: Drape,
+) -> Vec<Point> {
     let axis = run.axis();
     let length_mm = path.length_mm();
     let [start, end] = [0.0, length_mm].map(|station| axis.along(path.at(station).0));
-    let crossed = supports.iter().copied().filter(|at| start + 300.0 < *at && *at < end - 300.0).collect::<Vec<_>>();
+    let crossed = supports
+        .iter()
+        .copied()
+        .filter(|at| start + 300.0 < *at && *at < end - 300.0)
+        .collect::<Vec<_>>();
     let mut places = vec![(Kind::Anchor, 0.0)];
     let low = |places: &mut Vec<(Kind, f64)>, [from, to]: [f64; 2], share: f64| {
         if to - from > LEAST_SPAN_MM {
@@ -38,7 +48,15 @@ pub(crate) fn profile(slab: &Slab, run: Run, path: &Path, supports: &[f64], drap
         places.push((Kind::High, path.station_at(axis, *support)));
     }
     let last = crossed.last().copied().unwrap_or(start);
-    low(&mut places, [last, end], if crossed.is_empty() { 0.5 } else { 1.0 - END_SPAN_LOW });
+    low(
+        &mut places,
+        [last, end],
+        if crossed.is_empty() {
+            0.5
+        } else {
+            1.0 - END_SPAN_LOW
+        },
+    );
     places.push((Kind::Anchor, length_mm));
     let point = |(kind, station_mm): (Kind, f64)| {
         let thickness_mm = slab.thickness_at(path.at(station_mm).0);
@@ -47,7 +65,12 @@ pub(crate) fn profile(slab: &Slab, run: Run, path: &Path, supports: &[f64], drap
             Kind::Low => (drape.low_mm, Shown::Label),
             Kind::Anchor | Kind::Support => (thickness_mm / 2.0, Shown::Nothing),
         };
-        Point { kind, station_mm, height_mm, shown }
+        Point {
+            kind,
+            station_mm,
+            height_mm,
+            shown,
+        }
     };
     places.into_iter().map(point).collect()
 }
@@ -87,9 +110,20 @@ pub(crate) fn with_supports(mut tendon: Tendon, spacing_mm: f64) -> Tendon {
     let mut points: Vec<Point> = Vec::new();
     for (index, point) in tendon.points.iter().enumerate() {
         if let Some(before) = points.last().cloned() {
-            let (high, low) = if before.kind == Kind::High { (&before, point) } else { (point, &before) };
-            let span_from = tendon.points[..index].iter().rev().find(turning).map_or(0.0, |end| end.station_mm);
-            let span_to = tendon.points[index..].iter().find(turning).map_or(0.0, |end| end.station_mm);
+            let (high, low) = if before.kind == Kind::High {
+                (&before, point)
+            } else {
+                (point, &before)
+            };
+            let span_from = tendon.points[..index]
+                .iter()
+                .rev()
+                .find(turning)
+                .map_or(0.0, |end| end.station_mm);
+            let span_to = tendon.points[index..]
+                .iter()
+                .find(turning)
+                .map_or(0.0, |end| end.station_mm);
             let length = point.station_mm - before.station_mm;
             if high.kind == Kind::High && low.kind == Kind::Low && length > 2.0 * spacing_mm {
                 let hogging = (0.1 * (span_to - span_from)).min(length);
@@ -103,7 +137,12 @@ pub(crate) fn with_supports(mut tendon: Tendon, spacing_mm: f64) -> Tendon {
                         let rest = length - from_high;
                         low.height_mm + drop * rest * rest / (length * (length - hogging))
                     };
-                    points.push(Point { kind: Kind::Support, station_mm, height_mm: height_mm.round(), shown: Shown::Bare });
+                    points.push(Point {
+                        kind: Kind::Support,
+                        station_mm,
+                        height_mm: height_mm.round(),
+                        shown: Shown::Bare,
+                    });
                     station_mm += spacing_mm;
                 }
             }

@@ -1,4 +1,4 @@
-//! A stream of repeatable chances (SplitMix64, published by Steele, Lea and Flood, OOPSLA 2014).
+//! A stream of repeatable chances (`SplitMix64`, published by Steele, Lea and Flood, OOPSLA 2014).
 
 /// Same seed, same stream, on every machine.
 pub(crate) struct Dice(pub(crate) u64);

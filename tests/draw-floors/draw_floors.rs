@@ -52,7 +52,9 @@ fn main() -> ExitCode {
         ["reference", path] => anywhere(path, reference::floor()),
         ["tendons", count, path] => match count.parse::<u32>() {
             Ok(count @ 1..=100_000) => anywhere(path, growth::floor(count)),
-            _ => Err(io::Error::other(format!("'{count}' is no number of tendons from 1 to 100000; {USAGE}"))),
+            _ => Err(io::Error::other(format!(
+                "'{count}' is no number of tendons from 1 to 100000; {USAGE}"
+            ))),
         },
         _ => Err(io::Error::other(USAGE)),
     };
@@ -74,13 +76,20 @@ fn demos() -> io::Result<()> {
         let truth = truths.join(format!("{}-truth.json", floor.name));
         save(&drawings.join(format!("{}.dxf", floor.name)), &truth, floor)?;
     }
-    write(&drawings.join("faulty-floor-faults.csv"), &faulty::to_csv(&faults))
+    write(
+        &drawings.join("faulty-floor-faults.csv"),
+        &faulty::to_csv(&faults),
+    )
 }
 
 fn anywhere(path: &str, floor: Floor) -> io::Result<()> {
     let path = FilePath::new(path);
     let stem = path.file_stem().unwrap_or_default().to_string_lossy();
-    save(path, &path.with_file_name(format!("{stem}-truth.json")), floor)
+    save(
+        path,
+        &path.with_file_name(format!("{stem}-truth.json")),
+        floor,
+    )
 }
 
 /// The drawing, and what was drawn in it.
@@ -95,5 +104,6 @@ fn write(path: &FilePath, text: &str) -> io::Result<()> {
     if let Some(folder) = path.parent() {
         std::fs::create_dir_all(folder)?;
     }
-    std::fs::write(path, text).map_err(|problem| io::Error::other(format!("{}: {problem}", path.display())))
+    std::fs::write(path, text)
+        .map_err(|problem| io::Error::other(format!("{}: {problem}", path.display())))
 }

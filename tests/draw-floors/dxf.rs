@@ -4,12 +4,15 @@
 //! Lengths are millimetres, angles are radians until they are written (DXF wants degrees).
 
 mod entities;
+mod measure;
 mod objects;
+mod shapes;
 mod tables;
 mod tags;
 
-pub(crate) use entities::{Across, Measure, Shape, Text, Up};
+pub(crate) use shapes::{Across, Shape, Text, Up};
 
+use measure::Measure;
 use tags::Tags;
 
 /// A point or a vector in plan, millimetres.
@@ -18,7 +21,7 @@ pub(crate) type Xy = [f64; 2];
 /// A layer of the layer table.
 pub(crate) struct Layer {
     pub(crate) name: String,
-    /// AutoCAD colour index, 1 to 255.
+    /// Index into the usual palette of colours, 1 to 255.
     pub(crate) colour: u8,
     pub(crate) linetype: &'static str,
     pub(crate) frozen: bool,
@@ -51,13 +54,22 @@ impl Drawing {
     /// Adds a layer unless one of that name is there.
     pub(crate) fn layer(&mut self, name: &str, colour: u8, linetype: &'static str) {
         if !self.layers.iter().any(|layer| layer.name == name) {
-            self.layers.push(Layer { name: name.to_owned(), colour, linetype, frozen: false });
+            self.layers.push(Layer {
+                name: name.to_owned(),
+                colour,
+                linetype,
+                frozen: false,
+            });
         }
     }
 
     /// Freezes the layers whose names end so.
     pub(crate) fn freeze(&mut self, suffix: &str) {
-        for layer in self.layers.iter_mut().filter(|layer| layer.name.ends_with(suffix)) {
+        for layer in self
+            .layers
+            .iter_mut()
+            .filter(|layer| layer.name.ends_with(suffix))
+        {
             layer.frozen = true;
         }
     }
@@ -66,21 +78,44 @@ impl Drawing {
     pub(crate) fn block(&mut self, name: &str, shapes: Vec<(&str, Shape)>) {
         let entities = shapes
             .into_iter()
-            .map(|(layer, shape)| Entity { layer: layer.to_owned(), shape })
+            .map(|(layer, shape)| Entity {
+                layer: layer.to_owned(),
+                shape,
+            })
             .collect();
-        self.blocks.push(Block { name: name.to_owned(), entities });
+        self.blocks.push(Block {
+            name: name.to_owned(),
+            entities,
+        });
     }
 
     /// Draws a shape in model space.
     pub(crate) fn draw(&mut self, layer: &str, shape: Shape) {
-        self.model.push(Entity { layer: layer.to_owned(), shape });
+        self.model.push(Entity {
+            layer: layer.to_owned(),
+            shape,
+        });
     }
 
     /// Draws an aligned dimension with the block that shows it; `shift_mm` is how far its line stands to the left of `from`-`to`.
-    pub(crate) fn dimension(&mut self, layer: &str, from: Xy, to: Xy, shift_mm: f64, height_mm: f64) {
+    pub(crate) fn dimension(
+        &mut self,
+        layer: &str,
+        from: Xy,
+        to: Xy,
+        shift_mm: f64,
+        height_mm: f64,
+    ) {
         let name = format!("*D{}", self.blocks.len() + 1);
         let measure = Measure::new(name.clone(), from, to, shift_mm, height_mm);
-        self.block(&name, measure.picture().into_iter().map(|shape| ("0", shape)).collect());
+        self.block(
+            &name,
+            measure
+                .picture()
+                .into_iter()
+                .map(|shape| ("0", shape))
+                .collect(),
+        );
         self.draw(layer, Shape::Dimension(measure));
     }
 
@@ -96,7 +131,9 @@ impl Drawing {
         tags.end_section();
         tags.section("BLOCKS");
         for (index, name) in block_names.iter().enumerate() {
-            let entities = index.checked_sub(2).map_or(&[][..], |own| &self.blocks[own].entities);
+            let entities = index
+                .checked_sub(2)
+                .map_or(&[][..], |own| &self.blocks[own].entities);
             block(&mut tags, name, entities);
         }
         tags.end_section();
@@ -143,7 +180,10 @@ impl Drawing {
 fn block(tags: &mut Tags, name: &str, entities: &[Entity]) {
     let [record, begin, end] = tags.block_handles(name);
     let paper = name == "*Paper_Space";
-    tags.put(0, "BLOCK").handle(5, begin).handle(330, record).put(100, "AcDbEntity");
+    tags.put(0, "BLOCK")
+        .handle(5, begin)
+        .handle(330, record)
+        .put(100, "AcDbEntity");
     if paper {
         tags.put(67, 1);
     }
@@ -153,7 +193,10 @@ fn block(tags: &mut Tags, name: &str, entities: &[Entity]) {
     for entity in entities {
         entities::write(tags, entity, name);
     }
-    tags.put(0, "ENDBLK").handle(5, end).handle(330, record).put(100, "AcDbEntity");
+    tags.put(0, "ENDBLK")
+        .handle(5, end)
+        .handle(330, record)
+        .put(100, "AcDbEntity");
     if paper {
         tags.put(67, 1);
     }

@@ -42,7 +42,10 @@ pub(crate) fn floor(count: u32) -> Floor {
             slab.grid[1] = supports[first..first + SUPPORTS_MM.len()].to_vec();
         }
         let path = Path::straight([x_mm, y_mm], [x_mm, y_mm + LENGTH_MM]);
-        let drape = Drape { below_top_mm: 45.0, low_mm: 45.0 };
+        let drape = Drape {
+            below_top_mm: 45.0,
+            low_mm: 45.0,
+        };
         let mut tendon = bays::tendon(&slab, Run::Distributed, path, [End::Live, End::Live], drape);
         tendon.lettering.along = index % 2 == 0;
         tendons.push(tendon);
@@ -50,5 +53,10 @@ pub(crate) fn floor(count: u32) -> Floor {
     bays::number(&mut tendons);
     let mut drawing = plan::start(&slab);
     plan::draw_slab(&mut drawing, &slab, [600.0, -400.0]);
-    Floor { name: "growth", slab, tendons, drawing }
+    Floor {
+        name: "growth",
+        slab,
+        tendons,
+        drawing,
+    }
 }

@@ -1,7 +1,8 @@
 //! A floor as it comes to the desk: six bays by four, about 120 tendons, drop panels, an opening that tendons sweep around.
 
+mod surroundings;
+
 use crate::Floor;
-use crate::background::{Title, dimensions, furniture, gridlines, title_strip, walls};
 use crate::bays::{self, Drape};
 use crate::dice::Dice;
 use crate::path::{Axis, Path, Sweep};
@@ -11,10 +12,18 @@ use crate::tendon::{DrawnAs, End, Kind, Run, Shown, Tendon};
 
 const WIDE_MM: f64 = 50_000.0;
 const HIGH_MM: f64 = 34_000.0;
-const GRID_X: [f64; 7] = [1600.0, 9400.0, 17_800.0, 25_600.0, 33_400.0, 40_600.0, 48_400.0];
+const GRID_X: [f64; 7] = [
+    1600.0, 9400.0, 17_800.0, 25_600.0, 33_400.0, 40_600.0, 48_400.0,
+];
 /// Distributed tendons pass over the banded ones, so that the ducts never meet.
-const DISTRIBUTED: Drape = Drape { below_top_mm: 45.0, low_mm: 45.0 };
-const BANDED: Drape = Drape { below_top_mm: 90.0, low_mm: 45.0 };
+const DISTRIBUTED: Drape = Drape {
+    below_top_mm: 45.0,
+    low_mm: 45.0,
+};
+const BANDED: Drape = Drape {
+    below_top_mm: 90.0,
+    low_mm: 45.0,
+};
 /// Tendons beyond this gridline (counted from 0) carry their lows as labels, the others by level lines.
 const LABELLED_BEYOND: usize = 3;
 /// The bay, counted from 0, whose middle opening two tendons sweep around, and the one with the small riser.
@@ -30,9 +39,17 @@ pub(crate) fn floor() -> Floor {
     tendons.extend(distributed(&slab));
     bays::number(&mut tendons);
     let mut dice = Dice(2);
-    let tendons = tendons.into_iter().map(|tendon| as_drafted(tendon, &mut dice)).collect();
-    let drawing = background(&slab, &mut dice);
-    Floor { name: "harbour-level-2", slab, tendons, drawing }
+    let tendons = tendons
+        .into_iter()
+        .map(|tendon| as_drafted(tendon, &mut dice))
+        .collect();
+    let drawing = surroundings::draw(&slab, &mut dice);
+    Floor {
+        name: "harbour-level-2",
+        slab,
+        tendons,
+        drawing,
+    }
 }
 
 fn slab() -> Slab {
@@ -40,9 +57,15 @@ fn slab() -> Slab {
         GRID_X.to_vec(),
         vec![1600.0, 8800.0, 17_200.0, 25_200.0, 32_400.0],
     ];
-    let columns = grid[0].iter().flat_map(|x| grid[1].iter().map(|y| [*x, *y])).collect();
+    let columns = grid[0]
+        .iter()
+        .flat_map(|x| grid[1].iter().map(|y| [*x, *y]))
+        .collect();
     let drop = |x: f64, y: f64| ([[x - 1200.0, y - 1200.0], [x + 1200.0, y + 1200.0]], 450.0);
-    let zones = grid[0][1..6].iter().flat_map(|x| grid[1][1..4].iter().map(|y| drop(*x, *y))).collect();
+    let zones = grid[0][1..6]
+        .iter()
+        .flat_map(|x| grid[1][1..4].iter().map(|y| drop(*x, *y)))
+        .collect();
     let opening_x = opening_middle_mm(&grid[0]);
     let riser_x = track(&grid[0], RISER_BAY, 3.0);
     let mut slab = Slab {
@@ -50,7 +73,10 @@ fn slab() -> Slab {
         thickness_mm: 250.0,
         zones,
         openings: vec![
-            [[opening_x - 1000.0, 11_500.0], [opening_x + 1000.0, 14_500.0]],
+            [
+                [opening_x - 1000.0, 11_500.0],
+                [opening_x + 1000.0, 14_500.0],
+            ],
             [[riser_x - 150.0, 18_950.0], [riser_x + 350.0, 19_450.0]],
         ],
         columns,
@@ -59,15 +85,32 @@ fn slab() -> Slab {
         grid,
     };
     let [x, y] = slab.grid.clone();
-    let at_drops = x[1..6].iter().map(|x| [x - 1300.0, x + 1300.0]).collect::<Vec<_>>();
+    let at_drops = x[1..6]
+        .iter()
+        .map(|x| [x - 1300.0, x + 1300.0])
+        .collect::<Vec<_>>();
     for (index, y_mm) in y.iter().enumerate() {
-        let gaps = if (1..4).contains(&index) { &at_drops[..] } else { &[] };
+        let gaps = if (1..4).contains(&index) {
+            &at_drops[..]
+        } else {
+            &[]
+        };
         slab.level_line(*y_mm, [300.0, WIDE_MM - 300.0], gaps, Kind::High, 205.0);
     }
     for (index, pair) in y.windows(2).enumerate() {
-        let gaps = if index == 1 { vec![[opening_x - 1100.0, opening_x + 1100.0]] } else { Vec::new() };
+        let gaps = if index == 1 {
+            vec![[opening_x - 1100.0, opening_x + 1100.0]]
+        } else {
+            Vec::new()
+        };
         let y_mm = f64::midpoint(pair[0], pair[1]);
-        slab.level_line(y_mm, [300.0, x[LABELLED_BEYOND] + 500.0], &gaps, Kind::Low, DISTRIBUTED.low_mm);
+        slab.level_line(
+            y_mm,
+            [300.0, x[LABELLED_BEYOND] + 500.0],
+            &gaps,
+            Kind::Low,
+            DISTRIBUTED.low_mm,
+        );
     }
     slab
 }
@@ -87,28 +130,69 @@ fn banded(slab: &Slab) -> Vec<Tendon> {
     let [x, y] = &slab.grid;
     let mut tendons = Vec::new();
     let mut add = |y_mm: f64, [from, to]: [f64; 2], ends: [End; 2], drape: Drape| {
-        let mut band = bays::tendon(slab, Run::Banded, Path::straight([from, y_mm], [to, y_mm]), ends, drape);
-        band.lettering.mark_station_mm = if from > 0.0 { to - from - 4300.0 } else { 2650.0 };
+        let mut band = bays::tendon(
+            slab,
+            Run::Banded,
+            Path::straight([from, y_mm], [to, y_mm]),
+            ends,
+            drape,
+        );
+        band.lettering.mark_station_mm = if from > 0.0 {
+            to - from - 4300.0
+        } else {
+            2650.0
+        };
         tendons.push(band);
     };
     for (line, y_mm) in y.iter().enumerate() {
         if line == LAPPED_LINE {
             // Two lengths that lap, none of them on the column line itself, where the distributed heights stand.
-            let lapped = Drape { below_top_mm: 100.0, ..BANDED };
+            let lapped = Drape {
+                below_top_mm: 100.0,
+                ..BANDED
+            };
             for offset in [-600.0, -300.0, 150.0, 450.0] {
-                add(y_mm + offset, [0.0, x[3] + 2000.0], [End::Live, End::Dead], lapped);
-                add(y_mm - offset, [x[3] - 2000.0, WIDE_MM], [End::Dead, End::Live], lapped);
+                add(
+                    y_mm + offset,
+                    [0.0, x[3] + 2000.0],
+                    [End::Live, End::Dead],
+                    lapped,
+                );
+                add(
+                    y_mm - offset,
+                    [x[3] - 2000.0, WIDE_MM],
+                    [End::Dead, End::Live],
+                    lapped,
+                );
             }
         } else {
             for offset in [-450.0, -150.0, 150.0, 450.0] {
-                add(y_mm + offset, [0.0, WIDE_MM], [End::Live, End::Live], BANDED);
+                add(
+                    y_mm + offset,
+                    [0.0, WIDE_MM],
+                    [End::Live, End::Live],
+                    BANDED,
+                );
             }
         }
         // Further from the columns, so lower, under the distributed tendons that come down there.
-        let outer = Drape { below_top_mm: 115.0, low_mm: 45.0 };
+        let outer = Drape {
+            below_top_mm: 115.0,
+            low_mm: 45.0,
+        };
         for offset in [-750.0, 750.0] {
-            add(y_mm + offset, [0.0, x[2] + 2400.0], [End::Live, End::Dead], outer);
-            add(y_mm + offset, [x[4] - 2400.0, WIDE_MM], [End::Dead, End::Live], outer);
+            add(
+                y_mm + offset,
+                [0.0, x[2] + 2400.0],
+                [End::Live, End::Dead],
+                outer,
+            );
+            add(
+                y_mm + offset,
+                [x[4] - 2400.0, WIDE_MM],
+                [End::Dead, End::Live],
+                outer,
+            );
         }
     }
     // Two lines on the middle line of columns and two more stand for several tendons.
@@ -142,15 +226,38 @@ fn distributed(slab: &Slab) -> Vec<Tendon> {
             }
             if spacing < 6 && bay < LABELLED_BEYOND + 1 {
                 let x_mm = track(x, bay, f64::from(spacing) + 0.5);
-                tendons.push(plain(x_mm, [0.0, y[1] + 2000.0], [End::Live, End::Dead], DISTRIBUTED));
-                tendons.push(plain(x_mm, [y[3] - 2000.0, HIGH_MM], [End::Dead, End::Live], DISTRIBUTED));
+                tendons.push(plain(
+                    x_mm,
+                    [0.0, y[1] + 2000.0],
+                    [End::Live, End::Dead],
+                    DISTRIBUTED,
+                ));
+                tendons.push(plain(
+                    x_mm,
+                    [y[3] - 2000.0, HIGH_MM],
+                    [End::Dead, End::Live],
+                    DISTRIBUTED,
+                ));
             } else if spacing < 6 {
-                let shallow = Drape { low_mm: 60.0, ..DISTRIBUTED };
-                let [south, north] = [0.4, 0.6].map(|share| track(x, bay, f64::from(spacing) + share));
+                let shallow = Drape {
+                    low_mm: 60.0,
+                    ..DISTRIBUTED
+                };
+                let [south, north] =
+                    [0.4, 0.6].map(|share| track(x, bay, f64::from(spacing) + share));
                 let tendon = plain(south, [0.0, y[2] + 2000.0], [End::Live, End::Dead], shallow);
                 // Two of these show the height of every support, as a sample for the site.
-                tendons.push(if spacing == 2 { bays::with_supports(tendon, 1000.0) } else { tendon });
-                tendons.push(plain(north, [y[2] - 2000.0, HIGH_MM], [End::Dead, End::Live], shallow));
+                tendons.push(if spacing == 2 {
+                    bays::with_supports(tendon, 1000.0)
+                } else {
+                    tendon
+                });
+                tendons.push(plain(
+                    north,
+                    [y[2] - 2000.0, HIGH_MM],
+                    [End::Dead, End::Live],
+                    shallow,
+                ));
             }
         }
     }
@@ -163,10 +270,21 @@ fn swept(slab: &Slab, x_mm: f64) -> Tendon {
     let middle = opening_middle_mm(&slab.grid[0]);
     let clear = middle + 1250.0 * (x_mm - middle).signum();
     let shift_mm = clear - x_mm;
-    let sweep = |from_mm: f64, shift_mm: f64| Sweep { from_mm, shift_mm, radius_mm: 20_000.0, slope: 1.0 / 14.0 };
+    let sweep = |from_mm: f64, shift_mm: f64| Sweep {
+        from_mm,
+        shift_mm,
+        radius_mm: 20_000.0,
+        slope: 1.0 / 14.0,
+    };
     let sweeps = [sweep(1000.0, shift_mm), sweep(14_800.0, -shift_mm)];
     let path = Path::swept(Axis::Y, [0.0, HIGH_MM], x_mm, &sweeps);
-    let mut tendon = bays::tendon(slab, Run::Distributed, path, [End::Live, End::Live], DISTRIBUTED);
+    let mut tendon = bays::tendon(
+        slab,
+        Run::Distributed,
+        path,
+        [End::Live, End::Live],
+        DISTRIBUTED,
+    );
     if shift_mm > 0.0 {
         tendon.drawn_as = DrawnAs::Pieces;
     }
@@ -190,9 +308,18 @@ fn splined(slab: &Slab, x_mm: f64) -> Tendon {
         (32_000.0, 0.0),
         (34_000.0, 0.0),
     ];
-    let controls = eased.iter().map(|(y_mm, aside)| [x_mm - aside, *y_mm]).collect::<Vec<_>>();
+    let controls = eased
+        .iter()
+        .map(|(y_mm, aside)| [x_mm - aside, *y_mm])
+        .collect::<Vec<_>>();
     let path = Path::spline(&controls, 170);
-    let mut tendon = bays::tendon(slab, Run::Distributed, path, [End::Live, End::Live], DISTRIBUTED);
+    let mut tendon = bays::tendon(
+        slab,
+        Run::Distributed,
+        path,
+        [End::Live, End::Live],
+        DISTRIBUTED,
+    );
     tendon.drawn_as = DrawnAs::Spline(controls);
     tendon
 }
@@ -200,12 +327,21 @@ fn splined(slab: &Slab, x_mm: f64) -> Tendon {
 /// Habits of several hands: sides, directions and kinds of entity differ.
 fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
     let axis = tendon.run.axis();
-    let across = if axis == Axis::X { tendon.path.corners[0].0[1] } else { tendon.path.corners[0].0[0] };
+    let across = if axis == Axis::X {
+        tendon.path.corners[0].0[1]
+    } else {
+        tendon.path.corners[0].0[0]
+    };
     if tendon.run == Run::Banded {
         // One side for a whole band, or its labels would face one another.
-        tendon.lettering.far_side = across < 12_000.0 || across > 30_000.0;
+        tendon.lettering.far_side = !(12_000.0..=30_000.0).contains(&across);
     } else {
+        let crowded = tendon
+            .points
+            .iter()
+            .any(|point| point.kind == Kind::Support);
         tendon.lettering.mark_station_mm = match tendon.path.length_mm() {
+            _ if crowded => 2350.0,
             short if short > 30_000.0 => 2350.0,
             short if tendon.ends[0] == End::Live => short - 4900.0,
             _ => 3000.0,
@@ -214,7 +350,11 @@ fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
     }
     if dice.once_in(7) {
         // Said although it is what mid-depth gives anyhow.
-        for point in tendon.points.iter_mut().filter(|point| point.kind == Kind::Anchor) {
+        for point in tendon
+            .points
+            .iter_mut()
+            .filter(|point| point.kind == Kind::Anchor)
+        {
             point.shown = Shown::Bare;
         }
     }
@@ -225,72 +365,27 @@ fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
             _ => DrawnAs::Polyline,
         };
     }
-    if dice.once_in(3) { tendon.reversed() } else { tendon }
+    if dice.once_in(3) {
+        tendon.reversed()
+    } else {
+        tendon
+    }
 }
 
 /// Chooses sides so that no two labels share one gap: away from columns, and never towards a shorter tendon's label.
 fn letter(tendon: &mut Tendon, across_mm: f64, dice: &mut Dice) {
-    let spacing = GRID_X.windows(2).find(|bay| across_mm < bay[1]).map_or(6.0, |bay| {
-        let [left, right] = [bay[0] + 200.0, bay[1] - 200.0];
-        (across_mm - left) / (right - left) * 6.0
-    });
+    let spacing = GRID_X
+        .windows(2)
+        .find(|bay| across_mm < bay[1])
+        .map_or(6.0, |bay| {
+            let [left, right] = [bay[0] + 200.0, bay[1] - 200.0];
+            (across_mm - left) / (right - left) * 6.0
+        });
     let short = (spacing - spacing.round()).abs() > 0.2;
-    let odd = [1.0, 3.0, 5.0].iter().any(|odd| (spacing - odd).abs() < 0.2);
+    let odd = [1.0, 3.0, 5.0]
+        .iter()
+        .any(|odd| (spacing - odd).abs() < 0.2);
     tendon.lettering.far_side = spacing < 5.8 && !(odd && dice.once_in(2));
     tendon.lettering.along = short || (odd && dice.once_in(3));
     tendon.lettering.word = dice.once_in(5);
-}
-
-fn background(slab: &Slab, dice: &mut Dice) -> crate::dxf::Drawing {
-    let mut drawing = plan::start(slab);
-    plan::draw_slab(&mut drawing, slab, [21_200.0, 20_000.0]);
-    gridlines(&mut drawing, slab);
-    dimensions(&mut drawing, slab);
-    let [low, high] = slab.openings[0];
-    let wall = 200.0;
-    walls(
-        &mut drawing,
-        &[
-            [[low[0] - wall, low[1] - wall], [low[0], high[1] + wall]],
-            [[high[0], low[1] - wall], [high[0] + wall, high[1] + wall]],
-            [[low[0], high[1]], [high[0], high[1] + wall]],
-            [[27_000.0, 18_600.0], [32_000.0, 18_800.0]],
-        ],
-    );
-    let areas = [
-        [[2600.0, 10_400.0], [8000.0, 16_000.0]],
-        [[26_800.0, 10_400.0], [46_000.0, 15_800.0]],
-        [[35_000.0, 19_000.0], [46_500.0, 23_800.0]],
-        [[2600.0, 27_000.0], [46_000.0, 30_500.0]],
-    ];
-    furniture(&mut drawing, dice, &areas);
-    for (at, words) in [
-        ([10_900.0, 12_200.0], "OPEN OFFICE"),
-        ([36_400.0, 17_900.0], "OPEN OFFICE"),
-        ([19_700.0, 10_500.0], "STAIR 2"),
-        ([42_000.0, 4600.0], "MEETING"),
-    ] {
-        drawing.layer("ROOM-NAMES", 252, "Continuous");
-        drawing.draw("ROOM-NAMES", plan::text(at, 300.0, words));
-    }
-    let title = Title {
-        project: "HARBOUR LEVEL 2",
-        sheet: "POST-TENSIONING: TENDON LAYOUT",
-        number: "DEMO-02   1:100 AT A1",
-        revisions: &[
-            "C  OPENING AT STAIR 2 WIDENED, TENDONS SWEPT",
-            "B  DROP PANELS ADDED AT LINES B, C, D",
-            "A  FIRST ISSUE",
-        ],
-    };
-    let notes = [
-        "1. HEIGHTS ARE TO THE CENTROID OF THE STRANDS, IN MILLIMETRES ABOVE THE LOCAL SOFFIT.",
-        "2. ANCHORS ARE AT MID-DEPTH UNLESS A HEIGHT IS GIVEN.",
-        "3. FLAT DUCTS 20 mm HIGH, FIVE STRANDS OF 12.7 mm. DISTRIBUTED TENDONS PASS OVER BANDED ONES.",
-        "4. A DASHED LEVEL LINE GIVES ITS HEIGHT TO EVERY DISTRIBUTED TENDON THAT IT CROSSES.",
-        "5. SWEEPS IN PLAN: SLOPE AT MOST 1 IN 12, RADIUS AT LEAST 8 m.",
-        "6. WHERE TENDONS MEET AN OPENING KEEP 150 mm CLEAR.",
-    ];
-    title_strip(&mut drawing, slab, &title, &notes);
-    drawing
 }

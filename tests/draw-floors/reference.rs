@@ -12,8 +12,18 @@ use crate::tendon::{End, Kind, Run, Tendon};
 
 const WIDE_MM: f64 = 60_000.0;
 const HIGH_MM: f64 = 45_000.0;
-const DISTRIBUTED: Drape = Drape { below_top_mm: 45.0, low_mm: 60.0 };
-const BANDED: Drape = Drape { below_top_mm: 90.0, low_mm: 45.0 };
+const DISTRIBUTED: Drape = Drape {
+    below_top_mm: 45.0,
+    low_mm: 110.0,
+};
+const SHORT: Drape = Drape {
+    below_top_mm: 45.0,
+    low_mm: 50.0,
+};
+const BANDED: Drape = Drape {
+    below_top_mm: 90.0,
+    low_mm: 75.0,
+};
 const BACKGROUND_LAYERS: u32 = 64;
 /// Brings the file to about 20 MB.
 const BACKGROUND_SHAPES: u32 = 112_000;
@@ -31,20 +41,38 @@ pub(crate) fn floor() -> Floor {
     }
     let tendons = tendons
         .into_iter()
-        .map(|tendon| if dice.once_in(3) { tendon.reversed() } else { tendon })
+        .map(|tendon| {
+            if dice.once_in(3) {
+                tendon.reversed()
+            } else {
+                tendon
+            }
+        })
         .collect();
     let mut drawing = plan::start(&slab);
     plan::draw_slab(&mut drawing, &slab, [6600.0, 5000.0]);
     gridlines(&mut drawing, &slab);
     dimensions(&mut drawing, &slab);
-    furniture(&mut drawing, &mut dice, &[[[2000.0, 3000.0], [57_000.0, 42_000.0]]]);
+    furniture(
+        &mut drawing,
+        &mut dice,
+        &[[[2000.0, 3000.0], [57_000.0, 42_000.0]]],
+    );
     background(&mut drawing, &mut dice);
-    Floor { name: "reference-floor", slab, tendons, drawing }
+    Floor {
+        name: "reference-floor",
+        slab,
+        tendons,
+        drawing,
+    }
 }
 
 fn slab() -> Slab {
     let grid = [even(1600.0, 7100.0, 9), even(1500.0, 7000.0, 7)];
-    let columns = grid[0].iter().flat_map(|x| grid[1].iter().map(|y| [*x, *y])).collect();
+    let columns = grid[0]
+        .iter()
+        .flat_map(|x| grid[1].iter().map(|y| [*x, *y]))
+        .collect();
     let mut slab = Slab {
         edge: plan::rectangle([[0.0, 0.0], [WIDE_MM, HIGH_MM]]),
         thickness_mm: 250.0,
@@ -63,7 +91,9 @@ fn slab() -> Slab {
 }
 
 fn even(first_mm: f64, step_mm: f64, count: u8) -> Vec<f64> {
-    (0..count).map(|index| first_mm + step_mm * f64::from(index)).collect()
+    (0..count)
+        .map(|index| first_mm + step_mm * f64::from(index))
+        .collect()
 }
 
 fn banded(slab: &Slab) -> Vec<Tendon> {
@@ -72,7 +102,11 @@ fn banded(slab: &Slab) -> Vec<Tendon> {
         for offset in [-450.0, -150.0, 150.0, 450.0] {
             for [from, to, live] in [[0.0, 32_000.0, 0.0], [28_000.0, WIDE_MM, 1.0]] {
                 let y_mm = y_mm + offset + 75.0 * live;
-                let ends = if live == 0.0 { [End::Live, End::Dead] } else { [End::Dead, End::Live] };
+                let ends = if live == 0.0 {
+                    [End::Live, End::Dead]
+                } else {
+                    [End::Dead, End::Live]
+                };
                 let path = Path::straight([from, y_mm], [to, y_mm]);
                 tendons.push(bays::tendon(slab, Run::Banded, path, ends, BANDED));
             }
@@ -85,8 +119,13 @@ fn banded(slab: &Slab) -> Vec<Tendon> {
 fn distributed(slab: &Slab) -> Vec<Tendon> {
     let mut tendons = Vec::new();
     let mut add = |x_mm: f64, reach: [f64; 2], ends: [End; 2]| {
+        let drape = if reach[1] - reach[0] < 12_000.0 {
+            SHORT
+        } else {
+            DISTRIBUTED
+        };
         let path = Path::straight([x_mm, reach[0]], [x_mm, reach[1]]);
-        tendons.push(bays::tendon(slab, Run::Distributed, path, ends, DISTRIBUTED));
+        tendons.push(bays::tendon(slab, Run::Distributed, path, ends, drape));
     };
     for track in 0..88_u8 {
         let x_mm = 500.0 + 675.0 * f64::from(track);
@@ -102,7 +141,9 @@ fn distributed(slab: &Slab) -> Vec<Tendon> {
 
 /// Walls, linework, hatches, words and blocks all over the floor, on many layers.
 fn background(drawing: &mut Drawing, dice: &mut Dice) {
-    let layers = (0..BACKGROUND_LAYERS).map(|index| format!("ARCH-{index:02}")).collect::<Vec<_>>();
+    let layers = (0..BACKGROUND_LAYERS)
+        .map(|index| format!("ARCH-{index:02}"))
+        .collect::<Vec<_>>();
     for (layer, colour) in layers.iter().zip((30_u8..).step_by(3)) {
         drawing.layer(layer, colour, "Continuous");
     }
@@ -120,10 +161,29 @@ fn clutter(at: Xy, dice: &mut Dice) -> Shape {
     match dice.below(20) {
         0..7 => Shape::Line([at, [at[0] + wide, at[1] + high * f64::from(dice.below(2))]]),
         7..12 => plan::closed(&outline),
-        12..14 => Shape::Hatch { outline, spacing_mm: Some(90.0) },
-        14..17 => plan::text(at, 120.0, ["FFL +7.350", "CEILING 2.70", "H205", "FD 30", "T350"][dice.below(5) as usize]),
-        17 => Shape::Arc { centre: at, radius_mm: high, angles_rad: [0.0, std::f64::consts::FRAC_PI_2] },
-        18 => Shape::Circle { centre: at, radius_mm: high },
-        _ => Shape::Insert { block: "DESK".to_owned(), at, scale: 1.0, rotation_rad: 0.0 },
+        12..14 => Shape::Hatch {
+            outline,
+            spacing_mm: Some(90.0),
+        },
+        14..17 => plan::text(
+            at,
+            120.0,
+            ["FFL +7.350", "CEILING 2.70", "H205", "FD 30", "T350"][dice.below(5) as usize],
+        ),
+        17 => Shape::Arc {
+            centre: at,
+            radius_mm: high,
+            angles_rad: [0.0, std::f64::consts::FRAC_PI_2],
+        },
+        18 => Shape::Circle {
+            centre: at,
+            radius_mm: high,
+        },
+        _ => Shape::Insert {
+            block: "DESK".to_owned(),
+            at,
+            scale: 1.0,
+            rotation_rad: 0.0,
+        },
     }
 }

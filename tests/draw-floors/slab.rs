@@ -33,7 +33,9 @@ pub(crate) struct LevelLine {
 
 impl Slab {
     pub(crate) fn thickness_at(&self, at: Xy) -> f64 {
-        let inside = |corners: &Box2| (0..2).all(|side| corners[0][side] < at[side] && at[side] < corners[1][side]);
+        let inside = |corners: &Box2| {
+            (0..2).all(|side| corners[0][side] < at[side] && at[side] < corners[1][side])
+        };
         let zone = self.zones.iter().find(|(corners, _)| inside(corners));
         zone.map_or(self.thickness_mm, |(_, thickness_mm)| *thickness_mm)
     }
@@ -50,7 +52,14 @@ impl Slab {
     }
 
     /// A level line for each stretch of `x_mm` that no gap interrupts.
-    pub(crate) fn level_line(&mut self, y_mm: f64, x_mm: [f64; 2], gaps: &[[f64; 2]], kind: Kind, height_mm: f64) {
+    pub(crate) fn level_line(
+        &mut self,
+        y_mm: f64,
+        x_mm: [f64; 2],
+        gaps: &[[f64; 2]],
+        kind: Kind,
+        height_mm: f64,
+    ) {
         let mut from = x_mm[0];
         for gap in gaps.iter().filter(|gap| gap[0] < x_mm[1]) {
             self.add_level_line(y_mm, [from, gap[0]], kind, height_mm);
@@ -62,7 +71,13 @@ impl Slab {
     fn add_level_line(&mut self, y_mm: f64, x_mm: [f64; 2], kind: Kind, height_mm: f64) {
         if x_mm[1] - x_mm[0] > 500.0 {
             let text_x_mm = x_mm[0] + (0.31 * (x_mm[1] - x_mm[0])).min(3350.0);
-            self.level_lines.push(LevelLine { y_mm, x_mm, kind, height_mm, text_x_mm });
+            self.level_lines.push(LevelLine {
+                y_mm,
+                x_mm,
+                kind,
+                height_mm,
+                text_x_mm,
+            });
         }
     }
 

@@ -13,15 +13,27 @@ pub(crate) enum Run {
 impl Run {
     /// Banded tendons go along x here, distributed ones along y.
     pub(crate) fn axis(self) -> Axis {
-        if self == Self::Banded { Axis::X } else { Axis::Y }
+        if self == Self::Banded {
+            Axis::X
+        } else {
+            Axis::Y
+        }
     }
 
     pub(crate) fn name(self) -> &'static str {
-        if self == Self::Banded { "banded" } else { "distributed" }
+        if self == Self::Banded {
+            "banded"
+        } else {
+            "distributed"
+        }
     }
 
     pub(crate) fn layer(self) -> &'static str {
-        if self == Self::Banded { "TENDON-BANDED" } else { "TENDON-DISTRIBUTED" }
+        if self == Self::Banded {
+            "TENDON-BANDED"
+        } else {
+            "TENDON-DISTRIBUTED"
+        }
     }
 }
 
@@ -113,7 +125,13 @@ pub(crate) struct Tendon {
 impl Tendon {
     /// `D012 5-12.7`, or `B03 4x5-12.7` for a line that stands for four.
     pub(crate) fn mark_text(&self) -> String {
-        let Self { mark, tendons, strands, strand, .. } = self;
+        let Self {
+            mark,
+            tendons,
+            strands,
+            strand,
+            ..
+        } = self;
         match (&self.mark_text, tendons) {
             (Some(text), _) => text.clone(),
             (None, 1) => format!("{mark} {strands}-{strand}"),

@@ -17,7 +17,13 @@ pub(crate) fn to_json(drawing: &str, slab: &Slab, tendons: &[Tendon]) -> String 
 }
 
 fn tendon_json(slab: &Slab, tendon: &Tendon) -> String {
-    let Tendon { mark, tendons, strands, strand, .. } = tendon;
+    let Tendon {
+        mark,
+        tendons,
+        strands,
+        strand,
+        ..
+    } = tendon;
     let run = tendon.run.name();
     let ends = tendon.ends.map(|end| match end {
         End::Live => "\"live\"",
@@ -76,5 +82,9 @@ fn metres(value_mm: f64) -> String {
 }
 
 fn fine(value: f64) -> String {
-    if value == 0.0 { "0".to_owned() } else { format!("{value:.9}") }
+    if value == 0.0 {
+        "0".to_owned()
+    } else {
+        format!("{value:.9}")
+    }
 }

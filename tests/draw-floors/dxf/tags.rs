@@ -55,7 +55,11 @@ impl Tags {
             blocks.insert((*name).to_owned(), next_handle);
             next_handle += 3;
         }
-        Self { text: String::new(), next_handle, blocks }
+        Self {
+            text: String::new(),
+            next_handle,
+            blocks,
+        }
     }
 
     pub(super) fn put(&mut self, code: u16, value: impl Display) -> &mut Self {
@@ -95,7 +99,11 @@ impl Tags {
     fn rounded(&mut self, code: u16, value: f64, decimals: usize) -> &mut Self {
         let padded = format!("{value:.decimals$}");
         let trimmed = padded.trim_end_matches('0');
-        let whole = if trimmed.ends_with('.') { format!("{trimmed}0") } else { trimmed.to_owned() };
+        let whole = if trimmed.ends_with('.') {
+            format!("{trimmed}0")
+        } else {
+            trimmed.to_owned()
+        };
         self.put(code, if whole == "-0.0" { "0.0" } else { &whole })
     }
 
@@ -122,6 +130,9 @@ impl Tags {
     }
 
     pub(super) fn finish(self) -> Body {
-        Body { text: self.text, next_handle: self.next_handle }
+        Body {
+            text: self.text,
+            next_handle: self.next_handle,
+        }
     }
 }
