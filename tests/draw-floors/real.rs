@@ -29,6 +29,8 @@ const LABELLED_BEYOND: usize = 3;
 /// The bay, counted from 0, whose middle opening two tendons sweep around, and the one with the small riser.
 const OPENING_BAY: usize = 2;
 const RISER_BAY: usize = 0;
+/// Spacings of the distributed tendons in a bay; odd, so that none runs where the bands' lows are written.
+const SPACINGS: f64 = 7.0;
 /// The line of columns, counted from 0, whose band comes in two lengths.
 const LAPPED_LINE: usize = 3;
 
@@ -61,7 +63,7 @@ fn slab() -> Slab {
         .iter()
         .flat_map(|x| grid[1].iter().map(|y| [*x, *y]))
         .collect();
-    let drop = |x: f64, y: f64| ([[x - 1200.0, y - 1200.0], [x + 1200.0, y + 1200.0]], 450.0);
+    let drop = |x: f64, y: f64| ([[x - 1050.0, y - 1050.0], [x + 1050.0, y + 1050.0]], 450.0);
     let zones = grid[0][1..6]
         .iter()
         .flat_map(|x| grid[1][1..4].iter().map(|y| drop(*x, *y)))
@@ -87,7 +89,7 @@ fn slab() -> Slab {
     let [x, y] = slab.grid.clone();
     let at_drops = x[1..6]
         .iter()
-        .map(|x| [x - 1300.0, x + 1300.0])
+        .map(|x| [x - 1080.0, x + 1080.0])
         .collect::<Vec<_>>();
     for (index, y_mm) in y.iter().enumerate() {
         let gaps = if (1..4).contains(&index) {
@@ -118,11 +120,11 @@ fn slab() -> Slab {
 /// Tendons stand 200 mm beside the columns of a bay and evenly between: the place of one, counted in spacings.
 fn track(grid_x: &[f64], bay: usize, spacings: f64) -> f64 {
     let [left, right] = [grid_x[bay] + 200.0, grid_x[bay + 1] - 200.0];
-    (left + (right - left) / 6.0 * spacings).round()
+    (left + (right - left) / SPACINGS * spacings).round()
 }
 
 fn opening_middle_mm(grid_x: &[f64]) -> f64 {
-    track(grid_x, OPENING_BAY, 2.5)
+    track(grid_x, OPENING_BAY, 1.5)
 }
 
 /// On each line of columns four tendons from end to end, or pairs that lap, and four shorter ones at the ends.
@@ -214,18 +216,24 @@ fn distributed(slab: &Slab) -> Vec<Tendon> {
     };
     tendons.push(plain(600.0, whole, both, DISTRIBUTED));
     for bay in 0..x.len() - 1 {
-        for spacing in 0..=6_u8 {
+        for spacing in 0..=7_u8 {
             let x_mm = track(x, bay, f64::from(spacing));
             tendons.push(match (bay, spacing) {
-                (OPENING_BAY, 2 | 3) => swept(slab, x_mm),
+                (OPENING_BAY, 1 | 2) => swept(slab, x_mm),
                 (RISER_BAY, 3) => splined(slab, x_mm),
                 _ => plain(x_mm, whole, both, DISTRIBUTED),
             });
             if spacing % 2 == 1 {
                 continue;
             }
-            if spacing < 6 && bay < LABELLED_BEYOND + 1 {
-                let x_mm = track(x, bay, f64::from(spacing) + 0.5);
+            if spacing < 5 && bay < LABELLED_BEYOND + 1 {
+                // Where tendons sweep aside, one between them takes the place of two.
+                let share = match (bay, spacing) {
+                    (OPENING_BAY, 0) => continue,
+                    (OPENING_BAY, 2) => -0.5,
+                    _ => 0.5,
+                };
+                let x_mm = track(x, bay, f64::from(spacing) + share);
                 tendons.push(plain(
                     x_mm,
                     [0.0, y[1] + 2000.0],
@@ -238,7 +246,7 @@ fn distributed(slab: &Slab) -> Vec<Tendon> {
                     [End::Dead, End::Live],
                     DISTRIBUTED,
                 ));
-            } else if spacing < 6 {
+            } else if spacing < 5 {
                 let shallow = Drape {
                     low_mm: 60.0,
                     ..DISTRIBUTED
@@ -341,8 +349,8 @@ fn as_drafted(mut tendon: Tendon, dice: &mut Dice) -> Tendon {
             .iter()
             .any(|point| point.kind == Kind::Support);
         tendon.lettering.mark_station_mm = match tendon.path.length_mm() {
-            _ if crowded => 2350.0,
-            short if short > 30_000.0 => 2350.0,
+            _ if crowded => 2650.0,
+            short if short > 30_000.0 => 2650.0,
             short if tendon.ends[0] == End::Live => short - 4900.0,
             _ => 3000.0,
         };
@@ -377,15 +385,17 @@ fn letter(tendon: &mut Tendon, across_mm: f64, dice: &mut Dice) {
     let spacing = GRID_X
         .windows(2)
         .find(|bay| across_mm < bay[1])
-        .map_or(6.0, |bay| {
+        .map_or(SPACINGS, |bay| {
             let [left, right] = [bay[0] + 200.0, bay[1] - 200.0];
-            (across_mm - left) / (right - left) * 6.0
+            (across_mm - left) / (right - left) * SPACINGS
         });
     let short = (spacing - spacing.round()).abs() > 0.2;
     let odd = [1.0, 3.0, 5.0]
         .iter()
         .any(|odd| (spacing - odd).abs() < 0.2);
-    tendon.lettering.far_side = spacing < 5.8 && !(odd && dice.once_in(2));
-    tendon.lettering.along = short || (odd && dice.once_in(3));
+    tendon.lettering.far_side = spacing < SPACINGS - 0.2 && !(odd && dice.once_in(2));
+    let last = (spacing - 6.0).abs() < 0.2;
+    let far_side = tendon.lettering.far_side;
+    tendon.lettering.along = short || last || (odd && (!far_side || dice.once_in(3)));
     tendon.lettering.word = dice.once_in(5);
 }

@@ -235,7 +235,7 @@ impl<'a> Planted<'a> {
             "swept aside with arcs of 4 m",
         );
 
-        let through = self.single("D08", 13_200.0);
+        let through = self.single("D08", 12_800.0);
         self.plant(
             "crosses-opening",
             through,

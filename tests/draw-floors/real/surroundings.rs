@@ -33,7 +33,7 @@ pub(super) fn draw(slab: &Slab, dice: &mut Dice) -> Drawing {
     for (at, words) in [
         ([10_900.0, 12_200.0], "OPEN OFFICE"),
         ([36_400.0, 17_900.0], "OPEN OFFICE"),
-        ([19_700.0, 10_500.0], "STAIR 2"),
+        ([18_900.0, 10_950.0], "STAIR 2"),
         ([42_000.0, 4600.0], "MEETING"),
     ] {
         drawing.layer("ROOM-NAMES", 252, "Continuous");
