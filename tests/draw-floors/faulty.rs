@@ -80,7 +80,7 @@ pub(crate) fn floor() -> (Floor, Vec<Fault>) {
         ..
     } = planted;
     let mut drawing = plan::start(&slab);
-    plan::draw_slab(&mut drawing, &slab, [36_000.0, 12_900.0]);
+    plan::draw_slab(&mut drawing, &slab, [37_200.0, 12_700.0]);
     gridlines(&mut drawing, &slab);
     dimensions(&mut drawing, &slab);
     for (layer, shape) in loose {

@@ -397,5 +397,5 @@ fn letter(tendon: &mut Tendon, across_mm: f64, dice: &mut Dice) {
     let last = (spacing - 6.0).abs() < 0.2;
     let far_side = tendon.lettering.far_side;
     tendon.lettering.along = short || last || (odd && (!far_side || dice.once_in(3)));
-    tendon.lettering.word = dice.once_in(5);
+    tendon.lettering.word = (spacing - 2.0).abs() < 0.2;
 }

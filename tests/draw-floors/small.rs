@@ -62,7 +62,7 @@ pub(crate) fn floor() -> Floor {
     }
     bays::number(&mut tendons);
     let mut drawing = plan::start(&slab);
-    plan::draw_slab(&mut drawing, &slab, [7150.0, 3600.0]);
+    plan::draw_slab(&mut drawing, &slab, [8050.0, 3600.0]);
     gridlines(&mut drawing, &slab);
     dimensions(&mut drawing, &slab);
     let title = Title {

@@ -96,7 +96,7 @@ pub(crate) struct Lettering {
     pub(crate) far_side: bool,
     /// Heights turned along the tendon, or level with the sheet?
     pub(crate) along: bool,
-    /// Heights as MTEXT, now and then.
+    /// Heights as MTEXT, where they stand level on the far side.
     pub(crate) word: bool,
     /// Where the mark stands: distance from the first anchor.
     pub(crate) mark_station_mm: f64,
