@@ -2,6 +2,7 @@
 //! Knows nothing of tendons; the only stage that says `dxf::`.
 
 mod sheet;
+mod tags;
 mod types;
 
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};
