@@ -28,7 +28,7 @@ use super::{Refusal, Sheet, SheetLayer, Source};
 /// [`Refusal::NoNumber`] if a mark has a coordinate that is no finite number, or `unit_m` is no positive one.
 pub fn insert(source: &Source, unit_m: f64, sheet: &Sheet) -> Result<Vec<u8>, Refusal> {
     check(unit_m, sheet)?;
-    let (bytes, scan) = (source.bytes(), source.scan());
+    let (bytes, scan) = (source.bytes.as_slice(), &source.scan);
     let style = Style {
         form: scan.form,
         line_end: scan.line_end,
@@ -36,7 +36,11 @@ pub fn insert(source: &Source, unit_m: f64, sheet: &Sheet) -> Result<Vec<u8>, Re
         edition: Edition::of(&scan.version),
     };
     let lacking = lacking_layers(scan, sheet);
-    let mut supply = supply(bytes, scan, handles_needed(scan, style.edition, &lacking, sheet));
+    let mut supply = supply(
+        bytes,
+        scan,
+        handles_needed(scan, style.edition, &lacking, sheet),
+    );
     let first = supply.next();
     let mut splice = Splice::default();
 
@@ -50,7 +54,11 @@ pub fn insert(source: &Source, unit_m: f64, sheet: &Sheet) -> Result<Vec<u8>, Re
         model_space: scan.model_space_record.as_deref().and_then(number),
         scale: Scale { unit_m },
     };
-    let mut shown = sheet.marks.iter().filter(|mark| shows(&mark.drawn)).peekable();
+    let mut shown = sheet
+        .marks
+        .iter()
+        .filter(|mark| shows(&mark.drawn))
+        .peekable();
     if scan.open_sequence && shown.peek().is_some() {
         entities.end_open_sequence();
     }
@@ -99,12 +107,7 @@ fn layers_have_handles(scan: &Scan, edition: Edition) -> bool {
     scan.uses_handles && (edition >= Edition::R13 || scan.layers_have_handles)
 }
 
-fn handles_needed(
-    scan: &Scan,
-    edition: Edition,
-    lacking: &[&SheetLayer],
-    sheet: &Sheet,
-) -> u64 {
+fn handles_needed(scan: &Scan, edition: Edition, lacking: &[&SheetLayer], sheet: &Sheet) -> u64 {
     let layers = lacking.len() as u64;
     let for_layers = match scan.layer_table_end {
         // The table itself and layer "0".
@@ -192,12 +195,7 @@ fn insert_marks(splice: &mut Splice, scan: &Scan, marks: Records) {
 }
 
 /// Inserts a section before the first of those that must come after it, before EOF, or behind the last tag.
-fn insert_section(
-    splice: &mut Splice,
-    scan: &Scan,
-    after: &[Option<usize>],
-    section: Records,
-) {
+fn insert_section(splice: &mut Splice, scan: &Scan, after: &[Option<usize>], section: Records) {
     let places = after.iter().copied().chain([scan.eof_start]).flatten();
     let at = places.min().unwrap_or(scan.tags_end);
     splice.insert(at, section.into_bytes());

@@ -1,11 +1,11 @@
 //! Tags to bytes and back, in every form that DXF has; written for the tests, apart from the program's own.
 
 /// A group code and its value.
-pub type Tag = (i16, Value);
+pub(crate) type Tag = (i16, Value);
 
 /// A value, as its group code types it.
 #[derive(Debug, Clone, PartialEq)]
-pub enum Value {
+pub(crate) enum Value {
     /// Text or handle.
     Text(String),
     /// Two bytes.
@@ -18,7 +18,7 @@ pub enum Value {
 
 /// A form of DXF.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum Coding {
+pub(crate) enum Coding {
     /// Two lines a tag.
     Ascii {
         /// Line end.
@@ -37,7 +37,7 @@ pub enum Coding {
 
 impl Coding {
     /// ASCII with all line ends.
-    pub fn ascii(line_end: &'static str, code_width: usize) -> Self {
+    pub(crate) fn ascii(line_end: &'static str, code_width: usize) -> Self {
         Self::Ascii {
             line_end,
             code_width,
@@ -49,7 +49,7 @@ impl Coding {
 const SIGNATURE: &[u8] = b"AutoCAD Binary DXF\r\n\x1a\0";
 
 /// The bytes of a file with these tags.
-pub fn encode(tags: &[Tag], coding: Coding) -> Vec<u8> {
+pub(crate) fn encode(tags: &[Tag], coding: Coding) -> Vec<u8> {
     let mut bytes = Vec::new();
     match coding {
         Coding::Ascii {
@@ -108,7 +108,7 @@ fn kind(code: i16) -> Value {
 }
 
 /// The tags of a file; panics if it is not in this form throughout.
-pub fn decode(bytes: &[u8], coding: Coding) -> Vec<Tag> {
+pub(crate) fn decode(bytes: &[u8], coding: Coding) -> Vec<Tag> {
     match coding {
         Coding::Ascii {
             line_end,
@@ -151,7 +151,9 @@ fn decode_binary(bytes: &[u8], wide: bool) -> Vec<Tag> {
     while let Some(first) = take(1) {
         let code = match (wide, first[0]) {
             (true, low) => i16::from_le_bytes([low, take(1).expect("a code")[0]]),
-            (false, 255) => i16::from_le_bytes(take(2).expect("a code").try_into().expect("two bytes")),
+            (false, 255) => {
+                i16::from_le_bytes(take(2).expect("a code").try_into().expect("two bytes"))
+            }
             (false, narrow) => i16::from(narrow),
         };
         let value = match kind(code) {

@@ -85,7 +85,9 @@ impl Entities<'_> {
                 self.point(10, *centre, 0.0);
                 self.length(40, *radius_m);
             }
-            Drawn::Solid { corners: [a, b, c, d] } => {
+            Drawn::Solid {
+                corners: [a, b, c, d],
+            } => {
                 self.head("SOLID", mark, "AcDbTrace");
                 // DXF names the corners across: the third stands opposite the second's neighbour.
                 for (code, corner) in (10..).zip([a, b, d, c]) {

@@ -162,10 +162,7 @@ mod tests {
         };
         assert_eq!(seed_at_end.first_above(3), Some(0x51));
         let mut handles = Supply::from(u64::MAX);
-        assert_eq!(
-            (supply.take(), supply.take()),
-            (Some(u64::MAX), None)
-        );
+        assert_eq!((supply.take(), supply.take()), (Some(u64::MAX), None));
     }
 
     #[test]

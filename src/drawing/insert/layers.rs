@@ -35,7 +35,11 @@ pub(super) fn write_layers(
 /// A layer table with layer "0" and the given ones, for a drawing that has none.
 pub(super) fn write_table(records: &mut Records, supply: &mut Supply, layers: &[&SheetLayer]) {
     let edition = records.style.edition;
-    let table = if edition >= Edition::R13 { supply.take() } else { None };
+    let table = if edition >= Edition::R13 {
+        supply.take()
+    } else {
+        None
+    };
     records.text(0, "TABLE");
     records.text(2, "LAYER");
     records.handle(5, table);

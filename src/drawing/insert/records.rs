@@ -155,8 +155,7 @@ impl Records {
                 self.line.clear();
                 let _ = write!(self.line, "{code:>width$}", width = self.style.code_width);
                 self.bytes.extend_from_slice(self.line.as_bytes());
-                self.bytes
-                    .extend_from_slice(self.style.line_end.as_bytes());
+                self.bytes.extend_from_slice(self.style.line_end.as_bytes());
             }
             Form::Binary { wide: true } => self.bytes.extend_from_slice(&code.to_le_bytes()),
             Form::Binary { wide: false } => match u8::try_from(code) {
@@ -171,9 +170,7 @@ impl Records {
 
     fn end_text(&mut self) {
         match self.style.form {
-            Form::Ascii => self
-                .bytes
-                .extend_from_slice(self.style.line_end.as_bytes()),
+            Form::Ascii => self.bytes.extend_from_slice(self.style.line_end.as_bytes()),
             Form::Binary { .. } => self.bytes.push(0),
         }
     }

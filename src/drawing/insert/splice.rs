@@ -24,7 +24,8 @@ impl Splice {
     /// The changed file. Changes must not overlap; of two that do, the later one keeps what the earlier took away.
     pub(super) fn apply(mut self, original: &[u8]) -> Vec<u8> {
         // Stable, and an insertion stands before the removal that begins where it stands.
-        self.changes.sort_by_key(|(range, _)| (range.start, range.end));
+        self.changes
+            .sort_by_key(|(range, _)| (range.start, range.end));
         let put_in: usize = self.changes.iter().map(|(_, bytes)| bytes.len()).sum();
         let taken_out: usize = self.changes.iter().map(|(range, _)| range.len()).sum();
         let length = (original.len() + put_in).saturating_sub(taken_out);

@@ -15,12 +15,16 @@ pub(super) fn text_value(content: &str, edition: Edition) -> String {
             '%' => {
                 // Two in a row begin a code: three stand for one.
                 let lone = !after_percent
-                    && rest.peek().is_none_or(|&next| next != '%' && sign(next).is_none());
+                    && rest
+                        .peek()
+                        .is_none_or(|&next| next != '%' && sign(next).is_none());
                 value.push_str(if lone { "%" } else { "%%%" });
             }
             // A caret begins the code of a control character; with a blank it is the caret itself.
             '^' => value.push_str("^ "),
-            '\\' if matches!(rest.peek(), Some('U' | 'M' | 'u' | 'm')) => value.push_str("\\U+005C"),
+            '\\' if matches!(rest.peek(), Some('U' | 'M' | 'u' | 'm')) => {
+                value.push_str("\\U+005C")
+            }
             control if control.is_control() => value.push(' '),
             letter => match sign(letter) {
                 Some(code) => value.push_str(code),
