@@ -173,7 +173,10 @@ pub(super) fn place_in_words(bytes: &[u8], form: Form, at: usize) -> String {
     }
 }
 
-const SIGNATURES: [&[u8]; 2] = [b"AutoCAD Binary DXF\r\n\x1a\0", b"AutoCAD Binary DXF\n\x1a\0"];
+const SIGNATURES: [&[u8]; 2] = [
+    b"AutoCAD Binary DXF\r\n\x1a\0",
+    b"AutoCAD Binary DXF\n\x1a\0",
+];
 
 /// A file's form, and the offset of its first tag.
 pub(super) fn form_of(bytes: &[u8]) -> (Form, usize) {
