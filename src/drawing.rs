@@ -3,6 +3,7 @@
 
 mod code_page;
 mod handles;
+mod insert;
 mod names;
 mod refusal;
 mod scan;
@@ -12,6 +13,7 @@ mod tags;
 mod text_decode;
 mod types;
 
+pub use insert::insert;
 pub use refusal::Refusal;
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};
 pub use source::{Source, open};

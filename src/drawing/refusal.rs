@@ -50,4 +50,10 @@ pub enum Refusal {
         /// Line number, or byte offset in a binary file.
         place: String,
     },
+    /// Something to draw lies nowhere.
+    #[error("{what}, and finite numbers were expected; nothing was drawn: check the drawing's unit and coordinates")]
+    NoNumber {
+        /// What was found.
+        what: String,
+    },
 }

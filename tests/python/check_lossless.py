@@ -229,6 +229,8 @@ def check_loading(original, marked):
     if original[0] != marked[0]:
         yield f"a: the original loads {original[0]}, the marked drawing {marked[0]}"
         return
+    if original[2] is None:
+        return
     for code, count in sorted((complaints(marked[2]) - complaints(original[2])).items()):
         yield f"a: the audit has {count} new findings of kind {code}"
 
@@ -275,6 +277,28 @@ def check_handles(original, marked):
         yield f"e: $HANDSEED {seed_after:X} does not lie above the new handles"
 
 
+def check(original_path, marked_path, allow_seed):
+    """Prints what is wrong, or what was found right; 1 or 0."""
+    original_tags = read_tags(original_path.read_bytes())
+    marked_tags = read_tags(marked_path.read_bytes())
+    problems = list(check_bytes(original_tags, marked_tags, allow_seed))
+    problems += check_handles(original_tags[1], marked_tags[1])
+
+    original = load(original_path)
+    marked = load(marked_path)
+    problems += check_loading(original, marked)
+    if original[1] is not None and marked[1] is not None:
+        problems += check_entities(original[1], marked[1], set(handles(original_tags[1])))
+    new_tags = len(marked_tags[1]) - len(original_tags[1])
+
+    for problem in problems:
+        print(f"{marked_path}: {problem}")
+    if problems:
+        return 1
+    print(f"{marked_path}: holds all of the original, which loads {original[0]}; {new_tags} tags more")
+    return 0
+
+
 def main():
     parser = argparse.ArgumentParser(description="Checks that a marked drawing is its original with marks inserted.")
     parser.add_argument("original", type=Path)
@@ -282,24 +306,7 @@ def main():
     parser.add_argument("--allow-seed", action="store_true", help="let the value of $HANDSEED differ")
     options = parser.parse_args()
 
-    original_tags = read_tags(options.original.read_bytes())
-    marked_tags = read_tags(options.marked.read_bytes())
-    problems = list(check_bytes(original_tags, marked_tags, options.allow_seed))
-    problems += check_handles(original_tags[1], marked_tags[1])
-
-    original = load(options.original)
-    marked = load(options.marked)
-    problems += check_loading(original, marked)
-    if original[1] is not None and marked[1] is not None:
-        problems += check_entities(original[1], marked[1], set(handles(original_tags[1])))
-    new_tags = len(marked_tags[1]) - len(original_tags[1])
-
-    for problem in problems:
-        print(f"{options.marked}: {problem}")
-    if problems:
-        return 1
-    print(f"{options.marked}: holds all of the original, which loads {original[0]}; {new_tags} tags more")
-    return 0
+    return check(options.original, options.marked, options.allow_seed)
 
 
 if __name__ == "__main__":
