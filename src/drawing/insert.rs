@@ -189,7 +189,7 @@ fn insert_marks(splice: &mut Splice, scan: &Scan, marks: Records) {
     let mut section = Records::new(marks.style);
     section.text(0, "SECTION");
     section.text(2, "ENTITIES");
-    section.append(marks);
+    section.append(&marks);
     section.text(0, "ENDSEC");
     insert_section(splice, scan, &[scan.objects_start], section);
 }

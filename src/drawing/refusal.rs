@@ -51,7 +51,9 @@ pub enum Refusal {
         place: String,
     },
     /// Something to draw lies nowhere.
-    #[error("{what}, and finite numbers were expected; nothing was drawn: check the drawing's unit and coordinates")]
+    #[error(
+        "{what}, and finite numbers were expected; nothing was drawn: check the drawing's unit and coordinates"
+    )]
     NoNumber {
         /// What was found.
         what: String,

@@ -161,7 +161,7 @@ mod tests {
             ..PLAIN
         };
         assert_eq!(seed_at_end.first_above(3), Some(0x51));
-        let mut handles = Supply::from(u64::MAX);
+        let mut supply = Supply::from(u64::MAX);
         assert_eq!((supply.take(), supply.take()), (Some(u64::MAX), None));
     }
 

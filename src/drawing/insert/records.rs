@@ -86,7 +86,7 @@ impl Records {
     }
 
     /// All that was written elsewhere in the same style.
-    pub(super) fn append(&mut self, others: Self) {
+    pub(super) fn append(&mut self, others: &Self) {
         self.bytes.extend_from_slice(&others.bytes);
     }
 

@@ -1,5 +1,7 @@
 //! Plain text said as the value of a TEXT.
 
+use std::fmt::Write as _;
+
 use super::records::Edition;
 
 /// The value that a reader shows as `content`: ASCII below R2007, where code pages cannot be trusted (others as
@@ -23,7 +25,7 @@ pub(super) fn text_value(content: &str, edition: Edition) -> String {
             // A caret begins the code of a control character; with a blank it is the caret itself.
             '^' => value.push_str("^ "),
             '\\' if matches!(rest.peek(), Some('U' | 'M' | 'u' | 'm')) => {
-                value.push_str("\\U+005C")
+                value.push_str("\\U+005C");
             }
             control if control.is_control() => value.push(' '),
             letter => match sign(letter) {
@@ -49,7 +51,8 @@ fn sign(letter: char) -> Option<&'static str> {
 fn push_escaped(value: &mut String, letter: char) {
     let mut units = [0_u16; 2];
     for unit in letter.encode_utf16(&mut units) {
-        value.push_str(&format!("\\U+{unit:04X}"));
+        // Writing into a string cannot fail.
+        let _ = write!(value, "\\U+{unit:04X}");
     }
 }
 
