@@ -12,6 +12,10 @@ const VERSIONS: [&str; 9] = [
 ];
 
 /// What a drawing of ours has or lacks.
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "every piece is there or not, independently of the others"
+)]
 #[derive(Debug, Clone, Copy)]
 struct Pieces {
     header: bool,
@@ -696,8 +700,8 @@ fn places_that_are_no_numbers_are_refused() {
     assert!(refusal.to_string().contains("TAUT-TABLE"), "{refusal}");
 }
 
-/// Marks every drawing of the folder `DRAWINGS` into the folder `MARKED`, for checks from outside; a drawing that is
-/// refused is named.
+/// Marks every drawing of the folder `DRAWINGS` into the folder `MARKED`, for checks from outside (such as
+/// `tests/python/check_lossless.py`); a drawing that is refused is named in `refused.txt` there.
 #[test]
 #[ignore = "needs folders: DRAWINGS=from MARKED=to cargo test --test insertion -- --ignored"]
 fn mark_a_folder() {
@@ -707,6 +711,7 @@ fn mark_a_folder() {
         .map(|entry| entry.expect("an entry").path())
         .collect();
     paths.sort();
+    let mut refused = String::new();
     for path in paths {
         let name = path.file_name().expect("a name");
         match open(std::fs::read(&path).expect("a file")) {
@@ -716,7 +721,11 @@ fn mark_a_folder() {
                 assert!(again == marked, "{path:?}: a second time differs");
                 std::fs::write(folder("MARKED").join(name), marked).expect("written");
             }
-            Err(refusal) => eprintln!("{path:?} refused: {refusal}"),
+            Err(refusal) => {
+                refused += &path.display().to_string();
+                refused += &format!(": {refusal}\n");
+            }
         }
     }
+    std::fs::write(folder("MARKED").join("refused.txt"), refused).expect("written");
 }

@@ -91,15 +91,21 @@ fn number(handle: &str) -> Option<u64> {
     parse_handle(handle.as_bytes())
 }
 
-/// The sheet's layers that the drawing's layer table has not.
+/// The sheet's layers that the drawing's layer table has not, each once.
 fn lacking_layers<'a>(scan: &Scan, sheet: &'a Sheet) -> Vec<&'a SheetLayer> {
-    let has = |name: &str| {
-        scan.layers
+    let mut lacking: Vec<&SheetLayer> = Vec::new();
+    for layer in &sheet.layers {
+        let same = |name: &str| name.eq_ignore_ascii_case(&layer.name);
+        let there = scan
+            .layers
             .iter()
-            .any(|layer| layer.in_table && layer.name.eq_ignore_ascii_case(name))
-    };
-    let lacks = |layer: &&SheetLayer| !has(&layer.name);
-    sheet.layers.iter().filter(lacks).collect()
+            .any(|own| own.in_table && same(&own.name))
+            || lacking.iter().any(|other| same(&other.name));
+        if !there {
+            lacking.push(layer);
+        }
+    }
+    lacking
 }
 
 fn layers_have_handles(scan: &Scan, edition: Edition) -> bool {
