@@ -237,12 +237,16 @@ impl<'a> Cleaner<'a> {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
-            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"ATTRIB" | b"INSERT" => &[10, 20],
+            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"INSERT" => &[10, 20],
             _ => &[],
         };
         if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
             let found = format!("there is no group {code}, and a coordinate or size was expected");
             return Err((record.type_name, record.start, found));
+        }
+        if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
+            // Its value counts, but it stands nowhere: as good as invisible.
+            self.line(b"70", b"1");
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.

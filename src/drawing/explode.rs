@@ -20,7 +20,7 @@ use crate::finding::{Finding, Level};
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
 /// Entities and inserts that blocks may expand to.
-const MOST_EXPANDED: usize = 2_000_000;
+const MOST_EXPANDED: usize = 1_000_000;
 
 /// What is known of blocks and layers before any record is placed.
 #[derive(Debug)]

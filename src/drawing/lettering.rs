@@ -179,21 +179,17 @@ pub(super) fn of_mtext(text: &MText, placing: &Placing) -> Lettering {
     raw.push_str(&text.text);
     let content = text_lines(&raw);
     let height = text.initial_text_height;
-    let natural = content.lines().map(characters).fold(0.0, f64::max) * CHARACTER_WIDTH * height;
+    let width_of = |text: &str| characters(text) * CHARACTER_WIDTH * height;
+    let natural = content.lines().map(width_of).fold(0.0, f64::max);
+    let longest_word = content.split_whitespace().map(width_of).fold(0.0, f64::max);
     let column = text.reference_rectangle_width;
-    let wraps = column > 0.0 && natural > column;
-    let width = if wraps { column } else { natural };
-    let lines: f64 = content
-        .lines()
-        .map(|line| {
-            let line_width = characters(line) * CHARACTER_WIDTH * height;
-            if wraps {
-                (line_width / column).ceil().clamp(1.0, 1000.0)
-            } else {
-                1.0
-            }
-        })
-        .sum();
+    let width = if column > 0.0 {
+        natural.min(column.max(longest_word))
+    } else {
+        natural
+    };
+    let lines_of = |line: &str| (width_of(line) / width).ceil().clamp(1.0, 1000.0);
+    let lines: f64 = content.lines().map(lines_of).sum();
     let spacing = if text.line_spacing_factor > 0.0 {
         text.line_spacing_factor
     } else {

@@ -123,9 +123,12 @@ fn code_page_finding(scan: &Scan, losses: &Losses) -> Option<Finding> {
         None => "their bytes are not of the drawing's code page".to_owned(),
     };
     let what = if losses.guessed > 0 {
-        format!("{} texts hold characters beyond ASCII", losses.guessed)
+        format!(
+            "there are characters beyond ASCII in {} text(s)",
+            losses.guessed
+        )
     } else {
-        "names of layers or blocks hold characters beyond ASCII".to_owned()
+        "there are characters beyond ASCII in names of layers or blocks".to_owned()
     };
     Some(Finding::new(
         &TEXT_CODE_PAGE,

@@ -29,7 +29,7 @@ pub static BLOCK_IN_ITSELF: Rule = Rule {
 /// More than can be expanded.
 pub static BLOCK_TOO_MANY: Rule = Rule {
     name: "block-too-many",
-    meaning: "Block inserts expand to more than two million entities; the rest is left out.",
+    meaning: "Block inserts expand to more than a million entities; the rest is left out.",
 };
 
 /// An insert of a block that the drawing does not hold.
