@@ -41,7 +41,7 @@ pub(super) fn text_value(content: &str, edition: Edition) -> String {
 
 fn sign(letter: char) -> Option<&'static str> {
     match letter {
-        '\u{2300}' | '\u{2205}' => Some("%%c"),
+        'Ø' | '\u{2300}' | '\u{2205}' => Some("%%c"),
         '°' => Some("%%d"),
         '±' => Some("%%p"),
         _ => None,
