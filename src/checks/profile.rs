@@ -37,6 +37,9 @@ pub static HOGGING_RADIUS: Rule = Rule {
 /// Overruns below this are rounding, metres.
 const ROUNDING_M: f64 = 1e-6;
 
+/// Crests nearer than this are one high point, metres.
+const ONE_CREST_M: f64 = 1e-3;
+
 /// Two bad places nearer than this are one place, metres.
 const ONE_PLACE_M: f64 = 1.0;
 
@@ -107,7 +110,7 @@ pub(super) fn height_outside_cover(
         let stretches = ground.thickness_along(chords);
         let mut first = 0;
         for span in &profile.spans {
-            let end_m = span.start_m + span.length_m;
+            let end_m = span.end_m();
             while stretches
                 .get(first)
                 .is_some_and(|held| held.to_m <= span.start_m)
@@ -198,9 +201,7 @@ fn overrun_in(span: &Span, stretch: &Stretch<Option<f64>>, job: &Job) -> Option<
         .into_iter()
         .flatten()
         .filter_map(|along_m| {
-            let level_m = span.level_m
-                + span.slope * along_m
-                + 0.5 * span.curvature_per_m * along_m * along_m;
+            let level_m = span.level_at(along_m);
             let station_m = span.start_m + along_m;
             overrun_at(station_m, level_m, stretch.holds, span.curvature_per_m, job)
         })
@@ -283,11 +284,11 @@ pub(super) fn hogging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
         .map(|span| (crest_m(span), -1.0 / span.curvature_per_m))
         .filter(|&(_, radius_m)| radius_m < limits.hogging_radius_warning_m - ROUNDING_M)
         .collect();
-    // Both sides of one high point are one place.
+    // Both sides of one high point, and pieces cut where the plan line turns, are one place.
     let mut crests: Vec<(f64, f64)> = Vec::new();
     for next in tight {
         match crests.last_mut() {
-            Some(last) if next.0 - last.0 < ROUNDING_M => last.1 = last.1.min(next.1),
+            Some(last) if (next.0 - last.0).abs() < ONE_CREST_M => last.1 = last.1.min(next.1),
             _ => crests.push(next),
         }
     }
@@ -318,9 +319,9 @@ pub(super) fn hogging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
     ))
 }
 
-/// Where a hogging piece is highest, metres of plan line.
+/// Where a hogging parabola is level, metres of plan line; also where only a part of it is this piece.
 fn crest_m(span: &Span) -> f64 {
-    span.start_m + (-span.slope / span.curvature_per_m).clamp(0.0, span.length_m)
+    span.start_m - span.slope / span.curvature_per_m
 }
 
 #[cfg(test)]
@@ -370,8 +371,8 @@ mod tests {
 
     /// A level line at a height above the soffit of a slab 200 mm thick.
     fn level(height_m: f64) -> Profile {
-        Profile {
-            spans: vec![Span {
+        Profile::new(
+            vec![Span {
                 start_m: 0.0,
                 length_m: 10.0,
                 level_m: height_m - 0.2,
@@ -379,8 +380,8 @@ mod tests {
                 curvature_per_m: 0.0,
                 plan_curvature_per_m: 0.0,
             }],
-            bends: Vec::new(),
-        }
+            Vec::new(),
+        )
     }
 
     #[test]

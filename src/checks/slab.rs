@@ -251,8 +251,8 @@ fn samples_m(stretch: &Stretch<bool>, chords: &Chords) -> Vec<f64> {
         reason = "clamped to 1..=4096"
     )]
     let count = (length_m / STEP_M).ceil().clamp(1.0, 4096.0) as u32;
-    let steps = (0..=count)
-        .map(|step| stretch.from_m + length_m * f64::from(step) / f64::from(count));
+    let steps =
+        (0..=count).map(|step| stretch.from_m + length_m * f64::from(step) / f64::from(count));
     let vertices = chords
         .0
         .iter()

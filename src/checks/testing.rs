@@ -92,10 +92,7 @@ pub(super) fn high_to_low(l_m: f64, h_m: f64, a_m: f64) -> Profile {
         curvature_per_m: -join_slope / (l_m - a_m),
         plan_curvature_per_m: 0.0,
     };
-    Profile {
-        spans: vec![hogging, sagging],
-        bends: Vec::new(),
-    }
+    Profile::new(vec![hogging, sagging], Vec::new())
 }
 
 /// Forces in five strands of 98.7 mm² jacked from station 0.
