@@ -21,7 +21,7 @@ const DRAFTING_RAD: f64 = 0.5 * std::f64::consts::PI / 180.0;
 struct Turn {
     station_m: f64,
     radius_m: f64,
-    turn_rad: f64,
+    angle_rad: f64,
     bare: bool,
 }
 
@@ -42,7 +42,7 @@ fn turns(path: &Path) -> Vec<Turn> {
         .map(|corner| Turn {
             station_m: corner.station_m,
             radius_m: corner.fillet_radius_m,
-            turn_rad: corner.turn_rad.abs(),
+            angle_rad: corner.turn_rad.abs(),
             bare: true,
         })
         .collect();
@@ -66,15 +66,15 @@ fn turns(path: &Path) -> Vec<Turn> {
         if goes_on {
             continue;
         }
-        let turn_rad: f64 = curve.iter().map(|arc| arc.2.abs()).sum();
+        let angle_rad: f64 = curve.iter().map(|arc| arc.2.abs()).sum();
         let tightest = curve.iter().copied().min_by(|a, b| a.1.total_cmp(&b.1));
         if let Some((station_m, radius_m, _)) = tightest
-            && turn_rad >= DRAFTING_RAD
+            && angle_rad >= DRAFTING_RAD
         {
             found.push(Turn {
                 station_m,
                 radius_m,
-                turn_rad,
+                angle_rad,
                 bare: false,
             });
         }
@@ -90,7 +90,7 @@ pub(super) fn plan_radius(worked: &Worked, job: &Job) -> Option<Finding> {
         .filter(|turn| turn.radius_m < limit_m - 1e-6)
         .collect();
     let (worst, others) = worst_of(tight, |turn| -turn.radius_m, |turn| turn.station_m)?;
-    let degrees = worst.turn_rad.to_degrees();
+    let degrees = worst.angle_rad.to_degrees();
     let found = if worst.bare {
         format!(
             "the plan line turns {degrees:.1}° at a bare vertex, where the largest fillet that fits its legs has a radius of \

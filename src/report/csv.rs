@@ -1,5 +1,6 @@
 //! The result as CSV tables (RFC 4180), one for each reader: units in the header, numbers rounded to what is measured.
 
+use super::plain;
 use super::record::{EndRecord, FindingRecord, TendonRecord};
 use crate::analysis::{Analysis, pair};
 use crate::floor::{EndKind, PointKind, Run};
@@ -185,12 +186,15 @@ pub fn findings_csv(analysis: &Analysis) -> String {
 }
 
 /// A text cell. A spreadsheet runs a cell that begins as a formula does, and this text may come from the drawing: an
-/// apostrophe keeps it text.
+/// apostrophe keeps it text. Control characters are written out, line ends kept.
 fn text(content: &str) -> String {
-    if content.starts_with(['=', '+', '-', '@', '\t', '\r', '\n']) {
-        format!("'{content}")
+    let lines: Vec<String> = content.split('\n').map(plain).collect();
+    let shown = lines.join("\n");
+    // Blanks before the sign do not stop every spreadsheet.
+    if shown.trim_start().starts_with(['=', '+', '-', '@']) {
+        format!("'{shown}")
     } else {
-        content.to_owned()
+        shown
     }
 }
 
@@ -252,9 +256,10 @@ mod tests {
 
     #[test]
     fn a_cell_that_a_spreadsheet_would_run_is_kept_text() {
-        for evil in ["=1+1", "+1", "-1", "@SUM(A1)", "\t=1"] {
+        for evil in ["=1+1", "+1", "-1", "@SUM(A1)", " =1", "\n=1"] {
             assert_eq!(text(evil), format!("'{evil}"));
         }
+        assert_eq!(text("\t=1"), "\\t=1");
         assert_eq!(text("D012"), "D012");
     }
 

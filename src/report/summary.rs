@@ -48,25 +48,22 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis) -> String {
         .iter()
         .filter(|result| result.forces.is_some())
         .count();
-    let missing = tendons.len().saturating_sub(worked);
-    let mut text = format!(
-        "{}: {} tendon lines ({banded} banded, {} distributed)",
+    let stand = if stand_for == tendons.len() as u64 {
+        String::new()
+    } else {
+        format!(" that stand for {stand_for} tendons")
+    };
+    let rest = if worked == tendons.len() {
+        ""
+    } else {
+        "; what the others lack is among the findings"
+    };
+    format!(
+        "{}: {} tendon lines ({banded} banded, {} distributed){stand}.\nForces were worked out for {worked} of them{rest}.\n",
         plain(&facts.file),
         tendons.len(),
         tendons.len() - banded
-    );
-    if stand_for != tendons.len() as u64 {
-        text.push_str(&format!(" that stand for {stand_for} tendons"));
-    }
-    text.push_str(&format!(
-        ".\nForces were worked out for {worked} of them{}\n",
-        if missing == 0 {
-            ".".to_owned()
-        } else {
-            format!("; {missing} lack something, see the findings.")
-        }
-    ));
-    text
+    )
 }
 
 /// Tendons with the greatest share of jacking force lost to angle alone, worst first.
@@ -146,7 +143,7 @@ fn findings(findings: &[Finding]) -> String {
             .count()
     };
     format!(
-        "Findings: {} at error level, {} at warning level, {} notes.\n{}",
+        "Findings: errors {}, warnings {}, notes {}.\n{}",
         count(Level::Error),
         count(Level::Warning),
         count(Level::Note),
