@@ -1,5 +1,6 @@
 //! The job: what the office, the system and the standard say, resolved. No option with a default is left open here.
 
+mod default;
 mod resolved;
 
 pub use resolved::{
