@@ -165,12 +165,7 @@ mod tests {
                 .iter()
                 .enumerate()
                 .map(|(index, &(x, weight, _))| {
-                    let both = x.powi(degree)
-                        + if index > 0 {
-                            (-x).powi(degree)
-                        } else {
-                            0.0
-                        };
+                    let both = x.powi(degree) + if index > 0 { (-x).powi(degree) } else { 0.0 };
                     weight * both
                 })
                 .sum();

@@ -27,15 +27,12 @@ pub(super) fn turned_at(spans: &[Span], corners: &[Corner]) -> Vec<Bend> {
     let mut corners = corners.iter().peekable();
     for (index, span) in spans.iter().enumerate() {
         let end_m = span.end_m();
-        while let Some(corner) =
-            corners.next_if(|corner| corner.station_m < end_m - SAME_PLACE_M)
-        {
+        while let Some(corner) = corners.next_if(|corner| corner.station_m < end_m - SAME_PLACE_M) {
             let slope = span.slope_at(corner.station_m - span.start_m);
             push(&mut bends, corner.station_m, slope, slope, corner.turn_rad);
         }
         let mut turn_rad = 0.0;
-        while let Some(corner) =
-            corners.next_if(|corner| corner.station_m <= end_m + SAME_PLACE_M)
+        while let Some(corner) = corners.next_if(|corner| corner.station_m <= end_m + SAME_PLACE_M)
         {
             turn_rad += corner.turn_rad;
         }
@@ -52,13 +49,7 @@ pub(super) fn turned_at(spans: &[Span], corners: &[Corner]) -> Vec<Bend> {
     bends
 }
 
-fn push(
-    bends: &mut Vec<Bend>,
-    station_m: f64,
-    slope_before: f64,
-    slope_after: f64,
-    turn_rad: f64,
-) {
+fn push(bends: &mut Vec<Bend>, station_m: f64, slope_before: f64, slope_after: f64, turn_rad: f64) {
     let angle_rad = angle_between_rad(slope_before, slope_after, turn_rad);
     if angle_rad > BEND_RAD {
         bends.push(Bend {

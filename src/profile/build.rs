@@ -183,10 +183,7 @@ impl SpanEnds {
                     point.station_m > self.from.station_m && point.station_m < self.to.station_m
                 })
                 .filter_map(|point| {
-                    Some((
-                        (point.station_m - high.station_m).abs(),
-                        point.level_m()?,
-                    ))
+                    Some(((point.station_m - high.station_m).abs(), point.level_m()?))
                 })
                 .collect();
             fitted_m(high.level_m, low.level_m, length_m, &supports)

@@ -38,9 +38,7 @@ impl Profile {
 
     /// Index of the piece that holds a station (the later of two that meet there), and the plan distance from its start.
     pub fn locate(&self, station_m: f64) -> (usize, f64) {
-        let after = self
-            .spans
-            .partition_point(|span| span.start_m <= station_m);
+        let after = self.spans.partition_point(|span| span.start_m <= station_m);
         let index = after.saturating_sub(1);
         let along_m = self.spans.get(index).map_or(0.0, |span| {
             (station_m - span.start_m).clamp(0.0, span.length_m)
