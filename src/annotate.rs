@@ -1,1 +1,64 @@
 //! Decides what to draw back onto the plan; knows nothing of DXF.
+
+mod extension;
+mod figures;
+mod findings;
+mod forces;
+mod lanes;
+mod layers;
+mod legend;
+mod place;
+mod profile3d;
+mod ramp;
+mod table;
+mod words;
+
+use geo::Coord;
+
+use crate::analysis::Analysis;
+use crate::drawing::Sheet;
+use crate::job::Job;
+
+use place::{Extent, Room};
+
+/// Draws a floor's results: forces, extensions, curves in space, findings, legend and table, in metres.
+///
+/// `occupied` holds the corners of the drawing's own texts: what is written keeps clear of them as far as it can, and
+/// their usual height is the height of the figures. The sheet follows the floor's order, so it is the same for the
+/// same floor.
+pub fn draw(analysis: &Analysis, occupied: &[[Coord<f64>; 4]], job: &Job) -> Sheet {
+    let text_m = lanes::text_height_m(occupied);
+    let mut room = Room::new(&analysis.floor, occupied);
+    let lanes = lanes::lanes(&analysis.floor, &room, text_m);
+
+    let mut marks = forces::lengths(analysis, &lanes);
+    // What must be said takes its place before what may be left out.
+    let extensions = extension::texts(analysis, &lanes, &mut room);
+    let rings = findings::rings(analysis, text_m, &mut room);
+    marks.extend(figures::figures(analysis, &lanes, &mut room));
+    marks.extend(extensions);
+    marks.extend(profile3d::curves(analysis));
+    marks.extend(rings);
+
+    let floor = Extent::of_floor(&analysis.floor, occupied, &marks);
+    let letter_m = words::table_letter_m(&floor);
+    let legend = legend::legend(analysis, job, letter_m);
+    let table = table::table(analysis, letter_m);
+    let apart_m = 6.0 * letter_m;
+    let size_m = (
+        legend.width_m + apart_m + table.width_m,
+        legend.height_m.max(table.height_m),
+    );
+    let corner = floor.beside(occupied, size_m, apart_m);
+    let beyond = Coord {
+        x: corner.x + legend.width_m + apart_m,
+        y: corner.y,
+    };
+    marks.extend(legend.moved_to(corner));
+    marks.extend(table.moved_to(beyond));
+
+    Sheet {
+        layers: layers::layers(),
+        marks,
+    }
+}

@@ -1,0 +1,191 @@
+//! The legend: what the colours and figures mean, what was assumed, and what this is not.
+
+use geo::Coord;
+
+use super::place::Block;
+use super::{layers, ramp, words};
+use crate::analysis::Analysis;
+use crate::drawing::{Align, Drawn};
+use crate::finding::Level;
+use crate::job::{Datum, FromFace, Job, Wobble};
+
+/// Heading of legend and table; no file name and no date, so that the same floor gives the same drawing.
+pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
+/// Letters in a line.
+const LINE: usize = 56;
+/// Assumptions printed before the rest is only counted.
+const MOST_ASSUMPTIONS: usize = 12;
+/// From line to line, in letter heights.
+const PITCH: f64 = 1.7;
+
+const CAUTIONS: [&str; 3] = [
+    "A drawing check, not a design certificate: strength, punching, deflection, anchorage zones and fire are not \
+     looked at. The engineer responsible decides, under the local code.",
+    "A stressed tendon stores great energy: nobody behind, in line with or above a jack or the tendon's line; concrete \
+     strength proven in writing first; only trained crews stress, cut or de-tension.",
+    "Forces follow from the heights as drawn; what is built may differ.",
+];
+
+/// The legend as a block, with letters of the given height.
+pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
+    let mut column = Column::new(letter_m);
+    column.heading(HEADING);
+    column.sentence("Colours: service force (after all losses) left along each tendon, % of its jacking force");
+    for class in 0..ramp::RAMP.len() {
+        column.patch(class);
+    }
+    column.gap();
+    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons");
+    column.sentence("ext 180 (net 174) mm: extension at a live end before (after) wedge draw-in");
+    column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");
+    for line in without_forces(analysis) {
+        column.sentence(&line);
+    }
+    column.gap();
+    for (level, what) in [
+        (Level::Error, "error: cannot be built or worked out as drawn"),
+        (Level::Warning, "warning: outside usual practice"),
+        (Level::Note, "note: worth knowing"),
+    ] {
+        column.ring(level, what);
+    }
+    let placeless = analysis.findings.iter().filter(|f| f.place.is_none());
+    let placeless = placeless.count();
+    if placeless > 0 {
+        column.sentence(&format!("{placeless} of the findings have no place on the plan: see the list of findings"));
+    }
+    column.gap();
+    for line in inputs(job) {
+        column.sentence(&line);
+    }
+    for line in analysis.assumptions.iter().take(MOST_ASSUMPTIONS) {
+        column.sentence(&format!("Assumed: {line}"));
+    }
+    let more = analysis.assumptions.len().saturating_sub(MOST_ASSUMPTIONS);
+    if more > 0 {
+        column.sentence(&format!("and {more} more assumptions: see the result file"));
+    }
+    column.gap();
+    for caution in CAUTIONS {
+        column.sentence(caution);
+    }
+    column.done()
+}
+
+fn without_forces(analysis: &Analysis) -> Option<String> {
+    let all = analysis.results.len();
+    let none = analysis.results.iter().filter(|r| r.forces.is_none());
+    let none = none.count();
+    (none > 0).then(|| {
+        format!("{none} of {all} tendons have no colour: their forces could not be worked out, see the findings")
+    })
+}
+
+/// What the forces rest on.
+fn inputs(job: &Job) -> Vec<String> {
+    let stressing = &job.stressing;
+    let wobble = match stressing.wobble {
+        Wobble::RadPerM(k) => format!("k {k} rad/m"),
+        Wobble::PerM(k) => format!("K {k} per m"),
+    };
+    let height = &job.conventions.height;
+    let from = match height.from {
+        FromFace::Soffit => "above the local soffit",
+        FromFace::Top => "below the top of the slab",
+    };
+    let to = match height.datum {
+        Datum::Centroid => "centroid of the strands",
+        Datum::DuctUnderside => "underside of the duct",
+    };
+    vec![
+        format!(
+            "Jacking stress {} of strength, friction mu {} per rad, wobble {wobble}, draw-in {:.1} mm",
+            stressing.jacking_ratio,
+            stressing.mu_per_rad,
+            1000.0 * stressing.draw_in_m
+        ),
+        format!("Heights read as {} {from} to the {to}", height.unit.name()),
+    ]
+}
+
+/// A column of lines that grows downwards.
+struct Column {
+    block: Block,
+    letter_m: f64,
+}
+
+impl Column {
+    fn new(letter_m: f64) -> Self {
+        Self {
+            block: Block::default(),
+            letter_m,
+        }
+    }
+
+    fn heading(&mut self, content: &str) {
+        self.line(content, 0.0, 1.5 * self.letter_m);
+        self.gap();
+    }
+
+    fn sentence(&mut self, sentence: &str) {
+        for (number, line) in words::wrap(&words::plain(sentence), LINE).iter().enumerate() {
+            let indent_m = if number == 0 { 0.0 } else { 1.5 * self.letter_m };
+            self.line(line, indent_m, self.letter_m);
+        }
+    }
+
+    fn patch(&mut self, class: usize) {
+        let (width_m, half_m) = (5.0 * self.letter_m, 0.6 * self.letter_m);
+        let y = self.middle(self.letter_m);
+        let corners = [(0.0, -half_m), (width_m, -half_m), (width_m, half_m), (0.0, half_m)];
+        let solid = Drawn::Solid {
+            corners: corners.map(|(x, up)| Coord { x, y: y + up }),
+        };
+        let ink = ramp::class_ink(class);
+        self.block.marks.push(layers::inked(layers::TABLE, ink, solid));
+        let content = format!("{} %", ramp::class_name(class));
+        self.line(&content, 6.5 * self.letter_m, self.letter_m);
+    }
+
+    fn ring(&mut self, level: Level, what: &str) {
+        let radius_m = 0.6 * self.letter_m;
+        let centre = Coord {
+            x: radius_m,
+            y: self.middle(self.letter_m),
+        };
+        let ink = layers::level_ink(level);
+        let circle = Drawn::Circle { centre, radius_m };
+        self.block.marks.push(layers::inked(layers::TABLE, ink, circle));
+        self.line(what, 2.2 * self.letter_m, self.letter_m);
+    }
+
+    fn gap(&mut self) {
+        self.block.height_m += 0.8 * self.letter_m;
+    }
+
+    /// Level of the middle of the next line of that height.
+    fn middle(&self, height_m: f64) -> f64 {
+        -self.block.height_m - PITCH * height_m / 2.0
+    }
+
+    fn line(&mut self, content: &str, indent_m: f64, height_m: f64) {
+        let drawn = Drawn::Text {
+            place: Coord {
+                x: indent_m,
+                y: self.middle(height_m),
+            },
+            height_m,
+            rotation_rad: 0.0,
+            align: Align::MiddleLeft,
+            content: content.to_owned(),
+        };
+        self.block.marks.push(layers::mark(layers::TABLE, drawn));
+        let right_m = indent_m + words::width_m(content, height_m);
+        self.block.width_m = self.block.width_m.max(right_m);
+        self.block.height_m += PITCH * height_m;
+    }
+
+    fn done(self) -> Block {
+        self.block
+    }
+}

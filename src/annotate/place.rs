@@ -1,0 +1,175 @@
+//! Where something may stand: the room that texts and tendons take up, and the extent of what is drawn.
+
+mod boxes;
+mod extent;
+
+use geo::Coord;
+
+use crate::floor::Floor;
+use crate::geometry::{distance_m, step, turn_rad};
+
+pub(super) use boxes::{Boxes, Quad};
+pub(super) use extent::{Block, Extent};
+
+/// Clear distance between two texts, in text heights.
+const TEXT_GAP: f64 = 0.2;
+/// Longest piece of a tendon that is looked up as a whole, metres.
+const PIECE_M: f64 = 2.0;
+
+/// What the sheet is already full of.
+#[derive(Debug)]
+pub(super) struct Room {
+    /// Texts: the drawing's own and those placed so far.
+    texts: Boxes,
+    /// The drawn tendon lines, in short pieces.
+    lines: Boxes,
+    /// The tendon of each piece.
+    tendons: Vec<usize>,
+}
+
+/// A piece of a tendon line near a place.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Piece {
+    /// Index of the tendon in the floor.
+    pub(super) tendon: usize,
+    /// Start.
+    pub(super) from: Coord<f64>,
+    /// End.
+    pub(super) to: Coord<f64>,
+}
+
+impl Room {
+    /// The drawing's own texts and tendon lines.
+    pub(super) fn new(floor: &Floor, occupied: &[Quad]) -> Self {
+        let mut texts = Boxes::new(1.0);
+        for quad in occupied {
+            texts.insert(*quad);
+        }
+        let mut lines = Boxes::new(1.0);
+        let mut tendons = Vec::new();
+        for (index, tendon) in floor.tendons.iter().enumerate() {
+            // A line drawn in another unit must not turn into millions of pieces.
+            let piece_m = PIECE_M.max(tendon.path.length_m() / 2000.0);
+            for line in tendon.path.to_line_string(0.02).lines() {
+                let length_m = distance_m(line.start, line.end);
+                let heading = (line.end.y - line.start.y).atan2(line.end.x - line.start.x);
+                let mut along_m = 0.0;
+                while along_m < length_m {
+                    let next_m = (along_m + piece_m).min(length_m);
+                    let from = step(line.start, heading, along_m);
+                    let to = step(line.start, heading, next_m);
+                    if lines.insert([from, to, to, from]) {
+                        tendons.push(index);
+                    }
+                    along_m = next_m;
+                }
+            }
+        }
+        Self {
+            texts,
+            lines,
+            tendons,
+        }
+    }
+
+    /// Texts that this box would touch, kept clear by part of a text height.
+    pub(super) fn texts_hit(&self, spot: &Spot) -> usize {
+        self.texts.count(&spot.quad(TEXT_GAP * spot.height_m))
+    }
+
+    /// Pieces of tendon lines that this box would touch.
+    pub(super) fn lines_hit(&self, spot: &Spot) -> usize {
+        self.lines.count(&spot.quad(0.0))
+    }
+
+    /// Takes the place for a text.
+    pub(super) fn take(&mut self, spot: &Spot) {
+        self.texts.insert(spot.quad(0.0));
+    }
+
+    /// Pieces of tendon lines within reach of a place, in the floor's order.
+    pub(super) fn pieces_near(&self, place: Coord<f64>, reach_m: f64) -> Vec<Piece> {
+        let quad = Spot::upright(place, 2.0 * reach_m, 2.0 * reach_m).quad(0.0);
+        self.lines
+            .near(&quad)
+            .into_iter()
+            .filter_map(|index| {
+                let [from, to, ..] = *self.lines.quad(index)?;
+                let tendon = *self.tendons.get(index)?;
+                Some(Piece { tendon, from, to })
+            })
+            .collect()
+    }
+}
+
+/// A box for one text: its centre, size and the direction of its base line.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Spot {
+    /// Centre.
+    pub(super) centre: Coord<f64>,
+    /// Along the base line, metres.
+    pub(super) width_m: f64,
+    /// Height of the text, metres.
+    pub(super) height_m: f64,
+    /// Direction of the base line, radians.
+    pub(super) rotation_rad: f64,
+}
+
+impl Spot {
+    /// A box whose base line runs along x.
+    pub(super) fn upright(centre: Coord<f64>, width_m: f64, height_m: f64) -> Self {
+        Self {
+            centre,
+            width_m,
+            height_m,
+            rotation_rad: 0.0,
+        }
+    }
+
+    /// Its corners, grown on all sides.
+    pub(super) fn quad(&self, grow_m: f64) -> Quad {
+        let (across, along) = (self.height_m / 2.0 + grow_m, self.width_m / 2.0 + grow_m);
+        let up = self.rotation_rad + std::f64::consts::FRAC_PI_2;
+        let corner = |a: f64, b: f64| step(step(self.centre, self.rotation_rad, a), up, b);
+        [
+            corner(-along, -across),
+            corner(along, -across),
+            corner(along, across),
+            corner(-along, across),
+        ]
+    }
+}
+
+/// The direction in which a text along a line is read from below or from the right, never upside down:
+/// more than −90° and at most 90°. Just short of upright counts as upright, so that rounding turns no text over.
+pub(super) fn readable_rad(heading_rad: f64) -> f64 {
+    use std::f64::consts::{FRAC_PI_2, PI};
+    const SLACK: f64 = 1e-3;
+    let turned = turn_rad(heading_rad);
+    if turned > FRAC_PI_2 + SLACK {
+        turned - PI
+    } else if turned <= SLACK - FRAC_PI_2 {
+        turned + PI
+    } else {
+        turned
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use std::f64::consts::{FRAC_PI_2, PI};
+
+    #[test]
+    fn no_direction_reads_upside_down() {
+        for degree in -720..=720 {
+            let heading = f64::from(degree).to_radians();
+            let read = readable_rad(heading);
+            assert!(read > -FRAC_PI_2 + 1e-4 && read < FRAC_PI_2 + 2e-3, "{degree}");
+            assert!((heading - read).sin().abs() < 1e-9, "{degree}");
+        }
+        assert!((readable_rad(-FRAC_PI_2) - FRAC_PI_2).abs() < 1e-12);
+        assert!((readable_rad(FRAC_PI_2 + 1e-9) - FRAC_PI_2).abs() < 1e-6);
+        assert!(readable_rad(PI).abs() < 1e-12);
+    }
+}

@@ -1,0 +1,218 @@
+//! The table of tendons: a row each, in the floor's order, in as many columns of rows as the sheet bears.
+
+use std::collections::BTreeMap;
+
+use geo::Coord;
+
+use super::legend::HEADING;
+use super::place::Block;
+use super::{layers, words};
+use crate::analysis::{Analysis, TendonResult, pair};
+use crate::drawing::{Align, Drawn, Mark};
+use crate::floor::{End, EndKind, Tendon};
+use crate::losses::EndForces;
+
+const COLUMNS: usize = 12;
+/// Two lines of heading over each column.
+const HEADS: [[&str; 2]; COLUMNS] = [
+    ["mark", ""],
+    ["strands", ""],
+    ["plan", "m"],
+    ["ends", ""],
+    ["jacking", "kN"],
+    ["service", "least kN"],
+    ["service", "mean kN"],
+    ["start ext mm", "gross (net)"],
+    ["end ext mm", "gross (net)"],
+    ["curvature", "loss %"],
+    ["far end", "left %"],
+    ["find-", "ings"],
+];
+/// Columns of words; numbers stand to the right.
+const WORDS: [usize; 3] = [0, 1, 3];
+/// Rows of one part of the table, and parts before their rows grow more.
+const MOST_ROWS: usize = 60;
+const MOST_PARTS: usize = 10;
+/// Row height, and blank beside a cell's text, in letter heights.
+const PITCH: f64 = 1.8;
+const PAD: f64 = 0.7;
+/// A heavier rule after so many rows leads the eye.
+const RULE_EVERY: usize = 5;
+
+type Row = [String; COLUMNS];
+
+/// The table as a block, with letters of the given height.
+pub(super) fn table(analysis: &Analysis, letter_m: f64) -> Block {
+    let rows = rows(analysis);
+    let widths_m = widths_m(&rows, letter_m);
+    let part_m: f64 = widths_m.iter().sum();
+    let per_part = rows.len().div_ceil(MOST_PARTS).max(MOST_ROWS);
+    let mut block = Block::default();
+    let top_m = 3.0 * letter_m;
+    let title = format!("{HEADING}: table of tendons, forces in kN per tendon");
+    block.width_m = words::width_m(&title, 1.2 * letter_m);
+    let place = Coord {
+        x: 0.0,
+        y: -1.0 * letter_m,
+    };
+    block.marks.push(text(place, 1.2 * letter_m, Align::MiddleLeft, title));
+    for (part, chunk) in (0_u32..).zip(rows.chunks(per_part)) {
+        let left_m = f64::from(part) * (part_m + 3.0 * letter_m);
+        let bottom_m = draw_part(&mut block.marks, chunk, &widths_m, (left_m, top_m), letter_m);
+        block.width_m = block.width_m.max(left_m + part_m);
+        block.height_m = block.height_m.max(bottom_m);
+    }
+    block.height_m = block.height_m.max(top_m);
+    block
+}
+
+/// Draws heading, cells and rules of one part; gives its bottom below the block's top, metres.
+fn draw_part(
+    marks: &mut Vec<Mark>,
+    rows: &[Row],
+    widths_m: &[f64; COLUMNS],
+    (left_m, top_m): (f64, f64),
+    letter_m: f64,
+) -> f64 {
+    let pitch_m = PITCH * letter_m;
+    let right_m = left_m + widths_m.iter().sum::<f64>();
+    let mut rule = |from: (f64, f64), to: (f64, f64)| {
+        let point = |(x, down): (f64, f64)| Coord { x, y: -down };
+        let drawn = Drawn::Line {
+            points: vec![point(from), point(to)],
+            width_m: 0.0,
+            closed: false,
+        };
+        marks.push(layers::mark(layers::TABLE, drawn));
+    };
+    let below = |row: usize| top_m + pitch_m * f64::from(u32::try_from(row).unwrap_or(u32::MAX));
+    let bottom_m = below(rows.len() + HEADS[0].len());
+    let last = rows.len();
+    let ruled = (0..=last).filter(|row| row % RULE_EVERY == 0 || *row == last);
+    for down in ruled.map(|row| below(row + HEADS[0].len())).chain([top_m]) {
+        rule((left_m, down), (right_m, down));
+    }
+    let mut x = left_m;
+    let mut edges = vec![left_m];
+    for width in widths_m {
+        x += width;
+        edges.push(x);
+    }
+    for edge in &edges {
+        rule((*edge, top_m), (*edge, bottom_m));
+    }
+    let heads = (0..HEADS[0].len()).map(|line| HEADS.map(|head| head[line].to_owned()));
+    for (number, row) in heads.chain(rows.iter().cloned()).enumerate() {
+        let middle = -(below(number) + pitch_m / 2.0);
+        for (column, (content, sides)) in row.into_iter().zip(edges.windows(2)).enumerate() {
+            let [from, to] = sides else { continue };
+            if content.is_empty() {
+                continue;
+            }
+            let (x, align) = if WORDS.contains(&column) {
+                (from + PAD * letter_m, Align::MiddleLeft)
+            } else {
+                (to - PAD * letter_m, Align::MiddleRight)
+            };
+            marks.push(text(Coord { x, y: middle }, letter_m, align, content));
+        }
+    }
+    bottom_m
+}
+
+fn text(place: Coord<f64>, height_m: f64, align: Align, content: String) -> Mark {
+    let drawn = Drawn::Text {
+        place,
+        height_m,
+        rotation_rad: 0.0,
+        align,
+        content,
+    };
+    layers::mark(layers::TABLE, drawn)
+}
+
+fn widths_m(rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
+    let mut widths_m = HEADS.map(|head| {
+        let widths = head.map(|line| words::width_m(line, letter_m));
+        widths.into_iter().fold(0.0, f64::max)
+    });
+    for row in rows {
+        for (width, cell) in widths_m.iter_mut().zip(row) {
+            *width = width.max(words::width_m(cell, letter_m));
+        }
+    }
+    widths_m.map(|width| width + 2.0 * PAD * letter_m)
+}
+
+fn rows(analysis: &Analysis) -> Vec<Row> {
+    let mut found: BTreeMap<&str, usize> = BTreeMap::new();
+    for mark in analysis.findings.iter().filter_map(|f| f.tendon.as_deref()) {
+        *found.entry(mark).or_default() += 1;
+    }
+    pair(analysis)
+        .map(|(tendon, result)| row(tendon, result, found.get(tendon.mark.as_str()).copied()))
+        .collect()
+}
+
+fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
+    let forces = result.forces.as_ref();
+    let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
+    let whole = |value: Option<f64>| or_dash(value.map(|kn| format!("{kn:.0}")));
+    let percent = |part: Option<f64>| or_dash(part.map(|share| format!("{:.1}", 100.0 * share)));
+    let least_kn = result
+        .samples
+        .iter()
+        .filter_map(|sample| Some(sample.forces_kn?[3]))
+        .min_by(f64::total_cmp)
+        .filter(|_| forces.is_some());
+    let extension = |at: usize| {
+        or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)))
+    };
+    [
+        words::name(&tendon.mark),
+        strands(tendon),
+        format!("{:.2}", tendon.path.length_m()),
+        tendon.ends.map(|end| end_word(&end)).join("-"),
+        whole(forces.map(|forces| forces.jack_kn)),
+        whole(least_kn),
+        whole(forces.map(|forces| forces.mean_service_kn)),
+        extension(0),
+        extension(1),
+        percent(forces.map(|f| f.totals.friction_curvature_kn / f.jack_kn)),
+        percent(forces.map(|f| f.least_jacking_kn / f.jack_kn)),
+        findings.unwrap_or(0).to_string(),
+    ]
+}
+
+/// `4x5-12.7`: tendons in the line, strands of each, size, as far as the drawing says.
+fn strands(tendon: &Tendon) -> String {
+    let mut words = String::new();
+    if tendon.tendons != 1 {
+        words.push_str(&format!("{}x", tendon.tendons));
+    }
+    match tendon.strands {
+        Some(strands) => words.push_str(&strands.to_string()),
+        None => words.push('?'),
+    }
+    if let Some(size) = &tendon.strand {
+        words.push('-');
+        words.push_str(&words::name(size));
+    }
+    words
+}
+
+fn end_word(end: &End) -> &'static str {
+    match end.kind {
+        Some(EndKind::Live) => "live",
+        Some(EndKind::Dead) => "dead",
+        None => "?",
+    }
+}
+
+fn extension(end: &EndForces) -> Option<String> {
+    let gross_mm = end.extension_mm?;
+    Some(match end.extension_net_mm {
+        Some(net_mm) => format!("{gross_mm:.0} ({net_mm:.0})"),
+        None => format!("{gross_mm:.0}"),
+    })
+}
