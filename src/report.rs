@@ -1,11 +1,13 @@
 //! Results as text, one format per file; takes values, gives strings, opens no file.
 
+mod calculation;
 mod csv;
 mod json;
 mod record;
 mod summary;
 mod table;
 
+pub use calculation::calculation;
 pub use csv::{extensions_csv, findings_csv, points_csv, tendons_csv};
 pub use json::json;
 pub use summary::{CAUTIONS, summary};
