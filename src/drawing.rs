@@ -1,8 +1,34 @@
 //! DXF in: shapes and texts in metres, each with handle and layer. DXF out: lossless insertion of a [`Sheet`].
 //! Knows nothing of tendons; the only stage that says `dxf::`.
 
+mod clean;
+mod code_page;
+mod convert;
+mod curves;
+mod explode;
+mod handles;
+mod insert;
+mod lettering;
+mod names;
+mod placing;
+mod read;
+mod refusal;
+mod rules;
+mod scan;
 mod sheet;
+mod source;
+mod spline;
+mod tags;
+mod text_decode;
 mod types;
+mod wanted;
+mod windows;
 
+pub use insert::insert;
+pub use read::read;
+pub use refusal::Refusal;
+pub use rules::READING_RULES;
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};
+pub use source::{Source, open};
 pub use types::{Drawing, Insert, Layer, Shape, ShapeKind, Text, UnitFrom};
+pub use wanted::Wanted;

@@ -1,9 +1,47 @@
 //! The job: what the office, the system and the standard say, resolved. No option with a default is left open here.
+//!
+//! One table, [`keys::KEYS`], describes every key of `tautplan.toml`: where it stands, what may be typed, what it means
+//! and where its default comes from. [`read`] walks a file against it, [`file`] writes a file from it.
+
+use std::collections::BTreeSet;
 
 mod default;
+pub mod key;
+pub mod keys;
+mod problems;
+mod reading;
 mod resolved;
+mod strands;
+mod values;
+mod writing;
 
+pub use problems::{Problem, Problems};
+pub use reading::read;
 pub use resolved::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
     Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
 };
+pub use writing::{Proposal, file};
+
+/// A job file read: the whole job, and which of its keys the file gave.
+#[derive(Debug, Clone, Default)]
+pub struct Resolved {
+    /// The job, every value present.
+    pub job: Job,
+    /// Paths of the keys that the file gave, such as `stressing.mu_per_rad`.
+    pub given: BTreeSet<String>,
+}
+
+impl Resolved {
+    /// A sentence for every default that is used, with its source.
+    pub fn assumptions(&self) -> Vec<String> {
+        writing::assumptions(self)
+    }
+}
+
+impl Job {
+    /// Every value used, under its name in the result, in the order of the keys.
+    pub fn inputs(&self) -> Vec<(String, serde_json::Value)> {
+        keys::inputs(self)
+    }
+}

@@ -35,6 +35,12 @@ pub enum CannotStress {
     /// The draw-in is longer than the strand's whole extension.
     #[error("the draw-in takes up the whole extension and leaves no force")]
     DrawInTakesAll,
+    /// Friction leaves next to nothing of the jacking force at the far end.
+    #[error("friction leaves nothing of the jacking force at the far end")]
+    FrictionTakesAll,
+    /// Shortening and long-term losses are larger than the force after lock-off.
+    #[error("shortening and long-term losses take all the force that lock-off leaves somewhere")]
+    LossesTakeAll,
 }
 
 /// Forces of one tendon, each list along the points of the tendon that was given.

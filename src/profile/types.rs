@@ -1,13 +1,26 @@
 //! A tendon's curve in space.
 
 /// A tendon's curve: pieces over plan stations, on each of which the level is one parabola and the plan line is
-/// straight or one arc.
+/// straight or one arc. Made by [`crate::profile::build`] or [`Profile::new`].
 #[derive(Debug, Clone, PartialEq)]
 pub struct Profile {
     /// Pieces, in order, without gaps.
     pub spans: Vec<Span>,
     /// Angles turned at a point (bare plan vertices, breaks in slope), in order of station.
     pub bends: Vec<Bend>,
+    /// Least radius in plan, of arcs and of the fillets that fit bare vertices.
+    pub(super) plan_tightest: Option<Tightest>,
+    /// At each piece's start, and at the end of the last: length in space and angle turned so far, without bends.
+    pub(super) starts: Vec<SoFar>,
+    /// Sum of the bends before each bend, and of all, radians.
+    pub(super) bends_before_rad: Vec<f64>,
+}
+
+/// Length and smooth angle from station 0.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub(super) struct SoFar {
+    pub(super) arc_m: f64,
+    pub(super) angle_rad: f64,
 }
 
 /// One piece: z(x) = level + slope x + curvature x²/2, x the plan distance from its start.
@@ -34,4 +47,13 @@ pub struct Bend {
     pub station_m: f64,
     /// Angle in space, radians, positive.
     pub angle_rad: f64,
+}
+
+/// The tightest place of a curve.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Tightest {
+    /// Radius there, metres.
+    pub radius_m: f64,
+    /// Plan station, metres.
+    pub station_m: f64,
 }

@@ -1,0 +1,152 @@
+//! What the angles alone take from a tendon.
+
+use super::Worked;
+use crate::finding::{Finding, Level, Rule};
+use crate::floor::EndKind;
+use crate::job::Job;
+use crate::losses::Forces;
+use crate::profile::Profile;
+
+/// See [`Rule::meaning`].
+pub static CURVATURE_LOSS: Rule = Rule {
+    name: "curvature-loss",
+    meaning: "From the jack to the point of least force the angles alone take at most limits.curvature_loss_ratio of the \
+              jacking force, 1 − exp(−μ α), and the tendon turns at most limits.angle_per_m_rad per metre.",
+};
+
+/// Ratios nearer to their limit than this are at it.
+const ROUNDING: f64 = 1e-9;
+
+/// How a tendon turns between its (first) live end and the point of least force, and what that costs.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Turning {
+    /// Angle turned in space, radians.
+    pub angle_rad: f64,
+    /// Share of the jacking force lost to that angle alone.
+    pub loss_ratio: f64,
+    /// Angle over the plan distance, radians per metre.
+    pub angle_per_m_rad: f64,
+}
+
+/// How a tendon turns, from its curve and forces; `None` where the point of least force is the jack itself.
+pub fn turning(profile: &Profile, forces: &Forces) -> Option<Turning> {
+    let least_m = forces.least_jacking_station_m;
+    let (angle_rad, distance_m) = if forces.ends[0].kind == EndKind::Live {
+        (profile.angle_rad(least_m), least_m)
+    } else {
+        (
+            profile.angle_from_end_rad(least_m),
+            profile.plan_length_m() - least_m,
+        )
+    };
+    if distance_m <= 0.0 || forces.jack_kn <= 0.0 {
+        return None;
+    }
+    Some(Turning {
+        angle_rad,
+        loss_ratio: forces.totals.friction_curvature_kn / forces.jack_kn,
+        angle_per_m_rad: angle_rad / distance_m,
+    })
+}
+
+pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
+    let forces = worked.forces?;
+    let turning = turning(worked.profile?, forces)?;
+    let limits = &job.limits;
+    let costly = turning.loss_ratio > limits.curvature_loss_ratio + ROUNDING;
+    let winding = turning.angle_per_m_rad > limits.angle_per_m_rad + ROUNDING;
+    if !costly && !winding {
+        return None;
+    }
+    let mut expected = Vec::new();
+    if costly {
+        expected.push(format!(
+            "a loss of at most {:.1} % (limits.curvature_loss_ratio)",
+            100.0 * limits.curvature_loss_ratio
+        ));
+    }
+    if winding {
+        expected.push(format!(
+            "at most {} rad/m (limits.angle_per_m_rad)",
+            limits.angle_per_m_rad
+        ));
+    }
+    Some(worked.finding(
+        &CURVATURE_LOSS,
+        Level::Warning,
+        forces.least_jacking_station_m,
+        format!(
+            "down to the point of least force the tendon turns {:.3} rad, {:.4} rad/m, which alone takes {:.1} % of the \
+             jacking force ({:.1} kN of {:.1} kN); {} was expected",
+            turning.angle_rad,
+            turning.angle_per_m_rad,
+            100.0 * turning.loss_ratio,
+            forces.totals.friction_curvature_kn,
+            forces.jack_kn,
+            expected.join(" and ")
+        ),
+        "look for a height read wrong first; then flatten the drape where it balances more load than it should, straighten \
+         the sweeps in plan, or stress from both ends",
+    ))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::super::testing::{forces, high_to_low, job, straight, worked};
+    use super::*;
+
+    fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
+        let (tendon, mut forces) = (straight(10.0), forces());
+        let profile = high_to_low(10.0, drop_m, 1.0);
+        forces.least_jacking_station_m = 10.0;
+        forces.totals.friction_curvature_kn = loss_ratio * forces.jack_kn;
+        let mut worked = worked(&tendon);
+        worked.profile = Some(&profile);
+        worked.forces = Some(&forces);
+        curvature_loss(&worked, &job())
+    }
+
+    #[test]
+    fn the_share_lost_to_angle_alone_has_its_limit() {
+        let limit = job().limits.curvature_loss_ratio;
+        assert_eq!(found(limit, 0.1), None);
+        let beyond = found(limit + 0.001, 0.1);
+        assert!(
+            beyond.is_some_and(
+                |f| f.level == Level::Warning && f.text.contains("curvature_loss_ratio")
+            )
+        );
+    }
+
+    #[test]
+    fn the_angle_per_metre_has_its_limit_too() {
+        // From high to low the strand turns 2 atan(2h/l) whatever the hogging length is.
+        let drop_at = |angle_rad: f64| 5.0 * (angle_rad / 2.0).tan();
+        let limit_rad = job().limits.angle_per_m_rad * 10.0;
+        assert_eq!(found(0.01, drop_at(limit_rad - 0.001)), None);
+        let beyond = found(0.01, drop_at(limit_rad + 0.001));
+        assert!(beyond.is_some_and(|f| f.text.contains("angle_per_m_rad") && f.text.contains("0.501 rad")));
+    }
+
+    #[test]
+    fn a_tendon_stressed_from_its_far_end_turns_the_same() {
+        let profile = high_to_low(10.0, 0.1, 1.0);
+        let mut forces = forces();
+        forces.least_jacking_station_m = 10.0;
+        let ahead = turning(&profile, &forces);
+        forces.ends.swap(0, 1);
+        forces.least_jacking_station_m = 0.0;
+        let back = turning(&profile, &forces);
+        assert!(
+            ahead
+                .zip(back)
+                .is_some_and(|(a, b)| (a.angle_rad - b.angle_rad).abs() < 1e-12)
+        );
+        forces.least_jacking_station_m = 10.0;
+        assert_eq!(
+            turning(&profile, &forces),
+            None,
+            "nothing between jack and least force"
+        );
+    }
+}

@@ -1,0 +1,390 @@
+//! Records rewritten so that the DXF library reads them right: only the groups that are used, as UTF-8 in ASCII form,
+//! every number checked, every record under a number of our own in place of its handle.
+
+use std::io::Write as _;
+
+use super::code_page::CodePage;
+use super::handles::parse_handle;
+use super::scan::{Entry, Scan};
+use super::tags::{Form, Tag, Tags, place_in_words};
+
+/// What the library loses of a record, kept beside it.
+#[derive(Debug, Clone, Default)]
+pub(super) struct Kept {
+    /// Number of the record's layer.
+    pub(super) layer: u32,
+    /// The record's number among its neighbours.
+    pub(super) number: u32,
+    /// Handle, upper-case hexadecimal without leading zeros.
+    pub(super) handle: Option<String>,
+    /// Number of the block's name, for an insert.
+    pub(super) block: u32,
+    /// For an insert's attributes, in order: layer as written, handle.
+    pub(super) attributes: Vec<(Option<Vec<u8>>, Option<String>)>,
+    /// Offset of the record in the file.
+    pub(super) start: usize,
+}
+
+/// Why a record was left out.
+#[derive(Debug, Clone)]
+pub(super) struct Damage {
+    /// What was left out.
+    pub(super) kept: Kept,
+    /// Type name.
+    pub(super) type_name: String,
+    /// Where the trouble is: line or byte.
+    pub(super) place: String,
+    /// What was found and what was expected.
+    pub(super) found: String,
+}
+
+/// A stream of cleaned records for the library.
+#[derive(Debug)]
+pub(super) struct Cleaner<'a> {
+    bytes: &'a [u8],
+    form: Form,
+    code_page: &'a CodePage,
+    stream: Vec<u8>,
+    kept: Vec<Kept>,
+    /// Strings whose characters had to be guessed.
+    pub(super) guessed: usize,
+}
+
+const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
+const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
+
+/// How a group is passed on.
+#[derive(Clone, Copy, PartialEq, Eq)]
+enum Use {
+    Skip,
+    Number,
+    Short,
+    Text,
+}
+
+impl<'a> Cleaner<'a> {
+    /// An empty stream from a drawing.
+    pub(super) fn new(bytes: &'a [u8], scan: &'a Scan) -> Self {
+        Self {
+            bytes,
+            form: scan.form,
+            code_page: &scan.code_page,
+            stream: HEAD.to_vec(),
+            kept: Vec::new(),
+            guessed: 0,
+        }
+    }
+
+    /// Bytes gathered so far.
+    pub(super) fn len(&self) -> usize {
+        self.stream.len()
+    }
+
+    /// The stream, closed, and what is kept beside each record: record `n` has handle `n + 1`. Empties the cleaner.
+    pub(super) fn take(&mut self) -> (Vec<u8>, Vec<Kept>) {
+        self.stream.extend_from_slice(TAIL);
+        let stream = std::mem::replace(&mut self.stream, HEAD.to_vec());
+        (stream, std::mem::take(&mut self.kept))
+    }
+
+    /// Adds a record with what follows it up to its SEQEND.
+    ///
+    /// # Errors
+    /// A damaged record, which is then not in the stream.
+    pub(super) fn add(&mut self, entry: &Entry) -> Result<(), Box<Damage>> {
+        let mark = self.stream.len();
+        let mut kept = Kept {
+            layer: entry.layer,
+            number: entry.number,
+            block: entry.block,
+            start: entry.start,
+            ..Kept::default()
+        };
+        match self.rewrite(entry, &mut kept) {
+            Ok(()) => {
+                self.kept.push(kept);
+                Ok(())
+            }
+            Err((type_name, at, found)) => {
+                self.stream.truncate(mark);
+                Err(Box::new(Damage {
+                    kept,
+                    type_name: String::from_utf8_lossy(type_name).into_owned(),
+                    place: place_in_words(self.bytes, self.form, at),
+                    found,
+                }))
+            }
+        }
+    }
+
+    fn rewrite(&mut self, entry: &Entry, kept: &mut Kept) -> Result<(), (&'a [u8], usize, String)> {
+        let part = entry.start..entry.end;
+        let mut record = Open::default();
+        let mut sequence = false;
+        for tag in Tags::within(self.bytes, self.form, part) {
+            let Ok(tag) = tag else { break };
+            if tag.code == 0 {
+                if !record.type_name.is_empty() {
+                    self.close(&record)?;
+                }
+                let first = record.type_name.is_empty();
+                record = Open {
+                    type_name: tag.word(),
+                    start: tag.start,
+                    ..Open::default()
+                };
+                if record.type_name == b"SEQEND" {
+                    break;
+                }
+                if !first && !sequence && record.type_name == b"ATTRIB" {
+                    // The library takes attributes only where group 66 announces them.
+                    self.line(b"66", b"1");
+                    sequence = true;
+                }
+                self.line(b"0", record.type_name);
+                if first {
+                    let number = self.kept.len() + 1;
+                    self.line(b"5", format!("{number:X}").as_bytes());
+                    sequence = record.type_name == b"POLYLINE";
+                }
+                if record.type_name == b"ATTRIB" {
+                    kept.attributes.push((None, None));
+                }
+                continue;
+            }
+            self.group(&tag, &mut record, kept)
+                .map_err(|found| (record.type_name, tag.start, found))?;
+        }
+        if !record.type_name.is_empty() && record.type_name != b"SEQEND" {
+            self.close(&record)?;
+        }
+        if sequence {
+            self.line(b"0", b"SEQEND");
+        }
+        Ok(())
+    }
+
+    /// Passes one group on, or keeps it, or leaves it out.
+    fn group(
+        &mut self,
+        tag: &Tag<'a>,
+        record: &mut Open<'a>,
+        kept: &mut Kept,
+    ) -> Result<(), String> {
+        match tag.code {
+            102 => record.in_group = tag.word().starts_with(b"{"),
+            101 => record.past = true,
+            // The second half of an old attribute repeats groups in another sense.
+            100 if tag.word() == b"AcDbXrecord" => record.past = true,
+            75 if record.type_name == b"MTEXT" => record.columns = true,
+            _ => {}
+        }
+        if record.in_group || record.past || tag.code >= 1000 {
+            return Ok(());
+        }
+        match (tag.code, record.type_name) {
+            (5, b"VERTEX") => {}
+            (5, b"ATTRIB") => {
+                if let Some((_, handle)) = kept.attributes.last_mut() {
+                    *handle = handle.take().or(written_handle(tag.word()));
+                }
+            }
+            (5, _) => kept.handle = kept.handle.take().or(written_handle(tag.word())),
+            (8, b"ATTRIB") => {
+                if let Some((layer, _)) = kept.attributes.last_mut() {
+                    *layer = Some(tag.word().to_vec());
+                }
+            }
+            _ => {}
+        }
+        match used(record.type_name, tag.code) {
+            Use::Skip => {}
+            Use::Text => self.text(tag),
+            Use::Short => {
+                let Some(number) = tag.integer() else {
+                    return Err(expected(tag, "a whole number"));
+                };
+                let number = number.clamp(i64::from(i16::MIN), i64::from(i16::MAX));
+                self.line(
+                    tag.code.to_string().as_bytes(),
+                    number.to_string().as_bytes(),
+                );
+                record.justified |= matches!(tag.code, 72..=74) && number != 0;
+            }
+            Use::Number => {
+                let Some(number) = tag.float() else {
+                    return Err(expected(tag, "a finite number"));
+                };
+                if record.leaves_out(tag.code) {
+                    return Ok(());
+                }
+                record.note(tag.code);
+                let word = tag.word();
+                let word = word.strip_prefix(b"+").unwrap_or(word);
+                if word.is_empty() {
+                    let _ = write!(self.stream, "{}\n{number:?}\n", tag.code);
+                } else {
+                    self.line(tag.code.to_string().as_bytes(), word);
+                }
+            }
+        }
+        Ok(())
+    }
+
+    /// Ends a record: what it must have is there, what contradicts is settled.
+    fn close(&mut self, record: &Open<'a>) -> Result<(), (&'a [u8], usize, String)> {
+        let needed: &[i32] = match record.type_name {
+            b"LINE" => &[10, 20, 11, 21],
+            b"ARC" => &[10, 20, 40, 50, 51],
+            b"CIRCLE" => &[10, 20, 40],
+            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"INSERT" => &[10, 20],
+            _ => &[],
+        };
+        if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
+            let found = format!("there is no group {code}, and a coordinate or size was expected");
+            return Err((record.type_name, record.start, found));
+        }
+        if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
+            // Its value counts, but it stands nowhere: as good as invisible.
+            self.line(b"70", b"1");
+        }
+        if record.justified && !(record.has(11) && record.has(21)) {
+            // Without an alignment point the insertion point, left on the base line, is all there is.
+            for code in [&b"72"[..], b"73", b"74"] {
+                if code != b"74" || record.type_name == b"ATTRIB" {
+                    self.line(code, b"0");
+                }
+            }
+        }
+        if record.type_name == b"MTEXT" && record.last_direction == 11 {
+            self.line(b"50", b"0");
+        }
+        if record.type_name == b"MTEXT" && record.last_direction == 50 {
+            for (code, value) in [(&b"11"[..], &b"1"[..]), (b"21", b"0"), (b"31", b"0")] {
+                self.line(code, value);
+            }
+        }
+        Ok(())
+    }
+
+    fn line(&mut self, code: &[u8], value: &[u8]) {
+        self.stream.extend_from_slice(code);
+        self.stream.push(b'\n');
+        self.stream.extend_from_slice(value);
+        self.stream.push(b'\n');
+    }
+
+    /// A string as UTF-8; carets are written so that the library gives them back as they came.
+    fn text(&mut self, tag: &Tag<'a>) {
+        let (text, guessed) = self.code_page.decode(tag.value);
+        self.guessed += usize::from(guessed);
+        let _ = write!(self.stream, "{}\n", tag.code);
+        for byte in text.bytes() {
+            match byte {
+                b'^' => self.stream.extend_from_slice(b"^ "),
+                b'\n' => self.stream.extend_from_slice(b"^J"),
+                b'\r' => {}
+                _ => self.stream.push(byte),
+            }
+        }
+        self.stream.push(b'\n');
+    }
+}
+
+/// The record being rewritten.
+#[derive(Default)]
+struct Open<'a> {
+    type_name: &'a [u8],
+    start: usize,
+    in_group: bool,
+    /// Nothing that follows belongs to the record proper.
+    past: bool,
+    columns: bool,
+    justified: bool,
+    last_direction: i32,
+    /// Which of the groups 10, 20, 11, 21, 40, 50, 51 have been seen.
+    seen: u8,
+}
+
+const NOTED: [i32; 7] = [10, 20, 11, 21, 40, 50, 51];
+
+impl Open<'_> {
+    fn note(&mut self, code: i32) {
+        if let Some(bit) = NOTED.iter().position(|noted| *noted == code) {
+            self.seen |= 1 << bit;
+        }
+        if matches!(code, 11 | 50) {
+            self.last_direction = code;
+        }
+    }
+
+    fn has(&self, code: i32) -> bool {
+        NOTED
+            .iter()
+            .position(|noted| *noted == code)
+            .is_some_and(|bit| self.seen & (1 << bit) != 0)
+    }
+
+    /// Groups that mean something else where they stand.
+    fn leaves_out(&self, code: i32) -> bool {
+        match self.type_name {
+            b"LWPOLYLINE" => matches!(code, 20 | 42) && !self.has(10),
+            b"MTEXT" => code == 50 && self.columns,
+            _ => false,
+        }
+    }
+}
+
+/// Which groups of a record are passed on.
+fn used(type_name: &[u8], code: i32) -> Use {
+    let number = match type_name {
+        b"LINE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31),
+        b"ARC" => matches!(code, 10 | 20 | 30 | 40 | 50 | 51),
+        b"CIRCLE" => matches!(code, 10 | 20 | 30 | 40),
+        b"LWPOLYLINE" => matches!(code, 10 | 20 | 38 | 42),
+        b"POLYLINE" => matches!(code, 10 | 20 | 30),
+        b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
+        b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
+        b"TEXT" | b"ATTRIB" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50),
+        b"MTEXT" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 44 | 50),
+        b"INSERT" => matches!(code, 10 | 20 | 30 | 41..=45 | 50),
+        _ => false,
+    };
+    let flat = !matches!(type_name, b"LINE" | b"VERTEX");
+    if number || (flat && matches!(code, 210 | 220 | 230)) {
+        return Use::Number;
+    }
+    let short = match type_name {
+        b"LWPOLYLINE" | b"POLYLINE" | b"VERTEX" => code == 70,
+        b"SPLINE" => matches!(code, 70 | 71),
+        b"TEXT" => matches!(code, 72 | 73),
+        b"ATTRIB" => matches!(code, 70 | 72 | 74),
+        b"MTEXT" => code == 71,
+        b"INSERT" => matches!(code, 70 | 71),
+        _ => false,
+    };
+    if short {
+        return Use::Short;
+    }
+    let text = match type_name {
+        b"TEXT" => code == 1,
+        b"MTEXT" => matches!(code, 1 | 3),
+        b"ATTRIB" => matches!(code, 1 | 2),
+        b"INSERT" => code == 2,
+        _ => false,
+    };
+    if text { Use::Text } else { Use::Skip }
+}
+
+fn expected(tag: &Tag<'_>, what: &str) -> String {
+    let word = tag.word();
+    let short = word.get(..40).unwrap_or(word).escape_ascii();
+    format!(
+        "group {} holds \"{short}\", and {what} was expected",
+        tag.code
+    )
+}
+
+fn written_handle(word: &[u8]) -> Option<String> {
+    parse_handle(word).map(|handle| format!("{handle:X}"))
+}

@@ -1,0 +1,361 @@
+//! Records in their places: shapes and texts of model space, and of blocks wherever they are inserted.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use dxf::entities::{EntityType, Insert as DxfInsert};
+use geo::Coord;
+
+use super::convert::line_of;
+use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
+use super::names::folded;
+use super::placing::Placing;
+use super::rules::{
+    BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, BLOCK_TOO_MANY, ENTITY_DAMAGED,
+};
+use super::scan::Scan;
+use super::windows::Record;
+use super::{Drawing, Insert, Shape, Text};
+use crate::finding::{Finding, Level};
+
+/// Blocks inside blocks, at most.
+const DEEPEST: usize = 32;
+/// Entities and inserts that blocks may expand to.
+const MOST_EXPANDED: usize = 1_000_000;
+
+/// What is known of blocks and layers before any record is placed.
+#[derive(Debug)]
+pub(super) struct Book<'s> {
+    pub(super) scan: &'s Scan,
+    /// By layer number: whether it is read.
+    pub(super) wanted: Vec<bool>,
+    /// By number of a block's name: the block's number.
+    pub(super) block_of_name: Vec<Option<usize>>,
+    /// By block number: whether it holds entities on layers that are read, itself or through its inserts.
+    pub(super) holds_wanted: Vec<bool>,
+    /// By block number: its records.
+    pub(super) records: Vec<Vec<Record>>,
+    /// Layer numbers by folded name.
+    pub(super) layers: BTreeMap<String, u32>,
+}
+
+impl Book<'_> {
+    fn wants(&self, layer: u32) -> bool {
+        self.wanted.get(layer as usize).copied().unwrap_or(false)
+    }
+
+    fn layer_name(&self, layer: u32) -> String {
+        let layer = self.scan.layers.get(layer as usize);
+        layer.map_or_else(|| "0".to_owned(), |layer| layer.name.clone())
+    }
+
+    fn block_name(&self, name: u32) -> &str {
+        let name = self.scan.block_names.get(name as usize);
+        name.map_or("", String::as_str)
+    }
+
+    fn block(&self, name: u32) -> Option<usize> {
+        self.block_of_name.get(name as usize).copied().flatten()
+    }
+
+    /// The number of a layer by its bytes.
+    fn layer_id(&self, raw: &[u8]) -> Option<u32> {
+        let (name, _) = self.scan.code_page.decode(raw);
+        let name = super::text_decode::plain_name(&name);
+        self.layers.get(&folded(&name)).copied()
+    }
+}
+
+/// Where a record is placed.
+#[derive(Debug, Clone, Copy)]
+struct Frame<'f> {
+    placing: Placing,
+    /// Handle of the outermost insert; `None` in model space.
+    handle: Option<&'f str>,
+    /// Layer of the insert, which layer 0 of its block takes.
+    layer: Option<u32>,
+}
+
+/// Gathers what the records hold.
+#[derive(Debug)]
+pub(super) struct Gatherer<'b> {
+    book: &'b Book<'b>,
+    unit: Placing,
+    zero_layer: Option<u32>,
+    /// Shapes, texts and inserts so far.
+    pub(super) drawing: Drawing,
+    /// What was left out so far.
+    pub(super) findings: Vec<Finding>,
+    left: usize,
+    open: Vec<usize>,
+    told: BTreeSet<(&'static str, usize)>,
+}
+
+impl<'b> Gatherer<'b> {
+    /// An empty drawing with this unit.
+    pub(super) fn new(book: &'b Book<'b>, unit_m: f64) -> Self {
+        Self {
+            book,
+            unit: Placing::scaled(unit_m),
+            zero_layer: book.layers.get("0").copied(),
+            drawing: Drawing::default(),
+            findings: Vec::new(),
+            left: MOST_EXPANDED,
+            open: Vec::new(),
+            told: BTreeSet::new(),
+        }
+    }
+
+    /// Takes a record of model space.
+    pub(super) fn take(&mut self, record: &Record) {
+        let frame = Frame {
+            placing: self.unit,
+            handle: None,
+            layer: None,
+        };
+        self.place(record, &frame);
+    }
+
+    fn place(&mut self, record: &Record, frame: &Frame<'_>) {
+        let own = own_handle(record);
+        let handle = frame.handle.unwrap_or(&own);
+        let layer = self.layer_in(record.kept.layer, frame.layer);
+        if let EntityType::Insert(insert) = &record.entity {
+            self.insert(record, insert, layer, handle, frame);
+            return;
+        }
+        if !self.book.wants(layer) {
+            return;
+        }
+        match &record.entity {
+            EntityType::Text(text) => self.text(of_text(text, &frame.placing), layer, handle),
+            EntityType::MText(text) => self.text(of_mtext(text, &frame.placing), layer, handle),
+            _ => match line_of(record, &frame.placing) {
+                Ok(Some(line)) => self.drawing.shapes.push(Shape {
+                    handle: handle.to_owned(),
+                    layer: self.book.layer_name(layer),
+                    kind: line.kind,
+                    path: line.path,
+                    closed: line.closed,
+                }),
+                Ok(None) => {}
+                Err(reason) => self.findings.push(Finding::new(
+                    &ENTITY_DAMAGED,
+                    Level::Error,
+                    format!(
+                        "entity {handle} on layer {} is left out: {reason}",
+                        self.book.layer_name(layer)
+                    ),
+                    "redraw the entity, or export the drawing again",
+                )),
+            },
+        }
+    }
+
+    fn layer_in(&self, layer: u32, inherited: Option<u32>) -> u32 {
+        if Some(layer) == self.zero_layer {
+            inherited.unwrap_or(layer)
+        } else {
+            layer
+        }
+    }
+
+    fn text(&mut self, lettering: super::lettering::Lettering, layer: u32, handle: &str) {
+        if lettering.content.trim().is_empty() {
+            return;
+        }
+        self.drawing.texts.push(Text {
+            handle: handle.to_owned(),
+            layer: self.book.layer_name(layer),
+            content: lettering.content,
+            place: lettering.place,
+            corners: lettering.corners,
+            height_m: lettering.height_m,
+            rotation_rad: lettering.rotation_rad,
+        });
+    }
+
+    fn insert(
+        &mut self,
+        record: &Record,
+        insert: &DxfInsert,
+        layer: u32,
+        handle: &str,
+        frame: &Frame<'_>,
+    ) {
+        let block = self.book.block(record.kept.block);
+        let wanted = self.book.wants(layer);
+        self.attributes(record, insert, layer, handle, frame);
+        let holds = block.is_some_and(|block| self.book.holds_wanted.get(block) == Some(&true));
+        if !wanted && !holds {
+            return;
+        }
+        if wanted && block.is_none() {
+            self.tell(
+                &BLOCK_MISSING,
+                Level::Note,
+                record.kept.block as usize,
+                || {
+                    (
+                        format!(
+                            "insert {handle} names block {}, which the drawing does not define",
+                            self.book.block_name(record.kept.block)
+                        ),
+                        "bind or purge the reference, unless only its place matters",
+                    )
+                },
+            );
+        }
+        let plane = Placing::extruded(normal(&insert.extrusion_direction), insert.location.z);
+        let plane = frame.placing.after(&plane);
+        let rotation_rad = insert.rotation.to_radians();
+        let attributes: Vec<(String, String)> = insert
+            .attributes()
+            .map(|a| {
+                (
+                    a.attribute_tag.trim().to_owned(),
+                    attribute_content(&a.value),
+                )
+            })
+            .collect();
+        for row in 0..insert.row_count.max(1) {
+            for column in 0..insert.column_count.max(1) {
+                if !self.spend(handle) {
+                    return;
+                }
+                let step = Coord {
+                    x: f64::from(column) * insert.column_spacing,
+                    y: f64::from(row) * insert.row_spacing,
+                };
+                let cell = plane
+                    .after(&Placing::shifted(insert.location.x, insert.location.y))
+                    .after(&Placing::turned(rotation_rad))
+                    .after(&Placing::shifted(step.x, step.y));
+                if wanted {
+                    let along = cell.carry(Coord { x: 1.0, y: 0.0 });
+                    self.drawing.inserts.push(Insert {
+                        handle: handle.to_owned(),
+                        layer: self.book.layer_name(layer),
+                        block: self.book.block_name(record.kept.block).to_owned(),
+                        place: cell.place(Coord { x: 0.0, y: 0.0 }),
+                        rotation_rad: along.y.atan2(along.x),
+                        attributes: attributes.clone(),
+                    });
+                }
+                let Some(block) = block else { continue };
+                let [base_x, base_y] = self
+                    .book
+                    .scan
+                    .blocks
+                    .get(block)
+                    .map_or([0.0; 2], |b| b.base);
+                let placing = cell
+                    .after(&Placing::stretched(
+                        insert.x_scale_factor,
+                        insert.y_scale_factor,
+                    ))
+                    .after(&Placing::shifted(-base_x, -base_y));
+                let inside = Frame {
+                    placing,
+                    handle: Some(handle),
+                    layer: Some(layer),
+                };
+                self.block(block, &inside, handle);
+            }
+        }
+    }
+
+    /// Places a block's records.
+    fn block(&mut self, block: usize, inside: &Frame<'_>, handle: &str) {
+        let book = self.book;
+        let name = book.scan.blocks.get(block).map_or("", |b| b.name.as_str());
+        if self.open.contains(&block) {
+            self.tell(&BLOCK_IN_ITSELF, Level::Warning, block, || {
+                (
+                    format!("block {name} inserts itself (insert {handle}); the inner insert is left out"),
+                    "redefine the block without the insert of itself",
+                )
+            });
+            return;
+        }
+        if self.open.len() >= DEEPEST {
+            self.tell(&BLOCK_TOO_DEEP, Level::Warning, 0, || {
+                (
+                    format!("insert {handle} holds blocks more than {DEEPEST} deep (at block {name}); what lies deeper is left out"),
+                    "explode the innermost blocks",
+                )
+            });
+            return;
+        }
+        let Some(records) = book.records.get(block) else {
+            return;
+        };
+        self.open.push(block);
+        for record in records {
+            if !self.spend(handle) {
+                break;
+            }
+            self.place(record, inside);
+        }
+        self.open.pop();
+    }
+
+    /// An insert's visible attributes as texts.
+    fn attributes(
+        &mut self,
+        record: &Record,
+        insert: &DxfInsert,
+        layer: u32,
+        handle: &str,
+        frame: &Frame<'_>,
+    ) {
+        for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
+            let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
+            let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
+            if attribute.flags & 1 != 0 || !self.book.wants(layer) {
+                continue;
+            }
+            let handle = match own {
+                Some(own) if frame.handle.is_none() => own,
+                _ => handle,
+            };
+            self.text(of_attribute(attribute, &frame.placing), layer, handle);
+        }
+    }
+
+    /// Takes one from what may still be expanded.
+    fn spend(&mut self, handle: &str) -> bool {
+        if self.left == 0 {
+            self.tell(&BLOCK_TOO_MANY, Level::Error, 0, || {
+                (
+                    format!("block inserts expand to more than {MOST_EXPANDED} entities (at insert {handle}); the rest is left out"),
+                    "name fewer layers, or explode and thin out the blocks",
+                )
+            });
+            return false;
+        }
+        self.left -= 1;
+        true
+    }
+
+    /// Says something once for each `about`.
+    fn tell(
+        &mut self,
+        rule: &'static crate::finding::Rule,
+        level: Level,
+        about: usize,
+        words: impl FnOnce() -> (String, &'static str),
+    ) {
+        if self.told.insert((rule.name, about)) {
+            let (text, remedy) = words();
+            self.findings.push(Finding::new(rule, level, text, remedy));
+        }
+    }
+}
+
+/// A record's handle, or `#` and its number.
+fn own_handle(record: &Record) -> String {
+    let kept = &record.kept;
+    kept.handle
+        .clone()
+        .unwrap_or_else(|| format!("#{}", kept.number))
+}

@@ -1,0 +1,844 @@
+//! One pass over a drawing's tags: what it holds, where its parts begin and end, which handles are taken.
+
+use std::ops::Range;
+
+use super::code_page::CodePage;
+use super::handles::{Handles, parse_handle};
+use super::names::{LayerNames, ScannedLayer, Types};
+use super::refusal::Refusal;
+use super::tags::{BadTag, Form, Tag, Tags, form_of, place_in_words};
+
+/// Layers of this tool's own begin so, in any letter case; they are never read and their entities are replaced.
+pub(super) const OWN_LAYER: &str = "TAUT-";
+
+/// What one pass over a drawing finds. Offsets are of the file's bytes; those called `_start` and `_end` point at the
+/// first byte of a `0` code line, where something can be inserted.
+#[derive(Debug, Clone)]
+pub(super) struct Scan {
+    /// `$ACADVER`, such as `AC1027`; empty if the header has none.
+    pub(super) version: String,
+    /// ASCII or binary.
+    pub(super) form: Form,
+    /// Line end of the first line: `\n` or `\r\n`.
+    pub(super) line_end: &'static str,
+    /// Width to which codes are padded with blanks: 3 as a rule, 0 where they are not.
+    pub(super) code_width: usize,
+    /// How strings turn into characters.
+    pub(super) code_page: CodePage,
+    /// `$INSUNITS`.
+    pub(super) insunits: Option<i64>,
+    /// Layers of the table in its order, then those that only entities name, in order of first use.
+    pub(super) layers: Vec<ScannedLayer>,
+    /// Pointers of the record of layer `0` under 390, 347 and 348, as written.
+    pub(super) zero_layer_pointers: [Option<String>; 3],
+    /// Whether the table's layer records carry handles.
+    pub(super) layers_have_handles: bool,
+    /// Entity type names; [`Scan::counts`] indexes them.
+    pub(super) types: Vec<String>,
+    /// Model-space entities by layer, then by type.
+    pub(super) counts: Vec<Vec<usize>>,
+    /// Model-space entities that can be read, in file order.
+    pub(super) entries: Vec<Entry>,
+    /// Blocks, in file order.
+    pub(super) blocks: Vec<BlockEntry>,
+    /// Block names that inserts speak of; [`Entry::block`] indexes them.
+    pub(super) block_names: Vec<String>,
+    /// Layers of attributes that lie on another layer than their insert's, by number of the insert's entry.
+    pub(super) attribute_layers: Vec<(u32, u32)>,
+    /// Whether some string of the pass could not be decoded with certainty.
+    pub(super) names_are_guessed: bool,
+
+    /// `0 SECTION` of BLOCKS.
+    pub(super) blocks_start: Option<usize>,
+    /// `0 SECTION` of the first ENTITIES section.
+    pub(super) entities_start: Option<usize>,
+    /// `0 SECTION` of OBJECTS.
+    pub(super) objects_start: Option<usize>,
+    /// `0 EOF`.
+    pub(super) eof_start: Option<usize>,
+    /// End of the last tag.
+    pub(super) tags_end: usize,
+    /// `0 ENDSEC` of HEADER.
+    pub(super) header_end: Option<usize>,
+    /// `0 ENDSEC` of TABLES.
+    pub(super) tables_end: Option<usize>,
+    /// `0 ENDTAB` of the LAYER table.
+    pub(super) layer_table_end: Option<usize>,
+    /// Handle of the LAYER table, as written.
+    pub(super) layer_table_handle: Option<String>,
+    /// `0 ENDSEC` of the last ENTITIES section.
+    pub(super) entities_end: Option<usize>,
+    /// The value of `$HANDSEED`: where it stands and what it says.
+    pub(super) handseed: Option<(Range<usize>, u64)>,
+    /// Handle of the BLOCK_RECORD of model space, as written; else the owner that a model-space entity names.
+    pub(super) model_space_record: Option<String>,
+    /// Greatest handle or pointer outside the header and outside entities of this tool's own layers.
+    pub(super) greatest_handle: u64,
+    /// Whether new records must carry handles.
+    pub(super) uses_handles: bool,
+    /// Entities on this tool's own layers, each with what follows it up to its SEQEND.
+    pub(super) own_marks: Vec<Range<usize>>,
+    /// Least and greatest handle of those.
+    pub(super) own_handles: Option<(u64, u64)>,
+    /// ENTITIES ends inside a POLYLINE or INSERT sequence without SEQEND.
+    pub(super) open_sequence: bool,
+}
+
+/// An entity with what follows it up to its SEQEND.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Entry {
+    /// Offset of its `0` code line.
+    pub(super) start: usize,
+    /// Offset past it.
+    pub(super) end: usize,
+    /// Number of its layer.
+    pub(super) layer: u32,
+    /// Its number among the model-space entities, from 1, or within its block.
+    pub(super) number: u32,
+    /// Number of the block's name, for an insert.
+    pub(super) block: u32,
+    /// Whether it is an insert.
+    pub(super) is_insert: bool,
+}
+
+/// A block's definition.
+#[derive(Debug, Clone, Default)]
+pub(super) struct BlockEntry {
+    /// Name, decoded.
+    pub(super) name: String,
+    /// Base point, drawing units.
+    pub(super) base: [f64; 2],
+    /// Entities that can be read.
+    pub(super) entries: Vec<Entry>,
+}
+
+/// Entity types that are read.
+pub(super) const READ_TYPES: [&[u8]; 9] = [
+    b"LINE",
+    b"LWPOLYLINE",
+    b"POLYLINE",
+    b"ARC",
+    b"CIRCLE",
+    b"SPLINE",
+    b"TEXT",
+    b"MTEXT",
+    b"INSERT",
+];
+
+/// Scans a drawing.
+///
+/// # Errors
+/// A [`Refusal`] for what is no DXF, is cut short, or holds a line that is no group code.
+pub(super) fn scan(bytes: &[u8]) -> Result<Scan, Refusal> {
+    refuse_at_sight(bytes)?;
+    let mut pass = Pass::new(bytes);
+    for tag in Tags::new(bytes) {
+        match tag {
+            Ok(tag) => pass.take(&tag)?,
+            Err(bad) => return Err(pass.refusal(bad)),
+        }
+    }
+    pass.finish()
+}
+
+fn refuse_at_sight(bytes: &[u8]) -> Result<(), Refusal> {
+    if bytes.iter().all(u8::is_ascii_whitespace) {
+        return Err(Refusal::Empty);
+    }
+    let head = bytes.get(..32).unwrap_or(bytes);
+    if head.starts_with(b"AC") && head.contains(&0) {
+        let version = String::from_utf8_lossy(head.get(..6).unwrap_or(head)).into_owned();
+        return Err(Refusal::Dwg { version });
+    }
+    let found = if head.starts_with(b"\xFF\xFE") || head.starts_with(b"\xFE\xFF") {
+        "UTF-16 text"
+    } else if head.contains(&b'\r') && memchr::memchr(b'\n', bytes).is_none() {
+        "lines that end in a carriage return alone"
+    } else {
+        return Ok(());
+    };
+    Err(Refusal::NotDxf {
+        found: found.into(),
+    })
+}
+
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Section {
+    Outside,
+    Named,
+    Header,
+    Tables,
+    Blocks,
+    Entities,
+    Other,
+}
+
+/// What is being gathered of the record at hand.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Record {
+    /// `0 SECTION`, `0 ENDSEC`, a record of no interest.
+    None,
+    Table,
+    Layer,
+    BlockRecord,
+    Dimstyle,
+    Block,
+    Entity,
+    /// VERTEX, ATTRIB or SEQEND of the entity before it.
+    Follower,
+}
+
+/// The tags of one entity or table record that matter here.
+#[derive(Default)]
+struct Gathered<'a> {
+    start: usize,
+    type_id: usize,
+    name: Option<&'a [u8]>,
+    handle: Option<&'a [u8]>,
+    owner: Option<&'a [u8]>,
+    layer: Option<&'a [u8]>,
+    paper: bool,
+    followed: bool,
+    colour: Option<i64>,
+    flags: i64,
+    base: [f64; 2],
+    pointers: [Option<&'a [u8]>; 3],
+}
+
+struct Pass<'a> {
+    bytes: &'a [u8],
+    scan: Scan,
+    section: Section,
+    record: Record,
+    gathered: Gathered<'a>,
+    /// A POLYLINE or an INSERT still waits for its SEQEND.
+    sequence: Option<&'static [u8]>,
+    attribute_layers: Vec<&'a [u8]>,
+    in_group: bool,
+    embedded: bool,
+    variable: &'a [u8],
+    code_page_name: Option<String>,
+    in_layer_table: bool,
+    section_start: usize,
+    sections: usize,
+    block_open: bool,
+    owner_seen: Option<&'a [u8]>,
+    number: u32,
+    names: LayerNames<'a>,
+    types: Types<'a>,
+    block_names: Types<'a>,
+    handles: Handles,
+}
+
+impl<'a> Pass<'a> {
+    fn new(bytes: &'a [u8]) -> Self {
+        let (form, first) = form_of(bytes);
+        let rest = bytes.get(first..).unwrap_or_default();
+        let line = memchr::memchr(b'\n', rest).map_or(rest, |length| &rest[..length]);
+        let code = line.strip_suffix(b"\r").unwrap_or(line);
+        let padded = code.first().is_some_and(|b| *b == b' ');
+        Self {
+            bytes,
+            scan: Scan {
+                version: String::new(),
+                form,
+                line_end: if line.len() == code.len() {
+                    "\n"
+                } else {
+                    "\r\n"
+                },
+                code_width: if padded { code.len() } else { 0 },
+                code_page: CodePage::of("", None),
+                insunits: None,
+                layers: Vec::new(),
+                zero_layer_pointers: [None, None, None],
+                layers_have_handles: false,
+                types: Vec::new(),
+                counts: Vec::new(),
+                entries: Vec::new(),
+                blocks: Vec::new(),
+                block_names: Vec::new(),
+                attribute_layers: Vec::new(),
+                names_are_guessed: false,
+                blocks_start: None,
+                entities_start: None,
+                objects_start: None,
+                eof_start: None,
+                tags_end: first,
+                header_end: None,
+                tables_end: None,
+                layer_table_end: None,
+                layer_table_handle: None,
+                entities_end: None,
+                handseed: None,
+                model_space_record: None,
+                greatest_handle: 0,
+                uses_handles: false,
+                own_marks: Vec::new(),
+                own_handles: None,
+                open_sequence: false,
+            },
+            section: Section::Outside,
+            record: Record::None,
+            gathered: Gathered::default(),
+            sequence: None,
+            attribute_layers: Vec::new(),
+            in_group: false,
+            embedded: false,
+            variable: b"",
+            code_page_name: None,
+            in_layer_table: false,
+            section_start: 0,
+            sections: 0,
+            block_open: false,
+            owner_seen: None,
+            number: 0,
+            names: LayerNames::default(),
+            types: Types::default(),
+            block_names: Types::default(),
+            handles: Handles::default(),
+        }
+    }
+
+    #[inline]
+    fn take(&mut self, tag: &Tag<'a>) -> Result<(), Refusal> {
+        self.scan.tags_end = tag.end;
+        match tag.code {
+            0 => return self.begin_record(tag),
+            2 if self.section == Section::Named => self.name_section(tag.word()),
+            _ if self.section == Section::Header => self.header_tag(tag),
+            // Coordinates are nearly all of a file and say nothing here.
+            10..=61 | 210..=239 | 40..=49 if self.record != Record::Block => {}
+            _ => self.record_tag(tag),
+        }
+        Ok(())
+    }
+
+    fn header_tag(&mut self, tag: &Tag<'a>) {
+        if tag.code == 9 {
+            self.variable = tag.word();
+            return;
+        }
+        match (self.variable, tag.code) {
+            (b"$ACADVER", 1) => {
+                self.scan.version = String::from_utf8_lossy(tag.word()).to_ascii_uppercase();
+            }
+            (b"$DWGCODEPAGE", 3) => {
+                self.code_page_name = Some(String::from_utf8_lossy(tag.word()).into_owned());
+            }
+            (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
+            (b"$HANDSEED", 5) => {
+                // An unreadable seed stands for none, but its place is where a good one belongs.
+                let seed = parse_handle(tag.word()).unwrap_or(0);
+                self.scan.handseed = Some((tag.value_range(), seed));
+            }
+            _ => {}
+        }
+        self.scan.code_page = CodePage::of(&self.scan.version, self.code_page_name.as_deref());
+    }
+
+    #[inline]
+    fn record_tag(&mut self, tag: &Tag<'a>) {
+        match tag.code {
+            5 if self.record != Record::Dimstyle => self.handles.own(tag.word()),
+            105 => self.handles.own(tag.word()),
+            320..=369 | 390..=399 | 480 | 481 | 1005 => self.handles.pointer(tag.word()),
+            101 => self.embedded = true,
+            102 => self.in_group = tag.word().starts_with(b"{"),
+            _ => {}
+        }
+        if self.record == Record::None || self.in_group || self.embedded || tag.code >= 1000 {
+            return;
+        }
+        if self.record == Record::Follower {
+            if tag.code == 8 && self.sequence == Some(b"INSERT") {
+                self.attribute_layers.push(tag.word());
+            }
+            return;
+        }
+        let held = &mut self.gathered;
+        match tag.code {
+            2 if held.name.is_none() => {
+                held.name = Some(tag.word());
+                if self.record == Record::Table {
+                    self.in_layer_table = tag.word() == b"LAYER";
+                }
+            }
+            5 if held.handle.is_none() => held.handle = Some(tag.word()),
+            8 if held.layer.is_none() => held.layer = Some(tag.word()),
+            10 => held.base[0] = tag.float().unwrap_or(0.0),
+            20 => held.base[1] = tag.float().unwrap_or(0.0),
+            62 => held.colour = tag.integer(),
+            66 => held.followed = tag.integer().is_some_and(|n| n != 0),
+            67 => held.paper = tag.integer() == Some(1),
+            70 => held.flags = tag.integer().unwrap_or(0),
+            330 if held.owner.is_none() => held.owner = Some(tag.word()),
+            390 => held.pointers[0] = Some(tag.word()),
+            347 => held.pointers[1] = Some(tag.word()),
+            348 => held.pointers[2] = Some(tag.word()),
+            _ => {}
+        }
+    }
+
+    fn name_section(&mut self, name: &[u8]) {
+        let start = Some(self.section_start);
+        self.section = match name {
+            b"HEADER" => Section::Header,
+            b"TABLES" => Section::Tables,
+            b"BLOCKS" => {
+                self.scan.blocks_start = self.scan.blocks_start.or(start);
+                Section::Blocks
+            }
+            b"ENTITIES" => {
+                self.scan.entities_start = self.scan.entities_start.or(start);
+                Section::Entities
+            }
+            b"OBJECTS" => {
+                self.scan.objects_start = self.scan.objects_start.or(start);
+                Section::Other
+            }
+            _ => Section::Other,
+        };
+    }
+
+    fn begin_record(&mut self, tag: &Tag<'a>) -> Result<(), Refusal> {
+        let name = tag.word();
+        let in_entities = matches!(self.section, Section::Entities | Section::Blocks);
+        if in_entities
+            && let Some(head) = self.sequence
+            && follows(head, name)
+        {
+            self.record = Record::Follower;
+            self.in_group = false;
+            self.embedded = false;
+            if name == b"SEQEND" {
+                self.sequence = None;
+                // The tags of SEQEND itself still belong to the run: it ends at the next record.
+            }
+            return Ok(());
+        }
+        self.end_record(tag.start);
+        self.in_group = false;
+        self.embedded = false;
+        self.record = Record::None;
+        match name {
+            b"SECTION" => {
+                if self.section == Section::Entities {
+                    let place = place_in_words(self.bytes, self.scan.form, tag.start);
+                    return Err(Refusal::Unclosed { place });
+                }
+                self.end_section(tag.start);
+                self.sections += 1;
+                self.section = Section::Named;
+                self.section_start = tag.start;
+            }
+            b"ENDSEC" => {
+                self.end_section(tag.start);
+                self.section = Section::Outside;
+            }
+            b"EOF" => self.scan.eof_start = Some(tag.start),
+            _ => match self.section {
+                Section::Tables => self.begin_table_record(name, tag.start),
+                Section::Blocks | Section::Entities => self.begin_entity(name, tag.start),
+                _ => {}
+            },
+        }
+        Ok(())
+    }
+
+    fn begin_table_record(&mut self, name: &[u8], start: usize) {
+        if name == b"ENDTAB" {
+            if self.in_layer_table {
+                self.scan.layer_table_end = self.scan.layer_table_end.or(Some(start));
+            }
+            self.in_layer_table = false;
+            return;
+        }
+        self.record = match name {
+            b"TABLE" => Record::Table,
+            b"LAYER" => Record::Layer,
+            b"BLOCK_RECORD" => Record::BlockRecord,
+            b"DIMSTYLE" => Record::Dimstyle,
+            _ => Record::None,
+        };
+        self.gathered = Gathered::default();
+    }
+
+    fn begin_entity(&mut self, name: &'a [u8], start: usize) {
+        self.sequence = None;
+        self.gathered = Gathered {
+            start,
+            ..Gathered::default()
+        };
+        if self.section == Section::Blocks {
+            match name {
+                b"BLOCK" => {
+                    self.record = Record::Block;
+                    return;
+                }
+                b"ENDBLK" => {
+                    self.block_open = false;
+                    return;
+                }
+                _ => {}
+            }
+        }
+        self.record = Record::Entity;
+        self.gathered.type_id = self.types.id(name);
+        self.sequence = match name {
+            b"POLYLINE" => Some(b"POLYLINE"),
+            b"INSERT" => Some(b"INSERT"),
+            _ => None,
+        };
+    }
+
+    /// Settles the record at hand; the next one begins at `end`.
+    fn end_record(&mut self, end: usize) {
+        match self.record {
+            Record::None | Record::Dimstyle => self.handles.settle(false),
+            Record::Table => {
+                if self.in_layer_table && self.scan.layer_table_handle.is_none() {
+                    self.scan.layer_table_handle = text(self.gathered.handle);
+                }
+                self.handles.settle(false);
+            }
+            Record::Layer => self.end_layer(),
+            Record::BlockRecord => {
+                let held = &self.gathered;
+                if held
+                    .name
+                    .is_some_and(|name| name.eq_ignore_ascii_case(b"*Model_Space"))
+                {
+                    self.scan.model_space_record = text(held.handle);
+                }
+                self.handles.settle(false);
+            }
+            Record::Block => {
+                let (name, guessed) = self
+                    .scan
+                    .code_page
+                    .decode(self.gathered.name.unwrap_or_default());
+                self.scan.names_are_guessed |= guessed;
+                self.scan.blocks.push(BlockEntry {
+                    name: super::text_decode::plain_name(&name),
+                    base: self.gathered.base,
+                    entries: Vec::new(),
+                });
+                self.block_open = true;
+                self.handles.settle(false);
+            }
+            Record::Entity | Record::Follower => self.end_entity(end),
+        }
+        self.attribute_layers.clear();
+        self.record = Record::None;
+    }
+
+    fn end_layer(&mut self) {
+        let held = &self.gathered;
+        self.scan.layers_have_handles |= held.handle.and_then(parse_handle).is_some();
+        if held.name == Some(b"0") {
+            self.scan.zero_layer_pointers = held.pointers.map(text);
+        }
+        if let Some(name) = held.name {
+            let id = self.names.id(name, &self.scan.code_page);
+            self.names.describe(id, |layer| {
+                layer.in_table = true;
+                layer.handle = text(held.handle);
+                layer.colour = held.colour;
+                layer.flags = held.flags;
+            });
+        }
+        self.handles.settle(false);
+    }
+
+    fn end_entity(&mut self, end: usize) {
+        let held = &self.gathered;
+        let layer = self
+            .names
+            .id(held.layer.unwrap_or(b"0"), &self.scan.code_page);
+        let own = self.section == Section::Entities && self.names.is_own(layer);
+        self.handles.settle_entity(own, held.handle);
+        if own {
+            self.scan.own_marks.push(held.start..end);
+            return;
+        }
+        let in_block = self.section == Section::Blocks;
+        if in_block != self.block_open || held.paper {
+            return;
+        }
+        let is_insert = self.types.is(held.type_id, b"INSERT");
+        let block = match held.name {
+            Some(name) if is_insert => self.block_names.id(name),
+            _ => 0,
+        };
+        let mut entry = Entry {
+            start: held.start,
+            end,
+            layer,
+            number: 0,
+            block: to_u32(block),
+            is_insert,
+        };
+        let reads = self.types.is_read(held.type_id);
+        if in_block {
+            if let Some(block) = self.scan.blocks.last_mut()
+                && reads
+            {
+                entry.number = to_u32(block.entries.len()) + 1;
+                block.entries.push(entry);
+            }
+            return;
+        }
+        self.number += 1;
+        entry.number = self.number;
+        self.owner_seen = self.owner_seen.or(held.owner);
+        count(&mut self.scan.counts, layer, held.type_id);
+        if reads {
+            let index = to_u32(self.scan.entries.len());
+            for name in self.attribute_layers.drain(..) {
+                let own_layer = self.names.id(name, &self.scan.code_page);
+                if own_layer != layer {
+                    self.scan.attribute_layers.push((index, own_layer));
+                }
+            }
+            self.scan.entries.push(entry);
+        }
+    }
+
+    fn end_section(&mut self, at: usize) {
+        match self.section {
+            Section::Header => self.scan.header_end = self.scan.header_end.or(Some(at)),
+            Section::Tables => self.scan.tables_end = self.scan.tables_end.or(Some(at)),
+            Section::Entities => {
+                self.scan.entities_end = Some(at);
+                self.scan.open_sequence = match self.sequence {
+                    Some(b"INSERT") => self.gathered.followed,
+                    waiting => waiting.is_some(),
+                };
+            }
+            _ => {}
+        }
+        self.sequence = None;
+        self.block_open = false;
+        self.in_layer_table = false;
+    }
+
+    fn refusal(&self, bad: BadTag) -> Refusal {
+        if self.sections == 0 {
+            return Refusal::NotDxf { found: bad.found };
+        }
+        if bad.cut {
+            return Refusal::Cut {
+                place: bad.place,
+                inside: bad.found,
+            };
+        }
+        Refusal::Garbled {
+            place: bad.place,
+            found: bad.found,
+        }
+    }
+
+    fn finish(mut self) -> Result<Scan, Refusal> {
+        if self.sections == 0 {
+            return Err(Refusal::NotDxf {
+                found: "no section at all".into(),
+            });
+        }
+        let open = match self.section {
+            Section::Outside => None,
+            Section::Named => Some("a section without a name"),
+            Section::Header => Some("section HEADER"),
+            Section::Tables => Some("section TABLES"),
+            Section::Blocks => Some("section BLOCKS"),
+            Section::Entities => Some("section ENTITIES"),
+            Section::Other => Some("a section"),
+        };
+        let early = self.scan.eof_start.is_none() && self.scan.entities_start.is_none();
+        if let Some(inside) = open.or(early.then_some("a drawing without section ENTITIES")) {
+            let at = self.scan.eof_start.unwrap_or(self.scan.tags_end);
+            return Err(Refusal::Cut {
+                place: place_in_words(self.bytes, self.scan.form, at),
+                inside: inside.into(),
+            });
+        }
+        self.end_record(self.scan.tags_end);
+        let handles = &self.handles;
+        self.scan.greatest_handle = handles.greatest;
+        self.scan.own_handles = handles.own_range;
+        let number = self.scan.version.strip_prefix("AC");
+        let with_handles = number
+            .and_then(|digits| digits.parse::<u32>().ok())
+            .is_some_and(|number| number >= 1012);
+        self.scan.uses_handles = with_handles || handles.in_use();
+        if self.scan.model_space_record.is_none() {
+            self.scan.model_space_record = text(self.owner_seen);
+        }
+        self.scan.names_are_guessed |= self.names.guessed;
+        self.scan.layers = self.names.into_layers();
+        self.scan.types = self.types.into_names();
+        let raw = self.block_names.into_raw();
+        for name in raw {
+            let (name, guessed) = self.scan.code_page.decode(name);
+            self.scan.names_are_guessed |= guessed;
+            self.scan
+                .block_names
+                .push(super::text_decode::plain_name(&name));
+        }
+        Ok(self.scan)
+    }
+}
+
+/// Whether a record continues the sequence that `head` began.
+fn follows(head: &[u8], name: &[u8]) -> bool {
+    match name {
+        b"VERTEX" => head == b"POLYLINE",
+        b"ATTRIB" => head == b"INSERT",
+        b"SEQEND" => true,
+        _ => false,
+    }
+}
+
+fn text(value: Option<&[u8]>) -> Option<String> {
+    value
+        .filter(|value| !value.is_empty())
+        .map(|value| String::from_utf8_lossy(value).into_owned())
+}
+
+fn to_u32(number: usize) -> u32 {
+    u32::try_from(number).unwrap_or(u32::MAX)
+}
+
+fn count(counts: &mut Vec<Vec<usize>>, layer: u32, type_id: usize) {
+    let layer = layer as usize;
+    if counts.len() <= layer {
+        counts.resize(layer + 1, Vec::new());
+    }
+    if let Some(row) = counts.get_mut(layer) {
+        if row.len() <= type_id {
+            row.resize(type_id + 1, 0);
+        }
+        if let Some(cell) = row.get_mut(type_id) {
+            *cell += 1;
+        }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A drawing from its tags: codes and values in turn, blanks between.
+    fn dxf(tags: &str) -> Vec<u8> {
+        let words: Vec<&str> = tags.split_whitespace().collect();
+        let lines = words.chunks(2).flat_map(|pair| {
+            let code = pair.first().copied().unwrap_or_default();
+            let value = pair.get(1).copied().unwrap_or_default();
+            [format!("{code:>3}\r\n"), format!("{value}\r\n")]
+        });
+        lines.collect::<String>().into_bytes()
+    }
+
+    const HEADER: &str =
+        "0 SECTION 2 HEADER 9 $ACADVER 1 AC1015 9 $HANDSEED 5 1F0 9 $INSUNITS 70 6 0 ENDSEC ";
+    const TABLES: &str = "0 SECTION 2 TABLES 0 TABLE 2 LAYER 5 2 70 2
+        0 LAYER 5 10 2 0 70 0 62 7 390 F 0 LAYER 5 11 2 Slab 70 1 62 -3 0 ENDTAB
+        0 TABLE 2 BLOCK_RECORD 5 1 0 BLOCK_RECORD 5 1C 2 *MODEL_SPACE 0 ENDTAB 0 ENDSEC ";
+
+    fn at(bytes: &[u8], offset: Option<usize>) -> String {
+        let rest = offset.and_then(|at| bytes.get(at..)).unwrap_or_default();
+        let lines = rest.split(|b| *b == b'\n').take(4);
+        let words = lines.map(|line| String::from_utf8_lossy(line.trim_ascii()).into_owned());
+        words.collect::<Vec<_>>().join(" ")
+    }
+
+    #[test]
+    fn one_pass_finds_layers_sections_and_handles() {
+        let bytes = dxf(&format!(
+            "{HEADER}{TABLES}0 SECTION 2 ENTITIES
+             0 LINE 5 A0 330 1C 8 slab 10 1.0 20 2.0 11 3.0 21 4.0
+             0 TEXT 5 2a1 102 {{ACAD 330 9999 102 }} 8 New 67 1 1 x
+             0 POLYLINE 5 A2 8 taut-x 66 1 0 VERTEX 5 300 8 0 0 SEQEND 5 301 8 0
+             0 LINE 5 A3 8 New 0 ENDSEC 0 EOF"
+        ));
+        let scan = scan(&bytes).expect("read");
+        assert_eq!((scan.version.as_str(), scan.insunits), ("AC1015", Some(6)));
+        assert_eq!((scan.line_end, scan.code_width), ("\r\n", 3));
+        let names: Vec<_> = scan.layers.iter().map(|l| l.name.as_str()).collect();
+        assert_eq!(names, ["0", "Slab", "New", "taut-x"]);
+        assert!(scan.layers[1].off() && scan.layers[1].frozen());
+        assert_eq!(scan.zero_layer_pointers[0].as_deref(), Some("F"));
+        assert!(scan.layers_have_handles && scan.uses_handles);
+        assert_eq!(scan.greatest_handle, 0x9999);
+        assert_eq!(scan.own_handles, Some((0xA2, 0x301)));
+        assert_eq!(scan.own_marks.len(), 1);
+        let own = &bytes[scan.own_marks[0].clone()];
+        assert!(
+            own.starts_with(b"  0\r\nPOLYLINE")
+                && own.ends_with(b"SEQEND\r\n  5\r\n301\r\n  8\r\n0\r\n")
+        );
+        assert_eq!(scan.model_space_record.as_deref(), Some("1C"));
+        assert_eq!(scan.layer_table_handle.as_deref(), Some("2"));
+        let (seed, number) = scan.handseed.clone().expect("seed");
+        assert_eq!((&bytes[seed], number), (&b"1F0"[..], 0x1F0));
+        assert_eq!(at(&bytes, scan.header_end), "0 ENDSEC 0 SECTION");
+        assert_eq!(at(&bytes, scan.layer_table_end), "0 ENDTAB 0 TABLE");
+        assert_eq!(at(&bytes, scan.tables_end), "0 ENDSEC 0 SECTION");
+        assert_eq!(at(&bytes, scan.entities_start), "0 SECTION 2 ENTITIES");
+        assert_eq!(at(&bytes, scan.entities_end), "0 ENDSEC 0 EOF");
+        assert_eq!(at(&bytes, scan.eof_start), "0 EOF ");
+        assert_eq!(scan.entries.len(), 2);
+        assert_eq!(scan.counts[1].iter().sum::<usize>(), 1);
+        assert!(!scan.open_sequence);
+    }
+
+    #[test]
+    fn a_sequence_without_its_end_is_open() {
+        let open = |entities: &str| {
+            let bytes = dxf(&format!("0 SECTION 2 ENTITIES {entities} 0 ENDSEC 0 EOF"));
+            scan(&bytes).expect("read").open_sequence
+        };
+        assert!(open("0 POLYLINE 8 0 66 1 0 VERTEX 8 0"));
+        assert!(open("0 INSERT 8 0 66 1 2 B 0 ATTRIB 8 0"));
+        assert!(!open("0 INSERT 8 0 2 B"));
+        assert!(!open("0 POLYLINE 8 0 0 VERTEX 8 0 0 SEQEND 8 0"));
+    }
+
+    #[test]
+    fn old_drawings_use_handles_where_their_entities_do() {
+        let uses = |tags: &str| {
+            let bytes = dxf(&format!(
+                "0 SECTION 2 TABLES 0 TABLE 2 LAYER 0 LAYER {tags} 0 ENDSEC 0 EOF"
+            ));
+            scan(&bytes).expect("read").uses_handles
+        };
+        let to_entities = "2 0 0 ENDTAB 0 ENDSEC 0 SECTION 2 ENTITIES 0 LINE";
+        assert!(uses(&format!("{to_entities} 5 A1 8 0")));
+        assert!(!uses(&format!("{to_entities} 8 0")));
+        assert!(!uses(&format!("5 2 {to_entities} 5 GG 8 0")));
+        assert!(uses(&format!("5 2 {to_entities} 8 0")));
+    }
+
+    #[test]
+    fn what_is_no_drawing_is_refused_in_words() {
+        let refused = |bytes: &[u8]| scan(bytes).map(|_| ()).expect_err("refused").to_string();
+        assert!(refused(b" \n").contains("empty"));
+        assert!(refused(b"AC1032\0\0\0\0").contains("DWG (AC1032)"));
+        assert!(refused(b"%PDF-1.7\n").contains("\"%PDF-1.7\""));
+        assert!(refused(b"0\rSECTION\r").contains("carriage return"));
+        assert!(refused(&dxf("0 EOF")).contains("no section"));
+        assert!(
+            refused(b"0\nSECTION\n2\nENTITIES\n0\nLINE\n8\n").contains("line 7: the file ends")
+        );
+        assert!(
+            refused(&dxf("0 SECTION 2 ENTITIES 0 LINE 8 0"))
+                .contains("ends inside section ENTITIES")
+        );
+        assert!(refused(&dxf("0 SECTION 2 HEADER 0 ENDSEC")).contains("without section ENTITIES"));
+        assert!(
+            refused(&dxf("0 SECTION 2 ENTITIES oops 8 0 ENDSEC"))
+                .contains("line 5: found \"oops\"")
+        );
+        assert!(scan(&dxf("0 SECTION 2 HEADER 0 ENDSEC 0 EOF")).is_ok());
+    }
+}

@@ -1,0 +1,57 @@
+//! A drawing as it came: its bytes, and what one pass over them found.
+
+use super::Layer;
+use super::refusal::Refusal;
+use super::scan::{Scan, scan};
+
+/// A drawing's bytes and what one pass over them found; from it shapes are read, and into it marks are inserted.
+#[derive(Debug, Clone)]
+pub struct Source {
+    pub(super) bytes: Vec<u8>,
+    pub(super) scan: Scan,
+}
+
+/// Opens a drawing: ASCII or binary DXF of any version.
+///
+/// # Errors
+/// A [`Refusal`] for what is no DXF, is cut short, or holds a line that is no group code.
+pub fn open(bytes: Vec<u8>) -> Result<Source, Refusal> {
+    let scan = scan(&bytes)?;
+    Ok(Source { bytes, scan })
+}
+
+impl Source {
+    /// `$ACADVER`, such as `AC1027`; empty if the header has none.
+    pub fn version(&self) -> &str {
+        &self.scan.version
+    }
+
+    /// The drawing's bytes, as they came.
+    pub fn bytes(&self) -> &[u8] {
+        &self.bytes
+    }
+
+    /// Every layer but this tool's own, in the table's order; layers that only entities name follow.
+    pub fn layers(&self) -> Vec<Layer> {
+        let scan = &self.scan;
+        let layers = scan.layers.iter().enumerate();
+        layers
+            .filter(|(_, layer)| !layer.is_own())
+            .map(|(index, layer)| {
+                let row = scan.counts.get(index).map_or(&[][..], Vec::as_slice);
+                let counts = scan.types.iter().zip(row);
+                let mut counts: Vec<(String, usize)> = counts
+                    .filter(|(_, count)| **count > 0)
+                    .map(|(name, count)| (name.clone(), *count))
+                    .collect();
+                counts.sort();
+                Layer {
+                    name: layer.name.clone(),
+                    off: layer.off(),
+                    frozen: layer.frozen(),
+                    counts,
+                }
+            })
+            .collect()
+    }
+}

@@ -1,0 +1,195 @@
+//! What a key of the job file is: where it stands, what may be typed there, and where in the job its value lives.
+
+use regex::Regex;
+use serde_json::{Value, json};
+
+use super::{Job, StrandSize};
+
+/// A key of the job file. Reading, range checks, help, the proposed file, the result's `inputs` and the list of
+/// assumptions all come from this one description.
+#[derive(Debug)]
+pub struct Key {
+    /// Table, such as `stressing`.
+    pub table: &'static str,
+    /// Name within its table, with its unit, such as `draw_in_mm`.
+    pub name: &'static str,
+    /// What may be typed.
+    pub kind: Kind,
+    /// What the key decides, in one sentence.
+    pub meaning: &'static str,
+    /// Where the default comes from; for a key without a default, what happens when it is not given.
+    pub source: &'static str,
+}
+
+/// What may be typed for a key, and the value's place in a [`Job`]. Numbers are as typed, in the key's own unit.
+#[derive(Debug)]
+pub enum Kind {
+    /// A number within a range, ends included.
+    Number {
+        /// Least.
+        least: f64,
+        /// Most.
+        most: f64,
+        /// What a file may show where there is no default.
+        example: f64,
+        /// Reads it, if the job has one.
+        get: fn(&Job) -> Option<f64>,
+        /// Sets it.
+        set: fn(&mut Job, f64),
+    },
+    /// One of these words.
+    Choice {
+        /// The words.
+        words: &'static [&'static str],
+        /// Reads it, if the job has one.
+        get: fn(&Job) -> Option<&'static str>,
+        /// Sets it to a word of the list.
+        set: fn(&mut Job, &str),
+    },
+    /// `true` or `false`.
+    Switch {
+        /// Reads it.
+        get: fn(&Job) -> bool,
+        /// Sets it.
+        set: fn(&mut Job, bool),
+    },
+    /// A list of shell patterns (`*`, `?`, `[...]`, `{a,b}`), any letter case.
+    Shell(Place<String>),
+    /// A list of words.
+    Words(Place<String>),
+    /// A list of regular expressions, each with at least one of these named groups.
+    Expressions {
+        /// The groups.
+        groups: &'static [&'static str],
+        /// Its place.
+        place: Place<Regex>,
+    },
+    /// The name of a strand.
+    StrandName {
+        /// Reads it, if the job has one.
+        get: fn(&Job) -> Option<&str>,
+        /// Sets it.
+        set: fn(&mut Job, &str),
+    },
+    /// A list of strand sizes, one table each.
+    Strands(Place<StrandSize>),
+}
+
+/// Where a list lives in a [`Job`].
+#[derive(Debug)]
+pub struct Place<T> {
+    /// Reads it.
+    pub get: fn(&Job) -> &Vec<T>,
+    /// Sets it.
+    pub set: fn(&mut Job, Vec<T>),
+}
+
+impl Key {
+    /// `table.name`.
+    pub fn path(&self) -> String {
+        format!("{}.{}", self.table, self.name)
+    }
+
+    /// Name in the result's `inputs`: the bare name for what enters the arithmetic, with the table first for how the
+    /// drawing is read (`height_unit`, `layers_banded`).
+    pub fn input_name(&self) -> String {
+        match self.table {
+            "system" | "stressing" | "profile" | "long_term" | "limits" => self.name.to_owned(),
+            table => format!("{table}_{}", self.name),
+        }
+    }
+
+    /// The job's value for this key, in the key's unit; `None` where the job has none.
+    pub fn value(&self, job: &Job) -> Option<Value> {
+        match &self.kind {
+            Kind::Number { get, .. } => get(job).map(|number| json!(number)),
+            Kind::Choice { get, .. } => get(job).map(|word| json!(word)),
+            Kind::Switch { get, .. } => Some(json!(get(job))),
+            Kind::Shell(place) | Kind::Words(place) => Some(json!((place.get)(job))),
+            Kind::Expressions { place, .. } => {
+                let patterns: Vec<&str> = (place.get)(job).iter().map(Regex::as_str).collect();
+                Some(json!(patterns))
+            }
+            Kind::StrandName { get, .. } => get(job).map(|name| json!(name)),
+            Kind::Strands(place) => {
+                let sizes = (place.get)(job).iter().map(|size| {
+                    json!({"name": size.name, "area_mm2": size.area_mm2, "strength_mpa": size.strength_mpa})
+                });
+                Some(Value::Array(sizes.collect()))
+            }
+        }
+    }
+
+    /// What may be typed, in words.
+    pub fn expected(&self) -> String {
+        match &self.kind {
+            Kind::Number { least, most, .. } => format!("a number from {least} to {most}"),
+            Kind::Choice { words, .. } => format!("one of {}", quoted(words)),
+            Kind::Switch { .. } => "true or false".to_owned(),
+            Kind::Shell(_) => "a list of shell patterns, such as [\"NAME*\"]".to_owned(),
+            Kind::Words(_) => "a list of words, such as [\"H\", \"HIGH\"]".to_owned(),
+            Kind::Expressions { groups, .. } => format!(
+                "a list of regular expressions, each with the named group {}",
+                groups
+                    .iter()
+                    .map(|group| format!("(?<{group}>...)"))
+                    .collect::<Vec<_>>()
+                    .join(" or ")
+            ),
+            Kind::StrandName { .. } => "the name of a strand, such as \"12.7\"".to_owned(),
+            Kind::Strands(_) => "tables [[system.strand]]".to_owned(),
+        }
+    }
+
+    /// A line that may be typed: the default, or an example where there is none.
+    pub fn example(&self) -> String {
+        let text = match (&self.kind, self.value(&Job::default())) {
+            (Kind::Strands(_), _) => {
+                return "[[system.strand]] name = \"12.7\", area_mm2 = 98.7, strength_mpa = 1860"
+                    .to_owned();
+            }
+            (_, Some(value)) => toml_text(&value),
+            (Kind::Number { example, .. }, None) => toml_text(&json!(example)),
+            (Kind::Choice { words, .. }, None) => toml_text(&json!(words.first())),
+            (_, None) => "\"12.7\"".to_owned(),
+        };
+        format!("{} = {text}", self.name)
+    }
+}
+
+/// `"a", "b"`.
+pub(super) fn quoted(words: &[&str]) -> String {
+    let quoted: Vec<String> = words.iter().map(|word| format!("\"{word}\"")).collect();
+    quoted.join(", ")
+}
+
+/// A value as TOML writes it on one line; words with a backslash or a quote in single quotes where that is possible.
+pub(super) fn toml_text(value: &Value) -> String {
+    match value {
+        Value::String(text) => {
+            let plain = !text.chars().any(|c| c.is_control() || c == '\'');
+            if plain && text.contains(['\\', '"']) {
+                format!("'{text}'")
+            } else {
+                toml::Value::String(text.clone()).to_string()
+            }
+        }
+        Value::Array(items) => {
+            let items: Vec<String> = items.iter().map(toml_text).collect();
+            format!("[{}]", items.join(", "))
+        }
+        Value::Number(number) => match number.as_f64() {
+            Some(number) => format!("{number}"),
+            None => number.to_string(),
+        },
+        Value::Object(entries) => {
+            let entries: Vec<String> = entries
+                .iter()
+                .map(|(name, value)| format!("{name} = {}", toml_text(value)))
+                .collect();
+            format!("{{ {} }}", entries.join(", "))
+        }
+        Value::Bool(on) => on.to_string(),
+        Value::Null => "\"\"".to_owned(),
+    }
+}

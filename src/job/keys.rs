@@ -1,0 +1,329 @@
+//! The keys of the job file, in the order a file shows them.
+
+use super::key::{Key, Kind, Place};
+use super::{Datum, FromFace, Job, LongTermMethod, Wobble};
+use crate::units::LengthUnit;
+
+/// A number that the job always has; `scale` is key units in one internal unit.
+macro_rules! number {
+    ($least:literal ..= $most:literal, $($place:ident).+, $scale:expr) => {
+        Kind::Number {
+            least: $least,
+            most: $most,
+            example: $least,
+            get: |job| Some(tidy(job.$($place).+ * $scale)),
+            set: |job, number| job.$($place).+ = number / $scale,
+        }
+    };
+}
+
+/// A number that the job may lack.
+macro_rules! maybe {
+    ($least:literal ..= $most:literal, $example:literal, $($place:ident).+, $scale:expr) => {
+        Kind::Number {
+            least: $least,
+            most: $most,
+            example: $example,
+            get: |job| job.$($place).+.map(|number| tidy(number * $scale)),
+            set: |job, number| job.$($place).+ = Some(number / $scale),
+        }
+    };
+}
+
+/// A list.
+macro_rules! place {
+    ($($place:ident).+) => {
+        Place {
+            get: |job| &job.$($place).+,
+            set: |job, list| job.$($place).+ = list,
+        }
+    };
+}
+
+/// A length unit that the job always has.
+macro_rules! unit {
+    ($($place:ident).+) => {
+        Kind::Choice {
+            words: UNITS,
+            get: |job| Some(job.$($place).+.name()),
+            set: |job, word| if let Some(unit) = unit(word) { job.$($place).+ = unit },
+        }
+    };
+}
+
+const MM: f64 = 1000.0;
+const ONE: f64 = 1.0;
+const UNITS: &[&str] = &["mm", "cm", "m", "in", "ft"];
+const CONVENTION: &str = "drawing convention of this program";
+
+fn unit(word: &str) -> Option<LengthUnit> {
+    use LengthUnit::{Cm, Ft, In, M, Mm};
+    [Mm, Cm, M, In, Ft]
+        .into_iter()
+        .find(|unit| unit.name() == word)
+}
+
+/// Twelve significant digits: what was typed in millimetres reads back the same after a turn through metres.
+fn tidy(number: f64) -> f64 {
+    format!("{number:.11e}").parse().unwrap_or(number)
+}
+
+const fn key(
+    table: &'static str,
+    name: &'static str,
+    kind: Kind,
+    meaning: &'static str,
+    source: &'static str,
+) -> Key {
+    Key {
+        table,
+        name,
+        kind,
+        meaning,
+        source,
+    }
+}
+
+/// Tables, in order, each with a sentence.
+#[rustfmt::skip]
+pub const TABLES: &[(&str, &str)] = &[
+    ("drawing", "How the drawing is measured and its lines are joined."),
+    ("layers", "What lies on which layer: shell patterns, any letter case."),
+    ("ends", "How the drawing marks the ends of a tendon."),
+    ("labels", "How marks and strand counts are written."),
+    ("height", "How heights are written and what they measure."),
+    ("slab", "The slab's thickness and how the drawing writes it."),
+    ("system", "Strand and duct."),
+    ("stressing", "Jacking, friction, draw-in."),
+    ("profile", "The curve between the marked heights."),
+    ("long_term", "Elastic shortening, shrinkage, creep, relaxation."),
+    ("limits", "Where a finding begins."),
+];
+
+/// Every key.
+#[rustfmt::skip]
+pub static KEYS: &[Key] = &[
+    key("drawing", "unit", Kind::Choice {
+            words: UNITS,
+            get: |job| job.conventions.unit.map(LengthUnit::name),
+            set: |job, word| job.conventions.unit = unit(word),
+        },
+        "Unit of the drawing's coordinates.",
+        "the drawing's own $INSUNITS; millimetres where it has none"),
+    key("drawing", "join_gap_mm", number!(0.0..=500.0, conventions.join_gap_m, MM),
+        "Pieces of a tendon whose ends are this close are one line.", CONVENTION),
+
+    key("layers", "banded", Kind::Shell(place!(conventions.layers.banded)),
+        "Tendons gathered along column lines.", CONVENTION),
+    key("layers", "distributed", Kind::Shell(place!(conventions.layers.distributed)),
+        "Tendons spread over the floor.", CONVENTION),
+    key("layers", "heights", Kind::Shell(place!(conventions.layers.heights)),
+        "Height labels.", CONVENTION),
+    key("layers", "level_lines", Kind::Shell(place!(conventions.layers.level_lines)),
+        "Lines that give one height to every tendon they cross, and their labels.", CONVENTION),
+    key("layers", "marks", Kind::Shell(place!(conventions.layers.marks)),
+        "Marks and strand counts.", CONVENTION),
+    key("layers", "ends", Kind::Shell(place!(conventions.layers.ends)),
+        "Symbols at the ends of tendons.", CONVENTION),
+    key("layers", "slab_edge", Kind::Shell(place!(conventions.layers.slab_edge)),
+        "Outline of the slab.", CONVENTION),
+    key("layers", "slab_opening", Kind::Shell(place!(conventions.layers.slab_opening)),
+        "Openings.", CONVENTION),
+    key("layers", "slab_zone", Kind::Shell(place!(conventions.layers.slab_zone)),
+        "Zones with a thickness of their own, and thickness texts.", CONVENTION),
+    key("layers", "column", Kind::Shell(place!(conventions.layers.column)),
+        "Columns and walls.", CONVENTION),
+
+    key("ends", "live_blocks", Kind::Shell(place!(conventions.live_end_blocks)),
+        "Blocks that mark an end stressed from (shell patterns, any letter case).", CONVENTION),
+    key("ends", "dead_blocks", Kind::Shell(place!(conventions.dead_end_blocks)),
+        "Blocks that mark a fixed end (shell patterns, any letter case).", CONVENTION),
+    key("ends", "reach_mm", number!(1.0..=10_000.0, conventions.end_reach_m, MM),
+        "How far an end symbol may lie from the end it marks.", CONVENTION),
+
+    key("labels", "reach_text_heights", number!(0.1..=100.0, conventions.label_reach, ONE),
+        "How far a label may lie from its tendon, in heights of its own text.", CONVENTION),
+    key("labels", "mark_patterns", Kind::Expressions {
+            groups: &["mark", "strands"],
+            place: place!(conventions.mark_patterns),
+        },
+        "Marks and strand counts: groups mark, tendons, strands, strand.", CONVENTION),
+
+    key("height", "unit", unit!(conventions.height.unit),
+        "Unit of the numbers; in and ft may be written with fractions.", CONVENTION),
+    key("height", "datum", Kind::Choice {
+            words: &["centroid", "duct-underside"],
+            get: |job| Some(match job.conventions.height.datum {
+                Datum::Centroid => "centroid",
+                Datum::DuctUnderside => "duct-underside",
+            }),
+            set: |job, word| job.conventions.height.datum = match word {
+                "duct-underside" => Datum::DuctUnderside,
+                _ => Datum::Centroid,
+            },
+        },
+        "What a height is measured to: the strands' centroid or the duct's underside.", CONVENTION),
+    key("height", "from", Kind::Choice {
+            words: &["soffit", "top"],
+            get: |job| Some(match job.conventions.height.from {
+                FromFace::Soffit => "soffit",
+                FromFace::Top => "top",
+            }),
+            set: |job, word| job.conventions.height.from = match word {
+                "top" => FromFace::Top,
+                _ => FromFace::Soffit,
+            },
+        },
+        "What a height is measured from: the local soffit upwards or the top downwards.", CONVENTION),
+    key("height", "patterns", Kind::Expressions {
+            groups: &["value"],
+            place: place!(conventions.height_patterns),
+        },
+        "Heights: groups word (optional) and value.", CONVENTION),
+    key("height", "high_words", Kind::Words(place!(conventions.high_words)),
+        "Words of a high point.", "common practice"),
+    key("height", "low_words", Kind::Words(place!(conventions.low_words)),
+        "Words of a low point.", "common practice"),
+    key("height", "strand_in_duct_low_mm", number!(0.0..=300.0, conventions.height.strand_in_duct_low_m, MM),
+        "Strands' centroid above the duct's underside at a low point, where the pulled strand lies at the duct's top.",
+        "worked out for 12.7 mm strand in a flat duct 20 mm high"),
+    key("height", "strand_in_duct_high_mm", number!(0.0..=300.0, conventions.height.strand_in_duct_high_m, MM),
+        "Strands' centroid above the duct's underside at a high point, where the pulled strand lies on its bottom.",
+        "worked out for 12.7 mm strand in a flat duct 20 mm high"),
+
+    key("slab", "thickness_mm", maybe!(50.0..=5000.0, 250.0, slab.thickness_m, MM),
+        "Thickness outside every zone.",
+        "the drawing's own text"),
+    key("slab", "text_unit", unit!(conventions.thickness_unit),
+        "Unit of thickness texts.", CONVENTION),
+    key("slab", "text_patterns", Kind::Expressions {
+            groups: &["value"],
+            place: place!(conventions.thickness_patterns),
+        },
+        "Thickness texts: group value.", CONVENTION),
+
+    key("system", "strand", Kind::Strands(place!(system.strands)),
+        "Known sizes of strand; a size given here is added to these, or replaces the one of its name.",
+        "ASTM A416 grade 270 (12.7, 15.2) and EN 10138-3 (12.9, 15.7), from memory"),
+    key("system", "default_strand", Kind::StrandName {
+            get: |job| job.system.default_strand.as_deref(),
+            set: |job, name| job.system.default_strand = Some(name.to_owned()),
+        },
+        "Size of strand where a mark gives only a count.",
+        "such a tendon gets a finding and no forces"),
+    key("system", "strand_modulus_mpa", number!(100_000.0..=250_000.0, system.strand_modulus_mpa, ONE),
+        "Modulus of the strand.", "common practice, 195 GPa give or take 10"),
+    key("system", "yield_ratio", number!(0.5..=1.0, system.yield_ratio, ONE),
+        "Yield stress of the strand over its strength.", "ASTM A416 low-relaxation strand, from memory"),
+    key("system", "duct_height_mm", number!(5.0..=300.0, system.duct_height_m, MM),
+        "Overall height of a duct.", "common practice for flat ducts"),
+
+    key("stressing", "jacking_ratio", number!(0.1..=1.0, stressing.jacking_ratio, ONE),
+        "Stress at the jack over strength.", "common practice"),
+    key("stressing", "mu_per_rad", number!(0.0..=1.0, stressing.mu_per_rad, ONE),
+        "Friction coefficient mu, per radian.", "EN 1992-1-1 table 5.1, from memory"),
+    key("stressing", "wobble_rad_per_m", Kind::Number {
+            least: 0.0,
+            most: 0.1,
+            example: 0.008,
+            get: |job| match job.stressing.wobble { Wobble::RadPerM(k) => Some(k), Wobble::PerM(_) => None },
+            set: |job, k| job.stressing.wobble = Wobble::RadPerM(k),
+        },
+        "Unintended angle k, in radians per metre, multiplied by mu.",
+        "EN 1992-1-1 5.10.5.2 gives 0.005 to 0.010"),
+    key("stressing", "wobble_per_m", Kind::Number {
+            least: 0.0,
+            most: 0.02,
+            example: 0.0015,
+            get: |job| match job.stressing.wobble { Wobble::PerM(k) => Some(k), Wobble::RadPerM(_) => None },
+            set: |job, k| job.stressing.wobble = Wobble::PerM(k),
+        },
+        "Wobble K per metre, not multiplied by mu; instead of wobble_rad_per_m, never beside it.",
+        "wobble_rad_per_m"),
+    key("stressing", "draw_in_mm", number!(0.0..=50.0, stressing.draw_in_m, MM),
+        "Wedge draw-in at each live end.", "common practice, 5 to 8 mm"),
+
+    key("profile", "inflection", number!(0.01..=0.5, profile.inflection, ONE),
+        "Hogging length at a high point as a fraction of the span.", "common practice"),
+    key("profile", "fit_inflection", Kind::Switch {
+            get: |job| job.profile.fit_inflection,
+            set: |job, on| job.profile.fit_inflection = on,
+        },
+        "Fit the hogging length to the support heights by least squares.", CONVENTION),
+
+    key("long_term", "method", Kind::Choice {
+            words: &["direct"],
+            get: |job| Some(match job.long_term.method { LongTermMethod::Direct => "direct" }),
+            set: |job, _| job.long_term.method = LongTermMethod::Direct,
+        },
+        "How long-term loss is worked out; direct: from the strain and coefficients given here.",
+        "the method that hides nothing"),
+    key("long_term", "concrete_modulus_transfer_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_transfer_mpa, ONE),
+        "Modulus of the concrete at stressing.",
+        "EN 1992-1-1 3.1.3(3) for C30/37 at some 60 % of its strength, from memory"),
+    key("long_term", "concrete_modulus_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_mpa, ONE),
+        "Modulus of the concrete at 28 days.", "EN 1992-1-1 table 3.1 for C30/37, from memory"),
+    key("long_term", "shortening_share", number!(0.0..=1.0, long_term.shortening_share, ONE),
+        "Share of (Ep/Eci) times the concrete stress that is lost by elastic shortening.",
+        "common practice: 0.5 for tendons stressed in turn, 0 where all are stressed at once"),
+    key("long_term", "concrete_stress_mpa", maybe!(0.0..=30.0, 1.5, long_term.concrete_stress_mpa, ONE),
+        "Mean compression in the concrete along the tendons.",
+        "worked out from the floor's own tendons and slab"),
+    key("long_term", "shrinkage_strain", number!(0.0..=0.002, long_term.shrinkage_strain, ONE),
+        "Shrinkage of the concrete after stressing.", "common practice for a floor indoors, from memory"),
+    key("long_term", "creep_coefficient", number!(0.0..=10.0, long_term.creep_coefficient, ONE),
+        "Final creep coefficient.", "common practice for a floor indoors, from memory"),
+    key("long_term", "relaxation_1000h", number!(0.0..=0.2, long_term.relaxation_1000h, ONE),
+        "Relaxation at 1000 hours, as a fraction of the stress after lock-off.",
+        "EN 1992-1-1 3.3.2(6), class 2: 2.5 %"),
+    key("long_term", "relaxation_factor", number!(0.0..=10.0, long_term.relaxation_factor, ONE),
+        "Final relaxation over the 1000-hour value.", "common practice, from memory"),
+
+    key("limits", "cover_mm", number!(0.0..=300.0, limits.cover_m, MM),
+        "Least clear concrete between a duct and either face.", "common practice; the project's durability rules decide"),
+    key("limits", "hogging_radius_error_m", number!(0.1..=100.0, limits.hogging_radius_error_m, ONE),
+        "Hogging radius below which is an error.", "common practice for flat ducts"),
+    key("limits", "hogging_radius_warning_m", number!(0.1..=100.0, limits.hogging_radius_warning_m, ONE),
+        "Hogging radius below which is a warning.", "common practice for flat ducts"),
+    key("limits", "plan_radius_m", number!(0.1..=100.0, limits.plan_radius_m, ONE),
+        "Radius in plan below which is a warning.", "common practice: 6 m flat duct, 3 m single strand"),
+    key("limits", "far_end_ratio", number!(0.0..=1.0, limits.far_end_ratio, ONE),
+        "Force at the far end over jacking force, below which is a warning.", "common practice"),
+    key("limits", "curvature_loss_ratio", number!(0.0..=1.0, limits.curvature_loss_ratio, ONE),
+        "Share of the jacking force lost to angle alone, above which is a warning.",
+        "judgement of this program"),
+    key("limits", "angle_per_m_rad", number!(0.0..=10.0, limits.angle_per_m_rad, ONE),
+        "Angle turned per metre of tendon, above which is a warning.",
+        "judgement of this program"),
+    key("limits", "jacking_stress_ratio", number!(0.1..=1.0, limits.jacking_stress_ratio, ONE),
+        "Jacking stress over strength, above which is an error.", "ACI 318-19 20.3.2.5.1, from memory"),
+    key("limits", "jacking_yield_ratio", number!(0.1..=1.0, limits.jacking_yield_ratio, ONE),
+        "Jacking stress over yield, above which is an error.", "ACI 318-19 20.3.2.5.1, from memory"),
+    key("limits", "anchor_stress_ratio", number!(0.1..=1.0, limits.anchor_stress_ratio, ONE),
+        "Stress at the anchor after lock-off over strength, above which is an error.",
+        "ACI 318-19 20.3.2.5.1, from memory"),
+    key("limits", "one_end_length_m", number!(1.0..=1000.0, limits.one_end_length_m, ONE),
+        "Length of a tendon stressed from one end, above which is a warning.", "common practice"),
+    key("limits", "opening_clearance_mm", number!(0.0..=5000.0, limits.opening_clearance_m, MM),
+        "Clear distance between a tendon and an opening, below which is a warning.", "common practice"),
+    key("limits", "edge_tolerance_mm", number!(0.0..=5000.0, limits.edge_tolerance_m, MM),
+        "How far a tendon may stand outside the slab's edge.", "judgement of this program"),
+];
+
+/// The key at this place.
+pub fn find(table: &str, name: &str) -> Option<&'static Key> {
+    KEYS.iter()
+        .find(|key| key.table == table && key.name == name)
+}
+
+/// The keys of a table, in order.
+pub fn of_table(table: &str) -> impl Iterator<Item = &'static Key> {
+    KEYS.iter().filter(move |key| key.table == table)
+}
+
+/// The job's values by their names in the result, in the order of the keys; keys without a value are left out.
+pub(super) fn inputs(job: &Job) -> Vec<(String, serde_json::Value)> {
+    KEYS.iter()
+        .filter_map(|key| Some((key.input_name(), key.value(job)?)))
+        .collect()
+}

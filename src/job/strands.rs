@@ -1,0 +1,180 @@
+//! Strand sizes, each a table of its own, and what no single key shows.
+
+use std::ops::Range;
+
+use toml::Spanned;
+use toml::de::{DeArray, DeTable, DeValue};
+
+use crate::job::key::quoted;
+use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
+use crate::job::{StrandSize, default};
+
+impl Reader {
+    pub(super) fn strands(&mut self, entry: &Entry<'_>, items: &DeArray<'_>) -> Vec<StrandSize> {
+        let mut sizes: Vec<StrandSize> = Vec::new();
+        if items.iter().next().is_none() {
+            self.mistake(
+                entry.span(),
+                "`strand` is an empty list",
+                "expected tables [[system.strand]]",
+                "take the line out for the usual sizes",
+            );
+        }
+        for item in items {
+            let DeValue::Table(fields) = item.get_ref() else {
+                self.mistake(
+                    item.span(),
+                    format!("`strand` cannot hold {}", kind_word(item.get_ref())),
+                    "expected tables [[system.strand]]",
+                    "write `[[system.strand]]`, and below it `name`, `area_mm2` and `strength_mpa`",
+                );
+                continue;
+            };
+            if let Some(size) = self.strand(item.span(), fields) {
+                if sizes.iter().any(|other| other.name == size.name) {
+                    let span = fields.get("name").map_or(item.span(), Spanned::span);
+                    self.mistake(
+                        span,
+                        format!("there are two strands of the name \"{}\"", plain(&size.name)),
+                        "expected each name once",
+                        "give the second another name, as marks on the drawing write it, or take it out",
+                    );
+                } else {
+                    sizes.push(size);
+                }
+            }
+        }
+        sizes
+    }
+
+    fn strand(&mut self, span: Range<usize>, fields: &DeTable<'_>) -> Option<StrandSize> {
+        const FIELDS: [&str; 3] = ["name", "area_mm2", "strength_mpa"];
+        let before = self.problems.len();
+        for name in fields
+            .keys()
+            .filter(|name| !FIELDS.contains(&name.get_ref().as_ref()))
+        {
+            let word = plain(name.get_ref());
+            let near = nearest(&word, FIELDS);
+            self.mistake(
+                name.span(),
+                format!("unknown key `{word}` in [[system.strand]]"),
+                format!("the keys of [[system.strand]] are {}", FIELDS.join(", ")),
+                near.map_or("take the line out".to_owned(), |near| {
+                    format!("did you mean `{near}`?")
+                }),
+            );
+        }
+        let missing = FIELDS
+            .into_iter()
+            .filter(|&name| fields.get(name).is_none());
+        for name in missing.collect::<Vec<_>>() {
+            self.mistake(
+                span.clone(),
+                format!("this strand has no `{name}`"),
+                format!("expected {}", FIELDS.join(", ")),
+                "type for example `name = \"12.7\"`, `area_mm2 = 98.7`, `strength_mpa = 1860`",
+            );
+        }
+        let name = match fields
+            .get("name")
+            .map(|entry| (entry.get_ref(), entry.span()))
+        {
+            Some((DeValue::String(name), _)) if !name.trim().is_empty() => Some(name.to_string()),
+            Some((other, span)) => {
+                self.mistake(
+                    span,
+                    format!("a strand's `name` cannot be {}", kind_word(other)),
+                    "expected the size as marks write it, in quotes",
+                    "type for example `name = \"12.7\"`",
+                );
+                None
+            }
+            None => None,
+        };
+        let area_mm2 = fields
+            .get("area_mm2")
+            .and_then(|entry| self.number("area_mm2", (10.0, 1000.0), "area_mm2 = 98.7", entry));
+        let strength_mpa = fields.get("strength_mpa").and_then(|entry| {
+            self.number(
+                "strength_mpa",
+                (1000.0, 2500.0),
+                "strength_mpa = 1860",
+                entry,
+            )
+        });
+        if self.problems.len() > before {
+            return None;
+        }
+        Some(StrandSize {
+            name: name?,
+            area_mm2: area_mm2?,
+            strength_mpa: strength_mpa?,
+        })
+    }
+
+    /// What no single key shows.
+    pub(super) fn contradictions(&mut self) {
+        let at = |reader: &Self, path: &str| reader.given.get(path).cloned();
+        if let (Some(_), Some(span)) = (
+            at(self, "stressing.wobble_rad_per_m"),
+            at(self, "stressing.wobble_per_m"),
+        ) {
+            self.mistake(
+                span,
+                "both `wobble_rad_per_m` and `wobble_per_m` are given",
+                "expected one of the two: they say the same thing in different forms",
+                "keep `wobble_rad_per_m` if the figure is k of mu (angle + k length), `wobble_per_m` if it is K of mu angle + K length",
+            );
+        }
+        if let (Some(name), Some(span)) = (
+            self.job.system.default_strand.clone(),
+            at(self, "system.default_strand"),
+        ) {
+            let known: Vec<&str> = self
+                .job
+                .system
+                .strands
+                .iter()
+                .map(|size| size.name.as_str())
+                .collect();
+            if !known.contains(&name.as_str()) {
+                let list = quoted(&known);
+                self.mistake(
+                    span,
+                    format!(
+                        "`default_strand` names a strand that is not known, \"{}\"",
+                        plain(&name)
+                    ),
+                    format!("expected one of {}", plain(&list)),
+                    "name one of these, or describe the strand in a table [[system.strand]]",
+                );
+            }
+        }
+        let limits = &self.job.limits;
+        if limits.hogging_radius_error_m > limits.hogging_radius_warning_m {
+            let found = format!(
+                "a hogging radius would be an error ({} m) before it is a warning ({} m)",
+                limits.hogging_radius_error_m, limits.hogging_radius_warning_m
+            );
+            let span = at(self, "limits.hogging_radius_error_m")
+                .or_else(|| at(self, "limits.hogging_radius_warning_m"))
+                .unwrap_or(0..0);
+            self.mistake(
+                span,
+                found,
+                "expected hogging_radius_error_m to be the smaller",
+                "type for example `hogging_radius_error_m = 2.5` and `hogging_radius_warning_m = 5`",
+            );
+        }
+        // Numbers in inches are written with fractions: the default patterns follow the unit.
+        if !self.given.contains_key("height.patterns") {
+            self.job.conventions.height_patterns =
+                default::height_patterns(self.job.conventions.height.unit);
+        }
+        if !self.given.contains_key("slab.text_patterns") {
+            self.job.conventions.thickness_patterns =
+                default::thickness_patterns(self.job.conventions.thickness_unit);
+        }
+    }
+}

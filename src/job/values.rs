@@ -1,0 +1,238 @@
+//! What stands behind a key, checked against what may be typed there.
+
+use std::ops::Range;
+
+use regex::Regex;
+use toml::de::{DeArray, DeValue};
+
+use crate::job::key::{Key, Kind, quoted};
+use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
+
+impl Reader {
+    pub(super) fn value(&mut self, key: &Key, entry: &Entry<'_>) {
+        match (&key.kind, entry.get_ref()) {
+            (
+                Kind::Number {
+                    least, most, set, ..
+                },
+                DeValue::Integer(_) | DeValue::Float(_),
+            ) => {
+                if let Some(number) = self.number(key.name, (*least, *most), &key.example(), entry)
+                {
+                    set(&mut self.job, number);
+                }
+            }
+            (Kind::Choice { words, set, .. }, DeValue::String(word)) => {
+                if words.contains(&word.as_ref()) {
+                    set(&mut self.job, word);
+                } else {
+                    let near = nearest(word, words.iter().copied());
+                    let example = near.map_or_else(
+                        || key.example(),
+                        |near| format!("{} = \"{near}\"", key.name),
+                    );
+                    self.mistake(
+                        entry.span(),
+                        format!("`{}` does not know \"{}\"", key.name, plain(word)),
+                        format!("expected one of {}", quoted(words)),
+                        format!("type `{example}`"),
+                    );
+                }
+            }
+            (Kind::Switch { set, .. }, DeValue::Boolean(on)) => set(&mut self.job, *on),
+            (Kind::StrandName { set, .. }, DeValue::String(name)) => set(&mut self.job, name),
+            (Kind::Words(place), DeValue::Array(items)) => {
+                if let Some(words) = self.words(key, entry, items) {
+                    (place.set)(
+                        &mut self.job,
+                        words.into_iter().map(|(word, _)| word).collect(),
+                    );
+                }
+            }
+            (Kind::Shell(place), DeValue::Array(items)) => {
+                if let Some(words) = self.words(key, entry, items) {
+                    for (pattern, span) in &words {
+                        if let Err(error) = globset::Glob::new(pattern) {
+                            self.mistake(
+                                span.clone(),
+                                format!("`{}` holds a broken shell pattern: {}", key.name, plain(&error.kind().to_string())),
+                                "expected *, ?, [abc] or {this,that}",
+                                "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
+                            );
+                        }
+                    }
+                    (place.set)(
+                        &mut self.job,
+                        words.into_iter().map(|(word, _)| word).collect(),
+                    );
+                }
+            }
+            (Kind::Expressions { groups, place }, DeValue::Array(items)) => {
+                if let Some(words) = self.words(key, entry, items) {
+                    let patterns = words
+                        .iter()
+                        .filter_map(|(word, span)| self.expression(key, groups, word, span))
+                        .collect();
+                    (place.set)(&mut self.job, patterns);
+                }
+            }
+            (Kind::Strands(place), DeValue::Array(items)) => {
+                let given = self.strands(entry, items);
+                let mut all = (place.get)(&self.job).clone();
+                for size in given {
+                    match all.iter_mut().find(|known| known.name == size.name) {
+                        Some(known) => *known = size,
+                        None => all.push(size),
+                    }
+                }
+                (place.set)(&mut self.job, all);
+            }
+            _ => self.mistake(
+                entry.span(),
+                format!("`{}` cannot be {}", key.name, kind_word(entry.get_ref())),
+                format!("expected {}", key.expected()),
+                format!("type for example `{}`", key.example()),
+            ),
+        }
+    }
+
+    /// A number within its range.
+    pub(super) fn number(
+        &mut self,
+        name: &str,
+        (least, most): (f64, f64),
+        example: &str,
+        entry: &Entry<'_>,
+    ) -> Option<f64> {
+        let number = match entry.get_ref() {
+            DeValue::Integer(whole) => i64::from_str_radix(whole.as_str(), whole.radix())
+                .ok()
+                .map(as_float),
+            DeValue::Float(float) => float.as_str().parse::<f64>().ok(),
+            other => {
+                self.mistake(
+                    entry.span(),
+                    format!("`{name}` cannot be {}", kind_word(other)),
+                    format!("expected a number from {least} to {most}"),
+                    format!("type for example `{example}`"),
+                );
+                return None;
+            }
+        };
+        match number {
+            Some(number) if (least..=most).contains(&number) => Some(number),
+            Some(number) => {
+                let hundredth = number / 100.0;
+                let remedy = if most <= 1.0 && number > 1.0 && (least..=most).contains(&hundredth) {
+                    format!("this is a ratio, not a percentage: type `{name} = {hundredth}`")
+                } else {
+                    format!("type for example `{example}`")
+                };
+                self.mistake(
+                    entry.span(),
+                    format!("`{name}` cannot be {number}"),
+                    format!("expected a number from {least} to {most}"),
+                    remedy,
+                );
+                None
+            }
+            None => {
+                self.mistake(
+                    entry.span(),
+                    format!("`{name}` is not a number that can be read"),
+                    format!("expected a number from {least} to {most}"),
+                    format!("type for example `{example}`"),
+                );
+                None
+            }
+        }
+    }
+
+    /// A list of words that is not empty, each with its place.
+    pub(super) fn words(
+        &mut self,
+        key: &Key,
+        entry: &Entry<'_>,
+        items: &DeArray<'_>,
+    ) -> Option<Vec<(String, Range<usize>)>> {
+        let mut words = Vec::new();
+        let before = self.problems.len();
+        for item in items {
+            match item.get_ref() {
+                DeValue::String(word) if !word.is_empty() => {
+                    words.push((word.to_string(), item.span()));
+                }
+                other => self.mistake(
+                    item.span(),
+                    match other {
+                        DeValue::String(_) => format!("`{}` holds an empty word", key.name),
+                        _ => format!("`{}` cannot hold {}", key.name, kind_word(other)),
+                    },
+                    format!("expected {}", key.expected()),
+                    format!("type for example `{}`", key.example()),
+                ),
+            }
+        }
+        if items.iter().next().is_none() {
+            self.mistake(
+                entry.span(),
+                format!("`{}` is an empty list, which nothing matches", key.name),
+                format!("expected {}", key.expected()),
+                format!("take the line out for the default, `{}`", key.example()),
+            );
+        }
+        (self.problems.len() == before).then_some(words)
+    }
+
+    pub(super) fn expression(
+        &mut self,
+        key: &Key,
+        groups: &[&str],
+        pattern: &str,
+        span: &Range<usize>,
+    ) -> Option<Regex> {
+        let named = |regex: &Regex| {
+            regex
+                .capture_names()
+                .flatten()
+                .any(|name| groups.contains(&name))
+        };
+        match Regex::new(pattern) {
+            Ok(regex) if named(&regex) => Some(regex),
+            Ok(_) => {
+                self.mistake(
+                    span.clone(),
+                    format!(
+                        "this pattern of `{}` has no group that says what it found",
+                        key.name
+                    ),
+                    format!("expected {}", key.expected()),
+                    format!(
+                        "put the part that is wanted in (?<{}>...)",
+                        groups.first().unwrap_or(&"value")
+                    ),
+                );
+                None
+            }
+            Err(error) => {
+                let reason = error.to_string();
+                let reason = reason.lines().last().unwrap_or_default();
+                self.mistake(
+                    span.clone(),
+                    format!("`{}` holds a broken regular expression: {}", key.name, plain(reason.trim_start_matches("error: "))),
+                    format!("expected {}", key.expected()),
+                    "put the pattern in 'single quotes', where a backslash needs no doubling, and close every bracket",
+                );
+                None
+            }
+        }
+    }
+}
+
+#[expect(
+    clippy::cast_precision_loss,
+    reason = "beyond 2^53 a float rounds, far outside every range: the range check still speaks truly"
+)]
+fn as_float(whole: i64) -> f64 {
+    whole as f64
+}

@@ -1,0 +1,110 @@
+//! From the table of keys to text: the proposed job file and the list of defaults that were used.
+
+use std::collections::BTreeMap;
+use std::fmt::Write as _;
+
+use serde_json::Value;
+
+use super::key::{Key, Kind, toml_text};
+use super::keys::{TABLES, of_table};
+use super::{Job, Resolved};
+
+/// A value that the drawing itself suggests for a key.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Proposal {
+    /// The value.
+    pub value: Value,
+    /// Why, in a sentence.
+    pub why: String,
+}
+
+/// A job file with every key and its meaning. Proposed keys are set; all others stand as comments (`#key = value`)
+/// at their defaults. `head` goes on top, as comment lines.
+pub fn file(head: &[String], proposals: &BTreeMap<String, Proposal>) -> String {
+    let job = Job::default();
+    let mut text = String::new();
+    for line in head {
+        comment(&mut text, line);
+    }
+    for (table, meaning) in TABLES {
+        let _ = write!(text, "\n[{table}]\n");
+        comment(&mut text, meaning);
+        for key in of_table(table) {
+            text.push('\n');
+            let proposal = proposals.get(&key.path());
+            describe(&mut text, key, &job);
+            if let Some(proposal) = proposal {
+                comment(&mut text, &proposal.why);
+                let _ = writeln!(text, "{} = {}", key.name, toml_text(&proposal.value));
+            } else if matches!(key.kind, Kind::Strands(_)) {
+                strands(&mut text, &job);
+            } else {
+                let _ = writeln!(text, "#{}", key.example());
+            }
+        }
+    }
+    text
+}
+
+fn describe(text: &mut String, key: &Key, job: &Job) {
+    comment(text, key.meaning);
+    let source = match key.value(job) {
+        Some(_) => format!("Default: {}.", key.source),
+        None => format!("Not given: {}. For example:", key.source),
+    };
+    let allowed = match &key.kind {
+        Kind::Number { .. } | Kind::Choice { .. } => format!("{}. ", capital(&key.expected())),
+        _ => String::new(),
+    };
+    comment(text, &format!("{allowed}{source}"));
+}
+
+/// As inline tables: a `[[system.strand]]` header would take the keys that follow it.
+fn strands(text: &mut String, job: &Job) {
+    for size in &job.system.strands {
+        comment(
+            text,
+            &format!(
+                "{}: {} mm2, {} MPa",
+                size.name, size.area_mm2, size.strength_mpa
+            ),
+        );
+    }
+    text.push_str("#strand = [{ name = \"12.7\", area_mm2 = 98.7, strength_mpa = 1860 }]\n");
+}
+
+fn comment(text: &mut String, line: &str) {
+    for line in line.lines() {
+        let line: String = line.chars().filter(|c| !c.is_control()).collect();
+        let _ = writeln!(text, "{}", format!("# {line}").trim_end());
+    }
+}
+
+fn capital(text: &str) -> String {
+    let mut letters = text.chars();
+    letters
+        .next()
+        .map(|first| first.to_uppercase().chain(letters).collect())
+        .unwrap_or_default()
+}
+
+/// A sentence for every key that the file left at its default.
+pub(super) fn assumptions(resolved: &Resolved) -> Vec<String> {
+    super::keys::KEYS
+        .iter()
+        .filter(|key| !resolved.given.contains(&key.path()))
+        .filter_map(|key| {
+            let name = key.input_name();
+            match key.value(&resolved.job) {
+                Some(value) => Some(format!(
+                    "{name} = {} (default: {})",
+                    toml_text(&value),
+                    key.source
+                )),
+                // The one form of wobble that is not used says nothing.
+                None if key.name.starts_with("wobble") => None,
+                None => Some(format!("{name} not given: {}", key.source)),
+            }
+        })
+        .collect()
+}

@@ -1,0 +1,43 @@
+//! The strands of a tendon, as the job knows them.
+
+use super::Steel;
+use crate::floor::Tendon;
+use crate::job::System;
+
+/// The steel of one tendon; `None` where the count of strands is not known, or the size is not among the job's.
+/// A mark without a size has the job's default size, if there is one.
+pub fn steel(tendon: &Tendon, system: &System) -> Option<Steel> {
+    let strands = tendon.strands.filter(|&strands| strands > 0)?;
+    let name = tendon
+        .strand
+        .as_deref()
+        .or(system.default_strand.as_deref())?;
+    let size = system.strands.iter().find(|size| size.name == name)?;
+    Some(Steel {
+        area_mm2: f64::from(strands) * size.area_mm2,
+        strength_mpa: size.strength_mpa,
+        modulus_mpa: system.strand_modulus_mpa,
+    })
+}
+
+impl Steel {
+    /// Force at the jack at this fraction of strength, kN.
+    pub fn jacking_kn(&self, ratio: f64) -> f64 {
+        ratio * self.strength_mpa * self.area_mm2 * 1e-3
+    }
+
+    /// E A, kN.
+    pub fn stiffness_kn(&self) -> f64 {
+        self.modulus_mpa * self.area_mm2 * 1e-3
+    }
+
+    /// The force that makes this stress, kN.
+    pub fn force_kn(&self, stress_mpa: f64) -> f64 {
+        stress_mpa * self.area_mm2 * 1e-3
+    }
+
+    /// The stress that this force makes, MPa.
+    pub fn stress_mpa(&self, force_kn: f64) -> f64 {
+        force_kn * 1e3 / self.area_mm2
+    }
+}

@@ -1,0 +1,115 @@
+//! One tendon's whole working, to be checked by hand: every figure beside the formula and the numbers it came from.
+
+mod curve;
+mod drawn;
+mod forces;
+mod friction;
+
+use super::DrawingFacts;
+use super::summary::CAUTIONS;
+use super::table::{Align, plain, table};
+use crate::analysis::{Analysis, TendonResult};
+use crate::floor::Tendon;
+use crate::job::Job;
+
+/// The calculation sheet of every tendon with this mark (any letter case); `None` where no tendon has it.
+pub fn calculation(
+    facts: &DrawingFacts,
+    analysis: &Analysis,
+    job: &Job,
+    mark: &str,
+) -> Option<String> {
+    let sheets: Vec<String> = crate::analysis::pair(analysis)
+        .filter(|(tendon, _)| tendon.mark.eq_ignore_ascii_case(mark))
+        .map(|(tendon, result)| sheet(facts, analysis, job, tendon, result))
+        .collect();
+    (!sheets.is_empty()).then(|| sheets.join("\n"))
+}
+
+fn sheet(
+    facts: &DrawingFacts,
+    analysis: &Analysis,
+    job: &Job,
+    tendon: &Tendon,
+    result: &TendonResult,
+) -> String {
+    let mut parts = vec![drawn::part(facts, job, tendon, result)];
+    match &result.profile {
+        Some(profile) => {
+            parts.push(curve::part(job, profile));
+            match &result.forces {
+                Some(known) => {
+                    parts.push(friction::part(job, tendon, profile, known, result));
+                    parts.push(forces::part(job, tendon, known, result));
+                }
+                None => parts.push(
+                    "No forces: what the tendon lacks is among the findings below.\n".to_owned(),
+                ),
+            }
+        }
+        None => parts.push(
+            "No curve and no forces: what the tendon lacks is among the findings below.\n"
+                .to_owned(),
+        ),
+    }
+    parts.push(findings(analysis, tendon));
+    parts.push(assumptions(analysis));
+    parts.push(CAUTIONS.to_owned());
+    parts.join("\n")
+}
+
+fn findings(analysis: &Analysis, tendon: &Tendon) -> String {
+    let own: Vec<String> = analysis
+        .findings
+        .iter()
+        .filter(|finding| finding.tendon.as_deref() == Some(tendon.mark.as_str()))
+        .map(|finding| {
+            let station = finding
+                .station_m
+                .map(|station_m| format!(" at station {station_m:.3} m"))
+                .unwrap_or_default();
+            format!(
+                "  {} {}{station}: {}\n      {}\n",
+                finding.level.word(),
+                finding.rule.name,
+                plain(&finding.text),
+                plain(&finding.remedy)
+            )
+        })
+        .collect();
+    if own.is_empty() {
+        "Findings on this tendon: none by the rules that were run.\n".to_owned()
+    } else {
+        format!("Findings on this tendon:\n{}", own.concat())
+    }
+}
+
+fn assumptions(analysis: &Analysis) -> String {
+    let lines: Vec<String> = analysis
+        .assumptions
+        .iter()
+        .map(|line| format!("  {}\n", plain(line)))
+        .collect();
+    format!("Assumed:\n{}", lines.concat())
+}
+
+/// A table whose first `words` columns hold words and the rest numbers.
+fn grid(words: usize, header: &[&str], rows: Vec<Vec<String>>) -> String {
+    let aligns: Vec<Align> = (0..header.len())
+        .map(|column| {
+            if column < words {
+                Align::Left
+            } else {
+                Align::Right
+            }
+        })
+        .collect();
+    let mut all = vec![header.iter().map(|&cell| cell.to_owned()).collect()];
+    all.extend(rows);
+    table(&aligns, &all)
+}
+
+/// A number, or a dash where there is none.
+fn number(value: Option<f64>, decimals: usize) -> String {
+    value.map_or_else(|| "-".to_owned(), |value| format!("{value:.decimals$}"))
+}

@@ -1,0 +1,106 @@
+//! What the drawing says of the tendon.
+
+use super::{grid, number};
+use crate::analysis::TendonResult;
+use crate::floor::{EndKind, Tendon};
+use crate::job::Job;
+use crate::losses::steel;
+use crate::report::DrawingFacts;
+use crate::report::table::plain;
+
+/// Heading, strands and steel, points as read.
+pub(super) fn part(
+    facts: &DrawingFacts,
+    job: &Job,
+    tendon: &Tendon,
+    result: &TendonResult,
+) -> String {
+    let mut text = vec![format!(
+        "Calculation sheet: tendon {} of {} (handle {}, layer {})\n",
+        plain(&tendon.mark),
+        plain(&facts.file),
+        plain(&tendon.handle),
+        plain(&tendon.layer)
+    )];
+    text.push(strands(job, tendon));
+    let ends = tendon.ends.map(|end| match end.kind {
+        Some(EndKind::Live) => "live",
+        Some(EndKind::Dead) => "dead",
+        None => "unknown",
+    });
+    text.push(format!(
+        "  ends: {} at station 0, {} at the last station\n\n",
+        ends[0], ends[1]
+    ));
+    text.push("1. Points as drawn: height of the strands' centroid above the local soffit; level = height - thickness\n".to_owned());
+    let rows = tendon
+        .points
+        .iter()
+        .zip(&result.points)
+        .map(|(point, worked)| {
+            vec![
+                kind(point.kind).to_owned(),
+                format!("{:.3}", point.station_m),
+                format!("{:.3}", point.place.x),
+                format!("{:.3}", point.place.y),
+                number(point.height_m.map(|h| h * 1000.0), 1),
+                number(point.thickness_m.map(|t| t * 1000.0), 0),
+                number(worked.level_m.map(|l| l * 1000.0), 1),
+            ]
+        })
+        .collect();
+    text.push(grid(
+        1,
+        &[
+            "point",
+            "station m",
+            "x m",
+            "y m",
+            "height mm",
+            "thickness mm",
+            "level mm",
+        ],
+        rows,
+    ));
+    text.concat()
+}
+
+fn strands(job: &Job, tendon: &Tendon) -> String {
+    let several = if tendon.tendons > 1 {
+        format!(
+            "; the line stands for {} such tendons, forces are for one",
+            tendon.tendons
+        )
+    } else {
+        String::new()
+    };
+    match (tendon.strands, steel(tendon, &job.system)) {
+        (Some(count), Some(steel)) => {
+            let one_mm2 = steel.area_mm2 / f64::from(count);
+            let jack_kn = steel.jacking_kn(job.stressing.jacking_ratio);
+            format!(
+                "  {count} strands of {one_mm2} mm2: Ap = {:.1} mm2, fpk = {} MPa, Ep = {} MPa{several}\n  \
+                 P0 = {} x {} MPa x {:.1} mm2 / 1000 = {jack_kn:.2} kN\n",
+                steel.area_mm2,
+                steel.strength_mpa,
+                steel.modulus_mpa,
+                job.stressing.jacking_ratio,
+                steel.strength_mpa,
+                steel.area_mm2,
+            )
+        }
+        (Some(count), None) => format!("  {count} strands of a size that the job does not know\n"),
+        (None, _) => "  strands: not known\n".to_owned(),
+    }
+}
+
+/// A point's kind in a word.
+pub(super) fn kind(kind: crate::floor::PointKind) -> &'static str {
+    use crate::floor::PointKind;
+    match kind {
+        PointKind::Anchor => "anchor",
+        PointKind::High => "high",
+        PointKind::Low => "low",
+        PointKind::Support => "support",
+    }
+}

@@ -1,0 +1,98 @@
+//! Jacking: friction from the jack, point by point.
+
+use super::drawn::kind;
+use super::grid;
+use crate::analysis::TendonResult;
+use crate::floor::{EndKind, Tendon};
+use crate::job::{Job, Wobble};
+use crate::losses::{Forces, Friction};
+use crate::profile::Profile;
+
+/// The exponent at each point from each live end, and the force at jacking.
+pub(super) fn part(
+    job: &Job,
+    tendon: &Tendon,
+    profile: &Profile,
+    forces: &Forces,
+    result: &TendonResult,
+) -> String {
+    let mu = job.stressing.mu_per_rad;
+    let formula = match job.stressing.wobble {
+        Wobble::RadPerM(k) => {
+            format!("phi = mu (alpha + k s), mu = {mu} /rad, k = {k} rad/m (EN 1992-1-1 5.10.5.2)")
+        }
+        Wobble::PerM(k) => format!("phi = mu alpha + K s, mu = {mu} /rad, K = {k} /m"),
+    };
+    let mut text = vec![format!(
+        "3. Jacking: P = P0 exp(-phi), {formula}\n   alpha and s run from the jack; P0 = {:.2} kN{}\n",
+        forces.jack_kn,
+        if live(forces, 0) && live(forces, 1) {
+            "; of the two ends' curves the larger holds"
+        } else {
+            ""
+        }
+    )];
+    let friction = Friction::of(&job.stressing);
+    let rows = tendon
+        .points
+        .iter()
+        .zip(&result.points)
+        .map(|(point, worked)| {
+            let station_m = point.station_m;
+            let from_start_rad = profile.angle_rad(station_m);
+            let from_end_rad = profile.angle_from_end_rad(station_m);
+            let along_m = profile.arc_length_m(station_m);
+            let back_m = profile.length_m() - along_m;
+            let mut row = vec![kind(point.kind).to_owned(), format!("{station_m:.3}")];
+            for (end, angle_rad, length_m) in
+                [(0, from_start_rad, along_m), (1, from_end_rad, back_m)]
+            {
+                if live(forces, end) {
+                    let exponent = friction.exponent(angle_rad, length_m);
+                    row.push(format!("{angle_rad:.6}"));
+                    row.push(format!("{length_m:.4}"));
+                    row.push(format!("{exponent:.6}"));
+                }
+            }
+            row.push(
+                worked
+                    .forces_kn
+                    .map_or_else(|| "-".to_owned(), |kn| format!("{:.2}", kn[0])),
+            );
+            row
+        })
+        .collect();
+    let mut header = vec!["point", "station m"];
+    if live(forces, 0) {
+        header.extend(["alpha rad", "s m", "phi"]);
+    }
+    if live(forces, 1) {
+        header.extend(["alpha rad", "s m", "phi"]);
+    }
+    header.push("P kN");
+    text.push(grid(1, &header, rows));
+    if live(forces, 0) && live(forces, 1) {
+        text.push(
+            "  first alpha, s, phi from station 0; second from the last station\n".to_owned(),
+        );
+    }
+    if !profile.bends.is_empty() {
+        text.push("  at a bend the force is a step; the lesser side is listed\n".to_owned());
+    }
+    let totals = &forces.totals;
+    text.push(format!(
+        "  least force {:.2} kN at station {:.3} m, {:.4} of P0\n  \
+         lost to angle alone down to there: P0 (1 - exp(-mu alpha)) = {:.2} kN ({:.2} % of P0); to wobble: {:.2} kN\n",
+        forces.least_jacking_kn,
+        forces.least_jacking_station_m,
+        forces.least_jacking_kn / forces.jack_kn,
+        totals.friction_curvature_kn,
+        100.0 * totals.friction_curvature_kn / forces.jack_kn,
+        totals.friction_wobble_kn,
+    ));
+    text.concat()
+}
+
+fn live(forces: &Forces, end: usize) -> bool {
+    forces.ends[end].kind == EndKind::Live
+}

@@ -1,0 +1,286 @@
+//! The result as CSV tables (RFC 4180), one for each reader: units in the header, numbers rounded to what is measured.
+
+use super::plain;
+use super::record::{EndRecord, FindingRecord, TendonRecord};
+use crate::analysis::{Analysis, pair};
+use crate::floor::{EndKind, PointKind, Run};
+
+/// A row a tendon.
+pub fn tendons_csv(analysis: &Analysis) -> String {
+    let header = [
+        "mark",
+        "handle",
+        "layer",
+        "run",
+        "tendons",
+        "strands",
+        "strand",
+        "area_mm2",
+        "length_m",
+        "plan_length_m",
+        "radius_min_m",
+        "radius_plan_min_m",
+        "start",
+        "end",
+        "jacking_kn",
+        "angle_rad",
+        "curvature_loss_percent",
+        "friction_curvature_kn",
+        "friction_wobble_kn",
+        "draw_in_kn",
+        "shortening_mpa",
+        "shrinkage_mpa",
+        "creep_mpa",
+        "relaxation_mpa",
+        "mean_service_kn",
+        "concrete_stress_mpa",
+    ];
+    let rows = pair(analysis).map(|(tendon, result)| {
+        let record = TendonRecord::of(tendon, result);
+        let losses = record.losses.as_ref();
+        let jack_kn = result.forces.as_ref().map(|forces| forces.jack_kn);
+        vec![
+            text(record.mark),
+            text(record.handle),
+            text(record.layer),
+            run(record.run).to_owned(),
+            record.tendons.to_string(),
+            record.strands.map(|n| n.to_string()).unwrap_or_default(),
+            text(record.strand.unwrap_or_default()),
+            rounded(record.area_mm2, 1),
+            rounded(record.length_m, 3),
+            rounded(record.plan_length_m, 3),
+            rounded(record.radius_min_m, 2),
+            rounded(record.radius_plan_min_m, 2),
+            end_kind(&record.ends[0]).to_owned(),
+            end_kind(&record.ends[1]).to_owned(),
+            rounded(jack_kn, 1),
+            rounded(record.angle_rad, 4),
+            rounded(record.curvature_loss_ratio.map(|ratio| 100.0 * ratio), 1),
+            rounded(losses.and_then(|l| l.friction_curvature_kn), 1),
+            rounded(losses.and_then(|l| l.friction_wobble_kn), 1),
+            rounded(losses.and_then(|l| l.draw_in_kn), 1),
+            rounded(losses.and_then(|l| l.shortening_mpa), 1),
+            rounded(losses.and_then(|l| l.shrinkage_mpa), 1),
+            rounded(losses.and_then(|l| l.creep_mpa), 1),
+            rounded(losses.and_then(|l| l.relaxation_mpa), 1),
+            rounded(record.mean_service_kn, 1),
+            rounded(record.concrete_stress_mpa, 2),
+        ]
+    });
+    written(&header, rows)
+}
+
+/// A row a profile point; forces are per tendon.
+pub fn points_csv(analysis: &Analysis) -> String {
+    let header = [
+        "mark",
+        "kind",
+        "station_m",
+        "x_m",
+        "y_m",
+        "height_mm",
+        "level_m",
+        "angle_rad",
+        "jacking_kn",
+        "lockoff_kn",
+        "transfer_kn",
+        "service_kn",
+    ];
+    let rows = pair(analysis).flat_map(|(tendon, result)| {
+        let record = TendonRecord::of(tendon, result);
+        let mark = text(record.mark);
+        record.points.into_iter().map(move |point| {
+            vec![
+                mark.clone(),
+                point_kind(point.kind).to_owned(),
+                rounded(point.station_m, 3),
+                rounded(point.x_m, 3),
+                rounded(point.y_m, 3),
+                rounded(point.height_mm, 1),
+                rounded(point.level_m, 4),
+                rounded(point.angle_rad, 4),
+                rounded(point.jacking_kn, 1),
+                rounded(point.lockoff_kn, 1),
+                rounded(point.transfer_kn, 1),
+                rounded(point.service_kn, 1),
+            ]
+        })
+    });
+    written(&header, rows)
+}
+
+/// A row a live end, with empty cells where the extension is not known.
+pub fn extensions_csv(analysis: &Analysis) -> String {
+    let header = [
+        "mark",
+        "end",
+        "x_m",
+        "y_m",
+        "tendons",
+        "strands",
+        "strand",
+        "jacking_kn",
+        "extension_mm",
+        "extension_net_mm",
+        "draw_in_reach_m",
+    ];
+    let rows = pair(analysis).flat_map(|(tendon, result)| {
+        let record = TendonRecord::of(tendon, result);
+        let known = [
+            text(record.mark),
+            record.tendons.to_string(),
+            record.strands.map(|n| n.to_string()).unwrap_or_default(),
+            text(record.strand.unwrap_or_default()),
+        ];
+        ["start", "end"]
+            .into_iter()
+            .zip(record.ends)
+            .filter_map(move |(which, end)| {
+                let live = end.live?;
+                let [mark, tendons, strands, strand] = known.clone();
+                Some(vec![
+                    mark,
+                    which.to_owned(),
+                    rounded(end.x_m, 3),
+                    rounded(end.y_m, 3),
+                    tendons,
+                    strands,
+                    strand,
+                    rounded(live.jacking_kn, 1),
+                    rounded(live.extension_mm, 1),
+                    rounded(live.extension_net_mm, 1),
+                    rounded(live.draw_in_reach_m, 2),
+                ])
+            })
+    });
+    written(&header, rows)
+}
+
+/// A row a finding.
+pub fn findings_csv(analysis: &Analysis) -> String {
+    let header = [
+        "rule",
+        "level",
+        "tendon",
+        "station_m",
+        "x_m",
+        "y_m",
+        "text",
+        "remedy",
+    ];
+    let rows = analysis.findings.iter().map(|finding| {
+        let record = FindingRecord::of(finding);
+        vec![
+            record.rule.to_owned(),
+            record.level.word().to_owned(),
+            text(record.tendon.unwrap_or_default()),
+            rounded(record.station_m, 3),
+            rounded(record.x_m, 3),
+            rounded(record.y_m, 3),
+            text(record.text),
+            text(record.remedy),
+        ]
+    });
+    written(&header, rows)
+}
+
+/// A text cell. A spreadsheet runs a cell that begins as a formula does, and this text may come from the drawing: an
+/// apostrophe keeps it text. Control characters are written out, line ends kept.
+fn text(content: &str) -> String {
+    let lines: Vec<String> = content.split('\n').map(plain).collect();
+    let shown = lines.join("\n");
+    // Blanks before the sign do not stop every spreadsheet.
+    if shown.trim_start().starts_with(['=', '+', '-', '@']) {
+        format!("'{shown}")
+    } else {
+        shown
+    }
+}
+
+/// A number cell, empty where the number is not known; zero without a sign.
+fn rounded(value: Option<f64>, decimals: usize) -> String {
+    value.map_or(String::new(), |value| {
+        let cell = format!("{value:.decimals$}");
+        let zero = cell.chars().all(|c| matches!(c, '-' | '0' | '.'));
+        if zero {
+            cell.trim_start_matches('-').to_owned()
+        } else {
+            cell
+        }
+    })
+}
+
+fn run(run: Run) -> &'static str {
+    match run {
+        Run::Banded => "banded",
+        Run::Distributed => "distributed",
+    }
+}
+
+fn end_kind(end: &EndRecord) -> &'static str {
+    match end.kind {
+        Some(EndKind::Live) => "live",
+        Some(EndKind::Dead) => "dead",
+        None => "",
+    }
+}
+
+fn point_kind(kind: PointKind) -> &'static str {
+    match kind {
+        PointKind::Anchor => "anchor",
+        PointKind::High => "high",
+        PointKind::Low => "low",
+        PointKind::Support => "support",
+    }
+}
+
+fn written(header: &[&str], rows: impl Iterator<Item = Vec<String>>) -> String {
+    let mut writer = ::csv::WriterBuilder::new()
+        .terminator(::csv::Terminator::CRLF)
+        .flexible(true)
+        .from_writer(Vec::new());
+    // Writing into memory cannot fail, and rows of any length are taken.
+    let mut write = |row: &mut dyn Iterator<Item = &str>| writer.write_record(row).ok();
+    write(&mut header.iter().copied());
+    for row in rows {
+        write(&mut row.iter().map(String::as_str));
+    }
+    let bytes = writer.into_inner().unwrap_or_default();
+    String::from_utf8(bytes).unwrap_or_default()
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_cell_that_a_spreadsheet_would_run_is_kept_text() {
+        for evil in ["=1+1", "+1", "-1", "@SUM(A1)", " =1", "\n=1"] {
+            assert_eq!(text(evil), format!("'{evil}"));
+        }
+        assert_eq!(text("\t=1"), "\\t=1");
+        assert_eq!(text("D012"), "D012");
+    }
+
+    #[test]
+    fn numbers_are_rounded_and_zero_has_no_sign() {
+        assert_eq!(rounded(Some(-0.0004), 3), "0.000");
+        assert_eq!(rounded(Some(-0.0006), 3), "-0.001");
+        assert_eq!(rounded(None, 3), "");
+    }
+
+    #[test]
+    fn cells_are_quoted_where_they_must_be() {
+        let row = vec![
+            "a,b".to_owned(),
+            "say \"x\"".to_owned(),
+            "two\nlines".to_owned(),
+        ];
+        let made = written(&["p", "q", "r"], std::iter::once(row));
+        assert_eq!(
+            made,
+            "p,q,r\r\n\"a,b\",\"say \"\"x\"\"\",\"two\nlines\"\r\n"
+        );
+    }
+}

@@ -1,0 +1,314 @@
+"""Work out every tendon of a result again, by dense integration along the curve in space.
+
+Usage: recompute.py DRAWING.dxf RESULT.json
+
+Shares no formula with the program: the plan line comes from the drawing through ezdxf, the levels from integrating a
+piecewise constant curvature twice, the angle from the turning between neighbouring chords of the curve in space, the
+friction from marching along it, the draw-in from bisection on the area between the two curves. What it takes from the
+result file are the inputs and where the points are. Forces at every point must agree within 0.1 %.
+"""
+
+import json
+import math
+import sys
+
+import ezdxf
+import numpy as np
+
+STEP_M = 0.004
+TOLERANCE = 1e-3
+
+
+def arc_points(centre, radius, start, sweep, step):
+    count = max(2, int(math.ceil(abs(sweep) * radius / step)))
+    angles = start + sweep * np.linspace(0.0, 1.0, count + 1)
+    return np.column_stack([centre[0] + radius * np.cos(angles), centre[1] + radius * np.sin(angles)])
+
+
+def bulge_points(a, b, bulge, step):
+    """Points of the circular piece between two vertices; the centre is found from three points of the circle."""
+    a, b = np.asarray(a, float), np.asarray(b, float)
+    chord = np.hypot(*(b - a))
+    if abs(bulge) < 1e-9 or chord == 0.0:
+        return np.array([a, b])
+    crown = (a + b) / 2 + bulge / 2 * np.array([(b - a)[1], -(b - a)[0]])
+    # Circle through a, crown, b: two perpendicular bisectors.
+    system = np.array([crown - a, b - crown])
+    right = np.array([(crown @ crown - a @ a) / 2, (b @ b - crown @ crown) / 2])
+    centre = np.linalg.solve(system, right)
+    radius = np.hypot(*(a - centre))
+    return arc_points(centre, radius, math.atan2(*(a - centre)[::-1]), 4 * math.atan(bulge), step)
+
+
+def entity_points(entity, unit):
+    step = STEP_M / unit
+    kind = entity.dxftype()
+    if kind == "LINE":
+        pieces = [np.array([entity.dxf.start[:2], entity.dxf.end[:2]])]
+    elif kind == "ARC":
+        start = math.radians(entity.dxf.start_angle)
+        sweep = math.radians((entity.dxf.end_angle - entity.dxf.start_angle) % 360.0)
+        pieces = [arc_points(entity.dxf.center, entity.dxf.radius, start, sweep, step)]
+    elif kind in ("LWPOLYLINE", "POLYLINE"):
+        if kind == "LWPOLYLINE":
+            vertices = [(x, y, b) for x, y, b in entity.get_points("xyb")]
+        else:
+            vertices = [(*v.dxf.location[:2], v.dxf.get("bulge", 0.0)) for v in entity.vertices]
+        pieces = [bulge_points(a[:2], b[:2], a[2], step) for a, b in zip(vertices, vertices[1:])]
+    elif kind == "SPLINE":
+        pieces = [np.array([p[:2] for p in entity.flattening(0.02 * 0.001 / unit, 64)])]
+    else:
+        raise SystemExit(f"recompute: no plan line is known for a {kind}")
+    line = [pieces[0][0]]
+    for piece in pieces:
+        line.extend(piece[1:])
+    return np.array(line) * unit
+
+
+def chain(first, pool, gap=0.011):
+    """The plan line that starts from entity `first`, with the pieces whose ends meet it joined on."""
+    line, rest = first, list(pool)
+    grown = True
+    while grown:
+        grown = False
+        for index, other in enumerate(rest):
+            for candidate in (other, other[::-1]):
+                if np.hypot(*(line[-1] - candidate[0])) <= gap:
+                    line = np.vstack([line, candidate[1:]])
+                elif np.hypot(*(line[0] - candidate[-1])) <= gap:
+                    line = np.vstack([candidate[:-1], line])
+                else:
+                    continue
+                rest.pop(index)
+                grown = True
+                break
+            if grown:
+                break
+    return line
+
+
+def densify(line):
+    """The plan line with points no further apart than STEP_M, and its stations."""
+    out = [line[:1]]
+    for a, b in zip(line, line[1:]):
+        count = max(1, int(math.ceil(np.hypot(*(b - a)) / STEP_M)))
+        out.append(a + (b - a) * (np.arange(1, count + 1) / count)[:, None])
+    points = np.vstack(out)
+    keep = np.concatenate([[True], np.hypot(*np.diff(points, axis=0).T) > 1e-9])
+    points = points[keep]
+    return points, np.concatenate([[0.0], np.cumsum(np.hypot(*np.diff(points, axis=0).T))])
+
+
+def bending(points, inflection):
+    """Pieces (from, to, curvature, level, slope at from) between the fixed points, from what each end must do."""
+    fixed = [p for p in points if p["kind"] != "support"]
+    posts = [p["station_m"] for p in fixed if p["kind"] in ("high", "anchor")]
+    pieces = []
+    for a, b in zip(fixed, fixed[1:]):
+        s, t, za, zb = a["station_m"], b["station_m"], a["level_m"], b["level_m"]
+        length, kinds = t - s, (a["kind"], b["kind"])
+        if length <= 0:
+            continue
+        if set(kinds) == {"high", "low"}:
+            high = s if kinds[0] == "high" else t
+            other = [p for p in posts if (p > high + 1e-9 if kinds[0] == "high" else p < high - 1e-9)]
+            span = abs((min(other) if kinds[0] == "high" else max(other)) - high) if other else length
+            hog = min(inflection * span, length)
+            # Level at both ends: k1 a + k2 (l - a) = 0, and the rise follows from integrating twice.
+            def rise(k1):
+                k2 = -k1 * hog / (length - hog) if length > hog else 0.0
+                return k1 * hog**2 / 2 + k1 * hog * (length - hog) + k2 * (length - hog) ** 2 / 2
+            drop = zb - za if kinds[0] == "high" else za - zb
+            if length - hog < 1e-9:
+                raise SystemExit("recompute: hogging length fills the whole piece; not covered here")
+            k1 = drop / rise(1.0)
+            k2 = -k1 * hog / (length - hog)
+            if kinds[0] == "high":
+                pieces += [(s, s + hog, k1, za, 0.0), (s + hog, t, k2, za + k1 * hog**2 / 2, k1 * hog)]
+            else:
+                low_part = length - hog
+                pieces += [(s, s + low_part, k2, za, 0.0),
+                           (s + low_part, t, k1, za + k2 * low_part**2 / 2, k2 * low_part)]
+        elif "anchor" in kinds and set(kinds) & {"low", "high"}:
+            # Level at the high or low point, one parabola to the anchor.
+            if kinds[0] == "anchor":
+                k = 2 * (za - zb) / length**2
+                pieces.append((s, t, k, za, -k * length))
+            else:
+                pieces.append((s, t, 2 * (zb - za) / length**2, za, 0.0))
+        else:
+            pieces.append((s, t, 0.0, za, (zb - za) / length))
+    return pieces
+
+
+def levels(stations, pieces):
+    z = np.empty_like(stations)
+    for start, end, k, level, slope in pieces:
+        inside = (stations >= start - 1e-12) & (stations <= end + 1e-12)
+        x = stations[inside] - start
+        z[inside] = level + slope * x + k * x * x / 2
+    return z
+
+
+def march(line, points, inflection):
+    """Arc length in space and angle turned, at dense stations that include every break of curvature."""
+    plan, stations = densify(line)
+    pieces = bending(points, inflection)
+    breaks = sorted({round(v, 12) for p in pieces for v in p[:2]} | {p["station_m"] for p in points})
+    breaks = [b for b in breaks if 0 < b < stations[-1]]
+    merged = np.unique(np.concatenate([stations, breaks]))
+    merged = merged[np.concatenate([[True], np.diff(merged) > 1e-7])]
+    space = np.column_stack([np.interp(merged, stations, plan[:, 0]), np.interp(merged, stations, plan[:, 1]),
+                             levels(np.minimum(merged, pieces[-1][1]), pieces)])
+    chords = np.diff(space, axis=0)
+    lengths = np.linalg.norm(chords, axis=1)
+    unit = chords / lengths[:, None]
+    turned = np.arctan2(np.linalg.norm(np.cross(unit[:-1], unit[1:]), axis=1), np.sum(unit[:-1] * unit[1:], axis=1))
+    # Angle at a vertex, half before it and half after it: a smooth curve's angle up to that vertex.
+    after = np.concatenate([[0.0], np.cumsum(turned), [np.sum(turned)]])
+    before = np.concatenate([[0.0, 0.0], np.cumsum(turned)])
+    arc = np.concatenate([[0.0], np.cumsum(lengths)])
+    # The level ends of the curve: slope at the first vertex differs from the first chord's by half a step's turning.
+    return merged, arc, before[: len(merged)], after[: len(merged)]
+
+
+def lower(jacking, exponent, arc, jack, wanted):
+    """Force after draw-in at one live end: bisection on the force at that anchor for the wanted area."""
+    def locked(anchor):
+        return np.minimum(jacking, anchor * np.exp(exponent))
+
+    def area(anchor):
+        gap = jacking - locked(anchor)
+        return float(np.sum((gap[1:] + gap[:-1]) / 2 * np.diff(arc)))
+
+    low, high = 0.0, jack
+    if area(low) < wanted:
+        raise SystemExit("recompute: the draw-in takes all the force")
+    for _ in range(100):
+        middle = (low + high) / 2
+        low, high = (middle, high) if area(middle) > wanted else (low, middle)
+    return locked((low + high) / 2)
+
+
+def lower_both(jacking, phi, arc, jack, wanted):
+    """Two live ends: each end's own area, divided where the two locked-off curves meet, if they do."""
+    total = phi[-1]
+    left = lower(jacking, phi, arc, jack, wanted)
+    right = lower(jacking, total - phi, arc, jack, wanted)
+    if np.all((left >= jacking - 1e-9) | (right >= jacking - 1e-9)):
+        return np.minimum(left, right)
+
+    def locked(a, b):
+        return np.minimum(jacking, np.minimum(a * np.exp(phi), b * np.exp(total - phi)))
+
+    def areas(a, b):
+        gap = jacking - locked(a, b)
+        strip = (gap[1:] + gap[:-1]) / 2 * np.diff(arc)
+        division = phi[:-1] < (total + math.log(b / a)) / 2
+        return float(np.sum(strip[division])), float(np.sum(strip[~division]))
+
+    a_low, a_high = 1e-6, jack
+    for _ in range(60):
+        a = (a_low + a_high) / 2
+        b_low, b_high = 1e-6, jack
+        for _ in range(60):
+            b = (b_low + b_high) / 2
+            b_low, b_high = (b, b_high) if sum(areas(a, b)) > 2 * wanted else (b_low, b)
+        if areas(a, (b_low + b_high) / 2)[0] > wanted:
+            a_low = a
+        else:
+            a_high = a
+    return locked((a_low + a_high) / 2, (b_low + b_high) / 2)
+
+
+def work(tendon, line, inputs):
+    points = tendon["points"]
+    stations, arc, before, after = march(line, points, inputs["inflection"])
+    mu = inputs["mu_per_rad"]
+    per_m = inputs["wobble_per_m"] if inputs.get("wobble_per_m") is not None else mu * inputs["wobble_rad_per_m"]
+    angle = (before + after) / 2
+    phi = mu * angle + per_m * arc
+    area = tendon["area_mm2"]
+    live = [end["kind"] == "live" for end in tendon["ends"]]
+    jack = next(end["jacking_kn"] for end in tendon["ends"] if end["kind"] == "live")
+    wanted = inputs["draw_in_mm"] / 1000 * inputs["strand_modulus_mpa"] * area / 1000
+    forward, backward = jack * np.exp(-phi), jack * np.exp(phi - phi[-1])
+    if all(live):
+        jacking = np.maximum(forward, backward)
+        locked = lower_both(jacking, phi, arc, jack, wanted)
+    elif live[0]:
+        jacking = forward
+        locked = lower(jacking, phi, arc, jack, wanted)
+    else:
+        jacking = backward
+        locked = lower(jacking, phi[-1] - phi, arc, jack, wanted)
+
+    modulus, sigma = inputs["strand_modulus_mpa"], tendon["concrete_stress_mpa"]
+    shortening = inputs["shortening_share"] * modulus / inputs["concrete_modulus_transfer_mpa"] * sigma
+    steady = modulus * inputs["shrinkage_strain"] \
+        + modulus / inputs["concrete_modulus_mpa"] * inputs["creep_coefficient"] * sigma
+    relaxed = inputs["relaxation_1000h"] * inputs["relaxation_factor"]
+    transfer = locked - shortening * area / 1000
+    service = transfer - steady * area / 1000 - relaxed * locked
+
+    stretch = (jacking[1:] + jacking[:-1]) / 2 * np.diff(arc) / (modulus * area / 1e6)
+    worst = 0.0
+    curves = {"jacking_kn": jacking, "lockoff_kn": locked, "transfer_kn": transfer, "service_kn": service}
+    for point in points:
+        near = np.abs(stations - point["station_m"]) <= 2 * STEP_M
+        if not near.any():
+            near = np.abs(stations - point["station_m"]) == np.abs(stations - point["station_m"]).min()
+        for name, curve in curves.items():
+            value = point[name]
+            # At a corner the force is a step: any value between its two sides will do.
+            low, high = curve[near].min(), curve[near].max()
+            off = max(low - value, value - high, 0.0) / high
+            worst = max(worst, off)
+    division = int(np.argmin(jacking))
+    if all(live):
+        shares = [float(stretch[:division].sum()), float(stretch[division:].sum())]
+    else:
+        shares = [float(stretch.sum())] * 2
+    for end, share in zip(tendon["ends"], shares):
+        if end["kind"] == "live":
+            worst = max(worst, abs(end["extension_mm"] - share * 1000) / (share * 1000))
+            net = share * 1000 - inputs["draw_in_mm"]
+            worst = max(worst, abs(end["extension_net_mm"] - net) / net)
+    worst = max(worst, abs(tendon["length_m"] - arc[-1]) / arc[-1])
+    return worst
+
+
+def main():
+    drawing, result_file = sys.argv[1:3]
+    result = json.load(open(result_file, encoding="utf-8"))
+    document = ezdxf.readfile(drawing)
+    unit = result["drawing"]["unit_m"]
+    layers = {t["layer"] for t in result["tendons"]}
+    lines = {}
+    for entity in document.modelspace():
+        if entity.dxf.layer in layers and entity.dxftype() in ("LINE", "ARC", "LWPOLYLINE", "POLYLINE", "SPLINE"):
+            lines[entity.dxf.handle.upper()] = (entity.dxf.layer, entity_points(entity, unit))
+
+    checked, failures = 0, []
+    for tendon in result["tendons"]:
+        if tendon["points"] and tendon["points"][0].get("service_kn") is None:
+            continue
+        layer, first = lines[tendon["handle"].upper()]
+        pool = [line for handle, (on, line) in lines.items() if on == layer and handle != tendon["handle"].upper()]
+        line = chain(first, pool)
+        start = np.array([tendon["points"][0]["x_m"], tendon["points"][0]["y_m"]])
+        if np.hypot(*(line[-1] - start)) < np.hypot(*(line[0] - start)):
+            line = line[::-1]
+        worst = work(tendon, line, result["inputs"])
+        checked += 1
+        if not worst <= TOLERANCE:
+            failures.append(f"{tendon['mark']}: off by {worst:.2%}")
+    print(f"{drawing}: {checked} tendons of {len(result['tendons'])} worked out again, {len(failures)} off by more than 0.1 %")
+    for failure in failures:
+        print("  " + failure)
+    if checked == 0 or failures:
+        raise SystemExit(1)
+
+
+if __name__ == "__main__":
+    main()

@@ -1,0 +1,260 @@
+//! The outputs of one hand-made analysis, held against files one can open; `SNAPSHOTS=overwrite` refreshes them.
+
+use geo::Coord;
+use snapbox::{assert_data_eq, file};
+use tautplan::analysis::{Analysis, PointResult, TendonResult};
+use tautplan::checks;
+use tautplan::finding::{Finding, Level};
+use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
+use tautplan::geometry::Path;
+use tautplan::losses::{EndForces, Forces, LossTotals, Steel};
+use tautplan::profile::{Profile, Span};
+use tautplan::report::{self, DrawingFacts};
+
+fn at(x: f64, y: f64) -> Coord<f64> {
+    Coord { x, y }
+}
+
+fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64>; 3]) -> Tendon {
+    let stations_m = [0.0, 5.0, 10.0];
+    let kinds = [PointKind::Anchor, PointKind::Low, PointKind::Anchor];
+    Tendon {
+        mark: mark.to_owned(),
+        mark_drawn: true,
+        handle: "2A7".to_owned(),
+        layer: "TENDON-DISTRIBUTED".to_owned(),
+        run: Run::Distributed,
+        path: Path::through(&[at(0.0, y), at(10.0, y)]),
+        tendons: 2,
+        strands: Some(5),
+        strand: Some("12.7".to_owned()),
+        ends: [(ends[0], 0.0), (ends[1], 10.0)].map(|(kind, x)| End {
+            kind,
+            place: at(x, y),
+        }),
+        points: (0..3)
+            .map(|n| Point {
+                kind: kinds[n],
+                station_m: stations_m[n],
+                place: at(stations_m[n], y),
+                height_m: heights_m[n],
+                thickness_m: Some(0.2),
+            })
+            .collect(),
+    }
+}
+
+/// Two parabolas that meet level at the low point.
+fn profile() -> Profile {
+    let half = |start_m: f64, level_m: f64, slope: f64| Span {
+        start_m,
+        length_m: 5.0,
+        level_m,
+        slope,
+        curvature_per_m: 0.0056,
+        plan_curvature_per_m: 0.0,
+    };
+    Profile::new(
+        vec![half(0.0, -0.1, -0.028), half(5.0, -0.17, 0.0)],
+        Vec::new(),
+    )
+}
+
+fn forces() -> Forces {
+    let end = |kind, known: Option<[f64; 3]>| EndForces {
+        kind,
+        extension_mm: known.map(|k| k[0]),
+        extension_net_mm: known.map(|k| k[1]),
+        draw_in_reach_m: known.map(|k| k[2]),
+        draw_in_reaches_far: false,
+    };
+    Forces {
+        steel: Steel {
+            area_mm2: 493.5,
+            strength_mpa: 1860.0,
+            modulus_mpa: 195_000.0,
+        },
+        jack_kn: 688.4325,
+        ends: [
+            end(EndKind::Live, Some([69.3, 63.3, 9.75])),
+            end(EndKind::Dead, None),
+        ],
+        totals: LossTotals {
+            friction_curvature_kn: 7.29,
+            friction_wobble_kn: 10.32,
+            draw_in_kn: 108.5,
+            shortening_mpa: 8.7,
+            shrinkage_mpa: 78.0,
+            creep_mpa: -0.0,
+            // No output shows a number that is none.
+            relaxation_mpa: f64::NAN,
+        },
+        mean_service_kn: 553.25,
+        least_jacking_kn: 670.82,
+        least_jacking_station_m: 10.0,
+    }
+}
+
+fn analysis() -> Analysis {
+    let worked = tendon(
+        "D001",
+        0.0,
+        [Some(EndKind::Live), Some(EndKind::Dead)],
+        [None, Some(0.03), Some(0.1)],
+    );
+    let unworked = tendon(
+        "=D2\u{1b}[31m",
+        1.2,
+        [Some(EndKind::Live), None],
+        [Some(0.1), None, Some(0.1)],
+    );
+    let point = |angle_rad, level_m, forces_kn| PointResult {
+        angle_rad: Some(angle_rad),
+        level_m: Some(level_m),
+        forces_kn: Some(forces_kn),
+    };
+    let results = vec![
+        TendonResult {
+            profile: Some(profile()),
+            forces: Some(forces()),
+            points: vec![
+                point(-0.0, -0.1, [688.4325, 579.9, 575.6, 530.1]),
+                point(0.027_992_682, -0.17, [679.57, 634.1, 629.8, 560.2]),
+                point(0.055_985_364, -0.1, [670.82, 670.82, 666.5, 566.0]),
+            ],
+            samples: Vec::new(),
+            concrete_stress_mpa: Some(1.25),
+        },
+        TendonResult {
+            profile: None,
+            forces: None,
+            points: Vec::new(),
+            samples: Vec::new(),
+            concrete_stress_mpa: None,
+        },
+    ];
+    let findings = vec![
+        Finding::new(
+            &checks::profile::HEIGHT_OUTSIDE_COVER,
+            Level::Error,
+            "the duct has 15 mm of cover, \"20 mm\" was expected",
+            "correct the height",
+        )
+        .on_tendon("=D2\u{1b}[31m")
+        .at_station(2.5)
+        .at_place(at(2.5, 1.2)),
+        Finding::new(
+            &checks::slab::LEAVES_SLAB,
+            Level::Note,
+            "no closed slab edge was found",
+            "draw the slab edge",
+        ),
+    ];
+    Analysis {
+        floor: Floor {
+            tendons: vec![worked, unworked],
+            slab: Slab::default(),
+        },
+        results,
+        findings,
+        assumptions: vec!["draw-in 6 mm: the job gives none".to_owned()],
+    }
+}
+
+fn facts() -> DrawingFacts {
+    DrawingFacts {
+        file: "level-2.dxf".to_owned(),
+        version: "AC1027".to_owned(),
+        unit_m: 0.001,
+    }
+}
+
+fn inputs() -> Vec<(String, serde_json::Value)> {
+    vec![
+        ("mu_per_rad".to_owned(), serde_json::json!(0.19)),
+        ("draw_in_mm".to_owned(), serde_json::json!(6.0)),
+        ("method".to_owned(), serde_json::json!("direct")),
+    ]
+}
+
+#[test]
+fn json_is_as_it_was() {
+    let made = report::json(&facts(), &inputs(), &analysis());
+    assert_data_eq!(made, file!["golden/result.json"].raw());
+}
+
+#[test]
+fn csv_tables_are_as_they_were() {
+    let analysis = analysis();
+    // Line ends are CRLF in the tables and LF in the files, so that the files open everywhere.
+    let lf = |table: String| table.replace("\r\n", "\n");
+    assert_data_eq!(
+        lf(report::tendons_csv(&analysis)),
+        file!["golden/tendons.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::points_csv(&analysis)),
+        file!["golden/points.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::extensions_csv(&analysis)),
+        file!["golden/extensions.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::findings_csv(&analysis)),
+        file!["golden/findings.csv"].raw()
+    );
+}
+
+#[test]
+fn the_summary_is_as_it_was() {
+    let files = [
+        "level-2-marked.dxf".to_owned(),
+        "level-2-result.json".to_owned(),
+    ];
+    let made = report::summary(&facts(), &analysis(), &files);
+    assert_data_eq!(made, file!["golden/summary.txt"].raw());
+}
+
+#[test]
+fn json_reads_back_with_its_numbers_at_full_precision() {
+    let made = report::json(&facts(), &inputs(), &analysis());
+    let read: serde_json::Value = serde_json::from_str(&made).expect("the result is JSON");
+    assert!(made.ends_with("}\n"));
+    let worked = &read["tendons"][0];
+    assert_eq!(worked["ends"][0]["jacking_kn"], serde_json::json!(688.4325));
+    assert_eq!(
+        worked["ends"][1].as_object().map(serde_json::Map::len),
+        Some(3)
+    );
+    assert_eq!(
+        worked["points"][1]["angle_rad"],
+        serde_json::json!(0.027_992_682)
+    );
+    assert!(worked["losses"]["relaxation_mpa"].is_null());
+    let unworked = &read["tendons"][1];
+    assert!(unworked["losses"].is_null() && unworked["points"][0]["jacking_kn"].is_null());
+    assert_eq!(unworked["points"].as_array().map(Vec::len), Some(3));
+}
+
+#[test]
+fn every_csv_row_has_the_headers_cells() {
+    let analysis = analysis();
+    for (table, rows) in [
+        (report::tendons_csv(&analysis), 2),
+        (report::points_csv(&analysis), 6),
+        (report::extensions_csv(&analysis), 2),
+        (report::findings_csv(&analysis), 2),
+    ] {
+        // The strict reader refuses a row of another length.
+        let mut reader = csv::Reader::from_reader(table.as_bytes());
+        let read: Result<Vec<csv::StringRecord>, csv::Error> = reader.records().collect();
+        assert_eq!(read.expect("rows of equal length").len(), rows);
+    }
+}
+
+#[test]
+fn no_output_shows_a_terminal_a_control_character() {
+    let made = report::summary(&facts(), &analysis(), &[]);
+    assert!(made.chars().all(|c| c == '\n' || !c.is_control()));
+}
