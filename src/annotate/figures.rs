@@ -147,7 +147,7 @@ fn find(figure: &Figure, room: &Room) -> Option<Spot> {
                         height_m,
                         rotation_rad,
                     };
-                    if room.texts_hit(&spot) > 0 {
+                    if !room.clear_of_texts(&spot) {
                         continue;
                     }
                     let crossed = room.lines_hit(&spot);

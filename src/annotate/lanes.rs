@@ -8,8 +8,8 @@ use crate::geometry::{distance_m, turn_rad};
 
 /// Usual width of a coloured length, metres: 0.7 mm on paper at 1:100.
 const WIDTH_M: f64 = 0.07;
-/// How far a neighbour is looked for, metres.
-const REACH_M: f64 = 1.5;
+/// How far a neighbour is looked for, metres: one farther off leaves room enough for everything.
+const REACH_M: f64 = 0.6;
 /// Neighbours run parallel within this angle, radians.
 const PARALLEL_RAD: f64 = 0.2;
 

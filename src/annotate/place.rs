@@ -79,6 +79,11 @@ impl Room {
         self.texts.count(&spot.quad(TEXT_GAP * spot.height_m))
     }
 
+    /// Whether this box would touch no text.
+    pub(super) fn clear_of_texts(&self, spot: &Spot) -> bool {
+        self.texts.is_clear(&spot.quad(TEXT_GAP * spot.height_m))
+    }
+
     /// Pieces of tendon lines that this box would touch.
     pub(super) fn lines_hit(&self, spot: &Spot) -> usize {
         self.lines.count(&spot.quad(0.0))

@@ -56,27 +56,40 @@ impl Boxes {
 
     /// Numbers of the quadrangles that overlap this one, in the order they came.
     pub(in crate::annotate) fn near(&self, quad: &Quad) -> Vec<usize> {
-        let mut found = match self.cells_of(quad) {
-            Some(cells) => {
-                let mut found: Vec<usize> = cells
-                    .filter_map(|cell| self.cells.get(&cell))
-                    .flatten()
-                    .chain(&self.large)
-                    .copied()
-                    .collect();
-                found.sort_unstable();
-                found.dedup();
-                found
-            }
-            None => (0..self.quads.len()).collect(),
-        };
-        found.retain(|&index| self.quad(index).is_some_and(|other| overlap(quad, other)));
+        let mut found: Vec<usize> = self.touching(quad).collect();
+        found.sort_unstable();
+        found.dedup();
         found
     }
 
     /// How many quadrangles overlap this one.
     pub(in crate::annotate) fn count(&self, quad: &Quad) -> usize {
         self.near(quad).len()
+    }
+
+    /// Whether no quadrangle overlaps this one.
+    pub(in crate::annotate) fn is_clear(&self, quad: &Quad) -> bool {
+        self.touching(quad).next().is_none()
+    }
+
+    /// Numbers of the quadrangles that overlap this one, some of them more than once.
+    fn touching(&self, quad: &Quad) -> impl Iterator<Item = usize> {
+        let cells = self.cells_of(quad);
+        let every = cells.is_none().then_some(0..self.quads.len());
+        let filed = cells
+            .into_iter()
+            .flatten()
+            .filter_map(|cell| self.cells.get(&cell))
+            .flatten()
+            .chain(&self.large)
+            .copied();
+        let quad = *quad;
+        filed
+            .chain(every.into_iter().flatten())
+            .filter(move |&index| {
+                self.quad(index)
+                    .is_some_and(|other| !apart_by_bounds(&quad, other) && overlap(&quad, other))
+            })
     }
 
     /// Cells that a quadrangle's bounds lie in, unless there are too many.
@@ -98,6 +111,16 @@ impl Boxes {
         let few = wide.saturating_mul(tall) <= MOST_CELLS;
         few.then(|| (left..=right).flat_map(move |x| (low..=high).map(move |y| (x, y))))
     }
+}
+
+/// Whether upright bounds alone keep two quadrangles apart: quick, and mostly enough.
+fn apart_by_bounds(a: &Quad, b: &Quad) -> bool {
+    let beyond = |value: fn(&Coord<f64>) -> f64| {
+        let low = |quad: &Quad| quad.iter().map(value).fold(f64::INFINITY, f64::min);
+        let high = |quad: &Quad| quad.iter().map(value).fold(f64::NEG_INFINITY, f64::max);
+        low(a) > high(b) || low(b) > high(a)
+    };
+    beyond(|c| c.x) || beyond(|c| c.y)
 }
 
 /// Whether two convex quadrangles overlap: no edge of either has them on its two sides (separating axis theorem).
