@@ -42,13 +42,7 @@ fn words(end: &EndForces) -> Option<String> {
 }
 
 /// Steps outwards until no text is in the way; this figure is needed, so it is written in any case.
-fn outwards(
-    tendon: &Tendon,
-    at: usize,
-    height_m: f64,
-    content: String,
-    room: &mut Room,
-) -> Mark {
+fn outwards(tendon: &Tendon, at: usize, height_m: f64, content: String, room: &mut Room) -> Mark {
     let (station_m, turn) = match at {
         0 => (0.0, PI),
         _ => (tendon.path.length_m(), 0.0),

@@ -32,9 +32,7 @@ pub(super) fn rings(analysis: &Analysis, text_m: f64, room: &mut Room) -> Vec<Ma
                 ring,
             ));
         }
-        let outer_m = levels
-            .first()
-            .map_or(0.0, |level| radius_m(*level, text_m));
+        let outer_m = levels.first().map_or(0.0, |level| radius_m(*level, text_m));
         marks.extend(texts(place, outer_m, &lines(&findings), text_m, room));
     }
     marks

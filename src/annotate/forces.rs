@@ -42,10 +42,8 @@ fn runs(samples: &[Sample], stage: usize, jack_kn: f64) -> Vec<Run> {
     let mut open: Option<Run> = None;
     for step in samples.windows(2) {
         let [from, to] = step else { continue };
-        let (Some(start), Some(end)) = (
-            share(from, stage, jack_kn),
-            share(to, stage, jack_kn),
-        ) else {
+        let (Some(start), Some(end)) = (share(from, stage, jack_kn), share(to, stage, jack_kn))
+        else {
             close(&mut done, open.take());
             continue;
         };
@@ -92,7 +90,10 @@ fn close(done: &mut Vec<Run>, run: Option<Run>) {
     let Some(run) = run else { return };
     let mut kept: Vec<Coord<f64>> = Vec::with_capacity(run.points.len());
     for point in run.points {
-        if kept.last().is_some_and(|last| distance_m(*last, point) < SAME_M) {
+        if kept
+            .last()
+            .is_some_and(|last| distance_m(*last, point) < SAME_M)
+        {
             continue;
         }
         if let [.., before, middle] = kept[..]

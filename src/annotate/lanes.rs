@@ -115,7 +115,8 @@ mod tests {
 
     #[test]
     fn the_median_text_sets_the_height_within_limits() {
-        let box_of = |height_m: f64| Spot::upright(Coord { x: 0.0, y: 0.0 }, 1.0, height_m).quad(0.0);
+        let box_of =
+            |height_m: f64| Spot::upright(Coord { x: 0.0, y: 0.0 }, 1.0, height_m).quad(0.0);
         assert!((text_height_m(&[]) - 0.15).abs() < 1e-12);
         let texts = [box_of(0.12), box_of(0.12), box_of(0.9)];
         assert!((text_height_m(&texts) - 0.12).abs() < 1e-9);

@@ -63,14 +63,15 @@ pub(super) fn level_ink(level: Level) -> Ink {
 
 /// All layers, in the layer table's order; of the stages only service comes switched on.
 pub(super) fn layers() -> Vec<SheetLayer> {
-    let stages = FORCE
-        .iter()
-        .zip(FORCE_TEXT)
-        .enumerate()
-        .flat_map(|(stage, (lengths, figures))| {
-            let on = stage == 3;
-            [layer(lengths, PLAIN, on), layer(figures, PLAIN, on)]
-        });
+    let stages =
+        FORCE
+            .iter()
+            .zip(FORCE_TEXT)
+            .enumerate()
+            .flat_map(|(stage, (lengths, figures))| {
+                let on = stage == 3;
+                [layer(lengths, PLAIN, on), layer(figures, PLAIN, on)]
+            });
     stages
         .chain([
             layer(EXTENSION, PLAIN, true),

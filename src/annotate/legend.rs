@@ -30,7 +30,9 @@ const CAUTIONS: [&str; 3] = [
 pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let mut column = Column::new(letter_m);
     column.heading(HEADING);
-    column.sentence("Colours: service force (after all losses) left along each tendon, % of its jacking force");
+    column.sentence(
+        "Colours: service force (after all losses) left along each tendon, % of its jacking force",
+    );
     for class in 0..ramp::RAMP.len() {
         column.patch(class);
     }
@@ -43,7 +45,10 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     }
     column.gap();
     for (level, what) in [
-        (Level::Error, "error: cannot be built or worked out as drawn"),
+        (
+            Level::Error,
+            "error: cannot be built or worked out as drawn",
+        ),
         (Level::Warning, "warning: outside usual practice"),
         (Level::Note, "note: worth knowing"),
     ] {
@@ -52,7 +57,9 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let placeless = analysis.findings.iter().filter(|f| f.place.is_none());
     let placeless = placeless.count();
     if placeless > 0 {
-        column.sentence(&format!("{placeless} of the findings have no place on the plan: see the list of findings"));
+        column.sentence(&format!(
+            "{placeless} of the findings have no place on the plan: see the list of findings"
+        ));
     }
     column.gap();
     for line in inputs(job) {
@@ -128,8 +135,15 @@ impl Column {
     }
 
     fn sentence(&mut self, sentence: &str) {
-        for (number, line) in words::wrap(&words::plain(sentence), LINE).iter().enumerate() {
-            let indent_m = if number == 0 { 0.0 } else { 1.5 * self.letter_m };
+        for (number, line) in words::wrap(&words::plain(sentence), LINE)
+            .iter()
+            .enumerate()
+        {
+            let indent_m = if number == 0 {
+                0.0
+            } else {
+                1.5 * self.letter_m
+            };
             self.line(line, indent_m, self.letter_m);
         }
     }
@@ -137,12 +151,19 @@ impl Column {
     fn patch(&mut self, class: usize) {
         let (width_m, half_m) = (5.0 * self.letter_m, 0.6 * self.letter_m);
         let y = self.middle(self.letter_m);
-        let corners = [(0.0, -half_m), (width_m, -half_m), (width_m, half_m), (0.0, half_m)];
+        let corners = [
+            (0.0, -half_m),
+            (width_m, -half_m),
+            (width_m, half_m),
+            (0.0, half_m),
+        ];
         let solid = Drawn::Solid {
             corners: corners.map(|(x, up)| Coord { x, y: y + up }),
         };
         let ink = ramp::class_ink(class);
-        self.block.marks.push(layers::inked(layers::TABLE, ink, solid));
+        self.block
+            .marks
+            .push(layers::inked(layers::TABLE, ink, solid));
         let content = format!("{} %", ramp::class_name(class));
         self.line(&content, 6.5 * self.letter_m, self.letter_m);
     }
@@ -155,7 +176,9 @@ impl Column {
         };
         let ink = layers::level_ink(level);
         let circle = Drawn::Circle { centre, radius_m };
-        self.block.marks.push(layers::inked(layers::TABLE, ink, circle));
+        self.block
+            .marks
+            .push(layers::inked(layers::TABLE, ink, circle));
         self.line(what, 2.2 * self.letter_m, self.letter_m);
     }
 

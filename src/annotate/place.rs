@@ -165,7 +165,10 @@ mod tests {
         for degree in -720..=720 {
             let heading = f64::from(degree).to_radians();
             let read = readable_rad(heading);
-            assert!(read > -FRAC_PI_2 + 1e-4 && read < FRAC_PI_2 + 2e-3, "{degree}");
+            assert!(
+                read > -FRAC_PI_2 + 1e-4 && read < FRAC_PI_2 + 2e-3,
+                "{degree}"
+            );
             assert!((heading - read).sin().abs() < 1e-9, "{degree}");
         }
         assert!((readable_rad(-FRAC_PI_2) - FRAC_PI_2).abs() < 1e-12);

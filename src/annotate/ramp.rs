@@ -163,7 +163,10 @@ mod tests {
     fn true_colours_keep_their_order_of_lightness_for_the_colour_blind_too() {
         for eye in [DEUTAN, PROTAN] {
             for pair in true_colours().windows(2) {
-                assert!(lab(pair[1], &eye)[0] > lab(pair[0], &eye)[0] + 2.0, "{pair:?}");
+                assert!(
+                    lab(pair[1], &eye)[0] > lab(pair[0], &eye)[0] + 2.0,
+                    "{pair:?}"
+                );
             }
         }
     }

@@ -55,10 +55,18 @@ pub(super) fn table(analysis: &Analysis, letter_m: f64) -> Block {
         x: 0.0,
         y: -1.0 * letter_m,
     };
-    block.marks.push(text(place, 1.2 * letter_m, Align::MiddleLeft, title));
+    block
+        .marks
+        .push(text(place, 1.2 * letter_m, Align::MiddleLeft, title));
     for (part, chunk) in (0_u32..).zip(rows.chunks(per_part)) {
         let left_m = f64::from(part) * (part_m + 3.0 * letter_m);
-        let bottom_m = draw_part(&mut block.marks, chunk, &widths_m, (left_m, top_m), letter_m);
+        let bottom_m = draw_part(
+            &mut block.marks,
+            chunk,
+            &widths_m,
+            (left_m, top_m),
+            letter_m,
+        );
         block.width_m = block.width_m.max(left_m + part_m);
         block.height_m = block.height_m.max(bottom_m);
     }
@@ -165,9 +173,7 @@ fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
         .filter_map(|sample| Some(sample.forces_kn?[3]))
         .min_by(f64::total_cmp)
         .filter(|_| forces.is_some());
-    let extension = |at: usize| {
-        or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)))
-    };
+    let extension = |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)));
     [
         words::name(&tendon.mark),
         strands(tendon),

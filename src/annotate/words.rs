@@ -78,7 +78,10 @@ mod tests {
     fn sentences_break_at_blanks_and_lose_no_word() {
         let lines = wrap("one two three four", 9);
         assert_eq!(lines, ["one two", "three", "four"]);
-        assert_eq!(wrap("incomprehensible word", 4), ["incomprehensible", "word"]);
+        assert_eq!(
+            wrap("incomprehensible word", 4),
+            ["incomprehensible", "word"]
+        );
         assert!(wrap("  ", 10).is_empty());
     }
 

@@ -181,8 +181,7 @@ impl Jacking {
             self.jack_kn * at.falling_m
         } else {
             let beyond_m = at.rising_m - self.middle.rising_m;
-            self.jack_kn
-                * (self.middle.falling_m + (-self.whole.exponent).exp() * beyond_m)
+            self.jack_kn * (self.middle.falling_m + (-self.whole.exponent).exp() * beyond_m)
         }
     }
 }

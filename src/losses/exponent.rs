@@ -170,7 +170,9 @@ impl<'p> Exponent<'p> {
         };
         let within_m = station_m.clamp(stretch.start.station_m, stretch.end.station_m);
         let next = self.stretches.get(index + 1);
-        let before = index.checked_sub(1).and_then(|held| self.stretches.get(held));
+        let before = index
+            .checked_sub(1)
+            .and_then(|held| self.stretches.get(held));
         match (before, next) {
             (Some(before), _) if within_m - stretch.start.station_m <= SAME_PLACE_M => {
                 (before.end.exponent, stretch.start.exponent)
@@ -227,9 +229,8 @@ impl<'p> Exponent<'p> {
             }
             let far = self.seen_from(side, far);
             if measure(&far) >= 0.0 {
-                let on_stretch = |station_m: f64| {
-                    self.seen_from(side, self.at_in(stretch, station_m))
-                };
+                let on_stretch =
+                    |station_m: f64| self.seen_from(side, self.at_in(stretch, station_m));
                 let found_m = root(
                     |station_m| measure(&on_stretch(station_m)),
                     near.station_m,

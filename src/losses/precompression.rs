@@ -70,7 +70,9 @@ impl Sections {
                 let share = (f64::from(line) + 0.5) / f64::from(LINES);
                 let offset_m = least_m + share * (most_m - least_m);
                 let first = sections.legs.len();
-                sections.legs.extend(legs(slab, &zones_by_size, direction, offset_m));
+                sections
+                    .legs
+                    .extend(legs(slab, &zones_by_size, direction, offset_m));
                 sections.lines.push(Line {
                     direction: index,
                     offset_m,

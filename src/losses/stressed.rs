@@ -87,12 +87,12 @@ impl<'p> Stressed<'p> {
             least_exponent: least.exponent,
         };
         let (before, after) = stressed.along.on_both_sides(least.station_m);
-        stressed.least_exponent =
-            if stressed.jacking_at_kn(before) <= stressed.jacking_at_kn(after) {
-                before
-            } else {
-                after
-            };
+        stressed.least_exponent = if stressed.jacking_at_kn(before) <= stressed.jacking_at_kn(after)
+        {
+            before
+        } else {
+            after
+        };
         Ok(stressed)
     }
 
@@ -233,7 +233,12 @@ impl<'p> Stressed<'p> {
             .zip(&self.drawn_in)
             .filter_map(|(share_kn_m, live)| live.map(|_| share_kn_m))
             .sum();
-        let drawn_in_kn_m: f64 = self.drawn_in.iter().flatten().map(|end| end.area_kn_m).sum();
+        let drawn_in_kn_m: f64 = self
+            .drawn_in
+            .iter()
+            .flatten()
+            .map(|end| end.area_kn_m)
+            .sum();
         (jacking_kn_m - drawn_in_kn_m) / length_m
     }
 

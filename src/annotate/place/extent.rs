@@ -158,7 +158,12 @@ pub(in crate::annotate) fn corners(drawn: &Drawn) -> Vec<Coord<f64>> {
             let up = rotation_rad + std::f64::consts::FRAC_PI_2;
             let start = step(step(*place, *rotation_rad, -back), up, -down);
             let end = step(start, *rotation_rad, width_m);
-            vec![start, end, step(end, up, *height_m), step(start, up, *height_m)]
+            vec![
+                start,
+                end,
+                step(end, up, *height_m),
+                step(start, up, *height_m),
+            ]
         }
     }
 }

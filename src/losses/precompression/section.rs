@@ -168,7 +168,8 @@ mod tests {
     }
 
     fn along_x() -> Direction {
-        let path = crate::geometry::Path::through(&[coord! {x: 0.0, y: 0.0}, coord! {x: 9.0, y: 0.0}]);
+        let path =
+            crate::geometry::Path::through(&[coord! {x: 0.0, y: 0.0}, coord! {x: 9.0, y: 0.0}]);
         super::super::direction::gather(std::iter::once(&path)).0[0]
     }
 
@@ -215,6 +216,9 @@ mod tests {
         };
         let cut = cut_at_five(&slab);
         assert_eq!(cut.len(), 2);
-        assert!(cut.iter().all(|leg| (leg.area_m2.expect("known") - 0.6).abs() < 1e-9));
+        assert!(
+            cut.iter()
+                .all(|leg| (leg.area_m2.expect("known") - 0.6).abs() < 1e-9)
+        );
     }
 }
