@@ -11,6 +11,8 @@ mod place;
 mod profile3d;
 mod ramp;
 mod table;
+#[cfg(test)]
+mod trials;
 mod words;
 
 use geo::Coord;
@@ -31,13 +33,14 @@ pub fn draw(analysis: &Analysis, occupied: &[[Coord<f64>; 4]], job: &Job) -> She
     let mut room = Room::new(&analysis.floor, occupied);
     let lanes = lanes::lanes(&analysis.floor, &room, text_m);
 
-    let mut marks = forces::lengths(analysis, &lanes);
+    // Later marks cover earlier ones: the colours lie over the curves' hairlines.
+    let mut marks = profile3d::curves(analysis);
+    marks.extend(forces::lengths(analysis, &lanes));
     // What must be said takes its place before what may be left out.
     let extensions = extension::texts(analysis, &lanes, &mut room);
     let rings = findings::rings(analysis, text_m, &mut room);
     marks.extend(figures::figures(analysis, &lanes, &mut room));
     marks.extend(extensions);
-    marks.extend(profile3d::curves(analysis));
     marks.extend(rings);
 
     let floor = Extent::of_floor(&analysis.floor, occupied, &marks);

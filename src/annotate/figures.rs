@@ -116,8 +116,9 @@ fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<F
     figures
 }
 
-/// The first clear place in a fixed order: in full size before smaller, near before far, beside the point before
-/// along the tendon, left of the reading direction before right. Texts are never touched; lines only as a last resort.
+/// The first clear place in a fixed order: in full size before smaller, near before far, left of the reading direction
+/// before right (in a band, that tells whose figure it is), beside the point before along the tendon. Texts are never
+/// touched; lines only as a last resort.
 fn find(figure: &Figure, room: &Room) -> Option<Spot> {
     let letters = figure.forces_kn.map(number);
     let longest = letters.iter().max_by_key(|text| text.len())?;
@@ -131,14 +132,15 @@ fn find(figure: &Figure, room: &Room) -> Option<Spot> {
         let width_m = words::width_m(longest, height_m);
         for away in [0.3, 1.5] {
             let across_m = figure.lane.width_m / 2.0 + height_m * (away + 0.5);
-            for shift in shifts(figure.station_m, length_m) {
-                let station_m = figure.station_m + shift.0 * width_m + shift.1 * height_m;
-                if station_m < -1e-9 || station_m > length_m + 1e-9 {
-                    continue;
-                }
-                let on_line = figure.path.place_at(station_m);
-                let rotation_rad = readable_rad(figure.path.heading_at(station_m));
-                for side in [1.0, -1.0] {
+            for side in [1.0, -1.0] {
+                for (widths, heights) in shifts(figure.station_m, length_m) {
+                    let along_m = widths * width_m + heights * height_m;
+                    let station_m = figure.station_m + along_m;
+                    if station_m < -1e-9 || station_m > length_m + 1e-9 {
+                        continue;
+                    }
+                    let on_line = figure.path.place_at(station_m);
+                    let rotation_rad = readable_rad(figure.path.heading_at(station_m));
                     let spot = Spot {
                         centre: step(on_line, rotation_rad + FRAC_PI_2, side * across_m),
                         width_m,

@@ -37,10 +37,10 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
         column.patch(class);
     }
     column.gap();
-    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons");
+    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons; above or left of their tendon where there is room");
     column.sentence("ext 180 (net 174) mm: extension at a live end before (after) wedge draw-in");
     column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");
-    for line in without_forces(analysis) {
+    if let Some(line) = without_forces(analysis) {
         column.sentence(&line);
     }
     column.gap();

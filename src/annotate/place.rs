@@ -9,6 +9,8 @@ use crate::floor::Floor;
 use crate::geometry::{distance_m, step, turn_rad};
 
 pub(super) use boxes::{Boxes, Quad};
+#[cfg(test)]
+pub(super) use extent::corners;
 pub(super) use extent::{Block, Extent};
 
 /// Clear distance between two texts, in text heights.

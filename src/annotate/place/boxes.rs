@@ -158,7 +158,7 @@ mod tests {
         assert!(!overlap(&box_at_origin, &spot(2.0, 0.0, 0.0)));
         // The bounds meet; the boxes do not.
         assert!(!overlap(&box_at_origin, &spot(1.9, 1.2, -FRAC_PI_4)));
-        assert!(overlap(&box_at_origin, &spot(1.4, 0.9, -FRAC_PI_4)));
+        assert!(overlap(&box_at_origin, &spot(1.3, 0.8, -FRAC_PI_4)));
     }
 
     #[test]
