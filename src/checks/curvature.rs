@@ -92,8 +92,9 @@ pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
 
 #[cfg(test)]
 mod tests {
-    use super::super::testing::{forces, high_to_low, job, straight, worked};
+    use super::super::testing::{forces, high_to_low, job, point, straight, worked};
     use super::*;
+    use crate::losses::{Effective, Stressed};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -148,5 +149,34 @@ mod tests {
             None,
             "nothing between jack and least force"
         );
+    }
+
+    #[test]
+    fn angle_and_share_are_of_the_same_stretch_of_the_worked_out_tendon() {
+        use crate::floor::PointKind::{Anchor, High, Low};
+        let job = job();
+        let mut tendon = straight(24.0);
+        let marked = [
+            (Anchor, 0.0, 0.1),
+            (Low, 5.0, 0.03),
+            (High, 12.0, 0.17),
+            (Anchor, 24.0, 0.1),
+        ];
+        tendon.points = marked
+            .map(|(kind, station_m, height_m)| point(kind, station_m, Some(height_m)))
+            .to_vec();
+        let profile = crate::profile::build(&tendon, &job.profile).expect("a curve");
+        let steel = forces().steel;
+        use EndKind::{Dead, Live};
+        for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
+            let stressed = Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
+            let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");
+            let turned = turning(&profile, &effective.forces()).expect("a stretch");
+            let from_angle = 1.0 - (-job.stressing.mu_per_rad * turned.angle_rad).exp();
+            assert!(
+                (from_angle - turned.loss_ratio).abs() < 1e-9,
+                "{kinds:?}: {turned:?}"
+            );
+        }
     }
 }

@@ -29,7 +29,7 @@ pub(super) fn no_live_end(worked: &Worked) -> Option<Finding> {
          expected, and no forces were worked out"
             .to_owned(),
         "change the symbol at the end that a jack can reach into a live end, or correct the block names of live and dead \
-         ends in the job file",
+         ends in the job file (ends.live_blocks, ends.dead_blocks)",
     ))
 }
 

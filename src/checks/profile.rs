@@ -125,23 +125,20 @@ pub(super) fn height_outside_cover(
                 overruns.extend(overrun_in(span, stretch, job));
             }
         }
-    } else {
-        // Without a curve the heights that are known are still checked where they stand.
-        for point in &worked.tendon.points {
-            if let Some(level_m) = point.level_m() {
-                let bend = match point.kind {
-                    PointKind::High => -1.0,
-                    PointKind::Low => 1.0,
-                    PointKind::Anchor | PointKind::Support => 0.0,
-                };
-                overruns.extend(overrun_at(
-                    point.station_m,
-                    level_m,
-                    point.thickness_m,
-                    bend,
-                    job,
-                ));
-            }
+    }
+    // Where there is no curve, the heights that are known are still checked where they stand; support heights always.
+    for point in &worked.tendon.points {
+        if worked.profile.is_some() && point.kind != PointKind::Support {
+            continue;
+        }
+        if let Some(level_m) = point.level_m() {
+            let bend = match point.kind {
+                PointKind::High => -1.0,
+                PointKind::Low => 1.0,
+                PointKind::Anchor | PointKind::Support => 0.0,
+            };
+            let (station_m, thickness_m) = (point.station_m, point.thickness_m);
+            overruns.extend(overrun_at(station_m, level_m, thickness_m, bend, job));
         }
     }
     let (worst, others) = worst_of(merged(overruns), |o| o.over_m, |o| o.station_m)?;
@@ -433,6 +430,15 @@ mod tests {
         let chords = Chords::of(&tendon.path);
         let found = height_outside_cover(&worked(&tendon), &ground, &chords, &job());
         assert!(found.is_some_and(|f| f.station_m == Some(4.0)));
+    }
+
+    #[test]
+    fn a_support_height_outside_the_cover_is_seen_beside_a_curve_that_is_not() {
+        let mut tendon = straight(10.0);
+        assert_eq!(cover_finding(&tendon, &level(0.1), &slab_200()), None);
+        tendon.points = vec![point(PointKind::Support, 6.0, Some(0.01))];
+        let found = cover_finding(&tendon, &level(0.1), &slab_200());
+        assert!(found.is_some_and(|f| f.station_m == Some(6.0)));
     }
 
     #[test]

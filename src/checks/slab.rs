@@ -238,7 +238,7 @@ pub(super) fn leaves_slab(
             also_at(&others)
         ),
         "bring the tendon back inside the slab edge, or correct the edge; check that the whole edge is drawn and its layer \
-         named in the job file",
+         named in the job file (layers.slab_edge)",
     ))
 }
 
@@ -270,7 +270,7 @@ pub(super) fn no_outline(floor: &Floor) -> Option<Finding> {
             &LEAVES_SLAB,
             Level::Note,
             "no closed slab edge was found, so whether tendons leave the slab was not looked at",
-            "draw the slab edge as closed lines on the layers that the job file names for it",
+            "draw the slab edge as closed lines on the layers that the job file names for it (layers.slab_edge)",
         )
     })
 }
@@ -282,6 +282,7 @@ mod tests {
     use crate::floor::{Slab, Tendon};
     use crate::geometry::Path;
     use geo::Polygon;
+    use proptest::prelude::*;
 
     fn rectangle(x0: f64, y0: f64, x1: f64, y1: f64) -> Polygon<f64> {
         geo::Rect::new(Coord { x: x0, y: y0 }, Coord { x: x1, y: y1 }).to_polygon()
@@ -412,5 +413,45 @@ mod tests {
         assert!(no_outline(&floor).is_some_and(|f| f.level == Level::Note));
         floor.slab.outlines.push(rectangle(0.0, -5.0, 20.0, 5.0));
         assert_eq!(no_outline(&floor), None);
+    }
+
+    proptest! {
+        #![proptest_config(ProptestConfig { cases: 128, failure_persistence: None, ..ProptestConfig::default() })]
+
+        /// Walking the line in small steps is a slow way to the same answer, and walking it the other way changes nothing.
+        #[test]
+        fn an_opening_is_crossed_where_a_walk_along_the_line_steps_into_it(
+            (x0, y0) in (0.0..18.0, -3.0..3.0),
+            (width, depth) in (0.2..3.0, 0.2..3.0),
+            (rise_a, rise_b) in (-3.0..3.0, -3.0..3.0),
+        ) {
+            let slab = opening(x0, y0, x0 + width, y0 + depth);
+            let points = [
+                Coord { x: -1.0, y: 0.0 },
+                Coord { x: 10.0, y: rise_a },
+                Coord { x: 22.0, y: rise_b },
+            ];
+            let tendon = along(Path::through(&points));
+            let length_m = tendon.path.length_m();
+            let inside = (0..=20_000)
+                .filter(|&step| {
+                    let place = tendon.path.place_at(length_m * f64::from(step) / 20_000.0);
+                    place.x > x0 && place.x < x0 + width && place.y > y0 && place.y < y0 + depth
+                })
+                .count();
+            let found = crossings(&tendon, &slab);
+            let crossed = found.iter().any(|f| f.0 == Level::Error);
+            // A step is about 1 mm: a touch of one or two steps may go either way.
+            prop_assert!(inside == 0 && !crossed || inside > 2 && crossed || (1..=2).contains(&inside), "{inside} {found:?}");
+
+            let mut back = tendon.clone();
+            back.path = tendon.path.reversed();
+            let mirrored = crossings(&back, &slab);
+            prop_assert_eq!(found.len(), mirrored.len());
+            for (a, b) in found.iter().zip(&mirrored) {
+                prop_assert_eq!(a.0, b.0);
+                prop_assert!((a.1.unwrap_or(0.0) + b.1.unwrap_or(0.0) - length_m).abs() < 1e-6);
+            }
+        }
     }
 }

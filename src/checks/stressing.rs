@@ -89,11 +89,9 @@ pub(super) fn anchor_stress(worked: &Worked, job: &Job) -> Option<Finding> {
     let steel = &forces.steel;
     let limit = job.limits.anchor_stress_ratio;
     let [start_m, end_m] = worked.end_stations_m();
-    // kN over mm² is GPa.
-    let stress_mpa = |force_kn: f64| force_kn * 1000.0 / steel.area_mm2;
     let high: Vec<(f64, f64)> = [(start_m, lock_off_kn[0]), (end_m, lock_off_kn[1])]
         .into_iter()
-        .map(|(station_m, force_kn)| (station_m, stress_mpa(force_kn)))
+        .map(|(station_m, force_kn)| (station_m, steel.stress_mpa(force_kn)))
         .filter(|&(_, stress_mpa)| stress_mpa > (limit + ROUNDING) * steel.strength_mpa)
         .collect();
     let ((station_m, stress_mpa), others) = worst_of(high, |end| end.1, |end| end.0)?;

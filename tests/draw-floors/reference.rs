@@ -21,7 +21,7 @@ const SHORT: Drape = Drape {
     low_mm: 50.0,
 };
 const BANDED: Drape = Drape {
-    below_top_mm: 90.0,
+    below_top_mm: 100.0,
     low_mm: 75.0,
 };
 const BACKGROUND_LAYERS: u32 = 64;
@@ -37,7 +37,7 @@ pub(crate) fn floor() -> Floor {
     let mut dice = Dice(400);
     for tendon in &mut tendons {
         tendon.lettering.height_mm = 90.0;
-        tendon.lettering.mark_station_mm = 2400.0;
+        tendon.lettering.mark_station_mm = 3090.0;
     }
     let tendons = tendons
         .into_iter()
@@ -99,9 +99,9 @@ fn even(first_mm: f64, step_mm: f64, count: u8) -> Vec<f64> {
 fn banded(slab: &Slab) -> Vec<Tendon> {
     let mut tendons = Vec::new();
     for y_mm in &slab.grid[1] {
-        for offset in [-450.0, -150.0, 150.0, 450.0] {
+        for offset in [-525.0, -225.0, 75.0, 375.0] {
             for [from, to, live] in [[0.0, 32_000.0, 0.0], [28_000.0, WIDE_MM, 1.0]] {
-                let y_mm = y_mm + offset + 75.0 * live;
+                let y_mm = y_mm + offset + 150.0 * live;
                 let ends = if live == 0.0 {
                     [End::Live, End::Dead]
                 } else {
@@ -128,7 +128,8 @@ fn distributed(slab: &Slab) -> Vec<Tendon> {
         tendons.push(bays::tendon(slab, Run::Distributed, path, ends, drape));
     };
     for track in 0..88_u8 {
-        let x_mm = 500.0 + 675.0 * f64::from(track);
+        // Eleven tracks a bay, none where the bands' heights and marks are written.
+        let x_mm = 1750.0 + 7100.0 * f64::from(track / 11) + 620.0 * f64::from(track % 11);
         add(x_mm, [0.0, 24_500.0], [End::Live, End::Dead]);
         add(x_mm + 200.0, [20_500.0, HIGH_MM], [End::Dead, End::Live]);
         add(x_mm + 400.0, [0.0, 10_500.0], [End::Live, End::Dead]);
