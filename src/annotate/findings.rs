@@ -131,18 +131,28 @@ fn texts(
         return Vec::new();
     };
     room.take(&spot);
-    let left = spot.centre.x - spot.width_m / 2.0;
+    // The near edge of the stack stays put, however wide the font comes out.
+    let right_of_ring = spot.centre.x >= place.x;
+    let (edge, align) = if right_of_ring {
+        (spot.centre.x - spot.width_m / 2.0, Align::MiddleLeft)
+    } else {
+        (spot.centre.x + spot.width_m / 2.0, Align::MiddleRight)
+    };
     let top = spot.centre.y + spot.height_m / 2.0 - text_m / 2.0;
-    let mut marks = leader(place, ring_m, &spot, lines);
+    let near = Coord {
+        x: edge,
+        y: spot.centre.y,
+    };
+    let mut marks: Vec<Mark> = leader(place, ring_m, near, lines).into_iter().collect();
     for ((level, content), line) in lines.iter().zip(0_u32..) {
         let drawn = Drawn::Text {
             place: Coord {
-                x: left,
+                x: edge,
                 y: top - pitch_m * f64::from(line),
             },
             height_m: text_m,
             rotation_rad: 0.0,
-            align: Align::MiddleLeft,
+            align,
             content: content.clone(),
         };
         marks.push(layers::inked(
@@ -162,18 +172,17 @@ fn spots() -> impl Iterator<Item = (f64, f64)> {
 }
 
 /// A hairline from the ring to a stack that stands off it.
-fn leader(place: Coord<f64>, ring_m: f64, spot: &Spot, lines: &[(Level, String)]) -> Vec<Mark> {
-    let beside = spot.centre.x - (spot.centre.x - place.x).signum() * spot.width_m / 2.0;
-    let to = Coord {
-        x: beside,
-        y: spot.centre.y,
-    };
+fn leader(
+    place: Coord<f64>,
+    ring_m: f64,
+    to: Coord<f64>,
+    lines: &[(Level, String)],
+) -> Option<Mark> {
+    let (level, _) = lines.first()?;
     let reach_m = distance_m(place, to);
-    let Some((level, _)) = lines.first() else {
-        return Vec::new();
-    };
-    if reach_m < 1.3 * ring_m || (to.y - place.y).abs() < ring_m / 2.0 {
-        return Vec::new();
+    let beside = (to.y - place.y).abs() < ring_m / 2.0;
+    if beside || reach_m < 1.3 * ring_m {
+        return None;
     }
     let from = place + (to - place) * (ring_m / reach_m);
     let drawn = Drawn::Line {
@@ -181,11 +190,8 @@ fn leader(place: Coord<f64>, ring_m: f64, spot: &Spot, lines: &[(Level, String)]
         width_m: 0.0,
         closed: false,
     };
-    vec![layers::inked(
-        layers::FINDING,
-        layers::level_ink(*level),
-        drawn,
-    )]
+    let ink = layers::level_ink(*level);
+    Some(layers::inked(layers::FINDING, ink, drawn))
 }
 
 #[cfg(test)]

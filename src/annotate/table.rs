@@ -53,7 +53,7 @@ pub(super) fn table(analysis: &Analysis, letter_m: f64) -> Block {
     block.width_m = words::width_m(&title, 1.2 * letter_m);
     let place = Coord {
         x: 0.0,
-        y: -1.0 * letter_m,
+        y: -letter_m,
     };
     block
         .marks
@@ -192,19 +192,14 @@ fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
 
 /// `4x5-12.7`: tendons in the line, strands of each, size, as far as the drawing says.
 fn strands(tendon: &Tendon) -> String {
-    let mut words = String::new();
-    if tendon.tendons != 1 {
-        words.push_str(&format!("{}x", tendon.tendons));
-    }
-    match tendon.strands {
-        Some(strands) => words.push_str(&strands.to_string()),
-        None => words.push('?'),
-    }
-    if let Some(size) = &tendon.strand {
-        words.push('-');
-        words.push_str(&words::name(size));
-    }
-    words
+    let times = match tendon.tendons {
+        1 => String::new(),
+        more => format!("{more}x"),
+    };
+    let strands = tendon.strands.map_or("?".to_owned(), |n| n.to_string());
+    let size = tendon.strand.as_deref().map(words::name);
+    let size = size.map(|size| format!("-{size}")).unwrap_or_default();
+    format!("{times}{strands}{size}")
 }
 
 fn end_word(end: &End) -> &'static str {
