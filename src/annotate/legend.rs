@@ -13,8 +13,6 @@ use crate::job::{Datum, FromFace, Job, Wobble};
 pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
 /// Letters in a line.
 const LINE: usize = 56;
-/// Assumptions printed before the rest is only counted.
-const MOST_ASSUMPTIONS: usize = 12;
 /// From line to line, in letter heights.
 const PITCH: f64 = 1.7;
 
@@ -65,12 +63,12 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     for line in inputs(job) {
         column.sentence(&line);
     }
-    for line in analysis.assumptions.iter().take(MOST_ASSUMPTIONS) {
-        column.sentence(&format!("Assumed: {line}"));
-    }
-    let more = analysis.assumptions.len().saturating_sub(MOST_ASSUMPTIONS);
-    if more > 0 {
-        column.sentence(&format!("and {more} more assumptions: see the result file"));
+    match analysis.assumptions.len() {
+        0 => {}
+        1 => column.sentence("One value was assumed, not given: the result file says which"),
+        more => column.sentence(&format!(
+            "{more} values were assumed, not given: the result file lists each"
+        )),
     }
     column.gap();
     for caution in CAUTIONS {
@@ -104,12 +102,27 @@ fn inputs(job: &Job) -> Vec<String> {
         Datum::Centroid => "centroid of the strands",
         Datum::DuctUnderside => "underside of the duct",
     };
+    let long_term = &job.long_term;
     vec![
         format!(
             "Jacking stress {} of strength, friction mu {} per rad, wobble {wobble}, draw-in {:.1} mm",
             stressing.jacking_ratio,
             stressing.mu_per_rad,
             1000.0 * stressing.draw_in_m
+        ),
+        format!(
+            "Strand modulus {} MPa; concrete modulus {} MPa at stressing, {} MPa at 28 days; share of elastic shortening {}",
+            job.system.strand_modulus_mpa,
+            long_term.concrete_modulus_transfer_mpa,
+            long_term.concrete_modulus_mpa,
+            long_term.shortening_share
+        ),
+        format!(
+            "Shrinkage strain {}, creep coefficient {}, relaxation {:.1} % at 1000 h, times {} at the end",
+            long_term.shrinkage_strain,
+            long_term.creep_coefficient,
+            100.0 * long_term.relaxation_1000h,
+            long_term.relaxation_factor
         ),
         format!("Heights read as {} {from} to the {to}", height.unit.name()),
     ]

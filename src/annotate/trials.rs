@@ -329,6 +329,35 @@ fn the_curves_stand_at_their_true_level() {
 }
 
 #[test]
+fn the_legend_names_every_class_and_what_the_forces_rest_on() {
+    let analysis = analysis(band(2, 1.0));
+    let sheet = draw(&analysis, &[], &Job::default());
+    let patches: Vec<_> = on(&sheet, layers::TABLE)
+        .filter(|mark| matches!(mark.drawn, Drawn::Solid { .. }))
+        .filter_map(|mark| mark.ink)
+        .collect();
+    assert_eq!(patches, ramp::RAMP);
+    let words: Vec<&str> = on(&sheet, layers::TABLE)
+        .filter_map(|mark| match &mark.drawn {
+            Drawn::Text { content, .. } => Some(content.as_str()),
+            _ => None,
+        })
+        .collect();
+    let words = words.join(" ");
+    for class in 0..ramp::RAMP.len() {
+        assert!(words.contains(&ramp::class_name(class)));
+    }
+    for said in [
+        "friction mu 0.19",
+        "not a design certificate",
+        "nobody behind",
+        "was assumed",
+    ] {
+        assert!(words.contains(said), "{said} is missing");
+    }
+}
+
+#[test]
 fn the_same_floor_gives_the_same_sheet_and_nothing_promises_anything() {
     let analysis = analysis(two_way());
     let own = labels(&analysis);
