@@ -26,7 +26,8 @@ use place::{Extent, Room};
 /// Draws a floor's results: forces, extensions, curves in space, findings, legend and table, in metres.
 ///
 /// `occupied` holds the corners of the drawing's own texts: what is written keeps clear of them as far as it can, and
-/// their usual height is the height of the figures. The sheet follows the floor's order, so it is the same for the
+/// their usual height is the height of the figures. Texts of earlier marks must not be among them, or marking a marked
+/// drawing would push its figures about. The sheet follows the floor's order, so it is the same for the
 /// same floor.
 pub fn draw(analysis: &Analysis, occupied: &[[Coord<f64>; 4]], job: &Job) -> Sheet {
     let text_m = lanes::text_height_m(occupied);

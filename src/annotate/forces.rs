@@ -48,7 +48,7 @@ fn runs(samples: &[Sample], stage: usize, jack_kn: f64) -> Vec<Run> {
             continue;
         };
         let mut at = 0.0;
-        for next in cuts(start, end) {
+        for next in cuts(start, end).into_iter().chain([1.0]) {
             let between = |t: f64| from.place + (to.place - from.place) * t;
             let class = ramp::class_of(start + (end - start) * f64::midpoint(at, next));
             if open.as_ref().is_none_or(|run| run.class != class) {
@@ -72,15 +72,17 @@ fn share(sample: &Sample, stage: usize, jack_kn: f64) -> Option<f64> {
     Some(force_kn / jack_kn).filter(|share| share.is_finite())
 }
 
-/// Where between two shares a class ends, as fractions of the way, and then 1.
+/// Where between two shares a class ends, as fractions of the way.
 fn cuts(start: f64, end: f64) -> Vec<f64> {
+    if ramp::class_of(start) == ramp::class_of(end) {
+        return Vec::new();
+    }
     let mut cuts: Vec<f64> = ramp::BOUNDS
         .iter()
         .map(|bound| (bound - start) / (end - start))
         .filter(|t| *t > 0.0 && *t < 1.0)
         .collect();
     cuts.sort_by(f64::total_cmp);
-    cuts.push(1.0);
     cuts
 }
 

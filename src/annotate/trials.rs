@@ -139,6 +139,20 @@ fn figures_on_a_two_way_crossing_overlap_nothing_and_mostly_lie_clear_of_every_l
 }
 
 #[test]
+fn where_tendons_lie_too_close_only_the_governing_figures_are_written() {
+    let analysis = analysis(band(6, 0.15));
+    let sheet = draw(&analysis, &[], &Job::default());
+    let figures = boxes(&sheet, &[SERVICE]);
+    // Both anchors, and the least force where neither anchor has it.
+    assert!(
+        (6..=18).contains(&figures.len()),
+        "{} figures",
+        figures.len()
+    );
+    assert_eq!(overlaps(&figures), 0);
+}
+
+#[test]
 fn no_text_reads_upside_down() {
     let analysis = analysis(two_way());
     let sheet = draw(&analysis, &labels(&analysis), &Job::default());
