@@ -18,6 +18,9 @@ mod words;
 pub use curvature::{Turning, turning};
 pub use ground::Ground;
 
+use std::sync::LazyLock;
+
+use crate::drawing;
 use crate::finding::{Finding, Level, Rule};
 use crate::floor::{EndKind, Floor, Tendon};
 use crate::job::Job;
@@ -65,26 +68,33 @@ pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     found
 }
 
-/// Every rule of this stage, by name.
+/// Every rule of every stage, by name.
 pub fn rules() -> &'static [&'static Rule] {
-    static RULES: [&Rule; 14] = [
-        &stressing::ANCHOR_STRESS,
-        &slab::CROSSES_OPENING,
-        &curvature::CURVATURE_LOSS,
-        &stressing::DRAW_IN_REACHES_DEAD_END,
-        &stressing::FAR_END_FORCE,
-        &profile::HEIGHT_OUTSIDE_COVER,
-        &profile::HIGHS_IN_A_ROW,
-        &profile::HOGGING_RADIUS,
-        &stressing::JACKING_STRESS,
-        &slab::LEAVES_SLAB,
-        &profile::LOWS_IN_A_ROW,
-        &ends::NO_LIVE_END,
-        &ends::ONE_END_LENGTH,
-        &plan::PLAN_RADIUS,
-    ];
-    &RULES
+    static ALL: LazyLock<Vec<&'static Rule>> = LazyLock::new(|| {
+        let mut all = [&drawing::READING_RULES[..], &RULES[..]].concat();
+        all.sort_by_key(|rule| rule.name);
+        all
+    });
+    &ALL
 }
+
+/// This stage's own rules.
+static RULES: [&Rule; 14] = [
+    &ends::NO_LIVE_END,
+    &ends::ONE_END_LENGTH,
+    &profile::HIGHS_IN_A_ROW,
+    &profile::LOWS_IN_A_ROW,
+    &profile::HEIGHT_OUTSIDE_COVER,
+    &profile::HOGGING_RADIUS,
+    &plan::PLAN_RADIUS,
+    &slab::CROSSES_OPENING,
+    &slab::LEAVES_SLAB,
+    &stressing::JACKING_STRESS,
+    &stressing::FAR_END_FORCE,
+    &stressing::ANCHOR_STRESS,
+    &stressing::DRAW_IN_REACHES_DEAD_END,
+    &curvature::CURVATURE_LOSS,
+];
 
 impl Worked<'_> {
     /// A finding on this tendon at a station.
