@@ -4,12 +4,14 @@
 //! text; a rule about the job speaks once. Every limit is a key of the job and is named where it is broken.
 
 mod chords;
+pub mod cover;
 pub mod curvature;
+pub mod edge;
 pub mod ends;
 pub mod ground;
+pub mod openings;
 pub mod plan;
 pub mod profile;
-pub mod slab;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -48,11 +50,11 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(ends::one_end_length(worked, job));
     found.extend(profile::highs_in_a_row(worked));
     found.extend(profile::lows_in_a_row(worked));
-    found.extend(profile::height_outside_cover(worked, ground, &chords, job));
+    found.extend(cover::height_outside_cover(worked, ground, &chords, job));
     found.extend(profile::hogging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
-    found.extend(slab::crosses_opening(worked, ground, &chords, job));
-    found.extend(slab::leaves_slab(worked, ground, &chords, job));
+    found.extend(openings::crosses_opening(worked, ground, &chords, job));
+    found.extend(edge::leaves_slab(worked, ground, &chords, job));
     found.extend(stressing::far_end_force(worked, job));
     found.extend(curvature::curvature_loss(worked, job));
     found.extend(stressing::anchor_stress(worked, job));
@@ -64,7 +66,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
 pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
-    found.extend(slab::no_outline(floor));
+    found.extend(edge::no_outline(floor));
     found
 }
 
@@ -84,11 +86,11 @@ static RULES: [&Rule; 14] = [
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
     &profile::LOWS_IN_A_ROW,
-    &profile::HEIGHT_OUTSIDE_COVER,
+    &cover::HEIGHT_OUTSIDE_COVER,
     &profile::HOGGING_RADIUS,
     &plan::PLAN_RADIUS,
-    &slab::CROSSES_OPENING,
-    &slab::LEAVES_SLAB,
+    &openings::CROSSES_OPENING,
+    &edge::LEAVES_SLAB,
     &stressing::JACKING_STRESS,
     &stressing::FAR_END_FORCE,
     &stressing::ANCHOR_STRESS,

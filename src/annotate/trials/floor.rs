@@ -180,10 +180,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
     };
     let kinds = ends.map(|end| end.kind.unwrap_or(EndKind::Dead));
     let result = TendonResult {
-        profile: Some(Profile {
-            spans: Vec::new(),
-            bends: Vec::new(),
-        }),
+        profile: Some(Profile::new(Vec::new(), Vec::new())),
         forces: Some(Forces {
             steel: Steel {
                 area_mm2: 493.5,
