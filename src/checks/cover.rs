@@ -301,4 +301,21 @@ mod tests {
         let found = cover_finding(&tendon, &level(0.1), &slab_200());
         assert!(found.is_some_and(|f| f.station_m == Some(6.0)));
     }
+
+    #[test]
+    fn a_height_to_the_duct_puts_the_duct_where_the_drawing_does() {
+        // Underside at the cover itself, sagging: the strand lies at its place in the duct above it.
+        let mut job = job();
+        job.conventions.height.datum = Datum::DuctUnderside;
+        let strand_m = job.limits.cover_m + job.conventions.height.strand_in_duct_low_m;
+        assert!(overrun_at(0.0, strand_m - 0.2, Some(0.2), 0.01, &job).is_none());
+        let found = overrun_at(0.0, strand_m - 0.201, Some(0.2), 0.01, &job);
+        assert!(found.is_some_and(|f| !f.top && (f.over_m - 0.001).abs() < 1e-9));
+        // Hogging, the duct's top stands above the strand by the rest of the duct's height.
+        let above_m = job.system.duct_height_m - job.conventions.height.strand_in_duct_high_m;
+        let level_m = -(job.limits.cover_m + above_m);
+        assert!(overrun_at(0.0, level_m, Some(0.2), -0.01, &job).is_none());
+        let found = overrun_at(0.0, level_m + 0.001, Some(0.2), -0.01, &job);
+        assert!(found.is_some_and(|f| f.top));
+    }
 }

@@ -107,7 +107,7 @@ impl<'a> Rings<'a> {
             let rings = || std::iter::once(polygon.exterior()).chain(polygon.interiors());
             // An index has no place for a coordinate that is no number.
             if !rings()
-                .flat_map(|ring| ring.coords())
+                .flat_map(geo::LineString::coords)
                 .all(|c| c.x.is_finite() && c.y.is_finite())
             {
                 continue;

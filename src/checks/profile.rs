@@ -130,6 +130,7 @@ fn crest_m(span: &Span) -> f64 {
 mod tests {
     use super::super::testing::{high_to_low, job, point, straight, worked};
     use super::*;
+    use crate::profile::Profile;
 
     #[test]
     fn two_highs_or_two_lows_in_a_row_are_seen_past_support_heights() {
@@ -177,6 +178,37 @@ mod tests {
         assert_eq!(
             level_at(limits.hogging_radius_error_m - 0.01),
             Some(Level::Error)
+        );
+    }
+
+    #[test]
+    fn one_high_point_is_one_place_though_the_plan_line_cuts_its_curve() {
+        let whole = high_to_low(5.0, 0.1, 0.2);
+        let hogging = whole.spans[0];
+        let (first_m, rest_m) = (0.05, hogging.length_m - 0.05);
+        let cut = [
+            Span {
+                length_m: first_m,
+                ..hogging
+            },
+            Span {
+                start_m: first_m,
+                length_m: rest_m,
+                level_m: hogging.level_at(first_m),
+                slope: hogging.slope_at(first_m),
+                ..hogging
+            },
+            whole.spans[1],
+        ];
+        let tendon = straight(10.0);
+        let found = |profile: &Profile| {
+            let mut worked = worked(&tendon);
+            worked.profile = Some(profile);
+            hogging_radius(&worked, &job()).map(|found| found.text)
+        };
+        assert_eq!(
+            found(&Profile::new(cut.to_vec(), Vec::new())),
+            found(&whole)
         );
     }
 }
