@@ -328,9 +328,9 @@ impl<'a> Pass<'a> {
             }
             (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
             (b"$HANDSEED", 5) => {
-                if let Some(seed) = parse_handle(tag.word()) {
-                    self.scan.handseed = Some((tag.value_range(), seed));
-                }
+                // An unreadable seed stands for none, but its place is where a good one belongs.
+                let seed = parse_handle(tag.word()).unwrap_or(0);
+                self.scan.handseed = Some((tag.value_range(), seed));
             }
             _ => {}
         }
@@ -666,7 +666,10 @@ impl<'a> Pass<'a> {
         let handles = &self.handles;
         self.scan.greatest_handle = handles.greatest;
         self.scan.own_handles = handles.own_range;
-        let with_handles = self.scan.version.as_str() >= "AC1012";
+        let number = self.scan.version.strip_prefix("AC");
+        let with_handles = number
+            .and_then(|digits| digits.parse::<u32>().ok())
+            .is_some_and(|number| number >= 1012);
         self.scan.uses_handles = with_handles || handles.in_use();
         if self.scan.model_space_record.is_none() {
             self.scan.model_space_record = text(self.owner_seen);
