@@ -74,7 +74,8 @@ fn strands(text: &mut String, job: &Job) {
 }
 
 fn comment(text: &mut String, line: &str) {
-    for line in line.lines() {
+    // An empty line is a line too, which `lines` leaves out.
+    for line in line.split('\n') {
         let line: String = line.chars().filter(|c| !c.is_control()).collect();
         let _ = writeln!(text, "{}", format!("# {line}").trim_end());
     }

@@ -1,0 +1,67 @@
+//! What a drawing holds, and a job file proposed from it: one text that is itself a job file.
+
+use std::path::PathBuf;
+
+use super::job_file::{self, JobFile};
+use super::{Outcome, Refused, files, print, refuse, work};
+use crate::drawing::{self, Wanted};
+use crate::job;
+use crate::terminal::Terminal;
+
+mod contents;
+mod proposals;
+mod readings;
+mod words;
+
+use contents::Contents;
+
+/// What `survey` takes.
+#[derive(Debug, Clone)]
+pub struct Order {
+    /// Drawing.
+    pub plan: PathBuf,
+    /// Job file by which texts are read and whose keys are kept.
+    pub job: Option<PathBuf>,
+    /// File to write; `None`: standard output.
+    pub out: Option<PathBuf>,
+}
+
+/// Prints or writes the survey.
+pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
+    let text = match survey(order) {
+        Ok(text) => text,
+        Err(refused) => return refuse(&refused, terminal),
+    };
+    let Some(path) = &order.out else {
+        return print(&text, terminal);
+    };
+    let written = if files::exists(path) {
+        Err(Refused::Exists(path.clone()))
+    } else {
+        files::write_all(&[(path.clone(), text.into_bytes())])
+    };
+    match written {
+        Ok(()) => {
+            terminal.progress(&format!("{}: job file proposed", path.display()));
+            Outcome::Done
+        }
+        Err(refused) => refuse(&refused, terminal),
+    }
+}
+
+fn survey(order: &Order) -> Result<String, Refused> {
+    let job_file = match &order.job {
+        Some(path) => job_file::named(path)?,
+        None => JobFile::default(),
+    };
+    let job = &job_file.resolved.job;
+    let source = work::open(&order.plan)?;
+    let (drawing, findings) = drawing::read(&source, &Wanted::everything(), job.conventions.unit);
+    let contents = Contents::of(&drawing, job);
+    let name = order.plan.file_name().unwrap_or(order.plan.as_os_str());
+    let head = words::head(&name.to_string_lossy(), &drawing, &contents, &findings, job);
+    Ok(job::file(
+        &head,
+        &proposals::proposals(&drawing, &contents, &job_file),
+    ))
+}

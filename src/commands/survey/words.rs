@@ -1,0 +1,147 @@
+//! A survey in lines: what stands on top of the proposed job file.
+
+use super::contents::Contents;
+use super::proposals::patterns;
+use crate::commands::work;
+use crate::drawing::{Drawing, Layer, UnitFrom, Wanted};
+use crate::finding::Finding;
+use crate::job::Job;
+use crate::job::keys::of_table;
+use crate::report::{Align, plain, table};
+
+/// The lines, without comment signs.
+pub(super) fn head(
+    file: &str,
+    drawing: &Drawing,
+    contents: &Contents,
+    findings: &[Finding],
+    job: &Job,
+) -> Vec<String> {
+    let unit = match drawing.unit_from {
+        UnitFrom::Job => "by the job file",
+        UnitFrom::Header => "by $INSUNITS",
+        UnitFrom::Assumed => "assumed, since the drawing has no $INSUNITS",
+    };
+    let mut lines = vec![
+        format!("Job file proposed from {}.", plain(file)),
+        "Lines without # are set from the drawing; `#key = value` shows a default. Change what does not fit.".to_owned(),
+        String::new(),
+        format!(
+            "Version {}; one unit is {} m, {unit}.",
+            plain(&drawing.version),
+            drawing.unit_m
+        ),
+        String::new(),
+    ];
+    lines.extend(layers(drawing, job));
+    lines.extend(blocks(contents));
+    lines.extend(texts(contents));
+    if !findings.is_empty() {
+        lines.push(String::new());
+        lines.push("Findings while reading:".to_owned());
+        lines.extend(findings.iter().map(|finding| {
+            format!(
+                "  {} {}: {}; {}",
+                finding.level.word(),
+                finding.rule.name,
+                plain(&finding.text),
+                plain(&finding.remedy)
+            )
+        }));
+    }
+    lines
+}
+
+fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
+    let roles: Vec<(&str, Wanted)> = of_table("layers")
+        .map(|key| (key.name, work::wanted(patterns(job, key.name))))
+        .collect();
+    let row = |layer: &Layer| {
+        let counts: Vec<String> = layer
+            .counts
+            .iter()
+            .map(|(name, count)| format!("{count} {}", plain(name)))
+            .collect();
+        let state = match (layer.frozen, layer.off) {
+            (true, _) => "frozen",
+            (false, true) => "off",
+            (false, false) => "",
+        };
+        let fitting: Vec<&str> = roles
+            .iter()
+            .filter(|(_, wanted)| wanted.has(&layer.name))
+            .map(|(role, _)| *role)
+            .collect();
+        vec![
+            format!("  {}", plain(&layer.name)),
+            fitting.join(", "),
+            counts.join(", "),
+            state.to_owned(),
+        ]
+    };
+    let filled = drawing
+        .layers
+        .iter()
+        .filter(|layer| !layer.counts.is_empty());
+    let mut rows = vec![vec![
+        "Layer".to_owned(),
+        "read as".to_owned(),
+        "entities in model space".to_owned(),
+        String::new(),
+    ]];
+    rows.extend(filled.map(row));
+    let empty = drawing.layers.len() + 1 - rows.len();
+    let mut lines = lines_of(&rows);
+    if empty > 0 {
+        lines.push(format!("  and {empty} empty"));
+    }
+    lines
+}
+
+fn blocks(contents: &Contents) -> Vec<String> {
+    if contents.blocks_at_ends.is_empty() {
+        return vec![
+            String::new(),
+            "No block stands at the end of a line: live and dead ends are not known.".to_owned(),
+        ];
+    }
+    let mut rows = vec![vec!["Block".to_owned(), "stands at line ends".to_owned()]];
+    rows.extend(
+        contents
+            .blocks_at_ends
+            .iter()
+            .map(|(block, count)| vec![format!("  {}", plain(block)), count.to_string()]),
+    );
+    let mut lines = vec![String::new()];
+    lines.extend(lines_of(&rows));
+    lines
+}
+
+fn texts(contents: &Contents) -> Vec<String> {
+    let mut rows = vec![vec![
+        "Layer".to_owned(),
+        "texts, such as".to_owned(),
+        "read as".to_owned(),
+    ]];
+    for (layer, held) in &contents.layers {
+        for (index, (text, said)) in held.samples.iter().enumerate() {
+            let name = match index {
+                0 => format!("  {} ({})", plain(layer), held.texts),
+                _ => String::new(),
+            };
+            let short: String = text.chars().take(40).collect();
+            rows.push(vec![name, plain(&short), said.words().to_owned()]);
+        }
+    }
+    if rows.len() == 1 {
+        return vec![String::new(), "No texts in model space.".to_owned()];
+    }
+    let mut lines = vec![String::new()];
+    lines.extend(lines_of(&rows));
+    lines
+}
+
+fn lines_of(rows: &[Vec<String>]) -> Vec<String> {
+    let aligns = vec![Align::Left; rows.first().map_or(0, Vec::len)];
+    table(&aligns, rows).lines().map(str::to_owned).collect()
+}

@@ -1,0 +1,147 @@
+//! From a drawing's path to a floor worked out: the stages in their order.
+
+use std::path::Path;
+
+use geo::Coord;
+
+use super::job_file::JobFile;
+use super::{Refused, files, units};
+use crate::analysis::{self, Analysis};
+use crate::drawing::{self, Layer, Source, Wanted};
+use crate::floor;
+use crate::job::Job;
+use crate::report::DrawingFacts;
+
+/// A floor worked out, and the drawing that it came from.
+#[derive(Debug)]
+pub(super) struct Work {
+    /// The drawing as it came.
+    pub(super) source: Source,
+    /// What reports say of it.
+    pub(super) facts: DrawingFacts,
+    /// Corners of the drawing's own texts, metres.
+    pub(super) occupied: Vec<[Coord<f64>; 4]>,
+    /// The floor, worked out.
+    pub(super) analysis: Analysis,
+}
+
+/// Reads a drawing and works out its floor.
+pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
+    let job = &job_file.resolved.job;
+    let source = open(plan)?;
+    let tendon_layers = tendon_layers(plan, &source, job)?;
+    let wanted = wanted(job.layer_patterns());
+    let (drawing, mut findings) = drawing::read(&source, &wanted, job.conventions.unit);
+    let (floor, more) = floor::read(&drawing, job);
+    findings.extend(more);
+    if floor.tendons.is_empty() {
+        return Err(Refused::NoTendons {
+            path: plan.to_owned(),
+            layers: listed(&tendon_layers),
+        });
+    }
+    units::check(plan, &floor.tendons, drawing.unit_m, drawing.unit_from)?;
+    let mut analysis = analysis::work(floor, job, findings);
+    analysis.assumptions.extend(job_file.resolved.assumptions());
+    let name = plan.file_name().unwrap_or(plan.as_os_str());
+    Ok(Work {
+        facts: DrawingFacts {
+            file: name.to_string_lossy().into_owned(),
+            version: drawing.version,
+            unit_m: drawing.unit_m,
+        },
+        occupied: drawing.texts.iter().map(|text| text.corners).collect(),
+        source,
+        analysis,
+    })
+}
+
+/// Opens a drawing.
+pub(super) fn open(plan: &Path) -> Result<Source, Refused> {
+    drawing::open(files::read(plan)?).map_err(|refusal| Refused::Drawing {
+        path: plan.to_owned(),
+        refusal,
+    })
+}
+
+/// The layers that fit these patterns. A job's patterns were tried when it was read: none is broken here.
+pub(super) fn wanted(patterns: impl IntoIterator<Item = String>) -> Wanted {
+    Wanted::layers(patterns).unwrap_or_else(|_| Wanted::everything())
+}
+
+/// The drawing's layers that the job names for tendons.
+fn tendon_layers(plan: &Path, source: &Source, job: &Job) -> Result<Vec<Layer>, Refused> {
+    let layers = &job.conventions.layers;
+    let patterns: Vec<String> = [&layers.banded, &layers.distributed]
+        .into_iter()
+        .flatten()
+        .cloned()
+        .collect();
+    let tendons = wanted(patterns.clone());
+    let all = source.layers();
+    let fitting: Vec<Layer> = all
+        .iter()
+        .filter(|layer| tendons.has(&layer.name))
+        .cloned()
+        .collect();
+    if !fitting.is_empty() {
+        return Ok(fitting);
+    }
+    Err(Refused::NoTendonLayer {
+        path: plan.to_owned(),
+        near: nearest(&all, &patterns)
+            .map(|(layer, pattern)| format!("\nlayer {layer} comes nearest, to {pattern}"))
+            .unwrap_or_default(),
+        patterns: patterns.join(", "),
+        layers: listed(&all),
+    })
+}
+
+/// Layers with what lies on them, in one line.
+fn listed(layers: &[Layer]) -> String {
+    const SHOWN: usize = 40;
+    let filled: Vec<&Layer> = layers
+        .iter()
+        .filter(|layer| !layer.counts.is_empty())
+        .collect();
+    let mut words: Vec<String> = filled
+        .iter()
+        .take(SHOWN)
+        .map(|layer| {
+            let counts: Vec<String> = layer
+                .counts
+                .iter()
+                .map(|(name, count)| format!("{count} {name}"))
+                .collect();
+            format!("{} ({})", layer.name, counts.join(", "))
+        })
+        .collect();
+    if filled.len() > SHOWN {
+        words.push(format!("and {} more", filled.len() - SHOWN));
+    }
+    match layers.len() - filled.len() {
+        0 => {}
+        1 => words.push("1 empty layer".to_owned()),
+        empty => words.push(format!("{empty} empty layers")),
+    }
+    if words.is_empty() {
+        "none".to_owned()
+    } else {
+        words.join(", ")
+    }
+}
+
+/// The layer whose name is most like a pattern, if it is at all like it.
+fn nearest<'a>(layers: &'a [Layer], patterns: &'a [String]) -> Option<(&'a str, &'a str)> {
+    let mut best: Option<(f64, &str, &str)> = None;
+    for layer in layers {
+        for pattern in patterns {
+            let stem = pattern.replace('*', "").to_lowercase();
+            let likeness = strsim::jaro_winkler(&layer.name.to_lowercase(), &stem);
+            if likeness > best.map_or(0.8, |(held, ..)| held) {
+                best = Some((likeness, &layer.name, pattern));
+            }
+        }
+    }
+    best.map(|(_, layer, pattern)| (layer, pattern))
+}
