@@ -1,11 +1,24 @@
 //! Runs the tendons of a floor in parallel and gathers results by index; the only file that says `rayon`.
+//!
+//! Two passes: all tendons are jacked and locked off first, since the concrete stress of each comes from all of them; then
+//! the sections of the slab, summed serially in the tendons' order; then transfer, service and the rules.
+
+mod refusals;
+mod samples;
+
+use std::cmp::Ordering;
 
 use geo::Coord;
+use rayon::prelude::*;
 
+pub use self::refusals::{Refusal, rules};
+use crate::checks::{self, Ground, Worked};
 use crate::finding::Finding;
 use crate::floor::{Floor, Tendon};
-use crate::losses::Forces;
-use crate::profile::Profile;
+use crate::job::Job;
+use crate::losses::precompression::{Crossing, Sections};
+use crate::losses::{Effective, Forces, Stressed, steel};
+use crate::profile::{self, Profile};
 
 /// A floor worked out.
 #[derive(Debug, Clone)]
@@ -38,11 +51,11 @@ pub struct TendonResult {
 /// Results at a profile point.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct PointResult {
-    /// Angle turned since station 0, in space, radians.
+    /// Angle turned since station 0, in space, radians; with a bend at the point.
     pub angle_rad: Option<f64>,
-    /// Level above the top of the slab, metres.
+    /// Level above the top of the slab, metres: as drawn, for a support too.
     pub level_m: Option<f64>,
-    /// Forces at jacking, lock-off, transfer and service, kN per tendon.
+    /// Forces at jacking, lock-off, transfer and service, kN per tendon; at a bend, the lesser of its two sides.
     pub forces_kn: Option<[f64; 4]>,
 }
 
@@ -62,4 +75,227 @@ pub struct Sample {
 /// A tendon with its result.
 pub fn pair(analysis: &Analysis) -> impl Iterator<Item = (&Tendon, &TendonResult)> {
     analysis.floor.tendons.iter().zip(&analysis.results)
+}
+
+/// Works out a floor; `found` are the findings met while reading it. A tendon that lacks something gets no forces and a
+/// finding, and the others go on without it.
+pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
+    let tendons = &floor.tendons;
+    let curves: Vec<Result<Profile, Refusal>> = tendons
+        .par_iter()
+        .map(|tendon| Ok(profile::build(tendon, &job.profile)?))
+        .collect();
+    let stressed: Vec<Result<Stressed<'_>, Refusal>> = tendons
+        .par_iter()
+        .zip(&curves)
+        .map(|(tendon, curve)| stress(tendon, curve.as_ref().map_err(Clone::clone)?, job))
+        .collect();
+    let stresses_mpa = concrete_stresses(&floor, job, &stressed);
+    let ground = Ground::of(&floor.slab);
+    let parts: Vec<(TendonResult, Vec<Finding>)> = (0..tendons.len())
+        .into_par_iter()
+        .map(|index| {
+            let (mut result, refusal) = finish(
+                &tendons[index],
+                job,
+                curves[index].as_ref().ok(),
+                stressed[index].as_ref().map_err(Clone::clone),
+                stresses_mpa[index],
+            );
+            let mut found: Vec<Finding> = refusal
+                .and_then(|refusal| refusal.finding(&tendons[index]))
+                .into_iter()
+                .collect();
+            found.extend(check(&tendons[index], &result, &ground, job));
+            result.points.shrink_to_fit();
+            (result, found)
+        })
+        .collect();
+
+    let mut findings = found;
+    findings.extend(checks::floor(&floor, job));
+    let mut results = Vec::with_capacity(parts.len());
+    for (result, found) in parts {
+        results.push(result);
+        findings.extend(found);
+    }
+    findings.sort_by(in_order);
+    let assumptions = assumptions(&floor, &results, job);
+    Analysis {
+        floor,
+        results,
+        findings,
+        assumptions,
+    }
+}
+
+/// Works out one tendon at this mean concrete stress, MPa, and says what stopped it, if something did.
+pub fn work_tendon(
+    tendon: &Tendon,
+    job: &Job,
+    concrete_stress_mpa: Option<f64>,
+) -> (TendonResult, Option<Refusal>) {
+    let curve = profile::build(tendon, &job.profile).map_err(Refusal::from);
+    let stressed = curve
+        .as_ref()
+        .map_err(Clone::clone)
+        .and_then(|curve| stress(tendon, curve, job));
+    finish(
+        tendon,
+        job,
+        curve.as_ref().ok(),
+        stressed.as_ref().map_err(Clone::clone),
+        concrete_stress_mpa,
+    )
+}
+
+/// Jacks a tendon and locks it off.
+///
+/// # Errors
+/// [`Refusal`] says what is not known, or why there is no force.
+pub fn stress<'p>(
+    tendon: &Tendon,
+    curve: &'p Profile,
+    job: &Job,
+) -> Result<Stressed<'p>, Refusal> {
+    let steel = steel(tendon, &job.system).ok_or(Refusal::SteelUnknown)?;
+    let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
+        return Err(Refusal::EndUnknown);
+    };
+    Ok(Stressed::new(curve, steel, [start, end], &job.stressing)?)
+}
+
+/// Mean concrete stress of each tendon, MPa: the job's, or from the slab's sections.
+fn concrete_stresses(
+    floor: &Floor,
+    job: &Job,
+    stressed: &[Result<Stressed<'_>, Refusal>],
+) -> Vec<Option<f64>> {
+    let tendons = &floor.tendons;
+    if let Some(given_mpa) = job.long_term.concrete_stress_mpa {
+        return vec![Some(given_mpa); tendons.len()];
+    }
+    let paths = || tendons.iter().map(|tendon| &tendon.path);
+    let Some(sections) = Sections::cut(&floor.slab, paths()) else {
+        return vec![None; tendons.len()];
+    };
+    let crossings: Vec<Vec<Crossing>> = tendons
+        .par_iter()
+        .zip(stressed)
+        .enumerate()
+        .map(|(index, (tendon, stressed))| {
+            stressed.as_ref().map_or_else(
+                |_| Vec::new(),
+                |stressed| sections.crossings(index, &tendon.path, tendon.tendons, stressed),
+            )
+        })
+        .collect();
+    sections.stresses_mpa(paths(), &crossings)
+}
+
+/// Puts a tendon's result together from what is known of it.
+fn finish(
+    tendon: &Tendon,
+    job: &Job,
+    curve: Option<&Profile>,
+    stressed: Result<&Stressed<'_>, Refusal>,
+    concrete_stress_mpa: Option<f64>,
+) -> (TendonResult, Option<Refusal>) {
+    let effective = stressed.and_then(|stressed| {
+        let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
+        Ok(Effective::new(stressed, &job.long_term, stress_mpa)?)
+    });
+    let forces_kn = |station_m| effective.as_ref().ok().map(|at| at.forces_kn(station_m));
+    let points = tendon
+        .points
+        .iter()
+        .map(|point| PointResult {
+            angle_rad: curve.map(|curve| curve.angle_rad(point.station_m)),
+            level_m: profile::level_m(point),
+            forces_kn: forces_kn(point.station_m),
+        })
+        .collect();
+    let samples = curve.map_or_else(Vec::new, |curve| {
+        samples::stations(tendon)
+            .into_iter()
+            .map(|station_m| Sample {
+                station_m,
+                place: tendon.path.place_at(station_m),
+                level_m: curve.level_m(station_m),
+                forces_kn: forces_kn(station_m),
+            })
+            .collect()
+    });
+    let result = TendonResult {
+        profile: curve.cloned(),
+        forces: effective.as_ref().ok().map(Effective::forces),
+        points,
+        samples,
+        concrete_stress_mpa,
+    };
+    (result, effective.err())
+}
+
+/// What the rules say of a tendon.
+fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job) -> Vec<Finding> {
+    let lock_off = |sample: Option<&Sample>| Some(sample?.forces_kn?[1]);
+    let ends = (
+        lock_off(result.samples.first()),
+        lock_off(result.samples.last()),
+    );
+    let worked = Worked {
+        tendon,
+        profile: result.profile.as_ref(),
+        forces: result.forces.as_ref(),
+        lock_off_kn: match ends {
+            (Some(start_kn), Some(end_kn)) => Some([start_kn, end_kn]),
+            _ => None,
+        },
+    };
+    checks::tendon(&worked, ground, job)
+}
+
+/// Worst first, then by rule, tendon, station, place and words: an order that no reading order changes.
+fn in_order(a: &Finding, b: &Finding) -> Ordering {
+    let place = |finding: &Finding| finding.place.map_or((f64::MIN, f64::MIN), |at| (at.x, at.y));
+    let station_m = |finding: &Finding| finding.station_m.unwrap_or(f64::MIN);
+    a.level
+        .cmp(&b.level)
+        .then_with(|| a.rule.name.cmp(b.rule.name))
+        .then_with(|| a.tendon.cmp(&b.tendon))
+        .then_with(|| station_m(a).total_cmp(&station_m(b)))
+        .then_with(|| place(a).0.total_cmp(&place(b).0))
+        .then_with(|| place(a).1.total_cmp(&place(b).1))
+        .then_with(|| a.text.cmp(&b.text))
+}
+
+/// What was assumed of the floor while it was worked out, in sentences.
+fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String> {
+    let mut said = Vec::new();
+    let anchors = floor
+        .tendons
+        .iter()
+        .flat_map(|tendon| &tendon.points)
+        .filter(|point| point.level_m().is_none() && profile::level_m(point).is_some())
+        .count();
+    if anchors > 0 {
+        said.push(format!(
+            "Anchors without a height are at mid-depth: {anchors}."
+        ));
+    }
+    if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
+        said.push(
+            "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
+             (long_term.concrete_stress_mpa is not given)."
+                .to_owned(),
+        );
+        let without = results.iter().filter(|result| result.forces.is_none()).count();
+        if without > 0 && without < results.len() {
+            said.push(format!(
+                "Tendons without forces press on no section: {without} of {}.",
+                results.len()
+            ));
+        }
+    }
+    said
 }

@@ -24,7 +24,8 @@ pub fn root(f: impl Fn(f64) -> f64, a: f64, b: f64, tolerance: f64) -> Option<f6
     let finest = 4.0 * f64::EPSILON * low.abs().max(high.abs());
     let half_width = tolerance.max(finest).max(f64::MIN_POSITIVE);
     let halvings = ((high - low) / (2.0 * half_width)).log2().ceil().max(0.0);
-    let mut slack = half_width * (halvings + 1.0).exp2();
+    // A millionth less than one halving to spare, so that rounding never costs another.
+    let mut slack = half_width * (halvings + 1.0).exp2() * (1.0 - 1e-6);
     let truncation = 0.2 / (high - low);
     while high - low > 2.0 * half_width {
         let middle = f64::midpoint(low, high);

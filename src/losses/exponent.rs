@@ -98,6 +98,10 @@ impl<'p> Exponent<'p> {
         along
     }
 
+    pub(super) fn profile(&self) -> &'p Profile {
+        self.profile
+    }
+
     /// Length in space and φ at a station of a piece, with the first `bends` bends.
     fn measured(&self, span: usize, bends: usize, station_m: f64) -> (f64, f64) {
         let start_m = self

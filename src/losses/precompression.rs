@@ -14,7 +14,6 @@ use crate::geometry::{Coord, Path, Segment};
 use self::direction::Direction;
 use self::section::{Leg, legs};
 use super::Stressed;
-use crate::profile::Profile;
 
 /// Lines across each direction.
 const LINES: u32 = 25;
@@ -89,7 +88,6 @@ impl Sections {
         tendon: usize,
         path: &Path,
         tendons: u32,
-        profile: &Profile,
         stressed: &Stressed<'_>,
     ) -> Vec<Crossing> {
         let own = self.of_tendon.get(tendon).copied();
@@ -112,7 +110,7 @@ impl Sections {
                         };
                         let station_m = start_m + along_m;
                         let turn_rad = piece.heading_at(along_m) - direction.heading_rad();
-                        let level = 1.0 / profile.slope(station_m).hypot(1.0);
+                        let level = 1.0 / stressed.profile().slope(station_m).hypot(1.0);
                         let normal = turn_rad.cos().abs() * level * f64::from(tendons);
                         found.push(Crossing {
                             section,

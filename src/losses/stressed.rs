@@ -96,6 +96,11 @@ impl<'p> Stressed<'p> {
         Ok(stressed)
     }
 
+    /// The curve.
+    pub fn profile(&self) -> &'p Profile {
+        self.along.profile()
+    }
+
     /// The steel.
     pub fn steel(&self) -> Steel {
         self.steel

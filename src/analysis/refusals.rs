@@ -1,0 +1,146 @@
+//! Why a tendon has no forces, and the finding that says so where no earlier stage has said it.
+
+use crate::finding::{Finding, Level, Rule};
+use crate::floor::Tendon;
+use crate::losses::CannotStress;
+use crate::profile::Unknown;
+
+/// See its meaning.
+static CURVE_UNKNOWN: Rule = Rule {
+    name: "curve-unknown",
+    meaning: "The points that bend a tendon run from its one end to its other, each at a station of its own.",
+};
+
+/// See its meaning.
+static STRAND_SIZE_UNKNOWN: Rule = Rule {
+    name: "strand-size-unknown",
+    meaning: "A tendon's strands are of a size that the job knows (system.strands), or of its default size.",
+};
+
+/// See its meaning.
+static NO_FORCE_LEFT: Rule = Rule {
+    name: "no-force-left",
+    meaning: "Friction, draw-in and the later losses leave a force at every point of a tendon.",
+};
+
+/// See its meaning.
+static CONCRETE_STRESS_UNKNOWN: Rule = Rule {
+    name: "concrete-stress-unknown",
+    meaning: "The mean concrete stress, on which shortening and creep depend, is in the job or comes from the slab outline, its \
+              thickness and the tendons that cross it.",
+};
+
+/// Rules of this stage, by name.
+pub fn rules() -> &'static [&'static Rule] {
+    static RULES: [&Rule; 4] = [
+        &CONCRETE_STRESS_UNKNOWN,
+        &CURVE_UNKNOWN,
+        &NO_FORCE_LEFT,
+        &STRAND_SIZE_UNKNOWN,
+    ];
+    &RULES
+}
+
+/// Why a tendon has no forces.
+#[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]
+pub enum Refusal {
+    /// It has no curve.
+    #[error(transparent)]
+    Curve(#[from] Unknown),
+    /// Strand count or size is not known.
+    #[error("the number or the size of its strands is not known")]
+    SteelUnknown,
+    /// It is not known whether an end is live or dead.
+    #[error("it is not known whether an end is live or dead")]
+    EndUnknown,
+    /// It cannot be stressed.
+    #[error(transparent)]
+    Stress(#[from] CannotStress),
+    /// The mean concrete stress is not known.
+    #[error("the mean concrete stress is not known")]
+    ConcreteStressUnknown,
+}
+
+impl Refusal {
+    /// The finding; `None` where reading the drawing or a rule has said it: heights, strand counts and ends that are missing.
+    pub(super) fn finding(&self, tendon: &Tendon) -> Option<Finding> {
+        match self {
+            Self::Curve(Unknown::Levels(_))
+            | Self::EndUnknown
+            | Self::Stress(CannotStress::NoLiveEnd) => None,
+            Self::Curve(Unknown::NoLine) => Some(at(
+                tendon,
+                &CURVE_UNKNOWN,
+                0.0,
+                "the points do not run from one end of the line to the other, so no curve and no forces were worked out; an \
+                 anchor at each end was expected"
+                    .to_owned(),
+                "draw the tendon as one line with some length between its two anchors",
+            )),
+            Self::Curve(Unknown::Coincident(points)) => {
+                let station_m = points
+                    .first()
+                    .and_then(|&index| tendon.points.get(index))
+                    .map_or(0.0, |point| point.station_m);
+                Some(at(
+                    tendon,
+                    &CURVE_UNKNOWN,
+                    station_m,
+                    format!(
+                        "two heights stand at one station, {station_m:.2} m, so no curve and no forces were worked out; one \
+                         height at a station was expected"
+                    ),
+                    "remove one of the heights, or move it to where it belongs",
+                ))
+            }
+            Self::SteelUnknown => {
+                tendon.strands?;
+                let named = tendon.strand.as_ref().map_or_else(
+                    || "no strand size is given".to_owned(),
+                    |name| format!("strand size {name} is not among the job's"),
+                );
+                Some(at(
+                    tendon,
+                    &STRAND_SIZE_UNKNOWN,
+                    0.0,
+                    format!(
+                        "{named}, so no forces were worked out; a size in system.strands, or system.default_strand, was expected"
+                    ),
+                    "write the size in the tendon's mark, add the size with its area and strength to system.strands, or set \
+                     system.default_strand",
+                ))
+            }
+            Self::Stress(reason) => Some(at(
+                tendon,
+                &NO_FORCE_LEFT,
+                0.0,
+                format!("{reason}, so no forces are given; a force at every point was expected"),
+                "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
+                 coefficients; stress a tendon this short or this winding in another way",
+            )),
+            Self::ConcreteStressUnknown => Some(at(
+                tendon,
+                &CONCRETE_STRESS_UNKNOWN,
+                0.0,
+                "the mean concrete stress is not known, so no forces are given; a slab outline around the tendon with its \
+                 thickness, or the stress in the job, was expected"
+                    .to_owned(),
+                "draw the slab edge as a closed line on its layer and give the slab's thickness, or set \
+                 long_term.concrete_stress_mpa in the job file",
+            )),
+        }
+    }
+}
+
+fn at(
+    tendon: &Tendon,
+    rule: &'static Rule,
+    station_m: f64,
+    text: String,
+    remedy: &'static str,
+) -> Finding {
+    Finding::new(rule, Level::Error, text, remedy)
+        .on_tendon(&tendon.mark)
+        .at_station(station_m)
+        .at_place(tendon.path.place_at(station_m))
+}
