@@ -4,12 +4,14 @@
 //! text; a rule about the job speaks once. Every limit is a key of the job and is named where it is broken.
 
 mod chords;
+pub mod cover;
 pub mod curvature;
+pub mod edge;
 pub mod ends;
 pub mod ground;
+pub mod openings;
 pub mod plan;
 pub mod profile;
-pub mod slab;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -18,6 +20,9 @@ mod words;
 pub use curvature::{Turning, turning};
 pub use ground::Ground;
 
+use std::sync::LazyLock;
+
+use crate::drawing;
 use crate::finding::{Finding, Level, Rule};
 use crate::floor::{EndKind, Floor, Tendon};
 use crate::job::Job;
@@ -45,11 +50,11 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(ends::one_end_length(worked, job));
     found.extend(profile::highs_in_a_row(worked));
     found.extend(profile::lows_in_a_row(worked));
-    found.extend(profile::height_outside_cover(worked, ground, &chords, job));
+    found.extend(cover::height_outside_cover(worked, ground, &chords, job));
     found.extend(profile::hogging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
-    found.extend(slab::crosses_opening(worked, ground, &chords, job));
-    found.extend(slab::leaves_slab(worked, ground, &chords, job));
+    found.extend(openings::crosses_opening(worked, ground, &chords, job));
+    found.extend(edge::leaves_slab(worked, ground, &chords, job));
     found.extend(stressing::far_end_force(worked, job));
     found.extend(curvature::curvature_loss(worked, job));
     found.extend(stressing::anchor_stress(worked, job));
@@ -61,30 +66,37 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
 pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
-    found.extend(slab::no_outline(floor));
+    found.extend(edge::no_outline(floor));
     found
 }
 
-/// Every rule of this stage, by name.
+/// Every rule of every stage, by name.
 pub fn rules() -> &'static [&'static Rule] {
-    static RULES: [&Rule; 14] = [
-        &stressing::ANCHOR_STRESS,
-        &slab::CROSSES_OPENING,
-        &curvature::CURVATURE_LOSS,
-        &stressing::DRAW_IN_REACHES_DEAD_END,
-        &stressing::FAR_END_FORCE,
-        &profile::HEIGHT_OUTSIDE_COVER,
-        &profile::HIGHS_IN_A_ROW,
-        &profile::HOGGING_RADIUS,
-        &stressing::JACKING_STRESS,
-        &slab::LEAVES_SLAB,
-        &profile::LOWS_IN_A_ROW,
-        &ends::NO_LIVE_END,
-        &ends::ONE_END_LENGTH,
-        &plan::PLAN_RADIUS,
-    ];
-    &RULES
+    static ALL: LazyLock<Vec<&'static Rule>> = LazyLock::new(|| {
+        let mut all = [&drawing::READING_RULES[..], &RULES[..]].concat();
+        all.sort_by_key(|rule| rule.name);
+        all
+    });
+    &ALL
 }
+
+/// This stage's own rules.
+static RULES: [&Rule; 14] = [
+    &ends::NO_LIVE_END,
+    &ends::ONE_END_LENGTH,
+    &profile::HIGHS_IN_A_ROW,
+    &profile::LOWS_IN_A_ROW,
+    &cover::HEIGHT_OUTSIDE_COVER,
+    &profile::HOGGING_RADIUS,
+    &plan::PLAN_RADIUS,
+    &openings::CROSSES_OPENING,
+    &edge::LEAVES_SLAB,
+    &stressing::JACKING_STRESS,
+    &stressing::FAR_END_FORCE,
+    &stressing::ANCHOR_STRESS,
+    &stressing::DRAW_IN_REACHES_DEAD_END,
+    &curvature::CURVATURE_LOSS,
+];
 
 impl Worked<'_> {
     /// A finding on this tendon at a station.

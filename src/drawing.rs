@@ -6,6 +6,7 @@ mod code_page;
 mod convert;
 mod curves;
 mod explode;
+mod found;
 mod handles;
 mod insert;
 mod lettering;

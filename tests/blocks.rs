@@ -15,7 +15,7 @@ fn read_layers(blocks: &str, entities: &str, wanted: &Wanted) -> (Drawing, Vec<F
         "0 SECTION 2 BLOCKS {blocks} 0 ENDSEC 0 SECTION 2 ENTITIES {entities} 0 ENDSEC 0 EOF"
     );
     let words: Vec<&str> = tags.split_whitespace().collect();
-    let text: String = words.iter().map(|word| format!("{word}\n")).collect();
+    let text = words.join("\n") + "\n";
     let source = open(text.into_bytes()).expect("a drawing");
     read(&source, wanted, Some(LengthUnit::M))
 }
@@ -91,31 +91,28 @@ fn a_block_in_itself_is_cut_and_said() {
     assert_eq!(rules(&findings), ["block-in-itself"]);
 }
 
+/// Blocks of which each holds `content` and an insert of the next.
+fn blocks_in_turn(count: usize, name: char, content: &str, array: &str) -> String {
+    let block = |n: usize| {
+        let next = n + 1;
+        format!(
+            "0 BLOCK 8 0 2 {name}{n} 10 0 20 0 {content}
+             0 INSERT 8 0 2 {name}{next} 10 0 20 0 {array} 0 ENDBLK "
+        )
+    };
+    (0..count).map(block).collect()
+}
+
 #[test]
 fn blocks_too_deep_and_too_many_are_cut_and_said() {
-    let chain: String = (0..40)
-        .map(|n| {
-            format!(
-                "0 BLOCK 8 0 2 B{n} 10 0 20 0 {UNIT_LINE} 0 INSERT 8 0 2 B{} 10 0 20 0 0 ENDBLK ",
-                n + 1
-            )
-        })
-        .collect();
+    let chain = blocks_in_turn(40, 'B', UNIT_LINE, "");
     let (deep, findings) = drawing(&chain, "0 INSERT 8 0 2 B0 10 0 20 0");
     assert_eq!(deep.shapes.len(), 32);
     assert_eq!(rules(&findings), ["block-too-deep"]);
 
     // Each block inserts the next a hundred times: 10^10 lines, were they drawn.
-    let array = "70 10 71 10 44 1 45 1";
-    let bomb: String = (0..5)
-        .map(|n| {
-            format!(
-                "0 BLOCK 8 X 2 C{n} 10 0 20 0 0 INSERT 8 X 2 C{} 10 0 20 0 {array} 0 ENDBLK ",
-                n + 1
-            )
-        })
-        .collect();
-    let (_, findings) = drawing(&bomb, "0 INSERT 8 X 2 C0 10 0 20 0");
+    let bomb = blocks_in_turn(5, 'C', "", "70 10 71 10 44 1 45 1");
+    let (_, findings) = drawing(&bomb, "0 INSERT 8 0 2 C0 10 0 20 0");
     assert!(rules(&findings).contains(&"block-too-many"));
 }
 

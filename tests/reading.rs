@@ -237,8 +237,7 @@ fn blocks_stand_where_their_inserts_put_them() {
     let circle = drawing
         .shapes
         .iter()
-        .filter(|shape| shape.handle == "57" && shape.kind == ShapeKind::Circle)
-        .last()
+        .rfind(|shape| shape.handle == "57" && shape.kind == ShapeKind::Circle)
         .expect("a circle");
     assert!((circle.path.length_m() - 0.05 * std::f64::consts::TAU).abs() < 1e-12);
     assert!(circle.closed);

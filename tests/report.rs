@@ -135,7 +135,7 @@ fn analysis() -> Analysis {
     ];
     let findings = vec![
         Finding::new(
-            &checks::profile::HEIGHT_OUTSIDE_COVER,
+            &checks::cover::HEIGHT_OUTSIDE_COVER,
             Level::Error,
             "the duct has 15 mm of cover, \"20 mm\" was expected",
             "correct the height",
@@ -144,7 +144,7 @@ fn analysis() -> Analysis {
         .at_station(2.5)
         .at_place(at(2.5, 1.2)),
         Finding::new(
-            &checks::slab::LEAVES_SLAB,
+            &checks::edge::LEAVES_SLAB,
             Level::Note,
             "no closed slab edge was found",
             "draw the slab edge",

@@ -153,6 +153,7 @@ mod tests {
 
     #[test]
     fn angle_and_share_are_of_the_same_stretch_of_the_worked_out_tendon() {
+        use crate::floor::EndKind::{Dead, Live};
         use crate::floor::PointKind::{Anchor, High, Low};
         let job = job();
         let mut tendon = straight(24.0);
@@ -167,7 +168,6 @@ mod tests {
             .to_vec();
         let profile = crate::profile::build(&tendon, &job.profile).expect("a curve");
         let steel = forces().steel;
-        use EndKind::{Dead, Live};
         for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
             let stressed = Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
             let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");

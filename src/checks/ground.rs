@@ -13,6 +13,9 @@ use crate::floor::Slab;
 /// Pieces of plan line shorter than this are no piece, metres.
 const SLIVER_M: f64 = 1e-6;
 
+/// Zones that end this near to an edge or to one another are meant to meet there, metres.
+const DRAFTING_GAP_M: f64 = 0.010;
+
 /// Outlines, openings and zones of a floor, each with its index.
 #[derive(Debug)]
 pub struct Ground<'a> {
@@ -72,8 +75,27 @@ impl<'a> Ground<'a> {
                 .map(|facts| facts.1)
                 .or(self.thickness_m)
         };
-        self.zones.stretches(chords, thickness_m)
+        without_slivers(self.zones.stretches(chords, thickness_m))
     }
+}
+
+/// Stretches shorter than a drafting gap joined to the one before them, or after: where a zone stops just short of the
+/// slab edge, no anchor stands in the slab beyond it.
+fn without_slivers<T>(stretches: Vec<Stretch<T>>) -> Vec<Stretch<T>> {
+    let mut kept: Vec<Stretch<T>> = Vec::new();
+    let mut from_m = None;
+    for mut stretch in stretches {
+        if stretch.to_m - stretch.from_m < DRAFTING_GAP_M {
+            match kept.last_mut() {
+                Some(last) => last.to_m = stretch.to_m,
+                None => from_m = from_m.or(Some(stretch.from_m)),
+            }
+        } else {
+            stretch.from_m = from_m.take().unwrap_or(stretch.from_m);
+            kept.push(stretch);
+        }
+    }
+    kept
 }
 
 impl<'a> Rings<'a> {
@@ -82,9 +104,16 @@ impl<'a> Rings<'a> {
         let mut edges = Vec::new();
         let mut boxes = Vec::new();
         for (index, polygon) in polygons.iter().enumerate() {
-            let rings = std::iter::once(polygon.exterior()).chain(polygon.interiors());
+            let rings = || std::iter::once(polygon.exterior()).chain(polygon.interiors());
+            // An index has no place for a coordinate that is no number.
+            if !rings()
+                .flat_map(geo::LineString::coords)
+                .all(|c| c.x.is_finite() && c.y.is_finite())
+            {
+                continue;
+            }
             edges.extend(
-                rings
+                rings()
                     .flat_map(geo::LineString::lines)
                     .map(|line| GeomWithData::new(line, index)),
             );
@@ -245,6 +274,47 @@ mod tests {
                 (8.0, 12.0, Some(0.3)),
                 (12.0, 20.0, Some(0.2)),
             ]
+        );
+    }
+
+    #[test]
+    fn a_zone_drawn_just_short_of_an_end_reaches_it() {
+        let zone = |thickness_m, x0, x1| Zone {
+            outline: geo::Rect::new(Coord { x: x0, y: -5.0 }, Coord { x: x1, y: 5.0 }).to_polygon(),
+            thickness_m,
+        };
+        let slab = Slab {
+            zones: vec![zone(0.6, 0.004, 3.0), zone(0.3, 3.005, 9.0)],
+            thickness_m: Some(0.2),
+            ..Slab::default()
+        };
+        let path = Path::through(&[Coord { x: 0.0, y: 0.0 }, Coord { x: 20.0, y: 0.0 }]);
+        let found = Ground::of(&slab).thickness_along(&Chords::of(&path));
+        let seen: Vec<(f64, f64, Option<f64>)> = found
+            .iter()
+            .map(|stretch| (stretch.from_m, stretch.to_m, stretch.holds))
+            .collect();
+        assert_eq!(
+            seen,
+            vec![
+                (0.0, 3.005, Some(0.6)),
+                (3.005, 9.0, Some(0.3)),
+                (9.0, 20.0, Some(0.2))
+            ]
+        );
+    }
+
+    #[test]
+    fn a_polygon_with_a_coordinate_that_is_no_number_is_left_out() {
+        let slab = Slab {
+            openings: vec![polygon![(x: 4.0, y: -5.0), (x: f64::NAN, y: -5.0), (x: 12.0, y: 5.0)]],
+            ..Slab::default()
+        };
+        assert!(
+            Ground::of(&slab)
+                .openings
+                .holding(Coord { x: 8.0, y: 0.0 }, false)
+                .is_empty()
         );
     }
 }

@@ -1,6 +1,6 @@
 //! Hand-made tendons for the rules' tests.
 
-use geo::Coord;
+use geo::{Coord, Polygon};
 
 use super::Worked;
 use crate::floor::{End, EndKind, Point, PointKind, Run, Tendon};
@@ -117,4 +117,9 @@ pub(super) fn forces() -> Forces {
         least_jacking_kn: 640.0,
         least_jacking_station_m: 20.0,
     }
+}
+
+/// A rectangle with its sides along the axes.
+pub(super) fn rectangle(x0: f64, y0: f64, x1: f64, y1: f64) -> Polygon<f64> {
+    geo::Rect::new(Coord { x: x0, y: y0 }, Coord { x: x1, y: y1 }).to_polygon()
 }

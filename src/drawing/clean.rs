@@ -278,7 +278,7 @@ impl<'a> Cleaner<'a> {
     fn text(&mut self, tag: &Tag<'a>) {
         let (text, guessed) = self.code_page.decode(tag.value);
         self.guessed += usize::from(guessed);
-        let _ = write!(self.stream, "{}\n", tag.code);
+        let _ = writeln!(self.stream, "{}", tag.code);
         for byte in text.bytes() {
             match byte {
                 b'^' => self.stream.extend_from_slice(b"^ "),
@@ -293,6 +293,10 @@ impl<'a> Cleaner<'a> {
 
 /// The record being rewritten.
 #[derive(Default)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a fact of its own about the record"
+)]
 struct Open<'a> {
     type_name: &'a [u8],
     start: usize,

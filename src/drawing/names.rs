@@ -9,8 +9,6 @@ use super::text_decode::plain_name;
 /// A layer as the pass finds it.
 #[derive(Debug, Clone, Default)]
 pub(super) struct ScannedLayer {
-    /// Name as written, in the file's bytes.
-    pub(super) raw: Vec<u8>,
     /// Name, decoded.
     pub(super) name: String,
     /// Whether the layer table has a record of it.
@@ -88,7 +86,6 @@ impl<'a> LayerNames<'a> {
         if id == next {
             self.own.push(is_own(&name));
             self.layers.push(ScannedLayer {
-                raw: raw.to_vec(),
                 name,
                 ..ScannedLayer::default()
             });

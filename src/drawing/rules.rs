@@ -3,43 +3,43 @@
 use crate::finding::Rule;
 
 /// An entity that could not be read.
-pub static ENTITY_DAMAGED: Rule = Rule {
+pub(super) static ENTITY_DAMAGED: Rule = Rule {
     name: "entity-damaged",
     meaning: "An entity on a layer that is read holds a value that is no finite number, or lacks a coordinate; it is left out.",
 };
 
 /// The drawing does not say its unit.
-pub static UNIT_ASSUMED: Rule = Rule {
+pub(super) static UNIT_ASSUMED: Rule = Rule {
     name: "unit-assumed",
     meaning: "Neither the job nor $INSUNITS of the drawing says the unit of length; millimetres are assumed.",
 };
 
 /// Blocks nested beyond reason.
-pub static BLOCK_TOO_DEEP: Rule = Rule {
+pub(super) static BLOCK_TOO_DEEP: Rule = Rule {
     name: "block-too-deep",
     meaning: "Blocks are inserted in blocks more than 32 deep; what lies deeper is left out.",
 };
 
 /// A block inserted in itself.
-pub static BLOCK_IN_ITSELF: Rule = Rule {
+pub(super) static BLOCK_IN_ITSELF: Rule = Rule {
     name: "block-in-itself",
     meaning: "A block inserts itself, directly or through others; the inner insert is left out.",
 };
 
 /// More than can be expanded.
-pub static BLOCK_TOO_MANY: Rule = Rule {
+pub(super) static BLOCK_TOO_MANY: Rule = Rule {
     name: "block-too-many",
     meaning: "Block inserts expand to more than a million entities; the rest is left out.",
 };
 
 /// An insert of a block that the drawing does not hold.
-pub static BLOCK_MISSING: Rule = Rule {
+pub(super) static BLOCK_MISSING: Rule = Rule {
     name: "block-missing",
     meaning: "An insert names a block that the drawing does not define; only its place and attributes are read.",
 };
 
 /// Characters that had to be guessed.
-pub static TEXT_CODE_PAGE: Rule = Rule {
+pub(super) static TEXT_CODE_PAGE: Rule = Rule {
     name: "text-code-page",
     meaning: "Texts hold characters beyond ASCII that the drawing's code page does not settle; they were read as Windows-1252.",
 };

@@ -1,129 +1,12 @@
 //! One pass over a drawing's tags: what it holds, where its parts begin and end, which handles are taken.
 
-use std::ops::Range;
-
 use super::code_page::CodePage;
 use super::handles::{Handles, parse_handle};
-use super::names::{LayerNames, ScannedLayer, Types};
+use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
-use super::tags::{BadTag, Form, Tag, Tags, form_of, place_in_words};
+use super::tags::{BadTag, Tag, Tags, place_in_words};
 
-/// Layers of this tool's own begin so, in any letter case; they are never read and their entities are replaced.
-pub(super) const OWN_LAYER: &str = "TAUT-";
-
-/// What one pass over a drawing finds. Offsets are of the file's bytes; those called `_start` and `_end` point at the
-/// first byte of a `0` code line, where something can be inserted.
-#[derive(Debug, Clone)]
-pub(super) struct Scan {
-    /// `$ACADVER`, such as `AC1027`; empty if the header has none.
-    pub(super) version: String,
-    /// ASCII or binary.
-    pub(super) form: Form,
-    /// Line end of the first line: `\n` or `\r\n`.
-    pub(super) line_end: &'static str,
-    /// Width to which codes are padded with blanks: 3 as a rule, 0 where they are not.
-    pub(super) code_width: usize,
-    /// How strings turn into characters.
-    pub(super) code_page: CodePage,
-    /// `$INSUNITS`.
-    pub(super) insunits: Option<i64>,
-    /// Layers of the table in its order, then those that only entities name, in order of first use.
-    pub(super) layers: Vec<ScannedLayer>,
-    /// Pointers of the record of layer `0` under 390, 347 and 348, as written.
-    pub(super) zero_layer_pointers: [Option<String>; 3],
-    /// Whether the table's layer records carry handles.
-    pub(super) layers_have_handles: bool,
-    /// Entity type names; [`Scan::counts`] indexes them.
-    pub(super) types: Vec<String>,
-    /// Model-space entities by layer, then by type.
-    pub(super) counts: Vec<Vec<usize>>,
-    /// Model-space entities that can be read, in file order.
-    pub(super) entries: Vec<Entry>,
-    /// Blocks, in file order.
-    pub(super) blocks: Vec<BlockEntry>,
-    /// Block names that inserts speak of; [`Entry::block`] indexes them.
-    pub(super) block_names: Vec<String>,
-    /// Layers of attributes that lie on another layer than their insert's, by number of the insert's entry.
-    pub(super) attribute_layers: Vec<(u32, u32)>,
-    /// Whether some string of the pass could not be decoded with certainty.
-    pub(super) names_are_guessed: bool,
-
-    /// `0 SECTION` of BLOCKS.
-    pub(super) blocks_start: Option<usize>,
-    /// `0 SECTION` of the first ENTITIES section.
-    pub(super) entities_start: Option<usize>,
-    /// `0 SECTION` of OBJECTS.
-    pub(super) objects_start: Option<usize>,
-    /// `0 EOF`.
-    pub(super) eof_start: Option<usize>,
-    /// End of the last tag.
-    pub(super) tags_end: usize,
-    /// `0 ENDSEC` of HEADER.
-    pub(super) header_end: Option<usize>,
-    /// `0 ENDSEC` of TABLES.
-    pub(super) tables_end: Option<usize>,
-    /// `0 ENDTAB` of the LAYER table.
-    pub(super) layer_table_end: Option<usize>,
-    /// Handle of the LAYER table, as written.
-    pub(super) layer_table_handle: Option<String>,
-    /// `0 ENDSEC` of the last ENTITIES section.
-    pub(super) entities_end: Option<usize>,
-    /// The value of `$HANDSEED`: where it stands and what it says.
-    pub(super) handseed: Option<(Range<usize>, u64)>,
-    /// Handle of the BLOCK_RECORD of model space, as written; else the owner that a model-space entity names.
-    pub(super) model_space_record: Option<String>,
-    /// Greatest handle or pointer outside the header and outside entities of this tool's own layers.
-    pub(super) greatest_handle: u64,
-    /// Whether new records must carry handles.
-    pub(super) uses_handles: bool,
-    /// Entities on this tool's own layers, each with what follows it up to its SEQEND.
-    pub(super) own_marks: Vec<Range<usize>>,
-    /// Least and greatest handle of those.
-    pub(super) own_handles: Option<(u64, u64)>,
-    /// ENTITIES ends inside a POLYLINE or INSERT sequence without SEQEND.
-    pub(super) open_sequence: bool,
-}
-
-/// An entity with what follows it up to its SEQEND.
-#[derive(Debug, Clone, Copy)]
-pub(super) struct Entry {
-    /// Offset of its `0` code line.
-    pub(super) start: usize,
-    /// Offset past it.
-    pub(super) end: usize,
-    /// Number of its layer.
-    pub(super) layer: u32,
-    /// Its number among the model-space entities, from 1, or within its block.
-    pub(super) number: u32,
-    /// Number of the block's name, for an insert.
-    pub(super) block: u32,
-    /// Whether it is an insert.
-    pub(super) is_insert: bool,
-}
-
-/// A block's definition.
-#[derive(Debug, Clone, Default)]
-pub(super) struct BlockEntry {
-    /// Name, decoded.
-    pub(super) name: String,
-    /// Base point, drawing units.
-    pub(super) base: [f64; 2],
-    /// Entities that can be read.
-    pub(super) entries: Vec<Entry>,
-}
-
-/// Entity types that are read.
-pub(super) const READ_TYPES: [&[u8]; 9] = [
-    b"LINE",
-    b"LWPOLYLINE",
-    b"POLYLINE",
-    b"ARC",
-    b"CIRCLE",
-    b"SPLINE",
-    b"TEXT",
-    b"MTEXT",
-    b"INSERT",
-];
+pub(super) use super::found::{BlockEntry, Entry, OWN_LAYER, READ_TYPES, Scan};
 
 /// Scans a drawing.
 ///
@@ -180,7 +63,7 @@ enum Record {
     None,
     Table,
     Layer,
-    BlockRecord,
+    BlockHome,
     Dimstyle,
     Block,
     Entity,
@@ -205,6 +88,10 @@ struct Gathered<'a> {
     pointers: [Option<&'a [u8]>; 3],
 }
 
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a state of its own of the pass"
+)]
 struct Pass<'a> {
     bytes: &'a [u8],
     scan: Scan,
@@ -232,52 +119,9 @@ struct Pass<'a> {
 
 impl<'a> Pass<'a> {
     fn new(bytes: &'a [u8]) -> Self {
-        let (form, first) = form_of(bytes);
-        let rest = bytes.get(first..).unwrap_or_default();
-        let line = memchr::memchr(b'\n', rest).map_or(rest, |length| &rest[..length]);
-        let code = line.strip_suffix(b"\r").unwrap_or(line);
-        let padded = code.first().is_some_and(|b| *b == b' ');
         Self {
             bytes,
-            scan: Scan {
-                version: String::new(),
-                form,
-                line_end: if line.len() == code.len() {
-                    "\n"
-                } else {
-                    "\r\n"
-                },
-                code_width: if padded { code.len() } else { 0 },
-                code_page: CodePage::of("", None),
-                insunits: None,
-                layers: Vec::new(),
-                zero_layer_pointers: [None, None, None],
-                layers_have_handles: false,
-                types: Vec::new(),
-                counts: Vec::new(),
-                entries: Vec::new(),
-                blocks: Vec::new(),
-                block_names: Vec::new(),
-                attribute_layers: Vec::new(),
-                names_are_guessed: false,
-                blocks_start: None,
-                entities_start: None,
-                objects_start: None,
-                eof_start: None,
-                tags_end: first,
-                header_end: None,
-                tables_end: None,
-                layer_table_end: None,
-                layer_table_handle: None,
-                entities_end: None,
-                handseed: None,
-                model_space_record: None,
-                greatest_handle: 0,
-                uses_handles: false,
-                own_marks: Vec::new(),
-                own_handles: None,
-                open_sequence: false,
-            },
+            scan: Scan::new(bytes),
             section: Section::Outside,
             record: Record::None,
             gathered: Gathered::default(),
@@ -457,7 +301,7 @@ impl<'a> Pass<'a> {
         self.record = match name {
             b"TABLE" => Record::Table,
             b"LAYER" => Record::Layer,
-            b"BLOCK_RECORD" => Record::BlockRecord,
+            b"BLOCK_RECORD" => Record::BlockHome,
             b"DIMSTYLE" => Record::Dimstyle,
             _ => Record::None,
         };
@@ -503,7 +347,7 @@ impl<'a> Pass<'a> {
                 self.handles.settle(false);
             }
             Record::Layer => self.end_layer(),
-            Record::BlockRecord => {
+            Record::BlockHome => {
                 let held = &self.gathered;
                 if held
                     .name

@@ -150,9 +150,9 @@ impl Spline {
                 } else {
                     0.0
                 };
-                for axis in 0..3 {
-                    row[index][axis] =
-                        (1.0 - share) * row[index - 1][axis] + share * row[index][axis];
+                let before = row[index - 1];
+                for (own, before) in row[index].iter_mut().zip(before) {
+                    *own = (1.0 - share) * before + share * *own;
                 }
             }
         }
@@ -194,9 +194,10 @@ fn slopes(
     let mut main = vec![0.0; count];
     let mut upper = vec![0.0; count];
     let mut right = vec![Coord { x: 0.0, y: 0.0 }; count];
-    match leaving.and_then(unit) {
-        Some(direction) => (main[0], right[0]) = (1.0, direction),
-        None => (main[0], upper[0], right[0]) = (2.0, 1.0, chord(0) * 3.0),
+    if let Some(direction) = leaving.and_then(unit) {
+        (main[0], right[0]) = (1.0, direction);
+    } else {
+        (main[0], upper[0], right[0]) = (2.0, 1.0, chord(0) * 3.0);
     }
     for at in 1..count {
         let (lower, own, above, wanted) = if at + 1 < count {

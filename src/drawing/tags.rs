@@ -227,11 +227,6 @@ impl<'a> Tags<'a> {
         }
     }
 
-    /// How the file is written.
-    pub(super) fn form(&self) -> Form {
-        self.form
-    }
-
     fn bad(&self, at: usize, cut: bool, found: String) -> BadTag {
         BadTag {
             at,

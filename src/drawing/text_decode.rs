@@ -27,16 +27,12 @@ pub(super) fn text_line(raw: &str) -> String {
     let mut rest = raw;
     while let Some(next) = rest.chars().next() {
         let length = match next {
-            '\\' => match escaped_character(rest) {
-                Some((character, length)) => {
-                    out.push_str(&character);
-                    length
-                }
-                None => {
-                    out.push('\\');
-                    1
-                }
-            },
+            '\\' => {
+                let (character, length) =
+                    escaped_character(rest).unwrap_or_else(|| ("\\".to_owned(), 1));
+                out.push_str(&character);
+                length
+            }
             '%' => percent(rest, &mut out),
             '^' => caret(rest, &mut out),
             _ => {

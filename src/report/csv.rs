@@ -75,6 +75,7 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
 pub fn points_csv(analysis: &Analysis) -> String {
     let header = [
         "mark",
+        "handle",
         "kind",
         "station_m",
         "x_m",
@@ -89,10 +90,11 @@ pub fn points_csv(analysis: &Analysis) -> String {
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
-        let mark = text(record.mark);
+        let (mark, handle) = (text(record.mark), text(record.handle));
         record.points.into_iter().map(move |point| {
             vec![
                 mark.clone(),
+                handle.clone(),
                 point_kind(point.kind).to_owned(),
                 rounded(point.station_m, 3),
                 rounded(point.x_m, 3),
@@ -114,6 +116,7 @@ pub fn points_csv(analysis: &Analysis) -> String {
 pub fn extensions_csv(analysis: &Analysis) -> String {
     let header = [
         "mark",
+        "handle",
         "end",
         "x_m",
         "y_m",
@@ -129,6 +132,7 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
         let record = TendonRecord::of(tendon, result);
         let known = [
             text(record.mark),
+            text(record.handle),
             record.tendons.to_string(),
             record.strands.map(|n| n.to_string()).unwrap_or_default(),
             text(record.strand.unwrap_or_default()),
@@ -138,9 +142,10 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
             .zip(record.ends)
             .filter_map(move |(which, end)| {
                 let live = end.live?;
-                let [mark, tendons, strands, strand] = known.clone();
+                let [mark, handle, tendons, strands, strand] = known.clone();
                 Some(vec![
                     mark,
+                    handle,
                     which.to_owned(),
                     rounded(end.x_m, 3),
                     rounded(end.y_m, 3),

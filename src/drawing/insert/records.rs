@@ -1,6 +1,6 @@
 //! Tags out: the way a record is written in the form that the drawing itself has.
 
-use std::fmt::Write as _;
+use std::io::Write as _;
 
 use crate::drawing::tags::Form;
 
@@ -62,7 +62,6 @@ pub(super) struct Records {
     /// The style.
     pub(super) style: Style,
     bytes: Vec<u8>,
-    line: String,
 }
 
 impl Records {
@@ -71,7 +70,6 @@ impl Records {
         Self {
             style,
             bytes: Vec::new(),
-            line: String::new(),
         }
     }
 
@@ -142,19 +140,22 @@ impl Records {
 
     fn formatted(&mut self, code: i16, value: std::fmt::Arguments<'_>) {
         self.code(code);
-        self.line.clear();
-        // Writing into a string cannot fail.
-        let _ = self.line.write_fmt(value);
-        self.bytes.extend_from_slice(self.line.as_bytes());
+        // Writing into memory cannot fail.
+        let _ = self.bytes.write_fmt(value);
         self.end_text();
     }
 
     fn code(&mut self, code: i16) {
         match self.style.form {
             Form::Ascii => {
-                self.line.clear();
-                let _ = write!(self.line, "{code:>width$}", width = self.style.code_width);
-                self.bytes.extend_from_slice(self.line.as_bytes());
+                // By hand: a third of all bytes written are codes.
+                let digits = [code / 1000, code / 100 % 10, code / 10 % 10, code % 10];
+                let first = digits.iter().position(|&digit| digit != 0).unwrap_or(3);
+                let blanks = self.style.code_width.saturating_sub(digits.len() - first);
+                self.bytes.extend(std::iter::repeat_n(b' ', blanks));
+                let shown = digits.iter().skip(first);
+                self.bytes
+                    .extend(shown.map(|&digit| b'0' + u8::try_from(digit).unwrap_or(0)));
                 self.bytes.extend_from_slice(self.style.line_end.as_bytes());
             }
             Form::Binary { wide: true } => self.bytes.extend_from_slice(&code.to_le_bytes()),

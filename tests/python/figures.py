@@ -1,0 +1,75 @@
+"""The figures drawn on a marked drawing must be those of the result file.
+
+Usage: figures.py MARKED.dxf RESULT.json
+
+Every force figure equals, rounded, the force of a profile point near it at that layer's stage; every extension equals a
+live end's; the table has a row a tendon with its mark; a tendon in space passes through its points at their level.
+"""
+
+import json
+import math
+import re
+import sys
+
+import ezdxf
+
+STAGES = {"JACKING": "jacking_kn", "LOCKOFF": "lockoff_kn", "TRANSFER": "transfer_kn", "SERVICE": "service_kn"}
+NEAR_M = 3.0
+
+
+def texts(space, layer):
+    for text in space.query(f'TEXT[layer=="{layer}"]'):
+        place = text.dxf.get("align_point") if text.dxf.get("halign") or text.dxf.get("valign") else None
+        yield text.dxf.text, (place or text.dxf.insert)
+
+
+def main():
+    document = ezdxf.readfile(sys.argv[1])
+    result = json.load(open(sys.argv[2], encoding="utf-8"))
+    unit = result["drawing"]["unit_m"]
+    space, wrong, seen = document.modelspace(), [], 0
+    worked = [t for t in result["tendons"] if t["points"] and t["points"][0].get("service_kn") is not None]
+
+    for stage, key in STAGES.items():
+        points = [(p["x_m"], p["y_m"], p[key]) for t in worked for p in t["points"]]
+        for content, place in texts(space, f"TAUT-FORCE-{stage}-TEXT"):
+            seen += 1
+            here = (place[0] * unit, place[1] * unit)
+            if not any(math.dist(here, p[:2]) < NEAR_M and abs(p[2] - float(content)) <= 0.5000001 for p in points):
+                wrong.append(f"{stage} figure {content} at {here} belongs to no point")
+
+    ends = [(e["x_m"], e["y_m"], e) for t in worked for e in t["ends"] if e["kind"] == "live"]
+    for content, place in texts(space, "TAUT-EXTENSION"):
+        seen += 1
+        here = (place[0] * unit, place[1] * unit)
+        gross, net = (float(v) for v in re.findall(r"-?\d+", content)[:2])
+        if not any(math.dist(here, e[:2]) < NEAR_M and abs(e[2]["extension_mm"] - gross) <= 0.5000001
+                   and abs(e[2]["extension_net_mm"] - net) <= 0.5000001 for e in ends):
+            wrong.append(f"extension '{content}' at {here} belongs to no live end")
+
+    table = {content for content, _ in texts(space, "TAUT-TABLE")}
+    wrong += [f"the table has no row for {t['mark']}" for t in result["tendons"] if t["mark"] not in table]
+
+    lines = []
+    for entity in space.query('POLYLINE[layer=="TAUT-PROFILE"]'):
+        lines.append([tuple(c * unit for c in v.dxf.location) for v in entity.vertices])
+    ends_of = {(round(line[0][0], 3), round(line[0][1], 3)) for line in lines} | \
+        {(round(line[-1][0], 3), round(line[-1][1], 3)) for line in lines}
+    for tendon in worked:
+        for point in tendon["points"]:
+            seen += 1
+            if not any(math.dist(v, (point["x_m"], point["y_m"], point["level_m"])) < 0.002 for line in lines for v in line):
+                wrong.append(f"{tendon['mark']}: no tendon in space passes its {point['kind']} at {point['station_m']:.2f} m")
+        first = tendon["points"][0]
+        if (round(first["x_m"], 3), round(first["y_m"], 3)) not in ends_of:
+            wrong.append(f"{tendon['mark']}: no tendon in space starts at its anchor")
+
+    print(f"{sys.argv[1]}: {seen} figures held against the result, {len(wrong)} wrong")
+    for line in wrong[:20]:
+        print("  " + line)
+    if wrong or not seen:
+        raise SystemExit(1)
+
+
+if __name__ == "__main__":
+    main()
