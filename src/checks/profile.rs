@@ -51,7 +51,8 @@ fn in_a_row(
         .tendon
         .points
         .iter()
-        .filter(|point| point.kind != PointKind::Support)
+        // As drawn: a point that other tendons say belongs here is not on the drawing.
+        .filter(|point| point.kind != PointKind::Support && (point.height_m.is_some() || point.kind == PointKind::Anchor))
         .collect();
     let pairs: Vec<(f64, f64)> = fixed
         .windows(2)
@@ -60,13 +61,18 @@ fn in_a_row(
         .collect();
     // The longest straight is the one most likely to miss a point.
     let ((from_m, to_m), others) = worst_of(pairs, |pair| pair.1 - pair.0, |pair| pair.0)?;
+    let straight = if worked.profile.is_some() {
+        ", and the tendon was taken as straight there"
+    } else {
+        ""
+    };
     Some(worked.finding(
         rule,
         Level::Warning,
         f64::midpoint(from_m, to_m),
         format!(
             "two {word} points in a row, at stations {from_m:.2} m and {to_m:.2} m; a {missing} point was expected between \
-             them, and the tendon was taken as straight there{}",
+             them{straight}{}",
             also_at(&others)
         ),
         format!(

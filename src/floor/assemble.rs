@@ -72,7 +72,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     };
     findings.extend(near.marks(&texts, &settled_marks));
 
-    let (texts, readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
+    let (texts, mut readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
+    for (text, reading) in texts.iter().zip(&mut readings) {
+        reading.weigh(thickness.at(text.place), conventions.height.from);
+    }
     let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
     let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
     findings.extend(near.heights(&texts, &readings, &settled));

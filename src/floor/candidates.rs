@@ -3,9 +3,10 @@
 use geo::Coord;
 
 use super::index::Index;
-use super::lines::Line;
+use super::lines::{Line, axis_rad};
 use super::missing::Columns;
 use super::settle::Pairing;
+use super::types::Run;
 use crate::drawing::Text;
 use crate::geometry::{distance_m, turn_rad};
 
@@ -28,8 +29,10 @@ pub(super) struct Lie {
     pub(super) pairing: Pairing,
     /// From the text's box to the line, in text heights; zero where they touch.
     pub(super) gap_h: f64,
-    /// From the line to the text's place, in text heights, positive to the left.
+    /// From the line to the text's place, in text heights, positive to the left of the line.
     pub(super) off_h: f64,
+    /// The same, positive to the left of the run's axis, whichever way the line was drawn.
+    pub(super) side_h: f64,
     /// Bin of the angle between text and line.
     pub(super) turn: usize,
     /// Whether the place is at an end.
@@ -49,6 +52,8 @@ pub(super) fn lies(
     columns: &Columns<'_>,
 ) -> Vec<Lie> {
     let mut lies = Vec::new();
+    let axes = [Run::Banded, Run::Distributed]
+        .map(|run| (run, axis_rad(lines.iter().filter(|line| line.run == run))));
     for (label, text) in texts.iter().enumerate() {
         let reach_m = reach * text.height_m;
         let feet = index.feet(text.place, BESIDE_M.max(reach_m + text_span_m(text)));
@@ -82,6 +87,9 @@ pub(super) fn lies(
             let (dx, dy) = (text.place.x - foot.place.x, text.place.y - foot.place.y);
             let height_m = text.height_m.max(1e-6);
             let length_m = line.path.length_m();
+            let off_h = (cos * dy - sin * dx) / height_m;
+            let axis_rad = axes.iter().find(|(run, _)| *run == line.run).map_or(0.0, |&(_, axis)| axis);
+            let with_axis = (foot.heading_rad - axis_rad).cos() >= 0.0;
             let end_m = foot.station_m.min(length_m - foot.station_m);
             lies.push(Lie {
                 pairing: Pairing {
@@ -90,7 +98,8 @@ pub(super) fn lies(
                     station_m: foot.station_m,
                 },
                 gap_h: gap_m / height_m,
-                off_h: (cos * dy - sin * dx) / height_m,
+                off_h,
+                side_h: if with_axis { off_h } else { -off_h },
                 turn: turn_bin(text.rotation_rad - foot.heading_rad),
                 at_end: end_m <= AT_END_M.max(AT_END_HEIGHTS * text.height_m).min(length_m / 4.0),
                 beside: beside

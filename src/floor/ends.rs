@@ -156,4 +156,8 @@ impl Stakes for OneEach {
         let extra = u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX);
         10.0 * f64::from(extra)
     }
+
+    fn apart_m(&self) -> f64 {
+        f64::INFINITY
+    }
 }

@@ -3,8 +3,10 @@
 use super::candidates::{Lie, TURNS};
 use super::types::Run;
 
-/// Bins of distance in text heights.
+/// Bins of distance in text heights, to one side.
 const BINS: usize = 24;
+/// Bins of distance to both sides.
+const SIDES: usize = 2 * BINS;
 /// Width of a bin, text heights.
 const BIN_H: f64 = 0.25;
 
@@ -12,7 +14,7 @@ const BIN_H: f64 = 0.25;
 #[derive(Debug, Clone)]
 struct Habit {
     turns: [f64; TURNS],
-    offs: [f64; BINS],
+    offs: [f64; SIDES],
     gaps: [f64; BINS],
 }
 
@@ -28,7 +30,7 @@ impl Habits {
     pub(super) fn learn<'a>(taken: impl Iterator<Item = (Run, &'a Lie, f64)>) -> Self {
         let empty = Habit {
             turns: [0.5; TURNS],
-            offs: [0.25; BINS],
+            offs: [0.25; SIDES],
             gaps: [0.25; BINS],
         };
         let mut habits = Self {
@@ -42,7 +44,7 @@ impl Habits {
             };
             habit.turns[lie.turn] += weight;
             // A neighbour's bin counts half, so that the border between two bins is no cliff.
-            spread(&mut habit.offs, bin(lie.off_h.abs()), weight);
+            spread(&mut habit.offs, side_bin(lie.side_h), weight);
             spread(&mut habit.gaps, gap_bin(lie.gap_h), weight);
         }
         habits
@@ -55,7 +57,7 @@ impl Habits {
             Run::Distributed => &self.distributed,
         };
         0.7 * rarity(&habit.turns, lie.turn).min(3.0)
-            + 0.6 * rarity(&habit.offs, bin(lie.off_h.abs())).min(3.0)
+            + 0.6 * rarity(&habit.offs, side_bin(lie.side_h)).min(3.0)
             + 0.4 * rarity(&habit.gaps, gap_bin(lie.gap_h)).min(3.0)
     }
 }
@@ -67,14 +69,24 @@ fn rarity(counts: &[f64], bin: usize) -> f64 {
     (most / here).ln()
 }
 
-fn spread(counts: &mut [f64; BINS], bin: usize, weight: f64) {
+fn spread(counts: &mut [f64], bin: usize, weight: f64) {
     counts[bin] += weight;
     // The first bin of gaps, a struck-through text, has no neighbours; nor need it have them among the distances.
     if bin > 1 {
         counts[bin - 1] += 0.5 * weight;
     }
-    if bin > 0 && bin + 1 < BINS {
+    if bin > 0 && bin + 1 < counts.len() {
         counts[bin + 1] += 0.5 * weight;
+    }
+}
+
+/// Bins from the right of the axis to the left.
+fn side_bin(side_h: f64) -> usize {
+    let away = bin(side_h.abs());
+    if side_h < 0.0 {
+        BINS - 1 - away
+    } else {
+        BINS + away
     }
 }
 

@@ -43,6 +43,8 @@ const TIE: f64 = 0.02;
 const DOUBT: f64 = 0.5;
 /// Two heights nearer than this are at one place, metres and text heights.
 const SAME_PLACE_M: f64 = 0.5;
+/// Supports stand nearer to one another than this, metres (common practice: 0.8 to 1.2 m).
+const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
 const STEEP: f64 = 0.08;
 
@@ -165,7 +167,7 @@ fn costs(
 
 /// High points stand over the middle of columns.
 fn at_column(reading: HeightText, lie: &Lie) -> f64 {
-    match (reading.word, lie.column_m) {
+    match (reading.likely, lie.column_m) {
         (Some(Word::High), Some(off_m)) => 0.6 * (off_m / 0.15).min(1.0),
         (Some(Word::High), None) => 0.3,
         _ => 0.0,
@@ -273,6 +275,10 @@ impl Stakes for HeightStakes<'_> {
         }
         sequence(&heights)
     }
+
+    fn apart_m(&self) -> f64 {
+        SUPPORTS_M
+    }
 }
 
 /// Cost of a tendon's heights together.
@@ -280,7 +286,7 @@ fn sequence(heights: &[Height]) -> f64 {
     let mut cost = 0.0;
     for pair in heights.windows(2) {
         let (a, b) = (&pair[0], &pair[1]);
-        cost += neighbours(a, b);
+        cost += neighbours(a, b) + bare(a, b);
     }
     // Two of a kind in a row; numbers without a word between them may be the missing other kind.
     let mut last: Option<&Height> = None;
@@ -309,6 +315,18 @@ fn sequence(heights: &[Height]) -> f64 {
         between = None;
     }
     cost
+}
+
+/// Cost of two bare numbers that follow one another on the same side of mid-depth, farther apart than supports stand:
+/// a tendon that spans has its other kind between them.
+fn bare(a: &Height, b: &Height) -> f64 {
+    let bare = |height: &Height| height.reading.word.is_none() && !height.at_end;
+    let alike = a.reading.likely.is_some() && a.reading.likely == b.reading.likely;
+    if bare(a) && bare(b) && alike && b.station_m - a.station_m > SUPPORTS_M {
+        2.0
+    } else {
+        0.0
+    }
 }
 
 /// Cost of two heights that follow one another.

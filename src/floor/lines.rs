@@ -305,3 +305,25 @@ fn corners(path: &Path) -> [f64; 5] {
     let (first, last) = if swap { (end, start) } else { (start, end) };
     [first.x, first.y, last.x, last.y, path.length_m()]
 }
+
+/// The direction in which a run goes, from −45° up to 135°.
+pub(super) fn axis_rad<'a>(lines: impl Iterator<Item = &'a Line>) -> f64 {
+    let (mut sum_sin, mut sum_cos) = (0.0, 0.0);
+    for line in lines {
+        let (Some(start), Some(end)) = (line.path.start(), line.path.end()) else {
+            continue;
+        };
+        let (dx, dy) = (end.x - start.x, end.y - start.y);
+        let length_m = dx.hypot(dy);
+        let double_rad = 2.0 * dy.atan2(dx);
+        sum_sin += length_m * double_rad.sin();
+        sum_cos += length_m * double_rad.cos();
+    }
+    let axis_rad = sum_sin.atan2(sum_cos) / 2.0;
+    // An axis a hair off −45° is the same as one at 135°.
+    if axis_rad < -std::f64::consts::FRAC_PI_4 - 1e-6 {
+        axis_rad + std::f64::consts::PI
+    } else {
+        axis_rad
+    }
+}

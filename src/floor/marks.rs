@@ -4,7 +4,7 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use super::candidates::Lie;
 use super::habits::Habits;
-use super::lines::Line;
+use super::lines::{Line, axis_rad};
 use super::readings::MarkText;
 use super::rules::{MARK_TWICE, STRAND_COUNT_MISSING};
 use super::settle::{Pairing, Settlement, Stakes};
@@ -145,6 +145,11 @@ impl Stakes for MarkStakes<'_> {
         }
         cost
     }
+
+    /// A tendon has one mark, wherever along it another is written.
+    fn apart_m(&self) -> f64 {
+        f64::INFINITY
+    }
 }
 
 /// Whether two texts cannot both belong to one tendon.
@@ -196,28 +201,6 @@ pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
         }
     }
     names
-}
-
-/// The direction in which a run goes, from −45° up to 135°.
-fn axis_rad<'a>(lines: impl Iterator<Item = &'a Line>) -> f64 {
-    let (mut sum_sin, mut sum_cos) = (0.0, 0.0);
-    for line in lines {
-        let (Some(start), Some(end)) = (line.path.start(), line.path.end()) else {
-            continue;
-        };
-        let (dx, dy) = (end.x - start.x, end.y - start.y);
-        let length_m = dx.hypot(dy);
-        let double_rad = 2.0 * dy.atan2(dx);
-        sum_sin += length_m * double_rad.sin();
-        sum_cos += length_m * double_rad.cos();
-    }
-    let axis_rad = sum_sin.atan2(sum_cos) / 2.0;
-    // An axis a hair off −45° is the same as one at 135°.
-    if axis_rad < -std::f64::consts::FRAC_PI_4 - 1e-6 {
-        axis_rad + std::f64::consts::PI
-    } else {
-        axis_rad
-    }
 }
 
 /// Findings on marks and strand counts.

@@ -2,7 +2,7 @@
 
 use regex::Regex;
 
-use crate::job::Conventions;
+use crate::job::{Conventions, FromFace};
 use crate::units::LengthUnit;
 
 /// Which way a height is said to be.
@@ -19,6 +19,8 @@ pub(super) enum Word {
 pub(super) struct HeightText {
     /// High or low; `None` where the label is a bare number.
     pub(super) word: Option<Word>,
+    /// High or low as far as the number alone tells, by the middle of the slab; only settling looks at it.
+    pub(super) likely: Option<Word>,
     /// The number, metres, from whatever face and to whatever part of the tendon the job says.
     pub(super) value_m: f64,
 }
@@ -49,9 +51,27 @@ pub(super) fn height(content: &str, conventions: &Conventions) -> Option<HeightT
                 Some(word) if among(word, &conventions.low_words) => Some(Word::Low),
                 Some(_) => return None,
             };
-            Some(HeightText { word, value_m })
+            Some(HeightText {
+                word,
+                likely: word,
+                value_m,
+            })
         })
     })
+}
+
+impl HeightText {
+    /// Says whether a bare number is likely a high or a low point of a slab of this thickness.
+    pub(super) fn weigh(&mut self, thickness_m: Option<f64>, from: FromFace) {
+        if let (None, Some(thickness_m)) = (self.word, thickness_m) {
+            let above = self.value_m > 0.5 * thickness_m;
+            self.likely = Some(if above == (from == FromFace::Soffit) {
+                Word::High
+            } else {
+                Word::Low
+            });
+        }
+    }
 }
 
 /// The mark and strand count that a text gives, gathered over its lines.

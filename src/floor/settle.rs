@@ -23,6 +23,8 @@ pub(super) trait Stakes {
     fn own(&self, pairing: usize) -> f64;
     /// Cost of a host's pairings together, given in order of station.
     fn shared(&self, host: usize, pairings: &[usize]) -> f64;
+    /// Labels of one host farther apart along it than this leave one another in peace, metres.
+    fn apart_m(&self) -> f64;
 }
 
 /// Cost of a label that goes to nobody.
@@ -35,8 +37,6 @@ const BREADTH: usize = 600;
 const GAIN: f64 = 1e-6;
 /// Rounds over all labels.
 const ROUNDS: usize = 12;
-/// Labels this far along a host may displace one another, metres.
-const NEAR_M: f64 = 2.5;
 
 /// An assignment and what it was made from.
 pub(super) struct Settlement<'a, S: Stakes> {
@@ -310,7 +310,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
                     station_m: other_m,
                     ..
                 } = self.pairings[other];
-                if (other_m - station_m).abs() > NEAR_M || on_the_way(nodes, node, out) {
+                if (other_m - station_m).abs() > self.stakes.apart_m() || on_the_way(nodes, node, out) {
                     continue;
                 }
                 let next = cost + own + self.entering(host, pairing, Some(other))
@@ -405,6 +405,10 @@ mod tests {
 
         fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
             10.0 * f64::from(u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX))
+        }
+
+        fn apart_m(&self) -> f64 {
+            f64::INFINITY
         }
     }
 

@@ -52,7 +52,7 @@ fn survey_of_styles() {
     for turn in [Turn::Along, Turn::Level, Turn::Mixed] {
         for sides_mixed in [false, true] {
             for centred in [true, false] {
-                for (height_m, far) in [(0.1, 0.8), (0.125, 1.2), (0.2, 0.8)] {
+                for (height_m, far) in [(0.08, 1.0), (0.1, 0.8), (0.125, 0.5)] {
                     for jitter_m in [0.0, 0.06] {
                         let style = Style {
                             turn,
@@ -63,7 +63,7 @@ fn survey_of_styles() {
                             off_h: [0.3, far],
                         };
                         let name = format!("{turn:?} mixed {sides_mixed} centred {centred} {height_m} far {far} jitter {jitter_m}");
-                        wrong += count(&name, GRID, style, 2);
+                        wrong += count(&name, GRID, style, 6);
                     }
                 }
             }

@@ -15,8 +15,12 @@ import subprocess
 import sys
 import tempfile
 
+import logging
+
 import ezdxf
 from ezdxf.enums import TextEntityAlignment as Place
+
+logging.getLogger("ezdxf").setLevel(logging.ERROR)
 
 VERSIONS = ["R12", "R2000", "R2004", "R2007", "R2010", "R2013", "R2018"]
 UNITS = {"mm": (4, 0.001), "m": (6, 1.0), "cm": (5, 0.01), "in": (1, 0.0254)}
@@ -111,7 +115,7 @@ def draw(seed, folder):
     lines_y = [sum(bays_y[:i]) for i in range(len(bays_y) + 1)]
     thickness = rng.choice([220, 240, 250, 280])
     plan.line("SLAB-EDGE", [(0, 0), (width, 0), (width, depth), (0, depth)], closed=True)
-    plan.text("SLAB-ZONE", f"T{thickness}", (width * 0.31, depth * 0.27), 0.25, 0, False)
+    plan.text("SLAB-ZONE", f"T{thickness}", (lines_x[0] + bays_x[0] * 0.55, lines_y[0] + bays_y[0] * 0.6), 0.25, 0, False)
     for x in lines_x:
         for y in lines_y:
             plan.line("COLUMN", [(x - .25, y - .25), (x + .25, y - .25), (x + .25, y + .25), (x - .25, y + .25)], True)
@@ -216,7 +220,7 @@ def draw(seed, folder):
         for point in record["points"]:
             point["x"], point["y"] = (v * plan.metres for v in plan.at(point["x"], point["y"]))
         record["ends"]["at"] = [[v * plan.metres for v in plan.at(*p)] for p in record["ends"]["at"]]
-    return path, truth, f"{plan.version}{' binary' if plan.binary else ''} {plan.unit} {habits}"
+    return path, truth, f"{plan.version}{' binary' if plan.binary else ''} {plan.unit}, {habits}"
 
 
 def compare(truth, result):
@@ -263,7 +267,13 @@ def main():
         folder.mkdir(parents=True, exist_ok=True)
         for seed in range(first, first + count):
             path, truth, habit = draw(seed, folder)
-            run = subprocess.run([program, "mark", str(path), "--out", str(folder / "out")], capture_output=True, text=True)
+            command = [program, "mark", str(path), "--out", str(folder / "out")]
+            if habit.startswith("R12"):
+                # R12 has no $INSUNITS: the job says the unit, as an engineer would.
+                job = folder / "unit.toml"
+                job.write_text(f'[drawing]\nunit = "{habit.split(",")[0].split()[-1]}"\n', encoding="utf-8")
+                command += ["--job", str(job)]
+            run = subprocess.run(command, capture_output=True, text=True)
             if run.returncode == 2:
                 wrong = [f"exit 2: {run.stderr.strip()[:300]}"]
             else:

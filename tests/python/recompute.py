@@ -8,6 +8,7 @@ friction from marching along it, the draw-in from bisection on the area between 
 result file are the inputs and where the points are. Forces at every point must agree within 0.1 %.
 """
 
+import itertools
 import json
 import math
 import sys
@@ -44,7 +45,7 @@ def entity_points(entity, unit):
     step = STEP_M / unit
     kind = entity.dxftype()
     if kind == "LINE":
-        pieces = [np.array([entity.dxf.start[:2], entity.dxf.end[:2]])]
+        pieces = [np.array([tuple(entity.dxf.start)[:2], tuple(entity.dxf.end)[:2]])]
     elif kind == "ARC":
         start = math.radians(entity.dxf.start_angle)
         sweep = math.radians((entity.dxf.end_angle - entity.dxf.start_angle) % 360.0)
@@ -53,10 +54,15 @@ def entity_points(entity, unit):
         if kind == "LWPOLYLINE":
             vertices = [(x, y, b) for x, y, b in entity.get_points("xyb")]
         else:
-            vertices = [(*v.dxf.location[:2], v.dxf.get("bulge", 0.0)) for v in entity.vertices]
+            vertices = [(*tuple(v.dxf.location)[:2], v.dxf.get("bulge", 0.0)) for v in entity.vertices]
         pieces = [bulge_points(a[:2], b[:2], a[2], step) for a, b in zip(vertices, vertices[1:])]
     elif kind == "SPLINE":
-        pieces = [np.array([p[:2] for p in entity.flattening(0.02 * 0.001 / unit, 64)])]
+        # Points as close as the step: turning must be as finely spread in plan as it is in level.
+        curve = entity.construction_tool()
+        rough = sum(a.distance(b) for a, b in itertools.pairwise(entity.flattening(0.1 * 0.001 / unit, 8)))
+        count = int(math.ceil(2 * rough / step))
+        places = curve.points(np.linspace(0.0, curve.max_t, count + 1))
+        pieces = [np.array([tuple(p)[:2] for p in places])]
     else:
         raise SystemExit(f"recompute: no plan line is known for a {kind}")
     line = [pieces[0][0]]
@@ -85,6 +91,11 @@ def chain(first, pool, gap=0.011):
             if grown:
                 break
     return line
+
+
+def same_line(a, b):
+    """Whether a line is drawn twice, in whichever direction."""
+    return any(np.hypot(*(a[0] - c[0])) < 0.01 and np.hypot(*(a[-1] - c[-1])) < 0.01 for c in (b, b[::-1]))
 
 
 def densify(line):
@@ -251,7 +262,7 @@ def work(tendon, line, inputs):
     transfer = locked - shortening * area / 1000
     service = transfer - steady * area / 1000 - relaxed * locked
 
-    stretch = (jacking[1:] + jacking[:-1]) / 2 * np.diff(arc) / (modulus * area / 1e6)
+    stretch = (jacking[1:] + jacking[:-1]) / 2 * np.diff(arc) / (modulus * area / 1000)
     worst = 0.0
     curves = {"jacking_kn": jacking, "lockoff_kn": locked, "transfer_kn": transfer, "service_kn": service}
     for point in points:
@@ -294,7 +305,8 @@ def main():
         if tendon["points"] and tendon["points"][0].get("service_kn") is None:
             continue
         layer, first = lines[tendon["handle"].upper()]
-        pool = [line for handle, (on, line) in lines.items() if on == layer and handle != tendon["handle"].upper()]
+        pool = [line for handle, (on, line) in lines.items()
+                if on == layer and handle != tendon["handle"].upper() and not same_line(first, line)]
         line = chain(first, pool)
         start = np.array([tendon["points"][0]["x_m"], tendon["points"][0]["y_m"]])
         if np.hypot(*(line[-1] - start)) < np.hypot(*(line[0] - start)):
