@@ -1,5 +1,25 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
+mod assemble;
+mod candidates;
+mod ends;
+mod habits;
+mod heights;
+mod index;
+mod labels;
+mod layers;
+mod levels;
+mod lines;
+mod marks;
+mod missing;
+mod pieces;
+mod points;
+mod readings;
+mod rules;
+mod settle;
+mod slab;
 mod types;
 
+pub use assemble::read;
+pub use rules::RULES;
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

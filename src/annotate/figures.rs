@@ -132,6 +132,10 @@ fn find(figure: &Figure, room: &Room) -> Option<Spot> {
         let width_m = words::width_m(longest, height_m);
         for away in [0.3, 1.5] {
             let across_m = figure.lane.width_m / 2.0 + height_m * (away + 0.5);
+            if across_m + height_m / 2.0 > figure.lane.spacing_m {
+                // Beyond the neighbour it would pass for the neighbour's.
+                continue;
+            }
             for side in [1.0, -1.0] {
                 for (widths, heights) in shifts(figure.station_m, length_m) {
                     let along_m = widths * width_m + heights * height_m;

@@ -18,6 +18,8 @@ const PARALLEL_RAD: f64 = 0.2;
 pub(super) struct Lane {
     /// Width of the coloured lengths, metres.
     pub(super) width_m: f64,
+    /// Distance to the nearest parallel neighbour, metres; infinite where there is none near.
+    pub(super) spacing_m: f64,
     /// Height of the figures, metres.
     pub(super) text_m: f64,
     /// Height of the extension at each end, metres.
@@ -52,6 +54,7 @@ pub(super) fn lanes(floor: &Floor, room: &Room, text_m: f64) -> Vec<Lane> {
                 text_m.min(0.6 * near.unwrap_or(f64::INFINITY)).max(0.04)
             });
             Lane {
+                spacing_m,
                 width_m: WIDTH_M.min(0.3 * spacing_m).max(0.01),
                 text_m: text_m.min(0.5 * spacing_m).max(0.06),
                 end_text_m,

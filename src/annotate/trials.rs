@@ -153,6 +153,30 @@ fn where_tendons_lie_too_close_only_the_governing_figures_are_written() {
 }
 
 #[test]
+fn in_a_band_a_figure_stands_nearer_to_its_own_tendon_than_the_next_but_one() {
+    let mut tendons = band(5, 0.3);
+    for (number, (_, result)) in (0_u32..).zip(&mut tendons) {
+        let forces_kn = Some([500.0 + f64::from(number); 4]);
+        for point in &mut result.points {
+            point.forces_kn = forces_kn;
+        }
+        for sample in &mut result.samples {
+            sample.forces_kn = forces_kn;
+        }
+    }
+    let analysis = analysis(tendons);
+    let sheet = draw(&analysis, &labels(&analysis), &Job::default());
+    for mark in on(&sheet, SERVICE) {
+        let Drawn::Text { place, content, .. } = &mark.drawn else {
+            panic!("{mark:?}")
+        };
+        let number = content.strip_prefix("50").expect("500 to 504");
+        let own_m = 0.3 * number.parse::<f64>().expect("a number");
+        assert!((place.y - own_m).abs() < 0.25, "{content} at {}", place.y);
+    }
+}
+
+#[test]
 fn no_text_reads_upside_down() {
     let analysis = analysis(two_way());
     let sheet = draw(&analysis, &labels(&analysis), &Job::default());

@@ -269,3 +269,50 @@ fn block_records(
     });
     records
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::drawing::open;
+
+    fn with_unit(header: &str, unit: Option<LengthUnit>) -> (Drawing, Vec<Finding>) {
+        let text = format!(
+            "0 SECTION 2 HEADER {header} 0 ENDSEC 0 SECTION 2 ENTITIES
+             0 LINE 8 0 10 0 20 0 11 2 21 0 0 ENDSEC 0 EOF"
+        );
+        let lines = text.split_whitespace().collect::<Vec<_>>().join("\n");
+        let source = open(lines.into_bytes()).expect("a drawing");
+        read(&source, &Wanted::everything(), unit)
+    }
+
+    #[test]
+    fn the_job_goes_before_the_header_and_the_header_before_millimetres() {
+        for (header, unit, length_m, from) in [
+            (
+                "9 $INSUNITS 70 6",
+                Some(LengthUnit::Ft),
+                0.6096,
+                UnitFrom::Job,
+            ),
+            ("9 $INSUNITS 70 6", None, 2.0, UnitFrom::Header),
+            ("9 $INSUNITS 70 1", None, 0.0508, UnitFrom::Header),
+            ("9 $INSUNITS 70 2", None, 0.6096, UnitFrom::Header),
+            ("9 $INSUNITS 70 5", None, 0.02, UnitFrom::Header),
+            ("9 $INSUNITS 70 14", None, 0.2, UnitFrom::Header),
+            ("9 $INSUNITS 70 0", None, 0.002, UnitFrom::Assumed),
+            ("9 $INSUNITS 70 12", None, 0.002, UnitFrom::Assumed),
+            ("", None, 0.002, UnitFrom::Assumed),
+        ] {
+            let (drawing, findings) = with_unit(header, unit);
+            assert_eq!(drawing.unit_from, from, "{header}");
+            assert!(
+                (drawing.shapes[0].path.length_m() - length_m).abs() < 1e-12,
+                "{header}"
+            );
+            let said = findings
+                .iter()
+                .any(|finding| finding.rule.name == "unit-assumed");
+            assert_eq!(said, from == UnitFrom::Assumed, "{header}");
+        }
+    }
+}

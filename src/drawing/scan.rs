@@ -1,10 +1,13 @@
 //! One pass over a drawing's tags: what it holds, where its parts begin and end, which handles are taken.
 
+mod records;
+
 use super::code_page::CodePage;
 use super::handles::{Handles, parse_handle};
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
 use super::tags::{BadTag, Tag, Tags, place_in_words};
+use records::text;
 
 pub(super) use super::found::{BlockEntry, Entry, OWN_LAYER, READ_TYPES, Scan};
 
@@ -290,165 +293,6 @@ impl<'a> Pass<'a> {
         Ok(())
     }
 
-    fn begin_table_record(&mut self, name: &[u8], start: usize) {
-        if name == b"ENDTAB" {
-            if self.in_layer_table {
-                self.scan.layer_table_end = self.scan.layer_table_end.or(Some(start));
-            }
-            self.in_layer_table = false;
-            return;
-        }
-        self.record = match name {
-            b"TABLE" => Record::Table,
-            b"LAYER" => Record::Layer,
-            b"BLOCK_RECORD" => Record::BlockHome,
-            b"DIMSTYLE" => Record::Dimstyle,
-            _ => Record::None,
-        };
-        self.gathered = Gathered::default();
-    }
-
-    fn begin_entity(&mut self, name: &'a [u8], start: usize) {
-        self.sequence = None;
-        self.gathered = Gathered {
-            start,
-            ..Gathered::default()
-        };
-        if self.section == Section::Blocks {
-            match name {
-                b"BLOCK" => {
-                    self.record = Record::Block;
-                    return;
-                }
-                b"ENDBLK" => {
-                    self.block_open = false;
-                    return;
-                }
-                _ => {}
-            }
-        }
-        self.record = Record::Entity;
-        self.gathered.type_id = self.types.id(name);
-        self.sequence = match name {
-            b"POLYLINE" => Some(b"POLYLINE"),
-            b"INSERT" => Some(b"INSERT"),
-            _ => None,
-        };
-    }
-
-    /// Settles the record at hand; the next one begins at `end`.
-    fn end_record(&mut self, end: usize) {
-        match self.record {
-            Record::None | Record::Dimstyle => self.handles.settle(false),
-            Record::Table => {
-                if self.in_layer_table && self.scan.layer_table_handle.is_none() {
-                    self.scan.layer_table_handle = text(self.gathered.handle);
-                }
-                self.handles.settle(false);
-            }
-            Record::Layer => self.end_layer(),
-            Record::BlockHome => {
-                let held = &self.gathered;
-                if held
-                    .name
-                    .is_some_and(|name| name.eq_ignore_ascii_case(b"*Model_Space"))
-                {
-                    self.scan.model_space_record = text(held.handle);
-                }
-                self.handles.settle(false);
-            }
-            Record::Block => {
-                let (name, guessed) = self
-                    .scan
-                    .code_page
-                    .decode(self.gathered.name.unwrap_or_default());
-                self.scan.names_are_guessed |= guessed;
-                self.scan.blocks.push(BlockEntry {
-                    name: super::text_decode::plain_name(&name),
-                    base: self.gathered.base,
-                    entries: Vec::new(),
-                });
-                self.block_open = true;
-                self.handles.settle(false);
-            }
-            Record::Entity | Record::Follower => self.end_entity(end),
-        }
-        self.attribute_layers.clear();
-        self.record = Record::None;
-    }
-
-    fn end_layer(&mut self) {
-        let held = &self.gathered;
-        self.scan.layers_have_handles |= held.handle.and_then(parse_handle).is_some();
-        if held.name == Some(b"0") {
-            self.scan.zero_layer_pointers = held.pointers.map(text);
-        }
-        if let Some(name) = held.name {
-            let id = self.names.id(name, &self.scan.code_page);
-            self.names.describe(id, |layer| {
-                layer.in_table = true;
-                layer.handle = text(held.handle);
-                layer.colour = held.colour;
-                layer.flags = held.flags;
-            });
-        }
-        self.handles.settle(false);
-    }
-
-    fn end_entity(&mut self, end: usize) {
-        let held = &self.gathered;
-        let layer = self
-            .names
-            .id(held.layer.unwrap_or(b"0"), &self.scan.code_page);
-        let own = self.section == Section::Entities && self.names.is_own(layer);
-        self.handles.settle_entity(own, held.handle);
-        if own {
-            self.scan.own_marks.push(held.start..end);
-            return;
-        }
-        let in_block = self.section == Section::Blocks;
-        if in_block != self.block_open || held.paper {
-            return;
-        }
-        let is_insert = self.types.is(held.type_id, b"INSERT");
-        let block = match held.name {
-            Some(name) if is_insert => self.block_names.id(name),
-            _ => 0,
-        };
-        let mut entry = Entry {
-            start: held.start,
-            end,
-            layer,
-            number: 0,
-            block: to_u32(block),
-            is_insert,
-        };
-        let reads = self.types.is_read(held.type_id);
-        if in_block {
-            if let Some(block) = self.scan.blocks.last_mut()
-                && reads
-            {
-                entry.number = to_u32(block.entries.len()) + 1;
-                block.entries.push(entry);
-            }
-            return;
-        }
-        self.number += 1;
-        entry.number = self.number;
-        self.owner_seen = self.owner_seen.or(held.owner);
-        count(&mut self.scan.counts, layer, held.type_id);
-        if reads {
-            let index = to_u32(self.scan.entries.len());
-            for name in self.attribute_layers.drain(..) {
-                let own_layer = self.names.id(name, &self.scan.code_page);
-                if own_layer != layer {
-                    self.scan.attribute_layers.push((index, own_layer));
-                }
-            }
-            self.scan.entries.push(entry);
-        }
-    }
-
     fn end_section(&mut self, at: usize) {
         match self.section {
             Section::Header => self.scan.header_end = self.scan.header_end.or(Some(at)),
@@ -540,31 +384,6 @@ fn follows(head: &[u8], name: &[u8]) -> bool {
         b"ATTRIB" => head == b"INSERT",
         b"SEQEND" => true,
         _ => false,
-    }
-}
-
-fn text(value: Option<&[u8]>) -> Option<String> {
-    value
-        .filter(|value| !value.is_empty())
-        .map(|value| String::from_utf8_lossy(value).into_owned())
-}
-
-fn to_u32(number: usize) -> u32 {
-    u32::try_from(number).unwrap_or(u32::MAX)
-}
-
-fn count(counts: &mut Vec<Vec<usize>>, layer: u32, type_id: usize) {
-    let layer = layer as usize;
-    if counts.len() <= layer {
-        counts.resize(layer + 1, Vec::new());
-    }
-    if let Some(row) = counts.get_mut(layer) {
-        if row.len() <= type_id {
-            row.resize(type_id + 1, 0);
-        }
-        if let Some(cell) = row.get_mut(type_id) {
-            *cell += 1;
-        }
     }
 }
 

@@ -129,6 +129,21 @@ impl Chord {
         }
     }
 
+    /// Where a stretch crosses the chord; `None` where it does not, or runs along it.
+    pub(super) fn crossing(&self, from: Coord<f64>, to: Coord<f64>) -> Option<Coord<f64>> {
+        let (a, b) = (side(from, to, self.from), side(from, to, self.to));
+        let (c, d) = (side(self.from, self.to, from), side(self.from, self.to, to));
+        let along = (a - b).abs() <= 0.02 * distance_m(from, to) * distance_m(self.from, self.to);
+        if along || a * b > 0.0 || c * d > 0.0 {
+            return None;
+        }
+        let share = a / (a - b);
+        Some(Coord {
+            x: self.from.x + share * (self.to.x - self.from.x),
+            y: self.from.y + share * (self.to.y - self.from.y),
+        })
+    }
+
     /// Distance between the chord and a quadrangle; zero where they touch or overlap.
     pub(super) fn gap_m(&self, corners: &[Coord<f64>; 4]) -> f64 {
         let mut least_m = f64::INFINITY;

@@ -2,11 +2,12 @@
 
 use std::collections::BTreeMap;
 
+use geo::Coord;
 use globset::{GlobBuilder, GlobSet, GlobSetBuilder};
 
 use super::rules::LAYER_HIDDEN;
 use super::types::Run;
-use crate::drawing::Drawing;
+use crate::drawing::{Drawing, Shape};
 use crate::finding::{Finding, Level};
 use crate::job::Conventions;
 
@@ -150,6 +151,13 @@ fn role(sets: &[GlobSet; 9], name: &str) -> Role {
         },
         ground,
     }
+}
+
+/// Whether a shape lies somewhere and has a length.
+pub(super) fn sound(shape: &Shape) -> bool {
+    let finite = |place: Option<Coord<f64>>| place.is_some_and(|p| p.x.is_finite() && p.y.is_finite());
+    let path = &shape.path;
+    path.length_m().is_finite() && finite(path.start()) && finite(path.end())
 }
 
 /// Shell patterns, any letter case; a pattern that is none was refused where the job was read, and matches nothing here.

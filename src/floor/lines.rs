@@ -5,7 +5,7 @@ use std::collections::{BTreeMap, BTreeSet};
 use geo::Coord;
 
 use super::index::Index;
-use super::layers::Roles;
+use super::layers::{Roles, sound};
 use super::pieces::{Joint, chains, returns};
 use super::rules::{DUPLICATE_LINE, PIECES_MEET, TENDON_CLOSED, TENDONS_MISSING};
 use super::types::Run;
@@ -44,7 +44,7 @@ pub(super) fn lines(
         let Some(run) = roles.of(&shape.layer).run else {
             continue;
         };
-        if shape.path.is_empty() || symbols.contains(shape.handle.as_str()) {
+        if !sound(shape) || symbols.contains(shape.handle.as_str()) {
             continue;
         }
         let closed = shape.closed || returns(&shape.path, job.conventions.join_gap_m);

@@ -26,115 +26,115 @@ pub const RULES: &[&Rule] = &[
 ];
 
 /// The same line drawn twice.
-pub const DUPLICATE_LINE: Rule = Rule {
+pub(super) const DUPLICATE_LINE: Rule = Rule {
     name: "duplicate-line",
     meaning: "Two tendon lines lie on one another, wholly or in part: the tendon would be counted twice.",
 };
 
 /// A live or dead end symbol without an end.
-pub const END_UNCLAIMED: Rule = Rule {
+pub(super) const END_UNCLAIMED: Rule = Rule {
     name: "end-unclaimed",
     meaning: "An end symbol stands at no tendon's end.",
 };
 
 /// An end without a symbol.
-pub const END_UNKNOWN: Rule = Rule {
+pub(super) const END_UNKNOWN: Rule = Rule {
     name: "end-unknown",
     meaning: "An end has neither a live nor a dead end symbol within reach, so nobody can say where the jack stands.",
 };
 
 /// A height that the drawing ought to give and does not.
-pub const HEIGHT_MISSING: Rule = Rule {
+pub(super) const HEIGHT_MISSING: Rule = Rule {
     name: "height-missing",
     meaning: "A tendon has no height where its neighbours, a column or an unclaimed label say that one belongs.",
 };
 
 /// A label that might as well belong elsewhere.
-pub const LABEL_AMBIGUOUS: Rule = Rule {
+pub(super) const LABEL_AMBIGUOUS: Rule = Rule {
     name: "label-ambiguous",
     meaning: "A label fits two tendons about equally well, and the choice changes a height.",
 };
 
 /// A label without a tendon.
-pub const LABEL_UNCLAIMED: Rule = Rule {
+pub(super) const LABEL_UNCLAIMED: Rule = Rule {
     name: "label-unclaimed",
     meaning: "A label belongs to no tendon: none is within reach, or each that is has its own.",
 };
 
 /// A text that is not what its layer holds.
-pub const LABEL_UNREAD: Rule = Rule {
+pub(super) const LABEL_UNREAD: Rule = Rule {
     name: "label-unread",
     meaning: "A text on a label layer matches none of the job's patterns.",
 };
 
 /// Tendons or labels on a layer that nobody sees.
-pub const LAYER_HIDDEN: Rule = Rule {
+pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
     meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
 };
 
 /// A level line and a label that disagree.
-pub const LEVEL_LINE_DIFFERS: Rule = Rule {
+pub(super) const LEVEL_LINE_DIFFERS: Rule = Rule {
     name: "level-line-differs",
     meaning: "A level line and a label give one tendon two heights at one place.",
 };
 
 /// A level line without a height.
-pub const LEVEL_LINE_UNREAD: Rule = Rule {
+pub(super) const LEVEL_LINE_UNREAD: Rule = Rule {
     name: "level-line-unread",
     meaning: "A level line has no readable height within reach.",
 };
 
 /// One mark on two tendons.
-pub const MARK_TWICE: Rule = Rule {
+pub(super) const MARK_TWICE: Rule = Rule {
     name: "mark-twice",
     meaning: "Two tendons carry the same mark.",
 };
 
 /// A slab edge, zone or opening that does not close.
-pub const OUTLINE_OPEN: Rule = Rule {
+pub(super) const OUTLINE_OPEN: Rule = Rule {
     name: "outline-open",
     meaning: "Lines on a slab layer do not close to an outline.",
 };
 
 /// More than two ends at one point.
-pub const PIECES_MEET: Rule = Rule {
+pub(super) const PIECES_MEET: Rule = Rule {
     name: "pieces-meet",
     meaning: "Ends of tendon lines meet in a way that does not tell which of them go on into one another.",
 };
 
 /// Strands unknown.
-pub const STRAND_COUNT_MISSING: Rule = Rule {
+pub(super) const STRAND_COUNT_MISSING: Rule = Rule {
     name: "strand-count-missing",
     meaning: "No label gives the number of strands in a tendon.",
 };
 
 /// A tendon line that closes on itself.
-pub const TENDON_CLOSED: Rule = Rule {
+pub(super) const TENDON_CLOSED: Rule = Rule {
     name: "tendon-closed",
     meaning: "A closed shape lies on a tendon layer: it has no ends, so it is no tendon.",
 };
 
 /// A drawing without tendons.
-pub const TENDONS_MISSING: Rule = Rule {
+pub(super) const TENDONS_MISSING: Rule = Rule {
     name: "tendons-missing",
     meaning: "No line lies on the layers that the job names for tendons.",
 };
 
 /// Two thicknesses for one piece of slab.
-pub const THICKNESS_DIFFERS: Rule = Rule {
+pub(super) const THICKNESS_DIFFERS: Rule = Rule {
     name: "thickness-differs",
     meaning: "The drawing and the job, or two texts, give one part of the slab two thicknesses.",
 };
 
 /// Slab thickness unknown.
-pub const THICKNESS_UNKNOWN: Rule = Rule {
+pub(super) const THICKNESS_UNKNOWN: Rule = Rule {
     name: "thickness-unknown",
     meaning: "Neither the job nor the drawing gives the general thickness of the slab.",
 };
 
 /// A zone without a thickness.
-pub const ZONE_UNREAD: Rule = Rule {
+pub(super) const ZONE_UNREAD: Rule = Rule {
     name: "zone-unread",
     meaning: "A zone has no thickness text inside, so the slab's thickness there is unknown.",
 };

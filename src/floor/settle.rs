@@ -428,6 +428,11 @@ mod tests {
     }
 
     proptest::proptest! {
+        #![proptest_config(proptest::test_runner::Config {
+            failure_persistence: None,
+            ..Default::default()
+        })]
+
         #[test]
         fn the_assignment_costs_no_more_than_any_other(
             labels in 1usize..7,

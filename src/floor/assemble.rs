@@ -1,0 +1,284 @@
+//! The floor put together from its parts.
+
+use std::collections::BTreeSet;
+
+use geo::Coord;
+
+use super::candidates::lies;
+use super::heights::{self, Doubt, Settled};
+use super::index::Index;
+use super::labels::{Labels, labels};
+use super::layers::Roles;
+use super::levels::levels;
+use super::lines::{Line, lines};
+use super::marks::{self, Marks};
+use super::missing::{Columns, Stray, complete};
+use super::points::{points, words};
+use super::readings::{HeightText, MarkText, Word};
+use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
+use super::slab::{Thickness, slab};
+use super::types::{Floor, PointKind, Tendon};
+use super::ends;
+use crate::drawing::{Drawing, Text};
+use crate::finding::{Finding, Level};
+use crate::job::Job;
+
+/// A label that nobody claims is told by the nearest tendon within this many times its reach.
+const SEEN: f64 = 4.0;
+/// It says that a tendon lacks a height within this many times its reach.
+const LACKING: f64 = 2.0;
+
+/// Reads a floor from a drawing. What the drawing does not say is left open and found, never assumed; the result does
+/// not depend on the order of the drawing's entities.
+pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
+    let conventions = &job.conventions;
+    let roles = Roles::new(drawing, conventions);
+    let mut findings = roles.hidden(drawing);
+
+    let (slab, unread_zones, found) = slab(drawing, job, &roles);
+    findings.extend(found);
+    let thickness = Thickness::new(&slab, &unread_zones);
+    let columns = Columns::new(&slab.columns);
+
+    let symbols = ends::symbols(drawing, conventions);
+    let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
+    let symbol_handles: BTreeSet<&str> =
+        symbols.iter().map(|s| s.insert.handle.as_str()).collect();
+    let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_handles);
+    findings.extend(found);
+    let index = Index::new(lines.iter().map(|line| &line.path));
+    let (line_ends, found) = ends::ends(&lines, &symbols, conventions.end_reach_m);
+    findings.extend(found);
+
+    let (levels, found) = levels(drawing, job, &roles, &lines, &index);
+    findings.extend(found);
+    let (labels, found) = labels(drawing, conventions, &roles, &levels.texts);
+    findings.extend(found);
+    let Labels {
+        heights: height_labels,
+        marks: mark_labels,
+        unread,
+    } = labels;
+
+    let (texts, readings): (Vec<&Text>, Vec<MarkText>) = mark_labels.into_iter().unzip();
+    let mark_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
+    let settled_marks = marks::settle(&readings, &mark_lies, &lines);
+    let names = marks::names(&lines, &settled_marks.of_line);
+    let near = Near {
+        lines: &lines,
+        index: &index,
+        names: &names,
+        reach: conventions.label_reach,
+    };
+    findings.extend(near.marks(&texts, &settled_marks));
+
+    let (texts, readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
+    let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
+    let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
+    findings.extend(near.heights(&texts, &readings, &settled));
+    let strays = near.strays(&texts, &readings, &settled, &unread);
+
+    let mut tendons = Vec::with_capacity(lines.len());
+    for (at, line) in lines.iter().enumerate() {
+        let said = &settled_marks.of_line[at];
+        let (points, found) = points(
+            &names[at],
+            line,
+            &settled.of_line[at],
+            &thickness,
+            &conventions.height,
+        );
+        findings.extend(found);
+        findings.extend(ends::unknown(
+            &names[at],
+            &line_ends[at],
+            line.path.length_m(),
+            conventions.end_reach_m,
+        ));
+        tendons.push(Tendon {
+            mark: names[at].clone(),
+            mark_drawn: said.mark.is_some(),
+            handle: line.handle.clone(),
+            layer: line.layer.clone(),
+            run: line.run,
+            path: line.path.clone(),
+            tendons: said.tendons.unwrap_or(1),
+            strands: said.strands,
+            strand: said.strand.clone(),
+            ends: line_ends[at],
+            points,
+        });
+    }
+    findings.extend(complete(&mut tendons, &index, &columns, &strays, &thickness));
+    tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
+    findings.extend(marks::findings(&tendons));
+    (Floor { tendons, slab }, findings)
+}
+
+/// Words for labels, by the tendons near to them.
+struct Near<'a> {
+    lines: &'a [Line],
+    index: &'a Index,
+    names: &'a [String],
+    reach: f64,
+}
+
+impl Near<'_> {
+    fn marks(&self, texts: &[&Text], marks: &Marks) -> Vec<Finding> {
+        let mut findings: Vec<Finding> = marks
+            .unclaimed
+            .iter()
+            .map(|&label| self.unclaimed(texts[label]))
+            .collect();
+        findings.extend(marks.doubts.iter().map(|&(label, here, there)| {
+            let text = texts[label];
+            Finding::new(
+                &LABEL_AMBIGUOUS,
+                Level::Warning,
+                format!(
+                    "mark {:?} was taken for the line {}, but fits line {} about as well",
+                    text.content, self.lines[here].handle, self.lines[there].handle
+                ),
+                "move the mark nearer to its tendon, along it",
+            )
+            .on_tendon(&self.names[here])
+            .at_place(text.place)
+        }));
+        findings
+    }
+
+    fn heights(&self, texts: &[&Text], readings: &[HeightText], settled: &Settled) -> Vec<Finding> {
+        let unclaimed = settled.unclaimed.iter();
+        let mut findings: Vec<Finding> = unclaimed.map(|&label| self.unclaimed(texts[label])).collect();
+        findings.extend(settled.doubts.iter().map(|doubt| {
+            let here = &self.names[doubt.hosts[0]];
+            let there = &self.names[doubt.hosts[1]];
+            let said = words(readings[doubt.label]);
+            let (level, text) = if doubt.tied {
+                (
+                    Level::Error,
+                    format!("height {said} fits {here} and {there} equally well; neither was given it"),
+                )
+            } else {
+                (
+                    Level::Warning,
+                    format!("height {said} was taken for {here}, but fits {there} about as well"),
+                )
+            };
+            Finding::new(
+                &LABEL_AMBIGUOUS,
+                level,
+                text,
+                "move the label nearer to its tendon, or turn it along the tendon",
+            )
+            .on_tendon(here)
+            .at_station(doubt.stations_m[0])
+            .at_place(texts[doubt.label].place)
+        }));
+        findings
+    }
+
+    fn unclaimed(&self, text: &Text) -> Finding {
+        let reach_m = self.reach * text.height_m;
+        let nearest = self
+            .index
+            .feet(text.place, SEEN * reach_m)
+            .into_iter()
+            .min_by(|a, b| a.distance_m.total_cmp(&b.distance_m));
+        let (tail, foot) = match nearest {
+            Some(foot) if foot.distance_m > reach_m => {
+                let name = &self.names[foot.line];
+                (
+                    format!("{name}, the nearest, is {:.2} m off and the reach is {reach_m:.2} m", foot.distance_m),
+                    Some(foot),
+                )
+            }
+            Some(foot) => (
+                format!("{}, {:.2} m off, has its own label there", self.names[foot.line], foot.distance_m),
+                Some(foot),
+            ),
+            None => (format!("no tendon is within {:.2} m", SEEN * reach_m), None),
+        };
+        let finding = Finding::new(
+            &LABEL_UNCLAIMED,
+            Level::Warning,
+            format!("label {:?} belongs to no tendon: {tail}", text.content),
+            "move the label to its tendon, or delete it",
+        )
+        .at_place(text.place);
+        match foot {
+            Some(foot) => finding
+                .on_tendon(&self.names[foot.line])
+                .at_station(foot.station_m),
+            None => finding,
+        }
+    }
+
+    /// Labels without a tendon, beside each tendon that they are near to.
+    fn strays(
+        &self,
+        texts: &[&Text],
+        readings: &[HeightText],
+        settled: &Settled,
+        unread: &[&Text],
+    ) -> Vec<Stray> {
+        let beside = |text: &Text, kind: Option<PointKind>| -> Vec<Stray> {
+            let reach_m = LACKING * self.reach * text.height_m;
+            let feet = self.index.feet(text.place, reach_m).into_iter();
+            feet.map(|foot| Stray {
+                line: foot.line,
+                station_m: foot.station_m,
+                kind,
+                content: text.content.clone(),
+            })
+            .collect()
+        };
+        let mut strays: Vec<Stray> = Vec::new();
+        for &label in &settled.unclaimed {
+            strays.extend(beside(texts[label], kind(readings[label])));
+        }
+        strays.extend(unread.iter().flat_map(|text| beside(text, None)));
+        for Doubt { label, hosts, stations_m, .. } in settled.doubts.iter().filter(|d| d.tied) {
+            strays.extend(hosts.iter().zip(stations_m).map(|(&line, &station_m)| Stray {
+                line,
+                station_m,
+                kind: kind(readings[*label]),
+                content: texts[*label].content.clone(),
+            }));
+        }
+        strays
+    }
+}
+
+fn kind(reading: HeightText) -> Option<PointKind> {
+    reading.word.map(|word| match word {
+        Word::High => PointKind::High,
+        Word::Low => PointKind::Low,
+    })
+}
+
+/// Text before digits, digits as a number: B2 before B10.
+fn natural(mark: &str) -> Vec<(String, u64)> {
+    let mut parts = vec![(String::new(), 0_u64)];
+    let mut in_digits = false;
+    for sign in mark.chars() {
+        match sign.to_digit(10) {
+            Some(digit) => {
+                in_digits = true;
+                if let Some((_, number)) = parts.last_mut() {
+                    *number = number.saturating_mul(10).saturating_add(u64::from(digit));
+                }
+            }
+            None => {
+                if in_digits {
+                    parts.push((String::new(), 0));
+                    in_digits = false;
+                }
+                if let Some((text, _)) = parts.last_mut() {
+                    text.extend(sign.to_uppercase());
+                }
+            }
+        }
+    }
+    parts
+}

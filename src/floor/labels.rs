@@ -1,0 +1,108 @@
+//! The drawing's texts sorted by what they are for, read, and put in an order that their places decide.
+
+use std::cmp::Ordering;
+use std::collections::BTreeSet;
+
+use super::layers::Roles;
+use super::readings::{HeightText, MarkText, height, mark};
+use super::rules::LABEL_UNREAD;
+use crate::drawing::{Drawing, Text};
+use crate::finding::{Finding, Level};
+use crate::geometry::distance_m;
+use crate::job::Conventions;
+
+/// Texts on label layers.
+#[derive(Default)]
+pub(super) struct Labels<'a> {
+    pub(super) heights: Vec<(&'a Text, HeightText)>,
+    pub(super) marks: Vec<(&'a Text, MarkText)>,
+    /// Texts on layers of heights that say none.
+    pub(super) unread: Vec<&'a Text>,
+}
+
+/// The same text this near is a copy, metres.
+const COPY_M: f64 = 0.005;
+
+/// Reads all labels but those that level lines took.
+pub(super) fn labels<'a>(
+    drawing: &'a Drawing,
+    conventions: &Conventions,
+    roles: &Roles,
+    taken: &BTreeSet<usize>,
+) -> (Labels<'a>, Vec<Finding>) {
+    let mut texts: Vec<&Text> = drawing
+        .texts
+        .iter()
+        .enumerate()
+        .filter(|(at, text)| !taken.contains(at) && usable(text))
+        .map(|(_, text)| text)
+        .filter(|text| {
+            let label = roles.of(&text.layer).label;
+            label.heights || label.marks || label.level_lines
+        })
+        .collect();
+    texts.sort_by(|a, b| by_place(a, b));
+    texts.dedup_by(|a, b| {
+        a.content == b.content && a.layer == b.layer && distance_m(a.place, b.place) < COPY_M
+    });
+    let mut labels = Labels::default();
+    let mut findings = Vec::new();
+    for text in texts {
+        let label = roles.of(&text.layer).label;
+        let as_height = || height(&text.content, conventions).filter(|_| label.heights);
+        let as_mark = || mark(&text.content, &conventions.mark_patterns).filter(|_| label.marks);
+        if let Some(reading) = as_height() {
+            labels.heights.push((text, reading));
+        } else if let Some(reading) = as_mark() {
+            labels.marks.push((text, reading));
+        } else {
+            let expected = match (label.heights || label.level_lines, label.marks) {
+                (true, false) => "a height such as H165, L30 or 165",
+                (false, true) => "a mark or strand count such as D012 5-12.7",
+                _ => "a height such as H165 or a mark such as D012 5-12.7",
+            };
+            let readable = height(&text.content, conventions).is_some();
+            if readable && label.level_lines {
+                findings.push(unread(text, "is a height, but no level line is within reach", expected));
+            } else {
+                findings.push(unread(text, "cannot be read", expected));
+                if label.heights {
+                    labels.unread.push(text);
+                }
+            }
+        }
+    }
+    (labels, findings)
+}
+
+fn unread(text: &Text, what: &str, expected: &str) -> Finding {
+    Finding::new(
+        &LABEL_UNREAD,
+        Level::Warning,
+        format!("text {:?} on layer {} {what}; expected {expected}", text.content, text.layer),
+        "correct the text, move it to another layer if it is no label, or give its pattern in the job file",
+    )
+    .at_place(text.place)
+}
+
+/// Whether a text lies somewhere and has a size.
+fn usable(text: &Text) -> bool {
+    let finite = |c: &geo::Coord<f64>| c.x.is_finite() && c.y.is_finite();
+    finite(&text.place)
+        && text.corners.iter().all(finite)
+        && text.height_m.is_finite()
+        && text.height_m > 0.0
+        && text.rotation_rad.is_finite()
+        && !text.content.trim().is_empty()
+}
+
+fn by_place(a: &Text, b: &Text) -> Ordering {
+    a.place
+        .x
+        .total_cmp(&b.place.x)
+        .then(a.place.y.total_cmp(&b.place.y))
+        .then_with(|| a.content.cmp(&b.content))
+        .then_with(|| a.layer.cmp(&b.layer))
+        .then(a.rotation_rad.total_cmp(&b.rotation_rad))
+        .then_with(|| a.handle.cmp(&b.handle))
+}

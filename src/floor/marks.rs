@@ -1,0 +1,260 @@
+//! Marks and strand counts settled on their tendons, and names for tendons that have none.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use super::candidates::Lie;
+use super::habits::Habits;
+use super::lines::Line;
+use super::readings::MarkText;
+use super::rules::{MARK_TWICE, STRAND_COUNT_MISSING};
+use super::settle::{Pairing, Settlement, Stakes};
+use super::types::{Run, Tendon};
+use crate::finding::{Finding, Level};
+
+/// Marks settled.
+pub(super) struct Marks {
+    /// What each line's labels say together.
+    pub(super) of_line: Vec<MarkText>,
+    /// Labels that went to nobody.
+    pub(super) unclaimed: Vec<usize>,
+    /// Labels that fit another line about as well: label, line taken, other line.
+    pub(super) doubts: Vec<(usize, usize, usize)>,
+}
+
+/// Rounds of settling and learning.
+const ROUNDS: usize = 3;
+/// Costs that differ by less are too near to be silent about.
+const DOUBT: f64 = 0.4;
+
+/// Settles marks.
+pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks {
+    let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
+    let mut taken: Vec<Option<usize>> = vec![None; texts.len()];
+    let mut stakes = MarkStakes {
+        own: Vec::new(),
+        texts,
+        lies,
+    };
+    for round in 0..ROUNDS {
+        stakes.own = costs(texts, lies, lines, &taken, round > 0);
+        let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
+        taken = settlement.settle();
+    }
+    let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
+    let mut marks = Marks {
+        of_line: vec![MarkText::default(); lines.len()],
+        unclaimed: Vec::new(),
+        doubts: Vec::new(),
+    };
+    for label in 0..texts.len() {
+        let Some(now) = taken[label] else {
+            marks.unclaimed.push(label);
+            continue;
+        };
+        let whole = &mut marks.of_line[lies[now].pairing.host];
+        let said = &texts[label];
+        whole.mark = whole.mark.take().or_else(|| said.mark.clone());
+        whole.tendons = whole.tendons.or(said.tendons);
+        whole.strands = whole.strands.or(said.strands);
+        whole.strand = whole.strand.take().or_else(|| said.strand.clone());
+        if settlement.choices(label).len() < 2 {
+            continue;
+        }
+        if let Some((_, changes)) = settlement.second_best(label, DOUBT)
+            && let Some(&(_, Some(then))) = changes.iter().find(|(changed, _)| *changed == label)
+        {
+            let hosts = (lies[now].pairing.host, lies[then].pairing.host);
+            marks.doubts.push((label, hosts.0, hosts.1));
+        }
+    }
+    marks
+}
+
+fn costs(
+    texts: &[MarkText],
+    lies: &[Lie],
+    lines: &[Line],
+    taken: &[Option<usize>],
+    learned: bool,
+) -> Vec<f64> {
+    let mut choices = vec![0_u32; texts.len()];
+    for lie in lies {
+        choices[lie.pairing.label] += 1;
+    }
+    let sure = |label: usize| if choices[label] == 1 { 1.0 } else { 0.2 };
+    let held = || taken.iter().flatten().map(|&pairing| &lies[pairing]);
+    let habits = Habits::learn(held().map(|lie| {
+        let run = lines[lie.pairing.host].run;
+        (run, lie, sure(lie.pairing.label))
+    }));
+    let mut letters: BTreeMap<(Run, String), f64> = BTreeMap::new();
+    for lie in held() {
+        let key = (lines[lie.pairing.host].run, prefix(&texts[lie.pairing.label]));
+        *letters.entry(key).or_default() += sure(lie.pairing.label);
+    }
+    lies.iter()
+        .map(|lie| {
+            let run = lines[lie.pairing.host].run;
+            // Marks are written along their tendon.
+            let turned = if lie.turn == 0 { 0.0 } else { 0.5 };
+            let near = 0.6 * lie.gap_h + 0.02 * lie.off_h.abs().min(6.0) + turned;
+            if !learned {
+                return near;
+            }
+            let count = |run| {
+                let key = (run, prefix(&texts[lie.pairing.label]));
+                letters.get(&key).copied().unwrap_or(0.0) + 0.5
+            };
+            let both = count(Run::Banded).max(count(Run::Distributed));
+            near + habits.cost(run, lie) + (both / count(run)).ln().min(3.0)
+        })
+        .collect()
+}
+
+/// The letters that a mark begins with.
+fn prefix(text: &MarkText) -> String {
+    let mark = text.mark.as_deref().unwrap_or("");
+    let letters = mark.chars().take_while(|c| c.is_alphabetic());
+    letters.flat_map(char::to_uppercase).collect()
+}
+
+/// Costs of marks.
+struct MarkStakes<'a> {
+    own: Vec<f64>,
+    texts: &'a [MarkText],
+    lies: &'a [Lie],
+}
+
+impl Stakes for MarkStakes<'_> {
+    fn own(&self, pairing: usize) -> f64 {
+        self.own[pairing]
+    }
+
+    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
+        if pairings.is_empty() {
+            return 1.0;
+        }
+        let mut cost = 0.0;
+        for (at, &a) in pairings.iter().enumerate() {
+            for &b in &pairings[at + 1..] {
+                let text = |pairing: usize| &self.texts[self.lies[pairing].pairing.label];
+                if clash(text(a), text(b)) {
+                    cost += 8.0;
+                }
+            }
+        }
+        cost
+    }
+}
+
+/// Whether two texts cannot both belong to one tendon.
+fn clash(a: &MarkText, b: &MarkText) -> bool {
+    fn differ<T: PartialEq>(a: Option<&T>, b: Option<&T>) -> bool {
+        matches!((a, b), (Some(a), Some(b)) if a != b)
+    }
+    differ(a.mark.as_ref(), b.mark.as_ref())
+        || differ(a.strands.as_ref(), b.strands.as_ref())
+        || differ(a.tendons.as_ref(), b.tendons.as_ref())
+        // Two counts without a mark are those of two tendons, even if they are equal.
+        || (a.mark.is_none() && b.mark.is_none())
+}
+
+/// Names for lines without a mark: `B001`, `D001`, ... by place across the run, then along it.
+pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
+    let used: BTreeSet<String> = drawn
+        .iter()
+        .filter_map(|text| text.mark.as_ref())
+        .map(|mark| mark.to_uppercase())
+        .collect();
+    let mut names: Vec<String> = drawn
+        .iter()
+        .map(|text| text.mark.clone().unwrap_or_default())
+        .collect();
+    for (run, letter) in [(Run::Banded, 'B'), (Run::Distributed, 'D')] {
+        let of_run = || (0..lines.len()).filter(|&line| lines[line].run == run);
+        let axis_rad = axis_rad(of_run().map(|line| &lines[line]));
+        let (sin, cos) = axis_rad.sin_cos();
+        // Thousandths of a metre across, so that rounding does not decide which of two is first.
+        let mut order: Vec<(f64, f64, usize)> = of_run()
+            .filter(|&line| names[line].is_empty())
+            .map(|line| {
+                let path = &lines[line].path;
+                let middle = path.place_at(path.length_m() / 2.0);
+                // Runs along y are counted by x, and runs along x by y.
+                let upright = axis_rad > std::f64::consts::FRAC_PI_4;
+                let across_m = (cos * middle.y - sin * middle.x) * if upright { -1.0 } else { 1.0 };
+                let along_m = cos * middle.x + sin * middle.y;
+                ((across_m * 1000.0).round(), (along_m * 1000.0).round(), line)
+            })
+            .collect();
+        order.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.total_cmp(&b.1)).then(a.2.cmp(&b.2)));
+        let free = (1_u32..)
+            .map(|number| format!("{letter}{number:03}"))
+            .filter(|name| !used.contains(name));
+        for ((_, _, line), name) in order.into_iter().zip(free) {
+            names[line] = name;
+        }
+    }
+    names
+}
+
+/// The direction in which a run goes, from −45° up to 135°.
+fn axis_rad<'a>(lines: impl Iterator<Item = &'a Line>) -> f64 {
+    let (mut sum_sin, mut sum_cos) = (0.0, 0.0);
+    for line in lines {
+        let (Some(start), Some(end)) = (line.path.start(), line.path.end()) else {
+            continue;
+        };
+        let (dx, dy) = (end.x - start.x, end.y - start.y);
+        let length_m = dx.hypot(dy);
+        let double_rad = 2.0 * dy.atan2(dx);
+        sum_sin += length_m * double_rad.sin();
+        sum_cos += length_m * double_rad.cos();
+    }
+    let axis_rad = sum_sin.atan2(sum_cos) / 2.0;
+    // An axis a hair off −45° is the same as one at 135°.
+    if axis_rad < -std::f64::consts::FRAC_PI_4 - 1e-6 {
+        axis_rad + std::f64::consts::PI
+    } else {
+        axis_rad
+    }
+}
+
+/// Findings on marks and strand counts.
+pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
+    let mut findings = Vec::new();
+    let mut first: BTreeMap<String, &Tendon> = BTreeMap::new();
+    for tendon in tendons {
+        let middle_m = tendon.path.length_m() / 2.0;
+        if tendon.strands.is_none() {
+            findings.push(
+                Finding::new(
+                    &STRAND_COUNT_MISSING,
+                    Level::Error,
+                    "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
+                    "write mark and strands beside the tendon, on the layer of marks",
+                )
+                .on_tendon(&tendon.mark)
+                .at_place(tendon.path.place_at(middle_m)),
+            );
+        }
+        if let Some(before) = first.get(&tendon.mark.to_uppercase()) {
+            findings.push(
+                Finding::new(
+                    &MARK_TWICE,
+                    Level::Warning,
+                    format!(
+                        "mark {} stands on lines {} and {}; expected each mark once",
+                        tendon.mark, before.handle, tendon.handle
+                    ),
+                    "give one of the two tendons its own mark",
+                )
+                .on_tendon(&tendon.mark)
+                .at_place(tendon.path.place_at(middle_m)),
+            );
+        } else {
+            first.insert(tendon.mark.to_uppercase(), tendon);
+        }
+    }
+    findings
+}
