@@ -33,12 +33,22 @@ fn count(name: &str, grid: Grid, style: Style, seeds: u64) -> usize {
         for error in errors.iter().take(4) {
             eprintln!("{name} {seed}: {error}");
         }
-        for finding in findings.iter().filter(|f| f.rule.name != "label-ambiguous").take(3) {
-            eprintln!("{name} {seed}: {} {:?} {}", finding.rule.name, finding.tendon, finding.text);
+        for finding in findings
+            .iter()
+            .filter(|f| f.rule.name != "label-ambiguous")
+            .take(3)
+        {
+            eprintln!(
+                "{name} {seed}: {} {:?} {}",
+                finding.rule.name, finding.tendon, finding.text
+            );
         }
         wrong += errors.len();
         labels += board.labels();
-        let doubt = findings.iter().filter(|f| f.rule.name == "label-ambiguous").count();
+        let doubt = findings
+            .iter()
+            .filter(|f| f.rule.name == "label-ambiguous")
+            .count();
         doubts += doubt;
         others += findings.len() - doubt;
     }
@@ -62,7 +72,9 @@ fn survey_of_styles() {
                             jitter_m,
                             off_h: [0.3, far],
                         };
-                        let name = format!("{turn:?} mixed {sides_mixed} centred {centred} {height_m} far {far} jitter {jitter_m}");
+                        let name = format!(
+                            "{turn:?} mixed {sides_mixed} centred {centred} {height_m} far {far} jitter {jitter_m}"
+                        );
                         wrong += count(&name, GRID, style, 2);
                     }
                 }
