@@ -53,11 +53,9 @@ pub(super) fn proposals(
         }
     }
     blocks(contents, job, &mut proposals);
-    unit(drawing, contents, job, &proposals)
-        .into_iter()
-        .for_each(|proposal| {
-            proposals.insert("drawing.unit".to_owned(), proposal);
-        });
+    if let Some(proposal) = unit(drawing, contents, job, &proposals) {
+        proposals.insert("drawing.unit".to_owned(), proposal);
+    }
     keep_given(job_file, &mut proposals);
     proposals
 }
