@@ -153,11 +153,7 @@ pub fn work_tendon(
 ///
 /// # Errors
 /// [`Refusal`] says what is not known, or why there is no force.
-pub fn stress<'p>(
-    tendon: &Tendon,
-    curve: &'p Profile,
-    job: &Job,
-) -> Result<Stressed<'p>, Refusal> {
+pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Stressed<'p>, Refusal> {
     let steel = steel(tendon, &job.system).ok_or(Refusal::SteelUnknown)?;
     let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
         return Err(Refusal::EndUnknown);
@@ -257,7 +253,11 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
 
 /// Worst first, then by rule, tendon, station, place and words: an order that no reading order changes.
 fn in_order(a: &Finding, b: &Finding) -> Ordering {
-    let place = |finding: &Finding| finding.place.map_or((f64::MIN, f64::MIN), |at| (at.x, at.y));
+    let place = |finding: &Finding| {
+        finding
+            .place
+            .map_or((f64::MIN, f64::MIN), |at| (at.x, at.y))
+    };
     let station_m = |finding: &Finding| finding.station_m.unwrap_or(f64::MIN);
     a.level
         .cmp(&b.level)
@@ -289,7 +289,10 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
              (long_term.concrete_stress_mpa is not given)."
                 .to_owned(),
         );
-        let without = results.iter().filter(|result| result.forces.is_none()).count();
+        let without = results
+            .iter()
+            .filter(|result| result.forces.is_none())
+            .count();
         if without > 0 && without < results.len() {
             said.push(format!(
                 "Tendons without forces press on no section: {without} of {}.",

@@ -346,6 +346,22 @@ fn a_proposal_is_set_in_the_file_whatever_characters_it_holds() {
     assert_eq!(resolved.job.conventions.mark_patterns.len(), 2);
 }
 
+/// Findings send the reader to keys of the job file by their path: each of them is a key.
+#[test]
+fn keys_that_the_rules_name_are_keys() {
+    let pattern = regex::Regex::new(r"\b(limits|stressing|system|long_term)\.([a-z][a-z0-9_]*)");
+    let pattern = pattern.expect("a pattern");
+    let mut named = 0;
+    for rule in tautplan::checks::rules() {
+        for found in pattern.captures_iter(rule.meaning) {
+            named += 1;
+            let key = tautplan::job::keys::find(&found[1], &found[2]);
+            assert!(key.is_some(), "{}: {}", rule.name, &found[0]);
+        }
+    }
+    assert!(named >= 10, "{named}");
+}
+
 proptest! {
     #![proptest_config(ProptestConfig { failure_persistence: None, ..ProptestConfig::with_cases(400) })]
 

@@ -5,6 +5,7 @@ use std::collections::BTreeSet;
 use geo::Coord;
 
 use super::candidates::lies;
+use super::ends;
 use super::heights::{self, Doubt, Settled};
 use super::index::Index;
 use super::labels::{Labels, labels};
@@ -18,7 +19,6 @@ use super::readings::{HeightText, MarkText, Word};
 use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
 use super::slab::{Thickness, slab};
 use super::types::{Floor, PointKind, Tendon};
-use super::ends;
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
 use crate::job::Job;
@@ -42,8 +42,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
 
     let symbols = ends::symbols(drawing, conventions);
     let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
-    let symbol_handles: BTreeSet<&str> =
-        symbols.iter().map(|s| s.insert.handle.as_str()).collect();
+    let symbol_handles: BTreeSet<&str> = symbols.iter().map(|s| s.insert.handle.as_str()).collect();
     let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_handles);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
@@ -112,7 +111,13 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             points,
         });
     }
-    findings.extend(complete(&mut tendons, &index, &columns, &strays, &thickness));
+    findings.extend(complete(
+        &mut tendons,
+        &index,
+        &columns,
+        &strays,
+        &thickness,
+    ));
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
     findings.extend(marks::findings(&tendons));
     (Floor { tendons, slab }, findings)
@@ -152,7 +157,9 @@ impl Near<'_> {
 
     fn heights(&self, texts: &[&Text], readings: &[HeightText], settled: &Settled) -> Vec<Finding> {
         let unclaimed = settled.unclaimed.iter();
-        let mut findings: Vec<Finding> = unclaimed.map(|&label| self.unclaimed(texts[label])).collect();
+        let mut findings: Vec<Finding> = unclaimed
+            .map(|&label| self.unclaimed(texts[label]))
+            .collect();
         findings.extend(settled.doubts.iter().map(|doubt| {
             let here = &self.names[doubt.hosts[0]];
             let there = &self.names[doubt.hosts[1]];
@@ -160,7 +167,9 @@ impl Near<'_> {
             let (level, text) = if doubt.tied {
                 (
                     Level::Error,
-                    format!("height {said} fits {here} and {there} equally well; neither was given it"),
+                    format!(
+                        "height {said} fits {here} and {there} equally well; neither was given it"
+                    ),
                 )
             } else {
                 (
@@ -192,12 +201,18 @@ impl Near<'_> {
             Some(foot) if foot.distance_m > reach_m => {
                 let name = &self.names[foot.line];
                 (
-                    format!("{name}, the nearest, is {:.2} m off and the reach is {reach_m:.2} m", foot.distance_m),
+                    format!(
+                        "{name}, the nearest, is {:.2} m off and the reach is {reach_m:.2} m",
+                        foot.distance_m
+                    ),
                     Some(foot),
                 )
             }
             Some(foot) => (
-                format!("{}, {:.2} m off, has its own label there", self.names[foot.line], foot.distance_m),
+                format!(
+                    "{}, {:.2} m off, has its own label there",
+                    self.names[foot.line], foot.distance_m
+                ),
                 Some(foot),
             ),
             None => (format!("no tendon is within {:.2} m", SEEN * reach_m), None),
@@ -241,13 +256,24 @@ impl Near<'_> {
             strays.extend(beside(texts[label], kind(readings[label])));
         }
         strays.extend(unread.iter().flat_map(|text| beside(text, None)));
-        for Doubt { label, hosts, stations_m, .. } in settled.doubts.iter().filter(|d| d.tied) {
-            strays.extend(hosts.iter().zip(stations_m).map(|(&line, &station_m)| Stray {
-                line,
-                station_m,
-                kind: kind(readings[*label]),
-                content: texts[*label].content.clone(),
-            }));
+        for Doubt {
+            label,
+            hosts,
+            stations_m,
+            ..
+        } in settled.doubts.iter().filter(|d| d.tied)
+        {
+            strays.extend(
+                hosts
+                    .iter()
+                    .zip(stations_m)
+                    .map(|(&line, &station_m)| Stray {
+                        line,
+                        station_m,
+                        kind: kind(readings[*label]),
+                        content: texts[*label].content.clone(),
+                    }),
+            );
         }
         strays
     }

@@ -79,7 +79,13 @@ pub(super) fn lies(
                         && lines.get(other.line).is_some_and(|l| l.run == line.run)
                         && (other.heading_rad - foot.heading_rad).sin().abs() < 0.2
                 })
-                .map(|other| (distance_m(other.place, foot.place), other.line, other.station_m))
+                .map(|other| {
+                    (
+                        distance_m(other.place, foot.place),
+                        other.line,
+                        other.station_m,
+                    )
+                })
                 .collect();
             beside.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
             beside.truncate(BESIDE);
@@ -101,7 +107,10 @@ pub(super) fn lies(
                 off_h,
                 side_h: if with_axis { off_h } else { -off_h },
                 turn: turn_bin(text.rotation_rad - foot.heading_rad),
-                at_end: end_m <= AT_END_M.max(AT_END_HEIGHTS * text.height_m).min(length_m / 4.0),
+                at_end: end_m
+                    <= AT_END_M
+                        .max(AT_END_HEIGHTS * text.height_m)
+                        .min(length_m / 4.0),
                 beside: beside
                     .into_iter()
                     .map(|(_, line, station_m)| (line, station_m))

@@ -99,12 +99,15 @@ pub(super) fn ends(
             None => findings.push(unclaimed(symbol, reach_m)),
         }
     }
-    let ends = places.chunks(2).zip(kinds.chunks(2)).map(|(places, kinds)| {
-        [0, 1].map(|end| End {
-            kind: kinds[end],
-            place: places[end],
-        })
-    });
+    let ends = places
+        .chunks(2)
+        .zip(kinds.chunks(2))
+        .map(|(places, kinds)| {
+            [0, 1].map(|end| End {
+                kind: kinds[end],
+                place: places[end],
+            })
+        });
     (ends.collect(), findings)
 }
 

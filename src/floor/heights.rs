@@ -128,7 +128,11 @@ fn learn(lies: &[Lie], lines: &[Line], taken: &[Option<usize>], labels: usize) -
     Habits::learn(taken.iter().flatten().map(|&pairing| {
         let lie = &lies[pairing];
         let sure = choices[lie.pairing.label] == 1;
-        (lines[lie.pairing.host].run, lie, if sure { 1.0 } else { 0.2 })
+        (
+            lines[lie.pairing.host].run,
+            lie,
+            if sure { 1.0 } else { 0.2 },
+        )
     }))
 }
 

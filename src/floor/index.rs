@@ -80,7 +80,9 @@ impl Index {
             [low[0] - reach_m, low[1] - reach_m],
             [high[0] + reach_m, high[1] + reach_m],
         );
-        self.tree.locate_in_envelope_intersecting(&envelope).collect()
+        self.tree
+            .locate_in_envelope_intersecting(&envelope)
+            .collect()
     }
 
     /// Lines that pass within a distance of a place, in order, each once.
@@ -157,7 +159,11 @@ impl Chord {
                 .min(to_stretch_m(self.from, a, b))
                 .min(to_stretch_m(self.to, a, b));
         }
-        if inside(self.from, corners) { 0.0 } else { least_m }
+        if inside(self.from, corners) {
+            0.0
+        } else {
+            least_m
+        }
     }
 }
 
@@ -195,7 +201,6 @@ fn to_stretch_m(place: Coord<f64>, from: Coord<f64>, to: Coord<f64>) -> f64 {
 }
 
 fn inside(place: Coord<f64>, corners: &[Coord<f64>; 4]) -> bool {
-    let turns: [f64; 4] =
-        std::array::from_fn(|at| side(corners[at], corners[(at + 1) % 4], place));
+    let turns: [f64; 4] = std::array::from_fn(|at| side(corners[at], corners[(at + 1) % 4], place));
     turns.iter().all(|&turn| turn >= 0.0) || turns.iter().all(|&turn| turn <= 0.0)
 }

@@ -63,7 +63,11 @@ pub(super) fn labels<'a>(
             };
             let readable = height(&text.content, conventions).is_some();
             if readable && label.level_lines {
-                findings.push(unread(text, "is a height, but no level line is within reach", expected));
+                findings.push(unread(
+                    text,
+                    "is a height, but no level line is within reach",
+                    expected,
+                ));
             } else {
                 findings.push(unread(text, "cannot be read", expected));
                 if label.heights {

@@ -155,7 +155,8 @@ fn role(sets: &[GlobSet; 9], name: &str) -> Role {
 
 /// Whether a shape lies somewhere and has a length.
 pub(super) fn sound(shape: &Shape) -> bool {
-    let finite = |place: Option<Coord<f64>>| place.is_some_and(|p| p.x.is_finite() && p.y.is_finite());
+    let finite =
+        |place: Option<Coord<f64>>| place.is_some_and(|p| p.x.is_finite() && p.y.is_finite());
     let path = &shape.path;
     path.length_m().is_finite() && finite(path.start()) && finite(path.end())
 }

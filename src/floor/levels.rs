@@ -139,7 +139,10 @@ fn readings(
                 let feet = tendons.feet(text.place, reach_m + text.height_m);
                 let nearer = feet.iter().any(|foot| foot.distance_m < to_level_m);
                 let parallel = path.project(text.place).is_some_and(|foot| {
-                    (path.heading_at(foot.station_m) - text.rotation_rad).sin().abs() < 0.3
+                    (path.heading_at(foot.station_m) - text.rotation_rad)
+                        .sin()
+                        .abs()
+                        < 0.3
                 });
                 if nearer || !parallel {
                     continue;
@@ -190,9 +193,10 @@ fn cross(
                 continue;
             };
             let held = &mut of_line[foot.line];
-            if held.iter().any(|h| {
-                (h.station_m - foot.station_m).abs() < ONE_M && h.reading == reading
-            }) {
+            if held
+                .iter()
+                .any(|h| (h.station_m - foot.station_m).abs() < ONE_M && h.reading == reading)
+            {
                 continue;
             }
             let length_m = line.path.length_m();
@@ -210,5 +214,8 @@ fn cross(
 fn longer(from: Coord<f64>, to: Coord<f64>) -> (Coord<f64>, Coord<f64>) {
     let stretch = Segment::Line { from, to };
     let length_m = distance_m(from, to);
-    (stretch.place_at(-SHORT_M), stretch.place_at(length_m + SHORT_M))
+    (
+        stretch.place_at(-SHORT_M),
+        stretch.place_at(length_m + SHORT_M),
+    )
 }

@@ -89,7 +89,10 @@ fn costs(
     }));
     let mut letters: BTreeMap<(Run, String), f64> = BTreeMap::new();
     for lie in held() {
-        let key = (lines[lie.pairing.host].run, prefix(&texts[lie.pairing.label]));
+        let key = (
+            lines[lie.pairing.host].run,
+            prefix(&texts[lie.pairing.label]),
+        );
         *letters.entry(key).or_default() += sure(lie.pairing.label);
     }
     lies.iter()
@@ -189,10 +192,18 @@ pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
                 let upright = axis_rad > std::f64::consts::FRAC_PI_4;
                 let across_m = (cos * middle.y - sin * middle.x) * if upright { -1.0 } else { 1.0 };
                 let along_m = cos * middle.x + sin * middle.y;
-                ((across_m * 1000.0).round(), (along_m * 1000.0).round(), line)
+                (
+                    (across_m * 1000.0).round(),
+                    (along_m * 1000.0).round(),
+                    line,
+                )
             })
             .collect();
-        order.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.total_cmp(&b.1)).then(a.2.cmp(&b.2)));
+        order.sort_by(|a, b| {
+            a.0.total_cmp(&b.0)
+                .then(a.1.total_cmp(&b.1))
+                .then(a.2.cmp(&b.2))
+        });
         let free = (1_u32..)
             .map(|number| format!("{letter}{number:03}"))
             .filter(|name| !used.contains(name));

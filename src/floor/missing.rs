@@ -275,7 +275,10 @@ fn beside(
         });
         names.push(tendons[other].mark.clone());
     }
-    if !needed.iter().all(|&kind| agreed.iter().any(|&(k, _)| k == kind)) {
+    if !needed
+        .iter()
+        .all(|&kind| agreed.iter().any(|&(k, _)| k == kind))
+    {
         return Vec::new();
     }
     let because = format!("{} beside it has one here", names.join(" and "));
@@ -310,23 +313,24 @@ fn stray(
         .map(|stray| Lack {
             kind: *kind,
             station_m: stray.station_m,
-            because: format!("the text {:?} near to it belongs to no tendon", stray.content),
+            because: format!(
+                "the text {:?} near to it belongs to no tendon",
+                stray.content
+            ),
         })
         .collect()
 }
 
 /// Columns between two points, over which a tendon ought to be high.
-fn over_columns(
-    path: &Path,
-    columns: &Columns<'_>,
-    before: &Point,
-    after: &Point,
-) -> Vec<Lack> {
+fn over_columns(path: &Path, columns: &Columns<'_>, before: &Point, after: &Point) -> Vec<Lack> {
     let clear = |point: &Point| match point.kind {
         PointKind::Anchor => AT_EDGE_M,
         _ => AT_EDGE_M.min((after.station_m - before.station_m) / 4.0),
     };
-    let (from_m, to_m) = (before.station_m + clear(before), after.station_m - clear(after));
+    let (from_m, to_m) = (
+        before.station_m + clear(before),
+        after.station_m - clear(after),
+    );
     let mut lacks: Vec<Lack> = Vec::new();
     for (middle, column) in columns.along(path, from_m, to_m) {
         let Some(foot) = path.project(middle) else {

@@ -125,7 +125,9 @@ fn nodes(ends: &[Option<(Coord<f64>, f64)>], gap_m: f64) -> Vec<Vec<usize>> {
         let mut next = 0;
         while let Some(&end) = group.get(next) {
             next += 1;
-            let Some((place, _)) = ends[end] else { continue };
+            let Some((place, _)) = ends[end] else {
+                continue;
+            };
             for near in tree.locate_within_distance([place.x, place.y], gap_m * gap_m) {
                 if !seen[near.data] {
                     seen[near.data] = true;

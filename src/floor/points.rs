@@ -108,16 +108,29 @@ fn merged(
             held.torn |= both_lines;
             let found = Finding::new(
                 &LEVEL_LINE_DIFFERS,
-                if both_lines { Level::Error } else { Level::Warning },
+                if both_lines {
+                    Level::Error
+                } else {
+                    Level::Warning
+                },
                 format!(
                     "{} and {} at one place; {}",
                     said(held.reading, *by_label),
                     said(new.reading, labelled),
-                    if both_lines { "neither was used" } else { "the label was used" }
+                    if both_lines {
+                        "neither was used"
+                    } else {
+                        "the label was used"
+                    }
                 ),
                 "correct the level line or the label",
             );
-            findings.push(found.on_tendon(mark).at_station(height.station_m).at_place(place));
+            findings.push(
+                found
+                    .on_tendon(mark)
+                    .at_station(height.station_m)
+                    .at_place(place),
+            );
         }
         if labelled {
             *held = new;
@@ -128,7 +141,8 @@ fn merged(
 }
 
 fn agree(a: HeightText, b: HeightText) -> bool {
-    (a.value_m - b.value_m).abs() < SAME_M && (a.word == b.word || a.word.is_none() || b.word.is_none())
+    (a.value_m - b.value_m).abs() < SAME_M
+        && (a.word == b.word || a.word.is_none() || b.word.is_none())
 }
 
 fn said(reading: HeightText, by_label: bool) -> String {
@@ -238,10 +252,18 @@ fn bare(
             .cmp(&worded(b))
             .then_with(|| {
                 let (a, b) = (off(a), off(b));
-                if (a - b).abs() < 1e-6 { std::cmp::Ordering::Equal } else { a.total_cmp(&b) }
+                if (a - b).abs() < 1e-6 {
+                    std::cmp::Ordering::Equal
+                } else {
+                    a.total_cmp(&b)
+                }
             })
             .then_with(|| place(a).x.total_cmp(&place(b).x))
             .then_with(|| place(a).y.total_cmp(&place(b).y))
     });
-    if chosen == Some(at) { kind } else { PointKind::Support }
+    if chosen == Some(at) {
+        kind
+    } else {
+        PointKind::Support
+    }
 }

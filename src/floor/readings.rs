@@ -187,7 +187,9 @@ const SINGLES: &[(char, u8)] = &[
 fn plain(text: &str) -> Option<f64> {
     let digits = text.strip_prefix(['-', '+']).unwrap_or(text);
     let fits = digits.starts_with(|c: char| c.is_ascii_digit())
-        && digits.chars().all(|c| c.is_ascii_digit() || c == '.' || c == ',');
+        && digits
+            .chars()
+            .all(|c| c.is_ascii_digit() || c == '.' || c == ',');
     if !fits {
         return None;
     }
@@ -220,7 +222,9 @@ mod tests {
                 "{text}: {found:?}"
             );
         }
-        for text in ["", "H", "1/0", "12a", "1/", "/8", "--3", "NaN", "inf", "1.2.3"] {
+        for text in [
+            "", "H", "1/0", "12a", "1/", "/8", "--3", "NaN", "inf", "1.2.3",
+        ] {
             assert_eq!(length_m(text, LengthUnit::Mm), None, "{text}");
         }
     }

@@ -313,8 +313,8 @@ impl<'a, S: Stakes> Settlement<'a, S> {
                 if (other_m - station_m).abs() > self.stakes.apart_m() || on_the_way(nodes, node, out) {
                     continue;
                 }
-                let next = cost + own + self.entering(host, pairing, Some(other))
-                    - self.stakes.own(other);
+                let next =
+                    cost + own + self.entering(host, pairing, Some(other)) - self.stakes.own(other);
                 let held = cheapest.get(&out).copied().unwrap_or(f64::INFINITY);
                 if next < below + 0.5 && next < held - GAIN && nodes.len() < BREADTH {
                     cheapest.insert(out, next);

@@ -181,7 +181,11 @@ impl Board {
         };
         let (dx, dy) = (to.x - from.x, to.y - from.y);
         let heading_rad = dy.atan2(dx);
-        let drawn = if dice.below(2) == 0 { [from, to] } else { [to, from] };
+        let drawn = if dice.below(2) == 0 {
+            [from, to]
+        } else {
+            [to, from]
+        };
         self.shape(layer, Path::through(&drawn), false);
         self.insert("TENDON-END", "LIVE-END", from);
         self.insert("TENDON-END", "DEAD-END", to);
@@ -192,7 +196,10 @@ impl Board {
             step(from, heading_rad, mark_m),
             heading_rad,
             left,
-            Style { turn: Turn::Along, ..style },
+            Style {
+                turn: Turn::Along,
+                ..style
+            },
             dice,
         );
         for &(kind, along_m, millimetres) in &meant.heights {
@@ -236,7 +243,11 @@ impl Board {
         let wide_m = 0.85 * h * f64::from(u32::try_from(content.len()).unwrap_or(1));
         let normal_rad = heading_rad + if left { 1.0 } else { -1.0 } * std::f64::consts::FRAC_PI_2;
         let readable = |angle_rad: f64| {
-            if angle_rad.cos() < -1e-9 { angle_rad + std::f64::consts::PI } else { angle_rad }
+            if angle_rad.cos() < -1e-9 {
+                angle_rad + std::f64::consts::PI
+            } else {
+                angle_rad
+            }
         };
         let rotation_rad = if along { readable(heading_rad) } else { 0.0 };
         // Half the text's extent square to the line, so that its edge stands `off_m` away.
@@ -324,7 +335,11 @@ impl Board {
                 .points
                 .iter()
                 .map(|p| {
-                    let along_m = if forward { p.station_m } else { length_m - p.station_m };
+                    let along_m = if forward {
+                        p.station_m
+                    } else {
+                        length_m - p.station_m
+                    };
                     (p.kind, along_m, p.height_m)
                 })
                 .collect();
@@ -339,12 +354,18 @@ impl Board {
                     Some(place) => {
                         found.swap_remove(place);
                     }
-                    None => wrong.push(format!("{}: {kind:?} {millimetres} at {along_m:.2} not found", meant.mark)),
+                    None => wrong.push(format!(
+                        "{}: {kind:?} {millimetres} at {along_m:.2} not found",
+                        meant.mark
+                    )),
                 }
             }
             for (kind, along_m, height_m) in found {
                 if kind != PointKind::Anchor {
-                    wrong.push(format!("{}: {kind:?} {height_m:?} at {along_m:.2} not meant", meant.mark));
+                    wrong.push(format!(
+                        "{}: {kind:?} {height_m:?} at {along_m:.2} not meant",
+                        meant.mark
+                    ));
                 }
             }
         }
@@ -382,7 +403,14 @@ pub fn floor(grid: Grid, style: Style, dice: &mut Dice) -> Board {
     let ys = spans(grid.bays[1], dice);
     let (wide, deep) = (xs[xs.len() - 1] + 0.3, ys[ys.len() - 1] + 0.3);
     board.rectangle("SLAB-EDGE", (0.0, 0.0), (wide, deep));
-    board.text("SLAB-ZONE", "T250", at(wide / 2.0 + 0.77, deep / 2.0 + 0.61), 0.25, 0.0, true);
+    board.text(
+        "SLAB-ZONE",
+        "T250",
+        at(wide / 2.0 + 0.77, deep / 2.0 + 0.61),
+        0.25,
+        0.0,
+        true,
+    );
     for &x in &xs {
         for &y in &ys {
             board.rectangle("COLUMN", (x - 0.25, y - 0.25), (x + 0.25, y + 0.25));
@@ -415,7 +443,11 @@ pub fn floor(grid: Grid, style: Style, dice: &mut Dice) -> Board {
         for place in 0..grid.band {
             let off_m = 0.3 * (f64::from(place) - f64::from(grid.band - 1) / 2.0);
             let y = (y + off_m).clamp(0.1, deep - 0.1);
-            if board.meant.iter().any(|m| m.run == Run::Banded && (m.from.y - y).abs() < 0.05) {
+            if board
+                .meant
+                .iter()
+                .any(|m| m.run == Run::Banded && (m.from.y - y).abs() < 0.05)
+            {
                 continue;
             }
             number += 1;

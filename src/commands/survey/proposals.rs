@@ -53,11 +53,9 @@ pub(super) fn proposals(
         }
     }
     blocks(contents, job, &mut proposals);
-    unit(drawing, contents, job, &proposals)
-        .into_iter()
-        .for_each(|proposal| {
-            proposals.insert("drawing.unit".to_owned(), proposal);
-        });
+    if let Some(proposal) = unit(drawing, contents, job, &proposals) {
+        proposals.insert("drawing.unit".to_owned(), proposal);
+    }
     keep_given(job_file, &mut proposals);
     proposals
 }
@@ -120,6 +118,10 @@ fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
     let name = name.to_uppercase();
     let says = |words: &[&str]| words.iter().any(|word| name.contains(word));
     let most = |part: usize, all: usize| all > 0 && part * 2 > all;
+    // Grid lines carry bubbles at their ends and numbers in them: they look like tendons and heights.
+    if says(&["GRID", "AXIS", "AXES"]) {
+        return None;
+    }
     let open = held.open_m.len();
     if most(held.thicknesses, held.texts) {
         return Some("slab_zone");
@@ -127,7 +129,7 @@ fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
     if most(held.strands, held.texts) {
         return Some("marks");
     }
-    if most(held.heights, held.texts) && held.texts >= 3 && open == 0 && !says(&["GRID", "AXIS"]) {
+    if most(held.heights, held.texts) && held.texts >= 3 && open == 0 {
         return Some("heights");
     }
     if says(&["OPENING", "VOID", "HOLE"]) {
