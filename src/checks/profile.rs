@@ -52,7 +52,10 @@ fn in_a_row(
         .points
         .iter()
         // As drawn: a point that other tendons say belongs here is not on the drawing.
-        .filter(|point| point.kind != PointKind::Support && (point.height_m.is_some() || point.kind == PointKind::Anchor))
+        .filter(|point| {
+            point.kind != PointKind::Support
+                && (point.height_m.is_some() || point.kind == PointKind::Anchor)
+        })
         .collect();
     let pairs: Vec<(f64, f64)> = fixed
         .windows(2)

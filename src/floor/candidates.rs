@@ -94,7 +94,10 @@ pub(super) fn lies(
             let height_m = text.height_m.max(1e-6);
             let length_m = line.path.length_m();
             let off_h = (cos * dy - sin * dx) / height_m;
-            let axis_rad = axes.iter().find(|(run, _)| *run == line.run).map_or(0.0, |&(_, axis)| axis);
+            let axis_rad = axes
+                .iter()
+                .find(|(run, _)| *run == line.run)
+                .map_or(0.0, |&(_, axis)| axis);
             let with_axis = (foot.heading_rad - axis_rad).cos() >= 0.0;
             let end_m = foot.station_m.min(length_m - foot.station_m);
             lies.push(Lie {

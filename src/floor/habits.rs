@@ -10,6 +10,9 @@ const SIDES: usize = 2 * BINS;
 /// Width of a bin, text heights.
 const BIN_H: f64 = 0.25;
 
+/// Most that habit may cost.
+const MOST: f64 = 3.2;
+
 /// How the labels of one run stand to their tendons.
 #[derive(Debug, Clone)]
 struct Habit {
@@ -56,9 +59,11 @@ impl Habits {
             Run::Banded => &self.banded,
             Run::Distributed => &self.distributed,
         };
-        0.7 * rarity(&habit.turns, lie.turn).min(3.0)
+        let strange = 0.7 * rarity(&habit.turns, lie.turn).min(3.0)
             + 0.6 * rarity(&habit.offs, side_bin(lie.side_h)).min(3.0)
-            + 0.4 * rarity(&habit.gaps, gap_bin(lie.gap_h)).min(3.0)
+            + 0.4 * rarity(&habit.gaps, gap_bin(lie.gap_h)).min(3.0);
+        // However strangely a label stands, it belongs to the one tendon that lacks it rather than to nobody.
+        strange.min(MOST)
     }
 }
 

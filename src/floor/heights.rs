@@ -225,7 +225,7 @@ fn resemblance(reading: HeightText, lie: &Lie, known: &[Vec<Height>]) -> f64 {
     matches.sort_by(f64::total_cmp);
     match (lie.beside.len(), matches.as_slice()) {
         (0, _) => 0.8,
-        (_, []) => 1.8,
+        (_, []) => 2.6,
         (1 | 2, [one]) => *one,
         (_, [one]) => one + 0.4,
         (_, [one, two, ..]) => f64::midpoint(*one, *two),

@@ -310,7 +310,9 @@ impl<'a, S: Stakes> Settlement<'a, S> {
                     station_m: other_m,
                     ..
                 } = self.pairings[other];
-                if (other_m - station_m).abs() > self.stakes.apart_m() || on_the_way(nodes, node, out) {
+                if (other_m - station_m).abs() > self.stakes.apart_m()
+                    || on_the_way(nodes, node, out)
+                {
                     continue;
                 }
                 let next =

@@ -122,9 +122,9 @@ def draw(seed, folder):
     zones = []
     if rng.random() < 0.5:
         x, y = rng.choice(lines_x[1:-1] or [lines_x[0]]), rng.choice(lines_y[1:-1] or [lines_y[0]])
-        plan.line("SLAB-ZONE", [(x - 1.4, y - 1.4), (x + 1.4, y - 1.4), (x + 1.4, y + 1.4), (x - 1.4, y + 1.4)], True)
+        plan.line("SLAB-ZONE", [(x - 1.37, y - 1.37), (x + 1.37, y - 1.37), (x + 1.37, y + 1.37), (x - 1.37, y + 1.37)], True)
         plan.text("SLAB-ZONE", f"T{thickness + 150}", (x - 1.2, y - 1.1), 0.2, 0, False)
-        zones.append((x - 1.4, y - 1.4, x + 1.4, y + 1.4, thickness + 150))
+        zones.append((x - 1.37, y - 1.37, x + 1.37, y + 1.37, thickness + 150))
 
     def local(x, y):
         return next((t for a, b, c, d, t in zones if a <= x <= c and b <= y <= d), thickness)
