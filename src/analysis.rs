@@ -15,7 +15,7 @@ pub use self::refusals::{Refusal, rules};
 use crate::checks::{self, Ground, Worked};
 use crate::finding::Finding;
 use crate::floor::{Floor, Tendon};
-use crate::job::Job;
+use crate::job::{Fallback, Job};
 use crate::losses::precompression::{Crossing, Sections};
 use crate::losses::{Effective, Forces, Stressed, steel};
 use crate::profile::{self, Profile};
@@ -31,6 +31,17 @@ pub struct Analysis {
     pub findings: Vec<Finding>,
     /// What was assumed, in sentences.
     pub assumptions: Vec<String>,
+    /// Keys that the job did not give, with what holds in their place.
+    pub fallbacks: Vec<Fallback>,
+}
+
+impl Analysis {
+    /// Everything that was assumed, in sentences: of the floor, and for want of a key.
+    pub fn all_assumptions(&self) -> Vec<String> {
+        let said = self.assumptions.iter().cloned();
+        said.chain(self.fallbacks.iter().map(Fallback::to_string))
+            .collect()
+    }
 }
 
 /// A tendon worked out, as far as it could be.
@@ -126,6 +137,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         results,
         findings,
         assumptions,
+        fallbacks: Vec::new(),
     }
 }
 

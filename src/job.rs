@@ -4,6 +4,7 @@
 //! and where its default comes from. [`read`] walks a file against it, [`file`] writes a file from it.
 
 use std::collections::BTreeSet;
+use std::fmt;
 
 mod default;
 pub mod key;
@@ -33,9 +34,36 @@ pub struct Resolved {
 }
 
 impl Resolved {
+    /// Every key that the file did not give, with what holds in its place.
+    pub fn fallbacks(&self) -> Vec<Fallback> {
+        writing::fallbacks(self)
+    }
+
     /// A sentence for every default that is used, with its source.
     pub fn assumptions(&self) -> Vec<String> {
-        writing::assumptions(self)
+        self.fallbacks().iter().map(Fallback::to_string).collect()
+    }
+}
+
+/// A key that the job file did not give.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Fallback {
+    /// Table of the key, such as `stressing`.
+    pub table: &'static str,
+    /// Its name in the result, such as `draw_in_mm`.
+    pub name: String,
+    /// Its default, as a job file would write it; `None` where there is none.
+    pub value: Option<String>,
+    /// Where the default comes from, or what happens without one.
+    pub source: &'static str,
+}
+
+impl fmt::Display for Fallback {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        match &self.value {
+            Some(value) => write!(f, "{} = {value} (default: {})", self.name, self.source),
+            None => write!(f, "{} not given: {}", self.name, self.source),
+        }
     }
 }
 

@@ -355,7 +355,7 @@ fn keys_that_the_rules_name_are_keys() {
     for rule in tautplan::checks::rules() {
         for found in pattern.captures_iter(rule.meaning) {
             named += 1;
-            let key = tautplan::job::keys::find(&found[1], &found[2]);
+            let key = job::keys::find(&found[1], &found[2]);
             assert!(key.is_some(), "{}: {}", rule.name, &found[0]);
         }
     }

@@ -158,6 +158,7 @@ fn analysis() -> Analysis {
         results,
         findings,
         assumptions: vec!["draw-in 6 mm: the job gives none".to_owned()],
+        fallbacks: Vec::new(),
     }
 }
 

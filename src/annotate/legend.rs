@@ -63,7 +63,7 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     for line in inputs(job) {
         column.sentence(&line);
     }
-    match analysis.assumptions.len() {
+    match analysis.assumptions.len() + analysis.fallbacks.len() {
         0 => {}
         1 => column.sentence("One value was assumed, not given: the result file says which"),
         more => column.sentence(&format!(

@@ -35,7 +35,7 @@ pub struct Corner {
 }
 
 /// Turns smaller than this are drafting noise, not corners.
-const CORNER_RAD: f64 = 1e-9;
+const CORNER_RAD: f64 = 1e-6;
 
 impl Path {
     /// A line from its pieces; pieces without length are dropped.

@@ -7,7 +7,7 @@ use serde_json::Value;
 
 use super::key::{Key, Kind, toml_text};
 use super::keys::{TABLES, of_table};
-use super::{Job, Resolved};
+use super::{Fallback, Job, Resolved};
 
 /// A value that the drawing itself suggests for a key.
 #[derive(Debug, Clone, PartialEq)]
@@ -89,23 +89,21 @@ fn capital(text: &str) -> String {
         .unwrap_or_default()
 }
 
-/// A sentence for every key that the file left at its default.
-pub(super) fn assumptions(resolved: &Resolved) -> Vec<String> {
+/// Every key that the file did not give.
+pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
     super::keys::KEYS
         .iter()
         .filter(|key| !resolved.given.contains(&key.path()))
         .filter_map(|key| {
-            let name = key.input_name();
-            match key.value(&resolved.job) {
-                Some(value) => Some(format!(
-                    "{name} = {} (default: {})",
-                    toml_text(&value),
-                    key.source
-                )),
-                // The one form of wobble that is not used says nothing.
-                None if key.name.starts_with("wobble") => None,
-                None => Some(format!("{name} not given: {}", key.source)),
-            }
+            let value = key.value(&resolved.job).map(|value| toml_text(&value));
+            // The one form of wobble that is not used says nothing.
+            let silent = value.is_none() && key.name.starts_with("wobble");
+            (!silent).then(|| Fallback {
+                table: key.table,
+                name: key.input_name(),
+                value,
+                source: key.source,
+            })
         })
         .collect()
 }

@@ -6,7 +6,7 @@ mod forces;
 mod friction;
 
 use super::DrawingFacts;
-use super::summary::CAUTIONS;
+use super::summary::{CAUTIONS, assumed};
 use super::table::{Align, plain, table};
 use crate::analysis::{Analysis, TendonResult};
 use crate::floor::Tendon;
@@ -53,7 +53,7 @@ fn sheet(
         ),
     }
     parts.push(findings(analysis, tendon));
-    parts.push(assumptions(analysis));
+    parts.push(assumed(analysis));
     parts.push(CAUTIONS.to_owned());
     parts.join("\n")
 }
@@ -82,15 +82,6 @@ fn findings(analysis: &Analysis, tendon: &Tendon) -> String {
     } else {
         format!("Findings on this tendon:\n{}", own.concat())
     }
-}
-
-fn assumptions(analysis: &Analysis) -> String {
-    let lines: Vec<String> = analysis
-        .assumptions
-        .iter()
-        .map(|line| format!("  {}\n", plain(line)))
-        .collect();
-    format!("Assumed:\n{}", lines.concat())
 }
 
 /// A table whose first `words` columns hold words and the rest numbers.

@@ -17,7 +17,7 @@ struct Result<'a> {
     drawing: Drawing<'a>,
     #[serde(serialize_with = "in_order")]
     inputs: &'a [(String, Value)],
-    assumptions: &'a [String],
+    assumptions: Vec<String>,
     tendons: Vec<TendonRecord<'a>>,
     findings: Vec<FindingRecord<'a>>,
 }
@@ -39,7 +39,7 @@ pub fn json(facts: &DrawingFacts, inputs: &[(String, Value)], analysis: &Analysi
             unit_m: number(facts.unit_m),
         },
         inputs,
-        assumptions: &analysis.assumptions,
+        assumptions: analysis.all_assumptions(),
         tendons: pair(analysis)
             .map(|(tendon, result)| TendonRecord::of(tendon, result))
             .collect(),

@@ -8,6 +8,7 @@ use crate::analysis::{Analysis, pair};
 use crate::checks::{Turning, turning};
 use crate::finding::{Finding, Level};
 use crate::floor::{Run, Tendon};
+use crate::job::Fallback;
 use crate::losses::Forces;
 
 /// Tendons in the table of the worst.
@@ -30,7 +31,7 @@ pub fn summary(facts: &DrawingFacts, analysis: &Analysis, files: &[String]) -> S
     let mut parts = vec![counts(facts, analysis)];
     parts.extend(worst(analysis));
     parts.push(findings(&analysis.findings));
-    parts.extend(list("Assumed:", &analysis.assumptions));
+    parts.push(assumed(analysis));
     parts.extend(list("Written:", files));
     parts.push(CAUTIONS.to_owned());
     parts.join("\n")
@@ -167,6 +168,46 @@ fn named(found: &[&Finding]) -> String {
     let more = if marks.len() > NAMED { ", ..." } else { "" };
     let shown: Vec<String> = marks.iter().take(NAMED).map(|mark| plain(mark)).collect();
     shown.join(", ") + more
+}
+
+/// Tables of the job whose values are engineering figures; the rest are conventions of reading and limits.
+const FIGURES: [&str; 6] = [
+    "slab",
+    "height",
+    "system",
+    "stressing",
+    "profile",
+    "long_term",
+];
+
+/// What was assumed: in sentences of the floor, in short of the job's keys; the result file has them in full.
+pub(super) fn assumed(analysis: &Analysis) -> String {
+    let mut lines = analysis.assumptions.clone();
+    let (figures, others): (Vec<&Fallback>, Vec<&Fallback>) = analysis
+        .fallbacks
+        .iter()
+        .partition(|key| FIGURES.contains(&key.table));
+    let short = figures
+        .iter()
+        .filter(|key| !key.name.contains("pattern") && !key.name.contains("word"));
+    let short: Vec<String> = short
+        .filter_map(|key| {
+            let value = key.value.as_ref()?;
+            (value.len() < 40).then(|| format!("{} {value}", key.name))
+        })
+        .collect();
+    lines.extend(short.chunks(4).map(|some| some.join(", ")));
+    if !others.is_empty() {
+        lines.push(format!(
+            "and {} conventions of reading and limits at their defaults; the result file lists every default with its source",
+            others.len()
+        ));
+    }
+    list(
+        "Assumed, since neither drawing nor job file says otherwise:",
+        &lines,
+    )
+    .unwrap_or_else(|| "Nothing was assumed: the job file gives every key.\n".to_owned())
 }
 
 fn list(title: &str, items: &[String]) -> Option<String> {

@@ -23,6 +23,7 @@ pub(super) fn analysis(tendons: Vec<Worked>) -> Analysis {
         results,
         findings: Vec::new(),
         assumptions: vec!["the drawing names no unit; millimetres are assumed".to_owned()],
+        fallbacks: Vec::new(),
     }
 }
 

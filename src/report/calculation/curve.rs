@@ -45,7 +45,7 @@ pub(super) fn part(job: &Job, profile: &Profile) -> String {
         ],
         rows,
     ));
-    for bend in &profile.bends {
+    for bend in profile.bends.iter().filter(|bend| bend.angle_rad > 5e-7) {
         text.push(format!(
             "  bend at station {:.3} m (a bare vertex in plan, or a break in slope): {:.6} rad at one point\n",
             bend.station_m, bend.angle_rad
