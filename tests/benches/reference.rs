@@ -11,7 +11,10 @@ use std::time::Instant;
 const PAIRS: usize = 7;
 
 fn main() {
-    let arguments: Vec<String> = std::env::args().skip(1).filter(|a| a != "--bench").collect();
+    let arguments: Vec<String> = std::env::args()
+        .skip(1)
+        .filter(|a| a != "--bench")
+        .collect();
     match arguments.as_slice() {
         [mode, file] if mode == "--crate-load" => crate_load(file),
         [mode, file] if mode == "--whole-job" => whole_job(file),
@@ -41,9 +44,20 @@ fn compare(file: &Path) {
     }
     let seconds = |runs: &[Run]| middle(runs.iter().map(|run| run.seconds).collect());
     let memory = |runs: &[Run]| middle(runs.iter().map(|run| run.peak_bytes).collect()) / size;
-    println!("crate's load alone   {:.3} s   peak {:.1} x file", seconds(&loads), memory(&loads));
-    println!("whole job            {:.3} s   peak {:.1} x file", seconds(&jobs), memory(&jobs));
-    println!("whole job / load     {:.2} (median of {PAIRS} pairs)", middle(ratios));
+    println!(
+        "crate's load alone   {:.3} s   peak {:.1} x file",
+        seconds(&loads),
+        memory(&loads)
+    );
+    println!(
+        "whole job            {:.3} s   peak {:.1} x file",
+        seconds(&jobs),
+        memory(&jobs)
+    );
+    println!(
+        "whole job / load     {:.2} (median of {PAIRS} pairs)",
+        middle(ratios)
+    );
 }
 
 fn middle(mut values: Vec<f64>) -> f64 {
@@ -53,7 +67,11 @@ fn middle(mut values: Vec<f64>) -> f64 {
 
 fn child(mode: &str, file: &Path) -> Run {
     let own = std::env::current_exe().expect("own path");
-    let output = Command::new(own).arg(mode).arg(file).output().expect("child runs");
+    let output = Command::new(own)
+        .arg(mode)
+        .arg(file)
+        .output()
+        .expect("child runs");
     let text = String::from_utf8_lossy(&output.stderr);
     let numbers: Vec<f64> = text
         .lines()
@@ -63,7 +81,10 @@ fn child(mode: &str, file: &Path) -> Run {
         .split_whitespace()
         .filter_map(|word| word.parse().ok())
         .collect();
-    Run { seconds: numbers[0], peak_bytes: numbers[1] }
+    Run {
+        seconds: numbers[0],
+        peak_bytes: numbers[1],
+    }
 }
 
 fn crate_load(file: &str) {
@@ -95,7 +116,15 @@ fn report(seconds: f64) {
 fn reference_floor() -> PathBuf {
     let file = PathBuf::from(env!("CARGO_MANIFEST_DIR")).join("target/reference.dxf");
     let status = Command::new(env!("CARGO"))
-        .args(["run", "--release", "--quiet", "--example", "draw-floors", "--", "reference"])
+        .args([
+            "run",
+            "--release",
+            "--quiet",
+            "--example",
+            "draw-floors",
+            "--",
+            "reference",
+        ])
         .arg(&file)
         .status()
         .expect("cargo runs");
