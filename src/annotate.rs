@@ -23,13 +23,23 @@ use crate::job::Job;
 
 use place::{Extent, Room};
 
+/// What already stands on the plan.
+#[derive(Debug, Clone, Default)]
+pub struct Surroundings {
+    /// Corners of the drawing's own texts, metres. Texts of earlier marks must not be among them, or marking a marked
+    /// drawing would push its figures about.
+    pub texts: Vec<[Coord<f64>; 4]>,
+    /// Lower left and upper right of the whole drawing, if it tells, metres.
+    pub extent: Option<[Coord<f64>; 2]>,
+}
+
 /// Draws a floor's results: forces, extensions, curves in space, findings, legend and table, in metres.
 ///
-/// `occupied` holds the corners of the drawing's own texts: what is written keeps clear of them as far as it can, and
-/// their usual height is the height of the figures. Texts of earlier marks must not be among them, or marking a marked
-/// drawing would push its figures about. The sheet follows the floor's order, so it is the same for the
-/// same floor.
-pub fn draw(analysis: &Analysis, occupied: &[[Coord<f64>; 4]], job: &Job) -> Sheet {
+/// What is written keeps clear of the drawing's own texts as far as it can, and their usual height is the height of the
+/// figures; legend and table keep clear of the whole drawing. The sheet follows the floor's order, so it is the same
+/// for the same floor.
+pub fn draw(analysis: &Analysis, around: &Surroundings, job: &Job) -> Sheet {
+    let occupied = around.texts.as_slice();
     let text_m = lanes::text_height_m(occupied);
     let mut room = Room::new(&analysis.floor, occupied);
     let lanes = lanes::lanes(&analysis.floor, &room, text_m);
@@ -44,7 +54,7 @@ pub fn draw(analysis: &Analysis, occupied: &[[Coord<f64>; 4]], job: &Job) -> She
     marks.extend(extensions);
     marks.extend(rings);
 
-    let floor = Extent::of_floor(&analysis.floor, occupied, &marks);
+    let floor = Extent::of_floor(&analysis.floor, occupied, &marks).with(around.extent);
     let letter_m = words::table_letter_m(&floor);
     let legend = legend::legend(analysis, job, letter_m);
     let table = table::table(analysis, letter_m);

@@ -31,7 +31,7 @@ const HEADS: [[&str; 2]; COLUMNS] = [
 /// Columns of words; numbers stand to the right.
 const WORDS: [usize; 3] = [0, 1, 3];
 /// Rows of one part of the table, and parts before their rows grow more.
-const MOST_ROWS: usize = 60;
+const MOST_ROWS: usize = 80;
 const MOST_PARTS: usize = 10;
 /// Row height, and blank beside a cell's text, in letter heights.
 const PITCH: f64 = 1.8;
@@ -46,7 +46,12 @@ pub(super) fn table(analysis: &Analysis, letter_m: f64) -> Block {
     let rows = rows(analysis);
     let widths_m = widths_m(&rows, letter_m);
     let part_m: f64 = widths_m.iter().sum();
+    // Parts of like length, about as high as the floor.
     let per_part = rows.len().div_ceil(MOST_PARTS).max(MOST_ROWS);
+    let per_part = rows
+        .len()
+        .div_ceil(rows.len().div_ceil(per_part).max(1))
+        .max(1);
     let mut block = Block::default();
     let top_m = 3.0 * letter_m;
     let title = format!("{HEADING}: table of tendons, forces in kN per tendon");

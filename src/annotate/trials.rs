@@ -87,11 +87,19 @@ fn bounds(quads: &[Quad]) -> (Coord<f64>, Coord<f64>) {
 
 const SERVICE: &str = layers::FORCE_TEXT[3];
 
+/// Texts of the drawing and nothing else around the floor.
+fn beside(texts: &[[Coord<f64>; 4]]) -> super::Surroundings {
+    super::Surroundings {
+        texts: texts.to_vec(),
+        extent: None,
+    }
+}
+
 #[test]
 fn figures_in_a_band_of_0_3_m_and_its_own_labels_do_not_overlap() {
     let analysis = analysis(band(8, 0.3));
     let own = labels(&analysis);
-    let sheet = draw(&analysis, &own, &Job::default());
+    let sheet = draw(&analysis, &beside(&own), &Job::default());
     let figures = boxes(&sheet, &[SERVICE, layers::EXTENSION]);
     let wanted: usize = analysis.floor.tendons.iter().map(|t| t.points.len()).sum();
     // Two extensions a tendon; at least seven figures in ten find room.
@@ -113,7 +121,7 @@ fn figures_in_a_band_of_0_3_m_and_its_own_labels_do_not_overlap() {
 fn figures_on_a_two_way_crossing_overlap_nothing_and_mostly_lie_clear_of_every_line() {
     let analysis = analysis(two_way());
     let own = labels(&analysis);
-    let sheet = draw(&analysis, &own, &Job::default());
+    let sheet = draw(&analysis, &beside(&own), &Job::default());
     let figures = boxes(&sheet, &[SERVICE]);
     let wanted: usize = analysis.floor.tendons.iter().map(|t| t.points.len()).sum();
     assert!(
@@ -141,7 +149,7 @@ fn figures_on_a_two_way_crossing_overlap_nothing_and_mostly_lie_clear_of_every_l
 #[test]
 fn where_tendons_lie_too_close_only_the_governing_figures_are_written() {
     let analysis = analysis(band(6, 0.15));
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let figures = boxes(&sheet, &[SERVICE]);
     // Both anchors, and the least force where neither anchor has it.
     assert!(
@@ -165,7 +173,7 @@ fn in_a_band_a_figure_stands_nearer_to_its_own_tendon_than_the_next_but_one() {
         }
     }
     let analysis = analysis(tendons);
-    let sheet = draw(&analysis, &labels(&analysis), &Job::default());
+    let sheet = draw(&analysis, &beside(&labels(&analysis)), &Job::default());
     for mark in on(&sheet, SERVICE) {
         let Drawn::Text { place, content, .. } = &mark.drawn else {
             panic!("{mark:?}")
@@ -179,7 +187,7 @@ fn in_a_band_a_figure_stands_nearer_to_its_own_tendon_than_the_next_but_one() {
 #[test]
 fn no_text_reads_upside_down() {
     let analysis = analysis(two_way());
-    let sheet = draw(&analysis, &labels(&analysis), &Job::default());
+    let sheet = draw(&analysis, &beside(&labels(&analysis)), &Job::default());
     for mark in &sheet.marks {
         if let Drawn::Text { rotation_rad, .. } = mark.drawn {
             assert!(rotation_rad > -1.57 && rotation_rad < 1.58, "{mark:?}");
@@ -190,7 +198,7 @@ fn no_text_reads_upside_down() {
 #[test]
 fn every_tendon_with_forces_is_coloured_end_to_end_at_all_four_stages() {
     let analysis = analysis(two_way());
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let whole_m: f64 = analysis
         .floor
         .tendons
@@ -223,7 +231,7 @@ fn every_tendon_with_forces_is_coloured_end_to_end_at_all_four_stages() {
 #[test]
 fn coloured_lengths_leave_half_of_the_spacing_free() {
     let analysis = analysis(band(5, 0.1));
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     for mark in on(&sheet, layers::FORCE[3]) {
         let Drawn::Line { width_m, .. } = mark.drawn else {
             panic!("{mark:?}")
@@ -237,7 +245,7 @@ fn a_tendon_without_forces_draws_none_and_stands_in_the_table() {
     let mut tendons = band(3, 1.0);
     without_forces(&mut tendons[1]);
     let analysis = analysis(tendons);
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let y = analysis.floor.tendons[1].ends[0].place.y;
     for layer in layers::FORCE
         .into_iter()
@@ -263,7 +271,7 @@ fn a_tendon_without_forces_draws_none_and_stands_in_the_table() {
 fn legend_and_table_keep_clear_of_the_floor_and_of_each_other() {
     let analysis = analysis(two_way());
     let own = labels(&analysis);
-    let sheet = draw(&analysis, &own, &Job::default());
+    let sheet = draw(&analysis, &beside(&own), &Job::default());
     let floor: Vec<Quad> = sheet
         .marks
         .iter()
@@ -288,7 +296,7 @@ fn a_title_beside_the_floor_is_not_written_over() {
     let title = Spot::upright(at(45.0, 0.0), 6.0, 1.0).quad(0.0);
     let mut own = labels(&analysis);
     own.push(title);
-    let sheet = draw(&analysis, &own, &Job::default());
+    let sheet = draw(&analysis, &beside(&own), &Job::default());
     for quad in boxes(&sheet, &[layers::TABLE]) {
         assert!(!overlap(&quad, &title));
     }
@@ -297,7 +305,7 @@ fn a_title_beside_the_floor_is_not_written_over() {
 #[test]
 fn extensions_in_a_band_are_smaller_than_the_gap_and_do_not_overlap() {
     let analysis = analysis(band(8, 0.2));
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let texts = boxes(&sheet, &[layers::EXTENSION]);
     assert_eq!(texts.len(), 16);
     assert_eq!(overlaps(&texts), 0);
@@ -330,7 +338,7 @@ fn each_finding_with_a_place_has_a_ring_in_a_colour_that_is_no_force() {
         Finding::new(&RULE, Level::Warning, "", "").at_place(at(20.0, 1.0)),
         Finding::new(&RULE, Level::Note, "", ""),
     ];
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let rings: Vec<(Coord<f64>, f64)> = on(&sheet, layers::FINDING)
         .filter_map(|mark| match mark.drawn {
             Drawn::Circle { centre, radius_m } => Some((centre, radius_m)),
@@ -353,7 +361,7 @@ fn each_finding_with_a_place_has_a_ring_in_a_colour_that_is_no_force() {
 #[test]
 fn the_curves_stand_at_their_true_level() {
     let analysis = analysis(band(2, 1.0));
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let lowest = on(&sheet, layers::PROFILE)
         .filter_map(|mark| match &mark.drawn {
             Drawn::Line3d { points } => Some(points.iter().map(|p| p[2])),
@@ -369,7 +377,7 @@ fn the_curves_stand_at_their_true_level() {
 #[test]
 fn the_legend_names_every_class_and_what_the_forces_rest_on() {
     let analysis = analysis(band(2, 1.0));
-    let sheet = draw(&analysis, &[], &Job::default());
+    let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let patches: Vec<_> = on(&sheet, layers::TABLE)
         .filter(|mark| matches!(mark.drawn, Drawn::Solid { .. }))
         .filter_map(|mark| mark.ink)
@@ -399,8 +407,8 @@ fn the_legend_names_every_class_and_what_the_forces_rest_on() {
 fn the_same_floor_gives_the_same_sheet_and_nothing_promises_anything() {
     let analysis = analysis(two_way());
     let own = labels(&analysis);
-    let sheet = draw(&analysis, &own, &Job::default());
-    assert_eq!(sheet, draw(&analysis, &own, &Job::default()));
+    let sheet = draw(&analysis, &beside(&own), &Job::default());
+    assert_eq!(sheet, draw(&analysis, &beside(&own), &Job::default()));
     let mut known: BTreeMap<&str, usize> =
         sheet.layers.iter().map(|l| (l.name.as_str(), 0)).collect();
     for mark in &sheet.marks {
@@ -423,7 +431,7 @@ fn the_same_floor_gives_the_same_sheet_and_nothing_promises_anything() {
 #[test]
 fn an_empty_floor_gives_legend_and_table_only() {
     let nothing = analysis(Vec::new());
-    let sheet = draw(&nothing, &[], &Job::default());
+    let sheet = draw(&nothing, &beside(&[]), &Job::default());
     assert!(on(&sheet, layers::TABLE).count() > 0);
     assert!(sheet.marks.iter().all(|mark| mark.layer == layers::TABLE));
 }
@@ -435,6 +443,6 @@ fn broken_numbers_draw_nothing_and_stop_nothing() {
         sample.forces_kn = Some([f64::NAN; 4]);
         sample.place.x = f64::NAN;
     }
-    let sheet = draw(&broken, &[[at(f64::NAN, 0.0); 4]], &Job::default());
+    let sheet = draw(&broken, &beside(&[[at(f64::NAN, 0.0); 4]]), &Job::default());
     assert_eq!(on(&sheet, layers::FORCE[3]).count(), 0);
 }

@@ -71,7 +71,7 @@ fn mark(
 
     let job = &job_file.resolved.job;
     let analysis = &done.analysis;
-    let sheet = annotate::draw(analysis, &done.occupied, job);
+    let sheet = annotate::draw(analysis, &done.around, job);
     let marked = drawing::insert(&done.source, done.facts.unit_m, &sheet).map_err(|refusal| {
         Refused::Drawing {
             path: plan.to_owned(),

@@ -2,11 +2,10 @@
 
 use std::path::Path;
 
-use geo::Coord;
-
 use super::job_file::JobFile;
 use super::{Refused, files, units};
 use crate::analysis::{self, Analysis};
+use crate::annotate::Surroundings;
 use crate::drawing::{self, Layer, Source, Wanted};
 use crate::floor;
 use crate::job::Job;
@@ -19,8 +18,8 @@ pub(super) struct Work {
     pub(super) source: Source,
     /// What reports say of it.
     pub(super) facts: DrawingFacts,
-    /// Corners of the drawing's own texts, metres.
-    pub(super) occupied: Vec<[Coord<f64>; 4]>,
+    /// What already stands on the plan.
+    pub(super) around: Surroundings,
     /// The floor, worked out.
     pub(super) analysis: Analysis,
 }
@@ -50,7 +49,10 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
             version: drawing.version,
             unit_m: drawing.unit_m,
         },
-        occupied: drawing.texts.iter().map(|text| text.corners).collect(),
+        around: Surroundings {
+            texts: drawing.texts.iter().map(|text| text.corners).collect(),
+            extent: drawing.extent,
+        },
         source,
         analysis,
     })

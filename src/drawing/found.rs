@@ -29,6 +29,8 @@ pub(super) struct Scan {
     pub(super) code_page: CodePage,
     /// `$INSUNITS`.
     pub(super) insunits: Option<i64>,
+    /// `$EXTMIN` and `$EXTMAX`: x and y as the last program to save the drawing left them, drawing units.
+    pub(super) extents: [[Option<f64>; 2]; 2],
     /// Layers of the table in its order, then those that only entities name, in order of first use.
     pub(super) layers: Vec<ScannedLayer>,
     /// Pointers of the record of layer `0` under 390, 347 and 348, as written.
@@ -146,6 +148,7 @@ impl Scan {
             code_width: if padded { code.len() } else { 0 },
             code_page: CodePage::of("", None),
             insunits: None,
+            extents: [[None; 2]; 2],
             layers: Vec::new(),
             zero_layer_pointers: [None, None, None],
             layers_have_handles: false,

@@ -2,6 +2,8 @@
 
 use std::collections::BTreeMap;
 
+use geo::Coord;
+
 use super::explode::{Book, Gatherer};
 use super::names::folded;
 use super::rules::{ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
@@ -41,12 +43,25 @@ pub fn read(source: &Source, wanted: &Wanted, unit: Option<LengthUnit>) -> (Draw
     drawing.version.clone_from(&scan.version);
     drawing.unit_m = unit_m;
     drawing.unit_from = unit_from;
+    drawing.extent = extent_of(scan, unit_m);
     drawing.layers = source.layers();
     let mut findings: Vec<Finding> = unit_finding(scan, unit_from).into_iter().collect();
     findings.extend(damage_findings(scan, &losses));
     findings.append(&mut of_blocks);
     findings.extend(code_page_finding(scan, &losses));
     (drawing, findings)
+}
+
+/// The header's extents in metres; an empty drawing's stand at ±1e20, the lower left above the upper right.
+fn extent_of(scan: &Scan, unit_m: f64) -> Option<[Coord<f64>; 2]> {
+    let [low, high] = scan.extents.map(|[x, y]| {
+        Some(Coord {
+            x: x? * unit_m,
+            y: y? * unit_m,
+        })
+    });
+    let (low, high) = (low?, high?);
+    (low.x < high.x && low.y < high.y).then_some([low, high])
 }
 
 /// Metres in a unit by its `$INSUNITS` number (DXF reference); `None` for none and for what no plan is drawn in.

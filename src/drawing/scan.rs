@@ -173,6 +173,10 @@ impl<'a> Pass<'a> {
             (b"$DWGCODEPAGE", 3) => {
                 self.code_page_name = Some(String::from_utf8_lossy(tag.word()).into_owned());
             }
+            (b"$EXTMIN", 10) => self.scan.extents[0][0] = tag.float(),
+            (b"$EXTMIN", 20) => self.scan.extents[0][1] = tag.float(),
+            (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
+            (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
             (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.

@@ -13,6 +13,9 @@ pub struct Drawing {
     pub unit_m: f64,
     /// Where the unit came from.
     pub unit_from: UnitFrom,
+    /// Lower left and upper right of everything in the drawing, if its header says so sensibly; metres. It is as old as the
+    /// last program that kept it.
+    pub extent: Option<[Coord<f64>; 2]>,
     /// Every layer, in the table's order; layers that only entities name follow, in order of first use.
     pub layers: Vec<Layer>,
     /// Lines, polylines, arcs, circles, splines.

@@ -67,6 +67,23 @@ impl Extent {
         extent
     }
 
+    /// Grown to what the drawing says is its extent, if that is about this floor: no farther off than the floor is wide.
+    pub(in crate::annotate) fn with(mut self, drawn: Option<[Coord<f64>; 2]>) -> Self {
+        let (width_m, height_m) = self.size_m();
+        let reach_m = width_m.max(height_m);
+        if let Some([low, high]) = drawn {
+            let near = low.x > self.low.x - reach_m
+                && low.y > self.low.y - reach_m
+                && high.x < self.high.x + reach_m
+                && high.y < self.high.y + reach_m;
+            if near {
+                self.add(low);
+                self.add(high);
+            }
+        }
+        self
+    }
+
     /// Width and height, metres; zero if nothing is drawn.
     pub(in crate::annotate) fn size_m(&self) -> (f64, f64) {
         if self.is_empty() {
