@@ -291,22 +291,19 @@ fn natural(mark: &str) -> Vec<(String, u64)> {
     let mut parts = vec![(String::new(), 0_u64)];
     let mut in_digits = false;
     for sign in mark.chars() {
-        match sign.to_digit(10) {
-            Some(digit) => {
-                in_digits = true;
-                if let Some((_, number)) = parts.last_mut() {
-                    *number = number.saturating_mul(10).saturating_add(u64::from(digit));
-                }
+        if let Some(digit) = sign.to_digit(10) {
+            in_digits = true;
+            if let Some((_, number)) = parts.last_mut() {
+                *number = number.saturating_mul(10).saturating_add(u64::from(digit));
             }
-            None => {
-                if in_digits {
-                    parts.push((String::new(), 0));
-                    in_digits = false;
-                }
-                if let Some((text, _)) = parts.last_mut() {
-                    text.extend(sign.to_uppercase());
-                }
-            }
+            continue;
+        }
+        if in_digits {
+            parts.push((String::new(), 0));
+            in_digits = false;
+        }
+        if let Some((text, _)) = parts.last_mut() {
+            text.extend(sign.to_uppercase());
         }
     }
     parts

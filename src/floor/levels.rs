@@ -50,7 +50,7 @@ pub(super) fn levels(
     let mut findings = Vec::new();
     for (path, said) in paths.iter().zip(readings) {
         match said.as_slice() {
-            [] => findings.push(unread(path, "has no height within reach".to_owned())),
+            [] => findings.push(unread(path, "has no height within reach")),
             [first, rest @ ..] if rest.iter().all(|other| other == first) => {
                 cross(path, *first, lines, index, &mut levels.of_line);
             }
@@ -61,7 +61,7 @@ pub(super) fn levels(
                     .collect();
                 findings.push(unread(
                     path,
-                    format!("has more than one height beside it: {}", numbers.join(", ")),
+                    &format!("has more than one height beside it: {}", numbers.join(", ")),
                 ));
             }
         }
@@ -88,7 +88,7 @@ fn level_paths(drawing: &Drawing, job: &Job, roles: &Roles) -> Vec<Path> {
     chains.iter().map(|chain| chain.path(&pieces)).collect()
 }
 
-fn unread(path: &Path, what: String) -> Finding {
+fn unread(path: &Path, what: &str) -> Finding {
     Finding::new(
         &LEVEL_LINE_UNREAD,
         Level::Error,

@@ -50,6 +50,9 @@ pub(super) struct Settlement<'a, S: Stakes> {
     taken: Vec<Option<usize>>,
 }
 
+/// What a chain costs, and each label in it with the pairing that it takes.
+pub(super) type Chain = (f64, Vec<(usize, Option<usize>)>);
+
 /// A label without a home in a search, and how it came to be so.
 struct Homeless {
     label: usize,
@@ -112,11 +115,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
 
     /// The cheapest assignment in which a label is elsewhere than it is now, and by how much it costs more; `None` where
     /// it costs more by over `margin`.
-    pub(super) fn second_best(
-        &mut self,
-        label: usize,
-        margin: f64,
-    ) -> Option<(f64, Vec<(usize, Option<usize>)>)> {
+    pub(super) fn second_best(&mut self, label: usize, margin: f64) -> Option<Chain> {
         let now = self.taken[label]?;
         let banned = self.pairings[now].host;
         let before = self.remove(label);
@@ -232,12 +231,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
     }
 
     /// Chains that start with a homeless label and cost less than `below`, cheapest first.
-    fn search(
-        &self,
-        label: usize,
-        banned: Option<usize>,
-        below: f64,
-    ) -> Vec<(f64, Vec<(usize, Option<usize>)>)> {
+    fn search(&self, label: usize, banned: Option<usize>, below: f64) -> Vec<Chain> {
         let mut nodes = vec![Homeless {
             label,
             cost: 0.0,

@@ -107,7 +107,7 @@ fn general_thickness(slab: &mut Slab, said: &[(f64, Coord<f64>)], findings: &mut
             &THICKNESS_UNKNOWN,
             Level::Error,
             "the job gives no slab.thickness and no text such as T250 stands on a slab layer outside the zones",
-            "give `thickness` in the job file's [slab] table, or write it on the drawing",
+            "give `thickness_mm` in the job file's [slab] table, or write it on the drawing",
         )),
     }
 }
