@@ -72,13 +72,14 @@ fn names(folder: &Path) -> Vec<String> {
 fn lines_on(layer: &str, insunits: Option<u8>, ends: &[[f64; 4]]) -> String {
     let mut text = String::from("0\nSECTION\n2\nHEADER\n9\n$ACADVER\n1\nAC1009\n");
     if let Some(unit) = insunits {
-        text.push_str(&format!("9\n$INSUNITS\n70\n{unit}\n"));
+        text += "9\n$INSUNITS\n70\n";
+        text += &unit.to_string();
+        text += "\n";
     }
     text.push_str("0\nENDSEC\n0\nSECTION\n2\nENTITIES\n");
     for [x0, y0, x1, y1] in ends {
-        text.push_str(&format!(
-            "0\nLINE\n8\n{layer}\n10\n{x0}\n20\n{y0}\n11\n{x1}\n21\n{y1}\n"
-        ));
+        let line = format!("0\nLINE\n8\n{layer}\n10\n{x0}\n20\n{y0}\n11\n{x1}\n21\n{y1}\n");
+        text += &line;
     }
     text.push_str("0\nENDSEC\n0\nEOF\n");
     text

@@ -58,7 +58,7 @@ fn near(found: f64, published: f64, relative: f64) {
     );
 }
 
-/// Half circle of 5 m in plan, level: EDF R&D, `Code_Aster` validation case ZZZZ347f (references marked analytic).
+/// Half circle of 5 m in plan, level: EDF R&D, `Code_Aster` validation case `ZZZZ347f` (references marked analytic).
 #[test]
 fn half_circle_one_end_both_ends_and_draw_in() {
     let radius_m = 5.0;

@@ -4,6 +4,13 @@
 //! own, and prints times, peak memory and ratios; it judges nothing. `cargo bench --bench reference -- FILE` takes
 //! another drawing.
 
+#![expect(
+    clippy::print_stdout,
+    clippy::print_stderr,
+    clippy::cast_precision_loss,
+    reason = "a measurement prints what it measured; sizes are far below 2^52"
+)]
+
 use std::path::{Path, PathBuf};
 use std::process::Command;
 use std::time::Instant;

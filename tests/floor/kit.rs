@@ -5,8 +5,8 @@ use tautplan::drawing::{Drawing, Insert, Shape, ShapeKind, Text, UnitFrom};
 use tautplan::floor::{Floor, PointKind, Run};
 use tautplan::geometry::{Path, Segment, step};
 
-/// A stream of repeatable chances (SplitMix64, published by Steele, Lea and Flood, OOPSLA 2014).
-pub struct Dice(pub u64);
+/// A stream of repeatable chances (`SplitMix64`, published by Steele, Lea and Flood, OOPSLA 2014).
+pub(crate) struct Dice(pub u64);
 
 impl Dice {
     fn next(&mut self) -> u64 {
@@ -17,15 +17,15 @@ impl Dice {
         mixed ^ (mixed >> 31)
     }
 
-    pub fn below(&mut self, sides: u32) -> u32 {
+    pub(crate) fn below(&mut self, sides: u32) -> u32 {
         u32::try_from(self.next() % u64::from(sides.max(1))).unwrap_or(0)
     }
 
-    pub fn between(&mut self, low: f64, high: f64) -> f64 {
+    pub(crate) fn between(&mut self, low: f64, high: f64) -> f64 {
         low + (high - low) * f64::from(self.below(10_000)) / 10_000.0
     }
 
-    pub fn shuffle<T>(&mut self, items: &mut [T]) {
+    pub(crate) fn shuffle<T>(&mut self, items: &mut [T]) {
         for last in (1..items.len()).rev() {
             let sides = u32::try_from(last + 1).unwrap_or(u32::MAX);
             items.swap(last, self.below(sides) as usize);
@@ -33,13 +33,13 @@ impl Dice {
     }
 }
 
-pub fn at(x: f64, y: f64) -> Coord<f64> {
+pub(crate) fn at(x: f64, y: f64) -> Coord<f64> {
     Coord { x, y }
 }
 
 /// How labels are written.
 #[derive(Clone, Copy, Debug)]
-pub struct Style {
+pub(crate) struct Style {
     pub height_m: f64,
     /// From line to the near edge of the text, in text heights: least and most.
     pub off_h: [f64; 2],
@@ -54,7 +54,7 @@ pub struct Style {
 }
 
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Turn {
+pub(crate) enum Turn {
     Along,
     Level,
     Mixed,
@@ -62,7 +62,7 @@ pub enum Turn {
 
 /// What was meant for one tendon.
 #[derive(Clone, Debug)]
-pub struct Meant {
+pub(crate) struct Meant {
     pub mark: String,
     pub run: Run,
     pub from: Coord<f64>,
@@ -73,14 +73,14 @@ pub struct Meant {
 
 /// A floor under the pencil.
 #[derive(Clone, Default)]
-pub struct Board {
+pub(crate) struct Board {
     pub drawing: Drawing,
     pub meant: Vec<Meant>,
     handles: u32,
 }
 
 impl Board {
-    pub fn new() -> Self {
+    pub(crate) fn new() -> Self {
         Self {
             drawing: Drawing {
                 unit_m: 0.001,
@@ -96,7 +96,7 @@ impl Board {
         format!("{:X}", 0x100 + self.handles)
     }
 
-    pub fn shape(&mut self, layer: &str, path: Path, closed: bool) {
+    pub(crate) fn shape(&mut self, layer: &str, path: Path, closed: bool) {
         let handle = self.handle();
         self.drawing.shapes.push(Shape {
             handle,
@@ -107,12 +107,12 @@ impl Board {
         });
     }
 
-    pub fn line(&mut self, layer: &str, points: &[(f64, f64)]) {
+    pub(crate) fn line(&mut self, layer: &str, points: &[(f64, f64)]) {
         let points: Vec<Coord<f64>> = points.iter().map(|&(x, y)| at(x, y)).collect();
         self.shape(layer, Path::through(&points), false);
     }
 
-    pub fn rectangle(&mut self, layer: &str, low: (f64, f64), high: (f64, f64)) {
+    pub(crate) fn rectangle(&mut self, layer: &str, low: (f64, f64), high: (f64, f64)) {
         let corners = [
             at(low.0, low.1),
             at(high.0, low.1),
@@ -123,7 +123,7 @@ impl Board {
         self.shape(layer, Path::through(&corners), true);
     }
 
-    pub fn insert(&mut self, layer: &str, block: &str, place: Coord<f64>) {
+    pub(crate) fn insert(&mut self, layer: &str, block: &str, place: Coord<f64>) {
         let handle = self.handle();
         self.drawing.inserts.push(Insert {
             handle,
@@ -136,7 +136,7 @@ impl Board {
     }
 
     /// A text by its middle, or by the left end of its base line.
-    pub fn text(
+    pub(crate) fn text(
         &mut self,
         layer: &str,
         content: &str,
@@ -174,7 +174,7 @@ impl Board {
     }
 
     /// A straight tendon with its mark, ends and heights; labels as the style says.
-    pub fn tendon(&mut self, meant: Meant, style: Style, dice: &mut Dice) {
+    pub(crate) fn tendon(&mut self, meant: Meant, style: Style, dice: &mut Dice) {
         let (layer, from, to) = match meant.run {
             Run::Banded => ("TENDON-BANDED", meant.from, meant.to),
             Run::Distributed => ("TENDON-DISTRIBUTED", meant.from, meant.to),
@@ -252,7 +252,7 @@ impl Board {
         let rotation_rad = if along { readable(heading_rad) } else { 0.0 };
         // Half the text's extent square to the line, so that its edge stands `off_m` away.
         let relative = rotation_rad - heading_rad;
-        let half_m = (wide_m * relative.sin().abs() + h * relative.cos().abs()) / 2.0;
+        let half_m = f64::midpoint(wide_m * relative.sin().abs(), h * relative.cos().abs());
         let middle = step(foot, normal_rad, off_m + half_m);
         if style.centred {
             self.text(layer, content, middle, h, rotation_rad, true);
@@ -272,14 +272,14 @@ impl Board {
     }
 
     /// Entities in another order.
-    pub fn shuffle(&mut self, dice: &mut Dice) {
+    pub(crate) fn shuffle(&mut self, dice: &mut Dice) {
         dice.shuffle(&mut self.drawing.shapes);
         dice.shuffle(&mut self.drawing.texts);
         dice.shuffle(&mut self.drawing.inserts);
     }
 
     /// The whole plan turned about the origin and moved.
-    pub fn moved(&self, turn_rad: f64, by: Coord<f64>) -> Self {
+    pub(crate) fn moved(&self, turn_rad: f64, by: Coord<f64>) -> Self {
         let (sin, cos) = turn_rad.sin_cos();
         let go = |p: Coord<f64>| Coord {
             x: cos * p.x - sin * p.y + by.x,
@@ -321,7 +321,7 @@ impl Board {
     }
 
     /// Heights that were meant and not found, or found and not meant, tendon by tendon.
-    pub fn wrong(&self, floor: &Floor) -> Vec<String> {
+    pub(crate) fn wrong(&self, floor: &Floor) -> Vec<String> {
         let mut wrong = Vec::new();
         for meant in &self.meant {
             let Some(tendon) = floor.tendons.iter().find(|t| t.mark == meant.mark) else {
@@ -372,14 +372,14 @@ impl Board {
         wrong
     }
 
-    pub fn labels(&self) -> usize {
+    pub(crate) fn labels(&self) -> usize {
         self.meant.iter().map(|meant| meant.heights.len()).sum()
     }
 }
 
 /// A floor of columns with bands over them and distributed tendons across.
 #[derive(Clone, Copy, Debug)]
-pub struct Grid {
+pub(crate) struct Grid {
     pub bays: [u32; 2],
     pub band: u32,
     pub spacing_m: f64,
@@ -388,7 +388,7 @@ pub struct Grid {
 }
 
 /// Draws such a floor.
-pub fn floor(grid: Grid, style: Style, dice: &mut Dice) -> Board {
+pub(crate) fn floor(grid: Grid, style: Style, dice: &mut Dice) -> Board {
     let mut board = Board::new();
     let spans = |count: u32, dice: &mut Dice| -> Vec<f64> {
         let mut at_m = 0.3;

@@ -1,4 +1,10 @@
 //! The floor stage on drawings made in code, with the truth beside them.
 
+#![expect(
+    clippy::print_stderr,
+    reason = "a failing survey of styles is read line by line"
+)]
+
 mod kit;
+mod laws;
 mod settling;
