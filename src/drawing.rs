@@ -25,7 +25,7 @@ mod types;
 mod wanted;
 mod windows;
 
-pub use insert::insert;
+pub use insert::{insert, insertion};
 pub use read::read;
 pub use refusal::Refusal;
 pub use rules::READING_RULES;

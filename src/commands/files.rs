@@ -1,5 +1,6 @@
 //! Files in and out: whole files, each complete or not at all.
 
+use std::borrow::Cow;
 use std::fs;
 use std::io::{self, Write as _};
 use std::path::{Path, PathBuf};
@@ -7,6 +8,9 @@ use std::path::{Path, PathBuf};
 use tempfile::NamedTempFile;
 
 use super::Refused;
+
+/// A file's contents, piece by piece.
+pub(super) type Pieces<'a> = Vec<Cow<'a, [u8]>>;
 
 /// A file's bytes.
 pub(super) fn read(path: &Path) -> Result<Vec<u8>, Refused> {
@@ -64,9 +68,9 @@ pub(super) fn prepare(folder: &Path) -> Result<(), Refused> {
 
 /// Writes all of these files or, if one cannot be written, none: all are complete on disk before the first takes its
 /// name.
-pub(super) fn write_all(files: &[(PathBuf, Vec<u8>)]) -> Result<(), Refused> {
+pub(super) fn write_all(files: &[(PathBuf, Pieces<'_>)]) -> Result<(), Refused> {
     let mut ready = Vec::with_capacity(files.len());
-    for (path, bytes) in files {
+    for (path, pieces) in files {
         let unwritable = |error| Refused::Unwritable {
             path: path.clone(),
             error,
@@ -75,7 +79,9 @@ pub(super) fn write_all(files: &[(PathBuf, Vec<u8>)]) -> Result<(), Refused> {
             return Err(unwritable(io::ErrorKind::IsADirectory.into()));
         }
         let mut file = temporary(&folder_of(path)).map_err(unwritable)?;
-        file.write_all(bytes)
+        pieces
+            .iter()
+            .try_for_each(|bytes| file.write_all(bytes))
             .and_then(|()| file.flush())
             .map_err(unwritable)?;
         ready.push((path, file));

@@ -4,6 +4,7 @@ use std::collections::BTreeMap;
 use std::ffi::OsString;
 use std::path::{Path, PathBuf};
 
+use super::files::Pieces;
 use super::job_file::{self, JobFile};
 use super::work::work;
 use super::{Outcome, Refused, files, refuse};
@@ -72,21 +73,24 @@ fn mark(
     let job = &job_file.resolved.job;
     let analysis = &done.analysis;
     let sheet = annotate::draw(analysis, &done.around, job);
-    let marked = drawing::insert(&done.source, done.facts.unit_m, &sheet).map_err(|refusal| {
-        Refused::Drawing {
-            path: plan.to_owned(),
-            refusal,
-        }
-    })?;
-    let contents: [Vec<u8>; 6] = [
+    let marked =
+        drawing::insertion(&done.source, done.facts.unit_m, &sheet).map_err(|refusal| {
+            Refused::Drawing {
+                path: plan.to_owned(),
+                refusal,
+            }
+        })?;
+    drop(sheet);
+    let contents: [Pieces<'_>; 6] = [
         marked,
-        report::json(&done.facts, &job.inputs(), analysis).into_bytes(),
-        report::tendons_csv(analysis).into_bytes(),
-        report::points_csv(analysis).into_bytes(),
-        report::extensions_csv(analysis).into_bytes(),
-        report::findings_csv(analysis).into_bytes(),
+        text(report::json(&done.facts, &job.inputs(), analysis)),
+        text(report::tendons_csv(analysis)),
+        text(report::points_csv(analysis)),
+        text(report::extensions_csv(analysis)),
+        text(report::findings_csv(analysis)),
     ];
-    let written: Vec<(PathBuf, Vec<u8>)> = targets(plan, out).into_iter().zip(contents).collect();
+    let written: Vec<(PathBuf, Pieces<'_>)> =
+        targets(plan, out).into_iter().zip(contents).collect();
     files::write_all(&written)?;
 
     let names: Vec<String> = written
@@ -101,6 +105,11 @@ fn mark(
         .any(|finding| finding.level == Level::Error);
     let found = if grave { Outcome::Found } else { Outcome::Done };
     Ok(found.max(printed))
+}
+
+/// A text as a file's contents.
+fn text<'a>(text: String) -> Pieces<'a> {
+    vec![text.into_bytes().into()]
 }
 
 /// Where a drawing's results go, in the order of [`ENDINGS`].

@@ -38,7 +38,7 @@ pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
     let written = if files::exists(path) {
         Err(Refused::Exists(path.clone()))
     } else {
-        files::write_all(&[(path.clone(), text.into_bytes())])
+        files::write_all(&[(path.clone(), vec![text.into_bytes().into()])])
     };
     match written {
         Ok(()) => {

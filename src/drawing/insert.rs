@@ -7,6 +7,8 @@ mod records;
 mod splice;
 mod words;
 
+use std::borrow::Cow;
+
 use self::entities::{Entities, Scale, handles_of, is_finite, shows};
 use self::handles::{Known, Supply, first_in_gap};
 use self::layers::{Pattern, write_layers, write_table};
@@ -27,6 +29,18 @@ use super::{Refusal, Sheet, SheetLayer, Source};
 /// # Errors
 /// [`Refusal::NoNumber`] if a mark has a coordinate that is no finite number, or `unit_m` is no positive one.
 pub fn insert(source: &Source, unit_m: f64, sheet: &Sheet) -> Result<Vec<u8>, Refusal> {
+    Ok(insertion(source, unit_m, sheet)?.concat())
+}
+
+/// The same as pieces of the original with the marks between them, so that a large drawing is not held twice.
+///
+/// # Errors
+/// As [`insert`].
+pub fn insertion<'a>(
+    source: &'a Source,
+    unit_m: f64,
+    sheet: &Sheet,
+) -> Result<Vec<Cow<'a, [u8]>>, Refusal> {
     check(unit_m, sheet)?;
     let (bytes, scan) = (source.bytes.as_slice(), &source.scan);
     let style = Style {
@@ -70,7 +84,7 @@ pub fn insert(source: &Source, unit_m: f64, sheet: &Sheet) -> Result<Vec<u8>, Re
     if scan.own_handles.is_some() || first != supply.next() {
         raise_seed(&mut splice, scan, style, supply);
     }
-    Ok(splice.apply(bytes))
+    Ok(splice.pieces(bytes))
 }
 
 fn check(unit_m: f64, sheet: &Sheet) -> Result<(), Refusal> {

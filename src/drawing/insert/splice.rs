@@ -1,5 +1,6 @@
 //! Changes to a file's bytes, applied in one go.
 
+use std::borrow::Cow;
 use std::ops::Range;
 
 /// Changes by their place in the original; nothing else moves.
@@ -21,23 +22,23 @@ impl Splice {
         }
     }
 
-    /// The changed file. Changes must not overlap; of two that do, the later one keeps what the earlier took away.
-    pub(super) fn apply(mut self, original: &[u8]) -> Vec<u8> {
+    /// The changed file as pieces of the original and what was put between them: nothing is copied. Changes must not
+    /// overlap; of two that do, the later one keeps what the earlier took away.
+    pub(super) fn pieces(mut self, original: &[u8]) -> Vec<Cow<'_, [u8]>> {
         // Stable, and an insertion stands before the removal that begins where it stands.
         self.changes
             .sort_by_key(|(range, _)| (range.start, range.end));
-        let put_in: usize = self.changes.iter().map(|(_, bytes)| bytes.len()).sum();
-        let taken_out: usize = self.changes.iter().map(|(range, _)| range.len()).sum();
-        let length = (original.len() + put_in).saturating_sub(taken_out);
-        let mut result = Vec::with_capacity(length);
+        let mut pieces = Vec::with_capacity(2 * self.changes.len() + 1);
         let mut copied = 0;
         for (range, bytes) in self.changes {
-            result.extend_from_slice(original.get(copied..range.start).unwrap_or_default());
-            result.extend_from_slice(&bytes);
+            pieces.push(Cow::Borrowed(
+                original.get(copied..range.start).unwrap_or_default(),
+            ));
+            pieces.push(Cow::Owned(bytes));
             copied = copied.max(range.end);
         }
-        result.extend_from_slice(original.get(copied..).unwrap_or_default());
-        result
+        pieces.push(Cow::Borrowed(original.get(copied..).unwrap_or_default()));
+        pieces
     }
 }
 
@@ -53,15 +54,18 @@ mod tests {
         splice.insert(9, b"<3>".to_vec());
         splice.replace(6..9, Vec::new());
         splice.insert(0, b"<4>".to_vec());
-        assert_eq!(splice.apply(b"012345678"), b"<4>01<2>45<1><3>");
+        assert_eq!(splice.pieces(b"012345678").concat(), b"<4>01<2>45<1><3>");
     }
 
     #[test]
-    fn the_result_is_allocated_once() {
+    fn the_original_is_not_copied() {
         let mut splice = Splice::default();
         splice.replace(1..2, b"four".to_vec());
-        let result = splice.apply(b"abc");
-        assert_eq!(result, b"afourc");
-        assert_eq!(result.capacity(), result.len());
+        let pieces = splice.pieces(b"abc");
+        assert_eq!(pieces.concat(), b"afourc");
+        assert!(matches!(
+            pieces.as_slice(),
+            [Cow::Borrowed(_), Cow::Owned(_), Cow::Borrowed(_)]
+        ));
     }
 }
