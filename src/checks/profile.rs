@@ -149,7 +149,7 @@ mod tests {
         tendon.points = kinds
             .iter()
             .zip(0..)
-            .map(|(&kind, n)| point(kind, f64::from(n) * 4.0, None))
+            .map(|(&kind, n)| point(kind, f64::from(n) * 4.0, Some(0.1)))
             .collect();
         let found = highs_in_a_row(&worked(&tendon));
         assert!(found.is_some_and(|f| f.station_m == Some(8.0) && f.level == Level::Warning));
@@ -158,10 +158,19 @@ mod tests {
         tendon.points = kinds
             .iter()
             .zip(0..)
-            .map(|(&kind, n)| point(kind, f64::from(n) * 4.0, None))
+            .map(|(&kind, n)| point(kind, f64::from(n) * 4.0, Some(0.1)))
             .collect();
         assert_eq!(highs_in_a_row(&worked(&tendon)), None);
         assert!(lows_in_a_row(&worked(&tendon)).is_some_and(|f| f.station_m == Some(6.0)));
+        // A low that the neighbours say belongs here is not on the drawing.
+        tendon.points = vec![
+            point(Anchor, 0.0, None),
+            point(High, 4.0, Some(0.2)),
+            point(Low, 8.0, None),
+            point(High, 12.0, Some(0.2)),
+            point(Anchor, 20.0, None),
+        ];
+        assert!(highs_in_a_row(&worked(&tendon)).is_some_and(|f| f.station_m == Some(8.0)));
     }
 
     #[test]
