@@ -1,5 +1,11 @@
 //! What can be typed. What a command takes is its own type, below [`crate::commands`].
 
+#![allow(
+    rustdoc::invalid_html_tags,
+    rustdoc::broken_intra_doc_links,
+    reason = "these comments are help texts, read on a terminal"
+)]
+
 use std::ffi::OsString;
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::PathBuf;

@@ -1,7 +1,7 @@
 //! The job: what the office, the system and the standard say, resolved. No option with a default is left open here.
 //!
 //! One table, [`keys::KEYS`], describes every key of `tautplan.toml`: where it stands, what may be typed, what it means
-//! and where its default comes from. [`read`] walks a file against it, [`file`] writes a file from it.
+//! and where its default comes from. [`read`] walks a file against it, [`file()`] writes a file from it.
 
 use std::collections::BTreeSet;
 use std::fmt;

@@ -1,7 +1,7 @@
 //! A tendon's curve in space.
 
 /// A tendon's curve: pieces over plan stations, on each of which the level is one parabola and the plan line is
-/// straight or one arc. Made by [`crate::profile::build`] or [`Profile::new`].
+/// straight or one arc. Made by [`crate::profile::build()`] or [`Profile::new`].
 #[derive(Debug, Clone, PartialEq)]
 pub struct Profile {
     /// Pieces, in order, without gaps.

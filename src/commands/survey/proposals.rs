@@ -11,7 +11,7 @@ use crate::drawing::{Drawing, UnitFrom};
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
 
-/// Keys of [layers] by what is told from a layer's name and contents, in the order they are tried.
+/// Keys of `[layers]` by what is told from a layer's name and contents, in the order they are tried.
 const ROLES: [&str; 9] = [
     "slab_zone",
     "marks",
@@ -76,7 +76,7 @@ fn keep_given(job_file: &JobFile, proposals: &mut BTreeMap<String, Proposal>) {
     }
 }
 
-/// The job's patterns of a key below [layers].
+/// The job's patterns of a key below `[layers]`.
 pub(super) fn patterns(job: &Job, role: &str) -> Vec<String> {
     let key = of_table("layers").find(|key| key.name == role);
     match key.and_then(|key| key.value(job)) {
@@ -113,7 +113,7 @@ fn free_layers<'c>(
         .collect()
 }
 
-/// The key below [layers] that a layer belongs to, as far as its texts, its blocks and the words of its name tell.
+/// The key below `[layers]` that a layer belongs to, as far as its texts, its blocks and the words of its name tell.
 fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
     let name = name.to_uppercase();
     let says = |words: &[&str]| words.iter().any(|word| name.contains(word));
