@@ -5,6 +5,7 @@
     reason = "a failing survey of styles is read line by line"
 )]
 
+mod heights;
 mod kit;
 mod laws;
 mod settling;

@@ -27,8 +27,8 @@ def differences(drawn, read, near):
                 yield f"{mark}: {key} {tendon[key]!r}, drawn {record[key]!r}"
         places = [(record["points"][i]["x_m"], record["points"][i]["y_m"]) for i in (0, -1)]
         for end in tendon["ends"]:
-            near = min((0, 1), key=lambda i: math.dist(places[i], (end["x_m"], end["y_m"])))
-            if end["kind"] != record["ends"][near]:
+            side = min((0, 1), key=lambda i: math.dist(places[i], (end["x_m"], end["y_m"])))
+            if end["kind"] != record["ends"][side]:
                 yield f"{mark}: end {end['kind']!r}, drawn {record['ends'][near]!r}"
         if len(tendon["points"]) != len(record["points"]):
             yield f"{mark}: {len(tendon['points'])} points, drawn {len(record['points'])}"
