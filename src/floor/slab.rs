@@ -106,7 +106,7 @@ fn general_thickness(slab: &mut Slab, said: &[(f64, Coord<f64>)], findings: &mut
         (None, None) => findings.push(Finding::new(
             &THICKNESS_UNKNOWN,
             Level::Error,
-            "the job gives no slab.thickness and no text such as T250 stands on a slab layer outside the zones",
+            "the job gives no slab.thickness_mm and no text such as T250 stands on a slab layer outside the zones",
             "give `thickness_mm` in the job file's [slab] table, or write it on the drawing",
         )),
     }
