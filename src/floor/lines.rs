@@ -7,7 +7,7 @@ use geo::Coord;
 use super::index::Index;
 use super::layers::{Roles, sound};
 use super::pieces::{Joint, chains, returns};
-use super::rules::{DUPLICATE_LINE, PIECES_MEET, TENDON_CLOSED, TENDONS_MISSING};
+use super::rules::{DUPLICATE_LINE, PIECES_MEET, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
 use super::types::Run;
 use crate::drawing::{Drawing, Shape};
 use crate::finding::{Finding, Level};
@@ -47,8 +47,10 @@ pub(super) fn lines(
         if !sound(shape) || symbols.contains(shape.handle.as_str()) {
             continue;
         }
-        let closed = shape.closed || returns(&shape.path, job.conventions.join_gap_m);
-        if closed {
+        let gap_m = job.conventions.join_gap_m;
+        if !shape.closed && shape.path.length_m() <= gap_m {
+            findings.push(stub(shape, gap_m));
+        } else if shape.closed || returns(&shape.path, gap_m) {
             findings.push(closed_shape(&shape.handle, &shape.layer, &shape.path));
         } else {
             by_layer.entry((&shape.layer, run)).or_default().push(shape);
@@ -90,6 +92,25 @@ fn closed_shape(handle: &str, layer: &str, path: &Path) -> Finding {
         "open the line where the tendon ends, or move the shape to another layer",
     );
     match path.start() {
+        Some(place) => finding.at_place(place),
+        None => finding,
+    }
+}
+
+fn stub(shape: &Shape, gap_m: f64) -> Finding {
+    let finding = Finding::new(
+        &TENDON_STUB,
+        Level::Warning,
+        format!(
+            "line {} on layer {} is {:.1} mm long; expected more than the joining gap of {:.1} mm",
+            shape.handle,
+            shape.layer,
+            shape.path.length_m() * 1000.0,
+            gap_m * 1000.0
+        ),
+        "delete the stub, or give a smaller `join_gap_mm` in the job file's [drawing] table",
+    );
+    match shape.path.start() {
         Some(place) => finding.at_place(place),
         None => finding,
     }
@@ -187,17 +208,7 @@ fn without_copies<'a>(
 /// Drops lines that lie on another tendon, whatever its layer, for more than half their length; names lesser overlaps.
 fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Finding>) -> Vec<Line> {
     let index = Index::new(lines.iter().map(|line| &line.path));
-    // The longest is kept; of equals, the one drawn first.
-    let mut order: Vec<usize> = (0..lines.len()).collect();
-    order.sort_by(|&a, &b| {
-        let (a, b) = (&lines[a], &lines[b]);
-        let (length_a, length_b) = (a.path.length_m(), b.path.length_m());
-        if (length_a - length_b).abs() > tolerance_m {
-            length_b.total_cmp(&length_a)
-        } else {
-            by_handle(&a.handle, &b.handle)
-        }
-    });
+    let order = longest_first(&lines, tolerance_m);
     let mut rank = vec![0; lines.len()];
     for (place, &line) in order.iter().enumerate() {
         rank[line] = place;
@@ -235,6 +246,23 @@ fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Findi
     let kept = lines.into_iter().zip(dropped);
     kept.filter_map(|(line, gone)| (!gone).then_some(line))
         .collect()
+}
+
+/// The longest first; among those as long within the tolerance, the one drawn first.
+fn longest_first(lines: &[Line], tolerance_m: f64) -> Vec<usize> {
+    let length_m = |line: usize| lines[line].path.length_m();
+    let mut order: Vec<usize> = (0..lines.len()).collect();
+    order.sort_by(|&a, &b| length_m(b).total_cmp(&length_m(a)).then(a.cmp(&b)));
+    let mut start = 0;
+    while start < order.len() {
+        // A group counts from its longest: comparing pair by pair within a tolerance would be no order.
+        let least_m = length_m(order[start]) - tolerance_m;
+        let same = order[start..].partition_point(|&line| length_m(line) >= least_m);
+        let group = &mut order[start..start + same.max(1)];
+        group.sort_by(|&a, &b| by_handle(&lines[a].handle, &lines[b].handle).then(a.cmp(&b)));
+        start += group.len();
+    }
+    order
 }
 
 fn copy(handle: &str, layer: &str, other: &str, path: &Path, overlap_m: f64) -> Finding {

@@ -163,6 +163,7 @@ fn clash(a: &MarkText, b: &MarkText) -> bool {
     differ(a.mark.as_ref(), b.mark.as_ref())
         || differ(a.strands.as_ref(), b.strands.as_ref())
         || differ(a.tendons.as_ref(), b.tendons.as_ref())
+        || differ(a.strand.as_ref(), b.strand.as_ref())
         // Two counts without a mark are those of two tendons, even if they are equal.
         || (a.mark.is_none() && b.mark.is_none())
 }

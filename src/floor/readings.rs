@@ -132,7 +132,12 @@ pub(super) fn length_m(text: &str, unit: LengthUnit) -> Option<f64> {
             break;
         }
     }
-    let value = number(text)?;
+    // The sign is that of the whole, fraction included.
+    let (sign, text) = match text.strip_prefix(['-', '−']) {
+        Some(rest) => (-1.0, rest.trim_start()),
+        None => (1.0, text.strip_prefix('+').unwrap_or(text)),
+    };
+    let value = sign * number(text)?;
     let length_m = value * unit.metres();
     length_m.is_finite().then_some(length_m)
 }
@@ -185,9 +190,8 @@ const SINGLES: &[(char, u8)] = &[
 ];
 
 fn plain(text: &str) -> Option<f64> {
-    let digits = text.strip_prefix(['-', '+']).unwrap_or(text);
-    let fits = digits.starts_with(|c: char| c.is_ascii_digit())
-        && digits
+    let fits = text.starts_with(|c: char| c.is_ascii_digit())
+        && text
             .chars()
             .all(|c| c.is_ascii_digit() || c == '.' || c == ',');
     if !fits {
@@ -214,6 +218,11 @@ mod tests {
             ("½\"", LengthUnit::In, 0.0127),
             ("10 mm", LengthUnit::In, 0.01),
             ("-5", LengthUnit::Mm, -0.005),
+            ("+5", LengthUnit::Mm, 0.005),
+            ("-1/4", LengthUnit::In, -0.00635),
+            ("-1 1/4", LengthUnit::In, -0.03175),
+            ("-1-1/4\"", LengthUnit::In, -0.03175),
+            ("−1¼", LengthUnit::In, -0.03175),
             ("16.5", LengthUnit::Cm, 0.165),
         ] {
             let found = length_m(text, unit);
@@ -223,7 +232,7 @@ mod tests {
             );
         }
         for text in [
-            "", "H", "1/0", "12a", "1/", "/8", "--3", "NaN", "inf", "1.2.3",
+            "", "H", "1/0", "12a", "1/", "/8", "--3", "-+3", "1/-4", "NaN", "inf", "1.2.3",
         ] {
             assert_eq!(length_m(text, LengthUnit::Mm), None, "{text}");
         }

@@ -19,6 +19,7 @@ pub const RULES: &[&Rule] = &[
     &PIECES_MEET,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
+    &TENDON_STUB,
     &TENDONS_MISSING,
     &THICKNESS_DIFFERS,
     &THICKNESS_UNKNOWN,
@@ -113,6 +114,12 @@ pub(super) const STRAND_COUNT_MISSING: Rule = Rule {
 pub(super) const TENDON_CLOSED: Rule = Rule {
     name: "tendon-closed",
     meaning: "A closed shape lies on a tendon layer: it has no ends, so it is no tendon.",
+};
+
+/// A line too short to be a tendon.
+pub(super) const TENDON_STUB: Rule = Rule {
+    name: "tendon-stub",
+    meaning: "A line on a tendon layer is no longer than the gap that is bridged between pieces: it was left out.",
 };
 
 /// A drawing without tendons.

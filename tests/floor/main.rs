@@ -5,6 +5,7 @@
     reason = "a failing survey of styles is read line by line"
 )]
 
+mod anchors;
 mod heights;
 mod kit;
 mod laws;
