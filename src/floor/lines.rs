@@ -216,31 +216,34 @@ fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Findi
     let mut dropped = vec![false; lines.len()];
     for &at in &order {
         let path = &lines[at].path;
-        let mut on: BTreeMap<usize, u32> = BTreeMap::new();
+        let mut on: BTreeMap<usize, BTreeSet<u32>> = BTreeMap::new();
         for probe in 0..PROBES {
             let share = (f64::from(probe) + 0.5) / f64::from(PROBES);
             let place = path.place_at(share * path.length_m());
             for other in index.within(place, tolerance_m) {
                 if other != at && rank[other] < rank[at] && !dropped[other] {
-                    *on.entry(other).or_default() += 1;
+                    on.entry(other).or_default().insert(probe);
                 }
             }
         }
         // One probe may lie on a tendon that crosses; two in a line do not.
-        let Some((&other, &probes)) = on.iter().max_by_key(|(_, probes)| **probes) else {
-            continue;
-        };
-        if probes < 2 || !runs_along(path, &lines[other].path, tolerance_m) {
+        on.retain(|&other, probes| {
+            probes.len() > 1 && runs_along(path, &lines[other].path, tolerance_m)
+        });
+        if on.is_empty() {
             continue;
         }
-        let overlap_m = path.length_m() * f64::from(probes) / f64::from(PROBES);
+        // A line may lie on one tendon for a part and on the next for another.
+        let covered: BTreeSet<u32> = on.values().flatten().copied().collect();
+        let probes = u32::try_from(covered.len()).unwrap_or(PROBES);
         dropped[at] = 2 * probes > PROBES;
+        let others: Vec<&str> = on.keys().map(|&other| lines[other].handle.as_str()).collect();
         findings.push(copy(
             &lines[at].handle,
             &lines[at].layer,
-            &lines[other].handle,
+            &others.join(" and "),
             path,
-            overlap_m,
+            path.length_m() * f64::from(probes) / f64::from(PROBES),
         ));
     }
     let kept = lines.into_iter().zip(dropped);
@@ -316,14 +319,28 @@ pub(super) fn by_handle(a: &str, b: &str) -> std::cmp::Ordering {
     value(a).cmp(&value(b))
 }
 
-/// By place on the plan, whichever way the lines are drawn.
+/// By place on the plan; of two that lie in one place, and only then, by the way in which they are drawn.
 pub(super) fn by_place(a: &Path, b: &Path) -> std::cmp::Ordering {
-    let (a, b) = (corners(a), corners(b));
-    let pairs = a.iter().zip(&b);
+    by_numbers(&corners(a), &corners(b)).then_with(|| by_numbers(&passed(a), &passed(b)))
+}
+
+fn by_numbers(a: &[f64], b: &[f64]) -> std::cmp::Ordering {
+    let pairs = a.iter().zip(b);
     pairs
         .map(|(a, b)| a.total_cmp(b))
         .find(|order| order.is_ne())
         .unwrap_or(std::cmp::Ordering::Equal)
+}
+
+/// Places that a line passes on its way, from its first vertex.
+fn passed(path: &Path) -> [f64; 16] {
+    let eighth_m = path.length_m() / 8.0;
+    let mut passed = [0.0; 16];
+    for (place, pair) in (0_u8..).zip(passed.chunks_mut(2)) {
+        let place = path.place_at(f64::from(place) * eighth_m);
+        pair.copy_from_slice(&[place.x, place.y]);
+    }
+    passed
 }
 
 fn corners(path: &Path) -> [f64; 5] {

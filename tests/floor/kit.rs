@@ -330,6 +330,11 @@ impl Board {
             };
             let start = tendon.path.start().unwrap_or_default();
             let forward = tautplan::geometry::distance_m(start, meant.from) < 0.01;
+            let end = tendon.path.end().unwrap_or_default();
+            if !forward && tautplan::geometry::distance_m(end, meant.from) >= 0.01 {
+                wrong.push(format!("{}: the mark stands on another tendon", meant.mark));
+                continue;
+            }
             let length_m = tendon.path.length_m();
             let mut found: Vec<(PointKind, f64, Option<f64>)> = tendon
                 .points

@@ -6,7 +6,15 @@
 )]
 
 mod anchors;
+mod copies;
+mod ends;
+mod ground;
 mod heights;
+mod joining;
 mod kit;
+mod labels;
 mod laws;
+mod levels;
+mod marks;
 mod settling;
+mod sketch;
