@@ -6,7 +6,7 @@ use tautplan::geometry::Path;
 use tautplan::job::Job;
 
 use crate::kit::{Board, Dice, Grid, Style, Turn, floor};
-use crate::sketch::{kinds, points_mm};
+use crate::sketch::{kinds, mm, points_mm};
 
 const GRID: Grid = Grid {
     bays: [3, 3],
@@ -70,11 +70,26 @@ fn the_order_of_entities_changes_no_reading() {
 fn the_direction_in_which_tendons_were_drawn_changes_no_reading() {
     let mut dice = Dice(17);
     let mut board = floor(GRID, style(Turn::Along, true), &mut dice);
-    right(&board);
+    // Of each tendon its mark, and kind, place and height of its points in order along x and y.
+    let say = |board: &Board| {
+        let (floor, _) = read(&board.drawing, &Job::default());
+        let tendons = floor.tendons.into_iter().map(|tendon| {
+            let mut points: Vec<_> = tendon
+                .points
+                .iter()
+                .map(|p| (mm(p.place.x), mm(p.place.y), format!("{:?}", p.kind), p.height_m.map(mm)))
+                .collect();
+            points.sort_unstable();
+            (tendon.handle, tendon.mark, points)
+        });
+        tendons.collect::<Vec<_>>()
+    };
+    let first = say(&board);
+    assert!(first.len() > 20);
     for shape in &mut board.drawing.shapes {
         shape.path = shape.path.reversed();
     }
-    right(&board);
+    assert_eq!(say(&board), first);
 }
 
 #[test]
