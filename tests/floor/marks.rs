@@ -110,8 +110,9 @@ fn tendons_without_a_mark_are_named_by_place_whatever_the_order_of_entities() {
     // Rows upwards and each from the left; columns from the left. The drawn mark is not given again.
     assert_eq!(
         marks(&first),
-        ["B004", "B001", "B002", "D001", "D002", "D003", "B003", "B005", "B006"]
-            .map(|mark| mark),
+        [
+            "B004", "B001", "B002", "B003", "D001", "D002", "D003", "B005", "B006"
+        ],
     );
     for seed in 0..5 {
         board.shuffle(&mut Dice(seed));
