@@ -237,7 +237,10 @@ fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Findi
         let covered: BTreeSet<u32> = on.values().flatten().copied().collect();
         let probes = u32::try_from(covered.len()).unwrap_or(PROBES);
         dropped[at] = 2 * probes > PROBES;
-        let others: Vec<&str> = on.keys().map(|&other| lines[other].handle.as_str()).collect();
+        let others: Vec<&str> = on
+            .keys()
+            .map(|&other| lines[other].handle.as_str())
+            .collect();
         findings.push(copy(
             &lines[at].handle,
             &lines[at].layer,

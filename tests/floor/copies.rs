@@ -31,7 +31,12 @@ const FIRST: &[(f64, f64)] = &[(0.0, 5.0), (20.0, 5.0)];
 fn the_same_line_twice_is_one_tendon() {
     let near: &[(f64, f64)] = &[(0.004, 5.003), (20.0, 5.003)];
     let back: &[(f64, f64)] = &[(20.0, 5.0), (7.0, 5.0), (0.0, 5.0)];
-    for (layer, points) in [(BANDED, near), (BANDED, back), (DISTRIBUTED, near), (DISTRIBUTED, back)] {
+    for (layer, points) in [
+        (BANDED, near),
+        (BANDED, back),
+        (DISTRIBUTED, near),
+        (DISTRIBUTED, back),
+    ] {
         let (spans, said) = lines(&[(BANDED, FIRST), (layer, points)]);
         assert_eq!(spans, [[0, 5_000, 20_000, 5_000]], "the first drawn stays");
         assert_eq!(said.len(), 1, "{said:?}");
@@ -62,10 +67,21 @@ fn a_part_that_lies_on_another_tendon_is_said_and_more_than_half_is_left_out() {
 #[test]
 fn a_line_that_lies_half_on_one_tendon_and_half_on_the_next_is_left_out() {
     let next: &[(f64, f64)] = &[(20.2, 5.0), (40.0, 5.0)];
-    let (spans, said) = lines(&[(BANDED, FIRST), (BANDED, next), (BANDED, &[(15.1, 5.0), (25.1, 5.0)])]);
-    assert_eq!(spans, [[0, 5_000, 20_000, 5_000], [20_200, 5_000, 40_000, 5_000]]);
+    let (spans, said) = lines(&[
+        (BANDED, FIRST),
+        (BANDED, next),
+        (BANDED, &[(15.1, 5.0), (25.1, 5.0)]),
+    ]);
+    assert_eq!(
+        spans,
+        [[0, 5_000, 20_000, 5_000], [20_200, 5_000, 40_000, 5_000]]
+    );
     assert_eq!(said.len(), 1);
-    assert!(said[0].contains("lies on line 103 and 104 for"), "{}", said[0]);
+    assert!(
+        said[0].contains("lies on line 103 and 104 for"),
+        "{}",
+        said[0]
+    );
 }
 
 #[test]
@@ -78,7 +94,10 @@ fn a_tendon_that_crosses_at_a_flat_angle_does_not_hide_one_that_lies_on_the_line
         (BANDED, &[(across_m - 4.0, 4.76), (across_m + 20.0, 6.2)]),
     ]);
     assert_eq!(spans.len(), 3);
-    assert!(said.len() == 1 && said[0].contains("0.61 m of its 10.00 m"), "{said:?}");
+    assert!(
+        said.len() == 1 && said[0].contains("0.61 m of its 10.00 m"),
+        "{said:?}"
+    );
 }
 
 #[test]
@@ -93,7 +112,13 @@ fn without_handles_the_order_of_entities_decides_nothing() {
         for (number, shape) in board.drawing.shapes.iter_mut().enumerate() {
             shape.handle = format!("#{number}");
         }
-        let paths: Vec<_> = board.read().0.tendons.into_iter().map(|t| (t.mark, t.path)).collect();
+        let paths: Vec<_> = board
+            .read()
+            .0
+            .tendons
+            .into_iter()
+            .map(|t| (t.mark, t.path))
+            .collect();
         paths
     };
     let first = read(&mut board);
@@ -118,10 +143,20 @@ fn a_label_written_twice_is_one_also_where_others_stand_level_with_it() {
     let (floor, findings) = board.read();
     let high = (High, 10_000, Some(165));
     let anchors = [0, 20_000].map(|station| (Anchor, station, Some(125)));
-    assert_eq!(points_mm(tendon(&floor, "B01")), [anchors[0], high, anchors[1]]);
-    assert!(told(&findings, "label-unclaimed").is_empty(), "{findings:#?}");
+    assert_eq!(
+        points_mm(tendon(&floor, "B01")),
+        [anchors[0], high, anchors[1]]
+    );
+    assert!(
+        told(&findings, "label-unclaimed").is_empty(),
+        "{findings:#?}"
+    );
     // Another text at that place is no copy.
     board.write(HEIGHT, "L165", (10.001, 5.12));
     let (_, findings) = board.read();
-    assert!(only(&findings, "label-unclaimed").text.contains("has its own label"));
+    assert!(
+        only(&findings, "label-unclaimed")
+            .text
+            .contains("has its own label")
+    );
 }

@@ -39,7 +39,11 @@ fn in_a_band_each_end_takes_its_own_symbol_though_the_neighbours_is_nearer() {
             .collect();
         rows.sort_by_key(|row| row.0);
         for (place, (_, found)) in rows.into_iter().enumerate() {
-            let meant = if place % 2 == 0 { [Live, Dead] } else { [Dead, Live] };
+            let meant = if place % 2 == 0 {
+                [Live, Dead]
+            } else {
+                [Dead, Live]
+            };
             assert_eq!(found, meant.map(Some), "row {place}, off {off:?}");
         }
         assert!(told(&findings, "end-unclaimed").is_empty());
@@ -55,7 +59,10 @@ fn a_symbol_out_of_reach_is_said_at_the_end_and_at_the_symbol() {
         board.live((0.0, 5.0));
         board.dead((20.0 + off_m, 5.0));
         let (floor, findings) = board.read();
-        assert_eq!(kinds(&floor.tendons[0]), [Some(Live), reached.then_some(Dead)]);
+        assert_eq!(
+            kinds(&floor.tendons[0]),
+            [Some(Live), reached.then_some(Dead)]
+        );
         if reached {
             assert!(told(&findings, "end-unknown").is_empty());
             continue;

@@ -21,7 +21,11 @@ fn crossed(draw: impl FnOnce(&mut Board)) -> (Floor, Vec<Finding>) {
 
 /// Thickness at each point, millimetres.
 fn thickness_mm(tendon: &Tendon) -> Vec<Option<i64>> {
-    tendon.points.iter().map(|p| p.thickness_m.map(mm)).collect()
+    tendon
+        .points
+        .iter()
+        .map(|p| p.thickness_m.map(mm))
+        .collect()
 }
 
 fn found(floor: &Floor) -> Vec<Option<i64>> {
@@ -66,9 +70,17 @@ fn a_zone_may_be_an_open_chain_of_lines_that_closes() {
     let (floor, findings) = draw(&sides[..3]);
     assert!(floor.slab.zones.is_empty());
     let open = only(&findings, "outline-open");
-    assert!(open.text.contains("its ends 7.000 m apart"), "{}", open.text);
+    assert!(
+        open.text.contains("its ends 7.000 m apart"),
+        "{}",
+        open.text
+    );
     assert_eq!(only(&findings, "thickness-differs").level, Level::Error);
-    assert_eq!(found(&floor), [None; 6], "neither of two thicknesses is taken");
+    assert_eq!(
+        found(&floor),
+        [None; 6],
+        "neither of two thicknesses is taken"
+    );
 }
 
 #[test]
@@ -106,5 +118,9 @@ fn a_floor_without_a_thickness_says_so_once() {
     assert_eq!(only(&findings, "thickness-unknown").level, Level::Error);
     let points = &tendon(&floor, "B01").points;
     let heights: Vec<Option<i64>> = points.iter().map(|p| p.height_m.map(mm)).collect();
-    assert_eq!(heights, [None, Some(30), None], "no mid-depth without a depth");
+    assert_eq!(
+        heights,
+        [None, Some(30), None],
+        "no mid-depth without a depth"
+    );
 }

@@ -33,7 +33,11 @@ fn given(kind: PointKind, station_mm: i64, height_mm: i64) -> Mm {
 #[test]
 fn an_anchor_takes_its_own_height_or_mid_depth() {
     let board = labelled(&[(0.1, "100"), (10.0, "L30")]);
-    let expected = [given(Anchor, 0, 100), given(Low, 10_000, 30), given(Anchor, 20_000, 125)];
+    let expected = [
+        given(Anchor, 0, 100),
+        given(Low, 10_000, 30),
+        given(Anchor, 20_000, 125),
+    ];
     let (points, findings) = found(&board, &Job::default());
     assert_eq!(points, expected);
     assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
@@ -41,7 +45,13 @@ fn an_anchor_takes_its_own_height_or_mid_depth() {
 
 #[test]
 fn a_bare_number_is_what_its_neighbours_make_it() {
-    let texts = [(5.0, "30"), (7.0, "80"), (10.0, "165"), (13.0, "80"), (15.0, "30")];
+    let texts = [
+        (5.0, "30"),
+        (7.0, "80"),
+        (10.0, "165"),
+        (13.0, "80"),
+        (15.0, "30"),
+    ];
     let (points, _) = found(&labelled(&texts), &Job::default());
     let expected = [
         given(Anchor, 0, 125),
@@ -54,7 +64,13 @@ fn a_bare_number_is_what_its_neighbours_make_it() {
     ];
     assert_eq!(points, expected);
     // A word outweighs the neighbours; of equals the one with the word is the point.
-    let texts = [(5.0, "L30"), (9.0, "165"), (10.5, "H165"), (11.5, "165"), (15.0, "L30")];
+    let texts = [
+        (5.0, "L30"),
+        (9.0, "165"),
+        (10.5, "H165"),
+        (11.5, "165"),
+        (15.0, "L30"),
+    ];
     let (points, _) = found(&labelled(&texts), &Job::default());
     let kinds: Vec<PointKind> = points.iter().map(|point| point.0).collect();
     assert_eq!(kinds, [Anchor, Low, Support, High, Support, Low, Anchor]);
@@ -75,7 +91,11 @@ fn inches_with_fractions_are_read_where_the_job_says_inches() {
     assert_eq!(points, expected);
     assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
     let (_, findings) = found(&labelled(&texts), &Job::default());
-    assert_eq!(told(&findings, "label-unread").len(), 3, "no fractions of a millimetre");
+    assert_eq!(
+        told(&findings, "label-unread").len(),
+        3,
+        "no fractions of a millimetre"
+    );
 }
 
 #[test]
@@ -93,7 +113,12 @@ fn what_lies_on_a_hidden_layer_is_read_and_said() {
         let (points, findings) = found(&board, &Job::default());
         assert_eq!(points[1], given(Low, 5_000, 30));
         let text = &only(&findings, "layer-hidden").text;
-        assert!(text.starts_with(&format!("layer {HEIGHT} is {state} and holds 0 lines and 1 texts")), "{text}");
+        assert!(
+            text.starts_with(&format!(
+                "layer {HEIGHT} is {state} and holds 0 lines and 1 texts"
+            )),
+            "{text}"
+        );
     }
 }
 
@@ -110,8 +135,15 @@ fn a_label_out_of_reach_belongs_to_nobody_and_says_how_far_off_it_is() {
             continue;
         }
         let finding = only(&findings, "label-unclaimed");
-        assert!(finding.text.contains("0.35 m off and the reach is 0.30 m"), "{}", finding.text);
-        assert_eq!((finding.tendon.as_deref(), finding.station_m), (Some("B01"), Some(10.0)));
+        assert!(
+            finding.text.contains("0.35 m off and the reach is 0.30 m"),
+            "{}",
+            finding.text
+        );
+        assert_eq!(
+            (finding.tendon.as_deref(), finding.station_m),
+            (Some("B01"), Some(10.0))
+        );
         // It is what the tendon lacks between two lows.
         let missing = only(&findings, "height-missing");
         assert!(missing.text.contains("no high point") && missing.text.contains("\"H165\""));
@@ -122,7 +154,8 @@ fn a_label_out_of_reach_belongs_to_nobody_and_says_how_far_off_it_is() {
 #[test]
 fn a_text_that_is_no_height_is_said_and_never_guessed() {
     for content in ["SEE NOTE 4", "H16S", "X165", "H"] {
-        let (points, findings) = found(&labelled(&[(5.0, "L30"), (10.0, content)]), &Job::default());
+        let (points, findings) =
+            found(&labelled(&[(5.0, "L30"), (10.0, content)]), &Job::default());
         assert_eq!(points[2], (High, 10_000, None), "{content}");
         assert!(only(&findings, "height-missing").text.contains(content));
         let finding = only(&findings, "label-unread");
@@ -135,18 +168,28 @@ fn a_tendon_without_heights_has_none_and_is_said_once() {
     let (points, findings) = found(&labelled(&[]), &Job::default());
     assert_eq!(points, [(Anchor, 0, None), (Anchor, 20_000, None)]);
     let finding = only(&findings, "height-missing");
-    assert_eq!((finding.level, finding.tendon.as_deref()), (Level::Error, Some("B01")));
+    assert_eq!(
+        (finding.level, finding.tendon.as_deref()),
+        (Level::Error, Some("B01"))
+    );
 }
 
 #[test]
 fn a_tendon_over_a_column_between_two_lows_lacks_a_high() {
     let mut board = labelled(&[(5.0, "L30"), (15.0, "L30")]);
     let (points, findings) = found(&board, &Job::default());
-    assert_eq!((points.len(), told(&findings, "height-missing").len()), (4, 0));
+    assert_eq!(
+        (points.len(), told(&findings, "height-missing").len()),
+        (4, 0)
+    );
     board.rectangle("COLUMN", (9.75, 4.75), (10.25, 5.25));
     let (points, findings) = found(&board, &Job::default());
     assert!(points.contains(&(High, 10_000, None)));
-    assert!(only(&findings, "height-missing").text.contains("over a column"));
+    assert!(
+        only(&findings, "height-missing")
+            .text
+            .contains("over a column")
+    );
 }
 
 #[test]
@@ -163,6 +206,10 @@ fn a_tendon_lacks_what_both_its_neighbours_have() {
     let (floor, findings) = board.read();
     let finding = only(&findings, "height-missing");
     assert_eq!(finding.tendon.as_deref(), Some("B02"));
-    assert!(finding.text.contains("B01 and B03 beside it"), "{}", finding.text);
+    assert!(
+        finding.text.contains("B01 and B03 beside it"),
+        "{}",
+        finding.text
+    );
     assert!(points_mm(tendon(&floor, "B02")).contains(&(High, 10_000, None)));
 }

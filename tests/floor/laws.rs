@@ -77,7 +77,14 @@ fn the_direction_in_which_tendons_were_drawn_changes_no_reading() {
             let mut points: Vec<_> = tendon
                 .points
                 .iter()
-                .map(|p| (mm(p.place.x), mm(p.place.y), format!("{:?}", p.kind), p.height_m.map(mm)))
+                .map(|p| {
+                    (
+                        mm(p.place.x),
+                        mm(p.place.y),
+                        format!("{:?}", p.kind),
+                        p.height_m.map(mm),
+                    )
+                })
                 .collect();
             points.sort_unstable();
             (tendon.handle, tendon.mark, points)
@@ -134,7 +141,11 @@ fn a_plan_moved_by_a_thousand_kilometres_says_the_same() {
             let heights: Vec<_> = points.map(|(kind, _, height)| (kind, height)).collect();
             words.push(format!("{} {:?} {heights:?}", tendon.mark, kinds(tendon)));
         }
-        words.extend(findings.iter().map(|f| format!("{} {:?}", f.rule.name, f.tendon)));
+        words.extend(
+            findings
+                .iter()
+                .map(|f| format!("{} {:?}", f.rule.name, f.tendon)),
+        );
         (words, stations)
     };
     let (first, stations) = say(&board);

@@ -60,7 +60,10 @@ fn a_label_at_the_same_place_outweighs_the_line_and_a_difference_is_said() {
             continue;
         }
         let finding = only(&findings, "level-line-differs");
-        assert_eq!((finding.level, finding.tendon.as_deref()), (Level::Warning, Some("B02")));
+        assert_eq!(
+            (finding.level, finding.tendon.as_deref()),
+            (Level::Warning, Some("B02"))
+        );
         assert!(finding.text.contains("H150") && finding.text.contains("the label was used"));
     }
 }
@@ -74,8 +77,16 @@ fn a_level_line_without_a_text_gives_nothing_and_is_said() {
     assert_eq!(middle(&floor, "B01"), None);
     let finding = only(&findings, "level-line-unread");
     assert_eq!(finding.level, Level::Error);
-    assert!(finding.text.contains("5.00 m has no height within reach"), "{}", finding.text);
-    assert!(only(&findings, "label-unread").text.contains("no level line is within reach"));
+    assert!(
+        finding.text.contains("5.00 m has no height within reach"),
+        "{}",
+        finding.text
+    );
+    assert!(
+        only(&findings, "label-unread")
+            .text
+            .contains("no level line is within reach")
+    );
 }
 
 #[test]
@@ -90,7 +101,11 @@ fn of_two_heights_beside_one_level_line_none_is_taken_whichever_was_drawn_first(
     };
     let (floor, findings) = read([("H165", 6.5), ("H160", 7.0)]);
     assert_eq!(middle(&floor, "B01"), None);
-    assert!(only(&findings, "level-line-unread").text.contains("more than one"));
+    assert!(
+        only(&findings, "level-line-unread")
+            .text
+            .contains("more than one")
+    );
     assert_eq!(findings, read([("H160", 7.0), ("H165", 6.5)]).1);
 }
 
@@ -105,5 +120,8 @@ fn of_two_level_lines_that_contradict_one_another_neither_is_used() {
     assert_eq!(middle(&floor, "B01"), Some((10_000, Some(165))));
     assert_eq!(middle(&floor, "B02"), Some((10_000, None)));
     let finding = only(&findings, "level-line-differs");
-    assert_eq!((finding.level, finding.tendon.as_deref()), (Level::Error, Some("B02")));
+    assert_eq!(
+        (finding.level, finding.tendon.as_deref()),
+        (Level::Error, Some("B02"))
+    );
 }

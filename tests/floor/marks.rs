@@ -48,7 +48,10 @@ fn two_marks_at_one_tendon_go_to_one_each_or_are_said() {
     assert_eq!(count(first), (1, Some(5), Some("12.7")));
     assert!(!second.mark_drawn);
     let text = &only(&findings, "label-unclaimed").text;
-    assert!(text.contains("\"B02 7-12.7\"") && text.contains("has its own label"), "{text}");
+    assert!(
+        text.contains("\"B02 7-12.7\"") && text.contains("has its own label"),
+        "{text}"
+    );
 }
 
 #[test]
@@ -67,7 +70,10 @@ fn a_tendon_without_strands_is_said_not_guessed() {
     let (floor, findings) = marked(&[("B01", (4.0, 5.12)), ("B02 5-12.7", (4.0, 8.12))]);
     assert_eq!(count(tendon(&floor, "B01")), (1, None, None));
     let finding = only(&findings, "strand-count-missing");
-    assert_eq!((finding.level, finding.tendon.as_deref()), (Level::Error, Some("B01")));
+    assert_eq!(
+        (finding.level, finding.tendon.as_deref()),
+        (Level::Error, Some("B01"))
+    );
 }
 
 /// Names in order of place: by y, then x, of each tendon's middle before the plan was moved.
@@ -79,7 +85,11 @@ fn names(board: &Board, back: Coord<f64>) -> Vec<(i64, i64, String)> {
         .map(|tendon| {
             let middle = tendon.path.place_at(tendon.path.length_m() / 2.0);
             let tenth = |metres: f64| mm(metres * 10.0);
-            (tenth(middle.y - back.y), tenth(middle.x - back.x), tendon.mark.clone())
+            (
+                tenth(middle.y - back.y),
+                tenth(middle.x - back.x),
+                tendon.mark.clone(),
+            )
         })
         .collect();
     names.sort_unstable();
@@ -128,7 +138,11 @@ fn moving_the_plan_renames_no_tendon() {
         let first = names(&board, Coord::default());
         for by_m in [0.0002, 0.0005, 0.001, 0.25, 1e4 + 0.0005, 1e6, 1e6 + 0.0005] {
             let by = Coord { x: by_m, y: by_m };
-            assert_eq!(names(&board.moved(0.0, by), by), first, "{step_m} m by {by_m} m");
+            assert_eq!(
+                names(&board.moved(0.0, by), by),
+                first,
+                "{step_m} m by {by_m} m"
+            );
         }
     }
 }
@@ -139,6 +153,10 @@ fn on_a_plan_drawn_at_45_degrees_the_names_do_not_hang_on_rounding() {
     let first = names(&board, Coord::default());
     for by_m in [1.0 / 3.0, 77.7, 1234.567, 4e4, 1e6] {
         let by = Coord { x: by_m, y: -by_m };
-        assert_eq!(marks(&names(&board.moved(0.0, by), by)), marks(&first), "by {by_m} m");
+        assert_eq!(
+            marks(&names(&board.moved(0.0, by), by)),
+            marks(&first),
+            "by {by_m} m"
+        );
     }
 }

@@ -107,7 +107,10 @@ pub(crate) fn rules(findings: &[Finding]) -> Vec<&'static str> {
 }
 
 pub(crate) fn mm(metres: f64) -> i64 {
-    #[expect(clippy::cast_possible_truncation, reason = "plans of a few hundred metres")]
+    #[expect(
+        clippy::cast_possible_truncation,
+        reason = "plans of a few hundred metres"
+    )]
     let rounded = (metres * 1000.0).round() as i64;
     rounded
 }
