@@ -1,6 +1,7 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
 mod assemble;
+mod bridges;
 mod candidates;
 mod ends;
 mod habits;

@@ -4,6 +4,7 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 
+use super::bridges::{Reach, bridged};
 use super::index::Index;
 use super::layers::{Roles, sound};
 use super::pieces::{Joint, chains, returns};
@@ -27,6 +28,8 @@ pub(super) struct Line {
 const SHARPEST_RAD: f64 = 1.6;
 /// An end symbol this near to a joint says that two tendons end there.
 const STOP_M: f64 = 0.05;
+/// Pieces of one tendon that do not meet lie on one line within this, metres.
+const ASIDE_M: f64 = 0.020;
 /// Places at which a line is compared with another.
 const PROBES: u32 = 33;
 
@@ -171,7 +174,11 @@ fn joined(
             path: if backwards { path.reversed() } else { path },
         });
     }
-    lines
+    let reach = Reach {
+        gap_m: job.conventions.bridge_gap_m,
+        aside_m: job.conventions.join_gap_m.max(ASIDE_M),
+    };
+    bridged(lines, reach, is_stop, findings)
 }
 
 /// Drops pieces that lie on another piece of the layer from end to end.

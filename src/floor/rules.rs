@@ -16,7 +16,9 @@ pub const RULES: &[&Rule] = &[
     &LEVEL_LINE_UNREAD,
     &MARK_TWICE,
     &OUTLINE_OPEN,
+    &PIECES_BRIDGED,
     &PIECES_MEET,
+    &PIECES_OVERLAP,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
     &TENDON_STUB,
@@ -102,6 +104,18 @@ pub(super) const OUTLINE_OPEN: Rule = Rule {
 pub(super) const PIECES_MEET: Rule = Rule {
     name: "pieces-meet",
     meaning: "Ends of tendon lines meet in a way that does not tell which of them go on into one another.",
+};
+
+/// A gap in a tendon.
+pub(super) const PIECES_BRIDGED: Rule = Rule {
+    name: "pieces-bridged",
+    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length.",
+};
+
+/// Two pieces of a tendon that overlap.
+pub(super) const PIECES_OVERLAP: Rule = Rule {
+    name: "pieces-overlap",
+    meaning: "Two pieces in line with one another overlap: they were taken for one tendon.",
 };
 
 /// Strands unknown.

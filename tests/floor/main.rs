@@ -6,6 +6,7 @@
 )]
 
 mod anchors;
+mod bridging;
 mod copies;
 mod ends;
 mod ground;
