@@ -3,6 +3,7 @@
 mod assemble;
 mod bridges;
 mod candidates;
+mod copies;
 mod ends;
 mod habits;
 mod heights;
@@ -13,6 +14,7 @@ mod levels;
 mod lines;
 mod marks;
 mod missing;
+mod order;
 mod pieces;
 mod points;
 mod readings;

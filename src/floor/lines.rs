@@ -5,14 +5,15 @@ use std::collections::{BTreeMap, BTreeSet};
 use geo::Coord;
 
 use super::bridges::{Reach, bridged};
-use super::index::Index;
+use super::copies::{without_copies, without_overlaps};
 use super::layers::{Roles, sound};
+use super::order::{by_handle, by_place, drawn_before};
 use super::pieces::{Joint, chains, returns};
-use super::rules::{DUPLICATE_LINE, PIECES_MEET, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
+use super::rules::{PIECES_MEET, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
 use super::types::Run;
 use crate::drawing::{Drawing, Shape};
 use crate::finding::{Finding, Level};
-use crate::geometry::{Path, distance_m};
+use crate::geometry::Path;
 use crate::job::Job;
 
 /// A tendon line before anything is known of it but its way.
@@ -30,8 +31,6 @@ const SHARPEST_RAD: f64 = 1.6;
 const STOP_M: f64 = 0.05;
 /// Pieces of one tendon that do not meet lie on one line within this, metres.
 const ASIDE_M: f64 = 0.020;
-/// Places at which a line is compared with another.
-const PROBES: u32 = 33;
 
 /// Tendon lines in an order that their places decide.
 pub(super) fn lines(
@@ -179,186 +178,6 @@ fn joined(
         aside_m: job.conventions.join_gap_m.max(ASIDE_M),
     };
     bridged(lines, reach, is_stop, findings)
-}
-
-/// Drops pieces that lie on another piece of the layer from end to end.
-fn without_copies<'a>(
-    shapes: &[&'a Shape],
-    tolerance_m: f64,
-    findings: &mut Vec<Finding>,
-) -> Vec<&'a Shape> {
-    let index = Index::new(shapes.iter().map(|shape| &shape.path));
-    let mut dropped = vec![false; shapes.len()];
-    for (at, shape) in shapes.iter().enumerate() {
-        let middle = shape.path.place_at(shape.path.length_m() / 2.0);
-        let twin = index
-            .within(middle, tolerance_m)
-            .into_iter()
-            .filter(|&other| other < at && !dropped[other])
-            .find(|&other| same_line(&shape.path, &shapes[other].path, tolerance_m));
-        if let Some(twin) = twin {
-            dropped[at] = true;
-            findings.push(copy(
-                &shape.handle,
-                &shape.layer,
-                &shapes[twin].handle,
-                &shape.path,
-                shape.path.length_m(),
-            ));
-        }
-    }
-    let kept = shapes.iter().zip(dropped);
-    kept.filter_map(|(shape, gone)| (!gone).then_some(*shape))
-        .collect()
-}
-
-/// Drops lines that lie on another tendon, whatever its layer, for more than half their length; names lesser overlaps.
-fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Finding>) -> Vec<Line> {
-    let index = Index::new(lines.iter().map(|line| &line.path));
-    let order = longest_first(&lines, tolerance_m);
-    let mut rank = vec![0; lines.len()];
-    for (place, &line) in order.iter().enumerate() {
-        rank[line] = place;
-    }
-    let mut dropped = vec![false; lines.len()];
-    for &at in &order {
-        let path = &lines[at].path;
-        let mut on: BTreeMap<usize, BTreeSet<u32>> = BTreeMap::new();
-        for probe in 0..PROBES {
-            let share = (f64::from(probe) + 0.5) / f64::from(PROBES);
-            let place = path.place_at(share * path.length_m());
-            for other in index.within(place, tolerance_m) {
-                if other != at && rank[other] < rank[at] && !dropped[other] {
-                    on.entry(other).or_default().insert(probe);
-                }
-            }
-        }
-        // One probe may lie on a tendon that crosses; two in a line do not.
-        on.retain(|&other, probes| {
-            probes.len() > 1 && runs_along(path, &lines[other].path, tolerance_m)
-        });
-        if on.is_empty() {
-            continue;
-        }
-        // A line may lie on one tendon for a part and on the next for another.
-        let covered: BTreeSet<u32> = on.values().flatten().copied().collect();
-        let probes = u32::try_from(covered.len()).unwrap_or(PROBES);
-        dropped[at] = 2 * probes > PROBES;
-        let others: Vec<&str> = on
-            .keys()
-            .map(|&other| lines[other].handle.as_str())
-            .collect();
-        findings.push(copy(
-            &lines[at].handle,
-            &lines[at].layer,
-            &others.join(" and "),
-            path,
-            path.length_m() * f64::from(probes) / f64::from(PROBES),
-        ));
-    }
-    let kept = lines.into_iter().zip(dropped);
-    kept.filter_map(|(line, gone)| (!gone).then_some(line))
-        .collect()
-}
-
-/// The longest first; among those as long within the tolerance, the one drawn first.
-fn longest_first(lines: &[Line], tolerance_m: f64) -> Vec<usize> {
-    let length_m = |line: usize| lines[line].path.length_m();
-    let mut order: Vec<usize> = (0..lines.len()).collect();
-    order.sort_by(|&a, &b| length_m(b).total_cmp(&length_m(a)).then(a.cmp(&b)));
-    let mut start = 0;
-    while start < order.len() {
-        // A group counts from its longest: comparing pair by pair within a tolerance would be no order.
-        let least_m = length_m(order[start]) - tolerance_m;
-        let same = order[start..].partition_point(|&line| length_m(line) >= least_m);
-        let group = &mut order[start..start + same.max(1)];
-        group.sort_by(|&a, &b| by_handle(&lines[a].handle, &lines[b].handle).then(a.cmp(&b)));
-        start += group.len();
-    }
-    order
-}
-
-fn copy(handle: &str, layer: &str, other: &str, path: &Path, overlap_m: f64) -> Finding {
-    Finding::new(
-        &DUPLICATE_LINE,
-        Level::Error,
-        format!(
-            "line {handle} on layer {layer} lies on line {other} for about {overlap_m:.2} m of its {:.2} m; expected each tendon once",
-            path.length_m()
-        ),
-        "delete one of the two lines, or move it to where its tendon lies",
-    )
-    .at_place(path.place_at(path.length_m() / 2.0))
-}
-
-/// Whether two lines are the same one, in either direction.
-fn same_line(a: &Path, b: &Path, tolerance_m: f64) -> bool {
-    let (Some(a0), Some(a1), Some(b0), Some(b1)) = (a.start(), a.end(), b.start(), b.end()) else {
-        return false;
-    };
-    let straight = distance_m(a0, b0) <= tolerance_m && distance_m(a1, b1) <= tolerance_m;
-    let turned = distance_m(a0, b1) <= tolerance_m && distance_m(a1, b0) <= tolerance_m;
-    (straight || turned)
-        && (a.length_m() - b.length_m()).abs() <= 4.0 * tolerance_m
-        && (1..8).all(|eighth| {
-            let place = a.place_at(a.length_m() * f64::from(eighth) / 8.0);
-            b.project(place)
-                .is_some_and(|found| found.distance_m <= tolerance_m)
-        })
-}
-
-/// Whether somewhere the two lines lie on one another and go the same way.
-fn runs_along(a: &Path, b: &Path, tolerance_m: f64) -> bool {
-    (0..PROBES).any(|probe| {
-        let station_m = a.length_m() * (f64::from(probe) + 0.5) / f64::from(PROBES);
-        b.project(a.place_at(station_m)).is_some_and(|found| {
-            let turn = a.heading_at(station_m) - b.heading_at(found.station_m);
-            found.distance_m <= tolerance_m && turn.sin().abs() < 0.05
-        })
-    })
-}
-
-/// Drawn order: by handle; shapes of one insert, or of a drawing without handles, by place.
-fn drawn_before(a: &Shape, b: &Shape) -> std::cmp::Ordering {
-    by_handle(&a.handle, &b.handle).then_with(|| by_place(&a.path, &b.path))
-}
-
-/// By handle as a number; entity numbers of drawings without handles say nothing, so they count as equal.
-pub(super) fn by_handle(a: &str, b: &str) -> std::cmp::Ordering {
-    let value = |handle: &str| u64::from_str_radix(handle, 16).unwrap_or(u64::MAX);
-    value(a).cmp(&value(b))
-}
-
-/// By place on the plan; of two that lie in one place, and only then, by the way in which they are drawn.
-pub(super) fn by_place(a: &Path, b: &Path) -> std::cmp::Ordering {
-    by_numbers(&corners(a), &corners(b)).then_with(|| by_numbers(&passed(a), &passed(b)))
-}
-
-fn by_numbers(a: &[f64], b: &[f64]) -> std::cmp::Ordering {
-    let pairs = a.iter().zip(b);
-    pairs
-        .map(|(a, b)| a.total_cmp(b))
-        .find(|order| order.is_ne())
-        .unwrap_or(std::cmp::Ordering::Equal)
-}
-
-/// Places that a line passes on its way, from its first vertex.
-fn passed(path: &Path) -> [f64; 16] {
-    let eighth_m = path.length_m() / 8.0;
-    let mut passed = [0.0; 16];
-    for (place, pair) in (0_u8..).zip(passed.chunks_mut(2)) {
-        let place = path.place_at(f64::from(place) * eighth_m);
-        pair.copy_from_slice(&[place.x, place.y]);
-    }
-    passed
-}
-
-fn corners(path: &Path) -> [f64; 5] {
-    let start = path.start().unwrap_or_default();
-    let end = path.end().unwrap_or_default();
-    let swap = (end.x, end.y) < (start.x, start.y);
-    let (first, last) = if swap { (end, start) } else { (start, end) };
-    [first.x, first.y, last.x, last.y, path.length_m()]
 }
 
 /// The direction in which a run goes, from −45° up to 135°.

@@ -5,6 +5,7 @@ use rstar::primitives::{GeomWithData, Rectangle};
 use rstar::{AABB, RTree};
 
 use super::layers::{Ground, Roles, sound};
+use super::order::by_place;
 use super::pieces::{Joint, chains};
 use super::readings::thickness_m;
 use super::rules::{OUTLINE_OPEN, THICKNESS_DIFFERS, THICKNESS_UNKNOWN, ZONE_UNREAD};
@@ -177,7 +178,7 @@ fn outlines(
         .filter(|shape| !whole(shape))
         .map(|shape| &shape.path)
         .collect();
-    open.sort_by(|a, b| super::lines::by_place(a, b));
+    open.sort_by(|a, b| by_place(a, b));
     let joint = Joint {
         gap_m,
         turn_rad: std::f64::consts::PI,
