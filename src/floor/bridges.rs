@@ -17,6 +17,10 @@ const FACING_RAD: f64 = 0.05;
 pub(super) struct Reach {
     /// Longest gap that is bridged, metres; zero: none is.
     pub(super) gap_m: f64,
+    /// Longest overlap that makes two pieces one, metres; zero: none does.
+    pub(super) overlap_m: f64,
+    /// Ends this close meet: what becomes of them was decided where pieces were joined. Metres.
+    pub(super) meet_m: f64,
     /// How far one line may run beside the other, metres.
     pub(super) aside_m: f64,
 }
@@ -108,8 +112,7 @@ fn nearest(
         if is_stop(tip.place) {
             return None;
         }
-        // An overlap that leaves neither inside the other is shorter than this line.
-        let far_m = reach.gap_m.max(tip.length_m);
+        let far_m = reach.gap_m.max(reach.overlap_m) + reach.aside_m;
         tree.locate_within_distance([tip.place.x, tip.place.y], far_m * far_m)
             .filter(|found| found.data / 2 != end / 2)
             .filter_map(|found| Some((found.data, ahead_m(tip, tips[found.data]?, reach)?)))
@@ -124,9 +127,11 @@ fn ahead_m(tip: Tip, other: Tip, reach: Reach) -> Option<f64> {
     let (sin, cos) = tip.out_rad.sin_cos();
     let (dx, dy) = (other.place.x - tip.place.x, other.place.y - tip.place.y);
     let (ahead_m, aside_m) = (cos * dx + sin * dy, (cos * dy - sin * dx).abs());
-    let overlaps = ahead_m < 0.0 && -ahead_m < tip.length_m.min(other.length_m) - reach.aside_m;
+    // A piece inside another is a copy of it.
+    let most_m = (tip.length_m.min(other.length_m) - reach.aside_m).min(reach.overlap_m);
     let in_line = aside_m <= reach.aside_m && facing <= FACING_RAD;
-    (in_line && (overlaps || (0.0..=reach.gap_m).contains(&ahead_m))).then_some(ahead_m)
+    let in_reach = (-most_m..=reach.gap_m).contains(&ahead_m) && ahead_m.abs() > reach.meet_m;
+    (in_line && in_reach).then_some(ahead_m)
 }
 
 /// One line through a chain of ends at which its pieces are entered, each with what lies between it and the one before.

@@ -175,6 +175,8 @@ fn joined(
     }
     let reach = Reach {
         gap_m: job.conventions.bridge_gap_m,
+        overlap_m: job.conventions.overlap_m,
+        meet_m: job.conventions.join_gap_m,
         aside_m: job.conventions.join_gap_m.max(ASIDE_M),
     };
     bridged(lines, reach, is_stop, findings)

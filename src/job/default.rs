@@ -93,6 +93,7 @@ fn conventions() -> Conventions {
         end_reach_m: 0.5,
         join_gap_m: 0.010,
         bridge_gap_m: 0.0,
+        overlap_m: 0.5,
     }
 }
 

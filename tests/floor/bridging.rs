@@ -88,7 +88,7 @@ fn pieces_beside_one_another_or_at_an_angle_are_not_in_line() {
 
 #[test]
 fn pieces_that_overlap_are_one_tendon_as_long_as_what_they_cover() {
-    for overlap_m in [0.05, 2.0, 8.0] {
+    for overlap_m in [0.05, 0.2, 0.49] {
         let board = pieces(&[
             [(0.0, 0.0), (10.0, 0.0)],
             [(20.0, 0.0), (10.0 - overlap_m, 0.0)],
@@ -97,6 +97,14 @@ fn pieces_that_overlap_are_one_tendon_as_long_as_what_they_cover() {
         assert_eq!(lengths_cm(&floor), [2000.0], "overlap {overlap_m}");
         assert!(findings.iter().any(|f| f.rule.name == "pieces-overlap"));
     }
+}
+
+#[test]
+fn a_longer_overlap_is_a_line_drawn_twice() {
+    let board = pieces(&[[(0.0, 0.0), (10.0, 0.0)], [(20.0, 0.0), (9.0, 0.0)]]);
+    let (floor, findings) = floor(&board, 0.0);
+    assert_eq!(floor.tendons.len(), 2);
+    assert!(findings.iter().any(|f| f.rule.name == "duplicate-line"));
 }
 
 #[test]
