@@ -14,6 +14,10 @@ const FACING_RAD: f64 = 0.05;
 
 /// How far apart, along and across, two ends may be that face one another.
 #[derive(Debug, Clone, Copy)]
+#[expect(
+    clippy::struct_field_names,
+    reason = "a name that holds a length says its unit"
+)]
 pub(super) struct Reach {
     /// Longest gap that is bridged, metres; zero: none is.
     pub(super) gap_m: f64,
