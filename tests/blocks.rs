@@ -48,6 +48,9 @@ fn layer_0_of_a_block_takes_the_layer_of_the_insert_through_any_depth() {
     assert_eq!(shapes, [("TOP", "1A"), ("OWN", "1A")]);
     let inserts: Vec<_> = drawing.inserts.iter().map(|i| i.block.as_str()).collect();
     assert_eq!(inserts, ["OUT", "in"]);
+    let within: Vec<_> = drawing.inserts.iter().map(|i| i.within).collect();
+    assert_eq!(within, [None, Some(0)]);
+    assert!(drawing.shapes.iter().all(|shape| shape.within == Some(1)));
     assert_eq!(drawing.unit_from, UnitFrom::Job);
 }
 
@@ -171,4 +174,25 @@ fn a_polyline_closes_with_the_bulge_of_its_last_vertex() {
     assert!(drawing.shapes[0].closed && drawing.shapes[0].path.corners().is_empty());
     assert!((drawing.shapes[1].path.length_m() - std::f64::consts::PI).abs() < 1e-12);
     assert!(!drawing.shapes[1].closed);
+}
+
+#[test]
+fn a_plan_drawn_as_a_block_keeps_its_tendons_and_loses_its_end_symbols_lines() {
+    let end = |name: &str| {
+        format!("0 BLOCK 8 0 2 {name} 10 0 20 0 {UNIT_LINE} 0 INSERT 8 0 2 TIP 10 0 20 0 0 ENDBLK ")
+    };
+    let tip = "0 BLOCK 8 0 2 TIP 10 0 20 0 0 LINE 8 0 10 0 20 0 11 0 21 0.4 0 ENDBLK ";
+    let at_ends = "0 INSERT 8 TENDON-BANDED 2 LIVE-END 10 0 20 0 0 INSERT 8 TENDON-BANDED 2 DEAD-END 10 20 20 0";
+    let plan = format!(
+        "0 BLOCK 8 0 2 PLAN 10 0 20 0 0 LINE 8 TENDON-BANDED 10 0 20 0 11 20 21 0 {at_ends} 0 ENDBLK "
+    );
+    let blocks = [tip.to_owned(), end("LIVE-END"), end("DEAD-END"), plan].concat();
+    let (drawing, findings) = drawing(&blocks, "0 INSERT 5 2F 8 0 2 PLAN 10 100 20 50");
+    assert!(findings.is_empty(), "{findings:?}");
+    assert_eq!(drawing.shapes.len(), 5);
+    let (floor, _) = tautplan::floor::read(&drawing, &tautplan::job::Job::default());
+    assert_eq!(floor.tendons.len(), 1);
+    let tendon = &floor.tendons[0];
+    assert!((tendon.path.length_m() - 20.0).abs() < 1e-12);
+    assert!(tendon.ends.iter().all(|end| end.kind.is_some()));
 }
