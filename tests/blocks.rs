@@ -196,3 +196,15 @@ fn a_plan_drawn_as_a_block_keeps_its_tendons_and_loses_its_end_symbols_lines() {
     assert!((tendon.path.length_m() - 20.0).abs() < 1e-12);
     assert!(tendon.ends.iter().all(|end| end.kind.is_some()));
 }
+
+#[test]
+fn an_attribute_inside_a_block_is_read_for_its_own_layer() {
+    let blocks = "0 BLOCK 8 0 2 REF 10 0 20 0
+        0 INSERT 8 SYM 66 1 2 TAG 10 5 20 5 0 ATTRIB 8 TENDON-HEIGHT 10 5 20 6 40 0.2 2 H 1 L30 0 SEQEND
+        0 ENDBLK 0 BLOCK 8 0 2 TAG 10 0 20 0 0 ENDBLK";
+    let heights = Wanted::layers(["TENDON-HEIGHT"]).expect("pattern");
+    let (drawing, findings) = read_layers(blocks, "0 INSERT 8 0 2 REF 10 0 20 0", &heights);
+    assert!(findings.is_empty(), "{findings:?}");
+    let texts: Vec<_> = drawing.texts.iter().map(|t| t.content.as_str()).collect();
+    assert_eq!(texts, ["L30"]);
+}

@@ -114,6 +114,8 @@ pub(super) struct BlockEntry {
     pub(super) base: [f64; 2],
     /// Entities that can be read.
     pub(super) entries: Vec<Entry>,
+    /// Layers of its inserts' attributes, where they are not the insert's.
+    pub(super) attribute_layers: Vec<u32>,
 }
 
 /// Entity types that are read.

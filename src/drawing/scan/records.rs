@@ -81,7 +81,7 @@ impl<'a> Pass<'a> {
                 self.scan.blocks.push(BlockEntry {
                     name: plain_name(&name),
                     base: self.gathered.base,
-                    entries: Vec::new(),
+                    ..BlockEntry::default()
                 });
                 self.block_open = true;
                 self.handles.settle(false);
@@ -145,6 +145,12 @@ impl<'a> Pass<'a> {
             {
                 entry.number = to_u32(block.entries.len()) + 1;
                 block.entries.push(entry);
+                for name in self.attribute_layers.drain(..) {
+                    let own_layer = self.names.id(name, &self.scan.code_page);
+                    if own_layer != layer && !block.attribute_layers.contains(&own_layer) {
+                        block.attribute_layers.push(own_layer);
+                    }
+                }
             }
             return;
         }
