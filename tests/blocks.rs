@@ -208,3 +208,15 @@ fn an_attribute_inside_a_block_is_read_for_its_own_layer() {
     let texts: Vec<_> = drawing.texts.iter().map(|t| t.content.as_str()).collect();
     assert_eq!(texts, ["L30"]);
 }
+
+#[test]
+fn an_insert_that_names_no_block_is_damaged_and_brings_in_no_other() {
+    let (drawing, findings) = drawing(
+        &format!("0 BLOCK 8 0 2 B 10 0 20 0 {UNIT_LINE} 0 ENDBLK"),
+        "0 INSERT 5 A 8 TENDONS 2 B 10 0 20 0 0 INSERT 5 C 8 TENDONS 10 9 20 9",
+    );
+    assert_eq!(drawing.shapes.len(), 1);
+    assert_eq!(drawing.inserts.len(), 1);
+    assert_eq!(rules(&findings), ["entity-damaged"]);
+    assert!(findings[0].text.contains("INSERT C"), "{findings:?}");
+}

@@ -199,7 +199,10 @@ impl<'a> Cleaner<'a> {
         }
         match used(record.type_name, tag.code) {
             Use::Skip => {}
-            Use::Text => self.text(tag),
+            Use::Text => {
+                record.named |= tag.code == 2 && !tag.word().is_empty();
+                self.text(tag);
+            }
             Use::Short => {
                 let Some(number) = tag.integer() else {
                     return Err(expected(tag, "a whole number"));
@@ -242,6 +245,10 @@ impl<'a> Cleaner<'a> {
         };
         if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
             let found = format!("there is no group {code}, and a coordinate or size was expected");
+            return Err((record.type_name, record.start, found));
+        }
+        if record.type_name == b"INSERT" && !record.named {
+            let found = "there is no group 2, and a block's name was expected".to_owned();
             return Err((record.type_name, record.start, found));
         }
         if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
@@ -305,6 +312,8 @@ struct Open<'a> {
     past: bool,
     columns: bool,
     justified: bool,
+    /// Group 2 has been seen, and is not empty.
+    named: bool,
     last_direction: i32,
     /// Which of the groups 10, 20, 11, 21, 40, 50, 51 have been seen.
     seen: u8,

@@ -99,7 +99,7 @@ pub(super) struct Entry {
     pub(super) layer: u32,
     /// Its number among the model-space entities, from 1, or within its block.
     pub(super) number: u32,
-    /// Number of the block's name, for an insert.
+    /// Number of the block's name, for an insert that gives one; else `u32::MAX`.
     pub(super) block: u32,
     /// Whether it is an insert.
     pub(super) is_insert: bool,

@@ -127,15 +127,16 @@ impl<'a> Pass<'a> {
         }
         let is_insert = self.types.is(held.type_id, b"INSERT");
         let block = match held.name {
-            Some(name) if is_insert => self.block_names.id(name),
-            _ => 0,
+            Some(name) if is_insert && !name.is_empty() => to_u32(self.block_names.id(name)),
+            // No block has this number.
+            _ => u32::MAX,
         };
         let mut entry = Entry {
             start: held.start,
             end,
             layer,
             number: 0,
-            block: to_u32(block),
+            block,
             is_insert,
         };
         let reads = self.types.is_read(held.type_id);
