@@ -220,3 +220,36 @@ fn an_insert_that_names_no_block_is_damaged_and_brings_in_no_other() {
     assert_eq!(rules(&findings), ["entity-damaged"]);
     assert!(findings[0].text.contains("INSERT C"), "{findings:?}");
 }
+
+#[test]
+fn a_vertex_without_both_coordinates_is_damage() {
+    for (damaged, lacks) in [
+        ("0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 10 5 10 9 20 9", "no group 20"),
+        ("0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 20 5 10 9 20 9", "no group 10"),
+        ("0 LWPOLYLINE 8 T 90 2 70 0 10 0 20 0 10 9", "no group 20"),
+        (
+            "0 SPLINE 8 T 70 8 71 1 72 4 73 2 40 0 40 0 40 1 40 1 10 0 20 0 10 9",
+            "no group 20",
+        ),
+    ] {
+        let (drawing, findings) = drawing("", &format!("{damaged} {UNIT_LINE}"));
+        assert_eq!(drawing.shapes.len(), 1, "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+        assert!(findings[0].text.contains(lacks), "{findings:?}");
+    }
+}
+
+#[test]
+fn geometry_without_a_finite_length_is_damage_wherever_it_stands() {
+    let bulge = "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 42 1e200 10 5 20 0 10 9 20 0";
+    let line = "0 LINE 8 T 10 -1e308 20 0 11 1e308 21 0";
+    for damaged in [bulge, line] {
+        let (found, findings) = drawing("", &format!("{damaged} {UNIT_LINE}"));
+        assert_eq!(found.shapes.len(), 1, "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+        let block = format!("0 BLOCK 8 0 2 B 10 0 20 0 {damaged} 0 ENDBLK");
+        let (found, findings) = drawing(&block, "0 INSERT 8 0 2 B 10 0 20 0");
+        assert!(found.shapes.is_empty(), "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+    }
+}
