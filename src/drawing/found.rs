@@ -80,7 +80,7 @@ pub(super) struct Scan {
     pub(super) greatest_handle: u64,
     /// Whether new records must carry handles.
     pub(super) uses_handles: bool,
-    /// Entities on this tool's own layers, each with what follows it up to its SEQEND.
+    /// Entities on this tool's own layers, each with what follows it up to its SEQEND, without comments behind it.
     pub(super) own_marks: Vec<Range<usize>>,
     /// Least and greatest handle of those.
     pub(super) own_handles: Option<(u64, u64)>,

@@ -118,7 +118,8 @@ impl<'a> Pass<'a> {
         let own = self.section == Section::Entities && self.names.is_own(layer);
         self.handles.settle_entity(own, held.handle);
         if own {
-            self.scan.own_marks.push(held.start..end);
+            // A comment behind it is not ours.
+            self.scan.own_marks.push(held.start..self.last_end);
             return;
         }
         let in_block = self.section == Section::Blocks;
