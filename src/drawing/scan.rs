@@ -159,7 +159,7 @@ impl<'a> Pass<'a> {
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             // Coordinates are nearly all of a file and say nothing here.
-            10..=61 | 210..=239 | 40..=49 if self.record != Record::Block => {}
+            10..=61 | 210..=239 if self.record != Record::Block => {}
             _ => self.record_tag(tag),
         }
         Ok(())
