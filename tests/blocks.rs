@@ -224,8 +224,14 @@ fn an_insert_that_names_no_block_is_damaged_and_brings_in_no_other() {
 #[test]
 fn a_vertex_without_both_coordinates_is_damage() {
     for (damaged, lacks) in [
-        ("0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 10 5 10 9 20 9", "no group 20"),
-        ("0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 20 5 10 9 20 9", "no group 10"),
+        (
+            "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 10 5 10 9 20 9",
+            "no group 20",
+        ),
+        (
+            "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 20 5 10 9 20 9",
+            "no group 10",
+        ),
         ("0 LWPOLYLINE 8 T 90 2 70 0 10 0 20 0 10 9", "no group 20"),
         (
             "0 SPLINE 8 T 70 8 71 1 72 4 73 2 40 0 40 0 40 1 40 1 10 0 20 0 10 9",

@@ -331,9 +331,7 @@ impl<'b> Gatherer<'b> {
     ) {
         // The insert itself, if it is kept, is the next one.
         let kept = self.book.wants(layer);
-        let within = kept
-            .then_some(self.drawing.inserts.len())
-            .or(frame.within);
+        let within = kept.then_some(self.drawing.inserts.len()).or(frame.within);
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));

@@ -3,7 +3,6 @@
 use std::collections::BTreeSet;
 
 use geo::Coord;
-use globset::GlobSet;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
@@ -16,6 +15,7 @@ use crate::drawing::{Drawing, Insert};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
 use crate::job::Conventions;
+use crate::patterns::Patterns;
 
 /// An end symbol on the plan.
 #[derive(Debug, Clone)]
@@ -26,8 +26,8 @@ pub(super) struct Symbol<'a> {
 
 /// Live and dead end blocks by name.
 struct Blocks {
-    live: GlobSet,
-    dead: GlobSet,
+    live: Patterns,
+    dead: Patterns,
 }
 
 impl Blocks {
@@ -39,9 +39,9 @@ impl Blocks {
     }
 
     fn kind(&self, block: &str) -> Option<EndKind> {
-        if self.live.is_match(block) {
+        if self.live.fit(block) {
             Some(EndKind::Live)
-        } else if self.dead.is_match(block) {
+        } else if self.dead.fit(block) {
             Some(EndKind::Dead)
         } else {
             None

@@ -130,7 +130,10 @@ fn a_comment_behind_our_marks_stays() {
     let noted = [&once[..at], comment, &once[at..]].concat();
     for sheet in [sheet(), smaller_sheet(), no_marks()] {
         let again = mark(&noted, &sheet);
-        assert!(memchr::memmem::find(&again, comment).is_some(), "the comment is lost");
+        assert!(
+            memchr::memmem::find(&again, comment).is_some(),
+            "the comment is lost"
+        );
         assert!(mark(&again, &sheet) == again);
     }
 }
