@@ -73,6 +73,8 @@ struct Frame<'f> {
     handle: Option<&'f str>,
     /// Layer of the insert, which layer 0 of its block takes.
     layer: Option<u32>,
+    /// The innermost insert among those of the drawing.
+    within: Option<usize>,
 }
 
 /// Gathers what the records hold.
@@ -111,6 +113,7 @@ impl<'b> Gatherer<'b> {
             placing: self.unit,
             handle: None,
             layer: None,
+            within: None,
         };
         self.place(record, &frame);
     }
@@ -127,12 +130,17 @@ impl<'b> Gatherer<'b> {
             return;
         }
         match &record.entity {
-            EntityType::Text(text) => self.text(of_text(text, &frame.placing), layer, handle),
-            EntityType::MText(text) => self.text(of_mtext(text, &frame.placing), layer, handle),
+            EntityType::Text(text) => {
+                self.text(of_text(text, &frame.placing), layer, frame.within, handle);
+            }
+            EntityType::MText(text) => {
+                self.text(of_mtext(text, &frame.placing), layer, frame.within, handle);
+            }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
                     layer: self.book.layer_name(layer),
+                    within: frame.within,
                     kind: line.kind,
                     path: line.path,
                     closed: line.closed,
@@ -159,13 +167,20 @@ impl<'b> Gatherer<'b> {
         }
     }
 
-    fn text(&mut self, lettering: super::lettering::Lettering, layer: u32, handle: &str) {
+    fn text(
+        &mut self,
+        lettering: super::lettering::Lettering,
+        layer: u32,
+        within: Option<usize>,
+        handle: &str,
+    ) {
         if lettering.content.trim().is_empty() {
             return;
         }
         self.drawing.texts.push(Text {
             handle: handle.to_owned(),
             layer: self.book.layer_name(layer),
+            within,
             content: lettering.content,
             place: lettering.place,
             corners: lettering.corners,
@@ -235,6 +250,7 @@ impl<'b> Gatherer<'b> {
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
                         layer: self.book.layer_name(layer),
+                        within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
                         place: cell.place(Coord { x: 0.0, y: 0.0 }),
                         rotation_rad: along.y.atan2(along.x),
@@ -258,6 +274,11 @@ impl<'b> Gatherer<'b> {
                     placing,
                     handle: Some(handle),
                     layer: Some(layer),
+                    within: if wanted {
+                        self.drawing.inserts.len().checked_sub(1)
+                    } else {
+                        frame.within
+                    },
                 };
                 self.block(block, &inside, handle);
             }
@@ -308,6 +329,9 @@ impl<'b> Gatherer<'b> {
         handle: &str,
         frame: &Frame<'_>,
     ) {
+        // The insert itself, if it is kept, is the next one.
+        let kept = self.book.wants(layer);
+        let within = kept.then_some(self.drawing.inserts.len()).or(frame.within);
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
@@ -318,7 +342,12 @@ impl<'b> Gatherer<'b> {
                 Some(own) if frame.handle.is_none() => own,
                 _ => handle,
             };
-            self.text(of_attribute(attribute, &frame.placing), layer, handle);
+            self.text(
+                of_attribute(attribute, &frame.placing),
+                layer,
+                within,
+                handle,
+            );
         }
     }
 

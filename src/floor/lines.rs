@@ -38,15 +38,15 @@ pub(super) fn lines(
     job: &Job,
     roles: &Roles,
     ends: &[Coord<f64>],
-    symbols: &BTreeSet<&str>,
+    symbols: &BTreeSet<usize>,
 ) -> (Vec<Line>, Vec<Finding>) {
     let mut findings = Vec::new();
     let mut by_layer: BTreeMap<(&str, Run), Vec<&Shape>> = BTreeMap::new();
-    for shape in &drawing.shapes {
+    for (at, shape) in drawing.shapes.iter().enumerate() {
         let Some(run) = roles.of(&shape.layer).run else {
             continue;
         };
-        if !sound(shape) || symbols.contains(shape.handle.as_str()) {
+        if !sound(shape) || symbols.contains(&at) {
             continue;
         }
         let gap_m = job.conventions.join_gap_m;

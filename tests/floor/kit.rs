@@ -101,6 +101,7 @@ impl Board {
         self.drawing.shapes.push(Shape {
             handle,
             layer: layer.to_owned(),
+            within: None,
             kind: ShapeKind::Polyline,
             path,
             closed,
@@ -128,6 +129,7 @@ impl Board {
         self.drawing.inserts.push(Insert {
             handle,
             layer: layer.to_owned(),
+            within: None,
             block: block.to_owned(),
             place,
             rotation_rad: 0.0,
@@ -160,6 +162,7 @@ impl Board {
         self.drawing.texts.push(Text {
             handle,
             layer: layer.to_owned(),
+            within: None,
             content: content.to_owned(),
             place,
             corners: [
