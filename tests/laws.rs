@@ -112,7 +112,7 @@ fn stations(profile: &Profile, count: u32) -> impl Iterator<Item = f64> {
 }
 
 /// Of two tendons that ought to be alike, both are refused or none is.
-fn alike_refused(a: &Option<Stressed<'_>>, b: &Option<Stressed<'_>>) -> Result<(), TestCaseError> {
+fn alike_refused(a: Option<&Stressed<'_>>, b: Option<&Stressed<'_>>) -> Result<(), TestCaseError> {
     prop_assert_eq!(a.is_some(), b.is_some());
     Ok(())
 }
@@ -162,8 +162,8 @@ proptest! {
         }));
         let (here, there) = (curve(&meant.tendon(path)), curve(&meant.tendon(moved)));
         let both = (stressed(&here, kinds, [0.006; 2]), stressed(&there, kinds, [0.006; 2]));
-        let (Some(a), Some(b)) = both else {
-            return alike_refused(&both.0, &both.1);
+        let (Some(a), Some(b)) = &both else {
+            return alike_refused(both.0.as_ref(), both.1.as_ref());
         };
         for station_m in stations(&here, 50) {
             prop_assert!((a.lockoff_kn(station_m) - b.lockoff_kn(station_m)).abs() < 1e-7 * JACK_KN);
@@ -193,8 +193,8 @@ proptest! {
         }
         let (one, many) = (curve(&meant.tendon(whole)), curve(&meant.tendon(Path::new(pieces))));
         let both = (stressed(&one, [Live, Dead], [0.006; 2]), stressed(&many, [Live, Dead], [0.006; 2]));
-        let (Some(a), Some(b)) = both else {
-            return alike_refused(&both.0, &both.1);
+        let (Some(a), Some(b)) = &both else {
+            return alike_refused(both.0.as_ref(), both.1.as_ref());
         };
         for station_m in stations(&one, 50) {
             prop_assert!((a.lockoff_kn(station_m) - b.lockoff_kn(station_m)).abs() < 1e-8 * JACK_KN);
