@@ -85,8 +85,13 @@ pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
             forces.jack_kn,
             expected.join(" and ")
         ),
-        "look for a height read wrong first; then flatten the drape where it balances more load than it should, straighten \
-         the sweeps in plan, or stress from both ends",
+        if forces.both_live() {
+            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+             straighten the sweeps in plan, or divide the tendon at a pour joint; it is stressed from both ends already"
+        } else {
+            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+             straighten the sweeps in plan, or stress from both ends"
+        },
     ))
 }
 
@@ -117,6 +122,23 @@ mod tests {
                 |f| f.level == Level::Warning && f.text.contains("curvature_loss_ratio")
             )
         );
+    }
+
+    #[test]
+    fn a_tendon_stressed_from_both_ends_is_not_told_to_be() {
+        let remedy = |far_kind| {
+            let (tendon, mut forces) = (straight(10.0), forces());
+            let profile = high_to_low(10.0, 0.1, 1.0);
+            forces.least_jacking_station_m = 10.0;
+            forces.totals.friction_curvature_kn = 0.5 * forces.jack_kn;
+            forces.ends[1].kind = far_kind;
+            let mut worked = worked(&tendon);
+            worked.profile = Some(&profile);
+            worked.forces = Some(&forces);
+            curvature_loss(&worked, &job()).map_or(String::new(), |found| found.remedy)
+        };
+        assert!(remedy(EndKind::Dead).ends_with("or stress from both ends"));
+        assert!(remedy(EndKind::Live).ends_with("stressed from both ends already"));
     }
 
     #[test]

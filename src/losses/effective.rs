@@ -49,16 +49,6 @@ impl<'s, 'p> Effective<'s, 'p> {
         [jacking_kn, lockoff_kn, transfer_kn, service_kn]
     }
 
-    /// Force after elastic shortening, kN.
-    pub fn transfer_kn(&self, station_m: f64) -> f64 {
-        self.forces_kn(station_m)[2]
-    }
-
-    /// Effective force, kN.
-    pub fn service_kn(&self, station_m: f64) -> f64 {
-        self.forces_kn(station_m)[3]
-    }
-
     /// Transfer and service from the force after lock-off at the same place, kN.
     fn later_kn(&self, lockoff_kn: f64) -> [f64; 2] {
         let steel = self.stressed.steel();

@@ -13,19 +13,6 @@ pub struct Steel {
     pub modulus_mpa: f64,
 }
 
-/// The four stages, in order.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
-pub enum Stage {
-    /// The jacks hold.
-    Jacking,
-    /// The wedges have drawn in.
-    LockOff,
-    /// The concrete has shortened elastically.
-    Transfer,
-    /// Shrinkage, creep and relaxation are over: the effective force.
-    Service,
-}
-
 /// Why a tendon has no forces although its curve is known.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
 pub enum CannotStress {
@@ -43,7 +30,7 @@ pub enum CannotStress {
     LossesTakeAll,
 }
 
-/// Forces of one tendon, each list along the points of the tendon that was given.
+/// Forces of one tendon as a whole; forces at a place are asked of [`super::Stressed`] and [`super::Effective`].
 #[derive(Debug, Clone, PartialEq)]
 pub struct Forces {
     /// The steel.
@@ -94,4 +81,11 @@ pub struct LossTotals {
     pub creep_mpa: f64,
     /// Relaxation, mean along the tendon, MPa.
     pub relaxation_mpa: f64,
+}
+
+impl Forces {
+    /// Whether the tendon is stressed from both ends.
+    pub fn both_live(&self) -> bool {
+        self.ends.iter().all(|end| end.kind == EndKind::Live)
+    }
 }
