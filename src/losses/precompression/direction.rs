@@ -81,10 +81,13 @@ pub(super) fn gather<'a>(paths: impl Iterator<Item = &'a Path>) -> (Vec<Directio
             .enumerate()
             .filter(|&(_, apart_rad)| apart_rad <= SAME_RAD)
             .min_by(|a, b| a.1.total_cmp(&b.1));
-        of_tendon[index] = nearest.map(|(seed, _)| seed).unwrap_or_else(|| {
-            seeds.push(heading_rad);
-            seeds.len() - 1
-        });
+        of_tendon[index] = nearest.map_or_else(
+            || {
+                seeds.push(heading_rad);
+                seeds.len() - 1
+            },
+            |(seed, _)| seed,
+        );
     }
     // Doubled angles: a direction and its opposite are one.
     let mut sums = vec![(0.0, 0.0); seeds.len()];
