@@ -39,14 +39,16 @@ pub struct Forces {
     pub jack_kn: f64,
     /// The two ends, at station 0 and at the path's end.
     pub ends: [EndForces; 2],
-    /// Losses by cause.
+    /// Losses at jacking and lock-off.
     pub totals: LossTotals,
-    /// Mean of the service force along the tendon, kN.
-    pub mean_service_kn: f64,
+    /// What comes after lock-off; `None` where the concrete's stress is not known, or where nothing would be left.
+    pub later: Option<LaterLosses>,
     /// Least jacking-stage force, kN (the far end of a tendon stressed from one end).
     pub least_jacking_kn: f64,
     /// Station of the least jacking-stage force, metres of plan line.
     pub least_jacking_station_m: f64,
+    /// Angle turned from station 0 to there, radians; of a bend there, the share up to its least force.
+    pub least_jacking_angle_rad: f64,
 }
 
 /// Forces at an end.
@@ -64,7 +66,7 @@ pub struct EndForces {
     pub draw_in_reaches_far: bool,
 }
 
-/// Losses by cause; forces per tendon.
+/// Losses at jacking and lock-off by cause, per tendon.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub struct LossTotals {
     /// Jacking force lost to angle alone, down to the point of least force: P0 (1 − exp(−μ α)), kN.
@@ -73,6 +75,11 @@ pub struct LossTotals {
     pub friction_wobble_kn: f64,
     /// Drop at the (first) live anchor by draw-in, kN.
     pub draw_in_kn: f64,
+}
+
+/// Losses after lock-off by cause, and what they leave.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct LaterLosses {
     /// Elastic shortening, MPa.
     pub shortening_mpa: f64,
     /// Shrinkage, MPa.
@@ -81,6 +88,8 @@ pub struct LossTotals {
     pub creep_mpa: f64,
     /// Relaxation, mean along the tendon, MPa.
     pub relaxation_mpa: f64,
+    /// Mean of the service force along the tendon, kN.
+    pub mean_service_kn: f64,
 }
 
 impl Forces {
