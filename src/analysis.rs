@@ -3,6 +3,7 @@
 //! Two passes: all tendons are jacked and locked off first, since the concrete stress of each comes from all of them; then
 //! the sections of the slab, summed serially in the tendons' order; then transfer, service and the rules.
 
+mod findings_on;
 mod refusals;
 mod samples;
 
@@ -12,13 +13,13 @@ use geo::Coord;
 use rayon::prelude::*;
 
 pub use self::refusals::{Refusal, rules};
-use crate::checks::{self, Ground, Worked};
+use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
 use crate::floor::{Floor, Tendon};
 use crate::job::{Fallback, Job};
 use crate::losses::precompression::{Crossing, Sections};
 use crate::losses::{Effective, Forces, Stressed, steel};
-use crate::profile::{self, Profile};
+use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
 #[derive(Debug, Clone)]
@@ -49,8 +50,14 @@ impl Analysis {
 pub struct TendonResult {
     /// The curve, if every height is known.
     pub profile: Option<Profile>,
-    /// The forces, if curve, strands and ends are known.
+    /// The forces, if curve, strands and ends are known; without the later losses where the concrete stress is not.
     pub forces: Option<Forces>,
+    /// Steel area of all strands of one tendon, mm², if strands and size are known.
+    pub area_mm2: Option<f64>,
+    /// Least radius in plan.
+    pub plan_tightest: Option<Tightest>,
+    /// How it turns down to its point of least force; with the forces.
+    pub turning: Option<Turning>,
     /// At each of the tendon's points.
     pub points: Vec<PointResult>,
     /// Between the points too, close enough to draw: stations, places, levels and forces at every stage.
@@ -66,8 +73,8 @@ pub struct PointResult {
     pub angle_rad: Option<f64>,
     /// Level above the top of the slab, metres: as drawn, for a support too.
     pub level_m: Option<f64>,
-    /// Forces at jacking, lock-off, transfer and service, kN per tendon; at a bend, the lesser of its two sides.
-    pub forces_kn: Option<[f64; 4]>,
+    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known; at a bend, the least in it.
+    pub forces_kn: [Option<f64>; 4],
 }
 
 /// A place along a tendon.
@@ -79,8 +86,8 @@ pub struct Sample {
     pub place: Coord<f64>,
     /// Level above the top of the slab, metres.
     pub level_m: f64,
-    /// Forces at jacking, lock-off, transfer and service, kN per tendon; `None` where they could not be worked out.
-    pub forces_kn: Option<[f64; 4]>,
+    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known.
+    pub forces_kn: [Option<f64>; 4],
 }
 
 /// A tendon with its result.
@@ -209,11 +216,24 @@ fn finish(
     stressed: Result<&Stressed<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
 ) -> (TendonResult, Option<Refusal>) {
+    let jacked = stressed.as_ref().ok().copied();
     let effective = stressed.and_then(|stressed| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
         Ok(Effective::new(stressed, &job.long_term, stress_mpa)?)
     });
-    let forces_kn = |station_m| effective.as_ref().ok().map(|at| at.forces_kn(station_m));
+    // Jacking and lock-off ask nothing of the concrete.
+    let forces_kn = |station_m| match (&effective, jacked) {
+        (Ok(effective), _) => effective.forces_kn(station_m).map(Some),
+        (Err(_), Some(jacked)) => {
+            let [jacking_kn, lockoff_kn] = jacked.both_kn(station_m);
+            [Some(jacking_kn), Some(lockoff_kn), None, None]
+        }
+        (Err(_), None) => [None; 4],
+    };
+    let forces = match &effective {
+        Ok(effective) => Some(effective.forces()),
+        Err(_) => jacked.map(Stressed::forces),
+    };
     let points = tendon
         .points
         .iter()
@@ -236,7 +256,12 @@ fn finish(
     });
     let result = TendonResult {
         profile: curve.cloned(),
-        forces: effective.as_ref().ok().map(Effective::forces),
+        area_mm2: steel(tendon, &job.system).map(|steel| steel.area_mm2),
+        plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
+        turning: curve
+            .zip(forces.as_ref())
+            .and_then(|(curve, forces)| checks::turning(curve, forces)),
+        forces,
         points,
         samples,
         concrete_stress_mpa,
@@ -246,7 +271,7 @@ fn finish(
 
 /// What the rules say of a tendon.
 fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job) -> Vec<Finding> {
-    let lock_off = |sample: Option<&Sample>| Some(sample?.forces_kn?[1]);
+    let lock_off = |sample: Option<&Sample>| sample?.forces_kn[1];
     let ends = (
         lock_off(result.samples.first()),
         lock_off(result.samples.last()),
@@ -255,6 +280,7 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
         tendon,
         profile: result.profile.as_ref(),
         forces: result.forces.as_ref(),
+        turning: result.turning,
         lock_off_kn: match ends {
             (Some(start_kn), Some(end_kn)) => Some([start_kn, end_kn]),
             _ => None,

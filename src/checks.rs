@@ -7,6 +7,7 @@ mod chords;
 pub mod cover;
 pub mod curvature;
 pub mod edge;
+pub mod elevation;
 pub mod ends;
 pub mod ground;
 pub mod openings;
@@ -38,6 +39,8 @@ pub struct Worked<'a> {
     pub profile: Option<&'a Profile>,
     /// Its forces, if curve, strands and ends are known.
     pub forces: Option<&'a Forces>,
+    /// How it turns down to its point of least force; with the forces.
+    pub turning: Option<Turning>,
     /// Lock-off force at its two anchors, at station 0 and at the path's end, kN; with the forces.
     pub lock_off_kn: Option<[f64; 2]>,
 }
@@ -50,6 +53,8 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(ends::one_end_length(worked, job));
     found.extend(profile::highs_in_a_row(worked));
     found.extend(profile::lows_in_a_row(worked));
+    found.extend(elevation::high_below_low(worked));
+    found.extend(elevation::support_off_curve(worked, job));
     found.extend(cover::height_outside_cover(worked, ground, &chords, job));
     found.extend(profile::hogging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
@@ -81,11 +86,13 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 14] = [
+static RULES: [&Rule; 16] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
     &profile::LOWS_IN_A_ROW,
+    &elevation::HIGH_BELOW_LOW,
+    &elevation::SUPPORT_OFF_CURVE,
     &cover::HEIGHT_OUTSIDE_COVER,
     &profile::HOGGING_RADIUS,
     &plan::PLAN_RADIUS,

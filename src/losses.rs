@@ -23,4 +23,4 @@ pub use long_term::{LongTermLoss, long_term_loss};
 pub use shortening::shortening_mpa;
 pub use steel::steel;
 pub use stressed::Stressed;
-pub use types::{CannotStress, EndForces, Forces, LossTotals, Stage, Steel};
+pub use types::{CannotStress, EndForces, Forces, LaterLosses, LossTotals, Steel};

@@ -7,7 +7,7 @@ use tautplan::checks;
 use tautplan::finding::{Finding, Level};
 use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
 use tautplan::geometry::Path;
-use tautplan::losses::{EndForces, Forces, LossTotals, Steel};
+use tautplan::losses::{EndForces, Forces, LaterLosses, LossTotals, Steel};
 use tautplan::profile::{Profile, Span};
 use tautplan::report::{self, DrawingFacts};
 
@@ -83,15 +83,18 @@ fn forces() -> Forces {
             friction_curvature_kn: 7.29,
             friction_wobble_kn: 10.32,
             draw_in_kn: 108.5,
+        },
+        later: Some(LaterLosses {
             shortening_mpa: 8.7,
             shrinkage_mpa: 78.0,
             creep_mpa: -0.0,
             // No output shows a number that is none.
             relaxation_mpa: f64::NAN,
-        },
-        mean_service_kn: 553.25,
+            mean_service_kn: 553.25,
+        }),
         least_jacking_kn: 670.82,
         least_jacking_station_m: 10.0,
+        least_jacking_angle_rad: 0.055_985_364,
     }
 }
 
@@ -108,15 +111,18 @@ fn analysis() -> Analysis {
         [Some(EndKind::Live), None],
         [Some(0.1), None, Some(0.1)],
     );
-    let point = |angle_rad, level_m, forces_kn| PointResult {
+    let point = |angle_rad, level_m, forces_kn: [f64; 4]| PointResult {
         angle_rad: Some(angle_rad),
         level_m: Some(level_m),
-        forces_kn: Some(forces_kn),
+        forces_kn: forces_kn.map(Some),
     };
     let results = vec![
         TendonResult {
             profile: Some(profile()),
             forces: Some(forces()),
+            area_mm2: Some(493.5),
+            plan_tightest: None,
+            turning: checks::turning(&profile(), &forces()),
             points: vec![
                 point(-0.0, -0.1, [688.4325, 579.9, 575.6, 530.1]),
                 point(0.027_992_682, -0.17, [679.57, 634.1, 629.8, 560.2]),
@@ -128,6 +134,9 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: None,
             forces: None,
+            area_mm2: Some(493.5),
+            plan_tightest: None,
+            turning: None,
             points: Vec::new(),
             samples: Vec::new(),
             concrete_stress_mpa: None,

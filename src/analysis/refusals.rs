@@ -94,7 +94,7 @@ impl Refusal {
                 ))
             }
             Self::SteelUnknown => {
-                tendon.strands?;
+                tendon.strands.filter(|&count| count > 0)?;
                 let named = tendon.strand.as_ref().map_or_else(
                     || "no strand size is given".to_owned(),
                     |name| format!("strand size {name} is not among the job's"),
@@ -114,7 +114,14 @@ impl Refusal {
                 tendon,
                 &NO_FORCE_LEFT,
                 0.0,
-                format!("{reason}, so no forces are given; a force at every point was expected"),
+                format!(
+                    "{reason}, so {} are given; a force at every point was expected",
+                    if *reason == CannotStress::LossesTakeAll {
+                        "only jacking and lock-off forces"
+                    } else {
+                        "no forces"
+                    }
+                ),
                 "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
                  coefficients; stress a tendon this short or this winding in another way",
             )),
@@ -122,7 +129,7 @@ impl Refusal {
                 tendon,
                 &CONCRETE_STRESS_UNKNOWN,
                 0.0,
-                "the mean concrete stress is not known, so no forces are given; a slab outline around the tendon with its \
+                "the mean concrete stress is not known, so only jacking and lock-off forces are given; a slab outline around the tendon with its \
                  thickness, or the stress in the job, was expected"
                     .to_owned(),
                 "draw the slab edge as a closed line on its layer and give the slab's thickness, or set \

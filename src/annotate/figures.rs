@@ -28,7 +28,8 @@ struct Figure<'a> {
     worth: Worth,
     path: &'a Path,
     station_m: f64,
-    forces_kn: [f64; 4],
+    /// As far as they are known.
+    forces_kn: [Option<f64>; 4],
     lane: Lane,
 }
 
@@ -57,7 +58,7 @@ pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> V
                     height_m: spot.height_m,
                     rotation_rad: spot.rotation_rad,
                     align: Align::Middle,
-                    content: number(*figure.forces_kn.get(stage)?),
+                    content: number((*figure.forces_kn.get(stage)?)?),
                 };
                 Some(layers::mark(layer, drawn))
             })
@@ -69,8 +70,13 @@ fn number(force_kn: f64) -> String {
     format!("{force_kn:.0}")
 }
 
+/// The force at the last stage that is known.
+fn latest_kn(forces_kn: &[Option<f64>; 4]) -> Option<f64> {
+    forces_kn.iter().rev().find_map(|force_kn| *force_kn)
+}
+
 fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<Figure<'a>> {
-    let figure = |worth, station_m, forces_kn: [f64; 4]| Figure {
+    let figure = |worth, station_m, forces_kn: [Option<f64>; 4]| Figure {
         worth,
         path: &tendon.path,
         station_m,
@@ -88,22 +94,24 @@ fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<F
                 PointKind::Low => Worth::Low,
                 PointKind::Support => return None,
             };
-            Some(figure(worth, point.station_m, found.forces_kn?))
+            latest_kn(&found.forces_kn)?;
+            Some(figure(worth, point.station_m, found.forces_kn))
         })
         .collect();
-    let service = |forces_kn: &[f64; 4]| forces_kn[3];
+    let last = |forces_kn: &[Option<f64>; 4]| latest_kn(forces_kn).unwrap_or(f64::INFINITY);
     let least = result
         .samples
         .iter()
-        .filter_map(|sample| Some((sample.station_m, sample.forces_kn?)))
-        .min_by(|a, b| service(&a.1).total_cmp(&service(&b.1)));
+        .filter(|sample| latest_kn(&sample.forces_kn).is_some())
+        .map(|sample| (sample.station_m, sample.forces_kn))
+        .min_by(|a, b| last(&a.1).total_cmp(&last(&b.1)));
     if let Some((station_m, forces_kn)) = least {
         let nearest = figures
             .iter_mut()
-            .min_by(|a, b| service(&a.forces_kn).total_cmp(&service(&b.forces_kn)));
+            .min_by(|a, b| last(&a.forces_kn).total_cmp(&last(&b.forces_kn)));
         match nearest {
             // Between two points, where the curves from two jacks meet, say, and lower than at either.
-            Some(at_point) if service(&at_point.forces_kn) > service(&forces_kn) + 0.5 => {
+            Some(at_point) if last(&at_point.forces_kn) > last(&forces_kn) + 0.5 => {
                 figures.push(figure(Worth::Least, station_m, forces_kn));
             }
             Some(at_point) => at_point.worth = at_point.worth.min(Worth::Least),
@@ -120,9 +128,9 @@ fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<F
 /// before right (in a band, that tells whose figure it is), beside the point before along the tendon. Texts are never
 /// touched; lines only as a last resort.
 fn find(figure: &Figure, room: &Room) -> Option<Spot> {
-    let letters = figure.forces_kn.map(number);
+    let letters: Vec<String> = figure.forces_kn.into_iter().flatten().map(number).collect();
     let longest = letters.iter().max_by_key(|text| text.len())?;
-    if !figure.forces_kn.iter().all(|kn| kn.is_finite()) {
+    if !figure.forces_kn.iter().flatten().all(|kn| kn.is_finite()) {
         return None;
     }
     let length_m = figure.path.length_m();

@@ -68,7 +68,7 @@ fn runs(samples: &[Sample], stage: usize, jack_kn: f64) -> Vec<Run> {
 }
 
 fn share(sample: &Sample, stage: usize, jack_kn: f64) -> Option<f64> {
-    let force_kn = *sample.forces_kn?.get(stage)?;
+    let force_kn = (*sample.forces_kn.get(stage)?)?;
     Some(force_kn / jack_kn).filter(|share| share.is_finite())
 }
 
@@ -133,7 +133,7 @@ mod tests {
                     y: 2.0,
                 },
                 level_m: -0.1,
-                forces_kn: force.map(|kn| [kn; 4]),
+                forces_kn: [*force; 4],
             })
             .collect()
     }

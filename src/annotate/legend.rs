@@ -79,10 +79,13 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
 
 fn without_forces(analysis: &Analysis) -> Option<String> {
     let all = analysis.results.len();
-    let none = analysis.results.iter().filter(|r| r.forces.is_none());
+    let none = analysis.results.iter().filter(|r| {
+        let forces = r.forces.as_ref();
+        forces.is_none_or(|forces| forces.later.is_none())
+    });
     let none = none.count();
     (none > 0).then(|| {
-        format!("{none} of {all} tendons have no colour: their forces could not be worked out, see the findings")
+        format!("{none} of {all} tendons have no colour: their forces in service could not be worked out, see the findings")
     })
 }
 

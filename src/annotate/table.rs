@@ -1,7 +1,5 @@
 //! The table of tendons: a row each, in the floor's order, in as many columns of rows as the sheet bears.
 
-use std::collections::BTreeMap;
-
 use geo::Coord;
 
 use super::legend::HEADING;
@@ -158,16 +156,13 @@ fn widths_m(rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
 }
 
 fn rows(analysis: &Analysis) -> Vec<Row> {
-    let mut found: BTreeMap<&str, usize> = BTreeMap::new();
-    for mark in analysis.findings.iter().filter_map(|f| f.tendon.as_deref()) {
-        *found.entry(mark).or_default() += 1;
-    }
     pair(analysis)
-        .map(|(tendon, result)| row(tendon, result, found.get(tendon.mark.as_str()).copied()))
+        .zip(analysis.findings_by_tendon())
+        .map(|((tendon, result), found)| row(tendon, result, found.len()))
         .collect()
 }
 
-fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
+fn row(tendon: &Tendon, result: &TendonResult, findings: usize) -> Row {
     let forces = result.forces.as_ref();
     let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
     let whole = |value: Option<f64>| or_dash(value.map(|kn| format!("{kn:.0}")));
@@ -175,7 +170,7 @@ fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
     let least_kn = result
         .samples
         .iter()
-        .filter_map(|sample| Some(sample.forces_kn?[3]))
+        .filter_map(|sample| sample.forces_kn[3])
         .min_by(f64::total_cmp)
         .filter(|_| forces.is_some());
     let extension = |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)));
@@ -186,12 +181,12 @@ fn row(tendon: &Tendon, result: &TendonResult, findings: Option<usize>) -> Row {
         tendon.ends.map(|end| end_word(&end)).join("-"),
         whole(forces.map(|forces| forces.jack_kn)),
         whole(least_kn),
-        whole(forces.map(|forces| forces.mean_service_kn)),
+        whole(forces.and_then(|forces| Some(forces.later?.mean_service_kn))),
         extension(0),
         extension(1),
         percent(forces.map(|f| f.totals.friction_curvature_kn / f.jack_kn)),
         percent(forces.map(|f| f.least_jacking_kn / f.jack_kn)),
-        findings.unwrap_or(0).to_string(),
+        findings.to_string(),
     ]
 }
 

@@ -164,7 +164,7 @@ fn where_tendons_lie_too_close_only_the_governing_figures_are_written() {
 fn in_a_band_a_figure_stands_nearer_to_its_own_tendon_than_the_next_but_one() {
     let mut tendons = band(5, 0.3);
     for (number, (_, result)) in (0_u32..).zip(&mut tendons) {
-        let forces_kn = Some([500.0 + f64::from(number); 4]);
+        let forces_kn = [Some(500.0 + f64::from(number)); 4];
         for point in &mut result.points {
             point.forces_kn = forces_kn;
         }
@@ -440,7 +440,7 @@ fn an_empty_floor_gives_legend_and_table_only() {
 fn broken_numbers_draw_nothing_and_stop_nothing() {
     let mut broken: Analysis = analysis(vec![line("B1", at(0.0, 0.0), at(20.0, 0.0))]);
     for sample in &mut broken.results[0].samples {
-        sample.forces_kn = Some([f64::NAN; 4]);
+        sample.forces_kn = [Some(f64::NAN); 4];
         sample.place.x = f64::NAN;
     }
     let sheet = draw(&broken, &beside(&[[at(f64::NAN, 0.0); 4]]), &Job::default());

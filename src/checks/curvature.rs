@@ -31,11 +31,12 @@ pub struct Turning {
 /// How a tendon turns, from its curve and forces; `None` where the point of least force is the jack itself.
 pub fn turning(profile: &Profile, forces: &Forces) -> Option<Turning> {
     let least_m = forces.least_jacking_station_m;
+    let from_start_rad = forces.least_jacking_angle_rad;
     let (angle_rad, distance_m) = if forces.ends[0].kind == EndKind::Live {
-        (profile.angle_rad(least_m), least_m)
+        (from_start_rad, least_m)
     } else {
         (
-            profile.angle_from_end_rad(least_m),
+            profile.total_angle_rad() - from_start_rad,
             profile.plan_length_m() - least_m,
         )
     };
@@ -50,8 +51,7 @@ pub fn turning(profile: &Profile, forces: &Forces) -> Option<Turning> {
 }
 
 pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
-    let forces = worked.forces?;
-    let turning = turning(worked.profile?, forces)?;
+    let (forces, turning) = (worked.forces?, worked.turning?);
     let limits = &job.limits;
     let costly = turning.loss_ratio > limits.curvature_loss_ratio + ROUNDING;
     let winding = turning.angle_per_m_rad > limits.angle_per_m_rad + ROUNDING;
@@ -85,25 +85,32 @@ pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
             forces.jack_kn,
             expected.join(" and ")
         ),
-        "look for a height read wrong first; then flatten the drape where it balances more load than it should, straighten \
-         the sweeps in plan, or stress from both ends",
+        if forces.both_live() {
+            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+             straighten the sweeps in plan, or divide the tendon at a pour joint; it is stressed from both ends already"
+        } else {
+            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+             straighten the sweeps in plan, or stress from both ends"
+        },
     ))
 }
 
 #[cfg(test)]
 mod tests {
-    use super::super::testing::{forces, high_to_low, job, point, straight, worked};
+    use super::super::testing::{along, forces, high_to_low, job, point, straight, worked};
     use super::*;
-    use crate::losses::{Effective, Stressed};
+    use crate::geometry::Path;
+    use crate::losses::{Effective, Friction, Stressed};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
         let profile = high_to_low(10.0, drop_m, 1.0);
         forces.least_jacking_station_m = 10.0;
+        forces.least_jacking_angle_rad = profile.total_angle_rad();
         forces.totals.friction_curvature_kn = loss_ratio * forces.jack_kn;
         let mut worked = worked(&tendon);
-        worked.profile = Some(&profile);
         worked.forces = Some(&forces);
+        worked.turning = turning(&profile, &forces);
         curvature_loss(&worked, &job())
     }
 
@@ -117,6 +124,23 @@ mod tests {
                 |f| f.level == Level::Warning && f.text.contains("curvature_loss_ratio")
             )
         );
+    }
+
+    #[test]
+    fn a_tendon_stressed_from_both_ends_is_not_told_to_be() {
+        let remedy = |far_kind| {
+            let (tendon, mut forces) = (straight(10.0), forces());
+            let profile = high_to_low(10.0, 0.1, 1.0);
+            forces.least_jacking_station_m = 10.0;
+            forces.totals.friction_curvature_kn = 0.5 * forces.jack_kn;
+            forces.ends[1].kind = far_kind;
+            let mut worked = worked(&tendon);
+            worked.forces = Some(&forces);
+            worked.turning = turning(&profile, &forces);
+            curvature_loss(&worked, &job()).map_or(String::new(), |found| found.remedy)
+        };
+        assert!(remedy(EndKind::Dead).ends_with("or stress from both ends"));
+        assert!(remedy(EndKind::Live).ends_with("stressed from both ends already"));
     }
 
     #[test]
@@ -134,9 +158,11 @@ mod tests {
         let profile = high_to_low(10.0, 0.1, 1.0);
         let mut forces = forces();
         forces.least_jacking_station_m = 10.0;
+        forces.least_jacking_angle_rad = profile.total_angle_rad();
         let ahead = turning(&profile, &forces);
         forces.ends.swap(0, 1);
         forces.least_jacking_station_m = 0.0;
+        forces.least_jacking_angle_rad = 0.0;
         let back = turning(&profile, &forces);
         assert!(
             ahead
@@ -156,27 +182,51 @@ mod tests {
         use crate::floor::EndKind::{Dead, Live};
         use crate::floor::PointKind::{Anchor, High, Low};
         let job = job();
-        let mut tendon = straight(24.0);
-        let marked = [
-            (Anchor, 0.0, 0.1),
-            (Low, 5.0, 0.03),
-            (High, 12.0, 0.17),
-            (Anchor, 24.0, 0.1),
-        ];
-        tendon.points = marked
-            .map(|(kind, station_m, height_m)| point(kind, station_m, Some(height_m)))
-            .to_vec();
-        let profile = crate::profile::build(&tendon, &job.profile).expect("a curve");
-        let steel = forces().steel;
-        for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
-            let stressed = Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
-            let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");
-            let turned = turning(&profile, &effective.forces()).expect("a stretch");
-            let from_angle = 1.0 - (-job.stressing.mu_per_rad * turned.angle_rad).exp();
-            assert!(
-                (from_angle - turned.loss_ratio).abs() < 1e-9,
-                "{kinds:?}: {turned:?}"
-            );
+        let corner = |x: f64| geo::Coord { x, y: 0.0 };
+        let bent = |at_m: f64, turn_rad: f64| {
+            let far = crate::geometry::step(corner(at_m), turn_rad, 24.0 - at_m);
+            along(Path::through(&[corner(0.0), corner(at_m), far]))
+        };
+        // Straight; and with a bare vertex in which the curves of two jacks meet, and one in which they do not.
+        for mut tendon in [straight(24.0), bent(11.0, 1.05), bent(3.0, -0.2)] {
+            let marked = [
+                (Anchor, 0.0, 0.1),
+                (Low, 5.0, 0.03),
+                (High, 12.0, 0.17),
+                (Anchor, 24.0, 0.1),
+            ];
+            tendon.points = marked
+                .map(|(kind, station_m, height_m)| point(kind, station_m, Some(height_m)))
+                .to_vec();
+            let profile = crate::profile::build(&tendon, &job.profile).expect("a curve");
+            let steel = forces().steel;
+            for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
+                let stressed =
+                    Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
+                let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");
+                let forces = effective.forces();
+                let turned = turning(&profile, &forces).expect("a stretch");
+                let from_angle = 1.0 - (-job.stressing.mu_per_rad * turned.angle_rad).exp();
+                assert!(
+                    (from_angle - turned.loss_ratio).abs() < 1e-9,
+                    "{kinds:?}: {turned:?}"
+                );
+                let at_least_kn = stressed.jacking_kn(forces.least_jacking_station_m);
+                assert!((at_least_kn - forces.least_jacking_kn).abs() < 1e-9);
+                // From jack to jack φ is W; two jacks leave exp(−W/2) where they meet, one leaves exp(−W).
+                let whole = Friction::of(&job.stressing)
+                    .exponent(profile.total_angle_rad(), profile.length_m());
+                let left = if kinds == [Live, Live] {
+                    0.5 * whole
+                } else {
+                    whole
+                };
+                let left_kn = forces.jack_kn * (-left).exp();
+                assert!(
+                    (forces.least_jacking_kn - left_kn).abs() < 1e-6,
+                    "{kinds:?}"
+                );
+            }
         }
     }
 }

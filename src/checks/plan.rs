@@ -5,6 +5,7 @@ use super::words::{also_at, worst_of};
 use crate::finding::{Finding, Level, Rule};
 use crate::geometry::{Path, Segment};
 use crate::job::Job;
+use crate::profile::Tightest;
 
 /// See [`Rule::meaning`].
 pub static PLAN_RADIUS: Rule = Rule {
@@ -25,13 +26,16 @@ struct Turn {
     bare: bool,
 }
 
-/// Least radius of a plan line, metres, over its arcs and the largest fillets of its bare vertices; `None` if straight.
+/// Least radius of a plan line, over its arcs and the largest fillets of its bare vertices, and where; `None` if straight.
 /// Turns below half a degree are left out.
-pub fn least_plan_radius_m(path: &Path) -> Option<f64> {
+pub fn tightest_in_plan(path: &Path) -> Option<Tightest> {
     turns(path)
         .into_iter()
-        .map(|turn| turn.radius_m)
-        .min_by(f64::total_cmp)
+        .map(|turn| Tightest {
+            radius_m: turn.radius_m,
+            station_m: turn.station_m,
+        })
+        .min_by(|a, b| a.radius_m.total_cmp(&b.radius_m))
 }
 
 fn turns(path: &Path) -> Vec<Turn> {
@@ -185,11 +189,9 @@ mod tests {
 
     #[test]
     fn a_straight_line_has_no_least_radius_and_an_arc_has_its_own() {
-        assert_eq!(
-            least_plan_radius_m(&Path::through(&[at(0.0, 0.0), at(9.0, 0.0)])),
-            None
-        );
-        assert_eq!(least_plan_radius_m(&swept(7.5, 0.2)), Some(7.5));
-        assert_eq!(least_plan_radius_m(&swept(7.5, 0.001)), None);
+        let least_m = |path: &Path| tightest_in_plan(path).map(|tightest| tightest.radius_m);
+        assert_eq!(least_m(&Path::through(&[at(0.0, 0.0), at(9.0, 0.0)])), None);
+        assert_eq!(least_m(&swept(7.5, 0.2)), Some(7.5));
+        assert_eq!(least_m(&swept(7.5, 0.001)), None);
     }
 }

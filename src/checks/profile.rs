@@ -32,6 +32,9 @@ const ROUNDING_M: f64 = 1e-6;
 /// Crests nearer than this are one high point, metres.
 const ONE_CREST_M: f64 = 1e-3;
 
+/// Breaks in slope below this are rounding of heights, radians.
+const LEAST_BREAK_RAD: f64 = 5e-4;
+
 pub(super) fn highs_in_a_row(worked: &Worked) -> Option<Finding> {
     in_a_row(worked, &HIGHS_IN_A_ROW, PointKind::High, "high", "low")
 }
@@ -64,11 +67,27 @@ fn in_a_row(
         .collect();
     // The longest straight is the one most likely to miss a point.
     let ((from_m, to_m), others) = worst_of(pairs, |pair| pair.1 - pair.0, |pair| pair.0)?;
-    let straight = if worked.profile.is_some() {
-        ", and the tendon was taken as straight there"
-    } else {
-        ""
-    };
+    let straight = worked.profile.map_or(String::new(), |profile| {
+        // Hogging-radius and radius_min_m are of curves; a break in slope is a curve without a radius.
+        let breaks: Vec<String> = profile
+            .bends
+            .iter()
+            .filter(|bend| {
+                let at = |station_m: f64| (bend.station_m - station_m).abs() < ONE_CREST_M;
+                (at(from_m) || at(to_m)) && bend.angle_rad > LEAST_BREAK_RAD
+            })
+            .map(|bend| {
+                format!(
+                    "; it turns {:.3} rad at one point at station {:.2} m, which no radius given counts",
+                    bend.angle_rad, bend.station_m
+                )
+            })
+            .collect();
+        format!(
+            ", and the tendon was taken as straight there{}",
+            breaks.concat()
+        )
+    });
     Some(worked.finding(
         rule,
         Level::Warning,
@@ -122,7 +141,7 @@ pub(super) fn hogging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
         level,
         station_m,
         format!(
-            "the curve over the high point has a radius of {radius_m:.2} m; at least {limit_m} m was expected ({key}){}",
+            "the curve has a hogging radius of {radius_m:.2} m; at least {limit_m} m was expected ({key}){}",
             also_at(&others)
         ),
         "lower the high point, raise the low points beside it, or spread the hogging curve over more of the span \
@@ -171,6 +190,36 @@ mod tests {
             point(Anchor, 20.0, None),
         ];
         assert!(highs_in_a_row(&worked(&tendon)).is_some_and(|f| f.station_m == Some(8.0)));
+    }
+
+    #[test]
+    fn a_kink_where_two_highs_follow_each_other_is_said() {
+        use PointKind::{Anchor, High};
+        let said = |second_m: f64| {
+            let mut tendon = straight(12.0);
+            let marked = [
+                (Anchor, 0.0, 0.1),
+                (High, 4.0, 0.17),
+                (High, 8.0, second_m),
+                (Anchor, 12.0, 0.1),
+            ];
+            tendon.points = marked
+                .map(|(kind, station_m, height_m)| point(kind, station_m, Some(height_m)))
+                .to_vec();
+            let profile = crate::profile::build(&tendon, &job().profile).expect("a curve");
+            let mut worked = worked(&tendon);
+            worked.profile = Some(&profile);
+            highs_in_a_row(&worked).map_or(String::new(), |found| found.text)
+        };
+        let slope_rad = (0.04_f64 / 4.0).atan();
+        let text = said(0.13);
+        assert!(
+            text.contains(&format!(
+                "turns {slope_rad:.3} rad at one point at station 4.00 m"
+            )),
+            "{text}"
+        );
+        assert!(!said(0.17).contains("at one point"));
     }
 
     #[test]

@@ -122,8 +122,7 @@ pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
     if ratio.is_nan() || ratio >= limit - ROUNDING {
         return None;
     }
-    let both_live = forces.ends.iter().all(|end| end.kind == EndKind::Live);
-    let (place, remedy) = if both_live {
+    let (place, remedy) = if forces.both_live() {
         (
             "between its two live ends",
             "flatten the profile or the sweeps, or divide the tendon at a pour joint; it is stressed from both ends already",

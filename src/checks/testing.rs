@@ -69,6 +69,7 @@ pub(super) fn worked(tendon: &Tendon) -> Worked<'_> {
         tendon,
         profile: None,
         forces: None,
+        turning: None,
         lock_off_kn: None,
     }
 }
@@ -113,9 +114,10 @@ pub(super) fn forces() -> Forces {
         jack_kn: 688.4,
         ends: [end(EndKind::Live), end(EndKind::Dead)],
         totals: LossTotals::default(),
-        mean_service_kn: 530.0,
+        later: None,
         least_jacking_kn: 640.0,
         least_jacking_station_m: 20.0,
+        least_jacking_angle_rad: 0.0,
     }
 }
 

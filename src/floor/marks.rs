@@ -221,16 +221,22 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
     let mut first: BTreeMap<String, &Tendon> = BTreeMap::new();
     for tendon in tendons {
         let middle_m = tendon.path.length_m() / 2.0;
-        if tendon.strands.is_none() {
+        let no_count = match tendon.strands {
+            None => Some((
+                "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
+                "write mark and strands beside the tendon, on the layer of marks",
+            )),
+            Some(0) => Some((
+                "the tendon's label says 0 strands; expected at least one, as in D012 5-12.7",
+                "correct the number of strands in the label",
+            )),
+            Some(_) => None,
+        };
+        if let Some((text, remedy)) = no_count {
             findings.push(
-                Finding::new(
-                    &STRAND_COUNT_MISSING,
-                    Level::Error,
-                    "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
-                    "write mark and strands beside the tendon, on the layer of marks",
-                )
-                .on_tendon(&tendon.mark)
-                .at_place(tendon.path.place_at(middle_m)),
+                Finding::new(&STRAND_COUNT_MISSING, Level::Error, text, remedy)
+                    .on_tendon(&tendon.mark)
+                    .at_place(tendon.path.place_at(middle_m)),
             );
         }
         if let Some(before) = first.get(&tendon.mark.to_uppercase()) {

@@ -89,7 +89,8 @@ pub(super) fn mark(content: &str, patterns: &[Regex]) -> Option<MarkText> {
         };
         whole.mark = whole.mark.or_else(|| part("mark"));
         whole.tendons = whole.tendons.or_else(|| count(part("tendons")));
-        whole.strands = whole.strands.or_else(|| count(part("strands")));
+        // None is a count too, if a wrong one: what the label says is told.
+        whole.strands = whole.strands.or_else(|| part("strands")?.parse().ok());
         whole.strand = whole.strand.or_else(|| part("strand"));
     }
     (whole != MarkText::default()).then_some(whole)

@@ -30,7 +30,7 @@ pub struct Tendon {
     pub path: Path,
     /// Tendons that the line stands for.
     pub tendons: u32,
-    /// Strands in each of those tendons.
+    /// Strands in each of those tendons, as drawn: a label may say 0.
     pub strands: Option<u32>,
     /// Strand size as written, such as `12.7`.
     pub strand: Option<String>,

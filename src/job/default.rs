@@ -40,6 +40,8 @@ impl Default for Job {
                 cover_m: 0.020,
                 hogging_radius_error_m: 2.5,
                 hogging_radius_warning_m: 5.0,
+                support_residual_warning_m: 0.005,
+                support_residual_error_m: 0.010,
                 plan_radius_m: 6.0,
                 far_end_ratio: 0.80,
                 curvature_loss_ratio: 0.15,

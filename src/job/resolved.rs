@@ -221,6 +221,10 @@ pub struct Limits {
     pub hogging_radius_error_m: f64,
     /// Hogging radius below which is a warning, metres.
     pub hogging_radius_warning_m: f64,
+    /// Support height off the curve, metres, above which is a warning.
+    pub support_residual_warning_m: f64,
+    /// Support height off the curve, metres, above which is an error.
+    pub support_residual_error_m: f64,
     /// Plan radius below which is a warning, metres.
     pub plan_radius_m: f64,
     /// Force at the far end over jacking force, below which is a warning.

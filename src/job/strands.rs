@@ -167,6 +167,23 @@ impl Reader {
                 "type for example `hogging_radius_error_m = 2.5` and `hogging_radius_warning_m = 5`",
             );
         }
+        let limits = &self.job.limits;
+        if limits.support_residual_error_m < limits.support_residual_warning_m {
+            let found = format!(
+                "a support height off the curve would be an error ({} mm) before it is a warning ({} mm)",
+                limits.support_residual_error_m * 1000.0,
+                limits.support_residual_warning_m * 1000.0
+            );
+            let span = at(self, "limits.support_residual_error_mm")
+                .or_else(|| at(self, "limits.support_residual_warning_mm"))
+                .unwrap_or(0..0);
+            self.mistake(
+                span,
+                found,
+                "expected support_residual_warning_mm to be the smaller",
+                "type for example `support_residual_warning_mm = 5` and `support_residual_error_mm = 10`",
+            );
+        }
         // Numbers in inches are written with fractions: the default patterns follow the unit.
         if !self.given.contains_key("height.patterns") {
             self.job.conventions.height_patterns =

@@ -2,7 +2,7 @@
 
 use super::long_term::{LongTermLoss, long_term_loss};
 use super::shortening::shortening_mpa;
-use super::{CannotStress, Forces, LossTotals, Stressed};
+use super::{CannotStress, Forces, LaterLosses, Stressed};
 use crate::job::LongTerm;
 
 /// A stressed tendon with its later losses: force at all four stages, anywhere.
@@ -42,21 +42,11 @@ impl<'s, 'p> Effective<'s, 'p> {
         }
     }
 
-    /// Force at jacking, lock-off, transfer and service, kN; at a bend, the lesser of its two sides.
+    /// Force at jacking, lock-off, transfer and service, kN; at a bend, the least in it.
     pub fn forces_kn(&self, station_m: f64) -> [f64; 4] {
         let [jacking_kn, lockoff_kn] = self.stressed.both_kn(station_m);
         let [transfer_kn, service_kn] = self.later_kn(lockoff_kn);
         [jacking_kn, lockoff_kn, transfer_kn, service_kn]
-    }
-
-    /// Force after elastic shortening, kN.
-    pub fn transfer_kn(&self, station_m: f64) -> f64 {
-        self.forces_kn(station_m)[2]
-    }
-
-    /// Effective force, kN.
-    pub fn service_kn(&self, station_m: f64) -> f64 {
-        self.forces_kn(station_m)[3]
     }
 
     /// Transfer and service from the force after lock-off at the same place, kN.
@@ -71,28 +61,18 @@ impl<'s, 'p> Effective<'s, 'p> {
 
     /// What is reported of the tendon as a whole.
     pub fn forces(&self) -> Forces {
-        let stressed = self.stressed;
-        let steel = stressed.steel();
-        let mean_lockoff_kn = stressed.mean_lockoff_kn();
-        let [friction_curvature_kn, friction_wobble_kn] = stressed.friction_losses_kn();
-        let (least_jacking_kn, least_jacking_station_m) = stressed.least_jacking();
+        let mean_lockoff_kn = self.stressed.mean_lockoff_kn();
+        let mean_lockoff_mpa = self.stressed.steel().stress_mpa(mean_lockoff_kn);
         Forces {
-            steel,
-            jack_kn: stressed.jack_kn(),
-            ends: stressed.ends(),
-            totals: LossTotals {
-                friction_curvature_kn,
-                friction_wobble_kn,
-                draw_in_kn: stressed.draw_in_kn(),
+            later: Some(LaterLosses {
                 shortening_mpa: self.shortening_mpa,
                 shrinkage_mpa: self.long_term.shrinkage_mpa,
                 creep_mpa: self.long_term.creep_mpa,
-                relaxation_mpa: self.long_term.relaxation_ratio * steel.stress_mpa(mean_lockoff_kn),
-            },
-            // The later losses are linear in the force after lock-off, so the mean goes through them as a force does.
-            mean_service_kn: self.later_kn(mean_lockoff_kn)[1],
-            least_jacking_kn,
-            least_jacking_station_m,
+                relaxation_mpa: self.long_term.relaxation_ratio * mean_lockoff_mpa,
+                // The later losses are linear in the force after lock-off, so the mean goes through them as a force does.
+                mean_service_kn: self.later_kn(mean_lockoff_kn)[1],
+            }),
+            ..self.stressed.forces()
         }
     }
 }

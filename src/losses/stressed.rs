@@ -4,7 +4,7 @@ use super::draw_in::{DrawnIn, from_both_ends, from_one_end};
 use super::exponent::{At, Exponent, Side};
 use super::extension::extension_mm;
 use super::friction::Friction;
-use super::{CannotStress, EndForces, Steel};
+use super::{CannotStress, EndForces, Forces, LossTotals, Steel};
 use crate::floor::EndKind;
 use crate::job::Stressing;
 use crate::profile::Profile;
@@ -23,7 +23,8 @@ pub struct Stressed<'p> {
     drawn_in: [Option<DrawnIn>; 2],
     /// Place of least jacking force, seen from the start.
     least: At,
-    /// The same place, on its side of least force.
+    /// φ from the start where the force is least there: on the side of least force of a bend, or within it where the curves
+    /// of two jacks meet in it.
     least_exponent: f64,
 }
 
@@ -87,12 +88,14 @@ impl<'p> Stressed<'p> {
             least_exponent: least.exponent,
         };
         let (before, after) = stressed.along.on_both_sides(least.station_m);
-        stressed.least_exponent = if stressed.jacking_at_kn(before) <= stressed.jacking_at_kn(after)
-        {
-            before
-        } else {
-            after
-        };
+        stressed.least_exponent = [before, after]
+            .into_iter()
+            .chain(stressed.met_within(before, after))
+            .min_by(|&a, &b| {
+                let force_kn = |exponent| stressed.jacking_at_kn(exponent);
+                force_kn(a).total_cmp(&force_kn(b))
+            })
+            .unwrap_or(before);
         Ok(stressed)
     }
 
@@ -111,30 +114,38 @@ impl<'p> Stressed<'p> {
         self.jack_kn
     }
 
-    /// Force while the jacks hold, kN; at a bend, the lesser of its two sides.
+    /// Force while the jacks hold, kN; at a bend, the least in it.
     pub fn jacking_kn(&self, station_m: f64) -> f64 {
-        self.on_lesser_side(station_m, |exponent| self.jacking_at_kn(exponent))
+        self.both_kn(station_m)[0]
     }
 
-    /// Force after lock-off, kN; at a bend, the lesser of its two sides.
+    /// Force after lock-off, kN; at a bend, the least in it.
     pub fn lockoff_kn(&self, station_m: f64) -> f64 {
-        self.on_lesser_side(station_m, |exponent| self.lockoff_at_kn(exponent))
+        self.both_kn(station_m)[1]
     }
 
-    /// Force while the jacks hold and after lock-off, kN; at a bend, the lesser of its two sides.
+    /// Force while the jacks hold and after lock-off, kN; at a bend, the least in it.
     pub fn both_kn(&self, station_m: f64) -> [f64; 2] {
         let (before, after) = self.along.on_both_sides(station_m);
         let [jacking_kn, lockoff_kn] = self.both_at_kn(before);
         if (after - before).abs() <= 0.0 {
             return [jacking_kn, lockoff_kn];
         }
-        let beyond = self.both_at_kn(after);
-        [jacking_kn.min(beyond[0]), lockoff_kn.min(beyond[1])]
+        [after]
+            .into_iter()
+            .chain(self.met_within(before, after))
+            .map(|exponent| self.both_at_kn(exponent))
+            .fold([jacking_kn, lockoff_kn], |held, next| {
+                [held[0].min(next[0]), held[1].min(next[1])]
+            })
     }
 
-    fn on_lesser_side(&self, station_m: f64, force_kn: impl Fn(f64) -> f64) -> f64 {
-        let (before, after) = self.along.on_both_sides(station_m);
-        force_kn(before).min(force_kn(after))
+    /// φ from the start where the curves of two jacks meet, if that is between these two sides of a bend: a bend is a turn
+    /// within no length, and the strand in it has every force between.
+    fn met_within(&self, before: f64, after: f64) -> Option<f64> {
+        let half = 0.5 * self.along.whole().exponent;
+        let two_jacks = self.kinds == [EndKind::Live; 2];
+        (two_jacks && before < half && half < after).then_some(half)
     }
 
     /// Jacking force where φ from the start has this value: the larger of what each live end's jack gives, kN.
@@ -169,29 +180,60 @@ impl<'p> Stressed<'p> {
         )
     }
 
-    /// Jacking force lost down to the point of least force: by angle alone, P0 (1 − exp(−μ α)), and the rest, kN.
+    /// Jacking force lost down to the point of least force: by angle alone, P0 (1 − exp(−μ α)), and the rest, kN. From the
+    /// first live end: of two, both hold that place.
     pub fn friction_losses_kn(&self) -> [f64; 2] {
         let whole = self.along.whole();
-        let from_start = At {
-            exponent: self.least_exponent,
-            ..self.least
-        };
-        let from_end = At {
-            exponent: whole.exponent - self.least_exponent,
-            arc_m: whole.arc_m - self.least.arc_m,
-            ..self.least
-        };
-        // The jack that holds this place is the one with the smaller exponent to it.
-        let jacked_from = match self.kinds {
-            [EndKind::Live, EndKind::Dead] => from_start,
-            [EndKind::Dead, _] => from_end,
-            _ if from_start.exponent <= from_end.exponent => from_start,
-            _ => from_end,
+        let jacked_from = if self.kinds[0] == EndKind::Live {
+            At {
+                exponent: self.least_exponent,
+                ..self.least
+            }
+        } else {
+            At {
+                exponent: whole.exponent - self.least_exponent,
+                arc_m: whole.arc_m - self.least.arc_m,
+                ..self.least
+            }
         };
         let curvature = self.along.angle_exponent(&jacked_from);
         let curvature_kn = super::friction::loss_kn(self.jack_kn, curvature);
         let all_kn = super::friction::loss_kn(self.jack_kn, jacked_from.exponent);
         [curvature_kn, all_kn - curvature_kn]
+    }
+
+    /// Angle turned from station 0 to the point of least force, radians; of a bend there, the share up to its least force.
+    pub fn least_jacking_angle_rad(&self) -> f64 {
+        let (profile, station_m) = (self.along.profile(), self.least.station_m);
+        let before_rad = profile.angle_before_rad(station_m);
+        let bend_rad = profile.angle_rad(station_m) - before_rad;
+        let (before, after) = self.along.on_both_sides(station_m);
+        let share = if after > before {
+            (self.least_exponent - before) / (after - before)
+        } else {
+            1.0
+        };
+        before_rad + share * bend_rad
+    }
+
+    /// What is reported of the tendon as a whole, without the later losses.
+    pub fn forces(&self) -> Forces {
+        let [friction_curvature_kn, friction_wobble_kn] = self.friction_losses_kn();
+        let (least_jacking_kn, least_jacking_station_m) = self.least_jacking();
+        Forces {
+            steel: self.steel,
+            jack_kn: self.jack_kn,
+            ends: self.ends(),
+            totals: LossTotals {
+                friction_curvature_kn,
+                friction_wobble_kn,
+                draw_in_kn: self.draw_in_kn(),
+            },
+            later: None,
+            least_jacking_kn,
+            least_jacking_station_m,
+            least_jacking_angle_rad: self.least_jacking_angle_rad(),
+        }
     }
 
     /// ∫ P ds while the jacks hold, from each end to the point of least force, kN m.

@@ -13,19 +13,6 @@ pub struct Steel {
     pub modulus_mpa: f64,
 }
 
-/// The four stages, in order.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
-pub enum Stage {
-    /// The jacks hold.
-    Jacking,
-    /// The wedges have drawn in.
-    LockOff,
-    /// The concrete has shortened elastically.
-    Transfer,
-    /// Shrinkage, creep and relaxation are over: the effective force.
-    Service,
-}
-
 /// Why a tendon has no forces although its curve is known.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
 pub enum CannotStress {
@@ -43,7 +30,7 @@ pub enum CannotStress {
     LossesTakeAll,
 }
 
-/// Forces of one tendon, each list along the points of the tendon that was given.
+/// Forces of one tendon as a whole; forces at a place are asked of [`super::Stressed`] and [`super::Effective`].
 #[derive(Debug, Clone, PartialEq)]
 pub struct Forces {
     /// The steel.
@@ -52,14 +39,16 @@ pub struct Forces {
     pub jack_kn: f64,
     /// The two ends, at station 0 and at the path's end.
     pub ends: [EndForces; 2],
-    /// Losses by cause.
+    /// Losses at jacking and lock-off.
     pub totals: LossTotals,
-    /// Mean of the service force along the tendon, kN.
-    pub mean_service_kn: f64,
+    /// What comes after lock-off; `None` where the concrete's stress is not known, or where nothing would be left.
+    pub later: Option<LaterLosses>,
     /// Least jacking-stage force, kN (the far end of a tendon stressed from one end).
     pub least_jacking_kn: f64,
     /// Station of the least jacking-stage force, metres of plan line.
     pub least_jacking_station_m: f64,
+    /// Angle turned from station 0 to there, radians; of a bend there, the share up to its least force.
+    pub least_jacking_angle_rad: f64,
 }
 
 /// Forces at an end.
@@ -77,7 +66,7 @@ pub struct EndForces {
     pub draw_in_reaches_far: bool,
 }
 
-/// Losses by cause; forces per tendon.
+/// Losses at jacking and lock-off by cause, per tendon.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub struct LossTotals {
     /// Jacking force lost to angle alone, down to the point of least force: P0 (1 − exp(−μ α)), kN.
@@ -86,6 +75,11 @@ pub struct LossTotals {
     pub friction_wobble_kn: f64,
     /// Drop at the (first) live anchor by draw-in, kN.
     pub draw_in_kn: f64,
+}
+
+/// Losses after lock-off by cause, and what they leave.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub struct LaterLosses {
     /// Elastic shortening, MPa.
     pub shortening_mpa: f64,
     /// Shrinkage, MPa.
@@ -94,4 +88,13 @@ pub struct LossTotals {
     pub creep_mpa: f64,
     /// Relaxation, mean along the tendon, MPa.
     pub relaxation_mpa: f64,
+    /// Mean of the service force along the tendon, kN.
+    pub mean_service_kn: f64,
+}
+
+impl Forces {
+    /// Whether the tendon is stressed from both ends.
+    pub fn both_live(&self) -> bool {
+        self.ends.iter().all(|end| end.kind == EndKind::Live)
+    }
 }

@@ -2,10 +2,9 @@
 
 use super::bends::turned_at;
 use super::hogging::fitted_m;
-use super::types::Tightest;
 use super::{Profile, SAME_PLACE_M, Span};
 use crate::floor::{Point, PointKind, Tendon};
-use crate::geometry::{Corner, Path};
+use crate::geometry::Path;
 use crate::job::Profiling;
 
 /// Why a tendon has no curve. Each list names points by their index in the tendon.
@@ -57,9 +56,7 @@ pub fn build(tendon: &Tendon, job: &Profiling) -> Result<Profile, Unknown> {
     let corners = tendon.path.corners();
     let spans = cut_to_plan(rising, &tendon.path);
     let bends = turned_at(&spans, &corners);
-    let mut profile = Profile::new(spans, bends);
-    profile.plan_tightest = tightest_in_plan(profile.plan_tightest, &corners);
-    Ok(profile)
+    Ok(Profile::new(spans, bends))
 }
 
 /// The points that bend the curve, checked: known levels, in order, from end to end.
@@ -272,15 +269,4 @@ fn curvature_runs(path: &Path) -> Vec<(f64, f64)> {
         }
     }
     runs
-}
-
-fn tightest_in_plan(arcs: Option<Tightest>, corners: &[Corner]) -> Option<Tightest> {
-    corners
-        .iter()
-        .map(|corner| Tightest {
-            radius_m: corner.fillet_radius_m,
-            station_m: corner.station_m,
-        })
-        .chain(arcs)
-        .min_by(|a, b| a.radius_m.total_cmp(&b.radius_m))
 }

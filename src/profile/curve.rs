@@ -19,18 +19,9 @@ impl Profile {
             sum_rad += bend.angle_rad;
             bends_before_rad.push(sum_rad);
         }
-        let plan_tightest = spans
-            .iter()
-            .filter(|span| span.plan_curvature_per_m != 0.0)
-            .map(|span| Tightest {
-                radius_m: 1.0 / span.plan_curvature_per_m.abs(),
-                station_m: span.start_m + 0.5 * span.length_m,
-            })
-            .min_by(|a, b| a.radius_m.total_cmp(&b.radius_m));
         Self {
             spans,
             bends,
-            plan_tightest,
             starts,
             bends_before_rad,
         }
@@ -134,11 +125,6 @@ impl Profile {
     /// Least vertical radius, hogging or sagging; `None` for a straight curve. Of equals, the first.
     pub fn radius_min_m(&self) -> Option<Tightest> {
         self.tightest(|_| true)
-    }
-
-    /// Least radius in plan, of arcs and of the largest fillet that fits each bare vertex; `None` for a straight line.
-    pub fn plan_radius_min_m(&self) -> Option<Tightest> {
-        self.plan_tightest
     }
 
     fn tightest(&self, counts: impl Fn(&Span) -> bool) -> Option<Tightest> {

@@ -8,8 +8,6 @@ pub struct Profile {
     pub spans: Vec<Span>,
     /// Angles turned at a point (bare plan vertices, breaks in slope), in order of station.
     pub bends: Vec<Bend>,
-    /// Least radius in plan, of arcs and of the fillets that fit bare vertices.
-    pub(super) plan_tightest: Option<Tightest>,
     /// At each piece's start, and at the end of the last: length in space and angle turned so far, without bends.
     pub(super) starts: Vec<SoFar>,
     /// Sum of the bends before each bend, and of all, radians.

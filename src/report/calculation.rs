@@ -8,7 +8,8 @@ mod friction;
 use super::DrawingFacts;
 use super::summary::{CAUTIONS, assumed};
 use super::table::{Align, plain, table};
-use crate::analysis::{Analysis, TendonResult};
+use crate::analysis::{Analysis, TendonResult, pair};
+use crate::finding::Finding;
 use crate::floor::Tendon;
 use crate::job::Job;
 
@@ -19,9 +20,10 @@ pub fn calculation(
     job: &Job,
     mark: &str,
 ) -> Option<String> {
-    let sheets: Vec<String> = crate::analysis::pair(analysis)
-        .filter(|(tendon, _)| tendon.mark.eq_ignore_ascii_case(mark))
-        .map(|(tendon, result)| sheet(facts, analysis, job, tendon, result))
+    let sheets: Vec<String> = pair(analysis)
+        .zip(analysis.findings_by_tendon())
+        .filter(|((tendon, _), _)| tendon.mark.eq_ignore_ascii_case(mark))
+        .map(|(worked, found)| sheet(facts, analysis, job, worked, &found))
         .collect();
     (!sheets.is_empty()).then(|| sheets.join("\n"))
 }
@@ -30,13 +32,13 @@ fn sheet(
     facts: &DrawingFacts,
     analysis: &Analysis,
     job: &Job,
-    tendon: &Tendon,
-    result: &TendonResult,
+    (tendon, result): (&Tendon, &TendonResult),
+    found: &[&Finding],
 ) -> String {
     let mut parts = vec![drawn::part(facts, job, tendon, result)];
     match &result.profile {
         Some(profile) => {
-            parts.push(curve::part(job, profile));
+            parts.push(curve::part(job, profile, result.plan_tightest));
             match &result.forces {
                 Some(known) => {
                     parts.push(friction::part(job, tendon, profile, known, result));
@@ -52,17 +54,15 @@ fn sheet(
                 .to_owned(),
         ),
     }
-    parts.push(findings(analysis, tendon));
+    parts.push(findings(found));
     parts.push(assumed(analysis));
     parts.push(CAUTIONS.to_owned());
     parts.join("\n")
 }
 
-fn findings(analysis: &Analysis, tendon: &Tendon) -> String {
-    let own: Vec<String> = analysis
-        .findings
+fn findings(found: &[&Finding]) -> String {
+    let own: Vec<String> = found
         .iter()
-        .filter(|finding| finding.tendon.as_deref() == Some(tendon.mark.as_str()))
         .map(|finding| {
             let station = finding
                 .station_m

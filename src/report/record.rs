@@ -3,10 +3,9 @@
 use serde::Serialize;
 
 use crate::analysis::{PointResult, TendonResult};
-use crate::checks::{plan::least_plan_radius_m, turning};
 use crate::finding::{Finding, Level};
 use crate::floor::{EndKind, Point, PointKind, Run, Tendon};
-use crate::losses::{EndForces, Forces, LossTotals};
+use crate::losses::{EndForces, Forces};
 
 /// A tendon; what is not known is `None` and stays empty in every output.
 #[derive(Debug, Serialize)]
@@ -103,11 +102,6 @@ impl<'a> TendonRecord<'a> {
     /// One tendon's record.
     pub(super) fn of(tendon: &'a Tendon, result: &TendonResult) -> Self {
         let forces = result.forces.as_ref();
-        let turned = result
-            .profile
-            .as_ref()
-            .zip(forces)
-            .and_then(|(profile, forces)| turning(profile, forces));
         Self {
             mark: &tendon.mark,
             handle: &tendon.handle,
@@ -116,7 +110,7 @@ impl<'a> TendonRecord<'a> {
             tendons: tendon.tendons,
             strands: tendon.strands,
             strand: tendon.strand.as_deref(),
-            area_mm2: forces.and_then(|forces| number(forces.steel.area_mm2)),
+            area_mm2: result.area_mm2.and_then(number),
             length_m: result
                 .profile
                 .as_ref()
@@ -126,20 +120,24 @@ impl<'a> TendonRecord<'a> {
                 .profile
                 .as_ref()
                 .and_then(|profile| number(profile.radius_min_m()?.radius_m)),
-            radius_plan_min_m: least_plan_radius_m(&tendon.path).and_then(number),
+            radius_plan_min_m: result
+                .plan_tightest
+                .and_then(|tightest| number(tightest.radius_m)),
             ends: [
                 EndRecord::of(tendon, forces, 0),
                 EndRecord::of(tendon, forces, 1),
             ],
             points: points(tendon, result),
-            losses: forces.map(|forces| LossRecord::of(&forces.totals)),
-            mean_service_kn: forces.and_then(|forces| number(forces.mean_service_kn)),
+            losses: forces.map(LossRecord::of),
+            mean_service_kn: forces.and_then(|forces| number(forces.later?.mean_service_kn)),
             angle_rad: result
                 .points
                 .last()
                 .and_then(|point| point.angle_rad)
                 .and_then(number),
-            curvature_loss_ratio: turned.and_then(|turned| number(turned.loss_ratio)),
+            curvature_loss_ratio: result
+                .turning
+                .and_then(|turning| number(turning.loss_ratio)),
             concrete_stress_mpa: result.concrete_stress_mpa.and_then(number),
         }
     }
@@ -150,7 +148,7 @@ fn points(tendon: &Tendon, result: &TendonResult) -> Vec<PointRecord> {
     let unknown = PointResult {
         angle_rad: None,
         level_m: None,
-        forces_kn: None,
+        forces_kn: [None; 4],
     };
     let results = result
         .points
@@ -194,12 +192,8 @@ impl LiveRecord {
 
 impl PointRecord {
     fn of(point: &Point, result: &PointResult) -> Self {
-        let force_kn = |stage: usize| {
-            result
-                .forces_kn
-                .and_then(|forces_kn| forces_kn.get(stage).copied())
-                .and_then(number)
-        };
+        let [jacking_kn, lockoff_kn, transfer_kn, service_kn] =
+            result.forces_kn.map(|force_kn| force_kn.and_then(number));
         // An anchor that the drawing gives no height has the one it was worked out with.
         let height_m = point
             .height_m
@@ -212,24 +206,25 @@ impl PointRecord {
             height_mm: height_m.and_then(|height_m| number(height_m * 1000.0)),
             level_m: result.level_m.or_else(|| point.level_m()).and_then(number),
             angle_rad: result.angle_rad.and_then(number),
-            jacking_kn: force_kn(0),
-            lockoff_kn: force_kn(1),
-            transfer_kn: force_kn(2),
-            service_kn: force_kn(3),
+            jacking_kn,
+            lockoff_kn,
+            transfer_kn,
+            service_kn,
         }
     }
 }
 
 impl LossRecord {
-    fn of(totals: &LossTotals) -> Self {
+    fn of(forces: &Forces) -> Self {
+        let (totals, later) = (&forces.totals, forces.later);
         Self {
             friction_curvature_kn: number(totals.friction_curvature_kn),
             friction_wobble_kn: number(totals.friction_wobble_kn),
             draw_in_kn: number(totals.draw_in_kn),
-            shortening_mpa: number(totals.shortening_mpa),
-            shrinkage_mpa: number(totals.shrinkage_mpa),
-            creep_mpa: number(totals.creep_mpa),
-            relaxation_mpa: number(totals.relaxation_mpa),
+            shortening_mpa: later.and_then(|later| number(later.shortening_mpa)),
+            shrinkage_mpa: later.and_then(|later| number(later.shrinkage_mpa)),
+            creep_mpa: later.and_then(|later| number(later.creep_mpa)),
+            relaxation_mpa: later.and_then(|later| number(later.relaxation_mpa)),
         }
     }
 }

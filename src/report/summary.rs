@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use super::DrawingFacts;
 use super::table::{Align, plain, table};
 use crate::analysis::{Analysis, pair};
-use crate::checks::{Turning, turning};
+use crate::checks::Turning;
 use crate::finding::{Finding, Level};
 use crate::floor::{Run, Tendon};
 use crate::job::Fallback;
@@ -54,13 +54,23 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis) -> String {
     } else {
         format!(" that stand for {stand_for} tendons")
     };
+    let jacked = analysis
+        .results
+        .iter()
+        .filter(|result| result.forces.as_ref().is_some_and(|f| f.later.is_none()))
+        .count();
+    let only = if jacked == 0 {
+        String::new()
+    } else {
+        format!(", for {jacked} of these at jacking and lock-off only")
+    };
     let rest = if worked == tendons.len() {
         ""
     } else {
         "; what the others lack is among the findings"
     };
     format!(
-        "{}: {} tendon lines ({banded} banded, {} distributed){stand}.\nForces were worked out for {worked} of them{rest}.\n",
+        "{}: {} tendon lines ({banded} banded, {} distributed){stand}.\nForces were worked out for {worked} of them{only}{rest}.\n",
         plain(&facts.file),
         tendons.len(),
         tendons.len() - banded
@@ -72,7 +82,7 @@ fn worst(analysis: &Analysis) -> Option<String> {
     let mut turned: Vec<(&Tendon, &Forces, Turning)> = pair(analysis)
         .filter_map(|(tendon, result)| {
             let forces = result.forces.as_ref()?;
-            Some((tendon, forces, turning(result.profile.as_ref()?, forces)?))
+            Some((tendon, forces, result.turning?))
         })
         .collect();
     // A stable sort: of equals, the floor's own order.

@@ -54,3 +54,23 @@ fn the_unit_of_the_numbers_is_the_jobs() {
     let floor = small(&job);
     assert_eq!(heights_mm(&floor, PointKind::Low), [450.0; 2]);
 }
+
+#[test]
+fn a_label_that_says_no_strands_is_quoted_and_not_called_missing() {
+    let file = concat!(env!("CARGO_MANIFEST_DIR"), "/demo-drawings/small-floor.dxf");
+    let bytes = std::fs::read(file).expect("the demo is there");
+    let text = String::from_utf8(bytes).expect("ASCII");
+    let (before, after) = text.split_once("5-12.7").expect("a strand count");
+    let job = Job::default();
+    let source = open(format!("{before}0-12.7{after}").into_bytes()).expect("a drawing");
+    let wanted = Wanted::layers(job.layer_patterns()).expect("sound patterns");
+    let (drawing, _) = read(&source, &wanted, None);
+    let (_, found) = tautplan::floor::read(&drawing, &job);
+    let texts: Vec<&str> = found
+        .iter()
+        .filter(|finding| finding.rule.name == "strand-count-missing")
+        .map(|finding| finding.text.as_str())
+        .collect();
+    assert_eq!(texts.len(), 1);
+    assert!(texts[0].contains("says 0 strands"), "{texts:?}");
+}

@@ -6,7 +6,7 @@ use crate::analysis::{Analysis, PointResult, Sample, TendonResult};
 use crate::annotate::place::{Quad, Spot, readable_rad};
 use crate::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
 use crate::geometry::{Path, step};
-use crate::losses::{EndForces, Forces, LossTotals, Steel};
+use crate::losses::{EndForces, Forces, LaterLosses, LossTotals, Steel};
 use crate::profile::Profile;
 
 /// A tendon with its result.
@@ -85,10 +85,10 @@ pub(super) fn line(mark: &str, from: Coord<f64>, to: Coord<f64>) -> Worked {
 pub(super) fn without_forces((_, result): &mut Worked) {
     result.forces = None;
     for point in &mut result.points {
-        point.forces_kn = None;
+        point.forces_kn = [None; 4];
     }
     for sample in &mut result.samples {
-        sample.forces_kn = None;
+        sample.forces_kn = [None; 4];
     }
 }
 
@@ -157,7 +157,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         results.push(PointResult {
             angle_rad: None,
             level_m: Some(level_m(station_m / length_m * spans)),
-            forces_kn: Some(forces(station_m)),
+            forces_kn: forces(station_m).map(Some),
         });
         halves += 1.0;
     }
@@ -168,36 +168,17 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
                 station_m,
                 place: path.place_at(station_m),
                 level_m: level_m(station_m / length_m * spans),
-                forces_kn: Some(forces(station_m)),
+                forces_kn: forces(station_m).map(Some),
             }
         })
         .collect();
-    let live = |kind| EndForces {
-        kind,
-        extension_mm: (kind == EndKind::Live).then_some(5.6 * length_m),
-        extension_net_mm: (kind == EndKind::Live).then_some(5.6 * length_m - 6.0),
-        draw_in_reach_m: (kind == EndKind::Live).then_some(12.0),
-        draw_in_reaches_far: false,
-    };
     let kinds = ends.map(|end| end.kind.unwrap_or(EndKind::Dead));
     let result = TendonResult {
         profile: Some(Profile::new(Vec::new(), Vec::new())),
-        forces: Some(Forces {
-            steel: Steel {
-                area_mm2: 493.5,
-                strength_mpa: 1860.0,
-                modulus_mpa: 195_000.0,
-            },
-            jack_kn: JACK_KN,
-            ends: kinds.map(live),
-            totals: LossTotals {
-                friction_curvature_kn: 1.6 * length_m,
-                ..LossTotals::default()
-            },
-            mean_service_kn: forces(0.4 * length_m)[3],
-            least_jacking_kn: forces(if both_live { 0.5 } else { 1.0 } * length_m)[0],
-            least_jacking_station_m: if both_live { 0.5 } else { 1.0 } * length_m,
-        }),
+        forces: Some(whole(length_m, kinds)),
+        area_mm2: Some(493.5),
+        plan_tightest: None,
+        turning: None,
         points: results,
         samples,
         concrete_stress_mpa: Some(1.4),
@@ -216,6 +197,39 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         points,
     };
     (tendon, result)
+}
+
+/// Forces of a whole tendon.
+fn whole(length_m: f64, kinds: [EndKind; 2]) -> Forces {
+    let both_live = kinds == [EndKind::Live; 2];
+    let least_m = if both_live { 0.5 } else { 1.0 } * length_m;
+    let live = |kind| EndForces {
+        kind,
+        extension_mm: (kind == EndKind::Live).then_some(5.6 * length_m),
+        extension_net_mm: (kind == EndKind::Live).then_some(5.6 * length_m - 6.0),
+        draw_in_reach_m: (kind == EndKind::Live).then_some(12.0),
+        draw_in_reaches_far: false,
+    };
+    Forces {
+        steel: Steel {
+            area_mm2: 493.5,
+            strength_mpa: 1860.0,
+            modulus_mpa: 195_000.0,
+        },
+        jack_kn: JACK_KN,
+        ends: kinds.map(live),
+        totals: LossTotals {
+            friction_curvature_kn: 1.6 * length_m,
+            ..LossTotals::default()
+        },
+        later: Some(LaterLosses {
+            mean_service_kn: forces_kn(0.4 * length_m, length_m, both_live)[3],
+            ..LaterLosses::default()
+        }),
+        least_jacking_kn: forces_kn(least_m, length_m, both_live)[0],
+        least_jacking_station_m: least_m,
+        least_jacking_angle_rad: 0.0,
+    }
 }
 
 /// A wave of one span a unit: high at whole numbers, low between.

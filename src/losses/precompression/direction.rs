@@ -77,11 +77,17 @@ pub(super) fn gather<'a>(paths: impl Iterator<Item = &'a Path>) -> (Vec<Directio
         let (heading_rad, _) = chords[index];
         let nearest = seeds
             .iter()
-            .position(|&seed_rad| between_rad(seed_rad, heading_rad) <= SAME_RAD);
-        of_tendon[index] = nearest.unwrap_or_else(|| {
-            seeds.push(heading_rad);
-            seeds.len() - 1
-        });
+            .map(|&seed_rad| between_rad(seed_rad, heading_rad))
+            .enumerate()
+            .filter(|&(_, apart_rad)| apart_rad <= SAME_RAD)
+            .min_by(|a, b| a.1.total_cmp(&b.1));
+        of_tendon[index] = nearest.map_or_else(
+            || {
+                seeds.push(heading_rad);
+                seeds.len() - 1
+            },
+            |(seed, _)| seed,
+        );
     }
     // Doubled angles: a direction and its opposite are one.
     let mut sums = vec![(0.0, 0.0); seeds.len()];
@@ -135,6 +141,12 @@ mod tests {
         assert_eq!(of_tendon, [0, 0, 1]);
         let expected = (10.0 * 2.0 + 9.0 * 1.0) / 19.0;
         assert!((directions[0].heading_rad().to_degrees() - expected).abs() < 1e-3);
+    }
+
+    #[test]
+    fn a_line_within_reach_of_two_directions_runs_in_the_nearer() {
+        let paths = [line(30.0, 0.0), line(20.0, 15.0), line(10.0, 9.0)];
+        assert_eq!(gather(paths.iter()).1, [0, 1, 1]);
     }
 
     #[test]

@@ -2,10 +2,10 @@
 
 use super::{grid, number};
 use crate::job::Job;
-use crate::profile::Profile;
+use crate::profile::{Profile, Tightest};
 
 /// Pieces, bends and least radii.
-pub(super) fn part(job: &Job, profile: &Profile) -> String {
+pub(super) fn part(job: &Job, profile: &Profile, in_plan: Option<Tightest>) -> String {
     let mut text = vec![format!(
         "2. Curve: z = z0 + g x + c x^2 / 2 on each piece, x from its start; hogging length = {} of the span\n\
          \x20  angle of a piece straight in plan = |atan(g end) - atan(g start)|; on a plan arc the two turn together in space\n",
@@ -60,7 +60,7 @@ pub(super) fn part(job: &Job, profile: &Profile) -> String {
     for (what, tightest) in [
         ("least hogging radius", profile.hogging_radius_min_m()),
         ("least vertical radius", profile.radius_min_m()),
-        ("least plan radius", profile.plan_radius_min_m()),
+        ("least plan radius", in_plan),
     ] {
         if let Some(tightest) = tightest {
             text.push(format!(

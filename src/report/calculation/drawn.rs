@@ -75,6 +75,7 @@ fn strands(job: &Job, tendon: &Tendon) -> String {
         String::new()
     };
     match (tendon.strands, steel(tendon, &job.system)) {
+        (None | Some(0), _) => "  strands: not known\n".to_owned(),
         (Some(count), Some(steel)) => {
             let one_mm2 = steel.area_mm2 / f64::from(count);
             let jack_kn = steel.jacking_kn(job.stressing.jacking_ratio);
@@ -90,7 +91,6 @@ fn strands(job: &Job, tendon: &Tendon) -> String {
             )
         }
         (Some(count), None) => format!("  {count} strands of a size that the job does not know\n"),
-        (None, _) => "  strands: not known\n".to_owned(),
     }
 }
 

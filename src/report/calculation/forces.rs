@@ -5,18 +5,24 @@ use super::{grid, number};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Tendon};
 use crate::job::Job;
-use crate::losses::Forces;
+use crate::losses::{Forces, LaterLosses};
 
 /// Everything after jacking.
 pub(super) fn part(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
-    [
-        draw_in(job, tendon, forces, result),
-        shortening(job, forces, result),
-        long_term(job, forces, result),
-        left(tendon, forces, result),
-        extension(job, forces),
-    ]
-    .join("\n")
+    let mut parts = vec![draw_in(job, tendon, forces, result)];
+    match &forces.later {
+        Some(later) => {
+            parts.push(shortening(job, forces, later, result));
+            parts.push(long_term(job, forces, later, result));
+        }
+        None => parts.push(
+            "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
+                .to_owned(),
+        ),
+    }
+    parts.push(left(tendon, forces, result));
+    parts.push(extension(job, forces));
+    parts.join("\n")
 }
 
 /// E A of the tendon, kN.
@@ -40,7 +46,7 @@ fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -
         } else {
             result.points.last()
         };
-        let locked = point.and_then(|point| point.forces_kn).map(|kn| kn[1]);
+        let locked = point.and_then(|point| point.forces_kn[1]);
         if end.kind == EndKind::Live {
             text.push(format!(
                 "  {}: PA = {} kN ({} of fpk), felt over {} m{}\n",
@@ -74,7 +80,7 @@ fn station(tendon: &Tendon, end: usize) -> String {
     )
 }
 
-fn shortening(job: &Job, forces: &Forces, result: &TendonResult) -> String {
+fn shortening(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
     let long_term = &job.long_term;
     format!(
         "5. Elastic shortening: share x (Ep / Eci) x sigma_c = {} x ({} / {}) x {} = {:.3} MPa\n  \
@@ -83,7 +89,7 @@ fn shortening(job: &Job, forces: &Forces, result: &TendonResult) -> String {
         forces.steel.modulus_mpa,
         long_term.concrete_modulus_transfer_mpa,
         number(result.concrete_stress_mpa, 4),
-        forces.totals.shortening_mpa,
+        later.shortening_mpa,
         number(result.concrete_stress_mpa, 4),
         if long_term.concrete_stress_mpa.is_some() {
             "given by the job"
@@ -93,22 +99,22 @@ fn shortening(job: &Job, forces: &Forces, result: &TendonResult) -> String {
     )
 }
 
-fn long_term(job: &Job, forces: &Forces, result: &TendonResult) -> String {
-    let (long_term, totals) = (&job.long_term, &forces.totals);
+fn long_term(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
+    let long_term = &job.long_term;
     format!(
         "6. Long-term loss, method direct\n  \
          shrinkage: Ep x strain = {modulus} x {} = {:.3} MPa\n  \
          creep: (Ep / Ec) x coefficient x sigma_c = ({modulus} / {}) x {} x {} = {:.3} MPa\n  \
          relaxation: {} x {} of the stress after lock-off at each place; mean along the tendon {:.3} MPa\n",
         long_term.shrinkage_strain,
-        totals.shrinkage_mpa,
+        later.shrinkage_mpa,
         long_term.concrete_modulus_mpa,
         long_term.creep_coefficient,
         number(result.concrete_stress_mpa, 4),
-        totals.creep_mpa,
+        later.creep_mpa,
         long_term.relaxation_1000h,
         long_term.relaxation_factor,
-        totals.relaxation_mpa,
+        later.relaxation_mpa,
         modulus = forces.steel.modulus_mpa,
     )
 }
@@ -123,10 +129,11 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
                 kind(point.kind).to_owned(),
                 format!("{:.3}", point.station_m),
             ];
-            for stage in 0..4 {
-                row.push(number(worked.forces_kn.map(|kn| kn[stage]), 2));
-            }
-            row.push(number(worked.forces_kn.map(|kn| kn[3] / forces.jack_kn), 4));
+            row.extend(worked.forces_kn.map(|force_kn| number(force_kn, 2)));
+            row.push(number(
+                worked.forces_kn[3].map(|service_kn| service_kn / forces.jack_kn),
+                4,
+            ));
             row
         })
         .collect();
@@ -145,8 +152,8 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
         rows,
     ));
     text.push(format!(
-        "  mean service force along the tendon: {:.2} kN\n",
-        forces.mean_service_kn
+        "  mean service force along the tendon: {} kN\n",
+        number(forces.later.map(|later| later.mean_service_kn), 2)
     ));
     text.concat()
 }

@@ -1,12 +1,12 @@
 //! Jacking: friction from the jack, point by point.
 
 use super::drawn::kind;
-use super::grid;
+use super::{grid, number};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Tendon};
 use crate::job::{Job, Wobble};
 use crate::losses::{Forces, Friction};
-use crate::profile::Profile;
+use crate::profile::{Profile, SAME_PLACE_M};
 
 /// The exponent at each point from each live end, and the force at jacking.
 pub(super) fn part(
@@ -39,8 +39,7 @@ pub(super) fn part(
         .zip(&result.points)
         .map(|(point, worked)| {
             let station_m = point.station_m;
-            let from_start_rad = profile.angle_rad(station_m);
-            let from_end_rad = profile.angle_from_end_rad(station_m);
+            let [from_start_rad, from_end_rad] = angles_rad(profile, forces, station_m);
             let along_m = profile.arc_length_m(station_m);
             let back_m = profile.length_m() - along_m;
             let mut row = vec![kind(point.kind).to_owned(), format!("{station_m:.3}")];
@@ -54,11 +53,7 @@ pub(super) fn part(
                     row.push(format!("{exponent:.6}"));
                 }
             }
-            row.push(
-                worked
-                    .forces_kn
-                    .map_or_else(|| "-".to_owned(), |kn| format!("{:.2}", kn[0])),
-            );
+            row.push(number(worked.forces_kn[0], 2));
             row
         })
         .collect();
@@ -77,7 +72,7 @@ pub(super) fn part(
         );
     }
     if !profile.bends.is_empty() {
-        text.push("  at a bend the force is a step; the lesser side is listed\n".to_owned());
+        text.push("  at a bend the force is a step; the least in it is listed\n".to_owned());
     }
     let totals = &forces.totals;
     text.push(format!(
@@ -91,6 +86,20 @@ pub(super) fn part(
         totals.friction_wobble_kn,
     ));
     text.concat()
+}
+
+/// Angle from either end to a station: a bend there counts whole from both, since the lesser of its sides is listed; where
+/// the curves of two jacks meet within it, each end has its share.
+fn angles_rad(profile: &Profile, forces: &Forces, station_m: f64) -> [f64; 2] {
+    let off_m = (station_m - forces.least_jacking_station_m).abs();
+    if forces.both_live() && off_m <= SAME_PLACE_M {
+        let from_start_rad = forces.least_jacking_angle_rad;
+        return [from_start_rad, profile.total_angle_rad() - from_start_rad];
+    }
+    [
+        profile.angle_rad(station_m),
+        profile.angle_from_end_rad(station_m),
+    ]
 }
 
 fn live(forces: &Forces, end: usize) -> bool {
