@@ -1,9 +1,11 @@
 //! DXF in: shapes and texts in metres, each with handle and layer. DXF out: lossless insertion of a [`Sheet`].
 //! Knows nothing of tendons; the only stage that says `dxf::`.
 
+mod caps;
 mod clean;
 mod code_page;
 mod convert;
+mod counts;
 mod curves;
 mod explode;
 mod found;
@@ -14,6 +16,7 @@ mod names;
 mod placing;
 mod read;
 mod refusal;
+mod resume;
 mod rules;
 mod scan;
 mod sheet;
@@ -25,8 +28,9 @@ mod types;
 mod wanted;
 mod windows;
 
+pub use caps::Caps;
 pub use insert::{insert, insertion};
-pub use read::read;
+pub use read::{read, read_within};
 pub use refusal::Refusal;
 pub use rules::READING_RULES;
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};

@@ -115,7 +115,8 @@ impl<'a> Pass<'a> {
         let layer = self
             .names
             .id(held.layer.unwrap_or(b"0"), &self.scan.code_page);
-        let own = self.section == Section::Entities && self.names.is_own(layer);
+        // A mark that is cut or garbled stays: where it ends is not known.
+        let own = self.section == Section::Entities && self.names.is_own(layer) && !held.broken;
         self.handles.settle_entity(own, held.handle);
         if own {
             // A comment behind it is not ours.
@@ -140,7 +141,13 @@ impl<'a> Pass<'a> {
             block,
             is_insert,
         };
-        let reads = self.types.is_read(held.type_id);
+        let mut reads = self.types.is_read(held.type_id);
+        if held.broken {
+            if let Some(passed_over) = &mut self.scan.passed_over {
+                passed_over.left_out += 1;
+            }
+            reads = false;
+        }
         if in_block {
             if let Some(block) = self.scan.blocks.last_mut()
                 && reads
@@ -159,7 +166,7 @@ impl<'a> Pass<'a> {
         self.number += 1;
         entry.number = self.number;
         self.owner_seen = self.owner_seen.or(held.owner);
-        count(&mut self.scan.counts, layer, held.type_id);
+        self.counts.add(layer, held.type_id);
         if reads {
             let index = to_u32(self.scan.entries.len());
             for name in self.attribute_layers.drain(..) {
@@ -181,19 +188,4 @@ pub(super) fn text(value: Option<&[u8]>) -> Option<String> {
 
 fn to_u32(number: usize) -> u32 {
     u32::try_from(number).unwrap_or(u32::MAX)
-}
-
-fn count(counts: &mut Vec<Vec<usize>>, layer: u32, type_id: usize) {
-    let layer = layer as usize;
-    if counts.len() <= layer {
-        counts.resize(layer + 1, Vec::new());
-    }
-    if let Some(row) = counts.get_mut(layer) {
-        if row.len() <= type_id {
-            row.resize(type_id + 1, 0);
-        }
-        if let Some(cell) = row.get_mut(type_id) {
-            *cell += 1;
-        }
-    }
 }
