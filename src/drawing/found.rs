@@ -135,7 +135,7 @@ pub(super) const READ_TYPES: [&[u8]; 9] = [
 ];
 
 impl Scan {
-    /// Entities of model space, read or not.
+    /// Whole entities of model space, of whatever type.
     pub(super) fn entity_count(&self) -> usize {
         let kinds = self.counts.iter().flatten();
         kinds.map(|(_, count)| count).sum::<usize>() + self.own_marks.len()

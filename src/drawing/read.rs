@@ -133,7 +133,7 @@ fn passed_over_finding(scan: &Scan) -> Option<Finding> {
         &DRAWING_DAMAGED,
         level,
         format!(
-            "the drawing is damaged: at {}, {}{more}; {left_out}, and what was lost before nobody can say",
+            "the drawing is damaged: at {}, {}{more}; {left_out}",
             over.first, over.what
         ),
         "export or copy the drawing again, and look for what is missing",

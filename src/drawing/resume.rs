@@ -28,7 +28,7 @@ pub(super) fn resume(bytes: &[u8], form: Form, bad_at: usize) -> Option<Resumed>
 fn behind_blanks(bytes: &[u8], bad_at: usize) -> Option<Resumed> {
     let mut at = bad_at;
     while let Some((line, next)) = line(bytes, at)
-        && line.trim_ascii().is_empty()
+        && is_blank(line)
     {
         at = next;
     }
@@ -37,14 +37,22 @@ fn behind_blanks(bytes: &[u8], bad_at: usize) -> Option<Resumed> {
 
 /// Whether tags follow from here on, up to a record's name or at least a good many.
 fn in_step(bytes: &[u8], at: usize) -> bool {
-    for tag in Tags::within(bytes, Form::Ascii, at..bytes.len()).take(PROOF) {
+    let tags = Tags::within(bytes, Form::Ascii, at..bytes.len());
+    for (number, tag) in tags.take(PROOF).enumerate() {
         match tag {
             Ok(tag) if tag.code == 0 => return names_a_record(tag.word()),
             Ok(_) => {}
-            Err(_) => return false,
+            // The next empty line too many is judged when its turn comes.
+            Err(bad) => {
+                return number > 0 && line(bytes, bad.at).is_some_and(|(l, _)| is_blank(l));
+            }
         }
     }
     true
+}
+
+fn is_blank(line: &[u8]) -> bool {
+    line.trim_ascii().is_empty()
 }
 
 fn next_record(bytes: &[u8], bad_at: usize) -> Option<Resumed> {

@@ -98,6 +98,8 @@ struct Gathered<'a> {
     pointers: [Option<&'a [u8]>; 3],
     /// Something in it makes no sense and was passed over.
     broken: bool,
+    /// The entity before it still waited for its SEQEND.
+    after_open: bool,
 }
 
 #[expect(
@@ -331,6 +333,8 @@ impl<'a> Pass<'a> {
 
     fn end_section(&mut self, at: usize) {
         match self.section {
+            // What is inserted behind something passed over would be passed over with it.
+            Section::Header if self.gathered.broken => {}
             Section::Header => self.scan.header_end = self.scan.header_end.or(Some(at)),
             Section::Tables => self.scan.tables_end = self.scan.tables_end.or(Some(at)),
             Section::Entities => {
@@ -343,6 +347,7 @@ impl<'a> Pass<'a> {
             _ => {}
         }
         self.sequence = None;
+        self.gathered.broken = false;
         self.block_open = false;
         self.in_layer_table = false;
     }

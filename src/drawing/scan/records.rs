@@ -24,9 +24,14 @@ impl<'a> Pass<'a> {
     }
 
     pub(super) fn begin_entity(&mut self, name: &'a [u8], start: usize) {
+        let after_open = match self.sequence {
+            Some(b"INSERT") => self.gathered.followed,
+            waiting => waiting.is_some(),
+        };
         self.sequence = None;
         self.gathered = Gathered {
             start,
+            after_open,
             ..Gathered::default()
         };
         if self.section == Section::Blocks {
@@ -141,13 +146,12 @@ impl<'a> Pass<'a> {
             block,
             is_insert,
         };
-        let mut reads = self.types.is_read(held.type_id);
-        if held.broken {
-            if let Some(passed_over) = &mut self.scan.passed_over {
-                passed_over.left_out += 1;
-            }
-            reads = false;
+        let broken = held.broken;
+        let reads = self.types.is_read(held.type_id) && !broken;
+        if broken {
+            self.left_out();
         }
+        let held = &self.gathered;
         if in_block {
             if let Some(block) = self.scan.blocks.last_mut()
                 && reads
@@ -166,7 +170,9 @@ impl<'a> Pass<'a> {
         self.number += 1;
         entry.number = self.number;
         self.owner_seen = self.owner_seen.or(held.owner);
-        self.counts.add(layer, held.type_id);
+        if !broken {
+            self.counts.add(layer, held.type_id);
+        }
         if reads {
             let index = to_u32(self.scan.entries.len());
             for name in self.attribute_layers.drain(..) {

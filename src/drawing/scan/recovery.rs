@@ -73,7 +73,7 @@ impl Pass<'_> {
         if at_hand && self.scan.eof_start.is_none() {
             self.gathered.broken = true;
             if self.section == Section::Entities {
-                end = self.gathered.start;
+                end = self.before_the_cut();
                 self.sequence = None;
             }
         }
@@ -81,6 +81,29 @@ impl Pass<'_> {
         self.end_record(tags_end);
         self.end_section(end);
         self.section = Section::Outside;
+    }
+
+    /// Where the last whole entity ends. A sequence whose SEQEND did not come before the record at hand is not whole
+    /// either: what is cut may be one of its vertices.
+    fn before_the_cut(&mut self) -> usize {
+        let start = self.gathered.start;
+        let open = self.gathered.after_open;
+        match self.scan.entries.last() {
+            Some(entry) if open && entry.end == start => {
+                let start = entry.start;
+                self.scan.entries.pop();
+                self.left_out();
+                start
+            }
+            _ => start,
+        }
+    }
+
+    /// Counts an entity that is left out.
+    pub(super) fn left_out(&mut self) {
+        if let Some(over) = &mut self.scan.passed_over {
+            over.left_out += 1;
+        }
     }
 
     /// Why the drawing is refused.
