@@ -6,7 +6,7 @@ use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
 use super::caps::Expansion;
-use super::convert::line_of;
+use super::convert::{TOO_FAR, is_near, line_of};
 use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::names::folded;
 use super::placing::Placing;
@@ -17,14 +17,11 @@ use super::scan::Scan;
 use super::windows::Record;
 use super::{Drawing, Insert, Shape, Text};
 use crate::finding::{Finding, Level, Rule};
-use crate::geometry::Segment;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
 /// Findings of one rule that are told one by one; of the rest only the number is.
 pub(super) const MOST_TOLD: usize = 20;
-/// Nothing is built a million kilometres from the origin, and numbers beyond lose their millimetres.
-const FARTHEST_M: f64 = 1e9;
 
 /// What is known of blocks and layers before any record is placed.
 #[derive(Debug)]
@@ -150,9 +147,6 @@ impl<'b> Gatherer<'b> {
                 self.text(of_mtext(text, &frame.placing), layer, frame.within, handle);
             }
             _ => match line_of(record, &frame.placing) {
-                Ok(Some(line)) if !is_near(line.path.segments().iter().flat_map(ends)) => {
-                    self.damaged(layer, handle, TOO_FAR);
-                }
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
                     layer: self.book.layer_name(layer),
@@ -432,20 +426,6 @@ pub(super) fn and_more(rule: &'static Rule, level: Level, count: usize) -> Optio
         format!("and {more} more like the {MOST_TOLD} before, {count} in all"),
         "mend the first ones and run again",
     ))
-}
-
-const TOO_FAR: &str = "it lies more than a million kilometres from the origin, or nowhere";
-
-fn is_near(places: impl IntoIterator<Item = Coord<f64>>) -> bool {
-    let mut places = places.into_iter();
-    places.all(|place| place.x.abs() <= FARTHEST_M && place.y.abs() <= FARTHEST_M)
-}
-
-fn ends(piece: &Segment) -> [Coord<f64>; 2] {
-    match *piece {
-        Segment::Line { from, to } => [from, to],
-        Segment::Arc { .. } => [piece.start(), piece.end()],
-    }
 }
 
 /// A record's handle, or `#` and its number.
