@@ -83,6 +83,10 @@ enum Record {
 
 /// The tags of one entity or table record that matter here.
 #[derive(Default)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a fact of its own about the record"
+)]
 struct Gathered<'a> {
     start: usize,
     type_id: usize,

@@ -104,8 +104,11 @@ fn load(
             let mut again = Cleaner::new(&source.bytes, &source.scan);
             let (first, second) = window.split_at(window.len() / 2);
             for half in [first, second] {
-                // Every record of the window has been cleaned before without an error.
-                half.iter().for_each(|entry| drop(again.add(entry)));
+                for entry in half {
+                    if let Err(damage) = again.add(entry) {
+                        losses.damaged.push(*damage);
+                    }
+                }
                 load(source, &mut again, half, losses, hand_on);
             }
         }
