@@ -28,7 +28,7 @@ mod types;
 mod wanted;
 mod windows;
 
-pub use caps::Caps;
+pub use caps::{Caps, Purpose};
 pub use insert::{insert, insertion};
 pub use read::{read, read_within};
 pub use refusal::Refusal;

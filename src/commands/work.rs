@@ -6,7 +6,7 @@ use super::job_file::JobFile;
 use super::{Refused, files, units};
 use crate::analysis::{self, Analysis};
 use crate::annotate::Surroundings;
-use crate::drawing::{self, Caps, Drawing, Layer, Refusal, Source, Wanted};
+use crate::drawing::{self, Caps, Drawing, Layer, Purpose, Refusal, Source, Wanted};
 use crate::finding::Finding;
 use crate::floor;
 use crate::job::Job;
@@ -31,7 +31,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
     let source = open(plan, job)?;
     let tendon_layers = tendon_layers(plan, &source, job)?;
     let wanted = wanted(job.layer_patterns());
-    let (drawing, mut findings) = read(plan, &source, &wanted, job)?;
+    let (drawing, mut findings) = read(plan, &source, &wanted, job, Purpose::Work)?;
     let (floor, more) = floor::read(&drawing, job);
     findings.extend(more);
     if floor.tendons.is_empty() {
@@ -73,9 +73,10 @@ pub(super) fn read(
     source: &Source,
     wanted: &Wanted,
     job: &Job,
+    purpose: Purpose,
 ) -> Result<(Drawing, Vec<Finding>), Refused> {
     let caps = caps(job);
-    caps.admit_layers(source, wanted)
+    caps.admit_layers(source, wanted, purpose)
         .map_err(|refusal| refused(plan, refusal))?;
     let unit = job.conventions.unit;
     Ok(drawing::read_within(source, wanted, unit, &caps))

@@ -92,7 +92,6 @@ fn corrupted_demos_are_read_and_marked_without_loss_or_refused() {
             }
         }
     }
-    eprintln!("{marked} marked, {refused} refused");
     assert!(
         marked > 20 && refused > 0,
         "{marked} marked, {refused} refused"

@@ -100,11 +100,13 @@ fn arrays_of_arrays_stay_within_the_default_caps() {
 
 #[test]
 fn heavy_entities_are_weighed_before_they_multiply() {
-    let vertices: String = (0..20_000)
+    let vertices: Vec<String> = (0..20_000)
         .map(|n| format!("10 {n} 20 {} ", n % 2))
         .collect();
-    let blocks =
-        format!("0 BLOCK 8 0 2 A 10 0 20 0 0 LWPOLYLINE 8 0 90 20000 70 0 {vertices} 0 ENDBLK");
+    let blocks = format!(
+        "0 BLOCK 8 0 2 A 10 0 20 0 0 LWPOLYLINE 8 0 90 20000 70 0 {} 0 ENDBLK",
+        vertices.concat()
+    );
     let bytes = with_blocks(
         &blocks,
         "0 INSERT 8 0 2 A 10 0 20 0 70 300 71 300 44 1 45 1",
