@@ -21,5 +21,8 @@ mod slab;
 mod types;
 
 pub use assemble::read;
+pub use readings::{
+    HeightText, MarkText, Word, height_of_line, mark_of_line, thickness_of_line,
+};
 pub use rules::RULES;
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

@@ -97,10 +97,12 @@ fn inputs(job: &Job) -> Vec<String> {
     let from = match height.from {
         FromFace::Soffit => "above the local soffit",
         FromFace::Top => "below the top of the slab",
+        FromFace::NearerFace => "from the nearer face",
     };
     let to = match height.datum {
         Datum::Centroid => "centroid of the strands",
         Datum::DuctUnderside => "underside of the duct",
+        Datum::Chair => "top of the chair, which is the underside of the duct",
     };
     let long_term = &job.long_term;
     vec![

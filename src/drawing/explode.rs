@@ -127,8 +127,12 @@ impl<'b> Gatherer<'b> {
             return;
         }
         match &record.entity {
-            EntityType::Text(text) => self.text(of_text(text, &frame.placing), layer, handle),
-            EntityType::MText(text) => self.text(of_mtext(text, &frame.placing), layer, handle),
+            EntityType::Text(text) => {
+                self.text(of_text(text, &frame.placing), layer, handle, false);
+            }
+            EntityType::MText(text) => {
+                self.text(of_mtext(text, &frame.placing), layer, handle, false);
+            }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
@@ -159,7 +163,13 @@ impl<'b> Gatherer<'b> {
         }
     }
 
-    fn text(&mut self, lettering: super::lettering::Lettering, layer: u32, handle: &str) {
+    fn text(
+        &mut self,
+        lettering: super::lettering::Lettering,
+        layer: u32,
+        handle: &str,
+        hidden: bool,
+    ) {
         if lettering.content.trim().is_empty() {
             return;
         }
@@ -171,6 +181,7 @@ impl<'b> Gatherer<'b> {
             corners: lettering.corners,
             height_m: lettering.height_m,
             rotation_rad: lettering.rotation_rad,
+            hidden,
         });
     }
 
@@ -299,7 +310,7 @@ impl<'b> Gatherer<'b> {
         self.open.pop();
     }
 
-    /// An insert's visible attributes as texts.
+    /// An insert's attributes as texts, also those that it does not show.
     fn attributes(
         &mut self,
         record: &Record,
@@ -311,14 +322,15 @@ impl<'b> Gatherer<'b> {
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
-            if attribute.flags & 1 != 0 || !self.book.wants(layer) {
+            if !self.book.wants(layer) {
                 continue;
             }
             let handle = match own {
                 Some(own) if frame.handle.is_none() => own,
                 _ => handle,
             };
-            self.text(of_attribute(attribute, &frame.placing), layer, handle);
+            let lettering = of_attribute(attribute, &frame.placing);
+            self.text(lettering, layer, handle, attribute.flags & 1 != 0);
         }
     }
 

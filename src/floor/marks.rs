@@ -53,10 +53,7 @@ pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks 
         };
         let whole = &mut marks.of_line[lies[now].pairing.host];
         let said = &texts[label];
-        whole.mark = whole.mark.take().or_else(|| said.mark.clone());
-        whole.tendons = whole.tendons.or(said.tendons);
-        whole.strands = whole.strands.or(said.strands);
-        whole.strand = whole.strand.take().or_else(|| said.strand.clone());
+        whole.add(said);
         if settlement.choices(label).len() < 2 {
             continue;
         }
@@ -163,8 +160,14 @@ fn clash(a: &MarkText, b: &MarkText) -> bool {
     differ(a.mark.as_ref(), b.mark.as_ref())
         || differ(a.strands.as_ref(), b.strands.as_ref())
         || differ(a.tendons.as_ref(), b.tendons.as_ref())
-        // Two counts without a mark are those of two tendons, even if they are equal.
-        || (a.mark.is_none() && b.mark.is_none())
+        // Two counts without a mark are those of two tendons, even if they are equal; a count and a force are not.
+        || (a.mark.is_none() && b.mark.is_none() && alike(a, b))
+}
+
+/// Whether two texts say the same kind of thing.
+fn alike(a: &MarkText, b: &MarkText) -> bool {
+    let counts = |text: &MarkText| text.strands.is_some() || text.tendons.is_some();
+    (counts(a) && counts(b)) || (a.requires() && b.requires()) || (!a.counts() && !b.counts())
 }
 
 /// Names for lines without a mark: `B001`, `D001`, ... by place across the run, then along it.
@@ -221,11 +224,17 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
     for tendon in tendons {
         let middle_m = tendon.path.length_m() / 2.0;
         if tendon.strands.is_none() {
+            let required = tendon.required_kn.is_some() || tendon.required_kn_per_m.is_some();
+            let text = if required {
+                "a label gives the force that is required here, but none the number of strands, which is not worked out from it"
+            } else {
+                "no label within reach gives the number of strands; expected a text such as D012 5-12.7"
+            };
             findings.push(
                 Finding::new(
                     &STRAND_COUNT_MISSING,
                     Level::Error,
-                    "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
+                    text,
                     "write mark and strands beside the tendon, on the layer of marks",
                 )
                 .on_tendon(&tendon.mark)

@@ -2,7 +2,6 @@
 
 use std::ops::Range;
 
-use regex::Regex;
 use toml::de::{DeArray, DeValue};
 
 use crate::job::key::{Key, Kind, quoted};
@@ -67,12 +66,8 @@ impl Reader {
                     );
                 }
             }
-            (Kind::Expressions { groups, place }, DeValue::Array(items)) => {
-                if let Some(words) = self.words(key, entry, items) {
-                    let patterns = words
-                        .iter()
-                        .filter_map(|(word, span)| self.expression(key, groups, word, span))
-                        .collect();
+            (Kind::Expressions { place, .. }, DeValue::Array(items)) => {
+                if let Some(patterns) = self.patterns(key, entry, items) {
                     (place.set)(&mut self.job, patterns);
                 }
             }
@@ -182,50 +177,6 @@ impl Reader {
             );
         }
         (self.problems.len() == before).then_some(words)
-    }
-
-    pub(super) fn expression(
-        &mut self,
-        key: &Key,
-        groups: &[&str],
-        pattern: &str,
-        span: &Range<usize>,
-    ) -> Option<Regex> {
-        let named = |regex: &Regex| {
-            regex
-                .capture_names()
-                .flatten()
-                .any(|name| groups.contains(&name))
-        };
-        match Regex::new(pattern) {
-            Ok(regex) if named(&regex) => Some(regex),
-            Ok(_) => {
-                self.mistake(
-                    span.clone(),
-                    format!(
-                        "this pattern of `{}` has no group that says what it found",
-                        key.name
-                    ),
-                    format!("expected {}", key.expected()),
-                    format!(
-                        "put the part that is wanted in (?<{}>...)",
-                        groups.first().unwrap_or(&"value")
-                    ),
-                );
-                None
-            }
-            Err(error) => {
-                let reason = error.to_string();
-                let reason = reason.lines().last().unwrap_or_default();
-                self.mistake(
-                    span.clone(),
-                    format!("`{}` holds a broken regular expression: {}", key.name, plain(reason.trim_start_matches("error: "))),
-                    format!("expected {}", key.expected()),
-                    "put the pattern in 'single quotes', where a backslash needs no doubling, and close every bracket",
-                );
-                None
-            }
-        }
     }
 }
 

@@ -170,6 +170,7 @@ impl Board {
             ],
             height_m,
             rotation_rad,
+            hidden: false,
         });
     }
 

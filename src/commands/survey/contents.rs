@@ -58,7 +58,7 @@ impl Contents {
                 Reading::Thickness(_) => layer.thicknesses += 1,
                 Reading::Height(_) => layer.heights += 1,
                 Reading::Mark { strands: true, .. } => layer.strands += 1,
-                Reading::Mark { .. } | Reading::Unread => {}
+                Reading::Mark { .. } | Reading::Offered(_) | Reading::Unread => {}
             }
             keep_sample(&mut layer.samples, &text.content, said);
         }
@@ -136,7 +136,7 @@ fn keep_sample(samples: &mut BTreeMap<String, Reading>, text: &str, said: Readin
     if samples.len() <= SAMPLES {
         return;
     }
-    let unread = |reading: &Reading| *reading == Reading::Unread;
+    let unread = |reading: &Reading| matches!(reading, Reading::Offered(_) | Reading::Unread);
     let many = samples.values().filter(|reading| unread(reading)).count() > SAMPLES / 2;
     let last = samples
         .iter()
