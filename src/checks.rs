@@ -12,6 +12,7 @@ pub mod ground;
 pub mod openings;
 pub mod plan;
 pub mod profile;
+pub mod required;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -59,6 +60,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(curvature::curvature_loss(worked, job));
     found.extend(stressing::anchor_stress(worked, job));
     found.extend(stressing::draw_in_reaches_dead_end(worked));
+    found.extend(required::force_below_required(worked));
     found
 }
 
@@ -81,7 +83,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 14] = [
+static RULES: [&Rule; 15] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -96,6 +98,7 @@ static RULES: [&Rule; 14] = [
     &stressing::ANCHOR_STRESS,
     &stressing::DRAW_IN_REACHES_DEAD_END,
     &curvature::CURVATURE_LOSS,
+    &required::FORCE_BELOW_REQUIRED,
 ];
 
 impl Worked<'_> {

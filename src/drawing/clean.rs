@@ -141,7 +141,12 @@ impl<'a> Cleaner<'a> {
                     self.line(b"66", b"1");
                     sequence = true;
                 }
-                self.line(b"0", record.type_name);
+                // A constant attribute is a text that its block brings along.
+                let written = match record.type_name {
+                    b"ATTDEF" => &b"TEXT"[..],
+                    name => name,
+                };
+                self.line(b"0", written);
                 if first {
                     let number = self.kept.len() + 1;
                     self.line(b"5", format!("{number:X}").as_bytes());
@@ -205,10 +210,11 @@ impl<'a> Cleaner<'a> {
                     return Err(expected(tag, "a whole number"));
                 };
                 let number = number.clamp(i64::from(i16::MIN), i64::from(i16::MAX));
-                self.line(
-                    tag.code.to_string().as_bytes(),
-                    number.to_string().as_bytes(),
-                );
+                let code = match (tag.code, record.type_name) {
+                    (74, b"ATTDEF") => 73,
+                    (code, _) => code,
+                };
+                self.line(code.to_string().as_bytes(), number.to_string().as_bytes());
                 record.justified |= matches!(tag.code, 72..=74) && number != 0;
             }
             Use::Number => {
@@ -237,7 +243,7 @@ impl<'a> Cleaner<'a> {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
-            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"INSERT" => &[10, 20],
+            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"ATTDEF" | b"MTEXT" | b"INSERT" => &[10, 20],
             _ => &[],
         };
         if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
@@ -349,7 +355,9 @@ fn used(type_name: &[u8], code: i32) -> Use {
         b"POLYLINE" => matches!(code, 10 | 20 | 30),
         b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
         b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
-        b"TEXT" | b"ATTRIB" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50),
+        b"TEXT" | b"ATTRIB" | b"ATTDEF" => {
+            matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50 | 51)
+        }
         b"MTEXT" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 44 | 50),
         b"INSERT" => matches!(code, 10 | 20 | 30 | 41..=45 | 50),
         _ => false,
@@ -361,8 +369,9 @@ fn used(type_name: &[u8], code: i32) -> Use {
     let short = match type_name {
         b"LWPOLYLINE" | b"POLYLINE" | b"VERTEX" => code == 70,
         b"SPLINE" => matches!(code, 70 | 71),
-        b"TEXT" => matches!(code, 72 | 73),
-        b"ATTRIB" => matches!(code, 70 | 72 | 74),
+        b"TEXT" => matches!(code, 71..=73),
+        b"ATTRIB" => matches!(code, 70..=72 | 74),
+        b"ATTDEF" => matches!(code, 71 | 72 | 74),
         b"MTEXT" => code == 71,
         b"INSERT" => matches!(code, 70 | 71),
         _ => false,
@@ -371,8 +380,8 @@ fn used(type_name: &[u8], code: i32) -> Use {
         return Use::Short;
     }
     let text = match type_name {
-        b"TEXT" => code == 1,
-        b"MTEXT" => matches!(code, 1 | 3),
+        b"TEXT" | b"ATTDEF" => code == 1,
+        b"MTEXT" => matches!(code, 1 | 3 | 7),
         b"ATTRIB" => matches!(code, 1 | 2),
         b"INSERT" => code == 2,
         _ => false,

@@ -6,7 +6,7 @@ use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
 use super::convert::line_of;
-use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
+use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::names::folded;
 use super::placing::Placing;
 use super::rules::{
@@ -55,6 +55,11 @@ impl Book<'_> {
 
     fn block(&self, name: u32) -> Option<usize> {
         self.block_of_name.get(name as usize).copied().flatten()
+    }
+
+    fn style(&self, name: &str) -> Style {
+        let name = folded(&super::text_decode::plain_name(name));
+        self.scan.styles.get(&name).copied().unwrap_or_default()
     }
 
     /// The number of a layer by its bytes.
@@ -131,7 +136,8 @@ impl<'b> Gatherer<'b> {
                 self.text(of_text(text, &frame.placing), layer, handle, false);
             }
             EntityType::MText(text) => {
-                self.text(of_mtext(text, &frame.placing), layer, handle, false);
+                let style = self.book.style(&text.text_style_name);
+                self.text(of_mtext(text, style, &frame.placing), layer, handle, false);
             }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {

@@ -84,7 +84,7 @@ pub(super) fn mark_patterns() -> Vec<Pattern> {
 }
 
 /// Heights whose numbers are in this unit: `H165`, `H 165`, `HP=165`, `165H`, `165 (H)`, `165`.
-pub(super) fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
+pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
     let number = number(unit);
     [
         pattern(
@@ -102,7 +102,7 @@ pub(super) fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
 }
 
 /// Slab thickness in this unit: `T350`, `T 350`, `T=350`.
-pub(super) fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
+pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
     let number = number(unit);
     let expression = format!(r"(?i)^T\s*=?\s*(?<value>{number})$");
     pattern("thickness", &expression).into_iter().collect()
@@ -110,10 +110,18 @@ pub(super) fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
 
 /// The family that a line belongs to, of those that a survey offers; the first in their order.
 pub fn offered(line: &str) -> Option<&'static Offer> {
-    static OFFERS: LazyLock<Vec<Offer>> = LazyLock::new(offers);
     let line = line.trim();
     OFFERS.iter().find(|offer| offer.pattern.is_match(line))
 }
+
+/// The family of this name.
+pub fn offered_named(name: &str) -> Option<&'static Offer> {
+    OFFERS
+        .iter()
+        .find(|offer| offer.pattern.name.as_deref() == Some(name))
+}
+
+static OFFERS: LazyLock<Vec<Offer>> = LazyLock::new(offers);
 
 /// Families that a survey offers, in the order they are tried.
 fn offers() -> Vec<Offer> {

@@ -7,5 +7,6 @@
 
 mod heights;
 mod kit;
+mod labels;
 mod laws;
 mod settling;

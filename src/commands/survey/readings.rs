@@ -1,8 +1,9 @@
 //! What a text is taken for by the job's patterns, when only the text itself speaks.
 
 use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line};
-use crate::job::families::{Offer, offered};
+use crate::job::families::{self, Offer, offered};
 use crate::job::{Job, Pattern};
+use crate::units::LengthUnit;
 
 /// What a text says.
 #[derive(Debug, Clone, PartialEq, Eq, PartialOrd, Ord)]
@@ -99,6 +100,66 @@ fn named(words: String, by: Option<&Pattern>) -> String {
         Some(by) => format!("{words} ({})", by.label()),
         None => words,
     }
+}
+
+/// What a text says beyond how it is read.
+#[derive(Debug, Default, PartialEq)]
+pub(super) struct Hint {
+    /// Its height or thickness, millimetres.
+    pub(super) height_mm: Option<f64>,
+    pub(super) thickness_mm: Option<f64>,
+    /// It would be a height, or a thickness, in inches.
+    pub(super) inched: bool,
+    pub(super) inched_thickness: bool,
+    /// A word of heights that the job does not know, beside a number.
+    pub(super) word: Option<String>,
+}
+
+/// What a text hints at.
+pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
+    let read = &job.conventions;
+    let heights = || text.lines().filter_map(|line| height_of_line(line, read));
+    let mut hint = Hint::default();
+    match said {
+        Reading::Height(_) => {
+            let first = heights().find(|(height, _)| !height.middle);
+            hint.height_mm = first.map(|(height, _)| height.value_m * 1000.0);
+        }
+        Reading::Thickness(_) => {
+            let mut thicknesses = text.lines().filter_map(|line| thickness_of_line(line, read));
+            hint.thickness_mm = thicknesses.next().map(|(value_m, _)| value_m * 1000.0);
+        }
+        // A mark by the default patterns may be the word and number of another office's heights.
+        Reading::Mark { strands: false, .. } | Reading::Offered(_) | Reading::Unread => {
+            let mut lines = text.lines();
+            let line = lines.next().unwrap_or_default().trim();
+            if lines.next().is_some() {
+                return hint;
+            }
+            let inched = |patterns: &[Pattern]| patterns.iter().any(|p| p.is_match(line));
+            let signed = line.contains(['"', '″', '”', '/', '⁄', '¼', '½', '¾', '⅛', '⅜', '⅝', '⅞']);
+            hint.inched_thickness = signed && inched(&families::thickness_patterns(LengthUnit::In));
+            let is_height = !hint.inched_thickness && inched(&families::height_patterns(LengthUnit::In));
+            let word: String = line.chars().filter(|c| c.is_alphabetic()).collect();
+            let word = word.to_uppercase();
+            let strange = high_word(&word) || low_word(&word);
+            let bare = ["", "H", "HP", "HIGH", "L", "LP", "LOW", "IN"].contains(&word.as_str());
+            hint.inched = is_height && signed && (bare || strange);
+            hint.word = (is_height && strange).then_some(word);
+        }
+        Reading::Mark { .. } => {}
+    }
+    hint
+}
+
+/// Words that other offices write at high points.
+pub(super) fn high_word(word: &str) -> bool {
+    ["HI", "HPT", "HIGHPT", "HIGHPOINT", "TOP", "T", "UP", "CREST", "PEAK"].contains(&word)
+}
+
+/// Words that other offices write at low points.
+pub(super) fn low_word(word: &str) -> bool {
+    ["LO", "LPT", "LOWPT", "LOWPOINT", "BOT", "BOTTOM", "B", "BTM", "DN", "DOWN", "SAG"].contains(&word)
 }
 
 impl Reading {
