@@ -7,7 +7,7 @@ use regex_automata::dfa::{Automaton, StartKind, dense};
 use regex_automata::nfa::thompson;
 use regex_automata::util::primitives::StateID;
 use regex_automata::{Anchored, Input, MatchKind};
-use regex_syntax::hir::{Hir, HirKind};
+use regex_syntax::hir::{Class, ClassUnicode, Hir, HirKind};
 
 /// Bytes that an automaton may take; a pattern beyond this is taken as it is, undecided.
 const SIZE_LIMIT: usize = 8 << 20;
@@ -15,10 +15,8 @@ const SIZE_LIMIT: usize = 8 << 20;
 /// Whether some line of text matches: one without a line break, and without blanks at its ends, since that is how
 /// labels are read. `true` also where the automaton would be too large to tell.
 pub(super) fn matches_something(expression: &str) -> bool {
-    regex_syntax::parse(expression).is_ok_and(|hir| {
-        let dfa = automaton(&hir, StartKind::Unanchored);
-        dfa.is_none_or(|dfa| reaches_match(&dfa, Anchored::No, Seen::line()))
-    })
+    regex_syntax::parse(expression)
+        .is_ok_and(|hir| some_text(&hir, StartKind::Unanchored, Seen::line()))
 }
 
 /// Whether what a named group holds may have a digit in it (or a sign that is no ASCII, such as ½). `true` also where
@@ -30,10 +28,48 @@ pub(super) fn group_holds_number(expression: &str, group: &str) -> bool {
     let mut groups = Vec::new();
     named(&hir, group, &mut groups);
     groups.is_empty()
-        || groups.into_iter().any(|group| {
-            let dfa = automaton(group, StartKind::Anchored);
-            dfa.is_none_or(|dfa| reaches_match(&dfa, Anchored::Yes, Seen::number()))
-        })
+        || groups
+            .into_iter()
+            .any(|group| some_text(group, StartKind::Anchored, Seen::number()))
+}
+
+/// Whether some text leads to a match.
+fn some_text(hir: &Hir, start: StartKind, seen: Seen) -> bool {
+    // Automata know word boundaries between ASCII alone. They decide where ASCII can stand for everything else.
+    let bounded = hir.properties().look_set().contains_word_unicode();
+    if bounded && !ascii_stands_for_all(hir) {
+        return true;
+    }
+    let greatest = if bounded { 0x7F } else { u8::MAX };
+    automaton(hir, start).is_none_or(|dfa| reaches_match(&dfa, start, seen, greatest))
+}
+
+/// Whether each character that the expression may take has one of ASCII in its place that is a word character like it.
+fn ascii_stands_for_all(hir: &Hir) -> bool {
+    match hir.kind() {
+        HirKind::Literal(literal) => literal.0.is_ascii(),
+        HirKind::Class(Class::Unicode(class)) => {
+            [(r"[\w--[:ascii:]]", r"[\w&&[:ascii:]]"), (r"[\W--[:ascii:]]", r"[\W&&[:ascii:]]")]
+                .into_iter()
+                .all(|(beyond, within)| !meets(class, beyond) || meets(class, within))
+        }
+        HirKind::Class(Class::Bytes(_)) | HirKind::Empty | HirKind::Look(_) => true,
+        HirKind::Capture(capture) => ascii_stands_for_all(&capture.sub),
+        HirKind::Repetition(repetition) => ascii_stands_for_all(&repetition.sub),
+        HirKind::Concat(parts) | HirKind::Alternation(parts) => {
+            parts.iter().all(ascii_stands_for_all)
+        }
+    }
+}
+
+/// Whether two classes share a character.
+fn meets(class: &ClassUnicode, other: &str) -> bool {
+    let other = regex_syntax::parse(other).map(Hir::into_kind);
+    let Ok(HirKind::Class(Class::Unicode(mut other))) = other else {
+        return false;
+    };
+    other.intersect(class);
+    !other.ranges().is_empty()
 }
 
 fn named<'h>(hir: &'h Hir, name: &str, found: &mut Vec<&'h Hir>) {
@@ -64,7 +100,6 @@ fn automaton(hir: &Hir, start: StartKind) -> Option<dense::DFA<Vec<u32>>> {
                 .match_kind(MatchKind::All)
                 .start_kind(start)
                 .accelerate(false)
-                // Outside ASCII the automaton gives up at a word boundary, which counts as a match below.
                 .unicode_word_boundary(true)
                 .dfa_size_limit(Some(SIZE_LIMIT))
                 .determinize_size_limit(Some(SIZE_LIMIT)),
@@ -122,7 +157,16 @@ impl Seen {
 
 /// Visits every state that can be reached. A match is known one byte late: the state after that byte tells of the text
 /// before it, which for a whole line may then go on in any way.
-fn reaches_match(dfa: &dense::DFA<Vec<u32>>, anchored: Anchored, seen: Seen) -> bool {
+fn reaches_match(
+    dfa: &dense::DFA<Vec<u32>>,
+    start: StartKind,
+    seen: Seen,
+    greatest: u8,
+) -> bool {
+    let anchored = match start {
+        StartKind::Anchored => Anchored::Yes,
+        _ => Anchored::No,
+    };
     let Ok(start) = dfa.start_state_forward(&Input::new("").anchored(anchored)) else {
         return true;
     };
@@ -132,7 +176,7 @@ fn reaches_match(dfa: &dense::DFA<Vec<u32>>, anchored: Anchored, seen: Seen) -> 
         if !seen.lacking && dfa.is_match_state(dfa.next_eoi_state(state)) {
             return true;
         }
-        for byte in 0..=u8::MAX {
+        for byte in 0..=greatest {
             let Some(after) = seen.then(byte) else {
                 continue;
             };
@@ -167,6 +211,8 @@ mod tests {
             (r"$\d", false),
             // A word boundary inside a word.
             (r"^H\b(?<value>\d+)$", false),
+            (r"^(?<value>\d+)\b°$", true),
+            (r"^Ø\b(?<value>\d+)$", true),
             // An empty class.
             (r"[^\s\S]\d+", false),
             // Lines hold no line break, and their ends no blanks.

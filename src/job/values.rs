@@ -4,6 +4,7 @@ use std::ops::Range;
 
 use toml::de::{DeArray, DeValue};
 
+use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
 
@@ -76,6 +77,13 @@ impl Reader {
                 let mut all = (place.get)(&self.job).clone();
                 for size in given {
                     match all.iter_mut().find(|known| known.name == size.name) {
+                        // Who replaces a size and names no aliases keeps those that it has.
+                        Some(known) if size.aliases.is_empty() => {
+                            *known = StrandSize {
+                                aliases: std::mem::take(&mut known.aliases),
+                                ..size
+                            };
+                        }
                         Some(known) => *known = size,
                         None => all.push(size),
                     }
