@@ -8,6 +8,7 @@ use std::fmt;
 
 mod automaton;
 mod default;
+mod expressions;
 pub mod families;
 pub mod key;
 pub mod keys;

@@ -227,7 +227,10 @@ fn each_other_mistake_is_told_apart() {
             "broken regular expression",
         ),
         ("[labels]\nmark_patterns = ['^D']\n", "no group"),
-        ("[labels]\nmark_patterns = [3]\n", "cannot hold the number 3"),
+        (
+            "[labels]\nmark_patterns = [3]\n",
+            "cannot hold the number 3",
+        ),
         ("[labels]\nmark_patterns = []\n", "empty list"),
         (
             "[labels]\nmark_patterns = ['^(?<mrak>D\\d+)$']\n",

@@ -12,7 +12,9 @@ fn drawing(styles: &str, blocks: &str, entities: &str) -> Drawing {
     );
     let lines = tags.lines().filter(|line| !line.trim().is_empty());
     let pairs = lines.map(|line| line.trim_start().split_once(' ').expect("code and value"));
-    let dxf: String = pairs.map(|(code, value)| format!("{code}\n{value}\n")).collect();
+    let dxf: String = pairs
+        .map(|(code, value)| format!("{code}\n{value}\n"))
+        .collect();
     let source = open(dxf.into_bytes()).expect("a drawing");
     let (drawing, findings) = read(&source, &Wanted::everything(), None);
     assert!(findings.is_empty(), "{findings:?}");
@@ -26,7 +28,10 @@ fn entities(entities: &str) -> Vec<Text> {
 /// Least and greatest x and y of a text's box, relative to its place.
 fn room(text: &Text) -> [f64; 4] {
     let off = |pick: fn(&Coord<f64>) -> f64| {
-        let all = text.corners.iter().map(move |corner| pick(corner) - pick(&text.place));
+        let all = text
+            .corners
+            .iter()
+            .map(move |corner| pick(corner) - pick(&text.place));
         let (low, high) = all.fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), off| {
             (low.min(off), high.max(off))
         });
@@ -39,7 +44,10 @@ fn room(text: &Text) -> [f64; 4] {
 #[track_caller]
 fn assert_room(text: &Text, expected: [f64; 4]) {
     let found = room(text);
-    let near = found.iter().zip(expected).all(|(a, b)| (a - b).abs() < 1e-9);
+    let near = found
+        .iter()
+        .zip(expected)
+        .all(|(a, b)| (a - b).abs() < 1e-9);
     assert!(near, "{found:?} is not {expected:?}");
 }
 
@@ -143,7 +151,10 @@ fn codes_are_decoded_in_every_kind_of_text() {
         ("\\A1;H 1\\S1/4;\"", "H 1 1/4\""),
         ("{\\H0.7x;\\S7#8;}\"", "7/8\""),
         ("1-\\S1^4;", "1-1/4"),
-        ("\\pxqc;{\\W0.8;\\T1.1;\\Q15;D012}\\P\\LH165\\l", "D012\nH165"),
+        (
+            "\\pxqc;{\\W0.8;\\T1.1;\\Q15;D012}\\P\\LH165\\l",
+            "D012\nH165",
+        ),
         ("5-%%c12.7\\~L30", "5-Ø12.7 L30"),
         ("D012^J5-12.7", "D012\n5-12.7"),
         ("\\{H\\}165 {\\C3;L}30", "{H}165 L30"),

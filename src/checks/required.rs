@@ -49,7 +49,10 @@ pub(super) fn force_below_required(worked: &Worked) -> Option<Finding> {
 /// Forces per width; `mean_service_kn` is one tendon's, by the floor's tendons, where it is known.
 pub fn per_width(floor: &Floor, mean_service_kn: &[Option<f64>]) -> Vec<Finding> {
     let tendons = &floor.tendons;
-    if tendons.iter().all(|tendon| tendon.required_kn_per_m.is_none()) {
+    if tendons
+        .iter()
+        .all(|tendon| tendon.required_kn_per_m.is_none())
+    {
         return Vec::new();
     }
     let chords = tendons.iter().enumerate().flat_map(|(at, tendon)| {
@@ -164,17 +167,18 @@ mod tests {
                 forces: Some(&forces),
                 ..worked(&tendon)
             };
-            assert_eq!(force_below_required(&worked).is_some(), short, "{required_kn}");
+            assert_eq!(
+                force_below_required(&worked).is_some(),
+                short,
+                "{required_kn}"
+            );
         }
         assert!(force_below_required(&worked(&tendon)).is_none());
     }
 
     fn beside(ys_m: &[f64], required: f64) -> Vec<Finding> {
         let line = |&y: &f64| {
-            let mut tendon = along(Path::through(&[
-                Coord { x: 0.0, y },
-                Coord { x: 20.0, y },
-            ]));
+            let mut tendon = along(Path::through(&[Coord { x: 0.0, y }, Coord { x: 20.0, y }]));
             tendon.required_kn_per_m = (y == 0.0).then_some(required);
             tendon
         };

@@ -122,7 +122,10 @@ pub(super) fn of_attribute(attribute: &Attribute, placing: &Placing) -> Letterin
 /// What an attribute says: a line, or lines where it was written as such.
 pub(super) fn attribute_content(raw: &str) -> String {
     // Attributes of several lines, and those that were typed in an editor of such, are written as MTEXT.
-    if ["\\P", "{\\", "\\S", "\\A"].iter().any(|code| raw.contains(code)) {
+    if ["\\P", "{\\", "\\S", "\\A"]
+        .iter()
+        .any(|code| raw.contains(code))
+    {
         text_lines(raw)
     } else {
         text_line(raw)
@@ -168,7 +171,13 @@ fn one_line(text: OneLine<'_>, placing: &Placing) -> Lettering {
         _ => 0.0,
     };
     let (sin, cos) = rotation_rad.sin_cos();
-    let mirrored = |flag: i32| if text.generation & flag == 0 { 1.0 } else { -1.0 };
+    let mirrored = |flag: i32| {
+        if text.generation & flag == 0 {
+            1.0
+        } else {
+            -1.0
+        }
+    };
     let frame = Frame {
         place,
         along: Coord { x: cos, y: sin } * mirrored(2),

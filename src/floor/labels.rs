@@ -59,7 +59,9 @@ pub(super) fn labels<'a>(
             ));
         }
         let silent = said.height.is_none() && said.mark.is_none();
-        labels.heights.extend(said.height.map(|height| (text, height)));
+        labels
+            .heights
+            .extend(said.height.map(|height| (text, height)));
         labels.marks.extend(said.mark.map(|mark| (text, mark)));
         // What nobody sees need not say anything that is for us.
         if silent && !text.hidden {
@@ -100,7 +102,10 @@ fn unread(text: &Text, what: &str, expected: &str) -> Finding {
     Finding::new(
         &LABEL_UNREAD,
         Level::Warning,
-        format!("text {:?} on layer {} {what}; expected {expected}", text.content, text.layer),
+        format!(
+            "text {:?} on layer {} {what}; expected {expected}",
+            text.content, text.layer
+        ),
         remedy,
     )
     .at_place(text.place)

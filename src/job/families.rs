@@ -30,8 +30,7 @@ const AFTER_MARK: &str = r"(?:\s*[:;,]\s*|\s+(?:[-–]\s+)?)";
 /// Between a number of strands and their size.
 const OF_SIZE: &str = r"\s*(?:[-–/SØ∅⌀]|NOS?\.?)\s*[Ø∅⌀]?\s*";
 /// Inches or millimetres after a size.
-const SIZE_SIGN: &str =
-    r#"\s*(?:mm|"|″|”|''|in\.?)?\s*[Ø∅⌀]?(?:\s*DIA\.?)?(?:\s*STRANDS?)?"#;
+const SIZE_SIGN: &str = r#"\s*(?:mm|"|″|”|''|in\.?)?\s*[Ø∅⌀]?(?:\s*DIA\.?)?(?:\s*STRANDS?)?"#;
 /// A number of tendons before their strands.
 const TENDONS: &str = r"(?:(?<tendons>\d+)\s*[x×*]\s*)?";
 /// A force, perhaps with the letters that it goes by, and in groups of three.
@@ -41,6 +40,11 @@ const FORCE_WORDS: &str = r"(?:\s*\(?(?:EFF|EFFECTIVE|FINAL|TOTAL|MIN|REQ'?D)\.?
 
 /// Marks, strands and required forces.
 pub(super) fn mark_patterns() -> Vec<Pattern> {
+    static PATTERNS: LazyLock<Vec<Pattern>> = LazyLock::new(compiled_marks);
+    PATTERNS.clone()
+}
+
+fn compiled_marks() -> Vec<Pattern> {
     let mark = format!("(?:{MARK}{AFTER_MARK})?");
     let per_width = FORCE.replace("<force>", "<force_per_width>");
     let force = |unit, name, number: &str, sign: &str| {
@@ -85,27 +89,46 @@ pub(super) fn mark_patterns() -> Vec<Pattern> {
 
 /// Heights whose numbers are in this unit: `H165`, `H 165`, `HP=165`, `165H`, `165 (H)`, `165`.
 pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    let number = number(unit);
-    [
-        pattern(
-            "height",
-            &format!(r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>{number})\)?$"),
-        ),
-        pattern(
-            "height, word last",
-            &format!(r"(?i)^\(?(?<value>{number})\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$"),
-        ),
-    ]
-    .into_iter()
-    .flatten()
-    .collect()
+    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
+        by_unit(&[
+            (
+                "height",
+                r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
+            ),
+            (
+                "height, word last",
+                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$",
+            ),
+        ])
+    });
+    in_unit(&BY_UNIT, unit)
 }
 
 /// Slab thickness in this unit: `T350`, `T 350`, `T=350`.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    let number = number(unit);
-    let expression = format!(r"(?i)^T\s*=?\s*(?<value>{number})$");
-    pattern("thickness", &expression).into_iter().collect()
+    static BY_UNIT: LazyLock<ByUnit> =
+        LazyLock::new(|| by_unit(&[("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)$")]));
+    in_unit(&BY_UNIT, unit)
+}
+
+type ByUnit = [(LengthUnit, Vec<Pattern>); 5];
+
+/// Patterns with a number of each unit in them.
+fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
+    use LengthUnit::{Cm, Ft, In, M, Mm};
+    [Mm, Cm, M, In, Ft].map(|unit| {
+        let with_number = |(name, expression): &(&str, &str)| {
+            pattern(name, &expression.replace("NUMBER", number(unit)))
+        };
+        (unit, expressions.iter().filter_map(with_number).collect())
+    })
+}
+
+fn in_unit(by_unit: &ByUnit, unit: LengthUnit) -> Vec<Pattern> {
+    let found = by_unit.iter().find(|(of, _)| *of == unit);
+    found
+        .map(|(_, patterns)| patterns.clone())
+        .unwrap_or_default()
 }
 
 /// The family that a line belongs to, of those that a survey offers; the first in their order.
@@ -142,7 +165,9 @@ fn offers() -> Vec<Offer> {
         ),
         marks(
             "single-strand tendons at a spacing",
-            &format!(r#"(?i)^{mark}{tendons}\s*@\s*[\d .'"/-]+(?:mm|cm|m|in)?\s*(?:O\.?\s?C\.?|C/C|CRS\.?|CTRS\.?|CTS\.?)?$"#),
+            &format!(
+                r#"(?i)^{mark}{tendons}\s*@\s*[\d .'"/-]+(?:mm|cm|m|in)?\s*(?:O\.?\s?C\.?|C/C|CRS\.?|CTRS\.?|CTS\.?)?$"#
+            ),
             counted,
         ),
         marks(
@@ -195,7 +220,7 @@ fn number(unit: LengthUnit) -> &'static str {
         LengthUnit::Mm | LengthUnit::Cm => r"-?\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?",
         LengthUnit::M => r"[-+]?(?:\d+(?:[.,]\d+)?|[.,]\d+)(?:\s*[cm]?m)?",
         LengthUnit::In | LengthUnit::Ft => {
-            r#"-?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:[\s-]\s*\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#
+            r#"-?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:(?:\s*-\s*|\s+)\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#
         }
     }
 }
@@ -210,74 +235,4 @@ fn pattern(name: &str, expression: &str) -> Option<Pattern> {
 }
 
 #[cfg(test)]
-mod tests {
-    use super::*;
-    use crate::job::automaton::{group_holds_number, matches_something};
-
-    fn group(patterns: &[Pattern], text: &str, name: &str) -> Option<String> {
-        let found = patterns.iter().find_map(|pattern| pattern.captures(text))?;
-        found.name(name).map(|part| part.as_str().to_owned())
-    }
-
-    #[test]
-    fn every_pattern_of_the_house_compiles_and_can_match() {
-        assert_eq!(mark_patterns().len(), 8);
-        assert_eq!(offers().len(), 6);
-        let mut all = mark_patterns();
-        all.extend(offers().into_iter().map(|offer| offer.pattern));
-        for unit in ["mm", "cm", "m", "in", "ft"] {
-            let Some(PatternUnit::Length(unit)) = PatternUnit::named(unit) else {
-                panic!("{unit}");
-            };
-            assert_eq!(height_patterns(unit).len(), 2);
-            assert_eq!(thickness_patterns(unit).len(), 1);
-            all.extend(height_patterns(unit));
-            all.extend(thickness_patterns(unit));
-        }
-        for pattern in all {
-            assert!(matches_something(pattern.as_str()), "{}", pattern.label());
-            for group in ["value", "strands", "tendons", "force"] {
-                assert!(group_holds_number(pattern.as_str(), group), "{group}");
-            }
-        }
-    }
-
-    #[test]
-    fn marks_are_read_with_their_strands() {
-        let patterns = mark_patterns();
-        let all = |text: &str| {
-            ["mark", "tendons", "strands", "strand"]
-                .map(|name| group(&patterns, text, name).unwrap_or_default())
-        };
-        assert_eq!(all("D012 5-12.7"), ["D012", "", "5", "12.7"]);
-        assert_eq!(all("B03 4x5-12.7"), ["B03", "4", "5", "12.7"]);
-        assert_eq!(all("b03\n4 x 5S12.7"), ["b03", "4", "5", "12.7"]);
-        assert_eq!(all("5-12.7"), ["", "", "5", "12.7"]);
-        assert_eq!(all("3x5-15.2"), ["", "3", "5", "15.2"]);
-        assert_eq!(all("D7"), ["D7", "", "", ""]);
-        assert_eq!(all("SEE NOTE 4"), ["", "", "", ""]);
-    }
-
-    #[test]
-    fn heights_are_read_with_their_word_on_either_side() {
-        let both = |unit, text: &str| {
-            ["word", "value"]
-                .map(|name| group(&height_patterns(unit), text, name).unwrap_or_default())
-        };
-        let metric = LengthUnit::Mm;
-        assert_eq!(both(metric, "H165"), ["H", "165"]);
-        assert_eq!(both(metric, "H 165"), ["H", "165"]);
-        assert_eq!(both(metric, "165H"), ["H", "165"]);
-        assert_eq!(both(metric, "L30"), ["L", "30"]);
-        assert_eq!(both(metric, "-20"), ["", "-20"]);
-        assert_eq!(both(metric, "165"), ["", "165"]);
-        assert_eq!(both(metric, "1 1/4\""), ["", ""]);
-        let inch = LengthUnit::In;
-        assert_eq!(both(inch, "1 1/4\""), ["", "1 1/4\""]);
-        assert_eq!(both(inch, "H 1-1/4"), ["H", "1-1/4"]);
-        assert_eq!(both(inch, "7/8\" L"), ["L", "7/8\""]);
-        assert_eq!(both(inch, "1½"), ["", "1½"]);
-        assert_eq!(both(inch, "½\""), ["", "½\""]);
-        assert_eq!(both(inch, "5.25"), ["", "5.25"]);
-    }
-}
+mod tests;

@@ -2,26 +2,12 @@
 
 use std::ops::Range;
 
-use regex::Regex;
 use toml::de::{DeArray, DeTable, DeValue};
 
-use super::automaton::{group_holds_number, matches_something};
 use super::key::{Key, Kind, quoted};
 use super::pattern::{FORCE_WORDS, LENGTH_WORDS, Pattern, PatternUnit, Word};
 use super::reading::{Entry, Reader, kind_word, nearest, plain};
 use super::{Datum, FromFace};
-
-/// Groups that hold a number.
-const NUMBERS: [&str; 8] = [
-    "value",
-    "tendons",
-    "strands",
-    "force",
-    "force_per_width",
-    "top",
-    "soffit",
-    "number",
-];
 
 impl Reader {
     /// The patterns of a list; `None` where it is empty.
@@ -119,8 +105,7 @@ impl Reader {
                 pattern.name = Some(word.to_string());
             }
             ("unit", DeValue::String(_)) => {
-                let forces =
-                    pattern.has_group("force") || pattern.has_group("force_per_width");
+                let forces = pattern.has_group("force") || pattern.has_group("force_per_width");
                 let words = if forces { FORCE_WORDS } else { LENGTH_WORDS };
                 let word = self.one_of(name, words, value);
                 pattern.unit = word.and_then(PatternUnit::named);
@@ -211,76 +196,6 @@ impl Reader {
                 );
             }
         }
-    }
-
-    /// A regular expression that can match, with the groups of its key.
-    fn expression(&mut self, key: &Key, text: &str, span: &Range<usize>) -> Option<Regex> {
-        let (groups, also): (&[&str], &[&str]) = match &key.kind {
-            Kind::Expressions { groups, also, .. } => (groups, also),
-            _ => (&[], &[]),
-        };
-        let first = groups.first().copied().unwrap_or("value");
-        let regex = match Regex::new(text) {
-            Ok(regex) => regex,
-            Err(error) => {
-                let reason = error.to_string();
-                let reason = reason.lines().last().unwrap_or_default();
-                self.mistake(
-                    span.clone(),
-                    format!("`{}` holds a broken regular expression: {}", key.name, plain(reason.trim_start_matches("error: "))),
-                    format!("expected {}", key.expected()),
-                    "put the pattern in 'single quotes', where a backslash needs no doubling, and close every bracket",
-                );
-                return None;
-            }
-        };
-        let names: Vec<&str> = regex.capture_names().flatten().collect();
-        let known = |name: &&str| groups.contains(name) || also.contains(name);
-        if let Some(strange) = names.iter().find(|name| !known(name)) {
-            let all = [groups, also].concat();
-            let near = nearest(strange, all.iter().copied()).unwrap_or(first);
-            self.mistake(
-                span.clone(),
-                format!("this pattern of `{}` has an unknown group `{strange}`", key.name),
-                format!("the groups are {}", all.join(", ")),
-                format!("did you mean (?<{near}>...)? A group without a name is (?:...)"),
-            );
-            return None;
-        }
-        if !names.iter().any(|name| groups.contains(name)) {
-            self.mistake(
-                span.clone(),
-                format!(
-                    "this pattern of `{}` has no group that says what it found",
-                    key.name
-                ),
-                format!("expected {}", key.expected()),
-                format!("put the part that is wanted in (?<{first}>...)"),
-            );
-            return None;
-        }
-        if !matches_something(text) {
-            self.mistake(
-                span.clone(),
-                format!("this pattern of `{}` can never match: no line of text fits it", key.name),
-                "expected a pattern of a single line, without blanks at its ends",
-                "look for text before ^ or after $, a blank next to them, or \\b inside a word",
-            );
-            return None;
-        }
-        let empty = names
-            .iter()
-            .find(|name| NUMBERS.contains(name) && !group_holds_number(text, name));
-        if let Some(empty) = empty {
-            self.mistake(
-                span.clone(),
-                format!("this pattern of `{}` can never match a number: its group `{empty}` takes no digit", key.name),
-                format!("expected the digits inside (?<{empty}>...)"),
-                format!("write the part that is the number as (?<{empty}>\\d+)"),
-            );
-            return None;
-        }
-        Some(regex)
     }
 }
 

@@ -40,7 +40,10 @@ fn heights(tendon: &Tendon) -> Vec<(PointKind, i64)> {
     between
         .map(|point| {
             let millimetres = point.height_m.expect("known") * 1000.0;
-            (point.kind, format!("{millimetres:.0}").parse().expect("a number"))
+            (
+                point.kind,
+                format!("{millimetres:.0}").parse().expect("a number"),
+            )
         })
         .collect()
 }
@@ -53,7 +56,10 @@ fn each_line_of_a_label_is_read_for_what_it_is() {
     let whole = "D012\n5-0.5\"\nL30\nTYP.";
     for (job, layer) in [
         ("", MARKS),
-        ("[layers]\nmarks = [\"NOTES\"]\nheights = [\"NOTES\"]", "NOTES"),
+        (
+            "[layers]\nmarks = [\"NOTES\"]\nheights = [\"NOTES\"]",
+            "NOTES",
+        ),
     ] {
         let (tendon, findings) = only(job, &[(layer, whole, 5.0)]);
         assert_eq!(tendon.mark, "D012", "{layer}");
@@ -73,7 +79,10 @@ fn a_line_that_does_not_speak_for_itself_stays_with_its_layer() {
     let (tendon, _) = only("", &[(MARKS, "L30", 5.0)]);
     assert_eq!(tendon.mark, "L30");
     assert!(heights(&tendon).is_empty());
-    let (tendon, _) = only("", &[(MARKS, "D1 5-12.7\n30", 5.0), (HEIGHTS, "D1\nL40", 7.0)]);
+    let (tendon, _) = only(
+        "",
+        &[(MARKS, "D1 5-12.7\n30", 5.0), (HEIGHTS, "D1\nL40", 7.0)],
+    );
     assert_eq!(heights(&tendon), [(PointKind::Low, 40)]);
 }
 
@@ -82,19 +91,29 @@ fn two_heights_in_one_label_are_said() {
     let (tendon, findings) = only("", &[(MARKS, "D1 5-12.7", 3.0), (HEIGHTS, "L30\nL40", 6.0)]);
     assert_eq!(heights(&tendon), [(PointKind::Low, 30)]);
     let found = findings.iter().find(|f| f.rule.name == "label-unread");
-    assert!(found.expect("said").text.contains("two heights"), "{findings:?}");
+    assert!(
+        found.expect("said").text.contains("two heights"),
+        "{findings:?}"
+    );
 }
 
 #[test]
 fn mid_depth_is_half_of_the_slab() {
-    let labels = [(HEIGHTS, "T/2", 0.0), (HEIGHTS, "L30", 5.0), (HEIGHTS, "MID", 10.0)];
+    let labels = [
+        (HEIGHTS, "T/2", 0.0),
+        (HEIGHTS, "L30", 5.0),
+        (HEIGHTS, "MID", 10.0),
+    ];
     let (tendon, findings) = only("[slab]\nthickness_mm = 200", &labels);
     let ends = [tendon.points.first(), tendon.points.last()];
     for end in ends {
         let height_m = end.expect("an anchor").height_m.expect("known");
         assert!((height_m - 0.1).abs() < 1e-12, "{height_m}");
     }
-    assert!(findings.iter().all(|f| f.rule.name != "label-unread"), "{findings:?}");
+    assert!(
+        findings.iter().all(|f| f.rule.name != "label-unread"),
+        "{findings:?}"
+    );
 }
 
 #[test]
@@ -103,12 +122,20 @@ fn each_pattern_brings_its_own_unit_face_and_datum() {
         { expression = '^(?<word>T)(?<value>\\d+)$', from = \"top\" },\
         { expression = '^C(?<value>\\d+)$', datum = \"chair\", word = \"low\" },\
         { expression = '^(?<value>[\\d /]+)\"$', unit = \"in\" }]";
-    let labels = [(HEIGHTS, "C30", 2.5), (HEIGHTS, "T40", 5.0), (HEIGHTS, "1 1/4\"", 7.5)];
+    let labels = [
+        (HEIGHTS, "C30", 2.5),
+        (HEIGHTS, "T40", 5.0),
+        (HEIGHTS, "1 1/4\"", 7.5),
+    ];
     let (tendon, _) = only(job, &labels);
     assert_eq!(
         heights(&tendon),
         // 30 + 13 in the duct at a low point; 200 - 40; 31.75.
-        [(PointKind::Low, 43), (PointKind::High, 160), (PointKind::Low, 32)]
+        [
+            (PointKind::Low, 43),
+            (PointKind::High, 160),
+            (PointKind::Low, 32)
+        ]
     );
 }
 
@@ -117,22 +144,38 @@ fn a_required_force_is_kept_and_never_turned_into_strands() {
     let (tendon, findings) = only("", &[(MARKS, "B7 324 KIPS", 5.0), (HEIGHTS, "L30", 4.0)]);
     assert!((tendon.required_kn.expect("kept") - 1441.223_803).abs() < 1e-5);
     assert_eq!((tendon.strands, tendon.tendons), (None, 1));
-    let found = findings.iter().find(|f| f.rule.name == "strand-count-missing");
+    let found = findings
+        .iter()
+        .find(|f| f.rule.name == "strand-count-missing");
     assert!(found.expect("said").text.contains("not worked out from it"));
     // A count and a force in two texts belong to one tendon.
-    let labels = [(MARKS, "5-12.7", 4.0), (MARKS, "40.5 K/FT", 6.0), (HEIGHTS, "L30", 5.0)];
+    let labels = [
+        (MARKS, "5-12.7", 4.0),
+        (MARKS, "40.5 K/FT", 6.0),
+        (HEIGHTS, "L30", 5.0),
+    ];
     let (tendon, findings) = only("", &labels);
     assert_eq!(tendon.strands, Some(5));
     assert!((tendon.required_kn_per_m.expect("kept") - 591.052_9).abs() < 1e-3);
-    assert!(findings.iter().all(|f| f.rule.name != "label-unclaimed"), "{findings:?}");
+    assert!(
+        findings.iter().all(|f| f.rule.name != "label-unclaimed"),
+        "{findings:?}"
+    );
 }
 
 #[test]
 fn a_text_of_a_known_family_is_not_guessed_but_offered() {
     let (tendon, findings) = only("", &[(MARKS, "12T", 5.0), (HEIGHTS, "L30", 4.0)]);
     assert_eq!((tendon.strands, tendon.tendons), (None, 1));
-    let found = findings.iter().find(|f| f.rule.name == "label-unread").expect("said");
-    assert!(found.remedy.contains("single-strand tendons"), "{}", found.remedy);
+    let found = findings
+        .iter()
+        .find(|f| f.rule.name == "label-unread")
+        .expect("said");
+    assert!(
+        found.remedy.contains("single-strand tendons"),
+        "{}",
+        found.remedy
+    );
     let job = "[labels]\nmark_patterns = [{ expression = '^(?<tendons>\\d+)T$', strands = 1, strand = \".5\" }]";
     let (tendon, _) = only(job, &[(MARKS, "12T", 5.0), (HEIGHTS, "L30", 4.0)]);
     assert_eq!((tendon.strands, tendon.tendons), (Some(1), 12));
@@ -147,5 +190,8 @@ fn what_nobody_sees_is_read_but_need_not_make_sense() {
     }
     let (floor, findings) = read(&drawing, &Job::default());
     assert_eq!(floor.tendons[0].strands, Some(5));
-    assert!(findings.iter().all(|f| f.rule.name != "label-unread"), "{findings:?}");
+    assert!(
+        findings.iter().all(|f| f.rule.name != "label-unread"),
+        "{findings:?}"
+    );
 }

@@ -165,7 +165,10 @@ impl LayerContents {
 
     /// Texts of families that count strands or tendons.
     pub(super) fn offered_counts(&self) -> usize {
-        let counting = self.offered.iter().filter(|(name, _)| **name != "other mark");
+        let counting = self
+            .offered
+            .iter()
+            .filter(|(name, _)| **name != "other mark");
         counting.map(|(_, count)| count).sum()
     }
 }

@@ -50,7 +50,11 @@ fn layers<'c>(
 ) -> Vec<&'c LayerContents> {
     let mut patterns = super::proposals::patterns(job, role);
     if let Some(Value::Array(items)) = proposed.get(&format!("layers.{role}")).map(|p| &p.value) {
-        patterns.extend(items.iter().filter_map(|item| item.as_str().map(str::to_owned)));
+        patterns.extend(
+            items
+                .iter()
+                .filter_map(|item| item.as_str().map(str::to_owned)),
+        );
     }
     let wanted = work::wanted(patterns);
     let named = contents.layers.iter().filter(|(name, _)| wanted.has(name));
@@ -84,7 +88,11 @@ fn mark_patterns(layers: &[&LayerContents], job: &Job) -> Option<(String, Propos
     let why: Vec<String> = offers
         .iter()
         .map(|offer| {
-            let count = offer.pattern.name.as_deref().and_then(|name| counts.get(name));
+            let count = offer
+                .pattern
+                .name
+                .as_deref()
+                .and_then(|name| counts.get(name));
             format!(
                 "Added for {} texts: {}. {}",
                 count.copied().unwrap_or(0),
@@ -121,9 +129,18 @@ fn words(layers: &[&LayerContents], job: &Job) -> Vec<(String, Proposal)> {
     .into_iter()
     .filter(|(.., found)| !found.is_empty())
     .map(|(key, known, found)| {
-        let why = format!("These words stand beside numbers there: {}. Check them.", found.join(", "));
+        let why = format!(
+            "These words stand beside numbers there: {}. Check them.",
+            found.join(", ")
+        );
         let all: Vec<String> = known.iter().cloned().chain(found).collect();
-        (key.to_owned(), Proposal { value: json!(all), why })
+        (
+            key.to_owned(),
+            Proposal {
+                value: json!(all),
+                why,
+            },
+        )
     })
     .collect()
 }
@@ -166,7 +183,13 @@ fn slab_unit(layers: &[&LayerContents], job: &Job, inches: bool) -> Option<(Stri
     let values = layers.iter().flat_map(|held| held.thicknesses_mm.iter());
     let mut values_mm: Vec<f64> = values.copied().collect();
     let least = [LEAST_SLAB_MM, LEAST_SLAB_CM];
-    by_size("slab.text_unit", &mut values_mm, least, inches, "thicknesses")
+    by_size(
+        "slab.text_unit",
+        &mut values_mm,
+        least,
+        inches,
+        "thicknesses",
+    )
 }
 
 /// A unit in which the middle of these numbers is one that a slab may have.

@@ -126,7 +126,9 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
             hint.height_mm = first.map(|(height, _)| height.value_m * 1000.0);
         }
         Reading::Thickness(_) => {
-            let mut thicknesses = text.lines().filter_map(|line| thickness_of_line(line, read));
+            let mut thicknesses = text
+                .lines()
+                .filter_map(|line| thickness_of_line(line, read));
             hint.thickness_mm = thicknesses.next().map(|(value_m, _)| value_m * 1000.0);
         }
         // A mark by the default patterns may be the word and number of another office's heights.
@@ -137,9 +139,11 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
                 return hint;
             }
             let inched = |patterns: &[Pattern]| patterns.iter().any(|p| p.is_match(line));
-            let signed = line.contains(['"', '″', '”', '/', '⁄', '¼', '½', '¾', '⅛', '⅜', '⅝', '⅞']);
+            let signed =
+                line.contains(['"', '″', '”', '/', '⁄', '¼', '½', '¾', '⅛', '⅜', '⅝', '⅞']);
             hint.inched_thickness = signed && inched(&families::thickness_patterns(LengthUnit::In));
-            let is_height = !hint.inched_thickness && inched(&families::height_patterns(LengthUnit::In));
+            let is_height =
+                !hint.inched_thickness && inched(&families::height_patterns(LengthUnit::In));
             let word: String = line.chars().filter(|c| c.is_alphabetic()).collect();
             let word = word.to_uppercase();
             let strange = high_word(&word) || low_word(&word);
@@ -154,12 +158,26 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
 
 /// Words that other offices write at high points.
 pub(super) fn high_word(word: &str) -> bool {
-    ["HI", "HPT", "HIGHPT", "HIGHPOINT", "TOP", "T", "UP", "CREST", "PEAK"].contains(&word)
+    [
+        "HI",
+        "HPT",
+        "HIGHPT",
+        "HIGHPOINT",
+        "TOP",
+        "T",
+        "UP",
+        "CREST",
+        "PEAK",
+    ]
+    .contains(&word)
 }
 
 /// Words that other offices write at low points.
 pub(super) fn low_word(word: &str) -> bool {
-    ["LO", "LPT", "LOWPT", "LOWPOINT", "BOT", "BOTTOM", "B", "BTM", "DN", "DOWN", "SAG"].contains(&word)
+    [
+        "LO", "LPT", "LOWPT", "LOWPOINT", "BOT", "BOTTOM", "B", "BTM", "DN", "DOWN", "SAG",
+    ]
+    .contains(&word)
 }
 
 impl Reading {
@@ -185,7 +203,10 @@ mod tests {
             (" 30L ", "low point 30 mm (height, word last)"),
             ("165", "height 165 mm (height)"),
             ("T/2", "mid-depth"),
-            ("D012 5-12.7", "mark D012 5 strands of 12.7 (strands and size)"),
+            (
+                "D012 5-12.7",
+                "mark D012 5 strands of 12.7 (strands and size)",
+            ),
             ("D012\n5-12.7", "5 strands of 12.7 (strands and size)"),
             (
                 "B03 4x5-12.7",
