@@ -1,6 +1,6 @@
 //! What label texts say, row by row: each text as a drawing holds it, the job it is read by, and its reading.
 
-use tautplan::floor::{Word, height_of_line, mark_of_line};
+use tautplan::floor::{Word, height_of_line, mark_of_line, thickness_of_line};
 use tautplan::job::{self, FromFace, Job};
 
 fn job_of(text: &str) -> Job {
@@ -252,4 +252,40 @@ fn heights_in_inches_and_by_patterns_of_their_own() {
         ],
     );
     assert_eq!(rows, 31);
+}
+
+fn thickness(text: &str, job: &Job) -> String {
+    let found = thickness_of_line(text, &job.conventions);
+    found.map_or("-".to_owned(), |(value_m, _)| {
+        format!("{:.1}", value_m * 1000.0)
+    })
+}
+
+#[test]
+fn thicknesses() {
+    let mut rows = check(
+        "",
+        thickness,
+        &[
+            ("T350", "350.0"),
+            ("t = 350", "350.0"),
+            ("350 THK", "350.0"),
+            ("350mm THK. SLAB", "350.0"),
+            ("SLAB THICKNESS: 350", "350.0"),
+            ("T35cm", "350.0"),
+            ("T8\"", "-"),
+            ("TYP", "-"),
+            ("350", "-"),
+        ],
+    );
+    rows += check(
+        "[slab]\ntext_unit = \"in\"",
+        thickness,
+        &[
+            ("T8", "203.2"),
+            ("T=8 1/2\"", "215.9"),
+            ("8\" THK", "203.2"),
+        ],
+    );
+    assert_eq!(rows, 12);
 }

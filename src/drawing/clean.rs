@@ -50,6 +50,9 @@ pub(super) struct Cleaner<'a> {
     pub(super) guessed: usize,
 }
 
+/// Flag of an attribute without a place; the format itself has no such flag.
+pub(super) const NOWHERE: i32 = 64;
+
 const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
 const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
 
@@ -251,8 +254,8 @@ impl<'a> Cleaner<'a> {
             return Err((record.type_name, record.start, found));
         }
         if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
-            // Its value counts, but it stands nowhere: as good as invisible.
-            self.line(b"70", b"1");
+            // Its value counts, but it stands nowhere.
+            self.line(b"70", NOWHERE.to_string().as_bytes());
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.

@@ -5,6 +5,7 @@ use std::collections::{BTreeMap, BTreeSet};
 use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
+use super::clean::NOWHERE;
 use super::convert::line_of;
 use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::names::folded;
@@ -328,7 +329,7 @@ impl<'b> Gatherer<'b> {
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
-            if !self.book.wants(layer) {
+            if attribute.flags & NOWHERE != 0 || !self.book.wants(layer) {
                 continue;
             }
             let handle = match own {

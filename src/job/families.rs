@@ -104,10 +104,21 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
     in_unit(&BY_UNIT, unit)
 }
 
-/// Slab thickness in this unit: `T350`, `T 350`, `T=350`.
+/// Slab thickness in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    static BY_UNIT: LazyLock<ByUnit> =
-        LazyLock::new(|| by_unit(&[("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)$")]));
+    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
+        by_unit(&[
+            ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)$"),
+            (
+                "thickness, word first",
+                r"(?i)^(?:SLAB\s+)?(?:THK|THICK(?:NESS)?)\.?\s*[=:]?\s*(?<value>NUMBER)$",
+            ),
+            (
+                "thickness, word last",
+                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?$",
+            ),
+        ])
+    });
     in_unit(&BY_UNIT, unit)
 }
 
@@ -183,7 +194,7 @@ fn offers() -> Vec<Offer> {
         marks(
             "other mark, strands and size",
             &format!(
-                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d+(?:[.,]\d+)?|[.,]\d+|\d+/\d+|½){SIZE_SIGN}$"
+                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d*[.,]\d+|\d/\d|½){SIZE_SIGN}$"
             ),
             "What stands before the strands is taken for the tendon's mark.",
         ),

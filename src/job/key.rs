@@ -191,8 +191,11 @@ pub(super) fn toml_text(value: &Value) -> String {
             None => number.to_string(),
         },
         Value::Object(entries) => {
-            let entries: Vec<String> = entries
-                .iter()
+            // What it is called comes first.
+            let named = entries.iter().filter(|(name, _)| *name == "name");
+            let others = entries.iter().filter(|(name, _)| *name != "name");
+            let entries: Vec<String> = named
+                .chain(others)
                 .map(|(name, value)| format!("{name} = {}", toml_text(value)))
                 .collect();
             format!("{{ {} }}", entries.join(", "))

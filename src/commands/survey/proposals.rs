@@ -126,7 +126,7 @@ fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
         return None;
     }
     let open = held.open_m.len();
-    if most(held.thicknesses, held.texts) {
+    if most(held.thicknesses + held.inched_thicknesses, held.texts) {
         return Some("slab_zone");
     }
     if most(held.strands + held.offered_counts(), held.texts) {
