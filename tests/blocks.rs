@@ -164,7 +164,7 @@ fn attributes_lie_on_their_own_layer_or_on_the_inserts() {
 
     let marks = Wanted::layers(["MARKS"]).expect("pattern");
     let (drawing, _) = read_layers("", insert, &marks);
-    assert_eq!(drawing.texts.len(), 1);
+    assert_eq!(drawing.texts.len(), 2);
     assert!(drawing.inserts.is_empty());
 }
 

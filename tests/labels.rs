@@ -100,6 +100,12 @@ fn strands_and_required_forces() {
             ("B03 - 4x5-12.7", "B03: 4 x 5 of 12.7"),
             ("PT-7, 4x15.2", "PT-7: 4 of 15.2"),
             ("B-03", "B-03:"),
+            ("D012 (5-12.7)", "D012: 5 of 12.7"),
+            ("D012/5-12.7", "D012: 5 of 12.7"),
+            ("B7 4 TENDONS OF 5-12.7", "B7: 4 x 5 of 12.7"),
+            ("2 No. 5-12.7", "2 x 5 of 12.7"),
+            ("5T15.2", "5 of 15.2"),
+            ("D1 5C12.7", "D1: 5 of 12.7"),
             ("324 KIPS", "1441.2 kN"),
             ("324K", "1441.2 kN"),
             ("P=324 k", "1441.2 kN"),
@@ -134,7 +140,7 @@ fn strands_and_required_forces() {
             ("5-12.7", "-"),
         ],
     );
-    assert_eq!(rows, 56);
+    assert_eq!(rows, 62);
 }
 
 #[test]
@@ -288,4 +294,19 @@ fn thicknesses() {
         ],
     );
     assert_eq!(rows, 12);
+}
+
+/// The README's job file is one.
+#[test]
+fn the_patterns_of_the_readme_are_read() {
+    let readme = include_str!("../README.md");
+    let block = readme
+        .split("```toml\n")
+        .nth(1)
+        .and_then(|rest| rest.split("```").next());
+    let job = job_of(block.expect("the README shows patterns"));
+    assert_eq!(mark("12T", &job), "12 x 1 of 12.7");
+    assert_eq!(mark("D12 5-12.7", &job), "D12: 5 of 12.7");
+    assert_eq!(height("C30", &job), "L 30");
+    assert_eq!(height("1 1/4\"", &job), "31.75 from top");
 }

@@ -26,13 +26,13 @@ const MARK: &str = r"(?<mark>[A-Z]{1,3}-?\d+[A-Z]?)";
 /// A mark as other offices write it: anything with a letter and a digit in it.
 const ANY_MARK: &str = r"(?<mark>[A-Z]+(?:[-./]?[A-Z0-9]+)*[-./]?\d+[A-Z]?|\d+[A-Z]+(?:[-./]?[A-Z0-9]+)*|\d+(?:[-./]\d+)?)";
 /// Between a mark and what follows it.
-const AFTER_MARK: &str = r"(?:\s*[:;,]\s*|\s+(?:[-–]\s+)?)";
+const AFTER_MARK: &str = r"(?:\s*[:;,/]\s*|\s*\(\s*|\s+(?:[-–]\s+)?)";
 /// Between a number of strands and their size.
 const OF_SIZE: &str = r"\s*(?:[-–/SØ∅⌀]|NOS?\.?)\s*[Ø∅⌀]?\s*";
 /// Inches or millimetres after a size.
 const SIZE_SIGN: &str = r#"\s*(?:mm|"|″|”|''|in\.?)?\s*[Ø∅⌀]?(?:\s*DIA\.?)?(?:\s*STRANDS?)?"#;
 /// A number of tendons before their strands.
-const TENDONS: &str = r"(?:(?<tendons>\d+)\s*[x×*]\s*)?";
+const TENDONS: &str = r"(?:(?<tendons>\d+)\s*(?:[x×*]|TENDONS?(?:\s+OF)?|NOS?\.?)\s*)?";
 /// A force, perhaps with the letters that it goes by, and in groups of three.
 const FORCE: &str = r"(?:[A-Z]{1,4}\s*=\s*)?(?<force>(?:\d{1,3}(?:,\d{3})+|\d+)(?:\.\d+)?)\s*";
 /// Words after a force.
@@ -58,14 +58,20 @@ fn compiled_marks() -> Vec<Pattern> {
         pattern(
             "strands and size",
             &format!(
-                r"(?i)^{mark}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d+(?:[.,]\d+)?|[.,]\d+|\d+/\d+|½){SIZE_SIGN}$"
+                r"(?i)^{mark}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d+(?:[.,]\d+)?|[.,]\d+|\d+/\d+|½){SIZE_SIGN}\s*\)?$"
             ),
         ),
         pattern("mark", &format!("(?i)^{MARK}$")),
         pattern(
             "strands x size",
             &format!(
-                r"(?i)^{mark}(?<strands>\d+)\s*[x×*]\s*[Ø∅⌀]?\s*(?<strand>\d*[.,]\d+|\d/\d+|½){SIZE_SIGN}$"
+                r"(?i)^{mark}(?<strands>\d+)\s*[x×*]\s*[Ø∅⌀]?\s*(?<strand>\d*[.,]\d+|\d/\d+|½){SIZE_SIGN}\s*\)?$"
+            ),
+        ),
+        pattern(
+            "strands, letter, size",
+            &format!(
+                r"(?i)^{mark}{TENDONS}(?<strands>\d+)\s*-?\s*[A-Z]\s*(?<strand>\d+[.,]\d+){SIZE_SIGN}\s*\)?$"
             ),
         ),
         pattern(
@@ -194,7 +200,7 @@ fn offers() -> Vec<Offer> {
         marks(
             "other mark, strands and size",
             &format!(
-                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d*[.,]\d+|\d/\d|½){SIZE_SIGN}$"
+                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d*[.,]\d+|\d/\d|½){SIZE_SIGN}\s*\)?$"
             ),
             "What stands before the strands is taken for the tendon's mark.",
         ),
