@@ -12,10 +12,10 @@ fn drawing(styles: &str, blocks: &str, entities: &str) -> Drawing {
     );
     let lines = tags.lines().filter(|line| !line.trim().is_empty());
     let pairs = lines.map(|line| line.trim_start().split_once(' ').expect("code and value"));
-    let dxf: String = pairs
+    let dxf: Vec<String> = pairs
         .map(|(code, value)| format!("{code}\n{value}\n"))
         .collect();
-    let source = open(dxf.into_bytes()).expect("a drawing");
+    let source = open(dxf.concat().into_bytes()).expect("a drawing");
     let (drawing, findings) = read(&source, &Wanted::everything(), None);
     assert!(findings.is_empty(), "{findings:?}");
     drawing

@@ -142,7 +142,7 @@ fn each_pattern_brings_its_own_unit_face_and_datum() {
 #[test]
 fn a_required_force_is_kept_and_never_turned_into_strands() {
     let (tendon, findings) = only("", &[(MARKS, "B7 324 KIPS", 5.0), (HEIGHTS, "L30", 4.0)]);
-    assert!((tendon.required_kn.expect("kept") - 1441.223_803).abs() < 1e-5);
+    assert!((tendon.required_kn.expect("kept") - 1_441.223_803).abs() < 1e-5);
     assert_eq!((tendon.strands, tendon.tendons), (None, 1));
     let found = findings
         .iter()
