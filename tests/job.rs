@@ -228,6 +228,56 @@ fn each_other_mistake_is_told_apart() {
         ),
         ("[labels]\nmark_patterns = ['^D']\n", "no group"),
         (
+            "[long_term]\nmethod = \"guess\"\n",
+            "does not know \"guess\"",
+        ),
+        ("[profile]\nfit_inflection = 1\n", "cannot be the number 1"),
+        ("[drawing]\nunit = \"inch\"\n", "does not know \"inch\""),
+        ("[slab]\nthickness_mm = 1979-05-27\n", "cannot be a date"),
+        ("[system]\ndefault_strand = \"13\"\n", "not known"),
+        (
+            "[limits]\nhogging_radius_error_m = 9\n",
+            "before it is a warning",
+        ),
+        ("stressing = 3\n", "is a table"),
+        ("[stressing]\nmu_per_rad = \n", "not TOML"),
+        (
+            "[stressing]\nmu_per_rad = 0.1\nmu_per_rad = 0.1\n",
+            "not TOML",
+        ),
+        (
+            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\nstrength_mpa = 1860\n\
+             [[system.strand]]\nname = \"9\"\narea_mm2 = 53\nstrength_mpa = 1860\n",
+            "two strands of the name",
+        ),
+        (
+            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\n",
+            "no `strength_mpa`",
+        ),
+        (
+            "[[system.strand]]\nname = 9\narea_mm2 = 52\nstrength_mpa = 1860\n",
+            "cannot be the number 9",
+        ),
+        ("[system]\nstrand = [4]\n", "cannot hold the number 4"),
+    ] {
+        let (line, found, expected, remedy) = only(text);
+        assert!(found.contains(words), "{text}: {found}");
+        assert!(
+            line >= 1 && !expected.is_empty() && !remedy.is_empty(),
+            "{text}"
+        );
+    }
+    let (_, _, _, remedy) = only("[stressing]\njacking_ratio = 75\n");
+    assert_eq!(
+        remedy,
+        "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
+    );
+}
+
+#[test]
+fn each_mistake_in_a_pattern_is_told_at_its_line() {
+    for (text, words) in [
+        (
             "[labels]\nmark_patterns = [3]\n",
             "cannot hold the number 3",
         ),
@@ -284,51 +334,12 @@ fn each_other_mistake_is_told_apart() {
             "[labels]\nmark_patterns = [{ expression = '(?<tendons>\\d+)T', strand = \"13\" }]\n",
             "not known",
         ),
-        (
-            "[long_term]\nmethod = \"guess\"\n",
-            "does not know \"guess\"",
-        ),
-        ("[profile]\nfit_inflection = 1\n", "cannot be the number 1"),
-        ("[drawing]\nunit = \"inch\"\n", "does not know \"inch\""),
-        ("[slab]\nthickness_mm = 1979-05-27\n", "cannot be a date"),
-        ("[system]\ndefault_strand = \"13\"\n", "not known"),
-        (
-            "[limits]\nhogging_radius_error_m = 9\n",
-            "before it is a warning",
-        ),
-        ("stressing = 3\n", "is a table"),
-        ("[stressing]\nmu_per_rad = \n", "not TOML"),
-        (
-            "[stressing]\nmu_per_rad = 0.1\nmu_per_rad = 0.1\n",
-            "not TOML",
-        ),
-        (
-            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\nstrength_mpa = 1860\n\
-             [[system.strand]]\nname = \"9\"\narea_mm2 = 53\nstrength_mpa = 1860\n",
-            "two strands of the name",
-        ),
-        (
-            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\n",
-            "no `strength_mpa`",
-        ),
-        (
-            "[[system.strand]]\nname = 9\narea_mm2 = 52\nstrength_mpa = 1860\n",
-            "cannot be the number 9",
-        ),
-        ("[system]\nstrand = [4]\n", "cannot hold the number 4"),
     ] {
         let (line, found, expected, remedy) = only(text);
         assert!(found.contains(words), "{text}: {found}");
-        assert!(
-            line >= 1 && !expected.is_empty() && !remedy.is_empty(),
-            "{text}"
-        );
+        assert_eq!(line, 2, "{text}");
+        assert!(!expected.is_empty() && !remedy.is_empty(), "{text}");
     }
-    let (_, _, _, remedy) = only("[stressing]\njacking_ratio = 75\n");
-    assert_eq!(
-        remedy,
-        "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
-    );
 }
 
 #[test]
