@@ -7,6 +7,6 @@
 
 mod heights;
 mod kit;
-mod labels;
+mod lettering;
 mod laws;
 mod settling;
