@@ -224,7 +224,7 @@ fn finish(
         .iter()
         .map(|point| PointResult {
             angle_rad: curve.map(|curve| curve.angle_rad(point.station_m)),
-            level_m: profile::level_m(point),
+            level_m: point.level_m(),
             forces_kn: forces_kn(point.station_m),
         })
         .collect();
@@ -293,7 +293,7 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
         .tendons
         .iter()
         .flat_map(|tendon| &tendon.points)
-        .filter(|point| point.level_m().is_none() && profile::level_m(point).is_some())
+        .filter(|point| point.level_m().is_none() && point.level_m().is_some())
         .count();
     if anchors > 0 {
         said.push(format!(

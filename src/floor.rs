@@ -1,7 +1,9 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
 mod assemble;
+mod bridges;
 mod candidates;
+mod copies;
 mod ends;
 mod habits;
 mod heights;
@@ -13,6 +15,7 @@ mod levels;
 mod lines;
 mod marks;
 mod missing;
+mod order;
 mod pieces;
 mod points;
 mod readings;

@@ -6,7 +6,7 @@
 //!  tautplan.toml ─▶ job ────┐
 //!                           ├─▶ floor ─▶ [ each tendon: profile ─▶ losses ] ─▶ checks ─▶ analysis ─┬─▶ report
 //!  plan.dxf ─────▶ drawing ─┘                                                                      └─▶ annotate ─▶ drawing
-//!  leaves that every stage may use: units · geometry · numerics · finding
+//!  leaves that every stage may use: units · geometry · numerics · finding · patterns
 //! ```
 //!
 //! Each stage takes one plain value and returns one, with the findings met on the way; nothing runs back to the left.
@@ -22,6 +22,7 @@
 pub mod finding;
 pub mod geometry;
 pub mod numerics;
+pub mod patterns;
 pub mod units;
 
 pub mod job;

@@ -11,7 +11,7 @@ mod span;
 mod supports;
 mod types;
 
-pub use build::{Unknown, build, level_m};
+pub use build::{Unknown, build};
 pub use supports::support_residuals;
 pub use types::{Bend, Profile, Span, Tightest};
 

@@ -48,6 +48,9 @@ fn layer_0_of_a_block_takes_the_layer_of_the_insert_through_any_depth() {
     assert_eq!(shapes, [("TOP", "1A"), ("OWN", "1A")]);
     let inserts: Vec<_> = drawing.inserts.iter().map(|i| i.block.as_str()).collect();
     assert_eq!(inserts, ["OUT", "in"]);
+    let within: Vec<_> = drawing.inserts.iter().map(|i| i.within).collect();
+    assert_eq!(within, [None, Some(0)]);
+    assert!(drawing.shapes.iter().all(|shape| shape.within == Some(1)));
     assert_eq!(drawing.unit_from, UnitFrom::Job);
 }
 
@@ -192,4 +195,88 @@ fn a_polyline_closes_with_the_bulge_of_its_last_vertex() {
     assert!(drawing.shapes[0].closed && drawing.shapes[0].path.corners().is_empty());
     assert!((drawing.shapes[1].path.length_m() - std::f64::consts::PI).abs() < 1e-12);
     assert!(!drawing.shapes[1].closed);
+}
+
+#[test]
+fn a_plan_drawn_as_a_block_keeps_its_tendons_and_loses_its_end_symbols_lines() {
+    let end = |name: &str| {
+        format!("0 BLOCK 8 0 2 {name} 10 0 20 0 {UNIT_LINE} 0 INSERT 8 0 2 TIP 10 0 20 0 0 ENDBLK ")
+    };
+    let tip = "0 BLOCK 8 0 2 TIP 10 0 20 0 0 LINE 8 0 10 0 20 0 11 0 21 0.4 0 ENDBLK ";
+    let at_ends = "0 INSERT 8 TENDON-BANDED 2 LIVE-END 10 0 20 0 0 INSERT 8 TENDON-BANDED 2 DEAD-END 10 20 20 0";
+    let plan = format!(
+        "0 BLOCK 8 0 2 PLAN 10 0 20 0 0 LINE 8 TENDON-BANDED 10 0 20 0 11 20 21 0 {at_ends} 0 ENDBLK "
+    );
+    let blocks = [tip.to_owned(), end("LIVE-END"), end("DEAD-END"), plan].concat();
+    let (drawing, findings) = drawing(&blocks, "0 INSERT 5 2F 8 0 2 PLAN 10 100 20 50");
+    assert!(findings.is_empty(), "{findings:?}");
+    assert_eq!(drawing.shapes.len(), 5);
+    let (floor, _) = tautplan::floor::read(&drawing, &tautplan::job::Job::default());
+    assert_eq!(floor.tendons.len(), 1);
+    let tendon = &floor.tendons[0];
+    assert!((tendon.path.length_m() - 20.0).abs() < 1e-12);
+    assert!(tendon.ends.iter().all(|end| end.kind.is_some()));
+}
+
+#[test]
+fn an_attribute_inside_a_block_is_read_for_its_own_layer() {
+    let blocks = "0 BLOCK 8 0 2 REF 10 0 20 0
+        0 INSERT 8 SYM 66 1 2 TAG 10 5 20 5 0 ATTRIB 8 TENDON-HEIGHT 10 5 20 6 40 0.2 2 H 1 L30 0 SEQEND
+        0 ENDBLK 0 BLOCK 8 0 2 TAG 10 0 20 0 0 ENDBLK";
+    let heights = Wanted::layers(["TENDON-HEIGHT"]).expect("pattern");
+    let (drawing, findings) = read_layers(blocks, "0 INSERT 8 0 2 REF 10 0 20 0", &heights);
+    assert!(findings.is_empty(), "{findings:?}");
+    let texts: Vec<_> = drawing.texts.iter().map(|t| t.content.as_str()).collect();
+    assert_eq!(texts, ["L30"]);
+}
+
+#[test]
+fn an_insert_that_names_no_block_is_damaged_and_brings_in_no_other() {
+    let (drawing, findings) = drawing(
+        &format!("0 BLOCK 8 0 2 B 10 0 20 0 {UNIT_LINE} 0 ENDBLK"),
+        "0 INSERT 5 A 8 TENDONS 2 B 10 0 20 0 0 INSERT 5 C 8 TENDONS 10 9 20 9",
+    );
+    assert_eq!(drawing.shapes.len(), 1);
+    assert_eq!(drawing.inserts.len(), 1);
+    assert_eq!(rules(&findings), ["entity-damaged"]);
+    assert!(findings[0].text.contains("INSERT C"), "{findings:?}");
+}
+
+#[test]
+fn a_vertex_without_both_coordinates_is_damage() {
+    for (damaged, lacks) in [
+        (
+            "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 10 5 10 9 20 9",
+            "no group 20",
+        ),
+        (
+            "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 20 5 10 9 20 9",
+            "no group 10",
+        ),
+        ("0 LWPOLYLINE 8 T 90 2 70 0 10 0 20 0 10 9", "no group 20"),
+        (
+            "0 SPLINE 8 T 70 8 71 1 72 4 73 2 40 0 40 0 40 1 40 1 10 0 20 0 10 9",
+            "no group 20",
+        ),
+    ] {
+        let (drawing, findings) = drawing("", &format!("{damaged} {UNIT_LINE}"));
+        assert_eq!(drawing.shapes.len(), 1, "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+        assert!(findings[0].text.contains(lacks), "{findings:?}");
+    }
+}
+
+#[test]
+fn geometry_without_a_finite_length_is_damage_wherever_it_stands() {
+    let bulge = "0 LWPOLYLINE 8 T 90 3 70 0 10 0 20 0 42 1e200 10 5 20 0 10 9 20 0";
+    let line = "0 LINE 8 T 10 -1e308 20 0 11 1e308 21 0";
+    for damaged in [bulge, line] {
+        let (found, findings) = drawing("", &format!("{damaged} {UNIT_LINE}"));
+        assert_eq!(found.shapes.len(), 1, "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+        let block = format!("0 BLOCK 8 0 2 B 10 0 20 0 {damaged} 0 ENDBLK");
+        let (found, findings) = drawing(&block, "0 INSERT 8 0 2 B 10 0 20 0");
+        assert!(found.shapes.is_empty(), "{damaged}");
+        assert_eq!(rules(&findings), ["entity-damaged"], "{damaged}");
+    }
 }

@@ -9,6 +9,7 @@ const STAGES: &[(&str, u8)] = &[
     ("geometry", 0),
     ("numerics", 0),
     ("finding", 0),
+    ("patterns", 0),
     ("job", 1),
     ("drawing", 1),
     ("floor", 2),

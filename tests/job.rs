@@ -407,7 +407,7 @@ fn a_proposal_is_set_in_the_file_whatever_characters_it_holds() {
         (
             "ends.live_blocks".to_owned(),
             Proposal {
-                value: serde_json::json!([globset::escape(&name)]),
+                value: serde_json::json!([tautplan::patterns::pattern_of(&name)]),
                 why: "two\nlines".to_owned(),
             },
         ),

@@ -207,7 +207,10 @@ impl<'a> Cleaner<'a> {
         }
         match used(record.type_name, tag.code) {
             Use::Skip => {}
-            Use::Text => self.text(tag),
+            Use::Text => {
+                record.named |= tag.code == 2 && !tag.word().is_empty();
+                self.text(tag);
+            }
             Use::Short => {
                 let Some(number) = tag.integer() else {
                     return Err(expected(tag, "a whole number"));
@@ -227,6 +230,7 @@ impl<'a> Cleaner<'a> {
                 if record.leaves_out(tag.code) {
                     return Ok(());
                 }
+                record.pair(tag.code)?;
                 record.note(tag.code);
                 let word = tag.word();
                 let word = word.strip_prefix(b"+").unwrap_or(word);
@@ -249,8 +253,14 @@ impl<'a> Cleaner<'a> {
             b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"ATTDEF" | b"MTEXT" | b"INSERT" => &[10, 20],
             _ => &[],
         };
+        if let Some(code) = record.half {
+            return Err((record.type_name, record.start, lacking(code)));
+        }
         if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
-            let found = format!("there is no group {code}, and a coordinate or size was expected");
+            return Err((record.type_name, record.start, lacking(*code)));
+        }
+        if record.type_name == b"INSERT" && !record.named {
+            let found = "there is no group 2, and a block's name was expected".to_owned();
             return Err((record.type_name, record.start, found));
         }
         if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
@@ -314,7 +324,11 @@ struct Open<'a> {
     past: bool,
     columns: bool,
     justified: bool,
+    /// Group 2 has been seen, and is not empty.
+    named: bool,
     last_direction: i32,
+    /// The second coordinate that a vertex still lacks.
+    half: Option<i32>,
     /// Which of the groups 10, 20, 11, 21, 40, 50, 51 have been seen.
     seen: u8,
 }
@@ -336,6 +350,28 @@ impl Open<'_> {
             .iter()
             .position(|noted| *noted == code)
             .is_some_and(|bit| self.seen & (1 << bit) != 0)
+    }
+
+    /// Holds each vertex of a list to both its coordinates: the library would make up the other, or move the vertex
+    /// before.
+    fn pair(&mut self, code: i32) -> Result<(), String> {
+        let listed = match self.type_name {
+            b"LWPOLYLINE" => matches!(code, 10 | 20),
+            b"SPLINE" => matches!(code, 10 | 11 | 20 | 21),
+            _ => false,
+        };
+        if !listed {
+            return Ok(());
+        }
+        match self.half.take() {
+            Some(second) if second != code => Err(lacking(second)),
+            None if code >= 20 => Err(lacking(code - 10)),
+            None => {
+                self.half = Some(code + 10);
+                Ok(())
+            }
+            Some(_) => Ok(()),
+        }
     }
 
     /// Groups that mean something else where they stand.
@@ -390,6 +426,10 @@ fn used(type_name: &[u8], code: i32) -> Use {
         _ => false,
     };
     if text { Use::Text } else { Use::Skip }
+}
+
+fn lacking(code: i32) -> String {
+    format!("there is no group {code}, and a coordinate or size was expected")
 }
 
 fn expected(tag: &Tag<'_>, what: &str) -> String {

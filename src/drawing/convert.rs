@@ -102,6 +102,9 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
         }
         _ => return Ok(None),
     };
+    if !pieces.iter().all(|piece| piece.length_m().is_finite()) {
+        return Err("its coordinates, radii or bulges are too large for a length");
+    }
     let path = Path::new(pieces);
     let (Some(start), Some(end)) = (path.start(), path.end()) else {
         return Ok(None);

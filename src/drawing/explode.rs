@@ -79,6 +79,8 @@ struct Frame<'f> {
     handle: Option<&'f str>,
     /// Layer of the insert, which layer 0 of its block takes.
     layer: Option<u32>,
+    /// The innermost insert among those of the drawing.
+    within: Option<usize>,
 }
 
 /// Gathers what the records hold.
@@ -117,6 +119,7 @@ impl<'b> Gatherer<'b> {
             placing: self.unit,
             handle: None,
             layer: None,
+            within: None,
         };
         self.place(record, &frame);
     }
@@ -134,16 +137,19 @@ impl<'b> Gatherer<'b> {
         }
         match &record.entity {
             EntityType::Text(text) => {
-                self.text(of_text(text, &frame.placing), layer, handle, false);
+                let lettering = of_text(text, &frame.placing);
+                self.text(lettering, layer, frame.within, handle, false);
             }
             EntityType::MText(text) => {
                 let style = self.book.style(&text.text_style_name);
-                self.text(of_mtext(text, style, &frame.placing), layer, handle, false);
+                let lettering = of_mtext(text, style, &frame.placing);
+                self.text(lettering, layer, frame.within, handle, false);
             }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
                     layer: self.book.layer_name(layer),
+                    within: frame.within,
                     kind: line.kind,
                     path: line.path,
                     closed: line.closed,
@@ -174,6 +180,7 @@ impl<'b> Gatherer<'b> {
         &mut self,
         lettering: super::lettering::Lettering,
         layer: u32,
+        within: Option<usize>,
         handle: &str,
         hidden: bool,
     ) {
@@ -183,6 +190,7 @@ impl<'b> Gatherer<'b> {
         self.drawing.texts.push(Text {
             handle: handle.to_owned(),
             layer: self.book.layer_name(layer),
+            within,
             content: lettering.content,
             place: lettering.place,
             corners: lettering.corners,
@@ -253,6 +261,7 @@ impl<'b> Gatherer<'b> {
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
                         layer: self.book.layer_name(layer),
+                        within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
                         place: cell.place(Coord { x: 0.0, y: 0.0 }),
                         rotation_rad: along.y.atan2(along.x),
@@ -276,6 +285,11 @@ impl<'b> Gatherer<'b> {
                     placing,
                     handle: Some(handle),
                     layer: Some(layer),
+                    within: if wanted {
+                        self.drawing.inserts.len().checked_sub(1)
+                    } else {
+                        frame.within
+                    },
                 };
                 self.block(block, &inside, handle);
             }
@@ -326,6 +340,9 @@ impl<'b> Gatherer<'b> {
         handle: &str,
         frame: &Frame<'_>,
     ) {
+        // The insert itself, if it is kept, is the next one.
+        let kept = self.book.wants(layer);
+        let within = kept.then_some(self.drawing.inserts.len()).or(frame.within);
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
@@ -337,7 +354,7 @@ impl<'b> Gatherer<'b> {
                 _ => handle,
             };
             let lettering = of_attribute(attribute, &frame.placing);
-            self.text(lettering, layer, handle, attribute.flags & 1 != 0);
+            self.text(lettering, layer, within, handle, attribute.flags & 1 != 0);
         }
     }
 

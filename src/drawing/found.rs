@@ -84,7 +84,7 @@ pub(super) struct Scan {
     pub(super) greatest_handle: u64,
     /// Whether new records must carry handles.
     pub(super) uses_handles: bool,
-    /// Entities on this tool's own layers, each with what follows it up to its SEQEND.
+    /// Entities on this tool's own layers, each with what follows it up to its SEQEND, without comments behind it.
     pub(super) own_marks: Vec<Range<usize>>,
     /// Least and greatest handle of those.
     pub(super) own_handles: Option<(u64, u64)>,
@@ -103,7 +103,7 @@ pub(super) struct Entry {
     pub(super) layer: u32,
     /// Its number among the model-space entities, from 1, or within its block.
     pub(super) number: u32,
-    /// Number of the block's name, for an insert.
+    /// Number of the block's name, for an insert that gives one; else `u32::MAX`.
     pub(super) block: u32,
     /// Whether it is an insert.
     pub(super) is_insert: bool,
@@ -118,6 +118,8 @@ pub(super) struct BlockEntry {
     pub(super) base: [f64; 2],
     /// Entities that can be read.
     pub(super) entries: Vec<Entry>,
+    /// Layers of its inserts' attributes, where they are not the insert's.
+    pub(super) attribute_layers: Vec<u32>,
 }
 
 /// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.

@@ -193,6 +193,8 @@ fn holds_wanted(book: &Book<'_>) -> Vec<bool> {
             }
             holds[index] |= is_wanted(book, entry.layer);
         }
+        let mut of_attributes = block.attribute_layers.iter();
+        holds[index] |= of_attributes.any(|&layer| is_wanted(book, layer));
         if holds[index] {
             news.push(index);
         }

@@ -112,6 +112,8 @@ struct Pass<'a> {
     variable: &'a [u8],
     code_page_name: Option<String>,
     in_layer_table: bool,
+    /// End of the tag before the one at hand; comments may stand between.
+    last_end: usize,
     section_start: usize,
     sections: usize,
     block_open: bool,
@@ -138,6 +140,7 @@ impl<'a> Pass<'a> {
             variable: b"",
             code_page_name: None,
             in_layer_table: false,
+            last_end: 0,
             section_start: 0,
             sections: 0,
             block_open: false,
@@ -152,14 +155,14 @@ impl<'a> Pass<'a> {
 
     #[inline]
     fn take(&mut self, tag: &Tag<'a>) -> Result<(), Refusal> {
+        self.last_end = self.scan.tags_end;
         self.scan.tags_end = tag.end;
         match tag.code {
             0 => return self.begin_record(tag),
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             // Coordinates are nearly all of a file and say nothing here.
-            10..=61 | 210..=239 | 40..=49
-                if !matches!(self.record, Record::Block | Record::Style) => {}
+            10..=61 | 210..=239 if !matches!(self.record, Record::Block | Record::Style) => {}
             _ => self.record_tag(tag),
         }
         Ok(())

@@ -74,6 +74,8 @@ pub struct Shape {
     pub handle: String,
     /// Layer (of the insert, where the block's entity lies on layer 0).
     pub layer: String,
+    /// Number of the insert among [`Drawing::inserts`] that brings it in, the innermost; `None` in model space.
+    pub within: Option<usize>,
     /// Entity type.
     pub kind: ShapeKind,
     /// The line, in metres.
@@ -89,6 +91,8 @@ pub struct Text {
     pub handle: String,
     /// Layer as for [`Shape`].
     pub layer: String,
+    /// Number of the insert that it belongs to as an attribute, or that brings it in, as for [`Shape`].
+    pub within: Option<usize>,
     /// What a reader sees: codes decoded, lines separated by `\n`.
     pub content: String,
     /// The point that the drafter placed (insertion or alignment point), metres.
@@ -110,6 +114,8 @@ pub struct Insert {
     pub handle: String,
     /// Layer as for [`Shape`].
     pub layer: String,
+    /// Number of the insert that brings it in, as for [`Shape`]; always lower than its own.
+    pub within: Option<usize>,
     /// Block name.
     pub block: String,
     /// Insertion point, metres.

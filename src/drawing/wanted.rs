@@ -1,13 +1,12 @@
 //! Which layers are to be read.
 
-use globset::{Glob, GlobSet, GlobSetBuilder};
-
-use super::names::{folded, is_own};
+use super::names::is_own;
+use crate::patterns::{BrokenPattern, Patterns};
 
 /// Layers to read: all, or those that some shell pattern fits in any letter case; never this tool's own.
 #[derive(Debug, Clone)]
 pub struct Wanted {
-    patterns: Option<GlobSet>,
+    patterns: Option<Patterns>,
 }
 
 impl Wanted {
@@ -16,25 +15,21 @@ impl Wanted {
         Self { patterns: None }
     }
 
-    /// Layers that one of the patterns fits: `*`, `?`, `[a-z]`, `{a,b}`.
+    /// Layers that one of the patterns fits.
     ///
     /// # Errors
     /// A pattern that cannot be understood, with the reason.
     pub fn layers<S: AsRef<str>>(
         patterns: impl IntoIterator<Item = S>,
-    ) -> Result<Self, globset::Error> {
-        let mut set = GlobSetBuilder::new();
-        for pattern in patterns {
-            set.add(Glob::new(&folded(pattern.as_ref()))?);
-        }
+    ) -> Result<Self, BrokenPattern> {
         Ok(Self {
-            patterns: Some(set.build()?),
+            patterns: Some(Patterns::new(patterns)?),
         })
     }
 
     /// Whether a layer of this name is to be read.
     pub fn has(&self, layer: &str) -> bool {
-        let fits = |set: &GlobSet| set.is_match(folded(layer));
+        let fits = |patterns: &Patterns| patterns.fit(layer);
         !is_own(layer) && self.patterns.as_ref().is_none_or(fits)
     }
 }

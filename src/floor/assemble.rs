@@ -1,7 +1,5 @@
 //! The floor put together from its parts.
 
-use std::collections::BTreeSet;
-
 use geo::Coord;
 
 use super::candidates::lies;
@@ -42,8 +40,8 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
 
     let symbols = ends::symbols(drawing, conventions);
     let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
-    let symbol_handles: BTreeSet<&str> = symbols.iter().map(|s| s.insert.handle.as_str()).collect();
-    let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_handles);
+    let symbol_shapes = ends::shapes(drawing, conventions);
+    let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_shapes);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
     let (line_ends, found) = ends::ends(&lines, &symbols, conventions.end_reach_m);

@@ -1,5 +1,7 @@
 //! Live and dead end symbols matched to ends, one to one.
 
+use std::collections::BTreeSet;
+
 use geo::Coord;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
@@ -13,6 +15,7 @@ use crate::drawing::{Drawing, Insert};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
 use crate::job::Conventions;
+use crate::patterns::Patterns;
 
 /// An end symbol on the plan.
 #[derive(Debug, Clone)]
@@ -21,22 +24,61 @@ pub(super) struct Symbol<'a> {
     pub(super) insert: &'a Insert,
 }
 
+/// Live and dead end blocks by name.
+struct Blocks {
+    live: Patterns,
+    dead: Patterns,
+}
+
+impl Blocks {
+    fn new(conventions: &Conventions) -> Self {
+        Self {
+            live: set(&conventions.live_end_blocks),
+            dead: set(&conventions.dead_end_blocks),
+        }
+    }
+
+    fn kind(&self, block: &str) -> Option<EndKind> {
+        if self.live.fit(block) {
+            Some(EndKind::Live)
+        } else if self.dead.fit(block) {
+            Some(EndKind::Dead)
+        } else {
+            None
+        }
+    }
+}
+
+/// Numbers of the shapes that end symbols consist of: those inside a symbol's own insert at any depth, not those beside
+/// it in a block that holds both.
+pub(super) fn shapes(drawing: &Drawing, conventions: &Conventions) -> BTreeSet<usize> {
+    let blocks = Blocks::new(conventions);
+    let mut in_symbol: Vec<bool> = Vec::with_capacity(drawing.inserts.len());
+    for insert in &drawing.inserts {
+        let outer = insert
+            .within
+            .and_then(|outer| in_symbol.get(outer).copied());
+        in_symbol.push(outer == Some(true) || blocks.kind(&insert.block).is_some());
+    }
+    let shapes = drawing.shapes.iter().enumerate();
+    shapes
+        .filter(|(_, shape)| {
+            let within = shape.within.and_then(|insert| in_symbol.get(insert));
+            within == Some(&true)
+        })
+        .map(|(at, _)| at)
+        .collect()
+}
+
 /// Symbols by block name, whatever their layer, in an order that their places decide.
 pub(super) fn symbols<'a>(drawing: &'a Drawing, conventions: &Conventions) -> Vec<Symbol<'a>> {
-    let live = set(&conventions.live_end_blocks);
-    let dead = set(&conventions.dead_end_blocks);
+    let blocks = Blocks::new(conventions);
     let mut symbols: Vec<Symbol<'a>> = drawing
         .inserts
         .iter()
         .filter(|insert| insert.place.x.is_finite() && insert.place.y.is_finite())
         .filter_map(|insert| {
-            let kind = if live.is_match(&insert.block) {
-                EndKind::Live
-            } else if dead.is_match(&insert.block) {
-                EndKind::Dead
-            } else {
-                return None;
-            };
+            let kind = blocks.kind(&insert.block)?;
             Some(Symbol { kind, insert })
         })
         .collect();

@@ -302,7 +302,14 @@ fn sequence(heights: &[Height]) -> f64 {
             }
             continue;
         };
-        if let Some(before) = last.filter(|before| before.reading.word == Some(word)) {
+        // A label beside a level line speaks of the line's place: one point told twice, not two in a row.
+        let retold = |before: &Height| {
+            let one_label = before.label.is_some() != height.label.is_some();
+            one_label && height.station_m - before.station_m < SAME_PLACE_M
+        };
+        if let Some(before) =
+            last.filter(|before| before.reading.word == Some(word) && !retold(before))
+        {
             let gap_m = height.station_m - before.station_m;
             let (low_m, high_m) = (
                 before.reading.value_m.min(height.reading.value_m),

@@ -1,7 +1,7 @@
 //! The drawing's texts sorted by what they are for, read, and put in an order that their places decide.
 
 use std::cmp::Ordering;
-use std::collections::BTreeSet;
+use std::collections::{BTreeSet, HashMap};
 
 use super::layers::Roles;
 use super::readings::{HeightText, MarkText, height, label};
@@ -43,9 +43,7 @@ pub(super) fn labels<'a>(
         })
         .collect();
     texts.sort_by(|a, b| by_place(a, b));
-    texts.dedup_by(|a, b| {
-        a.content == b.content && a.layer == b.layer && distance_m(a.place, b.place) < COPY_M
-    });
+    let texts = without_copies(&texts);
     let mut labels = Labels::default();
     let mut findings = Vec::new();
     for text in texts {
@@ -86,6 +84,39 @@ pub(super) fn labels<'a>(
         }
     }
     (labels, findings)
+}
+
+/// Of texts that say the same at one place the first, wherever in the order the others stand.
+fn without_copies<'a>(texts: &[&'a Text]) -> Vec<&'a Text> {
+    // Texts by squares as wide as a copy may be off: a copy stands in the same one or in one beside it.
+    let square = |text: &Text| {
+        #[expect(
+            clippy::cast_possible_truncation,
+            reason = "places so far off that they leave the range share its last square"
+        )]
+        let square = [text.place.x, text.place.y].map(|x| (x / COPY_M).floor() as i64);
+        square
+    };
+    let mut kept: Vec<&Text> = Vec::with_capacity(texts.len());
+    let mut by_square: HashMap<[i64; 2], Vec<usize>> = HashMap::with_capacity(texts.len());
+    for text in texts {
+        let [x, y] = square(text);
+        let around = (-1..=1).flat_map(|dx| (-1..=1).map(move |dy| (dx, dy)));
+        let copied = around
+            .filter_map(|(dx, dy)| by_square.get(&[x.saturating_add(dx), y.saturating_add(dy)]))
+            .flatten()
+            .any(|&at| {
+                let other = kept[at];
+                other.content == text.content
+                    && other.layer == text.layer
+                    && distance_m(other.place, text.place) < COPY_M
+            });
+        if !copied {
+            by_square.entry([x, y]).or_default().push(kept.len());
+            kept.push(text);
+        }
+    }
+    kept
 }
 
 fn unread(text: &Text, what: &str, expected: &str) -> Finding {
@@ -130,5 +161,6 @@ fn by_place(a: &Text, b: &Text) -> Ordering {
         .then_with(|| a.content.cmp(&b.content))
         .then_with(|| a.layer.cmp(&b.layer))
         .then(a.rotation_rad.total_cmp(&b.rotation_rad))
+        .then(a.height_m.total_cmp(&b.height_m))
         .then_with(|| a.handle.cmp(&b.handle))
 }

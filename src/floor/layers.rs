@@ -3,13 +3,13 @@
 use std::collections::BTreeMap;
 
 use geo::Coord;
-use globset::{GlobBuilder, GlobSet, GlobSetBuilder};
 
 use super::rules::LAYER_HIDDEN;
 use super::types::Run;
 use crate::drawing::{Drawing, Shape};
 use crate::finding::{Finding, Level};
 use crate::job::Conventions;
+use crate::patterns::Patterns;
 
 /// What a layer may hold; a layer may serve more than one purpose.
 #[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
@@ -112,7 +112,7 @@ impl Roles {
     }
 }
 
-fn role(sets: &[GlobSet; 9], name: &str) -> Role {
+fn role(sets: &[Patterns; 9], name: &str) -> Role {
     let [
         banded,
         distributed,
@@ -123,7 +123,7 @@ fn role(sets: &[GlobSet; 9], name: &str) -> Role {
         opening,
         zone,
         column,
-    ] = sets.each_ref().map(|set| set.is_match(name));
+    ] = sets.each_ref().map(|set| set.fit(name));
     let run = if banded {
         Some(Run::Banded)
     } else if distributed {
@@ -161,17 +161,7 @@ pub(super) fn sound(shape: &Shape) -> bool {
     path.length_m().is_finite() && finite(path.start()) && finite(path.end())
 }
 
-/// Shell patterns, any letter case; a pattern that is none was refused where the job was read, and matches nothing here.
-pub(super) fn set(patterns: &[String]) -> GlobSet {
-    let mut builder = GlobSetBuilder::new();
-    for pattern in patterns {
-        if let Ok(glob) = GlobBuilder::new(pattern)
-            .case_insensitive(true)
-            .backslash_escape(false)
-            .build()
-        {
-            builder.add(glob);
-        }
-    }
-    builder.build().unwrap_or_else(|_| GlobSet::empty())
+/// Names by the job's patterns; broken ones were refused where the job was read, and fit nothing here.
+pub(super) fn set(patterns: &[String]) -> Patterns {
+    Patterns::new(patterns).unwrap_or_default()
 }

@@ -26,14 +26,18 @@ pub(super) fn length_m(text: &str, unit: LengthUnit) -> Option<f64> {
             break;
         }
     }
-    let value_m = if let Some((feet, inches)) = text.split_once('\'') {
-        let feet_m = plain(feet.trim())? * LengthUnit::Ft.metres();
+    // The sign is that of the whole, fraction and inches included.
+    let (sign, text) = match text.strip_prefix(['-', '−']) {
+        Some(rest) => (-1.0, rest.trim_start()),
+        None => (1.0, text.strip_prefix('+').unwrap_or(text)),
+    };
+    let size_m = if let Some((feet, inches)) = text.split_once('\'') {
         let inches = inches.trim_start_matches([' ', '-']);
-        let inches_m = number(inches)?.abs() * LengthUnit::In.metres();
-        feet_m + if feet_m < 0.0 { -inches_m } else { inches_m }
+        plain(feet.trim())? * LengthUnit::Ft.metres() + number(inches)? * LengthUnit::In.metres()
     } else {
         number(text)? * unit.metres()
     };
+    let value_m = sign * size_m;
     value_m.is_finite().then_some(value_m)
 }
 
@@ -60,17 +64,11 @@ fn number(text: &str) -> Option<f64> {
         }
         (head.get(..start)?, plain(head.get(start..)?)? / below)
     };
-    if whole.trim() == "-" {
-        return Some(-fraction);
-    }
     let whole = whole.trim_end_matches([' ', '-', '\u{a0}']).trim();
     if whole.is_empty() {
         return Some(fraction);
     }
-    // The fraction goes on in the direction of the whole number, which minus zero has too.
-    let whole_number = plain(whole)?;
-    let below = whole.starts_with('-');
-    Some(whole_number + if below { -fraction } else { fraction })
+    Some(plain(whole)? + fraction)
 }
 
 fn first_length(text: &str) -> usize {
@@ -91,10 +89,9 @@ const SINGLES: &[(char, u8)] = &[
 ];
 
 fn plain(text: &str) -> Option<f64> {
-    let digits = text.strip_prefix(['-', '+']).unwrap_or(text);
-    let led = digits.strip_prefix(['.', ',']).unwrap_or(digits);
+    let led = text.strip_prefix(['.', ',']).unwrap_or(text);
     let fits = led.starts_with(|c: char| c.is_ascii_digit())
-        && digits
+        && led
             .chars()
             .all(|c| c.is_ascii_digit() || c == '.' || c == ',');
     if !fits {
@@ -121,6 +118,12 @@ mod tests {
             ("½\"", LengthUnit::In, 0.0127),
             ("10 mm", LengthUnit::In, 0.01),
             ("-5", LengthUnit::Mm, -0.005),
+            ("+5", LengthUnit::Mm, 0.005),
+            ("-1/4", LengthUnit::In, -0.00635),
+            ("-1 1/4", LengthUnit::In, -0.03175),
+            ("-1-1/4\"", LengthUnit::In, -0.03175),
+            ("−1¼", LengthUnit::In, -0.03175),
+            ("-1'-6\"", LengthUnit::In, -0.4572),
             ("16.5", LengthUnit::Cm, 0.165),
             (".165", LengthUnit::M, 0.165),
             ("0,165 m", LengthUnit::Mm, 0.165),
@@ -137,7 +140,7 @@ mod tests {
             );
         }
         for text in [
-            "", "H", "1/0", "12a", "1/", "/8", "--3", "NaN", "inf", "1.2.3",
+            "", "H", "1/0", "12a", "1/", "/8", "--3", "-+3", "1/-4", "NaN", "inf", "1.2.3",
         ] {
             assert_eq!(length_m(text, LengthUnit::Mm), None, "{text}");
         }

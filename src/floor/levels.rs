@@ -7,8 +7,10 @@ use geo::Coord;
 use super::heights::Height;
 use super::index::Index;
 use super::layers::{Roles, sound};
-use super::lines::{Line, by_handle, by_place};
+use super::lines::Line;
+use super::order::{by_handle, by_place};
 use super::pieces::{Joint, chains};
+use super::points::words;
 use super::readings::{HeightText, height};
 use super::rules::LEVEL_LINE_UNREAD;
 use crate::drawing::{Drawing, Shape};
@@ -56,9 +58,8 @@ pub(super) fn levels(
             }
             [first, rest @ ..] => {
                 let numbers = std::iter::once(first).chain(rest);
-                let numbers: Vec<String> = numbers
-                    .map(|said| format!("{:.1} mm", said.value_m * 1000.0))
-                    .collect();
+                let numbers: BTreeSet<String> = numbers.map(|&said| words(said)).collect();
+                let numbers: Vec<String> = numbers.into_iter().collect();
                 findings.push(unread(
                     path,
                     &format!("has more than one height beside it: {}", numbers.join(", ")),

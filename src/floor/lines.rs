@@ -4,14 +4,16 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 
-use super::index::Index;
+use super::bridges::{Reach, bridged};
+use super::copies::{without_copies, without_overlaps};
 use super::layers::{Roles, sound};
+use super::order::{by_handle, by_place, drawn_before};
 use super::pieces::{Joint, chains, returns};
-use super::rules::{DUPLICATE_LINE, PIECES_MEET, TENDON_CLOSED, TENDONS_MISSING};
+use super::rules::{PIECES_MEET, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
 use super::types::Run;
 use crate::drawing::{Drawing, Shape};
 use crate::finding::{Finding, Level};
-use crate::geometry::{Path, distance_m};
+use crate::geometry::Path;
 use crate::job::Job;
 
 /// A tendon line before anything is known of it but its way.
@@ -27,8 +29,8 @@ pub(super) struct Line {
 const SHARPEST_RAD: f64 = 1.6;
 /// An end symbol this near to a joint says that two tendons end there.
 const STOP_M: f64 = 0.05;
-/// Places at which a line is compared with another.
-const PROBES: u32 = 33;
+/// Pieces of one tendon that do not meet lie on one line within this, metres.
+const ASIDE_M: f64 = 0.020;
 
 /// Tendon lines in an order that their places decide.
 pub(super) fn lines(
@@ -36,19 +38,21 @@ pub(super) fn lines(
     job: &Job,
     roles: &Roles,
     ends: &[Coord<f64>],
-    symbols: &BTreeSet<&str>,
+    symbols: &BTreeSet<usize>,
 ) -> (Vec<Line>, Vec<Finding>) {
     let mut findings = Vec::new();
     let mut by_layer: BTreeMap<(&str, Run), Vec<&Shape>> = BTreeMap::new();
-    for shape in &drawing.shapes {
+    for (at, shape) in drawing.shapes.iter().enumerate() {
         let Some(run) = roles.of(&shape.layer).run else {
             continue;
         };
-        if !sound(shape) || symbols.contains(shape.handle.as_str()) {
+        if !sound(shape) || symbols.contains(&at) {
             continue;
         }
-        let closed = shape.closed || returns(&shape.path, job.conventions.join_gap_m);
-        if closed {
+        let gap_m = job.conventions.join_gap_m;
+        if !shape.closed && shape.path.length_m() <= gap_m {
+            findings.push(stub(shape, gap_m));
+        } else if shape.closed || returns(&shape.path, gap_m) {
             findings.push(closed_shape(&shape.handle, &shape.layer, &shape.path));
         } else {
             by_layer.entry((&shape.layer, run)).or_default().push(shape);
@@ -90,6 +94,25 @@ fn closed_shape(handle: &str, layer: &str, path: &Path) -> Finding {
         "open the line where the tendon ends, or move the shape to another layer",
     );
     match path.start() {
+        Some(place) => finding.at_place(place),
+        None => finding,
+    }
+}
+
+fn stub(shape: &Shape, gap_m: f64) -> Finding {
+    let finding = Finding::new(
+        &TENDON_STUB,
+        Level::Warning,
+        format!(
+            "line {} on layer {} is {:.1} mm long; expected more than the joining gap of {:.1} mm",
+            shape.handle,
+            shape.layer,
+            shape.path.length_m() * 1000.0,
+            gap_m * 1000.0
+        ),
+        "delete the stub, or give a smaller `join_gap_mm` in the job file's [drawing] table",
+    );
+    match shape.path.start() {
         Some(place) => finding.at_place(place),
         None => finding,
     }
@@ -150,160 +173,13 @@ fn joined(
             path: if backwards { path.reversed() } else { path },
         });
     }
-    lines
-}
-
-/// Drops pieces that lie on another piece of the layer from end to end.
-fn without_copies<'a>(
-    shapes: &[&'a Shape],
-    tolerance_m: f64,
-    findings: &mut Vec<Finding>,
-) -> Vec<&'a Shape> {
-    let index = Index::new(shapes.iter().map(|shape| &shape.path));
-    let mut dropped = vec![false; shapes.len()];
-    for (at, shape) in shapes.iter().enumerate() {
-        let middle = shape.path.place_at(shape.path.length_m() / 2.0);
-        let twin = index
-            .within(middle, tolerance_m)
-            .into_iter()
-            .filter(|&other| other < at && !dropped[other])
-            .find(|&other| same_line(&shape.path, &shapes[other].path, tolerance_m));
-        if let Some(twin) = twin {
-            dropped[at] = true;
-            findings.push(copy(
-                &shape.handle,
-                &shape.layer,
-                &shapes[twin].handle,
-                &shape.path,
-                shape.path.length_m(),
-            ));
-        }
-    }
-    let kept = shapes.iter().zip(dropped);
-    kept.filter_map(|(shape, gone)| (!gone).then_some(*shape))
-        .collect()
-}
-
-/// Drops lines that lie on another tendon, whatever its layer, for more than half their length; names lesser overlaps.
-fn without_overlaps(lines: Vec<Line>, tolerance_m: f64, findings: &mut Vec<Finding>) -> Vec<Line> {
-    let index = Index::new(lines.iter().map(|line| &line.path));
-    // The longest is kept; of equals, the one drawn first.
-    let mut order: Vec<usize> = (0..lines.len()).collect();
-    order.sort_by(|&a, &b| {
-        let (a, b) = (&lines[a], &lines[b]);
-        let (length_a, length_b) = (a.path.length_m(), b.path.length_m());
-        if (length_a - length_b).abs() > tolerance_m {
-            length_b.total_cmp(&length_a)
-        } else {
-            by_handle(&a.handle, &b.handle)
-        }
-    });
-    let mut rank = vec![0; lines.len()];
-    for (place, &line) in order.iter().enumerate() {
-        rank[line] = place;
-    }
-    let mut dropped = vec![false; lines.len()];
-    for &at in &order {
-        let path = &lines[at].path;
-        let mut on: BTreeMap<usize, u32> = BTreeMap::new();
-        for probe in 0..PROBES {
-            let share = (f64::from(probe) + 0.5) / f64::from(PROBES);
-            let place = path.place_at(share * path.length_m());
-            for other in index.within(place, tolerance_m) {
-                if other != at && rank[other] < rank[at] && !dropped[other] {
-                    *on.entry(other).or_default() += 1;
-                }
-            }
-        }
-        // One probe may lie on a tendon that crosses; two in a line do not.
-        let Some((&other, &probes)) = on.iter().max_by_key(|(_, probes)| **probes) else {
-            continue;
-        };
-        if probes < 2 || !runs_along(path, &lines[other].path, tolerance_m) {
-            continue;
-        }
-        let overlap_m = path.length_m() * f64::from(probes) / f64::from(PROBES);
-        dropped[at] = 2 * probes > PROBES;
-        findings.push(copy(
-            &lines[at].handle,
-            &lines[at].layer,
-            &lines[other].handle,
-            path,
-            overlap_m,
-        ));
-    }
-    let kept = lines.into_iter().zip(dropped);
-    kept.filter_map(|(line, gone)| (!gone).then_some(line))
-        .collect()
-}
-
-fn copy(handle: &str, layer: &str, other: &str, path: &Path, overlap_m: f64) -> Finding {
-    Finding::new(
-        &DUPLICATE_LINE,
-        Level::Error,
-        format!(
-            "line {handle} on layer {layer} lies on line {other} for about {overlap_m:.2} m of its {:.2} m; expected each tendon once",
-            path.length_m()
-        ),
-        "delete one of the two lines, or move it to where its tendon lies",
-    )
-    .at_place(path.place_at(path.length_m() / 2.0))
-}
-
-/// Whether two lines are the same one, in either direction.
-fn same_line(a: &Path, b: &Path, tolerance_m: f64) -> bool {
-    let (Some(a0), Some(a1), Some(b0), Some(b1)) = (a.start(), a.end(), b.start(), b.end()) else {
-        return false;
+    let reach = Reach {
+        gap_m: job.conventions.bridge_gap_m,
+        overlap_m: job.conventions.overlap_m,
+        meet_m: job.conventions.join_gap_m,
+        aside_m: job.conventions.join_gap_m.max(ASIDE_M),
     };
-    let straight = distance_m(a0, b0) <= tolerance_m && distance_m(a1, b1) <= tolerance_m;
-    let turned = distance_m(a0, b1) <= tolerance_m && distance_m(a1, b0) <= tolerance_m;
-    (straight || turned)
-        && (a.length_m() - b.length_m()).abs() <= 4.0 * tolerance_m
-        && (1..8).all(|eighth| {
-            let place = a.place_at(a.length_m() * f64::from(eighth) / 8.0);
-            b.project(place)
-                .is_some_and(|found| found.distance_m <= tolerance_m)
-        })
-}
-
-/// Whether somewhere the two lines lie on one another and go the same way.
-fn runs_along(a: &Path, b: &Path, tolerance_m: f64) -> bool {
-    (0..PROBES).any(|probe| {
-        let station_m = a.length_m() * (f64::from(probe) + 0.5) / f64::from(PROBES);
-        b.project(a.place_at(station_m)).is_some_and(|found| {
-            let turn = a.heading_at(station_m) - b.heading_at(found.station_m);
-            found.distance_m <= tolerance_m && turn.sin().abs() < 0.05
-        })
-    })
-}
-
-/// Drawn order: by handle; shapes of one insert, or of a drawing without handles, by place.
-fn drawn_before(a: &Shape, b: &Shape) -> std::cmp::Ordering {
-    by_handle(&a.handle, &b.handle).then_with(|| by_place(&a.path, &b.path))
-}
-
-/// By handle as a number; entity numbers of drawings without handles say nothing, so they count as equal.
-pub(super) fn by_handle(a: &str, b: &str) -> std::cmp::Ordering {
-    let value = |handle: &str| u64::from_str_radix(handle, 16).unwrap_or(u64::MAX);
-    value(a).cmp(&value(b))
-}
-
-/// By place on the plan, whichever way the lines are drawn.
-pub(super) fn by_place(a: &Path, b: &Path) -> std::cmp::Ordering {
-    let (a, b) = (corners(a), corners(b));
-    let pairs = a.iter().zip(&b);
-    pairs
-        .map(|(a, b)| a.total_cmp(b))
-        .find(|order| order.is_ne())
-        .unwrap_or(std::cmp::Ordering::Equal)
-}
-
-fn corners(path: &Path) -> [f64; 5] {
-    let start = path.start().unwrap_or_default();
-    let end = path.end().unwrap_or_default();
-    let swap = (end.x, end.y) < (start.x, start.y);
-    let (first, last) = if swap { (end, start) } else { (start, end) };
-    [first.x, first.y, last.x, last.y, path.length_m()]
+    bridged(lines, reach, is_stop, findings)
 }
 
 /// The direction in which a run goes, from −45° up to 135°.

@@ -160,6 +160,7 @@ fn clash(a: &MarkText, b: &MarkText) -> bool {
     differ(a.mark.as_ref(), b.mark.as_ref())
         || differ(a.strands.as_ref(), b.strands.as_ref())
         || differ(a.tendons.as_ref(), b.tendons.as_ref())
+        || differ(a.strand.as_ref(), b.strand.as_ref())
         // Two counts without a mark are those of two tendons, even if they are equal; a count and a force are not.
         || (a.mark.is_none() && b.mark.is_none() && alike(a, b))
 }
@@ -169,6 +170,12 @@ fn alike(a: &MarkText, b: &MarkText) -> bool {
     let counts = |text: &MarkText| text.strands.is_some() || text.tendons.is_some();
     (counts(a) && counts(b)) || (a.requires() && b.requires()) || (!a.counts() && !b.counts())
 }
+
+/// Lines whose middles are no farther apart across their run than this lie in one row, metres. It is no multiple of a
+/// unit that drawings are drawn to, so rounding does not decide which of two rows is first.
+const ROW_M: f64 = 0.0007;
+/// Runs steeper than this are counted by x, radians: a hair over 45°, so that rounding does not decide on a plan drawn at 45°.
+const UPRIGHT_RAD: f64 = std::f64::consts::FRAC_PI_4 + 0.001;
 
 /// Names for lines without a mark: `B001`, `D001`, ... by place across the run, then along it.
 pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
@@ -185,28 +192,22 @@ pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
         let of_run = || (0..lines.len()).filter(|&line| lines[line].run == run);
         let axis_rad = axis_rad(of_run().map(|line| &lines[line]));
         let (sin, cos) = axis_rad.sin_cos();
-        // Thousandths of a metre across, so that rounding does not decide which of two is first.
+        // Runs along y are counted by x, and runs along x by y.
+        let across_sign = if axis_rad > UPRIGHT_RAD { -1.0 } else { 1.0 };
         let mut order: Vec<(f64, f64, usize)> = of_run()
             .filter(|&line| names[line].is_empty())
             .map(|line| {
                 let path = &lines[line].path;
                 let middle = path.place_at(path.length_m() / 2.0);
-                // Runs along y are counted by x, and runs along x by y.
-                let upright = axis_rad > std::f64::consts::FRAC_PI_4;
-                let across_m = (cos * middle.y - sin * middle.x) * if upright { -1.0 } else { 1.0 };
+                let across_m = across_sign * (cos * middle.y - sin * middle.x);
                 let along_m = cos * middle.x + sin * middle.y;
-                (
-                    (across_m * 1000.0).round(),
-                    (along_m * 1000.0).round(),
-                    line,
-                )
+                (across_m, along_m, line)
             })
             .collect();
-        order.sort_by(|a, b| {
-            a.0.total_cmp(&b.0)
-                .then(a.1.total_cmp(&b.1))
-                .then(a.2.cmp(&b.2))
-        });
+        order.sort_by(|a, b| a.0.total_cmp(&b.0));
+        for row in order.chunk_by_mut(|a, b| b.0 - a.0 <= ROW_M) {
+            row.sort_by(|a, b| a.1.total_cmp(&b.1).then(a.2.cmp(&b.2)));
+        }
         let free = (1_u32..)
             .map(|number| format!("{letter}{number:03}"))
             .filter(|name| !used.contains(name));

@@ -35,11 +35,15 @@ pub(super) fn points(
 ) -> (Vec<Point>, Vec<Finding>) {
     let (marks, findings) = merged(mark, line, heights, thickness);
     let length_m = line.path.length_m();
-    let end = |far: bool| {
-        marks
-            .iter()
-            .find(|m| m.at_end && (m.station_m > length_m / 2.0) == far)
-    };
+    // The mark nearest to an end is the anchor's; another that stands near is a point of its own.
+    let first_is_anchor = marks
+        .first()
+        .is_some_and(|m| m.at_end && m.station_m <= length_m / 2.0);
+    let last_is_anchor = marks
+        .last()
+        .is_some_and(|m| m.at_end && m.station_m > length_m / 2.0);
+    let start = marks.first().filter(|_| first_is_anchor);
+    let end = marks.last().filter(|_| last_is_anchor);
     let anchor = |station_m: f64, said: Option<&Mark>| {
         let place = line.path.place_at(station_m);
         let thickness_m = thickness.at(place);
@@ -57,9 +61,10 @@ pub(super) fn points(
             thickness_m,
         }
     };
-    let first = anchor(0.0, end(false));
-    let last = anchor(length_m, end(true));
-    let between: Vec<Mark> = marks.iter().copied().filter(|m| !m.at_end).collect();
+    let first = anchor(0.0, start);
+    let last = anchor(length_m, end);
+    let inner = usize::from(first_is_anchor)..marks.len() - usize::from(last_is_anchor);
+    let between: Vec<Mark> = marks.get(inner).unwrap_or_default().to_vec();
     let kinds = kinds(line, &between, [&first, &last]);
     let mut points = vec![first];
     points.extend(between.iter().zip(kinds).map(|(mark, kind)| Point {
@@ -98,7 +103,13 @@ fn merged(
         new.reading.weigh(new.thickness_m);
         let labelled = height.label.is_some();
         let held = marks.last_mut().filter(|(held, by_label)| {
-            height.station_m - held.station_m < SAME_PLACE_M && !(*by_label && labelled)
+            // A label farther in does not speak for the anchor that a level line gives.
+            let same_point = match (*by_label, labelled) {
+                (true, true) => false,
+                (false, false) => true,
+                _ => held.at_end == height.at_end,
+            };
+            same_point && height.station_m - held.station_m < SAME_PLACE_M
         });
         let Some((held, by_label)) = held else {
             marks.push((new, labelled));
@@ -107,6 +118,7 @@ fn merged(
         if !agree(held.reading, new.reading) {
             let both_lines = !*by_label && !labelled;
             held.torn |= both_lines;
+            held.at_end |= both_lines && new.at_end;
             let found = Finding::new(
                 &LEVEL_LINE_DIFFERS,
                 if both_lines {

@@ -16,9 +16,12 @@ pub const RULES: &[&Rule] = &[
     &LEVEL_LINE_UNREAD,
     &MARK_TWICE,
     &OUTLINE_OPEN,
+    &PIECES_BRIDGED,
     &PIECES_MEET,
+    &PIECES_OVERLAP,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
+    &TENDON_STUB,
     &TENDONS_MISSING,
     &THICKNESS_DIFFERS,
     &THICKNESS_UNKNOWN,
@@ -103,6 +106,18 @@ pub(super) const PIECES_MEET: Rule = Rule {
     meaning: "Ends of tendon lines meet in a way that does not tell which of them go on into one another.",
 };
 
+/// A gap in a tendon.
+pub(super) const PIECES_BRIDGED: Rule = Rule {
+    name: "pieces-bridged",
+    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length.",
+};
+
+/// Two pieces of a tendon that overlap.
+pub(super) const PIECES_OVERLAP: Rule = Rule {
+    name: "pieces-overlap",
+    meaning: "Two pieces in line with one another overlap: they were taken for one tendon.",
+};
+
 /// Strands unknown.
 pub(super) const STRAND_COUNT_MISSING: Rule = Rule {
     name: "strand-count-missing",
@@ -113,6 +128,12 @@ pub(super) const STRAND_COUNT_MISSING: Rule = Rule {
 pub(super) const TENDON_CLOSED: Rule = Rule {
     name: "tendon-closed",
     meaning: "A closed shape lies on a tendon layer: it has no ends, so it is no tendon.",
+};
+
+/// A line too short to be a tendon.
+pub(super) const TENDON_STUB: Rule = Rule {
+    name: "tendon-stub",
+    meaning: "A line on a tendon layer is no longer than the gap that is bridged between pieces: it was left out.",
 };
 
 /// A drawing without tendons.

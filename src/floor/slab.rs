@@ -5,6 +5,7 @@ use rstar::primitives::{GeomWithData, Rectangle};
 use rstar::{AABB, RTree};
 
 use super::layers::{Ground, Roles, sound};
+use super::order::by_place;
 use super::pieces::{Joint, chains};
 use super::readings::thickness_m;
 use super::rules::{OUTLINE_OPEN, THICKNESS_DIFFERS, THICKNESS_UNKNOWN, ZONE_UNREAD};
@@ -43,7 +44,8 @@ pub(super) fn slab(
     let mut texts: Vec<&Text> = drawing.texts.iter().collect();
     texts.sort_by(|a, b| {
         let by_x = a.place.x.total_cmp(&b.place.x);
-        by_x.then(a.place.y.total_cmp(&b.place.y))
+        let by_place = by_x.then(a.place.y.total_cmp(&b.place.y));
+        by_place.then_with(|| a.content.cmp(&b.content))
     });
     for text in texts {
         let ground = roles.of(&text.layer).ground;
@@ -61,14 +63,18 @@ pub(super) fn slab(
     }
     let mut unread = Vec::new();
     for (outline, said) in zones.into_iter().zip(said) {
-        if let Some(&(first_m, _)) = said.first() {
-            differing(&said, first_m, "in one zone", &mut findings);
+        let Some(&(thickness_m, _)) = said.first() else {
+            findings.push(zone_unread(&outline));
+            unread.push(outline);
+            continue;
+        };
+        // Two thicknesses leave none that could be relied on.
+        if differing(&said, thickness_m, "in one zone", &mut findings) == 0 {
             slab.zones.push(Zone {
                 outline,
-                thickness_m: first_m,
+                thickness_m,
             });
         } else {
-            findings.push(zone_unread(&outline));
             unread.push(outline);
         }
     }
@@ -98,7 +104,7 @@ fn general_thickness(slab: &mut Slab, said: &[(f64, Coord<f64>)], findings: &mut
             differing(said, job_m, "in the job file and on the drawing", findings);
         }
         (None, Some(&(first_m, _))) => {
-            // Two general thicknesses leave none that could be relied on.
+            // Here too.
             if differing(said, first_m, "outside every zone", findings) == 0 {
                 slab.thickness_m = Some(first_m);
             }
@@ -172,7 +178,7 @@ fn outlines(
         .filter(|shape| !whole(shape))
         .map(|shape| &shape.path)
         .collect();
-    open.sort_by(|a, b| super::lines::by_place(a, b));
+    open.sort_by(|a, b| by_place(a, b));
     let joint = Joint {
         gap_m,
         turn_rad: std::f64::consts::PI,

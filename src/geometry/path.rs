@@ -138,6 +138,17 @@ impl Path {
         best
     }
 
+    /// The part of the line between two stations; empty where they are not in order.
+    #[must_use]
+    pub fn between(&self, from_m: f64, to_m: f64) -> Self {
+        let part = self.pieces().filter_map(|(start_m, segment)| {
+            let from_m = (from_m - start_m).max(0.0);
+            let to_m = (to_m - start_m).min(segment.length_m());
+            (from_m < to_m).then(|| segment.between(from_m, to_m))
+        });
+        Self::new(part)
+    }
+
     /// The same line travelled the other way.
     #[must_use]
     pub fn reversed(&self) -> Self {

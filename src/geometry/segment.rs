@@ -125,6 +125,31 @@ impl Segment {
         }
     }
 
+    /// The part between two distances along the piece, both on it.
+    #[must_use]
+    pub fn between(&self, from_m: f64, to_m: f64) -> Self {
+        match *self {
+            Self::Line { .. } => Self::Line {
+                from: self.place_at(from_m),
+                to: self.place_at(to_m),
+            },
+            Self::Arc {
+                centre,
+                radius_m,
+                start_rad,
+                sweep_rad,
+            } => {
+                let per_m = sweep_rad / self.length_m();
+                Self::Arc {
+                    centre,
+                    radius_m,
+                    start_rad: start_rad + per_m * from_m,
+                    sweep_rad: per_m * (to_m - from_m),
+                }
+            }
+        }
+    }
+
     /// The same piece travelled the other way.
     #[must_use]
     pub fn reversed(&self) -> Self {

@@ -88,6 +88,8 @@ fn conventions() -> Conventions {
         label_reach: 3.0,
         end_reach_m: 0.5,
         join_gap_m: 0.010,
+        bridge_gap_m: 0.0,
+        overlap_m: 0.5,
     }
 }
 

@@ -112,6 +112,10 @@ pub static KEYS: &[Key] = &[
         "the drawing's own $INSUNITS; millimetres where it has none"),
     key("drawing", "join_gap_mm", number!(0.0..=500.0, conventions.join_gap_m, MM),
         "Pieces of a tendon whose ends are this close are one line.", CONVENTION),
+    key("drawing", "bridge_gap_mm", number!(0.0..=5000.0, conventions.bridge_gap_m, MM),
+        "Pieces in line with one another are one tendon across a gap of up to this length, as where a line is broken at a label.", CONVENTION),
+    key("drawing", "overlap_mm", number!(0.0..=5000.0, conventions.overlap_m, MM),
+        "Pieces in line with one another that overlap by up to this length are one tendon; more is a line drawn twice.", CONVENTION),
 
     key("layers", "banded", Kind::Shell(place!(conventions.layers.banded)),
         "Tendons gathered along column lines.", CONVENTION),

@@ -56,6 +56,10 @@ pub struct Conventions {
     pub end_reach_m: f64,
     /// Gap that still counts as end to end, metres.
     pub join_gap_m: f64,
+    /// Gap in a tendon line that is bridged between pieces in line with one another, metres.
+    pub bridge_gap_m: f64,
+    /// Overlap that makes two pieces in line with one another one tendon, metres.
+    pub overlap_m: f64,
 }
 
 /// Layer patterns (shell patterns, any letter case).

@@ -7,6 +7,7 @@ use toml::de::{DeArray, DeValue};
 use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
+use crate::patterns::Patterns;
 
 impl Reader {
     pub(super) fn value(&mut self, key: &Key, entry: &Entry<'_>) {
@@ -52,10 +53,10 @@ impl Reader {
             (Kind::Shell(place), DeValue::Array(items)) => {
                 if let Some(words) = self.words(key, entry, items) {
                     for (pattern, span) in &words {
-                        if let Err(error) = globset::Glob::new(pattern) {
+                        if let Err(error) = Patterns::new([pattern]) {
                             self.mistake(
                                 span.clone(),
-                                format!("`{}` holds a broken shell pattern: {}", key.name, plain(&error.kind().to_string())),
+                                format!("`{}` holds a broken shell pattern: {}", key.name, plain(&error.to_string())),
                                 "expected *, ?, [abc] or {this,that}",
                                 "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
                             );

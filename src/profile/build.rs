@@ -25,14 +25,6 @@ pub enum Unknown {
 /// Points nearer than this to the one before are one place with two levels, metres.
 const CLOSEST_POINTS_M: f64 = 1e-3;
 
-/// Level of a point, metres above the top of the slab; an anchor without a height is at mid-depth.
-pub fn level_m(point: &Point) -> Option<f64> {
-    point.level_m().or_else(|| {
-        let anchor = point.kind == PointKind::Anchor && point.height_m.is_none();
-        anchor.then_some(-0.5 * point.thickness_m?)
-    })
-}
-
 /// A point that bends the curve.
 #[derive(Debug, Clone, Copy)]
 struct Knot {
@@ -90,7 +82,7 @@ fn knots(tendon: &Tendon) -> Result<Vec<Knot>, Unknown> {
         return Err(Unknown::NoLine);
     }
     let unknown: Vec<usize> = bending()
-        .filter(|(_, point)| level_m(point).is_none_or(|level_m| !level_m.is_finite()))
+        .filter(|(_, point)| point.level_m().is_none_or(|level_m| !level_m.is_finite()))
         .map(|(index, _)| index)
         .collect();
     if !unknown.is_empty() {
@@ -110,7 +102,7 @@ fn knots(tendon: &Tendon) -> Result<Vec<Knot>, Unknown> {
             Some(Knot {
                 kind: point.kind,
                 station_m: point.station_m,
-                level_m: level_m(point)?,
+                level_m: point.level_m()?,
             })
         })
         .collect();

@@ -101,6 +101,7 @@ impl Board {
         self.drawing.shapes.push(Shape {
             handle,
             layer: layer.to_owned(),
+            within: None,
             kind: ShapeKind::Polyline,
             path,
             closed,
@@ -128,6 +129,7 @@ impl Board {
         self.drawing.inserts.push(Insert {
             handle,
             layer: layer.to_owned(),
+            within: None,
             block: block.to_owned(),
             place,
             rotation_rad: 0.0,
@@ -160,6 +162,7 @@ impl Board {
         self.drawing.texts.push(Text {
             handle,
             layer: layer.to_owned(),
+            within: None,
             content: content.to_owned(),
             place,
             corners: [
@@ -331,6 +334,11 @@ impl Board {
             };
             let start = tendon.path.start().unwrap_or_default();
             let forward = tautplan::geometry::distance_m(start, meant.from) < 0.01;
+            let end = tendon.path.end().unwrap_or_default();
+            if !forward && tautplan::geometry::distance_m(end, meant.from) >= 0.01 {
+                wrong.push(format!("{}: the mark stands on another tendon", meant.mark));
+                continue;
+            }
             let length_m = tendon.path.length_m();
             let mut found: Vec<(PointKind, f64, Option<f64>)> = tendon
                 .points

@@ -2,9 +2,11 @@
 
 use geo::Coord;
 use tautplan::floor::read;
+use tautplan::geometry::Path;
 use tautplan::job::Job;
 
 use crate::kit::{Board, Dice, Grid, Style, Turn, floor};
+use crate::sketch::{kinds, mm, points_mm};
 
 const GRID: Grid = Grid {
     bays: [3, 3],
@@ -61,6 +63,97 @@ fn the_order_of_entities_changes_no_reading() {
                 .collect::<Vec<_>>()
         };
         assert_eq!(say(&first), say(&found));
+    }
+}
+
+#[test]
+fn the_direction_in_which_tendons_were_drawn_changes_no_reading() {
+    let mut dice = Dice(17);
+    let mut board = floor(GRID, style(Turn::Along, true), &mut dice);
+    // Of each tendon its mark, and kind, place and height of its points in order along x and y.
+    let say = |board: &Board| {
+        let (floor, _) = read(&board.drawing, &Job::default());
+        let tendons = floor.tendons.into_iter().map(|tendon| {
+            let mut points: Vec<_> = tendon
+                .points
+                .iter()
+                .map(|p| {
+                    (
+                        mm(p.place.x),
+                        mm(p.place.y),
+                        format!("{:?}", p.kind),
+                        p.height_m.map(mm),
+                    )
+                })
+                .collect();
+            points.sort_unstable();
+            (tendon.handle, tendon.mark, points)
+        });
+        tendons.collect::<Vec<_>>()
+    };
+    let first = say(&board);
+    assert!(first.len() > 20);
+    for shape in &mut board.drawing.shapes {
+        shape.path = shape.path.reversed();
+    }
+    assert_eq!(say(&board), first);
+}
+
+#[test]
+fn tendons_drawn_in_pieces_are_read_as_if_drawn_whole() {
+    let mut dice = Dice(19);
+    let mut board = floor(GRID, style(Turn::Along, false), &mut dice);
+    let whole = std::mem::take(&mut board.drawing.shapes);
+    for shape in whole {
+        if !shape.layer.starts_with("TENDON") {
+            board.shape(&shape.layer, shape.path, shape.closed);
+            continue;
+        }
+        let third_m = shape.path.length_m() / 3.0;
+        let cuts = [0.0, 1.0, 2.0, 3.0].map(|part| shape.path.place_at(part * third_m));
+        let mut pieces: Vec<Path> = cuts.windows(2).map(Path::through).collect();
+        dice.shuffle(&mut pieces);
+        for piece in pieces {
+            let turned = dice.below(2) == 0;
+            let piece = if turned { piece.reversed() } else { piece };
+            board.shape(&shape.layer, piece, false);
+        }
+    }
+    right(&board);
+}
+
+#[test]
+fn a_plan_moved_by_a_thousand_kilometres_says_the_same() {
+    let mut dice = Dice(23);
+    let mut board = floor(GRID, style(Turn::Mixed, true), &mut dice);
+    // Half of the marks are gone, so that names by place are told too.
+    board
+        .drawing
+        .texts
+        .retain(|text| text.layer != "TENDON-MARK" || dice.below(2) == 0);
+    let say = |board: &Board| {
+        let (floor, findings) = read(&board.drawing, &Job::default());
+        let mut stations = Vec::new();
+        let mut words = Vec::new();
+        for tendon in &floor.tendons {
+            stations.extend(tendon.points.iter().map(|point| point.station_m));
+            let points = points_mm(tendon).into_iter();
+            let heights: Vec<_> = points.map(|(kind, _, height)| (kind, height)).collect();
+            words.push(format!("{} {:?} {heights:?}", tendon.mark, kinds(tendon)));
+        }
+        words.extend(
+            findings
+                .iter()
+                .map(|f| format!("{} {:?}", f.rule.name, f.tendon)),
+        );
+        (words, stations)
+    };
+    let (first, stations) = say(&board);
+    for (x, y) in [(1e6, 1e6), (-1e6, 0.0), (1e6 + 0.0005, -1e6 + 0.0005)] {
+        let (words, moved) = say(&board.moved(0.0, Coord { x, y }));
+        assert_eq!(words, first, "by {x}, {y}");
+        let off = stations.iter().zip(&moved).map(|(a, b)| (a - b).abs());
+        assert!(off.fold(0.0, f64::max) < 1e-6, "by {x}, {y}");
     }
 }
 

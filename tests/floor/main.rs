@@ -5,8 +5,18 @@
     reason = "a failing survey of styles is read line by line"
 )]
 
+mod anchors;
+mod bridging;
+mod copies;
+mod ends;
+mod ground;
 mod heights;
+mod joining;
 mod kit;
-mod lettering;
+mod labels;
 mod laws;
+mod lettering;
+mod levels;
+mod marks;
 mod settling;
+mod sketch;

@@ -123,6 +123,22 @@ fn comments_strange_tails_and_several_entities_sections_stay() {
 }
 
 #[test]
+fn a_comment_behind_our_marks_stays() {
+    let once = mark(&encode(&drawing("AC1015", WHOLE), LF), &sheet());
+    let (comment, end) = (b"999\nseen by the checker\n", b"  0\nENDSEC\n");
+    let at = memchr::memmem::rfind(&once, end).expect("the end of ENTITIES");
+    let noted = [&once[..at], comment, &once[at..]].concat();
+    for sheet in [sheet(), smaller_sheet(), no_marks()] {
+        let again = mark(&noted, &sheet);
+        assert!(
+            memchr::memmem::find(&again, comment).is_some(),
+            "the comment is lost"
+        );
+        assert!(mark(&again, &sheet) == again);
+    }
+}
+
+#[test]
 fn places_that_are_no_numbers_are_refused() {
     let bytes = encode(&drawing("AC1027", WHOLE), LF);
     let source = open(bytes).expect("a drawing");

@@ -29,7 +29,7 @@ def differences(drawn, read, near):
         for end in tendon["ends"]:
             side = min((0, 1), key=lambda i: math.dist(places[i], (end["x_m"], end["y_m"])))
             if end["kind"] != record["ends"][side]:
-                yield f"{mark}: end {end['kind']!r}, drawn {record['ends'][near]!r}"
+                yield f"{mark}: end {end['kind']!r}, drawn {record['ends'][side]!r}"
         if len(tendon["points"]) != len(record["points"]):
             yield f"{mark}: {len(tendon['points'])} points, drawn {len(record['points'])}"
         for point in record["points"]:

@@ -249,6 +249,7 @@ mod tests {
                 height_m: 0.1,
                 rotation_rad: 0.0,
                 hidden: false,
+                within: None,
             }));
         }
         let job_file = JobFile::default();

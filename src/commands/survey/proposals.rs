@@ -11,6 +11,7 @@ use crate::commands::{units, work};
 use crate::drawing::{Drawing, UnitFrom};
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
+use crate::patterns::pattern_of;
 
 /// Keys of `[layers]` by what is told from a layer's name and contents, in the order they are tried.
 const ROLES: [&str; 9] = [
@@ -43,7 +44,7 @@ pub(super) fn proposals(
             .collect();
         names.sort_unstable();
         if !names.is_empty() && !is_fitted(drawing, job, role) {
-            let patterns: Vec<String> = names.iter().map(|name| globset::escape(name)).collect();
+            let patterns: Vec<String> = names.iter().map(|name| pattern_of(name)).collect();
             proposals.insert(
                 format!("layers.{role}"),
                 Proposal {
@@ -198,7 +199,7 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             .blocks_at_ends
             .keys()
             .filter(says)
-            .map(|block| globset::escape(block))
+            .map(|block| pattern_of(block))
             .collect();
         if !names.is_empty() {
             proposals.insert(

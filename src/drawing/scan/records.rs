@@ -90,7 +90,7 @@ impl<'a> Pass<'a> {
                 self.scan.blocks.push(BlockEntry {
                     name: plain_name(&name),
                     base: self.gathered.base,
-                    entries: Vec::new(),
+                    ..BlockEntry::default()
                 });
                 self.block_open = true;
                 self.handles.settle(false);
@@ -127,7 +127,8 @@ impl<'a> Pass<'a> {
         let own = self.section == Section::Entities && self.names.is_own(layer);
         self.handles.settle_entity(own, held.handle);
         if own {
-            self.scan.own_marks.push(held.start..end);
+            // A comment behind it is not ours.
+            self.scan.own_marks.push(held.start..self.last_end);
             return;
         }
         let in_block = self.section == Section::Blocks;
@@ -136,15 +137,16 @@ impl<'a> Pass<'a> {
         }
         let is_insert = self.types.is(held.type_id, b"INSERT");
         let block = match held.name {
-            Some(name) if is_insert => self.block_names.id(name),
-            _ => 0,
+            Some(name) if is_insert && !name.is_empty() => to_u32(self.block_names.id(name)),
+            // No block has this number.
+            _ => u32::MAX,
         };
         let mut entry = Entry {
             start: held.start,
             end,
             layer,
             number: 0,
-            block: to_u32(block),
+            block,
             is_insert,
         };
         // A constant attribute is written nowhere but in its block's definition; any other is a form to fill in.
@@ -156,6 +158,12 @@ impl<'a> Pass<'a> {
             {
                 entry.number = to_u32(block.entries.len()) + 1;
                 block.entries.push(entry);
+                for name in self.attribute_layers.drain(..) {
+                    let own_layer = self.names.id(name, &self.scan.code_page);
+                    if own_layer != layer && !block.attribute_layers.contains(&own_layer) {
+                        block.attribute_layers.push(own_layer);
+                    }
+                }
             }
             return;
         }
