@@ -137,6 +137,11 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         results.push(result);
         findings.extend(found);
     }
+    let mean_service_kn: Vec<Option<f64>> = results
+        .iter()
+        .map(|result: &TendonResult| Some(result.forces.as_ref()?.later?.mean_service_kn))
+        .collect();
+    findings.extend(checks::required::per_width(&floor, &mean_service_kn));
     findings.sort_by(in_order);
     let assumptions = assumptions(&floor, &results, job);
     Analysis {

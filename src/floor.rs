@@ -10,6 +10,7 @@ mod heights;
 mod index;
 mod labels;
 mod layers;
+mod lengths;
 mod levels;
 mod lines;
 mod marks;
@@ -24,5 +25,6 @@ mod slab;
 mod types;
 
 pub use assemble::read;
+pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line, thickness_of_line};
 pub use rules::RULES;
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

@@ -6,16 +6,23 @@
 use std::collections::BTreeSet;
 use std::fmt;
 
+mod automaton;
 mod default;
+mod expressions;
+pub mod families;
 pub mod key;
 pub mod keys;
+mod pattern;
+mod patterns;
 mod problems;
 mod reading;
 mod resolved;
+mod strand_names;
 mod strands;
 mod values;
 mod writing;
 
+pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
 pub use reading::read;
 pub use resolved::{

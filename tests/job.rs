@@ -105,6 +105,10 @@ fn the_proposed_file_parses_to_the_defaults_as_it_is_and_with_every_default_set(
                 count += 1;
                 set.push_str(line.trim_start_matches('#'));
             }
+            // The further lines of a list that has one entry a line.
+            None if line.starts_with("#  ") || line == "#]" => {
+                set.push_str(line.trim_start_matches('#'));
+            }
             _ => set.push_str(line),
         }
         set.push('\n');
@@ -271,6 +275,74 @@ fn each_other_mistake_is_told_apart() {
         remedy,
         "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
     );
+}
+
+#[test]
+fn each_mistake_in_a_pattern_is_told_at_its_line() {
+    for (text, words) in [
+        (
+            "[labels]\nmark_patterns = [3]\n",
+            "cannot hold the number 3",
+        ),
+        ("[labels]\nmark_patterns = []\n", "empty list"),
+        (
+            "[labels]\nmark_patterns = ['^(?<mrak>D\\d+)$']\n",
+            "unknown group `mrak`",
+        ),
+        (
+            "[height]\npatterns = ['^H$(?<value>\\d+)']\n",
+            "can never match: no line",
+        ),
+        (
+            "[height]\npatterns = ['^(?<value>H)\\d+$']\n",
+            "can never match a number",
+        ),
+        (
+            "[height]\npatterns = [{ name = \"ours\" }]\n",
+            "no `expression`",
+        ),
+        (
+            "[height]\npatterns = [{ expresion = 'x', expression = '(?<value>\\d+)' }]\n",
+            "unknown key `expresion`",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', strands = 1 }]\n",
+            "unknown key `strands`",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', unit = \"inch\" }]\n",
+            "does not know \"inch\"",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', unit = \"kN\" }]\n",
+            "does not know \"kN\"",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', from = \"bottom\" }]\n",
+            "does not know \"bottom\"",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<force>\\d+) KIPS' }]\n",
+            "no unit that fits",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<force_per_width>\\d+)', unit = \"kip\" }]\n",
+            "no unit that fits",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<tendons>\\d+)T', strands = 1.5 }]\n",
+            "not a whole number",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<tendons>\\d+)T', strand = \"13\" }]\n",
+            "not known",
+        ),
+    ] {
+        let (line, found, expected, remedy) = only(text);
+        assert!(found.contains(words), "{text}: {found}");
+        assert_eq!(line, 2, "{text}");
+        assert!(!expected.is_empty() && !remedy.is_empty(), "{text}");
+    }
 }
 
 #[test]

@@ -66,6 +66,8 @@ impl Meant {
             tendons: 1,
             strands: Some(5),
             strand: Some("12.7".to_owned()),
+            required_kn: None,
+            required_kn_per_m: None,
             ends: [end(path.place_at(0.0)), end(path.place_at(path.length_m()))],
             points: points
                 .into_iter()

@@ -28,6 +28,8 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
         tendons: 2,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [(ends[0], 0.0), (ends[1], 10.0)].map(|(kind, x)| End {
             kind,
             place: at(x, y),

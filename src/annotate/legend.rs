@@ -7,7 +7,7 @@ use super::{layers, ramp, words};
 use crate::analysis::Analysis;
 use crate::drawing::{Align, Drawn};
 use crate::finding::Level;
-use crate::job::{Datum, FromFace, Job, Wobble};
+use crate::job::{Datum, FromFace, Job, Pattern, Wobble};
 
 /// Heading of legend and table; no file name and no date, so that the same floor gives the same drawing.
 pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
@@ -100,10 +100,12 @@ fn inputs(job: &Job) -> Vec<String> {
     let from = match height.from {
         FromFace::Soffit => "above the local soffit",
         FromFace::Top => "below the top of the slab",
+        FromFace::NearerFace => "from the nearer face",
     };
     let to = match height.datum {
         Datum::Centroid => "centroid of the strands",
         Datum::DuctUnderside => "underside of the duct",
+        Datum::Chair => "top of the chair, which is the underside of the duct",
     };
     let long_term = &job.long_term;
     vec![
@@ -127,8 +129,28 @@ fn inputs(job: &Job) -> Vec<String> {
             100.0 * long_term.relaxation_1000h,
             long_term.relaxation_factor
         ),
-        format!("Heights read as {} {from} to the {to}", height.unit.name()),
+        format!(
+            "Heights read as {} {from} to the {to}{}",
+            height.unit.name(),
+            by_pattern(job)
+        ),
     ]
+}
+
+/// Patterns that say otherwise.
+fn by_pattern(job: &Job) -> String {
+    let patterns = job.conventions.height_patterns.iter();
+    let own: Vec<&str> = patterns
+        .filter(|pattern| {
+            pattern.unit.is_some() || pattern.from.is_some() || pattern.datum.is_some()
+        })
+        .map(Pattern::label)
+        .collect();
+    if own.is_empty() {
+        String::new()
+    } else {
+        format!(", except by the job's patterns {}", own.join(", "))
+    }
 }
 
 /// A column of lines that grows downwards.

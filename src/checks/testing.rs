@@ -40,6 +40,8 @@ pub(super) fn along(path: Path) -> Tendon {
         tendons: 1,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [
             end(EndKind::Live, path.start()),
             end(EndKind::Dead, path.end()),

@@ -9,6 +9,7 @@ use crate::job;
 use crate::terminal::Terminal;
 
 mod contents;
+mod labels;
 mod proposals;
 mod readings;
 mod words;

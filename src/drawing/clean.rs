@@ -50,6 +50,9 @@ pub(super) struct Cleaner<'a> {
     pub(super) guessed: usize,
 }
 
+/// Flag of an attribute without a place; the format itself has no such flag.
+pub(super) const NOWHERE: i32 = 64;
+
 const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
 const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
 
@@ -141,7 +144,12 @@ impl<'a> Cleaner<'a> {
                     self.line(b"66", b"1");
                     sequence = true;
                 }
-                self.line(b"0", record.type_name);
+                // A constant attribute is a text that its block brings along.
+                let written = match record.type_name {
+                    b"ATTDEF" => &b"TEXT"[..],
+                    name => name,
+                };
+                self.line(b"0", written);
                 if first {
                     let number = self.kept.len() + 1;
                     self.line(b"5", format!("{number:X}").as_bytes());
@@ -208,10 +216,11 @@ impl<'a> Cleaner<'a> {
                     return Err(expected(tag, "a whole number"));
                 };
                 let number = number.clamp(i64::from(i16::MIN), i64::from(i16::MAX));
-                self.line(
-                    tag.code.to_string().as_bytes(),
-                    number.to_string().as_bytes(),
-                );
+                let code = match (tag.code, record.type_name) {
+                    (74, b"ATTDEF") => 73,
+                    (code, _) => code,
+                };
+                self.line(code.to_string().as_bytes(), number.to_string().as_bytes());
                 record.justified |= matches!(tag.code, 72..=74) && number != 0;
             }
             Use::Number => {
@@ -241,7 +250,7 @@ impl<'a> Cleaner<'a> {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
-            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"INSERT" => &[10, 20],
+            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"ATTDEF" | b"MTEXT" | b"INSERT" => &[10, 20],
             _ => &[],
         };
         if let Some(code) = record.half {
@@ -255,8 +264,8 @@ impl<'a> Cleaner<'a> {
             return Err((record.type_name, record.start, found));
         }
         if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
-            // Its value counts, but it stands nowhere: as good as invisible.
-            self.line(b"70", b"1");
+            // Its value counts, but it stands nowhere.
+            self.line(b"70", NOWHERE.to_string().as_bytes());
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.
@@ -385,7 +394,9 @@ fn used(type_name: &[u8], code: i32) -> Use {
         b"POLYLINE" => matches!(code, 10 | 20 | 30),
         b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
         b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
-        b"TEXT" | b"ATTRIB" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50),
+        b"TEXT" | b"ATTRIB" | b"ATTDEF" => {
+            matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50 | 51)
+        }
         b"MTEXT" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 44 | 50),
         b"INSERT" => matches!(code, 10 | 20 | 30 | 41..=45 | 50),
         _ => false,
@@ -397,8 +408,9 @@ fn used(type_name: &[u8], code: i32) -> Use {
     let short = match type_name {
         b"LWPOLYLINE" | b"POLYLINE" | b"VERTEX" => code == 70,
         b"SPLINE" => matches!(code, 70 | 71),
-        b"TEXT" => matches!(code, 72 | 73),
-        b"ATTRIB" => matches!(code, 70 | 72 | 74),
+        b"TEXT" => matches!(code, 71..=73),
+        b"ATTRIB" => matches!(code, 70..=72 | 74),
+        b"ATTDEF" => matches!(code, 71 | 72 | 74),
         b"MTEXT" => code == 71,
         b"INSERT" => matches!(code, 70 | 71),
         _ => false,
@@ -407,8 +419,8 @@ fn used(type_name: &[u8], code: i32) -> Use {
         return Use::Short;
     }
     let text = match type_name {
-        b"TEXT" => code == 1,
-        b"MTEXT" => matches!(code, 1 | 3),
+        b"TEXT" | b"ATTDEF" => code == 1,
+        b"MTEXT" => matches!(code, 1 | 3 | 7),
         b"ATTRIB" => matches!(code, 1 | 2),
         b"INSERT" => code == 2,
         _ => false,

@@ -5,8 +5,9 @@ use std::collections::{BTreeMap, BTreeSet};
 use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
+use super::clean::NOWHERE;
 use super::convert::line_of;
-use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
+use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::names::folded;
 use super::placing::Placing;
 use super::rules::{
@@ -55,6 +56,11 @@ impl Book<'_> {
 
     fn block(&self, name: u32) -> Option<usize> {
         self.block_of_name.get(name as usize).copied().flatten()
+    }
+
+    fn style(&self, name: &str) -> Style {
+        let name = folded(&super::text_decode::plain_name(name));
+        self.scan.styles.get(&name).copied().unwrap_or_default()
     }
 
     /// The number of a layer by its bytes.
@@ -131,10 +137,13 @@ impl<'b> Gatherer<'b> {
         }
         match &record.entity {
             EntityType::Text(text) => {
-                self.text(of_text(text, &frame.placing), layer, frame.within, handle);
+                let lettering = of_text(text, &frame.placing);
+                self.text(lettering, layer, frame.within, handle, false);
             }
             EntityType::MText(text) => {
-                self.text(of_mtext(text, &frame.placing), layer, frame.within, handle);
+                let style = self.book.style(&text.text_style_name);
+                let lettering = of_mtext(text, style, &frame.placing);
+                self.text(lettering, layer, frame.within, handle, false);
             }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
@@ -173,6 +182,7 @@ impl<'b> Gatherer<'b> {
         layer: u32,
         within: Option<usize>,
         handle: &str,
+        hidden: bool,
     ) {
         if lettering.content.trim().is_empty() {
             return;
@@ -186,6 +196,7 @@ impl<'b> Gatherer<'b> {
             corners: lettering.corners,
             height_m: lettering.height_m,
             rotation_rad: lettering.rotation_rad,
+            hidden,
         });
     }
 
@@ -320,7 +331,7 @@ impl<'b> Gatherer<'b> {
         self.open.pop();
     }
 
-    /// An insert's visible attributes as texts.
+    /// An insert's attributes as texts, also those that it does not show.
     fn attributes(
         &mut self,
         record: &Record,
@@ -335,19 +346,15 @@ impl<'b> Gatherer<'b> {
         for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
             let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
-            if attribute.flags & 1 != 0 || !self.book.wants(layer) {
+            if attribute.flags & NOWHERE != 0 || !self.book.wants(layer) {
                 continue;
             }
             let handle = match own {
                 Some(own) if frame.handle.is_none() => own,
                 _ => handle,
             };
-            self.text(
-                of_attribute(attribute, &frame.placing),
-                layer,
-                within,
-                handle,
-            );
+            let lettering = of_attribute(attribute, &frame.placing);
+            self.text(lettering, layer, within, handle, attribute.flags & 1 != 0);
         }
     }
 

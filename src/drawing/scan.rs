@@ -4,6 +4,7 @@ mod records;
 
 use super::code_page::CodePage;
 use super::handles::{Handles, parse_handle};
+use super::lettering::Style;
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
 use super::tags::{BadTag, Tag, Tags, place_in_words};
@@ -68,6 +69,7 @@ enum Record {
     Layer,
     BlockHome,
     Dimstyle,
+    Style,
     Block,
     Entity,
     /// VERTEX, ATTRIB or SEQEND of the entity before it.
@@ -89,6 +91,7 @@ struct Gathered<'a> {
     flags: i64,
     base: [f64; 2],
     pointers: [Option<&'a [u8]>; 3],
+    style: Style,
 }
 
 #[expect(
@@ -159,7 +162,7 @@ impl<'a> Pass<'a> {
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             // Coordinates are nearly all of a file and say nothing here.
-            10..=61 | 210..=239 if self.record != Record::Block => {}
+            10..=61 | 210..=239 if !matches!(self.record, Record::Block | Record::Style) => {}
             _ => self.record_tag(tag),
         }
         Ok(())
@@ -223,6 +226,8 @@ impl<'a> Pass<'a> {
             8 if held.layer.is_none() => held.layer = Some(tag.word()),
             10 => held.base[0] = tag.float().unwrap_or(0.0),
             20 => held.base[1] = tag.float().unwrap_or(0.0),
+            41 => held.style.width_factor = tag.float().unwrap_or(1.0),
+            50 => held.style.oblique_deg = tag.float().unwrap_or(0.0),
             62 => held.colour = tag.integer(),
             66 => held.followed = tag.integer().is_some_and(|n| n != 0),
             67 => held.paper = tag.integer() == Some(1),

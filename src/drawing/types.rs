@@ -103,6 +103,8 @@ pub struct Text {
     pub height_m: f64,
     /// Direction of the base line, radians from x.
     pub rotation_rad: f64,
+    /// An attribute that the drawing does not show: it may name a tendon, but nobody need read it.
+    pub hidden: bool,
 }
 
 /// A block insert.

@@ -71,7 +71,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
 
     let (texts, mut readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
     for (text, reading) in texts.iter().zip(&mut readings) {
-        reading.weigh(thickness.at(text.place), conventions.height.from);
+        reading.weigh(thickness.at(text.place));
     }
     let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
     let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
@@ -104,7 +104,12 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             path: line.path.clone(),
             tendons: said.tendons.unwrap_or(1),
             strands: said.strands,
-            strand: said.strand.clone(),
+            strand: said.strand.as_ref().map(|written| {
+                let known = job.system.strand_named(written);
+                known.map_or_else(|| written.clone(), |size| size.name.clone())
+            }),
+            required_kn: said.required_kn,
+            required_kn_per_m: said.required_kn_per_m,
             ends: line_ends[at],
             points,
         });

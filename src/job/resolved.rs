@@ -1,7 +1,6 @@
 //! The job as every stage reads it: all values present, in internal units.
 
-use regex::Regex;
-
+use super::pattern::Pattern;
 use crate::units::LengthUnit;
 
 /// Everything a job decides.
@@ -34,16 +33,19 @@ pub struct Conventions {
     pub live_end_blocks: Vec<String>,
     /// Names of the blocks that mark a dead end.
     pub dead_end_blocks: Vec<String>,
-    /// Patterns of marks and strand counts; groups `mark`, `tendons`, `strands`, `strand`, each optional.
-    pub mark_patterns: Vec<Regex>,
+    /// Patterns of marks, strand counts and required forces; groups `mark`, `tendons`, `strands`, `strand`, `force`,
+    /// `force_per_width`, each optional.
+    pub mark_patterns: Vec<Pattern>,
     /// Patterns of heights; groups `word` (see `high_words`, `low_words`; optional) and `value`.
-    pub height_patterns: Vec<Regex>,
+    pub height_patterns: Vec<Pattern>,
     /// Words for a high point.
     pub high_words: Vec<String>,
     /// Words for a low point.
     pub low_words: Vec<String>,
+    /// Words that stand for mid-depth, whatever the thickness.
+    pub middle_words: Vec<String>,
     /// Patterns of slab thickness; group `value`.
-    pub thickness_patterns: Vec<Regex>,
+    pub thickness_patterns: Vec<Pattern>,
     /// Unit of thickness texts.
     pub thickness_unit: LengthUnit,
     /// What a height number means.
@@ -107,6 +109,8 @@ pub enum Datum {
     Centroid,
     /// The duct's underside.
     DuctUnderside,
+    /// The top of the chair that the duct stands on, which is the duct's underside.
+    Chair,
 }
 
 /// The face a height is measured from.
@@ -116,6 +120,8 @@ pub enum FromFace {
     Soffit,
     /// The top of the slab, downwards.
     Top,
+    /// Whichever of the two is nearer, towards the slab's middle.
+    NearerFace,
 }
 
 /// The slab, where the drawing does not say.
@@ -130,6 +136,8 @@ pub struct SlabJob {
 pub struct StrandSize {
     /// Name as written in marks, such as `12.7`.
     pub name: String,
+    /// Other names, such as `0.5` for inches; signs, blanks and the form of a fraction do not matter.
+    pub aliases: Vec<String>,
     /// Steel area, mm².
     pub area_mm2: f64,
     /// Characteristic tensile strength, MPa.

@@ -2,9 +2,9 @@
 
 use std::ops::Range;
 
-use regex::Regex;
 use toml::de::{DeArray, DeValue};
 
+use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
 use crate::patterns::Patterns;
@@ -68,12 +68,8 @@ impl Reader {
                     );
                 }
             }
-            (Kind::Expressions { groups, place }, DeValue::Array(items)) => {
-                if let Some(words) = self.words(key, entry, items) {
-                    let patterns = words
-                        .iter()
-                        .filter_map(|(word, span)| self.expression(key, groups, word, span))
-                        .collect();
+            (Kind::Expressions { place, .. }, DeValue::Array(items)) => {
+                if let Some(patterns) = self.patterns(key, entry, items) {
                     (place.set)(&mut self.job, patterns);
                 }
             }
@@ -82,6 +78,13 @@ impl Reader {
                 let mut all = (place.get)(&self.job).clone();
                 for size in given {
                     match all.iter_mut().find(|known| known.name == size.name) {
+                        // Who replaces a size and names no aliases keeps those that it has.
+                        Some(known) if size.aliases.is_empty() => {
+                            *known = StrandSize {
+                                aliases: std::mem::take(&mut known.aliases),
+                                ..size
+                            };
+                        }
                         Some(known) => *known = size,
                         None => all.push(size),
                     }
@@ -183,50 +186,6 @@ impl Reader {
             );
         }
         (self.problems.len() == before).then_some(words)
-    }
-
-    pub(super) fn expression(
-        &mut self,
-        key: &Key,
-        groups: &[&str],
-        pattern: &str,
-        span: &Range<usize>,
-    ) -> Option<Regex> {
-        let named = |regex: &Regex| {
-            regex
-                .capture_names()
-                .flatten()
-                .any(|name| groups.contains(&name))
-        };
-        match Regex::new(pattern) {
-            Ok(regex) if named(&regex) => Some(regex),
-            Ok(_) => {
-                self.mistake(
-                    span.clone(),
-                    format!(
-                        "this pattern of `{}` has no group that says what it found",
-                        key.name
-                    ),
-                    format!("expected {}", key.expected()),
-                    format!(
-                        "put the part that is wanted in (?<{}>...)",
-                        groups.first().unwrap_or(&"value")
-                    ),
-                );
-                None
-            }
-            Err(error) => {
-                let reason = error.to_string();
-                let reason = reason.lines().last().unwrap_or_default();
-                self.mistake(
-                    span.clone(),
-                    format!("`{}` holds a broken regular expression: {}", key.name, plain(reason.trim_start_matches("error: "))),
-                    format!("expected {}", key.expected()),
-                    "put the pattern in 'single quotes', where a backslash needs no doubling, and close every bracket",
-                );
-                None
-            }
-        }
     }
 }
 

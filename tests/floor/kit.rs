@@ -173,6 +173,7 @@ impl Board {
             ],
             height_m,
             rotation_rad,
+            hidden: false,
         });
     }
 

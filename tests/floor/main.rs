@@ -15,6 +15,7 @@ mod joining;
 mod kit;
 mod labels;
 mod laws;
+mod lettering;
 mod levels;
 mod marks;
 mod settling;

@@ -193,6 +193,8 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         tendons: 1,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends,
         points,
     };

@@ -6,7 +6,7 @@ use std::collections::BTreeSet;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
-use super::readings::{Reading, reading};
+use super::readings::{Reading, hint, reading};
 use crate::drawing::{Drawing, Shape};
 use crate::job::Job;
 
@@ -41,6 +41,16 @@ pub(super) struct LayerContents {
     pub(super) heights: usize,
     /// Texts that say strands.
     pub(super) strands: usize,
+    /// Numbers of its heights and thicknesses, as millimetres.
+    pub(super) heights_mm: Vec<f64>,
+    pub(super) thicknesses_mm: Vec<f64>,
+    /// Texts that would be heights, or thicknesses, in inches.
+    pub(super) inched: usize,
+    pub(super) inched_thicknesses: usize,
+    /// Words beside numbers that are words of heights, though not of the job's.
+    pub(super) words: BTreeMap<String, usize>,
+    /// Texts of families that a survey offers, by the family's name.
+    pub(super) offered: BTreeMap<&'static str, usize>,
     /// A few different texts, with what each says.
     pub(super) samples: BTreeMap<String, Reading>,
 }
@@ -58,10 +68,13 @@ impl Contents {
                 Reading::Thickness(_) => layer.thicknesses += 1,
                 Reading::Height(_) => layer.heights += 1,
                 Reading::Mark { strands: true, .. } => layer.strands += 1,
+                Reading::Offered(family) => *layer.offered.entry(family).or_default() += 1,
                 Reading::Mark { .. } | Reading::Unread => {}
             }
+            layer.hints(&text.content, &said, job);
             keep_sample(&mut layer.samples, &text.content, said);
         }
+        contents.layers.values_mut().for_each(LayerContents::settle);
         contents
     }
 
@@ -122,6 +135,44 @@ impl Contents {
     }
 }
 
+impl LayerContents {
+    /// What a text says beyond how it is read: how large its number is, and what it might be.
+    fn hints(&mut self, text: &str, said: &Reading, job: &Job) {
+        let hint = hint(text, said, job);
+        self.heights_mm.extend(hint.height_mm);
+        self.thicknesses_mm.extend(hint.thickness_mm);
+        self.inched += usize::from(hint.inched);
+        self.inched_thicknesses += usize::from(hint.inched_thickness);
+        if let Some(word) = hint.word {
+            *self.words.entry(word).or_default() += 1;
+        }
+    }
+
+    /// `T165` beside `B30` is no thickness but a top.
+    fn settle(&mut self) {
+        if self.thicknesses > 0 && self.words.keys().any(|word| word == "B") {
+            self.words.insert("T".to_owned(), self.thicknesses);
+            self.heights_mm.append(&mut self.thicknesses_mm);
+            self.inched += std::mem::take(&mut self.inched_thicknesses);
+            self.thicknesses = 0;
+        }
+    }
+
+    /// Texts that would be heights by another unit or other words.
+    pub(super) fn likely_heights(&self) -> usize {
+        self.inched + self.words.values().sum::<usize>()
+    }
+
+    /// Texts of families that count strands or tendons.
+    pub(super) fn offered_counts(&self) -> usize {
+        let counting = self
+            .offered
+            .iter()
+            .filter(|(name, _)| **name != "other mark");
+        counting.map(|(_, count)| count).sum()
+    }
+}
+
 fn ends(shape: &Shape) -> impl Iterator<Item = [f64; 2]> {
     [shape.path.start(), shape.path.end()]
         .into_iter()
@@ -136,7 +187,7 @@ fn keep_sample(samples: &mut BTreeMap<String, Reading>, text: &str, said: Readin
     if samples.len() <= SAMPLES {
         return;
     }
-    let unread = |reading: &Reading| *reading == Reading::Unread;
+    let unread = |reading: &Reading| matches!(reading, Reading::Offered(_) | Reading::Unread);
     let many = samples.values().filter(|reading| unread(reading)).count() > SAMPLES / 2;
     let last = samples
         .iter()

@@ -5,6 +5,7 @@ use std::collections::BTreeMap;
 use serde_json::{Value, json};
 
 use super::contents::{Contents, LayerContents};
+use super::labels;
 use crate::commands::job_file::JobFile;
 use crate::commands::{units, work};
 use crate::drawing::{Drawing, UnitFrom};
@@ -57,6 +58,8 @@ pub(super) fn proposals(
     if let Some(proposal) = unit(drawing, contents, job, &proposals) {
         proposals.insert("drawing.unit".to_owned(), proposal);
     }
+    let of_labels = labels::proposals(drawing, contents, job, &proposals);
+    proposals.extend(of_labels);
     keep_given(job_file, &mut proposals);
     proposals
 }
@@ -124,13 +127,13 @@ fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
         return None;
     }
     let open = held.open_m.len();
-    if most(held.thicknesses, held.texts) {
+    if most(held.thicknesses + held.inched_thicknesses, held.texts) {
         return Some("slab_zone");
     }
-    if most(held.strands, held.texts) {
+    if most(held.strands + held.offered_counts(), held.texts) {
         return Some("marks");
     }
-    if most(held.heights, held.texts) && held.texts >= 3 && open == 0 {
+    if most(held.heights + held.likely_heights(), held.texts) && held.texts >= 3 && open == 0 {
         return Some("heights");
     }
     if says(&["OPENING", "VOID", "HOLE"]) {

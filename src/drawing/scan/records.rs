@@ -1,6 +1,7 @@
 //! What the scan keeps of each record, settled when the next one begins.
 
 use super::super::handles::parse_handle;
+use super::super::names::folded;
 use super::super::text_decode::plain_name;
 use super::{BlockEntry, Entry, Gathered, Pass, Record, Section};
 
@@ -18,6 +19,7 @@ impl<'a> Pass<'a> {
             b"LAYER" => Record::Layer,
             b"BLOCK_RECORD" => Record::BlockHome,
             b"DIMSTYLE" => Record::Dimstyle,
+            b"STYLE" => Record::Style,
             _ => Record::None,
         };
         self.gathered = Gathered::default();
@@ -62,6 +64,13 @@ impl<'a> Pass<'a> {
                 self.handles.settle(false);
             }
             Record::Layer => self.end_layer(),
+            Record::Style => {
+                let raw = self.gathered.name.unwrap_or_default();
+                let (name, _) = self.scan.code_page.decode(raw);
+                let name = folded(&plain_name(&name));
+                self.scan.styles.entry(name).or_insert(self.gathered.style);
+                self.handles.settle(false);
+            }
             Record::BlockHome => {
                 let held = &self.gathered;
                 if held
@@ -140,7 +149,9 @@ impl<'a> Pass<'a> {
             block,
             is_insert,
         };
-        let reads = self.types.is_read(held.type_id);
+        // A constant attribute is written nowhere but in its block's definition; any other is a form to fill in.
+        let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
+        let reads = self.types.is_read(held.type_id) && !is_form;
         if in_block {
             if let Some(block) = self.scan.blocks.last_mut()
                 && reads

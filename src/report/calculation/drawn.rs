@@ -23,6 +23,16 @@ pub(super) fn part(
         plain(&tendon.layer)
     )];
     text.push(strands(job, tendon));
+    if let Some(required_kn) = tendon.required_kn {
+        text.push(format!(
+            "  required by its label: {required_kn:.1} kN after losses, all tendons of the line\n"
+        ));
+    }
+    if let Some(required) = tendon.required_kn_per_m {
+        text.push(format!(
+            "  required by its label: {required:.1} kN/m after losses\n"
+        ));
+    }
     let ends = tendon.ends.map(|end| match end.kind {
         Some(EndKind::Live) => "live",
         Some(EndKind::Dead) => "dead",
