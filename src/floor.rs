@@ -21,6 +21,7 @@ mod readings;
 mod rules;
 mod settle;
 mod slab;
+mod symbols;
 mod types;
 
 pub use assemble::read;

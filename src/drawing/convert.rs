@@ -92,6 +92,28 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
                 .segments(&piece, TOLERANCE_M, &mut pieces);
             (ShapeKind::Circle, true)
         }
+        EntityType::Solid(solid) => {
+            let corners = [
+                &solid.first_corner,
+                &solid.second_corner,
+                &solid.fourth_corner,
+                &solid.third_corner,
+            ];
+            let plane = Placing::extruded(normal(&solid.extrusion_direction), solid.first_corner.z);
+            filled(corners, &placing.after(&plane), &mut pieces);
+            (ShapeKind::Solid, true)
+        }
+        EntityType::Trace(trace) => {
+            let corners = [
+                &trace.first_corner,
+                &trace.second_corner,
+                &trace.fourth_corner,
+                &trace.third_corner,
+            ];
+            let plane = Placing::extruded(normal(&trace.extrusion_direction), trace.first_corner.z);
+            filled(corners, &placing.after(&plane), &mut pieces);
+            (ShapeKind::Solid, true)
+        }
         EntityType::Spline(spline) => {
             let curve = curve_of(spline).ok_or("its points, knots and degree make no curve")?;
             curve.segments(placing, TOLERANCE_M, &mut pieces);
@@ -161,6 +183,13 @@ fn polyline(vertices: &[Vertex], closed: bool, placing: &Placing, out: &mut Vec<
         }
         bulge = next_bulge;
     }
+}
+
+/// The outline of a SOLID or TRACE, whose third and fourth corners stand crosswise in the file; of three corners, the
+/// fourth stands on the third.
+fn filled(corners: [&dxf::Point; 4], placing: &Placing, out: &mut Vec<Segment>) {
+    let vertices = corners.map(|corner| (flat(corner), 0.0));
+    polyline(&vertices, true, placing, out);
 }
 
 fn curve_of(spline: &DxfSpline) -> Option<Spline> {

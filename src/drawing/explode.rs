@@ -7,15 +7,16 @@ use geo::Coord;
 
 use super::convert::line_of;
 use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
-use super::names::folded;
+use super::looks::Looks;
 use super::placing::Placing;
 use super::rules::{
     BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, BLOCK_TOO_MANY, ENTITY_DAMAGED,
 };
 use super::scan::Scan;
 use super::windows::Record;
-use super::{Drawing, Insert, Shape, Text};
+use super::{Drawing, Insert, Look, Shape, Text};
 use crate::finding::{Finding, Level};
+use crate::patterns::folded;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
@@ -73,7 +74,17 @@ struct Frame<'f> {
     handle: Option<&'f str>,
     /// Layer of the insert, which layer 0 of its block takes.
     layer: Option<u32>,
+    /// How the insert is seen, which what is by block takes.
+    look: Look,
     /// The innermost insert among those of the drawing.
+    within: Option<usize>,
+}
+
+/// What a shape, text or insert belongs to, and how it is seen.
+#[derive(Debug, Clone, Copy)]
+struct Place {
+    layer: u32,
+    look: Look,
     within: Option<usize>,
 }
 
@@ -81,6 +92,8 @@ struct Frame<'f> {
 #[derive(Debug)]
 pub(super) struct Gatherer<'b> {
     book: &'b Book<'b>,
+    /// Colours and linetypes.
+    pub(super) looks: Looks<'b>,
     unit: Placing,
     zero_layer: Option<u32>,
     /// Shapes, texts and inserts so far.
@@ -94,9 +107,10 @@ pub(super) struct Gatherer<'b> {
 
 impl<'b> Gatherer<'b> {
     /// An empty drawing with this unit.
-    pub(super) fn new(book: &'b Book<'b>, unit_m: f64) -> Self {
+    pub(super) fn new(book: &'b Book<'b>, looks: Looks<'b>, unit_m: f64) -> Self {
         Self {
             book,
+            looks,
             unit: Placing::scaled(unit_m),
             zero_layer: book.layers.get("0").copied(),
             drawing: Drawing::default(),
@@ -113,6 +127,7 @@ impl<'b> Gatherer<'b> {
             placing: self.unit,
             handle: None,
             layer: None,
+            look: Looks::outermost(),
             within: None,
         };
         self.place(record, &frame);
@@ -129,18 +144,20 @@ impl<'b> Gatherer<'b> {
         if !self.book.wants(layer) {
             return;
         }
+        let worn = Place {
+            layer,
+            look: self.looks.seen(&record.kept.worn, layer, frame.look),
+            within: frame.within,
+        };
         match &record.entity {
-            EntityType::Text(text) => {
-                self.text(of_text(text, &frame.placing), layer, frame.within, handle);
-            }
-            EntityType::MText(text) => {
-                self.text(of_mtext(text, &frame.placing), layer, frame.within, handle);
-            }
+            EntityType::Text(text) => self.text(of_text(text, &frame.placing), worn, handle),
+            EntityType::MText(text) => self.text(of_mtext(text, &frame.placing), worn, handle),
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
                     layer: self.book.layer_name(layer),
-                    within: frame.within,
+                    look: worn.look,
+                    within: worn.within,
                     kind: line.kind,
                     path: line.path,
                     closed: line.closed,
@@ -167,20 +184,15 @@ impl<'b> Gatherer<'b> {
         }
     }
 
-    fn text(
-        &mut self,
-        lettering: super::lettering::Lettering,
-        layer: u32,
-        within: Option<usize>,
-        handle: &str,
-    ) {
+    fn text(&mut self, lettering: super::lettering::Lettering, place: Place, handle: &str) {
         if lettering.content.trim().is_empty() {
             return;
         }
         self.drawing.texts.push(Text {
             handle: handle.to_owned(),
-            layer: self.book.layer_name(layer),
-            within,
+            layer: self.book.layer_name(place.layer),
+            look: place.look,
+            within: place.within,
             content: lettering.content,
             place: lettering.place,
             corners: lettering.corners,
@@ -199,7 +211,16 @@ impl<'b> Gatherer<'b> {
     ) {
         let block = self.book.block(record.kept.block);
         let wanted = self.book.wants(layer);
-        self.attributes(record, insert, layer, handle, frame);
+        let look = self.looks.seen(&record.kept.worn, layer, frame.look);
+        let seen = Place {
+            layer,
+            look,
+            // The insert itself, if it is kept, is the next one.
+            within: wanted
+                .then_some(self.drawing.inserts.len())
+                .or(frame.within),
+        };
+        self.attributes(record, insert, seen, handle, frame);
         let holds = block.is_some_and(|block| self.book.holds_wanted.get(block) == Some(&true));
         if !wanted && !holds {
             return;
@@ -250,6 +271,7 @@ impl<'b> Gatherer<'b> {
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
                         layer: self.book.layer_name(layer),
+                        look,
                         within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
                         place: cell.place(Coord { x: 0.0, y: 0.0 }),
@@ -274,6 +296,7 @@ impl<'b> Gatherer<'b> {
                     placing,
                     handle: Some(handle),
                     layer: Some(layer),
+                    look,
                     within: if wanted {
                         self.drawing.inserts.len().checked_sub(1)
                     } else {
@@ -325,29 +348,26 @@ impl<'b> Gatherer<'b> {
         &mut self,
         record: &Record,
         insert: &DxfInsert,
-        layer: u32,
+        seen: Place,
         handle: &str,
         frame: &Frame<'_>,
     ) {
-        // The insert itself, if it is kept, is the next one.
-        let kept = self.book.wants(layer);
-        let within = kept.then_some(self.drawing.inserts.len()).or(frame.within);
-        for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
-            let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
-            let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
+        for (attribute, own) in insert.attributes().zip(&record.kept.attributes) {
+            let named = own.layer.as_deref().and_then(|raw| self.book.layer_id(raw));
+            let layer = self.layer_in(named.unwrap_or(seen.layer), Some(seen.layer));
             if attribute.flags & 1 != 0 || !self.book.wants(layer) {
                 continue;
             }
-            let handle = match own {
+            let place = Place {
+                layer,
+                look: self.looks.seen(&own.worn, layer, seen.look),
+                within: seen.within,
+            };
+            let handle = match &own.handle {
                 Some(own) if frame.handle.is_none() => own,
                 _ => handle,
             };
-            self.text(
-                of_attribute(attribute, &frame.placing),
-                layer,
-                within,
-                handle,
-            );
+            self.text(of_attribute(attribute, &frame.placing), place, handle);
         }
     }
 

@@ -119,13 +119,15 @@ pub(super) struct BlockEntry {
 }
 
 /// Entity types that are read.
-pub(super) const READ_TYPES: [&[u8]; 9] = [
+pub(super) const READ_TYPES: [&[u8]; 11] = [
     b"LINE",
     b"LWPOLYLINE",
     b"POLYLINE",
     b"ARC",
     b"CIRCLE",
     b"SPLINE",
+    b"SOLID",
+    b"TRACE",
     b"TEXT",
     b"MTEXT",
     b"INSERT",

@@ -37,7 +37,7 @@ pub(super) fn labels<'a>(
         .filter(|(at, text)| !taken.contains(at) && usable(text))
         .map(|(_, text)| text)
         .filter(|text| {
-            let label = roles.of(&text.layer).label;
+            let label = roles.of(&text.layer, text.look).label;
             label.heights || label.marks || label.level_lines
         })
         .collect();
@@ -46,7 +46,7 @@ pub(super) fn labels<'a>(
     let mut labels = Labels::default();
     let mut findings = Vec::new();
     for text in texts {
-        let label = roles.of(&text.layer).label;
+        let label = roles.of(&text.layer, text.look).label;
         let as_height = || height(&text.content, conventions).filter(|_| label.heights);
         let as_mark = || mark(&text.content, &conventions.mark_patterns).filter(|_| label.marks);
         if let Some(reading) = as_height() {

@@ -103,6 +103,7 @@ impl<'a> Pass<'a> {
             self.names.describe(id, |layer| {
                 layer.in_table = true;
                 layer.handle = text(held.handle);
+                layer.linetype = held.linetype.map(<[u8]>::to_vec);
                 layer.colour = held.colour;
                 layer.flags = held.flags;
             });
