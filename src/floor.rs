@@ -26,4 +26,5 @@ mod types;
 
 pub use assemble::read;
 pub use rules::RULES;
+pub use symbols::{EndWords, Figure, figures};
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

@@ -8,9 +8,13 @@ use crate::drawing::{self, Wanted};
 use crate::job;
 use crate::terminal::Terminal;
 
+mod at_ends;
 mod contents;
+mod directions;
 mod proposals;
 mod readings;
+mod roles;
+mod symbols;
 mod words;
 
 use contents::Contents;

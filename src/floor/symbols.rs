@@ -11,7 +11,8 @@ use super::layers::{Roles, names};
 use super::types::EndKind;
 use crate::drawing::{Drawing, Insert};
 use crate::job::Conventions;
-pub(crate) use words::Words;
+pub use shapes::{Figure, figures};
+pub use words::EndWords;
 
 /// A symbol on the plan.
 #[derive(Debug, Clone)]
@@ -40,6 +41,19 @@ pub(super) enum Sign {
     Word,
 }
 
+impl Sign {
+    /// What a shape of this word is.
+    fn of(word: &str) -> Self {
+        match word {
+            "solid" => Self::Solid,
+            "triangle" => Self::Triangle,
+            "square" => Self::Square,
+            "circle" => Self::Circle,
+            _ => Self::Bar,
+        }
+    }
+}
+
 /// All symbols of a drawing, and what of it they consist of.
 #[derive(Debug, Default)]
 pub(super) struct Symbols<'a> {
@@ -55,7 +69,7 @@ impl<'a> Symbols<'a> {
     /// Gathers the symbols: blocks whatever their layer, words on layers of ends, tendons and labels, shapes on layers of
     /// ends.
     pub(super) fn new(drawing: &'a Drawing, conventions: &'a Conventions, roles: &Roles) -> Self {
-        let words = Words::new(conventions);
+        let words = EndWords::new(conventions);
         let mut symbols = Self::default();
         let within = symbols.blocks(drawing, conventions, &words);
         symbols.words(drawing, roles, &words, &within);
@@ -81,7 +95,7 @@ impl<'a> Symbols<'a> {
         &mut self,
         drawing: &'a Drawing,
         conventions: &Conventions,
-        words: &Words,
+        words: &EndWords,
     ) -> Vec<Option<usize>> {
         let live = names(&conventions.live_end_blocks);
         let dead = names(&conventions.dead_end_blocks);
@@ -134,7 +148,7 @@ impl<'a> Symbols<'a> {
         &mut self,
         drawing: &'a Drawing,
         roles: &Roles,
-        words: &Words,
+        words: &EndWords,
         of_insert: &[Option<usize>],
     ) {
         for (at, text) in drawing.texts.iter().enumerate() {
@@ -185,29 +199,27 @@ impl<'a> Symbols<'a> {
             within.is_none_or(|insert| of_insert.get(insert).is_none_or(Option::is_none))
         };
         let largest_m = 2.0 * conventions.end_reach_m;
-        let found = shapes::figures(drawing, conventions.join_gap_m, largest_m, |shape| {
+        let found = figures(drawing, conventions.join_gap_m, largest_m, |shape| {
             let role = roles.of(&shape.layer, shape.look);
             // On a layer of tendons too, an open line is a tendon.
             role.ends && free(shape.within) && (role.run.is_none() || shape.closed)
         });
         for figure in found {
-            let told = figure.words.iter().find_map(|(word, sign)| {
-                let kind = if live.iter().any(|known| known == word) {
-                    EndKind::Live
-                } else if dead.iter().any(|known| known == word) {
-                    EndKind::Dead
+            let told = figure.words.iter().find_map(|word| {
+                let is = |known: &String| known == word;
+                if live.iter().any(is) {
+                    Some((EndKind::Live, *word))
                 } else {
-                    return None;
-                };
-                Some((kind, *word, *sign))
+                    dead.iter().any(is).then_some((EndKind::Dead, *word))
+                }
             });
-            let Some((kind, word, sign)) = told else {
+            let Some((kind, word)) = told else {
                 continue;
             };
             let handle = figure.pieces.first().and_then(|at| drawing.shapes.get(*at));
             self.list.push(Symbol {
                 kind: Some(kind),
-                sign,
+                sign: Sign::of(word),
                 place: middle(&figure.corners),
                 corners: Some(figure.corners),
                 handle: handle.map_or("", |shape| shape.handle.as_str()),

@@ -134,7 +134,7 @@ impl Reader {
                 format!(
                     "`{}` holds a broken shell pattern: {}",
                     key.name,
-                    plain(&reason.to_string())
+                    plain(&reason)
                 ),
                 "expected *, ?, [abc] or {this,that}",
                 "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",

@@ -6,18 +6,18 @@ use geo::Coord;
 use super::super::layers::sound;
 use super::super::order::{by_handle, by_place};
 use super::super::pieces::{Joint, chains, returns};
-use super::Sign;
 use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::geometry::{Path, Segment, distance_m, turn_rad};
 
-/// A shape by what it may be called, the most telling word first.
+/// A small shape that may mark an end.
 #[derive(Debug, Clone)]
-pub(super) struct Figure {
-    pub(super) words: Vec<(&'static str, Sign)>,
-    /// Corners of its box, upright in the plan.
-    pub(super) corners: [Coord<f64>; 4],
-    /// Numbers of the shapes that it is drawn with.
-    pub(super) pieces: Vec<usize>,
+pub struct Figure {
+    /// What it may be called, of [`crate::job::END_SHAPES`], the most telling word first.
+    pub words: Vec<&'static str>,
+    /// Corners of its box, upright in the plan, metres.
+    pub corners: [Coord<f64>; 4],
+    /// Numbers of the drawing's shapes that it is drawn with.
+    pub pieces: Vec<usize>,
 }
 
 /// How far sides, radii and angles may differ and still count as equal, of their size.
@@ -29,8 +29,9 @@ const CORNER_RAD: f64 = 0.1;
 /// Rings of this many corners at one distance from their middle are circles.
 const ROUND: usize = 8;
 
-/// Shapes no larger than `largest_m` that `fits` lets through; pieces that meet end to end are one.
-pub(super) fn figures(
+/// Circles, triangles, squares, bars and solids no larger than `largest_m` that `fits` lets through; pieces that meet end
+/// to end within `gap_m` are one.
+pub fn figures(
     drawing: &Drawing,
     gap_m: f64,
     largest_m: f64,
@@ -79,7 +80,7 @@ pub(super) fn figures(
 }
 
 /// What a line may be called; nothing where it is none of the shapes.
-pub(crate) fn words_of(path: &Path, closed: bool, filled: bool) -> Vec<(&'static str, Sign)> {
+fn words_of(path: &Path, closed: bool, filled: bool) -> Vec<&'static str> {
     let outline = if closed {
         outline(path)
     } else {
@@ -87,9 +88,9 @@ pub(crate) fn words_of(path: &Path, closed: bool, filled: bool) -> Vec<(&'static
             return Vec::new();
         };
         let straight = distance_m(start, end) >= 0.99 * path.length_m();
-        straight.then_some(("bar", Sign::Bar))
+        straight.then_some("bar")
     };
-    let solid = filled.then_some(("solid", Sign::Solid));
+    let solid = filled.then_some("solid");
     solid.into_iter().chain(outline).collect()
 }
 
@@ -114,26 +115,22 @@ fn figure(path: &Path, closed: bool, filled: bool, pieces: Vec<usize>) -> Option
     })
 }
 
-fn outline(path: &Path) -> Option<(&'static str, Sign)> {
+fn outline(path: &Path) -> Option<&'static str> {
     if is_round(path) {
-        return Some(("circle", Sign::Circle));
+        return Some("circle");
     }
     let corners = corners(path)?;
     match *corners.as_slice() {
-        [_, _, _] => Some(("triangle", Sign::Triangle)),
+        [_, _, _] => Some("triangle"),
         [a, b, c, d] => {
             let (along_m, across_m) = (
                 distance_m(a, b) + distance_m(c, d),
                 distance_m(b, c) + distance_m(d, a),
             );
             let longer = along_m.max(across_m) > BAR * along_m.min(across_m);
-            Some(if longer {
-                ("bar", Sign::Bar)
-            } else {
-                ("square", Sign::Square)
-            })
+            Some(if longer { "bar" } else { "square" })
         }
-        _ if corners.len() >= ROUND && at_one_distance(&corners) => Some(("circle", Sign::Circle)),
+        _ if corners.len() >= ROUND && at_one_distance(&corners) => Some("circle"),
         _ => None,
     }
 }
@@ -218,8 +215,7 @@ mod tests {
 
     fn called(points: &[(f64, f64)], closed: bool) -> Vec<&'static str> {
         let points: Vec<Coord<f64>> = points.iter().map(|&(x, y)| Coord { x, y }).collect();
-        let words = words_of(&Path::through(&points), closed, false);
-        words.into_iter().map(|(word, _)| word).collect()
+        words_of(&Path::through(&points), closed, false)
     }
 
     #[test]
@@ -254,12 +250,9 @@ mod tests {
             Segment::from_bulge(a, b, 1.0),
             Segment::from_bulge(b, a, 1.0),
         ]);
-        assert_eq!(words_of(&dot, true, false), [("circle", Sign::Circle)]);
+        assert_eq!(words_of(&dot, true, false), ["circle"]);
         let points = [a, b, Coord { x: 0.0, y: 0.1 }, a];
         let words = words_of(&Path::through(&points), true, true);
-        assert_eq!(
-            words,
-            [("solid", Sign::Solid), ("triangle", Sign::Triangle)]
-        );
+        assert_eq!(words, ["solid", "triangle"]);
     }
 }

@@ -6,15 +6,16 @@ use crate::patterns::folded;
 
 /// The job's words, as they are compared.
 #[derive(Debug, Clone)]
-pub(crate) struct Words {
+pub struct EndWords {
     live: Vec<String>,
     dead: Vec<String>,
     /// Whether some word holds a digit; if none does, most labels are passed over at a glance.
     digits: bool,
 }
 
-impl Words {
-    pub(crate) fn new(conventions: &Conventions) -> Self {
+impl EndWords {
+    /// The words of a job.
+    pub fn new(conventions: &Conventions) -> Self {
         let plain = |words: &[String]| words.iter().map(|word| plain(word)).collect();
         let (live, dead): (Vec<String>, Vec<String>) = (
             plain(&conventions.live_end_words),
@@ -25,7 +26,7 @@ impl Words {
     }
 
     /// What one line says.
-    pub(crate) fn kind(&self, line: &str) -> Option<EndKind> {
+    pub fn kind(&self, line: &str) -> Option<EndKind> {
         if !self.digits && has_digit(line) {
             return None;
         }
@@ -71,7 +72,7 @@ mod tests {
     #[test]
     fn words_are_read_as_drafters_write_them() {
         let mut conventions = Job::default().conventions;
-        let words = Words::new(&conventions);
+        let words = EndWords::new(&conventions);
         for (text, kind) in [
             ("LE", Some(EndKind::Live)),
             (" l.e. ", Some(EndKind::Live)),
@@ -91,6 +92,6 @@ mod tests {
         );
         assert_eq!(words.found_in("DE\n"), Some((EndKind::Dead, true)));
         conventions.live_end_words = vec!["J1".to_owned()];
-        assert_eq!(Words::new(&conventions).kind("j1"), Some(EndKind::Live));
+        assert_eq!(EndWords::new(&conventions).kind("j1"), Some(EndKind::Live));
     }
 }
