@@ -1,6 +1,6 @@
 //! What stands at the ends of lines: blocks, their attributes, words, shapes; and what a legend says of them.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 use rstar::RTree;
@@ -32,6 +32,8 @@ pub(super) struct AtEnds {
     pub(super) insert_layers: BTreeMap<usize, String>,
     /// By number of a shape that is a line: how many of its ends have something that marks them.
     pub(super) marked: BTreeMap<usize, usize>,
+    /// Numbers of texts that stand at an end: they are no legend.
+    texts: BTreeSet<usize>,
     /// What legends say of blocks.
     pub(super) legend_blocks: BTreeMap<String, EndKind>,
     /// What legends say of shapes.
@@ -69,6 +71,7 @@ impl AtEnds {
                 });
                 let figure = nearest(&shapes, at, reach_m, |_| true);
                 found.block(drawing, block);
+                found.texts.extend(word);
                 if let Some(text) = word.and_then(|text| drawing.texts.get(text)) {
                     let key = (text.layer.clone(), text.content.trim().to_owned());
                     *found.words.entry(key).or_default() += 1;
@@ -113,10 +116,13 @@ impl AtEnds {
         shapes: &RTree<Placed>,
         figures: &[Figure],
     ) {
-        for text in &drawing.texts {
+        for (number, text) in drawing.texts.iter().enumerate() {
             let Some(kind) = hinted(&text.content).filter(|_| text.content.contains(' ')) else {
                 continue;
             };
+            if text.within.is_some() || self.texts.contains(&number) {
+                continue;
+            }
             let reach_m = LEGEND * text.height_m;
             // A legend's words stand level with its symbol and to the right of it.
             let level = |place: Coord<f64>| {

@@ -86,15 +86,15 @@ fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
     let lines = line_role(name, held, longest_m);
     let mut roles: Vec<&'static str> = lines.into_iter().collect();
     let tendons = matches!(lines, Some("banded" | "distributed"));
-    let some = |part: usize| part > 0 && part * 5 >= held.texts;
-    if most(held.strands, held.texts) || tendons && some(held.strands) {
+    // Texts beside their own tendons, or on a layer of texts alone.
+    let labels = tendons || held.open_m.is_empty() && held.closed_m.is_empty();
+    let some = |part: usize| part > 0 && 8 * part >= held.texts;
+    let marks = most(held.strands, held.texts) || labels && some(held.strands);
+    if marks {
         roles.push("marks");
     }
-    let alone = held.open_m.is_empty() || tendons;
-    if alone
-        && held.heights >= 3
-        && (most(held.heights, held.texts) || tendons && some(held.heights))
-    {
+    let heights = most(held.heights, held.texts) || (tendons || marks) && some(held.heights);
+    if heights && held.heights >= 3 && (tendons || held.open_m.is_empty()) {
         roles.push("heights");
     }
     if held.blocks_at_ends > 0 && (roles.is_empty() || tendons) {
