@@ -221,7 +221,7 @@ impl<'a> Cleaner<'a> {
             return Ok(());
         }
         match (tag.code, record.type_name) {
-            (5, b"VERTEX") => {}
+            (5 | 6 | 62 | 420, b"VERTEX") => {}
             (5, b"ATTRIB") => {
                 if let Some(own) = kept.attributes.last_mut() {
                     own.handle = own.handle.take().or(written_handle(tag.word()));
@@ -233,7 +233,6 @@ impl<'a> Cleaner<'a> {
                     own.layer = Some(tag.word().to_vec());
                 }
             }
-            (6 | 62 | 420, b"VERTEX") => {}
             (6 | 62 | 420, b"ATTRIB") => {
                 if let Some(own) = kept.attributes.last_mut() {
                     own.worn.note(tag);

@@ -92,26 +92,8 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
                 .segments(&piece, TOLERANCE_M, &mut pieces);
             (ShapeKind::Circle, true)
         }
-        EntityType::Solid(solid) => {
-            let corners = [
-                &solid.first_corner,
-                &solid.second_corner,
-                &solid.fourth_corner,
-                &solid.third_corner,
-            ];
-            let plane = Placing::extruded(normal(&solid.extrusion_direction), solid.first_corner.z);
-            filled(corners, &placing.after(&plane), &mut pieces);
-            (ShapeKind::Solid, true)
-        }
-        EntityType::Trace(trace) => {
-            let corners = [
-                &trace.first_corner,
-                &trace.second_corner,
-                &trace.fourth_corner,
-                &trace.third_corner,
-            ];
-            let plane = Placing::extruded(normal(&trace.extrusion_direction), trace.first_corner.z);
-            filled(corners, &placing.after(&plane), &mut pieces);
+        EntityType::Solid(_) | EntityType::Trace(_) => {
+            filled(&record.entity, placing, &mut pieces);
             (ShapeKind::Solid, true)
         }
         EntityType::Spline(spline) => {
@@ -187,9 +169,31 @@ fn polyline(vertices: &[Vertex], closed: bool, placing: &Placing, out: &mut Vec<
 
 /// The outline of a SOLID or TRACE, whose third and fourth corners stand crosswise in the file; of three corners, the
 /// fourth stands on the third.
-fn filled(corners: [&dxf::Point; 4], placing: &Placing, out: &mut Vec<Segment>) {
+fn filled(entity: &EntityType, placing: &Placing, out: &mut Vec<Segment>) {
+    let (corners, extrusion) = match entity {
+        EntityType::Solid(solid) => (
+            [
+                &solid.first_corner,
+                &solid.second_corner,
+                &solid.fourth_corner,
+                &solid.third_corner,
+            ],
+            &solid.extrusion_direction,
+        ),
+        EntityType::Trace(trace) => (
+            [
+                &trace.first_corner,
+                &trace.second_corner,
+                &trace.fourth_corner,
+                &trace.third_corner,
+            ],
+            &trace.extrusion_direction,
+        ),
+        _ => return,
+    };
+    let plane = Placing::extruded(normal(extrusion), corners[0].z);
     let vertices = corners.map(|corner| (flat(corner), 0.0));
-    polyline(&vertices, true, placing, out);
+    polyline(&vertices, true, &placing.after(&plane), out);
 }
 
 fn curve_of(spline: &DxfSpline) -> Option<Spline> {

@@ -120,8 +120,8 @@ impl<'a> Symbols<'a> {
                 continue;
             };
             let told = |insert: &Insert| {
-                let asked = insert.attributes.iter().filter(|(tag, _)| tags.has(tag));
-                asked.filter_map(|(_, value)| words.kind(value)).next()
+                let mut asked = insert.attributes.iter().filter(|(tag, _)| tags.has(tag));
+                asked.find_map(|(_, value)| words.kind(value))
             };
             of_insert.push(Some(self.list.len()));
             self.list.push(Symbol {

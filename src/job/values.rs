@@ -61,34 +61,9 @@ impl Reader {
                     );
                 }
             }
-            (
-                Kind::Choices {
-                    words: known,
-                    place,
-                },
-                DeValue::Array(items),
-            ) => {
-                if let Some(words) = self.words(key, entry, items) {
-                    let mut chosen = Vec::new();
-                    for (word, span) in words {
-                        if known.contains(&word.as_str()) {
-                            chosen.push(word);
-                        } else {
-                            let near = nearest(&word, known.iter().copied());
-                            self.mistake(
-                                span,
-                                format!("`{}` does not know \"{}\"", key.name, plain(&word)),
-                                format!("expected some of {}", quoted(known)),
-                                format!(
-                                    "type for example `{} = [\"{}\"]`",
-                                    key.name,
-                                    near.or(known.first().copied()).unwrap_or_default()
-                                ),
-                            );
-                        }
-                    }
-                    (place.set)(&mut self.job, chosen);
-                }
+            (Kind::Choices { words, place }, DeValue::Array(items)) => {
+                let chosen = self.choices(key, words, entry, items);
+                (place.set)(&mut self.job, chosen);
             }
             (Kind::Expressions { groups, place }, DeValue::Array(items)) => {
                 if let Some(words) = self.words(key, entry, items) {
@@ -117,6 +92,32 @@ impl Reader {
                 format!("type for example `{}`", key.example()),
             ),
         }
+    }
+
+    /// Words of a list, each one of those that are known.
+    fn choices(
+        &mut self,
+        key: &Key,
+        known: &[&str],
+        entry: &Entry<'_>,
+        items: &DeArray<'_>,
+    ) -> Vec<String> {
+        let mut chosen = Vec::new();
+        for (word, span) in self.words(key, entry, items).unwrap_or_default() {
+            if known.contains(&word.as_str()) {
+                chosen.push(word);
+                continue;
+            }
+            let near = nearest(&word, known.iter().copied());
+            let example = near.or(known.first().copied()).unwrap_or_default();
+            self.mistake(
+                span,
+                format!("`{}` does not know \"{}\"", key.name, plain(&word)),
+                format!("expected some of {}", quoted(known)),
+                format!("type for example `{} = [\"{example}\"]`", key.name),
+            );
+        }
+        chosen
     }
 
     /// Whether a shell pattern, or a pattern of layers, can be understood.

@@ -89,7 +89,9 @@ impl Contents {
         }
         for (layer, looks) in &contents.looks {
             let mut whole = Held::default();
-            looks.values().for_each(|held| whole.add(held));
+            for held in looks.values() {
+                whole.add(held);
+            }
             contents.layers.insert(layer.clone(), whole);
         }
         contents

@@ -99,6 +99,9 @@ fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
     lines
 }
 
+/// Rows shown of what stands at line ends.
+const SHOWN: usize = 24;
+
 /// What stands at the ends of lines.
 fn at_ends(contents: &Contents) -> Vec<String> {
     let found = &contents.at_ends;
@@ -127,7 +130,6 @@ fn at_ends(contents: &Contents) -> Vec<String> {
         );
         return lines;
     }
-    const SHOWN: usize = 24;
     let more = rows.len().saturating_sub(SHOWN);
     rows.truncate(SHOWN);
     rows.insert(0, vec!["At line ends".to_owned(), "ends".to_owned()]);
