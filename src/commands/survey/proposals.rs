@@ -7,7 +7,7 @@ use serde_json::{Value, json};
 use super::at_ends::hinted;
 use super::contents::Contents;
 use super::directions::two_ways;
-use super::roles::{Guesses, guesses};
+use super::roles::{Guesses, guesses, is_grid};
 use super::symbols;
 use crate::commands::job_file::JobFile;
 use crate::commands::{units, work};
@@ -24,10 +24,10 @@ pub(super) fn proposals(
     job_file: &JobFile,
 ) -> BTreeMap<String, Proposal> {
     let job = &job_file.resolved.job;
-    let mut proposals = BTreeMap::new();
+    let mut proposals = symbols::proposals(contents, job);
     let named = work::wanted(job.layer_patterns());
     let mut guesses = guesses(drawing, contents, |layer| is_free(drawing, &named, layer));
-    end_layers(contents, job, &named, &mut guesses);
+    end_layers(contents, job, &named, &proposals, &mut guesses);
     guesses.retain(|role, _| !is_fitted(drawing, job, role));
     directions(contents, &mut guesses, &mut proposals);
     for (role, patterns) in &guesses {
@@ -39,7 +39,6 @@ pub(super) fn proposals(
             },
         );
     }
-    proposals.extend(symbols::proposals(contents, job));
     if let Some(proposal) = unit(drawing, contents, job, &proposals) {
         proposals.insert("drawing.unit".to_owned(), proposal);
     }
@@ -89,15 +88,30 @@ fn is_free(drawing: &Drawing, named: &Wanted, layer: &str) -> bool {
     !named.has(layer) && drawing.layers.iter().any(|known| known.name == layer)
 }
 
-/// Layers of no role on which words or shapes that mark ends stand, beside those already guessed.
-fn end_layers(contents: &Contents, job: &Job, named: &Wanted, guesses: &mut Guesses) {
+/// Layers that no pattern fits on which words that mark ends stand, or shapes that were proposed.
+fn end_layers(
+    contents: &Contents,
+    job: &Job,
+    named: &Wanted,
+    proposals: &BTreeMap<String, Proposal>,
+    guesses: &mut Guesses,
+) {
     let words = EndWords::new(&job.conventions);
     let found = &contents.at_ends;
     let lettered = found
         .words
         .keys()
         .filter(|(_, word)| words.kind(word).is_some() || hinted(word).is_some());
-    let drawn = found.shapes.keys().map(|(layer, _)| layer);
+    let proposed = |shape: &str| {
+        let keys = ["ends.live_shapes", "ends.dead_shapes"].into_iter();
+        let values = keys.filter_map(|key| proposals.get(key)?.value.as_array());
+        values.flatten().any(|value| value == shape)
+    };
+    let drawn = found
+        .shapes
+        .keys()
+        .filter(|(layer, shape)| !is_grid(layer) && proposed(shape));
+    let drawn = drawn.map(|(layer, _)| layer);
     for layer in lettered.map(|(layer, _)| layer).chain(drawn) {
         if !named.has(layer) {
             let ends = guesses.entry("ends").or_default();

@@ -72,12 +72,8 @@ pub(super) fn guesses(
 /// is the longest closed line of the drawing, where closed lines are to be told apart by their size.
 fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
     let most = |part: usize, all: usize| all > 0 && part * 2 > all;
-    let upper = name.to_uppercase();
     // Grid lines carry bubbles at their ends and numbers in them: they look like tendons and heights.
-    if ["GRID", "AXIS", "AXES"]
-        .iter()
-        .any(|word| upper.contains(word))
-    {
+    if is_grid(name) {
         return Vec::new();
     }
     if most(held.thicknesses, held.texts) {
@@ -101,6 +97,14 @@ fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
         roles.push("ends");
     }
     roles
+}
+
+/// Whether a layer is named for grid lines.
+pub(super) fn is_grid(layer: &str) -> bool {
+    let layer = layer.to_uppercase();
+    ["GRID", "AXIS", "AXES"]
+        .iter()
+        .any(|word| layer.contains(word))
 }
 
 /// What its lines are.

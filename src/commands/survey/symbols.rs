@@ -161,11 +161,26 @@ fn shapes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
     if !(read.live_end_shapes.is_empty() && read.dead_end_shapes.is_empty()) {
         return;
     }
-    let found: BTreeSet<&str> = contents
+    let blocks = [read.live_end_blocks.as_slice(), &read.dead_end_blocks].concat();
+    let by_block = names(&blocks);
+    let told = |key: &str| proposals.contains_key(key);
+    if contents
         .at_ends
-        .shapes
+        .blocks
         .keys()
-        .map(|(_, word)| *word)
+        .any(|block| by_block.has(block))
+        || ["ends.live_blocks", "ends.dead_blocks", "ends.blocks"]
+            .into_iter()
+            .any(told)
+    {
+        return;
+    }
+    let drawn = contents.at_ends.shapes.iter();
+    let drawn = drawn.filter(|((layer, _), _)| !super::roles::is_grid(layer));
+    let most = drawn.clone().map(|(_, count)| *count).max().unwrap_or(0);
+    let found: BTreeSet<&str> = drawn
+        .filter(|(_, count)| 5 * **count >= most)
+        .map(|((_, word), _)| *word)
         .collect();
     let legend = &contents.at_ends.legend_shapes;
     let by_legend = found.iter().any(|word| legend.contains_key(word));
