@@ -135,7 +135,7 @@ impl Reader {
                 format!(
                     "`{}` holds a broken shell pattern: {}",
                     key.name,
-                    plain(&reason)
+                    plain(&reason.to_string())
                 ),
                 "expected *, ?, [abc] or {this,that}",
                 "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",

@@ -4,7 +4,7 @@ use geo::Coord;
 
 use super::contents::{Contents, Held};
 use crate::geometry::turn_rad;
-use crate::selector::Selectors;
+use crate::patterns::Selectors;
 
 /// Lines drawn for whole bands lie this far apart, metres.
 const BANDS_M: f64 = 3.0;

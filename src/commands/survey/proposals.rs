@@ -15,7 +15,7 @@ use crate::drawing::{Drawing, UnitFrom, Wanted};
 use crate::floor::EndWords;
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
-use crate::selector::Selectors;
+use crate::patterns::{Selectors, pattern_of};
 
 /// What to set in the job file, by path of the key.
 pub(super) fn proposals(
@@ -115,7 +115,7 @@ fn end_layers(
     for layer in lettered.map(|(layer, _)| layer).chain(drawn) {
         if !named.has(layer) {
             let ends = guesses.entry("ends").or_default();
-            ends.insert(globset::escape(layer));
+            ends.insert(pattern_of(layer));
         }
     }
 }

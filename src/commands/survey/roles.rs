@@ -4,6 +4,7 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use super::contents::{Contents, Held};
 use crate::drawing::{Drawing, Look};
+use crate::patterns::pattern_of;
 
 /// Patterns by key of `[layers]`.
 pub(super) type Guesses = BTreeMap<&'static str, BTreeSet<String>>;
@@ -21,7 +22,7 @@ pub(super) fn guesses(
         .flat_map(|held| held.closed_m.iter().copied())
         .fold(0.0, f64::max);
     for (layer, held) in contents.layers.iter().filter(|(name, _)| is_free(name)) {
-        let name = globset::escape(layer);
+        let name = pattern_of(layer);
         let looks = contents.looks.get(layer);
         let several = looks.filter(|looks| {
             let lines: BTreeSet<Option<&str>> = looks
@@ -51,7 +52,7 @@ pub(super) fn guesses(
                     .colour
                     .filter(|_| others.iter().all(|other| other.colour != look.colour));
                 let by_linetype = others.iter().all(|other| other.linetype != look.linetype);
-                let linetype = format!("@linetype={}", globset::escape(drawing.linetype(*look)));
+                let linetype = format!("@linetype={}", pattern_of(drawing.linetype(*look)));
                 let seen = match (by_colour, look.colour) {
                     (Some(index), _) => format!("@colour={index}"),
                     (None, _) if by_linetype => linetype,

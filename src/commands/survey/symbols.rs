@@ -8,7 +8,7 @@ use super::at_ends::hinted;
 use super::contents::Contents;
 use crate::floor::{EndKind, EndWords};
 use crate::job::{Job, Proposal};
-use crate::selector::Names;
+use crate::patterns::{Names, pattern_of};
 
 /// What to set below `[ends]`, by path of the key.
 pub(super) fn proposals(contents: &Contents, job: &Job) -> BTreeMap<String, Proposal> {
@@ -68,7 +68,7 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
         put(
             proposals,
             &format!("{word}_blocks"),
-            &blocks.map(|block| globset::escape(block)).collect(),
+            &blocks.map(|block| pattern_of(block)).collect(),
             "No block at a line end fits the default; the name or the legend says so.",
         );
     }
@@ -96,8 +96,8 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
         if known.has(block) || hinted(block).is_some() {
             continue;
         }
-        blocks.insert(globset::escape(block));
-        tags.insert(globset::escape(tag));
+        blocks.insert(pattern_of(block));
+        tags.insert(pattern_of(tag));
         if said.kind(value).is_none()
             && let Some(words) = new_words.get_mut(&(kind == EndKind::Live))
         {
