@@ -22,9 +22,11 @@ mod readings;
 mod rules;
 mod settle;
 mod slab;
+mod symbols;
 mod types;
 
 pub use assemble::read;
 pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line, thickness_of_line};
 pub use rules::RULES;
+pub use symbols::{EndWords, Figure, figures};
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

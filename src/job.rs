@@ -26,8 +26,8 @@ pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
 pub use reading::read;
 pub use resolved::{
-    Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
+    LongTermMethod, Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
 };
 pub use writing::{Proposal, file};
 

@@ -357,6 +357,30 @@ fn a_syntax_error_hides_no_other_mistake() {
 }
 
 #[test]
+fn layer_patterns_and_shapes_are_checked_at_their_line() {
+    let (line, found, expected, _) = only("[layers]\nbanded = [\"PT\",\n\"PT@colour=300\"]\n");
+    assert_eq!(line, 3);
+    assert!(found.contains("@colour=300") && expected.contains("@linetype="));
+    let (_, found, ..) = only("[layers]\nends = [\"PT@color=1@weight=2\"]\n");
+    assert!(found.contains("@weight="), "{found}");
+    let (_, found, _, remedy) = only("[ends]\nlive_shapes = [\"triangel\"]\n");
+    assert!(found.contains("triangel") && remedy.contains("\"triangle\""));
+    let text = "[layers]\ntendons = []\nbanded = [\"0@linetype=DASHED*@colour=3\"]\n[ends]\ndead_shapes = [\"bar\", \"solid\"]\n\
+        [drawing]\nbanded_along_deg = 90\n";
+    let job = job::read("job", text).expect("fine").job;
+    assert!(
+        (job.conventions.banded_along_rad.expect("given") - std::f64::consts::FRAC_PI_2).abs()
+            < 1e-12
+    );
+    assert_eq!(job.conventions.dead_end_shapes, ["bar", "solid"]);
+    assert!(
+        job.layer_patterns()
+            .contains(&"0@linetype=DASHED*@colour=3".to_owned())
+    );
+    only("[layers]\nbanded = []\n");
+}
+
+#[test]
 fn given_values_reach_the_job_in_internal_units() {
     let text = "[drawing]\nunit = \"in\"\n[height]\nunit = \"in\"\ndatum = \"duct-underside\"\n\
         [stressing]\ndraw_in_mm = 8\n[slab]\nthickness_mm = 225\n\

@@ -155,10 +155,15 @@ mod tests {
     use super::*;
     use crate::checks::testing::{along, forces, straight, worked};
     use crate::geometry::Path;
+    use crate::losses::LaterLosses;
 
     #[test]
     fn the_force_of_all_tendons_of_a_line_meets_what_the_label_requires() {
-        let forces = forces();
+        let mut forces = forces();
+        forces.later = Some(LaterLosses {
+            mean_service_kn: 530.0,
+            ..LaterLosses::default()
+        });
         let mut tendon = straight(20.0);
         tendon.tendons = 3;
         for (required_kn, short) in [(1590.0, false), (1591.0, false), (1593.0, true)] {

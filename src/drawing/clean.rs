@@ -19,10 +19,48 @@ pub(super) struct Kept {
     pub(super) handle: Option<String>,
     /// Number of the block's name, for an insert.
     pub(super) block: u32,
-    /// For an insert's attributes, in order: layer as written, handle.
-    pub(super) attributes: Vec<(Option<Vec<u8>>, Option<String>)>,
+    /// An insert's attributes, in order.
+    pub(super) attributes: Vec<KeptAttribute>,
     /// Offset of the record in the file.
     pub(super) start: usize,
+    /// Colour and linetype as written.
+    pub(super) worn: Worn,
+}
+
+/// An insert's attribute: what the library loses of it.
+#[derive(Debug, Clone, Default)]
+pub(super) struct KeptAttribute {
+    /// Layer as written.
+    pub(super) layer: Option<Vec<u8>>,
+    /// Handle as for [`Kept`].
+    pub(super) handle: Option<String>,
+    /// Colour and linetype as written.
+    pub(super) worn: Worn,
+}
+
+/// Colour and linetype as an entity writes them; what it leaves out is its layer's.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
+pub(super) struct Worn {
+    /// Group 62: 0 by block, 256 by layer.
+    pub(super) colour: Option<i64>,
+    /// Whether group 420 gives a true colour.
+    pub(super) true_colour: bool,
+    /// Where in the file the linetype's name stands: first byte and past the last.
+    pub(super) linetype: Option<(usize, usize)>,
+}
+
+impl Worn {
+    fn note(&mut self, tag: &Tag<'_>) {
+        match tag.code {
+            6 => {
+                let name = tag.value_range();
+                self.linetype = Some((name.start, name.end));
+            }
+            62 => self.colour = tag.integer(),
+            420 => self.true_colour = true,
+            _ => {}
+        }
+    }
 }
 
 /// Why a record was left out.
@@ -156,7 +194,7 @@ impl<'a> Cleaner<'a> {
                     sequence = record.type_name == b"POLYLINE";
                 }
                 if record.type_name == b"ATTRIB" {
-                    kept.attributes.push((None, None));
+                    kept.attributes.push(KeptAttribute::default());
                 }
                 continue;
             }
@@ -191,18 +229,24 @@ impl<'a> Cleaner<'a> {
             return Ok(());
         }
         match (tag.code, record.type_name) {
-            (5, b"VERTEX") => {}
+            (5 | 6 | 62 | 420, b"VERTEX") => {}
             (5, b"ATTRIB") => {
-                if let Some((_, handle)) = kept.attributes.last_mut() {
-                    *handle = handle.take().or(written_handle(tag.word()));
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.handle = own.handle.take().or(written_handle(tag.word()));
                 }
             }
             (5, _) => kept.handle = kept.handle.take().or(written_handle(tag.word())),
             (8, b"ATTRIB") => {
-                if let Some((layer, _)) = kept.attributes.last_mut() {
-                    *layer = Some(tag.word().to_vec());
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.layer = Some(tag.word().to_vec());
                 }
             }
+            (6 | 62 | 420, b"ATTRIB") => {
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.worn.note(tag);
+                }
+            }
+            (6 | 62 | 420, _) => kept.worn.note(tag),
             _ => {}
         }
         match used(record.type_name, tag.code) {
@@ -250,7 +294,8 @@ impl<'a> Cleaner<'a> {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
-            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"ATTDEF" | b"MTEXT" | b"INSERT" => &[10, 20],
+            b"LWPOLYLINE" | b"VERTEX" | b"SOLID" | b"TRACE" | b"TEXT" | b"ATTDEF" | b"MTEXT"
+            | b"INSERT" => &[10, 20],
             _ => &[],
         };
         if let Some(code) = record.half {
@@ -390,6 +435,7 @@ fn used(type_name: &[u8], code: i32) -> Use {
         b"LINE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31),
         b"ARC" => matches!(code, 10 | 20 | 30 | 40 | 50 | 51),
         b"CIRCLE" => matches!(code, 10 | 20 | 30 | 40),
+        b"SOLID" | b"TRACE" => matches!(code, 10..=13 | 20..=23 | 30),
         b"LWPOLYLINE" => matches!(code, 10 | 20 | 38 | 42),
         b"POLYLINE" => matches!(code, 10 | 20 | 30),
         b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),

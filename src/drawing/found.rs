@@ -123,13 +123,15 @@ pub(super) struct BlockEntry {
 }
 
 /// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.
-pub(super) const READ_TYPES: [&[u8]; 10] = [
+pub(super) const READ_TYPES: [&[u8]; 12] = [
     b"LINE",
     b"LWPOLYLINE",
     b"POLYLINE",
     b"ARC",
     b"CIRCLE",
     b"SPLINE",
+    b"SOLID",
+    b"TRACE",
     b"TEXT",
     b"MTEXT",
     b"INSERT",

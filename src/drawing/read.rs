@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use geo::Coord;
 
 use super::explode::{Book, Gatherer};
-use super::names::folded;
+use super::looks::Looks;
 use super::rules::{ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
 use super::scan::{Entry, Scan};
 use super::source::Source;
@@ -13,6 +13,7 @@ use super::wanted::Wanted;
 use super::windows::{Losses, read_records};
 use super::{Drawing, UnitFrom};
 use crate::finding::{Finding, Level};
+use crate::patterns::folded;
 use crate::units::LengthUnit;
 
 /// Reads the wanted layers of a drawing's model space, blocks exploded, in metres. `unit` is what the job says of the
@@ -33,13 +34,16 @@ pub fn read(source: &Source, wanted: &Wanted, unit: Option<LengthUnit>) -> (Draw
     let top = top_entries(&book);
     book.records = block_records(source, &book, &top, &mut losses);
 
-    let mut gatherer = Gatherer::new(&book, unit_m);
+    let looks = Looks::new(&source.bytes, scan);
+    let mut gatherer = Gatherer::new(&book, looks, unit_m);
     read_records(source, top, &mut losses, |record| gatherer.take(&record));
     let Gatherer {
         mut drawing,
+        looks,
         findings: mut of_blocks,
         ..
     } = gatherer;
+    drawing.linetypes = looks.linetypes;
     drawing.version.clone_from(&scan.version);
     drawing.unit_m = unit_m;
     drawing.unit_from = unit_from;

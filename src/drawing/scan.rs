@@ -87,6 +87,7 @@ struct Gathered<'a> {
     layer: Option<&'a [u8]>,
     paper: bool,
     followed: bool,
+    linetype: Option<&'a [u8]>,
     colour: Option<i64>,
     flags: i64,
     base: [f64; 2],
@@ -223,6 +224,7 @@ impl<'a> Pass<'a> {
                 }
             }
             5 if held.handle.is_none() => held.handle = Some(tag.word()),
+            6 if self.record == Record::Layer => held.linetype = Some(tag.word()),
             8 if held.layer.is_none() => held.layer = Some(tag.word()),
             10 => held.base[0] = tag.float().unwrap_or(0.0),
             20 => held.base[1] = tag.float().unwrap_or(0.0),

@@ -1,7 +1,5 @@
 //! The floor put together from its parts.
 
-use geo::Coord;
-
 use super::candidates::lies;
 use super::ends;
 use super::heights::{self, Doubt, Settled};
@@ -16,6 +14,7 @@ use super::points::{points, words};
 use super::readings::{HeightText, MarkText, Word};
 use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
 use super::slab::{Thickness, slab};
+use super::symbols::Symbols;
 use super::types::{Floor, PointKind, Tendon};
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
@@ -38,18 +37,17 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let thickness = Thickness::new(&slab, &unread_zones);
     let columns = Columns::new(&slab.columns);
 
-    let symbols = ends::symbols(drawing, conventions);
-    let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
-    let symbol_shapes = ends::shapes(drawing, conventions);
-    let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_shapes);
+    let symbols = Symbols::new(drawing, conventions, &roles);
+    let (lines, found) = lines(drawing, job, &roles, &symbols.stops(), &symbols.shapes);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
-    let (line_ends, found) = ends::ends(&lines, &symbols, conventions.end_reach_m);
+    let (line_ends, found) = ends::ends(&lines, &symbols.list, conventions.end_reach_m);
     findings.extend(found);
 
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
     findings.extend(found);
-    let (labels, found) = labels(drawing, conventions, &roles, &levels.texts);
+    let taken = levels.texts.union(&symbols.texts).copied().collect();
+    let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);
     let Labels {
         heights: height_labels,
@@ -110,7 +108,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             }),
             required_kn: said.required_kn,
             required_kn_per_m: said.required_kn_per_m,
-            ends: line_ends[at],
+            ends: line_ends[at].each_ref().map(|told| told.end),
             points,
         });
     }

@@ -38,7 +38,7 @@ pub(super) fn labels<'a>(
         .filter(|(at, text)| !taken.contains(at) && usable(text))
         .map(|(_, text)| text)
         .filter(|text| {
-            let label = roles.of(&text.layer).label;
+            let label = roles.of(&text.layer, text.look).label;
             label.heights || label.marks || label.level_lines
         })
         .collect();
@@ -47,7 +47,7 @@ pub(super) fn labels<'a>(
     let mut labels = Labels::default();
     let mut findings = Vec::new();
     for text in texts {
-        let of = roles.of(&text.layer).label;
+        let of = roles.of(&text.layer, text.look).label;
         let said = label(&text.content, of.heights, of.marks, conventions);
         if said.other_height.is_some() {
             findings.push(unread(

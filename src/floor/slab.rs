@@ -10,7 +10,7 @@ use super::pieces::{Joint, chains};
 use super::readings::thickness_m;
 use super::rules::{OUTLINE_OPEN, THICKNESS_DIFFERS, THICKNESS_UNKNOWN, ZONE_UNREAD};
 use super::types::{Slab, Zone};
-use crate::drawing::{Drawing, Shape, Text};
+use crate::drawing::{Drawing, Shape, ShapeKind, Text};
 use crate::finding::{Finding, Level};
 use crate::geometry::{Path, Segment, distance_m};
 use crate::job::Job;
@@ -48,7 +48,7 @@ pub(super) fn slab(
         by_place.then_with(|| a.content.cmp(&b.content))
     });
     for text in texts {
-        let ground = roles.of(&text.layer).ground;
+        let ground = roles.of(&text.layer, text.look).ground;
         if ground != Ground::Zone && ground != Ground::Edge {
             continue;
         }
@@ -165,7 +165,9 @@ fn outlines(
     let shapes: Vec<&Shape> = drawing
         .shapes
         .iter()
-        .filter(|shape| roles.of(&shape.layer).ground == ground && sound(shape))
+        .filter(|shape| roles.of(&shape.layer, shape.look).ground == ground && sound(shape))
+        // A filled triangle or quadrangle is a column's body; elsewhere it is an arrow's head or a legend's sample.
+        .filter(|shape| shape.kind != ShapeKind::Solid || ground == Ground::Column)
         .collect();
     let whole = |shape: &&&Shape| shape.closed || super::pieces::returns(&shape.path, gap_m);
     let mut rings: Vec<Polygon<f64>> = shapes

@@ -59,9 +59,11 @@ impl Default for Job {
 fn conventions() -> Conventions {
     Conventions {
         unit: None,
+        banded_along_rad: None,
         layers: Layers {
             banded: words(&["TENDON-BANDED*"]),
             distributed: words(&["TENDON-DISTRIBUTED*"]),
+            tendons: Vec::new(),
             heights: words(&["TENDON-HEIGHT*"]),
             level_lines: words(&["TENDON-LEVEL-LINE*"]),
             marks: words(&["TENDON-MARK*"]),
@@ -73,6 +75,12 @@ fn conventions() -> Conventions {
         },
         live_end_blocks: words(&["LIVE-END*"]),
         dead_end_blocks: words(&["DEAD-END*"]),
+        end_blocks: Vec::new(),
+        end_attributes: words(&["*"]),
+        live_end_words: words(&["LE", "LIVE", "S", "STRESSING"]),
+        dead_end_words: words(&["DE", "DEAD", "FIXED"]),
+        live_end_shapes: Vec::new(),
+        dead_end_shapes: Vec::new(),
         mark_patterns: mark_patterns(),
         height_patterns: height_patterns(LengthUnit::Mm),
         high_words: words(&["H", "HP", "HIGH"]),

@@ -56,6 +56,13 @@ pub enum Kind {
     Shell(Place<String>),
     /// A list of words.
     Words(Place<String>),
+    /// A list of some of these words.
+    Choices {
+        /// The words.
+        words: &'static [&'static str],
+        /// Its place.
+        place: Place<String>,
+    },
     /// A list of patterns: regular expressions with named groups, bare or in tables that say more.
     Expressions {
         /// The groups of which each has at least one.
@@ -108,7 +115,9 @@ impl Key {
             Kind::Number { get, .. } => get(job).map(|number| json!(number)),
             Kind::Choice { get, .. } => get(job).map(|word| json!(word)),
             Kind::Switch { get, .. } => Some(json!(get(job))),
-            Kind::Shell(place) | Kind::Words(place) => Some(json!((place.get)(job))),
+            Kind::Shell(place) | Kind::Words(place) | Kind::Choices { place, .. } => {
+                Some(json!((place.get)(job)))
+            }
             Kind::Expressions { place, .. } => {
                 let patterns = (place.get)(job).iter().map(Pattern::written);
                 Some(Value::Array(patterns.collect()))
@@ -131,6 +140,7 @@ impl Key {
             Kind::Switch { .. } => "true or false".to_owned(),
             Kind::Shell(_) => "a list of shell patterns, such as [\"NAME*\"]".to_owned(),
             Kind::Words(_) => "a list of words, such as [\"H\", \"HIGH\"]".to_owned(),
+            Kind::Choices { words, .. } => format!("a list of some of {}", quoted(words)),
             Kind::Expressions { groups, .. } => format!(
                 "a list of regular expressions or of tables {{ name, expression, ... }}, each with the named group {}",
                 groups
@@ -142,6 +152,11 @@ impl Key {
             Kind::StrandName { .. } => "the name of a strand, such as \"12.7\"".to_owned(),
             Kind::Strands(_) => "tables [[system.strand]]".to_owned(),
         }
+    }
+
+    /// Whether a list with nothing in it may be typed: where that is the default.
+    pub fn may_be_empty(&self) -> bool {
+        self.value(&Job::default()) == Some(json!([]))
     }
 
     /// A line that may be typed: the default, or an example where there is none.

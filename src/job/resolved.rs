@@ -22,6 +22,9 @@ pub struct Job {
     pub limits: Limits,
 }
 
+/// Words for the shapes that may mark an end.
+pub const END_SHAPES: &[&str] = &["circle", "triangle", "square", "bar", "solid"];
+
 /// How the drawing is to be read.
 #[derive(Debug, Clone)]
 pub struct Conventions {
@@ -29,10 +32,24 @@ pub struct Conventions {
     pub unit: Option<LengthUnit>,
     /// Layer patterns by what lies on them.
     pub layers: Layers,
+    /// Direction of banded tendons in plan, radians from x, where a tendon's layer does not tell its run.
+    pub banded_along_rad: Option<f64>,
     /// Names of the blocks that mark a live end (shell patterns, any case).
     pub live_end_blocks: Vec<String>,
     /// Names of the blocks that mark a dead end.
     pub dead_end_blocks: Vec<String>,
+    /// Names of the blocks that mark an end whose kind an attribute, a word beside or nothing tells.
+    pub end_blocks: Vec<String>,
+    /// Tags of the attributes of those blocks that hold a live or dead word (shell patterns, any case).
+    pub end_attributes: Vec<String>,
+    /// Words that mark a live end.
+    pub live_end_words: Vec<String>,
+    /// Words that mark a dead end.
+    pub dead_end_words: Vec<String>,
+    /// Shapes that mark a live end: words of [`END_SHAPES`].
+    pub live_end_shapes: Vec<String>,
+    /// Shapes that mark a dead end, likewise.
+    pub dead_end_shapes: Vec<String>,
     /// Patterns of marks, strand counts and required forces; groups `mark`, `tendons`, `strands`, `strand`, `force`,
     /// `force_per_width`, each optional.
     pub mark_patterns: Vec<Pattern>,
@@ -62,13 +79,15 @@ pub struct Conventions {
     pub overlap_m: f64,
 }
 
-/// Layer patterns (shell patterns, any letter case).
+/// Layer patterns: see [`crate::patterns::Selectors`].
 #[derive(Debug, Clone)]
 pub struct Layers {
     /// Banded tendons.
     pub banded: Vec<String>,
     /// Distributed tendons.
     pub distributed: Vec<String>,
+    /// Tendons of either run, told apart by direction.
+    pub tendons: Vec<String>,
     /// Height labels.
     pub heights: Vec<String>,
     /// Lines that give one height to every tendon they cross, and their labels.
@@ -262,6 +281,7 @@ impl Job {
         [
             &layers.banded,
             &layers.distributed,
+            &layers.tendons,
             &layers.heights,
             &layers.level_lines,
             &layers.marks,

@@ -7,7 +7,7 @@ use toml::de::{DeArray, DeValue};
 use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
-use crate::patterns::Patterns;
+use crate::patterns::{Names, PatternRefused, Selectors};
 
 impl Reader {
     pub(super) fn value(&mut self, key: &Key, entry: &Entry<'_>) {
@@ -53,20 +53,17 @@ impl Reader {
             (Kind::Shell(place), DeValue::Array(items)) => {
                 if let Some(words) = self.words(key, entry, items) {
                     for (pattern, span) in &words {
-                        if let Err(error) = Patterns::new([pattern]) {
-                            self.mistake(
-                                span.clone(),
-                                format!("`{}` holds a broken shell pattern: {}", key.name, plain(&error.to_string())),
-                                "expected *, ?, [abc] or {this,that}",
-                                "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
-                            );
-                        }
+                        self.shell(key, pattern, span);
                     }
                     (place.set)(
                         &mut self.job,
                         words.into_iter().map(|(word, _)| word).collect(),
                     );
                 }
+            }
+            (Kind::Choices { words, place }, DeValue::Array(items)) => {
+                let chosen = self.choices(key, words, entry, items);
+                (place.set)(&mut self.job, chosen);
             }
             (Kind::Expressions { place, .. }, DeValue::Array(items)) => {
                 if let Some(patterns) = self.patterns(key, entry, items) {
@@ -96,6 +93,65 @@ impl Reader {
                 format!("`{}` cannot be {}", key.name, kind_word(entry.get_ref())),
                 format!("expected {}", key.expected()),
                 format!("type for example `{}`", key.example()),
+            ),
+        }
+    }
+
+    /// Words of a list, each one of those that are known.
+    fn choices(
+        &mut self,
+        key: &Key,
+        known: &[&str],
+        entry: &Entry<'_>,
+        items: &DeArray<'_>,
+    ) -> Vec<String> {
+        let mut chosen = Vec::new();
+        for (word, span) in self.words(key, entry, items).unwrap_or_default() {
+            if known.contains(&word.as_str()) {
+                chosen.push(word);
+                continue;
+            }
+            let near = nearest(&word, known.iter().copied());
+            let example = near.or(known.first().copied()).unwrap_or_default();
+            self.mistake(
+                span,
+                format!("`{}` does not know \"{}\"", key.name, plain(&word)),
+                format!("expected some of {}", quoted(known)),
+                format!("type for example `{} = [\"{example}\"]`", key.name),
+            );
+        }
+        chosen
+    }
+
+    /// Whether a shell pattern, or a pattern of layers, can be understood.
+    fn shell(&mut self, key: &Key, pattern: &str, span: &Range<usize>) {
+        let layers = key.table == "layers";
+        let refused = if layers {
+            Selectors::new([pattern]).err()
+        } else {
+            Names::new([pattern]).err().map(PatternRefused::from)
+        };
+        match refused {
+            None => {}
+            Some(PatternRefused::Shell(reason)) => self.mistake(
+                span.clone(),
+                format!(
+                    "`{}` holds a broken shell pattern: {}",
+                    key.name,
+                    plain(&reason.to_string())
+                ),
+                "expected *, ?, [abc] or {this,that}",
+                "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
+            ),
+            Some(refused) => self.mistake(
+                span.clone(),
+                format!(
+                    "`{}` holds a broken layer pattern: {}",
+                    key.name,
+                    plain(&refused.to_string())
+                ),
+                "expected NAME, NAME@colour=1 to 255, NAME@linetype=DASHED*, or both",
+                format!("type for example `{} = [\"NAME*@colour=1\"]`", key.name),
             ),
         }
     }
@@ -177,7 +233,7 @@ impl Reader {
                 ),
             }
         }
-        if items.iter().next().is_none() {
+        if items.iter().next().is_none() && !key.may_be_empty() {
             self.mistake(
                 entry.span(),
                 format!("`{}` is an empty list, which nothing matches", key.name),

@@ -7,6 +7,7 @@
 
 mod anchors;
 mod bridging;
+mod conventions;
 mod copies;
 mod ends;
 mod ground;

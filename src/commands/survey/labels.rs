@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 
 use serde_json::{Value, json};
 
-use super::contents::{Contents, LayerContents};
+use super::contents::{Contents, Held};
 use super::readings::{high_word, low_word};
 use crate::commands::work;
 use crate::drawing::Drawing;
@@ -47,7 +47,7 @@ fn layers<'c>(
     job: &Job,
     proposed: &BTreeMap<String, Proposal>,
     role: &str,
-) -> Vec<&'c LayerContents> {
+) -> Vec<&'c Held> {
     let mut patterns = super::proposals::patterns(job, role);
     if let Some(Value::Array(items)) = proposed.get(&format!("layers.{role}")).map(|p| &p.value) {
         patterns.extend(
@@ -72,7 +72,7 @@ fn unit_of(drawing: &Drawing) -> LengthUnit {
 }
 
 /// The job's patterns and those of the families that are found.
-fn mark_patterns(layers: &[&LayerContents], job: &Job) -> Option<(String, Proposal)> {
+fn mark_patterns(layers: &[&Held], job: &Job) -> Option<(String, Proposal)> {
     let mut counts: BTreeMap<&'static str, usize> = BTreeMap::new();
     for (family, count) in layers.iter().flat_map(|held| &held.offered) {
         *counts.entry(family).or_default() += count;
@@ -109,7 +109,7 @@ fn mark_patterns(layers: &[&LayerContents], job: &Job) -> Option<(String, Propos
 }
 
 /// Words beside numbers that the job does not know, where they are words of heights.
-fn words(layers: &[&LayerContents], job: &Job) -> Vec<(String, Proposal)> {
+fn words(layers: &[&Held], job: &Job) -> Vec<(String, Proposal)> {
     let found = |is: fn(&str) -> bool| -> Vec<String> {
         let mut words: Vec<String> = layers
             .iter()
@@ -146,7 +146,7 @@ fn words(layers: &[&LayerContents], job: &Job) -> Vec<(String, Proposal)> {
 }
 
 /// Another unit of heights, where texts have inch signs or fractions, or numbers that are no millimetres.
-fn height_unit(layers: &[&LayerContents], job: &Job, inches: bool) -> Option<(String, Proposal)> {
+fn height_unit(layers: &[&Held], job: &Job, inches: bool) -> Option<(String, Proposal)> {
     if job.conventions.height.unit != LengthUnit::Mm {
         return None;
     }
@@ -171,7 +171,7 @@ fn height_unit(layers: &[&LayerContents], job: &Job, inches: bool) -> Option<(St
 }
 
 /// Another unit of thickness texts.
-fn slab_unit(layers: &[&LayerContents], job: &Job, inches: bool) -> Option<(String, Proposal)> {
+fn slab_unit(layers: &[&Held], job: &Job, inches: bool) -> Option<(String, Proposal)> {
     if job.conventions.thickness_unit != LengthUnit::Mm {
         return None;
     }
@@ -226,7 +226,6 @@ mod tests {
     use super::*;
     use crate::commands::job_file::JobFile;
     use crate::drawing::{Layer, Text};
-    use geo::Coord;
 
     /// What a drawing with these texts gets proposed; layers named for their role, metres in a drawing unit.
     fn proposed(texts: &[(&str, &[&str])], unit_m: f64) -> BTreeMap<String, Proposal> {
@@ -244,12 +243,8 @@ mod tests {
                 handle: "1".to_owned(),
                 layer: (*layer).to_owned(),
                 content: (*content).to_owned(),
-                place: Coord::default(),
-                corners: [Coord::default(); 4],
                 height_m: 0.1,
-                rotation_rad: 0.0,
-                hidden: false,
-                within: None,
+                ..Text::default()
             }));
         }
         let job_file = JobFile::default();

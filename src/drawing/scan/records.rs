@@ -1,9 +1,9 @@
 //! What the scan keeps of each record, settled when the next one begins.
 
 use super::super::handles::parse_handle;
-use super::super::names::folded;
 use super::super::text_decode::plain_name;
 use super::{BlockEntry, Entry, Gathered, Pass, Record, Section};
+use crate::patterns::folded;
 
 impl<'a> Pass<'a> {
     pub(super) fn begin_table_record(&mut self, name: &[u8], start: usize) {
@@ -112,6 +112,7 @@ impl<'a> Pass<'a> {
             self.names.describe(id, |layer| {
                 layer.in_table = true;
                 layer.handle = text(held.handle);
+                layer.linetype = held.linetype.map(<[u8]>::to_vec);
                 layer.colour = held.colour;
                 layer.flags = held.flags;
             });
