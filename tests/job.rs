@@ -271,6 +271,11 @@ fn each_other_mistake_is_told_apart() {
         remedy,
         "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
     );
+    let (_, _, _, remedy) = only("[stressing]\nmu_per_rad = 1.9\n");
+    assert!(
+        !remedy.contains("percentage") && !remedy.contains("0.019"),
+        "{remedy}"
+    );
 }
 
 #[test]
