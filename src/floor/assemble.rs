@@ -33,14 +33,15 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
 
-    let (slab, unread_zones, found) = slab(drawing, job, &roles);
+    let symbols = ends::symbols(drawing, conventions);
+    let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
+    let symbol_shapes = ends::shapes(drawing, conventions);
+
+    let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbol_shapes);
     findings.extend(found);
     let thickness = Thickness::new(&slab, &unread_zones);
     let columns = Columns::new(&slab.columns);
 
-    let symbols = ends::symbols(drawing, conventions);
-    let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
-    let symbol_shapes = ends::shapes(drawing, conventions);
     let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_shapes);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
@@ -142,7 +143,7 @@ impl Near<'_> {
                 &LABEL_AMBIGUOUS,
                 Level::Warning,
                 format!(
-                    "mark {:?} was taken for the line {}, but fits line {} about as well",
+                    "mark {:?} was taken for the line with handle {}, but fits the one with handle {} about as well",
                     text.content, self.lines[here].handle, self.lines[there].handle
                 ),
                 "move the mark nearer to its tendon, along it",
