@@ -24,5 +24,6 @@ mod slab;
 mod types;
 
 pub use assemble::read;
+pub use points::drawn_height_m;
 pub use rules::RULES;
 pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};

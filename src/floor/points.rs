@@ -181,17 +181,31 @@ fn height_m(
     thickness_m: Option<f64>,
     job: &HeightReading,
 ) -> Option<f64> {
-    let in_duct_m = match (job.datum, kind) {
+    match job.from {
+        FromFace::Soffit => Some(value_m + in_duct_m(kind, job)),
+        FromFace::Top => Some(thickness_m? - value_m + in_duct_m(kind, job)),
+    }
+}
+
+/// The height as the drawing gives it, metres from its own face to its own datum: what [`Point::height_m`] was read
+/// from.
+pub fn drawn_height_m(point: &Point, job: &HeightReading) -> Option<f64> {
+    let to_datum_m = point.height_m? - in_duct_m(point.kind, job);
+    match job.from {
+        FromFace::Soffit => Some(to_datum_m),
+        FromFace::Top => Some(point.thickness_m? - to_datum_m),
+    }
+}
+
+/// Strand centroid above the datum, metres.
+fn in_duct_m(kind: PointKind, job: &HeightReading) -> f64 {
+    match (job.datum, kind) {
         (Datum::Centroid, _) => 0.0,
         (Datum::DuctUnderside, PointKind::Low) => job.strand_in_duct_low_m,
         (Datum::DuctUnderside, PointKind::High) => job.strand_in_duct_high_m,
         (Datum::DuctUnderside, PointKind::Anchor | PointKind::Support) => {
             f64::midpoint(job.strand_in_duct_low_m, job.strand_in_duct_high_m)
         }
-    };
-    match job.from {
-        FromFace::Soffit => Some(value_m + in_duct_m),
-        FromFace::Top => Some(thickness_m? - value_m + in_duct_m),
     }
 }
 

@@ -1,5 +1,7 @@
 //! The job as every stage reads it: all values present, in internal units.
 
+use std::fmt;
+
 use regex::Regex;
 
 use crate::units::LengthUnit;
@@ -98,6 +100,21 @@ pub struct HeightReading {
     pub strand_in_duct_low_m: f64,
     /// Strand centroid above the duct's underside at a high point, metres.
     pub strand_in_duct_high_m: f64,
+}
+
+impl fmt::Display for HeightReading {
+    /// Such as `mm above the local soffit to the centroid of the strands`.
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let from = match self.from {
+            FromFace::Soffit => "above the local soffit",
+            FromFace::Top => "below the top of the slab",
+        };
+        let to = match self.datum {
+            Datum::Centroid => "centroid of the strands",
+            Datum::DuctUnderside => "underside of the duct",
+        };
+        write!(f, "{} {from} to the {to}", self.unit.name())
+    }
 }
 
 /// What a height is measured to.

@@ -71,6 +71,14 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
     written(&header, rows)
 }
 
+/// What `height_mm` is, whatever the drawing's own datum is.
+const HEIGHT_IS: &str = "strand centroid above local soffit";
+/// What an extension at either of two live ends is.
+const BOTH_LIVE: &str =
+    "both jacks pull together; with one jack moved from end to end the first pull is longer";
+/// What no extension holds.
+const BEYOND_ANCHOR: &str = "strand between anchor and jack is not included";
+
 /// A row a profile point; forces are per tendon.
 pub fn points_csv(analysis: &Analysis) -> String {
     let header = [
@@ -87,6 +95,7 @@ pub fn points_csv(analysis: &Analysis) -> String {
         "lockoff_kn",
         "transfer_kn",
         "service_kn",
+        "height_is",
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
@@ -106,6 +115,7 @@ pub fn points_csv(analysis: &Analysis) -> String {
                 rounded(point.lockoff_kn, 1),
                 rounded(point.transfer_kn, 1),
                 rounded(point.service_kn, 1),
+                point.height_mm.map_or("", |_| HEIGHT_IS).to_owned(),
             ]
         })
     });
@@ -127,9 +137,15 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
         "extension_mm",
         "extension_net_mm",
         "draw_in_reach_m",
+        "note",
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
+        let note = if record.ends.iter().all(|end| end.live.is_some()) {
+            format!("{BOTH_LIVE}; {BEYOND_ANCHOR}")
+        } else {
+            BEYOND_ANCHOR.to_owned()
+        };
         let known = [
             text(record.mark),
             text(record.handle),
@@ -156,6 +172,7 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
                     rounded(live.extension_mm, 1),
                     rounded(live.extension_net_mm, 1),
                     rounded(live.draw_in_reach_m, 2),
+                    note.clone(),
                 ])
             })
     });
