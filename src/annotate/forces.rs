@@ -33,8 +33,8 @@ pub(super) fn lengths(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
     marks
 }
 
-/// Grey dashes along the tendons that have no forces in service: left in their layer's colour they would pass for one of the
-/// classes.
+/// Grey dashes on a thin grey line along the tendons that have no forces in service: left in their layer's colour they
+/// would pass for one of the classes.
 pub(super) fn without(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
     let mut marks = Vec::new();
     for ((tendon, result), lane) in pair(analysis).zip(lanes) {
@@ -43,18 +43,26 @@ pub(super) fn without(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
             continue;
         }
         let length_m = tendon.path.length_m();
+        let grey = |points, width_m| {
+            let drawn = Drawn::Line {
+                points,
+                width_m,
+                closed: false,
+            };
+            layers::inked(layers::FINDING, layers::GREY, drawn)
+        };
+        let whole = tendon.path.to_line_string(0.01).0;
+        if whole.len() > 1 {
+            marks.push(grey(whole, lane.width_m / 4.0));
+        }
         // A line drawn in another unit must not turn into millions of dashes.
         let pitch_m = DASH_M.max(length_m / MOST_DASHES) * 1.6;
         let mut from_m = 0.0;
         while from_m < length_m {
             let to_m = (from_m + pitch_m / 1.6).min(length_m);
             let stations_m = [from_m, f64::midpoint(from_m, to_m), to_m];
-            let drawn = Drawn::Line {
-                points: stations_m.map(|at_m| tendon.path.place_at(at_m)).to_vec(),
-                width_m: lane.width_m,
-                closed: false,
-            };
-            marks.push(layers::inked(layers::FINDING, layers::GREY, drawn));
+            let dash = stations_m.map(|at_m| tendon.path.place_at(at_m));
+            marks.push(grey(dash.to_vec(), lane.width_m));
             from_m += pitch_m;
         }
     }

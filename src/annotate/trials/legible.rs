@@ -113,7 +113,9 @@ fn a_tendon_without_forces_is_dashed_in_grey_and_the_legend_says_so() {
     let sheet = draw(&analysis, &beside(&[]), &Job::default());
     let dashes: Vec<f64> = on(&sheet, layers::FINDING)
         .filter_map(|mark| match &mark.drawn {
-            Drawn::Line { points, .. } if mark.ink == Some(layers::GREY) => Some(points),
+            Drawn::Line {
+                points, width_m, ..
+            } if mark.ink == Some(layers::GREY) && *width_m > 0.05 => Some(points),
             _ => None,
         })
         .inspect(|points| assert!(points.iter().all(|p| (p.y - 1.0).abs() < 1e-9)))
