@@ -17,6 +17,9 @@ use crate::geometry::{distance_m, step};
 /// Tendon lines that a figure may lie on if there is no clear place.
 const MOST_CROSSED: usize = 1;
 
+/// How far from its point a figure needs no leader, in text widths, where no other point of the tendon is nearer.
+const UNLED: f64 = 1.5;
+
 /// What a figure stands for, the most needed first.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
 enum Worth {
@@ -247,7 +250,7 @@ fn leader(figure: &Figure, along_m: f64, spot: &Spot) -> Option<[Coord<f64>; 2]>
     let nearest = others
         .filter(|other_m| (other_m - figure.station_m).abs() > 1e-6)
         .all(|other_m| off_m <= (along_m - other_m).abs());
-    if nearest && off_m <= spot.width_m / 2.0 + spot.height_m {
+    if nearest && off_m <= UNLED * spot.width_m + spot.height_m {
         return None;
     }
     let to = figure.tendon.path.place_at(figure.station_m);
