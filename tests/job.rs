@@ -390,3 +390,14 @@ proptest! {
         }
     }
 }
+
+#[test]
+fn where_the_strand_lies_in_the_duct_is_assumed_only_for_heights_of_the_duct() {
+    let said = |text: &str| {
+        let resolved = job::read("job", text).expect("fine");
+        let said = resolved.assumptions();
+        said.iter().any(|line| line.contains("strand_in_duct"))
+    };
+    assert!(!said(""));
+    assert!(said("[height]\ndatum = \"duct-underside\"\n"));
+}
