@@ -37,7 +37,8 @@ def out_of_order(worked, figures, key):
     stands = {}
     for content, here in figures:
         fits = [(number, p["station_m"]) for number, t in enumerate(worked) for p in t["points"]
-                if math.dist(here, (p["x_m"], p["y_m"])) < NEAR_M and abs(p[key] - float(content)) <= 0.5000001]
+                if math.dist(here, (p["x_m"], p["y_m"])) < NEAR_M
+                and p[key] is not None and abs(p[key] - float(content)) <= 0.5000001]
         if len(fits) != 1:
             continue
         number, station = fits[0]
@@ -63,10 +64,10 @@ def main():
     result = json.load(open(sys.argv[2], encoding="utf-8"))
     unit = result["drawing"]["unit_m"]
     space, wrong, seen, pairs = document.modelspace(), [], 0, 0
-    worked = [t for t in result["tendons"] if t["points"] and t["points"][0].get("service_kn") is not None]
+    worked = [t for t in result["tendons"] if t["points"] and t["points"][0].get("jacking_kn") is not None]
 
     for stage, key in STAGES.items():
-        points = [(p["x_m"], p["y_m"], p[key]) for t in worked for p in t["points"]]
+        points = [(p["x_m"], p["y_m"], p[key]) for t in worked for p in t["points"] if p[key] is not None]
         figures = [(content, (place[0] * unit, place[1] * unit)) for content, place in texts(space, f"TAUT-FORCE-{stage}-TEXT")]
         swapped, compared = out_of_order(worked, figures, key)
         wrong += [f"{stage}: {line}" for line in swapped]
