@@ -326,6 +326,13 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
             "Anchors without a height are at mid-depth: {anchors}."
         ));
     }
+    let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);
+    let unmarked = unmarked.count();
+    if unmarked > 0 {
+        said.push(format!(
+            "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
+        ));
+    }
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(
             "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
@@ -338,7 +345,8 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
             .count();
         if without > 0 && without < results.len() {
             said.push(format!(
-                "Tendons without forces press on no section: {without} of {}.",
+                "The compression of {without} of {} tendon lines, whose forces are not known, is left out: concrete stress and losses \
+                 of the others are low.",
                 results.len()
             ));
         }

@@ -275,6 +275,11 @@ fn each_other_mistake_is_told_apart() {
         remedy,
         "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
     );
+    let (_, _, _, remedy) = only("[stressing]\nmu_per_rad = 1.9\n");
+    assert!(
+        !remedy.contains("percentage") && !remedy.contains("0.019"),
+        "{remedy}"
+    );
 }
 
 #[test]
@@ -480,4 +485,15 @@ proptest! {
             prop_assert!(!problems.to_string().is_empty());
         }
     }
+}
+
+#[test]
+fn where_the_strand_lies_in_the_duct_is_assumed_only_for_heights_of_the_duct() {
+    let said = |text: &str| {
+        let resolved = job::read("job", text).expect("fine");
+        let said = resolved.assumptions();
+        said.iter().any(|line| line.contains("strand_in_duct"))
+    };
+    assert!(!said(""));
+    assert!(said("[height]\ndatum = \"duct-underside\"\n"));
 }

@@ -75,6 +75,7 @@ impl Meant {
                     kind,
                     station_m: station_m * stretch,
                     place: path.place_at(station_m * stretch),
+                    drawn_m: None,
                     height_m: Some(height_m),
                     thickness_m: Some(0.25),
                 })

@@ -18,6 +18,7 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
         kind: PointKind::Anchor,
         station_m,
         place,
+        drawn_m: None,
         height_m: Some(0.125),
         thickness_m: Some(0.250),
     };

@@ -37,6 +37,7 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
                 kind,
                 station_m: station_m - start_m,
                 place: at(station_m - start_m),
+                drawn_m: None,
                 height_m: Some(height_m),
                 thickness_m: Some(thickness_m),
             })

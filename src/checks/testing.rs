@@ -60,6 +60,7 @@ pub(super) fn point(kind: PointKind, station_m: f64, height_m: Option<f64>) -> P
             x: station_m,
             y: 0.0,
         },
+        drawn_m: None,
         height_m,
         thickness_m: Some(0.2),
     }

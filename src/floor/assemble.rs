@@ -32,12 +32,12 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
 
-    let (slab, unread_zones, found) = slab(drawing, job, &roles);
+    let symbols = Symbols::new(drawing, conventions, &roles);
+    let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbols.shapes);
     findings.extend(found);
     let thickness = Thickness::new(&slab, &unread_zones);
     let columns = Columns::new(&slab.columns);
 
-    let symbols = Symbols::new(drawing, conventions, &roles);
     let (lines, found) = lines(drawing, job, &roles, &symbols.stops(), &symbols.shapes);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
@@ -145,7 +145,7 @@ impl Near<'_> {
                 &LABEL_AMBIGUOUS,
                 Level::Warning,
                 format!(
-                    "mark {:?} was taken for the line {}, but fits line {} about as well",
+                    "mark {:?} was taken for the line with handle {}, but fits the one with handle {} about as well",
                     text.content, self.lines[here].handle, self.lines[there].handle
                 ),
                 "move the mark nearer to its tendon, along it",

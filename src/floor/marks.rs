@@ -253,7 +253,7 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
                     &MARK_TWICE,
                     Level::Warning,
                     format!(
-                        "mark {} stands on lines {} and {}; expected each mark once",
+                        "mark {} stands on the lines with handles {} and {}; expected each mark once",
                         tendon.mark, before.handle, tendon.handle
                     ),
                     "give one of the two tendons its own mark",

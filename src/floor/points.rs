@@ -25,6 +25,13 @@ struct Mark {
     torn: bool,
 }
 
+impl Mark {
+    /// The number that stands on the drawing; a word such as MID is none, and of two that contradict neither counts.
+    fn drawn_m(&self) -> Option<f64> {
+        (!self.torn && !self.reading.middle).then_some(self.reading.value_m)
+    }
+}
+
 /// Points of one tendon: anchor, what the drawing gives between, anchor. Without any height all are `None`.
 pub(super) fn points(
     mark: &str,
@@ -57,6 +64,7 @@ pub(super) fn points(
             kind: PointKind::Anchor,
             station_m,
             place,
+            drawn_m: said.and_then(Mark::drawn_m),
             height_m,
             thickness_m,
         }
@@ -71,6 +79,7 @@ pub(super) fn points(
         kind,
         station_m: mark.station_m,
         place: line.path.place_at(mark.station_m),
+        drawn_m: mark.drawn_m(),
         height_m: if mark.torn {
             None
         } else {

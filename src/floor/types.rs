@@ -82,6 +82,9 @@ pub struct Point {
     pub station_m: f64,
     /// Place on the plan line, metres.
     pub place: Coord<f64>,
+    /// The drawing's own number here, metres, from the face and to the datum that it is written for; `None` where it gives
+    /// none.
+    pub drawn_m: Option<f64>,
     /// Strand centroid above the local soffit, metres; `None` where the drawing does not say.
     pub height_m: Option<f64>,
     /// Slab thickness here, metres; `None` where the drawing does not say.

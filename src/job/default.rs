@@ -44,7 +44,7 @@ impl Default for Job {
                 plan_radius_m: 6.0,
                 far_end_ratio: 0.80,
                 curvature_loss_ratio: 0.15,
-                angle_per_m_rad: 0.05,
+                angle_per_m_rad: 0.10,
                 jacking_stress_ratio: 0.80,
                 jacking_yield_ratio: 0.94,
                 anchor_stress_ratio: 0.70,

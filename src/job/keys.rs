@@ -327,7 +327,7 @@ pub static KEYS: &[Key] = &[
         "judgement of this program"),
     key("limits", "angle_per_m_rad", number!(0.0..=10.0, limits.angle_per_m_rad, ONE),
         "Angle turned per metre of tendon, above which is a warning.",
-        "judgement of this program"),
+        "judgement of this program: bays of 7 to 9 m turn 0.03 to 0.07"),
     key("limits", "jacking_stress_ratio", number!(0.1..=1.0, limits.jacking_stress_ratio, ONE),
         "Jacking stress over strength, above which is an error.", "ACI 318-19 20.3.2.5.1, from memory"),
     key("limits", "jacking_yield_ratio", number!(0.1..=1.0, limits.jacking_yield_ratio, ONE),

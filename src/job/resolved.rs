@@ -1,5 +1,7 @@
 //! The job as every stage reads it: all values present, in internal units.
 
+use std::fmt;
+
 use super::pattern::Pattern;
 use crate::units::LengthUnit;
 
@@ -119,6 +121,23 @@ pub struct HeightReading {
     pub strand_in_duct_low_m: f64,
     /// Strand centroid above the duct's underside at a high point, metres.
     pub strand_in_duct_high_m: f64,
+}
+
+impl fmt::Display for HeightReading {
+    /// Such as `mm above the local soffit to the centroid of the strands`.
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let from = match self.from {
+            FromFace::Soffit => "above the local soffit",
+            FromFace::Top => "below the top of the slab",
+            FromFace::NearerFace => "from the nearer face",
+        };
+        let to = match self.datum {
+            Datum::Centroid => "centroid of the strands",
+            Datum::DuctUnderside => "underside of the duct",
+            Datum::Chair => "top of the chair, which is the underside of the duct",
+        };
+        write!(f, "{} {from} to the {to}", self.unit.name())
+    }
 }
 
 /// What a height is measured to.

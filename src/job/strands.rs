@@ -9,6 +9,13 @@ use crate::job::key::quoted;
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
 use crate::job::{StrandSize, families};
 
+/// A size as it may be pasted.
+const EXAMPLE: &str = "type for example\n\
+    [[system.strand]]\n\
+    name = \"12.7\"\n\
+    area_mm2 = 98.7\n\
+    strength_mpa = 1860";
+
 impl Reader {
     pub(super) fn strands(&mut self, entry: &Entry<'_>, items: &DeArray<'_>) -> Vec<StrandSize> {
         let mut sizes: Vec<StrandSize> = Vec::new();
@@ -26,7 +33,7 @@ impl Reader {
                     item.span(),
                     format!("`strand` cannot hold {}", kind_word(item.get_ref())),
                     "expected tables [[system.strand]]",
-                    "write `[[system.strand]]`, and below it `name`, `area_mm2` and `strength_mpa`",
+                    EXAMPLE,
                 );
                 continue;
             };
@@ -74,7 +81,7 @@ impl Reader {
                 span.clone(),
                 format!("this strand has no `{name}`"),
                 format!("expected {}", NEEDED.join(", ")),
-                "type for example `name = \"12.7\"`, `area_mm2 = 98.7`, `strength_mpa = 1860`",
+                EXAMPLE,
             );
         }
         let name = match fields

@@ -183,7 +183,9 @@ impl Reader {
             Some(number) if (least..=most).contains(&number) => Some(number),
             Some(number) => {
                 let hundredth = number / 100.0;
-                let remedy = if most <= 1.0 && number > 1.0 && (least..=most).contains(&hundredth) {
+                // What is given per metre or per radian is no percentage of anything.
+                let ratio = most <= 1.0 && !name.contains("_per_");
+                let remedy = if ratio && number > 1.0 && (least..=most).contains(&hundredth) {
                     format!("this is a ratio, not a percentage: type `{name} = {hundredth}`")
                 } else {
                     format!("type for example `{example}`")

@@ -7,7 +7,7 @@ use serde_json::Value;
 
 use super::key::{Key, Kind, toml_text};
 use super::keys::{TABLES, of_table};
-use super::{Fallback, Job, Resolved};
+use super::{Datum, Fallback, Job, Resolved};
 
 /// A value that the drawing itself suggests for a key.
 #[derive(Debug, Clone, PartialEq)]
@@ -114,7 +114,10 @@ pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
         .filter_map(|key| {
             let value = key.value(&resolved.job).map(|value| toml_text(&value));
             // The one form of wobble that is not used says nothing.
-            let silent = value.is_none() && key.name.starts_with("wobble");
+            let silent = value.is_none() && key.name.starts_with("wobble")
+                // Where in the duct the strand lies matters only to heights of the duct.
+                || key.name.starts_with("strand_in_duct")
+                    && resolved.job.conventions.height.datum == Datum::Centroid;
             (!silent).then(|| Fallback {
                 table: key.table,
                 name: key.input_name(),
