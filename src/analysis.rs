@@ -137,6 +137,11 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         results.push(result);
         findings.extend(found);
     }
+    let mean_service_kn: Vec<Option<f64>> = results
+        .iter()
+        .map(|result: &TendonResult| Some(result.forces.as_ref()?.later?.mean_service_kn))
+        .collect();
+    findings.extend(checks::required::per_width(&floor, &mean_service_kn));
     findings.sort_by(in_order);
     let assumptions = assumptions(&floor, &results, job);
     Analysis {
@@ -321,6 +326,13 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
             "Anchors without a height are at mid-depth: {anchors}."
         ));
     }
+    let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);
+    let unmarked = unmarked.count();
+    if unmarked > 0 {
+        said.push(format!(
+            "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
+        ));
+    }
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(
             "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
@@ -333,7 +345,8 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
             .count();
         if without > 0 && without < results.len() {
             said.push(format!(
-                "Tendons without forces press on no section: {without} of {}.",
+                "The compression of {without} of {} tendon lines, whose forces are not known, is left out: concrete stress and losses \
+                 of the others are low.",
                 results.len()
             ));
         }

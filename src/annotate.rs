@@ -7,6 +7,7 @@ mod forces;
 mod lanes;
 mod layers;
 mod legend;
+mod marks;
 mod place;
 mod profile3d;
 mod ramp;
@@ -33,7 +34,8 @@ pub struct Surroundings {
     pub extent: Option<[Coord<f64>; 2]>,
 }
 
-/// Draws a floor's results: forces, extensions, curves in space, findings, legend and table, in metres.
+/// Draws a floor's results: forces, extensions, curves in space, marks that the drawing lacks, findings, legend and
+/// table, in metres.
 ///
 /// What is written keeps clear of the drawing's own texts as far as it can, and their usual height is the height of the
 /// figures; legend and table keep clear of the whole drawing. The sheet follows the floor's order, so it is the same
@@ -46,18 +48,21 @@ pub fn draw(analysis: &Analysis, around: &Surroundings, job: &Job) -> Sheet {
 
     // Later marks cover earlier ones: the colours lie over the curves' hairlines.
     let mut marks = profile3d::curves(analysis);
+    marks.extend(forces::without(analysis, &lanes));
     marks.extend(forces::lengths(analysis, &lanes));
     // What must be said takes its place before what may be left out.
     let extensions = extension::texts(analysis, &lanes, &mut room);
+    let given = marks::given(analysis, &lanes, &mut room);
     let rings = findings::rings(analysis, text_m, &mut room);
     marks.extend(figures::figures(analysis, &lanes, &mut room));
     marks.extend(extensions);
+    marks.extend(given);
     marks.extend(rings);
 
     let floor = Extent::of_floor(&analysis.floor, occupied, &marks).with(around.extent);
     let letter_m = words::table_letter_m(&floor);
     let legend = legend::legend(analysis, job, letter_m);
-    let table = table::table(analysis, letter_m);
+    let table = table::table(analysis, job, letter_m);
     let apart_m = 6.0 * letter_m;
     let size_m = (
         legend.width_m + apart_m + table.width_m,

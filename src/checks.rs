@@ -13,6 +13,7 @@ pub mod ground;
 pub mod openings;
 pub mod plan;
 pub mod profile;
+pub mod required;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -64,6 +65,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(curvature::curvature_loss(worked, job));
     found.extend(stressing::anchor_stress(worked, job));
     found.extend(stressing::draw_in_reaches_dead_end(worked));
+    found.extend(required::force_below_required(worked));
     found
 }
 
@@ -86,7 +88,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 16] = [
+static RULES: [&Rule; 17] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -103,6 +105,7 @@ static RULES: [&Rule; 16] = [
     &stressing::ANCHOR_STRESS,
     &stressing::DRAW_IN_REACHES_DEAD_END,
     &curvature::CURVATURE_LOSS,
+    &required::FORCE_BELOW_REQUIRED,
 ];
 
 impl Worked<'_> {

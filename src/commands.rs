@@ -44,7 +44,8 @@ fn print(text: &str, terminal: &mut Terminal) -> Outcome {
         Ok(()) => Outcome::Done,
         Err(error) => {
             terminal.error(&format!(
-                "standard output cannot be written: {error}; send the result to a place with room"
+                "standard output cannot be written: {}; send the result to a place with room",
+                refused::reason(&error)
             ));
             Outcome::NotDone
         }

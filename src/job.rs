@@ -6,21 +6,28 @@
 use std::collections::BTreeSet;
 use std::fmt;
 
+mod automaton;
 mod default;
+mod expressions;
+pub mod families;
 pub mod key;
 pub mod keys;
+mod pattern;
+mod patterns;
 mod problems;
 mod reading;
 mod resolved;
+mod strand_names;
 mod strands;
 mod values;
 mod writing;
 
+pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
 pub use reading::read;
 pub use resolved::{
-    Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
+    LongTermMethod, Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
 };
 pub use writing::{Proposal, file};
 

@@ -6,7 +6,7 @@
 //!  tautplan.toml ─▶ job ────┐
 //!                           ├─▶ floor ─▶ [ each tendon: profile ─▶ losses ] ─▶ checks ─▶ analysis ─┬─▶ report
 //!  plan.dxf ─────▶ drawing ─┘                                                                      └─▶ annotate ─▶ drawing
-//!  leaves that every stage may use: units · geometry · numerics · finding · patterns
+//!  leaves that every stage may use: units · geometry · numerics · finding · cautions · patterns
 //! ```
 //!
 //! Each stage takes one plain value and returns one, with the findings met on the way; nothing runs back to the left.
@@ -19,6 +19,7 @@
 //!
 //! A tautplan result is a check of a drawing, not a design certificate: the licensed engineer decides, under the local code.
 
+pub mod cautions;
 pub mod finding;
 pub mod geometry;
 pub mod numerics;

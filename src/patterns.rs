@@ -4,6 +4,10 @@ use std::str::Chars;
 
 use regex::{RegexSet, RegexSetBuilder};
 
+mod selectors;
+
+pub use selectors::{Names, PatternRefused, Selectors, folded, tails};
+
 /// Names by shell patterns: `*` is any signs, `?` one sign, `[a-z]` one of these, `[!a-z]` one that is none of these,
 /// `{this,that}` either; every other sign stands for itself, `\` too. Letter case does not count (simple case folding of
 /// Unicode, sign by sign).

@@ -10,7 +10,7 @@ mod table;
 pub use calculation::calculation;
 pub use csv::{extensions_csv, findings_csv, points_csv, tendons_csv};
 pub use json::json;
-pub use summary::{CAUTIONS, summary};
+pub use summary::summary;
 pub use table::{Align, plain, table};
 
 /// What a report says of the drawing itself.

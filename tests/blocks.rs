@@ -138,15 +138,36 @@ fn attributes_lie_on_their_own_layer_or_on_the_inserts() {
     let texts: Vec<_> = drawing
         .texts
         .iter()
-        .map(|t| (t.handle.as_str(), t.layer.as_str(), t.content.as_str()))
+        .map(|t| {
+            (
+                t.handle.as_str(),
+                t.layer.as_str(),
+                t.content.as_str(),
+                t.hidden,
+            )
+        })
         .collect();
-    assert_eq!(texts, [("B", "MARKS", "D012"), ("C", "ENDS", "LIVE")]);
+    assert_eq!(
+        texts,
+        [
+            ("B", "MARKS", "D012", false),
+            ("C", "ENDS", "LIVE", false),
+            ("D", "MARKS", "h", true)
+        ]
+    );
     assert!(distance_m(drawing.texts[1].place, at(4.0, 4.0)) < 1e-12);
     assert_eq!(drawing.inserts[0].attributes.len(), 3);
 
+    // An attribute without a place has a value, and is no text anywhere.
+    let nowhere = "0 INSERT 5 A 8 ENDS 66 1 2 X 10 0 20 0
+        0 ATTRIB 5 B 8 MARKS 40 0.5 2 MARK 1 D012 70 0 0 SEQEND 8 ENDS";
+    let (drawing, _) = self::drawing("", nowhere);
+    assert!(drawing.texts.is_empty());
+    assert_eq!(drawing.inserts[0].attributes.len(), 1);
+
     let marks = Wanted::layers(["MARKS"]).expect("pattern");
     let (drawing, _) = read_layers("", insert, &marks);
-    assert_eq!(drawing.texts.len(), 1);
+    assert_eq!(drawing.texts.len(), 2);
     assert!(drawing.inserts.is_empty());
 }
 

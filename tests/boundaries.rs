@@ -10,6 +10,7 @@ const STAGES: &[(&str, u8)] = &[
     ("numerics", 0),
     ("finding", 0),
     ("patterns", 0),
+    ("cautions", 0),
     ("job", 1),
     ("drawing", 1),
     ("floor", 2),

@@ -371,7 +371,10 @@ fn a_place_that_cannot_be_written_is_refused_before_the_work() {
     refused(
         folder.path(),
         &["mark", "small-floor.dxf", "--out", "file"],
-        &["file: cannot be written", "--out"],
+        &[
+            "file: cannot be written: a file stands where a folder is needed",
+            "--out",
+        ],
     );
     refused(
         folder.path(),
@@ -383,7 +386,10 @@ fn a_place_that_cannot_be_written_is_refused_before_the_work() {
     refused(
         folder.path(),
         &["mark", "small-floor.dxf", "--out", "o"],
-        &["small-floor-findings.csv: cannot be written"],
+        &[
+            "small-floor-findings.csv: cannot be written: a folder of that name is there",
+            "--out",
+        ],
     );
     assert_eq!(
         names(&folder.path().join("o")),

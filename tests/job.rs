@@ -105,6 +105,10 @@ fn the_proposed_file_parses_to_the_defaults_as_it_is_and_with_every_default_set(
                 count += 1;
                 set.push_str(line.trim_start_matches('#'));
             }
+            // The further lines of a list that has one entry a line.
+            None if line.starts_with("#  ") || line == "#]" => {
+                set.push_str(line.trim_start_matches('#'));
+            }
             _ => set.push_str(line),
         }
         set.push('\n');
@@ -271,6 +275,79 @@ fn each_other_mistake_is_told_apart() {
         remedy,
         "this is a ratio, not a percentage: type `jacking_ratio = 0.75`"
     );
+    let (_, _, _, remedy) = only("[stressing]\nmu_per_rad = 1.9\n");
+    assert!(
+        !remedy.contains("percentage") && !remedy.contains("0.019"),
+        "{remedy}"
+    );
+}
+
+#[test]
+fn each_mistake_in_a_pattern_is_told_at_its_line() {
+    for (text, words) in [
+        (
+            "[labels]\nmark_patterns = [3]\n",
+            "cannot hold the number 3",
+        ),
+        ("[labels]\nmark_patterns = []\n", "empty list"),
+        (
+            "[labels]\nmark_patterns = ['^(?<mrak>D\\d+)$']\n",
+            "unknown group `mrak`",
+        ),
+        (
+            "[height]\npatterns = ['^H$(?<value>\\d+)']\n",
+            "can never match: no line",
+        ),
+        (
+            "[height]\npatterns = ['^(?<value>H)\\d+$']\n",
+            "can never match a number",
+        ),
+        (
+            "[height]\npatterns = [{ name = \"ours\" }]\n",
+            "no `expression`",
+        ),
+        (
+            "[height]\npatterns = [{ expresion = 'x', expression = '(?<value>\\d+)' }]\n",
+            "unknown key `expresion`",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', strands = 1 }]\n",
+            "unknown key `strands`",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', unit = \"inch\" }]\n",
+            "does not know \"inch\"",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', unit = \"kN\" }]\n",
+            "does not know \"kN\"",
+        ),
+        (
+            "[height]\npatterns = [{ expression = '(?<value>\\d+)', from = \"bottom\" }]\n",
+            "does not know \"bottom\"",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<force>\\d+) KIPS' }]\n",
+            "no unit that fits",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<force_per_width>\\d+)', unit = \"kip\" }]\n",
+            "no unit that fits",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<tendons>\\d+)T', strands = 1.5 }]\n",
+            "not a whole number",
+        ),
+        (
+            "[labels]\nmark_patterns = [{ expression = '(?<tendons>\\d+)T', strand = \"13\" }]\n",
+            "not known",
+        ),
+    ] {
+        let (line, found, expected, remedy) = only(text);
+        assert!(found.contains(words), "{text}: {found}");
+        assert_eq!(line, 2, "{text}");
+        assert!(!expected.is_empty() && !remedy.is_empty(), "{text}");
+    }
 }
 
 #[test]
@@ -282,6 +359,30 @@ fn a_syntax_error_hides_no_other_mistake() {
         lines.contains(&2) && lines.contains(&3) && lines.contains(&6),
         "{problems}"
     );
+}
+
+#[test]
+fn layer_patterns_and_shapes_are_checked_at_their_line() {
+    let (line, found, expected, _) = only("[layers]\nbanded = [\"PT\",\n\"PT@colour=300\"]\n");
+    assert_eq!(line, 3);
+    assert!(found.contains("@colour=300") && expected.contains("@linetype="));
+    let (_, found, ..) = only("[layers]\nends = [\"PT@color=1@weight=2\"]\n");
+    assert!(found.contains("@weight="), "{found}");
+    let (_, found, _, remedy) = only("[ends]\nlive_shapes = [\"triangel\"]\n");
+    assert!(found.contains("triangel") && remedy.contains("\"triangle\""));
+    let text = "[layers]\ntendons = []\nbanded = [\"0@linetype=DASHED*@colour=3\"]\n[ends]\ndead_shapes = [\"bar\", \"solid\"]\n\
+        [drawing]\nbanded_along_deg = 90\n";
+    let job = job::read("job", text).expect("fine").job;
+    assert!(
+        (job.conventions.banded_along_rad.expect("given") - std::f64::consts::FRAC_PI_2).abs()
+            < 1e-12
+    );
+    assert_eq!(job.conventions.dead_end_shapes, ["bar", "solid"]);
+    assert!(
+        job.layer_patterns()
+            .contains(&"0@linetype=DASHED*@colour=3".to_owned())
+    );
+    only("[layers]\nbanded = []\n");
 }
 
 #[test]
@@ -384,4 +485,15 @@ proptest! {
             prop_assert!(!problems.to_string().is_empty());
         }
     }
+}
+
+#[test]
+fn where_the_strand_lies_in_the_duct_is_assumed_only_for_heights_of_the_duct() {
+    let said = |text: &str| {
+        let resolved = job::read("job", text).expect("fine");
+        let said = resolved.assumptions();
+        said.iter().any(|line| line.contains("strand_in_duct"))
+    };
+    assert!(!said(""));
+    assert!(said("[height]\ndatum = \"duct-underside\"\n"));
 }

@@ -66,6 +66,8 @@ impl Meant {
             tendons: 1,
             strands: Some(5),
             strand: Some("12.7".to_owned()),
+            required_kn: None,
+            required_kn_per_m: None,
             ends: [end(path.place_at(0.0)), end(path.place_at(path.length_m()))],
             points: points
                 .into_iter()
@@ -73,6 +75,7 @@ impl Meant {
                     kind,
                     station_m: station_m * stretch,
                     place: path.place_at(station_m * stretch),
+                    drawn_m: None,
                     height_m: Some(height_m),
                     thickness_m: Some(0.25),
                 })

@@ -18,6 +18,7 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
         kind: PointKind::Anchor,
         station_m,
         place,
+        drawn_m: None,
         height_m: Some(0.125),
         thickness_m: Some(0.250),
     };
@@ -36,6 +37,8 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
         tendons,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [end(EndKind::Live, from), end(EndKind::Dead, to)],
         points,
     }

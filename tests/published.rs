@@ -28,6 +28,8 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
         tendons: 1,
         strands: Some(1),
         strand: None,
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [end(0.0), end(length_m)],
         points: points
             .iter()
@@ -35,6 +37,7 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
                 kind,
                 station_m: station_m - start_m,
                 place: at(station_m - start_m),
+                drawn_m: None,
                 height_m: Some(height_m),
                 thickness_m: Some(thickness_m),
             })

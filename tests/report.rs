@@ -7,6 +7,7 @@ use tautplan::checks;
 use tautplan::finding::{Finding, Level};
 use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
 use tautplan::geometry::Path;
+use tautplan::job::{Datum, Fallback, Job};
 use tautplan::losses::{EndForces, Forces, LaterLosses, LossTotals, Steel};
 use tautplan::profile::{Profile, Span};
 use tautplan::report::{self, DrawingFacts};
@@ -28,6 +29,8 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
         tendons: 2,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [(ends[0], 0.0), (ends[1], 10.0)].map(|(kind, x)| End {
             kind,
             place: at(x, y),
@@ -37,6 +40,7 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
                 kind: kinds[n],
                 station_m: stations_m[n],
                 place: at(stations_m[n], y),
+                drawn_m: None,
                 height_m: heights_m[n],
                 thickness_m: Some(0.2),
             })
@@ -222,7 +226,7 @@ fn the_summary_is_as_it_was() {
         "level-2-marked.dxf".to_owned(),
         "level-2-result.json".to_owned(),
     ];
-    let made = report::summary(&facts(), &analysis(), &files);
+    let made = report::summary(&facts(), &analysis(), &Job::default(), &files);
     assert_data_eq!(made, file!["golden/summary.txt"].raw());
 }
 
@@ -265,6 +269,91 @@ fn every_csv_row_has_the_headers_cells() {
 
 #[test]
 fn no_output_shows_a_terminal_a_control_character() {
-    let made = report::summary(&facts(), &analysis(), &[]);
+    let made = report::summary(&facts(), &analysis(), &Job::default(), &[]);
     assert!(made.chars().all(|c| c == '\n' || !c.is_control()));
+}
+
+#[test]
+fn every_figure_that_was_assumed_is_listed_or_counted() {
+    let mut analysis = analysis();
+    let key = |table, name: &str, value: Option<&str>| Fallback {
+        table,
+        name: name.to_owned(),
+        value: value.map(str::to_owned),
+        source: "common practice",
+    };
+    analysis.fallbacks = vec![
+        key("stressing", "mu_per_rad", Some("0.19")),
+        key("system", "strand", Some(&"x".repeat(60))),
+        key("system", "default_strand", None),
+        key("limits", "cover_mm", Some("20")),
+    ];
+    let made = report::summary(&facts(), &analysis, &Job::default(), &[]);
+    assert!(
+        made.contains("mu_per_rad 0.19, default_strand not given"),
+        "{made}"
+    );
+    assert!(made.contains("and 2 more keys"), "{made}");
+}
+
+#[test]
+fn one_line_is_one_line() {
+    let mut analysis = analysis();
+    analysis.floor.tendons.truncate(1);
+    analysis.results.truncate(1);
+    let made = report::summary(&facts(), &analysis, &Job::default(), &[]);
+    assert!(made.contains("1 tendon line ("), "{made}");
+    assert!(made.contains("for 1 of 1 line."), "{made}");
+}
+
+#[test]
+fn the_sheet_gives_the_drawings_number_beside_the_height_and_names_the_datum() {
+    let mut job = Job::default();
+    job.conventions.height.datum = Datum::DuctUnderside;
+    job.profile.fit_inflection = true;
+    let mut analysis = analysis();
+    for tendon in &mut analysis.floor.tendons {
+        for point in tendon
+            .points
+            .iter_mut()
+            .filter(|p| p.kind == PointKind::Low)
+        {
+            point.drawn_m = point.height_m.map(|height_m| height_m - 0.013);
+        }
+    }
+    let sheet = report::calculation(&facts(), &analysis, &job, "D001").expect("a sheet");
+    assert!(
+        sheet.contains("above the local soffit to the underside of the duct"),
+        "{sheet}"
+    );
+    // A low at 30 mm, whose strand lies 13 mm above the duct's underside.
+    let low = sheet
+        .lines()
+        .find(|line| line.starts_with("  low"))
+        .expect("a low");
+    let cells: Vec<&str> = low.split_whitespace().collect();
+    assert!(cells.contains(&"17.00") && cells.contains(&"30.0"), "{low}");
+    assert!(sheet.contains("fitted to the support heights"), "{sheet}");
+    assert!(
+        !sheet.contains("hogging length: 0.1 of the span"),
+        "{sheet}"
+    );
+}
+
+#[test]
+fn extensions_of_a_tendon_live_at_both_ends_say_that_both_jacks_pull_together() {
+    let mut analysis = analysis();
+    let live = analysis.floor.tendons[0].ends[0].kind;
+    analysis.floor.tendons[0].ends[1].kind = live;
+    let forces = analysis.results[0].forces.as_mut().expect("forces");
+    forces.ends[1] = forces.ends[0];
+    let table = report::extensions_csv(&analysis);
+    let rows: Vec<&str> = table.lines().collect();
+    assert!(rows[1].contains("both jacks pull together") && rows[2].contains("both jacks"));
+    assert!(!rows[3].contains("both jacks") && rows[3].contains("not included"));
+    let sheet = report::calculation(&facts(), &analysis, &Job::default(), "D001").expect("a sheet");
+    assert!(
+        sheet.contains("both jacks pull together; the two add up to 138.6 mm gross"),
+        "{sheet}"
+    );
 }

@@ -31,6 +31,8 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
         tendons: 1,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [places[0], places[places.len() - 1]].map(|place| End {
             kind: Some(EndKind::Live),
             place,
@@ -40,6 +42,7 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
                 kind,
                 station_m: share * length_m,
                 place: path.place_at(share * length_m),
+                drawn_m: None,
                 height_m: Some(height_m),
                 thickness_m: Some(0.2),
             })

@@ -104,10 +104,11 @@ impl Refusal {
                     &STRAND_SIZE_UNKNOWN,
                     0.0,
                     format!(
-                        "{named}, so no forces were worked out; a size in system.strands, or system.default_strand, was expected"
+                        "{named}, so no forces were worked out; a size of a [[system.strand]] table, or \
+                         system.default_strand, was expected"
                     ),
-                    "write the size in the tendon's mark, add the size with its area and strength to system.strands, or set \
-                     system.default_strand",
+                    "write the size in the tendon's mark; or set default_strand below [system]; or add the size to the job \
+                     file as a table [[system.strand]] with name, area_mm2 and strength_mpa",
                 ))
             }
             Self::Stress(reason) => Some(at(

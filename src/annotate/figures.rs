@@ -1,7 +1,10 @@
 //! Force figures at anchors, highs and lows, set beside their tendon where nothing else is written. A figure has the
-//! same place at every stage. What fits nowhere is left out: the table and the other results have it.
+//! same place at every stage. The figures of a tendon follow one another as their points do; one that stands off its
+//! point is led there by a thin line. What fits nowhere is left out: the table and the other results have it.
 
 use std::f64::consts::FRAC_PI_2;
+
+use geo::Coord;
 
 use super::lanes::Lane;
 use super::place::{Room, Spot, readable_rad};
@@ -9,10 +12,13 @@ use super::{layers, words};
 use crate::analysis::{Analysis, TendonResult, pair};
 use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::{PointKind, Tendon};
-use crate::geometry::{Path, step};
+use crate::geometry::{distance_m, step};
 
 /// Tendon lines that a figure may lie on if there is no clear place.
 const MOST_CROSSED: usize = 1;
+
+/// How far from its point a figure needs no leader, in text widths, where no other point of the tendon is nearer.
+const UNLED: f64 = 1.5;
 
 /// What a figure stands for, the most needed first.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
@@ -26,41 +32,70 @@ enum Worth {
 #[derive(Debug, Clone, Copy)]
 struct Figure<'a> {
     worth: Worth,
-    path: &'a Path,
+    /// Index of the tendon in the floor.
+    index: usize,
+    tendon: &'a Tendon,
     station_m: f64,
     /// As far as they are known.
     forces_kn: [Option<f64>; 4],
     lane: Lane,
 }
 
+/// Where a figure stands.
+#[derive(Debug, Clone, Copy)]
+struct Stand {
+    spot: Spot,
+    /// Station of its centre, metres.
+    along_m: f64,
+    /// From the figure to its point, if it stands off it.
+    leader: Option<[Coord<f64>; 2]>,
+}
+
 /// The figures of all tendons that have forces, stage by stage.
 pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> Vec<Mark> {
     let mut figures: Vec<Figure> = pair(analysis)
         .zip(lanes)
-        .filter(|((_, result), _)| result.forces.is_some())
-        .flat_map(|((tendon, result), lane)| of_tendon(tendon, result, *lane))
+        .enumerate()
+        .filter(|(_, ((_, result), _))| result.forces.is_some())
+        .flat_map(|(index, ((tendon, result), lane))| of_tendon(index, tendon, result, *lane))
         .collect();
     figures.sort_by_key(|figure| figure.worth);
-    let placed: Vec<(Figure, Spot)> = figures
-        .into_iter()
-        .filter_map(|figure| {
-            let spot = find(&figure, room)?;
-            room.take(&spot);
-            Some((figure, spot))
-        })
-        .collect();
+    let mut of_tendon: Vec<Vec<(f64, f64)>> = vec![Vec::new(); analysis.results.len()];
+    let mut placed: Vec<(Figure, Stand)> = Vec::with_capacity(figures.len());
+    for figure in figures {
+        let Some(before) = of_tendon.get_mut(figure.index) else {
+            continue;
+        };
+        let Some(stand) = find(&figure, before, room) else {
+            continue;
+        };
+        before.push((figure.station_m, stand.along_m));
+        room.take(&stand.spot);
+        if let Some([from, to]) = stand.leader {
+            room.take_line(from, to);
+        }
+        placed.push((figure, stand));
+    }
     let stages = layers::FORCE_TEXT.into_iter().enumerate();
     stages
         .flat_map(|(stage, layer)| {
-            placed.iter().filter_map(move |(figure, spot)| {
-                let drawn = Drawn::Text {
-                    place: spot.centre,
-                    height_m: spot.height_m,
-                    rotation_rad: spot.rotation_rad,
+            placed.iter().flat_map(move |(figure, stand)| {
+                let known = figure.forces_kn.get(stage).copied().flatten();
+                let text = known.map(|force_kn| Drawn::Text {
+                    place: stand.spot.centre,
+                    height_m: stand.spot.height_m,
+                    rotation_rad: stand.spot.rotation_rad,
                     align: Align::Middle,
-                    content: number((*figure.forces_kn.get(stage)?)?),
-                };
-                Some(layers::mark(layer, drawn))
+                    content: number(force_kn),
+                });
+                let leader = stand.leader.filter(|_| known.is_some());
+                let leader = leader.map(|points| Drawn::Line {
+                    points: points.to_vec(),
+                    width_m: 0.0,
+                    closed: false,
+                });
+                let drawn = text.into_iter().chain(leader);
+                drawn.map(move |drawn| layers::mark(layer, drawn))
             })
         })
         .collect()
@@ -75,10 +110,16 @@ fn latest_kn(forces_kn: &[Option<f64>; 4]) -> Option<f64> {
     forces_kn.iter().rev().find_map(|force_kn| *force_kn)
 }
 
-fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<Figure<'a>> {
+fn of_tendon<'a>(
+    index: usize,
+    tendon: &'a Tendon,
+    result: &TendonResult,
+    lane: Lane,
+) -> Vec<Figure<'a>> {
     let figure = |worth, station_m, forces_kn: [Option<f64>; 4]| Figure {
         worth,
-        path: &tendon.path,
+        index,
+        tendon,
         station_m,
         forces_kn,
         lane,
@@ -124,17 +165,19 @@ fn of_tendon<'a>(tendon: &'a Tendon, result: &TendonResult, lane: Lane) -> Vec<F
     figures
 }
 
-/// The first clear place in a fixed order: in full size before smaller, near before far, left of the reading direction
-/// before right (in a band, that tells whose figure it is), beside the point before along the tendon. Texts are never
-/// touched; lines only as a last resort.
-fn find(figure: &Figure, room: &Room) -> Option<Spot> {
+/// The first place in a fixed order that is clear and needs no leader: in full size before smaller, near before far,
+/// left of the reading direction before right (in a band, that tells whose figure it is), beside the point before along
+/// the tendon. Failing that, the first that crosses fewest lines. Texts are never touched, and no figure passes another
+/// of its tendon: `before` has their stations, and where they stand.
+fn find(figure: &Figure, before: &[(f64, f64)], room: &Room) -> Option<Stand> {
     let letters: Vec<String> = figure.forces_kn.into_iter().flatten().map(number).collect();
     let longest = letters.iter().max_by_key(|text| text.len())?;
     if !figure.forces_kn.iter().flatten().all(|kn| kn.is_finite()) {
         return None;
     }
-    let length_m = figure.path.length_m();
-    let mut second: Option<(usize, Spot)> = None;
+    let path = &figure.tendon.path;
+    let length_m = path.length_m();
+    let mut second: Option<((usize, bool), Stand)> = None;
     for shrink in [1.0, 0.75] {
         let height_m = figure.lane.text_m * shrink;
         let width_m = words::width_m(longest, height_m);
@@ -146,13 +189,15 @@ fn find(figure: &Figure, room: &Room) -> Option<Spot> {
             }
             for side in [1.0, -1.0] {
                 for (widths, heights) in shifts(figure.station_m, length_m) {
-                    let along_m = widths * width_m + heights * height_m;
-                    let station_m = figure.station_m + along_m;
-                    if station_m < -1e-9 || station_m > length_m + 1e-9 {
+                    let along_m = figure.station_m + widths * width_m + heights * height_m;
+                    if along_m < -1e-9
+                        || along_m > length_m + 1e-9
+                        || !in_order(figure.station_m, along_m, height_m, before)
+                    {
                         continue;
                     }
-                    let on_line = figure.path.place_at(station_m);
-                    let rotation_rad = readable_rad(figure.path.heading_at(station_m));
+                    let on_line = path.place_at(along_m);
+                    let rotation_rad = readable_rad(path.heading_at(along_m));
                     let spot = Spot {
                         centre: step(on_line, rotation_rad + FRAC_PI_2, side * across_m),
                         width_m,
@@ -162,18 +207,61 @@ fn find(figure: &Figure, room: &Room) -> Option<Spot> {
                     if !room.clear_of_texts(&spot) {
                         continue;
                     }
-                    let crossed = room.lines_hit(&spot);
-                    if crossed == 0 {
-                        return Some(spot);
+                    let leader = leader(figure, along_m, &spot);
+                    if leader.is_some_and(|[from, to]| !room.line_clear_of_texts(from, to)) {
+                        continue;
                     }
-                    if crossed <= MOST_CROSSED && second.is_none_or(|(least, _)| crossed < least) {
-                        second = Some((crossed, spot));
+                    let stand = Stand {
+                        spot,
+                        along_m,
+                        leader,
+                    };
+                    let rank = (room.lines_hit(&spot), leader.is_some());
+                    if rank == (0, false) {
+                        return Some(stand);
+                    }
+                    if rank.0 <= MOST_CROSSED && second.is_none_or(|(least, _)| rank < least) {
+                        second = Some((rank, stand));
                     }
                 }
             }
         }
     }
-    second.map(|(_, spot)| spot)
+    second.map(|(_, stand)| stand)
+}
+
+/// Whether a figure would stand to the others of its tendon as its point does to theirs, and clearly so.
+fn in_order(station_m: f64, along_m: f64, clearly_m: f64, before: &[(f64, f64)]) -> bool {
+    before.iter().all(|&(other_m, other_along_m)| {
+        let apart_m = along_m - other_along_m;
+        let ahead = if station_m < other_m {
+            -apart_m
+        } else {
+            apart_m
+        };
+        ahead >= clearly_m
+    })
+}
+
+/// The line from a figure to its point, unless it stands beside it and nearer to it than to any other of the tendon's.
+fn leader(figure: &Figure, along_m: f64, spot: &Spot) -> Option<[Coord<f64>; 2]> {
+    let off_m = (along_m - figure.station_m).abs();
+    let others = figure.tendon.points.iter().map(|point| point.station_m);
+    let nearest = others
+        .filter(|other_m| (other_m - figure.station_m).abs() > 1e-6)
+        .all(|other_m| off_m <= (along_m - other_m).abs());
+    if nearest && off_m <= UNLED * spot.width_m + spot.height_m {
+        return None;
+    }
+    let to = figure.tendon.path.place_at(figure.station_m);
+    let sides = [-1.0, 1.0].map(|side| {
+        let clear_m = spot.width_m / 2.0 + 0.3 * spot.height_m;
+        step(spot.centre, spot.rotation_rad, side * clear_m)
+    });
+    let from = sides
+        .into_iter()
+        .min_by(|a, b| distance_m(*a, to).total_cmp(&distance_m(*b, to)))?;
+    Some([from, to])
 }
 
 /// Shifts along the tendon, in text widths and heights: inwards from an end, to both sides elsewhere.

@@ -112,18 +112,19 @@ fn texts(
         .fold(0.0, f64::max);
     let count = u32::try_from(lines.len()).unwrap_or(u32::MAX);
     let height_m = text_m + pitch_m * f64::from(count.saturating_sub(1));
-    let mut best: Option<(usize, Spot)> = None;
+    let mut best: Option<((usize, usize), Spot)> = None;
     for (side, up) in spots() {
         let centre = Coord {
             x: place.x + side * (ring_m + 0.5 * text_m + width_m / 2.0),
             y: place.y + up * (ring_m + height_m / 2.0),
         };
         let spot = Spot::upright(centre, width_m, height_m);
-        let hit = 8 * room.texts_hit(&spot) + room.lines_hit(&spot);
+        // A text written over is lost; a line shows through.
+        let hit = (room.texts_hit(&spot), room.lines_hit(&spot));
         if best.is_none_or(|(least, _)| hit < least) {
             best = Some((hit, spot));
         }
-        if hit == 0 {
+        if hit == (0, 0) {
             break;
         }
     }
@@ -166,9 +167,10 @@ fn texts(
 
 /// Steps to the side and up, in half widths and half heights of the stack from the ring, near ones first.
 fn spots() -> impl Iterator<Item = (f64, f64)> {
-    [0.0, 0.6, -0.6, 1.2, -1.2, 2.0, -2.0, 3.0, -3.0]
-        .into_iter()
-        .flat_map(|up| [(1.0, up), (-1.0, up)])
+    let ups = [
+        0.0, 0.6, -0.6, 1.2, -1.2, 2.0, -2.0, 3.0, -3.0, 4.0, -4.0, 5.5, -5.5, 7.0, -7.0, 9.0, -9.0,
+    ];
+    ups.into_iter().flat_map(|up| [(1.0, up), (-1.0, up)])
 }
 
 /// A hairline from the ring to a stack that stands off it.

@@ -8,6 +8,10 @@ use crate::analysis::{Analysis, Sample, pair};
 use crate::drawing::{Drawn, Mark};
 use crate::geometry::distance_m;
 
+/// Length of a dash, metres, and most of them on a tendon.
+const DASH_M: f64 = 0.5;
+const MOST_DASHES: f64 = 60.0;
+
 /// The lengths of all tendons that have forces, stage by stage, in the floor's order.
 pub(super) fn lengths(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
     let mut marks = Vec::new();
@@ -24,6 +28,42 @@ pub(super) fn lengths(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
                 };
                 marks.push(layers::inked(layer, ramp::class_ink(run.class), drawn));
             }
+        }
+    }
+    marks
+}
+
+/// Grey dashes on a thin grey line along the tendons that have no forces in service: left in their layer's colour they
+/// would pass for one of the classes.
+pub(super) fn without(analysis: &Analysis, lanes: &[Lane]) -> Vec<Mark> {
+    let mut marks = Vec::new();
+    for ((tendon, result), lane) in pair(analysis).zip(lanes) {
+        let in_service = result.forces.as_ref().and_then(|forces| forces.later);
+        if in_service.is_some() {
+            continue;
+        }
+        let length_m = tendon.path.length_m();
+        let grey = |points, width_m| {
+            let drawn = Drawn::Line {
+                points,
+                width_m,
+                closed: false,
+            };
+            layers::inked(layers::FINDING, layers::GREY, drawn)
+        };
+        let whole = tendon.path.to_line_string(0.01).0;
+        if whole.len() > 1 {
+            marks.push(grey(whole, lane.width_m / 4.0));
+        }
+        // A line drawn in another unit must not turn into millions of dashes.
+        let pitch_m = DASH_M.max(length_m / MOST_DASHES) * 1.6;
+        let mut from_m = 0.0;
+        while from_m < length_m {
+            let to_m = (from_m + pitch_m / 1.6).min(length_m);
+            let stations_m = [from_m, f64::midpoint(from_m, to_m), to_m];
+            let dash = stations_m.map(|at_m| tendon.path.place_at(at_m));
+            marks.push(grey(dash.to_vec(), lane.width_m));
+            from_m += pitch_m;
         }
     }
     marks

@@ -32,7 +32,7 @@ const PLAIN: Ink = Ink {
     rgb: None,
 };
 /// Mid grey: behind everything else, on paper and screen.
-const GREY: Ink = Ink {
+pub(super) const GREY: Ink = Ink {
     index: 8,
     rgb: Some([128, 128, 128]),
 };

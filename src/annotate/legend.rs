@@ -5,9 +5,12 @@ use geo::Coord;
 use super::place::Block;
 use super::{layers, ramp, words};
 use crate::analysis::Analysis;
+use crate::cautions::CAUTIONS;
 use crate::drawing::{Align, Drawn};
 use crate::finding::Level;
-use crate::job::{Datum, FromFace, Job, Wobble};
+use crate::floor::EndKind;
+use crate::job::{Job, Pattern, Wobble};
+use crate::losses::Forces;
 
 /// Heading of legend and table; no file name and no date, so that the same floor gives the same drawing.
 pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
@@ -15,14 +18,6 @@ pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
 const LINE: usize = 56;
 /// From line to line, in letter heights.
 const PITCH: f64 = 1.7;
-
-const CAUTIONS: [&str; 3] = [
-    "A drawing check, not a design certificate: strength, punching, deflection, anchorage zones and fire are not \
-     looked at. The engineer responsible decides, under the local code.",
-    "A stressed tendon stores great energy: nobody behind, in line with or above a jack or the tendon's line; concrete \
-     strength proven in writing first; only trained crews stress, cut or de-tension.",
-    "Forces follow from the heights as drawn; what is built may differ.",
-];
 
 /// The legend as a block, with letters of the given height.
 pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
@@ -34,13 +29,31 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     for class in 0..ramp::RAMP.len() {
         column.patch(class);
     }
-    column.gap();
-    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons; above or left of their tendon where there is room");
-    column.sentence("ext 180 (net 174) mm: extension at a live end before (after) wedge draw-in");
-    column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");
     if let Some(line) = without_forces(analysis) {
+        column.dashes();
         column.sentence(&line);
     }
+    column.gap();
+    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons; above or left of their tendon where there is room, in the order of its points; a thin line leads one that stands off its point. What found no room is in the result");
+    column.sentence("Table: first extension at the left end of a tendon, second at the right end; where it runs rather up than across, at the lower and the upper end");
+    if analysis
+        .floor
+        .tendons
+        .iter()
+        .any(|tendon| !tendon.mark_drawn)
+    {
+        column.sentence("Marks in this colour beside tendons: given by tautplan, since the drawing has none there");
+    }
+    column.sentence("ext 180 (net 174) mm: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it");
+    let both_live = |forces: &Forces| forces.ends.iter().all(|end| end.kind == EndKind::Live);
+    if analysis
+        .results
+        .iter()
+        .any(|result| result.forces.as_ref().is_some_and(both_live))
+    {
+        column.sentence("Live at both ends: both jacks pull together, and the two extensions add up to the tendon's; with one jack moved from end to end the first pull is longer and the second shorter");
+    }
+    column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");
     column.gap();
     for (level, what) in [
         (
@@ -85,7 +98,7 @@ fn without_forces(analysis: &Analysis) -> Option<String> {
     });
     let none = none.count();
     (none > 0).then(|| {
-        format!("{none} of {all} tendons have no colour: their forces in service could not be worked out, see the findings")
+        format!("{none} of {all} tendons: their forces in service could not be worked out, see the findings")
     })
 }
 
@@ -95,15 +108,6 @@ fn inputs(job: &Job) -> Vec<String> {
     let wobble = match stressing.wobble {
         Wobble::RadPerM(k) => format!("k {k} rad/m"),
         Wobble::PerM(k) => format!("K {k} per m"),
-    };
-    let height = &job.conventions.height;
-    let from = match height.from {
-        FromFace::Soffit => "above the local soffit",
-        FromFace::Top => "below the top of the slab",
-    };
-    let to = match height.datum {
-        Datum::Centroid => "centroid of the strands",
-        Datum::DuctUnderside => "underside of the duct",
     };
     let long_term = &job.long_term;
     vec![
@@ -127,8 +131,28 @@ fn inputs(job: &Job) -> Vec<String> {
             100.0 * long_term.relaxation_1000h,
             long_term.relaxation_factor
         ),
-        format!("Heights read as {} {from} to the {to}", height.unit.name()),
+        format!(
+            "Heights read as {}{}",
+            job.conventions.height,
+            by_pattern(job)
+        ),
     ]
+}
+
+/// Patterns that say otherwise.
+fn by_pattern(job: &Job) -> String {
+    let patterns = job.conventions.height_patterns.iter();
+    let own: Vec<&str> = patterns
+        .filter(|pattern| {
+            pattern.unit.is_some() || pattern.from.is_some() || pattern.datum.is_some()
+        })
+        .map(Pattern::label)
+        .collect();
+    if own.is_empty() {
+        String::new()
+    } else {
+        format!(", except by the job's patterns {}", own.join(", "))
+    }
 }
 
 /// A column of lines that grows downwards.
@@ -182,6 +206,27 @@ impl Column {
             .push(layers::inked(layers::TABLE, ink, solid));
         let content = format!("{} %", ramp::class_name(class));
         self.line(&content, 6.5 * self.letter_m, self.letter_m);
+    }
+
+    /// The sign of a tendon without forces.
+    fn dashes(&mut self) {
+        let y = self.middle(self.letter_m);
+        for from in [0.0, 2.9] {
+            let drawn = Drawn::Line {
+                points: [from, from + 2.1]
+                    .map(|x| Coord {
+                        x: x * self.letter_m,
+                        y,
+                    })
+                    .to_vec(),
+                width_m: 0.3 * self.letter_m,
+                closed: false,
+            };
+            self.block
+                .marks
+                .push(layers::inked(layers::TABLE, layers::GREY, drawn));
+        }
+        self.line("no forces", 6.5 * self.letter_m, self.letter_m);
     }
 
     fn ring(&mut self, level: Level, what: &str) {

@@ -94,6 +94,16 @@ impl Room {
         self.texts.insert(spot.quad(0.0));
     }
 
+    /// Whether a thin line would touch no text.
+    pub(super) fn line_clear_of_texts(&self, from: Coord<f64>, to: Coord<f64>) -> bool {
+        self.texts.is_clear(&[from, to, to, from])
+    }
+
+    /// Takes the place for a thin line, which later texts keep clear of.
+    pub(super) fn take_line(&mut self, from: Coord<f64>, to: Coord<f64>) {
+        self.texts.insert([from, to, to, from]);
+    }
+
     /// Pieces of tendon lines within reach of a place, in the floor's order.
     pub(super) fn pieces_near(&self, place: Coord<f64>, reach_m: f64) -> Vec<Piece> {
         let quad = Spot::upright(place, 2.0 * reach_m, 2.0 * reach_m).quad(0.0);

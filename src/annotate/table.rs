@@ -8,6 +8,7 @@ use super::{layers, words};
 use crate::analysis::{Analysis, TendonResult, pair};
 use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::{End, EndKind, Tendon};
+use crate::job::Job;
 use crate::losses::EndForces;
 
 const COLUMNS: usize = 12;
@@ -20,10 +21,10 @@ const HEADS: [[&str; 2]; COLUMNS] = [
     ["jacking", "kN"],
     ["service", "least kN"],
     ["service", "mean kN"],
-    ["start ext mm", "gross (net)"],
-    ["end ext mm", "gross (net)"],
+    ["ext mm first", "gross (net)"],
+    ["ext mm second", "gross (net)"],
     ["curvature", "loss %"],
-    ["far end", "left %"],
+    ["least at", "jacking %"],
     ["find-", "ings"],
 ];
 /// Columns of words; numbers stand to the right.
@@ -40,8 +41,8 @@ const RULE_EVERY: usize = 5;
 type Row = [String; COLUMNS];
 
 /// The table as a block, with letters of the given height.
-pub(super) fn table(analysis: &Analysis, letter_m: f64) -> Block {
-    let rows = rows(analysis);
+pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
+    let rows = rows(analysis, job);
     let widths_m = widths_m(&rows, letter_m);
     let part_m: f64 = widths_m.iter().sum();
     // Parts of like length, about as high as the floor.
@@ -155,14 +156,15 @@ fn widths_m(rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
     widths_m.map(|width| width + 2.0 * PAD * letter_m)
 }
 
-fn rows(analysis: &Analysis) -> Vec<Row> {
+fn rows(analysis: &Analysis, job: &Job) -> Vec<Row> {
     pair(analysis)
         .zip(analysis.findings_by_tendon())
-        .map(|((tendon, result), found)| row(tendon, result, found.len()))
+        .map(|((tendon, result), found)| row(tendon, result, job, found.len()))
         .collect()
 }
 
-fn row(tendon: &Tendon, result: &TendonResult, findings: usize) -> Row {
+fn row(tendon: &Tendon, result: &TendonResult, job: &Job, findings: usize) -> Row {
+    let [first, second] = ends_on_plan(tendon);
     let forces = result.forces.as_ref();
     let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
     let whole = |value: Option<f64>| or_dash(value.map(|kn| format!("{kn:.0}")));
@@ -176,28 +178,43 @@ fn row(tendon: &Tendon, result: &TendonResult, findings: usize) -> Row {
     let extension = |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)));
     [
         words::name(&tendon.mark),
-        strands(tendon),
+        strands(tendon, job),
         format!("{:.2}", tendon.path.length_m()),
-        tendon.ends.map(|end| end_word(&end)).join("-"),
+        [first, second]
+            .map(|at| end_word(&tendon.ends[at]))
+            .join("-"),
         whole(forces.map(|forces| forces.jack_kn)),
         whole(least_kn),
         whole(forces.and_then(|forces| Some(forces.later?.mean_service_kn))),
-        extension(0),
-        extension(1),
+        extension(first),
+        extension(second),
         percent(forces.map(|f| f.totals.friction_curvature_kn / f.jack_kn)),
         percent(forces.map(|f| f.least_jacking_kn / f.jack_kn)),
         findings.to_string(),
     ]
 }
 
-/// `4x5-12.7`: tendons in the line, strands of each, size, as far as the drawing says.
-fn strands(tendon: &Tendon) -> String {
+/// The ends as the plan shows them: the left one first, or the lower one where the tendon runs rather up than across.
+fn ends_on_plan(tendon: &Tendon) -> [usize; 2] {
+    let run = tendon.ends[1].place - tendon.ends[0].place;
+    let ahead = if run.x.abs() >= run.y.abs() {
+        run.x
+    } else {
+        run.y
+    };
+    if ahead < 0.0 { [1, 0] } else { [0, 1] }
+}
+
+/// `4x5-12.7`: tendons in the line, strands of each, size, as far as drawing and job say.
+fn strands(tendon: &Tendon, job: &Job) -> String {
     let times = match tendon.tendons {
         1 => String::new(),
         more => format!("{more}x"),
     };
     let strands = tendon.strands.map_or("?".to_owned(), |n| n.to_string());
-    let size = tendon.strand.as_deref().map(words::name);
+    let size = tendon.strand.as_deref();
+    let size = size.or(job.system.default_strand.as_deref());
+    let size = size.map(words::name);
     let size = size.map(|size| format!("-{size}")).unwrap_or_default();
     format!("{times}{strands}{size}")
 }

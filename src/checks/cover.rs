@@ -92,9 +92,13 @@ fn duct_around(curvature_per_m: f64, job: &Job) -> (f64, f64) {
     let height_m = job.system.duct_height_m;
     let reading = &job.conventions.height;
     let below_m = match reading.datum {
-        Datum::DuctUnderside if curvature_per_m > 0.0 => reading.strand_in_duct_low_m,
-        Datum::DuctUnderside if curvature_per_m < 0.0 => reading.strand_in_duct_high_m,
-        Datum::DuctUnderside | Datum::Centroid => height_m / 2.0,
+        Datum::DuctUnderside | Datum::Chair if curvature_per_m > 0.0 => {
+            reading.strand_in_duct_low_m
+        }
+        Datum::DuctUnderside | Datum::Chair if curvature_per_m < 0.0 => {
+            reading.strand_in_duct_high_m
+        }
+        Datum::DuctUnderside | Datum::Chair | Datum::Centroid => height_m / 2.0,
     };
     (below_m, height_m - below_m)
 }

@@ -150,7 +150,7 @@ mod tests {
         let limit_rad = job().limits.angle_per_m_rad * 10.0;
         assert_eq!(found(0.01, drop_at(limit_rad - 0.001)), None);
         let beyond = found(0.01, drop_at(limit_rad + 0.001));
-        assert!(beyond.is_some_and(|f| f.text.contains("angle_per_m_rad") && f.text.contains("0.501 rad")));
+        assert!(beyond.is_some_and(|f| f.text.contains("angle_per_m_rad") && f.text.contains("1.001 rad")));
     }
 
     #[test]

@@ -40,6 +40,8 @@ pub(super) fn along(path: Path) -> Tendon {
         tendons: 1,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends: [
             end(EndKind::Live, path.start()),
             end(EndKind::Dead, path.end()),
@@ -58,6 +60,7 @@ pub(super) fn point(kind: PointKind, station_m: f64, height_m: Option<f64>) -> P
             x: station_m,
             y: 0.0,
         },
+        drawn_m: None,
         height_m,
         thickness_m: Some(0.2),
     }

@@ -72,8 +72,8 @@ pub(super) fn prepare(folder: &Path) -> Result<(), Refused> {
     })
 }
 
-/// Writes all of these files or, if one cannot be written, none: all are complete on disk before the first takes its
-/// name.
+/// Writes these files, each complete or not at all: all are complete on disk before the first takes its name, so that
+/// none is written unless there is room for all. Should a name then be refused to one, those before it have theirs.
 pub(super) fn write_all(files: &[(PathBuf, Pieces<'_>)]) -> Result<(), Refused> {
     let mut ready = Vec::with_capacity(files.len());
     for (path, pieces) in files {

@@ -97,7 +97,7 @@ fn mark(
         .iter()
         .map(|(path, _)| path.display().to_string())
         .collect();
-    let summary = report::summary(&done.facts, analysis, &names);
+    let summary = report::summary(&done.facts, analysis, job, &names);
     let printed = super::print(&summary, terminal);
     let grave = analysis
         .findings

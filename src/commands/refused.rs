@@ -19,7 +19,7 @@ pub enum Refused {
     #[error("{}: not a file on disk; save the drawing to a file and name that", .0.display())]
     NotAFile(PathBuf),
     /// The file cannot be read.
-    #[error("{}: cannot be read: {error}; check its permissions", path.display())]
+    #[error("{}: cannot be read: {}; check its permissions", path.display(), reason(error))]
     Unreadable {
         /// Which file.
         path: PathBuf,
@@ -103,7 +103,7 @@ pub enum Refused {
     )]
     OverInput(PathBuf),
     /// The folder for the results is no folder, or cannot be made or written.
-    #[error("{}: cannot be written: {error}; give another folder with --out", path.display())]
+    #[error("{}: cannot be written: {}; give another folder with --out", path.display(), reason(error))]
     Folderless {
         /// The folder.
         path: PathBuf,
@@ -111,7 +111,7 @@ pub enum Refused {
         error: io::Error,
     },
     /// A result cannot be written.
-    #[error("{}: cannot be written: {error}", path.display())]
+    #[error("{}: cannot be written: {}; put that right, or give another place with --out", path.display(), reason(error))]
     Unwritable {
         /// Which file.
         path: PathBuf,
@@ -131,4 +131,21 @@ pub enum Refused {
         /// Which marks there are.
         marks: String,
     },
+}
+
+/// The system's reason in words of one's own; those of a library name files that the user never asked for.
+pub(super) fn reason(error: &io::Error) -> String {
+    use io::ErrorKind;
+    match error.kind() {
+        ErrorKind::PermissionDenied => "it is protected from you".to_owned(),
+        ErrorKind::AlreadyExists | ErrorKind::NotADirectory => {
+            "a file stands where a folder is needed".to_owned()
+        }
+        ErrorKind::IsADirectory => "a folder of that name is there".to_owned(),
+        ErrorKind::NotFound => "its folder is not there".to_owned(),
+        ErrorKind::ReadOnlyFilesystem => "the disk can only be read".to_owned(),
+        ErrorKind::StorageFull | ErrorKind::QuotaExceeded => "the disk is full".to_owned(),
+        ErrorKind::InvalidFilename => "the name is too long or not allowed".to_owned(),
+        other => other.to_string(),
+    }
 }

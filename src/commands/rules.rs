@@ -3,7 +3,10 @@
 use super::{Outcome, print};
 use crate::finding::Rule;
 use crate::terminal::Terminal;
-use crate::{checks, floor};
+use crate::{analysis, checks, floor};
+
+/// A name less like the one asked for than this is not offered.
+const LIKE: f64 = 0.8;
 
 /// Prints every rule, or the one of this name.
 pub fn run(name: Option<&str>, terminal: &mut Terminal) -> Outcome {
@@ -20,7 +23,13 @@ pub fn run(name: Option<&str>, terminal: &mut Terminal) -> Outcome {
     }
     let near = rules
         .iter()
-        .map(|rule| (strsim::jaro_winkler(name, rule.name), rule.name))
+        .map(|rule| {
+            (
+                strsim::jaro_winkler(&name.to_lowercase(), rule.name),
+                rule.name,
+            )
+        })
+        .filter(|(likeness, _)| *likeness > LIKE)
         .max_by(|one, other| one.0.total_cmp(&other.0))
         .map_or(String::new(), |(_, near)| format!("did you mean {near}? "));
     terminal.error(&format!(
@@ -34,6 +43,7 @@ fn catalogue() -> Vec<&'static Rule> {
     let mut rules: Vec<&'static Rule> = checks::rules()
         .iter()
         .chain(floor::RULES)
+        .chain(analysis::rules())
         .copied()
         .collect();
     rules.sort_by_key(|rule| rule.name);

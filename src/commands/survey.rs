@@ -8,9 +8,14 @@ use crate::drawing::{Purpose, Wanted};
 use crate::job;
 use crate::terminal::Terminal;
 
+mod at_ends;
 mod contents;
+mod directions;
+mod labels;
 mod proposals;
 mod readings;
+mod roles;
+mod symbols;
 mod words;
 
 use contents::Contents;

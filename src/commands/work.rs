@@ -110,7 +110,7 @@ pub(super) fn wanted(patterns: impl IntoIterator<Item = String>) -> Wanted {
 /// The drawing's layers that the job names for tendons.
 fn tendon_layers(plan: &Path, source: &Source, job: &Job) -> Result<Vec<Layer>, Refused> {
     let layers = &job.conventions.layers;
-    let patterns: Vec<String> = [&layers.banded, &layers.distributed]
+    let patterns: Vec<String> = [&layers.banded, &layers.distributed, &layers.tendons]
         .into_iter()
         .flatten()
         .cloned()

@@ -19,10 +19,48 @@ pub(super) struct Kept {
     pub(super) handle: Option<String>,
     /// Number of the block's name, for an insert.
     pub(super) block: u32,
-    /// For an insert's attributes, in order: layer as written, handle.
-    pub(super) attributes: Vec<(Option<Vec<u8>>, Option<String>)>,
+    /// An insert's attributes, in order.
+    pub(super) attributes: Vec<KeptAttribute>,
     /// Offset of the record in the file.
     pub(super) start: usize,
+    /// Colour and linetype as written.
+    pub(super) worn: Worn,
+}
+
+/// An insert's attribute: what the library loses of it.
+#[derive(Debug, Clone, Default)]
+pub(super) struct KeptAttribute {
+    /// Layer as written.
+    pub(super) layer: Option<Vec<u8>>,
+    /// Handle as for [`Kept`].
+    pub(super) handle: Option<String>,
+    /// Colour and linetype as written.
+    pub(super) worn: Worn,
+}
+
+/// Colour and linetype as an entity writes them; what it leaves out is its layer's.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
+pub(super) struct Worn {
+    /// Group 62: 0 by block, 256 by layer.
+    pub(super) colour: Option<i64>,
+    /// Whether group 420 gives a true colour.
+    pub(super) true_colour: bool,
+    /// Where in the file the linetype's name stands: first byte and past the last.
+    pub(super) linetype: Option<(usize, usize)>,
+}
+
+impl Worn {
+    fn note(&mut self, tag: &Tag<'_>) {
+        match tag.code {
+            6 => {
+                let name = tag.value_range();
+                self.linetype = Some((name.start, name.end));
+            }
+            62 => self.colour = tag.integer(),
+            420 => self.true_colour = true,
+            _ => {}
+        }
+    }
 }
 
 /// Why a record was left out.
@@ -49,6 +87,9 @@ pub(super) struct Cleaner<'a> {
     /// Strings whose characters had to be guessed.
     pub(super) guessed: usize,
 }
+
+/// Flag of an attribute without a place; the format itself has no such flag.
+pub(super) const NOWHERE: i32 = 64;
 
 const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
 const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
@@ -141,14 +182,19 @@ impl<'a> Cleaner<'a> {
                     self.line(b"66", b"1");
                     sequence = true;
                 }
-                self.line(b"0", record.type_name);
+                // A constant attribute is a text that its block brings along.
+                let written = match record.type_name {
+                    b"ATTDEF" => &b"TEXT"[..],
+                    name => name,
+                };
+                self.line(b"0", written);
                 if first {
                     let number = self.kept.len() + 1;
                     self.line(b"5", format!("{number:X}").as_bytes());
                     sequence = record.type_name == b"POLYLINE";
                 }
                 if record.type_name == b"ATTRIB" {
-                    kept.attributes.push((None, None));
+                    kept.attributes.push(KeptAttribute::default());
                 }
                 continue;
             }
@@ -183,18 +229,24 @@ impl<'a> Cleaner<'a> {
             return Ok(());
         }
         match (tag.code, record.type_name) {
-            (5, b"VERTEX") => {}
+            (5 | 6 | 62 | 420, b"VERTEX") => {}
             (5, b"ATTRIB") => {
-                if let Some((_, handle)) = kept.attributes.last_mut() {
-                    *handle = handle.take().or(written_handle(tag.word()));
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.handle = own.handle.take().or(written_handle(tag.word()));
                 }
             }
             (5, _) => kept.handle = kept.handle.take().or(written_handle(tag.word())),
             (8, b"ATTRIB") => {
-                if let Some((layer, _)) = kept.attributes.last_mut() {
-                    *layer = Some(tag.word().to_vec());
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.layer = Some(tag.word().to_vec());
                 }
             }
+            (6 | 62 | 420, b"ATTRIB") => {
+                if let Some(own) = kept.attributes.last_mut() {
+                    own.worn.note(tag);
+                }
+            }
+            (6 | 62 | 420, _) => kept.worn.note(tag),
             _ => {}
         }
         match used(record.type_name, tag.code) {
@@ -208,10 +260,11 @@ impl<'a> Cleaner<'a> {
                     return Err(expected(tag, "a whole number"));
                 };
                 let number = number.clamp(i64::from(i16::MIN), i64::from(i16::MAX));
-                self.line(
-                    tag.code.to_string().as_bytes(),
-                    number.to_string().as_bytes(),
-                );
+                let code = match (tag.code, record.type_name) {
+                    (74, b"ATTDEF") => 73,
+                    (code, _) => code,
+                };
+                self.line(code.to_string().as_bytes(), number.to_string().as_bytes());
                 record.justified |= matches!(tag.code, 72..=74) && number != 0;
             }
             Use::Number => {
@@ -241,7 +294,8 @@ impl<'a> Cleaner<'a> {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
-            b"LWPOLYLINE" | b"VERTEX" | b"TEXT" | b"MTEXT" | b"INSERT" => &[10, 20],
+            b"LWPOLYLINE" | b"VERTEX" | b"SOLID" | b"TRACE" | b"TEXT" | b"ATTDEF" | b"MTEXT"
+            | b"INSERT" => &[10, 20],
             _ => &[],
         };
         if let Some(code) = record.half {
@@ -255,8 +309,8 @@ impl<'a> Cleaner<'a> {
             return Err((record.type_name, record.start, found));
         }
         if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
-            // Its value counts, but it stands nowhere: as good as invisible.
-            self.line(b"70", b"1");
+            // Its value counts, but it stands nowhere.
+            self.line(b"70", NOWHERE.to_string().as_bytes());
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.
@@ -381,11 +435,14 @@ fn used(type_name: &[u8], code: i32) -> Use {
         b"LINE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31),
         b"ARC" => matches!(code, 10 | 20 | 30 | 40 | 50 | 51),
         b"CIRCLE" => matches!(code, 10 | 20 | 30 | 40),
+        b"SOLID" | b"TRACE" => matches!(code, 10..=13 | 20..=23 | 30),
         b"LWPOLYLINE" => matches!(code, 10 | 20 | 38 | 42),
         b"POLYLINE" => matches!(code, 10 | 20 | 30),
         b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
         b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
-        b"TEXT" | b"ATTRIB" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50),
+        b"TEXT" | b"ATTRIB" | b"ATTDEF" => {
+            matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50 | 51)
+        }
         b"MTEXT" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 44 | 50),
         b"INSERT" => matches!(code, 10 | 20 | 30 | 41..=45 | 50),
         _ => false,
@@ -397,8 +454,9 @@ fn used(type_name: &[u8], code: i32) -> Use {
     let short = match type_name {
         b"LWPOLYLINE" | b"POLYLINE" | b"VERTEX" => code == 70,
         b"SPLINE" => matches!(code, 70 | 71),
-        b"TEXT" => matches!(code, 72 | 73),
-        b"ATTRIB" => matches!(code, 70 | 72 | 74),
+        b"TEXT" => matches!(code, 71..=73),
+        b"ATTRIB" => matches!(code, 70..=72 | 74),
+        b"ATTDEF" => matches!(code, 71 | 72 | 74),
         b"MTEXT" => code == 71,
         b"INSERT" => matches!(code, 70 | 71),
         _ => false,
@@ -407,8 +465,8 @@ fn used(type_name: &[u8], code: i32) -> Use {
         return Use::Short;
     }
     let text = match type_name {
-        b"TEXT" => code == 1,
-        b"MTEXT" => matches!(code, 1 | 3),
+        b"TEXT" | b"ATTDEF" => code == 1,
+        b"MTEXT" => matches!(code, 1 | 3 | 7),
         b"ATTRIB" => matches!(code, 1 | 2),
         b"INSERT" => code == 2,
         _ => false,

@@ -104,6 +104,10 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
                 .segments(&piece, TOLERANCE_M, &mut pieces);
             (ShapeKind::Circle, true)
         }
+        EntityType::Solid(_) | EntityType::Trace(_) => {
+            filled(&record.entity, placing, &mut pieces);
+            (ShapeKind::Solid, true)
+        }
         EntityType::Spline(spline) => {
             let points = spline.control_points.iter().chain(&spline.fit_points);
             if !is_near(points.map(|point| placing.place(flat(point)))) {
@@ -181,6 +185,35 @@ fn polyline(vertices: &[Vertex], closed: bool, placing: &Placing, out: &mut Vec<
         }
         bulge = next_bulge;
     }
+}
+
+/// The outline of a SOLID or TRACE, whose third and fourth corners stand crosswise in the file; of three corners, the
+/// fourth stands on the third.
+fn filled(entity: &EntityType, placing: &Placing, out: &mut Vec<Segment>) {
+    let (corners, extrusion) = match entity {
+        EntityType::Solid(solid) => (
+            [
+                &solid.first_corner,
+                &solid.second_corner,
+                &solid.fourth_corner,
+                &solid.third_corner,
+            ],
+            &solid.extrusion_direction,
+        ),
+        EntityType::Trace(trace) => (
+            [
+                &trace.first_corner,
+                &trace.second_corner,
+                &trace.fourth_corner,
+                &trace.third_corner,
+            ],
+            &trace.extrusion_direction,
+        ),
+        _ => return,
+    };
+    let plane = Placing::extruded(normal(extrusion), corners[0].z);
+    let vertices = corners.map(|corner| (flat(corner), 0.0));
+    polyline(&vertices, true, &placing.after(&plane), out);
 }
 
 fn curve_of(spline: &DxfSpline) -> Option<Spline> {

@@ -6,17 +6,19 @@ use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
 use super::caps::Expansion;
+use super::clean::NOWHERE;
 use super::convert::{TOO_FAR, is_near, line_of};
-use super::lettering::{attribute_content, normal, of_attribute, of_mtext, of_text};
-use super::names::folded;
+use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
+use super::looks::Looks;
 use super::placing::Placing;
 use super::rules::{
     BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, BLOCK_TOO_MANY, ENTITY_DAMAGED,
 };
 use super::scan::Scan;
 use super::windows::Record;
-use super::{Drawing, Insert, Shape, Text};
+use super::{Drawing, Insert, Look, Shape, Text};
 use crate::finding::{Finding, Level, Rule};
+use crate::patterns::folded;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
@@ -58,6 +60,11 @@ impl Book<'_> {
         self.block_of_name.get(name as usize).copied().flatten()
     }
 
+    fn style(&self, name: &str) -> Style {
+        let name = folded(&super::text_decode::plain_name(name));
+        self.scan.styles.get(&name).copied().unwrap_or_default()
+    }
+
     /// The number of a layer by its bytes.
     fn layer_id(&self, raw: &[u8]) -> Option<u32> {
         let (name, _) = self.scan.code_page.decode(raw);
@@ -74,7 +81,17 @@ struct Frame<'f> {
     handle: Option<&'f str>,
     /// Layer of the insert, which layer 0 of its block takes.
     layer: Option<u32>,
+    /// How the insert is seen, which what is by block takes.
+    look: Look,
     /// The innermost insert among those of the drawing.
+    within: Option<usize>,
+}
+
+/// What a shape, text or insert belongs to, and how it is seen.
+#[derive(Debug, Clone, Copy)]
+struct Place {
+    layer: u32,
+    look: Look,
     within: Option<usize>,
 }
 
@@ -82,6 +99,8 @@ struct Frame<'f> {
 #[derive(Debug)]
 pub(super) struct Gatherer<'b> {
     book: &'b Book<'b>,
+    /// Colours and linetypes.
+    looks: Looks<'b>,
     unit: Placing,
     zero_layer: Option<u32>,
     drawing: Drawing,
@@ -95,9 +114,15 @@ pub(super) struct Gatherer<'b> {
 
 impl<'b> Gatherer<'b> {
     /// An empty drawing with this unit.
-    pub(super) fn new(book: &'b Book<'b>, unit_m: f64, expansion: Expansion) -> Self {
+    pub(super) fn new(
+        book: &'b Book<'b>,
+        looks: Looks<'b>,
+        unit_m: f64,
+        expansion: Expansion,
+    ) -> Self {
         Self {
             book,
+            looks,
             unit: Placing::scaled(unit_m),
             zero_layer: book.layers.get("0").copied(),
             drawing: Drawing::default(),
@@ -111,10 +136,12 @@ impl<'b> Gatherer<'b> {
 
     /// What was gathered, and what was left out.
     pub(super) fn finish(self) -> (Drawing, Vec<Finding>) {
+        let mut drawing = self.drawing;
+        drawing.linetypes = self.looks.linetypes;
         let mut findings = self.findings;
         let spoken = self.spoken.into_values();
         findings.extend(spoken.filter_map(|(rule, level, count)| and_more(rule, level, count)));
-        (self.drawing, findings)
+        (drawing, findings)
     }
 
     /// Takes a record of model space.
@@ -123,6 +150,7 @@ impl<'b> Gatherer<'b> {
             placing: self.unit,
             handle: None,
             layer: None,
+            look: Looks::outermost(),
             within: None,
         };
         self.place(record, &frame);
@@ -139,18 +167,26 @@ impl<'b> Gatherer<'b> {
         if !self.book.wants(layer) {
             return;
         }
+        let worn = Place {
+            layer,
+            look: self.looks.seen(&record.kept.worn, layer, frame.look),
+            within: frame.within,
+        };
         match &record.entity {
             EntityType::Text(text) => {
-                self.text(of_text(text, &frame.placing), layer, frame.within, handle);
+                self.text(of_text(text, &frame.placing), worn, handle, false);
             }
             EntityType::MText(text) => {
-                self.text(of_mtext(text, &frame.placing), layer, frame.within, handle);
+                let style = self.book.style(&text.text_style_name);
+                let lettering = of_mtext(text, style, &frame.placing);
+                self.text(lettering, worn, handle, false);
             }
             _ => match line_of(record, &frame.placing) {
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
                     layer: self.book.layer_name(layer),
-                    within: frame.within,
+                    look: worn.look,
+                    within: worn.within,
                     kind: line.kind,
                     path: line.path,
                     closed: line.closed,
@@ -182,27 +218,29 @@ impl<'b> Gatherer<'b> {
     fn text(
         &mut self,
         lettering: super::lettering::Lettering,
-        layer: u32,
-        within: Option<usize>,
+        place: Place,
         handle: &str,
+        hidden: bool,
     ) {
         if lettering.content.trim().is_empty() {
             return;
         }
         let sound = lettering.height_m.is_finite() && lettering.rotation_rad.is_finite();
         if !sound || !is_near(lettering.corners.into_iter().chain([lettering.place])) {
-            self.damaged(layer, handle, TOO_FAR);
+            self.damaged(place.layer, handle, TOO_FAR);
             return;
         }
         self.drawing.texts.push(Text {
             handle: handle.to_owned(),
-            layer: self.book.layer_name(layer),
-            within,
+            layer: self.book.layer_name(place.layer),
+            look: place.look,
+            within: place.within,
             content: lettering.content,
             place: lettering.place,
             corners: lettering.corners,
             height_m: lettering.height_m,
             rotation_rad: lettering.rotation_rad,
+            hidden,
         });
     }
 
@@ -216,7 +254,16 @@ impl<'b> Gatherer<'b> {
     ) {
         let block = self.book.block(record.kept.block);
         let wanted = self.book.wants(layer);
-        self.attributes(record, insert, layer, handle, frame);
+        let look = self.looks.seen(&record.kept.worn, layer, frame.look);
+        let seen = Place {
+            layer,
+            look,
+            // The insert itself, if it is kept, is the next one.
+            within: wanted
+                .then_some(self.drawing.inserts.len())
+                .or(frame.within),
+        };
+        self.attributes(record, insert, seen, handle, frame);
         let holds = block.is_some_and(|block| self.book.holds_wanted.get(block) == Some(&true));
         if !wanted && !holds {
             return;
@@ -275,6 +322,7 @@ impl<'b> Gatherer<'b> {
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
                         layer: self.book.layer_name(layer),
+                        look,
                         within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
                         place: cell.place(Coord { x: 0.0, y: 0.0 }),
@@ -299,6 +347,7 @@ impl<'b> Gatherer<'b> {
                     placing,
                     handle: Some(handle),
                     layer: Some(layer),
+                    look,
                     within: if wanted {
                         self.drawing.inserts.len().checked_sub(1)
                     } else {
@@ -345,34 +394,32 @@ impl<'b> Gatherer<'b> {
         self.open.pop();
     }
 
-    /// An insert's visible attributes as texts.
+    /// An insert's attributes as texts, also those that it does not show.
     fn attributes(
         &mut self,
         record: &Record,
         insert: &DxfInsert,
-        layer: u32,
+        seen: Place,
         handle: &str,
         frame: &Frame<'_>,
     ) {
-        // The insert itself, if it is kept, is the next one.
-        let kept = self.book.wants(layer);
-        let within = kept.then_some(self.drawing.inserts.len()).or(frame.within);
-        for (attribute, (raw_layer, own)) in insert.attributes().zip(&record.kept.attributes) {
-            let named = raw_layer.as_deref().and_then(|raw| self.book.layer_id(raw));
-            let layer = self.layer_in(named.unwrap_or(layer), Some(layer));
-            if attribute.flags & 1 != 0 || !self.book.wants(layer) {
+        for (attribute, own) in insert.attributes().zip(&record.kept.attributes) {
+            let named = own.layer.as_deref().and_then(|raw| self.book.layer_id(raw));
+            let layer = self.layer_in(named.unwrap_or(seen.layer), Some(seen.layer));
+            if attribute.flags & NOWHERE != 0 || !self.book.wants(layer) {
                 continue;
             }
-            let handle = match own {
+            let place = Place {
+                layer,
+                look: self.looks.seen(&own.worn, layer, seen.look),
+                within: seen.within,
+            };
+            let handle = match &own.handle {
                 Some(own) if frame.handle.is_none() => own,
                 _ => handle,
             };
-            self.text(
-                of_attribute(attribute, &frame.placing),
-                layer,
-                within,
-                handle,
-            );
+            let lettering = of_attribute(attribute, &frame.placing);
+            self.text(lettering, place, handle, attribute.flags & 1 != 0);
         }
     }
 

@@ -1,8 +1,10 @@
 //! What one pass over a drawing finds.
 
+use std::collections::BTreeMap;
 use std::ops::Range;
 
 use super::code_page::CodePage;
+use super::lettering::Style;
 use super::names::ScannedLayer;
 use super::scan::PassedOver;
 use super::tags::{Form, form_of};
@@ -34,6 +36,8 @@ pub(super) struct Scan {
     pub(super) extents: [[Option<f64>; 2]; 2],
     /// Layers of the table in its order, then those that only entities name, in order of first use.
     pub(super) layers: Vec<ScannedLayer>,
+    /// Text styles by folded name.
+    pub(super) styles: BTreeMap<String, Style>,
     /// Pointers of the record of layer `0` under 390, 347 and 348, as written.
     pub(super) zero_layer_pointers: [Option<String>; 3],
     /// Whether the table's layer records carry handles.
@@ -121,17 +125,20 @@ pub(super) struct BlockEntry {
     pub(super) attribute_layers: Vec<u32>,
 }
 
-/// Entity types that are read.
-pub(super) const READ_TYPES: [&[u8]; 9] = [
+/// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.
+pub(super) const READ_TYPES: [&[u8]; 12] = [
     b"LINE",
     b"LWPOLYLINE",
     b"POLYLINE",
     b"ARC",
     b"CIRCLE",
     b"SPLINE",
+    b"SOLID",
+    b"TRACE",
     b"TEXT",
     b"MTEXT",
     b"INSERT",
+    b"ATTDEF",
 ];
 
 impl Scan {
@@ -161,6 +168,7 @@ impl Scan {
             insunits: None,
             extents: [[None; 2]; 2],
             layers: Vec::new(),
+            styles: BTreeMap::new(),
             zero_layer_pointers: [None, None, None],
             layers_have_handles: false,
             types: Vec::new(),

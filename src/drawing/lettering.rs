@@ -37,11 +37,15 @@ struct Frame {
     along: Coord<f64>,
     up: Coord<f64>,
     height: f64,
+    /// How far the letters lean along the line for each unit up.
+    slant: f64,
 }
 
 impl Frame {
     fn letter(&self, content: String, room: &Box4, placing: &Placing) -> Lettering {
-        let corner = |u: f64, v: f64| placing.place(self.place + self.along * u + self.up * v);
+        let corner = |u: f64, v: f64| {
+            placing.place(self.place + self.along * (u + self.slant * v) + self.up * v)
+        };
         let along = placing.carry(self.along);
         let up = placing.carry(self.up);
         Lettering {
@@ -67,6 +71,9 @@ struct OneLine<'a> {
     height: f64,
     width_factor: f64,
     rotation_deg: f64,
+    oblique_deg: f64,
+    /// 2: written backward, 4: upside down.
+    generation: i32,
     horizontal: HorizontalTextJustification,
     vertical: VerticalTextJustification,
     normal: &'a Vector,
@@ -82,6 +89,8 @@ pub(super) fn of_text(text: &DxfText, placing: &Placing) -> Lettering {
             height: text.text_height,
             width_factor: text.relative_x_scale_factor,
             rotation_deg: text.rotation,
+            oblique_deg: text.oblique_angle,
+            generation: text.text_generation_flags,
             horizontal: text.horizontal_text_justification,
             vertical: text.vertical_text_justification,
             normal: &text.normal,
@@ -100,6 +109,8 @@ pub(super) fn of_attribute(attribute: &Attribute, placing: &Placing) -> Letterin
             height: attribute.text_height,
             width_factor: attribute.relative_x_scale_factor,
             rotation_deg: attribute.rotation,
+            oblique_deg: attribute.oblique_angle,
+            generation: attribute.text_generation_flags,
             horizontal: attribute.horizontal_text_justification,
             vertical: attribute.vertical_text_justification,
             normal: &attribute.normal,
@@ -110,7 +121,11 @@ pub(super) fn of_attribute(attribute: &Attribute, placing: &Placing) -> Letterin
 
 /// What an attribute says: a line, or lines where it was written as such.
 pub(super) fn attribute_content(raw: &str) -> String {
-    if raw.contains("\\P") {
+    // Attributes of several lines, and those that were typed in an editor of such, are written as MTEXT.
+    if ["\\P", "{\\", "\\S", "\\A"]
+        .iter()
+        .any(|code| raw.contains(code))
+    {
         text_lines(raw)
     } else {
         text_line(raw)
@@ -156,11 +171,19 @@ fn one_line(text: OneLine<'_>, placing: &Placing) -> Lettering {
         _ => 0.0,
     };
     let (sin, cos) = rotation_rad.sin_cos();
+    let mirrored = |flag: i32| {
+        if text.generation & flag == 0 {
+            1.0
+        } else {
+            -1.0
+        }
+    };
     let frame = Frame {
         place,
-        along: Coord { x: cos, y: sin },
-        up: Coord { x: -sin, y: cos },
+        along: Coord { x: cos, y: sin } * mirrored(2),
+        up: Coord { x: -sin, y: cos } * mirrored(4),
         height,
+        slant: slant(text.oblique_deg),
     };
     let room = Box4 {
         left,
@@ -172,14 +195,43 @@ fn one_line(text: OneLine<'_>, placing: &Placing) -> Lettering {
     frame.letter(content, &room, &placing.after(&plane))
 }
 
-/// An MTEXT in the plan. Its place and direction are in world axes already.
-pub(super) fn of_mtext(text: &MText, placing: &Placing) -> Lettering {
+/// How a text style shapes its letters.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Style {
+    /// Width of a letter over its usual width.
+    pub(super) width_factor: f64,
+    /// How far letters lean from upright, degrees.
+    pub(super) oblique_deg: f64,
+}
+
+impl Default for Style {
+    fn default() -> Self {
+        Self {
+            width_factor: 1.0,
+            oblique_deg: 0.0,
+        }
+    }
+}
+
+/// Letters lean by 85 degrees at most, as the DXF reference allows.
+fn slant(oblique_deg: f64) -> f64 {
+    let turned = (oblique_deg + 180.0).rem_euclid(360.0) - 180.0;
+    turned.clamp(-85.0, 85.0).to_radians().tan()
+}
+
+/// An MTEXT in the plan, in a text style; TEXT carries its style's width and lean itself. Its place and direction are in world axes already.
+pub(super) fn of_mtext(text: &MText, style: Style, placing: &Placing) -> Lettering {
     use AttachmentPoint as A;
     let mut raw: String = text.extended_text.concat();
     raw.push_str(&text.text);
     let content = text_lines(&raw);
     let height = text.initial_text_height;
-    let width_of = |text: &str| characters(text) * CHARACTER_WIDTH * height;
+    let factor = if style.width_factor > 0.0 {
+        style.width_factor
+    } else {
+        1.0
+    };
+    let width_of = |text: &str| characters(text) * CHARACTER_WIDTH * height * factor;
     let natural = content.lines().map(width_of).fold(0.0, f64::max);
     let longest_word = content.split_whitespace().map(width_of).fold(0.0, f64::max);
     let column = text.reference_rectangle_width;
@@ -227,6 +279,7 @@ pub(super) fn of_mtext(text: &MText, placing: &Placing) -> Lettering {
             y: along.x * side,
         },
         height,
+        slant: slant(style.oblique_deg),
     };
     let room = Box4 {
         left,

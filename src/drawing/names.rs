@@ -5,6 +5,7 @@ use std::collections::HashMap;
 use super::code_page::CodePage;
 use super::scan::{OWN_LAYER, READ_TYPES};
 use super::text_decode::plain_name;
+use crate::patterns::folded;
 
 /// A layer as the pass finds it.
 #[derive(Debug, Clone, Default)]
@@ -17,6 +18,8 @@ pub(super) struct ScannedLayer {
     pub(super) handle: Option<String>,
     /// Group 62: negative for a layer that is off.
     pub(super) colour: Option<i64>,
+    /// Linetype, as written.
+    pub(super) linetype: Option<Vec<u8>>,
     /// Group 70: 1 frozen, 4 locked.
     pub(super) flags: i64,
 }
@@ -42,11 +45,6 @@ impl ScannedLayer {
 pub(super) fn is_own(name: &str) -> bool {
     name.get(..OWN_LAYER.len())
         .is_some_and(|head| head.eq_ignore_ascii_case(OWN_LAYER))
-}
-
-/// A name as it is compared: without regard to case.
-pub(super) fn folded(name: &str) -> String {
-    name.to_uppercase()
 }
 
 /// Layer names and what is known of each layer.

@@ -6,7 +6,7 @@ use geo::Coord;
 
 use super::caps::Caps;
 use super::explode::{Book, Gatherer, MOST_TOLD, and_more};
-use super::names::folded;
+use super::looks::Looks;
 use super::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
 use super::scan::{Entry, Scan};
 use super::source::Source;
@@ -15,6 +15,7 @@ use super::wanted::Wanted;
 use super::windows::{Losses, read_records};
 use super::{Drawing, UnitFrom};
 use crate::finding::{Finding, Level};
+use crate::patterns::folded;
 use crate::units::LengthUnit;
 
 /// Reads the wanted layers of a drawing's model space, blocks exploded, in metres. `unit` is what the job says of the
@@ -45,7 +46,9 @@ pub fn read_within(
     let top = top_entries(&book);
     book.records = block_records(source, &book, &top, &mut losses);
 
-    let mut gatherer = Gatherer::new(&book, unit_m, caps.expansion(source, wanted));
+    let looks = Looks::new(&source.bytes, scan);
+    let expansion = caps.expansion(source, wanted);
+    let mut gatherer = Gatherer::new(&book, looks, unit_m, expansion);
     read_records(source, top, &mut losses, |record| gatherer.take(&record));
     let (mut drawing, mut of_blocks) = gatherer.finish();
     drawing.version.clone_from(&scan.version);

@@ -6,6 +6,7 @@ mod recovery;
 use super::code_page::CodePage;
 use super::counts::Counts;
 use super::handles::{Handles, parse_handle};
+use super::lettering::Style;
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
 use super::tags::{Bad, BadTag, Tag, Tags, is_name, place_in_words, shown};
@@ -75,6 +76,7 @@ enum Record {
     Layer,
     BlockHome,
     Dimstyle,
+    Style,
     Block,
     Entity,
     /// VERTEX, ATTRIB or SEQEND of the entity before it.
@@ -96,10 +98,12 @@ struct Gathered<'a> {
     layer: Option<&'a [u8]>,
     paper: bool,
     followed: bool,
+    linetype: Option<&'a [u8]>,
     colour: Option<i64>,
     flags: i64,
     base: [f64; 2],
     pointers: [Option<&'a [u8]>; 3],
+    style: Style,
     /// Something in it makes no sense and was passed over.
     broken: bool,
     /// The entity before it still waited for its SEQEND.
@@ -179,7 +183,7 @@ impl<'a> Pass<'a> {
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             // Coordinates are nearly all of a file and say nothing here.
-            10..=61 | 210..=239 if self.record != Record::Block => {}
+            10..=61 | 210..=239 if !matches!(self.record, Record::Block | Record::Style) => {}
             _ => self.record_tag(tag),
         }
         Ok(())
@@ -240,9 +244,12 @@ impl<'a> Pass<'a> {
                 }
             }
             5 if held.handle.is_none() => held.handle = Some(tag.word()),
+            6 if self.record == Record::Layer => held.linetype = Some(tag.word()),
             8 if held.layer.is_none() => held.layer = Some(tag.word()),
             10 => held.base[0] = tag.float().unwrap_or(0.0),
             20 => held.base[1] = tag.float().unwrap_or(0.0),
+            41 => held.style.width_factor = tag.float().unwrap_or(1.0),
+            50 => held.style.oblique_deg = tag.float().unwrap_or(0.0),
             62 => held.colour = tag.integer(),
             66 => held.followed = tag.integer().is_some_and(|n| n != 0),
             67 => held.paper = tag.integer() == Some(1),

@@ -16,6 +16,8 @@ pub struct Drawing {
     /// Lower left and upper right of everything in the drawing, if its header says so sensibly; metres. It is as old as the
     /// last program that kept it.
     pub extent: Option<[Coord<f64>; 2]>,
+    /// Names of linetypes as first written; [`Look::linetype`] numbers them.
+    pub linetypes: Vec<String>,
     /// Every layer, in the table's order; layers that only entities name follow, in order of first use.
     pub layers: Vec<Layer>,
     /// Lines, polylines, arcs, circles, splines.
@@ -25,6 +27,17 @@ pub struct Drawing {
     /// Block inserts (also those that were exploded into shapes and texts).
     pub inserts: Vec<Insert>,
 }
+
+impl Drawing {
+    /// The name of a look's linetype.
+    pub fn linetype(&self, look: Look) -> &str {
+        let name = self.linetypes.get(look.linetype as usize);
+        name.map_or(CONTINUOUS, String::as_str)
+    }
+}
+
+/// The linetype of what has none of its own.
+pub(super) const CONTINUOUS: &str = "Continuous";
 
 /// Where a drawing's unit came from.
 #[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
@@ -51,10 +64,20 @@ pub struct Layer {
     pub counts: Vec<(String, usize)>,
 }
 
+/// How an entity is seen: its own colour and linetype, or its layer's, or those of the insert that brings it in.
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq, PartialOrd, Ord)]
+pub struct Look {
+    /// Colour index, 1 to 255; `None` for a true colour that is written without one.
+    pub colour: Option<u8>,
+    /// Number of the linetype among [`Drawing::linetypes`].
+    pub linetype: u32,
+}
+
 /// The entity that a shape came from.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
 pub enum ShapeKind {
     /// LINE.
+    #[default]
     Line,
     /// LWPOLYLINE or POLYLINE.
     Polyline,
@@ -64,16 +87,20 @@ pub enum ShapeKind {
     Circle,
     /// SPLINE, as arcs that leave it by no more than 1 mm.
     Spline,
+    /// SOLID or TRACE: a filled triangle or quadrangle, as its outline.
+    Solid,
 }
 
 /// A plan line.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Default)]
 pub struct Shape {
     /// Handle, upper-case hexadecimal without leading zeros; for a shape inside a block, the outermost insert's;
     /// for a drawing without handles, `#` and the entity's number.
     pub handle: String,
     /// Layer (of the insert, where the block's entity lies on layer 0).
     pub layer: String,
+    /// Colour and linetype.
+    pub look: Look,
     /// Number of the insert among [`Drawing::inserts`] that brings it in, the innermost; `None` in model space.
     pub within: Option<usize>,
     /// Entity type.
@@ -85,12 +112,14 @@ pub struct Shape {
 }
 
 /// A text.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Default)]
 pub struct Text {
     /// Handle as for [`Shape`].
     pub handle: String,
     /// Layer as for [`Shape`].
     pub layer: String,
+    /// Colour and linetype.
+    pub look: Look,
     /// Number of the insert that it belongs to as an attribute, or that brings it in, as for [`Shape`].
     pub within: Option<usize>,
     /// What a reader sees: codes decoded, lines separated by `\n`.
@@ -103,15 +132,19 @@ pub struct Text {
     pub height_m: f64,
     /// Direction of the base line, radians from x.
     pub rotation_rad: f64,
+    /// An attribute that the drawing does not show: it may name a tendon, but nobody need read it.
+    pub hidden: bool,
 }
 
 /// A block insert.
-#[derive(Debug, Clone)]
+#[derive(Debug, Clone, Default)]
 pub struct Insert {
     /// Handle as for [`Shape`].
     pub handle: String,
     /// Layer as for [`Shape`].
     pub layer: String,
+    /// Colour and linetype.
+    pub look: Look,
     /// Number of the insert that brings it in, as for [`Shape`]; always lower than its own.
     pub within: Option<usize>,
     /// Block name.

@@ -1,12 +1,13 @@
 //! Which layers are to be read.
 
 use super::names::is_own;
-use crate::patterns::{BrokenPattern, Patterns};
+use crate::patterns::{PatternRefused, Selectors, tails};
 
-/// Layers to read: all, or those that some shell pattern fits in any letter case; never this tool's own.
+/// Layers to read: all, or those on which some pattern may pick something; never this tool's own, nor those that came
+/// with a reference that this tool had marked.
 #[derive(Debug, Clone)]
 pub struct Wanted {
-    patterns: Option<Patterns>,
+    patterns: Option<Selectors>,
 }
 
 impl Wanted {
@@ -15,22 +16,22 @@ impl Wanted {
         Self { patterns: None }
     }
 
-    /// Layers that one of the patterns fits.
+    /// Layers on which one of the patterns may pick something; all that lies on them is read.
     ///
     /// # Errors
     /// A pattern that cannot be understood, with the reason.
     pub fn layers<S: AsRef<str>>(
         patterns: impl IntoIterator<Item = S>,
-    ) -> Result<Self, BrokenPattern> {
+    ) -> Result<Self, PatternRefused> {
         Ok(Self {
-            patterns: Some(Patterns::new(patterns)?),
+            patterns: Some(Selectors::new(patterns)?),
         })
     }
 
     /// Whether a layer of this name is to be read.
     pub fn has(&self, layer: &str) -> bool {
-        let fits = |patterns: &Patterns| patterns.fit(layer);
-        !is_own(layer) && self.patterns.as_ref().is_none_or(fits)
+        let fits = |patterns: &Selectors| patterns.may_pick(layer);
+        !tails(layer).any(is_own) && self.patterns.as_ref().is_none_or(fits)
     }
 }
 
@@ -45,5 +46,13 @@ mod tests {
         assert!(!wanted.has("SLAB-EDGE") && !wanted.has("TAUT-TABLE"));
         assert!(!Wanted::everything().has("taut-finding") && Wanted::everything().has("0"));
         assert!(Wanted::layers(["a[b"]).is_err());
+    }
+
+    #[test]
+    fn references_are_read_and_earlier_marks_in_them_are_not() {
+        let wanted = Wanted::layers(["T*", "0@colour=1"]).expect("patterns");
+        assert!(wanted.has("L2$0$TENDON-BANDED") && wanted.has("L2|TENDON-BANDED"));
+        assert!(!wanted.has("L2$0$TAUT-PROFILE") && !wanted.has("SLAB"));
+        assert!(wanted.has("0"));
     }
 }

@@ -1,7 +1,5 @@
 //! The floor put together from its parts.
 
-use geo::Coord;
-
 use super::candidates::lies;
 use super::ends;
 use super::heights::{self, Doubt, Settled};
@@ -16,6 +14,7 @@ use super::points::{points, words};
 use super::readings::{HeightText, MarkText, Word};
 use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
 use super::slab::{Thickness, slab};
+use super::symbols::Symbols;
 use super::types::{Floor, PointKind, Tendon};
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
@@ -33,23 +32,22 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
 
-    let (slab, unread_zones, found) = slab(drawing, job, &roles);
+    let symbols = Symbols::new(drawing, conventions, &roles);
+    let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbols.shapes);
     findings.extend(found);
     let thickness = Thickness::new(&slab, &unread_zones);
     let columns = Columns::new(&slab.columns);
 
-    let symbols = ends::symbols(drawing, conventions);
-    let symbol_places: Vec<Coord<f64>> = symbols.iter().map(|s| s.insert.place).collect();
-    let symbol_shapes = ends::shapes(drawing, conventions);
-    let (lines, found) = lines(drawing, job, &roles, &symbol_places, &symbol_shapes);
+    let (lines, found) = lines(drawing, job, &roles, &symbols.stops(), &symbols.shapes);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
-    let (line_ends, found) = ends::ends(&lines, &symbols, conventions.end_reach_m);
+    let (line_ends, found) = ends::ends(&lines, &symbols.list, conventions.end_reach_m);
     findings.extend(found);
 
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
     findings.extend(found);
-    let (labels, found) = labels(drawing, conventions, &roles, &levels.texts);
+    let taken = levels.texts.union(&symbols.texts).copied().collect();
+    let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);
     let Labels {
         heights: height_labels,
@@ -71,7 +69,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
 
     let (texts, mut readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
     for (text, reading) in texts.iter().zip(&mut readings) {
-        reading.weigh(thickness.at(text.place), conventions.height.from);
+        reading.weigh(thickness.at(text.place));
     }
     let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
     let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
@@ -104,8 +102,13 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             path: line.path.clone(),
             tendons: said.tendons.unwrap_or(1),
             strands: said.strands,
-            strand: said.strand.clone(),
-            ends: line_ends[at],
+            strand: said.strand.as_ref().map(|written| {
+                let known = job.system.strand_named(written);
+                known.map_or_else(|| written.clone(), |size| size.name.clone())
+            }),
+            required_kn: said.required_kn,
+            required_kn_per_m: said.required_kn_per_m,
+            ends: line_ends[at].each_ref().map(|told| told.end),
             points,
         });
     }
@@ -142,7 +145,7 @@ impl Near<'_> {
                 &LABEL_AMBIGUOUS,
                 Level::Warning,
                 format!(
-                    "mark {:?} was taken for the line {}, but fits line {} about as well",
+                    "mark {:?} was taken for the line with handle {}, but fits the one with handle {} about as well",
                     text.content, self.lines[here].handle, self.lines[there].handle
                 ),
                 "move the mark nearer to its tendon, along it",

@@ -119,7 +119,7 @@ fn copy(handle: &str, layer: &str, other: &str, path: &Path, overlap_m: f64) -> 
         &DUPLICATE_LINE,
         Level::Error,
         format!(
-            "line {handle} on layer {layer} lies on line {other} for about {overlap_m:.2} m of its {:.2} m; expected each tendon once",
+            "the line of handle {handle} on layer {layer} lies on that of handle {other} for about {overlap_m:.2} m of its {:.2} m; expected each tendon once",
             path.length_m()
         ),
         "delete one of the two lines, or move it to where its tendon lies",

@@ -1,105 +1,49 @@
-//! Live and dead end symbols matched to ends, one to one.
+//! Symbols matched to the ends of tendons, and what they say of each end together.
 
-use std::collections::BTreeSet;
-
-use geo::Coord;
+use geo::{Coord, Distance, Euclidean, LineString, Point, Polygon};
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
-use super::layers::set;
 use super::lines::Line;
-use super::rules::{END_UNCLAIMED, END_UNKNOWN};
+use super::rules::{END_CONTRADICTED, END_UNCLAIMED, END_UNKNOWN};
 use super::settle::{Pairing, Settlement, Stakes};
+use super::symbols::{Sign, Symbol};
 use super::types::{End, EndKind};
-use crate::drawing::{Drawing, Insert};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
-use crate::job::Conventions;
-use crate::patterns::Patterns;
 
-/// An end symbol on the plan.
+/// An end, and why its kind is not known if it is not.
 #[derive(Debug, Clone)]
-pub(super) struct Symbol<'a> {
-    pub(super) kind: EndKind,
-    pub(super) insert: &'a Insert,
+pub(super) struct Told {
+    pub(super) end: End,
+    doubt: Option<Doubt>,
 }
 
-/// Live and dead end blocks by name.
-struct Blocks {
-    live: Patterns,
-    dead: Patterns,
+#[derive(Debug, Clone)]
+enum Doubt {
+    /// A block marks the end and nothing says which kind.
+    Unsaid(String),
+    /// One symbol says live, another dead.
+    Differ([String; 2]),
 }
 
-impl Blocks {
-    fn new(conventions: &Conventions) -> Self {
-        Self {
-            live: set(&conventions.live_end_blocks),
-            dead: set(&conventions.dead_end_blocks),
-        }
-    }
+const SIGNS: [Sign; 7] = [
+    Sign::Block,
+    Sign::Solid,
+    Sign::Triangle,
+    Sign::Square,
+    Sign::Circle,
+    Sign::Bar,
+    Sign::Word,
+];
 
-    fn kind(&self, block: &str) -> Option<EndKind> {
-        if self.live.fit(block) {
-            Some(EndKind::Live)
-        } else if self.dead.fit(block) {
-            Some(EndKind::Dead)
-        } else {
-            None
-        }
-    }
-}
-
-/// Numbers of the shapes that end symbols consist of: those inside a symbol's own insert at any depth, not those beside
-/// it in a block that holds both.
-pub(super) fn shapes(drawing: &Drawing, conventions: &Conventions) -> BTreeSet<usize> {
-    let blocks = Blocks::new(conventions);
-    let mut in_symbol: Vec<bool> = Vec::with_capacity(drawing.inserts.len());
-    for insert in &drawing.inserts {
-        let outer = insert
-            .within
-            .and_then(|outer| in_symbol.get(outer).copied());
-        in_symbol.push(outer == Some(true) || blocks.kind(&insert.block).is_some());
-    }
-    let shapes = drawing.shapes.iter().enumerate();
-    shapes
-        .filter(|(_, shape)| {
-            let within = shape.within.and_then(|insert| in_symbol.get(insert));
-            within == Some(&true)
-        })
-        .map(|(at, _)| at)
-        .collect()
-}
-
-/// Symbols by block name, whatever their layer, in an order that their places decide.
-pub(super) fn symbols<'a>(drawing: &'a Drawing, conventions: &Conventions) -> Vec<Symbol<'a>> {
-    let blocks = Blocks::new(conventions);
-    let mut symbols: Vec<Symbol<'a>> = drawing
-        .inserts
-        .iter()
-        .filter(|insert| insert.place.x.is_finite() && insert.place.y.is_finite())
-        .filter_map(|insert| {
-            let kind = blocks.kind(&insert.block)?;
-            Some(Symbol { kind, insert })
-        })
-        .collect();
-    symbols.sort_by(|a, b| {
-        let (a, b) = (a.insert, b.insert);
-        a.place
-            .x
-            .total_cmp(&b.place.x)
-            .then(a.place.y.total_cmp(&b.place.y))
-            .then_with(|| a.block.cmp(&b.block))
-            .then_with(|| a.handle.cmp(&b.handle))
-    });
-    symbols
-}
-
-/// Each line's two ends; findings for symbols without an end. Ends without a symbol are told by [`unknown`].
+/// Each line's two ends; findings for symbols without an end. Symbols of one sort are matched to ends one to one; an end
+/// may have one of each sort. What is wrong with an end itself is told by [`unknown`].
 pub(super) fn ends(
     lines: &[Line],
     symbols: &[Symbol<'_>],
     reach_m: f64,
-) -> (Vec<[End; 2]>, Vec<Finding>) {
+) -> (Vec<[Told; 2]>, Vec<Finding>) {
     let places: Vec<Coord<f64>> = lines
         .iter()
         .flat_map(|line| [line.path.start(), line.path.end()].map(Option::unwrap_or_default))
@@ -111,82 +55,192 @@ pub(super) fn ends(
             .map(|(at, place)| GeomWithData::new([place.x, place.y], at))
             .collect(),
     );
+    let mut of_end: Vec<Vec<&Symbol<'_>>> = vec![Vec::new(); places.len()];
+    let mut findings = Vec::new();
+    for sign in SIGNS {
+        let alike: Vec<&Symbol<'_>> = symbols.iter().filter(|one| one.sign == sign).collect();
+        let Matched { host, near } = matched(&alike, &places, &tree, reach_m);
+        for ((symbol, host), near) in alike.into_iter().zip(host).zip(near) {
+            match host.and_then(|host| of_end.get_mut(host)) {
+                Some(held) => held.push(symbol),
+                // A symbol may be drawn with two lines alike, or lettered twice.
+                None if near && sign != Sign::Block => {}
+                None => findings.push(unclaimed(symbol, reach_m)),
+            }
+        }
+    }
+    let mut told = places
+        .iter()
+        .zip(&of_end)
+        .map(|(&place, held)| tell(place, held));
+    let mut ends = Vec::with_capacity(lines.len());
+    while let (Some(start), Some(end)) = (told.next(), told.next()) {
+        ends.push([start, end]);
+    }
+    (ends, findings)
+}
+
+struct Matched {
+    /// By symbol: the end that it marks.
+    host: Vec<Option<usize>>,
+    /// By symbol: whether some end is within reach.
+    near: Vec<bool>,
+}
+
+/// Symbols of one sort and ends, one to one.
+fn matched(
+    symbols: &[&Symbol<'_>],
+    places: &[Coord<f64>],
+    tree: &RTree<GeomWithData<[f64; 2], usize>>,
+    reach_m: f64,
+) -> Matched {
     let mut pairings = Vec::new();
     let mut costs = Vec::new();
+    let mut near_any = vec![false; symbols.len()];
     for (label, symbol) in symbols.iter().enumerate() {
-        let place = symbol.insert.place;
+        let place = symbol.place;
+        let around = Around::new(symbol);
+        let search_m = reach_m + around.half_m;
         let mut near: Vec<usize> = tree
-            .locate_within_distance([place.x, place.y], reach_m * reach_m)
+            .locate_within_distance([place.x, place.y], search_m * search_m)
             .map(|found| found.data)
             .collect();
         near.sort_unstable();
         for host in near {
+            let gap_m = around.gap_m(places[host]);
+            if gap_m > reach_m {
+                continue;
+            }
+            near_any[label] = true;
             pairings.push(Pairing {
                 label,
                 host,
                 station_m: 0.0,
             });
             // Squared, so that of two ways to match a pair of ends the one without a long reach is the cheaper.
-            let share = distance_m(places[host], place) / reach_m.max(1e-9);
-            costs.push(4.0 * share * share);
+            let share = gap_m / reach_m.max(1e-9);
+            // What covers several ends marks the one nearest to its middle.
+            let off = distance_m(places[host], place) / search_m.max(1e-9);
+            costs.push(4.0 * share * share + if around.half_m > 0.0 { off * off } else { 0.0 });
         }
     }
     let stakes = OneEach(costs);
     let taken = Settlement::new(&pairings, symbols.len(), places.len(), &stakes, &[]).settle();
-    let mut kinds = vec![None; places.len()];
-    let mut findings = Vec::new();
-    for (symbol, taken) in symbols.iter().zip(taken) {
-        match taken {
-            Some(pairing) => kinds[pairings[pairing].host] = Some(symbol.kind),
-            None => findings.push(unclaimed(symbol, reach_m)),
-        }
+    let host = taken
+        .into_iter()
+        .map(|pairing| Some(pairings.get(pairing?)?.host));
+    Matched {
+        host: host.collect(),
+        near: near_any,
     }
-    let ends = places
-        .chunks(2)
-        .zip(kinds.chunks(2))
-        .map(|(places, kinds)| {
-            [0, 1].map(|end| End {
-                kind: kinds[end],
-                place: places[end],
-            })
-        });
-    (ends.collect(), findings)
 }
 
-/// One finding for each end of a tendon that has no symbol.
-pub(super) fn unknown(mark: &str, ends: &[End; 2], length_m: f64, reach_m: f64) -> Vec<Finding> {
+/// A symbol's extent.
+struct Around {
+    place: Coord<f64>,
+    outline: Option<Polygon<f64>>,
+    /// From its place to its farthest corner, metres.
+    half_m: f64,
+}
+
+impl Around {
+    fn new(symbol: &Symbol<'_>) -> Self {
+        let corners = symbol.corners.iter().flatten();
+        Self {
+            place: symbol.place,
+            outline: symbol
+                .corners
+                .map(|corners| Polygon::new(LineString::from(corners.to_vec()), Vec::new())),
+            half_m: corners.fold(0.0, |most_m, corner| {
+                distance_m(*corner, symbol.place).max(most_m)
+            }),
+        }
+    }
+
+    fn gap_m(&self, place: Coord<f64>) -> f64 {
+        match &self.outline {
+            Some(outline) => Euclidean.distance(&Point(place), outline),
+            None => distance_m(place, self.place),
+        }
+    }
+}
+
+/// What the symbols at one end say together: the block, else the most telling shape, else the word.
+fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
+    let block = held.iter().find(|one| one.sign == Sign::Block);
+    let shape = held
+        .iter()
+        .find(|one| !matches!(one.sign, Sign::Block | Sign::Word));
+    let word = held.iter().find(|one| one.sign == Sign::Word);
+    let told: Vec<(EndKind, &str)> = [block, shape, word]
+        .into_iter()
+        .flatten()
+        .filter_map(|one| Some((one.kind?, one.name)))
+        .collect();
+    let first = told.first().copied();
+    let other = first.and_then(|(kind, _)| told.iter().copied().find(|(other, _)| *other != kind));
+    let (kind, doubt) = match (first, other) {
+        (Some((EndKind::Live, live)), Some((_, dead)))
+        | (Some((EndKind::Dead, dead)), Some((_, live))) => {
+            let both = [live, dead].map(str::to_owned);
+            (None, Some(Doubt::Differ(both)))
+        }
+        (Some((kind, _)), None) => (Some(kind), None),
+        (None, _) => (None, block.map(|one| Doubt::Unsaid(one.name.to_owned()))),
+    };
+    Told {
+        end: End { kind, place },
+        doubt,
+    }
+}
+
+/// One finding for each end of a tendon whose kind is not known.
+pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64) -> Vec<Finding> {
     ends.iter()
         .zip([0.0, length_m])
-        .filter(|(end, _)| end.kind.is_none())
-        .map(|(end, station_m)| {
-            Finding::new(
-                &END_UNKNOWN,
-                Level::Error,
-                format!("no end symbol lies within {reach_m:.2} m of this end; expected a live or a dead end"),
-                "insert the live or dead end block at the end, or name the office's blocks in the job file",
-            )
-            .on_tendon(mark)
-            .at_station(station_m)
-            .at_place(end.place)
+        .filter(|(told, _)| told.end.kind.is_none())
+        .map(|(told, station_m)| {
+            let (rule, text, remedy) = match &told.doubt {
+                Some(Doubt::Differ([live, dead])) => (
+                    &END_CONTRADICTED,
+                    format!("{live} says that this end is live, {dead} that it is dead; it was taken for neither"),
+                    "delete the wrong one",
+                ),
+                Some(Doubt::Unsaid(block)) => (
+                    &END_UNKNOWN,
+                    format!("block {block} marks this end, but no attribute and no word within {reach_m:.2} m says whether it is live or dead"),
+                    "name the block among the live or dead ones in the job file, or its attribute's or text's word in live_words or dead_words",
+                ),
+                None => (
+                    &END_UNKNOWN,
+                    format!("no end symbol lies within {reach_m:.2} m of this end; expected a live or a dead end"),
+                    "insert the live or dead end block at the end, or name the office's blocks, words or shapes in the job file",
+                ),
+            };
+            Finding::new(rule, Level::Error, text, remedy)
+                .on_tendon(mark)
+                .at_station(station_m)
+                .at_place(told.end.place)
         })
         .collect()
 }
 
 fn unclaimed(symbol: &Symbol<'_>, reach_m: f64) -> Finding {
     let kind = match symbol.kind {
-        EndKind::Live => "live",
-        EndKind::Dead => "dead",
+        Some(EndKind::Live) => "live end symbol",
+        Some(EndKind::Dead) => "dead end symbol",
+        None => "end symbol",
     };
     Finding::new(
         &END_UNCLAIMED,
         Level::Warning,
         format!(
-            "{kind} end symbol {} ({}) is not the nearest to any tendon's end within {reach_m:.2} m",
-            symbol.insert.handle, symbol.insert.block
+            "{kind} {} ({}) is not the nearest to any tendon's end within {reach_m:.2} m",
+            symbol.handle, symbol.name
         ),
         "move the symbol to its tendon's end, or delete it",
     )
-    .at_place(symbol.insert.place)
+    .at_place(symbol.place)
 }
 
 /// An end takes one symbol.

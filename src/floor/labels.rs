@@ -4,12 +4,13 @@ use std::cmp::Ordering;
 use std::collections::{BTreeSet, HashMap};
 
 use super::layers::Roles;
-use super::readings::{HeightText, MarkText, height, mark};
+use super::readings::{HeightText, MarkText, height, label};
 use super::rules::LABEL_UNREAD;
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
 use crate::job::Conventions;
+use crate::job::families::offered;
 
 /// Texts on label layers.
 #[derive(Default)]
@@ -37,7 +38,7 @@ pub(super) fn labels<'a>(
         .filter(|(at, text)| !taken.contains(at) && usable(text))
         .map(|(_, text)| text)
         .filter(|text| {
-            let label = roles.of(&text.layer).label;
+            let label = roles.of(&text.layer, text.look).label;
             label.heights || label.marks || label.level_lines
         })
         .collect();
@@ -46,21 +47,29 @@ pub(super) fn labels<'a>(
     let mut labels = Labels::default();
     let mut findings = Vec::new();
     for text in texts {
-        let label = roles.of(&text.layer).label;
-        let as_height = || height(&text.content, conventions).filter(|_| label.heights);
-        let as_mark = || mark(&text.content, &conventions.mark_patterns).filter(|_| label.marks);
-        if let Some(reading) = as_height() {
-            labels.heights.push((text, reading));
-        } else if let Some(reading) = as_mark() {
-            labels.marks.push((text, reading));
-        } else {
-            let expected = match (label.heights || label.level_lines, label.marks) {
+        let of = roles.of(&text.layer, text.look).label;
+        let said = label(&text.content, of.heights, of.marks, conventions);
+        if said.other_height.is_some() {
+            findings.push(unread(
+                text,
+                "says two heights, of which the first was taken",
+                "one height in a label",
+            ));
+        }
+        let silent = said.height.is_none() && said.mark.is_none();
+        labels
+            .heights
+            .extend(said.height.map(|height| (text, height)));
+        labels.marks.extend(said.mark.map(|mark| (text, mark)));
+        // What nobody sees need not say anything that is for us.
+        if silent && !text.hidden {
+            let expected = match (of.heights || of.level_lines, of.marks) {
                 (true, false) => "a height such as H165, L30 or 165",
                 (false, true) => "a mark or strand count such as D012 5-12.7",
                 _ => "a height such as H165 or a mark such as D012 5-12.7",
             };
             let readable = height(&text.content, conventions).is_some();
-            if readable && label.level_lines {
+            if readable && of.level_lines {
                 findings.push(unread(
                     text,
                     "is a height, but no level line is within reach",
@@ -68,7 +77,7 @@ pub(super) fn labels<'a>(
                 ));
             } else {
                 findings.push(unread(text, "cannot be read", expected));
-                if label.heights {
+                if of.heights {
                     labels.unread.push(text);
                 }
             }
@@ -111,11 +120,24 @@ fn without_copies<'a>(texts: &[&'a Text]) -> Vec<&'a Text> {
 }
 
 fn unread(text: &Text, what: &str, expected: &str) -> Finding {
+    let known = text.content.lines().find_map(offered);
+    let remedy = known.map_or_else(
+        || "correct the text, move it to another layer if it is no label, or give its pattern in the job file".to_owned(),
+        |offer| {
+            format!(
+                "if it is a {}, take that pattern into the job file ({}; survey proposes it): {}",
+                offer.pattern.label(), offer.key, offer.caution
+            )
+        },
+    );
     Finding::new(
         &LABEL_UNREAD,
         Level::Warning,
-        format!("text {:?} on layer {} {what}; expected {expected}", text.content, text.layer),
-        "correct the text, move it to another layer if it is no label, or give its pattern in the job file",
+        format!(
+            "text {:?} on layer {} {what}; expected {expected}",
+            text.content, text.layer
+        ),
+        remedy,
     )
     .at_place(text.place)
 }

@@ -6,17 +6,28 @@ use geo::Coord;
 
 use super::rules::LAYER_HIDDEN;
 use super::types::Run;
-use crate::drawing::{Drawing, Shape};
+use crate::drawing::{Drawing, Look, Shape};
 use crate::finding::{Finding, Level};
 use crate::job::Conventions;
-use crate::patterns::Patterns;
+use crate::patterns::{Names, Selectors};
 
 /// What a layer may hold; a layer may serve more than one purpose.
 #[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
 pub(super) struct Role {
-    pub(super) run: Option<Run>,
+    pub(super) run: Option<Way>,
+    /// Symbols at the ends of tendons.
+    pub(super) ends: bool,
     pub(super) label: Labels,
     pub(super) ground: Ground,
+}
+
+/// How a tendon's run is told.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+pub(super) enum Way {
+    /// By its layer.
+    Run(Run),
+    /// By its direction.
+    ByDirection,
 }
 
 /// Labels that a layer may hold.
@@ -44,55 +55,85 @@ pub(super) enum Ground {
 }
 
 /// The roles of a drawing's layers.
-pub(super) struct Roles(BTreeMap<String, Role>);
+pub(super) struct Roles {
+    by_layer: BTreeMap<String, Role>,
+    /// Roles of what lies on layers for which some pattern asks for a colour or a linetype.
+    by_look: BTreeMap<String, BTreeMap<Look, Role>>,
+}
 
 impl Roles {
     /// Looks every layer of the drawing up in the job's patterns.
     pub(super) fn new(drawing: &Drawing, conventions: &Conventions) -> Self {
         let layers = &conventions.layers;
         let sets = [
-            set(&layers.banded),
-            set(&layers.distributed),
-            set(&layers.heights),
-            set(&layers.level_lines),
-            set(&layers.marks),
-            set(&layers.slab_edge),
-            set(&layers.slab_opening),
-            set(&layers.slab_zone),
-            set(&layers.column),
-        ];
-        let named = drawing.layers.iter().map(|layer| &layer.name);
-        let used = drawing.shapes.iter().map(|shape| &shape.layer);
-        let lettered = drawing.texts.iter().map(|text| &text.layer);
-        let mut roles = BTreeMap::new();
-        for name in named.chain(used).chain(lettered) {
-            if !roles.contains_key(name) {
-                roles.insert(name.clone(), role(&sets, name));
-            }
+            &layers.banded,
+            &layers.distributed,
+            &layers.tendons,
+            &layers.heights,
+            &layers.level_lines,
+            &layers.marks,
+            &layers.ends,
+            &layers.slab_edge,
+            &layers.slab_opening,
+            &layers.slab_zone,
+            &layers.column,
+        ]
+        .map(|patterns| selectors(patterns));
+        let mut roles = Self {
+            by_layer: BTreeMap::new(),
+            by_look: BTreeMap::new(),
+        };
+        for layer in &drawing.layers {
+            roles.learn(&sets, drawing, &layer.name, Look::default());
         }
-        Self(roles)
+        for shape in &drawing.shapes {
+            roles.learn(&sets, drawing, &shape.layer, shape.look);
+        }
+        for text in &drawing.texts {
+            roles.learn(&sets, drawing, &text.layer, text.look);
+        }
+        roles
     }
 
-    /// The role of a layer.
-    pub(super) fn of(&self, layer: &str) -> Role {
-        self.0.get(layer).copied().unwrap_or_default()
+    fn learn(&mut self, sets: &[Selectors; 11], drawing: &Drawing, layer: &str, look: Look) {
+        if let Some(looks) = self.by_look.get_mut(layer) {
+            looks
+                .entry(look)
+                .or_insert_with(|| role(sets, layer, look.colour, drawing.linetype(look)));
+        } else if !self.by_layer.contains_key(layer) {
+            let seen = role(sets, layer, look.colour, drawing.linetype(look));
+            if sets.iter().any(|set| set.asks_more(layer)) {
+                let looks = BTreeMap::from([(look, seen)]);
+                self.by_look.insert(layer.to_owned(), looks);
+            } else {
+                self.by_layer.insert(layer.to_owned(), seen);
+            }
+        }
+    }
+
+    /// The role of what lies on a layer and is seen so.
+    pub(super) fn of(&self, layer: &str, look: Look) -> Role {
+        let plain = self.by_layer.get(layer);
+        let seen = || self.by_look.get(layer).and_then(|looks| looks.get(&look));
+        plain.or_else(seen).copied().unwrap_or_default()
     }
 
     /// One finding for each hidden layer that holds what was read.
     pub(super) fn hidden(&self, drawing: &Drawing) -> Vec<Finding> {
         let mut findings = Vec::new();
         for layer in drawing.layers.iter().filter(|l| l.off || l.frozen) {
-            let role = self.of(&layer.name);
-            let labels = role.label != Labels::default();
             let shapes = drawing
                 .shapes
                 .iter()
-                .filter(|s| s.layer == layer.name && (role.run.is_some() || role.label.level_lines))
+                .filter(|s| s.layer == layer.name)
+                .map(|s| self.of(&s.layer, s.look))
+                .filter(|role| role.run.is_some() || role.label.level_lines)
                 .count();
             let texts = drawing
                 .texts
                 .iter()
-                .filter(|t| t.layer == layer.name && labels)
+                .filter(|t| t.layer == layer.name)
+                .filter(|t| self.of(&t.layer, t.look).label != Labels::default())
                 .count();
             if shapes + texts > 0 {
                 let state = if layer.frozen { "frozen" } else { "off" };
@@ -112,22 +153,28 @@ impl Roles {
     }
 }
 
-fn role(sets: &[Patterns; 9], name: &str) -> Role {
+fn role(sets: &[Selectors; 11], layer: &str, colour: Option<u8>, linetype: &str) -> Role {
     let [
         banded,
         distributed,
+        tendons,
         heights,
         levels,
         marks,
+        ends,
         edge,
         opening,
         zone,
         column,
-    ] = sets.each_ref().map(|set| set.fit(name));
+    ] = sets
+        .each_ref()
+        .map(|set| set.picks(layer, colour, linetype));
     let run = if banded {
-        Some(Run::Banded)
+        Some(Way::Run(Run::Banded))
     } else if distributed {
-        Some(Run::Distributed)
+        Some(Way::Run(Run::Distributed))
+    } else if tendons {
+        Some(Way::ByDirection)
     } else {
         None
     };
@@ -144,6 +191,7 @@ fn role(sets: &[Patterns; 9], name: &str) -> Role {
     };
     Role {
         run,
+        ends,
         label: Labels {
             heights,
             level_lines: levels,
@@ -161,7 +209,12 @@ pub(super) fn sound(shape: &Shape) -> bool {
     path.length_m().is_finite() && finite(path.start()) && finite(path.end())
 }
 
-/// Names by the job's patterns; broken ones were refused where the job was read, and fit nothing here.
-pub(super) fn set(patterns: &[String]) -> Patterns {
-    Patterns::new(patterns).unwrap_or_default()
+/// A job's patterns of layers; one that is none was refused where the job was read, and then none picks anything here.
+fn selectors(patterns: &[String]) -> Selectors {
+    Selectors::new(patterns).unwrap_or_default()
+}
+
+/// A job's patterns of names, likewise.
+pub(super) fn names(patterns: &[String]) -> Names {
+    Names::new(patterns).unwrap_or_default()
 }

@@ -13,7 +13,7 @@ use super::pieces::{Joint, chains};
 use super::points::words;
 use super::readings::{HeightText, height};
 use super::rules::LEVEL_LINE_UNREAD;
-use crate::drawing::{Drawing, Shape};
+use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::finding::{Finding, Level};
 use crate::geometry::{Path, Segment, distance_m};
 use crate::job::Job;
@@ -77,7 +77,8 @@ fn level_paths(drawing: &Drawing, job: &Job, roles: &Roles) -> Vec<Path> {
     let mut shapes: Vec<&Shape> = drawing
         .shapes
         .iter()
-        .filter(|shape| roles.of(&shape.layer).label.level_lines && sound(shape))
+        .filter(|shape| roles.of(&shape.layer, shape.look).label.level_lines && sound(shape))
+        .filter(|shape| shape.kind != ShapeKind::Solid)
         .collect();
     shapes.sort_by(|a, b| by_place(&a.path, &b.path).then_with(|| by_handle(&a.handle, &b.handle)));
     let pieces: Vec<&Path> = shapes.iter().map(|shape| &shape.path).collect();
@@ -119,7 +120,7 @@ fn readings(
     for own_layer in [true, false] {
         let mut found: Vec<(usize, usize, HeightText)> = Vec::new();
         for (at, text) in drawing.texts.iter().enumerate() {
-            let labels = roles.of(&text.layer).label;
+            let labels = roles.of(&text.layer, text.look).label;
             if labels.level_lines != own_layer || !(labels.level_lines || labels.heights) {
                 continue;
             }

@@ -6,12 +6,12 @@ use geo::Coord;
 
 use super::bridges::{Reach, bridged};
 use super::copies::{without_copies, without_overlaps};
-use super::layers::{Roles, sound};
+use super::layers::{Roles, Way, sound};
 use super::order::{by_handle, by_place, drawn_before};
 use super::pieces::{Joint, chains, returns};
-use super::rules::{PIECES_MEET, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
+use super::rules::{PIECES_MEET, RUN_ASSUMED, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
 use super::types::Run;
-use crate::drawing::{Drawing, Shape};
+use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::finding::{Finding, Level};
 use crate::geometry::Path;
 use crate::job::Job;
@@ -41,12 +41,12 @@ pub(super) fn lines(
     symbols: &BTreeSet<usize>,
 ) -> (Vec<Line>, Vec<Finding>) {
     let mut findings = Vec::new();
-    let mut by_layer: BTreeMap<(&str, Run), Vec<&Shape>> = BTreeMap::new();
+    let mut by_layer: BTreeMap<(&str, Way), Vec<&Shape>> = BTreeMap::new();
     for (at, shape) in drawing.shapes.iter().enumerate() {
-        let Some(run) = roles.of(&shape.layer).run else {
+        let Some(way) = roles.of(&shape.layer, shape.look).run else {
             continue;
         };
-        if !sound(shape) || symbols.contains(&at) {
+        if !sound(shape) || shape.kind == ShapeKind::Solid || symbols.contains(&at) {
             continue;
         }
         let gap_m = job.conventions.join_gap_m;
@@ -55,15 +55,24 @@ pub(super) fn lines(
         } else if shape.closed || returns(&shape.path, gap_m) {
             findings.push(closed_shape(&shape.handle, &shape.layer, &shape.path));
         } else {
-            by_layer.entry((&shape.layer, run)).or_default().push(shape);
+            by_layer.entry((&shape.layer, way)).or_default().push(shape);
         }
     }
     let tolerance_m = job.conventions.join_gap_m.max(0.005);
     let mut lines = Vec::new();
-    for ((_, run), mut shapes) in by_layer {
+    let by_direction = by_layer.keys().any(|(_, way)| *way == Way::ByDirection);
+    for ((_, way), mut shapes) in by_layer {
         shapes.sort_by(|a, b| drawn_before(a, b));
         let shapes = without_copies(&shapes, tolerance_m, &mut findings);
-        lines.extend(joined(&shapes, run, job, ends, &mut findings));
+        lines.extend(joined(&shapes, way, job, ends, &mut findings));
+    }
+    if by_direction && job.conventions.banded_along_rad.is_none() {
+        findings.push(Finding::new(
+            &RUN_ASSUMED,
+            Level::Note,
+            "the job tells the runs apart by direction but gives none for banded tendons; all on those layers were taken as distributed",
+            "set drawing.banded_along_deg to the direction of the banded tendons, in degrees from the x axis",
+        ));
     }
     lines.sort_by(|a, b| by_place(&a.path, &b.path).then_with(|| by_handle(&a.handle, &b.handle)));
     let lines = without_overlaps(lines, tolerance_m, &mut findings);
@@ -75,7 +84,8 @@ pub(super) fn lines(
                 "no line lies on a tendon layer; expected layers like {}",
                 [
                     job.conventions.layers.banded.as_slice(),
-                    job.conventions.layers.distributed.as_slice()
+                    job.conventions.layers.distributed.as_slice(),
+                    job.conventions.layers.tendons.as_slice(),
                 ]
                 .concat()
                 .join(", ")
@@ -118,10 +128,30 @@ fn stub(shape: &Shape, gap_m: f64) -> Finding {
     }
 }
 
+/// The run of a line: as its layer says, or banded if it lies nearer to the direction of banded tendons than to its
+/// normal.
+fn run(way: Way, path: &Path, banded_along_rad: Option<f64>) -> Run {
+    let (Way::ByDirection, Some(along_rad)) = (way, banded_along_rad) else {
+        return match way {
+            Way::Run(run) => run,
+            Way::ByDirection => Run::Distributed,
+        };
+    };
+    let (Some(start), Some(end)) = (path.start(), path.end()) else {
+        return Run::Distributed;
+    };
+    let turn_rad = (end.y - start.y).atan2(end.x - start.x) - along_rad;
+    if turn_rad.cos().abs() > turn_rad.sin().abs() {
+        Run::Banded
+    } else {
+        Run::Distributed
+    }
+}
+
 /// Shapes of one layer as lines, each from the first vertex of the piece that was drawn first.
 fn joined(
     shapes: &[&Shape],
-    run: Run,
+    way: Way,
     job: &Job,
     ends: &[Coord<f64>],
     findings: &mut Vec<Finding>,
@@ -169,7 +199,7 @@ fn joined(
         lines.push(Line {
             handle: shape.handle.clone(),
             layer: shape.layer.clone(),
-            run,
+            run: run(way, &path, job.conventions.banded_along_rad),
             path: if backwards { path.reversed() } else { path },
         });
     }

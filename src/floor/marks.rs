@@ -53,10 +53,7 @@ pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks 
         };
         let whole = &mut marks.of_line[lies[now].pairing.host];
         let said = &texts[label];
-        whole.mark = whole.mark.take().or_else(|| said.mark.clone());
-        whole.tendons = whole.tendons.or(said.tendons);
-        whole.strands = whole.strands.or(said.strands);
-        whole.strand = whole.strand.take().or_else(|| said.strand.clone());
+        whole.add(said);
         if settlement.choices(label).len() < 2 {
             continue;
         }
@@ -164,8 +161,14 @@ fn clash(a: &MarkText, b: &MarkText) -> bool {
         || differ(a.strands.as_ref(), b.strands.as_ref())
         || differ(a.tendons.as_ref(), b.tendons.as_ref())
         || differ(a.strand.as_ref(), b.strand.as_ref())
-        // Two counts without a mark are those of two tendons, even if they are equal.
-        || (a.mark.is_none() && b.mark.is_none())
+        // Two counts without a mark are those of two tendons, even if they are equal; a count and a force are not.
+        || (a.mark.is_none() && b.mark.is_none() && alike(a, b))
+}
+
+/// Whether two texts say the same kind of thing.
+fn alike(a: &MarkText, b: &MarkText) -> bool {
+    let counts = |text: &MarkText| text.strands.is_some() || text.tendons.is_some();
+    (counts(a) && counts(b)) || (a.requires() && b.requires()) || (!a.counts() && !b.counts())
 }
 
 /// Lines whose middles are no farther apart across their run than this lie in one row, metres. It is no multiple of a
@@ -221,7 +224,12 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
     let mut first: BTreeMap<String, &Tendon> = BTreeMap::new();
     for tendon in tendons {
         let middle_m = tendon.path.length_m() / 2.0;
+        let required = tendon.required_kn.is_some() || tendon.required_kn_per_m.is_some();
         let no_count = match tendon.strands {
+            None if required => Some((
+                "a label gives the force that is required here, but none the number of strands, which is not worked out from it",
+                "write mark and strands beside the tendon, on the layer of marks",
+            )),
             None => Some((
                 "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
                 "write mark and strands beside the tendon, on the layer of marks",
@@ -245,7 +253,7 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
                     &MARK_TWICE,
                     Level::Warning,
                     format!(
-                        "mark {} stands on lines {} and {}; expected each mark once",
+                        "mark {} stands on the lines with handles {} and {}; expected each mark once",
                         tendon.mark, before.handle, tendon.handle
                     ),
                     "give one of the two tendons its own mark",

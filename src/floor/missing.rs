@@ -70,6 +70,7 @@ pub(super) fn complete(
                 kind: lack.kind,
                 station_m: lack.station_m,
                 place,
+                drawn_m: None,
                 height_m: None,
                 thickness_m: thickness.at(place),
             };

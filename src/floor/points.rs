@@ -25,6 +25,13 @@ struct Mark {
     torn: bool,
 }
 
+impl Mark {
+    /// The number that stands on the drawing; a word such as MID is none, and of two that contradict neither counts.
+    fn drawn_m(&self) -> Option<f64> {
+        (!self.torn && !self.reading.middle).then_some(self.reading.value_m)
+    }
+}
+
 /// Points of one tendon: anchor, what the drawing gives between, anchor. Without any height all are `None`.
 pub(super) fn points(
     mark: &str,
@@ -49,7 +56,7 @@ pub(super) fn points(
         let thickness_m = thickness.at(place);
         let height_m = match said {
             Some(said) if said.torn => None,
-            Some(said) => height_m(said.reading.value_m, PointKind::Anchor, thickness_m, job),
+            Some(said) => height_m(said.reading, PointKind::Anchor, thickness_m, job),
             None if marks.is_empty() => None,
             None => thickness_m.map(|t| t / 2.0),
         };
@@ -57,6 +64,7 @@ pub(super) fn points(
             kind: PointKind::Anchor,
             station_m,
             place,
+            drawn_m: said.and_then(Mark::drawn_m),
             height_m,
             thickness_m,
         }
@@ -65,16 +73,17 @@ pub(super) fn points(
     let last = anchor(length_m, end);
     let inner = usize::from(first_is_anchor)..marks.len() - usize::from(last_is_anchor);
     let between: Vec<Mark> = marks.get(inner).unwrap_or_default().to_vec();
-    let kinds = kinds(line, &between, [&first, &last], job);
+    let kinds = kinds(line, &between, [&first, &last]);
     let mut points = vec![first];
     points.extend(between.iter().zip(kinds).map(|(mark, kind)| Point {
         kind,
         station_m: mark.station_m,
         place: line.path.place_at(mark.station_m),
+        drawn_m: mark.drawn_m(),
         height_m: if mark.torn {
             None
         } else {
-            height_m(mark.reading.value_m, kind, mark.thickness_m, job)
+            height_m(mark.reading, kind, mark.thickness_m, job)
         },
         thickness_m: mark.thickness_m,
     }));
@@ -93,13 +102,14 @@ fn merged(
     let mut marks: Vec<(Mark, bool)> = Vec::new();
     for height in heights {
         let place = line.path.place_at(height.station_m);
-        let new = Mark {
+        let mut new = Mark {
             station_m: height.station_m,
             reading: height.reading,
             at_end: height.at_end,
             thickness_m: thickness.at(place),
             torn: false,
         };
+        new.reading.weigh(new.thickness_m);
         let labelled = height.label.is_some();
         let held = marks.last_mut().filter(|(held, by_label)| {
             // A label farther in does not speak for the anchor that a level line gives.
@@ -176,38 +186,51 @@ pub(super) fn words(reading: HeightText) -> String {
 /// Strand centroid above the local soffit. To the duct's underside, the strand lies higher in the duct at a low point
 /// than at a high one; between, and at an anchor, it is taken midway.
 fn height_m(
-    value_m: f64,
+    reading: HeightText,
     kind: PointKind,
     thickness_m: Option<f64>,
     job: &HeightReading,
 ) -> Option<f64> {
-    let in_duct_m = match (job.datum, kind) {
+    if reading.middle {
+        return thickness_m.map(|thickness_m| thickness_m / 2.0);
+    }
+    let value_m = reading.value_m;
+    // A chair stands on the form and carries the duct: its height is that of the duct's underside.
+    let in_duct_m = match (reading.datum, kind) {
         (Datum::Centroid, _) => 0.0,
-        (Datum::DuctUnderside, PointKind::Low) => job.strand_in_duct_low_m,
-        (Datum::DuctUnderside, PointKind::High) => job.strand_in_duct_high_m,
-        (Datum::DuctUnderside, PointKind::Anchor | PointKind::Support) => {
+        (Datum::DuctUnderside | Datum::Chair, PointKind::Low) => job.strand_in_duct_low_m,
+        (Datum::DuctUnderside | Datum::Chair, PointKind::High) => job.strand_in_duct_high_m,
+        (Datum::DuctUnderside | Datum::Chair, PointKind::Anchor | PointKind::Support) => {
             f64::midpoint(job.strand_in_duct_low_m, job.strand_in_duct_high_m)
         }
     };
-    match job.from {
-        FromFace::Soffit => Some(value_m + in_duct_m),
-        FromFace::Top => Some(thickness_m? - value_m + in_duct_m),
+    match (reading.from, kind) {
+        (FromFace::Soffit, _) | (FromFace::NearerFace, PointKind::Low) => Some(value_m + in_duct_m),
+        (FromFace::Top, _) | (FromFace::NearerFace, PointKind::High) => {
+            Some(thickness_m? - value_m + in_duct_m)
+        }
+        (FromFace::NearerFace, PointKind::Anchor | PointKind::Support) => None,
     }
 }
 
 /// What each height is: by its word, or by its neighbours.
-fn kinds(line: &Line, marks: &[Mark], anchors: [&Point; 2], job: &HeightReading) -> Vec<PointKind> {
+fn kinds(line: &Line, marks: &[Mark], anchors: [&Point; 2]) -> Vec<PointKind> {
     // Where the slab's thickness is known everywhere, levels are compared; otherwise heights as written.
     let by_level = marks.iter().all(|mark| mark.thickness_m.is_some())
         && anchors.iter().all(|anchor| anchor.thickness_m.is_some());
-    let level = |mark: &Mark| match job.from {
+    let from_soffit = |mark: &Mark| mark.reading.from == FromFace::Soffit;
+    let level = |mark: &Mark| match mark.reading.from {
         FromFace::Top => -mark.reading.value_m,
-        FromFace::Soffit if by_level => mark.reading.value_m - mark.thickness_m.unwrap_or(0.0),
-        FromFace::Soffit => mark.reading.value_m,
+        FromFace::NearerFace if mark.reading.word != Some(Word::Low) => -mark.reading.value_m,
+        _ if by_level => mark.reading.value_m - mark.thickness_m.unwrap_or(0.0),
+        _ => mark.reading.value_m,
     };
-    let anchor = |point: &Point| match job.from {
-        FromFace::Soffit if !by_level => point.height_m,
-        _ => point.level_m(),
+    let anchor = |point: &Point| {
+        if !by_level && marks.iter().all(from_soffit) {
+            point.height_m
+        } else {
+            point.level_m()
+        }
     };
     // Anchor, heights, anchor; an anchor without a level does not count.
     let mut levels: Vec<Option<f64>> = vec![anchor(anchors[0])];

@@ -5,6 +5,7 @@ use crate::finding::Rule;
 /// Every rule of this stage, by name.
 pub const RULES: &[&Rule] = &[
     &DUPLICATE_LINE,
+    &END_CONTRADICTED,
     &END_UNCLAIMED,
     &END_UNKNOWN,
     &HEIGHT_MISSING,
@@ -19,6 +20,7 @@ pub const RULES: &[&Rule] = &[
     &PIECES_BRIDGED,
     &PIECES_MEET,
     &PIECES_OVERLAP,
+    &RUN_ASSUMED,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
     &TENDON_STUB,
@@ -32,6 +34,12 @@ pub const RULES: &[&Rule] = &[
 pub(super) const DUPLICATE_LINE: Rule = Rule {
     name: "duplicate-line",
     meaning: "Two tendon lines lie on one another, wholly or in part: the tendon would be counted twice.",
+};
+
+/// An end said to be both.
+pub(super) const END_CONTRADICTED: Rule = Rule {
+    name: "end-contradicted",
+    meaning: "A block, shape or word says that an end is live, another at the same end that it is dead.",
 };
 
 /// A live or dead end symbol without an end.
@@ -116,6 +124,12 @@ pub(super) const PIECES_BRIDGED: Rule = Rule {
 pub(super) const PIECES_OVERLAP: Rule = Rule {
     name: "pieces-overlap",
     meaning: "Two pieces in line with one another overlap: they were taken for one tendon.",
+};
+
+/// Banded or distributed is not told.
+pub(super) const RUN_ASSUMED: Rule = Rule {
+    name: "run-assumed",
+    meaning: "Runs are told apart by direction, and the job does not say which way banded tendons go.",
 };
 
 /// Strands unknown.

@@ -1,5 +1,7 @@
 //! The slab on plan: outlines, openings, columns, zones and their thickness.
 
+use std::collections::BTreeSet;
+
 use geo::{Area, BoundingRect, Contains, Coord, Polygon};
 use rstar::primitives::{GeomWithData, Rectangle};
 use rstar::{AABB, RTree};
@@ -10,7 +12,7 @@ use super::pieces::{Joint, chains};
 use super::readings::thickness_m;
 use super::rules::{OUTLINE_OPEN, THICKNESS_DIFFERS, THICKNESS_UNKNOWN, ZONE_UNREAD};
 use super::types::{Slab, Zone};
-use crate::drawing::{Drawing, Shape, Text};
+use crate::drawing::{Drawing, Shape, ShapeKind, Text};
 use crate::finding::{Finding, Level};
 use crate::geometry::{Path, Segment, distance_m};
 use crate::job::Job;
@@ -19,6 +21,8 @@ use crate::job::Job;
 const CHORD_M: f64 = 0.001;
 /// A place this near to a zone's edge is in the zone, metres.
 const EDGE_M: f64 = 0.010;
+/// An outline no larger than this is a symbol's, not the slab's, metres.
+const SYMBOL_M: f64 = 0.4;
 /// Texts that differ by less say the same thickness, metres.
 const SAME_M: f64 = 0.0005;
 
@@ -27,9 +31,10 @@ pub(super) fn slab(
     drawing: &Drawing,
     job: &Job,
     roles: &Roles,
+    symbols: &BTreeSet<usize>,
 ) -> (Slab, Vec<Polygon<f64>>, Vec<Finding>) {
     let mut findings = Vec::new();
-    let mut rings = |ground| outlines(drawing, job, roles, ground, &mut findings);
+    let mut rings = |ground| outlines(drawing, job, roles, symbols, ground, &mut findings);
     let mut slab = Slab {
         outlines: rings(Ground::Edge),
         openings: rings(Ground::Opening),
@@ -48,7 +53,7 @@ pub(super) fn slab(
         by_place.then_with(|| a.content.cmp(&b.content))
     });
     for text in texts {
-        let ground = roles.of(&text.layer).ground;
+        let ground = roles.of(&text.layer, text.look).ground;
         if ground != Ground::Zone && ground != Ground::Edge {
             continue;
         }
@@ -158,6 +163,7 @@ fn outlines(
     drawing: &Drawing,
     job: &Job,
     roles: &Roles,
+    symbols: &BTreeSet<usize>,
     ground: Ground,
     findings: &mut Vec<Finding>,
 ) -> Vec<Polygon<f64>> {
@@ -165,7 +171,14 @@ fn outlines(
     let shapes: Vec<&Shape> = drawing
         .shapes
         .iter()
-        .filter(|shape| roles.of(&shape.layer).ground == ground && sound(shape))
+        .enumerate()
+        .filter(|(at, shape)| {
+            let of = roles.of(&shape.layer, shape.look).ground;
+            of == ground && sound(shape) && !symbols.contains(at)
+        })
+        .map(|(_, shape)| shape)
+        // A filled triangle or quadrangle is a column's body; elsewhere it is an arrow's head or a legend's sample.
+        .filter(|shape| shape.kind != ShapeKind::Solid || ground == Ground::Column)
         .collect();
     let whole = |shape: &&&Shape| shape.closed || super::pieces::returns(&shape.path, gap_m);
     let mut rings: Vec<Polygon<f64>> = shapes
@@ -188,11 +201,16 @@ fn outlines(
         let path = chain.path(&open);
         if chain.closed {
             rings.push(ring(&path));
-        } else if ground != Ground::Column && path.length_m() > gap_m {
+        } else if ground != Ground::Column && path.length_m() > gap_m.max(SYMBOL_M) {
             findings.push(open_outline(ground, &path));
         }
     }
-    rings.retain(|ring| ring.unsigned_area() > 1e-6);
+    // A hole may be as small as a pipe; an edge or a zone of the size of a symbol is one.
+    let least_m2 = match ground {
+        Ground::Edge | Ground::Zone => SYMBOL_M * SYMBOL_M,
+        _ => 1e-6,
+    };
+    rings.retain(|ring| ring.unsigned_area() > least_m2);
     rings.sort_by(|a, b| {
         let key = |ring: &Polygon<f64>| ring.bounding_rect().map(|r| (r.min(), r.max()));
         let (a, b) = (key(a), key(b));

@@ -32,8 +32,12 @@ pub struct Tendon {
     pub tendons: u32,
     /// Strands in each of those tendons, as drawn: a label may say 0.
     pub strands: Option<u32>,
-    /// Strand size as written, such as `12.7`.
+    /// Strand size by its name in the job, such as `12.7`; as written, where the job knows none of that name.
     pub strand: Option<String>,
+    /// Force after losses that the line's tendons together are required to have, kN, where a label says so.
+    pub required_kn: Option<f64>,
+    /// The same per width of slab, kN/m.
+    pub required_kn_per_m: Option<f64>,
     /// The two ends: at station 0 and at the path's end.
     pub ends: [End; 2],
     /// Profile points in order of station: anchor first, anchor last.
@@ -78,6 +82,9 @@ pub struct Point {
     pub station_m: f64,
     /// Place on the plan line, metres.
     pub place: Coord<f64>,
+    /// The drawing's own number here, metres, from the face and to the datum that it is written for; `None` where it gives
+    /// none.
+    pub drawn_m: Option<f64>,
     /// Strand centroid above the local soffit, metres; `None` where the drawing does not say.
     pub height_m: Option<f64>,
     /// Slab thickness here, metres; `None` where the drawing does not say.

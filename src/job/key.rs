@@ -1,9 +1,8 @@
 //! What a key of the job file is: where it stands, what may be typed there, and where in the job its value lives.
 
-use regex::Regex;
 use serde_json::{Value, json};
 
-use super::{Job, StrandSize};
+use super::{Job, Pattern, StrandSize};
 
 /// A key of the job file. Reading, range checks, help, the proposed file, the result's `inputs` and the list of
 /// assumptions all come from this one description.
@@ -57,12 +56,23 @@ pub enum Kind {
     Shell(Place<String>),
     /// A list of words.
     Words(Place<String>),
-    /// A list of regular expressions, each with at least one of these named groups.
-    Expressions {
-        /// The groups.
-        groups: &'static [&'static str],
+    /// A list of some of these words.
+    Choices {
+        /// The words.
+        words: &'static [&'static str],
         /// Its place.
-        place: Place<Regex>,
+        place: Place<String>,
+    },
+    /// A list of patterns: regular expressions with named groups, bare or in tables that say more.
+    Expressions {
+        /// The groups of which each has at least one.
+        groups: &'static [&'static str],
+        /// Groups that it may have besides.
+        also: &'static [&'static str],
+        /// What a table may say besides `name` and `expression`.
+        says: &'static [&'static str],
+        /// Its place.
+        place: Place<Pattern>,
     },
     /// The name of a strand.
     StrandName {
@@ -105,15 +115,17 @@ impl Key {
             Kind::Number { get, .. } => get(job).map(|number| json!(number)),
             Kind::Choice { get, .. } => get(job).map(|word| json!(word)),
             Kind::Switch { get, .. } => Some(json!(get(job))),
-            Kind::Shell(place) | Kind::Words(place) => Some(json!((place.get)(job))),
+            Kind::Shell(place) | Kind::Words(place) | Kind::Choices { place, .. } => {
+                Some(json!((place.get)(job)))
+            }
             Kind::Expressions { place, .. } => {
-                let patterns: Vec<&str> = (place.get)(job).iter().map(Regex::as_str).collect();
-                Some(json!(patterns))
+                let patterns = (place.get)(job).iter().map(Pattern::written);
+                Some(Value::Array(patterns.collect()))
             }
             Kind::StrandName { get, .. } => get(job).map(|name| json!(name)),
             Kind::Strands(place) => {
                 let sizes = (place.get)(job).iter().map(|size| {
-                    json!({"name": size.name, "area_mm2": size.area_mm2, "strength_mpa": size.strength_mpa})
+                    json!({"name": size.name, "aliases": size.aliases, "area_mm2": size.area_mm2, "strength_mpa": size.strength_mpa})
                 });
                 Some(Value::Array(sizes.collect()))
             }
@@ -128,8 +140,9 @@ impl Key {
             Kind::Switch { .. } => "true or false".to_owned(),
             Kind::Shell(_) => "a list of shell patterns, such as [\"NAME*\"]".to_owned(),
             Kind::Words(_) => "a list of words, such as [\"H\", \"HIGH\"]".to_owned(),
+            Kind::Choices { words, .. } => format!("a list of some of {}", quoted(words)),
             Kind::Expressions { groups, .. } => format!(
-                "a list of regular expressions, each with the named group {}",
+                "a list of regular expressions or of tables {{ name, expression, ... }}, each with the named group {}",
                 groups
                     .iter()
                     .map(|group| format!("(?<{group}>...)"))
@@ -141,12 +154,22 @@ impl Key {
         }
     }
 
+    /// Whether a list with nothing in it may be typed: where that is the default.
+    pub fn may_be_empty(&self) -> bool {
+        self.value(&Job::default()) == Some(json!([]))
+    }
+
     /// A line that may be typed: the default, or an example where there is none.
     pub fn example(&self) -> String {
         let text = match (&self.kind, self.value(&Job::default())) {
             (Kind::Strands(_), _) => {
                 return "[[system.strand]] name = \"12.7\", area_mm2 = 98.7, strength_mpa = 1860"
                     .to_owned();
+            }
+            // The first says how such a list looks; all of them would hide it.
+            (Kind::Expressions { .. }, Some(Value::Array(mut patterns))) => {
+                patterns.truncate(1);
+                toml_text(&Value::Array(patterns))
             }
             (_, Some(value)) => toml_text(&value),
             (Kind::Number { example, .. }, None) => toml_text(&json!(example)),
@@ -183,8 +206,11 @@ pub(super) fn toml_text(value: &Value) -> String {
             None => number.to_string(),
         },
         Value::Object(entries) => {
-            let entries: Vec<String> = entries
-                .iter()
+            // What it is called comes first.
+            let named = entries.iter().filter(|(name, _)| *name == "name");
+            let others = entries.iter().filter(|(name, _)| *name != "name");
+            let entries: Vec<String> = named
+                .chain(others)
                 .map(|(name, value)| format!("{name} = {}", toml_text(value)))
                 .collect();
             format!("{{ {} }}", entries.join(", "))

@@ -1,7 +1,7 @@
 //! The keys of the job file, in the order a file shows them.
 
 use super::key::{Key, Kind, Place};
-use super::{Datum, FromFace, Job, LongTermMethod, Wobble};
+use super::{Datum, END_SHAPES, FromFace, Job, LongTermMethod, Wobble};
 use crate::units::LengthUnit;
 
 /// A number that the job always has; `scale` is key units in one internal unit.
@@ -53,6 +53,7 @@ macro_rules! unit {
 
 const MM: f64 = 1000.0;
 const ONE: f64 = 1.0;
+const DEG: f64 = 180.0 / std::f64::consts::PI;
 const UNITS: &[&str] = &["mm", "cm", "m", "in", "ft"];
 const CONVENTION: &str = "drawing convention of this program";
 
@@ -88,7 +89,7 @@ const fn key(
 #[rustfmt::skip]
 pub const TABLES: &[(&str, &str)] = &[
     ("drawing", "How the drawing is measured and its lines are joined."),
-    ("layers", "What lies on which layer: shell patterns, any letter case."),
+    ("layers", "What lies on which layer: shell patterns, any letter case, also behind the prefix of a reference (REF$0$NAME, REF|NAME). NAME@colour=1 and NAME@linetype=DASHED* pick by what is seen."),
     ("ends", "How the drawing marks the ends of a tendon."),
     ("labels", "How marks and strand counts are written."),
     ("height", "How heights are written and what they measure."),
@@ -116,11 +117,16 @@ pub static KEYS: &[Key] = &[
         "Pieces in line with one another are one tendon across a gap of up to this length, as where a line is broken at a label.", CONVENTION),
     key("drawing", "overlap_mm", number!(0.0..=5000.0, conventions.overlap_m, MM),
         "Pieces in line with one another that overlap by up to this length are one tendon; more is a line drawn twice.", CONVENTION),
+    key("drawing", "banded_along_deg", maybe!(-360.0..=360.0, 0.0, conventions.banded_along_rad, DEG),
+        "Direction of banded tendons in plan, degrees from the x axis; for tendons of layers.tendons, of which those nearer to its normal are distributed.",
+        "all tendons of layers.tendons are distributed"),
 
     key("layers", "banded", Kind::Shell(place!(conventions.layers.banded)),
         "Tendons gathered along column lines.", CONVENTION),
     key("layers", "distributed", Kind::Shell(place!(conventions.layers.distributed)),
         "Tendons spread over the floor.", CONVENTION),
+    key("layers", "tendons", Kind::Shell(place!(conventions.layers.tendons)),
+        "Tendons of either run, told apart by drawing.banded_along_deg.", CONVENTION),
     key("layers", "heights", Kind::Shell(place!(conventions.layers.heights)),
         "Height labels.", CONVENTION),
     key("layers", "level_lines", Kind::Shell(place!(conventions.layers.level_lines)),
@@ -128,7 +134,7 @@ pub static KEYS: &[Key] = &[
     key("layers", "marks", Kind::Shell(place!(conventions.layers.marks)),
         "Marks and strand counts.", CONVENTION),
     key("layers", "ends", Kind::Shell(place!(conventions.layers.ends)),
-        "Symbols at the ends of tendons.", CONVENTION),
+        "Symbols at the ends of tendons: blocks, words, shapes.", CONVENTION),
     key("layers", "slab_edge", Kind::Shell(place!(conventions.layers.slab_edge)),
         "Outline of the slab.", CONVENTION),
     key("layers", "slab_opening", Kind::Shell(place!(conventions.layers.slab_opening)),
@@ -142,52 +148,69 @@ pub static KEYS: &[Key] = &[
         "Blocks that mark an end stressed from (shell patterns, any letter case).", CONVENTION),
     key("ends", "dead_blocks", Kind::Shell(place!(conventions.dead_end_blocks)),
         "Blocks that mark a fixed end (shell patterns, any letter case).", CONVENTION),
+    key("ends", "blocks", Kind::Shell(place!(conventions.end_blocks)),
+        "Blocks that mark an end whose kind an attribute, a word inside or beside it tells (shell patterns, any letter case).",
+        CONVENTION),
+    key("ends", "attributes", Kind::Shell(place!(conventions.end_attributes)),
+        "Tags of those blocks' attributes that hold a live or dead word (shell patterns, any letter case).", CONVENTION),
+    key("ends", "live_words", Kind::Words(place!(conventions.live_end_words)),
+        "Words at an end stressed from, as texts or attributes, in any letter case, with or without END behind them.",
+        "common practice"),
+    key("ends", "dead_words", Kind::Words(place!(conventions.dead_end_words)),
+        "Words at a fixed end, likewise.", "common practice"),
+    key("ends", "live_shapes", Kind::Choices {
+            words: END_SHAPES,
+            place: place!(conventions.live_end_shapes),
+        },
+        "Shapes drawn on layers.ends at an end stressed from; solid is a SOLID or TRACE of any outline, hatches are not read.",
+        CONVENTION),
+    key("ends", "dead_shapes", Kind::Choices {
+            words: END_SHAPES,
+            place: place!(conventions.dead_end_shapes),
+        },
+        "Shapes drawn on layers.ends at a fixed end, likewise.", CONVENTION),
     key("ends", "reach_mm", number!(1.0..=10_000.0, conventions.end_reach_m, MM),
         "How far an end symbol may lie from the end it marks.", CONVENTION),
 
     key("labels", "reach_text_heights", number!(0.1..=100.0, conventions.label_reach, ONE),
         "How far a label may lie from its tendon, in heights of its own text.", CONVENTION),
     key("labels", "mark_patterns", Kind::Expressions {
-            groups: &["mark", "strands"],
+            groups: &["mark", "strands", "tendons", "strand", "force", "force_per_width"],
+            also: &[],
+            says: &["unit", "strands", "strand"],
             place: place!(conventions.mark_patterns),
         },
-        "Marks and strand counts: groups mark, tendons, strands, strand.", CONVENTION),
+        "Marks, strands and required forces, the first that fits a line: groups mark, tendons, strands, strand, force, force_per_width. \
+         A table may say unit (kN, kip, kN/m, kip/ft), strands (in each tendon of a count), strand.", CONVENTION),
 
     key("height", "unit", unit!(conventions.height.unit),
         "Unit of the numbers; in and ft may be written with fractions.", CONVENTION),
     key("height", "datum", Kind::Choice {
-            words: &["centroid", "duct-underside"],
-            get: |job| Some(match job.conventions.height.datum {
-                Datum::Centroid => "centroid",
-                Datum::DuctUnderside => "duct-underside",
-            }),
-            set: |job, word| job.conventions.height.datum = match word {
-                "duct-underside" => Datum::DuctUnderside,
-                _ => Datum::Centroid,
-            },
+            words: Datum::WORDS,
+            get: |job| Some(job.conventions.height.datum.word()),
+            set: |job, word| job.conventions.height.datum = Datum::of(word),
         },
-        "What a height is measured to: the strands' centroid or the duct's underside.", CONVENTION),
+        "What a height is measured to: the strands' centroid, the duct's underside, or the chair below it, which is the same.", CONVENTION),
     key("height", "from", Kind::Choice {
-            words: &["soffit", "top"],
-            get: |job| Some(match job.conventions.height.from {
-                FromFace::Soffit => "soffit",
-                FromFace::Top => "top",
-            }),
-            set: |job, word| job.conventions.height.from = match word {
-                "top" => FromFace::Top,
-                _ => FromFace::Soffit,
-            },
+            words: FromFace::WORDS,
+            get: |job| Some(job.conventions.height.from.word()),
+            set: |job, word| job.conventions.height.from = FromFace::of(word),
         },
-        "What a height is measured from: the local soffit upwards or the top downwards.", CONVENTION),
+        "What a height is measured from: the local soffit upwards, the top downwards, or the nearer of the two.", CONVENTION),
     key("height", "patterns", Kind::Expressions {
             groups: &["value"],
+            also: &["word"],
+            says: &["unit", "from", "datum", "word"],
             place: place!(conventions.height_patterns),
         },
-        "Heights: groups word (optional) and value.", CONVENTION),
+        "Heights, the first that fits a line: groups word (optional) and value. \
+         A table may say unit, from, datum, and word where the text has none.", CONVENTION),
     key("height", "high_words", Kind::Words(place!(conventions.high_words)),
         "Words of a high point.", "common practice"),
     key("height", "low_words", Kind::Words(place!(conventions.low_words)),
         "Words of a low point.", "common practice"),
+    key("height", "middle_words", Kind::Words(place!(conventions.middle_words)),
+        "Words that stand for mid-depth in place of a number.", "common practice"),
     key("height", "strand_in_duct_low_mm", number!(0.0..=300.0, conventions.height.strand_in_duct_low_m, MM),
         "Strands' centroid above the duct's underside at a low point, where the pulled strand lies at the duct's top.",
         "worked out for 12.7 mm strand in a flat duct 20 mm high"),
@@ -202,6 +225,8 @@ pub static KEYS: &[Key] = &[
         "Unit of thickness texts.", CONVENTION),
     key("slab", "text_patterns", Kind::Expressions {
             groups: &["value"],
+            also: &[],
+            says: &["unit"],
             place: place!(conventions.thickness_patterns),
         },
         "Thickness texts: group value.", CONVENTION),
@@ -302,7 +327,7 @@ pub static KEYS: &[Key] = &[
         "judgement of this program"),
     key("limits", "angle_per_m_rad", number!(0.0..=10.0, limits.angle_per_m_rad, ONE),
         "Angle turned per metre of tendon, above which is a warning.",
-        "judgement of this program"),
+        "judgement of this program: bays of 7 to 9 m turn 0.03 to 0.07"),
     key("limits", "jacking_stress_ratio", number!(0.1..=1.0, limits.jacking_stress_ratio, ONE),
         "Jacking stress over strength, above which is an error.", "ACI 318-19 20.3.2.5.1, from memory"),
     key("limits", "jacking_yield_ratio", number!(0.1..=1.0, limits.jacking_yield_ratio, ONE),

@@ -61,6 +61,8 @@ pub(super) struct Reader {
     /// Path of each given key, with its place.
     pub(super) given: BTreeMap<String, Range<usize>>,
     pub(super) problems: Vec<Problem>,
+    /// Sizes of strand that patterns name, with their places.
+    pub(super) strand_names: Vec<(String, Range<usize>)>,
 }
 
 impl Reader {

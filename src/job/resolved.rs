@@ -1,7 +1,8 @@
 //! The job as every stage reads it: all values present, in internal units.
 
-use regex::Regex;
+use std::fmt;
 
+use super::pattern::Pattern;
 use crate::units::LengthUnit;
 
 /// Everything a job decides.
@@ -23,6 +24,9 @@ pub struct Job {
     pub limits: Limits,
 }
 
+/// Words for the shapes that may mark an end.
+pub const END_SHAPES: &[&str] = &["circle", "triangle", "square", "bar", "solid"];
+
 /// How the drawing is to be read.
 #[derive(Debug, Clone)]
 pub struct Conventions {
@@ -30,20 +34,37 @@ pub struct Conventions {
     pub unit: Option<LengthUnit>,
     /// Layer patterns by what lies on them.
     pub layers: Layers,
+    /// Direction of banded tendons in plan, radians from x, where a tendon's layer does not tell its run.
+    pub banded_along_rad: Option<f64>,
     /// Names of the blocks that mark a live end (shell patterns, any case).
     pub live_end_blocks: Vec<String>,
     /// Names of the blocks that mark a dead end.
     pub dead_end_blocks: Vec<String>,
-    /// Patterns of marks and strand counts; groups `mark`, `tendons`, `strands`, `strand`, each optional.
-    pub mark_patterns: Vec<Regex>,
+    /// Names of the blocks that mark an end whose kind an attribute, a word beside or nothing tells.
+    pub end_blocks: Vec<String>,
+    /// Tags of the attributes of those blocks that hold a live or dead word (shell patterns, any case).
+    pub end_attributes: Vec<String>,
+    /// Words that mark a live end.
+    pub live_end_words: Vec<String>,
+    /// Words that mark a dead end.
+    pub dead_end_words: Vec<String>,
+    /// Shapes that mark a live end: words of [`END_SHAPES`].
+    pub live_end_shapes: Vec<String>,
+    /// Shapes that mark a dead end, likewise.
+    pub dead_end_shapes: Vec<String>,
+    /// Patterns of marks, strand counts and required forces; groups `mark`, `tendons`, `strands`, `strand`, `force`,
+    /// `force_per_width`, each optional.
+    pub mark_patterns: Vec<Pattern>,
     /// Patterns of heights; groups `word` (see `high_words`, `low_words`; optional) and `value`.
-    pub height_patterns: Vec<Regex>,
+    pub height_patterns: Vec<Pattern>,
     /// Words for a high point.
     pub high_words: Vec<String>,
     /// Words for a low point.
     pub low_words: Vec<String>,
+    /// Words that stand for mid-depth, whatever the thickness.
+    pub middle_words: Vec<String>,
     /// Patterns of slab thickness; group `value`.
-    pub thickness_patterns: Vec<Regex>,
+    pub thickness_patterns: Vec<Pattern>,
     /// Unit of thickness texts.
     pub thickness_unit: LengthUnit,
     /// What a height number means.
@@ -60,13 +81,15 @@ pub struct Conventions {
     pub overlap_m: f64,
 }
 
-/// Layer patterns (shell patterns, any letter case).
+/// Layer patterns: see [`crate::patterns::Selectors`].
 #[derive(Debug, Clone)]
 pub struct Layers {
     /// Banded tendons.
     pub banded: Vec<String>,
     /// Distributed tendons.
     pub distributed: Vec<String>,
+    /// Tendons of either run, told apart by direction.
+    pub tendons: Vec<String>,
     /// Height labels.
     pub heights: Vec<String>,
     /// Lines that give one height to every tendon they cross, and their labels.
@@ -100,6 +123,23 @@ pub struct HeightReading {
     pub strand_in_duct_high_m: f64,
 }
 
+impl fmt::Display for HeightReading {
+    /// Such as `mm above the local soffit to the centroid of the strands`.
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let from = match self.from {
+            FromFace::Soffit => "above the local soffit",
+            FromFace::Top => "below the top of the slab",
+            FromFace::NearerFace => "from the nearer face",
+        };
+        let to = match self.datum {
+            Datum::Centroid => "centroid of the strands",
+            Datum::DuctUnderside => "underside of the duct",
+            Datum::Chair => "top of the chair, which is the underside of the duct",
+        };
+        write!(f, "{} {from} to the {to}", self.unit.name())
+    }
+}
+
 /// What a height is measured to.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Datum {
@@ -107,6 +147,8 @@ pub enum Datum {
     Centroid,
     /// The duct's underside.
     DuctUnderside,
+    /// The top of the chair that the duct stands on, which is the duct's underside.
+    Chair,
 }
 
 /// The face a height is measured from.
@@ -116,6 +158,8 @@ pub enum FromFace {
     Soffit,
     /// The top of the slab, downwards.
     Top,
+    /// Whichever of the two is nearer, towards the slab's middle.
+    NearerFace,
 }
 
 /// The slab, where the drawing does not say.
@@ -130,6 +174,8 @@ pub struct SlabJob {
 pub struct StrandSize {
     /// Name as written in marks, such as `12.7`.
     pub name: String,
+    /// Other names, such as `0.5` for inches; signs, blanks and the form of a fraction do not matter.
+    pub aliases: Vec<String>,
     /// Steel area, mm².
     pub area_mm2: f64,
     /// Characteristic tensile strength, MPa.
@@ -258,6 +304,7 @@ impl Job {
         [
             &layers.banded,
             &layers.distributed,
+            &layers.tendons,
             &layers.heights,
             &layers.level_lines,
             &layers.marks,

@@ -7,7 +7,14 @@ use toml::de::{DeArray, DeTable, DeValue};
 
 use crate::job::key::quoted;
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
-use crate::job::{StrandSize, default};
+use crate::job::{StrandSize, families};
+
+/// A size as it may be pasted.
+const EXAMPLE: &str = "type for example\n\
+    [[system.strand]]\n\
+    name = \"12.7\"\n\
+    area_mm2 = 98.7\n\
+    strength_mpa = 1860";
 
 impl Reader {
     pub(super) fn strands(&mut self, entry: &Entry<'_>, items: &DeArray<'_>) -> Vec<StrandSize> {
@@ -26,7 +33,7 @@ impl Reader {
                     item.span(),
                     format!("`strand` cannot hold {}", kind_word(item.get_ref())),
                     "expected tables [[system.strand]]",
-                    "write `[[system.strand]]`, and below it `name`, `area_mm2` and `strength_mpa`",
+                    EXAMPLE,
                 );
                 continue;
             };
@@ -48,7 +55,8 @@ impl Reader {
     }
 
     fn strand(&mut self, span: Range<usize>, fields: &DeTable<'_>) -> Option<StrandSize> {
-        const FIELDS: [&str; 3] = ["name", "area_mm2", "strength_mpa"];
+        const NEEDED: [&str; 3] = ["name", "area_mm2", "strength_mpa"];
+        const FIELDS: [&str; 4] = ["name", "area_mm2", "strength_mpa", "aliases"];
         let before = self.problems.len();
         for name in fields
             .keys()
@@ -65,15 +73,15 @@ impl Reader {
                 }),
             );
         }
-        let missing = FIELDS
+        let missing = NEEDED
             .into_iter()
             .filter(|&name| fields.get(name).is_none());
         for name in missing.collect::<Vec<_>>() {
             self.mistake(
                 span.clone(),
                 format!("this strand has no `{name}`"),
-                format!("expected {}", FIELDS.join(", ")),
-                "type for example `name = \"12.7\"`, `area_mm2 = 98.7`, `strength_mpa = 1860`",
+                format!("expected {}", NEEDED.join(", ")),
+                EXAMPLE,
             );
         }
         let name = match fields
@@ -103,14 +111,38 @@ impl Reader {
                 entry,
             )
         });
+        let aliases = fields
+            .get("aliases")
+            .map_or_else(Vec::new, |entry| self.aliases(entry));
         if self.problems.len() > before {
             return None;
         }
         Some(StrandSize {
             name: name?,
+            aliases,
             area_mm2: area_mm2?,
             strength_mpa: strength_mpa?,
         })
+    }
+
+    fn aliases(&mut self, entry: &Entry<'_>) -> Vec<String> {
+        let mut aliases = Vec::new();
+        let items = match entry.get_ref() {
+            DeValue::Array(items) => items.iter().collect(),
+            _ => vec![entry],
+        };
+        for item in items {
+            match item.get_ref() {
+                DeValue::String(name) if !name.trim().is_empty() => aliases.push(name.to_string()),
+                other => self.mistake(
+                    item.span(),
+                    format!("`aliases` cannot hold {}", kind_word(other)),
+                    "expected a list of names, such as [\"0.5\"]",
+                    "type for example `aliases = [\"0.5\"]`",
+                ),
+            }
+        }
+        aliases
     }
 
     /// What no single key shows.
@@ -127,30 +159,7 @@ impl Reader {
                 "keep `wobble_rad_per_m` if the figure is k of mu (angle + k length), `wobble_per_m` if it is K of mu angle + K length",
             );
         }
-        if let (Some(name), Some(span)) = (
-            self.job.system.default_strand.clone(),
-            at(self, "system.default_strand"),
-        ) {
-            let known: Vec<&str> = self
-                .job
-                .system
-                .strands
-                .iter()
-                .map(|size| size.name.as_str())
-                .collect();
-            if !known.contains(&name.as_str()) {
-                let list = quoted(&known);
-                self.mistake(
-                    span,
-                    format!(
-                        "`default_strand` names a strand that is not known, \"{}\"",
-                        plain(&name)
-                    ),
-                    format!("expected one of {}", plain(&list)),
-                    "name one of these, or describe the strand in a table [[system.strand]]",
-                );
-            }
-        }
+        self.unknown_strands();
         let limits = &self.job.limits;
         if limits.hogging_radius_error_m > limits.hogging_radius_warning_m {
             let found = format!(
@@ -187,11 +196,37 @@ impl Reader {
         // Numbers in inches are written with fractions: the default patterns follow the unit.
         if !self.given.contains_key("height.patterns") {
             self.job.conventions.height_patterns =
-                default::height_patterns(self.job.conventions.height.unit);
+                families::height_patterns(self.job.conventions.height.unit);
         }
         if !self.given.contains_key("slab.text_patterns") {
             self.job.conventions.thickness_patterns =
-                default::thickness_patterns(self.job.conventions.thickness_unit);
+                families::thickness_patterns(self.job.conventions.thickness_unit);
+        }
+    }
+
+    /// Sizes that other keys name are among the job's; the default one goes by its own name from here on.
+    fn unknown_strands(&mut self) {
+        let mut named = std::mem::take(&mut self.strand_names);
+        let default = self.job.system.default_strand.clone();
+        let span = self.given.get("system.default_strand").cloned();
+        named.extend(default.clone().zip(span));
+        for (name, span) in named {
+            if self.job.system.strand_named(&name).is_some() {
+                continue;
+            }
+            let sizes = &self.job.system.strands;
+            let known: Vec<&str> = sizes.iter().map(|size| size.name.as_str()).collect();
+            let list = quoted(&known);
+            self.mistake(
+                span,
+                format!("\"{}\" names a strand that is not known", plain(&name)),
+                format!("expected one of {}", plain(&list)),
+                "name one of these, or describe the strand in a table [[system.strand]]",
+            );
+        }
+        let size = default.and_then(|name| self.job.system.strand_named(&name));
+        if let Some(name) = size.map(|size| size.name.clone()) {
+            self.job.system.default_strand = Some(name);
         }
     }
 }

@@ -2,12 +2,12 @@
 
 use std::ops::Range;
 
-use regex::Regex;
 use toml::de::{DeArray, DeValue};
 
+use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
-use crate::patterns::Patterns;
+use crate::patterns::{Names, PatternRefused, Selectors};
 
 impl Reader {
     pub(super) fn value(&mut self, key: &Key, entry: &Entry<'_>) {
@@ -53,14 +53,7 @@ impl Reader {
             (Kind::Shell(place), DeValue::Array(items)) => {
                 if let Some(words) = self.words(key, entry, items) {
                     for (pattern, span) in &words {
-                        if let Err(error) = Patterns::new([pattern]) {
-                            self.mistake(
-                                span.clone(),
-                                format!("`{}` holds a broken shell pattern: {}", key.name, plain(&error.to_string())),
-                                "expected *, ?, [abc] or {this,that}",
-                                "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
-                            );
-                        }
+                        self.shell(key, pattern, span);
                     }
                     (place.set)(
                         &mut self.job,
@@ -68,12 +61,12 @@ impl Reader {
                     );
                 }
             }
-            (Kind::Expressions { groups, place }, DeValue::Array(items)) => {
-                if let Some(words) = self.words(key, entry, items) {
-                    let patterns = words
-                        .iter()
-                        .filter_map(|(word, span)| self.expression(key, groups, word, span))
-                        .collect();
+            (Kind::Choices { words, place }, DeValue::Array(items)) => {
+                let chosen = self.choices(key, words, entry, items);
+                (place.set)(&mut self.job, chosen);
+            }
+            (Kind::Expressions { place, .. }, DeValue::Array(items)) => {
+                if let Some(patterns) = self.patterns(key, entry, items) {
                     (place.set)(&mut self.job, patterns);
                 }
             }
@@ -82,6 +75,13 @@ impl Reader {
                 let mut all = (place.get)(&self.job).clone();
                 for size in given {
                     match all.iter_mut().find(|known| known.name == size.name) {
+                        // Who replaces a size and names no aliases keeps those that it has.
+                        Some(known) if size.aliases.is_empty() => {
+                            *known = StrandSize {
+                                aliases: std::mem::take(&mut known.aliases),
+                                ..size
+                            };
+                        }
                         Some(known) => *known = size,
                         None => all.push(size),
                     }
@@ -93,6 +93,65 @@ impl Reader {
                 format!("`{}` cannot be {}", key.name, kind_word(entry.get_ref())),
                 format!("expected {}", key.expected()),
                 format!("type for example `{}`", key.example()),
+            ),
+        }
+    }
+
+    /// Words of a list, each one of those that are known.
+    fn choices(
+        &mut self,
+        key: &Key,
+        known: &[&str],
+        entry: &Entry<'_>,
+        items: &DeArray<'_>,
+    ) -> Vec<String> {
+        let mut chosen = Vec::new();
+        for (word, span) in self.words(key, entry, items).unwrap_or_default() {
+            if known.contains(&word.as_str()) {
+                chosen.push(word);
+                continue;
+            }
+            let near = nearest(&word, known.iter().copied());
+            let example = near.or(known.first().copied()).unwrap_or_default();
+            self.mistake(
+                span,
+                format!("`{}` does not know \"{}\"", key.name, plain(&word)),
+                format!("expected some of {}", quoted(known)),
+                format!("type for example `{} = [\"{example}\"]`", key.name),
+            );
+        }
+        chosen
+    }
+
+    /// Whether a shell pattern, or a pattern of layers, can be understood.
+    fn shell(&mut self, key: &Key, pattern: &str, span: &Range<usize>) {
+        let layers = key.table == "layers";
+        let refused = if layers {
+            Selectors::new([pattern]).err()
+        } else {
+            Names::new([pattern]).err().map(PatternRefused::from)
+        };
+        match refused {
+            None => {}
+            Some(PatternRefused::Shell(reason)) => self.mistake(
+                span.clone(),
+                format!(
+                    "`{}` holds a broken shell pattern: {}",
+                    key.name,
+                    plain(&reason.to_string())
+                ),
+                "expected *, ?, [abc] or {this,that}",
+                "close every [ and {; put [ ] around a bracket that is meant as itself: [[]",
+            ),
+            Some(refused) => self.mistake(
+                span.clone(),
+                format!(
+                    "`{}` holds a broken layer pattern: {}",
+                    key.name,
+                    plain(&refused.to_string())
+                ),
+                "expected NAME, NAME@colour=1 to 255, NAME@linetype=DASHED*, or both",
+                format!("type for example `{} = [\"NAME*@colour=1\"]`", key.name),
             ),
         }
     }
@@ -124,7 +183,9 @@ impl Reader {
             Some(number) if (least..=most).contains(&number) => Some(number),
             Some(number) => {
                 let hundredth = number / 100.0;
-                let remedy = if most <= 1.0 && number > 1.0 && (least..=most).contains(&hundredth) {
+                // What is given per metre or per radian is no percentage of anything.
+                let ratio = most <= 1.0 && !name.contains("_per_");
+                let remedy = if ratio && number > 1.0 && (least..=most).contains(&hundredth) {
                     format!("this is a ratio, not a percentage: type `{name} = {hundredth}`")
                 } else {
                     format!("type for example `{example}`")
@@ -174,7 +235,7 @@ impl Reader {
                 ),
             }
         }
-        if items.iter().next().is_none() {
+        if items.iter().next().is_none() && !key.may_be_empty() {
             self.mistake(
                 entry.span(),
                 format!("`{}` is an empty list, which nothing matches", key.name),
@@ -183,50 +244,6 @@ impl Reader {
             );
         }
         (self.problems.len() == before).then_some(words)
-    }
-
-    pub(super) fn expression(
-        &mut self,
-        key: &Key,
-        groups: &[&str],
-        pattern: &str,
-        span: &Range<usize>,
-    ) -> Option<Regex> {
-        let named = |regex: &Regex| {
-            regex
-                .capture_names()
-                .flatten()
-                .any(|name| groups.contains(&name))
-        };
-        match Regex::new(pattern) {
-            Ok(regex) if named(&regex) => Some(regex),
-            Ok(_) => {
-                self.mistake(
-                    span.clone(),
-                    format!(
-                        "this pattern of `{}` has no group that says what it found",
-                        key.name
-                    ),
-                    format!("expected {}", key.expected()),
-                    format!(
-                        "put the part that is wanted in (?<{}>...)",
-                        groups.first().unwrap_or(&"value")
-                    ),
-                );
-                None
-            }
-            Err(error) => {
-                let reason = error.to_string();
-                let reason = reason.lines().last().unwrap_or_default();
-                self.mistake(
-                    span.clone(),
-                    format!("`{}` holds a broken regular expression: {}", key.name, plain(reason.trim_start_matches("error: "))),
-                    format!("expected {}", key.expected()),
-                    "put the pattern in 'single quotes', where a backslash needs no doubling, and close every bracket",
-                );
-                None
-            }
-        }
     }
 }
 

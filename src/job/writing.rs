@@ -7,7 +7,7 @@ use serde_json::Value;
 
 use super::key::{Key, Kind, toml_text};
 use super::keys::{TABLES, of_table};
-use super::{Fallback, Job, Resolved};
+use super::{Datum, Fallback, Job, Resolved};
 
 /// A value that the drawing itself suggests for a key.
 #[derive(Debug, Clone, PartialEq)]
@@ -35,7 +35,10 @@ pub fn file(head: &[String], proposals: &BTreeMap<String, Proposal>) -> String {
             describe(&mut text, key, &job);
             if let Some(proposal) = proposal {
                 comment(&mut text, &proposal.why);
-                let _ = writeln!(text, "{} = {}", key.name, toml_text(&proposal.value));
+                let _ = writeln!(text, "{} = {}", key.name, value_text(key, &proposal.value));
+            } else if let (Kind::Expressions { .. }, Some(value)) = (&key.kind, key.value(&job)) {
+                let lines = value_text(key, &value);
+                let _ = writeln!(text, "#{} = {}", key.name, lines.replace('\n', "\n#"));
             } else if matches!(key.kind, Kind::Strands(_)) {
                 strands(&mut text, &job);
             } else {
@@ -44,6 +47,20 @@ pub fn file(head: &[String], proposals: &BTreeMap<String, Proposal>) -> String {
         }
     }
     text
+}
+
+/// A value; patterns one to a line, since they are long.
+fn value_text(key: &Key, value: &Value) -> String {
+    match (&key.kind, value) {
+        (Kind::Expressions { .. }, Value::Array(items)) if items.len() > 1 => {
+            let lines: Vec<String> = items
+                .iter()
+                .map(|item| format!("  {},\n", toml_text(item)))
+                .collect();
+            format!("[\n{}]", lines.concat())
+        }
+        _ => toml_text(value),
+    }
 }
 
 fn describe(text: &mut String, key: &Key, job: &Job) {
@@ -97,7 +114,10 @@ pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
         .filter_map(|key| {
             let value = key.value(&resolved.job).map(|value| toml_text(&value));
             // The one form of wobble that is not used says nothing.
-            let silent = value.is_none() && key.name.starts_with("wobble");
+            let silent = value.is_none() && key.name.starts_with("wobble")
+                // Where in the duct the strand lies matters only to heights of the duct.
+                || key.name.starts_with("strand_in_duct")
+                    && resolved.job.conventions.height.datum == Datum::Centroid;
             (!silent).then(|| Fallback {
                 table: key.table,
                 name: key.input_name(),

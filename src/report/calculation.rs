@@ -6,7 +6,7 @@ mod forces;
 mod friction;
 
 use super::DrawingFacts;
-use super::summary::{CAUTIONS, assumed};
+use super::summary::{assumed, cautions};
 use super::table::{Align, plain, table};
 use crate::analysis::{Analysis, TendonResult, pair};
 use crate::finding::Finding;
@@ -56,7 +56,7 @@ fn sheet(
     }
     parts.push(findings(found));
     parts.push(assumed(analysis));
-    parts.push(CAUTIONS.to_owned());
+    parts.push(cautions());
     parts.join("\n")
 }
 

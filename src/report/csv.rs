@@ -1,9 +1,10 @@
 //! The result as CSV tables (RFC 4180), one for each reader: units in the header, numbers rounded to what is measured.
 
-use super::plain;
-use super::record::{EndRecord, FindingRecord, TendonRecord};
+mod cells;
+
+use self::cells::{end_kind, point_kind, rounded, run, text, written};
+use super::record::{FindingRecord, TendonRecord};
 use crate::analysis::{Analysis, pair};
-use crate::floor::{EndKind, PointKind, Run};
 
 /// A row a tendon.
 pub fn tendons_csv(analysis: &Analysis) -> String {
@@ -71,6 +72,14 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
     written(&header, rows)
 }
 
+/// What `height_mm` is, whatever the drawing's own datum is.
+const HEIGHT_IS: &str = "strand centroid above local soffit";
+/// What an extension at either of two live ends is.
+const BOTH_LIVE: &str =
+    "both jacks pull together; with one jack moved from end to end the first pull is longer";
+/// What no extension holds.
+const BEYOND_ANCHOR: &str = "strand between anchor and jack is not included";
+
 /// A row a profile point; forces are per tendon.
 pub fn points_csv(analysis: &Analysis) -> String {
     let header = [
@@ -87,6 +96,7 @@ pub fn points_csv(analysis: &Analysis) -> String {
         "lockoff_kn",
         "transfer_kn",
         "service_kn",
+        "height_is",
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
@@ -106,6 +116,7 @@ pub fn points_csv(analysis: &Analysis) -> String {
                 rounded(point.lockoff_kn, 1),
                 rounded(point.transfer_kn, 1),
                 rounded(point.service_kn, 1),
+                point.height_mm.map_or("", |_| HEIGHT_IS).to_owned(),
             ]
         })
     });
@@ -127,9 +138,15 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
         "extension_mm",
         "extension_net_mm",
         "draw_in_reach_m",
+        "note",
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
+        let note = if record.ends.iter().all(|end| end.live.is_some()) {
+            format!("{BOTH_LIVE}; {BEYOND_ANCHOR}")
+        } else {
+            BEYOND_ANCHOR.to_owned()
+        };
         let known = [
             text(record.mark),
             text(record.handle),
@@ -156,6 +173,7 @@ pub fn extensions_csv(analysis: &Analysis) -> String {
                     rounded(live.extension_mm, 1),
                     rounded(live.extension_net_mm, 1),
                     rounded(live.draw_in_reach_m, 2),
+                    note.clone(),
                 ])
             })
     });
@@ -188,104 +206,4 @@ pub fn findings_csv(analysis: &Analysis) -> String {
         ]
     });
     written(&header, rows)
-}
-
-/// A text cell. A spreadsheet runs a cell that begins as a formula does, and this text may come from the drawing: an
-/// apostrophe keeps it text. Control characters are written out, line ends kept.
-fn text(content: &str) -> String {
-    let lines: Vec<String> = content.split('\n').map(plain).collect();
-    let shown = lines.join("\n");
-    // Blanks before the sign do not stop every spreadsheet.
-    if shown.trim_start().starts_with(['=', '+', '-', '@']) {
-        format!("'{shown}")
-    } else {
-        shown
-    }
-}
-
-/// A number cell, empty where the number is not known; zero without a sign.
-fn rounded(value: Option<f64>, decimals: usize) -> String {
-    value.map_or(String::new(), |value| {
-        let cell = format!("{value:.decimals$}");
-        let zero = cell.chars().all(|c| matches!(c, '-' | '0' | '.'));
-        if zero {
-            cell.trim_start_matches('-').to_owned()
-        } else {
-            cell
-        }
-    })
-}
-
-fn run(run: Run) -> &'static str {
-    match run {
-        Run::Banded => "banded",
-        Run::Distributed => "distributed",
-    }
-}
-
-fn end_kind(end: &EndRecord) -> &'static str {
-    match end.kind {
-        Some(EndKind::Live) => "live",
-        Some(EndKind::Dead) => "dead",
-        None => "",
-    }
-}
-
-fn point_kind(kind: PointKind) -> &'static str {
-    match kind {
-        PointKind::Anchor => "anchor",
-        PointKind::High => "high",
-        PointKind::Low => "low",
-        PointKind::Support => "support",
-    }
-}
-
-fn written(header: &[&str], rows: impl Iterator<Item = Vec<String>>) -> String {
-    let mut writer = ::csv::WriterBuilder::new()
-        .terminator(::csv::Terminator::CRLF)
-        .flexible(true)
-        .from_writer(Vec::new());
-    // Writing into memory cannot fail, and rows of any length are taken.
-    let mut write = |row: &mut dyn Iterator<Item = &str>| writer.write_record(row).ok();
-    write(&mut header.iter().copied());
-    for row in rows {
-        write(&mut row.iter().map(String::as_str));
-    }
-    let bytes = writer.into_inner().unwrap_or_default();
-    String::from_utf8(bytes).unwrap_or_default()
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn a_cell_that_a_spreadsheet_would_run_is_kept_text() {
-        for evil in ["=1+1", "+1", "-1", "@SUM(A1)", " =1", "\n=1"] {
-            assert_eq!(text(evil), format!("'{evil}"));
-        }
-        assert_eq!(text("\t=1"), "\\t=1");
-        assert_eq!(text("D012"), "D012");
-    }
-
-    #[test]
-    fn numbers_are_rounded_and_zero_has_no_sign() {
-        assert_eq!(rounded(Some(-0.0004), 3), "0.000");
-        assert_eq!(rounded(Some(-0.0006), 3), "-0.001");
-        assert_eq!(rounded(None, 3), "");
-    }
-
-    #[test]
-    fn cells_are_quoted_where_they_must_be() {
-        let row = vec![
-            "a,b".to_owned(),
-            "say \"x\"".to_owned(),
-            "two\nlines".to_owned(),
-        ];
-        let made = written(&["p", "q", "r"], std::iter::once(row));
-        assert_eq!(
-            made,
-            "p,q,r\r\n\"a,b\",\"say \"\"x\"\"\",\"two\nlines\"\r\n"
-        );
-    }
 }

@@ -17,6 +17,10 @@ pub(super) struct TendonRecord<'a> {
     pub(super) tendons: u32,
     pub(super) strands: Option<u32>,
     pub(super) strand: Option<&'a str>,
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub(super) required_kn: Option<f64>,
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub(super) required_kn_per_m: Option<f64>,
     pub(super) area_mm2: Option<f64>,
     pub(super) length_m: Option<f64>,
     pub(super) plan_length_m: Option<f64>,
@@ -110,6 +114,8 @@ impl<'a> TendonRecord<'a> {
             tendons: tendon.tendons,
             strands: tendon.strands,
             strand: tendon.strand.as_deref(),
+            required_kn: tendon.required_kn.and_then(number),
+            required_kn_per_m: tendon.required_kn_per_m.and_then(number),
             area_mm2: result.area_mm2.and_then(number),
             length_m: result
                 .profile

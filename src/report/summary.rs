@@ -5,10 +5,11 @@ use std::collections::BTreeMap;
 use super::DrawingFacts;
 use super::table::{Align, plain, table};
 use crate::analysis::{Analysis, pair};
+use crate::cautions::CAUTIONS;
 use crate::checks::Turning;
 use crate::finding::{Finding, Level};
 use crate::floor::{Run, Tendon};
-use crate::job::Fallback;
+use crate::job::{Fallback, Job};
 use crate::losses::Forces;
 
 /// Tendons in the table of the worst.
@@ -17,27 +18,41 @@ const WORST: usize = 8;
 /// Tendons named beside a rule.
 const NAMED: usize = 4;
 
-/// What every summary ends with.
-pub const CAUTIONS: &str = "\
-This is a check of a drawing, not a design certificate: strength, punching, deflection, anchorage zones and fire are not
-looked at. The engineer responsible decides, under the local code.
-A stressed tendon stores great energy: nobody behind, in line with or above a jack or a tendon's line. Concrete strength
-is proven in writing first; only trained crews stress, cut or de-tension.
-";
+/// Letters in a line of the cautions.
+const LINE: usize = 120;
 
 /// Counts, the worst tendons by curvature loss, findings by rule, assumptions, the files written, and the cautions.
 /// Plain text; what came from the drawing is escaped.
-pub fn summary(facts: &DrawingFacts, analysis: &Analysis, files: &[String]) -> String {
-    let mut parts = vec![counts(facts, analysis)];
+pub fn summary(facts: &DrawingFacts, analysis: &Analysis, job: &Job, files: &[String]) -> String {
+    let mut parts = vec![counts(facts, analysis, job)];
     parts.extend(worst(analysis));
     parts.push(findings(&analysis.findings));
     parts.push(assumed(analysis));
     parts.extend(list("Written:", files));
-    parts.push(CAUTIONS.to_owned());
+    parts.push(cautions());
     parts.join("\n")
 }
 
-fn counts(facts: &DrawingFacts, analysis: &Analysis) -> String {
+/// The cautions, broken into lines.
+pub(super) fn cautions() -> String {
+    let mut lines: Vec<String> = Vec::new();
+    for paragraph in CAUTIONS {
+        let mut line = String::new();
+        for word in paragraph.split(' ') {
+            if !line.is_empty() && line.chars().count() + 1 + word.chars().count() > LINE {
+                lines.push(std::mem::take(&mut line));
+            }
+            if !line.is_empty() {
+                line.push(' ');
+            }
+            line.push_str(word);
+        }
+        lines.push(line);
+    }
+    lines.join("\n") + "\n"
+}
+
+fn counts(facts: &DrawingFacts, analysis: &Analysis, job: &Job) -> String {
     let tendons = &analysis.floor.tendons;
     let banded = tendons
         .iter()
@@ -64,16 +79,25 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis) -> String {
     } else {
         format!(", for {jacked} of these at jacking and lock-off only")
     };
-    let rest = if worked == tendons.len() {
+    let all = tendons.len();
+    let rest = if worked == all {
         ""
     } else {
         "; what the others lack is among the findings"
     };
+    let stand = if all == 1 {
+        stand.replacen("stand", "stands", 1)
+    } else {
+        stand
+    };
+    let lines = if all == 1 { "line" } else { "lines" };
     format!(
-        "{}: {} tendon lines ({banded} banded, {} distributed){stand}.\nForces were worked out for {worked} of them{only}{rest}.\n",
+        "{}: {all} tendon {lines} ({banded} banded, {} distributed){stand}.\n\
+         Forces were worked out for {worked} of {all} {lines}{only}{rest}.\n\
+         Heights read as {}.\n",
         plain(&facts.file),
-        tendons.len(),
-        tendons.len() - banded
+        all - banded,
+        job.conventions.height
     )
 }
 
@@ -193,24 +217,13 @@ const FIGURES: [&str; 6] = [
 /// What was assumed: in sentences of the floor, in short of the job's keys; the result file has them in full.
 pub(super) fn assumed(analysis: &Analysis) -> String {
     let mut lines = analysis.assumptions.clone();
-    let (figures, others): (Vec<&Fallback>, Vec<&Fallback>) = analysis
-        .fallbacks
-        .iter()
-        .partition(|key| FIGURES.contains(&key.table));
-    let short = figures
-        .iter()
-        .filter(|key| !key.name.contains("pattern") && !key.name.contains("word"));
-    let short: Vec<String> = short
-        .filter_map(|key| {
-            let value = key.value.as_ref()?;
-            (value.len() < 40).then(|| format!("{} {value}", key.name))
-        })
-        .collect();
+    let short: Vec<String> = analysis.fallbacks.iter().filter_map(figure).collect();
     lines.extend(short.chunks(4).map(|some| some.join(", ")));
-    if !others.is_empty() {
+    let others = analysis.fallbacks.len() - short.len();
+    if others > 0 {
         lines.push(format!(
-            "and {} conventions of reading and limits at their defaults; the result file lists every default with its source",
-            others.len()
+            "and {others} more keys, mostly conventions of reading and limits, at their defaults; the result file lists every \
+             default with its source"
         ));
     }
     list(
@@ -218,6 +231,19 @@ pub(super) fn assumed(analysis: &Analysis) -> String {
         &lines,
     )
     .unwrap_or_else(|| "Nothing was assumed: the job file gives every key.\n".to_owned())
+}
+
+/// An engineering figure in short; a list of several is left to the result file.
+fn figure(key: &Fallback) -> Option<String> {
+    let convention = key.name.contains("pattern") || key.name.contains("word");
+    if convention || !FIGURES.contains(&key.table) {
+        return None;
+    }
+    match &key.value {
+        Some(value) if value.len() < 40 => Some(format!("{} {value}", key.name)),
+        Some(_) => None,
+        None => Some(format!("{} not given", key.name)),
+    }
 }
 
 fn list(title: &str, items: &[String]) -> Option<String> {

@@ -78,7 +78,7 @@ fn a_line_that_lies_half_on_one_tendon_and_half_on_the_next_is_left_out() {
     );
     assert_eq!(said.len(), 1);
     assert!(
-        said[0].contains("lies on line 103 and 104 for"),
+        said[0].contains("lies on that of handle 103 and 104 for"),
         "{}",
         said[0]
     );

@@ -105,6 +105,7 @@ impl Board {
             kind: ShapeKind::Polyline,
             path,
             closed,
+            ..Shape::default()
         });
     }
 
@@ -132,8 +133,7 @@ impl Board {
             within: None,
             block: block.to_owned(),
             place,
-            rotation_rad: 0.0,
-            attributes: Vec::new(),
+            ..Insert::default()
         });
     }
 
@@ -173,6 +173,7 @@ impl Board {
             ],
             height_m,
             rotation_rad,
+            ..Text::default()
         });
     }
 

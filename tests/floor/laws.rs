@@ -5,7 +5,7 @@ use tautplan::floor::read;
 use tautplan::geometry::Path;
 use tautplan::job::Job;
 
-use crate::kit::{Board, Dice, Grid, Style, Turn, floor};
+use crate::kit::{Board, Dice, Grid, Style, Turn, at, floor};
 use crate::sketch::{kinds, mm, points_mm};
 
 const GRID: Grid = Grid {
@@ -166,4 +166,28 @@ fn lines_on_other_layers_are_no_tendons() {
         board.line("WALLS", &[(0.0, y), (30.0, y)]);
     }
     right(&board);
+}
+
+#[test]
+fn symbols_on_the_slabs_layers_are_no_edges_and_no_zones() {
+    let mut dice = Dice(14);
+    let mut board = floor(GRID, style(Turn::Level, false), &mut dice);
+    let (_, before) = read(&board.drawing, &Job::default());
+    // An end symbol that is drawn as a rectangle of 0.6 m, and loose strokes and rings of other symbols.
+    board.insert("SLAB-ZONE", "DEAD-END", at(-40.0, -40.0));
+    board.rectangle("SLAB-ZONE", (-40.3, -40.3), (-39.7, -39.7));
+    let symbol = board.drawing.inserts.len() - 1;
+    if let Some(shape) = board.drawing.shapes.last_mut() {
+        shape.within = Some(symbol);
+    }
+    for layer in ["SLAB-ZONE", "SLAB-EDGE"] {
+        board.rectangle(layer, (-30.0, -30.0), (-29.8, -29.8));
+        board.line(layer, &[(-20.0, -20.0), (-19.7, -20.0)]);
+    }
+    let (_, found) = read(&board.drawing, &Job::default());
+    let named = |findings: &[tautplan::finding::Finding]| -> Vec<&str> {
+        let slab = |name: &&str| name.starts_with("zone") || name.starts_with("outline");
+        findings.iter().map(|f| f.rule.name).filter(slab).collect()
+    };
+    assert_eq!(named(&found), named(&before));
 }

@@ -7,6 +7,7 @@
 
 mod anchors;
 mod bridging;
+mod conventions;
 mod copies;
 mod ends;
 mod ground;
@@ -15,6 +16,7 @@ mod joining;
 mod kit;
 mod labels;
 mod laws;
+mod lettering;
 mod levels;
 mod marks;
 mod settling;

@@ -2,8 +2,9 @@
 
 Usage: figures.py MARKED.dxf RESULT.json
 
-Every force figure equals, rounded, the force of a profile point near it at that layer's stage; every extension equals a
-live end's; the table has a row a tendon with its mark; a tendon in space passes through its points at their level.
+Every force figure equals, rounded, the force of a profile point near it at that layer's stage; where it can be that of one
+point only, the figures of a tendon follow one another as their points do; every extension equals a live end's; the table
+has a row a tendon with its mark; a tendon in space passes through its points at their level.
 """
 
 import json
@@ -17,6 +18,41 @@ STAGES = {"JACKING": "jacking_kn", "LOCKOFF": "lockoff_kn", "TRANSFER": "transfe
 NEAR_M = 3.0
 
 
+def foot(points, here):
+    """Distance from the line through a tendon's points, and station of the nearest place on it."""
+    found = (math.inf, 0.0)
+    for p, q in zip(points, points[1:]):
+        run = (q["x_m"] - p["x_m"], q["y_m"] - p["y_m"])
+        square = run[0] ** 2 + run[1] ** 2
+        if square > 0:
+            share = ((here[0] - p["x_m"]) * run[0] + (here[1] - p["y_m"]) * run[1]) / square
+            share = min(max(share, 0.0), 1.0)
+            away = math.dist(here, (p["x_m"] + share * run[0], p["y_m"] + share * run[1]))
+            found = min(found, (away, p["station_m"] + share * (q["station_m"] - p["station_m"])))
+    return found
+
+
+def out_of_order(worked, figures, key):
+    """Figures that stand before another of their tendon whose point comes before theirs, and how many were compared."""
+    stands = {}
+    for content, here in figures:
+        fits = [(number, p["station_m"]) for number, t in enumerate(worked) for p in t["points"]
+                if math.dist(here, (p["x_m"], p["y_m"])) < NEAR_M
+                and p[key] is not None and abs(p[key] - float(content)) <= 0.5000001]
+        if len(fits) != 1:
+            continue
+        number, station = fits[0]
+        away, along = foot(worked[number]["points"], here)
+        if away < 0.5:
+            stands.setdefault(number, []).append((station, along, content))
+    wrong = []
+    for number, found in stands.items():
+        found.sort()
+        wrong += [f"{worked[number]['mark']}: {b[2]} at station {b[0]:.2f} m stands before {a[2]} at {a[0]:.2f} m"
+                  for a, b in zip(found, found[1:]) if b[1] <= a[1]]
+    return wrong, sum(len(found) - 1 for found in stands.values())
+
+
 def texts(space, layer):
     for text in space.query(f'TEXT[layer=="{layer}"]'):
         place = text.dxf.get("align_point") if text.dxf.get("halign") or text.dxf.get("valign") else None
@@ -27,11 +63,15 @@ def main():
     document = ezdxf.readfile(sys.argv[1])
     result = json.load(open(sys.argv[2], encoding="utf-8"))
     unit = result["drawing"]["unit_m"]
-    space, wrong, seen = document.modelspace(), [], 0
-    worked = [t for t in result["tendons"] if t["points"] and t["points"][0].get("service_kn") is not None]
+    space, wrong, seen, pairs = document.modelspace(), [], 0, 0
+    worked = [t for t in result["tendons"] if t["points"] and t["points"][0].get("jacking_kn") is not None]
 
     for stage, key in STAGES.items():
-        points = [(p["x_m"], p["y_m"], p[key]) for t in worked for p in t["points"]]
+        points = [(p["x_m"], p["y_m"], p[key]) for t in worked for p in t["points"] if p[key] is not None]
+        figures = [(content, (place[0] * unit, place[1] * unit)) for content, place in texts(space, f"TAUT-FORCE-{stage}-TEXT")]
+        swapped, compared = out_of_order(worked, figures, key)
+        wrong += [f"{stage}: {line}" for line in swapped]
+        pairs += compared
         for content, place in texts(space, f"TAUT-FORCE-{stage}-TEXT"):
             seen += 1
             here = (place[0] * unit, place[1] * unit)
@@ -64,7 +104,7 @@ def main():
         if (round(first["x_m"], 3), round(first["y_m"], 3)) not in ends_of:
             wrong.append(f"{tendon['mark']}: no tendon in space starts at its anchor")
 
-    print(f"{sys.argv[1]}: {seen} figures held against the result, {len(wrong)} wrong")
+    print(f"{sys.argv[1]}: {seen} figures held against the result, {pairs} pairs in order along tendons, {len(wrong)} wrong")
     for line in wrong[:20]:
         print("  " + line)
     if wrong or not seen:

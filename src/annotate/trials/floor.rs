@@ -92,6 +92,34 @@ pub(super) fn without_forces((_, result): &mut Worked) {
     }
 }
 
+/// Adds a high so far from either anchor.
+pub(super) fn crowd_ends((tendon, result): &mut Worked, off_m: f64) {
+    let high = |station_m: f64| Point {
+        kind: PointKind::High,
+        station_m,
+        place: tendon.path.place_at(station_m),
+        drawn_m: None,
+        height_m: Some(0.2),
+        thickness_m: Some(0.25),
+    };
+    let (first, last) = (high(off_m), high(tendon.path.length_m() - off_m));
+    tendon.points.insert(1, first);
+    tendon.points.insert(tendon.points.len() - 1, last);
+    let new = result.points[0];
+    result.points.insert(1, new);
+    result.points.insert(result.points.len() - 1, new);
+}
+
+/// Gives each point a force of its own, from which the point can be told: `from_kn` and its number.
+pub(super) fn number_points((_, result): &mut Worked, from_kn: f64) {
+    for (number, point) in (0_u32..).zip(&mut result.points) {
+        point.forces_kn = [Some(from_kn + f64::from(number)); 4];
+    }
+    for sample in &mut result.samples {
+        sample.forces_kn = [None; 4];
+    }
+}
+
 /// Boxes of the height labels that a drafter would set beside the points.
 pub(super) fn labels(analysis: &Analysis) -> Vec<Quad> {
     analysis
@@ -151,6 +179,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
             kind,
             station_m,
             place: path.place_at(station_m),
+            drawn_m: None,
             height_m: Some(0.25 + level_m(station_m / length_m * spans)),
             thickness_m: Some(0.25),
         });
@@ -193,6 +222,8 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         tendons: 1,
         strands: Some(5),
         strand: Some("12.7".to_owned()),
+        required_kn: None,
+        required_kn_per_m: None,
         ends,
         points,
     };

@@ -4,26 +4,19 @@ use std::collections::BTreeMap;
 
 use serde_json::{Value, json};
 
-use super::contents::{Contents, LayerContents};
+use super::at_ends::hinted;
+use super::contents::Contents;
+use super::directions::two_ways;
+use super::labels;
+use super::roles::{Guesses, guesses, is_grid};
+use super::symbols;
 use crate::commands::job_file::JobFile;
 use crate::commands::{units, work};
-use crate::drawing::{Drawing, UnitFrom};
+use crate::drawing::{Drawing, UnitFrom, Wanted};
+use crate::floor::EndWords;
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
-use crate::patterns::pattern_of;
-
-/// Keys of `[layers]` by what is told from a layer's name and contents, in the order they are tried.
-const ROLES: [&str; 9] = [
-    "slab_zone",
-    "marks",
-    "heights",
-    "ends",
-    "slab_opening",
-    "column",
-    "slab_edge",
-    "banded",
-    "distributed",
-];
+use crate::patterns::{Selectors, pattern_of};
 
 /// What to set in the job file, by path of the key.
 pub(super) fn proposals(
@@ -32,31 +25,26 @@ pub(super) fn proposals(
     job_file: &JobFile,
 ) -> BTreeMap<String, Proposal> {
     let job = &job_file.resolved.job;
-    let mut proposals = BTreeMap::new();
-    let free = free_layers(drawing, contents, job);
-    for role in ROLES {
-        let fits = |(name, held): &(&str, &LayerContents)| self::role(name, held) == Some(role);
-        let mut names: Vec<&str> = free
-            .iter()
-            .filter(|layer| fits(layer))
-            .map(|(name, _)| *name)
-            .collect();
-        names.sort_unstable();
-        if !names.is_empty() && !is_fitted(drawing, job, role) {
-            let patterns: Vec<String> = names.iter().map(|name| pattern_of(name)).collect();
-            proposals.insert(
-                format!("layers.{role}"),
-                Proposal {
-                    value: json!(patterns),
-                    why: why(role).to_owned(),
-                },
-            );
-        }
+    let mut proposals = symbols::proposals(contents, job);
+    let named = work::wanted(job.layer_patterns());
+    let mut guesses = guesses(drawing, contents, |layer| is_free(drawing, &named, layer));
+    end_layers(contents, job, &named, &proposals, &mut guesses);
+    guesses.retain(|role, _| !is_fitted(drawing, job, role));
+    directions(contents, &mut guesses, &mut proposals);
+    for (role, patterns) in &guesses {
+        proposals.insert(
+            format!("layers.{role}"),
+            Proposal {
+                value: json!(patterns),
+                why: why(role).to_owned(),
+            },
+        );
     }
-    blocks(contents, job, &mut proposals);
     if let Some(proposal) = unit(drawing, contents, job, &proposals) {
         proposals.insert("drawing.unit".to_owned(), proposal);
     }
+    let of_labels = labels::proposals(drawing, contents, job, &proposals);
+    proposals.extend(of_labels);
     keep_given(job_file, &mut proposals);
     proposals
 }
@@ -98,115 +86,91 @@ fn is_fitted(drawing: &Drawing, job: &Job, role: &str) -> bool {
         .any(|layer| !layer.counts.is_empty() && wanted.has(&layer.name))
 }
 
-/// Layers that fit none of the job's patterns.
-fn free_layers<'c>(
-    drawing: &Drawing,
-    contents: &'c Contents,
-    job: &Job,
-) -> Vec<(&'c str, &'c LayerContents)> {
-    let named = work::wanted(job.layer_patterns());
-    let known = |name: &str| drawing.layers.iter().any(|layer| layer.name == name);
-    contents
-        .layers
-        .iter()
-        .filter(|(name, _)| known(name) && !named.has(name))
-        .map(|(name, held)| (name.as_str(), held))
-        .collect()
+/// Whether no pattern of the job fits a layer that something lies on.
+fn is_free(drawing: &Drawing, named: &Wanted, layer: &str) -> bool {
+    !named.has(layer) && drawing.layers.iter().any(|known| known.name == layer)
 }
 
-/// The key below `[layers]` that a layer belongs to, as far as its texts, its blocks and the words of its name tell.
-fn role(name: &str, held: &LayerContents) -> Option<&'static str> {
-    let name = name.to_uppercase();
-    let says = |words: &[&str]| words.iter().any(|word| name.contains(word));
-    let most = |part: usize, all: usize| all > 0 && part * 2 > all;
-    // Grid lines carry bubbles at their ends and numbers in them: they look like tendons and heights.
-    if says(&["GRID", "AXIS", "AXES"]) {
-        return None;
+/// Layers that no pattern fits on which words that mark ends stand, or shapes that were proposed.
+fn end_layers(
+    contents: &Contents,
+    job: &Job,
+    named: &Wanted,
+    proposals: &BTreeMap<String, Proposal>,
+    guesses: &mut Guesses,
+) {
+    let words = EndWords::new(&job.conventions);
+    let found = &contents.at_ends;
+    let lettered = found
+        .words
+        .keys()
+        .filter(|(_, word)| words.kind(word).is_some() || hinted(word).is_some());
+    let proposed = |shape: &str| {
+        let keys = ["ends.live_shapes", "ends.dead_shapes"].into_iter();
+        let values = keys.filter_map(|key| proposals.get(key)?.value.as_array());
+        values.flatten().any(|value| value == shape)
+    };
+    let drawn = found
+        .shapes
+        .keys()
+        .filter(|(layer, shape)| !is_grid(layer) && proposed(shape));
+    let drawn = drawn.map(|(layer, _)| layer);
+    for layer in lettered.map(|(layer, _)| layer).chain(drawn) {
+        if !named.has(layer) {
+            let ends = guesses.entry("ends").or_default();
+            ends.insert(pattern_of(layer));
+        }
     }
-    let open = held.open_m.len();
-    if most(held.thicknesses, held.texts) {
-        return Some("slab_zone");
-    }
-    if most(held.strands, held.texts) {
-        return Some("marks");
-    }
-    if most(held.heights, held.texts) && held.texts >= 3 && open == 0 {
-        return Some("heights");
-    }
-    if says(&["OPENING", "VOID", "HOLE"]) {
-        return Some("slab_opening");
-    }
-    if says(&["COLUMN", "WALL"]) {
-        return Some("column");
-    }
-    if held.closed > 0 && says(&["EDGE", "OUTLINE"]) {
-        return Some("slab_edge");
-    }
-    if open > 0 && says(&["BANDED", "BAND-", "-BAND"]) {
-        return Some("banded");
-    }
-    // Two ends a line: a layer whose lines mostly carry a symbol at an end holds tendons.
-    if open > 0 && (says(&["DISTRIB", "TENDON", "CABLE"]) || most(held.ends_with_block, 2 * open)) {
-        return Some("distributed");
-    }
-    (held.blocks_at_ends > 0).then_some("ends")
 }
 
 fn why(role: &str) -> &'static str {
     match role {
         "slab_zone" => "No layer fits the default; most texts here say a slab thickness.",
-        "marks" => "No layer fits the default; most texts here count strands.",
-        "heights" => "No layer fits the default; most texts here are heights.",
-        "ends" => "No layer fits the default; blocks of these layers stand at line ends.",
-        "distributed" => {
-            "No layer fits the default; by name, or by the blocks at their ends, these lines are tendons. Move banded ones to banded."
+        "marks" => "No layer fits the default; texts here count strands.",
+        "heights" => "No layer fits the default; texts here are heights.",
+        "ends" => {
+            "No layer fits the default; blocks, words or shapes of these layers stand at line ends."
         }
-        _ => "No layer fits the default; the name says so.",
+        "tendons" => {
+            "No layer fits the default; by name, or by what stands at their ends, these lines are tendons, and they go two ways."
+        }
+        "distributed" => {
+            "No layer fits the default; by name, or by what stands at their ends, these lines are tendons. Move banded ones to banded."
+        }
+        _ => "No layer fits the default; the name or the size of what lies there says so.",
     }
 }
 
-/// Blocks at line ends whose names say what they are, where none fits the job.
-fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
-    let read = &job.conventions;
-    for (key, known, words) in [
-        (
-            "ends.live_blocks",
-            &read.live_end_blocks,
-            &["LIVE", "STRESSING", "ACTIVE", "JACK"][..],
-        ),
-        (
-            "ends.dead_blocks",
-            &read.dead_end_blocks,
-            &["DEAD", "FIXED", "PASSIVE"][..],
-        ),
-    ] {
-        let fitting = work::wanted(known.clone());
-        if contents
-            .blocks_at_ends
-            .keys()
-            .any(|block| fitting.has(block))
-        {
-            continue;
-        }
-        let says = |block: &&String| {
-            let block = block.to_uppercase();
-            words.iter().any(|word| block.contains(word))
-        };
-        let names: Vec<String> = contents
-            .blocks_at_ends
-            .keys()
-            .filter(says)
-            .map(|block| pattern_of(block))
-            .collect();
-        if !names.is_empty() {
-            proposals.insert(
-                key.to_owned(),
-                Proposal {
-                    value: json!(names),
-                    why: "No block at a line end fits the default; the name says so.".to_owned(),
-                },
-            );
-        }
+/// Where tendons of one kind of layer go two ways, direction tells the runs apart.
+fn directions(
+    contents: &Contents,
+    guesses: &mut Guesses,
+    proposals: &mut BTreeMap<String, Proposal>,
+) {
+    if guesses.contains_key("banded") {
+        return;
+    }
+    let Some(patterns) = guesses.get("distributed").cloned() else {
+        return;
+    };
+    let ways = Selectors::new(&patterns)
+        .ok()
+        .and_then(|picked| two_ways(contents, &picked));
+    let Some(ways) = ways else {
+        return;
+    };
+    guesses.remove("distributed");
+    guesses.insert("tendons", patterns);
+    if let Some(banded_deg) = ways.banded_deg {
+        proposals.insert(
+            "drawing.banded_along_deg".to_owned(),
+            Proposal {
+                value: json!(banded_deg),
+                why:
+                    "By their spacing, the tendons that go this way are the banded ones. Check it."
+                        .to_owned(),
+            },
+        );
     }
 }
 
@@ -218,7 +182,7 @@ fn unit(
     proposals: &BTreeMap<String, Proposal>,
 ) -> Option<Proposal> {
     let mut tendons = Vec::new();
-    for role in ["banded", "distributed"] {
+    for role in ["banded", "distributed", "tendons"] {
         match proposals
             .get(&format!("layers.{role}"))
             .map(|proposal| &proposal.value)

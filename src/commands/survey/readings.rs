@@ -1,8 +1,9 @@
 //! What a text is taken for by the job's patterns, when only the text itself speaks.
 
-use regex::Regex;
-
-use crate::job::Job;
+use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line};
+use crate::job::families::{self, Offer, offered};
+use crate::job::{Job, Pattern};
+use crate::units::LengthUnit;
 
 /// What a text says.
 #[derive(Debug, Clone, PartialEq, Eq, PartialOrd, Ord)]
@@ -11,68 +12,172 @@ pub(super) enum Reading {
     Thickness(String),
     /// A height, and its word if it has one.
     Height(String),
-    /// A mark, strands, or both; whether strands are in it.
+    /// A mark, strands, a required force, or some of them; whether strands or a force are in it.
     Mark {
         /// In words.
         words: String,
-        /// Whether strands are counted.
+        /// Whether strands are counted or a force required.
         strands: bool,
     },
+    /// None of the job's patterns fits, but one of a known family does, of this name.
+    Offered(&'static str),
     /// None of the job's patterns fits.
     Unread,
 }
 
-/// Reads a text: as a thickness, else a height, else a mark.
+/// Reads a text: of its lines, the first that says something; as a thickness, else a height, else a mark.
 pub(super) fn reading(text: &str, job: &Job) -> Reading {
+    let said = text.lines().map(|line| of_line(line, job));
+    let mut lines: Vec<Reading> = said.collect();
+    lines.sort_by_key(|reading| match reading {
+        Reading::Unread => 2,
+        Reading::Offered(_) => 1,
+        _ => 0,
+    });
+    // What is read comes first; among that, what is not a bare mark says more of what its layer is for.
+    let counts = |reading: &Reading| matches!(reading, Reading::Mark { strands: true, .. });
+    let at = lines.iter().position(counts).unwrap_or(0);
+    if at < lines.len() {
+        lines.swap_remove(at)
+    } else {
+        Reading::Unread
+    }
+}
+
+fn of_line(line: &str, job: &Job) -> Reading {
     let read = &job.conventions;
-    let text = text.trim();
-    let group = |patterns: &[Regex], name: &str| {
-        let found = patterns.iter().find_map(|pattern| pattern.captures(text))?;
-        found.name(name).map(|part| part.as_str().to_owned())
-    };
-    if let Some(value) = group(&read.thickness_patterns, "value") {
-        return Reading::Thickness(format!(
-            "slab thickness {value} {}",
-            read.thickness_unit.name()
-        ));
+    let millimetres = |value_m: f64| (value_m * 1e4).round() / 10.0;
+    if let Some((value_m, by)) = thickness_of_line(line, read) {
+        let words = format!("slab thickness {} mm", millimetres(value_m));
+        return Reading::Thickness(named(words, Some(by)));
     }
-    if let Some(value) = group(&read.height_patterns, "value") {
-        let word = group(&read.height_patterns, "word");
-        let is = |words: &[String]| {
-            let fits = |word: &String| words.iter().any(|known| known.eq_ignore_ascii_case(word));
-            word.as_ref().is_some_and(fits)
+    if let Some((height, by)) = height_of_line(line, read) {
+        let what = match (height.word, height.middle) {
+            (_, true) => return Reading::Height("mid-depth".to_owned()),
+            (Some(Word::High), _) => "high point",
+            (Some(Word::Low), _) => "low point",
+            (None, _) => "height",
         };
-        let unit = read.height.unit.name();
-        if is(&read.high_words) {
-            return Reading::Height(format!("high point {value} {unit}"));
-        }
-        if is(&read.low_words) {
-            return Reading::Height(format!("low point {value} {unit}"));
-        }
-        if word.is_none() {
-            return Reading::Height(format!("height {value} {unit}"));
-        }
+        let words = format!("{what} {} mm", millimetres(height.value_m));
+        return Reading::Height(named(words, by));
     }
-    let part = |name, before: &str, after: &str| {
-        group(&read.mark_patterns, name).map(|part| format!("{before}{part}{after}"))
-    };
-    let strands = part("strands", "", " strands");
-    let parts: Vec<String> = [
-        part("mark", "mark ", ""),
-        part("tendons", "", " tendons"),
-        strands.clone(),
-        part("strand", "of ", ""),
+    if let Some((said, by)) = mark_of_line(line, &read.mark_patterns) {
+        let strands = said.strands.is_some() || said.tendons.is_some();
+        let required = said
+            .required_kn
+            .map(|kn| format!("required {kn:.0} kN"))
+            .or_else(|| {
+                let per_m = said.required_kn_per_m?;
+                Some(format!("required {per_m:.0} kN/m"))
+            });
+        let parts: Vec<String> = [
+            said.mark.map(|mark| format!("mark {mark}")),
+            said.tendons.map(|count| format!("{count} tendons")),
+            said.strands.map(|count| format!("{count} strands")),
+            said.strand.map(|size| format!("of {size}")),
+            required.clone(),
+        ]
+        .into_iter()
+        .flatten()
+        .collect();
+        return Reading::Mark {
+            words: named(parts.join(" "), Some(by)),
+            strands: strands || required.is_some(),
+        };
+    }
+    offered(line)
+        .and_then(name)
+        .map_or(Reading::Unread, Reading::Offered)
+}
+
+fn name(offer: &'static Offer) -> Option<&'static str> {
+    offer.pattern.name.as_deref()
+}
+
+/// What was read, with the pattern that read it.
+fn named(words: String, by: Option<&Pattern>) -> String {
+    match by {
+        Some(by) => format!("{words} ({})", by.label()),
+        None => words,
+    }
+}
+
+/// What a text says beyond how it is read.
+#[derive(Debug, Default, PartialEq)]
+pub(super) struct Hint {
+    /// Its height or thickness, millimetres.
+    pub(super) height_mm: Option<f64>,
+    pub(super) thickness_mm: Option<f64>,
+    /// It would be a height, or a thickness, in inches.
+    pub(super) inched: bool,
+    pub(super) inched_thickness: bool,
+    /// A word of heights that the job does not know, beside a number.
+    pub(super) word: Option<String>,
+}
+
+/// What a text hints at.
+pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
+    let read = &job.conventions;
+    let heights = || text.lines().filter_map(|line| height_of_line(line, read));
+    let mut hint = Hint::default();
+    match said {
+        Reading::Height(_) => {
+            let first = heights().find(|(height, _)| !height.middle);
+            hint.height_mm = first.map(|(height, _)| height.value_m * 1000.0);
+        }
+        Reading::Thickness(_) => {
+            let mut thicknesses = text
+                .lines()
+                .filter_map(|line| thickness_of_line(line, read));
+            hint.thickness_mm = thicknesses.next().map(|(value_m, _)| value_m * 1000.0);
+        }
+        // A mark by the default patterns may be the word and number of another office's heights.
+        Reading::Mark { strands: false, .. } | Reading::Offered(_) | Reading::Unread => {
+            let mut lines = text.lines();
+            let line = lines.next().unwrap_or_default().trim();
+            if lines.next().is_some() {
+                return hint;
+            }
+            let inched = |patterns: &[Pattern]| patterns.iter().any(|p| p.is_match(line));
+            let signed =
+                line.contains(['"', '″', '”', '/', '⁄', '¼', '½', '¾', '⅛', '⅜', '⅝', '⅞']);
+            hint.inched_thickness = signed && inched(&families::thickness_patterns(LengthUnit::In));
+            let is_height =
+                !hint.inched_thickness && inched(&families::height_patterns(LengthUnit::In));
+            let word: String = line.chars().filter(|c| c.is_alphabetic()).collect();
+            let word = word.to_uppercase();
+            let strange = high_word(&word) || low_word(&word);
+            let bare = ["", "H", "HP", "HIGH", "L", "LP", "LOW", "IN"].contains(&word.as_str());
+            hint.inched = is_height && signed && (bare || strange);
+            hint.word = (is_height && strange).then_some(word);
+        }
+        Reading::Mark { .. } => {}
+    }
+    hint
+}
+
+/// Words that other offices write at high points.
+pub(super) fn high_word(word: &str) -> bool {
+    [
+        "HI",
+        "HPT",
+        "HIGHPT",
+        "HIGHPOINT",
+        "TOP",
+        "T",
+        "UP",
+        "CREST",
+        "PEAK",
     ]
-    .into_iter()
-    .flatten()
-    .collect();
-    if parts.is_empty() {
-        return Reading::Unread;
-    }
-    Reading::Mark {
-        words: parts.join(" "),
-        strands: strands.is_some(),
-    }
+    .contains(&word)
+}
+
+/// Words that other offices write at low points.
+pub(super) fn low_word(word: &str) -> bool {
+    [
+        "LO", "LPT", "LOWPT", "LOWPOINT", "BOT", "BOTTOM", "B", "BTM", "DN", "DOWN", "SAG",
+    ]
+    .contains(&word)
 }
 
 impl Reading {
@@ -80,7 +185,7 @@ impl Reading {
     pub(super) fn words(&self) -> &str {
         match self {
             Self::Thickness(words) | Self::Height(words) | Self::Mark { words, .. } => words,
-            Self::Unread => "not read",
+            Self::Offered(_) | Self::Unread => "not read",
         }
     }
 }
@@ -93,14 +198,24 @@ mod tests {
     fn texts_are_taken_for_what_they_say() {
         let job = Job::default();
         for (text, words) in [
-            ("T350", "slab thickness 350 mm"),
-            ("H165", "high point 165 mm"),
-            (" 30L ", "low point 30 mm"),
-            ("165", "height 165 mm"),
-            ("D012 5-12.7", "mark D012 5 strands of 12.7"),
-            ("B03 4x5-12.7", "mark B03 4 tendons 5 strands of 12.7"),
-            ("5-12.7", "5 strands of 12.7"),
-            ("SEE DETAIL 4", "not read"),
+            ("T350", "slab thickness 350 mm (thickness)"),
+            ("H165", "high point 165 mm (height)"),
+            (" 30L ", "low point 30 mm (height, word last)"),
+            ("165", "height 165 mm (height)"),
+            ("T/2", "mid-depth"),
+            (
+                "D012 5-12.7",
+                "mark D012 5 strands of 12.7 (strands and size)",
+            ),
+            ("D012\n5-12.7", "5 strands of 12.7 (strands and size)"),
+            (
+                "B03 4x5-12.7",
+                "mark B03 4 tendons 5 strands of 12.7 (strands and size)",
+            ),
+            ("5-12.7", "5 strands of 12.7 (strands and size)"),
+            ("324 KIPS", "required 1441 kN (required kips)"),
+            ("12T", "not read"),
+            ("SEE DETAIL FOUR", "not read"),
         ] {
             assert_eq!(reading(text, &job).words(), words, "{text}");
         }

@@ -34,7 +34,8 @@ pub(super) fn head(
         String::new(),
     ];
     lines.extend(layers(drawing, job));
-    lines.extend(blocks(contents));
+    lines.extend(looks(drawing, contents));
+    lines.extend(at_ends(contents));
     lines.extend(texts(contents));
     if !findings.is_empty() {
         lines.push(String::new());
@@ -98,22 +99,82 @@ fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
     lines
 }
 
-fn blocks(contents: &Contents) -> Vec<String> {
-    if contents.blocks_at_ends.is_empty() {
-        return vec![
-            String::new(),
-            "No block stands at the end of a line: live and dead ends are not known.".to_owned(),
-        ];
+/// Rows shown of what stands at line ends.
+const SHOWN: usize = 24;
+
+/// What stands at the ends of lines.
+fn at_ends(contents: &Contents) -> Vec<String> {
+    let found = &contents.at_ends;
+    let mut rows: Vec<Vec<String>> = Vec::new();
+    let mut row =
+        |what: String, count: usize| rows.push(vec![format!("  {what}"), count.to_string()]);
+    for (block, count) in &found.blocks {
+        row(format!("block {}", plain(block)), *count);
     }
-    let mut rows = vec![vec!["Block".to_owned(), "stands at line ends".to_owned()]];
-    rows.extend(
-        contents
-            .blocks_at_ends
-            .iter()
-            .map(|(block, count)| vec![format!("  {}", plain(block)), count.to_string()]),
-    );
+    for ((block, tag, value), count) in &found.attributes {
+        row(
+            format!("  {}: {} = {}", plain(block), plain(tag), plain(value)),
+            *count,
+        );
+    }
+    for ((layer, text), count) in &found.words {
+        row(format!("text {} on {}", plain(text), plain(layer)), *count);
+    }
+    for ((layer, shape), count) in &found.shapes {
+        row(format!("{shape} on {}", plain(layer)), *count);
+    }
+    let mut lines = vec![String::new()];
+    if rows.is_empty() {
+        lines.push(
+            "Nothing that could be a symbol stands at the end of a line: live and dead ends are not known.".to_owned(),
+        );
+        return lines;
+    }
+    let more = rows.len().saturating_sub(SHOWN);
+    rows.truncate(SHOWN);
+    rows.insert(0, vec!["At line ends".to_owned(), "ends".to_owned()]);
+    lines.extend(lines_of(&rows));
+    if more > 0 {
+        lines.push(format!("  and {more} more"));
+    }
+    lines
+}
+
+/// Colours and linetypes of layers on which they differ.
+fn looks(drawing: &Drawing, contents: &Contents) -> Vec<String> {
+    let mut rows = vec![
+        [
+            "Layer",
+            "colour",
+            "linetype",
+            "lines open",
+            "closed",
+            "texts",
+        ]
+        .map(str::to_owned)
+        .to_vec(),
+    ];
+    for (layer, looks) in contents.looks.iter().filter(|(_, looks)| looks.len() > 1) {
+        for (look, held) in looks {
+            rows.push(vec![
+                format!("  {}", plain(layer)),
+                look.colour
+                    .map_or_else(|| "true colour".to_owned(), |index| index.to_string()),
+                plain(drawing.linetype(*look)),
+                held.open_m.len().to_string(),
+                held.closed_m.len().to_string(),
+                held.texts.to_string(),
+            ]);
+        }
+    }
+    if rows.len() == 1 {
+        return Vec::new();
+    }
     let mut lines = vec![String::new()];
     lines.extend(lines_of(&rows));
+    lines.push(
+        "  A layer pattern may ask for them: NAME@colour=1, NAME@linetype=DASHED*.".to_owned(),
+    );
     lines
 }
 

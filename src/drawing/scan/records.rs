@@ -3,6 +3,7 @@
 use super::super::handles::parse_handle;
 use super::super::text_decode::plain_name;
 use super::{BlockEntry, Entry, Gathered, Pass, Record, Section};
+use crate::patterns::folded;
 
 impl<'a> Pass<'a> {
     pub(super) fn begin_table_record(&mut self, name: &[u8], start: usize) {
@@ -18,6 +19,7 @@ impl<'a> Pass<'a> {
             b"LAYER" => Record::Layer,
             b"BLOCK_RECORD" => Record::BlockHome,
             b"DIMSTYLE" => Record::Dimstyle,
+            b"STYLE" => Record::Style,
             _ => Record::None,
         };
         self.gathered = Gathered::default();
@@ -67,6 +69,13 @@ impl<'a> Pass<'a> {
                 self.handles.settle(false);
             }
             Record::Layer => self.end_layer(),
+            Record::Style => {
+                let raw = self.gathered.name.unwrap_or_default();
+                let (name, _) = self.scan.code_page.decode(raw);
+                let name = folded(&plain_name(&name));
+                self.scan.styles.entry(name).or_insert(self.gathered.style);
+                self.handles.settle(false);
+            }
             Record::BlockHome => {
                 let held = &self.gathered;
                 if held
@@ -108,6 +117,7 @@ impl<'a> Pass<'a> {
             self.names.describe(id, |layer| {
                 layer.in_table = true;
                 layer.handle = text(held.handle);
+                layer.linetype = held.linetype.map(<[u8]>::to_vec);
                 layer.colour = held.colour;
                 layer.flags = held.flags;
             });
@@ -146,8 +156,10 @@ impl<'a> Pass<'a> {
             block,
             is_insert,
         };
+        // A constant attribute is written nowhere but in its block's definition; any other is a form to fill in.
+        let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
         let broken = held.broken;
-        let reads = self.types.is_read(held.type_id) && !broken;
+        let reads = self.types.is_read(held.type_id) && !is_form && !broken;
         if broken {
             self.left_out();
         }

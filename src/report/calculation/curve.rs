@@ -7,9 +7,9 @@ use crate::profile::{Profile, Tightest};
 /// Pieces, bends and least radii.
 pub(super) fn part(job: &Job, profile: &Profile, in_plan: Option<Tightest>) -> String {
     let mut text = vec![format!(
-        "2. Curve: z = z0 + g x + c x^2 / 2 on each piece, x from its start; hogging length = {} of the span\n\
+        "2. Curve: z = z0 + g x + c x^2 / 2 on each piece, x from its start; hogging length: {}\n\
          \x20  angle of a piece straight in plan = |atan(g end) - atan(g start)|; on a plan arc the two turn together in space\n",
-        job.profile.inflection
+        hogging(job)
     )];
     let rows = profile
         .spans
@@ -71,6 +71,16 @@ pub(super) fn part(job: &Job, profile: &Profile, in_plan: Option<Tightest>) -> S
         }
     }
     text.concat()
+}
+
+/// How the hogging length came about.
+fn hogging(job: &Job) -> String {
+    let share = job.profile.inflection;
+    if job.profile.fit_inflection {
+        format!("fitted to the support heights, {share} of the span where there are none")
+    } else {
+        format!("{share} of the span")
+    }
 }
 
 fn radius(curvature_per_m: f64) -> String {

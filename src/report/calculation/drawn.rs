@@ -2,8 +2,8 @@
 
 use super::{grid, number};
 use crate::analysis::TendonResult;
-use crate::floor::{EndKind, Tendon};
-use crate::job::Job;
+use crate::floor::{EndKind, Point, Tendon};
+use crate::job::{HeightReading, Job};
 use crate::losses::steel;
 use crate::report::DrawingFacts;
 use crate::report::table::plain;
@@ -23,6 +23,16 @@ pub(super) fn part(
         plain(&tendon.layer)
     )];
     text.push(strands(job, tendon));
+    if let Some(required_kn) = tendon.required_kn {
+        text.push(format!(
+            "  required by its label: {required_kn:.1} kN after losses, all tendons of the line\n"
+        ));
+    }
+    if let Some(required) = tendon.required_kn_per_m {
+        text.push(format!(
+            "  required by its label: {required:.1} kN/m after losses\n"
+        ));
+    }
     let ends = tendon.ends.map(|end| match end.kind {
         Some(EndKind::Live) => "live",
         Some(EndKind::Dead) => "dead",
@@ -32,7 +42,11 @@ pub(super) fn part(
         "  ends: {} at station 0, {} at the last station\n\n",
         ends[0], ends[1]
     ));
-    text.push("1. Points as drawn: height of the strands' centroid above the local soffit; level = height - thickness\n".to_owned());
+    let reading = &job.conventions.height;
+    text.push(format!(
+        "1. Points: drawn = the drawing's number, {reading};\n   \
+         height = from the local soffit to the strands' centroid; level = height - thickness\n"
+    ));
     let rows = tendon
         .points
         .iter()
@@ -43,6 +57,7 @@ pub(super) fn part(
                 format!("{:.3}", point.station_m),
                 format!("{:.3}", point.place.x),
                 format!("{:.3}", point.place.y),
+                number(drawn(point, reading), 2),
                 number(point.height_m.map(|h| h * 1000.0), 1),
                 number(point.thickness_m.map(|t| t * 1000.0), 0),
                 number(worked.level_m.map(|l| l * 1000.0), 1),
@@ -56,6 +71,7 @@ pub(super) fn part(
             "station m",
             "x m",
             "y m",
+            &format!("drawn {}", reading.unit.name()),
             "height mm",
             "thickness mm",
             "level mm",
@@ -63,6 +79,11 @@ pub(super) fn part(
         rows,
     ));
     text.concat()
+}
+
+/// The number that stands on the drawing, in its unit.
+fn drawn(point: &Point, reading: &HeightReading) -> Option<f64> {
+    Some(point.drawn_m? / reading.unit.metres())
 }
 
 fn strands(job: &Job, tendon: &Tendon) -> String {

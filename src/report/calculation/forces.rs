@@ -171,6 +171,13 @@ fn extension(job: &Job, forces: &Forces) -> String {
             ));
         }
     }
+    if forces.ends.iter().all(|end| end.kind == EndKind::Live) {
+        let total_mm: f64 = forces.ends.iter().filter_map(|end| end.extension_mm).sum();
+        text.push(format!(
+            "  both jacks pull together; the two add up to {total_mm:.1} mm gross; with one jack moved from end to end \
+             the first pull is longer and the second shorter\n"
+        ));
+    }
     text.push("  strand between anchor and jack is not in these figures\n".to_owned());
     text.concat()
 }

@@ -1,0 +1,211 @@
+//! What stands at the ends of lines: blocks, their attributes, words, shapes; and what a legend says of them.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use geo::Coord;
+use rstar::RTree;
+use rstar::primitives::GeomWithData;
+
+use crate::drawing::{Drawing, Shape};
+use crate::floor::{EndKind, Figure, figures};
+use crate::job::Job;
+
+/// Lines shorter than this many reaches of an end symbol are symbols themselves.
+const LINE: f64 = 4.0;
+/// A legend's symbol stands this near to its words, in text heights.
+const LEGEND: f64 = 12.0;
+/// Longer texts are notes.
+const LONGEST_WORD: usize = 16;
+
+/// What stands at line ends, with the number of ends.
+#[derive(Debug, Default)]
+pub(super) struct AtEnds {
+    /// Blocks by name.
+    pub(super) blocks: BTreeMap<String, usize>,
+    /// Their attributes: block, tag, value.
+    pub(super) attributes: BTreeMap<(String, String, String), usize>,
+    /// Texts without digits: layer, text.
+    pub(super) words: BTreeMap<(String, String), usize>,
+    /// Shapes: layer, what it is called.
+    pub(super) shapes: BTreeMap<(String, &'static str), usize>,
+    /// By number of an insert that stands at an end: its layer.
+    pub(super) insert_layers: BTreeMap<usize, String>,
+    /// By number of a shape that is a line: how many of its ends have something that marks them.
+    pub(super) marked: BTreeMap<usize, usize>,
+    /// Numbers of texts that stand at an end: they are no legend.
+    texts: BTreeSet<usize>,
+    /// What legends say of blocks.
+    pub(super) legend_blocks: BTreeMap<String, EndKind>,
+    /// What legends say of shapes.
+    pub(super) legend_shapes: BTreeMap<&'static str, EndKind>,
+}
+
+type Placed = GeomWithData<[f64; 2], usize>;
+
+impl AtEnds {
+    /// Looks at the ends of every open line.
+    pub(super) fn of(drawing: &Drawing, job: &Job) -> Self {
+        let reach_m = job.conventions.end_reach_m;
+        let gap_m = job.conventions.join_gap_m;
+        let figures = figures(drawing, gap_m, 2.0 * reach_m, |shape| {
+            shape.within.is_none()
+        });
+        let inserts = tree(drawing.inserts.iter().map(|insert| insert.place));
+        let texts = tree(drawing.texts.iter().map(|text| middle(&text.corners)));
+        let shapes = tree(figures.iter().map(|figure| middle(&figure.corners)));
+        let mut found = Self::default();
+        for (number, shape) in drawing.shapes.iter().enumerate() {
+            if shape.closed || shape.path.length_m() < LINE * reach_m {
+                continue;
+            }
+            let holding = holding(drawing, shape);
+            let mut marked = 0;
+            for place in [shape.path.start(), shape.path.end()].into_iter().flatten() {
+                let at = [place.x, place.y];
+                let block = nearest(&inserts, at, reach_m, |insert| !holding.contains(&insert));
+                let word = nearest(&texts, at, 2.0 * reach_m, |text| {
+                    drawing
+                        .texts
+                        .get(text)
+                        .is_some_and(|text| is_word(&text.content))
+                });
+                let figure = nearest(&shapes, at, reach_m, |_| true);
+                found.block(drawing, block);
+                found.texts.extend(word);
+                if let Some(text) = word.and_then(|text| drawing.texts.get(text)) {
+                    let key = (text.layer.clone(), text.content.trim().to_owned());
+                    *found.words.entry(key).or_default() += 1;
+                }
+                let figure = figure.and_then(|figure| figures.get(figure));
+                if let Some(figure) = figure
+                    && let Some(piece) =
+                        figure.pieces.first().and_then(|at| drawing.shapes.get(*at))
+                    && let Some(word) = figure.words.first()
+                {
+                    let key = (piece.layer.clone(), *word);
+                    *found.shapes.entry(key).or_default() += 1;
+                }
+                marked += usize::from(block.is_some() || word.is_some() || figure.is_some());
+            }
+            if marked > 0 {
+                found.marked.insert(number, marked);
+            }
+        }
+        found.legend(drawing, &inserts, &shapes, &figures);
+        found
+    }
+
+    fn block(&mut self, drawing: &Drawing, number: Option<usize>) {
+        let Some((number, insert)) = number.and_then(|at| Some((at, drawing.inserts.get(at)?)))
+        else {
+            return;
+        };
+        *self.blocks.entry(insert.block.clone()).or_default() += 1;
+        self.insert_layers.insert(number, insert.layer.clone());
+        for (tag, value) in &insert.attributes {
+            let key = (insert.block.clone(), tag.clone(), value.clone());
+            *self.attributes.entry(key).or_default() += 1;
+        }
+    }
+
+    /// A text that speaks of live or dead ends beside one block or shape tells what it stands for.
+    fn legend(
+        &mut self,
+        drawing: &Drawing,
+        inserts: &RTree<Placed>,
+        shapes: &RTree<Placed>,
+        figures: &[Figure],
+    ) {
+        for (number, text) in drawing.texts.iter().enumerate() {
+            let Some(kind) = hinted(&text.content).filter(|_| text.content.contains(' ')) else {
+                continue;
+            };
+            if text.within.is_some() || self.texts.contains(&number) {
+                continue;
+            }
+            let reach_m = LEGEND * text.height_m;
+            // A legend's words stand level with its symbol and to the right of it.
+            let level = |place: Coord<f64>| {
+                (place.y - middle(&text.corners).y).abs() <= 2.0 * text.height_m
+                    && place.x < text.place.x + text.height_m
+            };
+            let at = [text.place.x, text.place.y];
+            let insert = nearest(inserts, at, reach_m, |insert| {
+                drawing
+                    .inserts
+                    .get(insert)
+                    .is_some_and(|insert| level(insert.place))
+            });
+            if let Some(insert) = insert.and_then(|insert| drawing.inserts.get(insert)) {
+                self.legend_blocks
+                    .entry(insert.block.clone())
+                    .or_insert(kind);
+            }
+            let figure = nearest(shapes, at, reach_m, |figure| {
+                figures
+                    .get(figure)
+                    .is_some_and(|figure| level(middle(&figure.corners)))
+            });
+            if let Some(word) = figure.and_then(|figure| figures.get(figure)?.words.first()) {
+                self.legend_shapes.entry(word).or_insert(kind);
+            }
+        }
+    }
+}
+
+/// What a name or a word of another office says of an end.
+pub(super) fn hinted(text: &str) -> Option<EndKind> {
+    let text = text.to_uppercase();
+    let says = |words: &[&str]| words.iter().any(|word| text.contains(word));
+    if says(&["DEAD", "FIXED", "PASSIVE"]) {
+        Some(EndKind::Dead)
+    } else {
+        says(&["LIVE", "STRESSING", "ACTIVE", "JACK"]).then_some(EndKind::Live)
+    }
+}
+
+/// A short text without digits.
+fn is_word(text: &str) -> bool {
+    let text = text.trim();
+    let letters = text.chars().any(char::is_alphabetic);
+    letters && text.len() <= LONGEST_WORD && !text.bytes().any(|byte| byte.is_ascii_digit())
+}
+
+/// The inserts that a shape lies in: it is no tendon that they mark.
+fn holding(drawing: &Drawing, shape: &Shape) -> Vec<usize> {
+    let outwards = |insert: &usize| drawing.inserts.get(*insert)?.within;
+    std::iter::successors(shape.within, outwards).collect()
+}
+
+fn tree(places: impl Iterator<Item = Coord<f64>>) -> RTree<Placed> {
+    let placed = places
+        .enumerate()
+        .map(|(at, place)| Placed::new([place.x, place.y], at));
+    RTree::bulk_load(
+        placed
+            .filter(|one| one.geom().iter().all(|x| x.is_finite()))
+            .collect(),
+    )
+}
+
+/// The nearest within reach; of equals the first in the drawing.
+fn nearest(
+    tree: &RTree<Placed>,
+    at: [f64; 2],
+    reach_m: f64,
+    fits: impl Fn(usize) -> bool,
+) -> Option<usize> {
+    let off = |one: &Placed| {
+        let [x, y] = *one.geom();
+        (x - at[0]).hypot(y - at[1])
+    };
+    tree.locate_within_distance(at, reach_m * reach_m)
+        .filter(|one| fits(one.data))
+        .min_by(|a, b| off(a).total_cmp(&off(b)).then(a.data.cmp(&b.data)))
+        .map(|one| one.data)
+}
+
+fn middle(corners: &[Coord<f64>; 4]) -> Coord<f64> {
+    let [a, b, c, d] = *corners;
+    (a + b + c + d) / 4.0
+}

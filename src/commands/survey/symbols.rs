@@ -1,0 +1,213 @@
+//! Keys of `[ends]` that the drawing suggests: what stands at line ends and says, or a legend says, what it is.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use serde_json::json;
+
+use super::at_ends::hinted;
+use super::contents::Contents;
+use crate::floor::{EndKind, EndWords};
+use crate::job::{Job, Proposal};
+use crate::patterns::{Names, pattern_of};
+
+/// What to set below `[ends]`, by path of the key.
+pub(super) fn proposals(contents: &Contents, job: &Job) -> BTreeMap<String, Proposal> {
+    let mut proposals = BTreeMap::new();
+    blocks(contents, job, &mut proposals);
+    attributes(contents, job, &mut proposals);
+    words(contents, job, &mut proposals);
+    shapes(contents, job, &mut proposals);
+    proposals
+}
+
+const KINDS: [(EndKind, &str); 2] = [(EndKind::Live, "live"), (EndKind::Dead, "dead")];
+
+fn put(
+    proposals: &mut BTreeMap<String, Proposal>,
+    key: &str,
+    values: &BTreeSet<String>,
+    why: &str,
+) {
+    if !values.is_empty() {
+        let proposal = Proposal {
+            value: json!(values),
+            why: why.to_owned(),
+        };
+        proposals.insert(format!("ends.{key}"), proposal);
+    }
+}
+
+fn names(patterns: &[String]) -> Names {
+    Names::new(patterns).unwrap_or_default()
+}
+
+fn known_words(job: &Job, kind: EndKind) -> &[String] {
+    match kind {
+        EndKind::Live => &job.conventions.live_end_words,
+        EndKind::Dead => &job.conventions.dead_end_words,
+    }
+}
+
+/// Blocks at line ends whose names, or a legend, say what they are, where none fits the job.
+fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let read = &job.conventions;
+    let found = &contents.at_ends;
+    for (kind, word) in KINDS {
+        let known = names(match kind {
+            EndKind::Live => &read.live_end_blocks,
+            EndKind::Dead => &read.dead_end_blocks,
+        });
+        if found.blocks.keys().any(|block| known.has(block)) {
+            continue;
+        }
+        let says = |block: &&String| {
+            let legend = found.legend_blocks.get(*block).copied();
+            hinted(block).or(legend) == Some(kind)
+        };
+        let blocks = found.blocks.keys().filter(says);
+        put(
+            proposals,
+            &format!("{word}_blocks"),
+            &blocks.map(|block| pattern_of(block)).collect(),
+            "No block at a line end fits the default; the name or the legend says so.",
+        );
+    }
+}
+
+/// Blocks at line ends that an attribute tells apart.
+fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let read = &job.conventions;
+    let known = names(
+        &[
+            read.live_end_blocks.as_slice(),
+            &read.dead_end_blocks,
+            &read.end_blocks,
+        ]
+        .concat(),
+    );
+    let said = EndWords::new(read);
+    let (mut blocks, mut tags) = (BTreeSet::new(), BTreeSet::new());
+    let mut new_words =
+        BTreeMap::from(KINDS.map(|(kind, _)| (kind == EndKind::Live, BTreeSet::new())));
+    for (block, tag, value) in contents.at_ends.attributes.keys() {
+        let Some(kind) = said.kind(value).or_else(|| hinted(value)) else {
+            continue;
+        };
+        if known.has(block) || hinted(block).is_some() {
+            continue;
+        }
+        blocks.insert(pattern_of(block));
+        tags.insert(pattern_of(tag));
+        if said.kind(value).is_none()
+            && let Some(words) = new_words.get_mut(&(kind == EndKind::Live))
+        {
+            words.insert(value.clone());
+        }
+    }
+    put(
+        proposals,
+        "blocks",
+        &blocks,
+        "Blocks at line ends whose attribute says what they are.",
+    );
+    put(
+        proposals,
+        "attributes",
+        &tags,
+        "The attributes that say it.",
+    );
+    for (kind, word) in KINDS {
+        let mut words = new_words
+            .remove(&(kind == EndKind::Live))
+            .unwrap_or_default();
+        if !words.is_empty() {
+            words.extend(known_words(job, kind).iter().cloned());
+        }
+        put(
+            proposals,
+            &format!("{word}_words"),
+            &words,
+            "Values of those attributes, and the defaults.",
+        );
+    }
+}
+
+/// Texts at line ends that say what they are in words the job does not know.
+fn words(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let known = EndWords::new(&job.conventions);
+    for (kind, word) in KINDS {
+        let texts = contents.at_ends.words.keys().map(|(_, text)| text);
+        let mut new: BTreeSet<String> = texts
+            .filter(|text| known.kind(text).is_none() && hinted(text) == Some(kind))
+            .flat_map(|text| text.lines().map(str::trim).map(str::to_owned))
+            .collect();
+        let key = format!("ends.{word}_words");
+        if new.is_empty() || proposals.contains_key(&key) {
+            continue;
+        }
+        new.extend(known_words(job, kind).iter().cloned());
+        put(
+            proposals,
+            &format!("{word}_words"),
+            &new,
+            "Texts at line ends, and the defaults.",
+        );
+    }
+}
+
+/// Shapes at line ends: as the legend says, else a triangle or a solid beside another shape is the live end.
+fn shapes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let read = &job.conventions;
+    if !(read.live_end_shapes.is_empty() && read.dead_end_shapes.is_empty()) {
+        return;
+    }
+    let blocks = [read.live_end_blocks.as_slice(), &read.dead_end_blocks].concat();
+    let by_block = names(&blocks);
+    let told = |key: &str| proposals.contains_key(key);
+    if contents
+        .at_ends
+        .blocks
+        .keys()
+        .any(|block| by_block.has(block))
+        || ["ends.live_blocks", "ends.dead_blocks", "ends.blocks"]
+            .into_iter()
+            .any(told)
+    {
+        return;
+    }
+    let drawn = contents.at_ends.shapes.iter();
+    let drawn = drawn.filter(|((layer, _), _)| !super::roles::is_grid(layer));
+    let most = drawn.clone().map(|(_, count)| *count).max().unwrap_or(0);
+    let found: BTreeSet<&str> = drawn
+        .filter(|(_, count)| 5 * **count >= most)
+        .map(|((_, word), _)| *word)
+        .collect();
+    let legend = &contents.at_ends.legend_shapes;
+    let by_legend = found.iter().any(|word| legend.contains_key(word));
+    let pointed = ["triangle", "solid"]
+        .into_iter()
+        .find(|word| found.contains(word));
+    for (kind, word) in KINDS {
+        let (shapes, why): (BTreeSet<String>, &str) = if by_legend {
+            let says = |shape: &&&str| legend.get(**shape) == Some(&kind);
+            let shapes = found.iter().filter(says).map(|&shape| shape.to_owned());
+            (
+                shapes.collect(),
+                "Shapes at line ends, as words beside them elsewhere say.",
+            )
+        } else if let Some(pointed) = pointed
+            && found.len() == 2
+        {
+            let shapes = found
+                .iter()
+                .filter(|shape| (**shape == pointed) == (kind == EndKind::Live));
+            (
+                shapes.map(|&shape| shape.to_owned()).collect(),
+                "A guess, since the drawing does not say: look at the legend before you trust it.",
+            )
+        } else {
+            continue;
+        };
+        put(proposals, &format!("{word}_shapes"), &shapes, why);
+    }
+}

@@ -1,0 +1,97 @@
+//! Words that say what an end is: `LE`, `L.E.`, `live end`, `(DE)`.
+
+use super::super::types::EndKind;
+use crate::job::Conventions;
+use crate::patterns::folded;
+
+/// The job's words, as they are compared.
+#[derive(Debug, Clone)]
+pub struct EndWords {
+    live: Vec<String>,
+    dead: Vec<String>,
+    /// Whether some word holds a digit; if none does, most labels are passed over at a glance.
+    digits: bool,
+}
+
+impl EndWords {
+    /// The words of a job.
+    pub fn new(conventions: &Conventions) -> Self {
+        let plain = |words: &[String]| words.iter().map(|word| plain(word)).collect();
+        let (live, dead): (Vec<String>, Vec<String>) = (
+            plain(&conventions.live_end_words),
+            plain(&conventions.dead_end_words),
+        );
+        let digits = live.iter().chain(&dead).any(|word| has_digit(word));
+        Self { live, dead, digits }
+    }
+
+    /// What one line says.
+    pub fn kind(&self, line: &str) -> Option<EndKind> {
+        if !self.digits && has_digit(line) {
+            return None;
+        }
+        let line = plain(line);
+        let short = line.strip_suffix(" END").unwrap_or(&line);
+        let among = |words: &[String]| words.iter().any(|word| *word == line || word == short);
+        if among(&self.live) {
+            Some(EndKind::Live)
+        } else {
+            among(&self.dead).then_some(EndKind::Dead)
+        }
+    }
+
+    /// What a text says in one of its lines, and whether it says nothing else.
+    pub(super) fn found_in(&self, content: &str) -> Option<(EndKind, bool)> {
+        let mut lines = content.lines().filter(|line| !line.trim().is_empty());
+        let kind = lines.clone().find_map(|line| self.kind(line))?;
+        let whole = lines.all(|line| self.kind(line).is_some());
+        Some((kind, whole))
+    }
+}
+
+fn has_digit(text: &str) -> bool {
+    text.bytes().any(|byte| byte.is_ascii_digit())
+}
+
+/// Without dots and brackets, hyphens as blanks, single blanks, in one letter case.
+fn plain(text: &str) -> String {
+    let kept: String = folded(text)
+        .chars()
+        .filter(|sign| !matches!(sign, '.' | '(' | ')' | '[' | ']'))
+        .map(|sign| if sign == '-' { ' ' } else { sign })
+        .collect();
+    let words: Vec<&str> = kept.split_whitespace().collect();
+    words.join(" ")
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::job::Job;
+
+    #[test]
+    fn words_are_read_as_drafters_write_them() {
+        let mut conventions = Job::default().conventions;
+        let words = EndWords::new(&conventions);
+        for (text, kind) in [
+            ("LE", Some(EndKind::Live)),
+            (" l.e. ", Some(EndKind::Live)),
+            ("(Stressing-End)", Some(EndKind::Live)),
+            ("DE", Some(EndKind::Dead)),
+            ("dead  END", Some(EndKind::Dead)),
+            ("END", None),
+            ("H165", None),
+            ("SLE", None),
+            ("", None),
+        ] {
+            assert_eq!(words.kind(text), kind, "{text}");
+        }
+        assert_eq!(
+            words.found_in("D1 5-12.7\nLE"),
+            Some((EndKind::Live, false))
+        );
+        assert_eq!(words.found_in("DE\n"), Some((EndKind::Dead, true)));
+        conventions.live_end_words = vec!["J1".to_owned()];
+        assert_eq!(EndWords::new(&conventions).kind("j1"), Some(EndKind::Live));
+    }
+}

@@ -1,0 +1,255 @@
+//! Families of label texts: those that the defaults read, and those that a survey offers where a drawing has them.
+//!
+//! The defaults hold what can be read in one way only on a layer of its kind. What may mean two things (`12T`: twelve
+//! tendons, or twelve at the top) is offered, with what it would be taken for, and never taken by itself.
+
+use std::sync::LazyLock;
+
+use regex::Regex;
+
+use super::pattern::{ForceUnit, Pattern, PatternUnit};
+use crate::units::LengthUnit;
+
+/// A family that the defaults do not read.
+#[derive(Debug)]
+pub struct Offer {
+    /// The key that its pattern belongs to, such as `labels.mark_patterns`.
+    pub key: &'static str,
+    /// Its pattern, with a name.
+    pub pattern: Pattern,
+    /// What it would be taken for.
+    pub caution: &'static str,
+}
+
+/// A mark: letters, a number, a letter perhaps.
+const MARK: &str = r"(?<mark>[A-Z]{1,3}-?\d+[A-Z]?)";
+/// A mark as other offices write it: anything with a letter and a digit in it.
+const ANY_MARK: &str = r"(?<mark>[A-Z]+(?:[-./]?[A-Z0-9]+)*[-./]?\d+[A-Z]?|\d+[A-Z]+(?:[-./]?[A-Z0-9]+)*|\d+(?:[-./]\d+)?)";
+/// Between a mark and what follows it.
+const AFTER_MARK: &str = r"(?:\s*[:;,/]\s*|\s*\(\s*|\s+(?:[-–]\s+)?)";
+/// Between a number of strands and their size.
+const OF_SIZE: &str = r"\s*(?:[-–/SØ∅⌀]|NOS?\.?)\s*[Ø∅⌀]?\s*";
+/// Inches or millimetres after a size.
+const SIZE_SIGN: &str = r#"\s*(?:mm|"|″|”|''|in\.?)?\s*[Ø∅⌀]?(?:\s*DIA\.?)?(?:\s*STRANDS?)?"#;
+/// A number of tendons before their strands.
+const TENDONS: &str = r"(?:(?<tendons>\d+)\s*(?:[x×*]|TENDONS?(?:\s+OF)?|NOS?\.?)\s*)?";
+/// A force, perhaps with the letters that it goes by, and in groups of three.
+const FORCE: &str = r"(?:[A-Z]{1,4}\s*=\s*)?(?<force>(?:\d{1,3}(?:,\d{3})+|\d+)(?:\.\d+)?)\s*";
+/// Words after a force.
+const FORCE_WORDS: &str = r"(?:\s*\(?(?:EFF|EFFECTIVE|FINAL|TOTAL|MIN|REQ'?D)\.?\)?)?";
+
+/// Marks, strands and required forces.
+pub(super) fn mark_patterns() -> Vec<Pattern> {
+    static PATTERNS: LazyLock<Vec<Pattern>> = LazyLock::new(compiled_marks);
+    PATTERNS.clone()
+}
+
+fn compiled_marks() -> Vec<Pattern> {
+    let mark = format!("(?:{MARK}{AFTER_MARK})?");
+    let per_width = FORCE.replace("<force>", "<force_per_width>");
+    let force = |unit, name, number: &str, sign: &str| {
+        let expression = format!(r"(?i)^{mark}{number}{sign}{FORCE_WORDS}$");
+        pattern(name, &expression).map(|mut pattern| {
+            pattern.unit = Some(PatternUnit::Force(unit));
+            pattern
+        })
+    };
+    [
+        pattern(
+            "strands and size",
+            &format!(
+                r"(?i)^{mark}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d+(?:[.,]\d+)?|[.,]\d+|\d+/\d+|½){SIZE_SIGN}\s*\)?$"
+            ),
+        ),
+        pattern("mark", &format!("(?i)^{MARK}$")),
+        pattern(
+            "strands x size",
+            &format!(
+                r"(?i)^{mark}(?<strands>\d+)\s*[x×*]\s*[Ø∅⌀]?\s*(?<strand>\d*[.,]\d+|\d/\d+|½){SIZE_SIGN}\s*\)?$"
+            ),
+        ),
+        pattern(
+            "strands, letter, size",
+            &format!(
+                r"(?i)^{mark}{TENDONS}(?<strands>\d+)\s*-?\s*[A-Z]\s*(?<strand>\d+[.,]\d+){SIZE_SIGN}\s*\)?$"
+            ),
+        ),
+        pattern(
+            "strands in words",
+            &format!(r"(?i)^{mark}{TENDONS}(?<strands>\d+)[\s-]*(?:STRANDS?|STRS?\.?)$"),
+        ),
+        force(ForceUnit::Kn, "required kN", FORCE, "kN"),
+        force(ForceUnit::Kip, "required kips", FORCE, r"K(?:IPS?)?\.?"),
+        force(ForceUnit::KnPerM, "required kN/m", &per_width, r"kN\s*/\s*m"),
+        force(
+            ForceUnit::KipPerFt,
+            "required kips/ft",
+            &per_width,
+            r"(?:K(?:IPS?)?\s*/\s*(?:FT|LF|')|K[PL]F)\.?",
+        ),
+    ]
+    .into_iter()
+    .flatten()
+    .collect()
+}
+
+/// Heights whose numbers are in this unit: `H165`, `H 165`, `HP=165`, `165H`, `165 (H)`, `165`.
+pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
+    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
+        by_unit(&[
+            (
+                "height",
+                r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
+            ),
+            (
+                "height, word last",
+                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$",
+            ),
+        ])
+    });
+    in_unit(&BY_UNIT, unit)
+}
+
+/// Slab thickness in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`.
+pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
+    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
+        by_unit(&[
+            ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)$"),
+            (
+                "thickness, word first",
+                r"(?i)^(?:SLAB\s+)?(?:THK|THICK(?:NESS)?)\.?\s*[=:]?\s*(?<value>NUMBER)$",
+            ),
+            (
+                "thickness, word last",
+                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?$",
+            ),
+        ])
+    });
+    in_unit(&BY_UNIT, unit)
+}
+
+type ByUnit = [(LengthUnit, Vec<Pattern>); 5];
+
+/// Patterns with a number of each unit in them.
+fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
+    use LengthUnit::{Cm, Ft, In, M, Mm};
+    [Mm, Cm, M, In, Ft].map(|unit| {
+        let with_number = |(name, expression): &(&str, &str)| {
+            pattern(name, &expression.replace("NUMBER", number(unit)))
+        };
+        (unit, expressions.iter().filter_map(with_number).collect())
+    })
+}
+
+fn in_unit(by_unit: &ByUnit, unit: LengthUnit) -> Vec<Pattern> {
+    let found = by_unit.iter().find(|(of, _)| *of == unit);
+    found
+        .map(|(_, patterns)| patterns.clone())
+        .unwrap_or_default()
+}
+
+/// The family that a line belongs to, of those that a survey offers; the first in their order.
+pub fn offered(line: &str) -> Option<&'static Offer> {
+    let line = line.trim();
+    OFFERS.iter().find(|offer| offer.pattern.is_match(line))
+}
+
+/// The family of this name.
+pub fn offered_named(name: &str) -> Option<&'static Offer> {
+    OFFERS
+        .iter()
+        .find(|offer| offer.pattern.name.as_deref() == Some(name))
+}
+
+static OFFERS: LazyLock<Vec<Offer>> = LazyLock::new(offers);
+
+/// Families that a survey offers, in the order they are tried.
+fn offers() -> Vec<Offer> {
+    let mark = format!("(?:{MARK}{AFTER_MARK})?");
+    let tendons = r"\(?(?<tendons>\d+)\)?\s*(?:T|TENDONS?|MONOSTRANDS?)\.?";
+    let single = |pattern: Pattern| Pattern {
+        strands: Some(1),
+        strand: Some("12.7".to_owned()),
+        ..pattern
+    };
+    let marks = |name, expression: &str, caution| (name, expression.to_owned(), caution);
+    let counted = "T is taken for tendons of one strand each, 12.7 mm (0.5 in); it may also be top or thickness. Check it.";
+    let families = [
+        marks(
+            "count of single-strand tendons",
+            &format!("(?i)^{mark}{tendons}$"),
+            counted,
+        ),
+        marks(
+            "single-strand tendons at a spacing",
+            &format!(
+                r#"(?i)^{mark}{tendons}\s*@\s*[\d .'"/-]+(?:mm|cm|m|in)?\s*(?:O\.?\s?C\.?|C/C|CRS\.?|CTRS\.?|CTS\.?)?$"#
+            ),
+            counted,
+        ),
+        marks(
+            "single-strand tendons and their force",
+            &format!(r"(?i)^{mark}{tendons}\s*[,;=@-]?\s*\(?{FORCE}K(?:IPS?)?\.?{FORCE_WORDS}\)?$"),
+            counted,
+        ),
+        marks(
+            "count of strands",
+            &format!(r"(?i)^{mark}{TENDONS}(?<strands>\d+)\s*S$"),
+            "S is taken for strands. Check it.",
+        ),
+        marks(
+            "other mark, strands and size",
+            &format!(
+                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d*[.,]\d+|\d/\d|½){SIZE_SIGN}\s*\)?$"
+            ),
+            "What stands before the strands is taken for the tendon's mark.",
+        ),
+        marks(
+            "other mark",
+            &format!("(?i)^{}$", ANY_MARK.replace(r"|\d+(?:[-./]\d+)?)", ")")),
+            "Any text with a letter and a digit is taken for a tendon's mark. Check it.",
+        ),
+    ];
+    families
+        .into_iter()
+        .filter_map(|(name, expression, caution)| {
+            let mut pattern = pattern(name, &expression)?;
+            if pattern.has_group("tendons") && !pattern.has_group("strands") {
+                pattern = single(pattern);
+            }
+            if pattern.has_group("force") {
+                pattern.unit = Some(PatternUnit::Force(ForceUnit::Kip));
+            }
+            Some(Offer {
+                key: "labels.mark_patterns",
+                pattern,
+                caution,
+            })
+        })
+        .collect()
+}
+
+/// A number as a drawing in this unit writes it: fractions only where the unit is the inch or the foot, so that
+/// `1 1/4` on a metric drawing is never taken for a height.
+fn number(unit: LengthUnit) -> &'static str {
+    match unit {
+        // A comma before three digits may also part thousands.
+        LengthUnit::Mm | LengthUnit::Cm => r"[-−]?\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?",
+        LengthUnit::M => r"[-−+]?(?:\d+(?:[.,]\d+)?|[.,]\d+)(?:\s*[cm]?m)?",
+        LengthUnit::In | LengthUnit::Ft => {
+            r#"[-−]?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:(?:\s*-\s*|\s+)\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#
+        }
+    }
+}
+
+/// A named pattern; that all of them compile the tests count.
+fn pattern(name: &str, expression: &str) -> Option<Pattern> {
+    let expression = Regex::new(expression).ok()?;
+    Some(Pattern {
+        name: Some(name.to_owned()),
+        ..Pattern::new(expression)
+    })
+}
+
+#[cfg(test)]
+mod tests;
