@@ -269,20 +269,7 @@ impl<'b> Gatherer<'b> {
             return;
         }
         if wanted && block.is_none() {
-            self.tell(
-                &BLOCK_MISSING,
-                Level::Note,
-                record.kept.block as usize,
-                || {
-                    (
-                        format!(
-                            "insert {handle} names block {}, which the drawing does not define",
-                            self.book.block_name(record.kept.block)
-                        ),
-                        "bind or purge the reference, unless only its place matters".to_owned(),
-                    )
-                },
-            );
+            self.missing(record, handle);
         }
         let plane = Placing::extruded(normal(&insert.extrusion_direction), insert.location.z);
         let plane = frame.placing.after(&plane);
@@ -357,6 +344,19 @@ impl<'b> Gatherer<'b> {
                 self.block(block, &inside, handle);
             }
         }
+    }
+
+    /// Says that an insert's block is not there.
+    fn missing(&mut self, record: &Record, handle: &str) {
+        let number = record.kept.block;
+        let name = self.book.block_name(number);
+        let text = format!("insert {handle} names block {name}, which the drawing does not define");
+        self.tell(&BLOCK_MISSING, Level::Note, number as usize, || {
+            (
+                text,
+                "bind or purge the reference, unless only its place matters".to_owned(),
+            )
+        });
     }
 
     /// Places a block's records.

@@ -323,6 +323,10 @@ impl<'a> Pass<'a> {
                     }
                     self.note(bad.at, || bad.words());
                 }
+                if self.section == Section::Header {
+                    // One that is not closed has no place for a variable of ours.
+                    self.section = Section::Outside;
+                }
                 self.end_section(tag.start);
                 self.sections += 1;
                 self.section = Section::Named;

@@ -113,3 +113,13 @@ fn an_unclosed_section_is_read_and_said() {
     assert_eq!(rules(&findings), ["drawing-damaged"]);
     marks_without_loss(&source, 0.001);
 }
+
+#[test]
+fn an_unclosed_header_takes_no_variable() {
+    let (source, drawing, _) = everything(of_tags(
+        "0 SECTION 2 HEADER 9 $ACADVER 1 AC1015 0 SECTION 2 ENTITIES
+         0 LINE 5 A1 8 A 10 0 20 0 11 1 21 0 0 ENDSEC 0 EOF",
+    ));
+    assert_eq!(drawing.shapes.len(), 1);
+    marks_without_loss(&source, 0.001);
+}

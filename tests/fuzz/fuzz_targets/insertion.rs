@@ -6,13 +6,22 @@ use tautplan::drawing::{Align, Drawn, Ink, Mark, Sheet, SheetLayer, insert, open
 use tautplan::geometry::Coord;
 
 fuzz_target!(|bytes: &[u8]| {
-    let Ok(source) = open(bytes.to_vec()) else { return };
+    let Ok(source) = open(bytes.to_vec()) else {
+        return;
+    };
     let marked = insert(&source, 0.001, &sheet()).expect("a sound sheet");
-    let named = |word: &[u8]| bytes.windows(word.len()).any(|w| w.eq_ignore_ascii_case(word));
+    let named = |word: &[u8]| {
+        bytes
+            .windows(word.len())
+            .any(|w| w.eq_ignore_ascii_case(word))
+    };
     // The seed's value and marks of an earlier run are replaced.
     if !named(b"$HANDSEED") && !named(b"TAUT-") && !named(b"TAUT\\") {
         let mut rest = marked.iter();
-        assert!(bytes.iter().all(|byte| rest.any(|other| other == byte)), "bytes are lost");
+        assert!(
+            bytes.iter().all(|byte| rest.any(|other| other == byte)),
+            "bytes are lost"
+        );
     }
     let again = open(marked.clone()).expect("the marked drawing opens");
     let twice = insert(&again, 0.001, &sheet()).expect("a sound sheet");

@@ -13,7 +13,12 @@ fuzz_target!(|text: &str| match job::read("fuzz.toml", text) {
     Err(problems) => {
         assert!(!problems.list().is_empty());
         let lines = text.lines().count() + 1;
-        assert!(problems.list().iter().all(|problem| problems.line(problem) <= lines));
+        assert!(
+            problems
+                .list()
+                .iter()
+                .all(|problem| problems.line(problem) <= lines)
+        );
         assert!(!problems.render(false).is_empty());
     }
 });

@@ -2,9 +2,11 @@
 #![no_main]
 
 use libfuzzer_sys::fuzz_target;
-use tautplan::drawing::{Drawing, Shape, ShapeKind, Text};
-use tautplan::geometry::{Coord, Path, Segment};
+use tautplan::drawing::{Wanted, open, read};
 use tautplan::{floor, job};
+
+/// A drawing in metres with one tendon, open for labels.
+const HEAD: &str = "0\nSECTION\n2\nHEADER\n9\n$ACADVER\n1\nAC1027\n9\n$INSUNITS\n70\n6\n0\nENDSEC\n0\nSECTION\n2\nENTITIES\n0\nLINE\n8\nTENDON-BANDED\n10\n0\n20\n0\n11\n20\n21\n0\n";
 
 fuzz_target!(|input: &str| {
     let mut parts = input.splitn(4, '\u{1F}');
@@ -23,24 +25,10 @@ fuzz_target!(|input: &str| {
         Err(problems) => return assert!(!problems.render(false).is_empty()),
     };
     let labels = next().split('\u{1E}').take(40).enumerate();
-    let texts = labels.map(|(n, content)| label(n, content)).collect();
-    let at = |x, y| Coord { x, y };
-    let line = Segment::Line {
-        from: at(0.0, 0.0),
-        to: at(20.0, 0.0),
-    };
-    let drawing = Drawing {
-        unit_m: 1.0,
-        shapes: vec![Shape {
-            handle: "1".to_owned(),
-            layer: "TENDON-BANDED".to_owned(),
-            kind: ShapeKind::Line,
-            path: Path::new(vec![line]),
-            closed: false,
-        }],
-        texts,
-        ..Drawing::default()
-    };
+    let labels: Vec<String> = labels.map(|(n, content)| label(n, content)).collect();
+    let plan = format!("{HEAD}{}0\nENDSEC\n0\nEOF\n", labels.concat());
+    let source = open(plan.into_bytes()).expect("a drawing");
+    let (drawing, _) = read(&source, &Wanted::everything(), None);
     let (floor, findings) = floor::read(&drawing, &resolved.job);
     assert_eq!(floor.tendons.len(), 1);
     for point in &floor.tendons[0].points {
@@ -58,16 +46,12 @@ fn quoted(text: &str) -> String {
     out + "\""
 }
 
-fn label(number: usize, content: &str) -> Text {
+fn label(number: usize, content: &str) -> String {
+    let layer = ["TENDON-HEIGHT", "TENDON-MARK", "SLAB-ZONE"][number % 3];
+    let content: String = content
+        .chars()
+        .filter(|c| !matches!(c, '\r' | '\n'))
+        .collect();
     let x = 0.5 * number as f64;
-    let at = |dx: f64, y: f64| Coord { x: x + dx, y };
-    Text {
-        handle: format!("{:X}", number + 16),
-        layer: ["TENDON-HEIGHT", "TENDON-MARK", "SLAB-ZONE"][number % 3].to_owned(),
-        content: content.to_owned(),
-        place: at(0.0, 0.1),
-        corners: [at(0.0, 0.1), at(0.4, 0.1), at(0.4, 0.3), at(0.0, 0.3)],
-        height_m: 0.2,
-        rotation_rad: 0.0,
-    }
+    format!("0\nMTEXT\n8\n{layer}\n10\n{x}\n20\n0.3\n40\n0.2\n1\n{content}\n")
 }

@@ -16,7 +16,21 @@ fuzz_target!(|bytes: &[u8]| {
     };
     let (drawing, findings) = read_within(&source, &Wanted::everything(), None, &caps);
     assert!(drawing.shapes.iter().all(|s| s.path.length_m().is_finite()));
-    assert!(drawing.texts.iter().all(|t| t.place.x.is_finite() && t.height_m.is_finite()));
-    assert!(drawing.inserts.iter().all(|i| i.place.x.is_finite() && i.place.y.is_finite()));
-    assert!(findings.iter().all(|f| !f.text.is_empty() && !f.remedy.is_empty()));
+    assert!(
+        drawing
+            .texts
+            .iter()
+            .all(|t| t.place.x.is_finite() && t.height_m.is_finite())
+    );
+    assert!(
+        drawing
+            .inserts
+            .iter()
+            .all(|i| i.place.x.is_finite() && i.place.y.is_finite())
+    );
+    assert!(
+        findings
+            .iter()
+            .all(|f| !f.text.is_empty() && !f.remedy.is_empty())
+    );
 });
