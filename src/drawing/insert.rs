@@ -232,11 +232,12 @@ fn raise_seed(splice: &mut Splice, scan: &Scan, style: Style, supply: Supply) {
     match (&scan.handseed, scan.header_end) {
         (Some((_, old)), _) if *old == seed => {}
         (Some((value, _)), _) => splice.replace(value.clone(), format!("{seed:X}").into_bytes()),
-        (None, Some(end)) => {
+        // A damaged drawing may have a seed where nothing is read; a second one would do harm.
+        (None, Some(end)) if scan.passed_over.is_none() => {
             records.text(9, "$HANDSEED");
             records.handle(5, Some(seed));
             splice.insert(end, records.into_bytes());
         }
-        (None, None) => {}
+        (None, _) => {}
     }
 }
