@@ -15,7 +15,7 @@ use rayon::prelude::*;
 pub use self::refusals::{Refusal, rules};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
-use crate::floor::{Floor, Tendon};
+use crate::floor::{Floor, PointKind, Tendon};
 use crate::job::{Fallback, Job};
 use crate::losses::precompression::{Crossing, Sections};
 use crate::losses::{Effective, Forces, Stressed, steel};
@@ -319,11 +319,12 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
         .tendons
         .iter()
         .flat_map(|tendon| &tendon.points)
-        .filter(|point| point.level_m().is_none() && point.level_m().is_some())
+        .filter(|point| point.kind == PointKind::Anchor)
+        .filter(|point| point.drawn_m.is_none() && point.height_m.is_some())
         .count();
     if anchors > 0 {
         said.push(format!(
-            "Anchors without a height are at mid-depth: {anchors}."
+            "Anchors for which the drawing gives no height of their own are at mid-depth: {anchors}."
         ));
     }
     let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);

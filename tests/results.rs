@@ -180,3 +180,20 @@ fn findings_on_a_mark_used_twice_go_to_the_line_they_stand_on() {
     };
     assert_eq!((of_rule(0), of_rule(1)), (0, 1));
 }
+
+#[test]
+fn anchors_without_a_drawn_height_are_counted_among_the_assumptions() {
+    let mut said = straight("D001", 3.0);
+    for point in &mut said.points {
+        point.drawn_m = point.height_m;
+    }
+    let told = |tendons| {
+        let assumptions = floor(tendons).assumptions;
+        let mut lines = assumptions.into_iter();
+        lines.find(|line| line.contains("mid-depth"))
+    };
+    assert_eq!(told(vec![said.clone()]), None);
+    let unsaid = straight("D002", 9.0);
+    let line = told(vec![said, unsaid]).expect("two anchors of D002");
+    assert!(line.ends_with(": 2."), "{line}");
+}
