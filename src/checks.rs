@@ -14,6 +14,7 @@ pub mod openings;
 pub mod plan;
 pub mod profile;
 pub mod required;
+pub mod standards;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -44,6 +45,8 @@ pub struct Worked<'a> {
     pub turning: Option<Turning>,
     /// Lock-off force at its two anchors, at station 0 and at the path's end, kN; with the forces.
     pub lock_off_kn: Option<[f64; 2]>,
+    /// Its greatest stresses by each method of long-term loss that gives one.
+    pub by_method: &'a [standards::MethodStress],
 }
 
 /// What every rule of one tendon says of it; `ground` is the floor's slab, prepared once for all tendons.
@@ -66,6 +69,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(stressing::anchor_stress(worked, job));
     found.extend(stressing::draw_in_reaches_dead_end(worked));
     found.extend(required::force_below_required(worked));
+    found.extend(standards::along(worked, job));
     found
 }
 
@@ -73,6 +77,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
 pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
+    found.extend(standards::jacking(job));
     found.extend(edge::no_outline(floor));
     found
 }
@@ -88,7 +93,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 17] = [
+static RULES: [&Rule; 18] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -106,6 +111,7 @@ static RULES: [&Rule; 17] = [
     &stressing::DRAW_IN_REACHES_DEAD_END,
     &curvature::CURVATURE_LOSS,
     &required::FORCE_BELOW_REQUIRED,
+    &standards::STANDARD_STRESS,
 ];
 
 impl Worked<'_> {

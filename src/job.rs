@@ -15,6 +15,7 @@ pub mod keys;
 mod pattern;
 mod patterns;
 mod problems;
+mod published;
 mod reading;
 mod resolved;
 mod strand_names;
@@ -24,10 +25,11 @@ mod writing;
 
 pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
+pub use published::{Cement, Environment, LongTermMethod, Published, RelaxationClass};
 pub use reading::read;
 pub use resolved::{
     Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
-    LongTermMethod, Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
 };
 pub use writing::{Proposal, file};
 

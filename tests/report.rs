@@ -134,6 +134,7 @@ fn analysis() -> Analysis {
             ],
             samples: Vec::new(),
             concrete_stress_mpa: Some(1.25),
+            by_method: Vec::new(),
         },
         TendonResult {
             profile: None,
@@ -144,6 +145,7 @@ fn analysis() -> Analysis {
             points: Vec::new(),
             samples: Vec::new(),
             concrete_stress_mpa: None,
+            by_method: Vec::new(),
         },
     ];
     let findings = vec![

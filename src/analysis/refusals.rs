@@ -1,8 +1,11 @@
 //! Why a tendon has no forces, and the finding that says so where no earlier stage has said it.
 
+use super::by_method::{METHOD_WITHOUT_LOSS, REMEDY};
 use crate::finding::{Finding, Level, Rule};
 use crate::floor::Tendon;
+use crate::job::LongTermMethod;
 use crate::losses::CannotStress;
+use crate::losses::long_term::NoLoss;
 use crate::profile::Unknown;
 
 /// See its meaning.
@@ -32,9 +35,10 @@ static CONCRETE_STRESS_UNKNOWN: Rule = Rule {
 
 /// Rules of this stage, by name.
 pub fn rules() -> &'static [&'static Rule] {
-    static RULES: [&Rule; 4] = [
+    static RULES: [&Rule; 5] = [
         &CONCRETE_STRESS_UNKNOWN,
         &CURVE_UNKNOWN,
+        &METHOD_WITHOUT_LOSS,
         &NO_FORCE_LEFT,
         &STRAND_SIZE_UNKNOWN,
     ];
@@ -59,6 +63,9 @@ pub enum Refusal {
     /// The mean concrete stress is not known.
     #[error("the mean concrete stress is not known")]
     ConcreteStressUnknown,
+    /// The method of long-term loss gives none.
+    #[error("{word}: {1}", word = .0.word())]
+    Method(LongTermMethod, NoLoss),
 }
 
 impl Refusal {
@@ -125,6 +132,13 @@ impl Refusal {
                 ),
                 "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
                  coefficients; stress a tendon this short or this winding in another way",
+            )),
+            Self::Method(..) => Some(at(
+                tendon,
+                &METHOD_WITHOUT_LOSS,
+                0.0,
+                format!("{self}; no forces are given"),
+                REMEDY,
             )),
             Self::ConcreteStressUnknown => Some(at(
                 tendon,

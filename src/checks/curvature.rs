@@ -100,7 +100,9 @@ mod tests {
     use super::super::testing::{along, forces, high_to_low, job, point, straight, worked};
     use super::*;
     use crate::geometry::Path;
-    use crate::losses::{Effective, Friction, Stressed};
+    use crate::job::LongTermMethod;
+    use crate::losses::long_term::{Turn, When};
+    use crate::losses::{Along, Effective, Friction, Stressed};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -203,7 +205,11 @@ mod tests {
             for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
                 let stressed =
                     Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
-                let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");
+                let in_slab = Along::new(&stressed, &tendon);
+                let case = in_slab.case(&job.long_term, 1.2, Turn::of_many());
+                let (direct, when) = (LongTermMethod::Direct, When::Final);
+                let effective =
+                    Effective::new(&in_slab, &job.long_term, direct, &case, when).expect("forces");
                 let forces = effective.forces();
                 let turned = turning(&profile, &forces).expect("a stretch");
                 let from_angle = 1.0 - (-job.stressing.mu_per_rad * turned.angle_rad).exp();

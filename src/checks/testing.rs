@@ -74,6 +74,7 @@ pub(super) fn worked(tendon: &Tendon) -> Worked<'_> {
         forces: None,
         turning: None,
         lock_off_kn: None,
+        by_method: &[],
     }
 }
 

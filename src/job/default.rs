@@ -3,7 +3,7 @@
 use super::families::{height_patterns, mark_patterns, thickness_patterns};
 use super::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, Published, SlabJob, StrandSize, Stressing, System, Wobble,
 };
 use crate::units::LengthUnit;
 
@@ -19,6 +19,7 @@ impl Default for Job {
                 mu_per_rad: 0.19,
                 wobble: Wobble::RadPerM(0.008),
                 draw_in_m: 0.006,
+                order: Vec::new(),
             },
             profile: Profiling {
                 inflection: 0.1,
@@ -26,6 +27,7 @@ impl Default for Job {
             },
             long_term: LongTerm {
                 method: LongTermMethod::Direct,
+                methods: Vec::new(),
                 concrete_modulus_transfer_mpa: 28_000.0,
                 concrete_modulus_mpa: 33_000.0,
                 shortening_share: 0.5,
@@ -34,6 +36,7 @@ impl Default for Job {
                 creep_coefficient: 2.0,
                 relaxation_1000h: 0.025,
                 relaxation_factor: 3.0,
+                published: Published::default(),
             },
             limits: Limits {
                 cover_m: 0.020,

@@ -1,7 +1,9 @@
 //! The keys of the job file, in the order a file shows them.
 
 use super::key::{Key, Kind, Place};
-use super::{Datum, END_SHAPES, FromFace, Job, LongTermMethod, Wobble};
+use super::{
+    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Wobble,
+};
 use crate::units::LengthUnit;
 
 /// A number that the job always has; `scale` is key units in one internal unit.
@@ -47,6 +49,17 @@ macro_rules! unit {
             words: UNITS,
             get: |job| Some(job.$($place).+.name()),
             set: |job, word| if let Some(unit) = unit(word) { job.$($place).+ = unit },
+        }
+    };
+}
+
+/// A word of a list of kinds.
+macro_rules! word {
+    ($kind:ident, $($place:ident).+) => {
+        Kind::Choice {
+            words: $kind::WORDS,
+            get: |job| Some(job.$($place).+.word()),
+            set: |job, word| if let Some(kind) = $kind::of(word) { job.$($place).+ = kind },
         }
     };
 }
@@ -271,6 +284,10 @@ pub static KEYS: &[Key] = &[
         "wobble_rad_per_m"),
     key("stressing", "draw_in_mm", number!(0.0..=50.0, stressing.draw_in_m, MM),
         "Wedge draw-in at each live end.", "common practice, 5 to 8 mm"),
+    key("stressing", "order", Kind::Shell(place!(stressing.order)),
+        "Order of stressing: marks or shell patterns, the first stressed first; a tendon that no entry names is stressed after \
+         all that are named. Elastic shortening then goes tendon by tendon.",
+        "each method's own share for tendons stressed in turn"),
 
     key("profile", "inflection", number!(0.01..=0.5, profile.inflection, ONE),
         "Hogging length at a high point as a fraction of the span.", "common practice"),
@@ -280,33 +297,83 @@ pub static KEYS: &[Key] = &[
         },
         "Fit the hogging length to the support heights by least squares.", CONVENTION),
 
-    key("long_term", "method", Kind::Choice {
-            words: &["direct"],
-            get: |job| Some(match job.long_term.method { LongTermMethod::Direct => "direct" }),
-            set: |job, _| job.long_term.method = LongTermMethod::Direct,
+    key("long_term", "method", word!(LongTermMethod, long_term.method),
+        "The method whose forces are drawn and checked; direct: from the strain and coefficients given here; the others by \
+         their own clauses.",
+        "the first of long_term.methods, else direct, the method that hides nothing"),
+    key("long_term", "methods", Kind::Choices {
+            words: LongTermMethod::WORDS,
+            get: |job| job.long_term.methods.iter().map(|method| method.word()).collect(),
+            set: |job, words| job.long_term.methods = words.iter().filter_map(|word| LongTermMethod::of(word)).collect(),
         },
-        "How long-term loss is worked out; direct: from the strain and coefficients given here.",
-        "the method that hides nothing"),
+        "Methods to show side by side, with the spread between them.",
+        "none beside long_term.method"),
     key("long_term", "concrete_modulus_transfer_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_transfer_mpa, ONE),
-        "Modulus of the concrete at stressing.",
+        "Modulus of the concrete at stressing; direct only, the other methods work it out.",
         "EN 1992-1-1 3.1.3(3) for C30/37 at some 60 % of its strength, from memory"),
     key("long_term", "concrete_modulus_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_mpa, ONE),
-        "Modulus of the concrete at 28 days.", "EN 1992-1-1 table 3.1 for C30/37, from memory"),
+        "Modulus of the concrete at 28 days; direct only, the other methods work it out.", "EN 1992-1-1 table 3.1 for C30/37, from memory"),
     key("long_term", "shortening_share", number!(0.0..=1.0, long_term.shortening_share, ONE),
-        "Share of (Ep/Eci) times the concrete stress that is lost by elastic shortening.",
+        "Share of (Ep/Eci) times the concrete stress that is lost by elastic shortening; direct only.",
         "common practice: 0.5 for tendons stressed in turn, 0 where all are stressed at once"),
     key("long_term", "concrete_stress_mpa", maybe!(0.0..=30.0, 1.5, long_term.concrete_stress_mpa, ONE),
         "Mean compression in the concrete along the tendons.",
         "worked out from the floor's own tendons and slab"),
     key("long_term", "shrinkage_strain", number!(0.0..=0.002, long_term.shrinkage_strain, ONE),
-        "Shrinkage of the concrete after stressing.", "common practice for a floor indoors, from memory"),
+        "Shrinkage of the concrete after stressing; direct only.", "common practice for a floor indoors, from memory"),
     key("long_term", "creep_coefficient", number!(0.0..=10.0, long_term.creep_coefficient, ONE),
-        "Final creep coefficient.", "common practice for a floor indoors, from memory"),
+        "Final creep coefficient; direct only.", "common practice for a floor indoors, from memory"),
     key("long_term", "relaxation_1000h", number!(0.0..=0.2, long_term.relaxation_1000h, ONE),
-        "Relaxation at 1000 hours, as a fraction of the stress after lock-off.",
+        "Relaxation at 1000 hours, as a fraction of the stress after lock-off; direct only.",
         "EN 1992-1-1 3.3.2(6), class 2: 2.5 %"),
     key("long_term", "relaxation_factor", number!(0.0..=10.0, long_term.relaxation_factor, ONE),
-        "Final relaxation over the 1000-hour value.", "common practice, from memory"),
+        "Final relaxation over the 1000-hour value; direct only.", "common practice, from memory"),
+    key("long_term", "strength_mpa", number!(1.0..=200.0, long_term.published.strength_mpa, ONE),
+        "Cylinder strength of the concrete at 28 days (f_ck, f'c; a cube's strength is taken as this over 0.8).",
+        "C30/37, common practice for floors"),
+    key("long_term", "strength_at_stressing_mpa", number!(1.0..=200.0, long_term.published.strength_at_stressing_mpa, ONE),
+        "Cylinder strength proven before stressing.", "common practice, 20 to 25 MPa"),
+    key("long_term", "cement_class", word!(Cement, long_term.published.cement),
+        "Class of cement, slow, normal or rapid; en1992.", "EN 1992-1-1 3.1.2(6), the class between the other two"),
+    key("long_term", "humidity_percent", number!(0.0..=100.0, long_term.published.humidity, ONE),
+        "Mean relative humidity of the air around the floor; en1992 and aci423.", "EN 1992-1-1 figure 3.1: 50 % indoors, from memory"),
+    key("long_term", "environment", word!(Environment, long_term.published.environment),
+        "Where the floor stands; as3600, and for bs8110 whether that is indoors.", "a floor of a building is indoors"),
+    key("long_term", "curing_days", number!(0.0..=1000.0, long_term.published.curing_days, ONE),
+        "Age of the concrete at the end of moist curing.", "common practice"),
+    key("long_term", "stressing_days", number!(0.1..=1000.0, long_term.published.stressing_days, ONE),
+        "Age of the concrete at stressing.", "common practice, 3 to 5 days"),
+    key("long_term", "final_days", number!(100.0..=100_000.0, long_term.published.final_days, ONE),
+        "Age of the concrete that counts as final; en1992 and as3600.", "50 years, the design working life of EN 1990 table 2.1"),
+    key("long_term", "asked_days", maybe!(0.1..=100_000.0, 90.0, long_term.published.asked_days, ONE),
+        "Age of the concrete at which the service force is asked for; only en1992 and as3600 know one before the final.",
+        "final_days"),
+    key("long_term", "notional_thickness_mm", maybe!(10.0..=5000.0, 250.0, long_term.published.notional_thickness_m, MM),
+        "2 A/u of the drying slab: h_0, t_h, twice V/S; its thickness where both faces dry, twice that where one does.",
+        "the slab's own thickness along the tendon"),
+    key("long_term", "relaxation_class", word!(RelaxationClass, long_term.published.relaxation_class),
+        "Relaxation of the strand: ordinary (class 1, stress-relieved), low (class 2), bar (class 3).", "common practice"),
+    key("long_term", "bonded", Kind::Switch {
+            get: |job| job.long_term.published.bonded,
+            set: |job, on| job.long_term.published.bonded = on,
+        },
+        "Whether the ducts are grouted: a bonded tendon loses by the stress at each place, an unbonded one by the mean.",
+        "common practice for flat ducts"),
+    key("long_term", "bonded_steel_ratio", number!(0.0..=0.1, long_term.published.bonded_steel_ratio, ONE),
+        "Bonded steel over concrete area, A_s/A_g, which restrains shrinkage; as3600.", "none, which loses most"),
+    key("long_term", "balanced_share", number!(0.2..=2.0, long_term.published.balanced_share, ONE),
+        "Share of the permanent load that the tendons' own curvature balances; bonded tendons of the published methods.",
+        "judgement of this program: all of it, so that in the end bending adds nothing to the mean stress"),
+    key("long_term", "load_share_at_stressing", number!(0.0..=1.0, long_term.published.load_share_at_stressing, ONE),
+        "Share of the permanent load that acts at stressing already, the slab's own weight.", "judgement of this program"),
+    key("long_term", "drying_basic", number!(0.0..=0.002, long_term.published.drying_basic, ONE),
+        "Basic drying shrinkage strain; as3600.", "AS 3600 3.1.7.2: 800e-6; 900e-6 and 1000e-6 elsewhere, from memory"),
+    key("long_term", "basic_relaxation", maybe!(0.0..=0.2, 0.02, long_term.published.basic_relaxation, ONE),
+        "Basic relaxation R_b of the strand at 1000 hours, as a fraction; as3600, which asks for it.",
+        "as3600 gives no loss: the standard's figure was not at hand"),
+    key("long_term", "relaxation_stress_factor", maybe!(0.0..=5.0, 1.0, long_term.published.relaxation_stress_factor, ONE),
+        "Factor on the basic relaxation for the stress in the strand, and for warmth above 20 degrees; as3600, which asks for it.",
+        "as3600 gives no loss: the standard's figure was not at hand"),
 
     key("limits", "cover_mm", number!(0.0..=300.0, limits.cover_m, MM),
         "Least clear concrete between a duct and either face.", "common practice; the project's durability rules decide"),

@@ -31,6 +31,7 @@ pub fn read(file_name: &str, text: &str) -> Result<Resolved, Problems> {
     let syntax = reader.problems.len();
     reader.tables(root.get_ref());
     reader.contradictions();
+    reader.methods();
     // After a broken line what follows it on that line is guesswork: the mistake itself is enough.
     let (broken, mut found) = {
         let found = reader.problems.split_off(syntax);

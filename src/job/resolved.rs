@@ -3,6 +3,7 @@
 use std::fmt;
 
 use super::pattern::Pattern;
+use super::published::{LongTermMethod, Published};
 use crate::units::LengthUnit;
 
 /// Everything a job decides.
@@ -208,6 +209,8 @@ pub struct Stressing {
     pub wobble: Wobble,
     /// Wedge draw-in at each live end, metres.
     pub draw_in_m: f64,
+    /// Order of stressing: marks or shell patterns, any letter case; empty where the job gives none.
+    pub order: Vec<String>,
 }
 
 /// Unintended curvature: φ = μ (α + k s), or φ = μ α + K s.
@@ -231,8 +234,10 @@ pub struct Profiling {
 /// Elastic shortening and long-term loss.
 #[derive(Debug, Clone)]
 pub struct LongTerm {
-    /// Which method.
+    /// The method whose forces are drawn and checked.
     pub method: LongTermMethod,
+    /// Methods to show beside it; where it is among them it is shown once.
+    pub methods: Vec<LongTermMethod>,
     /// Concrete modulus at stressing, MPa.
     pub concrete_modulus_transfer_mpa: f64,
     /// Concrete modulus at 28 days, MPa.
@@ -249,13 +254,8 @@ pub struct LongTerm {
     pub relaxation_1000h: f64,
     /// Final relaxation over the 1000-hour value.
     pub relaxation_factor: f64,
-}
-
-/// A long-term method.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum LongTermMethod {
-    /// The job gives strain and coefficients.
-    Direct,
+    /// What the published methods ask.
+    pub published: Published,
 }
 
 /// Limits of the rules; each field's sentence says which.

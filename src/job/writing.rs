@@ -70,7 +70,9 @@ fn describe(text: &mut String, key: &Key, job: &Job) {
         None => format!("Not given: {}. For example:", key.source),
     };
     let allowed = match &key.kind {
-        Kind::Number { .. } | Kind::Choice { .. } => format!("{}. ", capital(&key.expected())),
+        Kind::Number { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
+            format!("{}. ", capital(&key.expected()))
+        }
         _ => String::new(),
     };
     comment(text, &format!("{allowed}{source}"));

@@ -4,6 +4,7 @@ mod curve;
 mod drawn;
 mod forces;
 mod friction;
+mod methods;
 
 use super::DrawingFacts;
 use super::summary::{assumed, cautions};

@@ -5,6 +5,7 @@ mod cells;
 use self::cells::{end_kind, point_kind, rounded, run, text, written};
 use super::record::{FindingRecord, TendonRecord};
 use crate::analysis::{Analysis, pair};
+use crate::job::LongTermMethod;
 
 /// A row a tendon.
 pub fn tendons_csv(analysis: &Analysis) -> String {
@@ -36,11 +37,15 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
         "mean_service_kn",
         "concrete_stress_mpa",
     ];
+    let methods = side_by_side(analysis);
+    let more = methods.iter().map(|word| format!("mean_service_{word}_kn"));
+    let spread = (!methods.is_empty()).then(|| "method_spread_percent".to_owned());
+    let header = all(&header, more.chain(spread));
     let rows = pair(analysis).map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
         let losses = record.losses.as_ref();
         let jack_kn = result.forces.as_ref().map(|forces| forces.jack_kn);
-        vec![
+        let mut row = vec![
             text(record.mark),
             text(record.handle),
             text(record.layer),
@@ -67,7 +72,18 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
             rounded(losses.and_then(|l| l.relaxation_mpa), 1),
             rounded(record.mean_service_kn, 1),
             rounded(record.concrete_stress_mpa, 2),
-        ]
+        ];
+        row.extend(methods.iter().map(|word| {
+            let by_method = record.losses_by_method.get(word);
+            rounded(by_method.and_then(|method| method.mean_service_kn), 1)
+        }));
+        if !methods.is_empty() {
+            row.push(rounded(
+                record.method_spread_ratio.map(|ratio| 100.0 * ratio),
+                1,
+            ));
+        }
+        row
     });
     written(&header, rows)
 }
@@ -98,11 +114,17 @@ pub fn points_csv(analysis: &Analysis) -> String {
         "service_kn",
         "height_is",
     ];
+    let methods = side_by_side(analysis);
+    let header = all(
+        &header,
+        methods.iter().map(|word| format!("service_{word}_kn")),
+    );
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
         let (mark, handle) = (text(record.mark), text(record.handle));
+        let methods = methods.clone();
         record.points.into_iter().map(move |point| {
-            vec![
+            let mut row = vec![
                 mark.clone(),
                 handle.clone(),
                 point_kind(point.kind).to_owned(),
@@ -117,7 +139,12 @@ pub fn points_csv(analysis: &Analysis) -> String {
                 rounded(point.transfer_kn, 1),
                 rounded(point.service_kn, 1),
                 point.height_mm.map_or("", |_| HEIGHT_IS).to_owned(),
-            ]
+            ];
+            row.extend(methods.iter().map(|word| {
+                let by_method = point.service_by_method_kn.get(word);
+                rounded(by_method.copied().flatten(), 1)
+            }));
+            row
         })
     });
     written(&header, rows)
@@ -206,4 +233,22 @@ pub fn findings_csv(analysis: &Analysis) -> String {
         ]
     });
     written(&header, rows)
+}
+
+/// Words of the job's methods where there are several, to be shown beside one another.
+fn side_by_side(analysis: &Analysis) -> Vec<&'static str> {
+    let methods = analysis.methods();
+    if methods.len() < 2 {
+        return Vec::new();
+    }
+    methods.into_iter().map(LongTermMethod::word).collect()
+}
+
+/// A header with columns that depend on the job.
+fn all(header: &[&str], more: impl Iterator<Item = String>) -> Vec<String> {
+    header
+        .iter()
+        .map(|&name| name.to_owned())
+        .chain(more)
+        .collect()
 }

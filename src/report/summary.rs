@@ -1,5 +1,7 @@
 //! The short summary that the terminal shows.
 
+mod methods;
+
 use std::collections::BTreeMap;
 
 use super::DrawingFacts;
@@ -26,6 +28,7 @@ const LINE: usize = 120;
 pub fn summary(facts: &DrawingFacts, analysis: &Analysis, job: &Job, files: &[String]) -> String {
     let mut parts = vec![counts(facts, analysis, job)];
     parts.extend(worst(analysis));
+    parts.extend(methods::part(analysis));
     parts.push(findings(&analysis.findings));
     parts.push(assumed(analysis));
     parts.extend(list("Written:", files));

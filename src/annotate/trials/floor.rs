@@ -211,6 +211,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         points: results,
         samples,
         concrete_stress_mpa: Some(1.4),
+        by_method: Vec::new(),
     };
     let tendon = Tendon {
         mark: mark.to_owned(),

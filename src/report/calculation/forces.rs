@@ -1,27 +1,26 @@
 //! Draw-in, elastic shortening, long-term loss, the forces that are left, and the extension.
 
 use super::drawn::kind;
-use super::{grid, number};
+use super::{grid, methods, number};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Tendon};
 use crate::job::Job;
-use crate::losses::{Forces, LaterLosses};
+use crate::losses::Forces;
 
 /// Everything after jacking.
 pub(super) fn part(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
     let mut parts = vec![draw_in(job, tendon, forces, result)];
-    match &forces.later {
-        Some(later) => {
-            parts.push(shortening(job, forces, later, result));
-            parts.push(long_term(job, forces, later, result));
-        }
-        None => parts.push(
-            "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
-                .to_owned(),
-        ),
-    }
+    parts.push(if forces.later.is_some() {
+        methods::drawn(job, result)
+    } else {
+        "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
+            .to_owned()
+    });
     parts.push(left(tendon, forces, result));
     parts.push(extension(job, forces));
+    parts.push(methods::others(result));
+    parts.push(methods::side_by_side(tendon, result));
+    parts.retain(|part| !part.is_empty());
     parts.join("\n")
 }
 
@@ -77,45 +76,6 @@ fn station(tendon: &Tendon, end: usize) -> String {
         } else {
             tendon.path.length_m()
         }
-    )
-}
-
-fn shortening(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
-    let long_term = &job.long_term;
-    format!(
-        "5. Elastic shortening: share x (Ep / Eci) x sigma_c = {} x ({} / {}) x {} = {:.3} MPa\n  \
-         sigma_c = {} MPa: {}\n",
-        long_term.shortening_share,
-        forces.steel.modulus_mpa,
-        long_term.concrete_modulus_transfer_mpa,
-        number(result.concrete_stress_mpa, 4),
-        later.shortening_mpa,
-        number(result.concrete_stress_mpa, 4),
-        if long_term.concrete_stress_mpa.is_some() {
-            "given by the job"
-        } else {
-            "mean along the tendon of the floor's lock-off forces over the slab's sections in this direction"
-        }
-    )
-}
-
-fn long_term(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
-    let long_term = &job.long_term;
-    format!(
-        "6. Long-term loss, method direct\n  \
-         shrinkage: Ep x strain = {modulus} x {} = {:.3} MPa\n  \
-         creep: (Ep / Ec) x coefficient x sigma_c = ({modulus} / {}) x {} x {} = {:.3} MPa\n  \
-         relaxation: {} x {} of the stress after lock-off at each place; mean along the tendon {:.3} MPa\n",
-        long_term.shrinkage_strain,
-        later.shrinkage_mpa,
-        long_term.concrete_modulus_mpa,
-        long_term.creep_coefficient,
-        number(result.concrete_stress_mpa, 4),
-        later.creep_mpa,
-        long_term.relaxation_1000h,
-        long_term.relaxation_factor,
-        later.relaxation_mpa,
-        modulus = forces.steel.modulus_mpa,
     )
 }
 

@@ -58,14 +58,17 @@ pub(super) fn point_kind(kind: PointKind) -> &'static str {
 }
 
 /// Header and rows as a table.
-pub(super) fn written(header: &[&str], rows: impl Iterator<Item = Vec<String>>) -> String {
+pub(super) fn written<S: AsRef<str>>(
+    header: &[S],
+    rows: impl Iterator<Item = Vec<String>>,
+) -> String {
     let mut writer = ::csv::WriterBuilder::new()
         .terminator(::csv::Terminator::CRLF)
         .flexible(true)
         .from_writer(Vec::new());
     // Writing into memory cannot fail, and rows of any length are taken.
     let mut write = |row: &mut dyn Iterator<Item = &str>| writer.write_record(row).ok();
-    write(&mut header.iter().copied());
+    write(&mut header.iter().map(AsRef::as_ref));
     for row in rows {
         write(&mut row.iter().map(String::as_str));
     }

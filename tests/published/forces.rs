@@ -1,4 +1,4 @@
-//! Published figures and independent computations, each with its source and tolerance.
+//! Profile, friction, draw-in, extension.
 
 use geo::Coord;
 use tautplan::floor::{End, EndKind, Point, PointKind, Run, Tendon};
@@ -7,6 +7,7 @@ use tautplan::job::Profiling;
 use tautplan::losses::{Friction, Steel, Stressed, force_kn, loss_kn};
 use tautplan::profile::{Profile, Span, build};
 
+use crate::near;
 use EndKind::{Dead, Live};
 
 /// Straight tendon through points (kind, station, level above the soffit), in a slab of this thickness; metres.
@@ -51,14 +52,6 @@ fn curve(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Profile {
         fit_inflection: false,
     };
     build(&tendon(points, thickness_m), &profiling).expect("every level is known")
-}
-
-fn near(found: f64, published: f64, relative: f64) {
-    assert!(
-        ((found - published) / published).abs() <= relative,
-        "found {found}, published {published}, off by {:.2e}",
-        (found - published) / published
-    );
 }
 
 /// Half circle of 5 m in plan, level: EDF R&D, `Code_Aster` validation case `ZZZZ347f` (references marked analytic).
