@@ -137,7 +137,7 @@ impl Refusal {
                 tendon,
                 &METHOD_WITHOUT_LOSS,
                 0.0,
-                format!("{self}; no forces are given"),
+                format!("{self}; only jacking and lock-off forces are given"),
                 REMEDY,
             )),
             Self::ConcreteStressUnknown => Some(at(
