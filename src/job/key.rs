@@ -45,15 +45,6 @@ pub enum Kind {
         /// Sets it to a word of the list.
         set: fn(&mut Job, &str),
     },
-    /// A list of some of these words.
-    Choices {
-        /// The words.
-        words: &'static [&'static str],
-        /// Reads it.
-        get: fn(&Job) -> Vec<&'static str>,
-        /// Sets it to words of the list.
-        set: fn(&mut Job, &[String]),
-    },
     /// `true` or `false`.
     Switch {
         /// Reads it.
@@ -123,7 +114,6 @@ impl Key {
         match &self.kind {
             Kind::Number { get, .. } => get(job).map(|number| json!(number)),
             Kind::Choice { get, .. } => get(job).map(|word| json!(word)),
-            Kind::Choices { get, .. } => Some(json!(get(job))),
             Kind::Switch { get, .. } => Some(json!(get(job))),
             Kind::Shell(place) | Kind::Words(place) | Kind::Choices { place, .. } => {
                 Some(json!((place.get)(job)))
@@ -147,7 +137,6 @@ impl Key {
         match &self.kind {
             Kind::Number { least, most, .. } => format!("a number from {least} to {most}"),
             Kind::Choice { words, .. } => format!("one of {}", quoted(words)),
-            Kind::Choices { words, .. } => format!("a list of some of {}", quoted(words)),
             Kind::Switch { .. } => "true or false".to_owned(),
             Kind::Shell(_) => "a list of shell patterns, such as [\"NAME*\"]".to_owned(),
             Kind::Words(_) => "a list of words, such as [\"H\", \"HIGH\"]".to_owned(),

@@ -303,8 +303,7 @@ pub static KEYS: &[Key] = &[
         "the first of long_term.methods, else direct, the method that hides nothing"),
     key("long_term", "methods", Kind::Choices {
             words: LongTermMethod::WORDS,
-            get: |job| job.long_term.methods.iter().map(|method| method.word()).collect(),
-            set: |job, words| job.long_term.methods = words.iter().filter_map(|word| LongTermMethod::of(word)).collect(),
+            place: place!(long_term.methods),
         },
         "Methods to show side by side, with the spread between them.",
         "none beside long_term.method"),

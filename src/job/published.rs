@@ -132,7 +132,11 @@ impl LongTerm {
     /// Every method that the job names, the one that is drawn first, each once.
     pub fn all_methods(&self) -> Vec<LongTermMethod> {
         let mut all = vec![self.method];
-        for &method in &self.methods {
+        for method in self
+            .methods
+            .iter()
+            .filter_map(|word| LongTermMethod::of(word))
+        {
             if !all.contains(&method) {
                 all.push(method);
             }
@@ -148,7 +152,8 @@ impl Reader {
             |reader: &Self, name: &str| reader.given.get(&format!("long_term.{name}")).cloned();
         let (method, methods) = (span(self, "method"), span(self, "methods"));
         let long_term = &mut self.job.long_term;
-        if let (None, Some(&first)) = (&method, long_term.methods.first()) {
+        let first = long_term.methods.first();
+        if let (None, Some(first)) = (&method, first.and_then(|word| LongTermMethod::of(word))) {
             long_term.method = first;
         }
         if !long_term.all_methods().contains(&LongTermMethod::As3600) {

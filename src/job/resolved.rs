@@ -236,8 +236,8 @@ pub struct Profiling {
 pub struct LongTerm {
     /// The method whose forces are drawn and checked.
     pub method: LongTermMethod,
-    /// Methods to show beside it; where it is among them it is shown once.
-    pub methods: Vec<LongTermMethod>,
+    /// Words of the methods to show beside it ([`LongTermMethod::of`]); where it is among them it is shown once.
+    pub methods: Vec<String>,
     /// Concrete modulus at stressing, MPa.
     pub concrete_modulus_transfer_mpa: f64,
     /// Concrete modulus at 28 days, MPa.

@@ -40,11 +40,6 @@ impl Reader {
                     );
                 }
             }
-            (Kind::Choices { words, set, .. }, DeValue::Array(items)) => {
-                if let Some(chosen) = self.choices(key, words, entry, items) {
-                    set(&mut self.job, &chosen);
-                }
-            }
             (Kind::Switch { set, .. }, DeValue::Boolean(on)) => set(&mut self.job, *on),
             (Kind::StrandName { set, .. }, DeValue::String(name)) => set(&mut self.job, name),
             (Kind::Words(place), DeValue::Array(items)) => {
@@ -213,32 +208,6 @@ impl Reader {
                 None
             }
         }
-    }
-
-    /// A list of some of these words.
-    fn choices(
-        &mut self,
-        key: &Key,
-        known: &[&str],
-        entry: &Entry<'_>,
-        items: &DeArray<'_>,
-    ) -> Option<Vec<String>> {
-        let chosen = self.words(key, entry, items)?;
-        for (word, span) in &chosen {
-            if !known.contains(&word.as_str()) {
-                let near = nearest(word, known.iter().copied());
-                self.mistake(
-                    span.clone(),
-                    format!("`{}` does not know \"{}\"", key.name, plain(word)),
-                    format!("expected {}", key.expected()),
-                    near.map_or_else(
-                        || "take it out of the list".to_owned(),
-                        |near| format!("did you mean \"{near}\"?"),
-                    ),
-                );
-            }
-        }
-        Some(chosen.into_iter().map(|(word, _)| word).collect())
     }
 
     /// A list of words that is not empty (unless the default is), each with its place.
