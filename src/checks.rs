@@ -14,6 +14,7 @@ pub mod openings;
 pub mod plan;
 pub mod profile;
 pub mod required;
+pub mod soffit;
 pub mod standards;
 pub mod stressing;
 #[cfg(test)]
@@ -60,6 +61,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(elevation::high_below_low(worked));
     found.extend(elevation::support_off_curve(worked, job));
     found.extend(cover::height_outside_cover(worked, ground, &chords, job));
+    found.extend(soffit::soffit_doubtful(worked, ground, job));
     found.extend(profile::hogging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
     found.extend(openings::crosses_opening(worked, ground, &chords, job));
@@ -93,7 +95,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 18] = [
+static RULES: [&Rule; 19] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -101,6 +103,7 @@ static RULES: [&Rule; 18] = [
     &elevation::HIGH_BELOW_LOW,
     &elevation::SUPPORT_OFF_CURVE,
     &cover::HEIGHT_OUTSIDE_COVER,
+    &soffit::SOFFIT_DOUBTFUL,
     &profile::HOGGING_RADIUS,
     &plan::PLAN_RADIUS,
     &openings::CROSSES_OPENING,

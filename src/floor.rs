@@ -1,5 +1,6 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
+mod areas;
 mod assemble;
 mod bridges;
 mod candidates;
@@ -14,8 +15,11 @@ mod lengths;
 mod levels;
 mod lines;
 mod marks;
+mod measured;
 mod missing;
+mod nearer_face;
 mod order;
+mod outlines;
 mod pieces;
 mod points;
 mod readings;
@@ -24,9 +28,12 @@ mod settle;
 mod slab;
 mod symbols;
 mod types;
+mod zone_texts;
+mod zones;
 
 pub use assemble::read;
-pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line, thickness_of_line};
+pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line};
 pub use rules::RULES;
 pub use symbols::{EndWords, Figure, figures};
-pub use types::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};
+pub use types::{End, EndKind, Faces, Floor, Point, PointKind, Run, Slab, Tendon, Zone};
+pub use zone_texts::{ZoneText, thickness_of_line, zone_text_of_line};

@@ -29,7 +29,7 @@ pub use published::{Cement, Environment, LongTermMethod, Published, RelaxationCl
 pub use reading::read;
 pub use resolved::{
     Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
-    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, Wobble,
 };
 pub use writing::{Proposal, file};
 

@@ -77,7 +77,9 @@ impl Meant {
                     place: path.place_at(station_m * stretch),
                     drawn_m: None,
                     height_m: Some(height_m),
+                    other_soffit_m: None,
                     thickness_m: Some(0.25),
+                    top_m: 0.0,
                 })
                 .collect(),
             path,

@@ -42,7 +42,9 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
                 place: at(stations_m[n], y),
                 drawn_m: None,
                 height_m: heights_m[n],
+                other_soffit_m: None,
                 thickness_m: Some(0.2),
+                top_m: 0.0,
             })
             .collect(),
     }

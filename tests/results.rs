@@ -44,7 +44,9 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
                 place: path.place_at(share * length_m),
                 drawn_m: None,
                 height_m: Some(height_m),
+                other_soffit_m: None,
                 thickness_m: Some(0.2),
+                top_m: 0.0,
             })
             .to_vec(),
         path,

@@ -79,7 +79,12 @@ fn height(point: &Point) -> String {
         format!("{} above the soffit", mm(height_m))
     });
     let below_top = point.level_m().map_or(String::new(), |level_m| {
-        format!(", {} below the top of the slab", mm(-level_m))
+        let slab = if point.top_m == 0.0 {
+            "slab"
+        } else {
+            "general slab"
+        };
+        format!(", {} below the top of the {slab}", mm(-level_m))
     });
     from_soffit + &below_top
 }

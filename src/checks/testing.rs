@@ -62,7 +62,9 @@ pub(super) fn point(kind: PointKind, station_m: f64, height_m: Option<f64>) -> P
         },
         drawn_m: None,
         height_m,
+        other_soffit_m: None,
         thickness_m: Some(0.2),
+        top_m: 0.0,
     }
 }
 

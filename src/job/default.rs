@@ -3,7 +3,7 @@
 use super::families::{height_patterns, mark_patterns, thickness_patterns};
 use super::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, Published, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, Published, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, Wobble,
 };
 use crate::units::LengthUnit;
 
@@ -12,7 +12,11 @@ impl Default for Job {
     fn default() -> Self {
         Self {
             conventions: conventions(),
-            slab: SlabJob { thickness_m: None },
+            slab: SlabJob {
+                thickness_m: None,
+                top_level_m: 0.0,
+                step_keeps: StepKeeps::Thickness,
+            },
             system: system(),
             stressing: Stressing {
                 jacking_ratio: 0.75,
@@ -95,6 +99,7 @@ fn conventions() -> Conventions {
             unit: LengthUnit::Mm,
             datum: Datum::Centroid,
             from: FromFace::Soffit,
+            soffit: Soffit::Local,
             strand_in_duct_low_m: 0.013,
             strand_in_duct_high_m: 0.007,
         },

@@ -110,7 +110,8 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
     in_unit(&BY_UNIT, unit)
 }
 
-/// Slab thickness in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`.
+/// Thickness and levels of slab and zones in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`; `TOS -50`,
+/// `SSL +0.05`, `+0.05`; `SOFFIT -400`; `50 SET DOWN`. A level may stand behind a thickness.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
     static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
         by_unit(&[
@@ -123,6 +124,24 @@ pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
                 "thickness, word last",
                 r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?$",
             ),
+            (
+                "top level",
+                r"(?i)^BEHIND(?:T\.?O\.?[SC]\.?|SSL|TOP)\s*[=:]?\s*(?<top>LEVEL)$",
+            ),
+            (
+                "soffit level",
+                r"(?i)^BEHIND(?:SOFFIT|SOF|U/S|USL|B\.?O\.?S\.?)\s*[=:]?\s*(?<soffit>LEVEL)$",
+            ),
+            (
+                "set down, word first",
+                r"(?i)^BEHIND(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)\s*[=:]?\s*(?<down>NUMBER)$",
+            ),
+            (
+                "set down, word last",
+                r"(?i)^BEHIND(?<down>NUMBER)\s*(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)$",
+            ),
+            // Without a word a level has its sign.
+            ("signed level", r"(?i)^BEHIND(?<top>[-+−–±]LEVEL)$"),
         ])
     });
     in_unit(&BY_UNIT, unit)
@@ -135,7 +154,14 @@ fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
     use LengthUnit::{Cm, Ft, In, M, Mm};
     [Mm, Cm, M, In, Ft].map(|unit| {
         let with_number = |(name, expression): &(&str, &str)| {
-            pattern(name, &expression.replace("NUMBER", number(unit)))
+            let expression = expression
+                .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
+                .replace(
+                    "LEVEL",
+                    &format!(r"[-+−–±]?\s*(?:\d+[.,]\d{{3}}(?:\s*m)?|{})", number(unit)),
+                )
+                .replace("NUMBER", number(unit));
+            pattern(name, &expression)
         };
         (unit, expressions.iter().filter_map(with_number).collect())
     })

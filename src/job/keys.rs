@@ -2,7 +2,8 @@
 
 use super::key::{Key, Kind, Place};
 use super::{
-    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Wobble,
+    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Soffit,
+    StepKeeps, Wobble,
 };
 use crate::units::LengthUnit;
 
@@ -209,7 +210,19 @@ pub static KEYS: &[Key] = &[
             get: |job| Some(job.conventions.height.from.word()),
             set: |job, word| job.conventions.height.from = FromFace::of(word),
         },
-        "What a height is measured from: the local soffit upwards, the top downwards, or the nearer of the two.", CONVENTION),
+        "What a height is measured from: the soffit upwards, the local top downwards, or the nearer of the two (a high point from the top, a low point from the soffit).", CONVENTION),
+    key("height", "soffit", Kind::Choice {
+            words: &["local", "general"],
+            get: |job| Some(match job.conventions.height.soffit {
+                Soffit::Local => "local",
+                Soffit::General => "general",
+            }),
+            set: |job, word| job.conventions.height.soffit = match word {
+                "general" => Soffit::General,
+                _ => Soffit::Local,
+            },
+        },
+        "Which soffit heights are measured from in drops, beams and steps: the one there, or the general slab's (below which heights are negative).", CONVENTION),
     key("height", "patterns", Kind::Expressions {
             groups: &["value"],
             also: &["word"],
@@ -234,10 +247,25 @@ pub static KEYS: &[Key] = &[
     key("slab", "thickness_mm", maybe!(50.0..=5000.0, 250.0, slab.thickness_m, MM),
         "Thickness outside every zone.",
         "the drawing's own text"),
+    key("slab", "top_level_m", number!(-1000.0..=10_000.0, slab.top_level_m, ONE),
+        "Level of the general slab's top as the drawing counts levels: zones' levels are taken relative to it.", CONVENTION),
+    key("slab", "step_keeps", Kind::Choice {
+            words: &["thickness", "soffit"],
+            get: |job| Some(match job.slab.step_keeps {
+                StepKeeps::Thickness => "thickness",
+                StepKeeps::Soffit => "soffit",
+            }),
+            set: |job, word| job.slab.step_keeps = match word {
+                "soffit" => StepKeeps::Soffit,
+                _ => StepKeeps::Thickness,
+            },
+        },
+        "What a zone whose text gives only a top has in common with the slab around it.",
+        "common practice: a thickness holds unless noted otherwise"),
     key("slab", "text_unit", unit!(conventions.thickness_unit),
-        "Unit of thickness texts.", CONVENTION),
+        "Unit of thickness and level texts; a level with two decimals or more on a drawing in mm is in metres.", CONVENTION),
     key("slab", "text_patterns", Kind::Expressions {
-            groups: &["value"],
+            groups: &["value", "top", "soffit", "down"],
             also: &[],
             says: &["unit"],
             place: place!(conventions.thickness_patterns),

@@ -64,7 +64,7 @@ pub struct Conventions {
     pub low_words: Vec<String>,
     /// Words that stand for mid-depth, whatever the thickness.
     pub middle_words: Vec<String>,
-    /// Patterns of slab thickness; group `value`.
+    /// Patterns of a slab's or a zone's thickness and levels; groups `value`, `top`, `soffit`, `down`.
     pub thickness_patterns: Vec<Pattern>,
     /// Unit of thickness texts.
     pub thickness_unit: LengthUnit,
@@ -118,6 +118,8 @@ pub struct HeightReading {
     pub datum: Datum,
     /// What is measured from.
     pub from: FromFace,
+    /// Which soffit, where it is one.
+    pub soffit: Soffit,
     /// Strand centroid above the duct's underside at a low point, metres (the strand rises to the duct's top).
     pub strand_in_duct_low_m: f64,
     /// Strand centroid above the duct's underside at a high point, metres.
@@ -127,8 +129,12 @@ pub struct HeightReading {
 impl fmt::Display for HeightReading {
     /// Such as `mm above the local soffit to the centroid of the strands`.
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let soffit = match self.soffit {
+            Soffit::Local => "above the local soffit",
+            Soffit::General => "above the general slab's soffit",
+        };
         let from = match self.from {
-            FromFace::Soffit => "above the local soffit",
+            FromFace::Soffit => soffit,
             FromFace::Top => "below the top of the slab",
             FromFace::NearerFace => "from the nearer face",
         };
@@ -159,8 +165,17 @@ pub enum FromFace {
     Soffit,
     /// The top of the slab, downwards.
     Top,
-    /// Whichever of the two is nearer, towards the slab's middle.
+    /// Whichever of the two is nearer: a high point from the top, a low point from the soffit.
     NearerFace,
+}
+
+/// The soffit that heights are measured from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Soffit {
+    /// The one at the place.
+    Local,
+    /// The general slab's: below it, in a drop or a beam, heights are negative.
+    General,
 }
 
 /// The slab, where the drawing does not say.
@@ -168,6 +183,19 @@ pub enum FromFace {
 pub struct SlabJob {
     /// General thickness, metres; `None`: the drawing's own text.
     pub thickness_m: Option<f64>,
+    /// Level of the general slab's top as the drawing counts levels, metres.
+    pub top_level_m: f64,
+    /// What a zone keeps of the slab around it where its text gives only a top.
+    pub step_keeps: StepKeeps,
+}
+
+/// What runs on through a step in the top whose text gives neither thickness nor soffit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum StepKeeps {
+    /// The thickness: the soffit steps with the top.
+    Thickness,
+    /// The soffit: the slab is thinner, or thicker, by the step.
+    Soffit,
 }
 
 /// A size of strand.

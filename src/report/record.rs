@@ -223,7 +223,7 @@ impl PointRecord {
         // An anchor that the drawing gives no height has the one it was worked out with.
         let height_m = point
             .height_m
-            .or_else(|| Some(result.level_m? + point.thickness_m?));
+            .or_else(|| Some(result.level_m? - point.faces().soffit_m()?));
         Self {
             kind: point.kind,
             station_m: number(point.station_m),

@@ -40,7 +40,9 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
                 place: at(station_m - start_m),
                 drawn_m: None,
                 height_m: Some(height_m),
+                other_soffit_m: None,
                 thickness_m: Some(thickness_m),
+                top_m: 0.0,
             })
             .collect(),
     }

@@ -1,6 +1,6 @@
 //! What a text is taken for by the job's patterns, when only the text itself speaks.
 
-use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line};
+use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line, zone_text_of_line};
 use crate::job::families::{self, Offer, offered};
 use crate::job::{Job, Pattern};
 use crate::units::LengthUnit;
@@ -47,9 +47,21 @@ pub(super) fn reading(text: &str, job: &Job) -> Reading {
 fn of_line(line: &str, job: &Job) -> Reading {
     let read = &job.conventions;
     let millimetres = |value_m: f64| (value_m * 1e4).round() / 10.0;
-    if let Some((value_m, by)) = thickness_of_line(line, read) {
-        let words = format!("slab thickness {} mm", millimetres(value_m));
-        return Reading::Thickness(named(words, Some(by)));
+    if let Some((said, by)) = zone_text_of_line(line, read) {
+        let part = |what: &str, value_m: Option<f64>| {
+            value_m.map(|value_m| format!("{what} {} mm", millimetres(value_m)))
+        };
+        let parts = [
+            part("slab thickness", said.thickness_m),
+            part("slab top at", said.top_m),
+            part("slab soffit at", said.soffit_m),
+            part("slab top down by", said.down_m),
+        ];
+        let words: Vec<String> = parts.into_iter().flatten().collect();
+        // A bare signed number may as well be a height.
+        if line.chars().any(char::is_alphabetic) {
+            return Reading::Thickness(named(words.join(", "), Some(by)));
+        }
     }
     if let Some((height, by)) = height_of_line(line, read) {
         let what = match (height.word, height.middle) {

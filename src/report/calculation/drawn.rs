@@ -43,16 +43,22 @@ pub(super) fn part(
         ends[0], ends[1]
     ));
     let reading = &job.conventions.height;
+    let stepped = tendon.points.iter().any(|point| point.top_m != 0.0);
+    let step = if stepped {
+        " + top, above the top of the general slab"
+    } else {
+        ""
+    };
     text.push(format!(
         "1. Points: drawn = the drawing's number, {reading};\n   \
-         height = from the local soffit to the strands' centroid; level = height - thickness\n"
+         height = from the local soffit to the strands' centroid; level = height - thickness{step}\n"
     ));
     let rows = tendon
         .points
         .iter()
         .zip(&result.points)
         .map(|(point, worked)| {
-            vec![
+            let mut row = vec![
                 kind(point.kind).to_owned(),
                 format!("{:.3}", point.station_m),
                 format!("{:.3}", point.place.x),
@@ -60,24 +66,22 @@ pub(super) fn part(
                 number(drawn(point, reading), 2),
                 number(point.height_m.map(|h| h * 1000.0), 1),
                 number(point.thickness_m.map(|t| t * 1000.0), 0),
-                number(worked.level_m.map(|l| l * 1000.0), 1),
-            ]
+            ];
+            if stepped {
+                row.push(number(Some(point.top_m * 1000.0), 0));
+            }
+            row.push(number(worked.level_m.map(|l| l * 1000.0), 1));
+            row
         })
         .collect();
-    text.push(grid(
-        1,
-        &[
-            "point",
-            "station m",
-            "x m",
-            "y m",
-            &format!("drawn {}", reading.unit.name()),
-            "height mm",
-            "thickness mm",
-            "level mm",
-        ],
-        rows,
-    ));
+    let drawn = format!("drawn {}", reading.unit.name());
+    let mut columns = vec!["point", "station m", "x m", "y m"];
+    columns.extend([drawn.as_str(), "height mm", "thickness mm"]);
+    if stepped {
+        columns.push("top mm");
+    }
+    columns.push("level mm");
+    text.push(grid(1, &columns, rows));
     text.concat()
 }
 
