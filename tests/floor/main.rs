@@ -21,3 +21,4 @@ mod levels;
 mod marks;
 mod settling;
 mod sketch;
+mod steps;
