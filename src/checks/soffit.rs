@@ -187,8 +187,8 @@ fn jump(points: &[Point], at: usize) -> Option<String> {
     let point = points.get(at)?;
     let level_m = point.level_m()?;
     let next = [at.checked_sub(1), Some(at + 1)];
-    let near = next.into_iter().flatten().filter_map(|at| points.get(at));
-    near.filter_map(|other| {
+    let mut near = next.into_iter().flatten().filter_map(|at| points.get(at));
+    near.find_map(|other| {
         let (apart_m, climb_m) = (
             (other.station_m - point.station_m).abs(),
             (other.level_m()? - level_m).abs(),
@@ -201,7 +201,6 @@ fn jump(points: &[Point], at: usize) -> Option<String> {
             )
         })
     })
-    .next()
 }
 
 /// A hogging radius below its limit between the bending points beside a point.

@@ -42,7 +42,7 @@ impl Measures<'_> {
                 Measured::height(from_top)
             }
             (FromFace::Soffit, _) | (FromFace::NearerFace, Some(Word::Low)) => {
-                self.from_a_soffit(value_m + in_duct_m, faces)
+                self.above_a_soffit(value_m + in_duct_m, faces)
             }
             // At mid-depth no face is the nearer.
             (FromFace::NearerFace, None) => Measured::height(from_soffit.filter(|soffit_m| {
@@ -51,7 +51,7 @@ impl Measures<'_> {
         }
     }
 
-    fn from_a_soffit(&self, value_m: f64, faces: Faces) -> Measured {
+    fn above_a_soffit(&self, value_m: f64, faces: Faces) -> Measured {
         let step_m = self
             .general
             .soffit_m()

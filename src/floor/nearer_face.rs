@@ -49,9 +49,10 @@ pub(super) fn words_by_neighbours(heights: &[Bare]) -> (Vec<Option<Word>>, Vec<F
             _ => true,
         };
         let between_two = before.is_some() && after.is_some() && to - from == 1;
-        for at in from..to {
-            if fits && (apart || between_two) {
-                words[at] = turn(at);
+        let decided = fits && (apart || between_two);
+        for (at, here) in words.iter_mut().enumerate().take(to).skip(from) {
+            if decided {
+                *here = turn(at);
                 read.push(at);
             } else if between_two {
                 supports.push(at);

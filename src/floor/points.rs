@@ -34,7 +34,7 @@ impl Mark {
     }
 
     /// Whether its number is to the nearer face.
-    fn to_nearer_face(&self) -> bool {
+    fn is_to_nearer_face(&self) -> bool {
         self.reading.from == FromFace::NearerFace && !self.reading.middle
     }
 }
@@ -58,7 +58,7 @@ pub(super) fn points(
         .is_some_and(|m| m.at_end && m.station_m > length_m / 2.0);
     let inner = usize::from(first_is_anchor)..marks.len() - usize::from(last_is_anchor);
     let mut faceless = false;
-    if marks.iter().any(Mark::to_nearer_face) {
+    if marks.iter().any(Mark::is_to_nearer_face) {
         let found = by_neighbours(mark, line, marks.get_mut(inner.clone()).unwrap_or_default());
         faceless = found.iter().any(|finding| finding.level == Level::Error);
         findings.extend(found);
@@ -92,7 +92,8 @@ pub(super) fn points(
     let first = anchor(0.0, start);
     let last = anchor(length_m, end);
     for (said, anchor) in [(start, &first), (end, &last)] {
-        let open = |said: &&Mark| !said.torn && said.to_nearer_face() && anchor.height_m.is_none();
+        let open =
+            |said: &&Mark| !said.torn && said.is_to_nearer_face() && anchor.height_m.is_none();
         if let Some(said) = said.filter(open) {
             findings.push(
                 unknown_at_anchor(said.reading.value_m)
@@ -222,7 +223,7 @@ pub(super) fn words(reading: HeightText) -> String {
 fn by_neighbours(mark: &str, line: &Line, marks: &mut [Mark]) -> Vec<Finding> {
     let mut marks: Vec<&mut Mark> = marks
         .iter_mut()
-        .filter(|mark| mark.reading.word.is_some() || mark.to_nearer_face())
+        .filter(|mark| mark.reading.word.is_some() || mark.is_to_nearer_face())
         .collect();
     let bare: Vec<Bare> = marks
         .iter()

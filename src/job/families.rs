@@ -158,7 +158,10 @@ fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
                 .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
                 .replace(
                     "LEVEL",
-                    &format!(r"[-+−–±]?\s*(?:\d+[.,]\d{{3}}(?:\s*m)?|{})", number(unit)),
+                    &format!(
+                        r"[-+−–±]?\s*(?:\d+[.,]\d+\s*m|\d+[.,]\d{{3}}|{})",
+                        number(unit)
+                    ),
                 )
                 .replace("NUMBER", number(unit));
             pattern(name, &expression)
