@@ -1,9 +1,11 @@
 //! DXF in: shapes and texts in metres, each with handle and layer. DXF out: lossless insertion of a [`Sheet`].
 //! Knows nothing of tendons; the only stage that says `dxf::`.
 
+mod caps;
 mod clean;
 mod code_page;
 mod convert;
+mod counts;
 mod curves;
 mod explode;
 mod found;
@@ -15,6 +17,7 @@ mod names;
 mod placing;
 mod read;
 mod refusal;
+mod resume;
 mod rules;
 mod scan;
 mod sheet;
@@ -26,8 +29,9 @@ mod types;
 mod wanted;
 mod windows;
 
+pub use caps::{Caps, Purpose};
 pub use insert::{insert, insertion};
-pub use read::read;
+pub use read::{read, read_within};
 pub use refusal::Refusal;
 pub use rules::READING_RULES;
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};

@@ -14,6 +14,12 @@ pub(super) type Pieces<'a> = Vec<Cow<'a, [u8]>>;
 
 /// A file's bytes.
 pub(super) fn read(path: &Path) -> Result<Vec<u8>, Refused> {
+    size(path)?;
+    fs::read(path).map_err(|error| unreadable(path, error))
+}
+
+/// A file's size, bytes.
+pub(super) fn size(path: &Path) -> Result<u64, Refused> {
     let about = fs::metadata(path).map_err(|error| match error.kind() {
         io::ErrorKind::NotFound | io::ErrorKind::NotADirectory => Refused::NoFile(path.to_owned()),
         _ => unreadable(path, error),
@@ -24,7 +30,7 @@ pub(super) fn read(path: &Path) -> Result<Vec<u8>, Refused> {
     if !about.is_file() {
         return Err(Refused::NotAFile(path.to_owned()));
     }
-    fs::read(path).map_err(|error| unreadable(path, error))
+    Ok(about.len())
 }
 
 fn unreadable(path: &Path, error: io::Error) -> Refused {

@@ -4,7 +4,7 @@ use std::path::PathBuf;
 
 use super::job_file::{self, JobFile};
 use super::{Outcome, Refused, files, print, refuse, work};
-use crate::drawing::{self, Wanted};
+use crate::drawing::{Purpose, Wanted};
 use crate::job;
 use crate::terminal::Terminal;
 
@@ -60,8 +60,14 @@ fn survey(order: &Order) -> Result<String, Refused> {
         None => JobFile::default(),
     };
     let job = &job_file.resolved.job;
-    let source = work::open(&order.plan)?;
-    let (drawing, findings) = drawing::read(&source, &Wanted::everything(), job.conventions.unit);
+    let source = work::open(&order.plan, job)?;
+    let (drawing, findings) = work::read(
+        &order.plan,
+        &source,
+        &Wanted::everything(),
+        job,
+        Purpose::Survey,
+    )?;
     let contents = Contents::of(&drawing, job);
     let name = order.plan.file_name().unwrap_or(order.plan.as_os_str());
     let head = words::head(&name.to_string_lossy(), &drawing, &contents, &findings, job);

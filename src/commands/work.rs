@@ -6,7 +6,8 @@ use super::job_file::JobFile;
 use super::{Refused, files, units};
 use crate::analysis::{self, Analysis};
 use crate::annotate::Surroundings;
-use crate::drawing::{self, Layer, Source, Wanted};
+use crate::drawing::{self, Caps, Drawing, Layer, Purpose, Refusal, Source, Wanted};
+use crate::finding::Finding;
 use crate::floor;
 use crate::job::Job;
 use crate::report::DrawingFacts;
@@ -27,10 +28,10 @@ pub(super) struct Work {
 /// Reads a drawing and works out its floor.
 pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
     let job = &job_file.resolved.job;
-    let source = open(plan)?;
+    let source = open(plan, job)?;
     let tendon_layers = tendon_layers(plan, &source, job)?;
     let wanted = wanted(job.layer_patterns());
-    let (drawing, mut findings) = drawing::read(&source, &wanted, job.conventions.unit);
+    let (drawing, mut findings) = read(plan, &source, &wanted, job, Purpose::Work)?;
     let (floor, more) = floor::read(&drawing, job);
     findings.extend(more);
     if floor.tendons.is_empty() {
@@ -58,12 +59,47 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
     })
 }
 
-/// Opens a drawing.
-pub(super) fn open(plan: &Path) -> Result<Source, Refused> {
-    drawing::open(files::read(plan)?).map_err(|refusal| Refused::Drawing {
+/// Opens a drawing, unless it is larger than the job allows.
+pub(super) fn open(plan: &Path, job: &Job) -> Result<Source, Refused> {
+    caps(job)
+        .admit_file(files::size(plan)?)
+        .map_err(|refusal| refused(plan, refusal))?;
+    drawing::open(files::read(plan)?).map_err(|refusal| refused(plan, refusal))
+}
+
+/// Reads the wanted layers of a drawing, unless they hold more than the job allows.
+pub(super) fn read(
+    plan: &Path,
+    source: &Source,
+    wanted: &Wanted,
+    job: &Job,
+    purpose: Purpose,
+) -> Result<(Drawing, Vec<Finding>), Refused> {
+    let caps = caps(job);
+    caps.admit_layers(source, wanted, purpose)
+        .map_err(|refusal| refused(plan, refusal))?;
+    let unit = job.conventions.unit;
+    Ok(drawing::read_within(source, wanted, unit, &caps))
+}
+
+fn refused(plan: &Path, refusal: Refusal) -> Refused {
+    Refused::Drawing {
         path: plan.to_owned(),
         refusal,
-    })
+    }
+}
+
+fn caps(job: &Job) -> Caps {
+    #[expect(
+        clippy::cast_possible_truncation,
+        clippy::cast_sign_loss,
+        reason = "the key's range is held when the job is read"
+    )]
+    let whole = |number: f64| number as u64;
+    Caps {
+        memory_mb: whole(job.limits.memory_mb),
+        expanded_entities: whole(job.limits.expanded_entities),
+    }
 }
 
 /// The layers that fit these patterns. A job's patterns were tried when it was read: none is broken here.

@@ -6,7 +6,7 @@ use std::io::Write as _;
 use super::code_page::CodePage;
 use super::handles::parse_handle;
 use super::scan::{Entry, Scan};
-use super::tags::{Form, Tag, Tags, place_in_words};
+use super::tags::{Form, Tag, Tags};
 
 /// What the library loses of a record, kept beside it.
 #[derive(Debug, Clone, Default)]
@@ -70,8 +70,8 @@ pub(super) struct Damage {
     pub(super) kept: Kept,
     /// Type name.
     pub(super) type_name: String,
-    /// Where the trouble is: line or byte.
-    pub(super) place: String,
+    /// Offset of the trouble in the file.
+    pub(super) at: usize,
     /// What was found and what was expected.
     pub(super) found: String,
 }
@@ -151,7 +151,7 @@ impl<'a> Cleaner<'a> {
                 Err(Box::new(Damage {
                     kept,
                     type_name: String::from_utf8_lossy(type_name).into_owned(),
-                    place: place_in_words(self.bytes, self.form, at),
+                    at,
                     found,
                 }))
             }
@@ -162,7 +162,7 @@ impl<'a> Cleaner<'a> {
         let part = entry.start..entry.end;
         let mut record = Open::default();
         let mut sequence = false;
-        for tag in Tags::within(self.bytes, self.form, part) {
+        for tag in Tags::within(self.bytes, self.form, part).forgiving() {
             let Ok(tag) = tag else { break };
             if tag.code == 0 {
                 if !record.type_name.is_empty() {

@@ -14,7 +14,7 @@ pub(super) struct CodePage {
     encoding: &'static Encoding,
     /// What the header names, if it is not known here or if nothing is named; then 8-bit text is a guess.
     pub(super) unsure_of: Option<String>,
-    /// UTF-8 is tried before the code page: nothing in the file says which it is.
+    /// UTF-8 is tried first: nothing in the file says which code page it is, and hardly any other text looks like it.
     tries_utf8: bool,
 }
 
@@ -32,7 +32,7 @@ impl CodePage {
         Self {
             encoding,
             unsure_of,
-            tries_utf8: version.is_empty(),
+            tries_utf8: !utf8 && (version.is_empty() || known.is_none()),
         }
     }
 

@@ -17,6 +17,18 @@ const TOLERANCE_M: f64 = 1e-3;
 /// Vertices closer than this are one.
 const SAME_PLACE_M: f64 = 1e-6;
 
+/// Nothing is built a million kilometres from the origin, and numbers beyond lose their millimetres.
+const FARTHEST_M: f64 = 1e9;
+/// Why what lies further is left out.
+pub(super) const TOO_FAR: &str =
+    "it lies more than a million kilometres from the origin, or nowhere";
+
+/// Whether all of these places are where something can be built.
+pub(super) fn is_near(places: impl IntoIterator<Item = Coord<f64>>) -> bool {
+    let mut places = places.into_iter();
+    places.all(|place| place.x.abs() <= FARTHEST_M && place.y.abs() <= FARTHEST_M)
+}
+
 /// A plan line, metres.
 #[derive(Debug, Clone)]
 pub(super) struct Line {
@@ -97,6 +109,10 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
             (ShapeKind::Solid, true)
         }
         EntityType::Spline(spline) => {
+            let points = spline.control_points.iter().chain(&spline.fit_points);
+            if !is_near(points.map(|point| placing.place(flat(point)))) {
+                return Err(TOO_FAR);
+            }
             let curve = curve_of(spline).ok_or("its points, knots and degree make no curve")?;
             curve.segments(placing, TOLERANCE_M, &mut pieces);
             (
@@ -108,6 +124,10 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
     };
     if !pieces.iter().all(|piece| piece.length_m().is_finite()) {
         return Err("its coordinates, radii or bulges are too large for a length");
+    }
+    // A path leaves out pieces of no finite length, which here would be a silent loss.
+    if !is_near(pieces.iter().flat_map(|piece| [piece.start(), piece.end()])) {
+        return Err(TOO_FAR);
     }
     let path = Path::new(pieces);
     let (Some(start), Some(end)) = (path.start(), path.end()) else {

@@ -9,6 +9,9 @@ pub(super) type Curve<'a> = dyn Fn(f64) -> (Coord<f64>, Coord<f64>) + 'a;
 
 /// Halvings of one stretch between breaks, at most.
 const HALVINGS: u32 = 12;
+/// Arcs for a curve, and more for each of its stretches, beyond which it is no longer halved: no drawn curve comes near.
+const MOST_ARCS: usize = 4096;
+const MOST_ARCS_A_STRETCH: usize = 32;
 
 /// Draws a curve by arcs no further than `tolerance_m` from it. `breaks` are parameters in rising order, the first and
 /// last being the curve's ends; between them the curve must be smooth, and at them its direction may jump.
@@ -19,6 +22,7 @@ pub(super) fn arcs_along(
     out: &mut Vec<Segment>,
 ) {
     let mut held: Option<Coord<f64>> = None;
+    let most = out.len() + MOST_ARCS + MOST_ARCS_A_STRETCH * breaks.len();
     for (index, pair) in breaks.windows(2).enumerate() {
         let &[from, to] = pair else { continue };
         // A hair inside, so that the direction is this stretch's own where it jumps at a break.
@@ -39,7 +43,7 @@ pub(super) fn arcs_along(
             (from, (start, leaving)),
             (to, (end, arriving)),
             tolerance_m,
-            HALVINGS,
+            if out.len() < most { HALVINGS } else { 0 },
             out,
         );
     }

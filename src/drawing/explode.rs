@@ -5,8 +5,9 @@ use std::collections::{BTreeMap, BTreeSet};
 use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
+use super::caps::Expansion;
 use super::clean::NOWHERE;
-use super::convert::line_of;
+use super::convert::{TOO_FAR, is_near, line_of};
 use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::looks::Looks;
 use super::placing::Placing;
@@ -16,13 +17,13 @@ use super::rules::{
 use super::scan::Scan;
 use super::windows::Record;
 use super::{Drawing, Insert, Look, Shape, Text};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Rule};
 use crate::patterns::folded;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
-/// Entities and inserts that blocks may expand to.
-const MOST_EXPANDED: usize = 1_000_000;
+/// Findings of one rule that are told one by one; of the rest only the number is.
+pub(super) const MOST_TOLD: usize = 20;
 
 /// What is known of blocks and layers before any record is placed.
 #[derive(Debug)]
@@ -99,21 +100,26 @@ struct Place {
 pub(super) struct Gatherer<'b> {
     book: &'b Book<'b>,
     /// Colours and linetypes.
-    pub(super) looks: Looks<'b>,
+    looks: Looks<'b>,
     unit: Placing,
     zero_layer: Option<u32>,
-    /// Shapes, texts and inserts so far.
-    pub(super) drawing: Drawing,
-    /// What was left out so far.
-    pub(super) findings: Vec<Finding>,
-    left: usize,
+    drawing: Drawing,
+    findings: Vec<Finding>,
+    expansion: Expansion,
     open: Vec<usize>,
     told: BTreeSet<(&'static str, usize)>,
+    /// By rule: how grave it is, and how often it speaks.
+    spoken: BTreeMap<&'static str, (&'static Rule, Level, usize)>,
 }
 
 impl<'b> Gatherer<'b> {
     /// An empty drawing with this unit.
-    pub(super) fn new(book: &'b Book<'b>, looks: Looks<'b>, unit_m: f64) -> Self {
+    pub(super) fn new(
+        book: &'b Book<'b>,
+        looks: Looks<'b>,
+        unit_m: f64,
+        expansion: Expansion,
+    ) -> Self {
         Self {
             book,
             looks,
@@ -121,10 +127,21 @@ impl<'b> Gatherer<'b> {
             zero_layer: book.layers.get("0").copied(),
             drawing: Drawing::default(),
             findings: Vec::new(),
-            left: MOST_EXPANDED,
+            expansion,
             open: Vec::new(),
             told: BTreeSet::new(),
+            spoken: BTreeMap::new(),
         }
+    }
+
+    /// What was gathered, and what was left out.
+    pub(super) fn finish(self) -> (Drawing, Vec<Finding>) {
+        let mut drawing = self.drawing;
+        drawing.linetypes = self.looks.linetypes;
+        let mut findings = self.findings;
+        let spoken = self.spoken.into_values();
+        findings.extend(spoken.filter_map(|(rule, level, count)| and_more(rule, level, count)));
+        (drawing, findings)
     }
 
     /// Takes a record of model space.
@@ -175,17 +192,19 @@ impl<'b> Gatherer<'b> {
                     closed: line.closed,
                 }),
                 Ok(None) => {}
-                Err(reason) => self.findings.push(Finding::new(
-                    &ENTITY_DAMAGED,
-                    Level::Error,
-                    format!(
-                        "entity {handle} on layer {} is left out: {reason}",
-                        self.book.layer_name(layer)
-                    ),
-                    "redraw the entity, or export the drawing again",
-                )),
+                Err(reason) => self.damaged(layer, handle, reason),
             },
         }
+    }
+
+    fn damaged(&mut self, layer: u32, handle: &str, reason: &str) {
+        let layer = self.book.layer_name(layer);
+        self.say(&ENTITY_DAMAGED, Level::Error, || {
+            (
+                format!("entity {handle} on layer {layer} is left out: {reason}"),
+                "redraw the entity, or export the drawing again".to_owned(),
+            )
+        });
     }
 
     fn layer_in(&self, layer: u32, inherited: Option<u32>) -> u32 {
@@ -204,6 +223,11 @@ impl<'b> Gatherer<'b> {
         hidden: bool,
     ) {
         if lettering.content.trim().is_empty() {
+            return;
+        }
+        let sound = lettering.height_m.is_finite() && lettering.rotation_rad.is_finite();
+        if !sound || !is_near(lettering.corners.into_iter().chain([lettering.place])) {
+            self.damaged(place.layer, handle, TOO_FAR);
             return;
         }
         self.drawing.texts.push(Text {
@@ -245,20 +269,7 @@ impl<'b> Gatherer<'b> {
             return;
         }
         if wanted && block.is_none() {
-            self.tell(
-                &BLOCK_MISSING,
-                Level::Note,
-                record.kept.block as usize,
-                || {
-                    (
-                        format!(
-                            "insert {handle} names block {}, which the drawing does not define",
-                            self.book.block_name(record.kept.block)
-                        ),
-                        "bind or purge the reference, unless only its place matters",
-                    )
-                },
-            );
+            self.missing(record, handle);
         }
         let plane = Placing::extruded(normal(&insert.extrusion_direction), insert.location.z);
         let plane = frame.placing.after(&plane);
@@ -272,9 +283,13 @@ impl<'b> Gatherer<'b> {
                 )
             })
             .collect();
+        let weight: usize = attributes
+            .iter()
+            .map(|(tag, value)| 64 + tag.len() + value.len())
+            .sum();
         for row in 0..insert.row_count.max(1) {
             for column in 0..insert.column_count.max(1) {
-                if !self.spend(handle) {
+                if !self.spend(handle, weight) {
                     return;
                 }
                 let step = Coord {
@@ -285,6 +300,10 @@ impl<'b> Gatherer<'b> {
                     .after(&Placing::shifted(insert.location.x, insert.location.y))
                     .after(&Placing::turned(rotation_rad))
                     .after(&Placing::shifted(step.x, step.y));
+                if !is_near([cell.place(Coord { x: 0.0, y: 0.0 })]) {
+                    self.damaged(layer, handle, TOO_FAR);
+                    return;
+                }
                 if wanted {
                     let along = cell.carry(Coord { x: 1.0, y: 0.0 });
                     self.drawing.inserts.push(Insert {
@@ -327,6 +346,19 @@ impl<'b> Gatherer<'b> {
         }
     }
 
+    /// Says that an insert's block is not there.
+    fn missing(&mut self, record: &Record, handle: &str) {
+        let number = record.kept.block;
+        let name = self.book.block_name(number);
+        let text = format!("insert {handle} names block {name}, which the drawing does not define");
+        self.tell(&BLOCK_MISSING, Level::Note, number as usize, || {
+            (
+                text,
+                "bind or purge the reference, unless only its place matters".to_owned(),
+            )
+        });
+    }
+
     /// Places a block's records.
     fn block(&mut self, block: usize, inside: &Frame<'_>, handle: &str) {
         let book = self.book;
@@ -335,7 +367,7 @@ impl<'b> Gatherer<'b> {
             self.tell(&BLOCK_IN_ITSELF, Level::Warning, block, || {
                 (
                     format!("block {name} inserts itself (insert {handle}); the inner insert is left out"),
-                    "redefine the block without the insert of itself",
+                    "redefine the block without the insert of itself".to_owned(),
                 )
             });
             return;
@@ -344,7 +376,7 @@ impl<'b> Gatherer<'b> {
             self.tell(&BLOCK_TOO_DEEP, Level::Warning, 0, || {
                 (
                     format!("insert {handle} holds blocks more than {DEEPEST} deep (at block {name}); what lies deeper is left out"),
-                    "explode the innermost blocks",
+                    "explode the innermost blocks".to_owned(),
                 )
             });
             return;
@@ -354,7 +386,7 @@ impl<'b> Gatherer<'b> {
         };
         self.open.push(block);
         for record in records {
-            if !self.spend(handle) {
+            if !self.spend(handle, record.weight()) {
                 break;
             }
             self.place(record, inside);
@@ -391,34 +423,56 @@ impl<'b> Gatherer<'b> {
         }
     }
 
-    /// Takes one from what may still be expanded.
-    fn spend(&mut self, handle: &str) -> bool {
-        if self.left == 0 {
+    /// Takes one entity, with what weighs beyond it, from what may still be expanded.
+    fn spend(&mut self, handle: &str, weight: usize) -> bool {
+        let room = self.expansion.spend(weight);
+        if !room {
+            let (cap, remedy) = self.expansion.words();
             self.tell(&BLOCK_TOO_MANY, Level::Error, 0, || {
                 (
-                    format!("block inserts expand to more than {MOST_EXPANDED} entities (at insert {handle}); the rest is left out"),
-                    "name fewer layers, or explode and thin out the blocks",
+                    format!(
+                        "block inserts expand to {cap} (at insert {handle}); the rest is left out"
+                    ),
+                    remedy,
                 )
             });
-            return false;
         }
-        self.left -= 1;
-        true
+        room
     }
 
     /// Says something once for each `about`.
     fn tell(
         &mut self,
-        rule: &'static crate::finding::Rule,
+        rule: &'static Rule,
         level: Level,
         about: usize,
-        words: impl FnOnce() -> (String, &'static str),
+        words: impl FnOnce() -> (String, String),
     ) {
         if self.told.insert((rule.name, about)) {
+            self.say(rule, level, words);
+        }
+    }
+
+    /// Says something, or counts it once that rule has spoken often enough.
+    fn say(&mut self, rule: &'static Rule, level: Level, words: impl FnOnce() -> (String, String)) {
+        let (.., count) = self.spoken.entry(rule.name).or_insert((rule, level, 0));
+        *count += 1;
+        if *count <= MOST_TOLD {
             let (text, remedy) = words();
             self.findings.push(Finding::new(rule, level, text, remedy));
         }
     }
+}
+
+/// A finding for what is not told one by one.
+pub(super) fn and_more(rule: &'static Rule, level: Level, count: usize) -> Option<Finding> {
+    let more = count.checked_sub(MOST_TOLD).filter(|more| *more > 0)?;
+    Some(Finding::new(
+        rule,
+        level,
+        format!("and {more} more like the {MOST_TOLD} before, {count} in all"),
+        "mend the first ones and run again",
+    ))
 }
 
 /// A record's handle, or `#` and its number.

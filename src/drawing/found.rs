@@ -6,6 +6,7 @@ use std::ops::Range;
 use super::code_page::CodePage;
 use super::lettering::Style;
 use super::names::ScannedLayer;
+use super::scan::PassedOver;
 use super::tags::{Form, form_of};
 
 /// Layers of this tool's own begin so, in any letter case; they are never read and their entities are replaced.
@@ -43,8 +44,8 @@ pub(super) struct Scan {
     pub(super) layers_have_handles: bool,
     /// Entity type names; [`Scan::counts`] indexes them.
     pub(super) types: Vec<String>,
-    /// Model-space entities by layer, then by type.
-    pub(super) counts: Vec<Vec<usize>>,
+    /// Model-space entities by layer: number of the type, count.
+    pub(super) counts: Vec<Vec<(usize, usize)>>,
     /// Model-space entities that can be read, in file order.
     pub(super) entries: Vec<Entry>,
     /// Blocks, in file order.
@@ -90,6 +91,8 @@ pub(super) struct Scan {
     pub(super) own_handles: Option<(u64, u64)>,
     /// ENTITIES ends inside a POLYLINE or INSERT sequence without SEQEND.
     pub(super) open_sequence: bool,
+    /// What makes no sense and was passed over; `None` for a sound drawing.
+    pub(super) passed_over: Option<PassedOver>,
 }
 
 /// An entity with what follows it up to its SEQEND.
@@ -139,6 +142,12 @@ pub(super) const READ_TYPES: [&[u8]; 12] = [
 ];
 
 impl Scan {
+    /// Whole entities of model space, of whatever type.
+    pub(super) fn entity_count(&self) -> usize {
+        let kinds = self.counts.iter().flatten();
+        kinds.map(|(_, count)| count).sum::<usize>() + self.own_marks.len()
+    }
+
     /// Nothing found yet; how the file is written is seen at its first line.
     pub(super) fn new(bytes: &[u8]) -> Self {
         let (form, first) = form_of(bytes);
@@ -186,6 +195,7 @@ impl Scan {
             own_marks: Vec::new(),
             own_handles: None,
             open_sequence: false,
+            passed_over: None,
         }
     }
 }

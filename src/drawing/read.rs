@@ -4,11 +4,13 @@ use std::collections::BTreeMap;
 
 use geo::Coord;
 
-use super::explode::{Book, Gatherer};
+use super::caps::Caps;
+use super::explode::{Book, Gatherer, MOST_TOLD, and_more};
 use super::looks::Looks;
-use super::rules::{ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
+use super::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
 use super::scan::{Entry, Scan};
 use super::source::Source;
+use super::tags::place_in_words;
 use super::wanted::Wanted;
 use super::windows::{Losses, read_records};
 use super::{Drawing, UnitFrom};
@@ -19,6 +21,16 @@ use crate::units::LengthUnit;
 /// Reads the wanted layers of a drawing's model space, blocks exploded, in metres. `unit` is what the job says of the
 /// drawing's unit, which goes before the header's word. What could not be read is among the findings.
 pub fn read(source: &Source, wanted: &Wanted, unit: Option<LengthUnit>) -> (Drawing, Vec<Finding>) {
+    read_within(source, wanted, unit, &Caps::default())
+}
+
+/// The same, with blocks expanded no further than the caps allow.
+pub fn read_within(
+    source: &Source,
+    wanted: &Wanted,
+    unit: Option<LengthUnit>,
+    caps: &Caps,
+) -> (Drawing, Vec<Finding>) {
     let scan = &source.scan;
     let (unit_m, unit_from) = unit_of(scan, unit);
     let mut losses = Losses::default();
@@ -35,22 +47,18 @@ pub fn read(source: &Source, wanted: &Wanted, unit: Option<LengthUnit>) -> (Draw
     book.records = block_records(source, &book, &top, &mut losses);
 
     let looks = Looks::new(&source.bytes, scan);
-    let mut gatherer = Gatherer::new(&book, looks, unit_m);
+    let expansion = caps.expansion(source, wanted);
+    let mut gatherer = Gatherer::new(&book, looks, unit_m, expansion);
     read_records(source, top, &mut losses, |record| gatherer.take(&record));
-    let Gatherer {
-        mut drawing,
-        looks,
-        findings: mut of_blocks,
-        ..
-    } = gatherer;
-    drawing.linetypes = looks.linetypes;
+    let (mut drawing, mut of_blocks) = gatherer.finish();
     drawing.version.clone_from(&scan.version);
     drawing.unit_m = unit_m;
     drawing.unit_from = unit_from;
     drawing.extent = extent_of(scan, unit_m);
     drawing.layers = source.layers();
     let mut findings: Vec<Finding> = unit_finding(scan, unit_from).into_iter().collect();
-    findings.extend(damage_findings(scan, &losses));
+    findings.extend(passed_over_finding(scan));
+    findings.extend(damage_findings(source, &losses));
     findings.append(&mut of_blocks);
     findings.extend(code_page_finding(scan, &losses));
     (drawing, findings)
@@ -113,24 +121,58 @@ fn unit_finding(scan: &Scan, from: UnitFrom) -> Option<Finding> {
     (from == UnitFrom::Assumed).then_some(finding)
 }
 
-fn damage_findings<'l>(scan: &'l Scan, losses: &'l Losses) -> impl Iterator<Item = Finding> + 'l {
-    losses.damaged.iter().map(|damage| {
-        let layer = scan.layers.get(damage.kept.layer as usize);
-        let layer = layer.map_or("0", |layer| layer.name.as_str());
-        let handle = match &damage.kept.handle {
-            Some(handle) => handle.clone(),
-            None => format!("#{}", damage.kept.number),
-        };
-        Finding::new(
-            &ENTITY_DAMAGED,
-            Level::Error,
-            format!(
-                "{} {handle} on layer {layer} is left out: at {}, {}",
-                damage.type_name, damage.place, damage.found
-            ),
-            "redraw the entity, or export the drawing again",
-        )
-    })
+fn passed_over_finding(scan: &Scan) -> Option<Finding> {
+    let over = scan.passed_over.as_ref()?;
+    let more = match over.places {
+        1 => String::new(),
+        places => format!(" (the first of {places} such places)"),
+    };
+    let (level, left_out) = match over.left_out {
+        0 => (Level::Warning, "no entity is left out for it".to_owned()),
+        1 => (Level::Error, "one entity is left out for it".to_owned()),
+        n => (Level::Error, format!("{n} entities are left out for it")),
+    };
+    Some(Finding::new(
+        &DRAWING_DAMAGED,
+        level,
+        format!(
+            "the drawing is damaged: at {}, {}{more}; {left_out}",
+            over.first, over.what
+        ),
+        "export or copy the drawing again, and look for what is missing",
+    ))
+}
+
+fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> {
+    let scan = &source.scan;
+    let shown = losses.damaged.iter().take(MOST_TOLD);
+    let mut findings: Vec<Finding> = shown
+        .map(|damage| {
+            let layer = scan.layers.get(damage.kept.layer as usize);
+            let layer = layer.map_or("0", |layer| layer.name.as_str());
+            let handle = match &damage.kept.handle {
+                Some(handle) => handle.clone(),
+                None => format!("#{}", damage.kept.number),
+            };
+            Finding::new(
+                &ENTITY_DAMAGED,
+                Level::Error,
+                format!(
+                    "{} {handle} on layer {layer} is left out: at {}, {}",
+                    damage.type_name,
+                    place_in_words(&source.bytes, scan.form, damage.at),
+                    damage.found
+                ),
+                "redraw the entity, or export the drawing again",
+            )
+        })
+        .collect();
+    findings.extend(and_more(
+        &ENTITY_DAMAGED,
+        Level::Error,
+        losses.damaged.len(),
+    ));
+    findings
 }
 
 fn code_page_finding(scan: &Scan, losses: &Losses) -> Option<Finding> {

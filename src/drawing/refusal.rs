@@ -23,14 +23,12 @@ pub enum Refusal {
         found: String,
     },
     /// A line that is no group code, or a binary tag that makes no sense.
-    #[error(
-        "{place}: found {found} where a group code was expected; the file is damaged there: save the drawing again as DXF"
-    )]
+    #[error("{place}: {what}; the file is damaged there: save the drawing again as DXF")]
     Garbled {
         /// Line number, or byte offset in a binary file.
         place: String,
-        /// What stands there.
-        found: String,
+        /// What stands there and what was expected.
+        what: String,
     },
     /// The file stops early.
     #[error(
@@ -49,6 +47,18 @@ pub enum Refusal {
     Unclosed {
         /// Line number, or byte offset in a binary file.
         place: String,
+    },
+    /// More than the job allows.
+    #[error(
+        "{what}; working with that takes some {needed_mb} MB of memory, and limits.memory_mb allows {allowed_mb}: set limits.memory_mb to {needed_mb} or more in the job file, or purge the drawing"
+    )]
+    TooLarge {
+        /// What was met.
+        what: String,
+        /// Estimated memory, megabytes.
+        needed_mb: u64,
+        /// What the job allows, megabytes.
+        allowed_mb: u64,
     },
     /// Something to draw lies nowhere.
     #[error(

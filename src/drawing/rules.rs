@@ -2,10 +2,16 @@
 
 use crate::finding::Rule;
 
+/// A drawing of which a part could not be read.
+pub(super) static DRAWING_DAMAGED: Rule = Rule {
+    name: "drawing-damaged",
+    meaning: "The drawing is cut short or holds lines that make no sense; what is sound is read, the entities concerned are left out.",
+};
+
 /// An entity that could not be read.
 pub(super) static ENTITY_DAMAGED: Rule = Rule {
     name: "entity-damaged",
-    meaning: "An entity on a layer that is read holds a value that is no finite number, or lacks a coordinate; it is left out.",
+    meaning: "An entity on a layer that is read holds a value that is no finite number, lacks a coordinate, or lies beyond a million kilometres; it is left out.",
 };
 
 /// The drawing does not say its unit.
@@ -29,7 +35,7 @@ pub(super) static BLOCK_IN_ITSELF: Rule = Rule {
 /// More than can be expanded.
 pub(super) static BLOCK_TOO_MANY: Rule = Rule {
     name: "block-too-many",
-    meaning: "Block inserts expand to more than a million entities; the rest is left out.",
+    meaning: "Block inserts expand to more entities than limits.expanded_entities or limits.memory_mb allows; the rest is left out.",
 };
 
 /// An insert of a block that the drawing does not hold.
@@ -45,7 +51,8 @@ pub(super) static TEXT_CODE_PAGE: Rule = Rule {
 };
 
 /// Every rule of reading.
-pub static READING_RULES: [&Rule; 7] = [
+pub static READING_RULES: [&Rule; 8] = [
+    &DRAWING_DAMAGED,
     &ENTITY_DAMAGED,
     &UNIT_ASSUMED,
     &BLOCK_TOO_DEEP,

@@ -1,29 +1,36 @@
 //! One pass over a drawing's tags: what it holds, where its parts begin and end, which handles are taken.
 
 mod records;
+mod recovery;
 
 use super::code_page::CodePage;
+use super::counts::Counts;
 use super::handles::{Handles, parse_handle};
 use super::lettering::Style;
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
-use super::tags::{BadTag, Tag, Tags, place_in_words};
+use super::tags::{Bad, BadTag, Tag, Tags, is_name, place_in_words, shown};
 use records::text;
+use recovery::recover;
+
+pub(super) use recovery::PassedOver;
 
 pub(super) use super::found::{BlockEntry, Entry, OWN_LAYER, READ_TYPES, Scan};
 
-/// Scans a drawing.
+/// Scans a drawing: strictly, and where that fails once more, passing over what makes no sense.
 ///
 /// # Errors
-/// A [`Refusal`] for what is no DXF, is cut short, or holds a line that is no group code.
+/// A [`Refusal`] for what is no DXF, or is cut short or damaged so that no entity of model space is left.
 pub(super) fn scan(bytes: &[u8]) -> Result<Scan, Refusal> {
     refuse_at_sight(bytes)?;
+    strict(bytes).or_else(|refusal| recover(bytes, refusal))
+}
+
+fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
     let mut pass = Pass::new(bytes);
     for tag in Tags::new(bytes) {
-        match tag {
-            Ok(tag) => pass.take(&tag)?,
-            Err(bad) => return Err(pass.refusal(bad)),
-        }
+        tag.and_then(|tag| pass.take(&tag))
+            .map_err(|bad| pass.refusal(&bad))?;
     }
     pass.finish()
 }
@@ -78,6 +85,10 @@ enum Record {
 
 /// The tags of one entity or table record that matter here.
 #[derive(Default)]
+#[expect(
+    clippy::struct_excessive_bools,
+    reason = "each is a fact of its own about the record"
+)]
 struct Gathered<'a> {
     start: usize,
     type_id: usize,
@@ -93,6 +104,10 @@ struct Gathered<'a> {
     base: [f64; 2],
     pointers: [Option<&'a [u8]>; 3],
     style: Style,
+    /// Something in it makes no sense and was passed over.
+    broken: bool,
+    /// The entity before it still waited for its SEQEND.
+    after_open: bool,
 }
 
 #[expect(
@@ -124,6 +139,9 @@ struct Pass<'a> {
     types: Types<'a>,
     block_names: Types<'a>,
     handles: Handles,
+    counts: Counts,
+    /// Whether what makes no sense is passed over.
+    forgives: bool,
 }
 
 impl<'a> Pass<'a> {
@@ -151,11 +169,13 @@ impl<'a> Pass<'a> {
             types: Types::default(),
             block_names: Types::default(),
             handles: Handles::default(),
+            counts: Counts::default(),
+            forgives: false,
         }
     }
 
     #[inline]
-    fn take(&mut self, tag: &Tag<'a>) -> Result<(), Refusal> {
+    fn take(&mut self, tag: &Tag<'a>) -> Result<(), BadTag> {
         self.last_end = self.scan.tags_end;
         self.scan.tags_end = tag.end;
         match tag.code {
@@ -263,8 +283,15 @@ impl<'a> Pass<'a> {
         };
     }
 
-    fn begin_record(&mut self, tag: &Tag<'a>) -> Result<(), Refusal> {
+    fn begin_record(&mut self, tag: &Tag<'a>) -> Result<(), BadTag> {
         let name = tag.word();
+        if !is_name(name) {
+            return Err(BadTag {
+                at: tag.start,
+                kind: Bad::Name,
+                found: shown(name),
+            });
+        }
         let in_entities = matches!(self.section, Section::Entities | Section::Blocks);
         if in_entities
             && let Some(head) = self.sequence
@@ -286,8 +313,19 @@ impl<'a> Pass<'a> {
         match name {
             b"SECTION" => {
                 if self.section == Section::Entities {
-                    let place = place_in_words(self.bytes, self.scan.form, tag.start);
-                    return Err(Refusal::Unclosed { place });
+                    let bad = BadTag {
+                        at: tag.start,
+                        kind: Bad::Unclosed,
+                        found: "SECTION".to_owned(),
+                    };
+                    if !self.forgives {
+                        return Err(bad);
+                    }
+                    self.note(bad.at, || bad.words());
+                }
+                if self.section == Section::Header {
+                    // One that is not closed has no place for a variable of ours.
+                    self.section = Section::Outside;
                 }
                 self.end_section(tag.start);
                 self.sections += 1;
@@ -310,6 +348,8 @@ impl<'a> Pass<'a> {
 
     fn end_section(&mut self, at: usize) {
         match self.section {
+            // What is inserted behind something passed over would be passed over with it.
+            Section::Header if self.gathered.broken => {}
             Section::Header => self.scan.header_end = self.scan.header_end.or(Some(at)),
             Section::Tables => self.scan.tables_end = self.scan.tables_end.or(Some(at)),
             Section::Entities => {
@@ -322,24 +362,9 @@ impl<'a> Pass<'a> {
             _ => {}
         }
         self.sequence = None;
+        self.gathered.broken = false;
         self.block_open = false;
         self.in_layer_table = false;
-    }
-
-    fn refusal(&self, bad: BadTag) -> Refusal {
-        if self.sections == 0 {
-            return Refusal::NotDxf { found: bad.found };
-        }
-        if bad.cut {
-            return Refusal::Cut {
-                place: bad.place,
-                inside: bad.found,
-            };
-        }
-        Refusal::Garbled {
-            place: bad.place,
-            found: bad.found,
-        }
     }
 
     fn finish(mut self) -> Result<Scan, Refusal> {
@@ -360,10 +385,13 @@ impl<'a> Pass<'a> {
         let early = self.scan.eof_start.is_none() && self.scan.entities_start.is_none();
         if let Some(inside) = open.or(early.then_some("a drawing without section ENTITIES")) {
             let at = self.scan.eof_start.unwrap_or(self.scan.tags_end);
-            return Err(Refusal::Cut {
-                place: place_in_words(self.bytes, self.scan.form, at),
-                inside: inside.into(),
-            });
+            if !self.forgives {
+                return Err(Refusal::Cut {
+                    place: place_in_words(self.bytes, self.scan.form, at),
+                    inside: inside.into(),
+                });
+            }
+            self.end_early(at, inside);
         }
         self.end_record(self.scan.tags_end);
         let handles = &self.handles;
@@ -379,6 +407,7 @@ impl<'a> Pass<'a> {
         }
         self.scan.names_are_guessed |= self.names.guessed;
         self.scan.layers = self.names.into_layers();
+        self.scan.counts = self.counts.into_rows(self.scan.layers.len());
         self.scan.types = self.types.into_names();
         let raw = self.block_names.into_raw();
         for name in raw {
@@ -466,7 +495,7 @@ mod tests {
         assert_eq!(at(&bytes, scan.entities_end), "0 ENDSEC 0 EOF");
         assert_eq!(at(&bytes, scan.eof_start), "0 EOF ");
         assert_eq!(scan.entries.len(), 2);
-        assert_eq!(scan.counts[1].iter().sum::<usize>(), 1);
+        assert_eq!(scan.counts[1], [(0, 1)]);
         assert!(!scan.open_sequence);
     }
 

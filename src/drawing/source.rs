@@ -39,10 +39,9 @@ impl Source {
             .filter(|(_, layer)| !layer.is_own())
             .map(|(index, layer)| {
                 let row = scan.counts.get(index).map_or(&[][..], Vec::as_slice);
-                let counts = scan.types.iter().zip(row);
-                let mut counts: Vec<(String, usize)> = counts
-                    .filter(|(_, count)| **count > 0)
-                    .map(|(name, count)| (name.clone(), *count))
+                let mut counts: Vec<(String, usize)> = row
+                    .iter()
+                    .filter_map(|(name, count)| Some((scan.types.get(*name)?.clone(), *count)))
                     .collect();
                 counts.sort();
                 Layer {

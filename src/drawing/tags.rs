@@ -1,9 +1,10 @@
 //! The tags of a DXF file, ASCII or binary: group code and value, with the bytes that each takes up.
 
-use std::fmt;
 use std::ops::Range;
 
 use memchr::{memchr, memchr_iter};
+
+use super::resume::resume;
 
 /// How a file's tags are written.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -145,17 +146,35 @@ fn whole(word: &[u8]) -> Option<i64> {
 pub(super) struct BadTag {
     /// Offset of the place.
     pub(super) at: usize,
-    /// The file ends inside a tag, rather than holding something strange.
-    pub(super) cut: bool,
-    /// Where, in words: a line number, or a byte offset in a binary file.
-    pub(super) place: String,
+    /// What is wrong there.
+    pub(super) kind: Bad,
     /// What stands there.
     pub(super) found: String,
 }
 
-impl fmt::Display for BadTag {
-    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        write!(f, "{}: {}", self.place, self.found)
+/// What is wrong with a tag.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(super) enum Bad {
+    /// Something else stands where a group code is due.
+    Code,
+    /// The file ends inside a tag.
+    Cut,
+    /// A record with a number for its name: codes and values are out of step.
+    Name,
+    /// A section that begins inside another.
+    Unclosed,
+}
+
+impl BadTag {
+    /// What was found and what was expected.
+    pub(super) fn words(&self) -> String {
+        let found = &self.found;
+        match self.kind {
+            Bad::Code => format!("found {found} where a group code was expected"),
+            Bad::Name => format!("found {found} where a record's name was expected"),
+            Bad::Cut => format!("the file ends inside {found}"),
+            Bad::Unclosed => "a new section starts although ENTITIES is not closed".to_owned(),
+        }
     }
 }
 
@@ -196,13 +215,14 @@ pub(super) fn form_of(bytes: &[u8]) -> (Form, usize) {
 }
 
 /// The tags of a file or of a part of it, in order; comments (999) are skipped. Ends after `0/EOF`, at the end of the
-/// bytes, or after the first error.
+/// bytes, or after the first error, unless that is passed over.
 #[derive(Debug, Clone)]
 pub(super) struct Tags<'a> {
     bytes: &'a [u8],
     at: usize,
     form: Form,
     done: bool,
+    forgives: bool,
 }
 
 impl<'a> Tags<'a> {
@@ -214,7 +234,14 @@ impl<'a> Tags<'a> {
             at,
             form,
             done: false,
+            forgives: false,
         }
+    }
+
+    /// The same, passing over what makes no sense.
+    pub(super) fn forgiving(mut self) -> Self {
+        self.forgives = true;
+        self
     }
 
     /// The tags of a part of a file, which must begin and end between tags.
@@ -224,15 +251,7 @@ impl<'a> Tags<'a> {
             at: part.start,
             form,
             done: false,
-        }
-    }
-
-    fn bad(&self, at: usize, cut: bool, found: String) -> BadTag {
-        BadTag {
-            at,
-            cut,
-            place: place_in_words(self.bytes, self.form, at),
-            found,
+            forgives: false,
         }
     }
 
@@ -259,11 +278,11 @@ impl<'a> Tags<'a> {
             if rest.iter().all(|b| b.is_ascii_whitespace() || *b == 0x1A) {
                 return None;
             }
-            return Some(Err(self.bad(start, false, shown(code_line))));
+            return Some(Err(bad(start, Bad::Code, shown(code_line))));
         };
         let Some((value, end)) = self.line(value_start) else {
             let found = format!("group code {code} without a value");
-            return Some(Err(self.bad(start, true, found)));
+            return Some(Err(bad(start, Bad::Cut, found)));
         };
         self.at = end;
         Some(Ok(Tag {
@@ -280,7 +299,7 @@ impl<'a> Tags<'a> {
         let start = self.at;
         let rest = self.bytes.get(start..)?;
         let first = *rest.first()?;
-        let cut = || Some(Err(self.bad(start, true, "a tag cut short".to_owned())));
+        let cut = || Some(Err(bad(start, Bad::Cut, "a tag cut short".to_owned())));
         let (code, code_bytes) = if wide || first == 255 {
             let skip = usize::from(!wide);
             match rest.get(skip..skip + 2) {
@@ -293,7 +312,7 @@ impl<'a> Tags<'a> {
         let body = rest.get(code_bytes..).unwrap_or_default();
         let Some((kind, size)) = binary_size(code, wide) else {
             let found = format!("group code {code}, which binary DXF does not know");
-            return Some(Err(self.bad(start, false, found)));
+            return Some(Err(bad(start, Bad::Code, found)));
         };
         let (before, length, after) = match (kind, size) {
             (Kind::Text, _) => match memchr(0, body) {
@@ -338,10 +357,31 @@ impl<'a> Iterator for Tags<'a> {
             match &next {
                 Some(Ok(tag)) if tag.code == 999 => continue,
                 Some(Ok(tag)) => self.done = tag.code == 0 && tag.begins(b"EOF"),
+                Some(Err(bad)) if self.forgives && bad.kind == Bad::Code => {
+                    if let Some(found) = resume(self.bytes, self.form, bad.at) {
+                        self.at = found.at;
+                        continue;
+                    }
+                    self.done = true;
+                }
                 Some(Err(_)) | None => self.done = true,
             }
             return next;
         }
+    }
+}
+
+fn bad(at: usize, kind: Bad, found: String) -> BadTag {
+    BadTag { at, kind, found }
+}
+
+/// Whether a record can have this name, which no number is.
+#[inline]
+pub(super) fn is_name(name: &[u8]) -> bool {
+    match name.first() {
+        Some(first) if first.is_ascii_alphabetic() => true,
+        Some(_) => decimal(name).is_none(),
+        None => false,
     }
 }
 
@@ -379,7 +419,7 @@ fn binary_size(code: i32, wide: bool) -> Option<(Kind, usize)> {
 }
 
 /// A strange line as it can be printed: quoted, control characters escaped, at most 40 bytes of it.
-fn shown(line: &[u8]) -> String {
+pub(super) fn shown(line: &[u8]) -> String {
     if line.trim_ascii().is_empty() {
         return "an empty line".to_owned();
     }
@@ -435,9 +475,9 @@ mod tests {
     #[test]
     fn a_strange_code_line_is_named_with_its_line() {
         let bad = error(b"0\nSECTION\nhello\n2\n").expect("refused");
-        assert_eq!((bad.place.as_str(), bad.cut), ("line 3", false));
+        assert_eq!((bad.at, bad.kind), (10, Bad::Code));
         assert_eq!(bad.found, "\"hello\"");
-        assert!(error(b"0\nSECTION\n  0\n").is_some_and(|bad| bad.cut));
+        assert!(error(b"0\nSECTION\n  0\n").is_some_and(|bad| bad.kind == Bad::Cut));
     }
 
     #[test]

@@ -7,6 +7,7 @@ use dxf::entities::{Entity, EntityType};
 use super::clean::{Cleaner, Damage, Kept};
 use super::scan::Entry;
 use super::source::Source;
+use crate::geometry::Segment;
 
 /// A record as the library reads it, with what the library loses.
 #[derive(Debug, Clone)]
@@ -18,6 +19,30 @@ pub(super) struct Record {
     /// What it loses.
     pub(super) kept: Kept,
 }
+
+impl Record {
+    /// Bytes that a copy of it may take beyond what any entity does: a piece for each vertex, the characters of a text.
+    pub(super) fn weight(&self) -> usize {
+        match &self.entity {
+            EntityType::LwPolyline(line) => PIECE * line.vertices.len(),
+            EntityType::Polyline(line) => PIECE * line.vertices().count(),
+            EntityType::Spline(line) => {
+                PIECES_OF_A_SPAN * PIECE * (line.control_points.len() + line.fit_points.len())
+            }
+            EntityType::MText(text) => {
+                let chunks = text.extended_text.iter().map(String::len);
+                text.text.len() + chunks.sum::<usize>()
+            }
+            EntityType::Text(text) => text.value.len(),
+            _ => 0,
+        }
+    }
+}
+
+/// Bytes of a plan line's piece.
+const PIECE: usize = size_of::<Segment>();
+/// Arcs that stand for a span of a spline, as a rule at most.
+const PIECES_OF_A_SPAN: usize = 16;
 
 /// What was left out or guessed on the way.
 #[derive(Debug, Default)]
@@ -53,7 +78,7 @@ pub(super) fn read_records<'e>(
     losses.guessed += cleaner.guessed;
 }
 
-/// Loads one window; if the library fails or loses a record, each record of it alone.
+/// Loads one window; if the library fails or loses a record, each half of it, down to the record.
 fn load(
     source: &Source,
     cleaner: &mut Cleaner<'_>,
@@ -69,18 +94,22 @@ fn load(
         Ok(records) => records.into_iter().for_each(hand_on),
         Err(mut kept) if window.len() == 1 => {
             losses.damaged.extend(kept.pop().map(|kept| Damage {
-                place: super::tags::place_in_words(&source.bytes, source.scan.form, kept.start),
+                at: kept.start,
                 kept,
                 type_name: "entity".into(),
                 found: "its groups contradict one another".into(),
             }));
         }
         Err(_) => {
-            let mut single = Cleaner::new(&source.bytes, &source.scan);
-            for entry in window {
-                if single.add(entry).is_ok() {
-                    load(source, &mut single, &[*entry], losses, hand_on);
+            let mut again = Cleaner::new(&source.bytes, &source.scan);
+            let (first, second) = window.split_at(window.len() / 2);
+            for half in [first, second] {
+                for entry in half {
+                    if let Err(damage) = again.add(entry) {
+                        losses.damaged.push(*damage);
+                    }
                 }
+                load(source, &mut again, half, losses, hand_on);
             }
         }
     }

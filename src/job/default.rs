@@ -58,6 +58,8 @@ impl Default for Job {
                 one_end_length_m: 35.0,
                 opening_clearance_m: 0.150,
                 edge_tolerance_m: 0.050,
+                memory_mb: 4000.0,
+                expanded_entities: 1_000_000.0,
             },
         }
     }

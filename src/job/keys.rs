@@ -112,7 +112,7 @@ pub const TABLES: &[(&str, &str)] = &[
     ("stressing", "Jacking, friction, draw-in."),
     ("profile", "The curve between the marked heights."),
     ("long_term", "Elastic shortening, shrinkage, creep, relaxation."),
-    ("limits", "Where a finding begins."),
+    ("limits", "Where a finding begins, and how much a drawing may cost."),
 ];
 
 /// Every key.
@@ -435,6 +435,10 @@ pub static KEYS: &[Key] = &[
         "Clear distance between a tendon and an opening, below which is a warning.", "common practice"),
     key("limits", "edge_tolerance_mm", number!(0.0..=5000.0, limits.edge_tolerance_m, MM),
         "How far a tendon may stand outside the slab's edge.", "judgement of this program"),
+    key("limits", "memory_mb", number!(16.0..=1_000_000.0, limits.memory_mb, ONE),
+        "Memory that a drawing may take, estimated from its size and entities, in megabytes.", "judgement of this program"),
+    key("limits", "expanded_entities", number!(1.0..=100_000_000.0, limits.expanded_entities, ONE),
+        "Entities that block inserts may expand to.", "judgement of this program"),
 ];
 
 /// The key at this place.

@@ -319,6 +319,10 @@ pub struct Limits {
     pub opening_clearance_m: f64,
     /// How far a tendon may stand outside the slab edge, metres.
     pub edge_tolerance_m: f64,
+    /// Memory that a drawing may take by an estimate, megabytes.
+    pub memory_mb: f64,
+    /// Entities that block inserts may expand to.
+    pub expanded_entities: f64,
 }
 
 impl Job {

@@ -80,6 +80,7 @@ pub(super) fn first_in_gap(
     count: u64,
 ) -> Option<u64> {
     let mut used: Vec<u64> = Tags::new(bytes)
+        .forgiving()
         .map_while(Result::ok)
         .filter(|tag| matches!(tag.code, 5 | 105 | 320..=369 | 390..=399 | 480 | 481 | 1005))
         .filter(|tag| !stands_in(own_marks, tag.start))

@@ -26,9 +26,14 @@ impl<'a> Pass<'a> {
     }
 
     pub(super) fn begin_entity(&mut self, name: &'a [u8], start: usize) {
+        let after_open = match self.sequence {
+            Some(b"INSERT") => self.gathered.followed,
+            waiting => waiting.is_some(),
+        };
         self.sequence = None;
         self.gathered = Gathered {
             start,
+            after_open,
             ..Gathered::default()
         };
         if self.section == Section::Blocks {
@@ -125,7 +130,8 @@ impl<'a> Pass<'a> {
         let layer = self
             .names
             .id(held.layer.unwrap_or(b"0"), &self.scan.code_page);
-        let own = self.section == Section::Entities && self.names.is_own(layer);
+        // A mark that is cut or garbled stays: where it ends is not known.
+        let own = self.section == Section::Entities && self.names.is_own(layer) && !held.broken;
         self.handles.settle_entity(own, held.handle);
         if own {
             // A comment behind it is not ours.
@@ -152,7 +158,12 @@ impl<'a> Pass<'a> {
         };
         // A constant attribute is written nowhere but in its block's definition; any other is a form to fill in.
         let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
-        let reads = self.types.is_read(held.type_id) && !is_form;
+        let broken = held.broken;
+        let reads = self.types.is_read(held.type_id) && !is_form && !broken;
+        if broken {
+            self.left_out();
+        }
+        let held = &self.gathered;
         if in_block {
             if let Some(block) = self.scan.blocks.last_mut()
                 && reads
@@ -171,7 +182,9 @@ impl<'a> Pass<'a> {
         self.number += 1;
         entry.number = self.number;
         self.owner_seen = self.owner_seen.or(held.owner);
-        count(&mut self.scan.counts, layer, held.type_id);
+        if !broken {
+            self.counts.add(layer, held.type_id);
+        }
         if reads {
             let index = to_u32(self.scan.entries.len());
             for name in self.attribute_layers.drain(..) {
@@ -193,19 +206,4 @@ pub(super) fn text(value: Option<&[u8]>) -> Option<String> {
 
 fn to_u32(number: usize) -> u32 {
     u32::try_from(number).unwrap_or(u32::MAX)
-}
-
-fn count(counts: &mut Vec<Vec<usize>>, layer: u32, type_id: usize) {
-    let layer = layer as usize;
-    if counts.len() <= layer {
-        counts.resize(layer + 1, Vec::new());
-    }
-    if let Some(row) = counts.get_mut(layer) {
-        if row.len() <= type_id {
-            row.resize(type_id + 1, 0);
-        }
-        if let Some(cell) = row.get_mut(type_id) {
-            *cell += 1;
-        }
-    }
 }
