@@ -123,3 +123,14 @@ fn an_unclosed_header_takes_no_variable() {
     assert_eq!(drawing.shapes.len(), 1);
     marks_without_loss(&source, 0.001);
 }
+
+#[test]
+fn a_section_of_nothing_but_garbage_takes_no_marks() {
+    let (source, drawing, findings) = everything(of_tags(
+        "0 SECTION 2 ENTITIES 0 LINE 5 A1 8 A 10 0 20 0 11 1 21 0 0 ENDSEC
+         0 SECTION 2 ENTITIES oops 5 A1",
+    ));
+    assert_eq!(drawing.shapes.len(), 1);
+    assert_eq!(rules(&findings), ["drawing-damaged"]);
+    marks_without_loss(&source, 0.001);
+}

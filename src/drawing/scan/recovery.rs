@@ -77,6 +77,10 @@ impl Pass<'_> {
                 self.sequence = None;
             }
         }
+        if !at_hand && self.section == Section::Entities && self.scan.eof_start.is_none() {
+            // Nothing of this section is left to stand behind; an earlier one may be.
+            self.section = Section::Other;
+        }
         let tags_end = self.scan.tags_end;
         self.end_record(tags_end);
         self.end_section(end);
