@@ -119,7 +119,7 @@ fn inputs(job: &Job) -> Vec<String> {
         ),
         format!(
             "Strand modulus {} MPa; concrete modulus {} MPa at stressing, {} MPa at 28 days; share of elastic shortening {}",
-            job.system.strand_modulus_mpa,
+            job.tendon.strand_modulus_mpa,
             long_term.concrete_modulus_transfer_mpa,
             long_term.concrete_modulus_mpa,
             long_term.shortening_share

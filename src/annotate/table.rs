@@ -213,7 +213,7 @@ fn strands(tendon: &Tendon, job: &Job) -> String {
     };
     let strands = tendon.strands.map_or("?".to_owned(), |n| n.to_string());
     let size = tendon.strand.as_deref();
-    let size = size.or(job.system.default_strand.as_deref());
+    let size = size.or(job.tendon.default_strand.as_deref());
     let size = size.map(words::name);
     let size = size.map(|size| format!("-{size}")).unwrap_or_default();
     format!("{times}{strands}{size}")

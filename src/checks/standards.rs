@@ -86,7 +86,7 @@ impl Limit {
     /// Greatest stress over strength.
     fn ratio(&self, job: &Job) -> f64 {
         self.of_yield.map_or(self.of_strength, |of_yield| {
-            self.of_strength.min(of_yield * job.system.yield_ratio)
+            self.of_strength.min(of_yield * job.tendon.yield_ratio)
         })
     }
 
@@ -186,7 +186,7 @@ mod tests {
         }
         // Of a strand that yields early the yield stress binds.
         let mut job = with(En1992);
-        job.system.yield_ratio = 0.85;
+        job.tendon.yield_ratio = 0.85;
         job.stressing.jacking_ratio = 0.77;
         assert_eq!(jacking(&job).len(), 1);
     }

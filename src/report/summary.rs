@@ -208,10 +208,11 @@ fn named(found: &[&Finding]) -> String {
 }
 
 /// Tables of the job whose values are engineering figures; the rest are conventions of reading and limits.
-const FIGURES: [&str; 6] = [
+const FIGURES: [&str; 7] = [
     "slab",
     "height",
-    "system",
+    "",
+    "tendon",
     "stressing",
     "profile",
     "long_term",

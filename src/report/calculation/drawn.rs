@@ -99,7 +99,7 @@ fn strands(job: &Job, tendon: &Tendon) -> String {
     } else {
         String::new()
     };
-    match (tendon.strands, steel(tendon, &job.system)) {
+    match (tendon.strands, steel(tendon, &job.tendon)) {
         (None | Some(0), _) => "  strands: not known\n".to_owned(),
         (Some(count), Some(steel)) => {
             let one_mm2 = steel.area_mm2 / f64::from(count);
