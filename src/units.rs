@@ -157,9 +157,28 @@ impl Unit {
         format!("{} {}", self.figure(si, decimals), self.name)
     }
 
+    /// As [`Unit::figure`], without zeros at the end.
+    pub fn brief_figure(self, si: f64, decimals: usize) -> String {
+        let figure = self.figure(si, decimals);
+        if figure.contains('.') {
+            figure
+                .trim_end_matches('0')
+                .trim_end_matches('.')
+                .to_owned()
+        } else {
+            figure
+        }
+    }
+
     /// As [`Unit::said`], without zeros at the end.
     pub fn brief(self, si: f64, decimals: usize) -> String {
-        format!("{} {}", trimmed(self.figure(si, decimals)), self.name)
+        format!("{} {}", self.brief_figure(si, decimals), self.name)
+    }
+
+    /// As [`Unit::figure`], with its sign.
+    pub fn signed(self, si: f64, decimals: usize) -> String {
+        let decimals = decimals + self.more;
+        format!("{:+.decimals$}", self.value(si))
     }
 
     /// A value that the job gives: six significant figures at most, without zeros at the end.
@@ -176,17 +195,6 @@ impl Unit {
     /// A column's name with the unit at its end, such as `jacking_kip`.
     pub fn column(self, name: &str) -> String {
         format!("{name}_{}", self.name.to_lowercase())
-    }
-}
-
-fn trimmed(figure: String) -> String {
-    if figure.contains('.') {
-        figure
-            .trim_end_matches('0')
-            .trim_end_matches('.')
-            .to_owned()
-    } else {
-        figure
     }
 }
 

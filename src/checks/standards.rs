@@ -1,8 +1,9 @@
 //! Stress limits of the standards whose long-term loss the job asks for.
 
 use super::Worked;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::job::{Job, LongTermMethod};
+use crate::units::STRESS;
 
 /// See [`Rule::meaning`].
 pub static STANDARD_STRESS: Rule = Rule {
@@ -143,11 +144,14 @@ pub(super) fn along(worked: &Worked, job: &Job) -> Vec<Finding> {
                 &STANDARD_STRESS,
                 limit.level,
                 station_m,
-                format!(
-                    "{when} the strand carries {stress_mpa:.0} MPa, {ratio:.3} of its strength; at most {:.3} was expected ({})",
-                    limit.ratio(job),
-                    limit.clause
-                ),
+                Wording::of(|units| {
+                    format!(
+                        "{when} the strand carries {}, {ratio:.3} of its strength; at most {:.3} was expected ({})",
+                        units.of(STRESS).said(stress_mpa, 0),
+                        limit.ratio(job),
+                        limit.clause
+                    )
+                }),
                 "jack to less, or seat the wedges with the draw-in that the system really has",
             ))
         })
