@@ -88,7 +88,7 @@ pub const FORCE: Quantity = quantity("kN", "kip", KIP_KN, 1);
 /// Stress, modulus, strength.
 pub const STRESS: Quantity = quantity("MPa", "ksi", KIP_KN * 1000.0 / (INCH_MM * INCH_MM), 1);
 /// Area of steel.
-pub const STEEL: Quantity = quantity("mm2", "in2", INCH_MM * INCH_MM, 4);
+pub const STEEL: Quantity = quantity("mm2", "in2", INCH_MM * INCH_MM, 5);
 /// Heights, extensions, clearances.
 pub const SHORT: Quantity = quantity("mm", "in", INCH_MM, 2);
 /// Stations, lengths, radii, places on the plan.

@@ -4,14 +4,14 @@ use geo::Coord;
 use snapbox::{assert_data_eq, file};
 use tautplan::analysis::{Analysis, PointResult, TendonResult};
 use tautplan::checks;
-use tautplan::finding::{Finding, Level};
+use tautplan::finding::{Finding, Level, Wording};
 use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
 use tautplan::geometry::Path;
 use tautplan::job::{Datum, Fallback, Job};
 use tautplan::losses::{EndForces, Forces, LaterLosses, LossTotals, Steel};
 use tautplan::profile::{Profile, Span};
 use tautplan::report::{self, DrawingFacts};
-use tautplan::units::Units;
+use tautplan::units::{SHORT, Units};
 
 fn at(x: f64, y: f64) -> Coord<f64> {
     Coord { x, y }
@@ -155,7 +155,14 @@ fn analysis() -> Analysis {
         Finding::new(
             &checks::cover::HEIGHT_OUTSIDE_COVER,
             Level::Error,
-            "the duct has 15 mm of cover, \"20 mm\" was expected",
+            Wording::of(|units| {
+                let short = units.of(SHORT);
+                format!(
+                    "the duct has {} of cover, \"{}\" was expected",
+                    short.brief(15.0, 1),
+                    short.brief(20.0, 1)
+                )
+            }),
             "correct the height",
         )
         .on_tendon("=D2\u{1b}[31m")
@@ -233,6 +240,46 @@ fn the_summary_is_as_it_was() {
     ];
     let made = report::summary(&facts(), &analysis(), &Job::default(), &files);
     assert_data_eq!(made, file!["golden/summary.txt"].raw());
+}
+
+#[test]
+fn results_in_us_units_are_as_they_were() {
+    let (analysis, lf) = (analysis(), |table: String| table.replace("\r\n", "\n"));
+    let job = Job {
+        units: Units::Us,
+        ..Job::default()
+    };
+    assert_data_eq!(
+        report::summary(&facts(), &analysis, &job, &[]),
+        file!["golden/us/summary.txt"].raw()
+    );
+    // Numbers that belong together, for whoever reckons the sheet's formulas again.
+    let mut whole = analysis.clone();
+    whole.results[0].concrete_stress_mpa = Some(2.498_46);
+    let forces = whole.results[0].forces.as_mut().expect("forces");
+    let later = forces.later.as_mut().expect("later losses");
+    later.creep_mpa = 29.527_25;
+    later.relaxation_mpa = 90.31;
+    assert_data_eq!(
+        report::calculation(&facts(), &whole, &job, "D001").expect("a sheet"),
+        file!["golden/us/sheet.txt"].raw()
+    );
+    assert_data_eq!(
+        lf(report::tendons_csv(&analysis, Units::Us)),
+        file!["golden/us/tendons.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::points_csv(&analysis, Units::Us)),
+        file!["golden/us/points.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::extensions_csv(&analysis, Units::Us)),
+        file!["golden/us/extensions.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::findings_csv(&analysis, Units::Us)),
+        file!["golden/us/findings.csv"].raw()
+    );
 }
 
 #[test]
