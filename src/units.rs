@@ -94,7 +94,7 @@ pub const SHORT: Quantity = quantity("mm", "in", INCH_MM, 2);
 /// Stations, lengths, radii, places on the plan.
 pub const LONG: Quantity = quantity("m", "ft", FOOT_M, 0);
 /// Area on the plan.
-pub const FLOOR: Quantity = quantity("m2", "ft2", FOOT_M * FOOT_M, 0);
+pub const FLOOR: Quantity = quantity("m²", "ft²", FOOT_M * FOOT_M, 0);
 /// Angle turned along a length.
 pub const TURN: Quantity = quantity("rad/m", "rad/ft", 1.0 / FOOT_M, 1);
 /// Loss along a length.
