@@ -71,13 +71,15 @@ impl Run {
 
 const US: &str = "units = \"us\"\n[height]\nunit = \"mm\"\n";
 
-/// An SI unit as a word of its own; how the drawing's own heights are read is the drawing's business.
+/// Lines with an SI unit as a word of its own. How the drawing's own heights are read is the drawing's business, and
+/// published equations, which end in their clause, stand in the units they are published in, as the sheet says.
 fn si_words(text: &str) -> Vec<String> {
     let unit = Regex::new(r"(?m)(^|[ (])(kN|MPa|mm2?|m2?|m²|kN m|kN/m|rad/m|1?/m)([ ,;:.)]|$)");
     let unit = unit.expect("a pattern");
     let read = Regex::new(r"mm (above the local soffit)|drawn mm").expect("a pattern");
     let lines = text.lines().map(|line| read.replace_all(line, ""));
     lines
+        .filter(|line| !line.ends_with(']') && !line.contains("as published in SI"))
         .filter(|line| unit.is_match(line))
         .map(std::borrow::Cow::into_owned)
         .collect()
