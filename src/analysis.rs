@@ -199,7 +199,7 @@ pub fn work_tendon(
 /// # Errors
 /// [`Refusal`] says what is not known, or why there is no force.
 pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Stressed<'p>, Refusal> {
-    let steel = steel(tendon, &job.system).ok_or(Refusal::SteelUnknown)?;
+    let steel = steel(tendon, &job.tendon).ok_or(Refusal::SteelUnknown)?;
     let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
         return Err(Refusal::EndUnknown);
     };
@@ -292,7 +292,7 @@ fn finish(
     });
     let result = TendonResult {
         profile: curve.cloned(),
-        area_mm2: steel(tendon, &job.system).map(|steel| steel.area_mm2),
+        area_mm2: steel(tendon, &job.tendon).map(|steel| steel.area_mm2),
         plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
         turning: curve
             .zip(forces.as_ref())

@@ -27,7 +27,7 @@ pub use ground::Ground;
 use std::sync::LazyLock;
 
 use crate::drawing;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{EndKind, Floor, Tendon};
 use crate::job::Job;
 use crate::losses::Forces;
@@ -124,7 +124,7 @@ impl Worked<'_> {
         rule: &'static Rule,
         level: Level,
         station_m: f64,
-        text: String,
+        text: impl Into<Wording>,
         remedy: impl Into<String>,
     ) -> Finding {
         Finding::new(rule, level, text, remedy)

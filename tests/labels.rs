@@ -40,7 +40,7 @@ fn mark(text: &str, job: &Job) -> String {
     parts.extend(said.tendons.map(|count| format!("{count} x")));
     parts.extend(said.strands.map(|count| count.to_string()));
     parts.extend(said.strand.map(|size| {
-        let known = job.system.strand_named(&size);
+        let known = job.tendon.strand_named(&size);
         format!("of {}", known.map_or("?", |size| &size.name))
     }));
     parts.extend(said.required_kn.map(|kn| format!("{kn:.1} kN")));

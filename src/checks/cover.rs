@@ -3,11 +3,12 @@
 use super::Worked;
 use super::chords::Chords;
 use super::ground::{Ground, Stretch};
-use super::words::{also_at, mm, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, short, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{Faces, Point, PointKind};
 use crate::job::{Datum, Job};
 use crate::profile::Span;
+use crate::units::Units;
 
 /// See [`Rule::meaning`].
 pub static HEIGHT_OUTSIDE_COVER: Rule = Rule {
@@ -73,7 +74,7 @@ pub(super) fn height_outside_cover(
         &HEIGHT_OUTSIDE_COVER,
         Level::Error,
         worst.station_m,
-        overrun_text(&worst, job) + &also_at(&others),
+        Wording::of(|units| overrun_text(&worst, job, units) + &also_at(&others, units)),
         "correct the height, or the slab thickness if a zone or its text is wrong; check which soffit and which part of the \
          duct the heights are measured to, since a height read from the wrong soffit looks like this",
     ))
@@ -94,7 +95,7 @@ struct Overrun {
 /// Distances from the strands' centroid down to the duct's underside and up to its top, metres. Where heights are given
 /// to the duct, the strand lies in it as it is pulled: at its top where the curve sags, at its bottom where it hogs.
 fn duct_around(curvature_per_m: f64, job: &Job) -> (f64, f64) {
-    let height_m = job.system.duct_height_m;
+    let height_m = job.tendon.duct_height_m;
     let reading = &job.conventions.height;
     let below_m = match reading.datum {
         Datum::DuctUnderside | Datum::Chair if curvature_per_m > 0.0 => {
@@ -143,10 +144,12 @@ fn overrun_of(point: &Point, level_m: f64, job: &Job) -> Option<Overrun> {
 }
 
 /// What the duct of a point does that it should not at the faces there, in words; `None` where nothing.
-pub(super) fn duct_outside(point: &Point, job: &Job) -> Option<String> {
+pub(super) fn duct_outside(point: &Point, job: &Job) -> Option<Wording> {
     let overrun = overrun_of(point, point.level_m()?, job)?;
     let face = if overrun.top { "top" } else { "soffit" };
-    Some(duct_words(&overrun, &format!(" to the {face}")))
+    Some(Wording::of(|units| {
+        duct_words(&overrun, &format!(" to the {face}"), units)
+    }))
 }
 
 /// The worst place of one piece of curve between faces that do not step: at its ends or where it is level.
@@ -189,12 +192,13 @@ fn merged(mut overruns: Vec<Overrun>) -> Vec<Overrun> {
     kept
 }
 
-fn overrun_text(worst: &Overrun, job: &Job) -> String {
+fn overrun_text(worst: &Overrun, job: &Job, units: Units) -> String {
+    let short = |length_m: f64| short(length_m, units);
     let slab = worst
         .faces
         .thickness_m
         .map_or("slab".to_owned(), |thickness_m| {
-            format!("{} slab", mm(thickness_m))
+            format!("{} slab", short(thickness_m))
         });
     let below_top_m = worst.faces.top_m - worst.level_m;
     let strand = match (worst.top, worst.faces.soffit_m()) {
@@ -203,40 +207,46 @@ fn overrun_text(worst: &Overrun, job: &Job) -> String {
             if height_m < 0.0 {
                 format!(
                     "the strand is {} below the soffit of the {slab}",
-                    mm(-height_m)
+                    short(-height_m)
                 )
             } else {
                 format!(
                     "the strand is {} above the soffit of the {slab}",
-                    mm(height_m)
+                    short(height_m)
                 )
             }
         }
         _ if below_top_m < 0.0 => {
             format!(
                 "the strand is {} above the top of the {slab}",
-                mm(-below_top_m)
+                short(-below_top_m)
             )
         }
         _ => format!(
             "the strand is {} below the top of the {slab}",
-            mm(below_top_m)
+            short(below_top_m)
         ),
     };
-    let duct = duct_words(worst, "");
+    let duct = duct_words(worst, "", units);
     format!(
-        "{strand} and {duct}; at least {} of cover was expected (limits.cover_mm, system.duct_height_mm {})",
-        mm(job.limits.cover_m),
-        mm(job.system.duct_height_m)
+        "{strand} and {duct}; at least {} of cover was expected (limits.cover_mm, tendon.duct_height_mm {})",
+        short(job.limits.cover_m),
+        short(job.tendon.duct_height_m)
     )
 }
 
-fn duct_words(overrun: &Overrun, of_face: &str) -> String {
+fn duct_words(overrun: &Overrun, of_face: &str, units: Units) -> String {
     let face = if overrun.top { "top" } else { "soffit" };
     if overrun.clear_m < 0.0 {
-        format!("its duct passes the {face} by {}", mm(-overrun.clear_m))
+        format!(
+            "its duct passes the {face} by {}",
+            short(-overrun.clear_m, units)
+        )
     } else {
-        format!("its duct has {} of cover{of_face}", mm(overrun.clear_m))
+        format!(
+            "its duct has {} of cover{of_face}",
+            short(overrun.clear_m, units)
+        )
     }
 }
 
@@ -280,7 +290,7 @@ mod tests {
     #[test]
     fn the_duct_may_lie_at_the_cover_and_no_nearer_to_either_face() {
         let tendon = straight(10.0);
-        let least_m = job().limits.cover_m + job().system.duct_height_m / 2.0;
+        let least_m = job().limits.cover_m + job().tendon.duct_height_m / 2.0;
         for height_m in [least_m, 0.2 - least_m] {
             assert_eq!(cover_finding(&tendon, &level(height_m), &slab_200()), None);
         }
@@ -349,7 +359,7 @@ mod tests {
         let found = overrun_at(0.0, strand_m - 0.201, slab, 0.01, &job);
         assert!(found.is_some_and(|f| !f.top && (f.over_m - 0.001).abs() < 1e-9));
         // Hogging, the duct's top stands above the strand by the rest of the duct's height.
-        let above_m = job.system.duct_height_m - job.conventions.height.strand_in_duct_high_m;
+        let above_m = job.tendon.duct_height_m - job.conventions.height.strand_in_duct_high_m;
         let level_m = -(job.limits.cover_m + above_m);
         assert!(overrun_at(0.0, level_m, slab, -0.01, &job).is_none());
         let found = overrun_at(0.0, level_m + 0.001, slab, -0.01, &job);

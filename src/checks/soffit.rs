@@ -3,11 +3,12 @@
 use super::Worked;
 use super::cover::duct_outside;
 use super::ground::Ground;
-use super::words::{also_at, mm};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, short};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{Faces, Point, PointKind, Tendon};
 use crate::job::{Job, Soffit};
 use crate::profile::{self, Profile};
+use crate::units::{LONG, Units};
 
 /// See [`Rule::meaning`].
 pub static SOFFIT_DOUBTFUL: Rule = Rule {
@@ -36,7 +37,7 @@ struct Reading<'a> {
 /// What speaks against a reading of one point.
 struct Fault {
     point: usize,
-    text: String,
+    text: Wording,
 }
 
 pub(super) fn soffit_doubtful(worked: &Worked, ground: &Ground, job: &Job) -> Option<Finding> {
@@ -66,16 +67,18 @@ pub(super) fn soffit_doubtful(worked: &Worked, ground: &Ground, job: &Job) -> Op
         &SOFFIT_DOUBTFUL,
         Level::Warning,
         point.station_m,
-        format!(
-            "read from {here} the {} at station {:.2} m lies {}, and {}; read from {there} it would lie {}, which nothing \
-             speaks against; it was left as the job says{}",
-            kind(point.kind),
-            point.station_m,
-            below_top(point, point.height_m),
-            first.text,
-            below_top(point, point.other_soffit_m),
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "read from {here} the {} at station {} lies {}, and {}; read from {there} it would lie {}, which nothing \
+                 speaks against; it was left as the job says{}",
+                kind(point.kind),
+                long(point.station_m, units),
+                below_top(point, point.height_m, units),
+                first.text.in_units(units),
+                below_top(point, point.other_soffit_m, units),
+                also_at(&others, units)
+            )
+        }),
         format!(
             "if this drawing measures heights from {there}, set `soffit = \"{other}\"` in the job file's [height] table; if \
              not, correct the height, or the thickness or level of the zone it stands in"
@@ -155,7 +158,7 @@ fn beside(points: &[Point], at: usize) -> [Option<&Point>; 2] {
 }
 
 /// A high point not above the low point beside it, or the reverse.
-fn upside_down(points: &[Point], at: usize) -> Option<String> {
+fn upside_down(points: &[Point], at: usize) -> Option<Wording> {
     let point = points.get(at)?;
     let (up, kind) = match point.kind {
         PointKind::High => (1.0, PointKind::Low),
@@ -176,14 +179,14 @@ fn upside_down(points: &[Point], at: usize) -> Option<String> {
     } else {
         ("high", "not below")
     };
-    Some(format!(
-        "is {than} the {which} point at station {:.2} m",
-        other.station_m
-    ))
+    Some(Wording::of(|units| {
+        let station = long(other.station_m, units);
+        format!("is {than} the {which} point at station {station}")
+    }))
 }
 
 /// A climb from the height before or to the one after that no strand makes.
-fn jump(points: &[Point], at: usize) -> Option<String> {
+fn jump(points: &[Point], at: usize) -> Option<Wording> {
     let point = points.get(at)?;
     let level_m = point.level_m()?;
     let next = [at.checked_sub(1), Some(at + 1)];
@@ -194,17 +197,19 @@ fn jump(points: &[Point], at: usize) -> Option<String> {
             (other.level_m()? - level_m).abs(),
         );
         (climb_m > STEEP * apart_m + ROUNDED_M).then(|| {
-            format!(
-                "jumps by {} against the height at station {:.2} m",
-                mm(climb_m),
-                other.station_m
-            )
+            Wording::of(|units| {
+                format!(
+                    "jumps by {} against the height at station {}",
+                    short(climb_m, units),
+                    long(other.station_m, units)
+                )
+            })
         })
     })
 }
 
 /// A hogging radius below its limit between the bending points beside a point.
-fn tight(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Option<String> {
+fn tight(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Option<Wording> {
     let station_m = points.get(at)?.station_m;
     let [before, after] = beside(points, at).map(|p| p.map_or(station_m, |p| p.station_m));
     let radius_m = profile
@@ -216,15 +221,18 @@ fn tight(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Option<St
         .min_by(f64::total_cmp)?;
     let limit_m = job.limits.hogging_radius_error_m;
     (radius_m < limit_m).then(|| {
-        format!(
-            "leaves a hogging radius of {radius_m:.2} m beside it, where {limit_m} m was expected \
-             (limits.hogging_radius_error_m)"
-        )
+        Wording::of(|units| {
+            format!(
+                "leaves a hogging radius of {} beside it, where {} was expected (limits.hogging_radius_error_m)",
+                long(radius_m, units),
+                units.of(LONG).given(limit_m)
+            )
+        })
     })
 }
 
 /// A support off the curve: the point itself, or one between it and the bending points beside it.
-fn off_curve(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Option<String> {
+fn off_curve(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Option<Wording> {
     let station_m = points.get(at)?.station_m;
     let [before, after] = beside(points, at).map(|p| p.map_or(station_m, |p| p.station_m));
     let supports = points.iter().filter(|point| {
@@ -236,11 +244,13 @@ fn off_curve(profile: &Profile, points: &[Point], at: usize, job: &Job) -> Optio
             (off_m.abs() > job.limits.support_residual_error_m).then_some((point, off_m))
         })
         .max_by(|a, b| a.1.abs().total_cmp(&b.1.abs()))?;
-    Some(format!(
-        "the support height at station {:.2} m lies {} off the curve",
-        support.station_m,
-        mm(off_m.abs())
-    ))
+    Some(Wording::of(|units| {
+        format!(
+            "the support height at station {} lies {} off the curve",
+            long(support.station_m, units),
+            short(off_m.abs(), units)
+        )
+    }))
 }
 
 /// High points in a drop that lie in the lower half of the general slab's depth, or lower than the tendon's high points
@@ -268,17 +278,19 @@ fn lying_low(used: &Tendon, turned: &Tendon, group: &[usize], general: Faces) ->
                     && here_m > usual_m + 0.5 * step_m
                     && (there_m - usual_m).abs() < 0.25 * step_m =>
             {
-                format!(
-                    "lower by {} than this tendon's high points outside",
-                    mm(here_m - usual_m)
-                )
+                Wording::of(|units| {
+                    format!(
+                        "lower by {} than this tendon's high points outside",
+                        short(here_m - usual_m, units)
+                    )
+                })
             }
-            _ if here_m > 0.5 * slab_m && there_m < 0.3 * slab_m => {
+            _ if here_m > 0.5 * slab_m && there_m < 0.3 * slab_m => Wording::of(|units| {
                 format!(
                     "lower than the middle of the general slab, {}",
-                    mm(0.5 * slab_m)
+                    short(0.5 * slab_m, units)
                 )
-            }
+            }),
             _ => return None,
         };
         Some(Fault { point: at, text })
@@ -296,7 +308,7 @@ fn kind(kind: PointKind) -> &'static str {
 }
 
 /// Where a point lies by one of its heights.
-fn below_top(point: &Point, height_m: Option<f64>) -> String {
+fn below_top(point: &Point, height_m: Option<f64>, units: Units) -> String {
     let (Some(height_m), Some(level_m)) = (
         height_m,
         height_m.and_then(|height_m| point.level_of_m(height_m)),
@@ -311,7 +323,7 @@ fn below_top(point: &Point, height_m: Option<f64>) -> String {
     };
     format!(
         "{} {side} the top and {} above the soffit there",
-        mm(off_m),
-        mm(height_m)
+        short(off_m, units),
+        short(height_m, units)
     )
 }

@@ -1,8 +1,9 @@
 //! Stress limits of the standards whose long-term loss the job asks for.
 
 use super::Worked;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::job::{Job, LongTermMethod};
+use crate::units::STRESS;
 
 /// See [`Rule::meaning`].
 pub static STANDARD_STRESS: Rule = Rule {
@@ -86,7 +87,7 @@ impl Limit {
     /// Greatest stress over strength.
     fn ratio(&self, job: &Job) -> f64 {
         self.of_yield.map_or(self.of_strength, |of_yield| {
-            self.of_strength.min(of_yield * job.system.yield_ratio)
+            self.of_strength.min(of_yield * job.tendon.yield_ratio)
         })
     }
 
@@ -143,11 +144,14 @@ pub(super) fn along(worked: &Worked, job: &Job) -> Vec<Finding> {
                 &STANDARD_STRESS,
                 limit.level,
                 station_m,
-                format!(
-                    "{when} the strand carries {stress_mpa:.0} MPa, {ratio:.3} of its strength; at most {:.3} was expected ({})",
-                    limit.ratio(job),
-                    limit.clause
-                ),
+                Wording::of(|units| {
+                    format!(
+                        "{when} the strand carries {}, {ratio:.3} of its strength; at most {:.3} was expected ({})",
+                        units.of(STRESS).said(stress_mpa, 0),
+                        limit.ratio(job),
+                        limit.clause
+                    )
+                }),
                 "jack to less, or seat the wedges with the draw-in that the system really has",
             ))
         })
@@ -186,7 +190,7 @@ mod tests {
         }
         // Of a strand that yields early the yield stress binds.
         let mut job = with(En1992);
-        job.system.yield_ratio = 0.85;
+        job.tendon.yield_ratio = 0.85;
         job.stressing.jacking_ratio = 0.77;
         assert_eq!(jacking(&job).len(), 1);
     }

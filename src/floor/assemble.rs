@@ -17,8 +17,9 @@ use super::slab::{Thickness, slab};
 use super::symbols::Symbols;
 use super::types::{Floor, PointKind, Tendon};
 use crate::drawing::{Drawing, Text};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::job::Job;
+use crate::units::{LONG, Units};
 
 /// A label that nobody claims is told by the nearest tendon within this many times its reach.
 const SEEN: f64 = 4.0;
@@ -103,7 +104,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             tendons: said.tendons.unwrap_or(1),
             strands: said.strands,
             strand: said.strand.as_ref().map(|written| {
-                let known = job.system.strand_named(written);
+                let known = job.tendon.strand_named(written);
                 known.map_or_else(|| written.clone(), |size| size.name.clone())
             }),
             required_kn: said.required_kn,
@@ -164,24 +165,23 @@ impl Near<'_> {
         findings.extend(settled.doubts.iter().map(|doubt| {
             let here = &self.names[doubt.hosts[0]];
             let there = &self.names[doubt.hosts[1]];
-            let said = words(readings[doubt.label]);
-            let (level, text) = if doubt.tied {
+            let (level, tail) = if doubt.tied {
                 (
                     Level::Error,
-                    format!(
-                        "height {said} fits {here} and {there} equally well; neither was given it"
-                    ),
+                    format!("fits {here} and {there} equally well; neither was given it"),
                 )
             } else {
                 (
                     Level::Warning,
-                    format!("height {said} was taken for {here}, but fits {there} about as well"),
+                    format!("was taken for {here}, but fits {there} about as well"),
                 )
             };
             Finding::new(
                 &LABEL_AMBIGUOUS,
                 level,
-                text,
+                Wording::of(|units| {
+                    format!("height {} {tail}", words(readings[doubt.label], units))
+                }),
                 "move the label nearer to its tendon, or turn it along the tendon",
             )
             .on_tendon(here)
@@ -198,34 +198,33 @@ impl Near<'_> {
             .feet(text.place, SEEN * reach_m)
             .into_iter()
             .min_by(|a, b| a.distance_m.total_cmp(&b.distance_m));
-        let (tail, foot) = match nearest {
-            Some(foot) if foot.distance_m > reach_m => {
-                let name = &self.names[foot.line];
-                (
-                    format!(
-                        "{name}, the nearest, is {:.2} m off and the reach is {reach_m:.2} m",
-                        foot.distance_m
-                    ),
-                    Some(foot),
-                )
+        let tail = |units: Units| {
+            let long = |length_m: f64| units.of(LONG).said(length_m, 2);
+            let Some(foot) = &nearest else {
+                return format!("no tendon is within {}", long(SEEN * reach_m));
+            };
+            let (name, off) = (&self.names[foot.line], long(foot.distance_m));
+            if foot.distance_m > reach_m {
+                let reach = long(reach_m);
+                format!("{name}, the nearest, is {off} off and the reach is {reach}")
+            } else {
+                format!("{name}, {off} off, has its own label there")
             }
-            Some(foot) => (
-                format!(
-                    "{}, {:.2} m off, has its own label there",
-                    self.names[foot.line], foot.distance_m
-                ),
-                Some(foot),
-            ),
-            None => (format!("no tendon is within {:.2} m", SEEN * reach_m), None),
         };
         let finding = Finding::new(
             &LABEL_UNCLAIMED,
             Level::Warning,
-            format!("label {:?} belongs to no tendon: {tail}", text.content),
+            Wording::of(|units| {
+                format!(
+                    "label {:?} belongs to no tendon: {}",
+                    text.content,
+                    tail(units)
+                )
+            }),
             "move the label to its tendon, or delete it",
         )
         .at_place(text.place);
-        match foot {
+        match nearest {
             Some(foot) => finding
                 .on_tendon(&self.names[foot.line])
                 .at_station(foot.station_m),

@@ -3,8 +3,9 @@
 
 use super::readings::Word;
 use super::rules::{FACE_BY_NEIGHBOURS, FACE_UNKNOWN};
-use super::zone_texts::millimetres;
-use crate::finding::{Finding, Level};
+use super::zone_texts::short;
+use crate::finding::{Finding, Level, Wording};
+use crate::units::{LONG, Units};
 
 /// A height between the anchors.
 #[derive(Debug, Clone, Copy)]
@@ -62,7 +63,7 @@ pub(super) fn words_by_neighbours(heights: &[Bare]) -> (Vec<Option<Word>>, Vec<F
         }
         from = to;
     }
-    let named = |list: &[usize]| {
+    let named = |list: &[usize], units: Units| {
         let each = |&at: &usize| {
             let what = match words[at] {
                 Some(Word::High) => " as a high point from the top",
@@ -71,9 +72,9 @@ pub(super) fn words_by_neighbours(heights: &[Bare]) -> (Vec<Option<Word>>, Vec<F
             };
             let height = heights[at];
             format!(
-                "{} at station {:.2} m{what}",
-                millimetres(height.value_m),
-                height.station_m
+                "{} at station {}{what}",
+                short(height.value_m, units),
+                units.of(LONG).said(height.station_m, 2)
             )
         };
         let mut names: Vec<String> = list.iter().take(NAMED).map(each).collect();
@@ -85,7 +86,7 @@ pub(super) fn words_by_neighbours(heights: &[Bare]) -> (Vec<Option<Word>>, Vec<F
     let mut findings = Vec::new();
     let mut say = |list: &[usize], rule, level, before: &str, after: &str| {
         if let Some(&first) = list.first() {
-            let text = format!("{before}: {}{after}", named(list));
+            let text = Wording::of(|units| format!("{before}: {}{after}", named(list, units)));
             let remedy = "write H or L with each distance to the nearer face (height.high_words, height.low_words)";
             let finding = Finding::new(rule, level, text, remedy);
             findings.push(finding.at_station(heights[first].station_m));
@@ -107,11 +108,13 @@ pub(super) fn unknown_at_anchor(value_m: f64) -> Finding {
     Finding::new(
         &FACE_UNKNOWN,
         Level::Error,
-        format!(
-            "the anchor's distance of {} to the nearer face may be from the top or from the soffit; the tendon has no curve \
-             without it",
-            millimetres(value_m)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the anchor's distance of {} to the nearer face may be from the top or from the soffit; the tendon has no \
+                 curve without it",
+                short(value_m, units)
+            )
+        }),
         "write H before a distance from the top, L before one from the soffit (height.high_words, height.low_words)",
     )
 }

@@ -9,9 +9,10 @@ use super::order::by_place;
 use super::pieces::{Joint, chains};
 use super::rules::OUTLINE_OPEN;
 use crate::drawing::{Drawing, Shape, ShapeKind};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment, distance_m};
 use crate::job::Job;
+use crate::units::LONG;
 
 /// Outlines leave the drawn line by no more than this, metres.
 const CHORD_M: f64 = 0.001;
@@ -134,11 +135,14 @@ fn open_outline(ground: Ground, path: &Path) -> Finding {
     Finding::new(
         &OUTLINE_OPEN,
         Level::Warning,
-        format!(
-            "{what} does not close: {:.2} m of line, its ends {:.3} m apart; it was left out",
-            path.length_m(),
-            distance_m(start, end)
-        ),
+        Wording::of(|units| {
+            let long = units.of(LONG);
+            format!(
+                "{what} does not close: {} of line, its ends {} apart; it was left out",
+                long.said(path.length_m(), 2),
+                long.said(distance_m(start, end), 3)
+            )
+        }),
         "close the outline, or move the line to another layer if it is none",
     )
     .at_place(start)

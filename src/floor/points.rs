@@ -8,8 +8,9 @@ use super::readings::{HeightText, Word};
 use super::rules::LEVEL_LINE_DIFFERS;
 use super::slab::Thickness;
 use super::types::{Faces, Point, PointKind};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::job::{FromFace, HeightReading, Soffit};
+use crate::units::{SHORT, Units};
 
 /// A level line and a label nearer than this speak of one place, metres.
 const SAME_PLACE_M: f64 = 0.5;
@@ -171,16 +172,18 @@ fn merged(
                 } else {
                     Level::Warning
                 },
-                format!(
-                    "{} and {} at one place; {}",
-                    said(held.reading, *by_label),
-                    said(new.reading, labelled),
-                    if both_lines {
-                        "neither was used"
-                    } else {
-                        "the label was used"
-                    }
-                ),
+                Wording::of(|units| {
+                    format!(
+                        "{} and {} at one place; {}",
+                        said(held.reading, *by_label, units),
+                        said(new.reading, labelled, units),
+                        if both_lines {
+                            "neither was used"
+                        } else {
+                            "the label was used"
+                        }
+                    )
+                }),
                 "correct the level line or the label",
             );
             findings.push(
@@ -203,20 +206,20 @@ fn agree(a: HeightText, b: HeightText) -> bool {
         && (a.word == b.word || a.word.is_none() || b.word.is_none())
 }
 
-fn said(reading: HeightText, by_label: bool) -> String {
+fn said(reading: HeightText, by_label: bool, units: Units) -> String {
     let source = if by_label { "a label" } else { "a level line" };
-    format!("{source} says {}", words(reading))
+    format!("{source} says {}", words(reading, units))
 }
 
 /// A height as one would write it.
-pub(super) fn words(reading: HeightText) -> String {
+pub(super) fn words(reading: HeightText, units: Units) -> String {
     let word = match reading.word {
         Some(Word::High) => "H",
         Some(Word::Low) => "L",
         None => "",
     };
-    let millimetres = (reading.value_m * 10_000.0).round() / 10.0;
-    format!("{word}{millimetres} mm")
+    let height = units.of(SHORT).brief(reading.value_m * 1000.0, 1);
+    format!("{word}{height}")
 }
 
 /// Gives bare numbers to the nearer face the words that their neighbours leave them, and says so.

@@ -10,10 +10,10 @@ use super::outlines::outlines;
 
 use super::rules::{LEVEL_OUTSIDE_ZONES, THICKNESS_UNKNOWN};
 use super::types::{Faces, Slab};
-use super::zone_texts::{millimetres, zone_text};
+use super::zone_texts::{short, zone_text};
 use super::zones::{self, SAME_M, Said, differing};
 use crate::drawing::{Drawing, Text};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::job::Job;
 
 /// A place this near to a zone's edge is in the zone, metres.
@@ -116,10 +116,12 @@ fn level_outside(level_m: f64, place: Coord<f64>) -> Finding {
     Finding::new(
         &LEVEL_OUTSIDE_ZONES,
         Level::Warning,
-        format!(
-            "a text outside every zone gives the level {}, which is not the general slab's: it was not used",
-            millimetres(level_m)
-        ),
+        Wording::of(|units| {
+            format!(
+                "a text outside every zone gives the level {}, which is not the general slab's: it was not used",
+                short(level_m, units)
+            )
+        }),
         "write the level inside its zone and close the zone's line; if it is the general slab's top, set slab.top_level_m",
     )
     .at_place(place)

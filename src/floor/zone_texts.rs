@@ -4,6 +4,7 @@ use super::lengths::length_m;
 use super::readings::length_unit;
 use crate::job::{Conventions, Pattern};
 use crate::units::LengthUnit;
+use crate::units::{SHORT, Units};
 
 /// What a text on a slab layer says, metres; levels as the drawing counts them.
 #[derive(Debug, Clone, Copy, Default, PartialEq)]
@@ -87,9 +88,9 @@ fn signed(text: &str) -> String {
     text.trim().trim_start_matches('±').replace('–', "-")
 }
 
-/// Millimetres for a reader, with at most one decimal.
-pub(super) fn millimetres(length_m: f64) -> String {
-    format!("{} mm", (length_m * 10_000.0).round() / 10.0 + 0.0)
+/// A height for a reader, to a tenth of a millimetre where it has one.
+pub(super) fn short(length_m: f64, units: Units) -> String {
+    units.of(SHORT).brief(length_m * 1000.0, 1)
 }
 
 #[cfg(test)]

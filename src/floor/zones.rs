@@ -6,9 +6,10 @@ use super::areas::{Areas, holds};
 use super::rules::{STEP_ASSUMED, THICKNESS_DIFFERS, ZONE_UNREAD};
 use super::slab::EDGE_M;
 use super::types::{Faces, Zone};
-use super::zone_texts::{ZoneText, millimetres};
-use crate::finding::{Finding, Level};
+use super::zone_texts::{ZoneText, short};
+use crate::finding::{Finding, Level, Wording};
 use crate::job::{SlabJob, StepKeeps};
+use crate::units::{FLOOR, LONG, Units};
 
 /// Numbers that differ by less say the same, metres.
 pub(super) const SAME_M: f64 = 0.0005;
@@ -75,10 +76,10 @@ fn read(
     findings: &mut Vec<Finding>,
 ) -> Option<Faces> {
     let Some(first) = said.first() else {
-        findings.push(unread(
-            outline,
-            "has no thickness and no level inside; expected a text such as T350 or TOS -50",
-        ));
+        findings.push(unread(outline, |_| {
+            "has no thickness and no level inside; expected a text such as T350 or TOS -50"
+                .to_owned()
+        }));
         return None;
     };
     let before = findings.len();
@@ -134,23 +135,27 @@ fn read(
     if faces.top_m.abs() > FAR_M {
         findings.push(unread(
             outline,
-            &format!(
-                "has its top {:.3} m from the top of the general slab; expected a step of a slab, within {FAR_M} m: its \
-                 level is counted from elsewhere (slab.top_level_m {} m)",
-                faces.top_m, job.top_level_m
-            ),
+            |units| {
+                let long = units.of(LONG);
+                format!(
+                    "has its top {} from the top of the general slab; expected a step of a slab, within {}: its level is \
+                     counted from elsewhere (slab.top_level_m {})",
+                    long.said(faces.top_m, 3),
+                    long.given(FAR_M),
+                    long.given(job.top_level_m)
+                )
+            },
         ));
         return None;
     }
     if thickness_m < THINNEST_M {
-        findings.push(unread(
-            outline,
-            &format!(
+        findings.push(unread(outline, |units| {
+            format!(
                 "has its top at {} and its soffit at {}; expected the soffit below the top",
-                millimetres(faces.top_m),
-                millimetres(faces.top_m - thickness_m)
-            ),
-        ));
+                short(faces.top_m, units),
+                short(faces.top_m - thickness_m, units)
+            )
+        }));
         return None;
     }
     Some(faces)
@@ -172,25 +177,30 @@ fn step(
     if let (Some(same_m), Some(thinner_m)) = (around.thickness_m, thinner_m)
         && (same_m - thinner_m).abs() > SAME_M
     {
-        let (taken, other) = (millimetres(same_m), millimetres(thinner_m));
-        let text = match keeps {
-            StepKeeps::Thickness => format!(
-                "taken as {taken} thick, like the slab around it, so that its soffit steps with its top; if the soffit runs \
-                 through, it is {other} thick"
-            ),
-            StepKeeps::Soffit => format!(
-                "taken as {other} thick, its soffit being that of the slab around it; if its soffit steps with its top, it \
-                 is {taken} thick"
-            ),
+        let taken = |units: Units| {
+            let (taken, other) = (short(same_m, units), short(thinner_m, units));
+            match keeps {
+                StepKeeps::Thickness => format!(
+                    "taken as {taken} thick, like the slab around it, so that its soffit steps with its top; if the soffit \
+                     runs through, it is {other} thick"
+                ),
+                StepKeeps::Soffit => format!(
+                    "taken as {other} thick, its soffit being that of the slab around it; if its soffit steps with its top, \
+                     it is {taken} thick"
+                ),
+            }
         };
         findings.push(
             Finding::new(
                 &STEP_ASSUMED,
                 Level::Warning,
-                format!(
-                    "the text of a zone gives its top, {}, and neither thickness nor soffit: it was {text}",
-                    millimetres(top_m)
-                ),
+                Wording::of(|units| {
+                    format!(
+                        "the text of a zone gives its top, {}, and neither thickness nor soffit: it was {}",
+                        short(top_m, units),
+                        taken(units)
+                    )
+                }),
                 "write the thickness or the soffit's level inside the zone, or set slab.step_keeps to what runs through",
             )
             .at_place(place),
@@ -199,11 +209,14 @@ fn step(
     Faces { top_m, thickness_m }
 }
 
-fn unread(outline: &Polygon<f64>, what: &str) -> Finding {
+fn unread(outline: &Polygon<f64>, what: impl Fn(Units) -> String) -> Finding {
     let finding = Finding::new(
         &ZONE_UNREAD,
         Level::Error,
-        format!("a zone of {:.1} m² {what}", outline.unsigned_area()),
+        Wording::of(|units| {
+            let area = units.of(FLOOR).said(outline.unsigned_area(), 1);
+            format!("a zone of {area} {}", what(units))
+        }),
         "write the thickness, or a level, inside the zone; set slab.top_level_m if levels are not counted from the general \
          slab's top; move the line to another layer if it is no zone",
     );
@@ -228,11 +241,13 @@ pub(super) fn differing(
                 Finding::new(
                     &THICKNESS_DIFFERS,
                     Level::Error,
-                    format!(
-                        "two {what} {context}: {} and {}",
-                        millimetres(used_m),
-                        millimetres(value_m)
-                    ),
+                    Wording::of(|units| {
+                        format!(
+                            "two {what} {context}: {} and {}",
+                            short(used_m, units),
+                            short(value_m, units)
+                        )
+                    }),
                     "correct the one that is wrong; draw a zone where the slab has another thickness or level",
                 )
                 .at_place(place),

@@ -3,21 +3,24 @@
 use super::families::{height_patterns, mark_patterns, thickness_patterns};
 use super::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, Published, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, Wobble,
+    Profiling, Published, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, TendonJob,
+    Wobble,
 };
-use crate::units::LengthUnit;
+use crate::units::{LengthUnit, Units};
 
 impl Default for Job {
     /// Every key at its default.
     fn default() -> Self {
         Self {
+            units: Units::Si,
+            system: System::BondedFlatDuct,
             conventions: conventions(),
             slab: SlabJob {
                 thickness_m: None,
                 top_level_m: 0.0,
                 step_keeps: StepKeeps::Thickness,
             },
-            system: system(),
+            tendon: tendon(),
             stressing: Stressing {
                 jacking_ratio: 0.75,
                 mu_per_rad: 0.19,
@@ -113,14 +116,14 @@ fn conventions() -> Conventions {
     }
 }
 
-fn system() -> System {
+fn tendon() -> TendonJob {
     let size = |name: &str, aliases: &[&str], area_mm2| StrandSize {
         name: name.to_owned(),
         aliases: words(aliases),
         area_mm2,
         strength_mpa: 1860.0,
     };
-    System {
+    TendonJob {
         strands: vec![
             size("12.7", &["0.5"], 98.7),
             size("12.9", &[], 100.0),

@@ -3,9 +3,9 @@
 use super::key::{Key, Kind, Place};
 use super::{
     Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Soffit,
-    StepKeeps, Wobble,
+    StepKeeps, System, Wobble,
 };
-use crate::units::LengthUnit;
+use crate::units::{LengthUnit, Units};
 
 /// A number that the job always has; `scale` is key units in one internal unit.
 macro_rules! number {
@@ -99,16 +99,20 @@ const fn key(
     }
 }
 
+/// The name of the place for keys that stand before every table.
+pub const ROOT: &str = "";
+
 /// Tables, in order, each with a sentence.
 #[rustfmt::skip]
 pub const TABLES: &[(&str, &str)] = &[
+    (ROOT, "What holds for the whole job; these keys stand before every [table]."),
     ("drawing", "How the drawing is measured and its lines are joined."),
     ("layers", "What lies on which layer: shell patterns, any letter case, also behind the prefix of a reference (REF$0$NAME, REF|NAME). NAME@colour=1 and NAME@linetype=DASHED* pick by what is seen."),
     ("ends", "How the drawing marks the ends of a tendon."),
     ("labels", "How marks and strand counts are written."),
     ("height", "How heights are written and what they measure."),
     ("slab", "The slab's thickness and how the drawing writes it."),
-    ("system", "Strand and duct."),
+    ("tendon", "Strand and duct."),
     ("stressing", "Jacking, friction, draw-in."),
     ("profile", "The curve between the marked heights."),
     ("long_term", "Elastic shortening, shrinkage, creep, relaxation."),
@@ -118,6 +122,21 @@ pub const TABLES: &[(&str, &str)] = &[
 /// Every key.
 #[rustfmt::skip]
 pub static KEYS: &[Key] = &[
+    key(ROOT, "units", Kind::Choice {
+            words: &["si", "us"],
+            get: |job| Some(job.units.name()),
+            set: |job, word| if let Some(units) = Units::named(word) { job.units = units },
+        },
+        "Units of what is written; the result file is in SI always, and the keys of this file are in the units of their names.",
+        CONVENTION),
+    key(ROOT, "system", Kind::Choice {
+            words: &["bonded-flat-duct", "greased-single-strand"],
+            get: |job| Some(job.system.name()),
+            set: |job, word| if let Some(system) = System::named(word) { system.set(job) },
+        },
+        "The system of tendon, whose usual friction, draw-in, duct, cover and radius in plan are the defaults of their keys.",
+        CONVENTION),
+
     key("drawing", "unit", Kind::Choice {
             words: UNITS,
             get: |job| job.conventions.unit.map(LengthUnit::name),
@@ -272,20 +291,20 @@ pub static KEYS: &[Key] = &[
         },
         "Thickness texts: group value.", CONVENTION),
 
-    key("system", "strand", Kind::Strands(place!(system.strands)),
+    key("tendon", "strand", Kind::Strands(place!(tendon.strands)),
         "Known sizes of strand; a size given here is added to these, or replaces the one of its name.",
         "ASTM A416 grade 270 (12.7, 15.2) and EN 10138-3 (12.9, 15.7), from memory"),
-    key("system", "default_strand", Kind::StrandName {
-            get: |job| job.system.default_strand.as_deref(),
-            set: |job, name| job.system.default_strand = Some(name.to_owned()),
+    key("tendon", "default_strand", Kind::StrandName {
+            get: |job| job.tendon.default_strand.as_deref(),
+            set: |job, name| job.tendon.default_strand = Some(name.to_owned()),
         },
         "Size of strand where a mark gives only a count.",
         "such a tendon gets a finding and no forces"),
-    key("system", "strand_modulus_mpa", number!(100_000.0..=250_000.0, system.strand_modulus_mpa, ONE),
+    key("tendon", "strand_modulus_mpa", number!(100_000.0..=250_000.0, tendon.strand_modulus_mpa, ONE),
         "Modulus of the strand.", "common practice, 195 GPa give or take 10"),
-    key("system", "yield_ratio", number!(0.5..=1.0, system.yield_ratio, ONE),
+    key("tendon", "yield_ratio", number!(0.5..=1.0, tendon.yield_ratio, ONE),
         "Yield stress of the strand over its strength.", "ASTM A416 low-relaxation strand, from memory"),
-    key("system", "duct_height_mm", number!(5.0..=300.0, system.duct_height_m, MM),
+    key("tendon", "duct_height_mm", number!(5.0..=300.0, tendon.duct_height_m, MM),
         "Overall height of a duct.", "common practice for flat ducts"),
 
     key("stressing", "jacking_ratio", number!(0.1..=1.0, stressing.jacking_ratio, ONE),

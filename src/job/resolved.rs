@@ -2,19 +2,24 @@
 
 use std::fmt;
 
+use super::System;
 use super::pattern::Pattern;
 use super::published::{LongTermMethod, Published};
-use crate::units::LengthUnit;
+use crate::units::{LengthUnit, Units};
 
 /// Everything a job decides.
 #[derive(Debug, Clone)]
 pub struct Job {
+    /// Units that results are written in.
+    pub units: Units,
+    /// The system whose defaults hold.
+    pub system: System,
     /// How the drawing is to be read.
     pub conventions: Conventions,
     /// The slab, where the drawing does not say.
     pub slab: SlabJob,
     /// Strand and duct.
-    pub system: System,
+    pub tendon: TendonJob,
     /// Jacking, friction, draw-in.
     pub stressing: Stressing,
     /// Shape between the marked heights.
@@ -213,7 +218,7 @@ pub struct StrandSize {
 
 /// Strand and duct.
 #[derive(Debug, Clone)]
-pub struct System {
+pub struct TendonJob {
     /// Known strand sizes.
     pub strands: Vec<StrandSize>,
     /// Size of a strand where a mark gives only a count; `None`: a finding.

@@ -3,24 +3,29 @@
 use crate::analysis::{Analysis, pair};
 use crate::job::LongTermMethod;
 use crate::report::table::{Align, plain, table};
+use crate::units::{STRESS, Unit, Units};
 
 /// Losses and service force by each method, and the spread between them; `None` where the job names one only.
-pub(super) fn part(analysis: &Analysis) -> Option<String> {
+pub(super) fn part(analysis: &Analysis, units: Units) -> Option<String> {
     let methods = analysis.methods();
     if methods.len() < 2 {
         return None;
     }
+    let stress = units.of(STRESS);
+    let [shortening, shrinkage, creep, relaxation] =
+        ["shortening", "shrinkage", "creep", "relaxation"]
+            .map(|loss| format!("{loss} {}", stress.name));
     let header = [
         "method",
         "tendons",
-        "shortening MPa",
-        "shrinkage MPa",
-        "creep MPa",
-        "relaxation MPa",
+        &shortening,
+        &shrinkage,
+        &creep,
+        &relaxation,
         "service/jacking %",
     ];
     let mut rows = vec![header.map(str::to_owned).to_vec()];
-    rows.extend(methods.iter().map(|&method| row(analysis, method)));
+    rows.extend(methods.iter().map(|&method| row(analysis, method, stress)));
     let mut aligns = [Align::Right; 7];
     aligns[0] = Align::Left;
     let mut text = format!(
@@ -34,7 +39,7 @@ pub(super) fn part(analysis: &Analysis) -> Option<String> {
     Some(text)
 }
 
-fn row(analysis: &Analysis, method: LongTermMethod) -> Vec<String> {
+fn row(analysis: &Analysis, method: LongTermMethod, stress: Unit) -> Vec<String> {
     let mut sums = [0.0; 5];
     let mut count = 0_u32;
     for result in &analysis.results {
@@ -56,13 +61,15 @@ fn row(analysis: &Analysis, method: LongTermMethod) -> Vec<String> {
         }
     }
     let mut cells = vec![method.word().to_owned(), count.to_string()];
-    cells.extend(sums.map(|sum| {
-        if count == 0 {
-            "-".to_owned()
-        } else {
-            format!("{:.1}", sum / f64::from(count))
-        }
-    }));
+    let [losses @ .., left_percent] = sums.map(|sum| sum / f64::from(count.max(1)));
+    cells.extend(losses.map(|loss_mpa| stress.figure(loss_mpa, 1)));
+    cells.push(format!("{left_percent:.1}"));
+    if count == 0 {
+        cells
+            .iter_mut()
+            .skip(2)
+            .for_each(|cell| "-".clone_into(cell));
+    }
     cells
 }
 
