@@ -55,6 +55,11 @@ impl Wording {
         Self { si, us }
     }
 
+    /// The text in SI.
+    pub fn as_str(&self) -> &str {
+        &self.si
+    }
+
     /// The text in these units.
     pub fn in_units(&self, units: Units) -> &str {
         match (units, &self.us) {
@@ -83,7 +88,7 @@ impl Deref for Wording {
     type Target = str;
 
     fn deref(&self) -> &str {
-        &self.si
+        self.as_str()
     }
 }
 

@@ -180,7 +180,7 @@ fn in_a_fold_the_cover_is_to_the_local_faces() {
             .find(|f| f.station_m == Some(15.0))
             .cloned()
     };
-    let least_mm = mm(Job::default().limits.cover_m + Job::default().system.duct_height_m / 2.0);
+    let least_mm = mm(Job::default().limits.cover_m + Job::default().tendon.duct_height_m / 2.0);
     assert_eq!(cover(&format!("H{}", 250 - least_mm)), None);
     let high = cover(&format!("H{}", 250 - least_mm + 5)).expect("too near the fold's own top");
     let said = format!(
