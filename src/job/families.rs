@@ -99,11 +99,11 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
         by_unit(&[
             (
                 "height",
-                r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
+                r"(?i)^(?:(?<word>\p{L}[\p{L}.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
             ),
             (
                 "height, word last",
-                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$",
+                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>\p{L}[\p{L}.\s]*?)\)?$",
             ),
         ])
     });

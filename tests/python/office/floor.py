@@ -49,6 +49,8 @@ class Office:
     spans_x, spans_y = (8.0, 8.4), (7.2, 7.8)
     banded_y, distributed_x = (0.6, 6.9, 7.5), (1.6, 3.2, 4.8, 6.4)
     thickness, low, high = 200.0, 30.0, 165.0
+    # Neighbours differ by this, so that a label read for the wrong tendon shows.
+    step = 5.0
     strands, strand = 5, "12.7"
     size, banded_size = 0.15, 0.12
     layers = {"banded": "TENDON-BANDED", "distributed": "TENDON-DISTRIBUTED", "height": "TENDON-HEIGHT",
@@ -76,6 +78,8 @@ class Office:
     def tendon(self, letter, number, run, plan, spans):
         ends = [("live", "dead"), ("live", "live"), ("dead", "live")][number % 3]
         made = Tendon(self.mark(letter, number), run, plan, ends, self.count(run), self.strands, self.strand)
+        self.low = type(self).low + self.step * (number % 2)
+        self.high = type(self).high - self.step * (number % 3 == 1)
         made.points = self.profile(made, spans)
         return made
 

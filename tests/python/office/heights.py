@@ -10,7 +10,7 @@ INCH = 25.4
 class Inches(Office):
     habit = "inches with fractions and inch signs, drawn in inches"
     version, unit = "R2000", "in"
-    thickness, low, high = 8 * INCH, 1.25 * INCH, 6.75 * INCH
+    thickness, low, high, step = 8 * INCH, 1.25 * INCH, 6.75 * INCH, 0.25 * INCH
     strands, strand = 4, "12.7"
     job = """\
 [height]
@@ -40,8 +40,14 @@ text_unit = "in"
 
 class HyphenFractions(Inches):
     habit = "fractions with a hyphen and no inch sign, HP and LP before; less than an inch at some lows"
-    version, binary = "R12", False
+    version = "R12"
     low = 0.875 * INCH
+    # R12 has no $INSUNITS.
+    job = """\
+[drawing]
+unit = "in"
+
+""" + Inches.job
 
     def height_text(self, kind, number):
         return f"{ {'high': 'HP', 'low': 'LP'}[kind]} {self.whole_and_fraction(number, '-')}"
@@ -139,6 +145,18 @@ from = "top"
         return f"{number:g}"
 
 
+class NearerFace(Office):
+    habit = "distances to the nearer face, with words"
+    version = "R12"
+    job = """\
+[height]
+from = "nearer-face"
+"""
+
+    def written(self, point, tendon):
+        return point[2] if point[0] == "low" else self.local(tendon.place(point[1])) - point[2]
+
+
 class Chairs(Office):
     habit = "chair heights, to the duct's underside, at every metre; high and low points in words"
     version, binary = "R2013", True
@@ -200,6 +218,26 @@ low_words = ["CGS LOW"]
         super().label(role, content, tendon, inwards if content == "T/2" else station)
 
 
+class AnchorHeights(Office):
+    habit = "bare numbers at every point, the anchors' too, all written within the tendon's length"
+    version = "R2010"
+
+    def profile(self, tendon, spans):
+        found = super().profile(tendon, spans)
+        return [("anchor", found[0][1], 110.0), *found[1:-1], ("anchor", found[-1][1], 110.0)]
+
+    def shown(self, point):
+        return True
+
+    def height_text(self, kind, number):
+        return f"{number:g}"
+
+    def label(self, role, content, tendon, station):
+        size = self.banded_size if tendon.run == "banded" else self.size
+        within = 2.8 * size
+        super().label(role, content, tendon, {0.0: 0.05, tendon.length(): tendon.length() - within}.get(station, station))
+
+
 class OwnPatterns(Office):
     habit = "a height from the soffit and one from the top in one drawing, told by letters: b30, t35"
     version = "R2018"
@@ -218,5 +256,5 @@ patterns = [
         return f"{'b' if kind == 'low' else 't'}{number:g}"
 
 
-CASES = [Inches, HyphenFractions, OneCharacterFractions, StackedFractions, DecimalInches, Centimetres, Metres, FromTop,
-         Chairs, WordsBehind, MidDepth, OwnPatterns]
+CASES = [Inches, HyphenFractions, OneCharacterFractions, StackedFractions, DecimalInches, Centimetres, Metres, FromTop, NearerFace,
+         Chairs, WordsBehind, MidDepth, AnchorHeights, OwnPatterns]

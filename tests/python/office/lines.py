@@ -205,10 +205,8 @@ class MirroredBlocks(Office):
     def meant(self):
         found = super().meant()
         by_x = {tendon.plan[0][0]: tendon for tendon in found if tendon.run == "distributed"}
-        for x, tendon in by_x.items():
-            tendon.ends = by_x[min(x, 16.0 - x)].ends if x > 8.0 and 16.0 - x in by_x else tendon.ends
-        for x in (12.8, 14.4):
-            by_x[x].ends = next(t.ends for u, t in by_x.items() if abs(u + x - 16.0) < 1e-9)
+        for x, image in ((14.4, 1.6), (12.8, 3.2)):
+            by_x[x].ends, by_x[x].points = by_x[image].ends, by_x[image].points
         return found
 
 

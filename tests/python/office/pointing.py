@@ -1,4 +1,4 @@
-"""Habits whose rooms of the program are not merged yet: labels that point, heights from another face or soffit."""
+"""Habits whose rooms of the program are not merged yet: labels that point, heights from another soffit."""
 
 from ezdxf.math import Vec2
 from ezdxf.render.mleader import ConnectionSide
@@ -39,7 +39,7 @@ class MultiLeaders(Leaders):
 
 
 class Ticks(Office):
-    habit = "a tick on the tendon at each point, its label a metre farther along"
+    habit = "a tick on the tendon at each point, its label a little farther along"
     version = "R2007"
     job = """\
 [pointing]
@@ -54,12 +54,12 @@ tick_blocks = ["PT-TICK"]
     def draw_height(self, tendon, point):
         kind, station, height = point
         self.sheet.insert(self.look("height"), "PT-TICK", tendon.place(station), tendon.along(station))
-        self.label("height", self.height_text(kind, height), tendon, station + 0.2)
+        self.label("height", self.height_text(kind, height), tendon, station + 0.3)
 
 
 class Groups(Office):
     habit = "one typical distributed tendon for a group, with an extent line and D01-D05 @ 1200"
-    version = "R2010"
+    version, step = "R2010", 0.0
     distributed_x = (1.6, 2.8, 4.0, 5.2, 6.4)
     layers = {**Office.layers, "extent": "TENDON-EXTENT"}
     colours = {**Office.colours, "extent": 40}
@@ -108,16 +108,4 @@ soffit = "general"
         return point[2] - (self.local(tendon.place(point[1])) - self.thickness)
 
 
-class NearerFace(Office):
-    habit = "distances to the nearer face, with words"
-    version = "R12"
-    job = """\
-[height]
-from = "nearer-face"
-"""
-
-    def written(self, point, tendon):
-        return point[2] if point[0] == "low" else self.local(tendon.place(point[1])) - point[2]
-
-
-CASES = [Leaders, MultiLeaders, Ticks, Groups, GeneralSoffit, NearerFace]
+CASES = [Leaders, MultiLeaders, Ticks, Groups, GeneralSoffit]

@@ -42,12 +42,9 @@ class BandBeam(Office):
 
 class LevelLines(Office):
     habit = "low points of the distributed tendons by level lines across them, high points beside each"
-    version, binary = "R2000", True
+    version, binary, step = "R2000", True, 0.0
     layers = {**Office.layers, "level": "TENDON-LEVEL-LINE"}
     colours = {**Office.colours, "level": 34}
-
-    def shown(self, point):
-        return point[0] != "anchor"
 
     def draw_height(self, tendon, point):
         if tendon.run == "banded" or point[0] == "high":

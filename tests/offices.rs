@@ -1,0 +1,247 @@
+//! Small floors in other offices' habits, drawn by `tests/python/offices.py` with ezdxf: what is read of each, with the
+//! lines that an engineer would add, is what was meant; and what `survey` proposes, used unchanged, reads most of them.
+
+use std::collections::BTreeMap;
+use std::path::{Path, PathBuf};
+use std::process::Command;
+
+use serde_json::Value;
+use tautplan::drawing::{self, Wanted};
+use tautplan::floor::{self, EndKind, Tendon};
+use tautplan::job::{self, Job};
+
+/// Drawings below `tests/data/offices/`, and below `to-come/`.
+const CASES: usize = 53;
+const TO_COME: usize = 5;
+/// Cases that a person can read and the program cannot, each with the reason.
+const NOT_READ: &[(&str, &str)] = &[];
+/// The same of habits whose rooms of the program are still to come.
+const STILL_TO_COME: &[(&str, &str)] = &[
+    ("general-soffit", "height.soffit"),
+    ("groups", "layers.extents, pointing.group_patterns"),
+    ("leaders", "leaders are not followed"),
+    ("multi-leaders", "MULTILEADER is not read"),
+    ("ticks", "pointing.tick_blocks"),
+];
+/// What survey's proposal, used unchanged, does not read yet, each with what the engineer still says.
+const NOT_BY_SURVEY: &[(&str, &str)] = &[];
+
+/// Places and heights as near as this are those meant.
+const NEAR_M: f64 = 0.05;
+const NEAR_MM: f64 = 0.01;
+
+struct Case {
+    name: String,
+    drawing: PathBuf,
+    truth: Value,
+    /// The engineer's lines; none where the defaults do.
+    job: String,
+}
+
+fn cases(folder: &str) -> Vec<Case> {
+    let folder = Path::new(env!("CARGO_MANIFEST_DIR"))
+        .join("tests/data/offices")
+        .join(folder);
+    let mut cases: Vec<Case> = std::fs::read_dir(&folder)
+        .expect("the drawings are there")
+        .map(|entry| entry.expect("an entry").path())
+        .filter(|path| path.extension().is_some_and(|ending| ending == "dxf"))
+        .map(|drawing| {
+            let beside = |ending: &str| std::fs::read_to_string(drawing.with_extension(ending));
+            let truth = beside("json").expect("the truth is beside the drawing");
+            Case {
+                name: drawing.file_stem().map(|n| n.to_string_lossy().into_owned()).unwrap_or_default(),
+                truth: serde_json::from_str(&truth).expect("JSON"),
+                job: beside("toml").unwrap_or_default(),
+                drawing,
+            }
+        })
+        .collect();
+    cases.sort_by(|a, b| a.name.cmp(&b.name));
+    cases
+}
+
+/// What differs between the floor as read by this job and as meant; empty where nothing does.
+fn differences(case: &Case, job: &str) -> Vec<String> {
+    let job = match job::read("tautplan.toml", job) {
+        Ok(resolved) => resolved.job,
+        Err(problems) => return vec![format!("the job file: {problems}")],
+    };
+    let bytes = std::fs::read(&case.drawing).expect("the drawing can be read");
+    let source = match drawing::open(bytes) {
+        Ok(source) => source,
+        Err(refusal) => return vec![format!("{refusal:?}")],
+    };
+    let wanted = Wanted::layers(job.layer_patterns()).expect("patterns of layers");
+    let (drawing, _) = drawing::read(&source, &wanted, job.conventions.unit);
+    let (floor, _) = floor::read(&drawing, &job);
+    let meant = case.truth["tendons"].as_array().expect("tendons");
+    let mut found = Vec::new();
+    if floor.tendons.len() != meant.len() {
+        found.push(format!("{} tendons, meant {}", floor.tendons.len(), meant.len()));
+    }
+    for truth in meant {
+        let fitting: Vec<(&Tendon, bool)> = floor
+            .tendons
+            .iter()
+            .filter_map(|tendon| Some((tendon, runs_forwards(tendon, truth)?)))
+            .collect();
+        let name = &truth["mark"];
+        match fitting[..] {
+            [(tendon, forwards)] => found.extend(
+                tendon_differences(tendon, forwards, truth, &job)
+                    .into_iter()
+                    .map(|difference| format!("{name}: {difference}")),
+            ),
+            _ => found.push(format!("{name}: {} tendons have its ends", fitting.len())),
+        }
+    }
+    found
+}
+
+fn number(value: &Value) -> f64 {
+    value.as_f64().expect("a number")
+}
+
+/// Whether a tendon has the ends of the one meant, and if so whether it was drawn the same way.
+fn runs_forwards(tendon: &Tendon, truth: &Value) -> Option<bool> {
+    let points = truth["points"].as_array()?;
+    let meant = [points.first()?, points.last()?];
+    let [start, end] = tendon.ends.map(|end| end.place);
+    let near = |place: geo::Coord<f64>, point: &Value| {
+        (place.x - number(&point["x_m"])).hypot(place.y - number(&point["y_m"])) < NEAR_M
+    };
+    if near(start, meant[0]) && near(end, meant[1]) {
+        Some(true)
+    } else {
+        (near(start, meant[1]) && near(end, meant[0])).then_some(false)
+    }
+}
+
+fn tendon_differences(tendon: &Tendon, forwards: bool, truth: &Value, job: &Job) -> Vec<String> {
+    let mut found = Vec::new();
+    let mut held = |what: &str, read: Value, meant: &Value| {
+        let same = match (read.as_f64(), meant.as_f64()) {
+            (Some(read), Some(meant)) => (read - meant).abs() < NEAR_MM,
+            _ => read == *meant,
+        };
+        if !same {
+            found.push(format!("{what} {read}, meant {meant}"));
+        }
+    };
+    // Where the drawing marks no tendon, the mark is the program's own.
+    if !truth["mark"].is_null() {
+        held("mark", tendon.mark.clone().into(), &truth["mark"]);
+    }
+    let run = serde_json::to_value(tendon.run).expect("a run");
+    held("run", run, &truth["run"]);
+    held("tendons", tendon.tendons.into(), &truth["tendons"]);
+    held("strands", tendon.strands.into(), &truth["strands"]);
+    let counted = tendon.strands.and(job.system.default_strand.clone());
+    let strand = tendon.strand.clone().or(counted);
+    held("strand", strand.into(), &truth["strand"]);
+    held("required kN", tendon.required_kn.into(), &truth["required_kn"]);
+    held("required kN/m", tendon.required_kn_per_m.into(), &truth["required_kn_per_m"]);
+    let mut ends = tendon.ends.map(|end| end.kind.map(|kind| match kind {
+        EndKind::Live => "live",
+        EndKind::Dead => "dead",
+    }));
+    let mut points = tendon.points.clone();
+    if !forwards {
+        ends.reverse();
+        points.reverse();
+    }
+    held("ends", serde_json::json!(ends), &truth["ends"]);
+    let meant = truth["points"].as_array().expect("points");
+    let same = points.len() == meant.len()
+        && points.iter().zip(meant).all(|(point, meant)| {
+            let kind = serde_json::to_value(point.kind).expect("a kind");
+            let off_m = (point.place.x - number(&meant["x_m"])).hypot(point.place.y - number(&meant["y_m"]));
+            let height_mm = point.height_m.map_or(f64::NAN, |height_m| height_m * 1000.0);
+            kind == meant["kind"]
+                && off_m < NEAR_M
+                && (height_mm - number(&meant["height_mm"])).abs() < NEAR_MM
+        });
+    if !same {
+        let read: Vec<String> = points
+            .iter()
+            .map(|p| format!("{:?} {:.1?} at {:.2} {:.2}", p.kind, p.height_m.map(|h| h * 1000.0), p.place.x, p.place.y))
+            .collect();
+        found.push(format!("points {}", read.join(", ")));
+    }
+    found
+}
+
+/// What was found wrong, case by case, where it was not known to be; and what was known to be wrong and is not.
+fn judge(found: &BTreeMap<String, Vec<String>>, known: &[(&str, &str)]) -> String {
+    let mut words = String::new();
+    for (name, wrong) in found {
+        let is_known = known.iter().any(|(known, _)| known == name);
+        match (wrong.first(), is_known) {
+            (Some(first), false) => words += &format!("{name}: {} differences, the first: {first}\n", wrong.len()),
+            (None, true) => words += &format!("{name} is read now: take it from the list\n"),
+            _ => {}
+        }
+    }
+    for (name, _) in known.iter().filter(|(name, _)| !found.contains_key(*name)) {
+        words += &format!("{name} is in the list and no case\n");
+    }
+    words
+}
+
+#[test]
+fn every_office_is_read_with_its_job_file() {
+    for (folder, count, known) in [("", CASES, NOT_READ), ("to-come", TO_COME, STILL_TO_COME)] {
+        let cases = cases(folder);
+        assert_eq!(cases.len(), count, "cases in {folder:?}");
+        let found = cases
+            .iter()
+            .map(|case| (case.name.clone(), differences(case, &case.job)))
+            .collect();
+        let words = judge(&found, known);
+        assert!(words.is_empty(), "\n{words}");
+    }
+}
+
+/// The proposal for a drawing, as a file.
+fn surveyed(case: &Case) -> String {
+    let output = Command::new(env!("CARGO_BIN_EXE_tautplan"))
+        .arg("survey")
+        .arg(&case.drawing)
+        .output()
+        .expect("the program runs");
+    assert!(output.status.success(), "{}: {output:?}", case.name);
+    String::from_utf8(output.stdout).expect("UTF-8")
+}
+
+/// The proposal with the engineer's lines in place of its own.
+fn with_lines(proposal: &str, lines: &str) -> String {
+    let mut whole: toml::Table = toml::from_str(proposal).expect("TOML");
+    for (table, keys) in toml::from_str::<toml::Table>(lines).expect("TOML") {
+        let held = whole.entry(table).or_insert_with(|| toml::Table::new().into());
+        let held = held.as_table_mut().expect("a table");
+        held.extend(keys.as_table().expect("a table").clone());
+    }
+    toml::to_string(&whole).expect("TOML")
+}
+
+#[test]
+fn surveys_proposals_read_two_thirds_unchanged_and_all_with_the_lines_added() {
+    let cases = cases("");
+    let mut unchanged = BTreeMap::new();
+    let mut added = BTreeMap::new();
+    for case in &cases {
+        let proposal = surveyed(case);
+        let wrong = differences(case, &proposal);
+        if !wrong.is_empty() {
+            added.insert(case.name.clone(), differences(case, &with_lines(&proposal, &case.job)));
+        }
+        unchanged.insert(case.name.clone(), wrong);
+    }
+    let right = unchanged.values().filter(|wrong| wrong.is_empty()).count();
+    let words = judge(&unchanged, NOT_BY_SURVEY);
+    assert!(words.is_empty(), "{right} of {} unchanged\n{words}", cases.len());
+    assert!(3 * right >= 2 * cases.len(), "{right} of {}", cases.len());
+    let words = judge(&added, NOT_READ);
+    assert!(words.is_empty(), "with the lines added\n{words}");
+}
