@@ -66,7 +66,7 @@ impl Contents {
             ..Self::default()
         };
         for (number, shape) in drawing.shapes.iter().enumerate() {
-            if shape.kind == ShapeKind::Solid {
+            if shape.kind == ShapeKind::Solid || contents.at_ends.draws(drawing, shape) {
                 continue;
             }
             let marked = contents.at_ends.marked.get(&number).copied().unwrap_or(0);
