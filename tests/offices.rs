@@ -11,20 +11,38 @@ use tautplan::floor::{self, EndKind, Tendon};
 use tautplan::job::{self, Job};
 
 /// Drawings below `tests/data/offices/`, and below `to-come/`.
-const CASES: usize = 59;
-const TO_COME: usize = 5;
+const CASES: usize = 66;
+const TO_COME: usize = 4;
 /// Cases that a person can read and the program cannot, each with the reason.
 const NOT_READ: &[(&str, &str)] = &[];
 /// The same of habits whose rooms of the program are still to come.
 const STILL_TO_COME: &[(&str, &str)] = &[
-    ("general-soffit", "height.soffit"),
     ("groups", "layers.extents, pointing.group_patterns"),
     ("leaders", "leaders are not followed"),
     ("multi-leaders", "MULTILEADER is not read"),
     ("ticks", "pointing.tick_blocks"),
 ];
 /// What survey's proposal, used unchanged, does not read yet, each with what the engineer still says.
-const NOT_BY_SURVEY: &[(&str, &str)] = &[];
+const NOT_BY_SURVEY: &[(&str, &str)] = &[
+    ("broken-at-labels", "how long a gap is bridged"),
+    ("bare-chairs", "that heights are to the chair"),
+    ("chairs", "that heights are to the chair"),
+    (
+        "cyrillic-code-page",
+        "which end block is live: two names that say nothing",
+    ),
+    ("ends-by-letter", "that F is a fixed end"),
+    ("from-top", "that heights are from the top"),
+    ("mark-bubbles", "that marks stand farther from their tendons than other labels"),
+    ("nearer-face", "that heights are from the nearer face"),
+    ("no-units", "that the drawing is in centimetres"),
+    ("note-of-thickness", "the thickness, which only a note says"),
+    ("other-marks", "the strands' size, which only a note says"),
+    (
+        "own-patterns",
+        "that b is up from the soffit and t down from the top",
+    ),
+];
 
 /// Places and heights as near as this are those meant.
 const NEAR_M: f64 = 0.05;
@@ -50,7 +68,10 @@ fn cases(folder: &str) -> Vec<Case> {
             let beside = |ending: &str| std::fs::read_to_string(drawing.with_extension(ending));
             let truth = beside("json").expect("the truth is beside the drawing");
             Case {
-                name: drawing.file_stem().map(|n| n.to_string_lossy().into_owned()).unwrap_or_default(),
+                name: drawing
+                    .file_stem()
+                    .map(|n| n.to_string_lossy().into_owned())
+                    .unwrap_or_default(),
                 truth: serde_json::from_str(&truth).expect("JSON"),
                 job: beside("toml").unwrap_or_default(),
                 drawing,
@@ -78,7 +99,11 @@ fn differences(case: &Case, job: &str) -> Vec<String> {
     let meant = case.truth["tendons"].as_array().expect("tendons");
     let mut found = Vec::new();
     if floor.tendons.len() != meant.len() {
-        found.push(format!("{} tendons, meant {}", floor.tendons.len(), meant.len()));
+        found.push(format!(
+            "{} tendons, meant {}",
+            floor.tendons.len(),
+            meant.len()
+        ));
     }
     for truth in meant {
         let fitting: Vec<(&Tendon, bool)> = floor
@@ -140,12 +165,22 @@ fn tendon_differences(tendon: &Tendon, forwards: bool, truth: &Value, job: &Job)
     let counted = tendon.strands.and(job.system.default_strand.clone());
     let strand = tendon.strand.clone().or(counted);
     held("strand", strand.into(), &truth["strand"]);
-    held("required kN", tendon.required_kn.into(), &truth["required_kn"]);
-    held("required kN/m", tendon.required_kn_per_m.into(), &truth["required_kn_per_m"]);
-    let mut ends = tendon.ends.map(|end| end.kind.map(|kind| match kind {
-        EndKind::Live => "live",
-        EndKind::Dead => "dead",
-    }));
+    held(
+        "required kN",
+        tendon.required_kn.into(),
+        &truth["required_kn"],
+    );
+    held(
+        "required kN/m",
+        tendon.required_kn_per_m.into(),
+        &truth["required_kn_per_m"],
+    );
+    let mut ends = tendon.ends.map(|end| {
+        end.kind.map(|kind| match kind {
+            EndKind::Live => "live",
+            EndKind::Dead => "dead",
+        })
+    });
     let mut points = tendon.points.clone();
     if !forwards {
         ends.reverse();
@@ -156,8 +191,11 @@ fn tendon_differences(tendon: &Tendon, forwards: bool, truth: &Value, job: &Job)
     let same = points.len() == meant.len()
         && points.iter().zip(meant).all(|(point, meant)| {
             let kind = serde_json::to_value(point.kind).expect("a kind");
-            let off_m = (point.place.x - number(&meant["x_m"])).hypot(point.place.y - number(&meant["y_m"]));
-            let height_mm = point.height_m.map_or(f64::NAN, |height_m| height_m * 1000.0);
+            let off_m = (point.place.x - number(&meant["x_m"]))
+                .hypot(point.place.y - number(&meant["y_m"]));
+            let height_mm = point
+                .height_m
+                .map_or(f64::NAN, |height_m| height_m * 1000.0);
             kind == meant["kind"]
                 && off_m < NEAR_M
                 && (height_mm - number(&meant["height_mm"])).abs() < NEAR_MM
@@ -165,7 +203,15 @@ fn tendon_differences(tendon: &Tendon, forwards: bool, truth: &Value, job: &Job)
     if !same {
         let read: Vec<String> = points
             .iter()
-            .map(|p| format!("{:?} {:.1?} at {:.2} {:.2}", p.kind, p.height_m.map(|h| h * 1000.0), p.place.x, p.place.y))
+            .map(|p| {
+                format!(
+                    "{:?} {:.1?} at {:.2} {:.2}",
+                    p.kind,
+                    p.height_m.map(|h| h * 1000.0),
+                    p.place.x,
+                    p.place.y
+                )
+            })
             .collect();
         found.push(format!("points {}", read.join(", ")));
     }
@@ -174,19 +220,21 @@ fn tendon_differences(tendon: &Tendon, forwards: bool, truth: &Value, job: &Job)
 
 /// What was found wrong, case by case, where it was not known to be; and what was known to be wrong and is not.
 fn judge(found: &BTreeMap<String, Vec<String>>, known: &[(&str, &str)]) -> String {
-    let mut words = String::new();
+    let mut lines = Vec::new();
     for (name, wrong) in found {
         let is_known = known.iter().any(|(known, _)| known == name);
         match (wrong.first(), is_known) {
-            (Some(first), false) => words += &format!("{name}: {} differences, the first: {first}\n", wrong.len()),
-            (None, true) => words += &format!("{name} is read now: take it from the list\n"),
+            (Some(first), false) => {
+                let count = wrong.len();
+                lines.push(format!("{name}: {count} differences, the first: {first}"));
+            }
+            (None, true) => lines.push(format!("{name} is read now: take it from the list")),
             _ => {}
         }
     }
-    for (name, _) in known.iter().filter(|(name, _)| !found.contains_key(*name)) {
-        words += &format!("{name} is in the list and no case\n");
-    }
-    words
+    let strange = known.iter().filter(|(name, _)| !found.contains_key(*name));
+    lines.extend(strange.map(|(name, _)| format!("{name} is in the list and no case")));
+    lines.join("\n")
 }
 
 #[test]
@@ -218,7 +266,9 @@ fn surveyed(case: &Case) -> String {
 fn with_lines(proposal: &str, lines: &str) -> String {
     let mut whole: toml::Table = toml::from_str(proposal).expect("TOML");
     for (table, keys) in toml::from_str::<toml::Table>(lines).expect("TOML") {
-        let held = whole.entry(table).or_insert_with(|| toml::Table::new().into());
+        let held = whole
+            .entry(table)
+            .or_insert_with(|| toml::Table::new().into());
         let held = held.as_table_mut().expect("a table");
         held.extend(keys.as_table().expect("a table").clone());
     }
@@ -234,13 +284,20 @@ fn surveys_proposals_read_two_thirds_unchanged_and_all_with_the_lines_added() {
         let proposal = surveyed(case);
         let wrong = differences(case, &proposal);
         if !wrong.is_empty() {
-            added.insert(case.name.clone(), differences(case, &with_lines(&proposal, &case.job)));
+            added.insert(
+                case.name.clone(),
+                differences(case, &with_lines(&proposal, &case.job)),
+            );
         }
         unchanged.insert(case.name.clone(), wrong);
     }
     let right = unchanged.values().filter(|wrong| wrong.is_empty()).count();
     let words = judge(&unchanged, NOT_BY_SURVEY);
-    assert!(words.is_empty(), "{right} of {} unchanged\n{words}", cases.len());
+    assert!(
+        words.is_empty(),
+        "{right} of {} unchanged\n{words}",
+        cases.len()
+    );
     assert!(3 * right >= 2 * cases.len(), "{right} of {}", cases.len());
     let words = judge(&added, NOT_READ);
     assert!(words.is_empty(), "with the lines added\n{words}");

@@ -263,7 +263,9 @@ fn offers() -> Vec<Offer> {
 fn number(unit: LengthUnit) -> &'static str {
     match unit {
         // A comma before three digits may also part thousands.
-        LengthUnit::Mm | LengthUnit::Cm => r"[-−]?\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?",
+        LengthUnit::Mm | LengthUnit::Cm => {
+            r"[-−]?(?:\d*[.,]\d+\s*m|\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?)"
+        }
         LengthUnit::M => r"[-−+]?(?:\d+(?:[.,]\d+)?|[.,]\d+)(?:\s*[cm]?m)?",
         LengthUnit::In | LengthUnit::Ft => {
             r#"[-−]?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:(?:\s*-\s*|\s+)\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#

@@ -1,6 +1,6 @@
 //! Keys that the label texts themselves suggest: patterns of known families, words of heights, units of numbers.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use serde_json::{Value, json};
 
@@ -110,11 +110,10 @@ fn mark_patterns(layers: &[&Held], job: &Job) -> Option<(String, Proposal)> {
 
 /// Words beside numbers that the job does not know, where they are words of heights.
 fn words(layers: &[&Held], job: &Job) -> Vec<(String, Proposal)> {
-    let found = |is: fn(&str) -> bool| -> Vec<String> {
+    let found = |is: fn(&str) -> bool, told: fn(&Held) -> &BTreeSet<String>| -> Vec<String> {
         let mut words: Vec<String> = layers
             .iter()
-            .flat_map(|held| held.words.keys())
-            .filter(|word| is(word))
+            .flat_map(|held| held.words.keys().filter(|word| is(word)).chain(told(held)))
             .cloned()
             .collect();
         words.sort_unstable();
@@ -123,8 +122,16 @@ fn words(layers: &[&Held], job: &Job) -> Vec<(String, Proposal)> {
     };
     let read = &job.conventions;
     [
-        ("height.high_words", &read.high_words, found(high_word)),
-        ("height.low_words", &read.low_words, found(low_word)),
+        (
+            "height.high_words",
+            &read.high_words,
+            found(high_word, |held| &held.highs),
+        ),
+        (
+            "height.low_words",
+            &read.low_words,
+            found(low_word, |held| &held.lows),
+        ),
     ]
     .into_iter()
     .filter(|(.., found)| !found.is_empty())
@@ -307,6 +314,24 @@ mod tests {
         );
         assert_eq!(value(&found, "height.unit"), Value::Null);
         assert_eq!(value(&found, "slab.text_unit"), Value::Null);
+    }
+
+    #[test]
+    fn two_unknown_words_are_told_by_their_numbers() {
+        let heights = &["В=165", "В=160", "В=155", "Н=30", "Н=35", "Н=40"][..];
+        let found = proposed(&[("ОТМЕТКИ", heights)], 0.001);
+        assert_eq!(value(&found, "layers.heights"), json!(["ОТМЕТКИ"]));
+        let words = ["height.high_words", "height.low_words"].map(|key| value(&found, key));
+        assert_eq!(
+            words,
+            [
+                json!(["H", "HP", "HIGH", "В"]),
+                json!(["L", "LP", "LOW", "Н"])
+            ]
+        );
+        let mixed = &["В=165", "В=30", "В=155", "Н=30", "Н=165", "Н=40"][..];
+        let found = proposed(&[("ОТМЕТКИ", mixed)], 0.001);
+        assert_eq!(value(&found, "height.high_words"), Value::Null);
     }
 
     #[test]

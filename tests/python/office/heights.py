@@ -182,6 +182,22 @@ datum = "chair"
         return point[2] - self.IN_DUCT[point[0]]
 
 
+class BareChairs(Chairs):
+    habit = "the same without a word: high and low are told by what stands beside them"
+    version, binary = "R2000", False
+
+    def height_text(self, kind, number):
+        return f"{number:g}"
+
+
+class FeetAndInches(Inches):
+    habit = "feet and inches, 0'-6 3/4\", after HP: and LP:"
+    version = "R2010"
+
+    def height_text(self, kind, number):
+        return f"{kind[0].upper()}P: 0'-{self.whole_and_fraction(number)}\""
+
+
 class WordsBehind(Office):
     habit = "TOP and BOT behind the number in brackets, the thickness as 200 THK"
     version, unit = "R2007", "m"
@@ -257,4 +273,4 @@ patterns = [
 
 
 CASES = [Inches, HyphenFractions, OneCharacterFractions, StackedFractions, DecimalInches, Centimetres, Metres, FromTop, NearerFace,
-         Chairs, WordsBehind, MidDepth, AnchorHeights, OwnPatterns]
+         Chairs, BareChairs, FeetAndInches, WordsBehind, MidDepth, AnchorHeights, OwnPatterns]

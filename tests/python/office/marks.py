@@ -1,5 +1,7 @@
 """Offices that write marks and strands otherwise, and texts as CAD holds them."""
 
+from ezdxf.enums import TextEntityAlignment
+
 from .floor import Office
 from .heights import Inches
 
@@ -176,5 +178,41 @@ class LevelText(Office):
         self.sheet.text(self.look(role), content, tendon.place(station, off), size, 0.0, align)
 
 
+class MarksTwice(Office):
+    habit = "the mark with the strands at both ends of every tendon, heights with a mask of their own text style"
+    version = "R2013"
+
+    def draw_mark(self, tendon):
+        self.label("mark", self.mark_text(tendon), tendon, 0.9)
+        self.label("mark", self.mark_text(tendon), tendon, tendon.length() - 2.4)
+
+
+class MarkBubbles(Office):
+    habit = "the mark in a bubble beyond the tendon's start, the strands beside the tendon"
+    version, binary = "R2010", True
+    job = """\
+[labels]
+reach_text_heights = 5
+"""
+
+    def prepare(self):
+        super().prepare()
+        block = self.sheet.block("PT-BUBBLE")
+        block.add_circle((0, 0), self.sheet.size(0.24), dxfattribs={"layer": "0"})
+        block.add_attdef("NO", dxfattribs={"height": self.sheet.size(0.12), "layer": "0"}).set_placement(
+            (0, 0), align=TextEntityAlignment.MIDDLE_CENTER)
+
+    def draw_mark(self, tendon):
+        insert = self.sheet.insert(self.look("mark"), "PT-BUBBLE", tendon.place(-0.5))
+        insert.add_auto_attribs({"NO": tendon.mark})
+        self.label("mark", f"{tendon.strands}-{tendon.strand}", tendon, 0.9)
+
+
+class CloseBands(Office):
+    habit = "bands of four tendons 250 mm apart with small texts between them"
+    version = "R2007"
+    banded_y, banded_size = (6.7, 6.95, 7.45, 7.7), 0.09
+
+
 CASES = [SingleStrands, SpacedStrands, RequiredForces, DuctsByStrands, OtherMarks, Diameters, ManyLines, MtextCodes,
-         ObliqueText, LevelText]
+         ObliqueText, LevelText, MarksTwice, MarkBubbles, CloseBands]

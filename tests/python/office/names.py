@@ -165,11 +165,14 @@ class BandedUpright(RunsByDirection):
     version, unit = "R2000", "ft"
     job = RunsByDirection.job.replace("banded_along_deg = 0", "banded_along_deg = 90")
 
+    distributed_y, banded_x = (1.6, 3.2, 4.8, 9.0), (0.6, 7.7, 8.3)
+
     def meant(self):
-        found = super().meant()
-        for tendon in found:
-            tendon.run = "distributed" if tendon.run == "banded" else "banded"
-        return found
+        width, depth = sum(self.spans_x), sum(self.spans_y)
+        return ([self.tendon("B", number, "banded", [(x, 0.0), (x, depth)], self.spans_y)
+                 for number, x in enumerate(self.banded_x)]
+                + [self.tendon("D", number, "distributed", [(0.0, y), (width, y)], self.spans_x)
+                   for number, y in enumerate(self.distributed_y)])
 
 
 CASES = [PlainR12Binary, CyrillicCodePage, ChineseCodePage, EscapedNames, BoundReference, OneLayerByColour,

@@ -1,10 +1,9 @@
-"""Habits whose rooms of the program are not merged yet: labels that point, heights from another soffit."""
+"""Habits whose rooms of the program are not merged yet: labels that point."""
 
 from ezdxf.math import Vec2
 from ezdxf.render.mleader import ConnectionSide
 
 from .floor import Office
-from .slabs import DropPanels
 
 
 class Leaders(Office):
@@ -96,16 +95,4 @@ group_patterns = ['^(?<first>D\\d+)-(?<last>D\\d+) @ (?<spacing>\\d+)$']
         self.sheet.line(self.look("extent"), (1.6, 5.0), (6.4, 5.0))
 
 
-class GeneralSoffit(DropPanels):
-    habit = "drop panels, but every height above the soffit of the general slab"
-    version = "R2013"
-    job = """\
-[height]
-soffit = "general"
-"""
-
-    def written(self, point, tendon):
-        return point[2] - (self.local(tendon.place(point[1])) - self.thickness)
-
-
-CASES = [Leaders, MultiLeaders, Ticks, Groups, GeneralSoffit]
+CASES = [Leaders, MultiLeaders, Ticks, Groups]

@@ -22,6 +22,18 @@ class DropPanels(Office):
         self.sheet.text(self.look("zone"), self.thickness_text(self.thickness + 150.0), (x - 1.2, y - 1.2), 0.2)
 
 
+class GeneralSoffit(DropPanels):
+    habit = "drop panels, but every height above the soffit of the general slab"
+    version = "R2013"
+    job = """\
+[height]
+soffit = "general"
+"""
+
+    def written(self, point, tendon):
+        return point[2] - (self.local(tendon.place(point[1])) - self.thickness)
+
+
 class BandBeam(Office):
     habit = "a wide band beam under the banded tendons, thicknesses as 400 THK. and THK 200"
     version, unit = "R2007", "m"
@@ -38,6 +50,27 @@ class BandBeam(Office):
 
     def thickness_text(self, thickness):
         return f"THK {thickness:g}"
+
+
+class StepsByLevel(BandBeam):
+    habit = "levels instead of thicknesses: a beam by SOFFIT -400, a bay set down, a pour marked TOS +0.10 with its thickness"
+    version, unit = "R2013", "mm"
+    distributed_x = (1.6, 3.2, 9.6, 11.2, 14.0)
+
+    def local(self, place):
+        inside = 12.4 <= place[0] <= 16.4 and place[1] > 8.4
+        return 250.0 if inside else super().local(place)
+
+    def draw_thickness(self):
+        self.sheet.text(self.look("zone"), "THK 200", (5.0, 2.0), 0.25)
+        for ring, words in (((0.0, 6.0, 16.4, 8.4), "SOFFIT -400"), ((9.0, 8.4, 12.4, 15.0), "50 SET DOWN"),
+                            ((12.4, 8.4, 16.4, 15.0), "TOS +0.10\n250 THK")):
+            self.ring("zone", *ring)
+            look, place = self.look("zone"), (ring[0] + 0.2, ring[1] + 0.6)
+            if "\n" in words:
+                self.sheet.mtext(look, words.replace("\n", "\\P"), place, 0.2)
+            else:
+                self.sheet.text(look, words, place, 0.2)
 
 
 class LevelLines(Office):
@@ -94,4 +127,4 @@ thickness_mm = 220
         self.note("1. ALL SLABS ARE 220 mm THICK UNLESS NOTED OTHERWISE.")
 
 
-CASES = [DropPanels, BandBeam, LevelLines, Openings, NoteOfThickness]
+CASES = [DropPanels, GeneralSoffit, BandBeam, StepsByLevel, LevelLines, Openings, NoteOfThickness]
