@@ -72,7 +72,8 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     for (text, reading) in texts.iter().zip(&mut readings) {
         reading.weigh(thickness.at(text.place));
     }
-    let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
+    let mut height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
+    heights::written_to_ends(&mut height_lies, &readings);
     let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
     findings.extend(near.heights(&texts, &readings, &settled));
     let strays = near.strays(&texts, &readings, &settled, &unread);

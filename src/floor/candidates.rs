@@ -37,6 +37,8 @@ pub(super) struct Lie {
     pub(super) turn: usize,
     /// Whether the place is at an end.
     pub(super) at_end: bool,
+    /// From the text's nearest edge, along the tendon, to the nearer end, in text heights.
+    pub(super) edge_h: f64,
     /// Tendons of the same run beside this one, nearest first, with the station beside the label.
     pub(super) beside: Vec<(usize, f64)>,
     /// Along the tendon from the label to the middle of a column, metres.
@@ -114,6 +116,7 @@ pub(super) fn lies(
                     <= AT_END_M
                         .max(AT_END_HEIGHTS * text.height_m)
                         .min(length_m / 4.0),
+                edge_h: edge_m(text, &foot.place, (cos, sin), foot.station_m, length_m) / height_m,
                 beside: beside
                     .into_iter()
                     .map(|(_, line, station_m)| (line, station_m))
@@ -123,6 +126,21 @@ pub(super) fn lies(
         }
     }
     lies
+}
+
+/// From the text's nearest edge, along a line in this direction, to the nearer end of a line of this length, metres.
+fn edge_m(
+    text: &Text,
+    foot: &Coord<f64>,
+    (cos, sin): (f64, f64),
+    station_m: f64,
+    length_m: f64,
+) -> f64 {
+    let along = text.corners.iter().map(|corner| {
+        let station_m = station_m + cos * (corner.x - foot.x) + sin * (corner.y - foot.y);
+        station_m.min(length_m - station_m)
+    });
+    along.fold(f64::INFINITY, f64::min)
 }
 
 /// From the text's place to its farthest corner, metres.

@@ -48,6 +48,23 @@ const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
 const STEEP: f64 = 0.08;
 
+/// A text without a word whose edge is this near to an end, in text heights, speaks of the anchor; mid-depth from
+/// farther in, since it is said of hardly any other point.
+const EDGE: f64 = 1.0;
+const EDGE_OF_MIDDLE: f64 = 3.0;
+
+/// Counts labels to anchors that are written from within towards an end, wherever their first letter stands. A label with
+/// a word speaks of its own place.
+pub(super) fn written_to_ends(lies: &mut [Lie], readings: &[HeightText]) {
+    for lie in lies {
+        let Some(reading) = readings.get(lie.pairing.label) else {
+            continue;
+        };
+        let near = if reading.middle { EDGE_OF_MIDDLE } else { EDGE };
+        lie.at_end |= reading.word.is_none() && lie.edge_h <= near;
+    }
+}
+
 /// Settles labels; `fixed` are heights from level lines, by line.
 pub(super) fn settle(
     readings: &[HeightText],

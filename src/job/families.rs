@@ -99,11 +99,11 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
         by_unit(&[
             (
                 "height",
-                r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
+                r"(?i)^(?:(?<word>\p{L}[\p{L}.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
             ),
             (
                 "height, word last",
-                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$",
+                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>\p{L}[\p{L}.\s]*?)\)?$",
             ),
         ])
     });
@@ -263,7 +263,9 @@ fn offers() -> Vec<Offer> {
 fn number(unit: LengthUnit) -> &'static str {
     match unit {
         // A comma before three digits may also part thousands.
-        LengthUnit::Mm | LengthUnit::Cm => r"[-−]?\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?",
+        LengthUnit::Mm | LengthUnit::Cm => {
+            r"[-−]?(?:\d*[.,]\d+\s*m|\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?)"
+        }
         LengthUnit::M => r"[-−+]?(?:\d+(?:[.,]\d+)?|[.,]\d+)(?:\s*[cm]?m)?",
         LengthUnit::In | LengthUnit::Ft => {
             r#"[-−]?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:(?:\s*-\s*|\s+)\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#

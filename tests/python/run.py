@@ -119,6 +119,7 @@ def main():
         if check("mark by every method", [program, "mark", floor, "--job", methods, "--out", out]):
             check("methods", script("methods", out / "harbour-level-2-result.json"))
         check("creep and shrinkage", script("creep_shrinkage", "--check"))
+        check("offices drawn again", script("offices", "--check"))
         check("foreign floors", script("foreign", program, 1000, FOREIGN_FLOORS))
     for name in failed:
         print(f"failed: {name}")

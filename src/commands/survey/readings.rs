@@ -125,6 +125,8 @@ pub(super) struct Hint {
     pub(super) inched_thickness: bool,
     /// A word of heights that the job does not know, beside a number.
     pub(super) word: Option<String>,
+    /// A word that nobody knows, beside the number of what would be a height.
+    pub(super) unknown: Option<(String, f64)>,
 }
 
 /// What a text hints at.
@@ -162,10 +164,24 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
             let bare = ["", "H", "HP", "HIGH", "L", "LP", "LOW", "IN"].contains(&word.as_str());
             hint.inched = is_height && signed && (bare || strange);
             hint.word = (is_height && strange).then_some(word);
+            if *said == Reading::Unread && hint.word.is_none() {
+                hint.unknown = unknown_word(line, &read.height_patterns);
+            }
         }
         Reading::Mark { .. } => {}
     }
     hint
+}
+
+/// The word and the number of a line that one of these patterns fits in all but the word.
+fn unknown_word(line: &str, patterns: &[Pattern]) -> Option<(String, f64)> {
+    patterns.iter().find_map(|pattern| {
+        let groups = pattern.captures(line)?;
+        let word = groups.name("word")?.as_str().trim();
+        let number = groups.name("value")?.as_str().replace(',', ".");
+        let number = number.parse().ok()?;
+        (!word.is_empty()).then(|| (word.to_uppercase(), number))
+    })
 }
 
 /// Words that other offices write at high points.
