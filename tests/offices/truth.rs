@@ -52,7 +52,7 @@ pub(crate) fn tendon_differences(
     held("run", run, &truth["run"]);
     held("tendons", tendon.tendons.into(), &truth["tendons"]);
     held("strands", tendon.strands.into(), &truth["strands"]);
-    let counted = tendon.strands.and(job.system.default_strand.clone());
+    let counted = tendon.strands.and(job.tendon.default_strand.clone());
     let strand = tendon.strand.clone().or(counted);
     held("strand", strand.into(), &truth["strand"]);
     held(
