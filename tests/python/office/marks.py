@@ -95,7 +95,7 @@ class OtherMarks(Office):
     version, unit = "R2007", "mm"
     strand = "12.7"
     job = """\
-[system]
+[tendon]
 default_strand = "12.7"
 
 [labels]
