@@ -1,10 +1,13 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
+mod aims;
+mod arrows;
 mod assemble;
 mod bridges;
 mod candidates;
 mod copies;
 mod ends;
+mod groups;
 mod habits;
 mod heights;
 mod index;
@@ -13,8 +16,10 @@ mod layers;
 mod lengths;
 mod levels;
 mod lines;
+mod made;
 mod marks;
 mod missing;
+mod near;
 mod order;
 mod pieces;
 mod points;
@@ -22,7 +27,10 @@ mod readings;
 mod rules;
 mod settle;
 mod slab;
+mod slots;
+mod strokes;
 mod symbols;
+mod ticks;
 mod types;
 
 pub use assemble::read;

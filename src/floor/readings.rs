@@ -249,7 +249,7 @@ pub fn thickness_of_line<'c>(
     })
 }
 
-fn length_unit(pattern: &Pattern) -> Option<LengthUnit> {
+pub(super) fn length_unit(pattern: &Pattern) -> Option<LengthUnit> {
     match pattern.unit {
         Some(PatternUnit::Length(unit)) => Some(unit),
         _ => None,

@@ -8,11 +8,14 @@ pub const RULES: &[&Rule] = &[
     &END_CONTRADICTED,
     &END_UNCLAIMED,
     &END_UNKNOWN,
+    &GROUP_MISFIT,
     &HEIGHT_MISSING,
     &LABEL_AMBIGUOUS,
+    &LABEL_SHARED,
     &LABEL_UNCLAIMED,
     &LABEL_UNREAD,
     &LAYER_HIDDEN,
+    &LEADER_ASTRAY,
     &LEVEL_LINE_DIFFERS,
     &LEVEL_LINE_UNREAD,
     &MARK_TWICE,
@@ -23,6 +26,7 @@ pub const RULES: &[&Rule] = &[
     &RUN_ASSUMED,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
+    &TENDON_MADE,
     &TENDON_STUB,
     &TENDONS_MISSING,
     &THICKNESS_DIFFERS,
@@ -52,6 +56,12 @@ pub(super) const END_UNCLAIMED: Rule = Rule {
 pub(super) const END_UNKNOWN: Rule = Rule {
     name: "end-unknown",
     meaning: "An end has neither a live nor a dead end symbol within reach, so nobody can say where the jack stands.",
+};
+
+/// A group of tendons that its extent line contradicts.
+pub(super) const GROUP_MISFIT: Rule = Rule {
+    name: "group-misfit",
+    meaning: "A group's extent line does not fit the number and spacing that its text gives, or lacks one of them: its undrawn tendons are not made.",
 };
 
 /// A height that the drawing ought to give and does not.
@@ -172,4 +182,22 @@ pub(super) const THICKNESS_UNKNOWN: Rule = Rule {
 pub(super) const ZONE_UNREAD: Rule = Rule {
     name: "zone-unread",
     meaning: "A zone has no thickness text inside, so the slab's thickness there is unknown.",
+};
+
+/// A label for several lines.
+pub(super) const LABEL_SHARED: Rule = Rule {
+    name: "label-shared",
+    meaning: "One mark points at several lines, which are numbered after it.",
+};
+
+/// A leader that points at nothing.
+pub(super) const LEADER_ASTRAY: Rule = Rule {
+    name: "leader-astray",
+    meaning: "A label's leader points at no tendon, or nobody can say at which: the label is given to none.",
+};
+
+/// Tendons that the drawing does not show.
+pub(super) const TENDON_MADE: Rule = Rule {
+    name: "tendon-made",
+    meaning: "Tendons of a group that the drawing shows by a typical one and an extent line were made as copies of that one.",
 };

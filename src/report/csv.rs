@@ -36,6 +36,7 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
         "relaxation_mpa",
         "mean_service_kn",
         "concrete_stress_mpa",
+        "made",
     ];
     let methods = side_by_side(analysis);
     let more = methods.iter().map(|word| format!("mean_service_{word}_kn"));
@@ -72,6 +73,7 @@ pub fn tendons_csv(analysis: &Analysis) -> String {
             rounded(losses.and_then(|l| l.relaxation_mpa), 1),
             rounded(record.mean_service_kn, 1),
             rounded(record.concrete_stress_mpa, 2),
+            if record.made { "true" } else { "" }.to_owned(),
         ];
         row.extend(methods.iter().map(|word| {
             let by_method = record.losses_by_method.get(word);
