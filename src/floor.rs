@@ -1,11 +1,14 @@
 //! What the shapes mean: tendons joined from pieces, labels settled, slab zones, ends, marks.
 
+mod aims;
 mod areas;
+mod arrows;
 mod assemble;
 mod bridges;
 mod candidates;
 mod copies;
 mod ends;
+mod groups;
 mod habits;
 mod heights;
 mod index;
@@ -14,9 +17,11 @@ mod layers;
 mod lengths;
 mod levels;
 mod lines;
+mod made;
 mod marks;
 mod measured;
 mod missing;
+mod near;
 mod nearer_face;
 mod order;
 mod outlines;
@@ -26,7 +31,10 @@ mod readings;
 mod rules;
 mod settle;
 mod slab;
+mod slots;
+mod strokes;
 mod symbols;
+mod ticks;
 mod types;
 mod zone_texts;
 mod zones;

@@ -60,6 +60,7 @@ impl Meant {
         Tendon {
             mark: "T".to_owned(),
             mark_drawn: true,
+            made: false,
             handle: "1".to_owned(),
             layer: "TENDON-BANDED".to_owned(),
             run: Run::Banded,

@@ -32,6 +32,7 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: mark.to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,

@@ -23,6 +23,7 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A7".to_owned(),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,

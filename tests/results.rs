@@ -25,6 +25,7 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: format!("{:.0}", places[0].y),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,

@@ -34,6 +34,7 @@ pub(super) fn along(path: Path) -> Tendon {
     Tendon {
         mark: "D001".to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A7".to_owned(),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,

@@ -1,5 +1,6 @@
 //! Height labels settled on their tendons: what a pairing costs, round after round, as more is known of the floor.
 
+use super::aims::AIMED;
 use super::candidates::Lie;
 use super::habits::Habits;
 use super::lines::Line;
@@ -169,6 +170,9 @@ fn costs(
             let reading = readings[lie.pairing.label];
             let run = lines[lie.pairing.host].run;
             let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
+            if lie.aimed {
+                cost -= AIMED;
+            }
             match habits {
                 None => {
                     let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
@@ -178,7 +182,11 @@ fn costs(
                     cost += 0.4 * lie.gap_h
                         + habits.cost(run, lie)
                         + resemblance(reading, lie, &known)
-                        + side(lie, &sides[lie.pairing.host]);
+                        + if lie.aimed {
+                            0.0
+                        } else {
+                            side(lie, &sides[lie.pairing.host])
+                        };
                 }
             }
             cost
@@ -200,6 +208,9 @@ fn sides(lies: &[Lie], lines: usize, taken: &[Option<usize>]) -> Vec<Vec<(usize,
     let mut sides = vec![Vec::new(); lines];
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
+        if lie.aimed {
+            continue;
+        }
         sides[lie.pairing.host].push((lie.pairing.label, lie.off_h));
     }
     sides

@@ -10,11 +10,14 @@ pub const RULES: &[&Rule] = &[
     &END_UNKNOWN,
     &FACE_BY_NEIGHBOURS,
     &FACE_UNKNOWN,
+    &GROUP_MISFIT,
     &HEIGHT_MISSING,
     &LABEL_AMBIGUOUS,
+    &LABEL_SHARED,
     &LABEL_UNCLAIMED,
     &LABEL_UNREAD,
     &LAYER_HIDDEN,
+    &LEADER_ASTRAY,
     &LEVEL_LINE_DIFFERS,
     &LEVEL_LINE_UNREAD,
     &LEVEL_OUTSIDE_ZONES,
@@ -27,6 +30,7 @@ pub const RULES: &[&Rule] = &[
     &STEP_ASSUMED,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
+    &TENDON_MADE,
     &TENDON_STUB,
     &TENDONS_MISSING,
     &THICKNESS_DIFFERS,
@@ -68,6 +72,12 @@ pub(super) const FACE_BY_NEIGHBOURS: Rule = Rule {
 pub(super) const FACE_UNKNOWN: Rule = Rule {
     name: "face-unknown",
     meaning: "A distance to the nearer face has no word, and its neighbours do not tell which face is meant.",
+};
+
+/// A group of tendons that its extent line contradicts.
+pub(super) const GROUP_MISFIT: Rule = Rule {
+    name: "group-misfit",
+    meaning: "A group's extent line does not fit the number and spacing that its text gives, or lacks one of them: its undrawn tendons are not made.",
 };
 
 /// A height that the drawing ought to give and does not.
@@ -200,4 +210,22 @@ pub(super) const THICKNESS_UNKNOWN: Rule = Rule {
 pub(super) const ZONE_UNREAD: Rule = Rule {
     name: "zone-unread",
     meaning: "A zone has no thickness and no level inside, or none that can be, so the slab's thickness there is unknown.",
+};
+
+/// A label for several lines.
+pub(super) const LABEL_SHARED: Rule = Rule {
+    name: "label-shared",
+    meaning: "One mark points at several lines, which are numbered after it.",
+};
+
+/// A leader that points at nothing.
+pub(super) const LEADER_ASTRAY: Rule = Rule {
+    name: "leader-astray",
+    meaning: "A label's leader points at no tendon, or nobody can say at which: the label is given to none.",
+};
+
+/// Tendons that the drawing does not show.
+pub(super) const TENDON_MADE: Rule = Rule {
+    name: "tendon-made",
+    meaning: "Tendons of a group that the drawing shows by a typical one and an extent line were made as copies of that one.",
 };

@@ -20,6 +20,8 @@ pub struct Tendon {
     pub mark: String,
     /// Whether the drawing gives the mark.
     pub mark_drawn: bool,
+    /// Whether the drawing shows the tendon only by a typical one of its group, of which this is a copy.
+    pub made: bool,
     /// Handle of the (first) piece.
     pub handle: String,
     /// Layer of the pieces.

@@ -1,6 +1,6 @@
 //! The job that an empty job file gives. Why each value: the key's sentence and source in the table of keys.
 
-use super::families::{height_patterns, mark_patterns, thickness_patterns};
+use super::families::{group_patterns, height_patterns, mark_patterns, thickness_patterns};
 use super::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
     Profiling, Published, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, TendonJob,
@@ -79,6 +79,7 @@ fn conventions() -> Conventions {
             heights: words(&["TENDON-HEIGHT*"]),
             level_lines: words(&["TENDON-LEVEL-LINE*"]),
             marks: words(&["TENDON-MARK*"]),
+            extents: words(&["TENDON-EXTENT*"]),
             ends: words(&["TENDON-END*"]),
             slab_edge: words(&["SLAB-EDGE*"]),
             slab_opening: words(&["SLAB-OPENING*"]),
@@ -108,6 +109,9 @@ fn conventions() -> Conventions {
             strand_in_duct_low_m: 0.013,
             strand_in_duct_high_m: 0.007,
         },
+        arrow_reach_m: 0.1,
+        tick_blocks: words(&["TICK*", "DOT*"]),
+        group_patterns: group_patterns(),
         label_reach: 3.0,
         end_reach_m: 0.5,
         join_gap_m: 0.010,

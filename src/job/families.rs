@@ -274,6 +274,27 @@ fn number(unit: LengthUnit) -> &'static str {
 }
 
 /// A named pattern; that all of them compile the tests count.
+/// Groups of like tendons; what each pattern leaves open another may give.
+pub(super) fn group_patterns() -> Vec<Pattern> {
+    [
+        (
+            "first and last mark",
+            r"(?i)^(?<first>[A-Z]{1,3}-?\d+)\s*(?:-|–|to|\.\.+|…)\s*(?<last>[A-Z]{1,3}-?\d+)\b",
+        ),
+        (
+            "number at a spacing",
+            r"(?i)(?:^|[\s,;(])(?<number>\d+)\s*(?:no|nos|x)?\.?\s*@\s*\d",
+        ),
+        (
+            "spacing",
+            r#"(?i)@\s*(?<spacing>(?:\d+'[ -]?)?\d+(?:[.,]\d+)?(?:[ -]\d+/\d+)?(?:\s?(?:mm|cm|m|in)\b|["'])?)(?:\s*(?:c/c|crs|ctrs?|centres|o\.?c\b\.?))?"#,
+        ),
+    ]
+    .into_iter()
+    .filter_map(|(name, expression)| pattern(name, expression))
+    .collect()
+}
+
 fn pattern(name: &str, expression: &str) -> Option<Pattern> {
     let expression = Regex::new(expression).ok()?;
     Some(Pattern {

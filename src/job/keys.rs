@@ -166,6 +166,8 @@ pub static KEYS: &[Key] = &[
         "Lines that give one height to every tendon they cross, and their labels.", CONVENTION),
     key("layers", "marks", Kind::Shell(place!(conventions.layers.marks)),
         "Marks and strand counts.", CONVENTION),
+    key("layers", "extents", Kind::Shell(place!(conventions.layers.extents)),
+        "Lines across a group of like tendons of which only some are drawn: they say how far it extends.", CONVENTION),
     key("layers", "ends", Kind::Shell(place!(conventions.layers.ends)),
         "Symbols at the ends of tendons: blocks, words, shapes.", CONVENTION),
     key("layers", "slab_edge", Kind::Shell(place!(conventions.layers.slab_edge)),
@@ -215,6 +217,18 @@ pub static KEYS: &[Key] = &[
         },
         "Marks, strands and required forces, the first that fits a line: groups mark, tendons, strands, strand, force, force_per_width. \
          A table may say unit (kN, kip, kN/m, kip/ft), strands (in each tendon of a count), strand.", CONVENTION),
+
+    key("labels", "arrow_reach_mm", number!(1.0..=2000.0, conventions.arrow_reach_m, MM),
+        "How far the tip of a leader may lie from the tendon it points at.", CONVENTION),
+    key("labels", "tick_blocks", Kind::Shell(place!(conventions.tick_blocks)),
+        "Blocks on the layers of heights that mark the place of a height on its tendon (shell patterns, any letter case).", CONVENTION),
+    key("labels", "group_patterns", Kind::Expressions {
+            groups: &["first", "last", "number", "spacing"],
+            also: &[],
+            says: &["unit"],
+            place: place!(conventions.group_patterns),
+        },
+        "Groups of like tendons, beside a line of layers.extents: groups first, last, number, spacing, gathered from all patterns that fit.", CONVENTION),
 
     key("height", "unit", unit!(conventions.height.unit),
         "Unit of the numbers; in and ft may be written with fractions.", CONVENTION),

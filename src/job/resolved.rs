@@ -77,6 +77,12 @@ pub struct Conventions {
     pub height: HeightReading,
     /// Reach of a label from its tendon, in text heights.
     pub label_reach: f64,
+    /// How far the tip of a leader may lie from the tendon it points at, metres.
+    pub arrow_reach_m: f64,
+    /// Blocks that mark the place of a height on its tendon (shell patterns, any case).
+    pub tick_blocks: Vec<String>,
+    /// Patterns of groups of like tendons; groups `first`, `last` (marks), `number`, `spacing`, each optional.
+    pub group_patterns: Vec<Pattern>,
     /// How far an end symbol may lie from the end, metres.
     pub end_reach_m: f64,
     /// Gap that still counts as end to end, metres.
@@ -102,6 +108,8 @@ pub struct Layers {
     pub level_lines: Vec<String>,
     /// Marks and strand counts.
     pub marks: Vec<String>,
+    /// Lines across a group of like tendons.
+    pub extents: Vec<String>,
     /// End symbols.
     pub ends: Vec<String>,
     /// Slab edge.
@@ -341,6 +349,7 @@ impl Job {
             &layers.heights,
             &layers.level_lines,
             &layers.marks,
+            &layers.extents,
             &layers.ends,
             &layers.slab_edge,
             &layers.slab_opening,

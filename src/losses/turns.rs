@@ -57,6 +57,7 @@ mod tests {
         Tendon {
             mark: mark.to_owned(),
             mark_drawn: true,
+            made: false,
             handle: String::new(),
             layer: String::new(),
             run,

@@ -39,6 +39,7 @@ pub fn tendons_csv(analysis: &Analysis, units: Units) -> String {
         stress.column("relaxation"),
         force.column("mean_service"),
         stress.column("concrete_stress"),
+        "made".to_owned(),
     ];
     let methods = side_by_side(analysis);
     let more = methods
@@ -77,6 +78,7 @@ pub fn tendons_csv(analysis: &Analysis, units: Units) -> String {
             figure(stress, losses.and_then(|l| l.relaxation_mpa), 1),
             figure(force, record.mean_service_kn, 1),
             figure(stress, record.concrete_stress_mpa, 2),
+            if record.made { "true" } else { "" }.to_owned(),
         ];
         row.extend(methods.iter().map(|word| {
             let by_method = record.losses_by_method.get(word);

@@ -16,6 +16,9 @@ use crate::losses::{EndForces, Forces};
 #[derive(Debug, Serialize)]
 pub(super) struct TendonRecord<'a> {
     pub(super) mark: &'a str,
+    /// Whether it is a copy of its group's typical tendon; only then is it said.
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    pub(super) made: bool,
     pub(super) handle: &'a str,
     pub(super) layer: &'a str,
     pub(super) run: Run,
@@ -119,6 +122,7 @@ impl<'a> TendonRecord<'a> {
         let forces = result.forces.as_ref();
         Self {
             mark: &tendon.mark,
+            made: tendon.made,
             handle: &tendon.handle,
             layer: &tendon.layer,
             run: tendon.run,

@@ -22,6 +22,7 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
     Tendon {
         mark: "T1".to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "1".to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,

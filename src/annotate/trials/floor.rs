@@ -220,6 +220,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
     let tendon = Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A".to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,
