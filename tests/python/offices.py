@@ -17,8 +17,7 @@ from office import anchors, heights, lines, marks, names, pointing, slabs
 HERE = pathlib.Path(__file__).resolve().parent
 OUT = HERE.parent / "data" / "offices"
 LARGEST = 60_000
-# What is read now, and habits whose rooms of the program are still to come.
-ROOMS = {"": [names, anchors, heights, marks, lines, slabs], "to-come": [pointing]}
+ROOMS = [names, anchors, heights, marks, lines, slabs, pointing]
 
 
 def name_of(office):
@@ -36,20 +35,18 @@ def text_of(truth):
 def draw(folder):
     """Writes everything below a folder; gives the relative paths."""
     written = []
-    for room, modules in ROOMS.items():
-        place = folder / room
-        place.mkdir(parents=True, exist_ok=True)
-        for office in (case for module in modules for case in module.CASES):
-            made, name = office(), name_of(office)
-            path = place / f"{name}.dxf"
-            made.draw().save(path, made.binary)
-            if path.stat().st_size > LARGEST:
-                raise SystemExit(f"{path.name}: {path.stat().st_size} bytes, at most {LARGEST}")
-            (place / f"{name}.json").write_text(text_of(made.truth()), encoding="utf-8")
-            written += [path, place / f"{name}.json"]
-            if made.job:
-                (place / f"{name}.toml").write_text(made.job, encoding="utf-8")
-                written.append(place / f"{name}.toml")
+    folder.mkdir(parents=True, exist_ok=True)
+    for office in (case for room in ROOMS for case in room.CASES):
+        made, name = office(), name_of(office)
+        path = folder / f"{name}.dxf"
+        made.draw().save(path, made.binary)
+        if path.stat().st_size > LARGEST:
+            raise SystemExit(f"{path.name}: {path.stat().st_size} bytes, at most {LARGEST}")
+        (folder / f"{name}.json").write_text(text_of(made.truth()), encoding="utf-8")
+        written += [path, folder / f"{name}.json"]
+        if made.job:
+            (folder / f"{name}.toml").write_text(made.job, encoding="utf-8")
+            written.append(folder / f"{name}.toml")
     return [path.relative_to(folder) for path in written]
 
 

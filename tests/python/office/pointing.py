@@ -1,4 +1,4 @@
-"""Habits whose rooms of the program are not merged yet: labels that point."""
+"""Offices whose labels point: leaders, ticks, one label and one line for a group."""
 
 from ezdxf.math import Vec2
 from ezdxf.render.mleader import ConnectionSide
@@ -41,7 +41,7 @@ class Ticks(Office):
     habit = "a tick on the tendon at each point, its label a little farther along"
     version = "R2007"
     job = """\
-[pointing]
+[labels]
 tick_blocks = ["PT-TICK"]
 """
 
@@ -62,13 +62,6 @@ class Groups(Office):
     distributed_x = (1.6, 2.8, 4.0, 5.2, 6.4)
     layers = {**Office.layers, "extent": "TENDON-EXTENT"}
     colours = {**Office.colours, "extent": 40}
-    job = """\
-[layers]
-extents = ["TENDON-EXTENT"]
-
-[pointing]
-group_patterns = ['^(?<first>D\\d+)-(?<last>D\\d+) @ (?<spacing>\\d+)$']
-"""
 
     def meant(self):
         found = super().meant()
