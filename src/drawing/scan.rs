@@ -210,6 +210,8 @@ impl<'a> Pass<'a> {
                 // An unreadable seed stands for none, but its place is where a good one belongs.
                 let seed = parse_handle(tag.word()).unwrap_or(0);
                 self.scan.handseed = Some((tag.value_range(), seed));
+                // A further group 5 is somebody else's handle.
+                self.variable = b"";
             }
             _ => {}
         }
@@ -307,6 +309,7 @@ impl<'a> Pass<'a> {
             return Ok(());
         }
         self.end_record(tag.start);
+        self.variable = b"";
         self.in_group = false;
         self.embedded = false;
         self.record = Record::None;

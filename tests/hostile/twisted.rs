@@ -134,3 +134,13 @@ fn a_section_of_nothing_but_garbage_takes_no_marks() {
     assert_eq!(rules(&findings), ["drawing-damaged"]);
     marks_without_loss(&source, 0.001);
 }
+
+#[test]
+fn no_other_group_5_of_a_header_is_taken_for_the_seed() {
+    let (source, _, _) = everything(of_tags(
+        "0 SECTION 2 HEADER 9 $ACADVER 1 AC1015 9 $HANDSEED 5 1 5 77 0 ENDSEC
+         0 SECTION 2 HEADER 5 88 0 LINE 5 99 0 ENDSEC
+         0 SECTION 2 ENTITIES 0 LINE 5 A1 8 A 10 0 20 0 11 1 21 0 0 ENDSEC 0 EOF",
+    ));
+    marks_without_loss(&source, 0.001);
+}
