@@ -3,6 +3,7 @@
 //! Two passes: all tendons are jacked and locked off first, since the concrete stress of each comes from all of them; then
 //! the sections of the slab, summed serially in the tendons' order; then transfer, service and the rules.
 
+mod by_method;
 mod findings_on;
 mod refusals;
 mod samples;
@@ -12,13 +13,15 @@ use std::cmp::Ordering;
 use geo::Coord;
 use rayon::prelude::*;
 
+pub use self::by_method::{DAYS, MethodForces, MethodResult, Spread};
 pub use self::refusals::{Refusal, rules};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
-use crate::floor::{Floor, Tendon};
-use crate::job::{Fallback, Job};
+use crate::floor::{Floor, PointKind, Tendon};
+use crate::job::{Fallback, Job, LongTermMethod};
+use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
-use crate::losses::{Effective, Forces, Stressed, steel};
+use crate::losses::{Along, Effective, Forces, Stressed, steel, turns};
 use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
@@ -37,6 +40,17 @@ pub struct Analysis {
 }
 
 impl Analysis {
+    /// The job's methods of long-term loss, the drawn one first; none where no tendon has forces to lose.
+    pub fn methods(&self) -> Vec<LongTermMethod> {
+        let worked = self
+            .results
+            .iter()
+            .find(|result| !result.by_method.is_empty());
+        worked.map_or_else(Vec::new, |result| {
+            result.by_method.iter().map(|one| one.method).collect()
+        })
+    }
+
     /// Everything that was assumed, in sentences: of the floor, and for want of a key.
     pub fn all_assumptions(&self) -> Vec<String> {
         let said = self.assumptions.iter().cloned();
@@ -64,6 +78,8 @@ pub struct TendonResult {
     pub samples: Vec<Sample>,
     /// Mean concrete stress used, MPa.
     pub concrete_stress_mpa: Option<f64>,
+    /// The service force by each method that the job names, the drawn one first; empty where the tendon cannot be stressed.
+    pub by_method: Vec<MethodResult>,
 }
 
 /// Results at a profile point.
@@ -109,6 +125,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         .map(|(tendon, curve)| stress(tendon, curve.as_ref().map_err(Clone::clone)?, job))
         .collect();
     let stresses_mpa = concrete_stresses(&floor, job, &stressed);
+    let turns = turns(tendons, &job.stressing.order);
     let ground = Ground::of(&floor.slab);
     let parts: Vec<(TendonResult, Vec<Finding>)> = (0..tendons.len())
         .into_par_iter()
@@ -119,6 +136,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
                 curves[index].as_ref().ok(),
                 stressed[index].as_ref().map_err(Clone::clone),
                 stresses_mpa[index],
+                turns[index],
             );
             let mut found: Vec<Finding> = refusal
                 .and_then(|refusal| refusal.finding(&tendons[index]))
@@ -142,6 +160,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         .map(|result: &TendonResult| Some(result.forces.as_ref()?.later?.mean_service_kn))
         .collect();
     findings.extend(checks::required::per_width(&floor, &mean_service_kn));
+    findings.extend(by_method::without_loss(&floor.tendons, &results));
     findings.sort_by(in_order);
     let assumptions = assumptions(&floor, &results, job);
     Analysis {
@@ -153,7 +172,8 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
     }
 }
 
-/// Works out one tendon at this mean concrete stress, MPa, and says what stopped it, if something did.
+/// Works out one tendon, one of a great many stressed in turn, at this mean concrete stress, MPa, and says what stopped it, if
+/// something did.
 pub fn work_tendon(
     tendon: &Tendon,
     job: &Job,
@@ -170,6 +190,7 @@ pub fn work_tendon(
         curve.as_ref().ok(),
         stressed.as_ref().map_err(Clone::clone),
         concrete_stress_mpa,
+        Turn::of_many(),
     )
 }
 
@@ -178,7 +199,7 @@ pub fn work_tendon(
 /// # Errors
 /// [`Refusal`] says what is not known, or why there is no force.
 pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Stressed<'p>, Refusal> {
-    let steel = steel(tendon, &job.system).ok_or(Refusal::SteelUnknown)?;
+    let steel = steel(tendon, &job.tendon).ok_or(Refusal::SteelUnknown)?;
     let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
         return Err(Refusal::EndUnknown);
     };
@@ -220,11 +241,21 @@ fn finish(
     curve: Option<&Profile>,
     stressed: Result<&Stressed<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
+    turn: Turn,
 ) -> (TendonResult, Option<Refusal>) {
     let jacked = stressed.as_ref().ok().copied();
-    let effective = stressed.and_then(|stressed| {
+    let long_term = &job.long_term;
+    let along = stressed.map(|stressed| Along::new(stressed, tendon));
+    let known = along.as_ref().map_err(Clone::clone).and_then(|along| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
-        Ok(Effective::new(stressed, &job.long_term, stress_mpa)?)
+        Ok((along, along.case(long_term, stress_mpa, turn)))
+    });
+    let mut by_method = Vec::new();
+    let effective = known.and_then(|(along, case)| {
+        let (method, when) = (long_term.method, by_method::asked(long_term));
+        let drawn = Effective::new(along, long_term, method, &case, when);
+        by_method = by_method::by_each(tendon, along, long_term, &case, &drawn);
+        drawn.map_err(|reason| by_method::refusal(method, reason))
     });
     // Jacking and lock-off ask nothing of the concrete.
     let forces_kn = |station_m| match (&effective, jacked) {
@@ -261,7 +292,7 @@ fn finish(
     });
     let result = TendonResult {
         profile: curve.cloned(),
-        area_mm2: steel(tendon, &job.system).map(|steel| steel.area_mm2),
+        area_mm2: steel(tendon, &job.tendon).map(|steel| steel.area_mm2),
         plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
         turning: curve
             .zip(forces.as_ref())
@@ -270,6 +301,7 @@ fn finish(
         points,
         samples,
         concrete_stress_mpa,
+        by_method,
     };
     (result, effective.err())
 }
@@ -281,6 +313,7 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
         lock_off(result.samples.first()),
         lock_off(result.samples.last()),
     );
+    let by_method = by_method::stresses(tendon, result);
     let worked = Worked {
         tendon,
         profile: result.profile.as_ref(),
@@ -290,6 +323,7 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
             (Some(start_kn), Some(end_kn)) => Some([start_kn, end_kn]),
             _ => None,
         },
+        by_method: &by_method,
     };
     checks::tendon(&worked, ground, job)
 }
@@ -319,11 +353,12 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
         .tendons
         .iter()
         .flat_map(|tendon| &tendon.points)
-        .filter(|point| point.level_m().is_none() && point.level_m().is_some())
+        .filter(|point| point.kind == PointKind::Anchor)
+        .filter(|point| point.drawn_m.is_none() && point.height_m.is_some())
         .count();
     if anchors > 0 {
         said.push(format!(
-            "Anchors without a height are at mid-depth: {anchors}."
+            "Anchors for which the drawing gives no height of their own are at mid-depth: {anchors}."
         ));
     }
     let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);

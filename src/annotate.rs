@@ -51,10 +51,10 @@ pub fn draw(analysis: &Analysis, around: &Surroundings, job: &Job) -> Sheet {
     marks.extend(forces::without(analysis, &lanes));
     marks.extend(forces::lengths(analysis, &lanes));
     // What must be said takes its place before what may be left out.
-    let extensions = extension::texts(analysis, &lanes, &mut room);
+    let extensions = extension::texts(analysis, &lanes, job.units, &mut room);
     let given = marks::given(analysis, &lanes, &mut room);
     let rings = findings::rings(analysis, text_m, &mut room);
-    marks.extend(figures::figures(analysis, &lanes, &mut room));
+    marks.extend(figures::figures(analysis, &lanes, job.units, &mut room));
     marks.extend(extensions);
     marks.extend(given);
     marks.extend(rings);

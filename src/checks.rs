@@ -14,6 +14,8 @@ pub mod openings;
 pub mod plan;
 pub mod profile;
 pub mod required;
+pub mod soffit;
+pub mod standards;
 pub mod stressing;
 #[cfg(test)]
 mod testing;
@@ -25,7 +27,7 @@ pub use ground::Ground;
 use std::sync::LazyLock;
 
 use crate::drawing;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{EndKind, Floor, Tendon};
 use crate::job::Job;
 use crate::losses::Forces;
@@ -44,6 +46,8 @@ pub struct Worked<'a> {
     pub turning: Option<Turning>,
     /// Lock-off force at its two anchors, at station 0 and at the path's end, kN; with the forces.
     pub lock_off_kn: Option<[f64; 2]>,
+    /// Its greatest stresses by each method of long-term loss that gives one.
+    pub by_method: &'a [standards::MethodStress],
 }
 
 /// What every rule of one tendon says of it; `ground` is the floor's slab, prepared once for all tendons.
@@ -57,6 +61,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(elevation::high_below_low(worked));
     found.extend(elevation::support_off_curve(worked, job));
     found.extend(cover::height_outside_cover(worked, ground, &chords, job));
+    found.extend(soffit::soffit_doubtful(worked, ground, job));
     found.extend(profile::hogging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
     found.extend(openings::crosses_opening(worked, ground, &chords, job));
@@ -66,6 +71,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(stressing::anchor_stress(worked, job));
     found.extend(stressing::draw_in_reaches_dead_end(worked));
     found.extend(required::force_below_required(worked));
+    found.extend(standards::along(worked, job));
     found
 }
 
@@ -73,6 +79,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
 pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
+    found.extend(standards::jacking(job));
     found.extend(edge::no_outline(floor));
     found
 }
@@ -88,7 +95,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 17] = [
+static RULES: [&Rule; 19] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -96,6 +103,7 @@ static RULES: [&Rule; 17] = [
     &elevation::HIGH_BELOW_LOW,
     &elevation::SUPPORT_OFF_CURVE,
     &cover::HEIGHT_OUTSIDE_COVER,
+    &soffit::SOFFIT_DOUBTFUL,
     &profile::HOGGING_RADIUS,
     &plan::PLAN_RADIUS,
     &openings::CROSSES_OPENING,
@@ -106,6 +114,7 @@ static RULES: [&Rule; 17] = [
     &stressing::DRAW_IN_REACHES_DEAD_END,
     &curvature::CURVATURE_LOSS,
     &required::FORCE_BELOW_REQUIRED,
+    &standards::STANDARD_STRESS,
 ];
 
 impl Worked<'_> {
@@ -115,7 +124,7 @@ impl Worked<'_> {
         rule: &'static Rule,
         level: Level,
         station_m: f64,
-        text: String,
+        text: impl Into<Wording>,
         remedy: impl Into<String>,
     ) -> Finding {
         Finding::new(rule, level, text, remedy)

@@ -1,6 +1,7 @@
 //! DXF in: shapes and texts in metres, each with handle and layer. DXF out: lossless insertion of a [`Sheet`].
 //! Knows nothing of tendons; the only stage that says `dxf::`.
 
+mod answers;
 mod caps;
 mod clean;
 mod code_page;
@@ -11,6 +12,7 @@ mod explode;
 mod found;
 mod handles;
 mod insert;
+mod leaders;
 mod lettering;
 mod looks;
 mod names;
@@ -36,5 +38,5 @@ pub use refusal::Refusal;
 pub use rules::READING_RULES;
 pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};
 pub use source::{Source, open};
-pub use types::{Drawing, Insert, Layer, Look, Shape, ShapeKind, Text, UnitFrom};
+pub use types::{Dot, Drawing, Insert, Layer, Leader, Look, Shape, ShapeKind, Text, UnitFrom};
 pub use wanted::Wanted;

@@ -1,6 +1,11 @@
 //! A finding is data: which rule, how grave, where, what was found, what to do. Every output renders this same value.
 
+use std::fmt;
+use std::ops::Deref;
+
 use geo::Coord;
+
+use crate::units::Units;
 
 /// How grave a finding is.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, serde::Serialize)]
@@ -34,6 +39,59 @@ pub struct Rule {
     pub meaning: &'static str,
 }
 
+/// What a finding says, in each of the units that results may be written in; read as a text, it is in SI.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Wording {
+    si: String,
+    /// `None` where nothing said has a unit.
+    us: Option<String>,
+}
+
+impl Wording {
+    /// Written once for each units.
+    pub fn of(write: impl Fn(Units) -> String) -> Self {
+        let (si, us) = (write(Units::Si), write(Units::Us));
+        let us = (us != si).then_some(us);
+        Self { si, us }
+    }
+
+    /// The text in SI.
+    pub fn as_str(&self) -> &str {
+        &self.si
+    }
+
+    /// The text in these units.
+    pub fn in_units(&self, units: Units) -> &str {
+        match (units, &self.us) {
+            (Units::Us, Some(us)) => us,
+            _ => &self.si,
+        }
+    }
+}
+
+impl<T: Into<String>> From<T> for Wording {
+    fn from(text: T) -> Self {
+        Self {
+            si: text.into(),
+            us: None,
+        }
+    }
+}
+
+impl fmt::Display for Wording {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        f.write_str(self)
+    }
+}
+
+impl Deref for Wording {
+    type Target = str;
+
+    fn deref(&self) -> &str {
+        self.as_str()
+    }
+}
+
 /// Something found on the drawing.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Finding {
@@ -48,7 +106,7 @@ pub struct Finding {
     /// Place on the plan, metres.
     pub place: Option<Coord<f64>>,
     /// What was found and what was expected, with numbers.
-    pub text: String,
+    pub text: Wording,
     /// What to do next.
     pub remedy: String,
 }
@@ -58,7 +116,7 @@ impl Finding {
     pub fn new(
         rule: &'static Rule,
         level: Level,
-        text: impl Into<String>,
+        text: impl Into<Wording>,
         remedy: impl Into<String>,
     ) -> Self {
         Self {

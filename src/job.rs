@@ -15,20 +15,24 @@ pub mod keys;
 mod pattern;
 mod patterns;
 mod problems;
+mod published;
 mod reading;
 mod resolved;
 mod strand_names;
 mod strands;
+mod systems;
 mod values;
 mod writing;
 
 pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
+pub use published::{Cement, Environment, LongTermMethod, Published, RelaxationClass};
 pub use reading::read;
 pub use resolved::{
     Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
-    LongTermMethod, Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, TendonJob, Wobble,
 };
+pub use systems::System;
 pub use writing::{Proposal, file};
 
 /// A job file read: the whole job, and which of its keys the file gave.
@@ -63,12 +67,18 @@ pub struct Fallback {
     pub value: Option<String>,
     /// Where the default comes from, or what happens without one.
     pub source: &'static str,
+    /// The system whose own default it is; `None`: the default of all.
+    pub system: Option<System>,
 }
 
 impl fmt::Display for Fallback {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match &self.value {
-            Some(value) => write!(f, "{} = {value} (default: {})", self.name, self.source),
+            Some(value) => {
+                let of = self.system.map(|system| format!(" of {}", system.name()));
+                let of = of.unwrap_or_default();
+                write!(f, "{} = {value} (default{of}: {})", self.name, self.source)
+            }
             None => write!(f, "{} not given: {}", self.name, self.source),
         }
     }

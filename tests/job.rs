@@ -3,10 +3,10 @@
 use std::collections::BTreeMap;
 
 use proptest::prelude::*;
-use tautplan::job::key::Kind;
-use tautplan::job::keys::{KEYS, TABLES};
-use tautplan::job::{self, Datum, Job, Proposal, Wobble};
-use tautplan::units::LengthUnit;
+use tautplan::job::key::{Key, Kind};
+use tautplan::job::keys::{KEYS, ROOT, TABLES};
+use tautplan::job::{self, Datum, Job, Proposal, System, Wobble};
+use tautplan::units::{LengthUnit, Units};
 
 fn problems(text: &str) -> job::Problems {
     job::read("tautplan.toml", text).expect_err("the file holds a mistake")
@@ -23,6 +23,14 @@ fn only(text: &str) -> (usize, String, String, String) {
         problem.expected.clone(),
         problem.remedy.clone(),
     )
+}
+
+/// The line that a key stands below; nothing for a key before every table.
+fn header(key: &Key) -> String {
+    match key.table {
+        ROOT => String::new(),
+        table => format!("[{table}]\n"),
+    }
 }
 
 const FIVE: &str = "\
@@ -77,7 +85,7 @@ fn inputs_have_the_names_of_the_result() {
 #[test]
 fn five_strands_of_12_7_at_three_quarters_pull_688_kn() {
     let job = Job::default();
-    let size = job.system.strands.iter().find(|size| size.name == "12.7");
+    let size = job.tendon.strands.iter().find(|size| size.name == "12.7");
     let size = size.expect("12.7 is known");
     let force_kn = 5.0 * size.area_mm2 * size.strength_mpa * job.stressing.jacking_ratio / 1000.0;
     assert!((force_kn - 688.4325).abs() < 1e-9, "{force_kn}");
@@ -131,7 +139,7 @@ fn the_examples_of_keys_without_default_parse_too() {
         .iter()
         .filter(|key| key.value(&Job::default()).is_none())
     {
-        let text = format!("[{}]\n{}\n", key.table, key.example());
+        let text = format!("{}{}\n", header(key), key.example());
         let resolved = job::read("example", &text).unwrap_or_else(|problems| panic!("{problems}"));
         assert!(key.value(&resolved.job).is_some(), "{}", key.path());
     }
@@ -145,7 +153,7 @@ fn every_range_holds_its_own_ends_and_refuses_what_lies_beyond() {
             continue;
         };
         numbers += 1;
-        let file = |number: &str| format!("[{}]\n{} = {number}\n", key.table, key.name);
+        let file = |number: &str| format!("{}{} = {number}\n", header(key), key.name);
         for end in [least, most] {
             let read = job::read("range", &file(&format!("{end:?}")));
             // Two limits contradict each other at the far ends of their ranges; that is another rule.
@@ -237,7 +245,7 @@ fn each_other_mistake_is_told_apart() {
         ("[profile]\nfit_inflection = 1\n", "cannot be the number 1"),
         ("[drawing]\nunit = \"inch\"\n", "does not know \"inch\""),
         ("[slab]\nthickness_mm = 1979-05-27\n", "cannot be a date"),
-        ("[system]\ndefault_strand = \"13\"\n", "not known"),
+        ("[tendon]\ndefault_strand = \"13\"\n", "not known"),
         (
             "[limits]\nhogging_radius_error_m = 9\n",
             "before it is a warning",
@@ -249,19 +257,19 @@ fn each_other_mistake_is_told_apart() {
             "not TOML",
         ),
         (
-            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\nstrength_mpa = 1860\n\
-             [[system.strand]]\nname = \"9\"\narea_mm2 = 53\nstrength_mpa = 1860\n",
+            "[[tendon.strand]]\nname = \"9\"\narea_mm2 = 52\nstrength_mpa = 1860\n\
+             [[tendon.strand]]\nname = \"9\"\narea_mm2 = 53\nstrength_mpa = 1860\n",
             "two strands of the name",
         ),
         (
-            "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\n",
+            "[[tendon.strand]]\nname = \"9\"\narea_mm2 = 52\n",
             "no `strength_mpa`",
         ),
         (
-            "[[system.strand]]\nname = 9\narea_mm2 = 52\nstrength_mpa = 1860\n",
+            "[[tendon.strand]]\nname = 9\narea_mm2 = 52\nstrength_mpa = 1860\n",
             "cannot be the number 9",
         ),
-        ("[system]\nstrand = [4]\n", "cannot hold the number 4"),
+        ("[tendon]\nstrand = [4]\n", "cannot hold the number 4"),
     ] {
         let (line, found, expected, remedy) = only(text);
         assert!(found.contains(words), "{text}: {found}");
@@ -389,14 +397,14 @@ fn layer_patterns_and_shapes_are_checked_at_their_line() {
 fn given_values_reach_the_job_in_internal_units() {
     let text = "[drawing]\nunit = \"in\"\n[height]\nunit = \"in\"\ndatum = \"duct-underside\"\n\
         [stressing]\ndraw_in_mm = 8\n[slab]\nthickness_mm = 225\n\
-        [[system.strand]]\nname = \"0.6\"\narea_mm2 = 140\nstrength_mpa = 1860\n";
+        [[tendon.strand]]\nname = \"0.6\"\narea_mm2 = 140\nstrength_mpa = 1860\n";
     let resolved = job::read("job", text).expect("fine");
     let job = &resolved.job;
     assert_eq!(job.conventions.unit, Some(LengthUnit::In));
     assert_eq!(job.conventions.height.datum, Datum::DuctUnderside);
     assert!((job.stressing.draw_in_m - 0.008).abs() < 1e-15);
     assert!((job.slab.thickness_m.expect("given") - 0.225).abs() < 1e-15);
-    assert_eq!(job.system.strands.len(), 5);
+    assert_eq!(job.tendon.strands.len(), 5);
     assert!(
         job.conventions
             .height_patterns
@@ -453,7 +461,7 @@ fn a_proposal_is_set_in_the_file_whatever_characters_it_holds() {
 /// Findings send the reader to keys of the job file by their path: each of them is a key.
 #[test]
 fn keys_that_the_rules_name_are_keys() {
-    let pattern = regex::Regex::new(r"\b(limits|stressing|system|long_term)\.([a-z][a-z0-9_]*)");
+    let pattern = regex::Regex::new(r"\b(limits|stressing|tendon|long_term)\.([a-z][a-z0-9_]*)");
     let pattern = pattern.expect("a pattern");
     let mut named = 0;
     for rule in tautplan::checks::rules() {
@@ -464,6 +472,105 @@ fn keys_that_the_rules_name_are_keys() {
         }
     }
     assert!(named >= 10, "{named}");
+}
+
+#[test]
+fn the_keys_before_the_tables_are_read_and_known_to_messages() {
+    let job = job::read(
+        "job",
+        "units = \"us\"\nsystem = \"greased-single-strand\"\n",
+    );
+    let job = job.expect("fine").job;
+    assert_eq!(
+        (job.units, job.system),
+        (Units::Us, System::GreasedSingleStrand)
+    );
+    let (line, found, expected, remedy) = only("units = \"imperial\"\n");
+    assert_eq!(
+        (line, found.as_str()),
+        (1, "`units` does not know \"imperial\"")
+    );
+    assert_eq!(expected, "expected one of \"si\", \"us\"");
+    assert!(remedy.contains("units = "), "{remedy}");
+    let (_, _, _, remedy) = only("[stressing]\nsystem = \"bonded-flat-duct\"\n");
+    assert_eq!(remedy, "`system` belongs before the first [table]");
+    let (_, _, _, remedy) = only("sistem = \"bonded-flat-duct\"\n");
+    assert_eq!(remedy, "did you mean `system`?");
+    let (_, found, ..) = only("[\"\"]\nunits = \"us\"\n");
+    assert_eq!(found, "unknown table ``");
+    let (_, found, ..) = only("[units]\nforce = \"kip\"\n");
+    assert_eq!(found, "`units` cannot be a table");
+}
+
+#[test]
+fn the_old_name_of_the_table_of_strands_is_told_where_it_went() {
+    for text in [
+        "[system]\nduct_height_mm = 20\n",
+        "[[system.strand]]\nname = \"9\"\narea_mm2 = 52\nstrength_mpa = 1860\n",
+    ] {
+        let (line, _, _, remedy) = only(text);
+        assert_eq!(line, 1);
+        assert_eq!(
+            remedy,
+            "write `[tendon]` for `[system]`, and `[[tendon.strand]]` for `[[system.strand]]`"
+        );
+    }
+}
+
+#[test]
+fn a_system_gives_defaults_and_every_key_still_overrides() {
+    let read = |text: &str| job::read("job", text).unwrap_or_else(|problems| panic!("{problems}"));
+    let greased = read("system = \"greased-single-strand\"\n");
+    let job = &greased.job;
+    assert_eq!(job.stressing.wobble, Wobble::PerM(0.0046));
+    assert!((job.stressing.mu_per_rad - 0.07).abs() < 1e-15);
+    assert!((job.stressing.draw_in_m - 0.00635).abs() < 1e-15);
+    assert!((job.tendon.duct_height_m - 0.016).abs() < 1e-15);
+    assert!((job.limits.plan_radius_m - 3.0).abs() < 1e-15);
+    let said = greased.assumptions();
+    let says = |line: &str| said.iter().any(|known| known == line);
+    assert!(
+        says("mu_per_rad = 0.07 (default of greased-single-strand: common practice, 0.05 to 0.07)"),
+        "{said:?}"
+    );
+    assert!(says("jacking_ratio = 0.75 (default: common practice)"));
+    assert!(!said.iter().any(|line| line.starts_with("system")));
+
+    // Wherever the keys stand, what they say holds.
+    let given = read(
+        "system = \"greased-single-strand\"\n[stressing]\nmu_per_rad = 0.05\nwobble_rad_per_m = 0.01\n",
+    );
+    assert!((given.job.stressing.mu_per_rad - 0.05).abs() < 1e-15);
+    assert_eq!(given.job.stressing.wobble, Wobble::RadPerM(0.01));
+    let said = given.assumptions();
+    assert!(!said.iter().any(|line| line.starts_with("wobble")));
+
+    // The default system by name is the same as none.
+    let named = read("system = \"bonded-flat-duct\"\n");
+    assert_eq!(named.job.inputs(), Job::default().inputs());
+}
+
+#[test]
+fn a_proposed_file_shows_the_defaults_of_its_system() {
+    let system = Proposal {
+        value: serde_json::json!("greased-single-strand"),
+        why: String::new(),
+    };
+    let text = job::file(&[], &BTreeMap::from([("system".to_owned(), system)]));
+    for line in [
+        "#units = \"si\"",
+        "system = \"greased-single-strand\"",
+        "#mu_per_rad = 0.07",
+        "#wobble_per_m = 0.0046",
+        "#plan_radius_m = 3",
+    ] {
+        assert!(text.lines().any(|known| known == line), "{line}\n{text}");
+    }
+    let read = job::read("proposed", &text).unwrap_or_else(|problems| panic!("{problems}"));
+    assert_eq!(
+        read.job.inputs(),
+        System::GreasedSingleStrand.job().inputs()
+    );
 }
 
 proptest! {
@@ -480,7 +587,7 @@ proptest! {
     #[test]
     fn no_value_in_any_key_panics(index in 0..KEYS.len(), value in "[\\[\\]{}a-z=\"'.0-9, \u{e9}\n-]{0,30}") {
         let key = &KEYS[index];
-        let text = format!("[{}]\n{} = {value}\n[height]\nunit = {value}", key.table, key.name);
+        let text = format!("{}{} = {value}\n[height]\nunit = {value}", header(key), key.name);
         if let Err(problems) = job::read("random", &text) {
             prop_assert!(!problems.to_string().is_empty());
         }

@@ -40,7 +40,7 @@ fn mark(text: &str, job: &Job) -> String {
     parts.extend(said.tendons.map(|count| format!("{count} x")));
     parts.extend(said.strands.map(|count| count.to_string()));
     parts.extend(said.strand.map(|size| {
-        let known = job.system.strand_named(&size);
+        let known = job.tendon.strand_named(&size);
         format!("of {}", known.map_or("?", |size| &size.name))
     }));
     parts.extend(said.required_kn.map(|kn| format!("{kn:.1} kN")));
@@ -169,6 +169,8 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("165 mm", "165"),
             ("165mm H", "H 165"),
             ("H16.5cm", "H 165"),
+            ("H0.165 m", "H 165"),
+            ("В=165", "-"),
             ("-20", "-20"),
             ("T/2", "middle"),
             ("h/2", "middle"),
@@ -205,7 +207,7 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("0.165 m", "165"),
         ],
     );
-    assert_eq!(rows, 42);
+    assert_eq!(rows, 44);
 }
 
 #[test]

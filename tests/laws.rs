@@ -60,6 +60,7 @@ impl Meant {
         Tendon {
             mark: "T".to_owned(),
             mark_drawn: true,
+            made: false,
             handle: "1".to_owned(),
             layer: "TENDON-BANDED".to_owned(),
             run: Run::Banded,
@@ -77,7 +78,9 @@ impl Meant {
                     place: path.place_at(station_m * stretch),
                     drawn_m: None,
                     height_m: Some(height_m),
+                    other_soffit_m: None,
                     thickness_m: Some(0.25),
+                    top_m: 0.0,
                 })
                 .collect(),
             path,

@@ -20,7 +20,9 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
         place,
         drawn_m: None,
         height_m: Some(0.125),
+        other_soffit_m: None,
         thickness_m: Some(0.250),
+        top_m: 0.0,
     };
     let points = vec![anchor(0.0, from), anchor(path.length_m(), to)];
     let end = |kind, place| End {
@@ -30,6 +32,7 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: mark.to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,
@@ -122,6 +125,7 @@ fn thicker_zones_and_openings_count_in_the_section() {
     slab.zones.push(Zone {
         outline: polygon![(x: 0.0, y: 4.0), (x: 20.0, y: 4.0), (x: 20.0, y: 8.0), (x: 0.0, y: 8.0)],
         thickness_m: 0.400,
+        top_m: 0.0,
     });
     slab.openings
         .push(polygon![(x: 0.1, y: 9.0), (x: 19.9, y: 9.0), (x: 19.9, y: 11.0), (x: 0.1, y: 11.0)]);

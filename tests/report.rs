@@ -4,13 +4,14 @@ use geo::Coord;
 use snapbox::{assert_data_eq, file};
 use tautplan::analysis::{Analysis, PointResult, TendonResult};
 use tautplan::checks;
-use tautplan::finding::{Finding, Level};
+use tautplan::finding::{Finding, Level, Wording};
 use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon};
 use tautplan::geometry::Path;
 use tautplan::job::{Datum, Fallback, Job};
 use tautplan::losses::{EndForces, Forces, LaterLosses, LossTotals, Steel};
 use tautplan::profile::{Profile, Span};
 use tautplan::report::{self, DrawingFacts};
+use tautplan::units::{SHORT, Units};
 
 fn at(x: f64, y: f64) -> Coord<f64> {
     Coord { x, y }
@@ -22,6 +23,7 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A7".to_owned(),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,
@@ -42,7 +44,9 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
                 place: at(stations_m[n], y),
                 drawn_m: None,
                 height_m: heights_m[n],
+                other_soffit_m: None,
                 thickness_m: Some(0.2),
+                top_m: 0.0,
             })
             .collect(),
     }
@@ -134,6 +138,7 @@ fn analysis() -> Analysis {
             ],
             samples: Vec::new(),
             concrete_stress_mpa: Some(1.25),
+            by_method: Vec::new(),
         },
         TendonResult {
             profile: None,
@@ -144,13 +149,21 @@ fn analysis() -> Analysis {
             points: Vec::new(),
             samples: Vec::new(),
             concrete_stress_mpa: None,
+            by_method: Vec::new(),
         },
     ];
     let findings = vec![
         Finding::new(
             &checks::cover::HEIGHT_OUTSIDE_COVER,
             Level::Error,
-            "the duct has 15 mm of cover, \"20 mm\" was expected",
+            Wording::of(|units| {
+                let short = units.of(SHORT);
+                format!(
+                    "the duct has {} of cover, \"{}\" was expected",
+                    short.brief(15.0, 1),
+                    short.brief(20.0, 1)
+                )
+            }),
             "correct the height",
         )
         .on_tendon("=D2\u{1b}[31m")
@@ -203,19 +216,19 @@ fn csv_tables_are_as_they_were() {
     // Line ends are CRLF in the tables and LF in the files, so that the files open everywhere.
     let lf = |table: String| table.replace("\r\n", "\n");
     assert_data_eq!(
-        lf(report::tendons_csv(&analysis)),
+        lf(report::tendons_csv(&analysis, Units::Si)),
         file!["golden/tendons.csv"].raw()
     );
     assert_data_eq!(
-        lf(report::points_csv(&analysis)),
+        lf(report::points_csv(&analysis, Units::Si)),
         file!["golden/points.csv"].raw()
     );
     assert_data_eq!(
-        lf(report::extensions_csv(&analysis)),
+        lf(report::extensions_csv(&analysis, Units::Si)),
         file!["golden/extensions.csv"].raw()
     );
     assert_data_eq!(
-        lf(report::findings_csv(&analysis)),
+        lf(report::findings_csv(&analysis, Units::Si)),
         file!["golden/findings.csv"].raw()
     );
 }
@@ -228,6 +241,39 @@ fn the_summary_is_as_it_was() {
     ];
     let made = report::summary(&facts(), &analysis(), &Job::default(), &files);
     assert_data_eq!(made, file!["golden/summary.txt"].raw());
+}
+
+#[test]
+fn results_in_us_units_are_as_they_were() {
+    let (analysis, lf) = (analysis(), |table: String| table.replace("\r\n", "\n"));
+    let job = Job {
+        units: Units::Us,
+        ..Job::default()
+    };
+    assert_data_eq!(
+        report::summary(&facts(), &analysis, &job, &[]),
+        file!["golden/us/summary.txt"].raw()
+    );
+    assert_data_eq!(
+        report::calculation(&facts(), &analysis, &job, "D001").expect("a sheet"),
+        file!["golden/us/sheet.txt"].raw()
+    );
+    assert_data_eq!(
+        lf(report::tendons_csv(&analysis, Units::Us)),
+        file!["golden/us/tendons.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::points_csv(&analysis, Units::Us)),
+        file!["golden/us/points.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::extensions_csv(&analysis, Units::Us)),
+        file!["golden/us/extensions.csv"].raw()
+    );
+    assert_data_eq!(
+        lf(report::findings_csv(&analysis, Units::Us)),
+        file!["golden/us/findings.csv"].raw()
+    );
 }
 
 #[test]
@@ -255,10 +301,10 @@ fn json_reads_back_with_its_numbers_at_full_precision() {
 fn every_csv_row_has_the_headers_cells() {
     let analysis = analysis();
     for (table, rows) in [
-        (report::tendons_csv(&analysis), 2),
-        (report::points_csv(&analysis), 6),
-        (report::extensions_csv(&analysis), 2),
-        (report::findings_csv(&analysis), 2),
+        (report::tendons_csv(&analysis, Units::Si), 2),
+        (report::points_csv(&analysis, Units::Si), 6),
+        (report::extensions_csv(&analysis, Units::Si), 2),
+        (report::findings_csv(&analysis, Units::Si), 2),
     ] {
         // The strict reader refuses a row of another length.
         let mut reader = csv::Reader::from_reader(table.as_bytes());
@@ -281,11 +327,12 @@ fn every_figure_that_was_assumed_is_listed_or_counted() {
         name: name.to_owned(),
         value: value.map(str::to_owned),
         source: "common practice",
+        system: None,
     };
     analysis.fallbacks = vec![
         key("stressing", "mu_per_rad", Some("0.19")),
-        key("system", "strand", Some(&"x".repeat(60))),
-        key("system", "default_strand", None),
+        key("tendon", "strand", Some(&"x".repeat(60))),
+        key("tendon", "default_strand", None),
         key("limits", "cover_mm", Some("20")),
     ];
     let made = report::summary(&facts(), &analysis, &Job::default(), &[]);
@@ -347,7 +394,7 @@ fn extensions_of_a_tendon_live_at_both_ends_say_that_both_jacks_pull_together() 
     analysis.floor.tendons[0].ends[1].kind = live;
     let forces = analysis.results[0].forces.as_mut().expect("forces");
     forces.ends[1] = forces.ends[0];
-    let table = report::extensions_csv(&analysis);
+    let table = report::extensions_csv(&analysis, Units::Si);
     let rows: Vec<&str> = table.lines().collect();
     assert!(rows[1].contains("both jacks pull together") && rows[2].contains("both jacks"));
     assert!(!rows[3].contains("both jacks") && rows[3].contains("not included"));

@@ -25,6 +25,7 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
     Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: format!("{:.0}", places[0].y),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,
@@ -44,7 +45,9 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
                 place: path.place_at(share * length_m),
                 drawn_m: None,
                 height_m: Some(height_m),
+                other_soffit_m: None,
                 thickness_m: Some(0.2),
+                top_m: 0.0,
             })
             .to_vec(),
         path,
@@ -179,4 +182,21 @@ fn findings_on_a_mark_used_twice_go_to_the_line_they_stand_on() {
         named.count()
     };
     assert_eq!((of_rule(0), of_rule(1)), (0, 1));
+}
+
+#[test]
+fn anchors_without_a_drawn_height_are_counted_among_the_assumptions() {
+    let mut said = straight("D001", 3.0);
+    for point in &mut said.points {
+        point.drawn_m = point.height_m;
+    }
+    let told = |tendons| {
+        let assumptions = floor(tendons).assumptions;
+        let mut lines = assumptions.into_iter();
+        lines.find(|line| line.contains("mid-depth"))
+    };
+    assert_eq!(told(vec![said.clone()]), None);
+    let unsaid = straight("D002", 9.0);
+    let line = told(vec![said, unsaid]).expect("two anchors of D002");
+    assert!(line.ends_with(": 2."), "{line}");
 }

@@ -1,9 +1,13 @@
 //! Why a tendon has no forces, and the finding that says so where no earlier stage has said it.
 
-use crate::finding::{Finding, Level, Rule};
+use super::by_method::{METHOD_WITHOUT_LOSS, REMEDY};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::Tendon;
+use crate::job::LongTermMethod;
 use crate::losses::CannotStress;
+use crate::losses::long_term::NoLoss;
 use crate::profile::Unknown;
+use crate::units::LONG;
 
 /// See its meaning.
 static CURVE_UNKNOWN: Rule = Rule {
@@ -14,7 +18,7 @@ static CURVE_UNKNOWN: Rule = Rule {
 /// See its meaning.
 static STRAND_SIZE_UNKNOWN: Rule = Rule {
     name: "strand-size-unknown",
-    meaning: "A tendon's strands are of a size that the job knows (system.strands), or of its default size.",
+    meaning: "A tendon's strands are of a size that the job knows (tendon.strand), or of its default size.",
 };
 
 /// See its meaning.
@@ -32,9 +36,10 @@ static CONCRETE_STRESS_UNKNOWN: Rule = Rule {
 
 /// Rules of this stage, by name.
 pub fn rules() -> &'static [&'static Rule] {
-    static RULES: [&Rule; 4] = [
+    static RULES: [&Rule; 5] = [
         &CONCRETE_STRESS_UNKNOWN,
         &CURVE_UNKNOWN,
+        &METHOD_WITHOUT_LOSS,
         &NO_FORCE_LEFT,
         &STRAND_SIZE_UNKNOWN,
     ];
@@ -59,6 +64,9 @@ pub enum Refusal {
     /// The mean concrete stress is not known.
     #[error("the mean concrete stress is not known")]
     ConcreteStressUnknown,
+    /// The method of long-term loss gives none.
+    #[error("{word}: {1}", word = .0.word())]
+    Method(LongTermMethod, NoLoss),
 }
 
 impl Refusal {
@@ -86,10 +94,13 @@ impl Refusal {
                     tendon,
                     &CURVE_UNKNOWN,
                     station_m,
-                    format!(
-                        "two heights stand at one station, {station_m:.2} m, so no curve and no forces were worked out; one \
-                         height at a station was expected"
-                    ),
+                    Wording::of(|units| {
+                        format!(
+                            "two heights stand at one station, {}, so no curve and no forces were worked out; one height at \
+                             a station was expected",
+                            units.of(LONG).said(station_m, 2)
+                        )
+                    }),
                     "remove one of the heights, or move it to where it belongs",
                 ))
             }
@@ -104,11 +115,11 @@ impl Refusal {
                     &STRAND_SIZE_UNKNOWN,
                     0.0,
                     format!(
-                        "{named}, so no forces were worked out; a size of a [[system.strand]] table, or \
-                         system.default_strand, was expected"
+                        "{named}, so no forces were worked out; a size of a [[tendon.strand]] table, or \
+                         tendon.default_strand, was expected"
                     ),
-                    "write the size in the tendon's mark; or set default_strand below [system]; or add the size to the job \
-                     file as a table [[system.strand]] with name, area_mm2 and strength_mpa",
+                    "write the size in the tendon's mark; or set default_strand below [tendon]; or add the size to the job \
+                     file as a table [[tendon.strand]] with name, area_mm2 and strength_mpa",
                 ))
             }
             Self::Stress(reason) => Some(at(
@@ -125,6 +136,13 @@ impl Refusal {
                 ),
                 "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
                  coefficients; stress a tendon this short or this winding in another way",
+            )),
+            Self::Method(..) => Some(at(
+                tendon,
+                &METHOD_WITHOUT_LOSS,
+                0.0,
+                format!("{self}; only jacking and lock-off forces are given"),
+                REMEDY,
             )),
             Self::ConcreteStressUnknown => Some(at(
                 tendon,
@@ -144,7 +162,7 @@ fn at(
     tendon: &Tendon,
     rule: &'static Rule,
     station_m: f64,
-    text: String,
+    text: impl Into<Wording>,
     remedy: &'static str,
 ) -> Finding {
     Finding::new(rule, Level::Error, text, remedy)

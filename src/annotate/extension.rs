@@ -12,19 +12,27 @@ use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::Tendon;
 use crate::geometry::{step, turn_rad};
 use crate::losses::EndForces;
+use crate::units::{SHORT, Unit, Units};
 
 /// Clear of the end symbol: from the end to the text, in text heights.
 const LEAD: f64 = 2.5;
 
 /// One text a live end, in the floor's order.
-pub(super) fn texts(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> Vec<Mark> {
+pub(super) fn texts(
+    analysis: &Analysis,
+    lanes: &[Lane],
+    units: Units,
+    room: &mut Room,
+) -> Vec<Mark> {
     let mut marks = Vec::new();
     for ((tendon, result), lane) in pair(analysis).zip(lanes) {
         let Some(forces) = &result.forces else {
             continue;
         };
         for (end, at) in forces.ends.iter().zip(0_usize..) {
-            let Some(content) = words(end) else { continue };
+            let Some(content) = content(end, units.of(SHORT)) else {
+                continue;
+            };
             let height_m = lane.end_text_m.get(at).copied().unwrap_or(lane.text_m);
             marks.push(outwards(tendon, at, height_m, content, room));
         }
@@ -33,12 +41,17 @@ pub(super) fn texts(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> Vec
 }
 
 /// `ext 180 (net 174) mm`: before and after draw-in.
-fn words(end: &EndForces) -> Option<String> {
-    let gross_mm = end.extension_mm?;
+fn content(end: &EndForces, short: Unit) -> Option<String> {
+    let gross = short.figure(end.extension_mm?, 0);
     Some(match end.extension_net_mm {
-        Some(net_mm) => format!("ext {gross_mm:.0} (net {net_mm:.0}) mm"),
-        None => format!("ext {gross_mm:.0} mm"),
+        Some(net_mm) => said(&gross, &short.figure(net_mm, 0), short.name),
+        None => format!("ext {gross} {}", short.name),
     })
+}
+
+/// An extension before and after draw-in, as the drawing shows it and the legend explains it.
+pub(super) fn said(gross: &str, net: &str, unit: &str) -> String {
+    format!("ext {gross} (net {net}) {unit}")
 }
 
 /// Steps outwards until no text is in the way; this figure is needed, so it is written in any case.

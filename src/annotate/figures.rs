@@ -13,6 +13,7 @@ use crate::analysis::{Analysis, TendonResult, pair};
 use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::{PointKind, Tendon};
 use crate::geometry::{distance_m, step};
+use crate::units::{FORCE, Unit, Units};
 
 /// Tendon lines that a figure may lie on if there is no clear place.
 const MOST_CROSSED: usize = 1;
@@ -52,7 +53,13 @@ struct Stand {
 }
 
 /// The figures of all tendons that have forces, stage by stage.
-pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> Vec<Mark> {
+pub(super) fn figures(
+    analysis: &Analysis,
+    lanes: &[Lane],
+    units: Units,
+    room: &mut Room,
+) -> Vec<Mark> {
+    let force = units.of(FORCE);
     let mut figures: Vec<Figure> = pair(analysis)
         .zip(lanes)
         .enumerate()
@@ -66,7 +73,7 @@ pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> V
         let Some(before) = of_tendon.get_mut(figure.index) else {
             continue;
         };
-        let Some(stand) = find(&figure, before, room) else {
+        let Some(stand) = find(&figure, before, force, room) else {
             continue;
         };
         before.push((figure.station_m, stand.along_m));
@@ -86,7 +93,7 @@ pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> V
                     height_m: stand.spot.height_m,
                     rotation_rad: stand.spot.rotation_rad,
                     align: Align::Middle,
-                    content: number(force_kn),
+                    content: force.figure(force_kn, 0),
                 });
                 let leader = stand.leader.filter(|_| known.is_some());
                 let leader = leader.map(|points| Drawn::Line {
@@ -99,10 +106,6 @@ pub(super) fn figures(analysis: &Analysis, lanes: &[Lane], room: &mut Room) -> V
             })
         })
         .collect()
-}
-
-fn number(force_kn: f64) -> String {
-    format!("{force_kn:.0}")
 }
 
 /// The force at the last stage that is known.
@@ -169,8 +172,9 @@ fn of_tendon<'a>(
 /// left of the reading direction before right (in a band, that tells whose figure it is), beside the point before along
 /// the tendon. Failing that, the first that crosses fewest lines. Texts are never touched, and no figure passes another
 /// of its tendon: `before` has their stations, and where they stand.
-fn find(figure: &Figure, before: &[(f64, f64)], room: &Room) -> Option<Stand> {
-    let letters: Vec<String> = figure.forces_kn.into_iter().flatten().map(number).collect();
+fn find(figure: &Figure, before: &[(f64, f64)], force: Unit, room: &Room) -> Option<Stand> {
+    let known = figure.forces_kn.into_iter().flatten();
+    let letters: Vec<String> = known.map(|force_kn| force.figure(force_kn, 0)).collect();
     let longest = letters.iter().max_by_key(|text| text.len())?;
     if !figure.forces_kn.iter().flatten().all(|kn| kn.is_finite()) {
         return None;

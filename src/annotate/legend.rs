@@ -3,7 +3,7 @@
 use geo::Coord;
 
 use super::place::Block;
-use super::{layers, ramp, words};
+use super::{extension, layers, ramp, words};
 use crate::analysis::Analysis;
 use crate::cautions::CAUTIONS;
 use crate::drawing::{Align, Drawn};
@@ -11,6 +11,7 @@ use crate::finding::Level;
 use crate::floor::EndKind;
 use crate::job::{Job, Pattern, Wobble};
 use crate::losses::Forces;
+use crate::units::{FORCE, LONG, PER_LENGTH, SHORT, STRESS, TURN};
 
 /// Heading of legend and table; no file name and no date, so that the same floor gives the same drawing.
 pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
@@ -34,7 +35,7 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
         column.sentence(&line);
     }
     column.gap();
-    column.sentence("Figures along tendons: kN per tendon (all strands of one tendon), also where one line stands for several tendons; above or left of their tendon where there is room, in the order of its points; a thin line leads one that stands off its point. What found no room is in the result");
+    column.sentence(&format!("Figures along tendons: {} per tendon (all strands of one tendon), also where one line stands for several tendons; above or left of their tendon where there is room, in the order of its points; a thin line leads one that stands off its point. What found no room is in the result", job.units.of(FORCE).name));
     column.sentence("Table: first extension at the left end of a tendon, second at the right end; where it runs rather up than across, at the lower and the upper end");
     if analysis
         .floor
@@ -44,7 +45,9 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     {
         column.sentence("Marks in this colour beside tendons: given by tautplan, since the drawing has none there");
     }
-    column.sentence("ext 180 (net 174) mm: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it");
+    let short = job.units.of(SHORT);
+    let sample = extension::said(&short.figure(180.0, 0), &short.figure(174.0, 0), short.name);
+    column.sentence(&format!("{sample}: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it"));
     let both_live = |forces: &Forces| forces.ends.iter().all(|end| end.kind == EndKind::Live);
     if analysis
         .results
@@ -104,24 +107,28 @@ fn without_forces(analysis: &Analysis) -> Option<String> {
 
 /// What the forces rest on.
 fn inputs(job: &Job) -> Vec<String> {
-    let stressing = &job.stressing;
+    let (stressing, units) = (&job.stressing, job.units);
+    let stress = units.of(STRESS);
     let wobble = match stressing.wobble {
-        Wobble::RadPerM(k) => format!("k {k} rad/m"),
-        Wobble::PerM(k) => format!("K {k} per m"),
+        Wobble::RadPerM(k) => format!("k {}", units.of(TURN).given(k)),
+        Wobble::PerM(k) => {
+            let k = units.of(PER_LENGTH).given_figure(k);
+            format!("K {k} per {}", units.of(LONG).name)
+        }
     };
     let long_term = &job.long_term;
     vec![
         format!(
-            "Jacking stress {} of strength, friction mu {} per rad, wobble {wobble}, draw-in {:.1} mm",
+            "Jacking stress {} of strength, friction mu {} per rad, wobble {wobble}, draw-in {}",
             stressing.jacking_ratio,
             stressing.mu_per_rad,
-            1000.0 * stressing.draw_in_m
+            units.of(SHORT).said(1000.0 * stressing.draw_in_m, 1)
         ),
         format!(
-            "Strand modulus {} MPa; concrete modulus {} MPa at stressing, {} MPa at 28 days; share of elastic shortening {}",
-            job.system.strand_modulus_mpa,
-            long_term.concrete_modulus_transfer_mpa,
-            long_term.concrete_modulus_mpa,
+            "Strand modulus {}; concrete modulus {} at stressing, {} at 28 days; share of elastic shortening {}",
+            stress.given(job.tendon.strand_modulus_mpa),
+            stress.given(long_term.concrete_modulus_transfer_mpa),
+            stress.given(long_term.concrete_modulus_mpa),
             long_term.shortening_share
         ),
         format!(

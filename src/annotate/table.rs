@@ -10,23 +10,11 @@ use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::{End, EndKind, Tendon};
 use crate::job::Job;
 use crate::losses::EndForces;
+use crate::units::{FORCE, LONG, SHORT, Unit, Units};
 
 const COLUMNS: usize = 12;
-/// Two lines of heading over each column.
-const HEADS: [[&str; 2]; COLUMNS] = [
-    ["mark", ""],
-    ["strands", ""],
-    ["plan", "m"],
-    ["ends", ""],
-    ["jacking", "kN"],
-    ["service", "least kN"],
-    ["service", "mean kN"],
-    ["ext mm first", "gross (net)"],
-    ["ext mm second", "gross (net)"],
-    ["curvature", "loss %"],
-    ["least at", "jacking %"],
-    ["find-", "ings"],
-];
+/// Lines of heading over each column.
+const HEAD_LINES: usize = 2;
 /// Columns of words; numbers stand to the right.
 const WORDS: [usize; 3] = [0, 1, 3];
 /// Rows of one part of the table, and parts before their rows grow more.
@@ -40,10 +28,31 @@ const RULE_EVERY: usize = 5;
 
 type Row = [String; COLUMNS];
 
+/// What stands over each column, line by line.
+fn heads(units: Units) -> [Row; HEAD_LINES] {
+    let [force, long, short] = [FORCE, LONG, SHORT].map(|quantity| units.of(quantity).name);
+    let heads: [[&str; HEAD_LINES]; COLUMNS] = [
+        ["mark", ""],
+        ["strands", ""],
+        ["plan", long],
+        ["ends", ""],
+        ["jacking", force],
+        ["service", &format!("least {force}")],
+        ["service", &format!("mean {force}")],
+        [&format!("ext {short} first"), "gross (net)"],
+        [&format!("ext {short} second"), "gross (net)"],
+        ["curvature", "loss %"],
+        ["least at", "jacking %"],
+        ["find-", "ings"],
+    ];
+    [0, 1].map(|line| heads.map(|head| head[line].to_owned()))
+}
+
 /// The table as a block, with letters of the given height.
 pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let rows = rows(analysis, job);
-    let widths_m = widths_m(&rows, letter_m);
+    let heads = heads(job.units);
+    let widths_m = widths_m(&heads, &rows, letter_m);
     let part_m: f64 = widths_m.iter().sum();
     // Parts of like length, about as high as the floor.
     let per_part = rows.len().div_ceil(MOST_PARTS).max(MOST_ROWS);
@@ -53,7 +62,8 @@ pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
         .max(1);
     let mut block = Block::default();
     let top_m = 3.0 * letter_m;
-    let title = format!("{HEADING}: table of tendons, forces in kN per tendon");
+    let force = job.units.of(FORCE).name;
+    let title = format!("{HEADING}: table of tendons, forces in {force} per tendon");
     block.width_m = words::width_m(&title, 1.2 * letter_m);
     let place = Coord {
         x: 0.0,
@@ -66,6 +76,7 @@ pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
         let left_m = f64::from(part) * (part_m + 3.0 * letter_m);
         let bottom_m = draw_part(
             &mut block.marks,
+            &heads,
             chunk,
             &widths_m,
             (left_m, top_m),
@@ -81,6 +92,7 @@ pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
 /// Draws heading, cells and rules of one part; gives its bottom below the block's top, metres.
 fn draw_part(
     marks: &mut Vec<Mark>,
+    heads: &[Row],
     rows: &[Row],
     widths_m: &[f64; COLUMNS],
     (left_m, top_m): (f64, f64),
@@ -98,10 +110,10 @@ fn draw_part(
         marks.push(layers::mark(layers::TABLE, drawn));
     };
     let below = |row: usize| top_m + pitch_m * f64::from(u32::try_from(row).unwrap_or(u32::MAX));
-    let bottom_m = below(rows.len() + HEADS[0].len());
+    let bottom_m = below(rows.len() + heads.len());
     let last = rows.len();
     let ruled = (0..=last).filter(|row| row % RULE_EVERY == 0 || *row == last);
-    for down in ruled.map(|row| below(row + HEADS[0].len())).chain([top_m]) {
+    for down in ruled.map(|row| below(row + heads.len())).chain([top_m]) {
         rule((left_m, down), (right_m, down));
     }
     let mut x = left_m;
@@ -113,8 +125,7 @@ fn draw_part(
     for edge in &edges {
         rule((*edge, top_m), (*edge, bottom_m));
     }
-    let heads = (0..HEADS[0].len()).map(|line| HEADS.map(|head| head[line].to_owned()));
-    for (number, row) in heads.chain(rows.iter().cloned()).enumerate() {
+    for (number, row) in heads.iter().chain(rows).cloned().enumerate() {
         let middle = -(below(number) + pitch_m / 2.0);
         for (column, (content, sides)) in row.into_iter().zip(edges.windows(2)).enumerate() {
             let [from, to] = sides else { continue };
@@ -143,12 +154,9 @@ fn text(place: Coord<f64>, height_m: f64, align: Align, content: String) -> Mark
     layers::mark(layers::TABLE, drawn)
 }
 
-fn widths_m(rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
-    let mut widths_m = HEADS.map(|head| {
-        let widths = head.map(|line| words::width_m(line, letter_m));
-        widths.into_iter().fold(0.0, f64::max)
-    });
-    for row in rows {
+fn widths_m(heads: &[Row], rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
+    let mut widths_m = [0.0_f64; COLUMNS];
+    for row in heads.iter().chain(rows) {
         for (width, cell) in widths_m.iter_mut().zip(row) {
             *width = width.max(words::width_m(cell, letter_m));
         }
@@ -167,7 +175,8 @@ fn row(tendon: &Tendon, result: &TendonResult, job: &Job, findings: usize) -> Ro
     let [first, second] = ends_on_plan(tendon);
     let forces = result.forces.as_ref();
     let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
-    let whole = |value: Option<f64>| or_dash(value.map(|kn| format!("{kn:.0}")));
+    let force = job.units.of(FORCE);
+    let whole = |value: Option<f64>| or_dash(value.map(|kn| force.figure(kn, 0)));
     let percent = |part: Option<f64>| or_dash(part.map(|share| format!("{:.1}", 100.0 * share)));
     let least_kn = result
         .samples
@@ -175,11 +184,13 @@ fn row(tendon: &Tendon, result: &TendonResult, job: &Job, findings: usize) -> Ro
         .filter_map(|sample| sample.forces_kn[3])
         .min_by(f64::total_cmp)
         .filter(|_| forces.is_some());
-    let extension = |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?)));
+    let short = job.units.of(SHORT);
+    let extension =
+        |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?, short)));
     [
         words::name(&tendon.mark),
         strands(tendon, job),
-        format!("{:.2}", tendon.path.length_m()),
+        job.units.of(LONG).figure(tendon.path.length_m(), 2),
         [first, second]
             .map(|at| end_word(&tendon.ends[at]))
             .join("-"),
@@ -213,7 +224,7 @@ fn strands(tendon: &Tendon, job: &Job) -> String {
     };
     let strands = tendon.strands.map_or("?".to_owned(), |n| n.to_string());
     let size = tendon.strand.as_deref();
-    let size = size.or(job.system.default_strand.as_deref());
+    let size = size.or(job.tendon.default_strand.as_deref());
     let size = size.map(words::name);
     let size = size.map(|size| format!("-{size}")).unwrap_or_default();
     format!("{times}{strands}{size}")
@@ -227,10 +238,10 @@ fn end_word(end: &End) -> &'static str {
     }
 }
 
-fn extension(end: &EndForces) -> Option<String> {
-    let gross_mm = end.extension_mm?;
+fn extension(end: &EndForces, short: Unit) -> Option<String> {
+    let gross = short.figure(end.extension_mm?, 0);
     Some(match end.extension_net_mm {
-        Some(net_mm) => format!("{gross_mm:.0} ({net_mm:.0})"),
-        None => format!("{gross_mm:.0}"),
+        Some(net_mm) => format!("{gross} ({})", short.figure(net_mm, 0)),
+        None => gross,
     })
 }

@@ -3,11 +3,12 @@
 use super::Worked;
 use super::chords::Chords;
 use super::ground::{Ground, Stretch};
-use super::words::{also_at, mm, worst_of};
-use crate::finding::{Finding, Level, Rule};
-use crate::floor::PointKind;
+use super::words::{also_at, short, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
+use crate::floor::{Faces, Point, PointKind};
 use crate::job::{Datum, Job};
 use crate::profile::Span;
+use crate::units::Units;
 
 /// See [`Rule::meaning`].
 pub static HEIGHT_OUTSIDE_COVER: Rule = Rule {
@@ -29,7 +30,7 @@ pub(super) fn height_outside_cover(
 ) -> Option<Finding> {
     let mut overruns = Vec::new();
     if let Some(profile) = worked.profile {
-        let stretches = ground.thickness_along(chords);
+        let stretches = ground.faces_along(chords);
         let mut first = 0;
         for span in &profile.spans {
             let end_m = span.end_m();
@@ -59,8 +60,13 @@ pub(super) fn height_outside_cover(
                 PointKind::Low => 1.0,
                 PointKind::Anchor | PointKind::Support => 0.0,
             };
-            let (station_m, thickness_m) = (point.station_m, point.thickness_m);
-            overruns.extend(overrun_at(station_m, level_m, thickness_m, bend, job));
+            overruns.extend(overrun_at(
+                point.station_m,
+                level_m,
+                point.faces(),
+                bend,
+                job,
+            ));
         }
     }
     let (worst, others) = worst_of(merged(overruns), |o| o.over_m, |o| o.station_m)?;
@@ -68,7 +74,7 @@ pub(super) fn height_outside_cover(
         &HEIGHT_OUTSIDE_COVER,
         Level::Error,
         worst.station_m,
-        overrun_text(&worst, job) + &also_at(&others),
+        Wording::of(|units| overrun_text(&worst, job, units) + &also_at(&others, units)),
         "correct the height, or the slab thickness if a zone or its text is wrong; check which soffit and which part of the \
          duct the heights are measured to, since a height read from the wrong soffit looks like this",
     ))
@@ -80,7 +86,7 @@ struct Overrun {
     /// By how much, metres.
     over_m: f64,
     level_m: f64,
-    thickness_m: Option<f64>,
+    faces: Faces,
     /// Clear distance between duct and face, metres; negative outside.
     clear_m: f64,
     top: bool,
@@ -89,7 +95,7 @@ struct Overrun {
 /// Distances from the strands' centroid down to the duct's underside and up to its top, metres. Where heights are given
 /// to the duct, the strand lies in it as it is pulled: at its top where the curve sags, at its bottom where it hogs.
 fn duct_around(curvature_per_m: f64, job: &Job) -> (f64, f64) {
-    let height_m = job.system.duct_height_m;
+    let height_m = job.tendon.duct_height_m;
     let reading = &job.conventions.height;
     let below_m = match reading.datum {
         Datum::DuctUnderside | Datum::Chair if curvature_per_m > 0.0 => {
@@ -106,13 +112,15 @@ fn duct_around(curvature_per_m: f64, job: &Job) -> (f64, f64) {
 fn overrun_at(
     station_m: f64,
     level_m: f64,
-    thickness_m: Option<f64>,
+    faces: Faces,
     curvature_per_m: f64,
     job: &Job,
 ) -> Option<Overrun> {
     let (below_m, above_m) = duct_around(curvature_per_m, job);
-    let clear_top_m = -(level_m + above_m);
-    let clear_soffit_m = thickness_m.map(|thickness_m| thickness_m + level_m - below_m);
+    let clear_top_m = faces.top_m - (level_m + above_m);
+    let clear_soffit_m = faces
+        .soffit_m()
+        .map(|soffit_m| level_m - below_m - soffit_m);
     let top = clear_soffit_m.is_none_or(|clear_m| clear_top_m < clear_m);
     let clear_m = clear_soffit_m.map_or(clear_top_m, |clear_m| clear_m.min(clear_top_m));
     let over_m = job.limits.cover_m - clear_m;
@@ -120,14 +128,32 @@ fn overrun_at(
         station_m,
         over_m,
         level_m,
-        thickness_m,
+        faces,
         clear_m,
         top,
     })
 }
 
-/// The worst place of one piece of curve over one thickness: at its ends or where it is level.
-fn overrun_in(span: &Span, stretch: &Stretch<Option<f64>>, job: &Job) -> Option<Overrun> {
+fn overrun_of(point: &Point, level_m: f64, job: &Job) -> Option<Overrun> {
+    let bend = match point.kind {
+        PointKind::High => -1.0,
+        PointKind::Low => 1.0,
+        PointKind::Anchor | PointKind::Support => 0.0,
+    };
+    overrun_at(point.station_m, level_m, point.faces(), bend, job)
+}
+
+/// What the duct of a point does that it should not at the faces there, in words; `None` where nothing.
+pub(super) fn duct_outside(point: &Point, job: &Job) -> Option<Wording> {
+    let overrun = overrun_of(point, point.level_m()?, job)?;
+    let face = if overrun.top { "top" } else { "soffit" };
+    Some(Wording::of(|units| {
+        duct_words(&overrun, &format!(" to the {face}"), units)
+    }))
+}
+
+/// The worst place of one piece of curve between faces that do not step: at its ends or where it is level.
+fn overrun_in(span: &Span, stretch: &Stretch<Faces>, job: &Job) -> Option<Overrun> {
     let from_m = (stretch.from_m - span.start_m).max(0.0);
     let to_m = (stretch.to_m - span.start_m).min(span.length_m);
     let level_along_m = -span.slope / span.curvature_per_m;
@@ -166,47 +192,62 @@ fn merged(mut overruns: Vec<Overrun>) -> Vec<Overrun> {
     kept
 }
 
-fn overrun_text(worst: &Overrun, job: &Job) -> String {
-    let slab = worst.thickness_m.map_or("slab".to_owned(), |thickness_m| {
-        format!("{} slab", mm(thickness_m))
-    });
-    let strand = match (worst.top, worst.thickness_m) {
-        (false, Some(thickness_m)) => {
-            let height_m = thickness_m + worst.level_m;
+fn overrun_text(worst: &Overrun, job: &Job, units: Units) -> String {
+    let short = |length_m: f64| short(length_m, units);
+    let slab = worst
+        .faces
+        .thickness_m
+        .map_or("slab".to_owned(), |thickness_m| {
+            format!("{} slab", short(thickness_m))
+        });
+    let below_top_m = worst.faces.top_m - worst.level_m;
+    let strand = match (worst.top, worst.faces.soffit_m()) {
+        (false, Some(soffit_m)) => {
+            let height_m = worst.level_m - soffit_m;
             if height_m < 0.0 {
                 format!(
                     "the strand is {} below the soffit of the {slab}",
-                    mm(-height_m)
+                    short(-height_m)
                 )
             } else {
                 format!(
                     "the strand is {} above the soffit of the {slab}",
-                    mm(height_m)
+                    short(height_m)
                 )
             }
         }
-        _ if worst.level_m > 0.0 => {
+        _ if below_top_m < 0.0 => {
             format!(
                 "the strand is {} above the top of the {slab}",
-                mm(worst.level_m)
+                short(-below_top_m)
             )
         }
         _ => format!(
             "the strand is {} below the top of the {slab}",
-            mm(-worst.level_m)
+            short(below_top_m)
         ),
     };
-    let face = if worst.top { "top" } else { "soffit" };
-    let duct = if worst.clear_m < 0.0 {
-        format!("its duct passes the {face} by {}", mm(-worst.clear_m))
-    } else {
-        format!("its duct has {} of cover", mm(worst.clear_m))
-    };
+    let duct = duct_words(worst, "", units);
     format!(
-        "{strand} and {duct}; at least {} of cover was expected (limits.cover_mm, system.duct_height_mm {})",
-        mm(job.limits.cover_m),
-        mm(job.system.duct_height_m)
+        "{strand} and {duct}; at least {} of cover was expected (limits.cover_mm, tendon.duct_height_mm {})",
+        short(job.limits.cover_m),
+        short(job.tendon.duct_height_m)
     )
+}
+
+fn duct_words(overrun: &Overrun, of_face: &str, units: Units) -> String {
+    let face = if overrun.top { "top" } else { "soffit" };
+    if overrun.clear_m < 0.0 {
+        format!(
+            "its duct passes the {face} by {}",
+            short(-overrun.clear_m, units)
+        )
+    } else {
+        format!(
+            "its duct has {} of cover{of_face}",
+            short(overrun.clear_m, units)
+        )
+    }
 }
 
 #[cfg(test)]
@@ -249,7 +290,7 @@ mod tests {
     #[test]
     fn the_duct_may_lie_at_the_cover_and_no_nearer_to_either_face() {
         let tendon = straight(10.0);
-        let least_m = job().limits.cover_m + job().system.duct_height_m / 2.0;
+        let least_m = job().limits.cover_m + job().tendon.duct_height_m / 2.0;
         for height_m in [least_m, 0.2 - least_m] {
             assert_eq!(cover_finding(&tendon, &level(height_m), &slab_200()), None);
         }
@@ -276,6 +317,7 @@ mod tests {
         slab.zones.push(Zone {
             outline: polygon![(x: 3.0, y: -1.0), (x: 5.0, y: -1.0), (x: 5.0, y: 1.0), (x: 3.0, y: 1.0)],
             thickness_m: 0.15,
+            top_m: 0.0,
         });
         let found = cover_finding(&tendon, &level(0.06), &slab);
         assert!(found.is_some_and(|f| f.station_m == Some(3.0) && f.text.contains("150 mm slab")));
@@ -309,17 +351,18 @@ mod tests {
     #[test]
     fn a_height_to_the_duct_puts_the_duct_where_the_drawing_does() {
         // Underside at the cover itself, sagging: the strand lies at its place in the duct above it.
+        let slab = Faces::general(Some(0.2));
         let mut job = job();
         job.conventions.height.datum = Datum::DuctUnderside;
         let strand_m = job.limits.cover_m + job.conventions.height.strand_in_duct_low_m;
-        assert!(overrun_at(0.0, strand_m - 0.2, Some(0.2), 0.01, &job).is_none());
-        let found = overrun_at(0.0, strand_m - 0.201, Some(0.2), 0.01, &job);
+        assert!(overrun_at(0.0, strand_m - 0.2, slab, 0.01, &job).is_none());
+        let found = overrun_at(0.0, strand_m - 0.201, slab, 0.01, &job);
         assert!(found.is_some_and(|f| !f.top && (f.over_m - 0.001).abs() < 1e-9));
         // Hogging, the duct's top stands above the strand by the rest of the duct's height.
-        let above_m = job.system.duct_height_m - job.conventions.height.strand_in_duct_high_m;
+        let above_m = job.tendon.duct_height_m - job.conventions.height.strand_in_duct_high_m;
         let level_m = -(job.limits.cover_m + above_m);
-        assert!(overrun_at(0.0, level_m, Some(0.2), -0.01, &job).is_none());
-        let found = overrun_at(0.0, level_m + 0.001, Some(0.2), -0.01, &job);
+        assert!(overrun_at(0.0, level_m, slab, -0.01, &job).is_none());
+        let found = overrun_at(0.0, level_m + 0.001, slab, -0.01, &job);
         assert!(found.is_some_and(|f| f.top));
     }
 }

@@ -1,11 +1,12 @@
 //! What the angles alone take from a tendon.
 
 use super::Worked;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::EndKind;
 use crate::job::Job;
 use crate::losses::Forces;
 use crate::profile::Profile;
+use crate::units::{FORCE, TURN, Units};
 
 /// See [`Rule::meaning`].
 pub static CURVATURE_LOSS: Rule = Rule {
@@ -58,33 +59,39 @@ pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
     if !costly && !winding {
         return None;
     }
-    let mut expected = Vec::new();
-    if costly {
-        expected.push(format!(
-            "a loss of at most {:.1} % (limits.curvature_loss_ratio)",
-            100.0 * limits.curvature_loss_ratio
-        ));
-    }
-    if winding {
-        expected.push(format!(
-            "at most {} rad/m (limits.angle_per_m_rad)",
-            limits.angle_per_m_rad
-        ));
-    }
+    let expected = |units: Units| {
+        let mut expected = Vec::new();
+        if costly {
+            expected.push(format!(
+                "a loss of at most {:.1} % (limits.curvature_loss_ratio)",
+                100.0 * limits.curvature_loss_ratio
+            ));
+        }
+        if winding {
+            expected.push(format!(
+                "at most {} (limits.angle_per_m_rad)",
+                units.of(TURN).given(limits.angle_per_m_rad)
+            ));
+        }
+        expected.join(" and ")
+    };
     Some(worked.finding(
         &CURVATURE_LOSS,
         Level::Warning,
         forces.least_jacking_station_m,
-        format!(
-            "down to the point of least force the tendon turns {:.3} rad, {:.4} rad/m, which alone takes {:.1} % of the \
-             jacking force ({:.1} kN of {:.1} kN); {} was expected",
-            turning.angle_rad,
-            turning.angle_per_m_rad,
-            100.0 * turning.loss_ratio,
-            forces.totals.friction_curvature_kn,
-            forces.jack_kn,
-            expected.join(" and ")
-        ),
+        Wording::of(|units| {
+            let force = units.of(FORCE);
+            format!(
+                "down to the point of least force the tendon turns {:.3} rad, {}, which alone takes {:.1} % of the jacking \
+                 force ({} of {}); {} was expected",
+                turning.angle_rad,
+                units.of(TURN).said(turning.angle_per_m_rad, 4),
+                100.0 * turning.loss_ratio,
+                force.said(forces.totals.friction_curvature_kn, 1),
+                force.said(forces.jack_kn, 1),
+                expected(units)
+            )
+        }),
         if forces.both_live() {
             "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
              straighten the sweeps in plan, or divide the tendon at a pour joint; it is stressed from both ends already"
@@ -100,7 +107,9 @@ mod tests {
     use super::super::testing::{along, forces, high_to_low, job, point, straight, worked};
     use super::*;
     use crate::geometry::Path;
-    use crate::losses::{Effective, Friction, Stressed};
+    use crate::job::LongTermMethod;
+    use crate::losses::long_term::{Turn, When};
+    use crate::losses::{Along, Effective, Friction, Stressed};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -203,7 +212,11 @@ mod tests {
             for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
                 let stressed =
                     Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
-                let effective = Effective::new(&stressed, &job.long_term, 1.2).expect("forces");
+                let in_slab = Along::new(&stressed, &tendon);
+                let case = in_slab.case(&job.long_term, 1.2, Turn::of_many());
+                let (direct, when) = (LongTermMethod::Direct, When::Final);
+                let effective =
+                    Effective::new(&in_slab, &job.long_term, direct, &case, when).expect("forces");
                 let forces = effective.forces();
                 let turned = turning(&profile, &forces).expect("a stretch");
                 let from_angle = 1.0 - (-job.stressing.mu_per_rad * turned.angle_rad).exp();

@@ -3,8 +3,8 @@
 use super::Worked;
 use super::chords::Chords;
 use super::ground::{Ground, Stretch};
-use super::words::{also_at, mm, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, short, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::Floor;
 use crate::job::Job;
 
@@ -50,15 +50,17 @@ pub(super) fn leaves_slab(
         &LEAVES_SLAB,
         Level::Error,
         worst.0,
-        format!(
-            "the tendon lies outside the slab edge from station {:.2} m to {:.2} m, by up to {}; at most {} was expected \
-             (limits.edge_tolerance_mm){}",
-            stretch.from_m,
-            stretch.to_m,
-            mm(worst.1),
-            mm(job.limits.edge_tolerance_m),
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the tendon lies outside the slab edge from station {} to {}, by up to {}; at most {} was expected \
+                 (limits.edge_tolerance_mm){}",
+                long(stretch.from_m, units),
+                long(stretch.to_m, units),
+                short(worst.1, units),
+                short(job.limits.edge_tolerance_m, units),
+                also_at(&others, units)
+            )
+        }),
         "bring the tendon back inside the slab edge, or correct the edge; check that the whole edge is drawn and its layer \
          named in the job file (layers.slab_edge)",
     ))

@@ -1,11 +1,12 @@
 //! What the heights of a tendon say against one another.
 
 use super::Worked;
-use super::words::{also_at, mm, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, short, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{Point, PointKind};
 use crate::job::Job;
 use crate::profile::support_residuals;
+use crate::units::Units;
 
 /// See [`Rule::meaning`].
 pub static HIGH_BELOW_LOW: Rule = Rule {
@@ -59,27 +60,33 @@ pub(super) fn high_below_low(worked: &Worked) -> Option<Finding> {
         &HIGH_BELOW_LOW,
         level,
         high.station_m,
-        format!(
-            "the high point at station {:.2} m ({}) is {how} the low point at station {:.2} m ({}); it was expected above \
-             it{}",
-            high.station_m,
-            height(high),
-            low.station_m,
-            height(low),
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the high point at station {} ({}) is {how} the low point at station {} ({}); it was expected above it{}",
+                long(high.station_m, units),
+                height(high, units),
+                long(low.station_m, units),
+                height(low, units),
+                also_at(&others, units)
+            )
+        }),
         "exchange the words high and low, or correct the height that is wrong; check which face the heights are measured \
          from (height.from), since a profile read from the wrong one stands upside down",
     ))
 }
 
 /// A point's height, and its level where another height of slab could make the two differ.
-fn height(point: &Point) -> String {
+fn height(point: &Point, units: Units) -> String {
     let from_soffit = point.height_m.map_or(String::new(), |height_m| {
-        format!("{} above the soffit", mm(height_m))
+        format!("{} above the soffit", short(height_m, units))
     });
     let below_top = point.level_m().map_or(String::new(), |level_m| {
-        format!(", {} below the top of the slab", mm(-level_m))
+        let slab = if point.top_m == 0.0 {
+            "slab"
+        } else {
+            "general slab"
+        };
+        format!(", {} below the top of the {slab}", short(-level_m, units))
     });
     from_soffit + &below_top
 }
@@ -111,15 +118,18 @@ pub(super) fn support_off_curve(worked: &Worked, job: &Job) -> Option<Finding> {
         &SUPPORT_OFF_CURVE,
         level,
         point.station_m,
-        format!(
-            "the support height of {} is {} {side} the curve through the high and low points beside it, which is at {} there; \
-             at most {} was expected ({key}){}",
-            mm(drawn_m),
-            mm(off_m.abs()),
-            mm(drawn_m - off_m),
-            mm(limit_m),
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            let short = |length_m: f64| short(length_m, units);
+            format!(
+                "the support height of {} is {} {side} the curve through the high and low points beside it, which is at {} \
+                 there; at most {} was expected ({key}){}",
+                short(drawn_m),
+                short(off_m.abs()),
+                short(drawn_m - off_m),
+                short(limit_m),
+                also_at(&others, units)
+            )
+        }),
         "correct the support height, or the high or low point beside it; if the supports follow another shape of curve, set \
          profile.inflection or profile.fit_inflection",
     ))

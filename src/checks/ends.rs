@@ -1,9 +1,11 @@
 //! What stands at the two ends.
 
 use super::Worked;
-use crate::finding::{Finding, Level, Rule};
+use super::words::long;
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::EndKind;
 use crate::job::Job;
+use crate::units::LONG;
 
 /// See [`Rule::meaning`].
 pub static NO_LIVE_END: Rule = Rule {
@@ -48,9 +50,13 @@ pub(super) fn one_end_length(worked: &Worked, job: &Job) -> Option<Finding> {
         &ONE_END_LENGTH,
         Level::Warning,
         dead_m,
-        format!(
-            "{length_m:.2} m long and stressed from one end; up to {limit_m} m was expected (limits.one_end_length_m)"
-        ),
+        Wording::of(|units| {
+            format!(
+                "{} long and stressed from one end; up to {} was expected (limits.one_end_length_m)",
+                long(length_m, units),
+                units.of(LONG).given(limit_m)
+            )
+        }),
         "make the dead end a live end and stress from both, or stop the tendon at a pour joint with an intermediate \
          anchor; where the end has to stay dead, let the engineer accept the force that is left there",
     ))

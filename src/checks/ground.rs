@@ -8,7 +8,7 @@ use rstar::primitives::{GeomWithData, Rectangle};
 use rstar::{AABB, RTree};
 
 use super::chords::Chords;
-use crate::floor::Slab;
+use crate::floor::{Faces, Slab};
 
 /// Pieces of plan line shorter than this are no piece, metres.
 const SLIVER_M: f64 = 1e-6;
@@ -24,9 +24,9 @@ pub struct Ground<'a> {
     /// Openings.
     pub(super) openings: Rings<'a>,
     zones: Rings<'a>,
-    /// Area and thickness of each zone, m² and m.
-    zone_facts: Vec<(f64, f64)>,
-    thickness_m: Option<f64>,
+    /// Area of each zone, m², and where its concrete lies.
+    zone_facts: Vec<(f64, Faces)>,
+    general: Faces,
 }
 
 /// A stretch of plan line with something that holds all along it.
@@ -58,24 +58,28 @@ impl<'a> Ground<'a> {
             zone_facts: slab
                 .zones
                 .iter()
-                .map(|zone| (zone.outline.unsigned_area(), zone.thickness_m))
+                .map(|zone| (zone.outline.unsigned_area(), zone.faces()))
                 .collect(),
-            thickness_m: slab.thickness_m,
+            general: Faces::general(slab.thickness_m),
         }
     }
 
-    /// Thickness along a plan line, stretch by stretch; where zones overlap, the smallest speaks.
-    pub(super) fn thickness_along(&self, chords: &Chords) -> Vec<Stretch<Option<f64>>> {
-        let thickness_m = |place| {
+    /// Where the concrete lies outside every zone.
+    pub(super) fn general(&self) -> Faces {
+        self.general
+    }
+
+    /// Where the concrete lies along a plan line, stretch by stretch; where zones overlap, the smallest speaks.
+    pub(super) fn faces_along(&self, chords: &Chords) -> Vec<Stretch<Faces>> {
+        let faces = |place| {
             self.zones
                 .holding(place, false)
                 .into_iter()
                 .filter_map(|zone| self.zone_facts.get(zone))
-                .min_by(|a, b| a.0.total_cmp(&b.0).then(a.1.total_cmp(&b.1)))
-                .map(|facts| facts.1)
-                .or(self.thickness_m)
+                .min_by(|a, b| a.0.total_cmp(&b.0))
+                .map_or(self.general, |facts| facts.1)
         };
-        without_slivers(self.zones.stretches(chords, thickness_m))
+        without_slivers(self.zones.stretches(chords, faces))
     }
 }
 
@@ -250,20 +254,22 @@ mod tests {
                 Zone {
                     outline: polygon![(x: 4.0, y: -5.0), (x: 12.0, y: -5.0), (x: 12.0, y: 5.0), (x: 4.0, y: 5.0)],
                     thickness_m: 0.3,
+                    top_m: 0.0,
                 },
                 Zone {
                     outline: polygon![(x: 6.0, y: -1.0), (x: 8.0, y: -1.0), (x: 8.0, y: 1.0), (x: 6.0, y: 1.0)],
                     thickness_m: 0.5,
+                    top_m: 0.0,
                 },
             ],
             thickness_m: Some(0.2),
             ..Slab::default()
         };
         let path = Path::through(&[Coord { x: 0.0, y: 0.0 }, Coord { x: 20.0, y: 0.0 }]);
-        let found = Ground::of(&slab).thickness_along(&Chords::of(&path));
+        let found = Ground::of(&slab).faces_along(&Chords::of(&path));
         let seen: Vec<(f64, f64, Option<f64>)> = found
             .iter()
-            .map(|stretch| (stretch.from_m, stretch.to_m, stretch.holds))
+            .map(|stretch| (stretch.from_m, stretch.to_m, stretch.holds.thickness_m))
             .collect();
         assert_eq!(
             seen,
@@ -282,6 +288,7 @@ mod tests {
         let zone = |thickness_m, x0, x1| Zone {
             outline: geo::Rect::new(Coord { x: x0, y: -5.0 }, Coord { x: x1, y: 5.0 }).to_polygon(),
             thickness_m,
+            top_m: 0.0,
         };
         let slab = Slab {
             zones: vec![zone(0.6, 0.004, 3.0), zone(0.3, 3.005, 9.0)],
@@ -289,10 +296,10 @@ mod tests {
             ..Slab::default()
         };
         let path = Path::through(&[Coord { x: 0.0, y: 0.0 }, Coord { x: 20.0, y: 0.0 }]);
-        let found = Ground::of(&slab).thickness_along(&Chords::of(&path));
+        let found = Ground::of(&slab).faces_along(&Chords::of(&path));
         let seen: Vec<(f64, f64, Option<f64>)> = found
             .iter()
-            .map(|stretch| (stretch.from_m, stretch.to_m, stretch.holds))
+            .map(|stretch| (stretch.from_m, stretch.to_m, stretch.holds.thickness_m))
             .collect();
         assert_eq!(
             seen,

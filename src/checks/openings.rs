@@ -7,8 +7,8 @@ use geo::{Coord, Line};
 use super::Worked;
 use super::chords::Chords;
 use super::ground::{Ground, Stretch, share_along};
-use super::words::{also_at, mm, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, short, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::geometry::distance_m;
 use crate::job::Job;
 
@@ -59,14 +59,16 @@ pub(super) fn crosses_opening(
             &CROSSES_OPENING,
             Level::Error,
             f64::midpoint(worst.from_m, worst.to_m),
-            format!(
-                "the tendon runs through an opening from station {:.2} m to {:.2} m; it was expected to pass openings at \
-                 {} or more (limits.opening_clearance_mm){}",
-                worst.from_m,
-                worst.to_m,
-                mm(job.limits.opening_clearance_m),
-                also_at(&others)
-            ),
+            Wording::of(|units| {
+                format!(
+                    "the tendon runs through an opening from station {} to {}; it was expected to pass openings at {} or \
+                     more (limits.opening_clearance_mm){}",
+                    long(worst.from_m, units),
+                    long(worst.to_m, units),
+                    short(job.limits.opening_clearance_m, units),
+                    also_at(&others, units)
+                )
+            }),
             "sweep the tendon around the opening, or stop it with an anchor at either side; check with the services drawing \
              that the opening is where it is drawn",
         ));
@@ -131,12 +133,14 @@ fn near_opening(
         &CROSSES_OPENING,
         Level::Warning,
         worst.station_m,
-        format!(
-            "the tendon passes an opening at {}; at least {} was expected (limits.opening_clearance_mm){}",
-            mm(worst.distance_m),
-            mm(clearance_m),
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the tendon passes an opening at {}; at least {} was expected (limits.opening_clearance_mm){}",
+                short(worst.distance_m, units),
+                short(clearance_m, units),
+                also_at(&others, units)
+            )
+        }),
         "move the tendon off the opening's edge, or let the engineer detail the edge for the tendon's turning force",
     ))
 }

@@ -1,11 +1,12 @@
 //! What the line does in plan.
 
 use super::Worked;
-use super::words::{also_at, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::geometry::{Path, Segment};
 use crate::job::Job;
 use crate::profile::Tightest;
+use crate::units::LONG;
 
 /// See [`Rule::meaning`].
 pub static PLAN_RADIUS: Rule = Rule {
@@ -95,26 +96,23 @@ pub(super) fn plan_radius(worked: &Worked, job: &Job) -> Option<Finding> {
         .collect();
     let (worst, others) = worst_of(tight, |turn| -turn.radius_m, |turn| turn.station_m)?;
     let degrees = worst.angle_rad.to_degrees();
-    let found = if worst.bare {
-        format!(
-            "the plan line turns {degrees:.1}° at a bare vertex, where the largest fillet that fits its legs has a radius of \
-             {:.2} m",
-            worst.radius_m
-        )
+    let on = if worst.bare {
+        "at a bare vertex, where the largest fillet that fits its legs has"
     } else {
-        format!(
-            "the plan line turns {degrees:.1}° on a radius of {:.2} m",
-            worst.radius_m
-        )
+        "on"
     };
     Some(worked.finding(
         &PLAN_RADIUS,
         Level::Warning,
         worst.station_m,
-        format!(
-            "{found}; at least {limit_m} m was expected (limits.plan_radius_m){}",
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the plan line turns {degrees:.1}° {on} a radius of {}; at least {} was expected (limits.plan_radius_m){}",
+                long(worst.radius_m, units),
+                units.of(LONG).given(limit_m),
+                also_at(&others, units)
+            )
+        }),
         "sweep the tendon over a greater length with a larger radius, or move the obstacle or the anchor it turns for; a \
          tight sweep pushes the duct sideways and wants hairpins",
     ))

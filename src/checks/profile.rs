@@ -1,11 +1,12 @@
 //! What the curve does in elevation.
 
 use super::Worked;
-use super::words::{also_at, worst_of};
-use crate::finding::{Finding, Level, Rule};
+use super::words::{also_at, long, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::PointKind;
 use crate::job::Job;
 use crate::profile::Span;
+use crate::units::{LONG, Units};
 
 /// See [`Rule::meaning`].
 pub static HIGHS_IN_A_ROW: Rule = Rule {
@@ -67,9 +68,10 @@ fn in_a_row(
         .collect();
     // The longest straight is the one most likely to miss a point.
     let ((from_m, to_m), others) = worst_of(pairs, |pair| pair.1 - pair.0, |pair| pair.0)?;
-    let straight = worked.profile.map_or(String::new(), |profile| {
-        // Hogging-radius and radius_min_m are of curves; a break in slope is a curve without a radius.
-        let breaks: Vec<String> = profile
+    let straight = |units: Units| {
+        worked.profile.map_or(String::new(), |profile| {
+            // Hogging-radius and radius_min_m are of curves; a break in slope is a curve without a radius.
+            let breaks: Vec<String> = profile
             .bends
             .iter()
             .filter(|bend| {
@@ -78,25 +80,31 @@ fn in_a_row(
             })
             .map(|bend| {
                 format!(
-                    "; it turns {:.3} rad at one point at station {:.2} m, which no radius given counts",
-                    bend.angle_rad, bend.station_m
+                    "; it turns {:.3} rad at one point at station {}, which no radius given counts",
+                    bend.angle_rad,
+                    long(bend.station_m, units)
                 )
             })
             .collect();
-        format!(
-            ", and the tendon was taken as straight there{}",
-            breaks.concat()
-        )
-    });
+            format!(
+                ", and the tendon was taken as straight there{}",
+                breaks.concat()
+            )
+        })
+    };
     Some(worked.finding(
         rule,
         Level::Warning,
         f64::midpoint(from_m, to_m),
-        format!(
-            "two {word} points in a row, at stations {from_m:.2} m and {to_m:.2} m; a {missing} point was expected between \
-             them{straight}{}",
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "two {word} points in a row, at stations {} and {}; a {missing} point was expected between them{}{}",
+                long(from_m, units),
+                long(to_m, units),
+                straight(units),
+                also_at(&others, units)
+            )
+        }),
         format!(
             "draw the {missing} point's height between them, or correct the word of one of the two; if the tendon is meant \
              to run straight, nothing is to be done"
@@ -140,10 +148,14 @@ pub(super) fn hogging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
         &HOGGING_RADIUS,
         level,
         station_m,
-        format!(
-            "the curve has a hogging radius of {radius_m:.2} m; at least {limit_m} m was expected ({key}){}",
-            also_at(&others)
-        ),
+        Wording::of(|units| {
+            format!(
+                "the curve has a hogging radius of {}; at least {} was expected ({key}){}",
+                long(radius_m, units),
+                units.of(LONG).given(limit_m),
+                also_at(&others, units)
+            )
+        }),
         "lower the high point, raise the low points beside it, or spread the hogging curve over more of the span \
          (profile.inflection); a duct bent tighter kinks and its friction is more than was worked out",
     ))
@@ -209,7 +221,7 @@ mod tests {
             let profile = crate::profile::build(&tendon, &job().profile).expect("a curve");
             let mut worked = worked(&tendon);
             worked.profile = Some(&profile);
-            highs_in_a_row(&worked).map_or(String::new(), |found| found.text)
+            highs_in_a_row(&worked).map_or(String::new(), |found| found.text.to_string())
         };
         let slope_rad = (0.04_f64 / 4.0).atan();
         let text = said(0.13);

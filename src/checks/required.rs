@@ -5,8 +5,9 @@ use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
 use super::Worked;
-use crate::finding::{Finding, Level, Rule};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::{Floor, Tendon};
+use crate::units::{FORCE, FORCE_PER_WIDTH, LONG};
 
 /// See [`Rule::meaning`].
 pub static FORCE_BELOW_REQUIRED: Rule = Rule {
@@ -39,9 +40,14 @@ pub(super) fn force_below_required(worked: &Worked) -> Option<Finding> {
         &FORCE_BELOW_REQUIRED,
         Level::Error,
         tendon.path.length_m() / 2.0,
-        format!(
-            "the mean service force is {mean_kn:.0} kN{count}; the label requires {required_kn:.0} kN"
-        ),
+        Wording::of(|units| {
+            let force = units.of(FORCE);
+            format!(
+                "the mean service force is {}{count}; the label requires {}",
+                force.said(mean_kn, 0),
+                force.said(required_kn, 0)
+            )
+        }),
         "add strands or tendons, or check the label: the force in it is taken for the effective force of the whole line",
     ))
 }
@@ -85,20 +91,30 @@ pub fn per_width(floor: &Floor, mean_service_kn: &[Option<f64>]) -> Vec<Finding>
             let Some(width_m) = width_m(at, tendons, &index) else {
                 return Some(finding(
                     Level::Note,
-                    format!(
-                        "the label requires {required:.0} kN/m, which was not compared: no tendon of its run lies beside it \
-                         within {NEIGHBOUR_M} m, so its width is not known"
-                    ),
+                    Wording::of(|units| {
+                        format!(
+                            "the label requires {}, which was not compared: no tendon of its run lies beside it within {}, \
+                             so its width is not known",
+                            units.of(FORCE_PER_WIDTH).said(required, 0),
+                            units.of(LONG).brief(NEIGHBOUR_M, 1)
+                        )
+                    }),
                 ));
             };
             let given = total_kn / width_m;
             (given < required * (1.0 - ROUNDING)).then(|| {
                 finding(
                     Level::Error,
-                    format!(
-                        "the mean service force is {given:.0} kN/m ({total_kn:.0} kN over {width_m:.2} m between its \
-                         neighbours); the label requires {required:.0} kN/m"
-                    ),
+                    Wording::of(|units| {
+                        let per_width = units.of(FORCE_PER_WIDTH);
+                        format!(
+                            "the mean service force is {} ({} over {} between its neighbours); the label requires {}",
+                            per_width.said(given, 0),
+                            units.of(FORCE).said(total_kn, 0),
+                            units.of(LONG).said(width_m, 2),
+                            per_width.said(required, 0)
+                        )
+                    }),
                 )
             })
         })

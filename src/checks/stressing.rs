@@ -1,10 +1,11 @@
 //! Jacking, lock-off and the force left along the tendon.
 
 use super::Worked;
-use super::words::worst_of;
-use crate::finding::{Finding, Level, Rule};
+use super::words::{long, worst_of};
+use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::EndKind;
 use crate::job::Job;
+use crate::units::{FORCE, STRESS, Units};
 
 /// See [`Rule::meaning`].
 pub static JACKING_STRESS: Rule = Rule {
@@ -39,14 +40,14 @@ const ROUNDING: f64 = 1e-9;
 
 /// The two limits bind the ratio to strength, whatever the strand's size: one finding for the job.
 pub(super) fn jacking_stress(job: &Job) -> Option<Finding> {
-    let (limits, yield_ratio) = (&job.limits, job.system.yield_ratio);
+    let (limits, yield_ratio) = (&job.limits, job.tendon.yield_ratio);
     let ratio = job.stressing.jacking_ratio;
     let of_yield = limits.jacking_yield_ratio * yield_ratio;
     let (limit, from) = if of_yield < limits.jacking_stress_ratio {
         (
             of_yield,
             format!(
-                "{} of yield, which is {yield_ratio} of strength: limits.jacking_yield_ratio, system.yield_ratio",
+                "{} of yield, which is {yield_ratio} of strength: limits.jacking_yield_ratio, tendon.yield_ratio",
                 limits.jacking_yield_ratio
             ),
         )
@@ -59,27 +60,34 @@ pub(super) fn jacking_stress(job: &Job) -> Option<Finding> {
     if ratio <= limit + ROUNDING {
         return None;
     }
-    let mut strengths: Vec<f64> = job.system.strands.iter().map(|s| s.strength_mpa).collect();
+    let mut strengths: Vec<f64> = job.tendon.strands.iter().map(|s| s.strength_mpa).collect();
     strengths.sort_by(f64::total_cmp);
     strengths.dedup();
-    let stresses: Vec<String> = strengths
-        .iter()
-        .map(|strength_mpa| {
-            format!(
-                "{:.0} MPa against {:.0} MPa for strand of {strength_mpa:.0} MPa",
-                ratio * strength_mpa,
-                limit * strength_mpa
-            )
-        })
-        .collect();
+    let stresses = |units: Units| {
+        let stress = units.of(STRESS);
+        let each: Vec<String> = strengths
+            .iter()
+            .map(|strength_mpa| {
+                format!(
+                    "{} against {} for strand of {}",
+                    stress.said(ratio * strength_mpa, 0),
+                    stress.said(limit * strength_mpa, 0),
+                    stress.said(*strength_mpa, 0)
+                )
+            })
+            .collect();
+        each.join(", ")
+    };
     Some(Finding::new(
         &JACKING_STRESS,
         Level::Error,
-        format!(
-            "the job jacks to {ratio:.3} of strength ({}); at most {limit:.3} was expected ({from}; the default is ACI \
-             318-19 20.3.2.5.1's, from memory)",
-            stresses.join(", ")
-        ),
+        Wording::of(|units| {
+            format!(
+                "the job jacks to {ratio:.3} of strength ({}); at most {limit:.3} was expected ({from}; the default is ACI \
+                 318-19 20.3.2.5.1's, from memory)",
+                stresses(units)
+            )
+        }),
         "lower stressing.jacking_ratio, or set the limits of the code that governs the job",
     ))
 }
@@ -104,12 +112,16 @@ pub(super) fn anchor_stress(worked: &Worked, job: &Job) -> Option<Finding> {
         &ANCHOR_STRESS,
         Level::Error,
         station_m,
-        format!(
-            "after lock-off the strand at the anchor carries {stress_mpa:.0} MPa, {:.3} of its strength of {:.0} MPa; at most \
-             {limit:.3} was expected (limits.anchor_stress_ratio; the default is ACI 318-19 20.3.2.5.1's, from memory){both}",
-            stress_mpa / steel.strength_mpa,
-            steel.strength_mpa
-        ),
+        Wording::of(|units| {
+            let stress = units.of(STRESS);
+            format!(
+                "after lock-off the strand at the anchor carries {}, {:.3} of its strength of {}; at most {limit:.3} was \
+                 expected (limits.anchor_stress_ratio; the default is ACI 318-19 20.3.2.5.1's, from memory){both}",
+                stress.said(stress_mpa, 0),
+                stress_mpa / steel.strength_mpa,
+                stress.said(steel.strength_mpa, 0)
+            )
+        }),
         "jack to less, or seat the wedges with the draw-in that the system really has: a small draw-in leaves the anchor too \
          highly stressed",
     ))
@@ -138,11 +150,15 @@ pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
         &FAR_END_FORCE,
         Level::Warning,
         forces.least_jacking_station_m,
-        format!(
-            "{:.1} kN of the {:.1} kN jacked are left {place}, {ratio:.3} of it; at least {limit:.3} was expected \
-             (limits.far_end_ratio)",
-            forces.least_jacking_kn, forces.jack_kn
-        ),
+        Wording::of(|units| {
+            let force = units.of(FORCE);
+            format!(
+                "{} of the {} jacked are left {place}, {ratio:.3} of it; at least {limit:.3} was expected \
+                 (limits.far_end_ratio)",
+                force.said(forces.least_jacking_kn, 1),
+                force.said(forces.jack_kn, 1)
+            )
+        }),
         remedy,
     ))
 }
@@ -159,21 +175,28 @@ pub(super) fn draw_in_reaches_dead_end(worked: &Worked) -> Option<Finding> {
     if !live.draw_in_reaches_far {
         return None;
     }
-    let left = dead_kn.map_or(String::new(), |kn| {
-        format!(
-            ", where {kn:.1} kN of the {:.1} kN jacked are left after lock-off",
-            forces.jack_kn
-        )
-    });
+    let left = |units: Units| {
+        let force = |force_kn: f64| units.of(FORCE).said(force_kn, 1);
+        dead_kn.map_or(String::new(), |dead_kn| {
+            format!(
+                ", where {} of the {} jacked are left after lock-off",
+                force(dead_kn),
+                force(forces.jack_kn)
+            )
+        })
+    };
     Some(worked.finding(
         &DRAW_IN_REACHES_DEAD_END,
         Level::Warning,
         dead_m,
-        format!(
-            "the draw-in is felt along the whole {:.2} m, as far as the dead end{left}; it was expected to die out before it \
-             (stressing.draw_in_mm)",
-            end_m - start_m
-        ),
+        Wording::of(|units| {
+            format!(
+                "the draw-in is felt along the whole {}, as far as the dead end{}; it was expected to die out before it \
+                 (stressing.draw_in_mm)",
+                long(end_m - start_m, units),
+                left(units)
+            )
+        }),
         "make sure that the force worked out for this short tendon is the one the design counts on; power seating or shims \
          lessen the draw-in",
     ))
@@ -189,13 +212,13 @@ mod tests {
         let mut job = job();
         job.limits.jacking_stress_ratio = 0.80;
         job.limits.jacking_yield_ratio = 0.94;
-        job.system.yield_ratio = 0.90;
+        job.tendon.yield_ratio = 0.90;
         job.stressing.jacking_ratio = 0.80;
         assert_eq!(jacking_stress(&job), None);
         job.stressing.jacking_ratio = 0.801;
         let found = jacking_stress(&job);
         assert!(found.is_some_and(|f| f.text.contains("limits.jacking_stress_ratio")));
-        job.system.yield_ratio = 0.85;
+        job.tendon.yield_ratio = 0.85;
         job.stressing.jacking_ratio = 0.798;
         assert_eq!(jacking_stress(&job), None);
         job.stressing.jacking_ratio = 0.80;

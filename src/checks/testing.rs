@@ -34,6 +34,7 @@ pub(super) fn along(path: Path) -> Tendon {
     Tendon {
         mark: "D001".to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A7".to_owned(),
         layer: "TENDON-DISTRIBUTED".to_owned(),
         run: Run::Distributed,
@@ -62,7 +63,9 @@ pub(super) fn point(kind: PointKind, station_m: f64, height_m: Option<f64>) -> P
         },
         drawn_m: None,
         height_m,
+        other_soffit_m: None,
         thickness_m: Some(0.2),
+        top_m: 0.0,
     }
 }
 
@@ -74,6 +77,7 @@ pub(super) fn worked(tendon: &Tendon) -> Worked<'_> {
         forces: None,
         turning: None,
         lock_off_kn: None,
+        by_method: &[],
     }
 }
 

@@ -1,17 +1,19 @@
 //! Wording that several rules share.
 
+use crate::units::{LONG, SHORT, Units};
+
 /// How many further places a text names before it only counts them.
 const NAMED: usize = 5;
 
 /// The other places of a rule on the same tendon, as the tail of a sentence; empty if there are none.
-pub(super) fn also_at(stations_m: &[f64]) -> String {
+pub(super) fn also_at(stations_m: &[f64], units: Units) -> String {
     if stations_m.is_empty() {
         return String::new();
     }
     let named: Vec<String> = stations_m
         .iter()
         .take(NAMED)
-        .map(|station_m| format!("{station_m:.2} m"))
+        .map(|station_m| long(*station_m, units))
         .collect();
     let rest = stations_m.len().saturating_sub(NAMED);
     let more = if rest > 0 {
@@ -53,11 +55,14 @@ pub(super) fn worst_of<T>(
     Some((chosen, others))
 }
 
-/// Millimetres with at most one decimal.
-pub(super) fn mm(length_m: f64) -> String {
-    let tenths = (length_m * 10_000.0).round() / 10.0;
-    // Zero without a sign.
-    format!("{} mm", tenths + 0.0)
+/// A height or a clearance, to a tenth of a millimetre where it has one.
+pub(super) fn short(length_m: f64, units: Units) -> String {
+    units.of(SHORT).brief(length_m * 1000.0, 1)
+}
+
+/// A station, a length or a radius, to a hundredth of a metre.
+pub(super) fn long(length_m: f64, units: Units) -> String {
+    units.of(LONG).said(length_m, 2)
 }
 
 #[cfg(test)]
@@ -66,10 +71,10 @@ mod tests {
 
     #[test]
     fn other_places_are_named_and_the_rest_counted() {
-        assert_eq!(also_at(&[]), "");
-        assert_eq!(also_at(&[1.0]), "; also at station 1.00 m");
+        assert_eq!(also_at(&[], Units::Si), "");
+        assert_eq!(also_at(&[1.0], Units::Us), "; also at station 3.28 ft");
         let many = [1.0, 2.0, 3.0, 4.0, 5.0, 6.0, 7.0];
-        assert!(also_at(&many).ends_with("5.00 m and 2 more places"));
+        assert!(also_at(&many, Units::Si).ends_with("5.00 m and 2 more places"));
     }
 
     #[test]
@@ -79,9 +84,10 @@ mod tests {
     }
 
     #[test]
-    fn millimetres_show_one_decimal_only_where_there_is_one() {
-        assert_eq!(mm(0.025), "25 mm");
-        assert_eq!(mm(0.0155), "15.5 mm");
-        assert_eq!(mm(-0.000_01), "0 mm");
+    fn short_lengths_show_decimals_only_where_there_are_some() {
+        assert_eq!(short(0.025, Units::Si), "25 mm");
+        assert_eq!(short(0.0155, Units::Si), "15.5 mm");
+        assert_eq!(short(-0.000_01, Units::Si), "0 mm");
+        assert_eq!(short(0.0254, Units::Us), "1 in");
     }
 }

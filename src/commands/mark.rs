@@ -84,10 +84,10 @@ fn mark(
     let contents: [Pieces<'_>; 6] = [
         marked,
         text(report::json(&done.facts, &job.inputs(), analysis)),
-        text(report::tendons_csv(analysis)),
-        text(report::points_csv(analysis)),
-        text(report::extensions_csv(analysis)),
-        text(report::findings_csv(analysis)),
+        text(report::tendons_csv(analysis, job.units)),
+        text(report::points_csv(analysis, job.units)),
+        text(report::extensions_csv(analysis, job.units)),
+        text(report::findings_csv(analysis, job.units)),
     ];
     let written: Vec<(PathBuf, Pieces<'_>)> =
         targets(plan, out).into_iter().zip(contents).collect();

@@ -50,7 +50,8 @@ pub(super) struct Worn {
 }
 
 impl Worn {
-    fn note(&mut self, tag: &Tag<'_>) {
+    /// Takes note of a group that says colour or linetype.
+    pub(super) fn note(&mut self, tag: &Tag<'_>) {
         match tag.code {
             6 => {
                 let name = tag.value_range();

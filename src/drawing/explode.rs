@@ -5,9 +5,11 @@ use std::collections::{BTreeMap, BTreeSet};
 use dxf::entities::{EntityType, Insert as DxfInsert};
 use geo::Coord;
 
+use super::answers::Answers;
 use super::caps::Expansion;
 use super::clean::NOWHERE;
 use super::convert::{TOO_FAR, is_near, line_of};
+use super::leaders::{Pointing, What};
 use super::lettering::{Style, attribute_content, normal, of_attribute, of_mtext, of_text};
 use super::looks::Looks;
 use super::placing::Placing;
@@ -16,7 +18,7 @@ use super::rules::{
 };
 use super::scan::Scan;
 use super::windows::Record;
-use super::{Drawing, Insert, Look, Shape, Text};
+use super::{Dot, Drawing, Insert, Leader, Look, Shape, Text};
 use crate::finding::{Finding, Level, Rule};
 use crate::patterns::folded;
 
@@ -37,6 +39,8 @@ pub(super) struct Book<'s> {
     pub(super) holds_wanted: Vec<bool>,
     /// By block number: its records.
     pub(super) records: Vec<Vec<Record>>,
+    /// By block number: its leaders and points.
+    pub(super) pointing: Vec<Vec<Pointing>>,
     /// Layer numbers by folded name.
     pub(super) layers: BTreeMap<String, u32>,
 }
@@ -85,6 +89,8 @@ struct Frame<'f> {
     look: Look,
     /// The innermost insert among those of the drawing.
     within: Option<usize>,
+    /// Number of the placed block, 0 for model space: handles hold within it.
+    expansion: usize,
 }
 
 /// What a shape, text or insert belongs to, and how it is seen.
@@ -110,6 +116,8 @@ pub(super) struct Gatherer<'b> {
     told: BTreeSet<(&'static str, usize)>,
     /// By rule: how grave it is, and how often it speaks.
     spoken: BTreeMap<&'static str, (&'static Rule, Level, usize)>,
+    answers: Answers,
+    expansions: usize,
 }
 
 impl<'b> Gatherer<'b> {
@@ -117,6 +125,7 @@ impl<'b> Gatherer<'b> {
     pub(super) fn new(
         book: &'b Book<'b>,
         looks: Looks<'b>,
+        answers: Answers,
         unit_m: f64,
         expansion: Expansion,
     ) -> Self {
@@ -131,6 +140,8 @@ impl<'b> Gatherer<'b> {
             open: Vec::new(),
             told: BTreeSet::new(),
             spoken: BTreeMap::new(),
+            answers,
+            expansions: 0,
         }
     }
 
@@ -146,17 +157,34 @@ impl<'b> Gatherer<'b> {
 
     /// Takes a record of model space.
     pub(super) fn take(&mut self, record: &Record) {
-        let frame = Frame {
+        self.place(record, &self.model_space());
+    }
+
+    /// Takes a leader or point of model space; the texts that leaders name come before.
+    pub(super) fn take_pointing(&mut self, pointing: &Pointing) {
+        self.point(pointing, &self.model_space());
+    }
+
+    fn model_space(&self) -> Frame<'static> {
+        Frame {
             placing: self.unit,
             handle: None,
             layer: None,
             look: Looks::outermost(),
             within: None,
-        };
-        self.place(record, &frame);
+            expansion: 0,
+        }
     }
 
     fn place(&mut self, record: &Record, frame: &Frame<'_>) {
+        let before = self.drawing.texts.len();
+        self.place_alone(record, frame);
+        let texts = before..self.drawing.texts.len();
+        self.answers
+            .note(frame.expansion, record.kept.handle.as_deref(), texts);
+    }
+
+    fn place_alone(&mut self, record: &Record, frame: &Frame<'_>) {
         let own = own_handle(record);
         let handle = frame.handle.unwrap_or(&own);
         let layer = self.layer_in(record.kept.layer, frame.layer);
@@ -330,6 +358,7 @@ impl<'b> Gatherer<'b> {
                         insert.y_scale_factor,
                     ))
                     .after(&Placing::shifted(-base_x, -base_y));
+                self.expansions += 1;
                 let inside = Frame {
                     placing,
                     handle: Some(handle),
@@ -340,6 +369,7 @@ impl<'b> Gatherer<'b> {
                     } else {
                         frame.within
                     },
+                    expansion: self.expansions,
                 };
                 self.block(block, &inside, handle);
             }
@@ -391,7 +421,58 @@ impl<'b> Gatherer<'b> {
             }
             self.place(record, inside);
         }
+        for pointing in book.pointing.get(block).into_iter().flatten() {
+            if !self.spend(handle, pointing.weight()) {
+                break;
+            }
+            self.point(pointing, inside);
+        }
         self.open.pop();
+    }
+
+    fn point(&mut self, pointing: &Pointing, frame: &Frame<'_>) {
+        let layer = self.layer_in(pointing.layer, frame.layer);
+        let handle = frame.handle.unwrap_or(&pointing.handle);
+        let wanted = self.book.wants(layer);
+        let seen = Place {
+            layer,
+            look: self.looks.seen(&pointing.worn, layer, frame.look),
+            within: frame.within,
+        };
+        match &pointing.what {
+            What::Dot(place) if wanted => self.drawing.dots.push(Dot {
+                handle: handle.to_owned(),
+                layer: self.book.layer_name(layer),
+                look: seen.look,
+                place: frame.placing.place(*place),
+            }),
+            What::Dot(_) => {}
+            What::Leader(lines) => {
+                let named = lines.annotation.as_deref();
+                let mut texts: Vec<usize> = self.answers.of(frame.expansion, named).collect();
+                if let Some(text) = &lines.text {
+                    if !wanted {
+                        return;
+                    }
+                    texts.push(self.drawing.texts.len());
+                    let lettering = of_mtext(text, Style::default(), &frame.placing);
+                    self.text(lettering, seen, handle, false);
+                    texts.retain(|&text| text < self.drawing.texts.len());
+                }
+                let placed = |places: &[Coord<f64>]| {
+                    let places = places.iter().map(|&place| frame.placing.place(place));
+                    places.collect()
+                };
+                self.drawing.leaders.push(Leader {
+                    handle: handle.to_owned(),
+                    layer: self.book.layer_name(layer),
+                    look: seen.look,
+                    arrows: placed(&lines.arrows),
+                    tails: placed(&lines.tails),
+                    texts,
+                });
+            }
+        }
     }
 
     /// An insert's attributes as texts, also those that it does not show.

@@ -48,6 +48,8 @@ pub(super) struct Scan {
     pub(super) counts: Vec<Vec<(usize, usize)>>,
     /// Model-space entities that can be read, in file order.
     pub(super) entries: Vec<Entry>,
+    /// Model-space leaders and points, in file order.
+    pub(super) pointing: Vec<Entry>,
     /// Blocks, in file order.
     pub(super) blocks: Vec<BlockEntry>,
     /// Block names that inserts speak of; [`Entry::block`] indexes them.
@@ -110,6 +112,8 @@ pub(super) struct Entry {
     pub(super) block: u32,
     /// Whether it is an insert.
     pub(super) is_insert: bool,
+    /// Whether it is a POINT.
+    pub(super) is_dot: bool,
 }
 
 /// A block's definition.
@@ -123,6 +127,8 @@ pub(super) struct BlockEntry {
     pub(super) entries: Vec<Entry>,
     /// Layers of its inserts' attributes, where they are not the insert's.
     pub(super) attribute_layers: Vec<u32>,
+    /// Leaders and points.
+    pub(super) pointing: Vec<Entry>,
 }
 
 /// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.
@@ -174,6 +180,7 @@ impl Scan {
             types: Vec::new(),
             counts: Vec::new(),
             entries: Vec::new(),
+            pointing: Vec::new(),
             blocks: Vec::new(),
             block_names: Vec::new(),
             attribute_layers: Vec::new(),

@@ -3,6 +3,7 @@
 use std::collections::HashMap;
 
 use super::code_page::CodePage;
+use super::leaders::POINTING_TYPES;
 use super::scan::{OWN_LAYER, READ_TYPES};
 use super::text_decode::plain_name;
 use crate::patterns::folded;
@@ -117,6 +118,7 @@ impl<'a> LayerNames<'a> {
 pub(super) struct Types<'a> {
     names: Vec<&'a [u8]>,
     read: Vec<bool>,
+    points: Vec<bool>,
     ids: HashMap<&'a [u8], usize>,
     last: usize,
 }
@@ -132,6 +134,7 @@ impl<'a> Types<'a> {
         if id == next {
             self.names.push(name);
             self.read.push(READ_TYPES.contains(&name));
+            self.points.push(POINTING_TYPES.contains(&name));
         }
         self.last = id;
         id
@@ -145,6 +148,11 @@ impl<'a> Types<'a> {
     /// Whether entities of this type are read.
     pub(super) fn is_read(&self, id: usize) -> bool {
         self.read.get(id).copied().unwrap_or(false)
+    }
+
+    /// Whether entities of this type point at something.
+    pub(super) fn points(&self, id: usize) -> bool {
+        self.points.get(id).copied().unwrap_or(false)
     }
 
     /// The names as bytes, in order of their numbers.

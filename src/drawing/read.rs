@@ -4,8 +4,10 @@ use std::collections::BTreeMap;
 
 use geo::Coord;
 
+use super::answers::Answers;
 use super::caps::Caps;
 use super::explode::{Book, Gatherer, MOST_TOLD, and_more};
+use super::leaders::{Pointing, pointings};
 use super::looks::Looks;
 use super::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE, UNIT_ASSUMED};
 use super::scan::{Entry, Scan};
@@ -40,16 +42,24 @@ pub fn read_within(
         block_of_name: block_of_name(scan),
         holds_wanted: Vec::new(),
         records: Vec::new(),
+        pointing: Vec::new(),
         layers: layer_numbers(scan),
     };
     book.holds_wanted = holds_wanted(&book);
     let top = top_entries(&book);
-    book.records = block_records(source, &book, &top, &mut losses);
+    let needed = needed_blocks(&book, &top);
+    book.records = block_records(source, &book, &needed, &mut losses);
+    book.pointing = block_pointing(source, &book, &needed, &mut losses);
+    let pointing = pointings(source, wanted_pointing(&book, &scan.pointing), &mut losses);
+    let answers = Answers::to(book.pointing.iter().flatten().chain(&pointing));
 
     let looks = Looks::new(&source.bytes, scan);
     let expansion = caps.expansion(source, wanted);
-    let mut gatherer = Gatherer::new(&book, looks, unit_m, expansion);
+    let mut gatherer = Gatherer::new(&book, looks, answers, unit_m, expansion);
     read_records(source, top, &mut losses, |record| gatherer.take(&record));
+    for pointing in &pointing {
+        gatherer.take_pointing(pointing);
+    }
     let (mut drawing, mut of_blocks) = gatherer.finish();
     drawing.version.clone_from(&scan.version);
     drawing.unit_m = unit_m;
@@ -241,6 +251,8 @@ fn holds_wanted(book: &Book<'_>) -> Vec<bool> {
         }
         let mut of_attributes = block.attribute_layers.iter();
         holds[index] |= of_attributes.any(|&layer| is_wanted(book, layer));
+        let mut pointing = block.pointing.iter();
+        holds[index] |= pointing.any(|entry| is_wanted(book, entry.layer));
         if holds[index] {
             news.push(index);
         }
@@ -281,13 +293,8 @@ fn top_entries<'s>(book: &Book<'s>) -> Vec<&'s Entry> {
         .collect()
 }
 
-/// The records of every block that the top entries bring in.
-fn block_records(
-    source: &Source,
-    book: &Book<'_>,
-    top: &[&Entry],
-    losses: &mut Losses,
-) -> Vec<Vec<super::windows::Record>> {
+/// By block: whether the top entries bring it in.
+fn needed_blocks(book: &Book<'_>, top: &[&Entry]) -> Vec<bool> {
     let blocks = &book.scan.blocks;
     let mut needed = vec![false; blocks.len()];
     let mut open: Vec<usize> = top
@@ -307,6 +314,44 @@ fn block_records(
             );
         }
     }
+    needed
+}
+
+/// Leaders of every layer, and points that are wanted or may take a wanted layer from an insert.
+fn wanted_pointing<'e>(
+    book: &'e Book<'_>,
+    entries: &'e [Entry],
+) -> impl Iterator<Item = &'e Entry> {
+    let zero = book.layers.get("0").copied();
+    entries.iter().filter(move |entry| {
+        !entry.is_dot || Some(entry.layer) == zero || is_wanted(book, entry.layer)
+    })
+}
+
+/// Leaders and points of every block that is needed.
+fn block_pointing(
+    source: &Source,
+    book: &Book<'_>,
+    needed: &[bool],
+    losses: &mut Losses,
+) -> Vec<Vec<Pointing>> {
+    let blocks = book.scan.blocks.iter().zip(needed);
+    blocks
+        .map(|(block, &needed)| {
+            let entries = wanted_pointing(book, &block.pointing).filter(|_| needed);
+            pointings(source, entries, losses)
+        })
+        .collect()
+}
+
+/// The records of every block that is needed.
+fn block_records(
+    source: &Source,
+    book: &Book<'_>,
+    needed: &[bool],
+    losses: &mut Losses,
+) -> Vec<Vec<super::windows::Record>> {
+    let blocks = &book.scan.blocks;
     let zero = book.layers.get("0").copied();
     let mut entries = Vec::new();
     let mut homes = Vec::new();

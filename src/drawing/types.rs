@@ -26,6 +26,10 @@ pub struct Drawing {
     pub texts: Vec<Text>,
     /// Block inserts (also those that were exploded into shapes and texts).
     pub inserts: Vec<Insert>,
+    /// Leaders of every layer: what they point out lies on the layers that were asked for.
+    pub leaders: Vec<Leader>,
+    /// POINT entities.
+    pub dots: Vec<Dot>,
 }
 
 impl Drawing {
@@ -155,4 +159,34 @@ pub struct Insert {
     pub rotation_rad: f64,
     /// Attribute tags and values, in order.
     pub attributes: Vec<(String, String)>,
+}
+
+/// A LEADER or MULTILEADER.
+#[derive(Debug, Clone)]
+pub struct Leader {
+    /// Handle as for [`Shape`].
+    pub handle: String,
+    /// Layer as for [`Shape`].
+    pub layer: String,
+    /// How it is seen.
+    pub look: Look,
+    /// Arrow tips, metres.
+    pub arrows: Vec<Coord<f64>>,
+    /// Where its lines end away from the arrows, metres.
+    pub tails: Vec<Coord<f64>>,
+    /// Its texts, by their places in [`Drawing::texts`]; empty where the drawing ties none to it.
+    pub texts: Vec<usize>,
+}
+
+/// A POINT.
+#[derive(Debug, Clone)]
+pub struct Dot {
+    /// Handle as for [`Shape`].
+    pub handle: String,
+    /// Layer as for [`Shape`].
+    pub layer: String,
+    /// How it is seen.
+    pub look: Look,
+    /// Where it stands, metres.
+    pub place: Coord<f64>,
 }

@@ -1,29 +1,31 @@
 //! The floor put together from its parts.
 
-use super::candidates::lies;
+use std::collections::BTreeSet;
+
+use super::aims::{self, Aimed};
+use super::arrows::Arrows;
+use super::candidates::{Lie, lies};
 use super::ends;
-use super::heights::{self, Doubt, Settled};
+use super::groups::groups;
+use super::heights::{self, Height, Settled};
 use super::index::Index;
 use super::labels::{Labels, labels};
 use super::layers::Roles;
 use super::levels::levels;
 use super::lines::{Line, lines};
+use super::made::plans;
 use super::marks::{self, Marks};
-use super::missing::{Columns, Stray, complete};
-use super::points::{points, words};
-use super::readings::{HeightText, MarkText, Word};
-use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
+use super::missing::{Columns, complete};
+use super::near::{Near, kind};
+use super::points::points;
+use super::readings::{HeightText, MarkText};
 use super::slab::{Thickness, slab};
 use super::symbols::Symbols;
-use super::types::{Floor, PointKind, Tendon};
+use super::ticks::aim_by_ticks;
+use super::types::{End, Floor, Point, Tendon};
 use crate::drawing::{Drawing, Text};
-use crate::finding::{Finding, Level};
-use crate::job::Job;
-
-/// A label that nobody claims is told by the nearest tendon within this many times its reach.
-const SEEN: f64 = 4.0;
-/// It says that a tendon lacks a height within this many times its reach.
-const LACKING: f64 = 2.0;
+use crate::finding::Finding;
+use crate::job::{Conventions, Job};
 
 /// Reads a floor from a drawing. What the drawing does not say is left open and found, never assumed; the result does
 /// not depend on the order of the drawing's entities.
@@ -46,7 +48,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
 
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
     findings.extend(found);
-    let taken = levels.texts.union(&symbols.texts).copied().collect();
+    let arrows = Arrows::new(drawing, &roles, &index, conventions.arrow_reach_m);
+    let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
+    let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
+    taken.extend(&groups.texts);
     let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);
     let Labels {
@@ -55,26 +60,37 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         unread,
     } = labels;
 
-    let (texts, readings): (Vec<&Text>, Vec<MarkText>) = mark_labels.into_iter().unzip();
-    let mark_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
-    let settled_marks = marks::settle(&readings, &mark_lies, &lines);
-    let names = marks::names(&lines, &settled_marks.of_line);
+    let among = Among {
+        drawing,
+        conventions,
+        roles: &roles,
+        lines: &lines,
+        index: &index,
+        columns: &columns,
+        arrows: &arrows,
+    };
+    let (marks, mut settled_marks) = among.marks(mark_labels);
+    findings.extend(aims::shared(&marks, &lines));
+    findings.extend(marks.findings);
+    let (plans, found) = plans(&groups, &settled_marks.of_line, &lines);
+    findings.extend(found);
+    let reserved = plans.claim(&mut settled_marks.of_line);
+    let names = marks::names(&lines, &settled_marks.of_line, &reserved);
     let near = Near {
         lines: &lines,
         index: &index,
         names: &names,
         reach: conventions.label_reach,
     };
-    findings.extend(near.marks(&texts, &settled_marks));
+    findings.extend(near.marks(&marks.texts, &settled_marks));
 
-    let (texts, mut readings): (Vec<&Text>, Vec<HeightText>) = height_labels.into_iter().unzip();
-    for (text, reading) in texts.iter().zip(&mut readings) {
-        reading.weigh(thickness.at(text.place));
+    let (heights, settled) = among.heights(height_labels, &thickness, &levels.of_line);
+    findings.extend(heights.findings);
+    findings.extend(near.heights(&heights.texts, &heights.readings, &settled));
+    let mut strays = near.strays(&heights.texts, &heights.readings, &settled, &unread);
+    for (text, reading) in heights.astray {
+        strays.extend(near.beside(text, kind(reading)));
     }
-    let height_lies = lies(&texts, &lines, &index, conventions.label_reach, &columns);
-    let settled = heights::settle(&readings, &height_lies, &lines, &levels.of_line);
-    findings.extend(near.heights(&texts, &readings, &settled));
-    let strays = near.strays(&texts, &readings, &settled, &unread);
 
     let mut tendons = Vec::with_capacity(lines.len());
     for (at, line) in lines.iter().enumerate() {
@@ -93,24 +109,8 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             line.path.length_m(),
             conventions.end_reach_m,
         ));
-        tendons.push(Tendon {
-            mark: names[at].clone(),
-            mark_drawn: said.mark.is_some(),
-            handle: line.handle.clone(),
-            layer: line.layer.clone(),
-            run: line.run,
-            path: line.path.clone(),
-            tendons: said.tendons.unwrap_or(1),
-            strands: said.strands,
-            strand: said.strand.as_ref().map(|written| {
-                let known = job.system.strand_named(written);
-                known.map_or_else(|| written.clone(), |size| size.name.clone())
-            }),
-            required_kn: said.required_kn,
-            required_kn_per_m: said.required_kn_per_m,
-            ends: line_ends[at].each_ref().map(|told| told.end),
-            points,
-        });
+        let ends = line_ends[at].each_ref().map(|told| told.end);
+        tendons.push(drawn(job, line, &names[at], said, ends, points));
     }
     findings.extend(complete(
         &mut tendons,
@@ -119,172 +119,100 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         &strays,
         &thickness,
     ));
+    let (made, found) = plans.made(&tendons, &thickness);
+    findings.extend(found);
+    tendons.extend(made);
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
     findings.extend(marks::findings(&tendons));
     (Floor { tendons, slab }, findings)
 }
 
-/// Words for labels, by the tendons near to them.
-struct Near<'a> {
+/// A tendon that the drawing shows.
+fn drawn(
+    job: &Job,
+    line: &Line,
+    mark: &str,
+    said: &MarkText,
+    ends: [End; 2],
+    points: Vec<Point>,
+) -> Tendon {
+    Tendon {
+        mark: mark.to_owned(),
+        mark_drawn: said.mark.is_some(),
+        made: false,
+        handle: line.handle.clone(),
+        layer: line.layer.clone(),
+        run: line.run,
+        path: line.path.clone(),
+        tendons: said.tendons.unwrap_or(1),
+        strands: said.strands,
+        strand: said.strand.as_ref().map(|written| {
+            let known = job.tendon.strand_named(written);
+            known.map_or_else(|| written.clone(), |size| size.name.clone())
+        }),
+        required_kn: said.required_kn,
+        required_kn_per_m: said.required_kn_per_m,
+        ends,
+        points,
+    }
+}
+
+/// What labels are settled among.
+struct Among<'a> {
+    drawing: &'a Drawing,
+    conventions: &'a Conventions,
+    roles: &'a Roles,
     lines: &'a [Line],
     index: &'a Index,
-    names: &'a [String],
-    reach: f64,
+    columns: &'a Columns<'a>,
+    arrows: &'a Arrows,
 }
 
-impl Near<'_> {
-    fn marks(&self, texts: &[&Text], marks: &Marks) -> Vec<Finding> {
-        let mut findings: Vec<Finding> = marks
-            .unclaimed
-            .iter()
-            .map(|&label| self.unclaimed(texts[label]))
-            .collect();
-        findings.extend(marks.doubts.iter().map(|&(label, here, there)| {
-            let text = texts[label];
-            Finding::new(
-                &LABEL_AMBIGUOUS,
-                Level::Warning,
-                format!(
-                    "mark {:?} was taken for the line with handle {}, but fits the one with handle {} about as well",
-                    text.content, self.lines[here].handle, self.lines[there].handle
-                ),
-                "move the mark nearer to its tendon, along it",
-            )
-            .on_tendon(&self.names[here])
-            .at_place(text.place)
-        }));
-        findings
+impl Among<'_> {
+    fn marks<'t>(&self, labels: Vec<(&'t Text, MarkText)>) -> (Aimed<'t, MarkText>, Marks) {
+        let aimed = aims::aimed(labels, self.arrows, aims::share_of);
+        let settled = marks::settle(&aimed.readings, &self.lies(&aimed), self.lines);
+        (aimed, settled)
     }
 
-    fn heights(&self, texts: &[&Text], readings: &[HeightText], settled: &Settled) -> Vec<Finding> {
-        let unclaimed = settled.unclaimed.iter();
-        let mut findings: Vec<Finding> = unclaimed
-            .map(|&label| self.unclaimed(texts[label]))
-            .collect();
-        findings.extend(settled.doubts.iter().map(|doubt| {
-            let here = &self.names[doubt.hosts[0]];
-            let there = &self.names[doubt.hosts[1]];
-            let said = words(readings[doubt.label]);
-            let (level, text) = if doubt.tied {
-                (
-                    Level::Error,
-                    format!(
-                        "height {said} fits {here} and {there} equally well; neither was given it"
-                    ),
-                )
-            } else {
-                (
-                    Level::Warning,
-                    format!("height {said} was taken for {here}, but fits {there} about as well"),
-                )
-            };
-            Finding::new(
-                &LABEL_AMBIGUOUS,
-                level,
-                text,
-                "move the label nearer to its tendon, or turn it along the tendon",
-            )
-            .on_tendon(here)
-            .at_station(doubt.stations_m[0])
-            .at_place(texts[doubt.label].place)
-        }));
-        findings
-    }
-
-    fn unclaimed(&self, text: &Text) -> Finding {
-        let reach_m = self.reach * text.height_m;
-        let nearest = self
-            .index
-            .feet(text.place, SEEN * reach_m)
-            .into_iter()
-            .min_by(|a, b| a.distance_m.total_cmp(&b.distance_m));
-        let (tail, foot) = match nearest {
-            Some(foot) if foot.distance_m > reach_m => {
-                let name = &self.names[foot.line];
-                (
-                    format!(
-                        "{name}, the nearest, is {:.2} m off and the reach is {reach_m:.2} m",
-                        foot.distance_m
-                    ),
-                    Some(foot),
-                )
-            }
-            Some(foot) => (
-                format!(
-                    "{}, {:.2} m off, has its own label there",
-                    self.names[foot.line], foot.distance_m
-                ),
-                Some(foot),
-            ),
-            None => (format!("no tendon is within {:.2} m", SEEN * reach_m), None),
-        };
-        let finding = Finding::new(
-            &LABEL_UNCLAIMED,
-            Level::Warning,
-            format!("label {:?} belongs to no tendon: {tail}", text.content),
-            "move the label to its tendon, or delete it",
-        )
-        .at_place(text.place);
-        match foot {
-            Some(foot) => finding
-                .on_tendon(&self.names[foot.line])
-                .at_station(foot.station_m),
-            None => finding,
-        }
-    }
-
-    /// Labels without a tendon, beside each tendon that they are near to.
-    fn strays(
+    /// Heights; `levels` are those that level lines give, by line.
+    fn heights<'t>(
         &self,
-        texts: &[&Text],
-        readings: &[HeightText],
-        settled: &Settled,
-        unread: &[&Text],
-    ) -> Vec<Stray> {
-        let beside = |text: &Text, kind: Option<PointKind>| -> Vec<Stray> {
-            let reach_m = LACKING * self.reach * text.height_m;
-            let feet = self.index.feet(text.place, reach_m).into_iter();
-            feet.map(|foot| Stray {
-                line: foot.line,
-                station_m: foot.station_m,
-                kind,
-                content: text.content.clone(),
-            })
-            .collect()
-        };
-        let mut strays: Vec<Stray> = Vec::new();
-        for &label in &settled.unclaimed {
-            strays.extend(beside(texts[label], kind(readings[label])));
+        labels: Vec<(&'t Text, HeightText)>,
+        thickness: &Thickness<'_>,
+        levels: &[Vec<Height>],
+    ) -> (Aimed<'t, HeightText>, Settled) {
+        let mut aimed = aims::aimed(labels, self.arrows, |reading, _, _| *reading);
+        aim_by_ticks(
+            self.drawing,
+            self.conventions,
+            self.roles,
+            self.index,
+            &aimed.texts,
+            &mut aimed.aims,
+        );
+        let labels = aimed.texts.iter().zip(&mut aimed.readings);
+        for ((text, reading), aim) in labels.zip(&aimed.aims) {
+            let foot = aim.as_ref().and_then(|aim| aim.first());
+            let place = foot.map_or(text.place, |foot| foot.place);
+            reading.weigh(thickness.at(place));
         }
-        strays.extend(unread.iter().flat_map(|text| beside(text, None)));
-        for Doubt {
-            label,
-            hosts,
-            stations_m,
-            ..
-        } in settled.doubts.iter().filter(|d| d.tied)
-        {
-            strays.extend(
-                hosts
-                    .iter()
-                    .zip(stations_m)
-                    .map(|(&line, &station_m)| Stray {
-                        line,
-                        station_m,
-                        kind: kind(readings[*label]),
-                        content: texts[*label].content.clone(),
-                    }),
-            );
-        }
-        strays
+        let mut lies = self.lies(&aimed);
+        heights::written_to_ends(&mut lies, &aimed.readings);
+        let settled = heights::settle(&aimed.readings, &lies, self.lines, levels);
+        (aimed, settled)
     }
-}
 
-fn kind(reading: HeightText) -> Option<PointKind> {
-    reading.word.map(|word| match word {
-        Word::High => PointKind::High,
-        Word::Low => PointKind::Low,
-    })
+    fn lies<R>(&self, labels: &Aimed<'_, R>) -> Vec<Lie> {
+        lies(
+            &labels.texts,
+            &labels.aims,
+            self.lines,
+            self.index,
+            self.conventions.label_reach,
+            self.columns,
+        )
+    }
 }
 
 /// Text before digits, digits as a number: B2 before B10.

@@ -6,8 +6,9 @@ use rstar::primitives::GeomWithData;
 
 use super::lines::Line;
 use super::rules::{PIECES_BRIDGED, PIECES_OVERLAP};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment, turn_rad};
+use crate::units::SHORT;
 
 /// Two ends face one another where each line would run into the other: within this angle, radians.
 const FACING_RAD: f64 = 0.05;
@@ -181,18 +182,24 @@ fn said(line: &Line, place: Coord<f64>, ahead_m: f64) -> Finding {
         Finding::new(
             &PIECES_OVERLAP,
             Level::Warning,
-            format!(
-                "line {handle} on layer {layer} overlaps the piece it goes on from by {gap_mm:.0} mm; the two were taken for one tendon"
-            ),
+            Wording::of(|units| {
+                format!(
+                    "line {handle} on layer {layer} overlaps the piece it goes on from by {}; the two were taken for one tendon",
+                    units.of(SHORT).said(gap_mm, 0)
+                )
+            }),
             "draw the tendon as one line, or put end symbols where two tendons end",
         )
     } else {
         Finding::new(
             &PIECES_BRIDGED,
             Level::Note,
-            format!(
-                "a gap of {gap_mm:.0} mm before line {handle} on layer {layer} was bridged, as the job file allows"
-            ),
+            Wording::of(|units| {
+                format!(
+                    "a gap of {} before line {handle} on layer {layer} was bridged, as the job file allows",
+                    units.of(SHORT).said(gap_mm, 0)
+                )
+            }),
             "draw the tendon as one line if it is one; put end symbols at the gap if it is two",
         )
     };

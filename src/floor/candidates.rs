@@ -2,7 +2,8 @@
 
 use geo::Coord;
 
-use super::index::Index;
+use super::aims::Aim;
+use super::index::{Foot, Index};
 use super::lines::{Line, axis_rad};
 use super::missing::Columns;
 use super::settle::Pairing;
@@ -37,15 +38,20 @@ pub(super) struct Lie {
     pub(super) turn: usize,
     /// Whether the place is at an end.
     pub(super) at_end: bool,
+    /// From the text's nearest edge, along the tendon, to the nearer end, in text heights.
+    pub(super) edge_h: f64,
     /// Tendons of the same run beside this one, nearest first, with the station beside the label.
     pub(super) beside: Vec<(usize, f64)>,
     /// Along the tendon from the label to the middle of a column, metres.
     pub(super) column_m: Option<f64>,
+    /// Whether the label says by arrow or tick that it belongs here.
+    pub(super) aimed: bool,
 }
 
-/// The lies of labels to all tendons within reach, label by label.
+/// The lies of labels to all tendons within reach, label by label; a label that points has those of its aim alone.
 pub(super) fn lies(
     texts: &[&Text],
+    aims: &[Option<Aim>],
     lines: &[Line],
     index: &Index,
     reach: f64,
@@ -55,6 +61,25 @@ pub(super) fn lies(
     let axes = [Run::Banded, Run::Distributed]
         .map(|run| (run, axis_rad(lines.iter().filter(|line| line.run == run))));
     for (label, text) in texts.iter().enumerate() {
+        let setting = Setting {
+            label,
+            text,
+            lines,
+            axes,
+            columns,
+        };
+        if let Some(Some(aim)) = aims.get(label) {
+            for foot in aim {
+                let feet = index.feet(foot.place, BESIDE_M);
+                lies.extend(setting.lie(foot, foot.distance_m, &feet).map(|lie| Lie {
+                    off_h: 0.0,
+                    side_h: 0.0,
+                    aimed: true,
+                    ..lie
+                }));
+            }
+            continue;
+        }
         let reach_m = reach * text.height_m;
         let feet = index.feet(text.place, BESIDE_M.max(reach_m + text_span_m(text)));
         let mut gaps: Vec<(usize, f64)> = index
@@ -66,63 +91,95 @@ pub(super) fn lies(
         gaps.sort_by(|a, b| a.0.cmp(&b.0).then(a.1.total_cmp(&b.1)));
         gaps.dedup_by_key(|gap| gap.0);
         for (host, gap_m) in gaps {
-            let Some(foot) = feet.iter().find(|foot| foot.line == host) else {
-                continue;
-            };
-            let Some(line) = lines.get(host) else {
-                continue;
-            };
-            let mut beside: Vec<(f64, usize, f64)> = feet
-                .iter()
-                .filter(|other| {
-                    other.line != host
-                        && lines.get(other.line).is_some_and(|l| l.run == line.run)
-                        && (other.heading_rad - foot.heading_rad).sin().abs() < 0.2
-                })
-                .map(|other| {
-                    (
-                        distance_m(other.place, foot.place),
-                        other.line,
-                        other.station_m,
-                    )
-                })
-                .collect();
-            beside.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
-            beside.truncate(BESIDE);
-            let (sin, cos) = foot.heading_rad.sin_cos();
-            let (dx, dy) = (text.place.x - foot.place.x, text.place.y - foot.place.y);
-            let height_m = text.height_m.max(1e-6);
-            let length_m = line.path.length_m();
-            let off_h = (cos * dy - sin * dx) / height_m;
-            let axis_rad = axes
-                .iter()
-                .find(|(run, _)| *run == line.run)
-                .map_or(0.0, |&(_, axis)| axis);
-            let with_axis = (foot.heading_rad - axis_rad).cos() >= 0.0;
-            let end_m = foot.station_m.min(length_m - foot.station_m);
-            lies.push(Lie {
-                pairing: Pairing {
-                    label,
-                    host,
-                    station_m: foot.station_m,
-                },
-                gap_h: gap_m / height_m,
-                off_h,
-                side_h: if with_axis { off_h } else { -off_h },
-                turn: turn_bin(text.rotation_rad - foot.heading_rad),
-                at_end: end_m
-                    <= AT_END_M
-                        .max(AT_END_HEIGHTS * text.height_m)
-                        .min(length_m / 4.0),
-                beside: beside
-                    .into_iter()
-                    .map(|(_, line, station_m)| (line, station_m))
-                    .collect(),
-                column_m: column_m(columns, foot.place, foot.heading_rad),
-            });
+            if let Some(foot) = feet.iter().find(|foot| foot.line == host) {
+                lies.extend(setting.lie(foot, gap_m, &feet));
+            }
         }
     }
     lies
+}
+
+/// From the text's nearest edge, along a line in this direction, to the nearer end of a line of this length, metres.
+fn edge_m(
+    text: &Text,
+    foot: &Coord<f64>,
+    (cos, sin): (f64, f64),
+    station_m: f64,
+    length_m: f64,
+) -> f64 {
+    let along = text.corners.iter().map(|corner| {
+        let station_m = station_m + cos * (corner.x - foot.x) + sin * (corner.y - foot.y);
+        station_m.min(length_m - station_m)
+    });
+    along.fold(f64::INFINITY, f64::min)
+}
+
+/// A label and what it stands among.
+struct Setting<'a> {
+    label: usize,
+    text: &'a Text,
+    lines: &'a [Line],
+    axes: [(Run, f64); 2],
+    columns: &'a Columns<'a>,
+}
+
+impl Setting<'_> {
+    /// How the label lies to the tendon of a foot; `feet` are those of all tendons near to it.
+    fn lie(&self, foot: &Foot, gap_m: f64, feet: &[Foot]) -> Option<Lie> {
+        let (text, lines) = (self.text, self.lines);
+        let line = lines.get(foot.line)?;
+        let mut beside: Vec<(f64, usize, f64)> = feet
+            .iter()
+            .filter(|other| {
+                other.line != foot.line
+                    && lines.get(other.line).is_some_and(|l| l.run == line.run)
+                    && (other.heading_rad - foot.heading_rad).sin().abs() < 0.2
+            })
+            .map(|other| {
+                (
+                    distance_m(other.place, foot.place),
+                    other.line,
+                    other.station_m,
+                )
+            })
+            .collect();
+        beside.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
+        beside.truncate(BESIDE);
+        let (sin, cos) = foot.heading_rad.sin_cos();
+        let (dx, dy) = (text.place.x - foot.place.x, text.place.y - foot.place.y);
+        let height_m = text.height_m.max(1e-6);
+        let length_m = line.path.length_m();
+        let off_h = (cos * dy - sin * dx) / height_m;
+        let axis_rad = self
+            .axes
+            .iter()
+            .find(|(run, _)| *run == line.run)
+            .map_or(0.0, |&(_, axis)| axis);
+        let with_axis = (foot.heading_rad - axis_rad).cos() >= 0.0;
+        let end_m = foot.station_m.min(length_m - foot.station_m);
+        Some(Lie {
+            pairing: Pairing {
+                label: self.label,
+                host: foot.line,
+                station_m: foot.station_m,
+            },
+            gap_h: gap_m / height_m,
+            off_h,
+            side_h: if with_axis { off_h } else { -off_h },
+            turn: turn_bin(text.rotation_rad - foot.heading_rad),
+            at_end: end_m
+                <= AT_END_M
+                    .max(AT_END_HEIGHTS * text.height_m)
+                    .min(length_m / 4.0),
+            edge_h: edge_m(text, &foot.place, (cos, sin), foot.station_m, length_m) / height_m,
+            beside: beside
+                .into_iter()
+                .map(|(_, line, station_m)| (line, station_m))
+                .collect(),
+            column_m: column_m(self.columns, foot.place, foot.heading_rad),
+            aimed: false,
+        })
+    }
 }
 
 /// From the text's place to its farthest corner, metres.

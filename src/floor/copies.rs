@@ -7,8 +7,9 @@ use super::lines::Line;
 use super::order::by_handle;
 use super::rules::DUPLICATE_LINE;
 use crate::drawing::Shape;
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, distance_m};
+use crate::units::LONG;
 
 /// Places at which a line is compared with another.
 const PROBES: u32 = 33;
@@ -118,10 +119,14 @@ fn copy(handle: &str, layer: &str, other: &str, path: &Path, overlap_m: f64) -> 
     Finding::new(
         &DUPLICATE_LINE,
         Level::Error,
-        format!(
-            "the line of handle {handle} on layer {layer} lies on that of handle {other} for about {overlap_m:.2} m of its {:.2} m; expected each tendon once",
-            path.length_m()
-        ),
+        Wording::of(|units| {
+            let long = units.of(LONG);
+            format!(
+                "the line of handle {handle} on layer {layer} lies on that of handle {other} for about {} of its {}; expected each tendon once",
+                long.said(overlap_m, 2),
+                long.said(path.length_m(), 2)
+            )
+        }),
         "delete one of the two lines, or move it to where its tendon lies",
     )
     .at_place(path.place_at(path.length_m() / 2.0))

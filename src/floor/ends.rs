@@ -9,8 +9,9 @@ use super::rules::{END_CONTRADICTED, END_UNCLAIMED, END_UNKNOWN};
 use super::settle::{Pairing, Settlement, Stakes};
 use super::symbols::{Sign, Symbol};
 use super::types::{End, EndKind};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::distance_m;
+use crate::units::LONG;
 
 /// An end, and why its kind is not known if it is not.
 #[derive(Debug, Clone)]
@@ -203,17 +204,23 @@ pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64)
             let (rule, text, remedy) = match &told.doubt {
                 Some(Doubt::Differ([live, dead])) => (
                     &END_CONTRADICTED,
-                    format!("{live} says that this end is live, {dead} that it is dead; it was taken for neither"),
+                    Wording::from(format!("{live} says that this end is live, {dead} that it is dead; it was taken for neither")),
                     "delete the wrong one",
                 ),
                 Some(Doubt::Unsaid(block)) => (
                     &END_UNKNOWN,
-                    format!("block {block} marks this end, but no attribute and no word within {reach_m:.2} m says whether it is live or dead"),
+                    Wording::of(|units| {
+                        let reach = units.of(LONG).said(reach_m, 2);
+                        format!("block {block} marks this end, but no attribute and no word within {reach} says whether it is live or dead")
+                    }),
                     "name the block among the live or dead ones in the job file, or its attribute's or text's word in live_words or dead_words",
                 ),
                 None => (
                     &END_UNKNOWN,
-                    format!("no end symbol lies within {reach_m:.2} m of this end; expected a live or a dead end"),
+                    Wording::of(|units| {
+                        let reach = units.of(LONG).said(reach_m, 2);
+                        format!("no end symbol lies within {reach} of this end; expected a live or a dead end")
+                    }),
                     "insert the live or dead end block at the end, or name the office's blocks, words or shapes in the job file",
                 ),
             };
@@ -234,10 +241,14 @@ fn unclaimed(symbol: &Symbol<'_>, reach_m: f64) -> Finding {
     Finding::new(
         &END_UNCLAIMED,
         Level::Warning,
-        format!(
-            "{kind} {} ({}) is not the nearest to any tendon's end within {reach_m:.2} m",
-            symbol.handle, symbol.name
-        ),
+        Wording::of(|units| {
+            format!(
+                "{kind} {} ({}) is not the nearest to any tendon's end within {}",
+                symbol.handle,
+                symbol.name,
+                units.of(LONG).said(reach_m, 2)
+            )
+        }),
         "move the symbol to its tendon's end, or delete it",
     )
     .at_place(symbol.place)

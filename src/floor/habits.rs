@@ -40,7 +40,8 @@ impl Habits {
             banded: empty.clone(),
             distributed: empty,
         };
-        for (run, lie, weight) in taken {
+        // A label that points may stand anywhere.
+        for (run, lie, weight) in taken.filter(|(_, lie, _)| !lie.aimed) {
             let habit = match run {
                 Run::Banded => &mut habits.banded,
                 Run::Distributed => &mut habits.distributed,
@@ -55,6 +56,9 @@ impl Habits {
 
     /// Cost of standing otherwise than usual.
     pub(super) fn cost(&self, run: Run, lie: &Lie) -> f64 {
+        if lie.aimed {
+            return 0.0;
+        }
         let habit = match run {
             Run::Banded => &self.banded,
             Run::Distributed => &self.distributed,

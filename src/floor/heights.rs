@@ -1,5 +1,6 @@
 //! Height labels settled on their tendons: what a pairing costs, round after round, as more is known of the floor.
 
+use super::aims::AIMED;
 use super::candidates::Lie;
 use super::habits::Habits;
 use super::lines::Line;
@@ -47,6 +48,23 @@ const SAME_PLACE_M: f64 = 0.5;
 const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
 const STEEP: f64 = 0.08;
+
+/// A text without a word whose edge is this near to an end, in text heights, speaks of the anchor; mid-depth from
+/// farther in, since it is said of hardly any other point.
+const EDGE: f64 = 1.0;
+const EDGE_OF_MIDDLE: f64 = 3.0;
+
+/// Counts labels to anchors that are written from within towards an end, wherever their first letter stands. A label with
+/// a word speaks of its own place.
+pub(super) fn written_to_ends(lies: &mut [Lie], readings: &[HeightText]) {
+    for lie in lies {
+        let Some(reading) = readings.get(lie.pairing.label) else {
+            continue;
+        };
+        let near = if reading.middle { EDGE_OF_MIDDLE } else { EDGE };
+        lie.at_end |= reading.word.is_none() && lie.edge_h <= near;
+    }
+}
 
 /// Settles labels; `fixed` are heights from level lines, by line.
 pub(super) fn settle(
@@ -152,6 +170,9 @@ fn costs(
             let reading = readings[lie.pairing.label];
             let run = lines[lie.pairing.host].run;
             let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
+            if lie.aimed {
+                cost -= AIMED;
+            }
             match habits {
                 None => {
                     let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
@@ -161,7 +182,11 @@ fn costs(
                     cost += 0.4 * lie.gap_h
                         + habits.cost(run, lie)
                         + resemblance(reading, lie, &known)
-                        + side(lie, &sides[lie.pairing.host]);
+                        + if lie.aimed {
+                            0.0
+                        } else {
+                            side(lie, &sides[lie.pairing.host])
+                        };
                 }
             }
             cost
@@ -183,6 +208,9 @@ fn sides(lies: &[Lie], lines: usize, taken: &[Option<usize>]) -> Vec<Vec<(usize,
     let mut sides = vec![Vec::new(); lines];
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
+        if lie.aimed {
+            continue;
+        }
         sides[lie.pairing.host].push((lie.pairing.label, lie.off_h));
     }
     sides

@@ -167,6 +167,16 @@ impl Chord {
     }
 }
 
+/// Distance from a place to a text's box; zero inside it.
+pub(super) fn to_box_m(place: Coord<f64>, corners: &[Coord<f64>; 4]) -> f64 {
+    if inside(place, corners) {
+        return 0.0;
+    }
+    (0..4)
+        .map(|side| to_stretch_m(place, corners[side], corners[(side + 1) % 4]))
+        .fold(f64::INFINITY, f64::min)
+}
+
 fn split(from: Coord<f64>, to: Coord<f64>, mut take: impl FnMut(Coord<f64>, Coord<f64>)) {
     #[expect(
         clippy::cast_possible_truncation,

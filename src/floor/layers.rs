@@ -19,6 +19,8 @@ pub(super) struct Role {
     pub(super) ends: bool,
     pub(super) label: Labels,
     pub(super) ground: Ground,
+    /// Lines across groups of tendons.
+    pub(super) extents: bool,
 }
 
 /// How a tendon's run is told.
@@ -77,6 +79,7 @@ impl Roles {
             &layers.slab_opening,
             &layers.slab_zone,
             &layers.column,
+            &layers.extents,
         ]
         .map(|patterns| selectors(patterns));
         let mut roles = Self {
@@ -95,7 +98,7 @@ impl Roles {
         roles
     }
 
-    fn learn(&mut self, sets: &[Selectors; 11], drawing: &Drawing, layer: &str, look: Look) {
+    fn learn(&mut self, sets: &[Selectors; 12], drawing: &Drawing, layer: &str, look: Look) {
         if let Some(looks) = self.by_look.get_mut(layer) {
             looks
                 .entry(look)
@@ -153,7 +156,7 @@ impl Roles {
     }
 }
 
-fn role(sets: &[Selectors; 11], layer: &str, colour: Option<u8>, linetype: &str) -> Role {
+fn role(sets: &[Selectors; 12], layer: &str, colour: Option<u8>, linetype: &str) -> Role {
     let [
         banded,
         distributed,
@@ -166,6 +169,7 @@ fn role(sets: &[Selectors; 11], layer: &str, colour: Option<u8>, linetype: &str)
         opening,
         zone,
         column,
+        extents,
     ] = sets
         .each_ref()
         .map(|set| set.picks(layer, colour, linetype));
@@ -198,6 +202,7 @@ fn role(sets: &[Selectors; 11], layer: &str, colour: Option<u8>, linetype: &str)
             marks,
         },
         ground,
+        extents,
     }
 }
 

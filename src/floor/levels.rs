@@ -14,9 +14,10 @@ use super::points::words;
 use super::readings::{HeightText, height};
 use super::rules::LEVEL_LINE_UNREAD;
 use crate::drawing::{Drawing, Shape, ShapeKind};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment, distance_m};
 use crate::job::Job;
+use crate::units::{LONG, Units};
 
 /// Heights that level lines give, and the texts that they took.
 pub(super) struct Levels {
@@ -52,18 +53,18 @@ pub(super) fn levels(
     let mut findings = Vec::new();
     for (path, said) in paths.iter().zip(readings) {
         match said.as_slice() {
-            [] => findings.push(unread(path, "has no height within reach")),
+            [] => findings.push(unread(path, |_| "has no height within reach".to_owned())),
             [first, rest @ ..] if rest.iter().all(|other| other == first) => {
                 cross(path, *first, lines, index, &mut levels.of_line);
             }
             [first, rest @ ..] => {
-                let numbers = std::iter::once(first).chain(rest);
-                let numbers: BTreeSet<String> = numbers.map(|&said| words(said)).collect();
-                let numbers: Vec<String> = numbers.into_iter().collect();
-                findings.push(unread(
-                    path,
-                    &format!("has more than one height beside it: {}", numbers.join(", ")),
-                ));
+                findings.push(unread(path, |units| {
+                    let numbers = std::iter::once(first).chain(rest);
+                    let numbers: BTreeSet<String> =
+                        numbers.map(|&said| words(said, units)).collect();
+                    let numbers: Vec<String> = numbers.into_iter().collect();
+                    format!("has more than one height beside it: {}", numbers.join(", "))
+                }));
             }
         }
     }
@@ -90,14 +91,17 @@ fn level_paths(drawing: &Drawing, job: &Job, roles: &Roles) -> Vec<Path> {
     chains.iter().map(|chain| chain.path(&pieces)).collect()
 }
 
-fn unread(path: &Path, what: &str) -> Finding {
+fn unread(path: &Path, what: impl Fn(Units) -> String) -> Finding {
     Finding::new(
         &LEVEL_LINE_UNREAD,
         Level::Error,
-        format!(
-            "a level line of {:.2} m {what}; expected one, such as L30: no tendon takes a height from it",
-            path.length_m()
-        ),
+        Wording::of(|units| {
+            format!(
+                "a level line of {} {}; expected one, such as L30: no tendon takes a height from it",
+                units.of(LONG).said(path.length_m(), 2),
+                what(units)
+            )
+        }),
         "write one height beside the level line, on its layer",
     )
     .at_place(path.place_at(path.length_m() / 2.0))

@@ -12,9 +12,10 @@ use super::pieces::{Joint, chains, returns};
 use super::rules::{PIECES_MEET, RUN_ASSUMED, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
 use super::types::Run;
 use crate::drawing::{Drawing, Shape, ShapeKind};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::Path;
 use crate::job::Job;
+use crate::units::SHORT;
 
 /// A tendon line before anything is known of it but its way.
 #[derive(Debug, Clone)]
@@ -113,13 +114,16 @@ fn stub(shape: &Shape, gap_m: f64) -> Finding {
     let finding = Finding::new(
         &TENDON_STUB,
         Level::Warning,
-        format!(
-            "line {} on layer {} is {:.1} mm long; expected more than the joining gap of {:.1} mm",
-            shape.handle,
-            shape.layer,
-            shape.path.length_m() * 1000.0,
-            gap_m * 1000.0
-        ),
+        Wording::of(|units| {
+            let short = units.of(SHORT);
+            format!(
+                "line {} on layer {} is {} long; expected more than the joining gap of {}",
+                shape.handle,
+                shape.layer,
+                short.said(shape.path.length_m() * 1000.0, 1),
+                short.said(gap_m * 1000.0, 1)
+            )
+        }),
         "delete the stub, or give a smaller `join_gap_mm` in the job file's [drawing] table",
     );
     match shape.path.start() {

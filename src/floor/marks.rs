@@ -2,6 +2,7 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
+use super::aims::AIMED;
 use super::candidates::Lie;
 use super::habits::Habits;
 use super::lines::{Line, axis_rad};
@@ -96,8 +97,9 @@ fn costs(
         .map(|lie| {
             let run = lines[lie.pairing.host].run;
             // Marks are written along their tendon.
-            let turned = if lie.turn == 0 { 0.0 } else { 0.5 };
-            let near = 0.6 * lie.gap_h + 0.02 * lie.off_h.abs().min(6.0) + turned;
+            let turned = if lie.turn == 0 || lie.aimed { 0.0 } else { 0.5 };
+            let aimed = if lie.aimed { -AIMED } else { 0.0 };
+            let near = aimed + 0.6 * lie.gap_h + 0.02 * lie.off_h.abs().min(6.0) + turned;
             if !learned {
                 return near;
             }
@@ -178,9 +180,11 @@ const ROW_M: f64 = 0.0007;
 const UPRIGHT_RAD: f64 = std::f64::consts::FRAC_PI_4 + 0.001;
 
 /// Names for lines without a mark: `B001`, `D001`, ... by place across the run, then along it.
-pub(super) fn names(lines: &[Line], drawn: &[MarkText]) -> Vec<String> {
+/// Nobody is called by a mark that is reserved.
+pub(super) fn names(lines: &[Line], drawn: &[MarkText], reserved: &[MarkText]) -> Vec<String> {
     let used: BTreeSet<String> = drawn
         .iter()
+        .chain(reserved)
         .filter_map(|text| text.mark.as_ref())
         .map(|mark| mark.to_uppercase())
         .collect();

@@ -66,13 +66,16 @@ pub(super) fn complete(
                 .points
                 .partition_point(|point| point.station_m <= lack.station_m)
                 .min(tendon.points.len().saturating_sub(1));
+            let faces = thickness.faces_at(place);
             let point = Point {
                 kind: lack.kind,
                 station_m: lack.station_m,
                 place,
                 drawn_m: None,
                 height_m: None,
-                thickness_m: thickness.at(place),
+                other_soffit_m: None,
+                thickness_m: faces.thickness_m,
+                top_m: faces.top_m,
             };
             tendon.points.insert(at, point);
         }

@@ -2,12 +2,15 @@
 
 use super::heights::Height;
 use super::lines::Line;
+use super::measured::{Measured, Measures};
+use super::nearer_face::{Bare, unknown_at_anchor, words_by_neighbours};
 use super::readings::{HeightText, Word};
 use super::rules::LEVEL_LINE_DIFFERS;
 use super::slab::Thickness;
-use super::types::{Point, PointKind};
-use crate::finding::{Finding, Level};
-use crate::job::{Datum, FromFace, HeightReading};
+use super::types::{Faces, Point, PointKind};
+use crate::finding::{Finding, Level, Wording};
+use crate::job::{FromFace, HeightReading, Soffit};
+use crate::units::{SHORT, Units};
 
 /// A level line and a label nearer than this speak of one place, metres.
 const SAME_PLACE_M: f64 = 0.5;
@@ -20,7 +23,7 @@ struct Mark {
     station_m: f64,
     reading: HeightText,
     at_end: bool,
-    thickness_m: Option<f64>,
+    faces: Faces,
     /// Two level lines contradict one another here.
     torn: bool,
 }
@@ -29,6 +32,11 @@ impl Mark {
     /// The number that stands on the drawing; a word such as MID is none, and of two that contradict neither counts.
     fn drawn_m(&self) -> Option<f64> {
         (!self.torn && !self.reading.middle).then_some(self.reading.value_m)
+    }
+
+    /// Whether its number is to the nearer face.
+    fn is_to_nearer_face(&self) -> bool {
+        self.reading.from == FromFace::NearerFace && !self.reading.middle
     }
 }
 
@@ -40,7 +48,7 @@ pub(super) fn points(
     thickness: &Thickness<'_>,
     job: &HeightReading,
 ) -> (Vec<Point>, Vec<Finding>) {
-    let (marks, findings) = merged(mark, line, heights, thickness);
+    let (mut marks, mut findings) = merged(mark, line, heights, thickness);
     let length_m = line.path.length_m();
     // The mark nearest to an end is the anchor's; another that stands near is a point of its own.
     let first_is_anchor = marks
@@ -49,43 +57,72 @@ pub(super) fn points(
     let last_is_anchor = marks
         .last()
         .is_some_and(|m| m.at_end && m.station_m > length_m / 2.0);
+    let inner = usize::from(first_is_anchor)..marks.len() - usize::from(last_is_anchor);
+    let mut faceless = false;
+    if marks.iter().any(Mark::is_to_nearer_face) {
+        let found = by_neighbours(mark, line, marks.get_mut(inner.clone()).unwrap_or_default());
+        faceless = found.iter().any(|finding| finding.level == Level::Error);
+        findings.extend(found);
+    }
+    let measures = Measures {
+        job,
+        general: thickness.general(),
+    };
     let start = marks.first().filter(|_| first_is_anchor);
     let end = marks.last().filter(|_| last_is_anchor);
     let anchor = |station_m: f64, said: Option<&Mark>| {
         let place = line.path.place_at(station_m);
-        let thickness_m = thickness.at(place);
-        let height_m = match said {
-            Some(said) if said.torn => None,
-            Some(said) => height_m(said.reading, PointKind::Anchor, thickness_m, job),
-            None if marks.is_empty() => None,
-            None => thickness_m.map(|t| t / 2.0),
+        let faces = thickness.faces_at(place);
+        let measured = match said {
+            Some(said) if said.torn => Measured::default(),
+            Some(said) => measures.height(said.reading, PointKind::Anchor, faces),
+            None if marks.is_empty() || faceless => Measured::default(),
+            None => Measured::height(faces.thickness_m.map(|t| t / 2.0)),
         };
         Point {
             kind: PointKind::Anchor,
             station_m,
             place,
             drawn_m: said.and_then(Mark::drawn_m),
-            height_m,
-            thickness_m,
+            height_m: measured.height_m,
+            other_soffit_m: measured.other_soffit_m,
+            thickness_m: faces.thickness_m,
+            top_m: faces.top_m,
         }
     };
     let first = anchor(0.0, start);
     let last = anchor(length_m, end);
-    let inner = usize::from(first_is_anchor)..marks.len() - usize::from(last_is_anchor);
+    for (said, anchor) in [(start, &first), (end, &last)] {
+        let open =
+            |said: &&Mark| !said.torn && said.is_to_nearer_face() && anchor.height_m.is_none();
+        if let Some(said) = said.filter(open) {
+            findings.push(
+                unknown_at_anchor(said.reading.value_m)
+                    .on_tendon(mark)
+                    .at_station(anchor.station_m)
+                    .at_place(anchor.place),
+            );
+        }
+    }
     let between: Vec<Mark> = marks.get(inner).unwrap_or_default().to_vec();
-    let kinds = kinds(line, &between, [&first, &last]);
+    let kinds = kinds(line, &between, [&first, &last], &measures);
     let mut points = vec![first];
-    points.extend(between.iter().zip(kinds).map(|(mark, kind)| Point {
-        kind,
-        station_m: mark.station_m,
-        place: line.path.place_at(mark.station_m),
-        drawn_m: mark.drawn_m(),
-        height_m: if mark.torn {
-            None
+    points.extend(between.iter().zip(kinds).map(|(mark, kind)| {
+        let measured = if mark.torn {
+            Measured::default()
         } else {
-            height_m(mark.reading, kind, mark.thickness_m, job)
-        },
-        thickness_m: mark.thickness_m,
+            measures.height(mark.reading, kind, mark.faces)
+        };
+        Point {
+            kind,
+            station_m: mark.station_m,
+            place: line.path.place_at(mark.station_m),
+            drawn_m: mark.drawn_m(),
+            height_m: measured.height_m,
+            other_soffit_m: measured.other_soffit_m,
+            thickness_m: mark.faces.thickness_m,
+            top_m: mark.faces.top_m,
+        }
     }));
     points.push(last);
     (points, findings)
@@ -106,10 +143,10 @@ fn merged(
             station_m: height.station_m,
             reading: height.reading,
             at_end: height.at_end,
-            thickness_m: thickness.at(place),
+            faces: thickness.faces_at(place),
             torn: false,
         };
-        new.reading.weigh(new.thickness_m);
+        new.reading.weigh(new.faces.thickness_m);
         let labelled = height.label.is_some();
         let held = marks.last_mut().filter(|(held, by_label)| {
             // A label farther in does not speak for the anchor that a level line gives.
@@ -135,16 +172,18 @@ fn merged(
                 } else {
                     Level::Warning
                 },
-                format!(
-                    "{} and {} at one place; {}",
-                    said(held.reading, *by_label),
-                    said(new.reading, labelled),
-                    if both_lines {
-                        "neither was used"
-                    } else {
-                        "the label was used"
-                    }
-                ),
+                Wording::of(|units| {
+                    format!(
+                        "{} and {} at one place; {}",
+                        said(held.reading, *by_label, units),
+                        said(new.reading, labelled, units),
+                        if both_lines {
+                            "neither was used"
+                        } else {
+                            "the label was used"
+                        }
+                    )
+                }),
                 "correct the level line or the label",
             );
             findings.push(
@@ -167,64 +206,76 @@ fn agree(a: HeightText, b: HeightText) -> bool {
         && (a.word == b.word || a.word.is_none() || b.word.is_none())
 }
 
-fn said(reading: HeightText, by_label: bool) -> String {
+fn said(reading: HeightText, by_label: bool, units: Units) -> String {
     let source = if by_label { "a label" } else { "a level line" };
-    format!("{source} says {}", words(reading))
+    format!("{source} says {}", words(reading, units))
 }
 
 /// A height as one would write it.
-pub(super) fn words(reading: HeightText) -> String {
+pub(super) fn words(reading: HeightText, units: Units) -> String {
     let word = match reading.word {
         Some(Word::High) => "H",
         Some(Word::Low) => "L",
         None => "",
     };
-    let millimetres = (reading.value_m * 10_000.0).round() / 10.0;
-    format!("{word}{millimetres} mm")
+    let height = units.of(SHORT).brief(reading.value_m * 1000.0, 1);
+    format!("{word}{height}")
 }
 
-/// Strand centroid above the local soffit. To the duct's underside, the strand lies higher in the duct at a low point
-/// than at a high one; between, and at an anchor, it is taken midway.
-fn height_m(
-    reading: HeightText,
-    kind: PointKind,
-    thickness_m: Option<f64>,
-    job: &HeightReading,
-) -> Option<f64> {
-    if reading.middle {
-        return thickness_m.map(|thickness_m| thickness_m / 2.0);
+/// Gives bare numbers to the nearer face the words that their neighbours leave them, and says so.
+fn by_neighbours(mark: &str, line: &Line, marks: &mut [Mark]) -> Vec<Finding> {
+    let mut marks: Vec<&mut Mark> = marks
+        .iter_mut()
+        .filter(|mark| mark.reading.word.is_some() || mark.is_to_nearer_face())
+        .collect();
+    let bare: Vec<Bare> = marks
+        .iter()
+        .map(|mark| Bare {
+            station_m: mark.station_m,
+            value_m: mark.reading.value_m,
+            word: mark.reading.word,
+        })
+        .collect();
+    let (words, findings) = words_by_neighbours(&bare);
+    for (mark, word) in marks.iter_mut().zip(words) {
+        mark.reading.word = word;
     }
-    let value_m = reading.value_m;
-    // A chair stands on the form and carries the duct: its height is that of the duct's underside.
-    let in_duct_m = match (reading.datum, kind) {
-        (Datum::Centroid, _) => 0.0,
-        (Datum::DuctUnderside | Datum::Chair, PointKind::Low) => job.strand_in_duct_low_m,
-        (Datum::DuctUnderside | Datum::Chair, PointKind::High) => job.strand_in_duct_high_m,
-        (Datum::DuctUnderside | Datum::Chair, PointKind::Anchor | PointKind::Support) => {
-            f64::midpoint(job.strand_in_duct_low_m, job.strand_in_duct_high_m)
-        }
+    let on_tendon = |finding: Finding| {
+        let place = line.path.place_at(finding.station_m.unwrap_or_default());
+        finding.on_tendon(mark).at_place(place)
     };
-    match (reading.from, kind) {
-        (FromFace::Soffit, _) | (FromFace::NearerFace, PointKind::Low) => Some(value_m + in_duct_m),
-        (FromFace::Top, _) | (FromFace::NearerFace, PointKind::High) => {
-            Some(thickness_m? - value_m + in_duct_m)
-        }
-        (FromFace::NearerFace, PointKind::Anchor | PointKind::Support) => None,
-    }
+    findings.into_iter().map(on_tendon).collect()
 }
 
 /// What each height is: by its word, or by its neighbours.
-fn kinds(line: &Line, marks: &[Mark], anchors: [&Point; 2]) -> Vec<PointKind> {
+fn kinds(
+    line: &Line,
+    marks: &[Mark],
+    anchors: [&Point; 2],
+    measures: &Measures<'_>,
+) -> Vec<PointKind> {
+    let general_m = measures.general.soffit_m();
+    let from_general = measures.job.soffit == Soffit::General;
     // Where the slab's thickness is known everywhere, levels are compared; otherwise heights as written.
-    let by_level = marks.iter().all(|mark| mark.thickness_m.is_some())
-        && anchors.iter().all(|anchor| anchor.thickness_m.is_some());
-    let from_soffit = |mark: &Mark| mark.reading.from == FromFace::Soffit;
-    let level = |mark: &Mark| match mark.reading.from {
-        FromFace::Top => -mark.reading.value_m,
-        FromFace::NearerFace if mark.reading.word != Some(Word::Low) => -mark.reading.value_m,
-        _ if by_level => mark.reading.value_m - mark.thickness_m.unwrap_or(0.0),
-        _ => mark.reading.value_m,
+    let by_level = marks.iter().all(|mark| mark.faces.thickness_m.is_some())
+        && anchors.iter().all(|anchor| anchor.thickness_m.is_some())
+        && (general_m.is_some() || !from_general);
+    let level = |mark: &Mark| {
+        let soffit_m = if from_general && !mark.reading.middle {
+            general_m
+        } else {
+            mark.faces.soffit_m()
+        };
+        match (mark.reading.from, mark.reading.word) {
+            (FromFace::Top, _) | (FromFace::NearerFace, Some(Word::High)) => {
+                Some(mark.faces.top_m - mark.reading.value_m)
+            }
+            (FromFace::NearerFace, None) => None,
+            _ if by_level => Some(mark.reading.value_m + soffit_m?),
+            _ => Some(mark.reading.value_m),
+        }
     };
+    let from_soffit = |mark: &Mark| mark.reading.from == FromFace::Soffit;
     let anchor = |point: &Point| {
         if !by_level && marks.iter().all(from_soffit) {
             point.height_m
@@ -234,7 +285,7 @@ fn kinds(line: &Line, marks: &[Mark], anchors: [&Point; 2]) -> Vec<PointKind> {
     };
     // Anchor, heights, anchor; an anchor without a level does not count.
     let mut levels: Vec<Option<f64>> = vec![anchor(anchors[0])];
-    levels.extend(marks.iter().map(|mark| Some(level(mark))));
+    levels.extend(marks.iter().map(level));
     levels.push(anchor(anchors[1]));
     let ends = [0.0, line.path.length_m()];
     let stations: Vec<f64> = std::iter::once(ends[0])

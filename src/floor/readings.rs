@@ -229,27 +229,8 @@ impl MarkText {
     }
 }
 
-/// The thickness that a text gives, metres.
-pub(super) fn thickness_m(content: &str, conventions: &Conventions) -> Option<f64> {
-    let mut lines = content.lines();
-    lines.find_map(|line| thickness_of_line(line, conventions).map(|(value_m, _)| value_m))
-}
-
-/// The thickness that a line gives, metres, and the pattern that read it.
-pub fn thickness_of_line<'c>(
-    line: &str,
-    conventions: &'c Conventions,
-) -> Option<(f64, &'c Pattern)> {
-    conventions.thickness_patterns.iter().find_map(|pattern| {
-        let groups = pattern.captures(line.trim())?;
-        let unit = length_unit(pattern).unwrap_or(conventions.thickness_unit);
-        length_m(groups.name("value")?.as_str(), unit)
-            .filter(|&value_m| value_m > 0.0)
-            .map(|value_m| (value_m, pattern))
-    })
-}
-
-fn length_unit(pattern: &Pattern) -> Option<LengthUnit> {
+/// The unit that a pattern gives its lengths.
+pub(super) fn length_unit(pattern: &Pattern) -> Option<LengthUnit> {
     match pattern.unit {
         Some(PatternUnit::Length(unit)) => Some(unit),
         _ => None,

@@ -8,21 +8,29 @@ pub const RULES: &[&Rule] = &[
     &END_CONTRADICTED,
     &END_UNCLAIMED,
     &END_UNKNOWN,
+    &FACE_BY_NEIGHBOURS,
+    &FACE_UNKNOWN,
+    &GROUP_MISFIT,
     &HEIGHT_MISSING,
     &LABEL_AMBIGUOUS,
+    &LABEL_SHARED,
     &LABEL_UNCLAIMED,
     &LABEL_UNREAD,
     &LAYER_HIDDEN,
+    &LEADER_ASTRAY,
     &LEVEL_LINE_DIFFERS,
     &LEVEL_LINE_UNREAD,
+    &LEVEL_OUTSIDE_ZONES,
     &MARK_TWICE,
     &OUTLINE_OPEN,
     &PIECES_BRIDGED,
     &PIECES_MEET,
     &PIECES_OVERLAP,
     &RUN_ASSUMED,
+    &STEP_ASSUMED,
     &STRAND_COUNT_MISSING,
     &TENDON_CLOSED,
+    &TENDON_MADE,
     &TENDON_STUB,
     &TENDONS_MISSING,
     &THICKNESS_DIFFERS,
@@ -54,6 +62,24 @@ pub(super) const END_UNKNOWN: Rule = Rule {
     meaning: "An end has neither a live nor a dead end symbol within reach, so nobody can say where the jack stands.",
 };
 
+/// A distance to the nearer face, read by its neighbours.
+pub(super) const FACE_BY_NEIGHBOURS: Rule = Rule {
+    name: "face-by-neighbours",
+    meaning: "A distance to the nearer face has no word: it was taken for the high or the low point that its neighbours leave.",
+};
+
+/// A distance to the nearer face that may be either.
+pub(super) const FACE_UNKNOWN: Rule = Rule {
+    name: "face-unknown",
+    meaning: "A distance to the nearer face has no word, and its neighbours do not tell which face is meant.",
+};
+
+/// A group of tendons that its extent line contradicts.
+pub(super) const GROUP_MISFIT: Rule = Rule {
+    name: "group-misfit",
+    meaning: "A group's extent line does not fit the number and spacing that its text gives, or lacks one of them: its undrawn tendons are not made.",
+};
+
 /// A height that the drawing ought to give and does not.
 pub(super) const HEIGHT_MISSING: Rule = Rule {
     name: "height-missing",
@@ -82,6 +108,12 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
     meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
+};
+
+/// A level that belongs to no zone.
+pub(super) const LEVEL_OUTSIDE_ZONES: Rule = Rule {
+    name: "level-outside-zones",
+    meaning: "A text outside every zone gives a level that is not the general slab's.",
 };
 
 /// A level line and a label that disagree.
@@ -156,10 +188,16 @@ pub(super) const TENDONS_MISSING: Rule = Rule {
     meaning: "No line lies on the layers that the job names for tendons.",
 };
 
+/// A step whose text gives only a top.
+pub(super) const STEP_ASSUMED: Rule = Rule {
+    name: "step-assumed",
+    meaning: "A zone's text gives its top and neither thickness nor soffit: what runs through the step is the job's slab.step_keeps.",
+};
+
 /// Two thicknesses for one piece of slab.
 pub(super) const THICKNESS_DIFFERS: Rule = Rule {
     name: "thickness-differs",
-    meaning: "The drawing and the job, or two texts, give one part of the slab two thicknesses.",
+    meaning: "The drawing and the job, or two texts, give one part of the slab two thicknesses or two levels.",
 };
 
 /// Slab thickness unknown.
@@ -171,5 +209,23 @@ pub(super) const THICKNESS_UNKNOWN: Rule = Rule {
 /// A zone without a thickness.
 pub(super) const ZONE_UNREAD: Rule = Rule {
     name: "zone-unread",
-    meaning: "A zone has no thickness text inside, so the slab's thickness there is unknown.",
+    meaning: "A zone has no thickness and no level inside, or none that can be, so the slab's thickness there is unknown.",
+};
+
+/// A label for several lines.
+pub(super) const LABEL_SHARED: Rule = Rule {
+    name: "label-shared",
+    meaning: "One mark points at several lines, which are numbered after it.",
+};
+
+/// A leader that points at nothing.
+pub(super) const LEADER_ASTRAY: Rule = Rule {
+    name: "leader-astray",
+    meaning: "A label's leader points at no tendon, or nobody can say at which: the label is given to none.",
+};
+
+/// Tendons that the drawing does not show.
+pub(super) const TENDON_MADE: Rule = Rule {
+    name: "tendon-made",
+    meaning: "Tendons of a group that the drawing shows by a typical one and an extent line were made as copies of that one.",
 };

@@ -1,30 +1,23 @@
-//! The slab on plan: outlines, openings, columns, zones and their thickness.
+//! The slab on plan: outlines, openings, columns, zones, and where its faces lie.
 
 use std::collections::BTreeSet;
 
-use geo::{Area, BoundingRect, Contains, Coord, Polygon};
-use rstar::primitives::{GeomWithData, Rectangle};
-use rstar::{AABB, RTree};
+use geo::{Coord, Polygon};
 
-use super::layers::{Ground, Roles, sound};
-use super::order::by_place;
-use super::pieces::{Joint, chains};
-use super::readings::thickness_m;
-use super::rules::{OUTLINE_OPEN, THICKNESS_DIFFERS, THICKNESS_UNKNOWN, ZONE_UNREAD};
-use super::types::{Slab, Zone};
-use crate::drawing::{Drawing, Shape, ShapeKind, Text};
-use crate::finding::{Finding, Level};
-use crate::geometry::{Path, Segment, distance_m};
+use super::areas::Areas;
+use super::layers::{Ground, Roles};
+use super::outlines::outlines;
+
+use super::rules::{LEVEL_OUTSIDE_ZONES, THICKNESS_UNKNOWN};
+use super::types::{Faces, Slab};
+use super::zone_texts::{short, zone_text};
+use super::zones::{self, SAME_M, Said, differing};
+use crate::drawing::{Drawing, Text};
+use crate::finding::{Finding, Level, Wording};
 use crate::job::Job;
 
-/// Outlines leave the drawn line by no more than this, metres.
-const CHORD_M: f64 = 0.001;
 /// A place this near to a zone's edge is in the zone, metres.
-const EDGE_M: f64 = 0.010;
-/// An outline no larger than this is a symbol's, not the slab's, metres.
-const SYMBOL_M: f64 = 0.4;
-/// Texts that differ by less say the same thickness, metres.
-const SAME_M: f64 = 0.0005;
+pub(super) const EDGE_M: f64 = 0.010;
 
 /// Reads the slab; zones without a thickness are returned apart.
 pub(super) fn slab(
@@ -42,10 +35,10 @@ pub(super) fn slab(
         thickness_m: job.slab.thickness_m,
         columns: rings(Ground::Column),
     };
-    let zones = rings(Ground::Zone);
-    let mut said: Vec<Vec<(f64, Coord<f64>)>> = vec![Vec::new(); zones.len()];
-    let mut general: Vec<(f64, Coord<f64>)> = Vec::new();
-    let areas = Areas::new(zones.iter());
+    let rings_of_zones = rings(Ground::Zone);
+    let mut said: Vec<Vec<Said>> = vec![Vec::new(); rings_of_zones.len()];
+    let mut general: Vec<Said> = Vec::new();
+    let areas = Areas::new(rings_of_zones.iter());
     let mut texts: Vec<&Text> = drawing.texts.iter().collect();
     texts.sort_by(|a, b| {
         let by_x = a.place.x.total_cmp(&b.place.x);
@@ -57,60 +50,42 @@ pub(super) fn slab(
         if ground != Ground::Zone && ground != Ground::Edge {
             continue;
         }
-        let Some(value_m) = thickness_m(&text.content, &job.conventions) else {
+        let Some(read) = zone_text(&text.content, &job.conventions) else {
             continue;
+        };
+        let read = Said {
+            text: read,
+            place: text.place,
         };
         let zone = areas.smallest(text.place, 0.0);
         match zone.or_else(|| areas.smallest(middle(text), 0.0)) {
-            Some(zone) => said[zone].push((value_m, text.place)),
-            None => general.push((value_m, text.place)),
+            Some(zone) => said[zone].push(read),
+            None => general.push(read),
         }
     }
-    let mut unread = Vec::new();
-    for (outline, said) in zones.into_iter().zip(said) {
-        let Some(&(thickness_m, _)) = said.first() else {
-            findings.push(zone_unread(&outline));
-            unread.push(outline);
-            continue;
-        };
-        // Two thicknesses leave none that could be relied on.
-        if differing(&said, thickness_m, "in one zone", &mut findings) == 0 {
-            slab.zones.push(Zone {
-                outline,
-                thickness_m,
-            });
-        } else {
-            unread.push(outline);
-        }
-    }
-    general_thickness(&mut slab, &general, &mut findings);
+    let mut of_slab = Vec::new();
+    general_thickness(&mut slab, &general, job, &mut of_slab);
+    let around = Faces::general(slab.thickness_m);
+    let (zones, unread) = zones::zones(rings_of_zones, &said, around, &job.slab, &mut findings);
+    slab.zones = zones;
+    findings.extend(of_slab);
     (slab, unread, findings)
 }
 
-fn zone_unread(outline: &Polygon<f64>) -> Finding {
-    let finding = Finding::new(
-        &ZONE_UNREAD,
-        Level::Error,
-        format!(
-            "a zone of {:.1} m² has no thickness inside; expected a text such as T350",
-            outline.unsigned_area()
-        ),
-        "write the thickness inside the zone, or move the line to another layer if it is none",
-    );
-    match outline.exterior().0.first() {
-        Some(&place) => finding.at_place(place),
-        None => finding,
-    }
-}
-
-fn general_thickness(slab: &mut Slab, said: &[(f64, Coord<f64>)], findings: &mut Vec<Finding>) {
-    match (slab.thickness_m, said.first()) {
+fn general_thickness(slab: &mut Slab, said: &[Said], job: &Job, findings: &mut Vec<Finding>) {
+    let thicknesses: Vec<(f64, Coord<f64>)> = said
+        .iter()
+        .filter_map(|said| Some((said.text.thickness_m?, said.place)))
+        .collect();
+    match (slab.thickness_m, thicknesses.first()) {
         (Some(job_m), _) => {
-            differing(said, job_m, "in the job file and on the drawing", findings);
+            let context = "in the job file and on the drawing";
+            differing("thicknesses", &thicknesses, job_m, context, findings);
         }
         (None, Some(&(first_m, _))) => {
-            // Here too.
-            if differing(said, first_m, "outside every zone", findings) == 0 {
+            // Two of them leave none that could be relied on.
+            let context = "outside every zone";
+            if differing("thicknesses", &thicknesses, first_m, context, findings) == 0 {
                 slab.thickness_m = Some(first_m);
             }
         }
@@ -121,34 +96,35 @@ fn general_thickness(slab: &mut Slab, said: &[(f64, Coord<f64>)], findings: &mut
             "give `thickness_mm` in the job file's [slab] table, or write it on the drawing",
         )),
     }
-}
-
-/// One finding for each text that says otherwise.
-fn differing(
-    said: &[(f64, Coord<f64>)],
-    used_m: f64,
-    context: &str,
-    findings: &mut Vec<Finding>,
-) -> usize {
-    let before = findings.len();
-    for &(value_m, place) in said {
-        if (value_m - used_m).abs() > SAME_M {
-            findings.push(
-                Finding::new(
-                    &THICKNESS_DIFFERS,
-                    Level::Error,
-                    format!(
-                        "two thicknesses {context}: {:.0} mm and {:.0} mm",
-                        used_m * 1000.0,
-                        value_m * 1000.0
-                    ),
-                    "correct the one that is wrong; draw a zone where the slab has another thickness",
-                )
-                .at_place(place),
-            );
+    for said in said {
+        let (top_m, text) = (job.slab.top_level_m, said.text);
+        let soffit_m = slab.thickness_m.map(|thickness_m| top_m - thickness_m);
+        let off = |said_m: Option<f64>, is_m: Option<f64>| {
+            said_m.filter(|said_m| is_m.is_none_or(|is_m| (said_m - is_m).abs() > SAME_M))
+        };
+        let down_m = text.down_m.map(|down_m| top_m - down_m);
+        let level_m = off(text.top_m, Some(top_m))
+            .or(off(text.soffit_m, soffit_m))
+            .or(down_m);
+        if let Some(level_m) = level_m {
+            findings.push(level_outside(level_m, said.place));
         }
     }
-    findings.len() - before
+}
+
+fn level_outside(level_m: f64, place: Coord<f64>) -> Finding {
+    Finding::new(
+        &LEVEL_OUTSIDE_ZONES,
+        Level::Warning,
+        Wording::of(|units| {
+            format!(
+                "a text outside every zone gives the level {}, which is not the general slab's: it was not used",
+                short(level_m, units)
+            )
+        }),
+        "write the level inside its zone and close the zone's line; if it is the general slab's top, set slab.top_level_m",
+    )
+    .at_place(place)
 }
 
 fn middle(text: &Text) -> Coord<f64> {
@@ -156,150 +132,6 @@ fn middle(text: &Text) -> Coord<f64> {
         x: text.corners.iter().map(|c| c.x).sum::<f64>() / 4.0,
         y: text.corners.iter().map(|c| c.y).sum::<f64>() / 4.0,
     }
-}
-
-/// Closed lines on layers of one purpose, in an order that their places decide.
-fn outlines(
-    drawing: &Drawing,
-    job: &Job,
-    roles: &Roles,
-    symbols: &BTreeSet<usize>,
-    ground: Ground,
-    findings: &mut Vec<Finding>,
-) -> Vec<Polygon<f64>> {
-    let gap_m = job.conventions.join_gap_m.max(0.010);
-    let shapes: Vec<&Shape> = drawing
-        .shapes
-        .iter()
-        .enumerate()
-        .filter(|(at, shape)| {
-            let of = roles.of(&shape.layer, shape.look).ground;
-            of == ground && sound(shape) && !symbols.contains(at)
-        })
-        .map(|(_, shape)| shape)
-        // A filled triangle or quadrangle is a column's body; elsewhere it is an arrow's head or a legend's sample.
-        .filter(|shape| shape.kind != ShapeKind::Solid || ground == Ground::Column)
-        .collect();
-    let whole = |shape: &&&Shape| shape.closed || super::pieces::returns(&shape.path, gap_m);
-    let mut rings: Vec<Polygon<f64>> = shapes
-        .iter()
-        .filter(whole)
-        .map(|shape| ring(&shape.path))
-        .collect();
-    let mut open: Vec<&Path> = shapes
-        .iter()
-        .filter(|shape| !whole(shape))
-        .map(|shape| &shape.path)
-        .collect();
-    open.sort_by(|a, b| by_place(a, b));
-    let joint = Joint {
-        gap_m,
-        turn_rad: std::f64::consts::PI,
-    };
-    let (chains, _) = chains(&open, joint, |_| false);
-    for chain in chains {
-        let path = chain.path(&open);
-        if chain.closed {
-            rings.push(ring(&path));
-        } else if ground != Ground::Column && path.length_m() > gap_m.max(SYMBOL_M) {
-            findings.push(open_outline(ground, &path));
-        }
-    }
-    // A hole may be as small as a pipe; an edge or a zone of the size of a symbol is one.
-    let least_m2 = match ground {
-        Ground::Edge | Ground::Zone => SYMBOL_M * SYMBOL_M,
-        _ => 1e-6,
-    };
-    rings.retain(|ring| ring.unsigned_area() > least_m2);
-    rings.sort_by(|a, b| {
-        let key = |ring: &Polygon<f64>| ring.bounding_rect().map(|r| (r.min(), r.max()));
-        let (a, b) = (key(a), key(b));
-        a.zip(b).map_or(std::cmp::Ordering::Equal, |(a, b)| {
-            let by_x = a.0.x.total_cmp(&b.0.x).then(a.0.y.total_cmp(&b.0.y));
-            by_x.then(a.1.x.total_cmp(&b.1.x))
-                .then(a.1.y.total_cmp(&b.1.y))
-        })
-    });
-    rings
-}
-
-fn open_outline(ground: Ground, path: &Path) -> Finding {
-    let what = match ground {
-        Ground::Opening => "an opening",
-        Ground::Zone => "a zone",
-        _ => "the slab edge",
-    };
-    let (start, end) = (
-        path.start().unwrap_or_default(),
-        path.end().unwrap_or_default(),
-    );
-    Finding::new(
-        &OUTLINE_OPEN,
-        Level::Warning,
-        format!(
-            "{what} does not close: {:.2} m of line, its ends {:.3} m apart; it was left out",
-            path.length_m(),
-            distance_m(start, end)
-        ),
-        "close the outline, or move the line to another layer if it is none",
-    )
-    .at_place(start)
-}
-
-fn ring(path: &Path) -> Polygon<f64> {
-    Polygon::new(path.to_line_string(CHORD_M), Vec::new())
-}
-
-type Boxed = GeomWithData<Rectangle<[f64; 2]>, usize>;
-
-/// Outlines by place.
-pub(super) struct Areas<'a> {
-    outlines: Vec<&'a Polygon<f64>>,
-    tree: RTree<Boxed>,
-}
-
-impl<'a> Areas<'a> {
-    /// Outlines, known by their place in the sequence.
-    pub(super) fn new(outlines: impl Iterator<Item = &'a Polygon<f64>>) -> Self {
-        let outlines: Vec<&Polygon<f64>> = outlines.collect();
-        let boxes = outlines.iter().enumerate().filter_map(|(at, outline)| {
-            let rect = outline.bounding_rect()?;
-            let (min, max) = (rect.min(), rect.max());
-            let rect = Rectangle::from_corners([min.x, min.y], [max.x, max.y]);
-            Some(GeomWithData::new(rect, at))
-        });
-        Self {
-            tree: RTree::bulk_load(boxes.collect()),
-            outlines,
-        }
-    }
-
-    /// The smallest outline that holds a place, or has it within `edge_m` of its edge.
-    pub(super) fn smallest(&self, place: Coord<f64>, edge_m: f64) -> Option<usize> {
-        let envelope = AABB::from_corners(
-            [place.x - edge_m, place.y - edge_m],
-            [place.x + edge_m, place.y + edge_m],
-        );
-        self.tree
-            .locate_in_envelope_intersecting(&envelope)
-            .map(|found| found.data)
-            .filter(|&at| holds(self.outlines[at], place, edge_m))
-            .min_by(|&a, &b| {
-                let area = |at: usize| self.outlines[at].unsigned_area();
-                area(a).total_cmp(&area(b)).then(a.cmp(&b))
-            })
-    }
-}
-
-fn holds(outline: &Polygon<f64>, place: Coord<f64>, edge_m: f64) -> bool {
-    outline.contains(&place)
-        || outline.exterior().lines().any(|line| {
-            let side = Segment::Line {
-                from: line.start,
-                to: line.end,
-            };
-            distance_m(side.place_at(side.nearest_along_m(place)), place) <= edge_m
-        })
 }
 
 /// Thickness anywhere on the plan.
@@ -321,9 +153,22 @@ impl<'a> Thickness<'a> {
 
     /// Thickness at a place, metres.
     pub(super) fn at(&self, place: Coord<f64>) -> Option<f64> {
+        self.faces_at(place).thickness_m
+    }
+
+    /// Where the concrete lies at a place.
+    pub(super) fn faces_at(&self, place: Coord<f64>) -> Faces {
         match self.areas.smallest(place, EDGE_M) {
-            Some(zone) => self.slab.zones.get(zone).map(|zone| zone.thickness_m),
-            None => self.slab.thickness_m,
+            Some(zone) => {
+                let zone = self.slab.zones.get(zone);
+                zone.map_or(Faces::general(None), super::types::Zone::faces)
+            }
+            None => self.general(),
         }
+    }
+
+    /// Where it lies outside every zone.
+    pub(super) fn general(&self) -> Faces {
+        Faces::general(self.slab.thickness_m)
     }
 }

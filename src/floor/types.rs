@@ -20,6 +20,8 @@ pub struct Tendon {
     pub mark: String,
     /// Whether the drawing gives the mark.
     pub mark_drawn: bool,
+    /// Whether the drawing shows the tendon only by a typical one of its group, of which this is a copy.
+    pub made: bool,
     /// Handle of the (first) piece.
     pub handle: String,
     /// Layer of the pieces.
@@ -87,14 +89,32 @@ pub struct Point {
     pub drawn_m: Option<f64>,
     /// Strand centroid above the local soffit, metres; `None` where the drawing does not say.
     pub height_m: Option<f64>,
+    /// What the height would be if the number were measured from the other soffit, the general slab's in place of the
+    /// local one or the reverse, metres; `None` where that is the same, or the height is not from a soffit.
+    pub other_soffit_m: Option<f64>,
     /// Slab thickness here, metres; `None` where the drawing does not say.
     pub thickness_m: Option<f64>,
+    /// Top of the slab here above the top of the general slab (negative below it), metres.
+    pub top_m: f64,
 }
 
 impl Point {
-    /// Strand centroid above the top of the slab (negative below it), metres.
+    /// Strand centroid above the top of the general slab (negative below it), metres.
     pub fn level_m(&self) -> Option<f64> {
-        Some(self.height_m? - self.thickness_m?)
+        self.level_of_m(self.height_m?)
+    }
+
+    /// Where the concrete lies here.
+    pub fn faces(&self) -> Faces {
+        Faces {
+            top_m: self.top_m,
+            thickness_m: self.thickness_m,
+        }
+    }
+
+    /// Level of a height above the local soffit, metres.
+    pub fn level_of_m(&self, height_m: f64) -> Option<f64> {
+        Some(height_m + self.faces().soffit_m()?)
     }
 }
 
@@ -119,7 +139,7 @@ pub struct Slab {
     pub outlines: Vec<Polygon<f64>>,
     /// Openings.
     pub openings: Vec<Polygon<f64>>,
-    /// Zones with a thickness of their own.
+    /// Zones with a thickness or a top of their own.
     pub zones: Vec<Zone>,
     /// Thickness outside every zone, metres, from the job or the drawing.
     pub thickness_m: Option<f64>,
@@ -134,4 +154,40 @@ pub struct Zone {
     pub outline: Polygon<f64>,
     /// Its thickness, metres.
     pub thickness_m: f64,
+    /// Its top above the top of the general slab (negative below it), metres.
+    pub top_m: f64,
+}
+
+/// Where the concrete lies at a place.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Faces {
+    /// Top above the top of the general slab, metres.
+    pub top_m: f64,
+    /// Thickness, metres; `None` where it is not known.
+    pub thickness_m: Option<f64>,
+}
+
+impl Faces {
+    /// Faces of the general slab.
+    pub fn general(thickness_m: Option<f64>) -> Self {
+        Self {
+            top_m: 0.0,
+            thickness_m,
+        }
+    }
+
+    /// Soffit above the top of the general slab, metres.
+    pub fn soffit_m(&self) -> Option<f64> {
+        Some(self.top_m - self.thickness_m?)
+    }
+}
+
+impl Zone {
+    /// Where its concrete lies.
+    pub fn faces(&self) -> Faces {
+        Faces {
+            top_m: self.top_m,
+            thickness_m: Some(self.thickness_m),
+        }
+    }
 }

@@ -1,24 +1,32 @@
 //! The job that an empty job file gives. Why each value: the key's sentence and source in the table of keys.
 
-use super::families::{height_patterns, mark_patterns, thickness_patterns};
+use super::families::{group_patterns, height_patterns, mark_patterns, thickness_patterns};
 use super::{
     Conventions, Datum, FromFace, HeightReading, Job, Layers, Limits, LongTerm, LongTermMethod,
-    Profiling, SlabJob, StrandSize, Stressing, System, Wobble,
+    Profiling, Published, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, System, TendonJob,
+    Wobble,
 };
-use crate::units::LengthUnit;
+use crate::units::{LengthUnit, Units};
 
 impl Default for Job {
     /// Every key at its default.
     fn default() -> Self {
         Self {
+            units: Units::Si,
+            system: System::BondedFlatDuct,
             conventions: conventions(),
-            slab: SlabJob { thickness_m: None },
-            system: system(),
+            slab: SlabJob {
+                thickness_m: None,
+                top_level_m: 0.0,
+                step_keeps: StepKeeps::Thickness,
+            },
+            tendon: tendon(),
             stressing: Stressing {
                 jacking_ratio: 0.75,
                 mu_per_rad: 0.19,
                 wobble: Wobble::RadPerM(0.008),
                 draw_in_m: 0.006,
+                order: Vec::new(),
             },
             profile: Profiling {
                 inflection: 0.1,
@@ -26,6 +34,7 @@ impl Default for Job {
             },
             long_term: LongTerm {
                 method: LongTermMethod::Direct,
+                methods: Vec::new(),
                 concrete_modulus_transfer_mpa: 28_000.0,
                 concrete_modulus_mpa: 33_000.0,
                 shortening_share: 0.5,
@@ -34,6 +43,7 @@ impl Default for Job {
                 creep_coefficient: 2.0,
                 relaxation_1000h: 0.025,
                 relaxation_factor: 3.0,
+                published: Published::default(),
             },
             limits: Limits {
                 cover_m: 0.020,
@@ -69,6 +79,7 @@ fn conventions() -> Conventions {
             heights: words(&["TENDON-HEIGHT*"]),
             level_lines: words(&["TENDON-LEVEL-LINE*"]),
             marks: words(&["TENDON-MARK*"]),
+            extents: words(&["TENDON-EXTENT*"]),
             ends: words(&["TENDON-END*"]),
             slab_edge: words(&["SLAB-EDGE*"]),
             slab_opening: words(&["SLAB-OPENING*"]),
@@ -94,9 +105,13 @@ fn conventions() -> Conventions {
             unit: LengthUnit::Mm,
             datum: Datum::Centroid,
             from: FromFace::Soffit,
+            soffit: Soffit::Local,
             strand_in_duct_low_m: 0.013,
             strand_in_duct_high_m: 0.007,
         },
+        arrow_reach_m: 0.1,
+        tick_blocks: words(&["TICK*", "DOT*"]),
+        group_patterns: group_patterns(),
         label_reach: 3.0,
         end_reach_m: 0.5,
         join_gap_m: 0.010,
@@ -105,14 +120,14 @@ fn conventions() -> Conventions {
     }
 }
 
-fn system() -> System {
+fn tendon() -> TendonJob {
     let size = |name: &str, aliases: &[&str], area_mm2| StrandSize {
         name: name.to_owned(),
         aliases: words(aliases),
         area_mm2,
         strength_mpa: 1860.0,
     };
-    System {
+    TendonJob {
         strands: vec![
             size("12.7", &["0.5"], 98.7),
             size("12.9", &[], 100.0),

@@ -99,18 +99,19 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
         by_unit(&[
             (
                 "height",
-                r"(?i)^(?:(?<word>[A-Z][A-Z.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
+                r"(?i)^(?:(?<word>\p{L}[\p{L}.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
             ),
             (
                 "height, word last",
-                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>[A-Z][A-Z.\s]*?)\)?$",
+                r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>\p{L}[\p{L}.\s]*?)\)?$",
             ),
         ])
     });
     in_unit(&BY_UNIT, unit)
 }
 
-/// Slab thickness in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`.
+/// Thickness and levels of slab and zones in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`; `TOS -50`,
+/// `SSL +0.05`, `+0.05`; `SOFFIT -400`; `50 SET DOWN`. A level may stand behind a thickness.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
     static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
         by_unit(&[
@@ -123,6 +124,24 @@ pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
                 "thickness, word last",
                 r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?$",
             ),
+            (
+                "top level",
+                r"(?i)^BEHIND(?:T\.?O\.?[SC]\.?|SSL|TOP)\s*[=:]?\s*(?<top>LEVEL)$",
+            ),
+            (
+                "soffit level",
+                r"(?i)^BEHIND(?:SOFFIT|SOF|U/S|USL|B\.?O\.?S\.?)\s*[=:]?\s*(?<soffit>LEVEL)$",
+            ),
+            (
+                "set down, word first",
+                r"(?i)^BEHIND(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)\s*[=:]?\s*(?<down>NUMBER)$",
+            ),
+            (
+                "set down, word last",
+                r"(?i)^BEHIND(?<down>NUMBER)\s*(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)$",
+            ),
+            // Without a word a level has its sign.
+            ("signed level", r"(?i)^BEHIND(?<top>[-+−–±]LEVEL)$"),
         ])
     });
     in_unit(&BY_UNIT, unit)
@@ -135,7 +154,17 @@ fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
     use LengthUnit::{Cm, Ft, In, M, Mm};
     [Mm, Cm, M, In, Ft].map(|unit| {
         let with_number = |(name, expression): &(&str, &str)| {
-            pattern(name, &expression.replace("NUMBER", number(unit)))
+            let expression = expression
+                .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
+                .replace(
+                    "LEVEL",
+                    &format!(
+                        r"[-+−–±]?\s*(?:\d+[.,]\d+\s*m|\d+[.,]\d{{3}}|{})",
+                        number(unit)
+                    ),
+                )
+                .replace("NUMBER", number(unit));
+            pattern(name, &expression)
         };
         (unit, expressions.iter().filter_map(with_number).collect())
     })
@@ -234,7 +263,9 @@ fn offers() -> Vec<Offer> {
 fn number(unit: LengthUnit) -> &'static str {
     match unit {
         // A comma before three digits may also part thousands.
-        LengthUnit::Mm | LengthUnit::Cm => r"[-−]?\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?",
+        LengthUnit::Mm | LengthUnit::Cm => {
+            r"[-−]?(?:\d*[.,]\d+\s*m|\d+(?:\.\d+|,\d{1,2})?(?:\s*[cm]m)?)"
+        }
         LengthUnit::M => r"[-−+]?(?:\d+(?:[.,]\d+)?|[.,]\d+)(?:\s*[cm]?m)?",
         LengthUnit::In | LengthUnit::Ft => {
             r#"[-−]?(?:\d+'[\s-]*)?(?:\d+(?:\.\d+)?(?:(?:\s*-\s*|\s+)\d+[/⁄]\d+)?|\.\d+|\d+[/⁄]\d+|\d*[\s-]?[¼½¾⅛⅜⅝⅞])\s*(?:"|″|”|''|'|in\.?)?"#
@@ -243,6 +274,27 @@ fn number(unit: LengthUnit) -> &'static str {
 }
 
 /// A named pattern; that all of them compile the tests count.
+/// Groups of like tendons; what each pattern leaves open another may give.
+pub(super) fn group_patterns() -> Vec<Pattern> {
+    [
+        (
+            "first and last mark",
+            r"(?i)^(?<first>[A-Z]{1,3}-?\d+)\s*(?:-|–|to|\.\.+|…)\s*(?<last>[A-Z]{1,3}-?\d+)\b",
+        ),
+        (
+            "number at a spacing",
+            r"(?i)(?:^|[\s,;(])(?<number>\d+)\s*(?:no|nos|x)?\.?\s*@\s*\d",
+        ),
+        (
+            "spacing",
+            r#"(?i)@\s*(?<spacing>(?:\d+'[ -]?)?\d+(?:[.,]\d+)?(?:[ -]\d+/\d+)?(?:\s?(?:mm|cm|m|in)\b|["'])?)(?:\s*(?:c/c|crs|ctrs?|centres|o\.?c\b\.?))?"#,
+        ),
+    ]
+    .into_iter()
+    .filter_map(|(name, expression)| pattern(name, expression))
+    .collect()
+}
+
 fn pattern(name: &str, expression: &str) -> Option<Pattern> {
     let expression = Regex::new(expression).ok()?;
     Some(Pattern {

@@ -2,13 +2,14 @@
 
 use serde_json::{Value, json};
 
+use super::keys::ROOT;
 use super::{Job, Pattern, StrandSize};
 
 /// A key of the job file. Reading, range checks, help, the proposed file, the result's `inputs` and the list of
 /// assumptions all come from this one description.
 #[derive(Debug)]
 pub struct Key {
-    /// Table, such as `stressing`.
+    /// Table, such as `stressing`; [`ROOT`] for a key before every table.
     pub table: &'static str,
     /// Name within its table, with its unit, such as `draw_in_mm`.
     pub name: &'static str,
@@ -95,16 +96,29 @@ pub struct Place<T> {
 }
 
 impl Key {
-    /// `table.name`.
+    /// `table.name`; the bare name for a key before every table.
     pub fn path(&self) -> String {
-        format!("{}.{}", self.table, self.name)
+        match self.table {
+            ROOT => self.name.to_owned(),
+            table => format!("{table}.{}", self.name),
+        }
+    }
+
+    /// Where in a file the key belongs, in words.
+    pub fn place(&self) -> String {
+        match self.table {
+            ROOT => "before the first [table]".to_owned(),
+            table => format!("below the line `[{table}]`"),
+        }
     }
 
     /// Name in the result's `inputs`: the bare name for what enters the arithmetic, with the table first for how the
     /// drawing is read (`height_unit`, `layers_banded`).
     pub fn input_name(&self) -> String {
         match self.table {
-            "system" | "stressing" | "profile" | "long_term" | "limits" => self.name.to_owned(),
+            ROOT | "tendon" | "stressing" | "profile" | "long_term" | "limits" => {
+                self.name.to_owned()
+            }
             table => format!("{table}_{}", self.name),
         }
     }
@@ -150,7 +164,7 @@ impl Key {
                     .join(" or ")
             ),
             Kind::StrandName { .. } => "the name of a strand, such as \"12.7\"".to_owned(),
-            Kind::Strands(_) => "tables [[system.strand]]".to_owned(),
+            Kind::Strands(_) => "tables [[tendon.strand]]".to_owned(),
         }
     }
 
@@ -161,9 +175,14 @@ impl Key {
 
     /// A line that may be typed: the default, or an example where there is none.
     pub fn example(&self) -> String {
-        let text = match (&self.kind, self.value(&Job::default())) {
+        self.line(&Job::default())
+    }
+
+    /// A line that may be typed: the value in this job, or an example where it has none.
+    pub(super) fn line(&self, job: &Job) -> String {
+        let text = match (&self.kind, self.value(job)) {
             (Kind::Strands(_), _) => {
-                return "[[system.strand]] name = \"12.7\", area_mm2 = 98.7, strength_mpa = 1860"
+                return "[[tendon.strand]] name = \"12.7\", area_mm2 = 98.7, strength_mpa = 1860"
                     .to_owned();
             }
             // The first says how such a list looks; all of them would hide it.

@@ -1,8 +1,11 @@
 //! The keys of the job file, in the order a file shows them.
 
 use super::key::{Key, Kind, Place};
-use super::{Datum, END_SHAPES, FromFace, Job, LongTermMethod, Wobble};
-use crate::units::LengthUnit;
+use super::{
+    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Soffit,
+    StepKeeps, System, Wobble,
+};
+use crate::units::{LengthUnit, Units};
 
 /// A number that the job always has; `scale` is key units in one internal unit.
 macro_rules! number {
@@ -51,6 +54,17 @@ macro_rules! unit {
     };
 }
 
+/// A word of a list of kinds.
+macro_rules! word {
+    ($kind:ident, $($place:ident).+) => {
+        Kind::Choice {
+            words: $kind::WORDS,
+            get: |job| Some(job.$($place).+.word()),
+            set: |job, word| if let Some(kind) = $kind::of(word) { job.$($place).+ = kind },
+        }
+    };
+}
+
 const MM: f64 = 1000.0;
 const ONE: f64 = 1.0;
 const DEG: f64 = 180.0 / std::f64::consts::PI;
@@ -85,16 +99,20 @@ const fn key(
     }
 }
 
+/// The name of the place for keys that stand before every table.
+pub const ROOT: &str = "";
+
 /// Tables, in order, each with a sentence.
 #[rustfmt::skip]
 pub const TABLES: &[(&str, &str)] = &[
+    (ROOT, "What holds for the whole job; these keys stand before every [table]."),
     ("drawing", "How the drawing is measured and its lines are joined."),
     ("layers", "What lies on which layer: shell patterns, any letter case, also behind the prefix of a reference (REF$0$NAME, REF|NAME). NAME@colour=1 and NAME@linetype=DASHED* pick by what is seen."),
     ("ends", "How the drawing marks the ends of a tendon."),
     ("labels", "How marks and strand counts are written."),
     ("height", "How heights are written and what they measure."),
     ("slab", "The slab's thickness and how the drawing writes it."),
-    ("system", "Strand and duct."),
+    ("tendon", "Strand and duct."),
     ("stressing", "Jacking, friction, draw-in."),
     ("profile", "The curve between the marked heights."),
     ("long_term", "Elastic shortening, shrinkage, creep, relaxation."),
@@ -104,6 +122,21 @@ pub const TABLES: &[(&str, &str)] = &[
 /// Every key.
 #[rustfmt::skip]
 pub static KEYS: &[Key] = &[
+    key(ROOT, "units", Kind::Choice {
+            words: &["si", "us"],
+            get: |job| Some(job.units.name()),
+            set: |job, word| if let Some(units) = Units::named(word) { job.units = units },
+        },
+        "Units of what is written; the result file is in SI always, and the keys of this file are in the units of their names.",
+        CONVENTION),
+    key(ROOT, "system", Kind::Choice {
+            words: &["bonded-flat-duct", "greased-single-strand"],
+            get: |job| Some(job.system.name()),
+            set: |job, word| if let Some(system) = System::named(word) { system.set(job) },
+        },
+        "The system of tendon, whose usual friction, draw-in, duct, cover and radius in plan are the defaults of their keys.",
+        CONVENTION),
+
     key("drawing", "unit", Kind::Choice {
             words: UNITS,
             get: |job| job.conventions.unit.map(LengthUnit::name),
@@ -133,6 +166,8 @@ pub static KEYS: &[Key] = &[
         "Lines that give one height to every tendon they cross, and their labels.", CONVENTION),
     key("layers", "marks", Kind::Shell(place!(conventions.layers.marks)),
         "Marks and strand counts.", CONVENTION),
+    key("layers", "extents", Kind::Shell(place!(conventions.layers.extents)),
+        "Lines across a group of like tendons of which only some are drawn: they say how far it extends.", CONVENTION),
     key("layers", "ends", Kind::Shell(place!(conventions.layers.ends)),
         "Symbols at the ends of tendons: blocks, words, shapes.", CONVENTION),
     key("layers", "slab_edge", Kind::Shell(place!(conventions.layers.slab_edge)),
@@ -183,6 +218,18 @@ pub static KEYS: &[Key] = &[
         "Marks, strands and required forces, the first that fits a line: groups mark, tendons, strands, strand, force, force_per_width. \
          A table may say unit (kN, kip, kN/m, kip/ft), strands (in each tendon of a count), strand.", CONVENTION),
 
+    key("labels", "arrow_reach_mm", number!(1.0..=2000.0, conventions.arrow_reach_m, MM),
+        "How far the tip of a leader may lie from the tendon it points at.", CONVENTION),
+    key("labels", "tick_blocks", Kind::Shell(place!(conventions.tick_blocks)),
+        "Blocks on the layers of heights that mark the place of a height on its tendon (shell patterns, any letter case).", CONVENTION),
+    key("labels", "group_patterns", Kind::Expressions {
+            groups: &["first", "last", "number", "spacing"],
+            also: &[],
+            says: &["unit"],
+            place: place!(conventions.group_patterns),
+        },
+        "Groups of like tendons, beside a line of layers.extents: groups first, last, number, spacing, gathered from all patterns that fit.", CONVENTION),
+
     key("height", "unit", unit!(conventions.height.unit),
         "Unit of the numbers; in and ft may be written with fractions.", CONVENTION),
     key("height", "datum", Kind::Choice {
@@ -196,7 +243,19 @@ pub static KEYS: &[Key] = &[
             get: |job| Some(job.conventions.height.from.word()),
             set: |job, word| job.conventions.height.from = FromFace::of(word),
         },
-        "What a height is measured from: the local soffit upwards, the top downwards, or the nearer of the two.", CONVENTION),
+        "What a height is measured from: the soffit upwards, the local top downwards, or the nearer of the two (a high point from the top, a low point from the soffit).", CONVENTION),
+    key("height", "soffit", Kind::Choice {
+            words: &["local", "general"],
+            get: |job| Some(match job.conventions.height.soffit {
+                Soffit::Local => "local",
+                Soffit::General => "general",
+            }),
+            set: |job, word| job.conventions.height.soffit = match word {
+                "general" => Soffit::General,
+                _ => Soffit::Local,
+            },
+        },
+        "Which soffit heights are measured from in drops, beams and steps: the one there, or the general slab's (below which heights are negative).", CONVENTION),
     key("height", "patterns", Kind::Expressions {
             groups: &["value"],
             also: &["word"],
@@ -221,30 +280,45 @@ pub static KEYS: &[Key] = &[
     key("slab", "thickness_mm", maybe!(50.0..=5000.0, 250.0, slab.thickness_m, MM),
         "Thickness outside every zone.",
         "the drawing's own text"),
+    key("slab", "top_level_m", number!(-1000.0..=10_000.0, slab.top_level_m, ONE),
+        "Level of the general slab's top as the drawing counts levels: zones' levels are taken relative to it.", CONVENTION),
+    key("slab", "step_keeps", Kind::Choice {
+            words: &["thickness", "soffit"],
+            get: |job| Some(match job.slab.step_keeps {
+                StepKeeps::Thickness => "thickness",
+                StepKeeps::Soffit => "soffit",
+            }),
+            set: |job, word| job.slab.step_keeps = match word {
+                "soffit" => StepKeeps::Soffit,
+                _ => StepKeeps::Thickness,
+            },
+        },
+        "What a zone whose text gives only a top has in common with the slab around it.",
+        "common practice: a thickness holds unless noted otherwise"),
     key("slab", "text_unit", unit!(conventions.thickness_unit),
-        "Unit of thickness texts.", CONVENTION),
+        "Unit of thickness and level texts; a level with two decimals or more on a drawing in mm is in metres.", CONVENTION),
     key("slab", "text_patterns", Kind::Expressions {
-            groups: &["value"],
+            groups: &["value", "top", "soffit", "down"],
             also: &[],
             says: &["unit"],
             place: place!(conventions.thickness_patterns),
         },
         "Thickness texts: group value.", CONVENTION),
 
-    key("system", "strand", Kind::Strands(place!(system.strands)),
+    key("tendon", "strand", Kind::Strands(place!(tendon.strands)),
         "Known sizes of strand; a size given here is added to these, or replaces the one of its name.",
         "ASTM A416 grade 270 (12.7, 15.2) and EN 10138-3 (12.9, 15.7), from memory"),
-    key("system", "default_strand", Kind::StrandName {
-            get: |job| job.system.default_strand.as_deref(),
-            set: |job, name| job.system.default_strand = Some(name.to_owned()),
+    key("tendon", "default_strand", Kind::StrandName {
+            get: |job| job.tendon.default_strand.as_deref(),
+            set: |job, name| job.tendon.default_strand = Some(name.to_owned()),
         },
         "Size of strand where a mark gives only a count.",
         "such a tendon gets a finding and no forces"),
-    key("system", "strand_modulus_mpa", number!(100_000.0..=250_000.0, system.strand_modulus_mpa, ONE),
+    key("tendon", "strand_modulus_mpa", number!(100_000.0..=250_000.0, tendon.strand_modulus_mpa, ONE),
         "Modulus of the strand.", "common practice, 195 GPa give or take 10"),
-    key("system", "yield_ratio", number!(0.5..=1.0, system.yield_ratio, ONE),
+    key("tendon", "yield_ratio", number!(0.5..=1.0, tendon.yield_ratio, ONE),
         "Yield stress of the strand over its strength.", "ASTM A416 low-relaxation strand, from memory"),
-    key("system", "duct_height_mm", number!(5.0..=300.0, system.duct_height_m, MM),
+    key("tendon", "duct_height_mm", number!(5.0..=300.0, tendon.duct_height_m, MM),
         "Overall height of a duct.", "common practice for flat ducts"),
 
     key("stressing", "jacking_ratio", number!(0.1..=1.0, stressing.jacking_ratio, ONE),
@@ -271,6 +345,10 @@ pub static KEYS: &[Key] = &[
         "wobble_rad_per_m"),
     key("stressing", "draw_in_mm", number!(0.0..=50.0, stressing.draw_in_m, MM),
         "Wedge draw-in at each live end.", "common practice, 5 to 8 mm"),
+    key("stressing", "order", Kind::Shell(place!(stressing.order)),
+        "Order of stressing: marks or shell patterns, the first stressed first; a tendon that no entry names is stressed after \
+         all that are named. Elastic shortening then goes tendon by tendon.",
+        "each method's own share for tendons stressed in turn"),
 
     key("profile", "inflection", number!(0.01..=0.5, profile.inflection, ONE),
         "Hogging length at a high point as a fraction of the span.", "common practice"),
@@ -280,33 +358,82 @@ pub static KEYS: &[Key] = &[
         },
         "Fit the hogging length to the support heights by least squares.", CONVENTION),
 
-    key("long_term", "method", Kind::Choice {
-            words: &["direct"],
-            get: |job| Some(match job.long_term.method { LongTermMethod::Direct => "direct" }),
-            set: |job, _| job.long_term.method = LongTermMethod::Direct,
+    key("long_term", "method", word!(LongTermMethod, long_term.method),
+        "The method whose forces are drawn and checked; direct: from the strain and coefficients given here; the others by \
+         their own clauses.",
+        "the first of long_term.methods, else direct, the method that hides nothing"),
+    key("long_term", "methods", Kind::Choices {
+            words: LongTermMethod::WORDS,
+            place: place!(long_term.methods),
         },
-        "How long-term loss is worked out; direct: from the strain and coefficients given here.",
-        "the method that hides nothing"),
+        "Methods to show side by side, with the spread between them.",
+        "none beside long_term.method"),
     key("long_term", "concrete_modulus_transfer_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_transfer_mpa, ONE),
-        "Modulus of the concrete at stressing.",
+        "Modulus of the concrete at stressing; direct only, the other methods work it out.",
         "EN 1992-1-1 3.1.3(3) for C30/37 at some 60 % of its strength, from memory"),
     key("long_term", "concrete_modulus_mpa", number!(5000.0..=80_000.0, long_term.concrete_modulus_mpa, ONE),
-        "Modulus of the concrete at 28 days.", "EN 1992-1-1 table 3.1 for C30/37, from memory"),
+        "Modulus of the concrete at 28 days; direct only, the other methods work it out.", "EN 1992-1-1 table 3.1 for C30/37, from memory"),
     key("long_term", "shortening_share", number!(0.0..=1.0, long_term.shortening_share, ONE),
-        "Share of (Ep/Eci) times the concrete stress that is lost by elastic shortening.",
+        "Share of (Ep/Eci) times the concrete stress that is lost by elastic shortening; direct only.",
         "common practice: 0.5 for tendons stressed in turn, 0 where all are stressed at once"),
     key("long_term", "concrete_stress_mpa", maybe!(0.0..=30.0, 1.5, long_term.concrete_stress_mpa, ONE),
         "Mean compression in the concrete along the tendons.",
         "worked out from the floor's own tendons and slab"),
     key("long_term", "shrinkage_strain", number!(0.0..=0.002, long_term.shrinkage_strain, ONE),
-        "Shrinkage of the concrete after stressing.", "common practice for a floor indoors, from memory"),
+        "Shrinkage of the concrete after stressing; direct only.", "common practice for a floor indoors, from memory"),
     key("long_term", "creep_coefficient", number!(0.0..=10.0, long_term.creep_coefficient, ONE),
-        "Final creep coefficient.", "common practice for a floor indoors, from memory"),
+        "Final creep coefficient; direct only.", "common practice for a floor indoors, from memory"),
     key("long_term", "relaxation_1000h", number!(0.0..=0.2, long_term.relaxation_1000h, ONE),
-        "Relaxation at 1000 hours, as a fraction of the stress after lock-off.",
+        "Relaxation at 1000 hours, as a fraction of the stress after lock-off; direct only.",
         "EN 1992-1-1 3.3.2(6), class 2: 2.5 %"),
     key("long_term", "relaxation_factor", number!(0.0..=10.0, long_term.relaxation_factor, ONE),
-        "Final relaxation over the 1000-hour value.", "common practice, from memory"),
+        "Final relaxation over the 1000-hour value; direct only.", "common practice, from memory"),
+    key("long_term", "strength_mpa", number!(1.0..=200.0, long_term.published.strength_mpa, ONE),
+        "Cylinder strength of the concrete at 28 days (f_ck, f'c; a cube's strength is taken as this over 0.8).",
+        "C30/37, common practice for floors"),
+    key("long_term", "strength_at_stressing_mpa", number!(1.0..=200.0, long_term.published.strength_at_stressing_mpa, ONE),
+        "Cylinder strength proven before stressing.", "common practice, 20 to 25 MPa"),
+    key("long_term", "cement_class", word!(Cement, long_term.published.cement),
+        "Class of cement, slow, normal or rapid; en1992.", "EN 1992-1-1 3.1.2(6), the class between the other two"),
+    key("long_term", "humidity_percent", number!(0.0..=100.0, long_term.published.humidity, ONE),
+        "Mean relative humidity of the air around the floor; en1992 and aci423.", "EN 1992-1-1 figure 3.1: 50 % indoors, from memory"),
+    key("long_term", "environment", word!(Environment, long_term.published.environment),
+        "Where the floor stands; as3600, and for bs8110 whether that is indoors.", "a floor of a building is indoors"),
+    key("long_term", "curing_days", number!(0.0..=1000.0, long_term.published.curing_days, ONE),
+        "Age of the concrete at the end of moist curing.", "common practice"),
+    key("long_term", "stressing_days", number!(0.1..=1000.0, long_term.published.stressing_days, ONE),
+        "Age of the concrete at stressing.", "common practice, 3 to 5 days"),
+    key("long_term", "final_days", number!(100.0..=100_000.0, long_term.published.final_days, ONE),
+        "Age of the concrete that counts as final; en1992 and as3600.", "50 years, the design working life of EN 1990 table 2.1"),
+    key("long_term", "asked_days", maybe!(0.1..=100_000.0, 90.0, long_term.published.asked_days, ONE),
+        "Age of the concrete at which the service force is asked for; only en1992 and as3600 know one before the final.",
+        "final_days"),
+    key("long_term", "notional_thickness_mm", maybe!(10.0..=5000.0, 250.0, long_term.published.notional_thickness_m, MM),
+        "2 A/u of the drying slab: h_0, t_h, twice V/S; its thickness where both faces dry, twice that where one does.",
+        "the slab's own thickness along the tendon"),
+    key("long_term", "relaxation_class", word!(RelaxationClass, long_term.published.relaxation_class),
+        "Relaxation of the strand: ordinary (class 1, stress-relieved), low (class 2), bar (class 3).", "common practice"),
+    key("long_term", "bonded", Kind::Switch {
+            get: |job| job.long_term.published.bonded,
+            set: |job, on| job.long_term.published.bonded = on,
+        },
+        "Whether the ducts are grouted: a bonded tendon loses by the stress at each place, an unbonded one by the mean.",
+        "common practice for flat ducts"),
+    key("long_term", "bonded_steel_ratio", number!(0.0..=0.1, long_term.published.bonded_steel_ratio, ONE),
+        "Bonded steel over concrete area, A_s/A_g, which restrains shrinkage; as3600.", "none, which loses most"),
+    key("long_term", "balanced_share", number!(0.2..=2.0, long_term.published.balanced_share, ONE),
+        "Share of the permanent load that the tendons' own curvature balances; bonded tendons of the published methods.",
+        "judgement of this program: all of it, so that in the end bending adds nothing to the mean stress"),
+    key("long_term", "load_share_at_stressing", number!(0.0..=1.0, long_term.published.load_share_at_stressing, ONE),
+        "Share of the permanent load that acts at stressing already, the slab's own weight.", "judgement of this program"),
+    key("long_term", "drying_basic", number!(0.0..=0.002, long_term.published.drying_basic, ONE),
+        "Basic drying shrinkage strain; as3600.", "AS 3600 3.1.7.2: 800e-6; 900e-6 and 1000e-6 elsewhere, from memory"),
+    key("long_term", "basic_relaxation", maybe!(0.0..=0.2, 0.02, long_term.published.basic_relaxation, ONE),
+        "Basic relaxation R_b of the strand at 1000 hours, as a fraction; as3600, which asks for it.",
+        "as3600 gives no loss: the standard's figure was not at hand"),
+    key("long_term", "relaxation_stress_factor", maybe!(0.0..=5.0, 1.0, long_term.published.relaxation_stress_factor, ONE),
+        "Factor on the basic relaxation for the stress in the strand, and for warmth above 20 degrees; as3600, which asks for it.",
+        "as3600 gives no loss: the standard's figure was not at hand"),
 
     key("limits", "cover_mm", number!(0.0..=300.0, limits.cover_m, MM),
         "Least clear concrete between a duct and either face.", "common practice; the project's durability rules decide"),

@@ -6,7 +6,8 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeString, DeTable, DeValue};
 
-use super::keys::{KEYS, TABLES, find, of_table};
+use super::key::Key;
+use super::keys::{KEYS, ROOT, TABLES, find, of_table};
 use super::problems::{Problem, Problems};
 use super::{Job, Resolved};
 
@@ -29,8 +30,11 @@ pub fn read(file_name: &str, text: &str) -> Result<Resolved, Problems> {
         );
     }
     let syntax = reader.problems.len();
+    // A system's defaults come first, so that the keys of the tables override them.
+    reader.root(root.get_ref());
     reader.tables(root.get_ref());
     reader.contradictions();
+    reader.methods();
     // After a broken line what follows it on that line is guesswork: the mistake itself is enough.
     let (broken, mut found) = {
         let found = reader.problems.split_off(syntax);
@@ -81,9 +85,36 @@ impl Reader {
         });
     }
 
+    /// The keys before every table: the system, then the others, since a system sets a whole job.
+    fn root(&mut self, root: &DeTable<'_>) {
+        let mut keys: Vec<&Key> = of_table(ROOT).collect();
+        keys.sort_by_key(|key| key.name != "system");
+        for key in keys {
+            let Some((name, value)) = root.get_key_value(key.name) else {
+                continue;
+            };
+            if key.name == "system" && matches!(value.get_ref(), DeValue::Table(_)) {
+                self.mistake(
+                    name.span(),
+                    "strand and duct stand in the table `[tendon]`; `system` is a key, the name of a system",
+                    format!("expected {}", key.expected()),
+                    "write `[tendon]` for `[system]`, and `[[tendon.strand]]` for `[[system.strand]]`",
+                );
+                continue;
+            }
+            self.given.insert(key.path(), name.span());
+            self.value(key, value);
+        }
+    }
+
     fn tables(&mut self, root: &DeTable<'_>) {
         for (name, value) in root {
-            let known = TABLES.iter().any(|(table, _)| *table == name.get_ref());
+            if find(ROOT, name.get_ref()).is_some() {
+                continue;
+            }
+            let known = TABLES
+                .iter()
+                .any(|(table, _)| *table != ROOT && *table == name.get_ref());
             match value.get_ref() {
                 DeValue::Table(entries) if known => self.keys(name.get_ref(), entries),
                 _ if known => self.mistake(
@@ -102,11 +133,17 @@ impl Reader {
 
     fn unknown_table(&mut self, name: &Spanned<DeString<'_>>) {
         let word = plain(name.get_ref());
-        let tables: Vec<&str> = TABLES.iter().map(|(table, _)| *table).collect();
+        let tables: Vec<&str> = TABLES
+            .iter()
+            .map(|(table, _)| *table)
+            .filter(|table| *table != ROOT)
+            .collect();
+        let root: Vec<&str> = of_table(ROOT).map(|key| key.name).collect();
         let remedy = if let Some(key) = KEYS.iter().find(|key| key.name == word) {
-            format!("`{word}` belongs below the line `[{}]`", key.table)
+            format!("`{word}` belongs {}", key.place())
         } else {
-            match nearest(&word, tables.iter().copied()) {
+            match nearest(&word, tables.iter().chain(&root).copied()) {
+                Some(near) if root.contains(&near) => format!("did you mean `{near}`?"),
                 Some(near) => format!("did you mean `[{near}]`?"),
                 None => "take the line out, or use one of these tables".to_owned(),
             }
@@ -114,7 +151,11 @@ impl Reader {
         self.mistake(
             name.span(),
             format!("unknown table `{word}`"),
-            format!("the tables are {}", tables.join(", ")),
+            format!(
+                "the tables are {}; the keys before them {}",
+                tables.join(", "),
+                root.join(", ")
+            ),
             remedy,
         );
     }
@@ -136,7 +177,7 @@ impl Reader {
         let here: Vec<&str> = of_table(table).map(|key| key.name).collect();
         let elsewhere = KEYS.iter().find(|key| key.name == word);
         let remedy = match (nearest(&word, here.iter().copied()), elsewhere) {
-            (_, Some(key)) => format!("`{word}` belongs below the line `[{}]`", key.table),
+            (_, Some(key)) => format!("`{word}` belongs {}", key.place()),
             (Some(near), None) => match find(table, near) {
                 Some(key) => format!(
                     "did you mean `{near}`? Type for example `{}`",
@@ -147,10 +188,7 @@ impl Reader {
             (None, None) => match nearest(&word, KEYS.iter().map(|key| key.name))
                 .and_then(|near| KEYS.iter().find(|key| key.name == near))
             {
-                Some(key) => format!(
-                    "did you mean `{}` below the line `[{}]`?",
-                    key.name, key.table
-                ),
+                Some(key) => format!("did you mean `{}` {}?", key.name, key.place()),
                 None => "take the line out, or use one of these keys".to_owned(),
             },
         };

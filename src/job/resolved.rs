@@ -2,18 +2,24 @@
 
 use std::fmt;
 
+use super::System;
 use super::pattern::Pattern;
-use crate::units::LengthUnit;
+use super::published::{LongTermMethod, Published};
+use crate::units::{LengthUnit, Units};
 
 /// Everything a job decides.
 #[derive(Debug, Clone)]
 pub struct Job {
+    /// Units that results are written in.
+    pub units: Units,
+    /// The system whose defaults hold.
+    pub system: System,
     /// How the drawing is to be read.
     pub conventions: Conventions,
     /// The slab, where the drawing does not say.
     pub slab: SlabJob,
     /// Strand and duct.
-    pub system: System,
+    pub tendon: TendonJob,
     /// Jacking, friction, draw-in.
     pub stressing: Stressing,
     /// Shape between the marked heights.
@@ -63,7 +69,7 @@ pub struct Conventions {
     pub low_words: Vec<String>,
     /// Words that stand for mid-depth, whatever the thickness.
     pub middle_words: Vec<String>,
-    /// Patterns of slab thickness; group `value`.
+    /// Patterns of a slab's or a zone's thickness and levels; groups `value`, `top`, `soffit`, `down`.
     pub thickness_patterns: Vec<Pattern>,
     /// Unit of thickness texts.
     pub thickness_unit: LengthUnit,
@@ -71,6 +77,12 @@ pub struct Conventions {
     pub height: HeightReading,
     /// Reach of a label from its tendon, in text heights.
     pub label_reach: f64,
+    /// How far the tip of a leader may lie from the tendon it points at, metres.
+    pub arrow_reach_m: f64,
+    /// Blocks that mark the place of a height on its tendon (shell patterns, any case).
+    pub tick_blocks: Vec<String>,
+    /// Patterns of groups of like tendons; groups `first`, `last` (marks), `number`, `spacing`, each optional.
+    pub group_patterns: Vec<Pattern>,
     /// How far an end symbol may lie from the end, metres.
     pub end_reach_m: f64,
     /// Gap that still counts as end to end, metres.
@@ -96,6 +108,8 @@ pub struct Layers {
     pub level_lines: Vec<String>,
     /// Marks and strand counts.
     pub marks: Vec<String>,
+    /// Lines across a group of like tendons.
+    pub extents: Vec<String>,
     /// End symbols.
     pub ends: Vec<String>,
     /// Slab edge.
@@ -117,6 +131,8 @@ pub struct HeightReading {
     pub datum: Datum,
     /// What is measured from.
     pub from: FromFace,
+    /// Which soffit, where it is one.
+    pub soffit: Soffit,
     /// Strand centroid above the duct's underside at a low point, metres (the strand rises to the duct's top).
     pub strand_in_duct_low_m: f64,
     /// Strand centroid above the duct's underside at a high point, metres.
@@ -126,8 +142,12 @@ pub struct HeightReading {
 impl fmt::Display for HeightReading {
     /// Such as `mm above the local soffit to the centroid of the strands`.
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let soffit = match self.soffit {
+            Soffit::Local => "above the local soffit",
+            Soffit::General => "above the general slab's soffit",
+        };
         let from = match self.from {
-            FromFace::Soffit => "above the local soffit",
+            FromFace::Soffit => soffit,
             FromFace::Top => "below the top of the slab",
             FromFace::NearerFace => "from the nearer face",
         };
@@ -158,8 +178,17 @@ pub enum FromFace {
     Soffit,
     /// The top of the slab, downwards.
     Top,
-    /// Whichever of the two is nearer, towards the slab's middle.
+    /// Whichever of the two is nearer: a high point from the top, a low point from the soffit.
     NearerFace,
+}
+
+/// The soffit that heights are measured from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Soffit {
+    /// The one at the place.
+    Local,
+    /// The general slab's: below it, in a drop or a beam, heights are negative.
+    General,
 }
 
 /// The slab, where the drawing does not say.
@@ -167,6 +196,19 @@ pub enum FromFace {
 pub struct SlabJob {
     /// General thickness, metres; `None`: the drawing's own text.
     pub thickness_m: Option<f64>,
+    /// Level of the general slab's top as the drawing counts levels, metres.
+    pub top_level_m: f64,
+    /// What a zone keeps of the slab around it where its text gives only a top.
+    pub step_keeps: StepKeeps,
+}
+
+/// What runs on through a step in the top whose text gives neither thickness nor soffit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum StepKeeps {
+    /// The thickness: the soffit steps with the top.
+    Thickness,
+    /// The soffit: the slab is thinner, or thicker, by the step.
+    Soffit,
 }
 
 /// A size of strand.
@@ -184,7 +226,7 @@ pub struct StrandSize {
 
 /// Strand and duct.
 #[derive(Debug, Clone)]
-pub struct System {
+pub struct TendonJob {
     /// Known strand sizes.
     pub strands: Vec<StrandSize>,
     /// Size of a strand where a mark gives only a count; `None`: a finding.
@@ -208,6 +250,8 @@ pub struct Stressing {
     pub wobble: Wobble,
     /// Wedge draw-in at each live end, metres.
     pub draw_in_m: f64,
+    /// Order of stressing: marks or shell patterns, any letter case; empty where the job gives none.
+    pub order: Vec<String>,
 }
 
 /// Unintended curvature: φ = μ (α + k s), or φ = μ α + K s.
@@ -231,8 +275,10 @@ pub struct Profiling {
 /// Elastic shortening and long-term loss.
 #[derive(Debug, Clone)]
 pub struct LongTerm {
-    /// Which method.
+    /// The method whose forces are drawn and checked.
     pub method: LongTermMethod,
+    /// Words of the methods to show beside it ([`LongTermMethod::of`]); where it is among them it is shown once.
+    pub methods: Vec<String>,
     /// Concrete modulus at stressing, MPa.
     pub concrete_modulus_transfer_mpa: f64,
     /// Concrete modulus at 28 days, MPa.
@@ -249,13 +295,8 @@ pub struct LongTerm {
     pub relaxation_1000h: f64,
     /// Final relaxation over the 1000-hour value.
     pub relaxation_factor: f64,
-}
-
-/// A long-term method.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum LongTermMethod {
-    /// The job gives strain and coefficients.
-    Direct,
+    /// What the published methods ask.
+    pub published: Published,
 }
 
 /// Limits of the rules; each field's sentence says which.
@@ -308,6 +349,7 @@ impl Job {
             &layers.heights,
             &layers.level_lines,
             &layers.marks,
+            &layers.extents,
             &layers.ends,
             &layers.slab_edge,
             &layers.slab_opening,

@@ -1,8 +1,8 @@
 //! Which size of strand a drawing names: by its name or an alias, in millimetres or inches, in any form of number.
 
-use super::{StrandSize, System};
+use super::{StrandSize, TendonJob};
 
-impl System {
+impl TendonJob {
     /// The size that is written so: `12.7`, `0.5"`, `.5`, `1/2"`, `Ø12,7 mm`. A name goes before another size's alias.
     pub fn strand_named(&self, written: &str) -> Option<&StrandSize> {
         let written = Form::of(written);
@@ -57,8 +57,8 @@ mod tests {
 
     #[test]
     fn a_size_is_known_in_any_form_of_its_name() {
-        let system = Job::default().system;
-        let name = |written: &str| system.strand_named(written).map(|size| size.name.clone());
+        let tendon = Job::default().tendon;
+        let name = |written: &str| tendon.strand_named(written).map(|size| size.name.clone());
         for (written, known) in [
             ("12.7", Some("12.7")),
             ("12,70 mm", Some("12.7")),
@@ -80,12 +80,12 @@ mod tests {
 
     #[test]
     fn a_name_goes_before_an_alias() {
-        let mut system = Job::default().system;
-        let mut own = system.strands[0].clone();
+        let mut tendon = Job::default().tendon;
+        let mut own = tendon.strands[0].clone();
         own.name = "0.6".to_owned();
         own.area_mm2 = 144.0;
-        system.strands.push(own);
-        let found = system.strand_named("0.6\"").map(|size| size.area_mm2);
+        tendon.strands.push(own);
+        let found = tendon.strand_named("0.6\"").map(|size| size.area_mm2);
         assert_eq!(found, Some(144.0));
     }
 }

@@ -11,7 +11,7 @@ use crate::job::{StrandSize, families};
 
 /// A size as it may be pasted.
 const EXAMPLE: &str = "type for example\n\
-    [[system.strand]]\n\
+    [[tendon.strand]]\n\
     name = \"12.7\"\n\
     area_mm2 = 98.7\n\
     strength_mpa = 1860";
@@ -23,7 +23,7 @@ impl Reader {
             self.mistake(
                 entry.span(),
                 "`strand` is an empty list",
-                "expected tables [[system.strand]]",
+                "expected tables [[tendon.strand]]",
                 "take the line out for the usual sizes",
             );
         }
@@ -32,7 +32,7 @@ impl Reader {
                 self.mistake(
                     item.span(),
                     format!("`strand` cannot hold {}", kind_word(item.get_ref())),
-                    "expected tables [[system.strand]]",
+                    "expected tables [[tendon.strand]]",
                     EXAMPLE,
                 );
                 continue;
@@ -66,8 +66,8 @@ impl Reader {
             let near = nearest(&word, FIELDS);
             self.mistake(
                 name.span(),
-                format!("unknown key `{word}` in [[system.strand]]"),
-                format!("the keys of [[system.strand]] are {}", FIELDS.join(", ")),
+                format!("unknown key `{word}` in [[tendon.strand]]"),
+                format!("the keys of [[tendon.strand]] are {}", FIELDS.join(", ")),
                 near.map_or("take the line out".to_owned(), |near| {
                     format!("did you mean `{near}`?")
                 }),
@@ -207,26 +207,26 @@ impl Reader {
     /// Sizes that other keys name are among the job's; the default one goes by its own name from here on.
     fn unknown_strands(&mut self) {
         let mut named = std::mem::take(&mut self.strand_names);
-        let default = self.job.system.default_strand.clone();
-        let span = self.given.get("system.default_strand").cloned();
+        let default = self.job.tendon.default_strand.clone();
+        let span = self.given.get("tendon.default_strand").cloned();
         named.extend(default.clone().zip(span));
         for (name, span) in named {
-            if self.job.system.strand_named(&name).is_some() {
+            if self.job.tendon.strand_named(&name).is_some() {
                 continue;
             }
-            let sizes = &self.job.system.strands;
+            let sizes = &self.job.tendon.strands;
             let known: Vec<&str> = sizes.iter().map(|size| size.name.as_str()).collect();
             let list = quoted(&known);
             self.mistake(
                 span,
                 format!("\"{}\" names a strand that is not known", plain(&name)),
                 format!("expected one of {}", plain(&list)),
-                "name one of these, or describe the strand in a table [[system.strand]]",
+                "name one of these, or describe the strand in a table [[tendon.strand]]",
             );
         }
-        let size = default.and_then(|name| self.job.system.strand_named(&name));
+        let size = default.and_then(|name| self.job.tendon.strand_named(&name));
         if let Some(name) = size.map(|size| size.name.clone()) {
-            self.job.system.default_strand = Some(name);
+            self.job.tendon.default_strand = Some(name);
         }
     }
 }

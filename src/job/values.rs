@@ -210,7 +210,7 @@ impl Reader {
         }
     }
 
-    /// A list of words that is not empty, each with its place.
+    /// A list of words that is not empty (unless the default is), each with its place.
     pub(super) fn words(
         &mut self,
         key: &Key,

@@ -6,8 +6,8 @@ use std::fmt::Write as _;
 use serde_json::Value;
 
 use super::key::{Key, Kind, toml_text};
-use super::keys::{TABLES, of_table};
-use super::{Datum, Fallback, Job, Resolved};
+use super::keys::{ROOT, TABLES, of_table};
+use super::{Datum, Fallback, Job, Resolved, System};
 
 /// A value that the drawing itself suggests for a key.
 #[derive(Debug, Clone, PartialEq)]
@@ -19,15 +19,21 @@ pub struct Proposal {
 }
 
 /// A job file with every key and its meaning. Proposed keys are set; all others stand as comments (`#key = value`)
-/// at their defaults. `head` goes on top, as comment lines.
+/// at their defaults, which are those of the system that is proposed. `head` goes on top, as comment lines.
 pub fn file(head: &[String], proposals: &BTreeMap<String, Proposal>) -> String {
-    let job = Job::default();
+    let system = proposals
+        .get("system")
+        .and_then(|proposal| System::named(proposal.value.as_str()?));
+    let job = system.map_or_else(Job::default, System::job);
     let mut text = String::new();
     for line in head {
         comment(&mut text, line);
     }
     for (table, meaning) in TABLES {
-        let _ = write!(text, "\n[{table}]\n");
+        text.push('\n');
+        if *table != ROOT {
+            let _ = writeln!(text, "[{table}]");
+        }
         comment(&mut text, meaning);
         for key in of_table(table) {
             text.push('\n');
@@ -42,7 +48,7 @@ pub fn file(head: &[String], proposals: &BTreeMap<String, Proposal>) -> String {
             } else if matches!(key.kind, Kind::Strands(_)) {
                 strands(&mut text, &job);
             } else {
-                let _ = writeln!(text, "#{}", key.example());
+                let _ = writeln!(text, "#{}", key.line(&job));
             }
         }
     }
@@ -66,19 +72,24 @@ fn value_text(key: &Key, value: &Value) -> String {
 fn describe(text: &mut String, key: &Key, job: &Job) {
     comment(text, key.meaning);
     let source = match key.value(job) {
-        Some(_) => format!("Default: {}.", key.source),
+        Some(_) => match job.system.source(key) {
+            Some(source) => format!("Default of {}: {source}.", job.system.name()),
+            None => format!("Default: {}.", key.source),
+        },
         None => format!("Not given: {}. For example:", key.source),
     };
     let allowed = match &key.kind {
-        Kind::Number { .. } | Kind::Choice { .. } => format!("{}. ", capital(&key.expected())),
+        Kind::Number { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
+            format!("{}. ", capital(&key.expected()))
+        }
         _ => String::new(),
     };
     comment(text, &format!("{allowed}{source}"));
 }
 
-/// As inline tables: a `[[system.strand]]` header would take the keys that follow it.
+/// As inline tables: a `[[tendon.strand]]` header would take the keys that follow it.
 fn strands(text: &mut String, job: &Job) {
-    for size in &job.system.strands {
+    for size in &job.tendon.strands {
         comment(
             text,
             &format!(
@@ -108,6 +119,7 @@ fn capital(text: &str) -> String {
 
 /// Every key that the file did not give.
 pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
+    let system = resolved.job.system;
     super::keys::KEYS
         .iter()
         .filter(|key| !resolved.given.contains(&key.path()))
@@ -118,11 +130,13 @@ pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
                 // Where in the duct the strand lies matters only to heights of the duct.
                 || key.name.starts_with("strand_in_duct")
                     && resolved.job.conventions.height.datum == Datum::Centroid;
+            let own = system.source(key);
             (!silent).then(|| Fallback {
                 table: key.table,
                 name: key.input_name(),
                 value,
-                source: key.source,
+                source: own.unwrap_or(key.source),
+                system: own.map(|_| system),
             })
         })
         .collect()

@@ -1,78 +1,161 @@
 //! A stressed tendon after the concrete has shortened and after the long-term losses: transfer and service.
 
-use super::long_term::{LongTermLoss, long_term_loss};
-use super::shortening::shortening_mpa;
-use super::{CannotStress, Forces, LaterLosses, Stressed};
-use crate::job::LongTerm;
+use super::along::Along;
+use super::long_term::{Case, Lost, Method, NoLoss, Place, When};
+use super::{CannotStress, Forces, LaterLosses};
+use crate::job::{LongTerm, LongTermMethod};
 
 /// A stressed tendon with its later losses: force at all four stages, anywhere.
 #[derive(Debug, Clone, Copy)]
-pub struct Effective<'s, 'p> {
-    stressed: &'s Stressed<'p>,
-    shortening_mpa: f64,
-    long_term: LongTermLoss,
+pub struct Effective<'a> {
+    along: &'a Along<'a, 'a>,
+    method: Method,
+    mean: Place,
+    /// Whether each place loses by its own stress, or all by the mean.
+    places: Places,
+    mean_lost: Lost,
 }
 
-impl<'s, 'p> Effective<'s, 'p> {
-    /// Later losses at this mean concrete stress, MPa, compression positive.
+/// Where a method looks.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+enum Places {
+    /// At each place.
+    Each,
+    /// At the mean of the tendon, for all its places.
+    Mean,
+}
+
+/// Why there is no force at transfer and in service.
+#[derive(Debug, Clone, PartialEq, Eq, thiserror::Error)]
+pub enum NoForce {
+    /// Nothing would be left.
+    #[error(transparent)]
+    Stress(#[from] CannotStress),
+    /// The method gives no loss.
+    #[error(transparent)]
+    Loss(#[from] NoLoss),
+}
+
+impl<'a> Effective<'a> {
+    /// Later losses of a tendon by a method.
     ///
     /// # Errors
-    /// [`CannotStress::LossesTakeAll`] where no force would be left somewhere.
+    /// [`NoForce`] where the method gives no loss, or where no force would be left somewhere.
     pub fn new(
-        stressed: &'s Stressed<'p>,
+        along: &'a Along<'a, 'a>,
         job: &LongTerm,
-        concrete_stress_mpa: f64,
-    ) -> Result<Self, CannotStress> {
-        let modulus_mpa = stressed.steel().modulus_mpa;
-        let effective = Self {
-            stressed,
-            shortening_mpa: shortening_mpa(
-                job.shortening_share,
-                modulus_mpa,
-                job.concrete_modulus_transfer_mpa,
-                concrete_stress_mpa,
-            ),
-            long_term: long_term_loss(job, modulus_mpa, concrete_stress_mpa),
-        };
-        let [_, service_kn] = effective.later_kn(stressed.least_lockoff_kn());
-        if service_kn > 0.0 {
-            Ok(effective)
+        method: LongTermMethod,
+        case: &Case,
+        when: When,
+    ) -> Result<Self, NoForce> {
+        let places = if method == LongTermMethod::Direct || job.published.bonded {
+            Places::Each
         } else {
-            Err(CannotStress::LossesTakeAll)
+            Places::Mean
+        };
+        if method != LongTermMethod::Direct && !along.knows_thickness() {
+            return Err(NoLoss::ThicknessUnknown(method.word()).into());
+        }
+        let method = Method::new(method, job, case, when)?;
+        let mut effective = Self {
+            along,
+            method,
+            mean: case.mean,
+            places,
+            mean_lost: method.at(case.mean),
+        };
+        let stressed = along.stressed();
+        let least_mpa = stressed.steel().stress_mpa(stressed.least_lockoff_kn());
+        for eccentricity in [0.0, case.most_eccentricity] {
+            let worst = Place {
+                lockoff_mpa: least_mpa,
+                eccentricity,
+            };
+            let lost = method.at(effective.seen(worst));
+            let left_mpa = least_mpa - lost.all_mpa();
+            if left_mpa.is_nan() || left_mpa <= 0.0 {
+                return Err(CannotStress::LossesTakeAll.into());
+            }
+        }
+        if places == Places::Each && !method.is_linear() {
+            let [shortening_mpa, shrinkage_mpa, creep_mpa, relaxation_mpa] =
+                along.means(|station_m| {
+                    let lost = method.at(along.place(station_m));
+                    [
+                        lost.shortening_mpa,
+                        lost.shrinkage_mpa,
+                        lost.creep_mpa,
+                        lost.relaxation_mpa,
+                    ]
+                });
+            effective.mean_lost = Lost {
+                shortening_mpa,
+                shrinkage_mpa,
+                creep_mpa,
+                relaxation_mpa,
+            };
+        }
+        Ok(effective)
+    }
+
+    /// The method.
+    pub fn method(&self) -> Method {
+        self.method
+    }
+
+    /// The mean of the losses along the tendon, MPa.
+    pub fn mean_lost(&self) -> Lost {
+        self.mean_lost
+    }
+
+    /// The mean of the tendon's places.
+    pub fn mean_place(&self) -> Place {
+        self.mean
+    }
+
+    /// What the method looks at for this place.
+    fn seen(&self, place: Place) -> Place {
+        match self.places {
+            Places::Each => place,
+            Places::Mean => self.mean,
         }
     }
 
     /// Force at jacking, lock-off, transfer and service, kN; at a bend, the least in it.
     pub fn forces_kn(&self, station_m: f64) -> [f64; 4] {
-        let [jacking_kn, lockoff_kn] = self.stressed.both_kn(station_m);
-        let [transfer_kn, service_kn] = self.later_kn(lockoff_kn);
+        let stressed = self.along.stressed();
+        let steel = stressed.steel();
+        let [jacking_kn, lockoff_kn] = stressed.both_kn(station_m);
+        let place = self.along.place_of(station_m, lockoff_kn);
+        let lost = self.method.at(self.seen(place));
+        let transfer_kn = lockoff_kn - steel.force_kn(lost.shortening_mpa);
+        let service_kn = transfer_kn - steel.force_kn(lost.long_term_mpa());
         [jacking_kn, lockoff_kn, transfer_kn, service_kn]
     }
 
-    /// Transfer and service from the force after lock-off at the same place, kN.
-    fn later_kn(&self, lockoff_kn: f64) -> [f64; 2] {
-        let steel = self.stressed.steel();
-        let transfer_kn = lockoff_kn - steel.force_kn(self.shortening_mpa);
-        let constant_mpa = self.long_term.shrinkage_mpa + self.long_term.creep_mpa;
-        let relaxation_kn = self.long_term.relaxation_ratio * lockoff_kn;
-        let service_kn = transfer_kn - steel.force_kn(constant_mpa) - relaxation_kn;
-        [transfer_kn, service_kn]
+    /// Effective force, kN; at a bend, the least in it.
+    pub fn service_kn(&self, station_m: f64) -> f64 {
+        self.forces_kn(station_m)[3]
+    }
+
+    /// Mean effective force along the tendon, kN.
+    pub fn mean_service_kn(&self) -> f64 {
+        let stressed = self.along.stressed();
+        stressed.mean_lockoff_kn() - stressed.steel().force_kn(self.mean_lost.all_mpa())
     }
 
     /// What is reported of the tendon as a whole.
     pub fn forces(&self) -> Forces {
-        let mean_lockoff_kn = self.stressed.mean_lockoff_kn();
-        let mean_lockoff_mpa = self.stressed.steel().stress_mpa(mean_lockoff_kn);
+        let lost = &self.mean_lost;
         Forces {
             later: Some(LaterLosses {
-                shortening_mpa: self.shortening_mpa,
-                shrinkage_mpa: self.long_term.shrinkage_mpa,
-                creep_mpa: self.long_term.creep_mpa,
-                relaxation_mpa: self.long_term.relaxation_ratio * mean_lockoff_mpa,
-                // The later losses are linear in the force after lock-off, so the mean goes through them as a force does.
-                mean_service_kn: self.later_kn(mean_lockoff_kn)[1],
+                shortening_mpa: lost.shortening_mpa,
+                shrinkage_mpa: lost.shrinkage_mpa,
+                creep_mpa: lost.creep_mpa,
+                relaxation_mpa: lost.relaxation_mpa,
+                mean_service_kn: self.mean_service_kn(),
             }),
-            ..self.stressed.forces()
+            ..self.along.stressed().forces()
         }
     }
 }

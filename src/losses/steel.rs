@@ -2,21 +2,21 @@
 
 use super::Steel;
 use crate::floor::Tendon;
-use crate::job::System;
+use crate::job::TendonJob;
 
 /// The steel of one tendon; `None` where the count of strands is not known, or the size is not among the job's.
 /// A mark without a size has the job's default size, if there is one.
-pub fn steel(tendon: &Tendon, system: &System) -> Option<Steel> {
+pub fn steel(tendon: &Tendon, known: &TendonJob) -> Option<Steel> {
     let strands = tendon.strands.filter(|&strands| strands > 0)?;
     let name = tendon
         .strand
         .as_deref()
-        .or(system.default_strand.as_deref())?;
-    let size = system.strands.iter().find(|size| size.name == name)?;
+        .or(known.default_strand.as_deref())?;
+    let size = known.strands.iter().find(|size| size.name == name)?;
     Some(Steel {
         area_mm2: f64::from(strands) * size.area_mm2,
         strength_mpa: size.strength_mpa,
-        modulus_mpa: system.strand_modulus_mpa,
+        modulus_mpa: known.strand_modulus_mpa,
     })
 }
 

@@ -4,6 +4,7 @@ mod curve;
 mod drawn;
 mod forces;
 mod friction;
+mod methods;
 
 use super::DrawingFacts;
 use super::summary::{assumed, cautions};
@@ -12,6 +13,7 @@ use crate::analysis::{Analysis, TendonResult, pair};
 use crate::finding::Finding;
 use crate::floor::Tendon;
 use crate::job::Job;
+use crate::units::{LONG, Unit, Units};
 
 /// The calculation sheet of every tendon with this mark (any letter case); `None` where no tendon has it.
 pub fn calculation(
@@ -54,25 +56,25 @@ fn sheet(
                 .to_owned(),
         ),
     }
-    parts.push(findings(found));
+    parts.push(findings(found, job.units));
     parts.push(assumed(analysis));
     parts.push(cautions());
     parts.join("\n")
 }
 
-fn findings(found: &[&Finding]) -> String {
+fn findings(found: &[&Finding], units: Units) -> String {
     let own: Vec<String> = found
         .iter()
         .map(|finding| {
             let station = finding
                 .station_m
-                .map(|station_m| format!(" at station {station_m:.3} m"))
+                .map(|station_m| format!(" at station {}", units.of(LONG).said(station_m, 3)))
                 .unwrap_or_default();
             format!(
                 "  {} {}{station}: {}\n      {}\n",
                 finding.level.word(),
                 finding.rule.name,
-                plain(&finding.text),
+                plain(finding.text.in_units(units)),
                 plain(&finding.remedy)
             )
         })
@@ -98,6 +100,19 @@ fn grid(words: usize, header: &[&str], rows: Vec<Vec<String>>) -> String {
     let mut all = vec![header.iter().map(|&cell| cell.to_owned()).collect()];
     all.extend(rows);
     table(&aligns, &all)
+}
+
+/// A figure in this unit, or a dash where there is none.
+fn figure(unit: Unit, value: Option<f64>, decimals: usize) -> String {
+    value.map_or_else(|| "-".to_owned(), |value| unit.figure(value, decimals))
+}
+
+/// MPa times mm2 are newtons; ksi times in2 are kips.
+fn over_1000(units: Units) -> &'static str {
+    match units {
+        Units::Si => " / 1000",
+        Units::Us => "",
+    }
 }
 
 /// A number, or a dash where there is none.

@@ -1,7 +1,12 @@
 //! A tendon's result under the names and in the units that the outputs share.
 
+mod methods;
+
+use std::collections::BTreeMap;
+
 use serde::Serialize;
 
+use self::methods::MethodRecord;
 use crate::analysis::{PointResult, TendonResult};
 use crate::finding::{Finding, Level};
 use crate::floor::{EndKind, Point, PointKind, Run, Tendon};
@@ -11,6 +16,9 @@ use crate::losses::{EndForces, Forces};
 #[derive(Debug, Serialize)]
 pub(super) struct TendonRecord<'a> {
     pub(super) mark: &'a str,
+    /// Whether it is a copy of its group's typical tendon; only then is it said.
+    #[serde(skip_serializing_if = "std::ops::Not::not")]
+    pub(super) made: bool,
     pub(super) handle: &'a str,
     pub(super) layer: &'a str,
     pub(super) run: Run,
@@ -30,6 +38,10 @@ pub(super) struct TendonRecord<'a> {
     pub(super) points: Vec<PointRecord>,
     pub(super) losses: Option<LossRecord>,
     pub(super) mean_service_kn: Option<f64>,
+    /// By each method that the job names; empty where there are no forces.
+    pub(super) losses_by_method: BTreeMap<&'static str, MethodRecord>,
+    /// Greatest less least mean service force by method, over the drawn method's.
+    pub(super) method_spread_ratio: Option<f64>,
     /// Angle turned in space over the whole length.
     pub(super) angle_rad: Option<f64>,
     /// Share of the jacking force lost to angle alone, down to the point of least force.
@@ -70,6 +82,8 @@ pub(super) struct PointRecord {
     pub(super) lockoff_kn: Option<f64>,
     pub(super) transfer_kn: Option<f64>,
     pub(super) service_kn: Option<f64>,
+    /// By each method that the job names; empty where there are no forces.
+    pub(super) service_by_method_kn: BTreeMap<&'static str, Option<f64>>,
 }
 
 /// Losses by cause.
@@ -108,6 +122,7 @@ impl<'a> TendonRecord<'a> {
         let forces = result.forces.as_ref();
         Self {
             mark: &tendon.mark,
+            made: tendon.made,
             handle: &tendon.handle,
             layer: &tendon.layer,
             run: tendon.run,
@@ -136,6 +151,8 @@ impl<'a> TendonRecord<'a> {
             points: points(tendon, result),
             losses: forces.map(LossRecord::of),
             mean_service_kn: forces.and_then(|forces| number(forces.later?.mean_service_kn)),
+            losses_by_method: methods::losses(result),
+            method_spread_ratio: result.spread().and_then(|spread| number(spread.ratio)),
             angle_rad: result
                 .points
                 .last()
@@ -165,7 +182,10 @@ fn points(tendon: &Tendon, result: &TendonResult) -> Vec<PointRecord> {
         .points
         .iter()
         .zip(results)
-        .map(|(point, result)| PointRecord::of(point, &result))
+        .enumerate()
+        .map(|(index, (point, worked))| {
+            PointRecord::of(point, &worked, methods::service_kn(result, index))
+        })
         .collect()
 }
 
@@ -197,13 +217,17 @@ impl LiveRecord {
 }
 
 impl PointRecord {
-    fn of(point: &Point, result: &PointResult) -> Self {
+    fn of(
+        point: &Point,
+        result: &PointResult,
+        service_by_method_kn: BTreeMap<&'static str, Option<f64>>,
+    ) -> Self {
         let [jacking_kn, lockoff_kn, transfer_kn, service_kn] =
             result.forces_kn.map(|force_kn| force_kn.and_then(number));
         // An anchor that the drawing gives no height has the one it was worked out with.
         let height_m = point
             .height_m
-            .or_else(|| Some(result.level_m? + point.thickness_m?));
+            .or_else(|| Some(result.level_m? - point.faces().soffit_m()?));
         Self {
             kind: point.kind,
             station_m: number(point.station_m),
@@ -216,6 +240,7 @@ impl PointRecord {
             lockoff_kn,
             transfer_kn,
             service_kn,
+            service_by_method_kn,
         }
     }
 }

@@ -1,5 +1,7 @@
 //! The short summary that the terminal shows.
 
+mod methods;
+
 use std::collections::BTreeMap;
 
 use super::DrawingFacts;
@@ -9,8 +11,10 @@ use crate::cautions::CAUTIONS;
 use crate::checks::Turning;
 use crate::finding::{Finding, Level};
 use crate::floor::{Run, Tendon};
+use crate::job::keys::ROOT;
 use crate::job::{Fallback, Job};
 use crate::losses::Forces;
+use crate::units::{LONG, TURN, Units};
 
 /// Tendons in the table of the worst.
 const WORST: usize = 8;
@@ -25,7 +29,8 @@ const LINE: usize = 120;
 /// Plain text; what came from the drawing is escaped.
 pub fn summary(facts: &DrawingFacts, analysis: &Analysis, job: &Job, files: &[String]) -> String {
     let mut parts = vec![counts(facts, analysis, job)];
-    parts.extend(worst(analysis));
+    parts.extend(worst(analysis, job.units));
+    parts.extend(methods::part(analysis, job.units));
     parts.push(findings(&analysis.findings));
     parts.push(assumed(analysis));
     parts.extend(list("Written:", files));
@@ -102,7 +107,7 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis, job: &Job) -> String {
 }
 
 /// Tendons with the greatest share of jacking force lost to angle alone, worst first.
-fn worst(analysis: &Analysis) -> Option<String> {
+fn worst(analysis: &Analysis, units: Units) -> Option<String> {
     let mut turned: Vec<(&Tendon, &Forces, Turning)> = pair(analysis)
         .filter_map(|(tendon, result)| {
             let forces = result.forces.as_ref()?;
@@ -114,12 +119,14 @@ fn worst(analysis: &Analysis) -> Option<String> {
     if turned.is_empty() {
         return None;
     }
+    let (long, turn) = (units.of(LONG), units.of(TURN));
+    let length = format!("length {}", long.name);
     let header = [
         "",
         "tendon",
-        "length m",
+        &length,
         "angle rad",
-        "rad/m",
+        turn.name,
         "lost to angle %",
         "left at least %",
     ];
@@ -128,9 +135,9 @@ fn worst(analysis: &Analysis) -> Option<String> {
         rows.push(vec![
             format!("{}", rank + 1),
             plain(&tendon.mark),
-            format!("{:.2}", tendon.path.length_m()),
+            long.figure(tendon.path.length_m(), 2),
             format!("{:.3}", turning.angle_rad),
-            format!("{:.4}", turning.angle_per_m_rad),
+            turn.figure(turning.angle_per_m_rad, 4),
             format!("{:.1}", 100.0 * turning.loss_ratio),
             format!("{:.1}", 100.0 * forces.least_jacking_kn / forces.jack_kn),
         ]);
@@ -205,10 +212,11 @@ fn named(found: &[&Finding]) -> String {
 }
 
 /// Tables of the job whose values are engineering figures; the rest are conventions of reading and limits.
-const FIGURES: [&str; 6] = [
+const FIGURES: [&str; 7] = [
+    ROOT,
     "slab",
     "height",
-    "system",
+    "tendon",
     "stressing",
     "profile",
     "long_term",

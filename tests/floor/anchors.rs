@@ -64,6 +64,35 @@ fn of_two_heights_near_an_end_the_nearer_is_the_anchors() {
 }
 
 #[test]
+fn a_number_written_from_within_to_the_end_is_the_anchors_and_a_word_is_not() {
+    for forwards in [true, false] {
+        // Texts by their left end, 0.15 m high: about 0.4 m long.
+        for (text, anchor_mm, points_found) in
+            [("110", 110.0, 3), ("T/2", 125.0, 3), ("H200", 125.0, 4)]
+        {
+            let mut board = tendon(forwards, &[("L40", 10.0, 0.15)]);
+            board.text("TENDON-HEIGHT", text, at(19.55, 0.1), 0.15, 0.0, false);
+            let found = points(&board);
+            assert_eq!(
+                found.last(),
+                Some(&(PointKind::Anchor, 20.0, Some(anchor_mm))),
+                "{text}: {found:?}"
+            );
+            assert_eq!(found.len(), points_found, "{text}: {found:?}");
+        }
+        // A chair farther in is no anchor.
+        let mut board = tendon(forwards, &[("L40", 10.0, 0.15)]);
+        board.text("TENDON-HEIGHT", "110", at(19.1, 0.1), 0.15, 0.0, false);
+        let found = points(&board);
+        assert_eq!(
+            found.last(),
+            Some(&(PointKind::Anchor, 20.0, Some(125.0))),
+            "{found:?}"
+        );
+    }
+}
+
+#[test]
 fn a_level_line_at_the_anchor_is_not_that_of_a_label_farther_in() {
     for forwards in [true, false] {
         let mut board = tendon(forwards, &[("165", 0.46, 0.1), ("L40", 10.0, 0.1)]);

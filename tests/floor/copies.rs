@@ -20,7 +20,7 @@ fn lines(drawn: &[Drawn<'_>]) -> (Vec<[i64; 4]>, Vec<String>) {
     let said = told(&findings, "duplicate-line").into_iter();
     let said = said.map(|finding| {
         assert_eq!(finding.level, Level::Error);
-        finding.text.clone()
+        finding.text.to_string()
     });
     (spans, said.collect())
 }

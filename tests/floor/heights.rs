@@ -69,7 +69,7 @@ fn a_label_that_says_no_strands_is_quoted_and_not_called_missing() {
     let texts: Vec<&str> = found
         .iter()
         .filter(|finding| finding.rule.name == "strand-count-missing")
-        .map(|finding| finding.text.as_str())
+        .map(|finding| &*finding.text)
         .collect();
     assert_eq!(texts.len(), 1);
     assert!(texts[0].contains("says 0 strands"), "{texts:?}");

@@ -114,6 +114,12 @@ def main():
                     failed.append(f"planted faults: missing {missing}, on sound tendons {sound}")
                 else:
                     passed += 1
+        floor = ROOT / "demo-drawings" / "harbour-level-2.dxf"
+        methods, out = floor.with_name("harbour-level-2-methods.toml"), scratch / "methods"
+        if check("mark by every method", [program, "mark", floor, "--job", methods, "--out", out]):
+            check("methods", script("methods", out / "harbour-level-2-result.json"))
+        check("creep and shrinkage", script("creep_shrinkage", "--check"))
+        check("offices drawn again", script("offices", "--check"))
         check("foreign floors", script("foreign", program, 1000, FOREIGN_FLOORS))
     for name in failed:
         print(f"failed: {name}")

@@ -100,7 +100,9 @@ pub(super) fn crowd_ends((tendon, result): &mut Worked, off_m: f64) {
         place: tendon.path.place_at(station_m),
         drawn_m: None,
         height_m: Some(0.2),
+        other_soffit_m: None,
         thickness_m: Some(0.25),
+        top_m: 0.0,
     };
     let (first, last) = (high(off_m), high(tendon.path.length_m() - off_m));
     tendon.points.insert(1, first);
@@ -181,7 +183,9 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
             place: path.place_at(station_m),
             drawn_m: None,
             height_m: Some(0.25 + level_m(station_m / length_m * spans)),
+            other_soffit_m: None,
             thickness_m: Some(0.25),
+            top_m: 0.0,
         });
         results.push(PointResult {
             angle_rad: None,
@@ -211,10 +215,12 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         points: results,
         samples,
         concrete_stress_mpa: Some(1.4),
+        by_method: Vec::new(),
     };
     let tendon = Tendon {
         mark: mark.to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "2A".to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,

@@ -142,7 +142,7 @@ fn the_table_gives_the_left_or_lower_end_first_and_the_size_that_the_job_gives()
     }
     let analysis = analysis(tendons);
     let mut job = Job::default();
-    job.system.default_strand = Some("15.7".to_owned());
+    job.tendon.default_strand = Some("15.7".to_owned());
     let sheet = draw(&analysis, &beside(&[]), &job);
     let words = texts(&sheet, layers::TABLE);
     // Both are live at their start: the one drawn from the right is live at its right end.

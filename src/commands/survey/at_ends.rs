@@ -95,6 +95,14 @@ impl AtEnds {
         found
     }
 
+    /// Whether a shape is part of a block that stands at line ends, here or elsewhere: no line of its layer.
+    pub(super) fn draws(&self, drawing: &Drawing, shape: &Shape) -> bool {
+        let mut around = holding(drawing, shape)
+            .into_iter()
+            .filter_map(|insert| drawing.inserts.get(insert));
+        around.any(|insert| self.blocks.contains_key(&insert.block))
+    }
+
     fn block(&mut self, drawing: &Drawing, number: Option<usize>) {
         let Some((number, insert)) = number.and_then(|at| Some((at, drawing.inserts.get(at)?)))
         else {

@@ -1,6 +1,6 @@
 //! What a drawing holds, counted: by layer, and by colour and linetype where these differ on a layer.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 
@@ -11,6 +11,8 @@ use crate::job::Job;
 
 /// Texts shown of each layer.
 const SAMPLES: usize = 4;
+/// A word beside so many numbers is no chance.
+const OFTEN: usize = 3;
 
 /// What a drawing holds.
 #[derive(Debug, Default)]
@@ -52,6 +54,11 @@ pub(super) struct Held {
     pub(super) inched_thicknesses: usize,
     /// Words beside numbers that are words of heights, though not of the job's.
     pub(super) words: BTreeMap<String, usize>,
+    /// Of these, words that nobody knows and whose numbers say what they mean.
+    pub(super) highs: BTreeSet<String>,
+    pub(super) lows: BTreeSet<String>,
+    /// Words that nobody knows, with the numbers beside them.
+    unknown: BTreeMap<String, Vec<f64>>,
     /// Texts of families that a survey offers, by the family's name.
     pub(super) offered: BTreeMap<&'static str, usize>,
     /// A few different texts, with what each says.
@@ -66,7 +73,7 @@ impl Contents {
             ..Self::default()
         };
         for (number, shape) in drawing.shapes.iter().enumerate() {
-            if shape.kind == ShapeKind::Solid {
+            if shape.kind == ShapeKind::Solid || contents.at_ends.draws(drawing, shape) {
                 continue;
             }
             let marked = contents.at_ends.marked.get(&number).copied().unwrap_or(0);
@@ -132,6 +139,9 @@ impl Held {
         if let Some(word) = hint.word {
             *self.words.entry(word).or_default() += 1;
         }
+        if let Some((word, number)) = hint.unknown {
+            self.unknown.entry(word).or_default().push(number);
+        }
     }
 
     /// `T165` beside `B30` is no thickness but a top.
@@ -141,6 +151,35 @@ impl Held {
             self.heights_mm.append(&mut self.thicknesses_mm);
             self.inched += std::mem::take(&mut self.inched_thicknesses);
             self.thicknesses = 0;
+        }
+        self.tell_words();
+    }
+
+    /// Two words that nobody knows, of which one stands beside the larger numbers everywhere, are high and low.
+    fn tell_words(&mut self) {
+        let often = self
+            .unknown
+            .iter()
+            .filter(|(_, numbers)| numbers.len() >= OFTEN);
+        let [(one, of_one), (other, of_other)] = often.collect::<Vec<_>>()[..] else {
+            return;
+        };
+        let above = |a: &[f64], b: &[f64]| {
+            let most = b.iter().copied().fold(f64::NEG_INFINITY, f64::max);
+            a.iter().all(|number| *number > most)
+        };
+        let (high, low) = if above(of_one, of_other) {
+            (one, other)
+        } else if above(of_other, of_one) {
+            (other, one)
+        } else {
+            return;
+        };
+        self.highs.insert(high.clone());
+        self.lows.insert(low.clone());
+        for (word, numbers) in [(one, of_one), (other, of_other)] {
+            self.words.insert(word.clone(), numbers.len());
+            self.heights_mm.extend(numbers);
         }
     }
 
@@ -174,6 +213,12 @@ impl Held {
         self.inched_thicknesses += other.inched_thicknesses;
         for (word, count) in &other.words {
             *self.words.entry(word.clone()).or_default() += count;
+        }
+        for (word, numbers) in &other.unknown {
+            self.unknown
+                .entry(word.clone())
+                .or_default()
+                .extend(numbers);
         }
         for (family, count) in &other.offered {
             *self.offered.entry(family).or_default() += count;

@@ -1,6 +1,6 @@
 //! What a text is taken for by the job's patterns, when only the text itself speaks.
 
-use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line};
+use crate::floor::{Word, height_of_line, mark_of_line, thickness_of_line, zone_text_of_line};
 use crate::job::families::{self, Offer, offered};
 use crate::job::{Job, Pattern};
 use crate::units::LengthUnit;
@@ -47,9 +47,21 @@ pub(super) fn reading(text: &str, job: &Job) -> Reading {
 fn of_line(line: &str, job: &Job) -> Reading {
     let read = &job.conventions;
     let millimetres = |value_m: f64| (value_m * 1e4).round() / 10.0;
-    if let Some((value_m, by)) = thickness_of_line(line, read) {
-        let words = format!("slab thickness {} mm", millimetres(value_m));
-        return Reading::Thickness(named(words, Some(by)));
+    if let Some((said, by)) = zone_text_of_line(line, read) {
+        let part = |what: &str, value_m: Option<f64>| {
+            value_m.map(|value_m| format!("{what} {} mm", millimetres(value_m)))
+        };
+        let parts = [
+            part("slab thickness", said.thickness_m),
+            part("slab top at", said.top_m),
+            part("slab soffit at", said.soffit_m),
+            part("slab top down by", said.down_m),
+        ];
+        let words: Vec<String> = parts.into_iter().flatten().collect();
+        // A bare signed number may as well be a height.
+        if line.chars().any(char::is_alphabetic) {
+            return Reading::Thickness(named(words.join(", "), Some(by)));
+        }
     }
     if let Some((height, by)) = height_of_line(line, read) {
         let what = match (height.word, height.middle) {
@@ -113,6 +125,8 @@ pub(super) struct Hint {
     pub(super) inched_thickness: bool,
     /// A word of heights that the job does not know, beside a number.
     pub(super) word: Option<String>,
+    /// A word that nobody knows, beside the number of what would be a height.
+    pub(super) unknown: Option<(String, f64)>,
 }
 
 /// What a text hints at.
@@ -150,10 +164,24 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
             let bare = ["", "H", "HP", "HIGH", "L", "LP", "LOW", "IN"].contains(&word.as_str());
             hint.inched = is_height && signed && (bare || strange);
             hint.word = (is_height && strange).then_some(word);
+            if *said == Reading::Unread && hint.word.is_none() {
+                hint.unknown = unknown_word(line, &read.height_patterns);
+            }
         }
         Reading::Mark { .. } => {}
     }
     hint
+}
+
+/// The word and the number of a line that one of these patterns fits in all but the word.
+fn unknown_word(line: &str, patterns: &[Pattern]) -> Option<(String, f64)> {
+    patterns.iter().find_map(|pattern| {
+        let groups = pattern.captures(line)?;
+        let word = groups.name("word")?.as_str().trim();
+        let number = groups.name("value")?.as_str().replace(',', ".");
+        let number = number.parse().ok()?;
+        (!word.is_empty()).then(|| (word.to_uppercase(), number))
+    })
 }
 
 /// Words that other offices write at high points.

@@ -1,5 +1,7 @@
 //! A survey in lines: what stands on top of the proposed job file.
 
+use std::collections::BTreeMap;
+
 use super::contents::Contents;
 use super::proposals::patterns;
 use crate::commands::work;
@@ -37,6 +39,7 @@ pub(super) fn head(
     lines.extend(looks(drawing, contents));
     lines.extend(at_ends(contents));
     lines.extend(texts(contents));
+    lines.extend(leaders(drawing));
     if !findings.is_empty() {
         lines.push(String::new());
         lines.push("Findings while reading:".to_owned());
@@ -197,6 +200,31 @@ fn texts(contents: &Contents) -> Vec<String> {
     if rows.len() == 1 {
         return vec![String::new(), "No texts in model space.".to_owned()];
     }
+    let mut lines = vec![String::new()];
+    lines.extend(lines_of(&rows));
+    lines
+}
+
+/// Leaders by layer; those without a text of their own point for the text at their other end.
+fn leaders(drawing: &Drawing) -> Vec<String> {
+    let mut by_layer: BTreeMap<&str, [usize; 3]> = BTreeMap::new();
+    for leader in &drawing.leaders {
+        let [all, with_text, arrows] = by_layer.entry(&leader.layer).or_default();
+        *all += 1;
+        *with_text += usize::from(!leader.texts.is_empty());
+        *arrows += leader.arrows.len();
+    }
+    if by_layer.is_empty() {
+        return Vec::new();
+    }
+    let head = ["Layer", "leaders", "tied to a text", "arrows"];
+    let mut rows = vec![head.map(str::to_owned).to_vec()];
+    rows.extend(by_layer.into_iter().map(|(layer, counts)| {
+        let name = format!("  {}", plain(layer));
+        std::iter::once(name)
+            .chain(counts.map(|count| count.to_string()))
+            .collect()
+    }));
     let mut lines = vec![String::new()];
     lines.extend(lines_of(&rows));
     lines

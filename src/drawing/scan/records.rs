@@ -148,6 +148,7 @@ impl<'a> Pass<'a> {
             // No block has this number.
             _ => u32::MAX,
         };
+        let points = self.types.points(held.type_id);
         let mut entry = Entry {
             start: held.start,
             end,
@@ -155,6 +156,7 @@ impl<'a> Pass<'a> {
             number: 0,
             block,
             is_insert,
+            is_dot: points && self.types.is(held.type_id, b"POINT"),
         };
         // A constant attribute is written nowhere but in its block's definition; any other is a form to fill in.
         let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
@@ -176,6 +178,11 @@ impl<'a> Pass<'a> {
                         block.attribute_layers.push(own_layer);
                     }
                 }
+            } else if let Some(block) = self.scan.blocks.last_mut()
+                && points
+            {
+                entry.number = to_u32(block.pointing.len()) + 1;
+                block.pointing.push(entry);
             }
             return;
         }
@@ -194,6 +201,8 @@ impl<'a> Pass<'a> {
                 }
             }
             self.scan.entries.push(entry);
+        } else if points {
+            self.scan.pointing.push(entry);
         }
     }
 }

@@ -19,7 +19,7 @@ fn every_pattern_of_the_house_compiles_and_can_match() {
             panic!("{unit}");
         };
         assert_eq!(height_patterns(unit).len(), 2);
-        assert_eq!(thickness_patterns(unit).len(), 3);
+        assert_eq!(thickness_patterns(unit).len(), 8);
         all.extend(height_patterns(unit));
         all.extend(thickness_patterns(unit));
     }

@@ -182,6 +182,7 @@ mod tests {
         let zone = |outline, thickness_m| Zone {
             outline,
             thickness_m,
+            top_m: 0.0,
         };
         let slab = Slab {
             outlines: vec![rectangle(0.0, 0.0, 10.0, 8.0)],

@@ -1,12 +1,13 @@
 //! What the drawing says of the tendon.
 
-use super::{grid, number};
+use super::{figure, grid, number, over_1000};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Point, Tendon};
 use crate::job::{HeightReading, Job};
 use crate::losses::steel;
 use crate::report::DrawingFacts;
 use crate::report::table::plain;
+use crate::units::{FORCE, FORCE_PER_WIDTH, LONG, SHORT, STEEL, STRESS, Unit};
 
 /// Heading, strands and steel, points as read.
 pub(super) fn part(
@@ -15,6 +16,8 @@ pub(super) fn part(
     tendon: &Tendon,
     result: &TendonResult,
 ) -> String {
+    let units = job.units;
+    let (long, short) = (units.of(LONG), units.of(SHORT));
     let mut text = vec![format!(
         "Calculation sheet: tendon {} of {} (handle {}, layer {})\n",
         plain(&tendon.mark),
@@ -25,12 +28,14 @@ pub(super) fn part(
     text.push(strands(job, tendon));
     if let Some(required_kn) = tendon.required_kn {
         text.push(format!(
-            "  required by its label: {required_kn:.1} kN after losses, all tendons of the line\n"
+            "  required by its label: {} after losses, all tendons of the line\n",
+            units.of(FORCE).said(required_kn, 1)
         ));
     }
     if let Some(required) = tendon.required_kn_per_m {
         text.push(format!(
-            "  required by its label: {required:.1} kN/m after losses\n"
+            "  required by its label: {} after losses\n",
+            units.of(FORCE_PER_WIDTH).said(required, 1)
         ));
     }
     let ends = tendon.ends.map(|end| match end.kind {
@@ -43,42 +48,62 @@ pub(super) fn part(
         ends[0], ends[1]
     ));
     let reading = &job.conventions.height;
+    let stepped = tendon.points.iter().any(|point| point.top_m != 0.0);
+    let step = if stepped {
+        " + top, above the top of the general slab"
+    } else {
+        ""
+    };
     text.push(format!(
         "1. Points: drawn = the drawing's number, {reading};\n   \
-         height = from the local soffit to the strands' centroid; level = height - thickness\n"
+         height = from the local soffit to the strands' centroid; level = height - thickness{step}\n"
     ));
     let rows = tendon
         .points
         .iter()
         .zip(&result.points)
         .map(|(point, worked)| {
-            vec![
+            let mut row = vec![
                 kind(point.kind).to_owned(),
-                format!("{:.3}", point.station_m),
-                format!("{:.3}", point.place.x),
-                format!("{:.3}", point.place.y),
+                long.figure(point.station_m, 3),
+                long.figure(point.place.x, 3),
+                long.figure(point.place.y, 3),
                 number(drawn(point, reading), 2),
-                number(point.height_m.map(|h| h * 1000.0), 1),
-                number(point.thickness_m.map(|t| t * 1000.0), 0),
-                number(worked.level_m.map(|l| l * 1000.0), 1),
-            ]
+                figure(short, point.height_m.map(|h| h * 1000.0), 1),
+                brief(short, point.thickness_m),
+            ];
+            if stepped {
+                row.push(brief(short, Some(point.top_m)));
+            }
+            row.push(figure(short, worked.level_m.map(|l| l * 1000.0), 1));
+            row
         })
         .collect();
-    text.push(grid(
-        1,
-        &[
-            "point",
-            "station m",
-            "x m",
-            "y m",
-            &format!("drawn {}", reading.unit.name()),
-            "height mm",
-            "thickness mm",
-            "level mm",
-        ],
-        rows,
-    ));
+    let in_unit = |words: &[&str], unit: Unit| -> Vec<String> {
+        words
+            .iter()
+            .map(|word| format!("{word} {}", unit.name))
+            .collect()
+    };
+    let mut columns = vec!["point".to_owned()];
+    columns.extend(in_unit(&["station", "x", "y"], long));
+    columns.push(format!("drawn {}", reading.unit.name()));
+    columns.extend(in_unit(&["height", "thickness"], short));
+    if stepped {
+        columns.extend(in_unit(&["top"], short));
+    }
+    columns.extend(in_unit(&["level"], short));
+    let columns: Vec<&str> = columns.iter().map(String::as_str).collect();
+    text.push(grid(1, &columns, rows));
     text.concat()
+}
+
+/// Whole millimetres mostly: decimals only where there are some.
+fn brief(short: Unit, length_m: Option<f64>) -> String {
+    length_m.map_or_else(
+        || "-".to_owned(),
+        |length_m| short.brief_figure(length_m * 1000.0, 1),
+    )
 }
 
 /// The number that stands on the drawing, in its unit.
@@ -95,20 +120,23 @@ fn strands(job: &Job, tendon: &Tendon) -> String {
     } else {
         String::new()
     };
-    match (tendon.strands, steel(tendon, &job.system)) {
+    match (tendon.strands, steel(tendon, &job.tendon)) {
         (None | Some(0), _) => "  strands: not known\n".to_owned(),
         (Some(count), Some(steel)) => {
-            let one_mm2 = steel.area_mm2 / f64::from(count);
-            let jack_kn = steel.jacking_kn(job.stressing.jacking_ratio);
+            let units = job.units;
+            let (area, stress) = (units.of(STEEL), units.of(STRESS));
             format!(
-                "  {count} strands of {one_mm2} mm2: Ap = {:.1} mm2, fpk = {} MPa, Ep = {} MPa{several}\n  \
-                 P0 = {} x {} MPa x {:.1} mm2 / 1000 = {jack_kn:.2} kN\n",
-                steel.area_mm2,
-                steel.strength_mpa,
-                steel.modulus_mpa,
+                "  {count} strands of {}: Ap = {whole}, fpk = {strength}, Ep = {}{several}\n  \
+                 P0 = {} x {strength} x {whole}{} = {}\n",
+                area.given(steel.area_mm2 / f64::from(count)),
+                stress.given(steel.modulus_mpa),
                 job.stressing.jacking_ratio,
-                steel.strength_mpa,
-                steel.area_mm2,
+                over_1000(units),
+                units
+                    .of(FORCE)
+                    .said(steel.jacking_kn(job.stressing.jacking_ratio), 2),
+                whole = area.said(steel.area_mm2, 1),
+                strength = stress.given(steel.strength_mpa),
             )
         }
         (Some(count), None) => format!("  {count} strands of a size that the job does not know\n"),

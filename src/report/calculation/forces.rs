@@ -1,27 +1,27 @@
 //! Draw-in, elastic shortening, long-term loss, the forces that are left, and the extension.
 
 use super::drawn::kind;
-use super::{grid, number};
+use super::{figure, grid, methods, number, over_1000};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Tendon};
 use crate::job::Job;
-use crate::losses::{Forces, LaterLosses};
+use crate::losses::Forces;
+use crate::units::{FORCE, LONG, SHORT, STEEL, STRESS, Units, WORK};
 
 /// Everything after jacking.
 pub(super) fn part(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
     let mut parts = vec![draw_in(job, tendon, forces, result)];
-    match &forces.later {
-        Some(later) => {
-            parts.push(shortening(job, forces, later, result));
-            parts.push(long_term(job, forces, later, result));
-        }
-        None => parts.push(
-            "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
-                .to_owned(),
-        ),
-    }
-    parts.push(left(tendon, forces, result));
+    parts.push(if forces.later.is_some() {
+        methods::drawn(job, result)
+    } else {
+        "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
+            .to_owned()
+    });
+    parts.push(left(tendon, forces, result, job.units));
     parts.push(extension(job, forces));
+    parts.push(methods::others(result, job.units));
+    parts.push(methods::side_by_side(tendon, result, job.units));
+    parts.retain(|part| !part.is_empty());
     parts.join("\n")
 }
 
@@ -32,13 +32,19 @@ fn stiffness_kn(forces: &Forces) -> f64 {
 
 fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
     let stiffness_kn = stiffness_kn(forces);
+    let units = job.units;
+    let (force, long) = (units.of(FORCE), units.of(LONG));
     let mut text = vec![format!(
         "4. Lock-off: PA exp(+phi) from the anchor until it meets the earlier curve; area between the curves = draw-in x E A\n  \
-         E A = {} MPa x {:.1} mm2 / 1000 = {stiffness_kn:.1} kN; area = {} mm x E A = {:.3} kN m\n",
-        forces.steel.modulus_mpa,
-        forces.steel.area_mm2,
-        job.stressing.draw_in_m * 1000.0,
-        job.stressing.draw_in_m * stiffness_kn
+         E A = {} x {}{} = {}; area = {} x E A = {}\n",
+        units.of(STRESS).given(forces.steel.modulus_mpa),
+        units.of(STEEL).said(forces.steel.area_mm2, 1),
+        over_1000(units),
+        force.said(stiffness_kn, 1),
+        units.of(SHORT).given(job.stressing.draw_in_m * 1000.0),
+        units
+            .of(WORK)
+            .said(job.stressing.draw_in_m * stiffness_kn, 3)
     )];
     for (index, end) in forces.ends.iter().enumerate() {
         let point = if index == 0 {
@@ -49,15 +55,17 @@ fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -
         let locked = point.and_then(|point| point.forces_kn[1]);
         if end.kind == EndKind::Live {
             text.push(format!(
-                "  {}: PA = {} kN ({} of fpk), felt over {} m{}\n",
-                station(tendon, index),
-                number(locked, 2),
+                "  anchor at station {}: PA = {} {} ({} of fpk), felt over {} {}{}\n",
+                long.said([0.0, tendon.path.length_m()][index], 3),
+                figure(force, locked, 2),
+                force.name,
                 number(
                     locked
                         .map(|kn| kn * 1000.0 / forces.steel.area_mm2 / forces.steel.strength_mpa),
                     4
                 ),
-                number(end.draw_in_reach_m, 3),
+                figure(long, end.draw_in_reach_m, 3),
+                long.name,
                 if end.draw_in_reaches_far {
                     ", as far as the other end or its draw-in"
                 } else {
@@ -69,67 +77,15 @@ fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -
     text.concat()
 }
 
-fn station(tendon: &Tendon, end: usize) -> String {
-    format!(
-        "anchor at station {:.3} m",
-        if end == 0 {
-            0.0
-        } else {
-            tendon.path.length_m()
-        }
-    )
-}
-
-fn shortening(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
-    let long_term = &job.long_term;
-    format!(
-        "5. Elastic shortening: share x (Ep / Eci) x sigma_c = {} x ({} / {}) x {} = {:.3} MPa\n  \
-         sigma_c = {} MPa: {}\n",
-        long_term.shortening_share,
-        forces.steel.modulus_mpa,
-        long_term.concrete_modulus_transfer_mpa,
-        number(result.concrete_stress_mpa, 4),
-        later.shortening_mpa,
-        number(result.concrete_stress_mpa, 4),
-        if long_term.concrete_stress_mpa.is_some() {
-            "given by the job"
-        } else {
-            "mean along the tendon of the floor's lock-off forces over the slab's sections in this direction"
-        }
-    )
-}
-
-fn long_term(job: &Job, forces: &Forces, later: &LaterLosses, result: &TendonResult) -> String {
-    let long_term = &job.long_term;
-    format!(
-        "6. Long-term loss, method direct\n  \
-         shrinkage: Ep x strain = {modulus} x {} = {:.3} MPa\n  \
-         creep: (Ep / Ec) x coefficient x sigma_c = ({modulus} / {}) x {} x {} = {:.3} MPa\n  \
-         relaxation: {} x {} of the stress after lock-off at each place; mean along the tendon {:.3} MPa\n",
-        long_term.shrinkage_strain,
-        later.shrinkage_mpa,
-        long_term.concrete_modulus_mpa,
-        long_term.creep_coefficient,
-        number(result.concrete_stress_mpa, 4),
-        later.creep_mpa,
-        long_term.relaxation_1000h,
-        long_term.relaxation_factor,
-        later.relaxation_mpa,
-        modulus = forces.steel.modulus_mpa,
-    )
-}
-
-fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
+fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult, units: Units) -> String {
+    let (force, long) = (units.of(FORCE), units.of(LONG));
     let rows = tendon
         .points
         .iter()
         .zip(&result.points)
         .map(|(point, worked)| {
-            let mut row = vec![
-                kind(point.kind).to_owned(),
-                format!("{:.3}", point.station_m),
-            ];
-            row.extend(worked.forces_kn.map(|force_kn| number(force_kn, 2)));
+            let mut row = vec![kind(point.kind).to_owned(), long.figure(point.station_m, 3)];
+            row.extend(worked.forces_kn.map(|force_kn| figure(force, force_kn, 2)));
             row.push(number(
                 worked.forces_kn[3].map(|service_kn| service_kn / forces.jack_kn),
                 4,
@@ -137,12 +93,12 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
             row
         })
         .collect();
-    let mut text = vec!["7. Forces, kN per tendon\n".to_owned()];
+    let mut text = vec![format!("7. Forces, {} per tendon\n", force.name)];
     text.push(grid(
         1,
         &[
             "point",
-            "station m",
+            &format!("station {}", long.name),
             "jacking",
             "lock-off",
             "transfer",
@@ -152,30 +108,37 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
         rows,
     ));
     text.push(format!(
-        "  mean service force along the tendon: {} kN\n",
-        number(forces.later.map(|later| later.mean_service_kn), 2)
+        "  mean service force along the tendon: {} {}\n",
+        figure(force, forces.later.map(|later| later.mean_service_kn), 2),
+        force.name
     ));
     text.concat()
 }
 
 fn extension(job: &Job, forces: &Forces) -> String {
     let stiffness_kn = stiffness_kn(forces);
+    let units = job.units;
+    let short = units.of(SHORT);
     let mut text = vec!["8. Extension: integral of P ds / (E A), from the jack to the point of least force; net = gross - draw-in\n"
             .to_owned()];
     for (end, name) in forces.ends.iter().zip(["station 0", "the last station"]) {
         if let (Some(gross_mm), Some(net_mm)) = (end.extension_mm, end.extension_net_mm) {
             text.push(format!(
-                "  at {name}: {:.2} kN m / {stiffness_kn:.1} kN = {gross_mm:.1} mm gross; - {} mm = {net_mm:.1} mm net\n",
-                gross_mm / 1000.0 * stiffness_kn,
-                job.stressing.draw_in_m * 1000.0
+                "  at {name}: {} / {} = {} gross; - {} = {} net\n",
+                units.of(WORK).said(gross_mm / 1000.0 * stiffness_kn, 2),
+                units.of(FORCE).said(stiffness_kn, 1),
+                short.said(gross_mm, 1),
+                short.given(job.stressing.draw_in_m * 1000.0),
+                short.said(net_mm, 1)
             ));
         }
     }
     if forces.ends.iter().all(|end| end.kind == EndKind::Live) {
         let total_mm: f64 = forces.ends.iter().filter_map(|end| end.extension_mm).sum();
         text.push(format!(
-            "  both jacks pull together; the two add up to {total_mm:.1} mm gross; with one jack moved from end to end \
-             the first pull is longer and the second shorter\n"
+            "  both jacks pull together; the two add up to {} gross; with one jack moved from end to end the first \
+             pull is longer and the second shorter\n",
+            short.said(total_mm, 1)
         ));
     }
     text.push("  strand between anchor and jack is not in these figures\n".to_owned());

@@ -3,6 +3,7 @@
 use crate::floor::{EndKind, PointKind, Run};
 use crate::report::plain;
 use crate::report::record::EndRecord;
+use crate::units::Unit;
 
 /// A text cell. A spreadsheet runs a cell that begins as a formula does, and this text may come from the drawing: an
 /// apostrophe keeps it text. Control characters are written out, line ends kept.
@@ -28,6 +29,11 @@ pub(super) fn rounded(value: Option<f64>, decimals: usize) -> String {
             cell
         }
     })
+}
+
+/// A number cell in this unit, empty where the number is not known.
+pub(super) fn figure(unit: Unit, value: Option<f64>, decimals: usize) -> String {
+    value.map_or(String::new(), |value| unit.figure(value, decimals))
 }
 
 /// Banded or distributed.
@@ -58,14 +64,17 @@ pub(super) fn point_kind(kind: PointKind) -> &'static str {
 }
 
 /// Header and rows as a table.
-pub(super) fn written(header: &[&str], rows: impl Iterator<Item = Vec<String>>) -> String {
+pub(super) fn written<S: AsRef<str>>(
+    header: &[S],
+    rows: impl Iterator<Item = Vec<String>>,
+) -> String {
     let mut writer = ::csv::WriterBuilder::new()
         .terminator(::csv::Terminator::CRLF)
         .flexible(true)
         .from_writer(Vec::new());
     // Writing into memory cannot fail, and rows of any length are taken.
     let mut write = |row: &mut dyn Iterator<Item = &str>| writer.write_record(row).ok();
-    write(&mut header.iter().copied());
+    write(&mut header.iter().map(AsRef::as_ref));
     for row in rows {
         write(&mut row.iter().map(String::as_str));
     }
@@ -100,7 +109,7 @@ mod tests {
             "say \"x\"".to_owned(),
             "two\nlines".to_owned(),
         ];
-        let made = written(&["p", "q", "r"], std::iter::once(row));
+        let made = written(&["p", "q", "r"].map(str::to_owned), std::iter::once(row));
         assert_eq!(
             made,
             "p,q,r\r\n\"a,b\",\"say \"\"x\"\"\",\"two\nlines\"\r\n"

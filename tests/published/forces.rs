@@ -1,4 +1,4 @@
-//! Published figures and independent computations, each with its source and tolerance.
+//! Profile, friction, draw-in, extension.
 
 use geo::Coord;
 use tautplan::floor::{End, EndKind, Point, PointKind, Run, Tendon};
@@ -7,6 +7,7 @@ use tautplan::job::Profiling;
 use tautplan::losses::{Friction, Steel, Stressed, force_kn, loss_kn};
 use tautplan::profile::{Profile, Span, build};
 
+use crate::near;
 use EndKind::{Dead, Live};
 
 /// Straight tendon through points (kind, station, level above the soffit), in a slab of this thickness; metres.
@@ -21,6 +22,7 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
     Tendon {
         mark: "T1".to_owned(),
         mark_drawn: true,
+        made: false,
         handle: "1".to_owned(),
         layer: "TENDON-BANDED".to_owned(),
         run: Run::Banded,
@@ -39,7 +41,9 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
                 place: at(station_m - start_m),
                 drawn_m: None,
                 height_m: Some(height_m),
+                other_soffit_m: None,
                 thickness_m: Some(thickness_m),
+                top_m: 0.0,
             })
             .collect(),
     }
@@ -51,14 +55,6 @@ fn curve(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Profile {
         fit_inflection: false,
     };
     build(&tendon(points, thickness_m), &profiling).expect("every level is known")
-}
-
-fn near(found: f64, published: f64, relative: f64) {
-    assert!(
-        ((found - published) / published).abs() <= relative,
-        "found {found}, published {published}, off by {:.2e}",
-        (found - published) / published
-    );
 }
 
 /// Half circle of 5 m in plan, level: EDF R&D, `Code_Aster` validation case `ZZZZ347f` (references marked analytic).

@@ -1,0 +1,214 @@
+//! One tendon by every method of long-term loss that the job names.
+
+use std::collections::BTreeMap;
+
+use super::{Refusal, TendonResult};
+use crate::checks::standards::MethodStress;
+use crate::finding::{Finding, Level, Rule};
+use crate::floor::Tendon;
+use crate::job::{LongTerm, LongTermMethod};
+use crate::losses::long_term::{Case, Lost, Method, Place, When};
+use crate::losses::{Along, Effective, NoForce};
+
+/// See its meaning.
+pub(super) static METHOD_WITHOUT_LOSS: Rule = Rule {
+    name: "method-without-loss",
+    meaning: "Every method of long-term loss that the job names covers the job's concrete, ages, humidity and thickness and \
+              the tendon's stress; where a clause does not, it is named, and there is no force by that method.",
+};
+
+/// Days after stressing at which the force is shown, before the final.
+pub const DAYS: [f64; 5] = [1.0, 7.0, 28.0, 90.0, 365.0];
+
+/// A tendon by one method.
+#[derive(Debug, Clone)]
+pub struct MethodResult {
+    /// The method.
+    pub method: LongTermMethod,
+    /// What it gives, or why nothing.
+    pub outcome: Result<MethodForces, NoForce>,
+}
+
+/// What a method gives.
+#[derive(Debug, Clone, PartialEq)]
+pub struct MethodForces {
+    /// The method, made for this tendon: its working comes from it.
+    pub made: Method,
+    /// The mean of the tendon's places, where the working is shown.
+    pub mean: Place,
+    /// The mean of the losses along the tendon, MPa.
+    pub lost: Lost,
+    /// Mean service force along the tendon, kN.
+    pub mean_service_kn: f64,
+    /// Service force at each of the tendon's points, kN.
+    pub service_kn: Vec<f64>,
+    /// Mean force some days after stressing, in the order of [`DAYS`], kN; `None` where the method knows no time.
+    pub in_time_kn: [Option<f64>; DAYS.len()],
+    /// Mean force in the end, kN.
+    pub final_kn: Option<f64>,
+}
+
+/// How far the methods lie apart on one tendon.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Spread {
+    /// The method that leaves least.
+    pub least: LongTermMethod,
+    /// Its mean service force, kN.
+    pub least_kn: f64,
+    /// The method that leaves most.
+    pub greatest: LongTermMethod,
+    /// Its mean service force, kN.
+    pub greatest_kn: f64,
+    /// The difference over the drawn method's mean service force.
+    pub ratio: f64,
+}
+
+impl TendonResult {
+    /// The spread between the methods; `None` where fewer than two give a force, or the drawn one gives none.
+    pub fn spread(&self) -> Option<Spread> {
+        let drawn_kn = self
+            .by_method
+            .first()?
+            .outcome
+            .as_ref()
+            .ok()?
+            .mean_service_kn;
+        let mut means: Vec<(LongTermMethod, f64)> = self
+            .by_method
+            .iter()
+            .filter_map(|one| Some((one.method, one.outcome.as_ref().ok()?.mean_service_kn)))
+            .collect();
+        means.sort_by(|a, b| a.1.total_cmp(&b.1));
+        let [(least, least_kn), .., (greatest, greatest_kn)] = means[..] else {
+            return None;
+        };
+        Some(Spread {
+            least,
+            least_kn,
+            greatest,
+            greatest_kn,
+            ratio: (greatest_kn - least_kn) / drawn_kn,
+        })
+    }
+}
+
+/// When the job asks for the service force.
+pub(super) fn asked(job: &LongTerm) -> When {
+    job.published.asked_days.map_or(When::Final, When::Age)
+}
+
+/// The tendon by each of the job's methods, the drawn one, worked out already, first.
+pub(super) fn by_each(
+    tendon: &Tendon,
+    along: &Along<'_, '_>,
+    job: &LongTerm,
+    case: &Case,
+    drawn: &Result<Effective<'_>, NoForce>,
+) -> Vec<MethodResult> {
+    let work = |method: LongTermMethod| {
+        let mean_kn = |when| {
+            let at = Effective::new(along, job, method, case, when).ok()?;
+            Some(at.mean_service_kn())
+        };
+        let effective = if method == job.method {
+            drawn.clone()?
+        } else {
+            Effective::new(along, job, method, case, asked(job))?
+        };
+        let knows_time = matches!(method, LongTermMethod::En1992 | LongTermMethod::As3600);
+        let stressing_days = job.published.stressing_days;
+        let stations = tendon.points.iter().map(|point| point.station_m);
+        Ok(MethodForces {
+            made: effective.method(),
+            mean: effective.mean_place(),
+            lost: effective.mean_lost(),
+            mean_service_kn: effective.mean_service_kn(),
+            service_kn: stations
+                .map(|station_m| effective.service_kn(station_m))
+                .collect(),
+            in_time_kn: DAYS.map(|days| {
+                let when = When::Age(stressing_days + days);
+                if knows_time { mean_kn(when) } else { None }
+            }),
+            final_kn: match asked(job) {
+                When::Final => Some(effective.mean_service_kn()),
+                When::Age(_) => mean_kn(When::Final),
+            },
+        })
+    };
+    let named = job.all_methods().into_iter();
+    named
+        .map(|method| MethodResult {
+            method,
+            outcome: work(method),
+        })
+        .collect()
+}
+
+/// The greatest stresses after lock-off, anywhere, and in service, at the tendon's points, by each method that gives a loss.
+pub(super) fn stresses(tendon: &Tendon, result: &TendonResult) -> Vec<MethodStress> {
+    let Some(steel) = result.forces.as_ref().map(|forces| forces.steel) else {
+        return Vec::new();
+    };
+    let greatest = |places: &mut dyn Iterator<Item = (f64, f64)>| {
+        let place = places.max_by(|a, b| a.1.total_cmp(&b.1))?;
+        Some((place.0, steel.stress_mpa(place.1)))
+    };
+    let mut lockoff = result
+        .samples
+        .iter()
+        .filter_map(|sample| Some((sample.station_m, sample.forces_kn[1]?)));
+    let Some((station_m, lockoff_mpa)) = greatest(&mut lockoff) else {
+        return Vec::new();
+    };
+    let of = |one: &MethodResult| {
+        let forces = one.outcome.as_ref().ok()?;
+        let stations = tendon.points.iter().map(|point| point.station_m);
+        let mut service = stations.zip(forces.service_kn.iter().copied());
+        Some(MethodStress {
+            method: one.method,
+            transfer: (station_m, lockoff_mpa - forces.lost.shortening_mpa),
+            service: greatest(&mut service)?,
+        })
+    };
+    result.by_method.iter().filter_map(of).collect()
+}
+
+/// A finding for each reason why a method beside the drawn one gives no loss, with the tendons that it holds for.
+pub(super) fn without_loss(tendons: &[Tendon], results: &[TendonResult]) -> Vec<Finding> {
+    let mut reasons: BTreeMap<(LongTermMethod, String), Vec<&str>> = BTreeMap::new();
+    for (tendon, result) in tendons.iter().zip(results) {
+        for other in result.by_method.iter().skip(1) {
+            if let Err(reason) = &other.outcome {
+                let key = (other.method, reason.to_string());
+                reasons.entry(key).or_default().push(&tendon.mark);
+            }
+        }
+    }
+    reasons
+        .into_iter()
+        .map(|((method, reason), marks)| {
+            let first = marks.first().copied().unwrap_or_default();
+            let on = match marks.len() {
+                1 => first.to_owned(),
+                count => format!("{count} tendons, the first of them {first}"),
+            };
+            let text = format!(
+                "{}: {reason}; no force by this method on {on}",
+                method.word()
+            );
+            Finding::new(&METHOD_WITHOUT_LOSS, Level::Warning, text, REMEDY)
+        })
+        .collect()
+}
+
+/// What to do where a method gives no loss.
+pub(super) const REMEDY: &str = "correct the key of [long_term] that the clause speaks of, or name a method that covers the job";
+
+/// Why a tendon has no forces by the drawn method.
+pub(super) fn refusal(method: LongTermMethod, reason: NoForce) -> Refusal {
+    match reason {
+        NoForce::Stress(reason) => reason.into(),
+        NoForce::Loss(reason) => Refusal::Method(method, reason),
+    }
+}

@@ -1,0 +1,136 @@
+//! Labels that say by an arrow, a stroke or a tick which tendon is theirs.
+
+use super::arrows::{Arrows, Pointed};
+use super::index::Foot;
+use super::lines::Line;
+use super::readings::MarkText;
+use super::rules::{LABEL_SHARED, LEADER_ASTRAY};
+use crate::drawing::Text;
+use crate::finding::{Finding, Level};
+
+/// The places on tendons, one for each tendon, of which a label means one.
+pub(super) type Aim = Vec<Foot>;
+
+/// What a pairing costs less for being pointed out.
+pub(super) const AIMED: f64 = 1.5;
+
+/// Labels, each with its aim if it has one; a label that points at several tendons is here once for each.
+pub(super) struct Aimed<'a, R> {
+    pub(super) texts: Vec<&'a Text>,
+    pub(super) readings: Vec<R>,
+    pub(super) aims: Vec<Option<Aim>>,
+    pub(super) findings: Vec<Finding>,
+    /// Labels whose arrow points at no tendon: nobody gets them.
+    pub(super) astray: Vec<(&'a Text, R)>,
+}
+
+/// Gives labels their aims; `share` makes a label's reading that of one of several tendons, given its number from 1 and
+/// how many there are.
+pub(super) fn aimed<'a, R: Clone>(
+    labels: Vec<(&'a Text, R)>,
+    arrows: &Arrows,
+    share: impl Fn(&R, usize, usize) -> R,
+) -> Aimed<'a, R> {
+    let mut aimed = Aimed {
+        texts: Vec::with_capacity(labels.len()),
+        readings: Vec::with_capacity(labels.len()),
+        aims: Vec::with_capacity(labels.len()),
+        findings: Vec::new(),
+        astray: Vec::new(),
+    };
+    for (text, reading) in labels {
+        let Some(pointed) = arrows.of(text) else {
+            aimed.put(text, reading, None);
+            continue;
+        };
+        aimed.findings.extend(astray(text, pointed));
+        match pointed.aims.as_slice() {
+            [] => aimed.astray.push((text, reading)),
+            [aim] => aimed.put(text, reading, Some(aim.clone())),
+            several => {
+                for (aim, number) in several.iter().zip(1..) {
+                    let part = share(&reading, number, several.len());
+                    aimed.put(text, part, Some(aim.clone()));
+                }
+            }
+        }
+    }
+    aimed
+}
+
+impl<'a, R> Aimed<'a, R> {
+    fn put(&mut self, text: &'a Text, reading: R, aim: Option<Aim>) {
+        self.texts.push(text);
+        self.readings.push(reading);
+        self.aims.push(aim);
+    }
+}
+
+fn astray(text: &Text, pointed: &Pointed) -> Option<Finding> {
+    let (why, place) = pointed.astray.as_ref()?;
+    let outcome = if pointed.aims.is_empty() {
+        "no tendon was given the label"
+    } else {
+        "only the other tendons were given the label"
+    };
+    Some(
+        Finding::new(
+            &LEADER_ASTRAY,
+            Level::Warning,
+            format!("the leader of label {:?} {why}; {outcome}", text.content),
+            "draw the leader's tip onto its tendon, or give a greater `arrow_reach_mm` in the job file's [labels] table",
+        )
+        .at_place(*place),
+    )
+}
+
+/// What a mark that points at several lines says of one of them: of `3x5-12.7` on three lines each stands for one
+/// tendon, and their marks are numbered.
+pub(super) fn share_of(whole: &MarkText, number: usize, of: usize) -> MarkText {
+    let shared = whole
+        .tendons
+        .is_some_and(|tendons| usize::try_from(tendons) == Ok(of));
+    MarkText {
+        mark: whole.mark.as_ref().map(|mark| format!("{mark}.{number}")),
+        tendons: if shared { Some(1) } else { whole.tendons },
+        ..whole.clone()
+    }
+}
+
+/// Marks that were numbered because their label points at several lines.
+pub(super) fn shared(aimed: &Aimed<'_, MarkText>, lines: &[Line]) -> Vec<Finding> {
+    let mut findings = Vec::new();
+    let mut at = 0;
+    while let Some(text) = aimed.texts.get(at) {
+        let rest = aimed.texts.get(at..).unwrap_or_default();
+        let run = rest.iter().take_while(|other| std::ptr::eq(**other, *text));
+        let count = run.count();
+        let parts = aimed.readings.get(at..at + count).unwrap_or_default();
+        let aims = aimed.aims.get(at..at + count).unwrap_or_default();
+        if count > 1 && parts.iter().any(|part| part.mark.is_some()) {
+            let said: Vec<String> = parts
+                .iter()
+                .zip(aims)
+                .filter_map(|(part, aim)| {
+                    let line = lines.get(aim.as_ref()?.first()?.line)?;
+                    Some(format!("{} (line {})", part.mark.as_ref()?, line.handle))
+                })
+                .collect();
+            findings.push(
+                Finding::new(
+                    &LABEL_SHARED,
+                    Level::Note,
+                    format!(
+                        "label {:?} points at {count} lines, which are called {}",
+                        text.content,
+                        said.join(", ")
+                    ),
+                    "give each line a mark of its own if they must be told apart otherwise",
+                )
+                .at_place(text.place),
+            );
+        }
+        at += count.max(1);
+    }
+    findings
+}

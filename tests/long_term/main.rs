@@ -1,0 +1,6 @@
+//! Long-term loss: laws of the formulas and of the methods made of them, and several methods in one run.
+
+mod formulas;
+mod methods;
+mod side_by_side;
+mod sweep;
