@@ -3,9 +3,9 @@
 use geo::Coord;
 
 use super::aims::Aim;
+use super::columns::Columns;
 use super::index::{Foot, Index};
 use super::lines::{Line, axis_rad};
-use super::missing::Columns;
 use super::settle::Pairing;
 use super::types::Run;
 use crate::drawing::Text;

@@ -2,9 +2,9 @@
 
 use super::heights::{Doubt, Settled};
 use super::index::Index;
+use super::lacks::Stray;
 use super::lines::Line;
 use super::marks::Marks;
-use super::missing::Stray;
 use super::points::words;
 use super::readings::{HeightText, Word};
 use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
