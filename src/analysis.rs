@@ -21,7 +21,7 @@ use crate::floor::{Floor, PointKind, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
-use crate::losses::{Along, Effective, Forces, Stressed, steel, turns};
+use crate::losses::{Along, Effective, Forces, Pulls, first_end, steel, turns};
 use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
@@ -74,7 +74,8 @@ pub struct TendonResult {
     pub turning: Option<Turning>,
     /// At each of the tendon's points.
     pub points: Vec<PointResult>,
-    /// Between the points too, close enough to draw: stations, places, levels and forces at every stage.
+    /// Between the points too, close enough to draw: stations, places, levels and forces at every stage. An intermediate
+    /// anchor has two, one for each of the segments that meet there.
     pub samples: Vec<Sample>,
     /// Mean concrete stress used, MPa.
     pub concrete_stress_mpa: Option<f64>,
@@ -89,7 +90,8 @@ pub struct PointResult {
     pub angle_rad: Option<f64>,
     /// Level above the top of the slab, metres: as drawn, for a support too.
     pub level_m: Option<f64>,
-    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known; at a bend, the least in it.
+    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known; at a bend, the least in it,
+    /// at an intermediate anchor, the lesser of its two sides.
     pub forces_kn: [Option<f64>; 4],
 }
 
@@ -119,7 +121,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         .par_iter()
         .map(|tendon| Ok(profile::build(tendon, &job.profile)?))
         .collect();
-    let stressed: Vec<Result<Stressed<'_>, Refusal>> = tendons
+    let stressed: Vec<Result<Pulls<'_>, Refusal>> = tendons
         .par_iter()
         .zip(&curves)
         .map(|(tendon, curve)| stress(tendon, curve.as_ref().map_err(Clone::clone)?, job))
@@ -194,23 +196,30 @@ pub fn work_tendon(
     )
 }
 
-/// Jacks a tendon and locks it off.
+/// Jacks a tendon and locks it off, pull by pull.
 ///
 /// # Errors
 /// [`Refusal`] says what is not known, or why there is no force.
-pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Stressed<'p>, Refusal> {
+pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Pulls<'p>, Refusal> {
     let steel = steel(tendon, &job.tendon).ok_or(Refusal::SteelUnknown)?;
     let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
         return Err(Refusal::EndUnknown);
     };
-    Ok(Stressed::new(curve, steel, [start, end], &job.stressing)?)
+    let first_end = first_end(tendon, &job.stressing.first_pour);
+    Ok(Pulls::new(
+        curve,
+        steel,
+        [start, end],
+        first_end,
+        &job.stressing,
+    )?)
 }
 
 /// Mean concrete stress of each tendon, MPa: the job's, or from the slab's sections.
 fn concrete_stresses(
     floor: &Floor,
     job: &Job,
-    stressed: &[Result<Stressed<'_>, Refusal>],
+    stressed: &[Result<Pulls<'_>, Refusal>],
 ) -> Vec<Option<f64>> {
     let tendons = &floor.tendons;
     if let Some(given_mpa) = job.long_term.concrete_stress_mpa {
@@ -227,7 +236,7 @@ fn concrete_stresses(
         .map(|(index, (tendon, stressed))| {
             stressed.as_ref().map_or_else(
                 |_| Vec::new(),
-                |stressed| sections.crossings(index, &tendon.path, tendon.tendons, stressed),
+                |pulls| sections.crossings(index, &tendon.path, tendon.tendons, pulls),
             )
         })
         .collect();
@@ -239,13 +248,13 @@ fn finish(
     tendon: &Tendon,
     job: &Job,
     curve: Option<&Profile>,
-    stressed: Result<&Stressed<'_>, Refusal>,
+    stressed: Result<&Pulls<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
     turn: Turn,
 ) -> (TendonResult, Option<Refusal>) {
     let jacked = stressed.as_ref().ok().copied();
     let long_term = &job.long_term;
-    let along = stressed.map(|stressed| Along::new(stressed, tendon));
+    let along = stressed.map(|pulls| Along::new(pulls, tendon));
     let known = along.as_ref().map_err(Clone::clone).and_then(|along| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
         Ok((along, along.case(long_term, stress_mpa, turn)))
@@ -258,17 +267,22 @@ fn finish(
         drawn.map_err(|reason| by_method::refusal(method, reason))
     });
     // Jacking and lock-off ask nothing of the concrete.
+    let only_jacked = |[jacking_kn, lockoff_kn]: [f64; 2]| [Some(jacking_kn), Some(lockoff_kn), None, None];
     let forces_kn = |station_m| match (&effective, jacked) {
         (Ok(effective), _) => effective.forces_kn(station_m).map(Some),
-        (Err(_), Some(jacked)) => {
-            let [jacking_kn, lockoff_kn] = jacked.both_kn(station_m);
-            [Some(jacking_kn), Some(lockoff_kn), None, None]
-        }
+        (Err(_), Some(jacked)) => only_jacked(jacked.both_kn(station_m)),
         (Err(_), None) => [None; 4],
+    };
+    let sides_kn = |station_m| -> Vec<[Option<f64>; 4]> {
+        match (&effective, jacked) {
+            (Ok(effective), _) => effective.sides_kn(station_m).map(|kn| kn.map(Some)).collect(),
+            (Err(_), Some(jacked)) => jacked.sides_kn(station_m).map(only_jacked).collect(),
+            (Err(_), None) => vec![[None; 4]],
+        }
     };
     let forces = match &effective {
         Ok(effective) => Some(effective.forces()),
-        Err(_) => jacked.map(Stressed::forces),
+        Err(_) => jacked.map(Pulls::forces),
     };
     let points = tendon
         .points
@@ -282,11 +296,14 @@ fn finish(
     let samples = curve.map_or_else(Vec::new, |curve| {
         samples::stations(tendon)
             .into_iter()
-            .map(|station_m| Sample {
-                station_m,
-                place: tendon.path.place_at(station_m),
-                level_m: curve.level_m(station_m),
-                forces_kn: forces_kn(station_m),
+            .flat_map(|station_m| {
+                let sample = move |forces_kn| Sample {
+                    station_m,
+                    place: tendon.path.place_at(station_m),
+                    level_m: curve.level_m(station_m),
+                    forces_kn,
+                };
+                sides_kn(station_m).into_iter().map(sample)
             })
             .collect()
     });

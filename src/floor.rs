@@ -13,6 +13,7 @@ mod groups;
 mod habits;
 mod heights;
 mod index;
+mod joints;
 mod labels;
 mod lacks;
 mod layers;
@@ -45,5 +46,7 @@ pub use assemble::read;
 pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line};
 pub use rules::RULES;
 pub use symbols::{EndWords, Figure, figures};
-pub use types::{End, EndKind, Faces, Floor, Point, PointKind, Run, Slab, Tendon, Zone};
+pub use types::{
+    End, EndKind, Faces, Floor, Point, PointKind, PourJoint, Run, Slab, Tendon, Zone,
+};
 pub use zone_texts::{ZoneText, thickness_of_line, zone_text_of_line};

@@ -69,6 +69,7 @@ impl Meant {
             strand: Some("12.7".to_owned()),
             required_kn: None,
             required_kn_per_m: None,
+            joints: Vec::new(),
             ends: [end(path.place_at(0.0)), end(path.place_at(path.length_m()))],
             points: points
                 .into_iter()

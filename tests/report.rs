@@ -33,6 +33,7 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [(ends[0], 0.0), (ends[1], 10.0)].map(|(kind, x)| End {
             kind,
             place: at(x, y),

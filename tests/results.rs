@@ -34,6 +34,7 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [places[0], places[places.len() - 1]].map(|place| End {
             kind: Some(EndKind::Live),
             place,

@@ -43,6 +43,7 @@ pub(super) fn along(path: Path) -> Tendon {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [
             end(EndKind::Live, path.start()),
             end(EndKind::Dead, path.end()),

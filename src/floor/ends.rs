@@ -26,6 +26,8 @@ enum Doubt {
     Unsaid(String),
     /// One symbol says live, another dead.
     Differ([String; 2]),
+    /// An intermediate anchor of this name stands there.
+    GoesOn(String),
 }
 
 const SIGNS: [Sign; 7] = [
@@ -137,7 +139,7 @@ fn matched(
 }
 
 /// A symbol's extent.
-struct Around {
+pub(super) struct Around {
     place: Coord<f64>,
     outline: Option<Polygon<f64>>,
     /// From its place to its farthest corner, metres.
@@ -145,7 +147,7 @@ struct Around {
 }
 
 impl Around {
-    fn new(symbol: &Symbol<'_>) -> Self {
+    pub(super) fn new(symbol: &Symbol<'_>) -> Self {
         let corners = symbol.corners.iter().flatten();
         Self {
             place: symbol.place,
@@ -158,7 +160,7 @@ impl Around {
         }
     }
 
-    fn gap_m(&self, place: Coord<f64>) -> f64 {
+    pub(super) fn gap_m(&self, place: Coord<f64>) -> f64 {
         match &self.outline {
             Some(outline) => Euclidean.distance(&Point(place), outline),
             None => distance_m(place, self.place),
@@ -195,6 +197,17 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
     }
 }
 
+impl Told {
+    /// Whether the end's kind is known; if nothing at all is said of it, it goes on through an intermediate anchor of this
+    /// name.
+    pub(super) fn known_or_goes_on(&mut self, anchor: &str) -> bool {
+        if self.end.kind.is_none() && self.doubt.is_none() {
+            self.doubt = Some(Doubt::GoesOn(anchor.to_owned()));
+        }
+        self.end.kind.is_some()
+    }
+}
+
 /// One finding for each end of a tendon whose kind is not known.
 pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64) -> Vec<Finding> {
     ends.iter()
@@ -214,6 +227,11 @@ pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64)
                         format!("block {block} marks this end, but no attribute and no word within {reach} says whether it is live or dead")
                     }),
                     "name the block among the live or dead ones in the job file, or its attribute's or text's word in live_words or dead_words",
+                ),
+                Some(Doubt::GoesOn(anchor)) => (
+                    &END_UNKNOWN,
+                    Wording::from(format!("intermediate anchor {anchor} stands at this end: the tendon is drawn up to here only and goes on in another pour, so nobody can say from where it is stressed")),
+                    "draw the tendon through its intermediate anchor to its far end, on one layer, or give the drawing of the whole tendon; if it ends at this joint, put a live or dead end symbol there instead",
                 ),
                 None => (
                     &END_UNKNOWN,

@@ -12,6 +12,7 @@ pub const RULES: &[&Rule] = &[
     &FACE_UNKNOWN,
     &GROUP_MISFIT,
     &HEIGHT_MISSING,
+    &JOINT_UNCLAIMED,
     &LABEL_AMBIGUOUS,
     &LABEL_SHARED,
     &LABEL_UNCLAIMED,
@@ -86,6 +87,12 @@ pub(super) const HEIGHT_MISSING: Rule = Rule {
     meaning: "A tendon has no height where its neighbours, a column or an unclaimed label say that one belongs.",
 };
 
+/// An intermediate anchor that divides no tendon.
+pub(super) const JOINT_UNCLAIMED: Rule = Rule {
+    name: "joint-unclaimed",
+    meaning: "An intermediate anchor's symbol stands on no tendon, on several equally well, or at an end that has its own symbol: it divides none.",
+};
+
 /// A label that might as well belong elsewhere.
 pub(super) const LABEL_AMBIGUOUS: Rule = Rule {
     name: "label-ambiguous",
@@ -149,7 +156,7 @@ pub(super) const PIECES_MEET: Rule = Rule {
 /// A gap in a tendon.
 pub(super) const PIECES_BRIDGED: Rule = Rule {
     name: "pieces-bridged",
-    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length.",
+    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length or an intermediate anchor stands in it.",
 };
 
 /// Two pieces of a tendon that overlap.

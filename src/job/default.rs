@@ -26,6 +26,7 @@ impl Default for Job {
                 mu_per_rad: 0.19,
                 wobble: Wobble::RadPerM(0.008),
                 draw_in_m: 0.006,
+                first_pour: words(&["left", "bottom"]),
                 order: Vec::new(),
             },
             profile: Profiling {
@@ -92,6 +93,8 @@ fn conventions() -> Conventions {
         end_attributes: words(&["*"]),
         live_end_words: words(&["LE", "LIVE", "S", "STRESSING"]),
         dead_end_words: words(&["DE", "DEAD", "FIXED"]),
+        intermediate_blocks: words(&["INTERMEDIATE-ANCHOR*"]),
+        intermediate_words: words(&["INTERMEDIATE", "INTERMEDIATE ANCHOR", "INT ANCHOR"]),
         live_end_shapes: Vec::new(),
         dead_end_shapes: Vec::new(),
         mark_patterns: mark_patterns(),

@@ -1,6 +1,6 @@
 //! The places along a tendon, as the methods of long-term loss ask for them.
 
-use super::Stressed;
+use super::Pulls;
 use super::long_term::{Case, Place, Turn};
 use crate::floor::Tendon;
 use crate::job::{LongTerm, LongTermMethod};
@@ -9,14 +9,14 @@ use crate::numerics::integrate;
 /// A stressed tendon in its slab. Between two points of different thickness the slab changes half way.
 #[derive(Debug, Clone)]
 pub struct Along<'s, 'p> {
-    stressed: &'s Stressed<'p>,
+    pulls: &'s Pulls<'p>,
     /// Stations from which a thickness holds, metres.
     steps: Vec<(f64, f64)>,
 }
 
 impl<'s, 'p> Along<'s, 'p> {
     /// The tendon in the slab that its points give.
-    pub fn new(stressed: &'s Stressed<'p>, tendon: &Tendon) -> Self {
+    pub fn new(pulls: &'s Pulls<'p>, tendon: &Tendon) -> Self {
         let mut steps: Vec<(f64, f64)> = Vec::new();
         let mut last_m = 0.0;
         for point in &tendon.points {
@@ -34,23 +34,23 @@ impl<'s, 'p> Along<'s, 'p> {
             }
             last_m = point.station_m;
         }
-        Self { stressed, steps }
+        Self { pulls, steps }
     }
 
     /// The tendon.
-    pub(super) fn stressed(&self) -> &'s Stressed<'p> {
-        self.stressed
+    pub(super) fn pulls(&self) -> &'s Pulls<'p> {
+        self.pulls
     }
 
     /// The place at a station.
     pub(super) fn place(&self, station_m: f64) -> Place {
-        self.place_of(station_m, self.stressed.lockoff_kn(station_m))
+        self.place_of(station_m, self.pulls.lockoff_kn(station_m))
     }
 
     /// The place at a station, its force after lock-off known.
     pub(super) fn place_of(&self, station_m: f64, lockoff_kn: f64) -> Place {
         Place {
-            lockoff_mpa: self.stressed.steel().stress_mpa(lockoff_kn),
+            lockoff_mpa: self.pulls.steel().stress_mpa(lockoff_kn),
             eccentricity: self.eccentricity(station_m),
         }
     }
@@ -61,13 +61,13 @@ impl<'s, 'p> Along<'s, 'p> {
         let Some(&(_, thickness_m)) = self.steps.get(next.saturating_sub(1)) else {
             return 0.0;
         };
-        let z_m = self.stressed.profile().level_m(station_m) + 0.5 * thickness_m;
+        let z_m = self.pulls.profile().level_m(station_m) + 0.5 * thickness_m;
         12.0 * (z_m / thickness_m).powi(2)
     }
 
     /// Means along the tendon in space, quadrature to 1e-7.
     pub(super) fn means<const N: usize>(&self, of: impl Fn(f64) -> [f64; N]) -> [f64; N] {
-        let profile = self.stressed.profile();
+        let profile = self.pulls.profile();
         let weighted = |station_m: f64| {
             let steep = profile.slope(station_m).hypot(1.0);
             of(station_m).map(|value| value * steep)
@@ -75,6 +75,7 @@ impl<'s, 'p> Along<'s, 'p> {
         let mut breaks: Vec<f64> = profile.spans.iter().map(|span| span.start_m).collect();
         breaks.extend(self.steps.iter().map(|step| step.0));
         breaks.extend(profile.bends.iter().map(|bend| bend.station_m));
+        breaks.extend(self.pulls.anchors_m());
         breaks.push(profile.plan_length_m());
         breaks.sort_by(f64::total_cmp);
         let mut sums = [0.0; N];
@@ -92,13 +93,13 @@ impl<'s, 'p> Along<'s, 'p> {
 
     /// The tendon as the job's methods see it, at this mean concrete stress, MPa.
     pub fn case(&self, job: &LongTerm, concrete_stress_mpa: f64, turn: Turn) -> Case {
-        let steel = self.stressed.steel();
-        let mean_mpa = steel.stress_mpa(self.stressed.mean_lockoff_kn());
+        let steel = self.pulls.steel();
+        let mean_mpa = steel.stress_mpa(self.pulls.mean_lockoff_kn());
         let published = job
             .all_methods()
             .iter()
             .any(|&method| method != LongTermMethod::Direct);
-        let profile = self.stressed.profile();
+        let profile = self.pulls.profile();
         // Level and thickness have their extremes where pieces begin and end, or where the curve is level.
         let stations = profile.spans.iter().flat_map(|span| {
             let turn_m = span.start_m - span.slope / span.curvature_per_m;

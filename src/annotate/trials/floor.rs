@@ -230,6 +230,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends,
         points,
     };
