@@ -13,6 +13,7 @@ pub mod ground;
 pub mod openings;
 pub mod plan;
 pub mod profile;
+mod pulls;
 pub mod required;
 pub mod soffit;
 pub mod standards;

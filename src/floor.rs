@@ -45,7 +45,7 @@ mod zones;
 pub use assemble::read;
 pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line};
 pub use rules::RULES;
-pub use symbols::{EndWords, Figure, figures};
+pub use symbols::{EndWords, Figure, Said, figures};
 pub use types::{
     End, EndKind, Faces, Floor, Point, PointKind, PourJoint, Run, Slab, Tendon, Zone,
 };

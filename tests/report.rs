@@ -104,6 +104,7 @@ fn forces() -> Forces {
         least_jacking_kn: 670.82,
         least_jacking_station_m: 10.0,
         least_jacking_angle_rad: 0.055_985_364,
+        pulls: Vec::new(),
     }
 }
 

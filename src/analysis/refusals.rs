@@ -62,7 +62,7 @@ pub enum Refusal {
     #[error(transparent)]
     Stress(CannotStress),
     /// One of its segments, in order along it, from 0, cannot be stressed.
-    #[error("segment {}: {1}", .0 + 1)]
+    #[error("segment {number}: {1}", number = .0 + 1)]
     Segment(usize, CannotStress),
     /// The mean concrete stress is not known.
     #[error("the mean concrete stress is not known")]

@@ -126,6 +126,7 @@ pub(super) fn forces() -> Forces {
         least_jacking_kn: 640.0,
         least_jacking_station_m: 20.0,
         least_jacking_angle_rad: 0.0,
+        pulls: Vec::new(),
     }
 }
 

@@ -144,12 +144,7 @@ impl<'p> Pulls<'p> {
         let mut in_turn: Vec<&Pulled<'p>> = self.each().collect();
         in_turn.sort_by_key(|one| one.turn);
         let pulls: Vec<Pull> = in_turn.into_iter().map(Pulled::reported).collect();
-        let governing = pulls
-            .iter()
-            .min_by(|a, b| {
-                let least_kn = |pull: &Pull| pull.forces.least_jacking_kn;
-                least_kn(a).total_cmp(&least_kn(b))
-            })
+        let governing = Pull::governing(&pulls)
             .map_or_else(|| self.first.reported().forces, |pull| pull.forces.clone());
         Forces {
             ends: [self.first.stressed.ends()[0], last.stressed.ends()[1]],
@@ -162,10 +157,12 @@ impl<'p> Pulls<'p> {
 impl Pulled<'_> {
     fn reported(&self) -> Pull {
         let own = self.stressed.forces();
+        let [from_m, to_m] = self.stations_m;
         Pull {
             stations_m: self.stations_m,
+            lock_off_kn: [from_m, to_m].map(|station_m| self.stressed.lockoff_kn(station_m - from_m)),
             forces: Forces {
-                least_jacking_station_m: self.stations_m[0] + own.least_jacking_station_m,
+                least_jacking_station_m: from_m + own.least_jacking_station_m,
                 ..own
             },
         }

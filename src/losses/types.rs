@@ -54,8 +54,20 @@ impl From<CannotStress> for Unstressed {
 pub struct Pull {
     /// Stations of its two anchors, metres of plan line.
     pub stations_m: [f64; 2],
+    /// Force at them after lock-off, on this segment's side, kN.
+    pub lock_off_kn: [f64; 2],
     /// Its forces, as of a tendon by itself; without the later losses, which are the whole tendon's.
     pub forces: Forces,
+}
+
+impl Pull {
+    /// Of several pulls, the one that leaves least while it is jacked; of equals, the first.
+    pub fn governing(pulls: &[Self]) -> Option<&Self> {
+        pulls.iter().min_by(|a, b| {
+            let least_kn = |pull: &Self| pull.forces.least_jacking_kn;
+            least_kn(a).total_cmp(&least_kn(b))
+        })
+    }
 }
 
 /// Forces of one tendon as a whole; forces at a place are asked of [`super::Pulls`] and [`super::Effective`].

@@ -267,6 +267,7 @@ fn whole(length_m: f64, kinds: [EndKind; 2]) -> Forces {
         least_jacking_kn: forces_kn(least_m, length_m, both_live)[0],
         least_jacking_station_m: least_m,
         least_jacking_angle_rad: 0.0,
+        pulls: Vec::new(),
     }
 }
 
