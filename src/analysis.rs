@@ -17,7 +17,7 @@ pub use self::by_method::{DAYS, MethodForces, MethodResult, Spread};
 pub use self::refusals::{Refusal, rules};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
-use crate::floor::{Floor, PointKind, Tendon};
+use crate::floor::{EndKind, Floor, PointKind, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
@@ -383,6 +383,18 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
     if unmarked > 0 {
         said.push(format!(
             "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
+        ));
+    }
+    let between_live = |tendon: &&Tendon| {
+        !tendon.joints.is_empty() && tendon.ends.iter().all(|end| end.kind == Some(EndKind::Live))
+    };
+    let between_live = floor.tendons.iter().filter(between_live).count();
+    if between_live > 0 {
+        said.push(format!(
+            "Tendons with intermediate anchors between two live ends are stressed first in the pour at the end that \
+             stressing.first_pour says ({}), at that end and at its joint together, then each segment from its far anchor: \
+             {between_live}.",
+            job.stressing.first_pour.join(", ")
         ));
     }
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {

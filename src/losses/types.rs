@@ -61,6 +61,12 @@ pub struct Pull {
 }
 
 impl Pull {
+    /// Its jacked anchors: station, metres, and what the jack does there.
+    pub fn jacks(&self) -> impl Iterator<Item = (f64, &EndForces)> {
+        let ends = self.stations_m.into_iter().zip(&self.forces.ends);
+        ends.filter(|(_, end)| end.kind == EndKind::Live)
+    }
+
     /// Of several pulls, the one that leaves least while it is jacked; of equals, the first.
     pub fn governing(pulls: &[Self]) -> Option<&Self> {
         pulls.iter().min_by(|a, b| {

@@ -3,9 +3,11 @@
 mod cells;
 
 use self::cells::{end_kind, figure, point_kind, rounded, run, text, written};
-use super::record::{FindingRecord, TendonRecord};
+use super::record::{FindingRecord, LiveRecord, TendonRecord, number};
 use crate::analysis::{Analysis, pair};
+use crate::floor::Tendon;
 use crate::job::LongTermMethod;
+use crate::profile::SAME_PLACE_M;
 use crate::units::{FORCE, LONG, SHORT, STEEL, STRESS, Units};
 
 /// A row a tendon.
@@ -164,7 +166,7 @@ pub fn points_csv(analysis: &Analysis, units: Units) -> String {
     written(&header, rows)
 }
 
-/// A row a live end, with empty cells where the extension is not known.
+/// A row a live end, or, of a tendon stressed in several pulls, a row a jack; empty cells where the extension is not known.
 pub fn extensions_csv(analysis: &Analysis, units: Units) -> String {
     let (force, long, short) = (units.of(FORCE), units.of(LONG), units.of(SHORT));
     let header = [
@@ -181,45 +183,91 @@ pub fn extensions_csv(analysis: &Analysis, units: Units) -> String {
         short.column("extension_net"),
         long.column("draw_in_reach"),
         "note".to_owned(),
+        "pull".to_owned(),
     ];
     let rows = pair(analysis).flat_map(|(tendon, result)| {
         let record = TendonRecord::of(tendon, result);
-        let note = if record.ends.iter().all(|end| end.live.is_some()) {
-            format!("{BOTH_LIVE}; {BEYOND_ANCHOR}")
-        } else {
-            BEYOND_ANCHOR.to_owned()
-        };
-        let known = [
-            text(record.mark),
-            text(record.handle),
-            record.tendons.to_string(),
-            record.strands.map(|n| n.to_string()).unwrap_or_default(),
-            text(record.strand.unwrap_or_default()),
-        ];
-        ["start", "end"]
-            .into_iter()
-            .zip(record.ends)
-            .filter_map(move |(which, end)| {
-                let live = end.live?;
-                let [mark, handle, tendons, strands, strand] = known.clone();
-                Some(vec![
-                    mark,
-                    handle,
-                    which.to_owned(),
-                    figure(long, end.x_m, 3),
-                    figure(long, end.y_m, 3),
-                    tendons,
-                    strands,
-                    strand,
-                    figure(force, live.jacking_kn, 1),
-                    figure(short, live.extension_mm, 1),
-                    figure(short, live.extension_net_mm, 1),
-                    figure(long, live.draw_in_reach_m, 2),
-                    note.clone(),
-                ])
-            })
+        let (mark, handle) = (text(record.mark), text(record.handle));
+        let tendons = record.tendons.to_string();
+        let strands = record.strands.map(|n| n.to_string()).unwrap_or_default();
+        let strand = text(record.strand.unwrap_or_default());
+        jacks(tendon, record).into_iter().map(move |jack| {
+            let live = jack.live;
+            vec![
+                mark.clone(),
+                handle.clone(),
+                jack.end.to_owned(),
+                figure(long, jack.x_m, 3),
+                figure(long, jack.y_m, 3),
+                tendons.clone(),
+                strands.clone(),
+                strand.clone(),
+                figure(force, live.jacking_kn, 1),
+                figure(short, live.extension_mm, 1),
+                figure(short, live.extension_net_mm, 1),
+                figure(long, live.draw_in_reach_m, 2),
+                if jack.in_pair {
+                    format!("{BOTH_LIVE}; {BEYOND_ANCHOR}")
+                } else {
+                    BEYOND_ANCHOR.to_owned()
+                },
+                jack.pull.map(|order| order.to_string()).unwrap_or_default(),
+            ]
+        })
     });
     written(&header, rows)
+}
+
+/// A jack, or a live end where one would stand.
+struct Jack {
+    end: &'static str,
+    x_m: Option<f64>,
+    y_m: Option<f64>,
+    live: LiveRecord,
+    /// Whether another pulls with it.
+    in_pair: bool,
+    /// Which of several pulls it does.
+    pull: Option<usize>,
+}
+
+fn jacks(tendon: &Tendon, record: TendonRecord) -> Vec<Jack> {
+    if record.pulls.is_empty() {
+        let in_pair = record.ends.iter().all(|end| end.live.is_some());
+        let ends = ["start", "end"].into_iter().zip(record.ends);
+        let live = ends.filter_map(|(which, end)| {
+            Some(Jack {
+                end: which,
+                x_m: end.x_m,
+                y_m: end.y_m,
+                live: end.live?,
+                in_pair,
+                pull: None,
+            })
+        });
+        return live.collect();
+    }
+    let orders: Vec<usize> = record.pulls.iter().map(|pull| pull.order).collect();
+    let pulls = record.pulls.into_iter();
+    pulls
+        .map(|pull| {
+            let at_m = pull.at_m.unwrap_or_default();
+            let place = tendon.path.place_at(at_m);
+            Jack {
+                end: if at_m <= 0.0 {
+                    "start"
+                } else if at_m >= tendon.path.length_m() - SAME_PLACE_M {
+                    "end"
+                } else {
+                    "joint"
+                },
+                x_m: number(place.x),
+                y_m: number(place.y),
+                live: pull.live,
+                in_pair: orders.iter().filter(|order| **order == pull.order).count() > 1,
+                pull: Some(pull.order),
+            }
+        })
+        .collect()
 }
 
 /// A row a finding.

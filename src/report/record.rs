@@ -1,12 +1,14 @@
 //! A tendon's result under the names and in the units that the outputs share.
 
 mod methods;
+mod pulls;
 
 use std::collections::BTreeMap;
 
 use serde::Serialize;
 
 use self::methods::MethodRecord;
+use self::pulls::{JointRecord, PullRecord};
 use crate::analysis::{PointResult, TendonResult};
 use crate::finding::{Finding, Level};
 use crate::floor::{EndKind, Point, PointKind, Run, Tendon};
@@ -35,6 +37,10 @@ pub(super) struct TendonRecord<'a> {
     pub(super) radius_min_m: Option<f64>,
     pub(super) radius_plan_min_m: Option<f64>,
     pub(super) ends: [EndRecord; 2],
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub(super) joints: Vec<JointRecord>,
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub(super) pulls: Vec<PullRecord>,
     pub(super) points: Vec<PointRecord>,
     pub(super) losses: Option<LossRecord>,
     pub(super) mean_service_kn: Option<f64>,
@@ -148,6 +154,8 @@ impl<'a> TendonRecord<'a> {
                 EndRecord::of(tendon, forces, 0),
                 EndRecord::of(tendon, forces, 1),
             ],
+            joints: pulls::joints(tendon),
+            pulls: pulls::pulls(forces),
             points: points(tendon, result),
             losses: forces.map(LossRecord::of),
             mean_service_kn: forces.and_then(|forces| number(forces.later?.mean_service_kn)),

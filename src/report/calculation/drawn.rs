@@ -43,8 +43,18 @@ pub(super) fn part(
         Some(EndKind::Dead) => "dead",
         None => "unknown",
     });
+    let joints: Vec<String> = tendon
+        .joints
+        .iter()
+        .map(|joint| long.said(joint.station_m, 3))
+        .collect();
+    let between = if joints.is_empty() {
+        String::new()
+    } else {
+        format!("; intermediate anchors at station {}", joints.join(", "))
+    };
     text.push(format!(
-        "  ends: {} at station 0, {} at the last station\n\n",
+        "  ends: {} at station 0, {} at the last station{between}\n\n",
         ends[0], ends[1]
     ));
     let reading = &job.conventions.height;
