@@ -3,6 +3,7 @@
 //! Two passes: all tendons are jacked and locked off first, since the concrete stress of each comes from all of them; then
 //! the sections of the slab, summed serially in the tendons' order; then transfer, service and the rules.
 
+mod assumptions;
 mod by_method;
 mod findings_on;
 mod refusals;
@@ -17,7 +18,7 @@ pub use self::by_method::{DAYS, MethodForces, MethodResult, Spread};
 pub use self::refusals::{Refusal, rules};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
-use crate::floor::{EndKind, Floor, PointKind, Tendon};
+use crate::floor::{Floor, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
@@ -164,7 +165,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
     findings.extend(checks::required::per_width(&floor, &mean_service_kn));
     findings.extend(by_method::without_loss(&floor.tendons, &results));
     findings.sort_by(in_order);
-    let assumptions = assumptions(&floor, &results, job);
+    let assumptions = assumptions::sentences(&floor, &results, job);
     Analysis {
         floor,
         results,
@@ -267,7 +268,8 @@ fn finish(
         drawn.map_err(|reason| by_method::refusal(method, reason))
     });
     // Jacking and lock-off ask nothing of the concrete.
-    let only_jacked = |[jacking_kn, lockoff_kn]: [f64; 2]| [Some(jacking_kn), Some(lockoff_kn), None, None];
+    let only_jacked =
+        |[jacking_kn, lockoff_kn]: [f64; 2]| [Some(jacking_kn), Some(lockoff_kn), None, None];
     let forces_kn = |station_m| match (&effective, jacked) {
         (Ok(effective), _) => effective.forces_kn(station_m).map(Some),
         (Err(_), Some(jacked)) => only_jacked(jacked.both_kn(station_m)),
@@ -275,7 +277,10 @@ fn finish(
     };
     let sides_kn = |station_m| -> Vec<[Option<f64>; 4]> {
         match (&effective, jacked) {
-            (Ok(effective), _) => effective.sides_kn(station_m).map(|kn| kn.map(Some)).collect(),
+            (Ok(effective), _) => effective
+                .sides_kn(station_m)
+                .map(|kn| kn.map(Some))
+                .collect(),
             (Err(_), Some(jacked)) => jacked.sides_kn(station_m).map(only_jacked).collect(),
             (Err(_), None) => vec![[None; 4]],
         }
@@ -361,59 +366,4 @@ fn in_order(a: &Finding, b: &Finding) -> Ordering {
         .then_with(|| place(a).0.total_cmp(&place(b).0))
         .then_with(|| place(a).1.total_cmp(&place(b).1))
         .then_with(|| a.text.cmp(&b.text))
-}
-
-/// What was assumed of the floor while it was worked out, in sentences.
-fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String> {
-    let mut said = Vec::new();
-    let anchors = floor
-        .tendons
-        .iter()
-        .flat_map(|tendon| &tendon.points)
-        .filter(|point| point.kind == PointKind::Anchor)
-        .filter(|point| point.drawn_m.is_none() && point.height_m.is_some())
-        .count();
-    if anchors > 0 {
-        said.push(format!(
-            "Anchors for which the drawing gives no height of their own are at mid-depth: {anchors}."
-        ));
-    }
-    let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);
-    let unmarked = unmarked.count();
-    if unmarked > 0 {
-        said.push(format!(
-            "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
-        ));
-    }
-    let between_live = |tendon: &&Tendon| {
-        !tendon.joints.is_empty() && tendon.ends.iter().all(|end| end.kind == Some(EndKind::Live))
-    };
-    let between_live = floor.tendons.iter().filter(between_live).count();
-    if between_live > 0 {
-        said.push(format!(
-            "Tendons with intermediate anchors between two live ends are stressed first in the pour at the end that \
-             stressing.first_pour says ({}), at that end and at its joint together, then each segment from its far anchor: \
-             {between_live}.",
-            job.stressing.first_pour.join(", ")
-        ));
-    }
-    if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
-        said.push(
-            "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
-             (long_term.concrete_stress_mpa is not given)."
-                .to_owned(),
-        );
-        let without = results
-            .iter()
-            .filter(|result| result.forces.is_none())
-            .count();
-        if without > 0 && without < results.len() {
-            said.push(format!(
-                "The compression of {without} of {} tendon lines, whose forces are not known, is left out: concrete stress and losses \
-                 of the others are low.",
-                results.len()
-            ));
-        }
-    }
-    said
 }

@@ -46,7 +46,5 @@ pub use assemble::read;
 pub use readings::{HeightText, MarkText, Word, height_of_line, mark_of_line};
 pub use rules::RULES;
 pub use symbols::{EndWords, Figure, Said, figures};
-pub use types::{
-    End, EndKind, Faces, Floor, Point, PointKind, PourJoint, Run, Slab, Tendon, Zone,
-};
+pub use types::{End, EndKind, Faces, Floor, Point, PointKind, PourJoint, Run, Slab, Tendon, Zone};
 pub use zone_texts::{ZoneText, thickness_of_line, zone_text_of_line};

@@ -4,8 +4,8 @@ use super::by_method::{METHOD_WITHOUT_LOSS, REMEDY};
 use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::Tendon;
 use crate::job::LongTermMethod;
-use crate::losses::{CannotStress, Unstressed};
 use crate::losses::long_term::NoLoss;
+use crate::losses::{CannotStress, Unstressed};
 use crate::profile::Unknown;
 use crate::units::LONG;
 

@@ -133,7 +133,13 @@ fn outwards(tendon: &Tendon, at: usize, height_m: f64, content: String, room: &m
 }
 
 /// On the side, as near and as level with the anchor as no text and no line is in the way; it is written in any case.
-fn beside(tendon: &Tendon, station_m: f64, height_m: f64, content: String, room: &mut Room) -> Mark {
+fn beside(
+    tendon: &Tendon,
+    station_m: f64,
+    height_m: f64,
+    content: String,
+    room: &mut Room,
+) -> Mark {
     let rotation_rad = readable_rad(tendon.path.heading_at(station_m));
     let anchor = tendon.path.place_at(station_m);
     let width_m = words::width_m(&content, height_m);

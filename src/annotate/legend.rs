@@ -8,7 +8,6 @@ use crate::analysis::Analysis;
 use crate::cautions::CAUTIONS;
 use crate::drawing::{Align, Drawn};
 use crate::finding::Level;
-use crate::floor::EndKind;
 use crate::job::{Job, Pattern, Wobble};
 use crate::losses::Forces;
 use crate::units::{FORCE, LONG, PER_LENGTH, SHORT, STRESS, TURN};
@@ -49,7 +48,10 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let sample = extension::said(&short.figure(180.0, 0), &short.figure(174.0, 0), short.name);
     column.sentence(&format!("{sample}: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it"));
     let some = |of: fn(&Forces) -> bool| {
-        let mut forces = analysis.results.iter().filter_map(|result| result.forces.as_ref());
+        let mut forces = analysis
+            .results
+            .iter()
+            .filter_map(|result| result.forces.as_ref());
         forces.any(of)
     };
     if some(|forces| !forces.pulls.is_empty()) {

@@ -76,7 +76,10 @@ fn one_end_segment(worked: &Worked, job: &Job) -> Option<Finding> {
     let limit_m = job.limits.one_end_length_m;
     let mut long_ones = worked.pulls();
     long_ones.retain(|pull| pull.one_jack().is_some() && pull.length_m() > limit_m);
-    let fixed_m = |pull: &Pulled| pull.one_jack().map_or(0.0, |(_, fixed)| pull.stations_m[fixed]);
+    let fixed_m = |pull: &Pulled| {
+        pull.one_jack()
+            .map_or(0.0, |(_, fixed)| pull.stations_m[fixed])
+    };
     let (worst, others) = worst_of(long_ones, Pulled::length_m, fixed_m)?;
     Some(worked.finding(
         &ONE_END_LENGTH,

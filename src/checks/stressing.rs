@@ -180,8 +180,14 @@ pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
 
 pub(super) fn draw_in_reaches_dead_end(worked: &Worked) -> Option<Finding> {
     let mut reached = worked.pulls();
-    reached.retain(|pull| pull.one_jack().is_some_and(|(live, _)| live.draw_in_reaches_far));
-    let fixed_m = |pull: &Pulled| pull.one_jack().map_or(0.0, |(_, fixed)| pull.stations_m[fixed]);
+    reached.retain(|pull| {
+        pull.one_jack()
+            .is_some_and(|(live, _)| live.draw_in_reaches_far)
+    });
+    let fixed_m = |pull: &Pulled| {
+        pull.one_jack()
+            .map_or(0.0, |(_, fixed)| pull.stations_m[fixed])
+    };
     // The shortest suffers most.
     let (worst, others) = worst_of(reached, |pull| -pull.length_m(), fixed_m)?;
     let (_, fixed) = worst.one_jack()?;

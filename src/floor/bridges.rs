@@ -125,7 +125,12 @@ fn nearest(
         let far_m = reach.gap_m.max(reach.overlap_m).max(reach.anchor_m) + reach.aside_m;
         tree.locate_within_distance([tip.place.x, tip.place.y], far_m * far_m)
             .filter(|found| found.data / 2 != end / 2)
-            .filter_map(|found| Some((found.data, ahead_m(tip, tips[found.data]?, reach, &is_anchor)?)))
+            .filter_map(|found| {
+                Some((
+                    found.data,
+                    ahead_m(tip, tips[found.data]?, reach, &is_anchor)?,
+                ))
+            })
             .min_by(|a, b| a.1.abs().total_cmp(&b.1.abs()).then(a.0.cmp(&b.0)))
     };
     (0..tips.len()).map(facing).collect()

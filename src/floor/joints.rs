@@ -42,7 +42,10 @@ pub(super) fn joints<'a>(
     };
     for symbol in drawn.iter().chain(&words).copied() {
         let feet = index.feet(symbol.place, reach_m);
-        let least_m = feet.iter().map(|foot| foot.distance_m).fold(f64::INFINITY, f64::min);
+        let least_m = feet
+            .iter()
+            .map(|foot| foot.distance_m)
+            .fold(f64::INFINITY, f64::min);
         let nearest: Vec<&Foot> = feet
             .iter()
             .filter(|foot| foot.distance_m <= least_m + TIED_M)

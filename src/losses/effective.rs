@@ -127,13 +127,15 @@ impl<'a> Effective<'a> {
     pub fn sides_kn(&self, station_m: f64) -> impl Iterator<Item = [f64; 4]> {
         let pulls = self.along.pulls();
         let steel = pulls.steel();
-        pulls.sides_kn(station_m).map(move |[jacking_kn, lockoff_kn]| {
-            let place = self.along.place_of(station_m, lockoff_kn);
-            let lost = self.method.at(self.seen(place));
-            let transfer_kn = lockoff_kn - steel.force_kn(lost.shortening_mpa);
-            let service_kn = transfer_kn - steel.force_kn(lost.long_term_mpa());
-            [jacking_kn, lockoff_kn, transfer_kn, service_kn]
-        })
+        pulls
+            .sides_kn(station_m)
+            .map(move |[jacking_kn, lockoff_kn]| {
+                let place = self.along.place_of(station_m, lockoff_kn);
+                let lost = self.method.at(self.seen(place));
+                let transfer_kn = lockoff_kn - steel.force_kn(lost.shortening_mpa);
+                let service_kn = transfer_kn - steel.force_kn(lost.long_term_mpa());
+                [jacking_kn, lockoff_kn, transfer_kn, service_kn]
+            })
     }
 
     /// Force at jacking, lock-off, transfer and service, kN: the least at the station.

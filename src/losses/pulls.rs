@@ -160,7 +160,8 @@ impl Pulled<'_> {
         let [from_m, to_m] = self.stations_m;
         Pull {
             stations_m: self.stations_m,
-            lock_off_kn: [from_m, to_m].map(|station_m| self.stressed.lockoff_kn(station_m - from_m)),
+            lock_off_kn: [from_m, to_m]
+                .map(|station_m| self.stressed.lockoff_kn(station_m - from_m)),
             forces: Forces {
                 least_jacking_station_m: from_m + own.least_jacking_station_m,
                 ..own

@@ -20,7 +20,11 @@ pub(super) fn steps(kinds: [EndKind; 2], segments: usize, first_end: usize) -> V
         [Live, Dead] => false,
         [Live, Live] | [Dead, Dead] => first_end == 0,
     };
-    let onwards = if from_start { [Dead, Live] } else { [Live, Dead] };
+    let onwards = if from_start {
+        [Dead, Live]
+    } else {
+        [Live, Dead]
+    };
     (0..segments)
         .map(|segment| {
             let turn = if from_start { segment } else { last - segment };
@@ -59,7 +63,10 @@ mod tests {
 
     fn told(kinds: [EndKind; 2], segments: usize, first_end: usize) -> Vec<([EndKind; 2], usize)> {
         let steps = steps(kinds, segments, first_end);
-        steps.into_iter().map(|step| (step.kinds, step.turn)).collect()
+        steps
+            .into_iter()
+            .map(|step| (step.kinds, step.turn))
+            .collect()
     }
 
     #[test]

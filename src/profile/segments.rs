@@ -43,7 +43,10 @@ impl Profile {
             })
         });
         let within = from_m + SAME_PLACE_M..to_m - SAME_PLACE_M;
-        let bends = self.bends.iter().filter(|bend| within.contains(&bend.station_m));
+        let bends = self
+            .bends
+            .iter()
+            .filter(|bend| within.contains(&bend.station_m));
         let bends = bends.map(|bend| Bend {
             station_m: bend.station_m - from_m,
             ..*bend

@@ -99,7 +99,9 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis, job: &Job) -> String {
     let several = tendons.iter().filter(|tendon| !tendon.joints.is_empty());
     let several = match several.count() {
         0 => String::new(),
-        count => format!("Stressed in several pulls, from anchor to intermediate anchor: {count}.\n"),
+        count => {
+            format!("Stressed in several pulls, from anchor to intermediate anchor: {count}.\n")
+        }
     };
     format!(
         "{}: {all} tendon {lines} ({banded} banded, {} distributed){stand}.\n\

@@ -14,6 +14,7 @@ use crate::patterns::{Names, pattern_of};
 pub(super) fn proposals(contents: &Contents, job: &Job) -> BTreeMap<String, Proposal> {
     let mut proposals = BTreeMap::new();
     blocks(contents, job, &mut proposals);
+    between(contents, job, &mut proposals);
     attributes(contents, job, &mut proposals);
     words(contents, job, &mut proposals);
     shapes(contents, job, &mut proposals);
@@ -61,6 +62,9 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             continue;
         }
         let says = |block: &&String| {
+            if found.between.contains(*block) {
+                return false;
+            }
             let legend = found.legend_blocks.get(*block).copied();
             hinted(block).or(legend) == Some(kind)
         };
@@ -72,6 +76,19 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             "No block at a line end fits the default; the name or the legend says so.",
         );
     }
+}
+
+/// Blocks on lines that are intermediate anchors by their names or a legend, where none fits the job.
+fn between(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let found = &contents.at_ends.between;
+    let known = names(&job.conventions.intermediate_blocks);
+    if found.iter().any(|block| known.has(block)) {
+        return;
+    }
+    let blocks = found.iter().map(|block| pattern_of(block)).collect();
+    let why =
+        "No block fits the default; the name or the legend says that tendons go on through these.";
+    put(proposals, "intermediate_blocks", &blocks, why);
 }
 
 /// Blocks at line ends that an attribute tells apart.

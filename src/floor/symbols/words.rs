@@ -26,7 +26,8 @@ pub enum Said {
 impl EndWords {
     /// The words of a job.
     pub fn new(conventions: &Conventions) -> Self {
-        let plain = |words: &[String]| -> Vec<String> { words.iter().map(|word| plain(word)).collect() };
+        let plain =
+            |words: &[String]| -> Vec<String> { words.iter().map(|word| plain(word)).collect() };
         let live = plain(&conventions.live_end_words);
         let dead = plain(&conventions.dead_end_words);
         let intermediate = plain(&conventions.intermediate_words);

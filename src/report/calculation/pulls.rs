@@ -34,7 +34,8 @@ pub(super) fn shown<'a>(
     result: &TendonResult,
 ) -> Vec<Shown<'a>> {
     if forces.pulls.is_empty() {
-        let locked = |end: Option<&crate::analysis::PointResult>| end.and_then(|end| end.forces_kn[1]);
+        let locked =
+            |end: Option<&crate::analysis::PointResult>| end.and_then(|end| end.forces_kn[1]);
         return vec![Shown {
             order: None,
             stations_m: [0.0, tendon.path.length_m()],
@@ -62,12 +63,19 @@ pub(super) fn shown<'a>(
 impl<'a> Shown<'a> {
     /// Whether one of its two anchors is jacked.
     pub(super) fn live(&self, end: usize) -> bool {
-        self.forces.ends.get(end).is_some_and(|end| end.kind == EndKind::Live)
+        self.forces
+            .ends
+            .get(end)
+            .is_some_and(|end| end.kind == EndKind::Live)
     }
 
     /// Its jacks: station, force after lock-off, and what else is known of each.
     pub(super) fn jacks(&self) -> impl Iterator<Item = (f64, Option<f64>, &'a EndForces)> {
-        let ends = self.stations_m.into_iter().zip(self.lock_off_kn).zip(&self.forces.ends);
+        let ends = self
+            .stations_m
+            .into_iter()
+            .zip(self.lock_off_kn)
+            .zip(&self.forces.ends);
         ends.filter(|(_, end)| end.kind == EndKind::Live)
             .map(|((station_m, lock_off_kn), end)| (station_m, lock_off_kn, end))
     }
@@ -95,7 +103,9 @@ impl<'a> Shown<'a> {
         };
         let held = |station_m: f64| {
             let after = self.order.is_none() || from_m <= 0.0 || station_m > from_m + SAME_PLACE_M;
-            let before = self.order.is_none() || to_m >= last_m - SAME_PLACE_M || station_m < to_m - SAME_PLACE_M;
+            let before = self.order.is_none()
+                || to_m >= last_m - SAME_PLACE_M
+                || station_m < to_m - SAME_PLACE_M;
             after && before
         };
         let points = tendon.points.iter().zip(&result.points);
