@@ -322,7 +322,8 @@ def point_off(point, parts):
         ranges = []
         for part in parts:
             away = np.abs(part["stations"] - point["station_m"])
-            if not part["stations"][0] - 1e-6 <= point["station_m"] <= part["stations"][-1] + 1e-6:
+            beyond = part is not parts[-1] and point["station_m"] > part["stations"][-1] + 1e-6
+            if beyond or (part is not parts[0] and point["station_m"] < part["stations"][0] - 1e-6):
                 continue
             near = away <= 2 * STEP_M
             if not near.any():
