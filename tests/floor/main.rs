@@ -14,6 +14,7 @@ mod ground;
 mod groups;
 mod heights;
 mod joining;
+mod joints;
 mod kit;
 mod labels;
 mod laws;
