@@ -176,3 +176,125 @@ pub(super) fn least<const N: usize>(sides_kn: impl Iterator<Item = [f64; N]>) ->
         std::array::from_fn(|stage| held[stage].min(side[stage]))
     })
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::job::{Job, Wobble};
+    use crate::profile::Span;
+    use EndKind::{Dead, Live};
+
+    const STEEL: Steel = Steel {
+        area_mm2: 493.5,
+        strength_mpa: 1860.0,
+        modulus_mpa: 195_000.0,
+    };
+    const PER_M: f64 = 0.002;
+    const SLIP_M: f64 = 0.004;
+
+    fn job() -> Stressing {
+        let mut job = Job::default().stressing;
+        (job.wobble, job.draw_in_m) = (Wobble::PerM(PER_M), SLIP_M);
+        job
+    }
+
+    /// A level tendon of 30 m, divided at these stations.
+    fn level(anchors_m: &[f64]) -> Profile {
+        let span = Span {
+            start_m: 0.0,
+            length_m: 30.0,
+            level_m: -0.1,
+            slope: 0.0,
+            curvature_per_m: 0.0,
+            plan_curvature_per_m: 0.0,
+        };
+        Profile::new(vec![span], Vec::new()).divided(anchors_m)
+    }
+
+    fn near(a: f64, b: f64) -> bool {
+        (a - b).abs() < 1e-9 * b.abs()
+    }
+
+    #[test]
+    fn a_level_tendon_in_two_pours_by_hand() {
+        let curve = level(&[12.0]);
+        let pulls = Pulls::new(&curve, STEEL, [Dead, Live], 0, &job()).expect("a force");
+        let jack_kn = 0.75 * 1860.0 * 0.4935;
+        let stiffness_kn = 195.0 * 493.5;
+        // P = P0 exp(-K s), s from the jack: at 12 m in the first pull, at 30 m in the second.
+        for (station_m, s_m) in [(0.0, 12.0), (5.0, 7.0), (20.0, 10.0), (30.0, 0.0)] {
+            assert!(near(
+                pulls.both_kn(station_m)[0],
+                jack_kn * (-PER_M * s_m).exp()
+            ));
+        }
+        let sides: Vec<[f64; 2]> = pulls.sides_kn(12.0).collect();
+        assert!(near(sides[0][0], jack_kn) && near(sides[1][0], jack_kn * (-PER_M * 18.0).exp()));
+        assert!(near(pulls.both_kn(12.0)[0], sides[1][0]));
+        let forces = pulls.forces();
+        assert_eq!(forces.pulls.len(), 2);
+        for (pull, length_m) in forces.pulls.iter().zip([12.0, 18.0]) {
+            let (_, end) = pull.jacks().next().expect("a jack");
+            // Gross: P0 (1 - exp(-K l))/(K E A).
+            let stretched_m = jack_kn * (1.0 - (-PER_M * length_m).exp()) / (PER_M * stiffness_kn);
+            assert!(near(end.extension_mm.expect("live"), 1e3 * stretched_m));
+            assert!(near(
+                end.extension_net_mm.expect("live"),
+                1e3 * (stretched_m - SLIP_M)
+            ));
+            // P0/K (1 - exp(-K x))^2 = draw-in E A, where that is within the segment.
+            let root = (SLIP_M * stiffness_kn * PER_M / jack_kn).sqrt();
+            let reach_m = -(1.0 - root).ln() / PER_M;
+            let locked_kn = if reach_m < length_m {
+                jack_kn * (-2.0 * PER_M * reach_m).exp()
+            } else {
+                let rising_m = ((PER_M * length_m).exp() - 1.0) / PER_M;
+                (stretched_m - SLIP_M) * stiffness_kn / rising_m
+            };
+            assert!(near(
+                end.draw_in_reach_m.expect("live"),
+                reach_m.min(length_m)
+            ));
+            assert!(near(pull.lock_off_kn[1], locked_kn));
+        }
+        // The second leaves least; the ends are each pull's own.
+        assert!(near(
+            forces.least_jacking_kn,
+            jack_kn * (-PER_M * 18.0).exp()
+        ));
+        assert!((forces.least_jacking_station_m - 12.0).abs() < 1e-9);
+        assert_eq!(forces.ends[0].kind, Dead);
+        assert_eq!(forces.ends[1], forces.pulls[1].forces.ends[1]);
+    }
+
+    #[test]
+    fn without_intermediate_anchors_a_tendon_is_stressed_in_one() {
+        let curve = level(&[]);
+        for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
+            let pulls = Pulls::new(&curve, STEEL, kinds, 0, &job()).expect("a force");
+            let one = Stressed::new(&curve, STEEL, kinds, &job()).expect("a force");
+            assert_eq!(pulls.forces(), one.forces());
+            for station_m in [0.0, 7.3, 15.0, 30.0] {
+                let bits = |[a, b]: [f64; 2]| [a.to_bits(), b.to_bits()];
+                assert_eq!(bits(pulls.both_kn(station_m)), bits(one.both_kn(station_m)));
+            }
+            assert_eq!(
+                pulls.mean_lockoff_kn().to_bits(),
+                one.mean_lockoff_kn().to_bits()
+            );
+        }
+    }
+
+    #[test]
+    fn a_segment_too_short_for_its_draw_in_is_named() {
+        let curve = level(&[0.3, 12.0]);
+        let refused = Pulls::new(&curve, STEEL, [Live, Dead], 0, &job()).err();
+        let shortest = Unstressed {
+            segment: Some(0),
+            reason: CannotStress::DrawInTakesAll,
+        };
+        assert_eq!(refused, Some(shortest));
+        let dead = Pulls::new(&curve, STEEL, [Dead, Dead], 0, &job()).err();
+        assert_eq!(dead, Some(CannotStress::NoLiveEnd.into()));
+    }
+}

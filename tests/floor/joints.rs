@@ -49,16 +49,14 @@ fn a_block_divides_the_line_it_stands_on_however_the_line_is_drawn() {
         assert_eq!(floor.tendons.len(), 1, "case {case}");
         let tendon = tendon(&floor, "B07");
         let forwards = tendon.path.start().is_some_and(|start| start.x < 1.0);
-        let [station_mm, meant] = if forwards {
-            [8000, 0]
+        let (station_mm, ends) = if forwards {
+            (8000, [Live, Dead])
         } else {
-            [12_000, 1]
+            (12_000, [Dead, Live])
         };
         assert_eq!(joints_mm(tendon), [station_mm], "case {case}");
         assert_eq!(tendon.joints[0].place, at(8.0, 5.0));
-        let mut ends = [Some(Live), Some(Dead)];
-        ends.rotate_left(meant);
-        assert_eq!(kinds(tendon), ends);
+        assert_eq!(kinds(tendon), ends.map(Some));
         for rule in ["end-unknown", "end-unclaimed", "joint-unclaimed"] {
             assert!(told(&findings, rule).is_empty(), "case {case}: {rule}");
         }
@@ -161,24 +159,43 @@ fn far_from_every_tendon_it_is_told() {
     let (floor, findings) = board.read();
     assert!(floor.tendons[0].joints.is_empty());
     let astray = only(&findings, "joint-unclaimed");
-    assert_eq!((astray.level, astray.place), (Level::Warning, Some(at(8.0, 6.0))));
+    assert_eq!(
+        (astray.level, astray.place),
+        (Level::Warning, Some(at(8.0, 6.0)))
+    );
 }
 
 #[test]
 fn where_tendons_cross_the_nearest_is_divided_and_a_tie_is_told() {
     // Across at 8, and a second of the band 0.3 m off: the block is as wide as both.
-    for (place, divided) in [((8.2, 5.0), Some("B07")), ((8.0, 5.2), Some("D01")), ((8.0, 5.0), None)] {
+    for (place, divided) in [
+        ((8.2, 5.0), Some("B07")),
+        ((8.0, 5.2), Some("D01")),
+        ((8.0, 5.0), None),
+    ] {
         let mut board = pieces(&[[0.0, 20.0]]);
         board.bare_tendon(BANDED, "B08", [0.0, 20.0], 5.3);
         board.line(DISTRIBUTED, &[(8.0, 0.0), (8.0, 18.0)]);
         board.live((8.0, 0.0));
         board.dead((8.0, 18.0));
-        board.text(MARK, "D01 5-12.7", at(7.88, 10.0), 0.1, std::f64::consts::FRAC_PI_2, true);
+        board.text(
+            MARK,
+            "D01 5-12.7",
+            at(7.88, 10.0),
+            0.1,
+            std::f64::consts::FRAC_PI_2,
+            true,
+        );
         board.anchor(place);
         let (floor, findings) = board.read();
         for one in &floor.tendons {
             let own = Some(one.mark.as_str()) == divided;
-            assert_eq!(one.joints.len(), usize::from(own), "{} at {place:?}", one.mark);
+            assert_eq!(
+                one.joints.len(),
+                usize::from(own),
+                "{} at {place:?}",
+                one.mark
+            );
         }
         let tied = told(&findings, "joint-unclaimed");
         assert_eq!(tied.len(), usize::from(divided.is_none()));
