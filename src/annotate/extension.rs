@@ -143,35 +143,49 @@ fn beside(
     let rotation_rad = readable_rad(tendon.path.heading_at(station_m));
     let anchor = tendon.path.place_at(station_m);
     let width_m = words::width_m(&content, height_m);
-    let spots = BESIDE.into_iter().flat_map(|away| {
-        let across_m = (away + 0.5) * height_m;
-        [1.0, -1.0].into_iter().flat_map(move |side| {
-            [0.0, 0.6, -0.6].map(|widths| Spot {
-                centre: step(
-                    step(anchor, rotation_rad, widths * width_m),
-                    rotation_rad + FRAC_PI_2,
-                    side * across_m,
-                ),
-                width_m,
-                height_m,
-                rotation_rad,
+    let off = |away: f64, side: f64| {
+        let across_m = side * (away + 0.5) * height_m;
+        step(anchor, rotation_rad + FRAC_PI_2, across_m)
+    };
+    // The near end of a text that stands before or behind the anchor stays put, however wide the font comes out.
+    let along = [
+        (0.0, Align::Middle),
+        (0.6, Align::MiddleLeft),
+        (-0.6, Align::MiddleRight),
+    ];
+    let stands = BESIDE.into_iter().flat_map(|away| {
+        let sides = [off(away, 1.0), off(away, -1.0)];
+        sides.into_iter().flat_map(move |level| {
+            along.map(|(widths, align)| {
+                let spot = Spot {
+                    centre: step(level, rotation_rad, widths * width_m),
+                    width_m,
+                    height_m,
+                    rotation_rad,
+                };
+                (spot, align)
             })
         })
     });
+    let hit = |(spot, _): &(Spot, Align)| (room.texts_hit(spot), room.lines_hit(spot));
     let level = Spot {
-        centre: step(anchor, rotation_rad + FRAC_PI_2, height_m),
+        centre: off(BESIDE[0], 1.0),
         width_m,
         height_m,
         rotation_rad,
     };
-    let hit = |spot: &Spot| (room.texts_hit(spot), room.lines_hit(spot));
-    let spot = spots.min_by_key(hit).unwrap_or(level);
+    let (spot, align) = stands.min_by_key(hit).unwrap_or((level, Align::Middle));
     room.take(&spot);
+    let near_m = match align {
+        Align::MiddleLeft => -width_m / 2.0,
+        Align::MiddleRight => width_m / 2.0,
+        _ => 0.0,
+    };
     let drawn = Drawn::Text {
-        place: spot.centre,
+        place: step(spot.centre, rotation_rad, near_m),
         height_m,
         rotation_rad,
-        align: Align::Middle,
+        align,
         content,
     };
     layers::mark(layers::EXTENSION, drawn)
