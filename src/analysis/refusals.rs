@@ -156,25 +156,7 @@ impl Refusal {
                 "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
                  coefficients; stress a tendon this short or this winding in another way",
             )),
-            Self::Segment(segment, reason) => {
-                let [from_m, to_m] = tendon.segment_m(*segment);
-                Some(at(
-                    tendon,
-                    &NO_FORCE_LEFT,
-                    from_m,
-                    Wording::of(|units| {
-                        let long = units.of(LONG);
-                        format!(
-                            "{reason} in the segment from station {} to {}, which is stressed by itself, so no forces are given \
-                             to the tendon; a force at every point was expected",
-                            long.said(from_m, 2),
-                            long.said(to_m, 2)
-                        )
-                    }),
-                    "look at where the intermediate anchors stand, then at draw-in, friction and wobble; stress a segment this \
-                     short or this winding in another way",
-                ))
-            }
+            Self::Segment(segment, reason) => Some(in_segment(tendon, *segment, *reason)),
             Self::Method(..) => Some(at(
                 tendon,
                 &METHOD_WITHOUT_LOSS,
@@ -194,6 +176,24 @@ impl Refusal {
             )),
         }
     }
+}
+
+fn in_segment(tendon: &Tendon, segment: usize, reason: CannotStress) -> Finding {
+    let [from_m, to_m] = tendon.segment_m(segment);
+    at(
+        tendon,
+        &NO_FORCE_LEFT,
+        from_m,
+        Wording::of(|units| {
+            let [from, to] = [from_m, to_m].map(|station_m| units.of(LONG).said(station_m, 2));
+            format!(
+                "{reason} in the segment from station {from} to {to}, which is stressed by itself, so no forces are given to \
+                 the tendon; a force at every point was expected"
+            )
+        }),
+        "look at where the intermediate anchors stand, then at draw-in, friction and wobble; stress a segment this short or \
+         this winding in another way",
+    )
 }
 
 fn at(

@@ -8,6 +8,10 @@ use crate::losses::Forces;
 
 /// An intermediate anchor.
 #[derive(Debug, Serialize)]
+#[expect(
+    clippy::struct_field_names,
+    reason = "a name that holds a length says its unit"
+)]
 pub(in crate::report) struct JointRecord {
     pub(in crate::report) station_m: Option<f64>,
     pub(in crate::report) x_m: Option<f64>,
