@@ -137,6 +137,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
                 stressed[index].as_ref().map_err(Clone::clone),
                 stresses_mpa[index],
                 turns[index],
+                Some(&ground),
             );
             let mut found: Vec<Finding> = refusal
                 .and_then(|refusal| refusal.finding(&tendons[index]))
@@ -191,6 +192,7 @@ pub fn work_tendon(
         stressed.as_ref().map_err(Clone::clone),
         concrete_stress_mpa,
         Turn::of_many(),
+        None,
     )
 }
 
@@ -242,10 +244,12 @@ fn finish(
     stressed: Result<&Stressed<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
     turn: Turn,
+    ground: Option<&Ground<'_>>,
 ) -> (TendonResult, Option<Refusal>) {
     let jacked = stressed.as_ref().ok().copied();
     let long_term = &job.long_term;
-    let along = stressed.map(|stressed| Along::new(stressed, tendon));
+    let along =
+        stressed.map(|stressed| Along::new(stressed, by_method::faces(tendon, ground, long_term)));
     let known = along.as_ref().map_err(Clone::clone).and_then(|along| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
         Ok((along, along.case(long_term, stress_mpa, turn)))

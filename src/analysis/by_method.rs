@@ -3,12 +3,13 @@
 use std::collections::BTreeMap;
 
 use super::{Refusal, TendonResult};
+use crate::checks::Ground;
 use crate::checks::standards::MethodStress;
 use crate::finding::{Finding, Level, Rule};
-use crate::floor::Tendon;
+use crate::floor::{Faces, Tendon};
 use crate::job::{LongTerm, LongTermMethod};
 use crate::losses::long_term::{Case, Lost, Method, Place, When};
-use crate::losses::{Along, Effective, NoForce};
+use crate::losses::{Along, Effective, NoForce, faces_by_points};
 
 /// See its meaning.
 pub(super) static METHOD_WITHOUT_LOSS: Rule = Rule {
@@ -90,6 +91,22 @@ impl TendonResult {
             ratio: (greatest_kn - least_kn) / drawn_kn,
         })
     }
+}
+
+/// Where the concrete lies along a tendon, for the methods that ask: by the slab's zones where they are known, else by the
+/// tendon's own points.
+pub(super) fn faces(
+    tendon: &Tendon,
+    ground: Option<&Ground<'_>>,
+    job: &LongTerm,
+) -> Vec<(f64, Faces)> {
+    if !job.asks_published() {
+        return Vec::new();
+    }
+    let by_zones = ground.map(|ground| ground.faces_from(&tendon.path));
+    by_zones
+        .filter(|faces| faces.iter().any(|(_, faces)| faces.thickness_m.is_some()))
+        .unwrap_or_else(|| faces_by_points(tendon))
 }
 
 /// When the job asks for the service force.

@@ -109,7 +109,7 @@ mod tests {
     use crate::geometry::Path;
     use crate::job::LongTermMethod;
     use crate::losses::long_term::{Turn, When};
-    use crate::losses::{Along, Effective, Friction, Stressed};
+    use crate::losses::{Along, Effective, Friction, Stressed, faces_by_points};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -212,7 +212,7 @@ mod tests {
             for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
                 let stressed =
                     Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
-                let in_slab = Along::new(&stressed, &tendon);
+                let in_slab = Along::new(&stressed, faces_by_points(&tendon));
                 let case = in_slab.case(&job.long_term, 1.2, Turn::of_many());
                 let (direct, when) = (LongTermMethod::Direct, When::Final);
                 let effective =

@@ -143,6 +143,12 @@ impl LongTerm {
         }
         all
     }
+
+    /// Whether a method is named that works its figures out by clauses.
+    pub fn asks_published(&self) -> bool {
+        let direct = LongTermMethod::Direct;
+        self.all_methods().iter().any(|&method| method != direct)
+    }
 }
 
 impl Reader {
