@@ -7,14 +7,16 @@ mod by_method;
 mod findings_on;
 mod refusals;
 mod samples;
+mod spread;
 
 use std::cmp::Ordering;
 
 use geo::Coord;
 use rayon::prelude::*;
 
-pub use self::by_method::{DAYS, MethodForces, MethodResult, Spread};
+pub use self::by_method::{DAYS, MethodForces, MethodResult};
 pub use self::refusals::{Refusal, rules};
+pub use self::spread::{FloorSpread, Spread};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
 use crate::floor::{Floor, PointKind, Tendon};

@@ -49,50 +49,6 @@ pub struct MethodForces {
     pub final_kn: Option<f64>,
 }
 
-/// How far the methods lie apart on one tendon.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Spread {
-    /// The method that leaves least.
-    pub least: LongTermMethod,
-    /// Its mean service force, kN.
-    pub least_kn: f64,
-    /// The method that leaves most.
-    pub greatest: LongTermMethod,
-    /// Its mean service force, kN.
-    pub greatest_kn: f64,
-    /// The difference over the drawn method's mean service force.
-    pub ratio: f64,
-}
-
-impl TendonResult {
-    /// The spread between the methods; `None` where fewer than two give a force, or the drawn one gives none.
-    pub fn spread(&self) -> Option<Spread> {
-        let drawn_kn = self
-            .by_method
-            .first()?
-            .outcome
-            .as_ref()
-            .ok()?
-            .mean_service_kn;
-        let mut means: Vec<(LongTermMethod, f64)> = self
-            .by_method
-            .iter()
-            .filter_map(|one| Some((one.method, one.outcome.as_ref().ok()?.mean_service_kn)))
-            .collect();
-        means.sort_by(|a, b| a.1.total_cmp(&b.1));
-        let [(least, least_kn), .., (greatest, greatest_kn)] = means[..] else {
-            return None;
-        };
-        Some(Spread {
-            least,
-            least_kn,
-            greatest,
-            greatest_kn,
-            ratio: (greatest_kn - least_kn) / drawn_kn,
-        })
-    }
-}
-
 /// Where the concrete lies along a tendon, for the methods that ask: by the slab's zones where they are known, else by the
 /// tendon's own points.
 pub(super) fn faces(

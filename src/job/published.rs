@@ -102,6 +102,19 @@ words! { Environment, "Where a floor stands, by the words of AS 3600 3.1.7.2.",
     Tropical = "tropical", "Outdoors, tropical, near-coastal or coastal.";
 }
 
+impl LongTermMethod {
+    /// Where it is published.
+    pub fn standard(self) -> &'static str {
+        match self {
+            Self::Direct => "the job's own figures",
+            Self::En1992 => "EN 1992-1-1:2004",
+            Self::Aci423 => "the ACI-ASCE 423 method",
+            Self::Bs8110 => "BS 8110-1:1997",
+            Self::As3600 => "AS 3600:2018",
+        }
+    }
+}
+
 impl Default for Published {
     /// Every key at its default.
     fn default() -> Self {

@@ -1,6 +1,6 @@
 //! How much hangs on the method of long-term loss.
 
-use crate::analysis::{Analysis, pair};
+use crate::analysis::Analysis;
 use crate::job::LongTermMethod;
 use crate::report::table::{Align, plain, table};
 use crate::units::{STRESS, Unit, Units};
@@ -75,16 +75,11 @@ fn row(analysis: &Analysis, method: LongTermMethod, stress: Unit) -> Vec<String>
 
 /// The spread of the mean service force, on average and at its widest.
 fn spread(analysis: &Analysis) -> Option<String> {
-    let spreads: Vec<(&str, f64)> = pair(analysis)
-        .filter_map(|(tendon, result)| Some((tendon.mark.as_str(), result.spread()?.ratio)))
-        .collect();
-    let (mark, widest) = *spreads.iter().max_by(|a, b| a.1.total_cmp(&b.1))?;
-    let count = u32::try_from(spreads.len()).ok()?;
-    let mean = spreads.iter().map(|spread| spread.1).sum::<f64>() / f64::from(count);
+    let spread = analysis.spread()?;
     Some(format!(
         "  Between the methods the mean service force of a tendon differs by {:.1} % on average, {:.1} % at most ({}).\n",
-        100.0 * mean,
-        100.0 * widest,
-        plain(mark)
+        100.0 * spread.mean_ratio,
+        100.0 * spread.widest_ratio,
+        plain(&spread.widest)
     ))
 }
