@@ -319,7 +319,7 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
         lock_off(result.samples.first()),
         lock_off(result.samples.last()),
     );
-    let by_method = by_method::stresses(tendon, result);
+    let by_method = by_method::stresses(result);
     let worked = Worked {
         tendon,
         profile: result.profile.as_ref(),

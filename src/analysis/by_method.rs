@@ -2,7 +2,7 @@
 
 use std::collections::BTreeMap;
 
-use super::{Refusal, TendonResult};
+use super::{Refusal, TendonResult, samples};
 use crate::checks::Ground;
 use crate::checks::standards::MethodStress;
 use crate::finding::{Finding, Level, Rule};
@@ -43,6 +43,8 @@ pub struct MethodForces {
     pub mean_service_kn: f64,
     /// Service force at each of the tendon's points, kN.
     pub service_kn: Vec<f64>,
+    /// Greatest force after elastic shortening, and in service: station, metres, and kN.
+    pub greatest_kn: [(f64, f64); 2],
     /// Mean force some days after stressing, in the order of [`DAYS`], kN; `None` where the method knows no time.
     pub in_time_kn: [Option<f64>; DAYS.len()],
     /// Mean force in the end, kN.
@@ -99,6 +101,7 @@ pub(super) fn by_each(
             service_kn: stations
                 .map(|station_m| effective.service_kn(station_m))
                 .collect(),
+            greatest_kn: greatest(tendon, along, &effective),
             in_time_kn: DAYS.map(|days| {
                 let when = When::Age(stressing_days + days);
                 if knows_time { mean_kn(when) } else { None }
@@ -118,30 +121,41 @@ pub(super) fn by_each(
         .collect()
 }
 
-/// The greatest stresses after lock-off, anywhere, and in service, at the tendon's points, by each method that gives a loss.
-pub(super) fn stresses(tendon: &Tendon, result: &TendonResult) -> Vec<MethodStress> {
+/// The greatest forces after elastic shortening and in service: at the samples, and where a draw-in ends.
+fn greatest(tendon: &Tendon, along: &Along<'_, '_>, effective: &Effective<'_>) -> [(f64, f64); 2] {
+    let length_m = tendon.path.length_m();
+    let [start, end] = along.stressed().ends().map(|end| end.draw_in_reach_m);
+    let peaks = [start, end.map(|reach_m| length_m - reach_m)];
+    let peaks = peaks.into_iter().flatten();
+    let mut greatest = [(0.0, 0.0); 2];
+    for station_m in samples::stations(tendon)
+        .into_iter()
+        .chain(peaks.map(|station_m| station_m.clamp(0.0, length_m)))
+    {
+        let [.., transfer_kn, service_kn] = effective.forces_kn(station_m);
+        for (held, force_kn) in greatest.iter_mut().zip([transfer_kn, service_kn]) {
+            if force_kn > held.1 {
+                *held = (station_m, force_kn);
+            }
+        }
+    }
+    greatest
+}
+
+/// The greatest stresses after elastic shortening and in service, by each method that gives a loss.
+pub(super) fn stresses(result: &TendonResult) -> Vec<MethodStress> {
     let Some(steel) = result.forces.as_ref().map(|forces| forces.steel) else {
-        return Vec::new();
-    };
-    let greatest = |places: &mut dyn Iterator<Item = (f64, f64)>| {
-        let place = places.max_by(|a, b| a.1.total_cmp(&b.1))?;
-        Some((place.0, steel.stress_mpa(place.1)))
-    };
-    let mut lockoff = result
-        .samples
-        .iter()
-        .filter_map(|sample| Some((sample.station_m, sample.forces_kn[1]?)));
-    let Some((station_m, lockoff_mpa)) = greatest(&mut lockoff) else {
         return Vec::new();
     };
     let of = |one: &MethodResult| {
         let forces = one.outcome.as_ref().ok()?;
-        let stations = tendon.points.iter().map(|point| point.station_m);
-        let mut service = stations.zip(forces.service_kn.iter().copied());
+        let [transfer, service] = forces
+            .greatest_kn
+            .map(|(station_m, force_kn)| (station_m, steel.stress_mpa(force_kn)));
         Some(MethodStress {
             method: one.method,
-            transfer: (station_m, lockoff_mpa - forces.lost.shortening_mpa),
-            service: greatest(&mut service)?,
+            transfer,
+            service,
         })
     };
     result.by_method.iter().filter_map(of).collect()

@@ -68,7 +68,7 @@ impl<'s, 'p> Along<'s, 'p> {
     }
 
     /// The tendon.
-    pub(super) fn stressed(&self) -> &'s Stressed<'p> {
+    pub fn stressed(&self) -> &'s Stressed<'p> {
         self.stressed
     }
 
