@@ -8,7 +8,7 @@ use crate::checks::standards::MethodStress;
 use crate::finding::{Finding, Level, Rule};
 use crate::floor::{Faces, Tendon};
 use crate::job::{LongTerm, LongTermMethod};
-use crate::losses::long_term::{Case, Lost, Method, Place, When};
+use crate::losses::long_term::{Case, Lost, Method, NoLoss, Place, When};
 use crate::losses::{Along, Effective, NoForce, faces_by_points};
 
 /// See its meaning.
@@ -28,6 +28,14 @@ pub struct MethodResult {
     pub method: LongTermMethod,
     /// What it gives, or why nothing.
     pub outcome: Result<MethodForces, NoForce>,
+}
+
+impl MethodResult {
+    /// Why the method gives no force before the end; `None` where it gives one, or no force at all.
+    pub fn no_force_in_time(&self) -> Option<NoLoss> {
+        let silent = self.outcome.is_ok() && !self.method.knows_time();
+        silent.then(|| NoLoss::FinalOnly(self.method.word()))
+    }
 }
 
 /// What a method gives.
@@ -90,7 +98,6 @@ pub(super) fn by_each(
         } else {
             Effective::new(along, job, method, case, asked(job))?
         };
-        let knows_time = matches!(method, LongTermMethod::En1992 | LongTermMethod::As3600);
         let stressing_days = job.published.stressing_days;
         let stations = tendon.points.iter().map(|point| point.station_m);
         Ok(MethodForces {
@@ -104,7 +111,11 @@ pub(super) fn by_each(
             greatest_kn: greatest(tendon, along, &effective),
             in_time_kn: DAYS.map(|days| {
                 let when = When::Age(stressing_days + days);
-                if knows_time { mean_kn(when) } else { None }
+                if method.knows_time() {
+                    mean_kn(when)
+                } else {
+                    None
+                }
             }),
             final_kn: match asked(job) {
                 When::Final => Some(effective.mean_service_kn()),

@@ -103,6 +103,11 @@ words! { Environment, "Where a floor stands, by the words of AS 3600 3.1.7.2.",
 }
 
 impl LongTermMethod {
+    /// Whether it gives the loss at any age, not only in the end.
+    pub fn knows_time(self) -> bool {
+        matches!(self, Self::En1992 | Self::As3600)
+    }
+
     /// Where it is published.
     pub fn standard(self) -> &'static str {
         match self {

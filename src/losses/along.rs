@@ -173,6 +173,7 @@ impl<'s, 'p> Along<'s, 'p> {
                 .notional_thickness_m
                 .or(own_m)
                 .map(|m| 1e3 * m),
+            thickness_given: job.published.notional_thickness_m.is_some(),
             turn,
             mean: Place {
                 lockoff_mpa: mean_mpa,

@@ -1,6 +1,9 @@
 //! The result as CSV tables (RFC 4180), one for each reader: units in the header, as the job wants them, numbers rounded to what is measured.
 
 mod cells;
+mod methods;
+
+pub use self::methods::methods_csv;
 
 use self::cells::{end_kind, figure, point_kind, rounded, run, text, written};
 use super::record::{FindingRecord, TendonRecord};
