@@ -374,6 +374,7 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
             "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
         ));
     }
+    said.extend(by_method::recalled(&job.long_term));
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(
             "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \

@@ -8,7 +8,7 @@ use crate::checks::standards::MethodStress;
 use crate::finding::{Finding, Level, Rule};
 use crate::floor::{Faces, Tendon};
 use crate::job::{LongTerm, LongTermMethod};
-use crate::losses::long_term::{Case, Lost, Method, NoLoss, Place, When};
+use crate::losses::long_term::{self, Case, Lost, Method, NoLoss, Place, When};
 use crate::losses::{Along, Effective, NoForce, faces_by_points};
 
 /// See its meaning.
@@ -73,6 +73,20 @@ pub(super) fn faces(
     by_zones
         .filter(|faces| faces.iter().any(|(_, faces)| faces.thickness_m.is_some()))
         .unwrap_or_else(|| faces_by_points(tendon))
+}
+
+/// A sentence for each of the job's methods that quotes something from memory.
+pub(super) fn recalled(job: &LongTerm) -> Vec<String> {
+    let methods = job.all_methods().into_iter();
+    methods
+        .filter_map(|method| {
+            let what = long_term::recalled(method)?;
+            Some(format!(
+                "{} quotes from memory, to be checked against the standard: {what}.",
+                method.word()
+            ))
+        })
+        .collect()
 }
 
 /// When the job asks for the service force.

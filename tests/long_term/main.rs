@@ -2,6 +2,9 @@
 
 mod formulas;
 mod in_slab;
+mod kit;
 mod methods;
+mod refused;
+mod shown;
 mod side_by_side;
 mod sweep;

@@ -27,7 +27,7 @@ fn path(path: &Path) -> &str {
 }
 
 /// A demo drawing marked by a job of these lines below `[long_term]`.
-struct Marked {
+pub(crate) struct Marked {
     status: Option<i32>,
     summary: String,
     messages: String,
@@ -36,7 +36,7 @@ struct Marked {
 }
 
 impl Marked {
-    fn by(stem: &'static str, long_term: &str) -> Self {
+    pub(crate) fn by(stem: &'static str, long_term: &str) -> Self {
         Self::by_job(stem, &format!("[long_term]\n{long_term}"))
     }
 
@@ -62,16 +62,16 @@ impl Marked {
         }
     }
 
-    fn read(&self, ending: &str) -> String {
+    pub(crate) fn read(&self, ending: &str) -> String {
         let file = self.folder.path().join(format!("{}-{ending}", self.stem));
         fs::read_to_string(file).unwrap_or_else(|_| panic!("no {ending}: {}", self.messages))
     }
 
-    fn result(&self) -> Value {
+    pub(crate) fn result(&self) -> Value {
         serde_json::from_str(&self.read("result.json")).expect("the result is JSON")
     }
 
-    fn tendons(&self) -> Vec<Value> {
+    pub(crate) fn tendons(&self) -> Vec<Value> {
         self.result()["tendons"].as_array().expect("a list").clone()
     }
 }
@@ -82,7 +82,7 @@ fn number(value: &Value) -> f64 {
         .unwrap_or_else(|| panic!("{value} is no number"))
 }
 
-const EVERY: &str = "methods = [\"en1992\", \"aci423\", \"bs8110\", \"as3600\", \"direct\"]\n\
+pub(crate) const EVERY: &str = "methods = [\"en1992\", \"aci423\", \"bs8110\", \"as3600\", \"direct\"]\n\
                      basic_relaxation = 0.02\nrelaxation_stress_factor = 1.1\n";
 
 #[test]
