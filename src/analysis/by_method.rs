@@ -51,8 +51,8 @@ pub struct MethodForces {
     pub mean_service_kn: f64,
     /// Service force at each of the tendon's points, kN.
     pub service_kn: Vec<f64>,
-    /// Greatest force after elastic shortening, and in service: station, metres, and kN.
-    pub greatest_kn: [(f64, f64); 2],
+    /// Greatest force after elastic shortening, and in service: station, metres, and kN; by a standard's method only.
+    pub greatest_kn: Option<[(f64, f64); 2]>,
     /// Mean force some days after stressing, in the order of [`DAYS`], kN; `None` where the method knows no time.
     pub in_time_kn: [Option<f64>; DAYS.len()],
     /// Mean force in the end, kN.
@@ -122,7 +122,8 @@ pub(super) fn by_each(
             service_kn: stations
                 .map(|station_m| effective.service_kn(station_m))
                 .collect(),
-            greatest_kn: greatest(tendon, along, &effective),
+            greatest_kn: (method != LongTermMethod::Direct)
+                .then(|| greatest(tendon, along, &effective)),
             in_time_kn: DAYS.map(|days| {
                 let when = When::Age(stressing_days + days);
                 if method.knows_time() {
@@ -175,7 +176,7 @@ pub(super) fn stresses(result: &TendonResult) -> Vec<MethodStress> {
     let of = |one: &MethodResult| {
         let forces = one.outcome.as_ref().ok()?;
         let [transfer, service] = forces
-            .greatest_kn
+            .greatest_kn?
             .map(|(station_m, force_kn)| (station_m, steel.stress_mpa(force_kn)));
         Some(MethodStress {
             method: one.method,

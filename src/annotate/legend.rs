@@ -27,9 +27,13 @@ const PITCH: f64 = 1.7;
 pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let mut column = Column::new(letter_m);
     column.heading(HEADING);
-    column.sentence(
-        "Colours: service force (after all losses) left along each tendon, % of its jacking force",
-    );
+    column.sentence(&format!(
+        "Colours: service force ({}) left along each tendon, % of its jacking force",
+        match job.long_term.published.asked_days {
+            None => "after all losses".to_owned(),
+            Some(_) => format!("after losses, {}", job.long_term.asked_words()),
+        }
+    ));
     for class in 0..ramp::RAMP.len() {
         column.patch(class);
     }

@@ -162,6 +162,14 @@ impl LongTerm {
         all
     }
 
+    /// When the service force is asked for, in words.
+    pub fn asked_words(&self) -> String {
+        self.published.asked_days.map_or_else(
+            || "in the end".to_owned(),
+            |days| format!("at an age of {days} days"),
+        )
+    }
+
     /// Whether a method is named that works its figures out by clauses.
     pub fn asks_published(&self) -> bool {
         let direct = LongTermMethod::Direct;

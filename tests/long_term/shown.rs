@@ -79,3 +79,55 @@ fn what_a_method_quotes_from_memory_is_in_every_result_and_in_the_readme() {
             .contains("quotes from memory")
     );
 }
+
+#[test]
+fn a_force_asked_for_before_the_end_is_never_called_the_final_one() {
+    let asked = "method = \"en1992\"\nmethods = [\"as3600\"]\nasked_days = 94\n\
+                 basic_relaxation = 0.02\nrelaxation_stress_factor = 1.1\n";
+    let marked = Marked::by("small-floor", asked);
+    assert!(
+        marked
+            .summary
+            .contains("Long-term loss by each method at an age of 94 days")
+    );
+    let drawing = marked.read("marked.dxf");
+    assert!(!drawing.contains("after all losses"));
+    assert!(drawing.contains("94 days"));
+    let sheet = marked.sheet("B01");
+    assert!(sheet.contains("service: at an age of 94 days"));
+    let last = Marked::by("small-floor", "method = \"en1992\"\n");
+    assert!(last.read("marked.dxf").contains("after all losses"));
+    assert!(last.sheet("B01").contains("service: in the end"));
+}
+
+#[test]
+fn the_sheet_says_the_units_that_a_method_is_published_in() {
+    let job = format!("units = \"us\"\n[height]\nunit = \"mm\"\n[long_term]\n{EVERY}");
+    let sheet = Marked::by_job("small-floor", &job).sheet("D005");
+    let after = |word: &str| {
+        let (_, part) = sheet.split_once(word).expect("the method is on the sheet");
+        part.lines().nth(1).unwrap_or_default().to_owned()
+    };
+    assert!(after("method aci423").ends_with("as published in psi and inches"));
+    assert!(after("method en1992").contains("as published in SI"));
+    for line in [
+        "K_es = 0.5, at stressing in turn",
+        "E_c = 2400^1.5 x 0.043 sqrt(f_cmi)",
+        "eps*_cse = (0.07 f'c - 0.5) 50e-6 = (0.07 x 30 - 0.5) 50e-6",
+        "factor = 1.5, at post-tensioned strand",
+        "A_p/A_c = sigma_cp/mean stress after lock-off",
+        "f'ci = 20 MPa = 2900.75 psi",
+    ] {
+        assert!(sheet.contains(line), "{line} is not in:\n{sheet}");
+    }
+    // 0.64 and more of strength is of the part of the table that was at hand.
+    let c = sheet
+        .lines()
+        .find(|line| line.trim_start().starts_with("C = "));
+    let c = c.expect("C is on the sheet");
+    assert_eq!(
+        c.contains("f_pi/f_pu = 0.63"),
+        c.contains("from memory"),
+        "{c}"
+    );
+}

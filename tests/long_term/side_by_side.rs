@@ -29,7 +29,7 @@ fn path(path: &Path) -> &str {
 /// A demo drawing marked by a job of these lines below `[long_term]`.
 pub(crate) struct Marked {
     status: Option<i32>,
-    summary: String,
+    pub(crate) summary: String,
     messages: String,
     folder: TempDir,
     stem: &'static str,
@@ -40,7 +40,7 @@ impl Marked {
         Self::by_job(stem, &format!("[long_term]\n{long_term}"))
     }
 
-    fn by_job(stem: &'static str, job: &str) -> Self {
+    pub(crate) fn by_job(stem: &'static str, job: &str) -> Self {
         let folder = TempDir::new().expect("a folder");
         let file = folder.path().join("job.toml");
         fs::write(&file, job).expect("written");
@@ -65,6 +65,14 @@ impl Marked {
     pub(crate) fn read(&self, ending: &str) -> String {
         let file = self.folder.path().join(format!("{}-{ending}", self.stem));
         fs::read_to_string(file).unwrap_or_else(|_| panic!("no {ending}: {}", self.messages))
+    }
+
+    /// A tendon's calculation sheet by the same job.
+    pub(crate) fn sheet(&self, mark: &str) -> String {
+        let drawing = demo(&format!("{}.dxf", self.stem));
+        let job = self.folder.path().join("job.toml");
+        let output = tautplan(&["tendon", path(&drawing), mark, "--job", path(&job)]);
+        String::from_utf8_lossy(&output.stdout).into_owned()
     }
 
     pub(crate) fn result(&self) -> Value {

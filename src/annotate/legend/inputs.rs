@@ -65,12 +65,6 @@ fn direct(job: &Job) -> [String; 2] {
 /// A published method with the values that it looks at.
 fn published(job: &Job, method: LongTermMethod) -> String {
     let (given, stress) = (&job.long_term.published, job.units.of(STRESS));
-    let days = |days: Option<f64>| {
-        days.map_or_else(
-            || "in the end".to_owned(),
-            |days| format!("at an age of {days} days"),
-        )
-    };
     let all = [
         (
             "strength_mpa",
@@ -115,7 +109,7 @@ fn published(job: &Job, method: LongTermMethod) -> String {
         "Losses after lock-off by {} ({}), {}: {}; values that it quotes from memory are marked on the calculation sheet",
         method.word(),
         method.standard(),
-        days(given.asked_days),
+        job.long_term.asked_words(),
         asked.join(", ")
     )
 }

@@ -67,7 +67,7 @@ fn working(number: &str, method: LongTermMethod, forces: &MethodForces, units: U
     )];
     if units == Units::Us {
         text.push(format!(
-            "  equations as published, in {}\n",
+            "  equations as published in {}\n",
             published_in(method)
         ));
     }
@@ -131,14 +131,16 @@ fn line(equation: &Equation, units: Units) -> String {
 }
 
 /// Service force by each method, point by point, and the mean force against time.
-pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, units: Units) -> String {
+pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, job: &Job) -> String {
+    let units = job.units;
     let force = units.of(FORCE);
     let methods = &result.by_method;
     let mut text = Vec::new();
     if methods.len() > 1 {
         text.push(format!(
-            "10. Service force by each method, {} per tendon\n",
-            force.name
+            "10. Service force by each method, {} per tendon, {}\n",
+            force.name,
+            job.long_term.asked_words()
         ));
         text.push(points(tendon, methods, units));
         if let Some(spread) = result.spread() {

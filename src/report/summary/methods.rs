@@ -1,17 +1,17 @@
 //! How much hangs on the method of long-term loss.
 
 use crate::analysis::Analysis;
-use crate::job::LongTermMethod;
+use crate::job::{Job, LongTermMethod};
 use crate::report::table::{Align, plain, table};
-use crate::units::{STRESS, Unit, Units};
+use crate::units::{STRESS, Unit};
 
 /// Losses and service force by each method, and the spread between them; `None` where the job names one only.
-pub(super) fn part(analysis: &Analysis, units: Units) -> Option<String> {
+pub(super) fn part(analysis: &Analysis, job: &Job) -> Option<String> {
     let methods = analysis.methods();
     if methods.len() < 2 {
         return None;
     }
-    let stress = units.of(STRESS);
+    let stress = job.units.of(STRESS);
     let [shortening, shrinkage, creep, relaxation] =
         ["shortening", "shrinkage", "creep", "relaxation"]
             .map(|loss| format!("{loss} {}", stress.name));
@@ -29,7 +29,11 @@ pub(super) fn part(analysis: &Analysis, units: Units) -> Option<String> {
     let mut aligns = [Align::Right; 7];
     aligns[0] = Align::Left;
     let mut text = format!(
-        "Long-term loss by each method, means over the tendons that it gives a loss for; {} is drawn and checked:\n{}",
+        "Long-term loss by each method{}, means over the tendons that it gives a loss for; {} is drawn and checked:\n{}",
+        match job.long_term.published.asked_days {
+            None => String::new(),
+            Some(_) => format!(" {}", job.long_term.asked_words()),
+        },
         methods.first().map_or("", |method| method.word()),
         table(&aligns, &rows)
     );
