@@ -15,6 +15,7 @@ pub struct Along<'s, 'p> {
 }
 
 /// From a station on the concrete lies so.
+#[expect(clippy::struct_field_names, reason = "each says its unit")]
 #[derive(Debug, Clone, Copy)]
 struct Step {
     from_m: f64,
