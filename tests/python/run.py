@@ -118,6 +118,9 @@ def main():
         methods, out = floor.with_name("harbour-level-2-methods.toml"), scratch / "methods"
         if check("mark by every method", [program, "mark", floor, "--job", methods, "--out", out]):
             check("methods", script("methods", out / "harbour-level-2-result.json"))
+        for job in sorted((ROOT / "tests/data/methods").glob("*.toml")):
+            check(f"workings by {job.name}", script("workings", program, ROOT / "demo-drawings" / "small-floor.dxf", job, "B01", "B04", "D001", "D010"))
+        check("workings by every method", script("workings", program, floor, methods, "B01", "D031", "D043", "D070"))
         check("creep and shrinkage", script("creep_shrinkage", "--check"))
         check("offices drawn again", script("offices", "--check"))
         check("foreign floors", script("foreign", program, 1000, FOREIGN_FLOORS))

@@ -103,7 +103,8 @@ impl Aci423 {
                 ))
                 .recalled(),
             Equation::new("V/S", self.v_over_s, "in", "1 in = 25.4 mm")
-                .by("half of 2 A/u", format!("{} mm", n(mm(self.v_over_s)))),
+                .by("", format!("{} mm", n(mm(self.v_over_s))))
+                .at("half of 2 A/u".to_owned()),
             Equation::new("SH", self.sh, "psi", "ACI-ASCE 423 method, SH").by(
                 "8.2e-6 K_sh E_s (1 - 0.06 V/S)(100 - RH)",
                 format!(

@@ -152,7 +152,7 @@ impl As3600 {
                 ),
             ),
             Equation::new("k_3", c.k_3, "", clause)
-                .by("2.7/(1 + log tau)", format!("2.7/(1 + log {stressing})")),
+                .by("2.7/(1 + log(tau))", format!("2.7/(1 + log({stressing}))")),
             Equation::new("k_5", c.k_5, "", clause).at(format!(
                 "f'c = {} MPa: 1, above 50 MPa (2 - alpha_3) - 0.02 (1 - alpha_3) f'c, alpha_3 = {}",
                 n(self.f_c),
