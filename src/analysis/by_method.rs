@@ -28,6 +28,8 @@ pub struct MethodResult {
     pub method: LongTermMethod,
     /// What it gives, or why nothing.
     pub outcome: Result<MethodForces, NoForce>,
+    /// Mean force in the end, kN: also where the job asks at an age that the method knows nothing of.
+    pub final_kn: Option<f64>,
 }
 
 impl MethodResult {
@@ -55,8 +57,6 @@ pub struct MethodForces {
     pub greatest_kn: Option<[(f64, f64); 2]>,
     /// Mean force some days after stressing, in the order of [`DAYS`], kN; `None` where the method knows no time.
     pub in_time_kn: [Option<f64>; DAYS.len()],
-    /// Mean force in the end, kN.
-    pub final_kn: Option<f64>,
 }
 
 /// Where the concrete lies along a tendon, for the methods that ask: by the slab's zones where they are known, else by the
@@ -102,11 +102,11 @@ pub(super) fn by_each(
     case: &Case,
     drawn: &Result<Effective<'_>, NoForce>,
 ) -> Vec<MethodResult> {
+    let mean_kn = |method: LongTermMethod, when| {
+        let at = Effective::new(along, job, method, case, when).ok()?;
+        Some(at.mean_service_kn())
+    };
     let work = |method: LongTermMethod| {
-        let mean_kn = |when| {
-            let at = Effective::new(along, job, method, case, when).ok()?;
-            Some(at.mean_service_kn())
-        };
         let effective = if method == job.method {
             drawn.clone()?
         } else {
@@ -127,22 +127,27 @@ pub(super) fn by_each(
             in_time_kn: DAYS.map(|days| {
                 let when = When::Age(stressing_days + days);
                 if method.knows_time() {
-                    mean_kn(when)
+                    mean_kn(method, when)
                 } else {
                     None
                 }
             }),
-            final_kn: match asked(job) {
-                When::Final => Some(effective.mean_service_kn()),
-                When::Age(_) => mean_kn(When::Final),
-            },
         })
     };
     let named = job.all_methods().into_iter();
     named
-        .map(|method| MethodResult {
-            method,
-            outcome: work(method),
+        .map(|method| {
+            let outcome: Result<MethodForces, NoForce> = work(method);
+            let final_kn = match (asked(job), &outcome) {
+                (When::Final, Ok(forces)) => Some(forces.mean_service_kn),
+                (When::Final, Err(_)) => None,
+                (When::Age(_), _) => mean_kn(method, When::Final),
+            };
+            MethodResult {
+                method,
+                outcome,
+                final_kn,
+            }
         })
         .collect()
 }

@@ -208,6 +208,12 @@ fn force_falls_with_time_towards_the_final() {
     assert_eq!(early["mean_service_kn"], table["force_kn"]);
     let reason = early["losses_by_method"]["aci423"]["no_loss"].as_str();
     assert!(reason.is_some_and(|reason| reason.contains("final loss only")));
+    // What it knows it still says.
+    for method in ALL {
+        let of = |tendon: &Value| tendon["losses_by_method"][method]["mean_force_final_kn"].clone();
+        assert_eq!(of(early), of(tendon), "{method}");
+        assert!(of(early).is_number());
+    }
 }
 
 #[test]

@@ -155,7 +155,7 @@ pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, job: &Job) ->
             ));
         }
     }
-    if methods.iter().any(|one| one.outcome.is_ok()) {
+    if methods.iter().any(|one| one.final_kn.is_some()) {
         text.push(format!(
             "{}. Mean force along the tendon against time after stressing, {} per tendon\n",
             if methods.len() > 1 { "\n11" } else { "9" },
@@ -212,7 +212,7 @@ fn in_time(methods: &[MethodResult], force: Unit) -> String {
                 let in_time = forces.and_then(|forces| *forces.in_time_kn.get(at)?);
                 figure(force, in_time, 2)
             }));
-            row.push(figure(force, forces.and_then(|forces| forces.final_kn), 2));
+            row.push(figure(force, one.final_kn, 2));
             row
         })
         .collect();

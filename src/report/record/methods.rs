@@ -53,7 +53,7 @@ pub(super) fn losses(result: &TendonResult) -> BTreeMap<&'static str, MethodReco
                 relaxation_mpa: lost.and_then(|lost| number(lost.relaxation_mpa)),
                 mean_service_kn: forces.and_then(|forces| number(forces.mean_service_kn)),
                 mean_force_in_time: in_time.collect(),
-                mean_force_final_kn: forces.and_then(|forces| forces.final_kn).and_then(number),
+                mean_force_final_kn: one.final_kn.and_then(number),
                 no_force_in_time: one.no_force_in_time().map(|reason| reason.to_string()),
                 no_loss: one.outcome.as_ref().err().map(ToString::to_string),
             };
