@@ -175,7 +175,7 @@ pub static KEYS: &[Key] = &[
     key("layers", "slab_opening", Kind::Shell(place!(conventions.layers.slab_opening)),
         "Openings.", CONVENTION),
     key("layers", "slab_zone", Kind::Shell(place!(conventions.layers.slab_zone)),
-        "Zones with a thickness of their own, and thickness texts.", CONVENTION),
+        "Zones with a thickness of their own, and thickness texts; on a layer of slab_edge too, outlines that lie in another are zones.", CONVENTION),
     key("layers", "column", Kind::Shell(place!(conventions.layers.column)),
         "Columns and walls.", CONVENTION),
 
