@@ -246,6 +246,8 @@ fn each_other_mistake_is_told_apart() {
         ("[drawing]\nunit = \"inch\"\n", "does not know \"inch\""),
         ("[slab]\nthickness_mm = 1979-05-27\n", "cannot be a date"),
         ("[tendon]\ndefault_strand = \"13\"\n", "not known"),
+        ("[tendon]\ndefault_strands = 4.5\n", "not a whole number"),
+        ("[tendon]\ndefault_strands = 0\n", "0"),
         (
             "[limits]\nhogging_radius_error_m = 9\n",
             "before it is a warning",

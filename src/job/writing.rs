@@ -79,7 +79,7 @@ fn describe(text: &mut String, key: &Key, job: &Job) {
         None => format!("Not given: {}. For example:", key.source),
     };
     let allowed = match &key.kind {
-        Kind::Number { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
+        Kind::Number { .. } | Kind::Count { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
             format!("{}. ", capital(&key.expected()))
         }
         _ => String::new(),
