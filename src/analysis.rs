@@ -8,14 +8,16 @@ mod by_method;
 mod findings_on;
 mod refusals;
 mod samples;
+mod spread;
 
 use std::cmp::Ordering;
 
 use geo::Coord;
 use rayon::prelude::*;
 
-pub use self::by_method::{DAYS, MethodForces, MethodResult, Spread};
+pub use self::by_method::{DAYS, MethodForces, MethodResult};
 pub use self::refusals::{Refusal, rules};
+pub use self::spread::{FloorSpread, Spread};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
 use crate::floor::{Floor, Tendon};
@@ -140,6 +142,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
                 stressed[index].as_ref().map_err(Clone::clone),
                 stresses_mpa[index],
                 turns[index],
+                Some(&ground),
             );
             let mut found: Vec<Finding> = refusal
                 .and_then(|refusal| refusal.finding(&tendons[index]))
@@ -194,6 +197,7 @@ pub fn work_tendon(
         stressed.as_ref().map_err(Clone::clone),
         concrete_stress_mpa,
         Turn::of_many(),
+        None,
     )
 }
 
@@ -252,10 +256,12 @@ fn finish(
     stressed: Result<&Pulls<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
     turn: Turn,
+    ground: Option<&Ground<'_>>,
 ) -> (TendonResult, Option<Refusal>) {
     let jacked = stressed.as_ref().ok().copied();
     let long_term = &job.long_term;
-    let along = stressed.map(|pulls| Along::new(pulls, tendon));
+    let along =
+        stressed.map(|pulls| Along::new(pulls, by_method::faces(tendon, ground, long_term)));
     let known = along.as_ref().map_err(Clone::clone).and_then(|along| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
         Ok((along, along.case(long_term, stress_mpa, turn)))
@@ -335,7 +341,7 @@ fn check(tendon: &Tendon, result: &TendonResult, ground: &Ground<'_>, job: &Job)
         lock_off(result.samples.first()),
         lock_off(result.samples.last()),
     );
-    let by_method = by_method::stresses(tendon, result);
+    let by_method = by_method::stresses(result);
     let worked = Worked {
         tendon,
         profile: result.profile.as_ref(),

@@ -11,6 +11,7 @@ pub mod elevation;
 pub mod ends;
 pub mod ground;
 pub mod openings;
+pub mod order;
 pub mod plan;
 pub mod profile;
 mod pulls;
@@ -81,6 +82,7 @@ pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
     found.extend(standards::jacking(job));
+    found.extend(order::stressing_order(floor, job));
     found.extend(edge::no_outline(floor));
     found
 }
@@ -96,7 +98,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 19] = [
+static RULES: [&Rule; 20] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -116,6 +118,7 @@ static RULES: [&Rule; 19] = [
     &curvature::CURVATURE_LOSS,
     &required::FORCE_BELOW_REQUIRED,
     &standards::STANDARD_STRESS,
+    &order::STRESSING_ORDER,
 ];
 
 impl Worked<'_> {

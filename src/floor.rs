@@ -13,6 +13,7 @@ mod groups;
 mod habits;
 mod heights;
 mod index;
+mod inward;
 mod joints;
 mod labels;
 mod lacks;

@@ -6,6 +6,7 @@
 use std::collections::BTreeSet;
 use std::fmt;
 
+mod asked;
 mod automaton;
 mod default;
 mod expressions;

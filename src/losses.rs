@@ -22,7 +22,7 @@ mod stressed;
 mod turns;
 mod types;
 
-pub use along::Along;
+pub use along::{Along, faces_by_points};
 pub use effective::{Effective, NoForce};
 pub use extension::extension_mm;
 pub use friction::{Friction, force_kn, loss_kn};

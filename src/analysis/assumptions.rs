@@ -1,6 +1,6 @@
 //! What is assumed of a floor while it is worked out.
 
-use super::TendonResult;
+use super::{TendonResult, by_method};
 use crate::floor::{EndKind, Floor, PointKind, Tendon};
 use crate::job::Job;
 
@@ -26,6 +26,7 @@ pub(super) fn sentences(floor: &Floor, results: &[TendonResult], job: &Job) -> V
             "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
         ));
     }
+    said.extend(by_method::recalled(&job.long_term));
     said.extend(in_pours(floor, job));
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(

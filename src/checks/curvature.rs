@@ -144,7 +144,7 @@ mod tests {
     use crate::geometry::Path;
     use crate::job::LongTermMethod;
     use crate::losses::long_term::{Turn, When};
-    use crate::losses::{Along, Effective, Friction, Pulls};
+    use crate::losses::{Along, Effective, Friction, Pulls, faces_by_points};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -247,7 +247,7 @@ mod tests {
             for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
                 let stressed =
                     Pulls::new(&profile, steel, kinds, 0, &job.stressing).expect("forces");
-                let in_slab = Along::new(&stressed, &tendon);
+                let in_slab = Along::new(&stressed, faces_by_points(&tendon));
                 let case = in_slab.case(&job.long_term, 1.2, Turn::of_many());
                 let (direct, when) = (LongTermMethod::Direct, When::Final);
                 let effective =

@@ -24,12 +24,13 @@ pub struct Order {
 }
 
 /// What each drawing's files end with, in the order they are listed.
-const ENDINGS: [&str; 6] = [
+const ENDINGS: [&str; 7] = [
     "-marked.dxf",
     "-result.json",
     "-tendons.csv",
     "-points.csv",
     "-extensions.csv",
+    "-methods.csv",
     "-findings.csv",
 ];
 
@@ -81,12 +82,13 @@ fn mark(
             }
         })?;
     drop(sheet);
-    let contents: [Pieces<'_>; 6] = [
+    let contents: [Pieces<'_>; 7] = [
         marked,
         text(report::json(&done.facts, &job.inputs(), analysis)),
         text(report::tendons_csv(analysis, job.units)),
         text(report::points_csv(analysis, job.units)),
         text(report::extensions_csv(analysis, job.units)),
+        text(report::methods_csv(analysis, job.units)),
         text(report::findings_csv(analysis, job.units)),
     ];
     let written: Vec<(PathBuf, Pieces<'_>)> =

@@ -43,6 +43,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
     units::check(plan, &floor.tendons, drawing.unit_m, drawing.unit_from)?;
     let mut analysis = analysis::work(floor, job, findings);
     analysis.fallbacks = job_file.resolved.fallbacks();
+    analysis.assumptions.extend(job_file.resolved.idle());
     let name = plan.file_name().unwrap_or(plan.as_os_str());
     Ok(Work {
         facts: DrawingFacts {

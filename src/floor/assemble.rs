@@ -157,7 +157,7 @@ fn drawn(
         run: line.run,
         path: line.path.clone(),
         tendons: said.tendons.unwrap_or(1),
-        strands: said.strands,
+        strands: said.strands.or(job.tendon.default_strands),
         strand: said.strand.as_ref().map(|written| {
             let known = job.tendon.strand_named(written);
             known.map_or_else(|| written.clone(), |size| size.name.clone())

@@ -54,6 +54,8 @@ pub(super) enum Ground {
     Zone,
     /// Columns and walls.
     Column,
+    /// Slab edge and zones: an outline inside another is a zone.
+    Slab,
 }
 
 /// The roles of a drawing's layers.
@@ -184,6 +186,8 @@ fn role(sets: &[Selectors; 12], layer: &str, colour: Option<u8>, linetype: &str)
     };
     let ground = if opening {
         Ground::Opening
+    } else if zone && edge {
+        Ground::Slab
     } else if zone {
         Ground::Zone
     } else if column {

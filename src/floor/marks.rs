@@ -236,7 +236,8 @@ pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
             )),
             None => Some((
                 "no label within reach gives the number of strands; expected a text such as D012 5-12.7",
-                "write mark and strands beside the tendon, on the layer of marks",
+                "write mark and strands beside the tendon, on the layer of marks; or, where a note gives them for all others, set \
+                 default_strands below [tendon]",
             )),
             Some(0) => Some((
                 "the tendon's label says 0 strands; expected at least one, as in D012 5-12.7",

@@ -4,6 +4,7 @@ use crate::finding::Rule;
 
 /// Every rule of this stage, by name.
 pub const RULES: &[&Rule] = &[
+    &ANCHOR_HEIGHT_INSIDE,
     &DUPLICATE_LINE,
     &END_CONTRADICTED,
     &END_UNCLAIMED,
@@ -38,6 +39,12 @@ pub const RULES: &[&Rule] = &[
     &THICKNESS_UNKNOWN,
     &ZONE_UNREAD,
 ];
+
+/// A height near to an end and not at it.
+pub(super) const ANCHOR_HEIGHT_INSIDE: Rule = Rule {
+    name: "anchor-height-inside",
+    meaning: "A bare height that stands alone within 0.6 m of an end, and not at it, is the anchor's or has a word for high or low.",
+};
 
 /// The same line drawn twice.
 pub(super) const DUPLICATE_LINE: Rule = Rule {

@@ -138,6 +138,7 @@ fn tendon() -> TendonJob {
             size("15.7", &["0.62"], 150.0),
         ],
         default_strand: None,
+        default_strands: None,
         strand_modulus_mpa: 195_000.0,
         yield_ratio: 0.9,
         duct_height_m: 0.020,

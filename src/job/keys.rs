@@ -175,7 +175,7 @@ pub static KEYS: &[Key] = &[
     key("layers", "slab_opening", Kind::Shell(place!(conventions.layers.slab_opening)),
         "Openings.", CONVENTION),
     key("layers", "slab_zone", Kind::Shell(place!(conventions.layers.slab_zone)),
-        "Zones with a thickness of their own, and thickness texts.", CONVENTION),
+        "Zones with a thickness of their own, and thickness texts; on a layer of slab_edge too, outlines that lie in another are zones.", CONVENTION),
     key("layers", "column", Kind::Shell(place!(conventions.layers.column)),
         "Columns and walls.", CONVENTION),
 
@@ -318,6 +318,14 @@ pub static KEYS: &[Key] = &[
             set: |job, name| job.tendon.default_strand = Some(name.to_owned()),
         },
         "Size of strand where a mark gives only a count.",
+        "such a tendon gets a finding and no forces"),
+    key("tendon", "default_strands", Kind::Count {
+            least: 1,
+            most: 100,
+            get: |job| job.tendon.default_strands,
+            set: |job, count| job.tendon.default_strands = Some(count),
+        },
+        "Strands in each tendon for which the drawing gives no number, as where a note says so.",
         "such a tendon gets a finding and no forces"),
     key("tendon", "strand_modulus_mpa", number!(100_000.0..=250_000.0, tendon.strand_modulus_mpa, ONE),
         "Modulus of the strand.", "common practice, 195 GPa give or take 10"),

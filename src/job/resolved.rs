@@ -238,6 +238,8 @@ pub struct TendonJob {
     pub strands: Vec<StrandSize>,
     /// Size of a strand where a mark gives only a count; `None`: a finding.
     pub default_strand: Option<String>,
+    /// Strands in each tendon for which the drawing gives no number; `None`: a finding.
+    pub default_strands: Option<u32>,
     /// Strand modulus, MPa.
     pub strand_modulus_mpa: f64,
     /// Yield (0.1 % proof or as the limit's standard says) as a fraction of strength.

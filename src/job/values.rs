@@ -6,6 +6,7 @@ use toml::de::{DeArray, DeValue};
 
 use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
+use crate::job::patterns::whole;
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
 use crate::patterns::{Names, PatternRefused, Selectors};
 
@@ -21,6 +22,27 @@ impl Reader {
                 if let Some(number) = self.number(key.name, (*least, *most), &key.example(), entry)
                 {
                     set(&mut self.job, number);
+                }
+            }
+            (
+                Kind::Count {
+                    least, most, set, ..
+                },
+                DeValue::Integer(_) | DeValue::Float(_),
+            ) => {
+                let range = (f64::from(*least), f64::from(*most));
+                match self
+                    .number(key.name, range, &key.example(), entry)
+                    .map(whole)
+                {
+                    Some(Some(count)) => set(&mut self.job, count),
+                    Some(None) => self.mistake(
+                        entry.span(),
+                        format!("`{}` is not a whole number", key.name),
+                        format!("expected {}", key.expected()),
+                        format!("type for example `{}`", key.example()),
+                    ),
+                    None => {}
                 }
             }
             (Kind::Choice { words, set, .. }, DeValue::String(word)) => {

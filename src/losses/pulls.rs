@@ -121,6 +121,22 @@ impl<'p> Pulls<'p> {
         self.both_kn(station_m)[1]
     }
 
+    /// Stations where a draw-in ends, metres: the force after lock-off is greatest at one of them.
+    pub fn peaks_m(&self) -> impl Iterator<Item = f64> {
+        self.each().flat_map(|one| {
+            let [from_m, to_m] = one.stations_m;
+            let [start, end] = one.stressed.ends().map(|end| end.draw_in_reach_m);
+            let peaks = [
+                start.map(|reach_m| from_m + reach_m),
+                end.map(|reach_m| to_m - reach_m),
+            ];
+            peaks
+                .into_iter()
+                .flatten()
+                .map(move |peak_m| peak_m.clamp(from_m, to_m))
+        })
+    }
+
     /// Mean force after lock-off along the tendon in space, kN.
     pub fn mean_lockoff_kn(&self) -> f64 {
         let sum = |of: fn(&Stressed<'p>) -> f64| -> f64 {

@@ -2,8 +2,10 @@
 
 mod cells;
 mod extensions;
+mod methods;
 
 pub use self::extensions::extensions_csv;
+pub use self::methods::methods_csv;
 
 use self::cells::{end_kind, figure, point_kind, rounded, run, text, written};
 use super::record::{FindingRecord, TendonRecord};

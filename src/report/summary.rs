@@ -30,7 +30,7 @@ const LINE: usize = 120;
 pub fn summary(facts: &DrawingFacts, analysis: &Analysis, job: &Job, files: &[String]) -> String {
     let mut parts = vec![counts(facts, analysis, job)];
     parts.extend(worst(analysis, job.units));
-    parts.extend(methods::part(analysis, job.units));
+    parts.extend(methods::part(analysis, job));
     parts.push(findings(&analysis.findings));
     parts.push(assumed(analysis));
     parts.extend(list("Written:", files));

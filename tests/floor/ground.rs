@@ -1,7 +1,8 @@
 //! Slab zones, and the thickness that points take from them.
 
 use tautplan::finding::{Finding, Level};
-use tautplan::floor::{Floor, Tendon};
+use tautplan::floor::{Floor, Tendon, read};
+use tautplan::job::Job;
 
 use crate::kit::Board;
 use crate::sketch::{BANDED, mm, only, rules, tendon, told};
@@ -123,4 +124,29 @@ fn a_floor_without_a_thickness_says_so_once() {
         [None, Some(30), None],
         "no mid-depth without a depth"
     );
+}
+
+#[test]
+fn of_outlines_on_one_layer_for_edge_and_zones_the_inner_are_zones() {
+    let mut board = Board::new();
+    board.rectangle("STRUCTURE", (0.0, 0.0), (40.0, 20.0));
+    board.rectangle("STRUCTURE", (12.0, 2.0), (18.0, 9.0));
+    board.write("STRUCTURE", "T250", (30.0, 15.0));
+    board.write("STRUCTURE", "T350", (15.0, 6.0));
+    board.bare_tendon(BANDED, "B01", [0.0, 40.0], 5.0);
+    for (x, content) in [(5.0, "L30"), (15.0, "H165"), (25.0, "L30"), (35.0, "H165")] {
+        board.height(content, (x, 5.0));
+    }
+    let mut job = Job::default();
+    for layers in [
+        &mut job.conventions.layers.slab_edge,
+        &mut job.conventions.layers.slab_zone,
+    ] {
+        *layers = vec!["STRUCTURE".to_owned()];
+    }
+    let (floor, findings) = read(&board.drawing, &job);
+    assert_eq!(found(&floor), [250, 250, 350, 250, 250, 250].map(Some));
+    assert_eq!(floor.slab.outlines.len(), 1);
+    assert_eq!(floor.slab.zones.len(), 1);
+    assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
 }

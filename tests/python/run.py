@@ -124,6 +124,12 @@ def main():
             out = scratch / office
             if check(f"mark {office}", [program, "mark", plan, *given, "--out", out], expected=(0, 1)):
                 check(f"recompute {office}", script("recompute", plan, out / f"{office}-result.json", 7))
+        for job in sorted((ROOT / "tests/data/methods").glob("*.toml")):
+            check(f"workings by {job.name}", script("workings", program, ROOT / "demo-drawings" / "small-floor.dxf", job, "B01", "B04", "D001", "D010"))
+        check("workings by every method", script("workings", program, floor, methods, "B01", "D031", "D043", "D070"))
+        unbonded, out = ROOT / "tests/data/methods/unbonded.toml", scratch / "unbonded"
+        if check("mark unbonded", [program, "mark", ROOT / "demo-drawings/small-floor.dxf", "--job", unbonded, "--out", out], expected=(0, 1)):
+            check("methods, unbonded", script("methods", out / "small-floor-result.json"))
         check("creep and shrinkage", script("creep_shrinkage", "--check"))
         check("offices drawn again", script("offices", "--check"))
         check("foreign floors", script("foreign", program, 1000, FOREIGN_FLOORS))

@@ -7,7 +7,7 @@ use crate::analysis::TendonResult;
 use crate::floor::Tendon;
 use crate::job::Job;
 use crate::losses::Forces;
-use crate::units::{FORCE, LONG, SHORT, STEEL, STRESS, Units, WORK};
+use crate::units::{FORCE, LONG, SHORT, STEEL, STRESS, WORK};
 
 /// Everything after jacking.
 pub(super) fn part(
@@ -24,10 +24,10 @@ pub(super) fn part(
         "5, 6. No losses after lock-off: what the tendon lacks is among the findings below.\n"
             .to_owned()
     });
-    parts.push(left(tendon, forces, result, job.units));
+    parts.push(left(tendon, forces, result, job));
     parts.push(extension(job, forces, pulls));
     parts.push(methods::others(result, job.units));
-    parts.push(methods::side_by_side(tendon, result, job.units));
+    parts.push(methods::side_by_side(tendon, result, job));
     parts.retain(|part| !part.is_empty());
     parts.join("\n")
 }
@@ -80,7 +80,8 @@ fn draw_in(job: &Job, forces: &Forces, pulls: &[Shown<'_>]) -> String {
     text.concat()
 }
 
-fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult, units: Units) -> String {
+fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult, job: &Job) -> String {
+    let units = job.units;
     let (force, long) = (units.of(FORCE), units.of(LONG));
     let rows = tendon
         .points
@@ -96,7 +97,11 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult, units: Units) -
             row
         })
         .collect();
-    let mut text = vec![format!("7. Forces, {} per tendon\n", force.name)];
+    let mut text = vec![format!(
+        "7. Forces, {} per tendon; service: {}\n",
+        force.name,
+        job.long_term.asked_words()
+    )];
     text.push(grid(
         1,
         &[
