@@ -80,9 +80,7 @@ fn along_spacing_m(room: &Room, index: usize, tendon: &Tendon) -> Option<f64> {
 fn spacing_at_m(room: &Room, index: usize, tendon: &Tendon, station_m: f64) -> Option<f64> {
     let place = tendon.path.place_at(station_m);
     let heading = tendon.path.heading_at(station_m);
-    room.pieces_near(place, REACH_M)
-        .into_iter()
-        .filter(|piece| piece.tendon != index)
+    room.pieces_near(place, REACH_M, index)
         .filter_map(|piece| {
             let direction = (piece.to.y - piece.from.y).atan2(piece.to.x - piece.from.x);
             let turn = turn_rad(direction - heading).abs();

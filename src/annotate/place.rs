@@ -32,8 +32,6 @@ pub(super) struct Room {
 /// A piece of a tendon line near a place.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Piece {
-    /// Index of the tendon in the floor.
-    pub(super) tendon: usize,
     /// Start.
     pub(super) from: Coord<f64>,
     /// End.
@@ -104,18 +102,19 @@ impl Room {
         self.texts.insert([from, to, to, from]);
     }
 
-    /// Pieces of tendon lines within reach of a place, in the floor's order.
-    pub(super) fn pieces_near(&self, place: Coord<f64>, reach_m: f64) -> Vec<Piece> {
+    /// Pieces of other tendons' lines within reach of a place, some of them more than once.
+    pub(super) fn pieces_near(
+        &self,
+        place: Coord<f64>,
+        reach_m: f64,
+        tendon: usize,
+    ) -> impl Iterator<Item = Piece> {
         let quad = Spot::upright(place, 2.0 * reach_m, 2.0 * reach_m).quad(0.0);
-        self.lines
-            .near(&quad)
-            .into_iter()
-            .filter_map(|index| {
-                let [from, to, ..] = *self.lines.quad(index)?;
-                let tendon = *self.tendons.get(index)?;
-                Some(Piece { tendon, from, to })
-            })
-            .collect()
+        let of_others = move |index| self.tendons.get(index).is_some_and(|&of| of != tendon);
+        self.lines.touching(quad, of_others).filter_map(|index| {
+            let [from, to, ..] = *self.lines.quad(index)?;
+            Some(Piece { from, to })
+        })
     }
 }
 

@@ -262,14 +262,34 @@ impl<'a> Tags<'a> {
         if rest.is_empty() {
             return None;
         }
-        let (line, end) = match memchr(b'\n', rest) {
+        let (line, end) = match near(b'\n', rest) {
             Some(length) => (&rest[..length], at + length + 1),
             None => (rest, self.bytes.len()),
         };
         Some((line.strip_suffix(b"\r").unwrap_or(line), end))
     }
 
+    /// The tag at the cursor if it is written as nearly all are: a plain code, and whole lines.
     #[inline]
+    fn plain(&mut self) -> Option<Tag<'a>> {
+        let start = self.at;
+        let rest = self.bytes.get(start..)?;
+        let (code, head) = plain_code(rest)?;
+        let body = rest.get(head..)?;
+        let length = near(b'\n', body)?;
+        let line = body.get(..length)?;
+        let value_start = start + head;
+        self.at = value_start + length + 1;
+        Some(Tag {
+            code,
+            value: line.strip_suffix(b"\r").unwrap_or(line),
+            start,
+            end: self.at,
+            value_start,
+            kind: Kind::Text,
+        })
+    }
+
     fn ascii(&mut self) -> Option<Result<Tag<'a>, BadTag>> {
         let start = self.at;
         let (code_line, value_start) = self.line(start)?;
@@ -315,7 +335,7 @@ impl<'a> Tags<'a> {
             return Some(Err(bad(start, Bad::Code, found)));
         };
         let (before, length, after) = match (kind, size) {
-            (Kind::Text, _) => match memchr(0, body) {
+            (Kind::Text, _) => match near(0, body) {
                 Some(length) => (0, length, 1),
                 None => return cut(),
             },
@@ -350,6 +370,15 @@ impl<'a> Iterator for Tags<'a> {
             if self.done {
                 return None;
             }
+            if self.form == Form::Ascii
+                && let Some(tag) = self.plain()
+            {
+                if tag.code == 999 {
+                    continue;
+                }
+                self.done = tag.begins(b"EOF");
+                return Some(Ok(tag));
+            }
             let next = match self.form {
                 Form::Ascii => self.ascii(),
                 Form::Binary { wide } => self.binary(wide),
@@ -383,6 +412,71 @@ pub(super) fn is_name(name: &[u8]) -> bool {
         Some(_) => decimal(name).is_none(),
         None => false,
     }
+}
+
+/// The number of a code line without sign and without blanks behind it, and the line's length with its end.
+#[inline]
+fn plain_code(bytes: &[u8]) -> Option<(i32, usize)> {
+    // Three columns, as most programs write it.
+    if let Some(&[hundreds, tens, ones, after, last]) = bytes.first_chunk() {
+        let length = match (after, last) {
+            (b'\n', _) => 4,
+            (b'\r', b'\n') => 5,
+            _ => 0,
+        };
+        let digit = |byte: u8| byte.wrapping_sub(b'0');
+        let written = |byte: u8| digit(byte) <= 9;
+        let places = if written(hundreds) {
+            written(tens)
+        } else {
+            hundreds == b' ' && (written(tens) || tens == b' ')
+        };
+        if length > 0 && places && written(ones) {
+            let place = |byte: u8, worth: i32| {
+                if written(byte) {
+                    worth * i32::from(digit(byte))
+                } else {
+                    0
+                }
+            };
+            return Some((
+                place(hundreds, 100) + place(tens, 10) + place(ones, 1),
+                length,
+            ));
+        }
+    }
+    let blanks = bytes.iter().take_while(|b| **b == b' ').count();
+    let mut code = 0;
+    let digits = bytes.get(blanks..)?;
+    for (index, &byte) in digits.iter().enumerate().take(6) {
+        match byte {
+            b'0'..=b'9' if index < 5 => code = 10 * code + i32::from(byte - b'0'),
+            b'\n' if index > 0 => return Some((code, blanks + index + 1)),
+            b'\r' if index > 0 && digits.get(index + 1) == Some(&b'\n') => {
+                return Some((code, blanks + index + 2));
+            }
+            _ => return None,
+        }
+    }
+    None
+}
+
+/// Where a byte is first found; it is looked for by eight bytes at a time, since it mostly stands near.
+#[inline]
+fn near(byte: u8, bytes: &[u8]) -> Option<usize> {
+    const ONES: u64 = u64::MAX / 255;
+    let wanted = ONES * u64::from(byte);
+    let (eights, _) = bytes.as_chunks::<8>();
+    for (index, eight) in eights.iter().take(4).enumerate() {
+        // The lowest byte that is nought here is the first that is the wanted one.
+        let unlike = u64::from_le_bytes(*eight) ^ wanted;
+        let found = unlike.wrapping_sub(ONES) & !unlike & (ONES << 7);
+        if found != 0 {
+            return Some(8 * index + found.trailing_zeros() as usize / 8);
+        }
+    }
+    let passed = 8 * eights.len().min(4);
+    memchr(byte, bytes.get(passed..)?).map(|length| passed + length)
 }
 
 /// A code line's number; blanks and tabs around it are allowed.

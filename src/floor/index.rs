@@ -100,8 +100,11 @@ impl Index {
 
     /// For each line within reach, in order of lines, the place nearest to `place`.
     pub(super) fn feet(&self, place: Coord<f64>, reach_m: f64) -> Vec<Foot> {
-        let mut feet: Vec<Foot> = self
-            .around(&[place], reach_m + CHORD_M)
+        let mut chords = self.around(&[place], reach_m + CHORD_M);
+        // Chords of one piece of a line have one foot.
+        chords.sort_unstable_by(|a, b| a.line.cmp(&b.line).then(a.start_m.total_cmp(&b.start_m)));
+        chords.dedup_by(|a, b| a.is_of_piece(b));
+        let mut feet: Vec<Foot> = chords
             .into_iter()
             .map(|chord| chord.foot(place))
             .filter(|foot| foot.distance_m <= reach_m)
@@ -118,6 +121,13 @@ impl Index {
 }
 
 impl Chord {
+    /// Whether both belong to the same piece of the same line.
+    fn is_of_piece(&self, other: &Self) -> bool {
+        self.line == other.line
+            && self.start_m.total_cmp(&other.start_m).is_eq()
+            && self.segment == other.segment
+    }
+
     /// The place nearest to a point on the piece of line that the chord belongs to.
     pub(super) fn foot(&self, place: Coord<f64>) -> Foot {
         let along_m = self.segment.nearest_along_m(place);

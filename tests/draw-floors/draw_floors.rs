@@ -43,7 +43,8 @@ impl Floor {
     }
 }
 
-const USAGE: &str = "usage: draw-floors demos | reference PATH | r12 PATH | binary PATH | tendons N PATH";
+const USAGE: &str =
+    "usage: draw-floors demos | reference PATH | r12 PATH | binary PATH | tendons N PATH";
 
 fn main() -> ExitCode {
     let words = std::env::args().skip(1).collect::<Vec<_>>();

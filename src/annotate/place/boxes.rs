@@ -56,7 +56,7 @@ impl Boxes {
 
     /// Numbers of the quadrangles that overlap this one, in the order they came.
     pub(in crate::annotate) fn near(&self, quad: &Quad) -> Vec<usize> {
-        let mut found: Vec<usize> = self.touching(quad).collect();
+        let mut found: Vec<usize> = self.touching(*quad, |_| true).collect();
         found.sort_unstable();
         found.dedup();
         found
@@ -69,12 +69,16 @@ impl Boxes {
 
     /// Whether no quadrangle overlaps this one.
     pub(in crate::annotate) fn is_clear(&self, quad: &Quad) -> bool {
-        self.touching(quad).next().is_none()
+        self.touching(*quad, |_| true).next().is_none()
     }
 
-    /// Numbers of the quadrangles that overlap this one, some of them more than once.
-    fn touching(&self, quad: &Quad) -> impl Iterator<Item = usize> {
-        let cells = self.cells_of(quad);
+    /// Numbers of those of the quadrangles asked for that overlap this one, some of them more than once.
+    pub(in crate::annotate) fn touching(
+        &self,
+        quad: Quad,
+        asked: impl Fn(usize) -> bool,
+    ) -> impl Iterator<Item = usize> {
+        let cells = self.cells_of(&quad);
         let every = cells.is_none().then_some(0..self.quads.len());
         let filed = cells
             .into_iter()
@@ -83,9 +87,9 @@ impl Boxes {
             .flatten()
             .chain(&self.large)
             .copied();
-        let quad = *quad;
         filed
             .chain(every.into_iter().flatten())
+            .filter(move |&index| asked(index))
             .filter(move |&index| {
                 self.quad(index)
                     .is_some_and(|other| !apart_by_bounds(&quad, other) && overlap(&quad, other))

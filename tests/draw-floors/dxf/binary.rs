@@ -14,10 +14,22 @@ pub(crate) fn binary(text: &str) -> Vec<u8> {
 
 /// Kinds of value by code as the DXF reference lists them.
 fn put(bytes: &mut Vec<u8>, code: u16, value: &str) {
-    let whole = || value.trim().parse::<i64>().unwrap_or_default().to_le_bytes();
+    let whole = || {
+        value
+            .trim()
+            .parse::<i64>()
+            .unwrap_or_default()
+            .to_le_bytes()
+    };
     match code {
         10..=59 | 110..=149 | 210..=239 | 460..=469 | 1010..=1059 => {
-            bytes.extend(value.trim().parse::<f64>().unwrap_or_default().to_le_bytes());
+            bytes.extend(
+                value
+                    .trim()
+                    .parse::<f64>()
+                    .unwrap_or_default()
+                    .to_le_bytes(),
+            );
         }
         60..=79 | 170..=179 | 270..=289 | 370..=389 | 400..=409 | 1060..=1070 => {
             bytes.extend(&whole()[..2]);
