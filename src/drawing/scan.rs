@@ -28,9 +28,11 @@ pub(super) fn scan(bytes: &[u8]) -> Result<Scan, Refusal> {
 
 fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
     let mut pass = Pass::new(bytes);
-    for tag in Tags::new(bytes) {
+    let mut tags = Tags::new(bytes);
+    while let Some(tag) = tags.next() {
         tag.and_then(|tag| pass.take(&tag))
             .map_err(|bad| pass.refusal(&bad))?;
+        pass.pass_over(&mut tags);
     }
     pass.finish()
 }
@@ -182,11 +184,27 @@ impl<'a> Pass<'a> {
             0 => return self.begin_record(tag),
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
-            // Coordinates are nearly all of a file and say nothing here.
             10..=61 | 210..=239 if !matches!(self.record, Record::Block | Record::Style) => {}
             _ => self.record_tag(tag),
         }
         Ok(())
+    }
+
+    /// Passes over what says nothing here: coordinates are nearly all of a file.
+    #[inline]
+    fn pass_over(&mut self, tags: &mut Tags<'a>) {
+        if self.section == Section::Header || matches!(self.record, Record::Block | Record::Style) {
+            return;
+        }
+        let of_use = |code| {
+            matches!(
+                code,
+                0 | 2 | 5 | 6 | 8 | 62 | 66 | 67 | 70 | 101 | 102 | 105 | 320..=369 | 390..=399 | 480 | 481 | 999 | 1005
+            )
+        };
+        if let Some(end) = tags.pass_over(|code| !of_use(code)) {
+            self.scan.tags_end = end;
+        }
     }
 
     fn header_tag(&mut self, tag: &Tag<'a>) {

@@ -317,47 +317,63 @@ impl<'a> Tags<'a> {
 
     fn binary(&mut self, wide: bool) -> Option<Result<Tag<'a>, BadTag>> {
         let start = self.at;
-        let rest = self.bytes.get(start..)?;
-        let first = *rest.first()?;
+        let rest = self.bytes.get(start..).filter(|rest| !rest.is_empty())?;
         let cut = || Some(Err(bad(start, Bad::Cut, "a tag cut short".to_owned())));
-        let (code, code_bytes) = if wide || first == 255 {
-            let skip = usize::from(!wide);
-            match rest.get(skip..skip + 2) {
-                Some(&[low, high]) => (i32::from(i16::from_le_bytes([low, high])), skip + 2),
-                _ => return cut(),
-            }
-        } else {
-            (i32::from(first), 1)
+        let Some((code, head)) = binary_code(rest, wide) else {
+            return cut();
         };
-        let body = rest.get(code_bytes..).unwrap_or_default();
         let Some((kind, size)) = binary_size(code, wide) else {
             let found = format!("group code {code}, which binary DXF does not know");
             return Some(Err(bad(start, Bad::Code, found)));
         };
-        let (before, length, after) = match (kind, size) {
-            (Kind::Text, _) => match near(0, body) {
-                Some(length) => (0, length, 1),
-                None => return cut(),
-            },
-            (Kind::Chunk, _) => match body.first() {
-                Some(&length) => (1, usize::from(length), 0),
-                None => return cut(),
-            },
-            (_, size) => (0, size, 0),
-        };
-        let Some(value) = body.get(before..before + length) else {
+        let body = rest.get(head..).unwrap_or_default();
+        let Some(value) = binary_value(kind, size, body) else {
             return cut();
         };
-        let value_start = start + code_bytes + before;
-        self.at = value_start + length + after;
+        let after = usize::from(kind == Kind::Text);
+        let value_start = start + head + value.start;
+        self.at = start + head + value.end + after;
         Some(Ok(Tag {
             code,
-            value,
+            value: body.get(value)?,
             start,
             end: self.at,
             value_start,
             kind,
         }))
+    }
+
+    /// Passes over tags for as long as they are soundly written and their codes of no use; where the last of them ends, if
+    /// there is one.
+    #[inline]
+    pub(super) fn pass_over(&mut self, useless: impl Fn(i32) -> bool) -> Option<usize> {
+        let mut last = None;
+        while let Some(end) = self.end_of_useless(&useless).filter(|_| !self.done) {
+            self.at = end;
+            last = Some(end);
+        }
+        last
+    }
+
+    #[inline]
+    fn end_of_useless(&self, useless: impl Fn(i32) -> bool) -> Option<usize> {
+        let rest = self.bytes.get(self.at..)?;
+        let (code, head) = match self.form {
+            Form::Ascii => plain_code(rest)?,
+            Form::Binary { wide } => binary_code(rest, wide)?,
+        };
+        if !useless(code) {
+            return None;
+        }
+        let body = rest.get(head..)?;
+        let length = match self.form {
+            Form::Ascii => near(b'\n', body)? + 1,
+            Form::Binary { wide } => {
+                let (kind, size) = binary_size(code, wide)?;
+                binary_value(kind, size, body)?.end + usize::from(kind == Kind::Text)
+            }
+        };
+        Some(self.at + head + length)
     }
 }
 
@@ -487,6 +503,28 @@ fn code_of(line: &[u8]) -> Option<i32> {
         return None;
     }
     whole(word).and_then(|code| i32::try_from(code).ok())
+}
+
+/// A binary code, and how many bytes it takes.
+#[inline]
+fn binary_code(bytes: &[u8], wide: bool) -> Option<(i32, usize)> {
+    match (wide, bytes) {
+        (true, &[low, high, ..]) => Some((i16::from_le_bytes([low, high]).into(), 2)),
+        (false, &[255, low, high, ..]) => Some((i16::from_le_bytes([low, high]).into(), 3)),
+        (false, &[code, ..]) if code != 255 => Some((code.into(), 1)),
+        _ => None,
+    }
+}
+
+/// Where a binary value stands behind its code; a text has a byte behind it. `None` where the file ends before it does.
+#[inline]
+fn binary_value(kind: Kind, size: usize, body: &[u8]) -> Option<Range<usize>> {
+    let value = match kind {
+        Kind::Text => 0..near(0, body)?,
+        Kind::Chunk => 1..1 + usize::from(*body.first()?),
+        Kind::Float | Kind::Integer => 0..size,
+    };
+    (value.end <= body.len()).then_some(value)
 }
 
 /// What binary DXF holds under a code, and how many bytes where the code alone decides.

@@ -19,6 +19,8 @@ pub(super) struct Chord {
     segment: Segment,
     /// Station of the segment's start.
     start_m: f64,
+    /// Direction of a straight segment, which is asked for again and again.
+    straight_rad: Option<f64>,
 }
 
 impl RTreeObject for Chord {
@@ -50,6 +52,8 @@ impl Index {
         let mut chords = Vec::new();
         for (line, path) in paths.enumerate() {
             for (start_m, &segment) in path.pieces() {
+                let straight = matches!(segment, Segment::Line { .. });
+                let straight_rad = straight.then(|| segment.heading_at(0.0));
                 let whole = Path::new([segment]).to_line_string(CHORD_M);
                 for pair in whole.0.windows(2) {
                     split(pair[0], pair[1], |from, to| {
@@ -59,6 +63,7 @@ impl Index {
                             to,
                             segment,
                             start_m,
+                            straight_rad,
                         });
                     });
                 }
@@ -136,7 +141,9 @@ impl Chord {
             line: self.line,
             station_m: self.start_m + along_m,
             place: foot,
-            heading_rad: self.segment.heading_at(along_m),
+            heading_rad: self
+                .straight_rad
+                .unwrap_or_else(|| self.segment.heading_at(along_m)),
             distance_m: distance_m(foot, place),
         }
     }

@@ -132,22 +132,21 @@ fn apart_by_bounds(a: &Quad, b: &Quad) -> bool {
 pub(in crate::annotate) fn overlap(a: &Quad, b: &Quad) -> bool {
     const TOUCH_M: f64 = 1e-9;
     let splits = |one: &Quad, other: &Quad, from: Coord<f64>, to: Coord<f64>| {
-        let length = (to.x - from.x).hypot(to.y - from.y);
-        if length <= 0.0 {
-            return false;
-        }
-        let (nx, ny) = ((from.y - to.y) / length, (to.x - from.x) / length);
+        let (across, along) = (from.y - to.y, to.x - from.x);
         // Measured from a corner: far from the origin, plain products would lose the millimetres.
         let span = |quad: &Quad| {
             quad.iter()
-                .map(|c| (c.x - from.x) * nx + (c.y - from.y) * ny)
+                .map(|c| (c.x - from.x) * across + (c.y - from.y) * along)
                 .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), value| {
                     (low.min(value), high.max(value))
                 })
         };
         let (low_1, high_1) = span(one);
         let (low_2, high_2) = span(other);
-        low_1 > high_2 - TOUCH_M || low_2 > high_1 - TOUCH_M
+        // Apart by so much, in metres times the edge's length, which is rarely needed itself.
+        let gap = (low_1 - high_2).max(low_2 - high_1);
+        let at_most_m = across.abs() + along.abs();
+        at_most_m > 0.0 && gap > -TOUCH_M * at_most_m && gap > -TOUCH_M * across.hypot(along)
     };
     let parted = |one: &Quad, other: &Quad| {
         let [p, q, r, s] = *one;

@@ -1,30 +1,46 @@
 //! Numbers in digits, without the general machinery of formatting: nearly all that is written are numbers.
 
-/// A number's digits.
+/// A number's digits, with what stands behind them.
 pub(super) struct Digits {
-    room: [u8; 24],
+    room: [u8; 32],
     first: usize,
 }
 
 impl Digits {
-    /// A whole number.
-    pub(super) fn whole(value: i32) -> Self {
-        let mut digits = Self::none();
-        digits.put(value.unsigned_abs().into(), 10, 1);
-        digits.sign(value < 0);
+    /// Blanks and digits that there is room for.
+    pub(super) const WIDEST: usize = 24;
+
+    /// No digits yet, only the few bytes that stand behind them.
+    pub(super) fn before(behind: &str) -> Self {
+        let mut digits = Self {
+            room: [b' '; 32],
+            first: 32,
+        };
+        for byte in behind.bytes().rev() {
+            digits.push(byte);
+        }
         digits
     }
 
+    /// A whole number, blanks before it up to a width.
+    pub(super) fn whole(mut self, value: i32, width: usize) -> Self {
+        let last = self.first;
+        self.put::<10>(value.unsigned_abs().into(), 1);
+        self.sign(value < 0);
+        // The room is blank to begin with.
+        self.first = self.first.min(last.saturating_sub(width));
+        self
+    }
+
     /// A whole number, upper-case hexadecimal.
-    pub(super) fn hexadecimal(value: u64) -> Self {
-        let mut digits = Self::none();
-        digits.put(value, 16, 1);
-        digits
+    pub(super) fn hexadecimal(mut self, value: u64) -> Self {
+        self.put::<16>(value, 1);
+        self
     }
 
     /// A number that is one of whole millionths, with a decimal at least and as few as say it; `None` for any other. Below
     /// 1e15 millionths no shorter text reads back the same.
-    pub(super) fn millionths(value: f64) -> Option<Self> {
+    pub(super) fn millionths(mut self, value: f64) -> Option<Self> {
         let scaled = (value * 1e6).round();
         #[expect(
             clippy::float_cmp,
@@ -41,16 +57,18 @@ impl Digits {
         )]
         let scaled = scaled.abs() as u64;
         let (mut part, mut places) = (scaled % 1_000_000, 6);
-        while places > 1 && part % 10 == 0 {
+        if part == 0 {
+            places = 1;
+        }
+        while places > 1 && part.is_multiple_of(10) {
             part /= 10;
             places -= 1;
         }
-        let mut digits = Self::none();
-        digits.put(part, 10, places);
-        digits.push(b'.');
-        digits.put(scaled / 1_000_000, 10, 1);
-        digits.sign(value < 0.0);
-        Some(digits)
+        self.put::<10>(part, places);
+        self.push(b'.');
+        self.put::<10>(scaled / 1_000_000, 1);
+        self.sign(value < 0.0);
+        Some(self)
     }
 
     /// The digits as they are written.
@@ -58,24 +76,17 @@ impl Digits {
         self.room.get(self.first..).unwrap_or_default()
     }
 
-    fn none() -> Self {
-        Self {
-            room: [0; 24],
-            first: 24,
-        }
-    }
-
-    /// A number's digits before those that are there, at least so many.
-    fn put(&mut self, mut value: u64, base: u64, at_least: usize) {
+    /// A number's digits before what is there, at least so many.
+    fn put<const BASE: u64>(&mut self, mut value: u64, at_least: usize) {
         let last = self.first;
         while value > 0 || last - self.first < at_least {
-            let digit = u8::try_from(value % base).unwrap_or(0);
+            let digit = u8::try_from(value % BASE).unwrap_or(0);
             self.push(if digit < 10 {
                 b'0' + digit
             } else {
                 b'A' + digit - 10
             });
-            value /= base;
+            value /= BASE;
         }
     }
 
@@ -100,7 +111,7 @@ mod tests {
     use super::*;
 
     fn millionths(value: f64) -> Option<String> {
-        let digits = Digits::millionths(value)?;
+        let digits = Digits::before("").millionths(value)?;
         Some(String::from_utf8_lossy(digits.shown()).into_owned())
     }
 
@@ -125,11 +136,19 @@ mod tests {
     #[test]
     fn whole_numbers_have_their_sign_and_hexadecimal_its_letters() {
         for value in [0, 7, -30, i32::MAX, i32::MIN] {
-            assert_eq!(Digits::whole(value).shown(), value.to_string().as_bytes());
+            assert_eq!(
+                Digits::before("").whole(value, 0).shown(),
+                value.to_string().as_bytes()
+            );
         }
+        let padded = Digits::before("\r\n").whole(-3, 6);
+        assert_eq!(padded.shown(), b"    -3\r\n");
         for value in [0, 9, 10, 0xABC, u64::MAX] {
             let text = format!("{value:X}");
-            assert_eq!(Digits::hexadecimal(value).shown(), text.as_bytes());
+            assert_eq!(
+                Digits::before("").hexadecimal(value).shown(),
+                text.as_bytes()
+            );
         }
     }
 }

@@ -100,9 +100,8 @@ impl Records {
     pub(super) fn handle(&mut self, code: i16, handle: Option<u64>) {
         if let Some(handle) = handle {
             self.code(code);
-            self.bytes
-                .extend_from_slice(Digits::hexadecimal(handle).shown());
-            self.end_text();
+            let digits = Digits::before(self.behind()).hexadecimal(handle);
+            self.bytes.extend_from_slice(digits.shown());
         }
     }
 
@@ -126,11 +125,10 @@ impl Records {
 
     /// A whole number as text, padded to a width.
     fn whole(&mut self, value: i32, width: usize) {
-        let digits = Digits::whole(value);
-        let blanks = width.saturating_sub(digits.shown().len());
-        self.bytes.extend(std::iter::repeat_n(b' ', blanks));
+        let room = width.min(Digits::WIDEST);
+        self.bytes.extend(std::iter::repeat_n(b' ', width - room));
+        let digits = Digits::before(self.behind()).whole(value, room);
         self.bytes.extend_from_slice(digits.shown());
-        self.end_text();
     }
 
     /// A real number (codes 10-59), which the caller has rounded; in ASCII the shortest text that reads back the same.
@@ -140,14 +138,13 @@ impl Records {
         self.code(code);
         match self.style.form {
             Form::Ascii => {
-                if let Some(digits) = Digits::millionths(value) {
+                if let Some(digits) = Digits::before(self.behind()).millionths(value) {
                     self.bytes.extend_from_slice(digits.shown());
-                } else {
-                    let point = if value.fract() == 0.0 { ".0" } else { "" };
-                    // Writing into memory cannot fail.
-                    let _ = write!(self.bytes, "{value}{point}");
+                    return;
                 }
-                self.end_text();
+                let point = if value.fract() == 0.0 { ".0" } else { "" };
+                // Writing into memory cannot fail.
+                let _ = write!(self.bytes, "{value}{point}{}", self.style.line_end);
             }
             Form::Binary { .. } => self.bytes.extend_from_slice(&value.to_le_bytes()),
         }
@@ -155,13 +152,7 @@ impl Records {
 
     fn code(&mut self, code: i16) {
         match self.style.form {
-            Form::Ascii => {
-                let digits = Digits::whole(code.into());
-                let blanks = self.style.code_width.saturating_sub(digits.shown().len());
-                self.bytes.extend(std::iter::repeat_n(b' ', blanks));
-                self.bytes.extend_from_slice(digits.shown());
-                self.bytes.extend_from_slice(self.style.line_end.as_bytes());
-            }
+            Form::Ascii => self.whole(code.into(), self.style.code_width),
             Form::Binary { wide: true } => self.bytes.extend_from_slice(&code.to_le_bytes()),
             Form::Binary { wide: false } => match u8::try_from(code) {
                 Ok(narrow) if narrow < 255 => self.bytes.push(narrow),
@@ -174,9 +165,15 @@ impl Records {
     }
 
     fn end_text(&mut self) {
+        let behind = self.behind();
+        self.bytes.extend_from_slice(behind.as_bytes());
+    }
+
+    /// What stands behind a text.
+    fn behind(&self) -> &'static str {
         match self.style.form {
-            Form::Ascii => self.bytes.extend_from_slice(self.style.line_end.as_bytes()),
-            Form::Binary { .. } => self.bytes.push(0),
+            Form::Ascii => self.style.line_end,
+            Form::Binary { .. } => "\0",
         }
     }
 }
