@@ -433,30 +433,19 @@ pub(super) fn is_name(name: &[u8]) -> bool {
 /// The number of a code line without sign and without blanks behind it, and the line's length with its end.
 #[inline]
 fn plain_code(bytes: &[u8]) -> Option<(i32, usize)> {
-    // Three columns, as most programs write it.
+    // Three columns, as most programs write it: without a branch, a digit is its own value and a blank 16.
     if let Some(&[hundreds, tens, ones, after, last]) = bytes.first_chunk() {
-        let length = match (after, last) {
-            (b'\n', _) => 4,
-            (b'\r', b'\n') => 5,
-            _ => 0,
-        };
-        let digit = |byte: u8| byte.wrapping_sub(b'0');
-        let written = |byte: u8| digit(byte) <= 9;
-        let places = if written(hundreds) {
-            written(tens)
-        } else {
-            hundreds == b' ' && (written(tens) || tens == b' ')
-        };
-        if length > 0 && places && written(ones) {
-            let place = |byte: u8, worth: i32| {
-                if written(byte) {
-                    worth * i32::from(digit(byte))
-                } else {
-                    0
-                }
-            };
+        let [hundreds, tens, ones] = [hundreds, tens, ones].map(|column| column ^ b'0');
+        let blank = |column: u8| column == b' ' ^ b'0';
+        let sound = (ones <= 9)
+            & ((tens <= 9) | (blank(tens) & blank(hundreds)))
+            & ((hundreds <= 9) | blank(hundreds));
+        let length = if after == b'\n' { 4 } else { 5 };
+        let ends = (after == b'\n') | ((after == b'\r') & (last == b'\n'));
+        if sound & ends {
+            let worth = |column: u8, worth: i32| i32::from(column & 15) * worth;
             return Some((
-                place(hundreds, 100) + place(tens, 10) + place(ones, 1),
+                worth(hundreds, 100) + worth(tens, 10) + worth(ones, 1),
                 length,
             ));
         }
