@@ -82,21 +82,18 @@ fn spacings_m(room: &Room, index: usize, tendon: &Tendon) -> Vec<f64> {
 fn spacing_at_m(room: &Room, index: usize, tendon: &Tendon, station_m: f64) -> Option<f64> {
     let place = tendon.path.place_at(station_m);
     let heading = tendon.path.heading_at(station_m);
-    room.pieces_near(place, REACH_M, index)
-        .filter_map(|piece| {
-            let direction = (piece.to.y - piece.from.y).atan2(piece.to.x - piece.from.x);
-            let turn = turn_rad(direction - heading).abs();
-            let parallel = turn.min(std::f64::consts::PI - turn) < PARALLEL_RAD;
-            let across = across_m(place, heading, nearest(piece.from, piece.to, place));
-            (parallel && across > 0.02).then_some(across)
+    let (sin, cos) = heading.sin_cos();
+    let parallel = |other: usize, direction: f64| {
+        let turn = turn_rad(direction - heading).abs();
+        other != index && turn.min(std::f64::consts::PI - turn) < PARALLEL_RAD
+    };
+    room.pieces_near(place, REACH_M, parallel)
+        .map(|[from, to]| {
+            let point = nearest(from, to, place);
+            ((point.y - place.y) * cos - (point.x - place.x) * sin).abs()
         })
+        .filter(|&across| across > 0.02)
         .min_by(f64::total_cmp)
-}
-
-/// Distance of a point from the line through a place, metres.
-fn across_m(place: Coord<f64>, heading_rad: f64, point: Coord<f64>) -> f64 {
-    let (sin, cos) = heading_rad.sin_cos();
-    ((point.y - place.y) * cos - (point.x - place.x) * sin).abs()
 }
 
 /// The point of a piece that is nearest to a place.

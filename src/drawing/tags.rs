@@ -433,23 +433,27 @@ pub(super) fn is_name(name: &[u8]) -> bool {
 /// The number of a code line without sign and without blanks behind it, and the line's length with its end.
 #[inline]
 fn plain_code(bytes: &[u8]) -> Option<(i32, usize)> {
-    // Three columns, as most programs write it: without a branch, a digit is its own value and a blank 16.
-    if let Some(&[hundreds, tens, ones, after, last]) = bytes.first_chunk() {
-        let [hundreds, tens, ones] = [hundreds, tens, ones].map(|column| column ^ b'0');
-        let blank = |column: u8| column == b' ' ^ b'0';
-        let sound = (ones <= 9)
-            & ((tens <= 9) | (blank(tens) & blank(hundreds)))
-            & ((hundreds <= 9) | blank(hundreds));
-        let length = if after == b'\n' { 4 } else { 5 };
-        let ends = (after == b'\n') | ((after == b'\r') & (last == b'\n'));
-        if sound & ends {
-            let worth = |column: u8, worth: i32| i32::from(column & 15) * worth;
-            return Some((
-                worth(hundreds, 100) + worth(tens, 10) + worth(ones, 1),
-                length,
-            ));
-        }
-    }
+    three_columns(bytes).or_else(|| few_digits(bytes))
+}
+
+/// A code in three columns, as most programs write it: without a branch, a digit is its own value and a blank 16.
+#[inline]
+fn three_columns(bytes: &[u8]) -> Option<(i32, usize)> {
+    let &[hundreds, tens, ones, after, last] = bytes.first_chunk()?;
+    let [hundreds, tens, ones] = [hundreds, tens, ones].map(|column| column ^ b'0');
+    let blank = |column: u8| column == b' ' ^ b'0';
+    let sound = (ones <= 9)
+        & ((tens <= 9) | (blank(tens) & blank(hundreds)))
+        & ((hundreds <= 9) | blank(hundreds));
+    let ends = (after == b'\n') | ((after == b'\r') & (last == b'\n'));
+    let worth = |column: u8, worth: i32| i32::from(column & 15) * worth;
+    let code = worth(hundreds, 100) + worth(tens, 10) + worth(ones, 1);
+    (sound & ends).then_some((code, if after == b'\n' { 4 } else { 5 }))
+}
+
+/// A code in any other width.
+#[inline(never)]
+fn few_digits(bytes: &[u8]) -> Option<(i32, usize)> {
     let blanks = bytes.iter().take_while(|b| **b == b' ').count();
     let mut code = 0;
     let digits = bytes.get(blanks..)?;
