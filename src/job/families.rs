@@ -95,7 +95,7 @@ fn compiled_marks() -> Vec<Pattern> {
 
 /// Heights whose numbers are in this unit: `H165`, `H 165`, `HP=165`, `165H`, `165 (H)`, `165`.
 pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    static BY_UNIT: ByUnit = ByUnit::NONE;
+    static BY_UNIT: ByUnit = ByUnit::new();
     BY_UNIT.of(
         unit,
         &[
@@ -114,7 +114,7 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
 /// Thickness and levels of slab and zones in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`; `TOS -50`,
 /// `SSL +0.05`, `+0.05`; `SOFFIT -400`; `50 SET DOWN`. A level may stand behind a thickness.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    static BY_UNIT: ByUnit = ByUnit::NONE;
+    static BY_UNIT: ByUnit = ByUnit::new();
     BY_UNIT.of(
         unit,
         &[
@@ -153,7 +153,9 @@ pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
 struct ByUnit([OnceLock<Vec<Pattern>>; 5]);
 
 impl ByUnit {
-    const NONE: Self = Self([const { OnceLock::new() }; 5]);
+    const fn new() -> Self {
+        Self([const { OnceLock::new() }; 5])
+    }
 
     fn of(&self, unit: LengthUnit, expressions: &[(&str, &str)]) -> Vec<Pattern> {
         use LengthUnit::{Cm, Ft, In, M, Mm};

@@ -52,8 +52,8 @@ fn main() -> ExitCode {
     let done = match words.as_slice() {
         ["demos"] => demos(),
         ["reference", path] => anywhere(path, reference::floor()),
-        ["r12", path] => write(FilePath::new(path), &dxf::older(&reference())),
-        ["binary", path] => write(FilePath::new(path), &dxf::binary(&reference())),
+        ["r12", path] => write(FilePath::new(path), dxf::older(&reference())),
+        ["binary", path] => write(FilePath::new(path), dxf::binary(&reference())),
         ["tendons", count, path] => match count.parse::<u32>() {
             Ok(count @ 1..=100_000) => anywhere(path, growth::floor(count)),
             _ => Err(io::Error::other(format!(
@@ -87,7 +87,7 @@ fn demos() -> io::Result<()> {
     }
     write(
         &drawings.join("faulty-floor-faults.csv"),
-        &faulty::to_csv(&faults),
+        faulty::to_csv(&faults),
     )
 }
 
@@ -105,8 +105,8 @@ fn anywhere(path: &str, floor: Floor) -> io::Result<()> {
 fn save(drawing: &FilePath, truth: &FilePath, floor: Floor) -> io::Result<()> {
     let floor = floor.finish();
     let file = drawing.file_name().unwrap_or_default().to_string_lossy();
-    write(drawing, &floor.drawing.to_dxf())?;
-    write(truth, &truth::to_json(&file, &floor.slab, &floor.tendons))
+    write(drawing, floor.drawing.to_dxf())?;
+    write(truth, truth::to_json(&file, &floor.slab, &floor.tendons))
 }
 
 fn write(path: &FilePath, contents: impl AsRef<[u8]>) -> io::Result<()> {

@@ -19,10 +19,10 @@ fn three_columns(bytes: &[u8]) -> Option<(i32, usize)> {
     let sound = (ones <= 9)
         & ((tens <= 9) | (blank(tens) & blank(hundreds)))
         & ((hundreds <= 9) | blank(hundreds));
-    let ends = (after == b'\n') | ((after == b'\r') & (last == b'\n'));
+    let ends = after == b'\n' || (after == b'\r' && last == b'\n');
     let worth = |column: u8, worth: i32| i32::from(column & 15) * worth;
     let code = worth(hundreds, 100) + worth(tens, 10) + worth(ones, 1);
-    (sound & ends).then_some((code, if after == b'\n' { 4 } else { 5 }))
+    (sound && ends).then_some((code, if after == b'\n' { 4 } else { 5 }))
 }
 
 /// A code in any other width.
