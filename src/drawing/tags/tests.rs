@@ -1,5 +1,6 @@
 //! Tags of both forms, sound and not.
 
+use super::ascii::{code_of, plain_code};
 use super::*;
 
 fn codes(bytes: &[u8]) -> Vec<(i32, Vec<u8>)> {
@@ -80,5 +81,45 @@ fn binary_codes_of_both_widths_read_alike() {
         assert_eq!((tags[3].code, tags[3].value), (1004, &b"ab"[..]));
         assert_eq!((tags[4].code, tags[4].integer()), (290, Some(1)));
         assert_eq!(tags[4].end, bytes.len());
+    }
+}
+
+#[test]
+fn a_code_read_at_a_stroke_is_the_one_that_is_read_with_care() {
+    let mut plain = 0;
+    for line in [
+        "  0", "0", " 10", "100", "999", "1000", "1071", "   8", "99999", "-5", "+7", "0 ", "\t8",
+        " 1 0", "1 0", "1x0", " x0", "   ", "", "1", "12", "123456", "12345678",
+    ] {
+        for end in ["\n", "\r\n"] {
+            let bytes = format!("{line}{end}");
+            if let Some((code, length)) = plain_code(bytes.as_bytes()) {
+                assert_eq!(Some(code), code_of(line.as_bytes()), "{line:?}");
+                assert_eq!(length, bytes.len(), "{line:?}");
+                plain += 1;
+            }
+        }
+    }
+    assert_eq!(plain, 2 * 11);
+}
+
+#[test]
+fn what_is_passed_over_is_what_would_have_come() {
+    let mut binary = SIGNATURES[0].to_vec();
+    binary.extend(b"\0\0LINE\0\x0A\0");
+    binary.extend(2.5_f64.to_le_bytes());
+    binary.extend(b"\x01\0text\0\x36\x01\x02ab\x08\x00A\0\x0A\0\0\0");
+    let ascii = b"  0\nLINE\n 10\n2.5\n  1\ntext\n310\nab\n  8\nA\n 10\n".to_vec();
+    for bytes in [binary, ascii] {
+        let mut tags = Tags::new(&bytes);
+        let line = tags.next().and_then(Result::ok).expect("a line");
+        assert!(line.begins(b"LINE"));
+        let passed = tags.pass_over(|code| code != 8);
+        let layer = tags.next().and_then(Result::ok).expect("a layer");
+        assert_eq!((layer.code, layer.value), (8, &b"A"[..]));
+        assert_eq!(passed, Some(layer.start));
+        // A tag that is cut short is not passed over: it is told.
+        assert_eq!(tags.pass_over(|_| true), None);
+        assert!(tags.next().is_some_and(|tag| tag.is_err()));
     }
 }
