@@ -43,7 +43,7 @@ pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
     let written = if files::exists(path) {
         Err(Refused::Exists(path.clone()))
     } else {
-        files::write_all(&[(path.clone(), vec![text.into_bytes().into()])])
+        files::write(path, [text.as_bytes()]).and_then(|file| files::name(vec![file]))
     };
     match written {
         Ok(()) => {

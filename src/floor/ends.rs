@@ -280,8 +280,8 @@ impl Stakes for OneEach {
         self.0[pairing]
     }
 
-    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-        let extra = u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX);
+    fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+        let extra = u32::try_from(pairings.count().saturating_sub(1)).unwrap_or(u32::MAX);
         10.0 * f64::from(extra)
     }
 

@@ -78,9 +78,8 @@ pub(super) fn settle(
     let mut known = None;
     let mut stakes = HeightStakes {
         own: Vec::new(),
-        readings,
-        lies,
-        fixed,
+        told: lies.iter().map(|lie| told(lie, readings)).collect(),
+        fixed: in_order(fixed),
     };
     for _ in 0..ROUNDS {
         stakes.own = costs(readings, lies, lines, fixed, &taken, known.as_ref());
@@ -107,6 +106,25 @@ pub(super) fn settle(
     }
 }
 
+/// The height that a label gives if it belongs to this tendon.
+fn told(lie: &Lie, readings: &[HeightText]) -> Height {
+    Height {
+        station_m: lie.pairing.station_m,
+        at_end: lie.at_end,
+        reading: readings[lie.pairing.label],
+        label: Some(lie.pairing.label),
+    }
+}
+
+/// Heights of each line in order of station.
+fn in_order(heights: &[Vec<Height>]) -> Vec<Vec<Height>> {
+    let mut ordered = heights.to_vec();
+    for heights in &mut ordered {
+        heights.sort_by(|a, b| a.station_m.total_cmp(&b.station_m));
+    }
+    ordered
+}
+
 /// Heights by line, in order of station.
 fn by_line(
     readings: &[HeightText],
@@ -121,12 +139,7 @@ fn by_line(
     }
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
-        of_line[lie.pairing.host].push(Height {
-            station_m: lie.pairing.station_m,
-            at_end: lie.at_end,
-            reading: readings[lie.pairing.label],
-            label: Some(lie.pairing.label),
-        });
+        of_line[lie.pairing.host].push(told(lie, readings));
     }
     for heights in &mut of_line {
         heights.sort_by(|a, b| {
@@ -274,38 +287,32 @@ fn unlike(difference_m: f64) -> f64 {
 }
 
 /// Costs of height labels.
-struct HeightStakes<'a> {
+struct HeightStakes {
     own: Vec<f64>,
-    readings: &'a [HeightText],
-    lies: &'a [Lie],
-    fixed: &'a [Vec<Height>],
+    /// By pairing, the height that it stands for.
+    told: Vec<Height>,
+    /// Heights from level lines, by line, in order of station.
+    fixed: Vec<Vec<Height>>,
 }
 
-impl Stakes for HeightStakes<'_> {
+impl Stakes for HeightStakes {
     fn own(&self, pairing: usize) -> f64 {
         self.own[pairing]
     }
 
-    fn shared(&self, host: usize, pairings: &[usize]) -> f64 {
+    fn shared(&self, host: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
         let fixed = &self.fixed[host];
-        if pairings.is_empty() && fixed.is_empty() {
+        let told = pairings.map(|pairing| &self.told[pairing]);
+        if !fixed.is_empty() {
+            return sequence(Merged {
+                told: told.peekable(),
+                fixed,
+            });
+        }
+        if told.clone().next().is_none() {
             return 1.0;
         }
-        let mut heights: Vec<Height> = Vec::with_capacity(pairings.len() + fixed.len());
-        heights.extend(pairings.iter().map(|&pairing| {
-            let lie = &self.lies[pairing];
-            Height {
-                station_m: lie.pairing.station_m,
-                at_end: lie.at_end,
-                reading: self.readings[lie.pairing.label],
-                label: Some(lie.pairing.label),
-            }
-        }));
-        if !fixed.is_empty() {
-            heights.extend(fixed);
-            heights.sort_by(|a, b| a.station_m.total_cmp(&b.station_m));
-        }
-        sequence(&heights)
+        sequence(told)
     }
 
     fn apart_m(&self) -> f64 {
@@ -313,12 +320,37 @@ impl Stakes for HeightStakes<'_> {
     }
 }
 
-/// Cost of a tendon's heights together.
-fn sequence(heights: &[Height]) -> f64 {
+/// Heights of labels and of level lines in order of station; of two at one station, the label's goes first.
+#[derive(Clone)]
+struct Merged<'a, I: Iterator<Item = &'a Height>> {
+    told: std::iter::Peekable<I>,
+    fixed: &'a [Height],
+}
+
+impl<'a, I: Iterator<Item = &'a Height>> Iterator for Merged<'a, I> {
+    type Item = &'a Height;
+
+    fn next(&mut self) -> Option<&'a Height> {
+        let Some((fixed, rest)) = self.fixed.split_first() else {
+            return self.told.next();
+        };
+        let not_behind = |told: &&Height| told.station_m.total_cmp(&fixed.station_m).is_le();
+        self.told.next_if(not_behind).or_else(|| {
+            self.fixed = rest;
+            Some(fixed)
+        })
+    }
+}
+
+/// Cost of a tendon's heights together, given in order of station.
+fn sequence<'a>(heights: impl Iterator<Item = &'a Height> + Clone) -> f64 {
     let mut cost = 0.0;
-    for pair in heights.windows(2) {
-        let (a, b) = (&pair[0], &pair[1]);
-        cost += neighbours(a, b) + bare(a, b);
+    let mut before: Option<&Height> = None;
+    for height in heights.clone() {
+        if let Some(before) = before {
+            cost += neighbours(before, height) + bare(before, height);
+        }
+        before = Some(height);
     }
     // Two of a kind in a row; numbers without a word between them may be the missing other kind.
     let mut last: Option<&Height> = None;

@@ -132,20 +132,23 @@ impl Stakes for MarkStakes<'_> {
         self.own[pairing]
     }
 
-    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-        if pairings.is_empty() {
+    fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+        let mut texts = pairings.map(|pairing| &self.texts[self.lies[pairing].pairing.label]);
+        let Some(mut text) = texts.next() else {
             return 1.0;
-        }
+        };
         let mut cost = 0.0;
-        for (at, &a) in pairings.iter().enumerate() {
-            for &b in &pairings[at + 1..] {
-                let text = |pairing: usize| &self.texts[self.lies[pairing].pairing.label];
-                if clash(text(a), text(b)) {
+        loop {
+            for other in texts.clone() {
+                if clash(text, other) {
                     cost += 8.0;
                 }
             }
+            match texts.next() {
+                Some(next) => text = next,
+                None => return cost,
+            }
         }
-        cost
     }
 
     /// A tendon has one mark, wherever along it another is written.
