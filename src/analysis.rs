@@ -23,7 +23,7 @@ use crate::floor::{Floor, PointKind, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
-use crate::losses::{Along, Effective, Forces, Stressed, steel, turns};
+use crate::losses::{Along, Effective, Forces, Stressed, steel, strand_size, turns};
 use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
@@ -68,6 +68,8 @@ pub struct TendonResult {
     pub profile: Option<Profile>,
     /// The forces, if curve, strands and ends are known; without the later losses where the concrete stress is not.
     pub forces: Option<Forces>,
+    /// Name of the strand size that was worked with: the drawing's, else the job's default; `None` where there is no area.
+    pub strand: Option<String>,
     /// Steel area of all strands of one tendon, mm², if strands and size are known.
     pub area_mm2: Option<f64>,
     /// Least radius in plan.
@@ -298,6 +300,7 @@ fn finish(
     });
     let result = TendonResult {
         profile: curve.cloned(),
+        strand: strand_size(tendon, &job.tendon).map(|size| size.name.clone()),
         area_mm2: steel(tendon, &job.tendon).map(|steel| steel.area_mm2),
         plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
         turning: curve
@@ -375,6 +378,15 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
         ));
     }
     said.extend(by_method::recalled(&job.long_term));
+    let by_default = floor.tendons.iter().zip(results);
+    let by_default = by_default
+        .filter(|(tendon, result)| tendon.strand.is_none() && result.strand.is_some())
+        .count();
+    if let Some(name) = job.tendon.default_strand.as_ref().filter(|_| by_default > 0) {
+        said.push(format!(
+            "Tendons whose strand size the drawing does not give have the job's default_strand, {name}: {by_default}."
+        ));
+    }
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(
             "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \

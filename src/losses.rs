@@ -24,7 +24,7 @@ pub use effective::{Effective, NoForce};
 pub use extension::extension_mm;
 pub use friction::{Friction, force_kn, loss_kn};
 pub use shortening::shortening_mpa;
-pub use steel::steel;
+pub use steel::{steel, strand_size};
 pub use stressed::Stressed;
 pub use turns::turns;
 pub use types::{CannotStress, EndForces, Forces, LaterLosses, LossTotals, Steel};

@@ -128,6 +128,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: Some(profile()),
             forces: Some(forces()),
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: checks::turning(&profile(), &forces()),
@@ -143,6 +144,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: None,
             forces: None,
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: None,
