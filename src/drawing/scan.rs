@@ -179,7 +179,14 @@ impl<'a> Pass<'a> {
         self.last_end = self.scan.tags_end;
         self.scan.tags_end = tag.end;
         match tag.code {
-            0 => return self.begin_record(tag),
+            0 => {
+                let begun = self.begin_record(tag);
+                if begun.is_err() {
+                    // What is set in behind the sound tags stands before one that makes no sense, not within it.
+                    self.scan.tags_end = self.last_end;
+                }
+                return begun;
+            }
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             // Coordinates are nearly all of a file and say nothing here.
