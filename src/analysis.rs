@@ -382,7 +382,12 @@ fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String
     let by_default = by_default
         .filter(|(tendon, result)| tendon.strand.is_none() && result.strand.is_some())
         .count();
-    if let Some(name) = job.tendon.default_strand.as_ref().filter(|_| by_default > 0) {
+    if let Some(name) = job
+        .tendon
+        .default_strand
+        .as_ref()
+        .filter(|_| by_default > 0)
+    {
         said.push(format!(
             "Tendons whose strand size the drawing does not give have the job's default_strand, {name}: {by_default}."
         ));

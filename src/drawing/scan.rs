@@ -213,6 +213,7 @@ impl<'a> Pass<'a> {
             (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
             (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
             (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
+            (b"$MEASUREMENT", 70) => self.scan.measurement = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.
                 let seed = parse_handle(tag.word()).unwrap_or(0);
