@@ -4,6 +4,7 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use super::aims::AIMED;
 use super::candidates::Lie;
+use super::even::{between, even};
 use super::habits::Habits;
 use super::lines::{Line, axis_rad};
 use super::readings::MarkText;
@@ -18,54 +19,126 @@ pub(super) struct Marks {
     pub(super) of_line: Vec<MarkText>,
     /// Labels that went to nobody.
     pub(super) unclaimed: Vec<usize>,
-    /// Labels that fit another line about as well: label, line taken, other line.
-    pub(super) doubts: Vec<(usize, usize, usize)>,
+    /// Labels that fit another line about as well.
+    pub(super) doubts: Vec<MarkDoubt>,
+}
+
+/// A mark that fits two lines about equally well.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct MarkDoubt {
+    pub(super) label: usize,
+    /// The line that it went to, and the one that it might have gone to.
+    pub(super) lines: [usize; 2],
+    /// Whether nothing tells the two apart: then it went to neither.
+    pub(super) tied: bool,
 }
 
 /// Rounds of settling and learning.
 const ROUNDS: usize = 3;
 /// Costs that differ by less are too near to be silent about.
 const DOUBT: f64 = 0.4;
+/// Costs that differ by less are told apart by nothing.
+const TIE: f64 = 0.02;
 
 /// Settles marks.
 pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
     let mut taken: Vec<Option<usize>> = vec![None; texts.len()];
+    let even = even(lies, lines);
     let mut stakes = MarkStakes {
         own: Vec::new(),
         texts,
         lies,
     };
     for round in 0..ROUNDS {
-        stakes.own = costs(texts, lies, lines, &taken, round > 0);
+        stakes.own = costs(texts, lies, lines, &taken, &even, round > 0);
         let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
         taken = settlement.settle();
     }
     let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
+    let mut doubts: Vec<MarkDoubt> = Vec::new();
+    for label in 0..texts.len() {
+        let Some(now) = taken[label].filter(|_| settlement.choices(label).len() > 1) else {
+            continue;
+        };
+        if let Some((more, changes)) = settlement.second_best(label, DOUBT)
+            && let Some(&(_, Some(then))) = changes.iter().find(|(changed, _)| *changed == label)
+            && matters(&taken, &changes, texts, lies)
+        {
+            doubts.push(MarkDoubt {
+                label,
+                lines: [now, then].map(|pairing| lies[pairing].pairing.host),
+                tied: more.abs() < TIE,
+            });
+        }
+    }
+    // Mark and strands in texts of their own stand between two lines together.
+    let mut tied: Vec<(usize, usize)> = Vec::new();
+    for group in between(&taken, &even, lies) {
+        let changes: Vec<(usize, Option<usize>)> = group
+            .iter()
+            .map(|&(now, other)| (lies[now].pairing.label, Some(other)))
+            .collect();
+        let more = settlement.cost_of_changes(&changes);
+        if more.abs() < TIE && matters(&taken, &changes, texts, lies) {
+            tied.extend(group);
+        }
+    }
+    let of_tie: BTreeSet<usize> = tied
+        .iter()
+        .map(|&(now, _)| lies[now].pairing.label)
+        .collect();
+    doubts.retain(|doubt| !of_tie.contains(&doubt.label));
+    doubts.extend(tied.iter().map(|&(now, other)| MarkDoubt {
+        label: lies[now].pairing.label,
+        lines: [now, other].map(|pairing| lies[pairing].pairing.host),
+        tied: true,
+    }));
+    doubts.sort_by_key(|doubt| doubt.label);
+    let nobodys: BTreeSet<usize> = doubts
+        .iter()
+        .filter(|doubt| doubt.tied)
+        .map(|doubt| doubt.label)
+        .collect();
     let mut marks = Marks {
         of_line: vec![MarkText::default(); lines.len()],
         unclaimed: Vec::new(),
-        doubts: Vec::new(),
+        doubts,
     };
-    for label in 0..texts.len() {
-        let Some(now) = taken[label] else {
-            marks.unclaimed.push(label);
-            continue;
-        };
-        let whole = &mut marks.of_line[lies[now].pairing.host];
-        let said = &texts[label];
-        whole.add(said);
-        if settlement.choices(label).len() < 2 {
-            continue;
-        }
-        if let Some((_, changes)) = settlement.second_best(label, DOUBT)
-            && let Some(&(_, Some(then))) = changes.iter().find(|(changed, _)| *changed == label)
-        {
-            let hosts = (lies[now].pairing.host, lies[then].pairing.host);
-            marks.doubts.push((label, hosts.0, hosts.1));
+    for (label, said) in texts.iter().enumerate() {
+        match taken[label] {
+            Some(now) if !nobodys.contains(&label) => {
+                marks.of_line[lies[now].pairing.host].add(said);
+            }
+            Some(_) => {}
+            None => marks.unclaimed.push(label),
         }
     }
     marks
+}
+
+/// Whether a change gives some line another mark or other strands.
+fn matters(
+    taken: &[Option<usize>],
+    changes: &[(usize, Option<usize>)],
+    texts: &[MarkText],
+    lies: &[Lie],
+) -> bool {
+    let said = |pairing: usize| {
+        let lie = &lies[pairing];
+        (lie.pairing.host, &texts[lie.pairing.label])
+    };
+    let gone = changes.iter().filter_map(|&(label, _)| taken[label]);
+    let mut gone: Vec<(usize, &MarkText)> = gone.map(said).collect();
+    for come in changes.iter().filter_map(|&(_, pairing)| pairing).map(said) {
+        match gone.iter().position(|old| *old == come) {
+            Some(at) => {
+                gone.swap_remove(at);
+            }
+            None => return true,
+        }
+    }
+    !gone.is_empty()
 }
 
 fn costs(
@@ -73,6 +146,7 @@ fn costs(
     lies: &[Lie],
     lines: &[Line],
     taken: &[Option<usize>],
+    even: &[Option<usize>],
     learned: bool,
 ) -> Vec<f64> {
     let mut choices = vec![0_u32; texts.len()];
@@ -80,7 +154,13 @@ fn costs(
         choices[lie.pairing.label] += 1;
     }
     let sure = |label: usize| if choices[label] == 1 { 1.0 } else { 0.2 };
-    let held = || taken.iter().flatten().map(|&pairing| &lies[pairing]);
+    let held = || {
+        let telling = taken
+            .iter()
+            .flatten()
+            .filter(|&&pairing| even[pairing].is_none());
+        telling.map(|&pairing| &lies[pairing])
+    };
     let habits = Habits::learn(held().map(|lie| {
         let run = lines[lie.pairing.host].run;
         (run, lie, sure(lie.pairing.label))
