@@ -25,20 +25,10 @@ static SIZE: LazyLock<Option<Regex>> = LazyLock::new(|| {
     Regex::new(r#"(?i)(?:[Øø⌀∅]\s*)?\b(\d+\.\d+|\d/\d|\.\d+)\s*(mm|"|in\b)?"#).ok()
 });
 
-/// What notes say of slab and strands, by path of the key.
-pub(super) fn proposals(
-    drawing: &Drawing,
-    contents: &Contents,
-    job: &Job,
-) -> Vec<(String, Proposal)> {
-    let notes: BTreeSet<&str> = drawing
-        .texts
-        .iter()
-        .flat_map(|text| sentences(&text.content))
-        .collect();
-    let thickness = thickness(&notes, contents, job);
-    let strand = strand(&notes, job);
-    thickness.into_iter().chain(strand).collect()
+/// Lines of notes.
+fn lines(drawing: &Drawing) -> BTreeSet<&str> {
+    let texts = drawing.texts.iter();
+    texts.flat_map(|text| sentences(&text.content)).collect()
 }
 
 /// Lines of a text that are more than a label.
@@ -49,7 +39,11 @@ fn sentences(text: &str) -> impl Iterator<Item = &str> {
 }
 
 /// The one thickness that notes give to slabs, where no label of a zone says any.
-fn thickness(notes: &BTreeSet<&str>, contents: &Contents, job: &Job) -> Option<(String, Proposal)> {
+pub(super) fn thickness(
+    drawing: &Drawing,
+    contents: &Contents,
+    job: &Job,
+) -> Option<(String, Proposal)> {
     let labelled = contents
         .layers
         .values()
@@ -57,6 +51,7 @@ fn thickness(notes: &BTreeSet<&str>, contents: &Contents, job: &Job) -> Option<(
     if job.slab.thickness_m.is_some() || labelled {
         return None;
     }
+    let notes = lines(drawing);
     let of_slab = notes.iter().filter(|note| {
         let note = note.to_uppercase();
         let other = [
@@ -98,10 +93,11 @@ fn thickness(notes: &BTreeSet<&str>, contents: &Contents, job: &Job) -> Option<(
 }
 
 /// The one size that notes give to strands.
-fn strand(notes: &BTreeSet<&str>, job: &Job) -> Option<(String, Proposal)> {
+pub(super) fn strand(drawing: &Drawing, job: &Job) -> Option<(String, Proposal)> {
     if job.tendon.default_strand.is_some() {
         return None;
     }
+    let notes = lines(drawing);
     let mut said: Vec<(&str, &str)> = Vec::new();
     for note in notes
         .iter()

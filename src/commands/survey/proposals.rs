@@ -56,7 +56,7 @@ pub(super) fn proposals(
     proposals.extend(gap.map(|gap| ("drawing.bridge_gap_mm".to_owned(), gap)));
     let of_labels = labels::proposals(drawing, contents, job, &proposals);
     proposals.extend(of_labels);
-    proposals.extend(notes::proposals(drawing, contents, job));
+    proposals.extend(notes::thickness(drawing, contents, job));
     us_units(drawing, &mut proposals);
     keep_given(job_file, &mut proposals);
     for (key, proposal) in trial::proposals(drawing, &proposals) {

@@ -6,6 +6,7 @@ use std::collections::BTreeMap;
 use geo::{Distance, Euclidean};
 use serde_json::json;
 
+use super::notes;
 use crate::drawing::Drawing;
 use crate::finding::Finding;
 use crate::floor::{self, Floor, Point, PointKind};
@@ -45,6 +46,13 @@ pub(super) fn proposals(
     found.extend(face(&floor, &job));
     found.extend(soffit(&floor, &job));
     found.extend(datum(&floor, &job));
+    let mut counted = floor
+        .tendons
+        .iter()
+        .filter(|tendon| tendon.strands.is_some());
+    if counted.any(|tendon| tendon.strand.is_none()) {
+        found.extend(notes::strand(drawing, &job));
+    }
     found.extend(reach(drawing, &floor, &job, &findings));
     found
 }
