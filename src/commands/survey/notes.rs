@@ -86,7 +86,8 @@ pub(super) fn thickness(
         }));
     }
     let (value_mm, note) = *said.first()?;
-    if said.iter().any(|(other_mm, _)| *other_mm != value_mm) {
+    let differs = |(other_mm, _): &(f64, &str)| (other_mm - value_mm).abs() > 0.01;
+    if said.iter().any(differs) {
         return None;
     }
     Some(proposal("slab.thickness_mm", json!(value_mm), note))
