@@ -1,10 +1,13 @@
 //! Height labels settled on their tendons: what a pairing costs, round after round, as more is known of the floor.
 
+mod ties;
+
 use std::collections::BTreeSet;
 
+use self::ties::{Texts, tied};
 use super::aims::AIMED;
 use super::candidates::Lie;
-use super::even::{Between, between, even, exchanged, held};
+use super::even::even;
 use super::habits::Habits;
 use super::lines::Line;
 use super::readings::{HeightText, Word};
@@ -106,17 +109,18 @@ pub(super) fn settle(
     }
     let mut settlement = Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
     let mut doubts = doubts(&mut settlement, readings, lies);
-    let mut floor = Known {
+    let floor = Known {
         heights: by_line(readings, lies, lines.len(), fixed, &taken),
         sides: sides(lies, lines.len(), &taken, &even),
         habits: known.as_ref(),
     };
-    let held = held(&taken, lies, lines.len());
-    let groups = between(&taken, &even, lies).into_iter();
-    let tied: Vec<(usize, usize)> = groups
-        .filter(|group| floor.is_tie(group, &taken, &held, lines, &stakes))
-        .flatten()
-        .collect();
+    let texts = Texts {
+        readings,
+        lies,
+        lines,
+        fixed,
+    };
+    let tied = tied(floor, &texts, &taken, &even, &stakes);
     let of_tie: BTreeSet<usize> = tied
         .iter()
         .map(|&(now, _)| lies[now].pairing.label)
@@ -237,51 +241,6 @@ fn cost(readings: &[HeightText], lie: &Lie, lines: &[Line], known: &Known<'_>) -
     cost
 }
 
-impl Known<'_> {
-    /// Whether it costs the same, and makes a difference, if all labels midway between two tendons change places.
-    fn is_tie(
-        &mut self,
-        group: &Between,
-        taken: &[Option<usize>],
-        held: &[Vec<usize>],
-        lines: &[Line],
-        stakes: &HeightStakes<'_>,
-    ) -> bool {
-        let (readings, lies) = (stakes.readings, stakes.lies);
-        let [before, after] = exchanged(group, held, lies);
-        let here = group.iter().map(|&(now, _)| now);
-        let there = group.iter().map(|&(_, other)| other);
-        let now = self.total(here, &before, lines, stakes);
-        self.hold(&after, stakes);
-        let then = self.total(there, &after, lines, stakes);
-        self.hold(&before, stakes);
-        let changes: Vec<(usize, Option<usize>)> = group
-            .iter()
-            .map(|&(now, other)| (lies[now].pairing.label, Some(other)))
-            .collect();
-        (then - now).abs() < TIE && matters(taken, &changes, readings, lies)
-    }
-
-    fn total(
-        &self,
-        group: impl Iterator<Item = usize>,
-        held: &[(usize, Vec<usize>)],
-        lines: &[Line],
-        stakes: &HeightStakes<'_>,
-    ) -> f64 {
-        let own = group.map(|pairing| cost(stakes.readings, &stakes.lies[pairing], lines, self));
-        let shared = held.iter().map(|(host, held)| stakes.shared(*host, held));
-        own.sum::<f64>() + shared.sum::<f64>()
-    }
-
-    /// Has tendons hold these labels.
-    fn hold(&mut self, held: &[(usize, Vec<usize>)], stakes: &HeightStakes<'_>) {
-        for (host, held) in held {
-            self.heights[*host] = stakes.heights(*host, held);
-        }
-    }
-}
-
 /// High points stand over the middle of columns.
 fn at_column(reading: HeightText, lie: &Lie) -> f64 {
     match (reading.likely, lie.column_m) {
@@ -374,10 +333,16 @@ struct HeightStakes<'a> {
     fixed: &'a [Vec<Height>],
 }
 
-impl HeightStakes<'_> {
-    /// Heights of a tendon that holds these labels, given in order of station.
-    fn heights(&self, host: usize, pairings: &[usize]) -> Vec<Height> {
+impl Stakes for HeightStakes<'_> {
+    fn own(&self, pairing: usize) -> f64 {
+        self.own[pairing]
+    }
+
+    fn shared(&self, host: usize, pairings: &[usize]) -> f64 {
         let fixed = &self.fixed[host];
+        if pairings.is_empty() && fixed.is_empty() {
+            return 1.0;
+        }
         let mut heights: Vec<Height> = Vec::with_capacity(pairings.len() + fixed.len());
         heights.extend(pairings.iter().map(|&pairing| {
             let lie = &self.lies[pairing];
@@ -392,21 +357,7 @@ impl HeightStakes<'_> {
             heights.extend(fixed);
             heights.sort_by(|a, b| a.station_m.total_cmp(&b.station_m));
         }
-        heights
-    }
-}
-
-impl Stakes for HeightStakes<'_> {
-    fn own(&self, pairing: usize) -> f64 {
-        self.own[pairing]
-    }
-
-    fn shared(&self, host: usize, pairings: &[usize]) -> f64 {
-        let fixed = &self.fixed[host];
-        if pairings.is_empty() && fixed.is_empty() {
-            return 1.0;
-        }
-        sequence(&self.heights(host, pairings))
+        sequence(&heights)
     }
 
     fn apart_m(&self) -> f64 {

@@ -1,10 +1,13 @@
 //! Marks and strand counts settled on their tendons, and names for tendons that have none.
 
+mod doubts;
+
 use std::collections::{BTreeMap, BTreeSet};
 
+use self::doubts::{MarkDoubt, doubts};
 use super::aims::AIMED;
 use super::candidates::Lie;
-use super::even::{between, even};
+use super::even::even;
 use super::habits::Habits;
 use super::lines::{Line, axis_rad};
 use super::readings::MarkText;
@@ -23,23 +26,8 @@ pub(super) struct Marks {
     pub(super) doubts: Vec<MarkDoubt>,
 }
 
-/// A mark that fits two lines about equally well.
-#[derive(Debug, Clone, Copy)]
-pub(super) struct MarkDoubt {
-    pub(super) label: usize,
-    /// The line that it went to, and the one that it might have gone to.
-    pub(super) lines: [usize; 2],
-    /// Whether nothing tells the two apart: then it went to neither.
-    pub(super) tied: bool,
-}
-
 /// Rounds of settling and learning.
 const ROUNDS: usize = 3;
-/// Costs that differ by less are too near to be silent about.
-const DOUBT: f64 = 0.4;
-/// Costs that differ by less are told apart by nothing.
-const TIE: f64 = 0.02;
-
 /// Settles marks.
 pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
@@ -56,45 +44,7 @@ pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks 
         taken = settlement.settle();
     }
     let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
-    let mut doubts: Vec<MarkDoubt> = Vec::new();
-    for label in 0..texts.len() {
-        let Some(now) = taken[label].filter(|_| settlement.choices(label).len() > 1) else {
-            continue;
-        };
-        if let Some((more, changes)) = settlement.second_best(label, DOUBT)
-            && let Some(&(_, Some(then))) = changes.iter().find(|(changed, _)| *changed == label)
-            && matters(&taken, &changes, texts, lies)
-        {
-            doubts.push(MarkDoubt {
-                label,
-                lines: [now, then].map(|pairing| lies[pairing].pairing.host),
-                tied: more.abs() < TIE,
-            });
-        }
-    }
-    // Mark and strands in texts of their own stand between two lines together.
-    let mut tied: Vec<(usize, usize)> = Vec::new();
-    for group in between(&taken, &even, lies) {
-        let changes: Vec<(usize, Option<usize>)> = group
-            .iter()
-            .map(|&(now, other)| (lies[now].pairing.label, Some(other)))
-            .collect();
-        let more = settlement.cost_of_changes(&changes);
-        if more.abs() < TIE && matters(&taken, &changes, texts, lies) {
-            tied.extend(group);
-        }
-    }
-    let of_tie: BTreeSet<usize> = tied
-        .iter()
-        .map(|&(now, _)| lies[now].pairing.label)
-        .collect();
-    doubts.retain(|doubt| !of_tie.contains(&doubt.label));
-    doubts.extend(tied.iter().map(|&(now, other)| MarkDoubt {
-        label: lies[now].pairing.label,
-        lines: [now, other].map(|pairing| lies[pairing].pairing.host),
-        tied: true,
-    }));
-    doubts.sort_by_key(|doubt| doubt.label);
+    let doubts = doubts(&mut settlement, &taken, &even, texts, lies);
     let nobodys: BTreeSet<usize> = doubts
         .iter()
         .filter(|doubt| doubt.tied)
@@ -115,30 +65,6 @@ pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks 
         }
     }
     marks
-}
-
-/// Whether a change gives some line another mark or other strands.
-fn matters(
-    taken: &[Option<usize>],
-    changes: &[(usize, Option<usize>)],
-    texts: &[MarkText],
-    lies: &[Lie],
-) -> bool {
-    let said = |pairing: usize| {
-        let lie = &lies[pairing];
-        (lie.pairing.host, &texts[lie.pairing.label])
-    };
-    let gone = changes.iter().filter_map(|&(label, _)| taken[label]);
-    let mut gone: Vec<(usize, &MarkText)> = gone.map(said).collect();
-    for come in changes.iter().filter_map(|&(_, pairing)| pairing).map(said) {
-        match gone.iter().position(|old| *old == come) {
-            Some(at) => {
-                gone.swap_remove(at);
-            }
-            None => return true,
-        }
-    }
-    !gone.is_empty()
 }
 
 fn costs(
