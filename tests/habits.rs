@@ -262,6 +262,9 @@ fn the_face_that_heights_are_counted_from_is_seen_at_columns() {
     assert_eq!(of(&DRAPED, "T200"), NOTHING);
     let bare = [("30", 5.0), ("165", 10.0), ("30", 15.0)];
     assert_eq!(of(&bare, "T200"), NOTHING);
+    // With words a low point may well stand at a column.
+    let by_column = [("L30", 10.0), ("H165", 13.0), ("L30", 16.0), ("H165", 19.0)];
+    assert_eq!(of(&by_column, "T200"), NOTHING);
     let from_top = [("170", 5.0), ("35", 10.0), ("170", 15.0)];
     assert_eq!(of(&from_top, "T200"), ["from = \"top\""]);
     let worded = [("L170", 5.0), ("H35", 10.0), ("L170", 15.0)];
@@ -287,6 +290,17 @@ fn the_soffit_that_heights_are_counted_from_is_seen_in_a_drop() {
     };
     assert_eq!(of("H165"), ["soffit = \"general\""]);
     assert_eq!(of("H315"), NOTHING);
+    // A sign is a habit in a drop, and a slip outside one.
+    let negative = |x: f64| {
+        let mut plan = Plan::metric();
+        plan.ring("SLAB-ZONE", (4.0, 6.5), (6.0, 9.5));
+        plan.text("SLAB-ZONE", "T400", (4.5, 9.0));
+        plan.text("SLAB-ZONE", "T200", (3.0, 12.0));
+        plan.banded(8.0, &[("L-120", x), ("H165", 10.0), ("L30", 15.0)]);
+        plan.proposed()
+    };
+    assert_eq!(negative(5.0), ["soffit = \"general\""]);
+    assert_eq!(negative(7.0), NOTHING);
 }
 
 #[test]

@@ -3,19 +3,23 @@
 
 use std::collections::BTreeMap;
 
-use geo::{Distance, Euclidean};
+use geo::{BoundingRect, Coord};
+use rstar::primitives::Rectangle;
+use rstar::{AABB, RTree};
 use serde_json::json;
 
 use super::notes;
 use crate::drawing::Drawing;
 use crate::finding::Finding;
-use crate::floor::{self, Floor, Point, PointKind};
+use crate::floor::{self, Floor, Point, PointKind, height_of_line};
 use crate::job::{self, Datum, FromFace, Job, Proposal, Soffit};
 
 /// So many points tell something.
 const SOME: usize = 3;
 /// Points at most this far from a column are at it, metres.
 const AT_COLUMN_M: f64 = 1.0;
+/// What is longer is a wall, metres.
+const COLUMN_M: f64 = 3.0;
 /// A high point nearer to the soffit than this share of the thickness is counted from the top (common practice: high
 /// points lie as high as cover allows).
 const NEAR_FACE: f64 = 0.3;
@@ -43,7 +47,7 @@ pub(super) fn proposals(
     let job = resolved.job;
     let (floor, findings) = floor::read(drawing, &job);
     let mut found = Vec::new();
-    found.extend(face(&floor, &job));
+    found.extend(face(drawing, &floor, &job));
     found.extend(soffit(&floor, &job));
     found.extend(datum(&floor, &job));
     let mut counted = floor
@@ -78,7 +82,7 @@ fn middle(sorted: &[f64]) -> Option<f64> {
 }
 
 /// The top, or the nearer face, where tendons would otherwise lie low at columns, or not drape at all.
-fn face(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
+fn face(drawing: &Drawing, floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
     if job.conventions.height.from != FromFace::Soffit {
         return None;
     }
@@ -88,25 +92,19 @@ fn face(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
         return None;
     }
     let (high_m, low_m) = (middle(&highs)?, middle(&lows)?);
-    let columns = &floor.slab.columns;
-    let by_column = |point: &Point| {
-        let place = geo::Point::from(point.place);
-        columns
-            .iter()
-            .any(|column| Euclidean.distance(&place, column) <= AT_COLUMN_M)
-    };
-    let bends = |point: &Point| matches!(point.kind, PointKind::High | PointKind::Low);
-    let by_columns = numbers(floor, |point| bends(point) && by_column(point)).len();
-    let low_there = numbers(floor, |point| {
-        point.kind == PointKind::Low && by_column(point)
-    })
-    .len();
-    if by_columns >= SOME && 5 * low_there >= 4 * by_columns {
-        let why = format!(
-            "At {low_there} of {by_columns} points at columns the number is less than its neighbours': counted from the soffit, \
-             the tendons would be lowest there. Check it."
-        );
-        return Some(said("height.from", json!("top"), why));
+    if bare(drawing, job) {
+        let columns = columns(floor);
+        let is_low = |point: &Point| point.kind == PointKind::Low;
+        let bends = |point: &Point| is_low(point) || point.kind == PointKind::High;
+        let there = numbers(floor, |point| bends(point) && at_column(&columns, point)).len();
+        let low = numbers(floor, |point| is_low(point) && at_column(&columns, point)).len();
+        if there >= SOME && 5 * low >= 4 * there {
+            let why = format!(
+                "At {low} of {there} points at columns the number is less than its neighbours': counted from the soffit, the \
+                 tendons would be lowest there. Check it."
+            );
+            return Some(said("height.from", json!("top"), why));
+        }
     }
     if high_m < low_m {
         let why = "The numbers at high points are less than at low points. Check it.".to_owned();
@@ -119,21 +117,45 @@ fn face(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
     })
 }
 
+/// Whether most heights have no word that says high or low.
+fn bare(drawing: &Drawing, job: &Job) -> bool {
+    let lines = drawing.texts.iter().flat_map(|text| text.content.lines());
+    let heights = lines.filter_map(|line| height_of_line(line, &job.conventions));
+    let (worded, bare): (Vec<_>, Vec<_>) = heights.partition(|(height, _)| height.word.is_some());
+    bare.len() > worded.len()
+}
+
+/// Boxes of columns by place. Walls are none: tendons run along them.
+fn columns(floor: &Floor) -> RTree<Rectangle<[f64; 2]>> {
+    let boxes = floor
+        .slab
+        .columns
+        .iter()
+        .filter_map(BoundingRect::bounding_rect);
+    let compact = boxes.filter(|column| column.width().max(column.height()) <= COLUMN_M);
+    let corners = |at: Coord<f64>| [at.x, at.y];
+    let boxes =
+        compact.map(|column| Rectangle::from_corners(corners(column.min()), corners(column.max())));
+    RTree::bulk_load(boxes.collect())
+}
+
+fn at_column(columns: &RTree<Rectangle<[f64; 2]>>, point: &Point) -> bool {
+    let Coord { x, y } = point.place;
+    let around = AABB::from_corners(
+        [x - AT_COLUMN_M, y - AT_COLUMN_M],
+        [x + AT_COLUMN_M, y + AT_COLUMN_M],
+    );
+    columns
+        .locate_in_envelope_intersecting(&around)
+        .next()
+        .is_some()
+}
+
 /// The general slab's soffit, where heights are negative, or do not follow a zone's thickness.
 fn soffit(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
     let reading = &job.conventions.height;
     if reading.from != FromFace::Soffit || reading.soffit != Soffit::Local {
         return None;
-    }
-    let negative = numbers(floor, |_| true)
-        .iter()
-        .filter(|drawn_m| **drawn_m < 0.0)
-        .count();
-    if negative > 0 {
-        let why = format!(
-            "{negative} heights are negative: they lie in a drop, below the general soffit. Check it."
-        );
-        return Some(said("height.soffit", json!("general"), why));
     }
     let slab_m = floor.slab.thickness_m?;
     let high = |point: &Point| point.kind == PointKind::High;
@@ -142,6 +164,14 @@ fn soffit(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
             .thickness_m
             .is_some_and(|zone_m| zone_m > THICKER * slab_m)
     };
+    let below = |point: &Point| point.drawn_m.is_some_and(|drawn_m| drawn_m < 0.0);
+    let negative = numbers(floor, below).len();
+    if negative > 0 && negative == numbers(floor, |point| below(point) && thicker(point)).len() {
+        let why = format!(
+            "{negative} heights in thicker zones are negative: they lie below the general soffit. Check it."
+        );
+        return Some(said("height.soffit", json!("general"), why));
+    }
     let outside = middle(&numbers(floor, |point| high(point) && !thicker(point)))?;
     let points = floor.tendons.iter().flat_map(|tendon| &tendon.points);
     let inside: Vec<(f64, f64)> = points
