@@ -171,6 +171,7 @@ impl Roles {
                 Ground::Edge => "slab edges",
                 Ground::Opening => "openings",
                 Ground::Zone => "zones",
+                Ground::Slab => "slab edges and zones",
                 Ground::Column => "columns",
             };
             findings.push(Finding::new(
