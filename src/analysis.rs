@@ -24,7 +24,7 @@ use crate::floor::{Floor, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
-use crate::losses::{Along, Effective, Forces, Pulls, first_end, steel, turns};
+use crate::losses::{Along, Effective, Forces, Pulls, first_end, steel, strand_size, turns};
 use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
@@ -69,6 +69,8 @@ pub struct TendonResult {
     pub profile: Option<Profile>,
     /// The forces, if curve, strands and ends are known; without the later losses where the concrete stress is not.
     pub forces: Option<Forces>,
+    /// Name of the strand size that was worked with: the drawing's, else the job's default; `None` where there is no area.
+    pub strand: Option<String>,
     /// Steel area of all strands of one tendon, mm², if strands and size are known.
     pub area_mm2: Option<f64>,
     /// Least radius in plan.
@@ -320,6 +322,7 @@ fn finish(
     });
     let result = TendonResult {
         profile: curve.cloned(),
+        strand: strand_size(tendon, &job.tendon).map(|size| size.name.clone()),
         area_mm2: steel(tendon, &job.tendon).map(|steel| steel.area_mm2),
         plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
         turning: curve

@@ -9,6 +9,7 @@ mod candidates;
 mod columns;
 mod copies;
 mod ends;
+mod even;
 mod groups;
 mod habits;
 mod heights;

@@ -29,7 +29,7 @@ pub use friction::{Friction, force_kn, loss_kn};
 pub use pulls::Pulls;
 pub use sequence::first_end;
 pub use shortening::shortening_mpa;
-pub use steel::steel;
+pub use steel::{steel, strand_size};
 pub use stressed::Stressed;
 pub use turns::turns;
 pub use types::{

@@ -130,6 +130,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: Some(profile()),
             forces: Some(forces()),
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: checks::turning(&profile(), &forces()),
@@ -145,6 +146,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: None,
             forces: None,
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: None,

@@ -28,6 +28,7 @@ pub(super) fn sentences(floor: &Floor, results: &[TendonResult], job: &Job) -> V
     }
     said.extend(by_method::recalled(&job.long_term));
     said.extend(in_pours(floor, job));
+    said.extend(by_default_strand(floor, results, job));
     if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
         said.push(
             "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
@@ -47,6 +48,22 @@ pub(super) fn sentences(floor: &Floor, results: &[TendonResult], job: &Job) -> V
         }
     }
     said
+}
+
+/// Tendons whose strand size the job gives.
+fn by_default_strand(floor: &Floor, results: &[TendonResult], job: &Job) -> Option<String> {
+    let name = job.tendon.default_strand.as_ref()?;
+    let count = floor
+        .tendons
+        .iter()
+        .zip(results)
+        .filter(|(tendon, result)| tendon.strand.is_none() && result.strand.is_some())
+        .count();
+    (count > 0).then(|| {
+        format!(
+            "Tendons whose strand size the drawing does not give have the job's default_strand, {name}: {count}."
+        )
+    })
 }
 
 /// How tendons with intermediate anchors are stressed.

@@ -69,6 +69,11 @@ pub fn read_within(
     drawing.version.clone_from(&scan.version);
     drawing.unit_m = unit_m;
     drawing.unit_from = unit_from;
+    drawing.metric = match scan.measurement {
+        Some(0) => Some(false),
+        Some(1) => Some(true),
+        _ => None,
+    };
     drawing.extent = extent_of(scan, unit_m);
     drawing.layers = source.layers();
     let mut findings: Vec<Finding> = unit_finding(scan, unit_from).into_iter().collect();

@@ -111,7 +111,14 @@ impl<'a> Pass<'a> {
         self.last_end = self.scan.tags_end;
         self.scan.tags_end = tag.end;
         match tag.code {
-            0 => return self.begin_record(tag),
+            0 => {
+                let begun = self.begin_record(tag);
+                if begun.is_err() {
+                    // What is set in behind the sound tags stands before one that makes no sense, not within it.
+                    self.scan.tags_end = self.last_end;
+                }
+                return begun;
+            }
             2 if self.section == Section::Named => self.name_section(tag.word()),
             _ if self.section == Section::Header => self.header_tag(tag),
             10..=61 | 210..=239 if !matches!(self.record, Record::Block | Record::Style) => {}
@@ -154,6 +161,7 @@ impl<'a> Pass<'a> {
             (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
             (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
             (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
+            (b"$MEASUREMENT", 70) => self.scan.measurement = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.
                 let seed = parse_handle(tag.word()).unwrap_or(0);

@@ -35,6 +35,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let conventions = &job.conventions;
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
+    findings.extend(roles.hatched(drawing));
 
     let symbols = Symbols::new(drawing, conventions, &roles);
     let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbols.shapes);

@@ -63,7 +63,20 @@ pub(super) fn ends(
     for sign in SIGNS {
         let alike: Vec<&Symbol<'_>> = symbols.iter().filter(|one| one.sign == sign).collect();
         let Matched { host, near } = matched(&alike, &places, &tree, reach_m);
-        for ((symbol, host), near) in alike.into_iter().zip(host).zip(near) {
+        let of_both = match sign {
+            Sign::Block => at_one_point(&alike, &host, &places),
+            _ => Vec::new(),
+        };
+        for &(symbol, end) in &of_both {
+            of_end[end].extend(alike.get(symbol));
+        }
+        for (number, ((symbol, host), near)) in alike.into_iter().zip(host).zip(near).enumerate() {
+            if of_both
+                .binary_search_by_key(&number, |&(other, _)| other)
+                .is_ok()
+            {
+                continue;
+            }
             match host.and_then(|host| of_end.get_mut(host)) {
                 Some(held) => held.push(symbol),
                 // A symbol may be drawn with two lines alike, or lettered twice.
@@ -138,6 +151,41 @@ fn matched(
     }
 }
 
+/// Places this near to one another are one, metres.
+const ONE_POINT_M: f64 = 0.005;
+
+/// A live and a dead symbol at one point, by number, each with every end that the two were matched to: nothing tells which
+/// of them is right, or which is whose where two tendons meet.
+fn at_one_point(
+    symbols: &[&Symbol<'_>],
+    host: &[Option<usize>],
+    places: &[Coord<f64>],
+) -> Vec<(usize, usize)> {
+    let mut of_both = Vec::new();
+    let hosted = (0..symbols.len()).filter_map(|one| Some((one, host[one]?)));
+    for (one, end) in hosted {
+        let a = symbols[one];
+        // Symbols stand in order of x.
+        let near = |other: &usize| (symbols[*other].place.x - a.place.x).abs() <= ONE_POINT_M;
+        let after = (one + 1..symbols.len()).take_while(near);
+        for two in (0..one).rev().take_while(near).chain(after) {
+            let b = symbols[two];
+            let differ = matches!((a.kind, b.kind), (Some(a), Some(b)) if a != b);
+            if !differ || distance_m(a.place, b.place) > ONE_POINT_M {
+                continue;
+            }
+            // Of two ends apart from one another each has the nearer symbol.
+            let other = host[two].unwrap_or(end);
+            if distance_m(places[end], places[other]) <= ONE_POINT_M {
+                of_both.extend([(one, end), (two, end)]);
+            }
+        }
+    }
+    of_both.sort_unstable();
+    of_both.dedup();
+    of_both
+}
+
 /// A symbol's extent.
 pub(super) struct Around {
     place: Coord<f64>,
@@ -170,7 +218,8 @@ impl Around {
 
 /// What the symbols at one end say together: the block, else the most telling shape, else the word.
 fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
-    let block = held.iter().find(|one| one.sign == Sign::Block);
+    let mut blocks = held.iter().filter(|one| one.sign == Sign::Block);
+    let block = blocks.next();
     let shape = held
         .iter()
         .find(|one| !matches!(one.sign, Sign::Block | Sign::Word));
@@ -178,6 +227,7 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
     let told: Vec<(EndKind, &str)> = [block, shape, word]
         .into_iter()
         .flatten()
+        .chain(blocks)
         .filter_map(|one| Some((one.kind?, one.name)))
         .collect();
     let first = told.first().copied();

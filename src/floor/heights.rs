@@ -1,7 +1,13 @@
 //! Height labels settled on their tendons: what a pairing costs, round after round, as more is known of the floor.
 
+mod ties;
+
+use std::collections::BTreeSet;
+
+use self::ties::{Texts, tied};
 use super::aims::AIMED;
 use super::candidates::Lie;
+use super::even::even;
 use super::habits::Habits;
 use super::lines::Line;
 use super::readings::{HeightText, Word};
@@ -75,6 +81,7 @@ pub(super) fn settle(
 ) -> Settled {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
     let mut taken: Vec<Option<usize>> = vec![None; readings.len()];
+    let even = even(lies, lines);
     let mut known = None;
     let mut stakes = HeightStakes {
         own: Vec::new(),
@@ -82,19 +89,52 @@ pub(super) fn settle(
         fixed: in_order(fixed),
     };
     for _ in 0..ROUNDS {
-        stakes.own = costs(readings, lies, lines, fixed, &taken, known.as_ref());
+        let floor = Known {
+            heights: by_line(readings, lies, lines.len(), fixed, &taken),
+            sides: sides(lies, lines.len(), &taken, &even),
+            habits: known.as_ref(),
+        };
+        let own = lies.iter().map(|lie| cost(readings, lie, lines, &floor));
+        stakes.own = own.collect();
         let mut settlement =
             Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
         let next = settlement.settle();
         let steady = next == taken && known.is_some();
         taken = next;
-        known = Some(learn(lies, lines, &taken, readings.len()));
+        known = Some(learn(lies, lines, &taken, &even, readings.len()));
         if steady {
             break;
         }
     }
     let mut settlement = Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
-    let doubts = doubts(&mut settlement, readings, lies);
+    let mut doubts = doubts(&mut settlement, readings, lies);
+    let floor = Known {
+        heights: by_line(readings, lies, lines.len(), fixed, &taken),
+        sides: sides(lies, lines.len(), &taken, &even),
+        habits: known.as_ref(),
+    };
+    let texts = Texts {
+        readings,
+        lies,
+        lines,
+        fixed,
+    };
+    let tied = tied(floor, &texts, &taken, &even, &stakes);
+    let of_tie: BTreeSet<usize> = tied
+        .iter()
+        .map(|&(now, _)| lies[now].pairing.label)
+        .collect();
+    doubts.retain(|doubt| !of_tie.contains(&doubt.label));
+    doubts.extend(tied.iter().map(|&(now, other)| Doubt {
+        label: lies[now].pairing.label,
+        hosts: [now, other].map(|pairing| lies[pairing].pairing.host),
+        stations_m: [now, other].map(|pairing| lies[pairing].pairing.station_m),
+        tied: true,
+    }));
+    doubts.sort_by_key(|doubt| doubt.label);
+    for doubt in doubts.iter().filter(|doubt| doubt.tied) {
+        settlement.release(doubt.label);
+    }
     let taken = settlement.taken();
     Settled {
         of_line: by_line(readings, lies, lines.len(), fixed, taken),
@@ -151,12 +191,22 @@ fn by_line(
     of_line
 }
 
-fn learn(lies: &[Lie], lines: &[Line], taken: &[Option<usize>], labels: usize) -> Habits {
+fn learn(
+    lies: &[Lie],
+    lines: &[Line],
+    taken: &[Option<usize>],
+    even: &[Option<usize>],
+    labels: usize,
+) -> Habits {
     let mut choices = vec![0_u32; labels];
     for lie in lies {
         choices[lie.pairing.label] += 1;
     }
-    Habits::learn(taken.iter().flatten().map(|&pairing| {
+    let telling = taken
+        .iter()
+        .flatten()
+        .filter(|&&pairing| even[pairing].is_none());
+    Habits::learn(telling.map(|&pairing| {
         let lie = &lies[pairing];
         let sure = choices[lie.pairing.label] == 1;
         (
@@ -167,44 +217,41 @@ fn learn(lies: &[Lie], lines: &[Line], taken: &[Option<usize>], labels: usize) -
     }))
 }
 
-/// Cost of each pairing by itself, given what the last round found.
-fn costs(
-    readings: &[HeightText],
-    lies: &[Lie],
-    lines: &[Line],
-    fixed: &[Vec<Height>],
-    taken: &[Option<usize>],
-    habits: Option<&Habits>,
-) -> Vec<f64> {
-    let known = by_line(readings, lies, lines.len(), fixed, taken);
-    let sides = sides(lies, lines.len(), taken);
-    lies.iter()
-        .map(|lie| {
-            let reading = readings[lie.pairing.label];
-            let run = lines[lie.pairing.host].run;
-            let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
-            if lie.aimed {
-                cost -= AIMED;
-            }
-            match habits {
-                None => {
-                    let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
-                    cost += 0.6 * lie.gap_h + struck;
-                }
-                Some(habits) => {
-                    cost += 0.4 * lie.gap_h
-                        + habits.cost(run, lie)
-                        + resemblance(reading, lie, &known)
-                        + if lie.aimed {
-                            0.0
-                        } else {
-                            side(lie, &sides[lie.pairing.host])
-                        };
-                }
-            }
-            cost
-        })
-        .collect()
+/// What is known of the floor while a label is judged.
+struct Known<'h> {
+    /// Heights of each tendon.
+    heights: Vec<Vec<Height>>,
+    /// See [`sides`].
+    sides: Vec<Vec<(usize, f64)>>,
+    /// What is usual, once something was learned.
+    habits: Option<&'h Habits>,
+}
+
+/// Cost of a pairing by itself.
+fn cost(readings: &[HeightText], lie: &Lie, lines: &[Line], known: &Known<'_>) -> f64 {
+    let reading = readings[lie.pairing.label];
+    let run = lines[lie.pairing.host].run;
+    let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
+    if lie.aimed {
+        cost -= AIMED;
+    }
+    match known.habits {
+        None => {
+            let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
+            cost += 0.6 * lie.gap_h + struck;
+        }
+        Some(habits) => {
+            cost += 0.4 * lie.gap_h
+                + habits.cost(run, lie)
+                + resemblance(reading, lie, &known.heights)
+                + if lie.aimed {
+                    0.0
+                } else {
+                    side(lie, &known.sides[lie.pairing.host])
+                };
+        }
+    }
+    cost
 }
 
 /// High points stand over the middle of columns.
@@ -216,12 +263,17 @@ fn at_column(reading: HeightText, lie: &Lie) -> f64 {
     }
 }
 
-/// Offsets of the labels that each tendon holds, with the label.
-fn sides(lies: &[Lie], lines: usize, taken: &[Option<usize>]) -> Vec<Vec<(usize, f64)>> {
+/// Offsets of the labels that each tendon holds, with the label; those midway between two tendons tell nothing.
+fn sides(
+    lies: &[Lie],
+    lines: usize,
+    taken: &[Option<usize>],
+    even: &[Option<usize>],
+) -> Vec<Vec<(usize, f64)>> {
     let mut sides = vec![Vec::new(); lines];
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
-        if lie.aimed {
+        if lie.aimed || even[pairing].is_some() {
             continue;
         }
         sides[lie.pairing.host].push((lie.pairing.label, lie.off_h));
@@ -415,7 +467,7 @@ fn neighbours(a: &Height, b: &Height) -> f64 {
     (30.0 * (rise_m / gap_m - STEEP)).clamp(0.0, 4.0)
 }
 
-/// Labels that would fit elsewhere about as well, where it matters; ties go to nobody.
+/// Labels that would fit elsewhere about as well, where it matters.
 fn doubts<S: Stakes>(
     settlement: &mut Settlement<'_, S>,
     readings: &[HeightText],
@@ -444,9 +496,6 @@ fn doubts<S: Stakes>(
             stations_m: [lies[now].pairing.station_m, lies[then].pairing.station_m],
             tied: more < TIE,
         });
-    }
-    for doubt in doubts.iter().filter(|doubt| doubt.tied) {
-        settlement.release(doubt.label);
     }
     doubts
 }

@@ -12,6 +12,7 @@ pub const RULES: &[&Rule] = &[
     &FACE_BY_NEIGHBOURS,
     &FACE_UNKNOWN,
     &GROUP_MISFIT,
+    &HATCH_UNREAD,
     &HEIGHT_MISSING,
     &JOINT_UNCLAIMED,
     &LABEL_AMBIGUOUS,
@@ -122,6 +123,13 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
     meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
+};
+
+/// Areas that are hatched and have no outline.
+pub(super) const HATCH_UNREAD: Rule = Rule {
+    name: "hatch-unread",
+    meaning: "A layer of slab edges, openings, zones or columns holds hatches and no closed line: hatches are not read, \
+              their outlines are.",
 };
 
 /// A level that belongs to no zone.

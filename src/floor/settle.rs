@@ -134,6 +134,11 @@ impl<'a, S: Stakes> Settlement<'a, S> {
             .min_by(|a, b| a.0.total_cmp(&b.0))
     }
 
+    /// By how much more the whole costs with these changes.
+    pub(super) fn cost_of_changes(&mut self, changes: &[(usize, Option<usize>)]) -> f64 {
+        self.try_changes(changes, f64::NEG_INFINITY).unwrap_or(0.0)
+    }
+
     /// Takes a label from its host for good.
     pub(super) fn release(&mut self, label: usize) {
         if self.taken[label].is_some() {

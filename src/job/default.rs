@@ -50,6 +50,8 @@ impl Default for Job {
                 cover_m: 0.020,
                 hogging_radius_error_m: 2.5,
                 hogging_radius_warning_m: 5.0,
+                sagging_radius_error_m: 2.5,
+                sagging_radius_warning_m: 5.0,
                 support_residual_warning_m: 0.005,
                 support_residual_error_m: 0.010,
                 plan_radius_m: 6.0,

@@ -246,6 +246,13 @@ fn offers() -> Vec<Offer> {
             "What stands before the strands is taken for the tendon's mark.",
         ),
         marks(
+            "other mark and strands in words",
+            &format!(
+                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+)[\s-]*(?:STRANDS?|STRS?\.?)$"
+            ),
+            "What stands before the strands is taken for the tendon's mark.",
+        ),
+        marks(
             "other mark",
             &format!("(?i)^{}$", ANY_MARK.replace(r"|\d+(?:[-./]\d+)?)", ")")),
             "Any text with a letter and a digit is taken for a tendon's mark. Check it.",

@@ -320,6 +320,10 @@ pub struct Limits {
     pub hogging_radius_error_m: f64,
     /// Hogging radius below which is a warning, metres.
     pub hogging_radius_warning_m: f64,
+    /// Sagging radius below which is an error, metres.
+    pub sagging_radius_error_m: f64,
+    /// Sagging radius below which is a warning, metres.
+    pub sagging_radius_warning_m: f64,
     /// Support height off the curve, metres, above which is a warning.
     pub support_residual_warning_m: f64,
     /// Support height off the curve, metres, above which is an error.

@@ -26,6 +26,7 @@ pub(super) struct TendonRecord<'a> {
     pub(super) run: Run,
     pub(super) tendons: u32,
     pub(super) strands: Option<u32>,
+    /// The size worked with; where there is none, what the drawing says.
     pub(super) strand: Option<&'a str>,
     #[serde(skip_serializing_if = "Option::is_none")]
     pub(super) required_kn: Option<f64>,
@@ -124,7 +125,7 @@ pub(super) fn number(value: f64) -> Option<f64> {
 
 impl<'a> TendonRecord<'a> {
     /// One tendon's record.
-    pub(super) fn of(tendon: &'a Tendon, result: &TendonResult) -> Self {
+    pub(super) fn of(tendon: &'a Tendon, result: &'a TendonResult) -> Self {
         let forces = result.forces.as_ref();
         Self {
             mark: &tendon.mark,
@@ -134,7 +135,7 @@ impl<'a> TendonRecord<'a> {
             run: tendon.run,
             tendons: tendon.tendons,
             strands: tendon.strands,
-            strand: tendon.strand.as_deref(),
+            strand: result.strand.as_deref().or(tendon.strand.as_deref()),
             required_kn: tendon.required_kn.and_then(number),
             required_kn_per_m: tendon.required_kn_per_m.and_then(number),
             area_mm2: result.area_mm2.and_then(number),

@@ -21,6 +21,7 @@ mod laws;
 mod lettering;
 mod levels;
 mod marks;
+mod midway;
 mod pointing;
 mod settling;
 mod sketch;

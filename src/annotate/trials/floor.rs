@@ -209,6 +209,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
     let result = TendonResult {
         profile: Some(Profile::new(Vec::new(), Vec::new())),
         forces: Some(whole(length_m, kinds)),
+        strand: Some("12.7".to_owned()),
         area_mm2: Some(493.5),
         plan_tightest: None,
         turning: None,

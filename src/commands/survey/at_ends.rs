@@ -32,6 +32,8 @@ pub(super) struct AtEnds {
     pub(super) insert_layers: BTreeMap<usize, String>,
     /// By number of a shape that is a line: how many of its ends have something that marks them.
     pub(super) marked: BTreeMap<usize, usize>,
+    /// Ends at which a block or a shape stands.
+    pub(super) stops: Vec<Coord<f64>>,
     /// Numbers of texts that stand at an end: they are no legend.
     texts: BTreeSet<usize>,
     /// Blocks on lines whose names, or a legend, call them intermediate anchors.
@@ -86,6 +88,9 @@ impl AtEnds {
                 {
                     let key = (piece.layer.clone(), *word);
                     *found.shapes.entry(key).or_default() += 1;
+                }
+                if block.is_some() || figure.is_some() {
+                    found.stops.push(place);
                 }
                 marked += usize::from(block.is_some() || word.is_some() || figure.is_some());
             }
@@ -194,6 +199,30 @@ impl AtEnds {
     }
 }
 
+/// Words that are part of what other offices call a dead or a live end, also in French, German, Spanish, Russian and
+/// Chinese (from memory).
+const DEAD: [&str; 8] = [
+    "DEAD",
+    "FIXED",
+    "PASSIV",
+    "PASSIF",
+    "PASIVO",
+    "FESTANKER",
+    "ПАССИВН",
+    "固定端",
+];
+const LIVE: [&str; 9] = [
+    "LIVE",
+    "STRESSING",
+    "ACTIV",
+    "ACTIF",
+    "JACK",
+    "SPANNANKER",
+    "АКТИВН",
+    "НАТЯЖН",
+    "张拉端",
+];
+
 /// What a name or a word of another office says of an end.
 pub(super) fn hinted(text: &str) -> Option<EndKind> {
     if is_between(text) {
@@ -201,10 +230,10 @@ pub(super) fn hinted(text: &str) -> Option<EndKind> {
     }
     let text = text.to_uppercase();
     let says = |words: &[&str]| words.iter().any(|word| text.contains(word));
-    if says(&["DEAD", "FIXED", "PASSIVE"]) {
+    if says(&DEAD) {
         Some(EndKind::Dead)
     } else {
-        says(&["LIVE", "STRESSING", "ACTIVE", "JACK"]).then_some(EndKind::Live)
+        says(&LIVE).then_some(EndKind::Live)
     }
 }
 

@@ -106,8 +106,11 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
     let (mut blocks, mut tags) = (BTreeSet::new(), BTreeSet::new());
     let mut new_words =
         BTreeMap::from(KINDS.map(|(kind, _)| (kind == EndKind::Live, BTreeSet::new())));
+    let other = by_elimination(contents, &said);
     for (block, tag, value) in contents.at_ends.attributes.keys() {
-        let Some(kind) = said.kind(value).or_else(|| hinted(value)) else {
+        let place = (block.as_str(), tag.as_str(), value.as_str());
+        let told = said.kind(value).or_else(|| hinted(value));
+        let Some(kind) = told.or_else(|| other.get(&place).copied()) else {
             continue;
         };
         if known.has(block) || hinted(block).is_some() {
@@ -133,6 +136,12 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
         &tags,
         "The attributes that say it.",
     );
+    let guessed = if other.is_empty() {
+        "Values of those attributes, and the defaults."
+    } else {
+        "Values of those attributes, and the defaults. Of two values one is known; the other is taken for the other end: a \
+         guess, look at the legend."
+    };
     for (kind, word) in KINDS {
         let mut words = new_words
             .remove(&(kind == EndKind::Live))
@@ -140,13 +149,43 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
         if !words.is_empty() {
             words.extend(known_words(job, kind).iter().cloned());
         }
-        put(
-            proposals,
-            &format!("{word}_words"),
-            &words,
-            "Values of those attributes, and the defaults.",
-        );
+        put(proposals, &format!("{word}_words"), &words, guessed);
     }
+}
+
+/// Where an attribute has two values at line ends, each at several, and one is known, what the other must be: block, tag
+/// and value.
+fn by_elimination<'c>(
+    contents: &'c Contents,
+    said: &EndWords,
+) -> BTreeMap<(&'c str, &'c str, &'c str), EndKind> {
+    let mut values: BTreeMap<(&str, &str), Vec<(&str, usize)>> = BTreeMap::new();
+    for ((block, tag, value), count) in &contents.at_ends.attributes {
+        values
+            .entry((block, tag))
+            .or_default()
+            .push((value, *count));
+    }
+    let kind = |value: &str| said.kind(value).or_else(|| hinted(value));
+    let mut found = BTreeMap::new();
+    for ((block, tag), values) in values {
+        let [(one, ones), (two, twos)] = values[..] else {
+            continue;
+        };
+        let (known, unknown) = match (kind(one), kind(two)) {
+            (Some(known), None) => (known, two),
+            (None, Some(known)) => (known, one),
+            _ => continue,
+        };
+        if ones.min(twos) > 1 {
+            let other = match known {
+                EndKind::Live => EndKind::Dead,
+                EndKind::Dead => EndKind::Live,
+            };
+            found.insert((block, tag, unknown), other);
+        }
+    }
+    found
 }
 
 /// Texts at line ends that say what they are in words the job does not know.
