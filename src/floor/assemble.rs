@@ -112,6 +112,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             if let Some(anchor) = anchor.filter(|anchor| told.known_or_goes_on(anchor.name)) {
                 findings.push(joints::at_an_end(anchor, &names[at]));
             }
+            told.or_dead(conventions.unmarked_is_dead);
         }
         findings.extend(ends::unknown(
             &names[at],

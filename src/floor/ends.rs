@@ -248,6 +248,13 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
 }
 
 impl Told {
+    /// Takes an end of which nothing is said as dead, where the drawing marks live ends only.
+    pub(super) fn or_dead(&mut self, unmarked_is_dead: bool) {
+        if unmarked_is_dead && self.doubt.is_none() {
+            self.end.kind = self.end.kind.or(Some(EndKind::Dead));
+        }
+    }
+
     /// Whether the end's kind is known; if nothing at all is said of it, it goes on through an intermediate anchor of this
     /// name.
     pub(super) fn known_or_goes_on(&mut self, anchor: &str) -> bool {
@@ -289,7 +296,8 @@ pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64)
                         let reach = units.of(LONG).said(reach_m, 2);
                         format!("no end symbol lies within {reach} of this end; expected a live or a dead end")
                     }),
-                    "insert the live or dead end block at the end, or name the office's blocks, words or shapes in the job file",
+                    "insert the live or dead end block at the end, or name the office's blocks, words or shapes in the job file; where \
+                     the drawing marks live ends only, set unmarked_is_dead = true below [ends]",
                 ),
             };
             Finding::new(rule, Level::Error, text, remedy)

@@ -99,6 +99,7 @@ fn conventions() -> Conventions {
         intermediate_words: words(&["INTERMEDIATE", "INTERMEDIATE ANCHOR", "INT ANCHOR"]),
         live_end_shapes: Vec::new(),
         dead_end_shapes: Vec::new(),
+        unmarked_is_dead: false,
         mark_patterns: mark_patterns(),
         height_patterns: height_patterns(LengthUnit::Mm),
         high_words: words(&["H", "HP", "HIGH"]),

@@ -209,6 +209,11 @@ pub static KEYS: &[Key] = &[
             place: place!(conventions.dead_end_shapes),
         },
         "Shapes drawn on layers.ends at a fixed end, likewise.", CONVENTION),
+    key("ends", "unmarked_is_dead", Kind::Switch {
+            get: |job| job.conventions.unmarked_is_dead,
+            set: |job, on| job.conventions.unmarked_is_dead = on,
+        },
+        "Whether an end without any symbol is a fixed one: for drawings that mark only the ends stressed from.", CONVENTION),
     key("ends", "reach_mm", number!(1.0..=10_000.0, conventions.end_reach_m, MM),
         "How far an end symbol may lie from the end it marks.", CONVENTION),
 

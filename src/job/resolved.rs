@@ -65,6 +65,8 @@ pub struct Conventions {
     pub live_end_shapes: Vec<String>,
     /// Shapes that mark a dead end, likewise.
     pub dead_end_shapes: Vec<String>,
+    /// Whether an end without any symbol is dead: the drawing marks live ends only.
+    pub unmarked_is_dead: bool,
     /// Patterns of marks, strand counts and required forces; groups `mark`, `tendons`, `strands`, `strand`, `force`,
     /// `force_per_width`, each optional.
     pub mark_patterns: Vec<Pattern>,

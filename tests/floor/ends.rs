@@ -2,6 +2,8 @@
 
 use tautplan::finding::Level;
 use tautplan::floor::EndKind::{Dead, Live};
+use tautplan::floor::{Tendon, read};
+use tautplan::job::Job;
 
 use crate::kit::{Board, Dice, at};
 use crate::sketch::{BANDED, kinds, only, spans_mm, told};
@@ -140,4 +142,29 @@ fn two_symbols_where_two_tendons_end_apart_go_to_one_each() {
         assert_eq!(kinds(tendon), [Some(Live), Some(Dead)]);
     }
     assert!(told(&findings, "end-contradicted").is_empty());
+}
+
+#[test]
+fn where_only_live_ends_are_marked_the_job_says_that_the_others_are_dead() {
+    let mut board = Board::slab();
+    board.line(BANDED, &[(0.0, 5.0), (20.0, 5.0)]);
+    board.line(BANDED, &[(0.0, 8.0), (20.0, 8.0)]);
+    board.live((0.0, 5.0));
+    // One end is said to be both: that stays open.
+    board.live((20.0, 8.0));
+    board.live((0.0, 8.0));
+    board.dead((0.0, 8.0));
+    let mut job = Job::default();
+    for (unmarked_is_dead, meant) in [(false, None), (true, Some(Dead))] {
+        job.conventions.unmarked_is_dead = unmarked_is_dead;
+        let (floor, findings) = read(&board.drawing, &job);
+        let of = |y_m: f64| {
+            let near = |tendon: &&Tendon| (tendon.path.place_at(0.0).y - y_m).abs() < 0.1;
+            kinds(floor.tendons.iter().find(near).expect("a tendon"))
+        };
+        assert_eq!(of(5.0), [Some(Live), meant]);
+        assert_eq!(of(8.0), [None, Some(Live)]);
+        let unknown = told(&findings, "end-unknown").len();
+        assert_eq!(unknown, usize::from(!unmarked_is_dead));
+    }
 }
