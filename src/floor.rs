@@ -31,6 +31,7 @@ mod pieces;
 mod points;
 mod readings;
 mod rules;
+mod seams;
 mod settle;
 mod slab;
 mod slots;
