@@ -95,6 +95,15 @@ impl Roles {
         for text in &drawing.texts {
             roles.learn(&sets, drawing, &text.layer, text.look);
         }
+        for insert in &drawing.inserts {
+            roles.learn(&sets, drawing, &insert.layer, insert.look);
+        }
+        for leader in &drawing.leaders {
+            roles.learn(&sets, drawing, &leader.layer, leader.look);
+        }
+        for dot in &drawing.dots {
+            roles.learn(&sets, drawing, &dot.layer, dot.look);
+        }
         roles
     }
 

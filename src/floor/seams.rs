@@ -106,13 +106,10 @@ pub(super) fn without_slips(path: &Path, least_m: f64) -> Path {
     }
     let mut kept: Vec<Segment> = Vec::new();
     for segment in path.segments() {
-        let from = kept.last().map_or(segment.start(), |last| {
-            if distance_m(last.end(), segment.start()) < least_m {
-                last.end()
-            } else {
-                segment.start()
-            }
-        });
+        let behind = kept.last().map(Segment::end).or(path.start());
+        let from = behind
+            .filter(|&end| distance_m(end, segment.start()) < least_m)
+            .unwrap_or(segment.start());
         if segment.length_m() >= least_m || distance_m(from, segment.end()) >= least_m {
             kept.push(segment.carried(from, segment.end()));
         }
