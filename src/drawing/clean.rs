@@ -47,6 +47,8 @@ pub(super) struct Worn {
     pub(super) true_colour: bool,
     /// Where in the file the linetype's name stands: first byte and past the last.
     pub(super) linetype: Option<(usize, usize)>,
+    /// Group 60: not shown, whatever its layer.
+    pub(super) invisible: bool,
 }
 
 impl Worn {
@@ -57,6 +59,7 @@ impl Worn {
                 let name = tag.value_range();
                 self.linetype = Some((name.start, name.end));
             }
+            60 => self.invisible = tag.integer() == Some(1),
             62 => self.colour = tag.integer(),
             420 => self.true_colour = true,
             _ => {}
@@ -242,12 +245,12 @@ impl<'a> Cleaner<'a> {
                     own.layer = Some(tag.word().to_vec());
                 }
             }
-            (6 | 62 | 420, b"ATTRIB") => {
+            (6 | 60 | 62 | 420, b"ATTRIB") => {
                 if let Some(own) = kept.attributes.last_mut() {
                     own.worn.note(tag);
                 }
             }
-            (6 | 62 | 420, _) => kept.worn.note(tag),
+            (6 | 60 | 62 | 420, _) => kept.worn.note(tag),
             _ => {}
         }
         match used(record.type_name, tag.code) {

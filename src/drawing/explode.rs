@@ -15,6 +15,7 @@ use super::looks::Looks;
 use super::placing::Placing;
 use super::rules::{
     BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, BLOCK_TOO_MANY, ENTITY_DAMAGED,
+    ENTITY_INVISIBLE,
 };
 use super::scan::Scan;
 use super::windows::Record;
@@ -111,6 +112,8 @@ pub(super) struct Gatherer<'b> {
     zero_layer: Option<u32>,
     drawing: Drawing,
     findings: Vec<Finding>,
+    /// Entities of model space that are not shown.
+    unseen: usize,
     expansion: Expansion,
     open: Vec<usize>,
     told: BTreeSet<(&'static str, usize)>,
@@ -136,6 +139,7 @@ impl<'b> Gatherer<'b> {
             zero_layer: book.layers.get("0").copied(),
             drawing: Drawing::default(),
             findings: Vec::new(),
+            unseen: 0,
             expansion,
             open: Vec::new(),
             told: BTreeSet::new(),
@@ -152,6 +156,7 @@ impl<'b> Gatherer<'b> {
         let mut findings = self.findings;
         let spoken = self.spoken.into_values();
         findings.extend(spoken.filter_map(|(rule, level, count)| and_more(rule, level, count)));
+        findings.extend(unseen(self.unseen));
         (drawing, findings)
     }
 
@@ -188,6 +193,10 @@ impl<'b> Gatherer<'b> {
         let own = own_handle(record);
         let handle = frame.handle.unwrap_or(&own);
         let layer = self.layer_in(record.kept.layer, frame.layer);
+        if record.kept.worn.invisible {
+            self.invisible(layer, frame);
+            return;
+        }
         if let EntityType::Insert(insert) = &record.entity {
             self.insert(record, insert, layer, handle, frame);
             return;
@@ -222,6 +231,13 @@ impl<'b> Gatherer<'b> {
                 Ok(None) => {}
                 Err(reason) => self.damaged(layer, handle, reason),
             },
+        }
+    }
+
+    /// Leaves out what is not shown. Blocks keep the parts of their other states so, which nobody misses.
+    fn invisible(&mut self, layer: u32, frame: &Frame<'_>) {
+        if frame.handle.is_none() && self.book.wants(layer) {
+            self.unseen += 1;
         }
     }
 
@@ -434,6 +450,10 @@ impl<'b> Gatherer<'b> {
         let layer = self.layer_in(pointing.layer, frame.layer);
         let handle = frame.handle.unwrap_or(&pointing.handle);
         let wanted = self.book.wants(layer);
+        if pointing.worn.invisible {
+            self.invisible(layer, frame);
+            return;
+        }
         let seen = Place {
             layer,
             look: self.looks.seen(&pointing.worn, layer, frame.look),
@@ -500,7 +520,12 @@ impl<'b> Gatherer<'b> {
                 _ => handle,
             };
             let lettering = of_attribute(attribute, &frame.placing);
-            self.text(lettering, place, handle, attribute.flags & 1 != 0);
+            self.text(
+                lettering,
+                place,
+                handle,
+                attribute.flags & 1 != 0 || own.worn.invisible,
+            );
         }
     }
 
@@ -543,6 +568,22 @@ impl<'b> Gatherer<'b> {
             self.findings.push(Finding::new(rule, level, text, remedy));
         }
     }
+}
+
+fn unseen(count: usize) -> Option<Finding> {
+    let (them, are) = match count {
+        0 => return None,
+        1 => ("entity", "is"),
+        _ => ("entities", "are"),
+    };
+    Some(Finding::new(
+        &ENTITY_INVISIBLE,
+        Level::Warning,
+        format!(
+            "{count} {them} on layers that are read {are} invisible (group 60 of the entity) and left out"
+        ),
+        "make what is current visible (in most programs: end object isolation) and save the drawing again; delete the rest",
+    ))
 }
 
 /// A finding for what is not told one by one.

@@ -9,6 +9,7 @@ use super::columns::Columns;
 use super::ends;
 use super::groups::groups;
 use super::heights::{self, Height, Settled};
+use super::hidden::outranked;
 use super::index::Index;
 use super::labels::{Labels, labels};
 use super::layers::Roles;
@@ -18,6 +19,7 @@ use super::made::plans;
 use super::marks::{self, Marks};
 use super::missing::complete;
 use super::near::{Near, kind};
+use super::odds::odds;
 use super::points::points;
 use super::readings::{HeightText, MarkText};
 use super::slab::{Thickness, slab};
@@ -34,6 +36,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let conventions = &job.conventions;
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
+    findings.extend(odds(drawing, conventions));
 
     let symbols = Symbols::new(drawing, conventions, &roles);
     let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbols.shapes);
@@ -53,6 +56,9 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
     let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
     taken.extend(&groups.texts);
+    let (outranked, found) = outranked(drawing, &roles, conventions.label_reach);
+    findings.extend(found);
+    taken.extend(outranked);
     let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);
     let Labels {

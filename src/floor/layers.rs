@@ -224,7 +224,7 @@ pub(super) fn sound(shape: &Shape) -> bool {
 }
 
 /// A job's patterns of layers; one that is none was refused where the job was read, and then none picks anything here.
-fn selectors(patterns: &[String]) -> Selectors {
+pub(super) fn selectors(patterns: &[String]) -> Selectors {
     Selectors::new(patterns).unwrap_or_default()
 }
 

@@ -23,6 +23,7 @@ pub const RULES: &[&Rule] = &[
     &LEVEL_OUTSIDE_ZONES,
     &MARK_TWICE,
     &OUTLINE_OPEN,
+    &PATTERNS_AT_ODDS,
     &PIECES_BRIDGED,
     &PIECES_MEET,
     &PIECES_OVERLAP,
@@ -37,6 +38,12 @@ pub const RULES: &[&Rule] = &[
     &THICKNESS_UNKNOWN,
     &ZONE_UNREAD,
 ];
+
+/// A name that two lists of the job file claim.
+pub(super) const PATTERNS_AT_ODDS: Rule = Rule {
+    name: "patterns-at-odds",
+    meaning: "A layer or block of the drawing fits patterns of two lists of the job file that exclude one another, such as live and dead ends.",
+};
 
 /// The same line drawn twice.
 pub(super) const DUPLICATE_LINE: Rule = Rule {

@@ -34,6 +34,7 @@ pub fn read(file_name: &str, text: &str) -> Result<Resolved, Problems> {
     reader.root(root.get_ref());
     reader.tables(root.get_ref());
     reader.contradictions();
+    reader.at_odds();
     reader.methods();
     // After a broken line what follows it on that line is guesswork: the mistake itself is enough.
     let (broken, mut found) = {
@@ -67,6 +68,8 @@ pub(super) struct Reader {
     pub(super) problems: Vec<Problem>,
     /// Sizes of strand that patterns name, with their places.
     pub(super) strand_names: Vec<(String, Range<usize>)>,
+    /// Words of lists: path of the key, word, place.
+    pub(super) word_spans: Vec<(String, String, Range<usize>)>,
 }
 
 impl Reader {
