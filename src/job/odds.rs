@@ -8,6 +8,7 @@ use super::reading::{Reader, plain};
 use crate::patterns::folded;
 
 /// Table, and two of its lists in which one pattern or word cannot stand: what it picks would be two things at once.
+/// `layers.tendons` is of either run, so that a layer may be in it and in the list of one run.
 pub(crate) const AT_ODDS: &[(&str, &str, &str)] = &[
     ("ends", "live_blocks", "dead_blocks"),
     ("ends", "live_words", "dead_words"),
@@ -16,8 +17,6 @@ pub(crate) const AT_ODDS: &[(&str, &str, &str)] = &[
     ("height", "high_words", "middle_words"),
     ("height", "low_words", "middle_words"),
     ("layers", "banded", "distributed"),
-    ("layers", "banded", "tendons"),
-    ("layers", "distributed", "tendons"),
     ("layers", "banded", "level_lines"),
     ("layers", "distributed", "level_lines"),
     ("layers", "tendons", "level_lines"),
