@@ -35,7 +35,8 @@ use crate::job::{Conventions, Job};
 pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let conventions = &job.conventions;
     let roles = Roles::new(drawing, conventions);
-    let mut findings = roles.hidden(drawing);
+    let (outranked, mut findings) = outranked(drawing, &roles, conventions.label_reach);
+    findings.extend(roles.hidden(drawing, &outranked));
     findings.extend(odds(drawing, conventions));
 
     let symbols = Symbols::new(drawing, conventions, &roles);
@@ -56,8 +57,6 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
     let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
     taken.extend(&groups.texts);
-    let (outranked, found) = outranked(drawing, &roles, conventions.label_reach);
-    findings.extend(found);
     taken.extend(outranked);
     let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);

@@ -1,6 +1,6 @@
 //! What lies on which layer: the job's patterns turned into roles.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 
@@ -130,8 +130,8 @@ impl Roles {
         plain.or_else(seen).copied().unwrap_or_default()
     }
 
-    /// One finding for each hidden layer that holds what was read.
-    pub(super) fn hidden(&self, drawing: &Drawing) -> Vec<Finding> {
+    /// One finding for each hidden layer that holds what was read; `left_out` are texts that were not.
+    pub(super) fn hidden(&self, drawing: &Drawing, left_out: &BTreeSet<usize>) -> Vec<Finding> {
         let mut findings = Vec::new();
         for layer in drawing.layers.iter().filter(|l| l.off || l.frozen) {
             let shapes = drawing
@@ -144,7 +144,9 @@ impl Roles {
             let texts = drawing
                 .texts
                 .iter()
-                .filter(|t| t.layer == layer.name)
+                .enumerate()
+                .filter(|(at, t)| t.layer == layer.name && !left_out.contains(at))
+                .map(|(_, t)| t)
                 .filter(|t| self.of(&t.layer, t.look).label != Labels::default())
                 .count();
             if shapes + texts > 0 {

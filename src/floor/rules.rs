@@ -114,7 +114,7 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 /// Tendons or labels on a layer that nobody sees.
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
-    meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
+    meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same, but for labels beside visible ones of their kind.",
 };
 
 /// A level that belongs to no zone.

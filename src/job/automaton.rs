@@ -13,7 +13,7 @@ use regex_syntax::hir::{Capture, Class, ClassUnicode, Hir, HirKind, Repetition};
 /// Bytes that an automaton may take; a pattern beyond this is taken as it is, undecided.
 const SIZE_LIMIT: usize = 2 << 20;
 /// Bytes that the automata of all patterns of a file may take together: a few seconds' work.
-const ALL_LIMIT: usize = 32 << 20;
+const ALL_LIMIT: usize = 64 << 20;
 /// Bytes that a visited state counts for.
 const VISIT: usize = 64;
 
@@ -289,7 +289,8 @@ impl Seen {
                     return None;
                 }
                 let lacking = self.lacking && byte.is_ascii() && !digit;
-                (lacking, u8::from(point || (digit && self.run == 1)))
+                let within = self.run == 1 && (digit || !byte.is_ascii());
+                (lacking, u8::from(point || within))
             }
             Sought::Count => {
                 let run = self.run + u8::from(digit);
@@ -392,7 +393,7 @@ mod tests {
         let mut budget = Budget::default();
         let large = r"^(?:[\p{L}\d]{0,40}x){1,30}(?<value>\d+)$";
         assert!(matches_something(large, &mut budget));
-        for _ in 0..16 {
+        for _ in 0..32 {
             assert!(matches_something(large, &mut budget));
         }
         assert!(budget.is_spent());

@@ -98,6 +98,18 @@ impl Reader {
             );
             return None;
         }
+        self.groups_can_be_read(key, text, &names, span)
+            .then_some(regex)
+    }
+
+    /// Whether each group stands where some line leads, and what is a number can be one.
+    fn groups_can_be_read(
+        &mut self,
+        key: &Key,
+        text: &str,
+        names: &[&str],
+        span: &Range<usize>,
+    ) -> bool {
         let apart = names
             .iter()
             .find(|name| !group_takes_part(text, name, &mut self.budget));
@@ -111,7 +123,7 @@ impl Reader {
                 "expected some text that fits the pattern and fills the group",
                 "look for ^ behind a text, $ before one, or \\b inside a word in the group's branch",
             );
-            return None;
+            return false;
         }
         let empty = NUMBERS.iter().find(|(name, sought)| {
             names.contains(name) && !group_holds_number(text, name, *sought, &mut self.budget)
@@ -130,12 +142,12 @@ impl Reader {
                 format!("expected {expected} inside (?<{empty}>...)"),
                 format!("write the part that is the number as (?<{empty}>\\d+)"),
             );
-            return None;
+            return false;
         }
         if let Some(words) = words_of_group(text, "word").filter(|words| !words.is_empty()) {
             self.pattern_words.push((words, span.clone()));
         }
-        Some(regex)
+        true
     }
 
     /// A pattern that takes too much to compile, or the first for which nothing is left.

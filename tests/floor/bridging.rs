@@ -144,9 +144,9 @@ fn pieces_a_little_aside_of_one_another_bend_no_tendon_however_they_lie_and_run(
             for turn_rad in [
                 0.0,
                 0.3,
-                1.570_796_326_794_896_6,
+                std::f64::consts::FRAC_PI_2,
                 2.0,
-                3.141_592_653_589_793,
+                std::f64::consts::PI,
                 5.0,
             ] {
                 for turned in [[false, false], [true, false], [false, true], [true, true]] {

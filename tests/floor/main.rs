@@ -20,6 +20,7 @@ mod laws;
 mod lettering;
 mod levels;
 mod marks;
+mod odds;
 mod pointing;
 mod settling;
 mod sketch;
