@@ -11,8 +11,10 @@ pub mod elevation;
 pub mod ends;
 pub mod ground;
 pub mod openings;
+pub mod order;
 pub mod plan;
 pub mod profile;
+mod pulls;
 pub mod required;
 pub mod soffit;
 pub mod standards;
@@ -63,6 +65,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(cover::height_outside_cover(worked, ground, &chords, job));
     found.extend(soffit::soffit_doubtful(worked, ground, job));
     found.extend(profile::hogging_radius(worked, job));
+    found.extend(profile::sagging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
     found.extend(openings::crosses_opening(worked, ground, &chords, job));
     found.extend(edge::leaves_slab(worked, ground, &chords, job));
@@ -80,6 +83,7 @@ pub fn floor(floor: &Floor, job: &Job) -> Vec<Finding> {
     let mut found = Vec::new();
     found.extend(stressing::jacking_stress(job));
     found.extend(standards::jacking(job));
+    found.extend(order::stressing_order(floor, job));
     found.extend(edge::no_outline(floor));
     found
 }
@@ -95,7 +99,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 19] = [
+static RULES: [&Rule; 21] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -105,6 +109,7 @@ static RULES: [&Rule; 19] = [
     &cover::HEIGHT_OUTSIDE_COVER,
     &soffit::SOFFIT_DOUBTFUL,
     &profile::HOGGING_RADIUS,
+    &profile::SAGGING_RADIUS,
     &plan::PLAN_RADIUS,
     &openings::CROSSES_OPENING,
     &edge::LEAVES_SLAB,
@@ -115,6 +120,7 @@ static RULES: [&Rule; 19] = [
     &curvature::CURVATURE_LOSS,
     &required::FORCE_BELOW_REQUIRED,
     &standards::STANDARD_STRESS,
+    &order::STRESSING_ORDER,
 ];
 
 impl Worked<'_> {

@@ -37,8 +37,8 @@ struct Arguments {
 enum Command {
     /// Work out every tendon and give each drawing back with the answers drawn on it
     ///
-    /// Writes <stem>-marked.dxf, <stem>-result.json, <stem>-tendons.csv, <stem>-points.csv, <stem>-extensions.csv and
-    /// <stem>-findings.csv, and prints a summary.
+    /// Writes <stem>-marked.dxf, <stem>-result.json, <stem>-tendons.csv, <stem>-points.csv, <stem>-extensions.csv,
+    /// <stem>-methods.csv and <stem>-findings.csv, and prints a summary.
     Mark {
         /// Drawings, in DXF
         #[arg(required = true, value_name = "PLAN.dxf")]

@@ -8,7 +8,7 @@ mod summary;
 mod table;
 
 pub use calculation::calculation;
-pub use csv::{extensions_csv, findings_csv, points_csv, tendons_csv};
+pub use csv::{extensions_csv, findings_csv, methods_csv, points_csv, tendons_csv};
 pub use json::json;
 pub use summary::summary;
 pub use table::{Align, plain, table};

@@ -85,17 +85,18 @@ fn lines_on(layer: &str, insunits: Option<u8>, ends: &[[f64; 4]]) -> String {
     text
 }
 
-const SIX: [&str; 6] = [
+const FILES: [&str; 7] = [
     "small-floor-extensions.csv",
     "small-floor-findings.csv",
     "small-floor-marked.dxf",
+    "small-floor-methods.csv",
     "small-floor-points.csv",
     "small-floor-result.json",
     "small-floor-tendons.csv",
 ];
 
 #[test]
-fn mark_writes_six_files_and_a_summary() {
+fn mark_writes_its_files_and_a_summary() {
     let folder = small();
     let output = tautplan(folder.path(), &["mark", "small-floor.dxf"]);
     assert!(
@@ -103,7 +104,7 @@ fn mark_writes_six_files_and_a_summary() {
         "{}",
         err(&output)
     );
-    let mut expected: Vec<String> = SIX.iter().map(ToString::to_string).collect();
+    let mut expected: Vec<String> = FILES.iter().map(ToString::to_string).collect();
     expected.push("small-floor.dxf".to_owned());
     expected.sort();
     assert_eq!(names(folder.path()), expected);
@@ -137,7 +138,7 @@ fn marking_twice_gives_the_same_bytes_and_out_is_made() {
             "{}",
             err(&output)
         );
-        assert_eq!(names(&folder.path().join("a/b")), SIX);
+        assert_eq!(names(&folder.path().join("a/b")), FILES);
     }
     let first = fs::read(folder.path().join("a/b/small-floor-marked.dxf")).expect("written");
     fs::copy(
@@ -381,7 +382,7 @@ fn a_place_that_cannot_be_written_is_refused_before_the_work() {
         &["mark", "small-floor.dxf", "--out", "file/below"],
         &["cannot be written"],
     );
-    // One target is a folder: none of the six is written.
+    // One target is a folder: none of them is written.
     fs::create_dir_all(folder.path().join("o/small-floor-findings.csv")).expect("made");
     refused(
         folder.path(),
@@ -406,7 +407,7 @@ fn one_bad_drawing_does_not_stop_the_others() {
         &["mark", "bad.dxf", "small-floor.dxf", "--out", "o"],
     );
     assert_eq!(output.status.code(), Some(2));
-    assert_eq!(names(&folder.path().join("o")), SIX);
+    assert_eq!(names(&folder.path().join("o")), FILES);
     assert!(err(&output).contains("bad.dxf"));
 }
 

@@ -157,7 +157,7 @@ fn every_range_holds_its_own_ends_and_refuses_what_lies_beyond() {
         for end in [least, most] {
             let read = job::read("range", &file(&format!("{end:?}")));
             // Two limits contradict each other at the far ends of their ranges; that is another rule.
-            if !["hogging_radius", "support_residual"]
+            if !["hogging_radius", "sagging_radius", "support_residual"]
                 .iter()
                 .any(|pair| key.name.starts_with(pair))
             {
@@ -246,9 +246,15 @@ fn each_other_mistake_is_told_apart() {
         ("[drawing]\nunit = \"inch\"\n", "does not know \"inch\""),
         ("[slab]\nthickness_mm = 1979-05-27\n", "cannot be a date"),
         ("[tendon]\ndefault_strand = \"13\"\n", "not known"),
+        ("[tendon]\ndefault_strands = 4.5\n", "not a whole number"),
+        ("[tendon]\ndefault_strands = 0\n", "0"),
         (
             "[limits]\nhogging_radius_error_m = 9\n",
             "before it is a warning",
+        ),
+        (
+            "[limits]\nsagging_radius_warning_m = 2\n",
+            "a sagging radius would be an error",
         ),
         ("stressing = 3\n", "is a table"),
         ("[stressing]\nmu_per_rad = \n", "not TOML"),
@@ -534,6 +540,17 @@ fn a_system_gives_defaults_and_every_key_still_overrides() {
         "{said:?}"
     );
     assert!(says("jacking_ratio = 0.75 (default: common practice)"));
+    // Bonded or not is asked by the published methods only.
+    assert!(!job.long_term.published.bonded);
+    assert!(!said.iter().any(|line| line.starts_with("bonded")));
+    let by_clause = read("system = \"greased-single-strand\"\n[long_term]\nmethod = \"aci423\"\n");
+    assert!(by_clause.assumptions().iter().any(|line| {
+        line == "bonded = false (default of greased-single-strand: a strand in grease is free along its whole length)"
+    }));
+    let grouted = read(
+        "system = \"greased-single-strand\"\n[long_term]\nmethod = \"aci423\"\nbonded = true\n",
+    );
+    assert!(grouted.job.long_term.published.bonded);
     assert!(!said.iter().any(|line| line.starts_with("system")));
 
     // Wherever the keys stand, what they say holds.
@@ -739,4 +756,47 @@ fn what_checking_all_patterns_may_take_is_bounded_and_told_at_the_pattern() {
             && found[0].1.contains("counted repetitions"),
         "{found:?}"
     );
+}
+
+#[test]
+fn only_what_the_named_methods_look_at_is_assumed() {
+    let read = |text: &str| job::read("job", text).unwrap_or_else(|problems| panic!("{problems}"));
+    let assumed = |text: &str| -> Vec<String> {
+        let fallbacks = read(text).fallbacks();
+        let of_table = fallbacks.iter().filter(|key| key.table == "long_term");
+        of_table.map(|key| key.name.clone()).collect()
+    };
+    let direct = assumed("");
+    assert!(direct.contains(&"creep_coefficient".to_owned()));
+    assert!(!direct.contains(&"strength_mpa".to_owned()));
+    assert_eq!(
+        assumed("[long_term]\nmethod = \"bs8110\"\n"),
+        [
+            "methods",
+            "concrete_stress_mpa",
+            "strength_mpa",
+            "strength_at_stressing_mpa",
+            "environment",
+            "stressing_days",
+            "relaxation_class",
+            "bonded",
+            "balanced_share",
+            "load_share_at_stressing",
+        ]
+    );
+    let unbonded = assumed("[long_term]\nmethod = \"aci423\"\nbonded = false\n");
+    assert!(!unbonded.contains(&"balanced_share".to_owned()));
+    let both = assumed("[long_term]\nmethods = [\"direct\", \"aci423\"]\n");
+    for key in ["creep_coefficient", "humidity_percent", "balanced_share"] {
+        assert!(both.contains(&key.to_owned()), "{key}");
+    }
+    assert!(!both.contains(&"cement_class".to_owned()));
+
+    // What is given and looked at by no method is said.
+    let idle =
+        read("[long_term]\nmethod = \"en1992\"\ncreep_coefficient = 2\nhumidity_percent = 60\n")
+            .idle();
+    let expected = "Given below [long_term] and not looked at by en1992: creep_coefficient.";
+    assert_eq!(idle.as_deref(), Some(expected));
+    assert_eq!(read("[long_term]\ncreep_coefficient = 2\n").idle(), None);
 }

@@ -2,13 +2,14 @@
 
 use std::collections::BTreeMap;
 
-use super::{Refusal, TendonResult};
+use super::{Refusal, TendonResult, samples};
+use crate::checks::Ground;
 use crate::checks::standards::MethodStress;
 use crate::finding::{Finding, Level, Rule};
-use crate::floor::Tendon;
+use crate::floor::{Faces, Tendon};
 use crate::job::{LongTerm, LongTermMethod};
-use crate::losses::long_term::{Case, Lost, Method, Place, When};
-use crate::losses::{Along, Effective, NoForce};
+use crate::losses::long_term::{self, Case, Lost, Method, NoLoss, Place, When};
+use crate::losses::{Along, Effective, NoForce, faces_by_points};
 
 /// See its meaning.
 pub(super) static METHOD_WITHOUT_LOSS: Rule = Rule {
@@ -27,6 +28,16 @@ pub struct MethodResult {
     pub method: LongTermMethod,
     /// What it gives, or why nothing.
     pub outcome: Result<MethodForces, NoForce>,
+    /// Mean force in the end, kN: also where the job asks at an age that the method knows nothing of.
+    pub final_kn: Option<f64>,
+}
+
+impl MethodResult {
+    /// Why the method gives no force before the end; `None` where it gives one, or no force at all.
+    pub fn no_force_in_time(&self) -> Option<NoLoss> {
+        let silent = self.outcome.is_ok() && !self.method.knows_time();
+        silent.then(|| NoLoss::FinalOnly(self.method.word()))
+    }
 }
 
 /// What a method gives.
@@ -42,54 +53,40 @@ pub struct MethodForces {
     pub mean_service_kn: f64,
     /// Service force at each of the tendon's points, kN.
     pub service_kn: Vec<f64>,
+    /// Greatest force after elastic shortening, and in service: station, metres, and kN; by a standard's method only.
+    pub greatest_kn: Option<[(f64, f64); 2]>,
     /// Mean force some days after stressing, in the order of [`DAYS`], kN; `None` where the method knows no time.
     pub in_time_kn: [Option<f64>; DAYS.len()],
-    /// Mean force in the end, kN.
-    pub final_kn: Option<f64>,
 }
 
-/// How far the methods lie apart on one tendon.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub struct Spread {
-    /// The method that leaves least.
-    pub least: LongTermMethod,
-    /// Its mean service force, kN.
-    pub least_kn: f64,
-    /// The method that leaves most.
-    pub greatest: LongTermMethod,
-    /// Its mean service force, kN.
-    pub greatest_kn: f64,
-    /// The difference over the drawn method's mean service force.
-    pub ratio: f64,
-}
-
-impl TendonResult {
-    /// The spread between the methods; `None` where fewer than two give a force, or the drawn one gives none.
-    pub fn spread(&self) -> Option<Spread> {
-        let drawn_kn = self
-            .by_method
-            .first()?
-            .outcome
-            .as_ref()
-            .ok()?
-            .mean_service_kn;
-        let mut means: Vec<(LongTermMethod, f64)> = self
-            .by_method
-            .iter()
-            .filter_map(|one| Some((one.method, one.outcome.as_ref().ok()?.mean_service_kn)))
-            .collect();
-        means.sort_by(|a, b| a.1.total_cmp(&b.1));
-        let [(least, least_kn), .., (greatest, greatest_kn)] = means[..] else {
-            return None;
-        };
-        Some(Spread {
-            least,
-            least_kn,
-            greatest,
-            greatest_kn,
-            ratio: (greatest_kn - least_kn) / drawn_kn,
-        })
+/// Where the concrete lies along a tendon, for the methods that ask: by the slab's zones where they are known, else by the
+/// tendon's own points.
+pub(super) fn faces(
+    tendon: &Tendon,
+    ground: Option<&Ground<'_>>,
+    job: &LongTerm,
+) -> Vec<(f64, Faces)> {
+    if !job.asks_published() {
+        return Vec::new();
     }
+    let by_zones = ground.map(|ground| ground.faces_from(&tendon.path));
+    by_zones
+        .filter(|faces| faces.iter().any(|(_, faces)| faces.thickness_m.is_some()))
+        .unwrap_or_else(|| faces_by_points(tendon))
+}
+
+/// A sentence for each of the job's methods that quotes something from memory.
+pub(super) fn recalled(job: &LongTerm) -> Vec<String> {
+    let methods = job.all_methods().into_iter();
+    methods
+        .filter_map(|method| {
+            let what = long_term::recalled(method)?;
+            Some(format!(
+                "{} quotes from memory, to be checked against the standard: {what}.",
+                method.word()
+            ))
+        })
+        .collect()
 }
 
 /// When the job asks for the service force.
@@ -105,17 +102,16 @@ pub(super) fn by_each(
     case: &Case,
     drawn: &Result<Effective<'_>, NoForce>,
 ) -> Vec<MethodResult> {
+    let mean_kn = |method: LongTermMethod, when| {
+        let at = Effective::new(along, job, method, case, when).ok()?;
+        Some(at.mean_service_kn())
+    };
     let work = |method: LongTermMethod| {
-        let mean_kn = |when| {
-            let at = Effective::new(along, job, method, case, when).ok()?;
-            Some(at.mean_service_kn())
-        };
         let effective = if method == job.method {
             drawn.clone()?
         } else {
             Effective::new(along, job, method, case, asked(job))?
         };
-        let knows_time = matches!(method, LongTermMethod::En1992 | LongTermMethod::As3600);
         let stressing_days = job.published.stressing_days;
         let stations = tendon.points.iter().map(|point| point.station_m);
         Ok(MethodForces {
@@ -126,49 +122,67 @@ pub(super) fn by_each(
             service_kn: stations
                 .map(|station_m| effective.service_kn(station_m))
                 .collect(),
+            greatest_kn: (method != LongTermMethod::Direct)
+                .then(|| greatest(tendon, along, &effective)),
             in_time_kn: DAYS.map(|days| {
                 let when = When::Age(stressing_days + days);
-                if knows_time { mean_kn(when) } else { None }
+                if method.knows_time() {
+                    mean_kn(method, when)
+                } else {
+                    None
+                }
             }),
-            final_kn: match asked(job) {
-                When::Final => Some(effective.mean_service_kn()),
-                When::Age(_) => mean_kn(When::Final),
-            },
         })
     };
     let named = job.all_methods().into_iter();
     named
-        .map(|method| MethodResult {
-            method,
-            outcome: work(method),
+        .map(|method| {
+            let outcome: Result<MethodForces, NoForce> = work(method);
+            let final_kn = match (asked(job), &outcome) {
+                (When::Final, Ok(forces)) => Some(forces.mean_service_kn),
+                (When::Final, Err(_)) => None,
+                (When::Age(_), _) => mean_kn(method, When::Final),
+            };
+            MethodResult {
+                method,
+                outcome,
+                final_kn,
+            }
         })
         .collect()
 }
 
-/// The greatest stresses after lock-off, anywhere, and in service, at the tendon's points, by each method that gives a loss.
-pub(super) fn stresses(tendon: &Tendon, result: &TendonResult) -> Vec<MethodStress> {
+/// The greatest forces after elastic shortening and in service: at the samples, and where a draw-in ends.
+fn greatest(tendon: &Tendon, along: &Along<'_, '_>, effective: &Effective<'_>) -> [(f64, f64); 2] {
+    let mut greatest = [(0.0, 0.0); 2];
+    let stations = samples::stations(tendon).into_iter();
+    for station_m in stations.chain(along.pulls().peaks_m()) {
+        // Of the two forces at an intermediate anchor the greater counts here.
+        for [.., transfer_kn, service_kn] in effective.sides_kn(station_m) {
+            for (held, force_kn) in greatest.iter_mut().zip([transfer_kn, service_kn]) {
+                if force_kn > held.1 {
+                    *held = (station_m, force_kn);
+                }
+            }
+        }
+    }
+    greatest
+}
+
+/// The greatest stresses after elastic shortening and in service, by each method that gives a loss.
+pub(super) fn stresses(result: &TendonResult) -> Vec<MethodStress> {
     let Some(steel) = result.forces.as_ref().map(|forces| forces.steel) else {
-        return Vec::new();
-    };
-    let greatest = |places: &mut dyn Iterator<Item = (f64, f64)>| {
-        let place = places.max_by(|a, b| a.1.total_cmp(&b.1))?;
-        Some((place.0, steel.stress_mpa(place.1)))
-    };
-    let mut lockoff = result
-        .samples
-        .iter()
-        .filter_map(|sample| Some((sample.station_m, sample.forces_kn[1]?)));
-    let Some((station_m, lockoff_mpa)) = greatest(&mut lockoff) else {
         return Vec::new();
     };
     let of = |one: &MethodResult| {
         let forces = one.outcome.as_ref().ok()?;
-        let stations = tendon.points.iter().map(|point| point.station_m);
-        let mut service = stations.zip(forces.service_kn.iter().copied());
+        let [transfer, service] = forces
+            .greatest_kn?
+            .map(|(station_m, force_kn)| (station_m, steel.stress_mpa(force_kn)));
         Some(MethodStress {
             method: one.method,
-            transfer: (station_m, lockoff_mpa - forces.lost.shortening_mpa),
-            service: greatest(&mut service)?,
+            transfer,
+            service,
         })
     };
     result.by_method.iter().filter_map(of).collect()

@@ -1,17 +1,19 @@
 //! The legend: what the colours and figures mean, what was assumed, and what this is not.
 
+mod inputs;
+
 use geo::Coord;
 
+use self::inputs::inputs;
 use super::place::Block;
 use super::{extension, layers, ramp, words};
 use crate::analysis::Analysis;
 use crate::cautions::CAUTIONS;
 use crate::drawing::{Align, Drawn};
 use crate::finding::Level;
-use crate::floor::EndKind;
-use crate::job::{Job, Pattern, Wobble};
+use crate::job::Job;
 use crate::losses::Forces;
-use crate::units::{FORCE, LONG, PER_LENGTH, SHORT, STRESS, TURN};
+use crate::units::{FORCE, SHORT};
 
 /// Heading of legend and table; no file name and no date, so that the same floor gives the same drawing.
 pub(super) const HEADING: &str = "tautplan: forces in tendons as drawn";
@@ -24,9 +26,13 @@ const PITCH: f64 = 1.7;
 pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let mut column = Column::new(letter_m);
     column.heading(HEADING);
-    column.sentence(
-        "Colours: service force (after all losses) left along each tendon, % of its jacking force",
-    );
+    column.sentence(&format!(
+        "Colours: service force ({}) left along each tendon, % of its jacking force",
+        match job.long_term.published.asked_days {
+            None => "after all losses".to_owned(),
+            Some(_) => format!("after losses, {}", job.long_term.asked_words()),
+        }
+    ));
     for class in 0..ramp::RAMP.len() {
         column.patch(class);
     }
@@ -48,12 +54,17 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let short = job.units.of(SHORT);
     let sample = extension::said(&short.figure(180.0, 0), &short.figure(174.0, 0), short.name);
     column.sentence(&format!("{sample}: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it"));
-    let both_live = |forces: &Forces| forces.ends.iter().all(|end| end.kind == EndKind::Live);
-    if analysis
-        .results
-        .iter()
-        .any(|result| result.forces.as_ref().is_some_and(both_live))
-    {
+    let some = |of: fn(&Forces) -> bool| {
+        let mut forces = analysis
+            .results
+            .iter()
+            .filter_map(|result| result.forces.as_ref());
+        forces.any(of)
+    };
+    if some(|forces| !forces.pulls.is_empty()) {
+        column.sentence(&format!("{}: a tendon with intermediate anchors is stressed segment by segment, in this order, and each pull has its extension at its jack; of the two forces at an intermediate anchor the lesser is given", extension::in_pull(2, "ext ...")));
+    }
+    if some(Forces::both_live) {
         column.sentence("Live at both ends: both jacks pull together, and the two extensions add up to the tendon's; with one jack moved from end to end the first pull is longer and the second shorter");
     }
     column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");
@@ -76,7 +87,7 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
         ));
     }
     column.gap();
-    for line in inputs(job) {
+    for line in inputs(analysis, job) {
         column.sentence(&line);
     }
     match analysis.assumptions.len() + analysis.fallbacks.len() {
@@ -103,63 +114,6 @@ fn without_forces(analysis: &Analysis) -> Option<String> {
     (none > 0).then(|| {
         format!("{none} of {all} tendons: their forces in service could not be worked out, see the findings")
     })
-}
-
-/// What the forces rest on.
-fn inputs(job: &Job) -> Vec<String> {
-    let (stressing, units) = (&job.stressing, job.units);
-    let stress = units.of(STRESS);
-    let wobble = match stressing.wobble {
-        Wobble::RadPerM(k) => format!("k {}", units.of(TURN).given(k)),
-        Wobble::PerM(k) => {
-            let k = units.of(PER_LENGTH).given_figure(k);
-            format!("K {k} per {}", units.of(LONG).name)
-        }
-    };
-    let long_term = &job.long_term;
-    vec![
-        format!(
-            "Jacking stress {} of strength, friction mu {} per rad, wobble {wobble}, draw-in {}",
-            stressing.jacking_ratio,
-            stressing.mu_per_rad,
-            units.of(SHORT).said(1000.0 * stressing.draw_in_m, 1)
-        ),
-        format!(
-            "Strand modulus {}; concrete modulus {} at stressing, {} at 28 days; share of elastic shortening {}",
-            stress.given(job.tendon.strand_modulus_mpa),
-            stress.given(long_term.concrete_modulus_transfer_mpa),
-            stress.given(long_term.concrete_modulus_mpa),
-            long_term.shortening_share
-        ),
-        format!(
-            "Shrinkage strain {}, creep coefficient {}, relaxation {:.1} % at 1000 h, times {} at the end",
-            long_term.shrinkage_strain,
-            long_term.creep_coefficient,
-            100.0 * long_term.relaxation_1000h,
-            long_term.relaxation_factor
-        ),
-        format!(
-            "Heights read as {}{}",
-            job.conventions.height,
-            by_pattern(job)
-        ),
-    ]
-}
-
-/// Patterns that say otherwise.
-fn by_pattern(job: &Job) -> String {
-    let patterns = job.conventions.height_patterns.iter();
-    let own: Vec<&str> = patterns
-        .filter(|pattern| {
-            pattern.unit.is_some() || pattern.from.is_some() || pattern.datum.is_some()
-        })
-        .map(Pattern::label)
-        .collect();
-    if own.is_empty() {
-        String::new()
-    } else {
-        format!(", except by the job's patterns {}", own.join(", "))
-    }
 }
 
 /// A column of lines that grows downwards.

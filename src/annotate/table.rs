@@ -8,11 +8,10 @@ use super::{layers, words};
 use crate::analysis::{Analysis, TendonResult, pair};
 use crate::drawing::{Align, Drawn, Mark};
 use crate::floor::{End, EndKind, Tendon};
-use crate::job::Job;
+use crate::job::{Job, LongTermMethod};
 use crate::losses::EndForces;
 use crate::units::{FORCE, LONG, SHORT, Unit, Units};
 
-const COLUMNS: usize = 12;
 /// Lines of heading over each column.
 const HEAD_LINES: usize = 2;
 /// Columns of words; numbers stand to the right.
@@ -26,32 +25,38 @@ const PAD: f64 = 0.7;
 /// A heavier rule after so many rows leads the eye.
 const RULE_EVERY: usize = 5;
 
-type Row = [String; COLUMNS];
+type Row = Vec<String>;
 
-/// What stands over each column, line by line.
-fn heads(units: Units) -> [Row; HEAD_LINES] {
+/// What stands over each column, line by line; a column for each method beside the drawn one.
+fn heads(units: Units, beside: &[LongTermMethod]) -> [Row; HEAD_LINES] {
     let [force, long, short] = [FORCE, LONG, SHORT].map(|quantity| units.of(quantity).name);
-    let heads: [[&str; HEAD_LINES]; COLUMNS] = [
+    let (least, mean) = (format!("least {force}"), format!("mean {force}"));
+    let mut heads = vec![
         ["mark", ""],
         ["strands", ""],
         ["plan", long],
         ["ends", ""],
         ["jacking", force],
-        ["service", &format!("least {force}")],
-        ["service", &format!("mean {force}")],
-        [&format!("ext {short} first"), "gross (net)"],
-        [&format!("ext {short} second"), "gross (net)"],
+        ["service", &least],
+        ["service", &mean],
+    ];
+    heads.extend(beside.iter().map(|method| [method.word(), mean.as_str()]));
+    let [first, second] = ["first", "second"].map(|which| format!("ext {short} {which}"));
+    heads.extend([
+        [first.as_str(), "gross (net)"],
+        [second.as_str(), "gross (net)"],
         ["curvature", "loss %"],
         ["least at", "jacking %"],
         ["find-", "ings"],
-    ];
-    [0, 1].map(|line| heads.map(|head| head[line].to_owned()))
+    ]);
+    [0, 1].map(|line| heads.iter().map(|head| head[line].to_owned()).collect())
 }
 
 /// The table as a block, with letters of the given height.
 pub(super) fn table(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
-    let rows = rows(analysis, job);
-    let heads = heads(job.units);
+    let beside: Vec<LongTermMethod> = analysis.methods().into_iter().skip(1).collect();
+    let rows = rows(analysis, job, &beside);
+    let heads = heads(job.units, &beside);
     let widths_m = widths_m(&heads, &rows, letter_m);
     let part_m: f64 = widths_m.iter().sum();
     // Parts of like length, about as high as the floor.
@@ -94,7 +99,7 @@ fn draw_part(
     marks: &mut Vec<Mark>,
     heads: &[Row],
     rows: &[Row],
-    widths_m: &[f64; COLUMNS],
+    widths_m: &[f64],
     (left_m, top_m): (f64, f64),
     letter_m: f64,
 ) -> f64 {
@@ -154,24 +159,31 @@ fn text(place: Coord<f64>, height_m: f64, align: Align, content: String) -> Mark
     layers::mark(layers::TABLE, drawn)
 }
 
-fn widths_m(heads: &[Row], rows: &[Row], letter_m: f64) -> [f64; COLUMNS] {
-    let mut widths_m = [0.0_f64; COLUMNS];
+fn widths_m(heads: &[Row; HEAD_LINES], rows: &[Row], letter_m: f64) -> Vec<f64> {
+    let mut widths_m = vec![0.0_f64; heads[0].len()];
     for row in heads.iter().chain(rows) {
         for (width, cell) in widths_m.iter_mut().zip(row) {
             *width = width.max(words::width_m(cell, letter_m));
         }
     }
-    widths_m.map(|width| width + 2.0 * PAD * letter_m)
+    let padded = |width_m: f64| width_m + 2.0 * PAD * letter_m;
+    widths_m.into_iter().map(padded).collect()
 }
 
-fn rows(analysis: &Analysis, job: &Job) -> Vec<Row> {
+fn rows(analysis: &Analysis, job: &Job, beside: &[LongTermMethod]) -> Vec<Row> {
     pair(analysis)
         .zip(analysis.findings_by_tendon())
-        .map(|((tendon, result), found)| row(tendon, result, job, found.len()))
+        .map(|((tendon, result), found)| row(tendon, result, job, beside, found.len()))
         .collect()
 }
 
-fn row(tendon: &Tendon, result: &TendonResult, job: &Job, findings: usize) -> Row {
+fn row(
+    tendon: &Tendon,
+    result: &TendonResult,
+    job: &Job,
+    beside: &[LongTermMethod],
+    findings: usize,
+) -> Row {
     let [first, second] = ends_on_plan(tendon);
     let forces = result.forces.as_ref();
     let or_dash = |value: Option<String>| value.unwrap_or_else(|| "-".to_owned());
@@ -187,22 +199,28 @@ fn row(tendon: &Tendon, result: &TendonResult, job: &Job, findings: usize) -> Ro
     let short = job.units.of(SHORT);
     let extension =
         |at: usize| or_dash(forces.and_then(|forces| extension(forces.ends.get(at)?, short)));
-    [
+    let mut row = vec![
         words::name(&tendon.mark),
         strands(tendon, job),
         job.units.of(LONG).figure(tendon.path.length_m(), 2),
-        [first, second]
-            .map(|at| end_word(&tendon.ends[at]))
-            .join("-"),
+        ends(tendon, [first, second]),
         whole(forces.map(|forces| forces.jack_kn)),
         whole(least_kn),
         whole(forces.and_then(|forces| Some(forces.later?.mean_service_kn))),
+    ];
+    row.extend(beside.iter().map(|&method| {
+        let one = result.by_method.iter().find(|one| one.method == method);
+        let forces = one.and_then(|one| one.outcome.as_ref().ok());
+        whole(forces.map(|forces| forces.mean_service_kn))
+    }));
+    row.extend([
         extension(first),
         extension(second),
         percent(forces.map(|f| f.totals.friction_curvature_kn / f.jack_kn)),
         percent(forces.map(|f| f.least_jacking_kn / f.jack_kn)),
         findings.to_string(),
-    ]
+    ]);
+    row
 }
 
 /// The ends as the plan shows them: the left one first, or the lower one where the tendon runs rather up than across.
@@ -228,6 +246,16 @@ fn strands(tendon: &Tendon, job: &Job) -> String {
     let size = size.map(words::name);
     let size = size.map(|size| format!("-{size}")).unwrap_or_default();
     format!("{times}{strands}{size}")
+}
+
+/// `live-dead`; with the number of intermediate anchors between, if there are any.
+fn ends(tendon: &Tendon, in_order: [usize; 2]) -> String {
+    let words = in_order.map(|at| end_word(&tendon.ends[at])).join("-");
+    match tendon.joints.len() {
+        0 => words,
+        1 => format!("{words}, 1 joint"),
+        more => format!("{words}, {more} joints"),
+    }
 }
 
 fn end_word(end: &End) -> &'static str {

@@ -9,6 +9,7 @@ use rstar::{AABB, RTree};
 
 use super::chords::Chords;
 use crate::floor::{Faces, Slab};
+use crate::geometry::Path;
 
 /// Pieces of plan line shorter than this are no piece, metres.
 const SLIVER_M: f64 = 1e-6;
@@ -62,6 +63,14 @@ impl<'a> Ground<'a> {
                 .collect(),
             general: Faces::general(slab.thickness_m),
         }
+    }
+
+    /// Where the concrete lies along a plan line, from each station on.
+    pub fn faces_from(&self, path: &Path) -> Vec<(f64, Faces)> {
+        let stretches = self.faces_along(&Chords::of(path)).into_iter();
+        stretches
+            .map(|stretch| (stretch.from_m, stretch.holds))
+            .collect()
     }
 
     /// Where the concrete lies outside every zone.
@@ -244,7 +253,6 @@ pub(super) fn share_along(line: Line<f64>, place: Coord<f64>) -> f64 {
 mod tests {
     use super::*;
     use crate::floor::Zone;
-    use crate::geometry::Path;
     use geo::polygon;
 
     #[test]

@@ -15,7 +15,7 @@ use crate::report::DrawingFacts;
 /// A floor worked out, and the drawing that it came from.
 #[derive(Debug)]
 pub(super) struct Work {
-    /// The drawing as it came.
+    /// The drawing as it came, for marks to be put in.
     pub(super) source: Source,
     /// What reports say of it.
     pub(super) facts: DrawingFacts,
@@ -43,6 +43,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
     units::check(plan, &floor.tendons, drawing.unit_m, drawing.unit_from)?;
     let mut analysis = analysis::work(floor, job, findings);
     analysis.fallbacks = job_file.resolved.fallbacks();
+    analysis.assumptions.extend(job_file.resolved.idle());
     let name = plan.file_name().unwrap_or(plan.as_os_str());
     Ok(Work {
         facts: DrawingFacts {
@@ -54,7 +55,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
             texts: drawing.texts.iter().map(|text| text.corners).collect(),
             extent: drawing.extent,
         },
-        source,
+        source: source.for_insertion(),
         analysis,
     })
 }

@@ -20,6 +20,8 @@ const COLUMN_M: f64 = 1.2;
 /// A label this near to an end stands at the anchor: metres, and text heights.
 const AT_END_M: f64 = 0.3;
 const AT_END_HEIGHTS: f64 = 1.5;
+/// As far from the start as from the end, whatever adding up lengths leaves, metres.
+const ROUNDING_M: f64 = 1e-6;
 
 /// Bins of the angle between text and tendon, of 15° each from along to across.
 pub(super) const TURNS: usize = 6;
@@ -170,7 +172,8 @@ impl Setting<'_> {
             at_end: end_m
                 <= AT_END_M
                     .max(AT_END_HEIGHTS * text.height_m)
-                    .min(length_m / 4.0),
+                    .min(length_m / 4.0)
+                    + ROUNDING_M,
             edge_h: edge_m(text, &foot.place, (cos, sin), foot.station_m, length_m) / height_m,
             beside: beside
                 .into_iter()

@@ -9,7 +9,7 @@ use super::readings::MarkText;
 use super::rules::{GROUP_MISFIT, TENDON_MADE};
 use super::slab::Thickness;
 use super::slots::{Slots, slot_marks, slots};
-use super::types::{End, Point, PointKind, Tendon};
+use super::types::{End, Point, PointKind, PourJoint, Tendon};
 use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment};
 use crate::units::SHORT;
@@ -199,6 +199,10 @@ fn copy(typical: &Tendon, mark: String, by: Coord<f64>, thickness: &Thickness<'_
         place: end.place + by,
         ..end
     };
+    let joints = typical.joints.iter().map(|joint| PourJoint {
+        place: joint.place + by,
+        ..*joint
+    });
     let points = typical.points.iter().map(|point| {
         let place = point.place + by;
         let thickness_m = thickness.at(place);
@@ -226,6 +230,7 @@ fn copy(typical: &Tendon, mark: String, by: Coord<f64>, thickness: &Thickness<'_
                 .map(|&piece| moved(piece, by)),
         ),
         ends: typical.ends.map(end),
+        joints: joints.collect(),
         points: points.collect(),
         made: true,
         ..typical.clone()

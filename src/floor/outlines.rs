@@ -70,7 +70,7 @@ pub(super) fn outlines(
     }
     // A hole may be as small as a pipe; an edge or a zone of the size of a symbol is one.
     let least_m2 = match ground {
-        Ground::Edge | Ground::Zone => SYMBOL_M * SYMBOL_M,
+        Ground::Edge | Ground::Zone | Ground::Slab => SYMBOL_M * SYMBOL_M,
         _ => 1e-6,
     };
     rings.retain(|ring| ring.unsigned_area() > least_m2);

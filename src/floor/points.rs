@@ -1,6 +1,7 @@
 //! Profile points of a tendon from the heights that were settled on it.
 
 use super::heights::Height;
+use super::inward::Inside;
 use super::lines::Line;
 use super::measured::{Measured, Measures};
 use super::nearer_face::{Bare, unknown_at_anchor, words_by_neighbours};
@@ -50,6 +51,7 @@ pub(super) fn points(
 ) -> (Vec<Point>, Vec<Finding>) {
     let (mut marks, mut findings) = merged(mark, line, heights, thickness);
     let length_m = line.path.length_m();
+    findings.extend(anchored(mark, line, &mut marks));
     // The mark nearest to an end is the anchor's; another that stands near is a point of its own.
     let first_is_anchor = marks
         .first()
@@ -126,6 +128,45 @@ pub(super) fn points(
     }));
     points.push(last);
     (points, findings)
+}
+
+/// Gives an anchor the height that is written a little way in from it, and says where that is in doubt.
+fn anchored(mark: &str, line: &Line, marks: &mut [Mark]) -> Vec<Finding> {
+    let length_m = line.path.length_m();
+    let from_start_m: Vec<f64> = marks.iter().map(|mark| mark.station_m).collect();
+    let from_end_m: Vec<f64> = from_start_m.iter().map(|at_m| length_m - at_m).collect();
+    let last = marks.len().saturating_sub(1);
+    let mut findings = Vec::new();
+    for (at, next, in_m) in [
+        (0, 1, &from_start_m),
+        (last, last.wrapping_sub(1), &from_end_m),
+    ] {
+        let Some((held, &in_m, &next_m)) = marks
+            .get_mut(at)
+            .zip(in_m.get(at))
+            .map(|(held, own_m)| (held, own_m, in_m.get(next).unwrap_or(&length_m)))
+        else {
+            continue;
+        };
+        let inside = Inside {
+            in_m,
+            reading: held.reading,
+            next_m,
+            thickness_m: held.faces.thickness_m,
+        };
+        if held.at_end || held.torn {
+            continue;
+        }
+        held.at_end = inside.is_of_anchor();
+        let place = line.path.place_at(held.station_m);
+        findings.extend(inside.doubt().map(|finding| {
+            finding
+                .on_tendon(mark)
+                .at_station(held.station_m)
+                .at_place(place)
+        }));
+    }
+    findings
 }
 
 /// Heights of which no two are at one place: a label outweighs a level line, and that they differ is said.

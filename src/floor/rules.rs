@@ -4,6 +4,7 @@ use crate::finding::Rule;
 
 /// Every rule of this stage, by name.
 pub const RULES: &[&Rule] = &[
+    &ANCHOR_HEIGHT_INSIDE,
     &DUPLICATE_LINE,
     &END_CONTRADICTED,
     &END_UNCLAIMED,
@@ -11,7 +12,9 @@ pub const RULES: &[&Rule] = &[
     &FACE_BY_NEIGHBOURS,
     &FACE_UNKNOWN,
     &GROUP_MISFIT,
+    &HATCH_UNREAD,
     &HEIGHT_MISSING,
+    &JOINT_UNCLAIMED,
     &LABEL_AMBIGUOUS,
     &LABEL_SHARED,
     &LABEL_UNCLAIMED,
@@ -43,6 +46,12 @@ pub const RULES: &[&Rule] = &[
 pub(super) const PATTERNS_AT_ODDS: Rule = Rule {
     name: "patterns-at-odds",
     meaning: "A layer or block of the drawing fits patterns of two lists of the job file that exclude one another, such as live and dead ends.",
+};
+
+/// A height near to an end and not at it.
+pub(super) const ANCHOR_HEIGHT_INSIDE: Rule = Rule {
+    name: "anchor-height-inside",
+    meaning: "A bare height that stands alone within 0.6 m of an end, and not at it, is the anchor's or has a word for high or low.",
 };
 
 /// The same line drawn twice.
@@ -93,6 +102,12 @@ pub(super) const HEIGHT_MISSING: Rule = Rule {
     meaning: "A tendon has no height where its neighbours, a column or an unclaimed label say that one belongs.",
 };
 
+/// An intermediate anchor that divides no tendon.
+pub(super) const JOINT_UNCLAIMED: Rule = Rule {
+    name: "joint-unclaimed",
+    meaning: "An intermediate anchor's symbol stands on no tendon, on several equally well, or at an end that has its own symbol: it divides none.",
+};
+
 /// A label that might as well belong elsewhere.
 pub(super) const LABEL_AMBIGUOUS: Rule = Rule {
     name: "label-ambiguous",
@@ -115,6 +130,13 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
     meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same, but for labels beside visible ones of their kind.",
+};
+
+/// Areas that are hatched and have no outline.
+pub(super) const HATCH_UNREAD: Rule = Rule {
+    name: "hatch-unread",
+    meaning: "A layer of slab edges, openings, zones or columns holds hatches and no closed line: hatches are not read, \
+              their outlines are.",
 };
 
 /// A level that belongs to no zone.
@@ -156,7 +178,7 @@ pub(super) const PIECES_MEET: Rule = Rule {
 /// A gap in a tendon.
 pub(super) const PIECES_BRIDGED: Rule = Rule {
     name: "pieces-bridged",
-    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length.",
+    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length or an intermediate anchor stands in it.",
 };
 
 /// Two pieces of a tendon that overlap.

@@ -2,7 +2,7 @@
 
 use std::collections::BTreeSet;
 
-use geo::{Coord, Polygon};
+use geo::{Area, Coord, Intersects, Point, Polygon};
 
 use super::areas::Areas;
 use super::layers::{Ground, Roles};
@@ -28,14 +28,15 @@ pub(super) fn slab(
 ) -> (Slab, Vec<Polygon<f64>>, Vec<Finding>) {
     let mut findings = Vec::new();
     let mut rings = |ground| outlines(drawing, job, roles, symbols, ground, &mut findings);
+    let (inner, outer) = one_in_another(rings(Ground::Slab));
     let mut slab = Slab {
-        outlines: rings(Ground::Edge),
+        outlines: [outer, rings(Ground::Edge)].concat(),
         openings: rings(Ground::Opening),
         zones: Vec::new(),
         thickness_m: job.slab.thickness_m,
         columns: rings(Ground::Column),
     };
-    let rings_of_zones = rings(Ground::Zone);
+    let rings_of_zones = [inner, rings(Ground::Zone)].concat();
     let mut said: Vec<Vec<Said>> = vec![Vec::new(); rings_of_zones.len()];
     let mut general: Vec<Said> = Vec::new();
     let areas = Areas::new(rings_of_zones.iter());
@@ -47,7 +48,7 @@ pub(super) fn slab(
     });
     for text in texts {
         let ground = roles.of(&text.layer, text.look).ground;
-        if ground != Ground::Zone && ground != Ground::Edge {
+        if !matches!(ground, Ground::Zone | Ground::Edge | Ground::Slab) {
             continue;
         }
         let Some(read) = zone_text(&text.content, &job.conventions) else {
@@ -70,6 +71,30 @@ pub(super) fn slab(
     slab.zones = zones;
     findings.extend(of_slab);
     (slab, unread, findings)
+}
+
+/// Outlines that lie in another, and those that lie in none.
+fn one_in_another(rings: Vec<Polygon<f64>>) -> (Vec<Polygon<f64>>, Vec<Polygon<f64>>) {
+    let within = |inner: &Polygon<f64>| {
+        let mut larger = rings
+            .iter()
+            .filter(|outer| outer.unsigned_area() > inner.unsigned_area());
+        larger.any(|outer| {
+            let corners = || inner.exterior().coords();
+            let inside = corners().filter(|&&corner| outer.intersects(&Point(corner)));
+            2 * inside.count() > corners().count()
+        })
+    };
+    let inside: Vec<bool> = rings.iter().map(within).collect();
+    let (mut inner, mut outer) = (Vec::new(), Vec::new());
+    for (ring, inside) in rings.into_iter().zip(inside) {
+        if inside {
+            inner.push(ring);
+        } else {
+            outer.push(ring);
+        }
+    }
+    (inner, outer)
 }
 
 fn general_thickness(slab: &mut Slab, said: &[Said], job: &Job, findings: &mut Vec<Finding>) {

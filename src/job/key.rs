@@ -37,6 +37,17 @@ pub enum Kind {
         /// Sets it.
         set: fn(&mut Job, f64),
     },
+    /// A whole number within a range, ends included.
+    Count {
+        /// Least.
+        least: u32,
+        /// Most.
+        most: u32,
+        /// Reads it, if the job has one.
+        get: fn(&Job) -> Option<u32>,
+        /// Sets it.
+        set: fn(&mut Job, u32),
+    },
     /// One of these words.
     Choice {
         /// The words.
@@ -127,6 +138,7 @@ impl Key {
     pub fn value(&self, job: &Job) -> Option<Value> {
         match &self.kind {
             Kind::Number { get, .. } => get(job).map(|number| json!(number)),
+            Kind::Count { get, .. } => get(job).map(|count| json!(count)),
             Kind::Choice { get, .. } => get(job).map(|word| json!(word)),
             Kind::Switch { get, .. } => Some(json!(get(job))),
             Kind::Shell(place) | Kind::Words(place) | Kind::Choices { place, .. } => {
@@ -150,6 +162,7 @@ impl Key {
     pub fn expected(&self) -> String {
         match &self.kind {
             Kind::Number { least, most, .. } => format!("a number from {least} to {most}"),
+            Kind::Count { least, most, .. } => format!("a whole number from {least} to {most}"),
             Kind::Choice { words, .. } => format!("one of {}", quoted(words)),
             Kind::Switch { .. } => "true or false".to_owned(),
             Kind::Shell(_) => "a list of shell patterns, such as [\"NAME*\"]".to_owned(),
@@ -192,6 +205,7 @@ impl Key {
             }
             (_, Some(value)) => toml_text(&value),
             (Kind::Number { example, .. }, None) => toml_text(&json!(example)),
+            (Kind::Count { most, .. }, None) => toml_text(&json!(most.min(&5))),
             (Kind::Choice { words, .. }, None) => toml_text(&json!(words.first())),
             (_, None) => "\"12.7\"".to_owned(),
         };

@@ -2,8 +2,8 @@
 
 use super::key::{Key, Kind, Place};
 use super::{
-    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Soffit,
-    StepKeeps, System, Wobble,
+    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, SIDES,
+    Soffit, StepKeeps, System, Wobble,
 };
 use crate::units::{LengthUnit, Units};
 
@@ -175,7 +175,7 @@ pub static KEYS: &[Key] = &[
     key("layers", "slab_opening", Kind::Shell(place!(conventions.layers.slab_opening)),
         "Openings.", CONVENTION),
     key("layers", "slab_zone", Kind::Shell(place!(conventions.layers.slab_zone)),
-        "Zones with a thickness of their own, and thickness texts.", CONVENTION),
+        "Zones with a thickness of their own, and thickness texts; on a layer of slab_edge too, outlines that lie in another are zones.", CONVENTION),
     key("layers", "column", Kind::Shell(place!(conventions.layers.column)),
         "Columns and walls.", CONVENTION),
 
@@ -193,6 +193,11 @@ pub static KEYS: &[Key] = &[
         "common practice"),
     key("ends", "dead_words", Kind::Words(place!(conventions.dead_end_words)),
         "Words at a fixed end, likewise.", "common practice"),
+    key("ends", "intermediate_blocks", Kind::Shell(place!(conventions.intermediate_blocks)),
+        "Blocks that mark an intermediate anchor, where a tendon goes on into the next pour (shell patterns, any letter case).",
+        CONVENTION),
+    key("ends", "intermediate_words", Kind::Words(place!(conventions.intermediate_words)),
+        "Words at an intermediate anchor, as texts or attributes of ends.blocks, in any letter case.", CONVENTION),
     key("ends", "live_shapes", Kind::Choices {
             words: END_SHAPES,
             place: place!(conventions.live_end_shapes),
@@ -314,6 +319,14 @@ pub static KEYS: &[Key] = &[
         },
         "Size of strand where a mark gives only a count.",
         "such a tendon gets a finding and no forces"),
+    key("tendon", "default_strands", Kind::Count {
+            least: 1,
+            most: 100,
+            get: |job| job.tendon.default_strands,
+            set: |job, count| job.tendon.default_strands = Some(count),
+        },
+        "Strands in each tendon for which the drawing gives no number, as where a note says so.",
+        "such a tendon gets a finding and no forces"),
     key("tendon", "strand_modulus_mpa", number!(100_000.0..=250_000.0, tendon.strand_modulus_mpa, ONE),
         "Modulus of the strand.", "common practice, 195 GPa give or take 10"),
     key("tendon", "yield_ratio", number!(0.5..=1.0, tendon.yield_ratio, ONE),
@@ -345,6 +358,13 @@ pub static KEYS: &[Key] = &[
         "wobble_rad_per_m"),
     key("stressing", "draw_in_mm", number!(0.0..=50.0, stressing.draw_in_m, MM),
         "Wedge draw-in at each live end.", "common practice, 5 to 8 mm"),
+    key("stressing", "first_pour", Kind::Choices {
+            words: SIDES,
+            place: place!(stressing.first_pour),
+        },
+        "Side of the plan whose pour is stressed first, of a tendon with intermediate anchors between two live ends: left or right \
+         for one that runs rather across than up, bottom or top for the others. With one live end the pours follow from the dead end.",
+        "judgement of this program: the pour at the left or the lower end"),
     key("stressing", "order", Kind::Shell(place!(stressing.order)),
         "Order of stressing: marks or shell patterns, the first stressed first; a tendon that no entry names is stressed after \
          all that are named. Elastic shortening then goes tendon by tendon.",
@@ -441,6 +461,10 @@ pub static KEYS: &[Key] = &[
         "Hogging radius below which is an error.", "common practice for flat ducts"),
     key("limits", "hogging_radius_warning_m", number!(0.1..=100.0, limits.hogging_radius_warning_m, ONE),
         "Hogging radius below which is a warning.", "common practice for flat ducts"),
+    key("limits", "sagging_radius_error_m", number!(0.1..=100.0, limits.sagging_radius_error_m, ONE),
+        "Sagging radius below which is an error.", "as for hogging: a duct kinks whichever way it is bent"),
+    key("limits", "sagging_radius_warning_m", number!(0.1..=100.0, limits.sagging_radius_warning_m, ONE),
+        "Sagging radius below which is a warning.", "as for hogging: a duct kinks whichever way it is bent"),
     key("limits", "support_residual_warning_mm", number!(0.0..=1000.0, limits.support_residual_warning_m, MM),
         "Drawn support height off the curve, above which is a warning.", "heights are drawn to 5 mm"),
     key("limits", "support_residual_error_mm", number!(0.0..=1000.0, limits.support_residual_error_m, MM),

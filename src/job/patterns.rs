@@ -211,7 +211,7 @@ fn sample(name: &str) -> &'static str {
     }
 }
 
-/// A whole number of strands; the range has been checked.
-fn whole(count: f64) -> Option<u32> {
+/// A whole number; the range has been checked.
+pub(super) fn whole(count: f64) -> Option<u32> {
     format!("{count}").parse().ok()
 }

@@ -102,6 +102,24 @@ words! { Environment, "Where a floor stands, by the words of AS 3600 3.1.7.2.",
     Tropical = "tropical", "Outdoors, tropical, near-coastal or coastal.";
 }
 
+impl LongTermMethod {
+    /// Whether it gives the loss at any age, not only in the end.
+    pub fn knows_time(self) -> bool {
+        matches!(self, Self::En1992 | Self::As3600)
+    }
+
+    /// Where it is published.
+    pub fn standard(self) -> &'static str {
+        match self {
+            Self::Direct => "the job's own figures",
+            Self::En1992 => "EN 1992-1-1:2004",
+            Self::Aci423 => "the ACI-ASCE 423 method",
+            Self::Bs8110 => "BS 8110-1:1997",
+            Self::As3600 => "AS 3600:2018",
+        }
+    }
+}
+
 impl Default for Published {
     /// Every key at its default.
     fn default() -> Self {
@@ -142,6 +160,20 @@ impl LongTerm {
             }
         }
         all
+    }
+
+    /// When the service force is asked for, in words.
+    pub fn asked_words(&self) -> String {
+        self.published.asked_days.map_or_else(
+            || "in the end".to_owned(),
+            |days| format!("at an age of {days} days"),
+        )
+    }
+
+    /// Whether a method is named that works its figures out by clauses.
+    pub fn asks_published(&self) -> bool {
+        let direct = LongTermMethod::Direct;
+        self.all_methods().iter().any(|&method| method != direct)
     }
 }
 

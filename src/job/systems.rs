@@ -19,15 +19,22 @@ struct Standing {
     /// The key's path.
     path: &'static str,
     /// Its value, in the key's own unit.
-    value: f64,
+    value: Value,
     /// Where the value comes from.
     source: &'static str,
+}
+
+/// What a key of a system may be.
+#[derive(Debug)]
+enum Value {
+    Number(f64),
+    Switch(bool),
 }
 
 const fn standing(path: &'static str, value: f64, source: &'static str) -> Standing {
     Standing {
         path,
-        value,
+        value: Value::Number(value),
         source,
     }
 }
@@ -68,6 +75,11 @@ const GREASED_SINGLE_STRAND: &[Standing] = &[
         "3/4 inch for a slab indoors, ACI 318-19 20.5.1.3.2, from memory; the project's durability rules decide",
     ),
     standing("limits.plan_radius_m", 3.0, "common practice"),
+    Standing {
+        path: "long_term.bonded",
+        value: Value::Switch(false),
+        source: "a strand in grease is free along its whole length",
+    },
 ];
 
 impl System {
@@ -99,8 +111,10 @@ impl System {
         job.system = self;
         for standing in self.standing() {
             let key = KEYS.iter().find(|key| key.path() == standing.path);
-            if let Some(Kind::Number { set, .. }) = key.map(|key| &key.kind) {
-                set(job, standing.value);
+            match (key.map(|key| &key.kind), &standing.value) {
+                (Some(Kind::Number { set, .. }), Value::Number(number)) => set(job, *number),
+                (Some(Kind::Switch { set, .. }), Value::Switch(on)) => set(job, *on),
+                _ => {}
             }
         }
     }
@@ -136,17 +150,21 @@ mod tests {
     }
 
     #[test]
-    fn every_standing_value_is_that_of_a_number_key_within_its_range() {
+    fn every_standing_value_is_that_of_its_key_and_within_its_range() {
         for system in System::ALL {
             let job = system.job();
             for standing in system.standing() {
                 let key = KEYS.iter().find(|key| key.path() == standing.path);
                 let key = key.unwrap_or_else(|| panic!("{} is no key", standing.path));
-                let Kind::Number { least, most, .. } = key.kind else {
-                    panic!("{} is no number", standing.path);
+                let value = match (&key.kind, &standing.value) {
+                    (Kind::Number { least, most, .. }, Value::Number(number)) => {
+                        assert!((least..=most).contains(&number), "{}", key.path());
+                        serde_json::json!(number)
+                    }
+                    (Kind::Switch { .. }, Value::Switch(on)) => serde_json::json!(on),
+                    _ => panic!("{} is of another kind", standing.path),
                 };
-                assert!((least..=most).contains(&standing.value), "{}", key.path());
-                assert_eq!(key.value(&job), Some(serde_json::json!(standing.value)));
+                assert_eq!(key.value(&job), Some(value));
             }
         }
     }

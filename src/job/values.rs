@@ -6,6 +6,7 @@ use toml::de::{DeArray, DeValue};
 
 use crate::job::StrandSize;
 use crate::job::key::{Key, Kind, quoted};
+use crate::job::patterns::whole;
 use crate::job::reading::{Entry, Reader, kind_word, nearest, plain};
 use crate::patterns::{Names, PatternRefused, Selectors};
 
@@ -22,6 +23,9 @@ impl Reader {
                 {
                     set(&mut self.job, number);
                 }
+            }
+            (Kind::Count { .. }, DeValue::Integer(_) | DeValue::Float(_)) => {
+                self.count(key, entry);
             }
             (Kind::Choice { words, set, .. }, DeValue::String(word)) => {
                 if words.contains(&word.as_ref()) {
@@ -91,6 +95,28 @@ impl Reader {
             _ => self.mistake(
                 entry.span(),
                 format!("`{}` cannot be {}", key.name, kind_word(entry.get_ref())),
+                format!("expected {}", key.expected()),
+                format!("type for example `{}`", key.example()),
+            ),
+        }
+    }
+
+    fn count(&mut self, key: &Key, entry: &Entry<'_>) {
+        let Kind::Count {
+            least, most, set, ..
+        } = key.kind
+        else {
+            return;
+        };
+        let range = (f64::from(least), f64::from(most));
+        let Some(number) = self.number(key.name, range, &key.example(), entry) else {
+            return;
+        };
+        match whole(number) {
+            Some(count) => set(&mut self.job, count),
+            None => self.mistake(
+                entry.span(),
+                format!("`{}` is not a whole number", key.name),
                 format!("expected {}", key.expected()),
                 format!("type for example `{}`", key.example()),
             ),

@@ -79,7 +79,7 @@ fn describe(text: &mut String, key: &Key, job: &Job) {
         None => format!("Not given: {}. For example:", key.source),
     };
     let allowed = match &key.kind {
-        Kind::Number { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
+        Kind::Number { .. } | Kind::Count { .. } | Kind::Choice { .. } | Kind::Choices { .. } => {
             format!("{}. ", capital(&key.expected()))
         }
         _ => String::new(),
@@ -127,6 +127,8 @@ pub(super) fn fallbacks(resolved: &Resolved) -> Vec<Fallback> {
             let value = key.value(&resolved.job).map(|value| toml_text(&value));
             // The one form of wobble that is not used says nothing.
             let silent = value.is_none() && key.name.starts_with("wobble")
+                // A method that the job does not name assumes nothing.
+                || resolved.is_idle(key)
                 // Where in the duct the strand lies matters only to heights of the duct.
                 || key.name.starts_with("strand_in_duct")
                     && resolved.job.conventions.height.datum == Datum::Centroid;

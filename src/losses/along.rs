@@ -1,80 +1,139 @@
 //! The places along a tendon, as the methods of long-term loss ask for them.
 
-use super::Stressed;
+use super::Pulls;
 use super::long_term::{Case, Place, Turn};
-use crate::floor::Tendon;
-use crate::job::{LongTerm, LongTermMethod};
+use crate::floor::{Faces, Tendon};
+use crate::job::LongTerm;
 use crate::numerics::integrate;
 
-/// A stressed tendon in its slab. Between two points of different thickness the slab changes half way.
+/// A stressed tendon in its slab.
 #[derive(Debug, Clone)]
 pub struct Along<'s, 'p> {
-    stressed: &'s Stressed<'p>,
-    /// Stations from which a thickness holds, metres.
-    steps: Vec<(f64, f64)>,
+    pulls: &'s Pulls<'p>,
+    /// Where the concrete lies, from each station on.
+    steps: Vec<Step>,
+}
+
+/// From a station on the concrete lies so.
+#[expect(clippy::struct_field_names, reason = "each says its unit")]
+#[derive(Debug, Clone, Copy)]
+struct Step {
+    from_m: f64,
+    top_m: f64,
+    thickness_m: f64,
+}
+
+impl Step {
+    /// 12 z²/h² of a level, z from mid-depth.
+    fn eccentricity(&self, level_m: f64) -> f64 {
+        let z_m = level_m - (self.top_m - 0.5 * self.thickness_m);
+        12.0 * (z_m / self.thickness_m).powi(2)
+    }
+}
+
+/// Where the concrete lies along a tendon, as far as its own points tell, from each station on: between two points that
+/// differ it changes half way.
+pub fn faces_by_points(tendon: &Tendon) -> Vec<(f64, Faces)> {
+    let known = tendon
+        .points
+        .iter()
+        .filter(|point| point.thickness_m.is_some());
+    let mut faces: Vec<(f64, Faces)> = Vec::new();
+    let mut last_m = 0.0;
+    for point in known {
+        let from_m = if faces.is_empty() {
+            0.0
+        } else {
+            f64::midpoint(last_m, point.station_m)
+        };
+        if faces.last().is_none_or(|last| last.1 != point.faces()) {
+            faces.push((from_m, point.faces()));
+        }
+        last_m = point.station_m;
+    }
+    faces
 }
 
 impl<'s, 'p> Along<'s, 'p> {
-    /// The tendon in the slab that its points give.
-    pub fn new(stressed: &'s Stressed<'p>, tendon: &Tendon) -> Self {
-        let mut steps: Vec<(f64, f64)> = Vec::new();
-        let mut last_m = 0.0;
-        for point in &tendon.points {
-            let Some(thickness_m) = point.thickness_m else {
-                continue;
-            };
-            let from_m = if steps.is_empty() {
-                0.0
-            } else {
-                f64::midpoint(last_m, point.station_m)
-            };
-            let same = |&(_, held_m): &(f64, f64)| (held_m - thickness_m).abs() < 1e-9;
-            if !steps.last().is_some_and(same) {
-                steps.push((from_m, thickness_m));
-            }
-            last_m = point.station_m;
-        }
-        Self { stressed, steps }
+    /// The tendon in a slab that lies so from each station on, in order; a stretch of unknown thickness is passed over.
+    pub fn new(pulls: &'s Pulls<'p>, faces: impl IntoIterator<Item = (f64, Faces)>) -> Self {
+        let step = |(from_m, faces): (f64, Faces)| {
+            Some(Step {
+                from_m,
+                top_m: faces.top_m,
+                thickness_m: faces.thickness_m.filter(|&thick_m| thick_m > 0.0)?,
+            })
+        };
+        let steps = faces.into_iter().filter_map(step).collect();
+        Self { pulls, steps }
     }
 
     /// The tendon.
-    pub(super) fn stressed(&self) -> &'s Stressed<'p> {
-        self.stressed
+    pub fn pulls(&self) -> &'s Pulls<'p> {
+        self.pulls
     }
 
     /// The place at a station.
     pub(super) fn place(&self, station_m: f64) -> Place {
-        self.place_of(station_m, self.stressed.lockoff_kn(station_m))
+        self.place_of(station_m, self.pulls.lockoff_kn(station_m))
     }
 
     /// The place at a station, its force after lock-off known.
     pub(super) fn place_of(&self, station_m: f64, lockoff_kn: f64) -> Place {
         Place {
-            lockoff_mpa: self.stressed.steel().stress_mpa(lockoff_kn),
+            lockoff_mpa: self.pulls.steel().stress_mpa(lockoff_kn),
             eccentricity: self.eccentricity(station_m),
         }
     }
 
-    /// 12 z²/h² at a station, z from mid-depth; 0 where no thickness is known.
+    /// (A/I) z² at a station; 0 where no thickness is known.
     fn eccentricity(&self, station_m: f64) -> f64 {
-        let next = self.steps.partition_point(|step| step.0 <= station_m);
-        let Some(&(_, thickness_m)) = self.steps.get(next.saturating_sub(1)) else {
-            return 0.0;
-        };
-        let z_m = self.stressed.profile().level_m(station_m) + 0.5 * thickness_m;
-        12.0 * (z_m / thickness_m).powi(2)
+        let level_m = self.pulls.profile().level_m(station_m);
+        self.step(station_m)
+            .map_or(0.0, |step| step.eccentricity(level_m))
+    }
+
+    /// How the concrete lies at a station.
+    fn step(&self, station_m: f64) -> Option<&Step> {
+        let next = self.steps.partition_point(|step| step.from_m <= station_m);
+        self.steps.get(next.saturating_sub(1))
+    }
+
+    /// Greatest (A/I) z²: level and slab have their extremes where pieces begin and end, where the curve is level, and on
+    /// both sides of a step.
+    fn most_eccentricity(&self) -> f64 {
+        let profile = self.pulls.profile();
+        let of_curve = profile.spans.iter().flat_map(|span| {
+            let turn_m = span.start_m - span.slope / span.curvature_per_m;
+            let within = (span.start_m..=span.end_m()).contains(&turn_m);
+            [
+                span.start_m,
+                span.end_m(),
+                if within { turn_m } else { span.start_m },
+            ]
+        });
+        let before_steps = self.steps.windows(2).filter_map(|pair| {
+            let [before, after] = pair else { return None };
+            Some(before.eccentricity(profile.level_m(after.from_m)))
+        });
+        of_curve
+            .chain(self.steps.iter().map(|step| step.from_m))
+            .map(|station_m| self.eccentricity(station_m))
+            .chain(before_steps)
+            .fold(0.0, f64::max)
     }
 
     /// Means along the tendon in space, quadrature to 1e-7.
     pub(super) fn means<const N: usize>(&self, of: impl Fn(f64) -> [f64; N]) -> [f64; N] {
-        let profile = self.stressed.profile();
+        let profile = self.pulls.profile();
         let weighted = |station_m: f64| {
             let steep = profile.slope(station_m).hypot(1.0);
             of(station_m).map(|value| value * steep)
         };
         let mut breaks: Vec<f64> = profile.spans.iter().map(|span| span.start_m).collect();
-        breaks.extend(self.steps.iter().map(|step| step.0));
+        breaks.extend(self.steps.iter().map(|step| step.from_m));
         breaks.extend(profile.bends.iter().map(|bend| bend.station_m));
+        breaks.extend(self.pulls.anchors_m());
         breaks.push(profile.plan_length_m());
         breaks.sort_by(f64::total_cmp);
         let mut sums = [0.0; N];
@@ -92,41 +151,16 @@ impl<'s, 'p> Along<'s, 'p> {
 
     /// The tendon as the job's methods see it, at this mean concrete stress, MPa.
     pub fn case(&self, job: &LongTerm, concrete_stress_mpa: f64, turn: Turn) -> Case {
-        let steel = self.stressed.steel();
-        let mean_mpa = steel.stress_mpa(self.stressed.mean_lockoff_kn());
-        let published = job
-            .all_methods()
-            .iter()
-            .any(|&method| method != LongTermMethod::Direct);
-        let profile = self.stressed.profile();
-        // Level and thickness have their extremes where pieces begin and end, or where the curve is level.
-        let stations = profile.spans.iter().flat_map(|span| {
-            let turn_m = span.start_m - span.slope / span.curvature_per_m;
-            let within = (span.start_m..=span.end_m()).contains(&turn_m);
-            [
-                span.start_m,
-                span.end_m(),
-                if within { turn_m } else { span.start_m },
-            ]
-        });
-        let steps = self.steps.iter().map(|step| step.0);
-        let most = stations
-            .chain(steps)
-            .map(|station_m| self.eccentricity(station_m))
-            .fold(0.0, f64::max);
+        let steel = self.pulls.steel();
+        let mean_mpa = steel.stress_mpa(self.pulls.mean_lockoff_kn());
+        let published = job.asks_published();
         let [eccentricity] = if published {
             self.means(|station_m| [self.eccentricity(station_m)])
         } else {
             [0.0]
         };
-        let [thickness_m] = if published && !self.steps.is_empty() {
-            self.means(|station_m| {
-                let next = self.steps.partition_point(|step| step.0 <= station_m);
-                [self
-                    .steps
-                    .get(next.saturating_sub(1))
-                    .map_or(0.0, |step| step.1)]
-            })
+        let [thickness_m] = if published && self.knows_thickness() {
+            self.means(|station_m| [self.step(station_m).map_or(0.0, |step| step.thickness_m)])
         } else {
             [0.0]
         };
@@ -141,12 +175,13 @@ impl<'s, 'p> Along<'s, 'p> {
                 .notional_thickness_m
                 .or(own_m)
                 .map(|m| 1e3 * m),
+            thickness_given: job.published.notional_thickness_m.is_some(),
             turn,
             mean: Place {
                 lockoff_mpa: mean_mpa,
                 eccentricity,
             },
-            most_eccentricity: most,
+            most_eccentricity: self.most_eccentricity(),
         }
     }
 

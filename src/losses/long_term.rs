@@ -12,11 +12,13 @@ mod direct;
 pub mod en1992;
 mod equation;
 mod outside;
+mod recalled;
 mod stress;
 
 pub use case::{Case, Lost, NoLoss, Place, Turn, When};
 pub use equation::Equation;
 pub use outside::Outside;
+pub use recalled::recalled;
 pub use stress::at_level_mpa;
 
 use crate::job::{LongTerm, LongTermMethod};

@@ -182,3 +182,31 @@ fn lengths_that_differ_by_less_than_the_tolerance_put_no_sorting_out() {
     }
     assert_eq!(floor(&board).0.tendons.len(), 40);
 }
+
+#[test]
+fn mid_depth_written_some_way_in_is_the_anchors_and_another_bare_height_is_in_doubt() {
+    for forwards in [true, false] {
+        for (text, inside_m, anchor_mm, own_points, doubted) in [
+            ("125", 0.45, 125.0, 1, false),
+            ("125", 0.95, 125.0, 1, false),
+            ("110", 0.45, 125.0, 2, true),
+            ("H205", 0.45, 125.0, 2, false),
+            ("205", 1.0, 125.0, 2, false),
+        ] {
+            let board = tendon(forwards, &[(text, inside_m, 0.12), ("L40", 10.0, 0.12)]);
+            let found = points(&board);
+            let case = format!("{text} at {inside_m}, {forwards}: {found:?}");
+            assert_eq!(
+                found[0],
+                (PointKind::Anchor, 0.0, Some(anchor_mm)),
+                "{case}"
+            );
+            assert_eq!(found.len(), 2 + own_points, "{case}");
+            let (_, findings) = floor(&board);
+            let said = findings
+                .iter()
+                .filter(|f| f.rule.name == "anchor-height-inside");
+            assert_eq!(said.count(), usize::from(doubted), "{case}");
+        }
+    }
+}

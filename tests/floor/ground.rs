@@ -1,7 +1,9 @@
 //! Slab zones, and the thickness that points take from them.
 
+use tautplan::drawing::Layer;
 use tautplan::finding::{Finding, Level};
-use tautplan::floor::{Floor, Tendon};
+use tautplan::floor::{Floor, Tendon, read};
+use tautplan::job::Job;
 
 use crate::kit::Board;
 use crate::sketch::{BANDED, mm, only, rules, tendon, told};
@@ -123,4 +125,60 @@ fn a_floor_without_a_thickness_says_so_once() {
         [None, Some(30), None],
         "no mid-depth without a depth"
     );
+}
+
+#[test]
+fn of_outlines_on_one_layer_for_edge_and_zones_the_inner_are_zones() {
+    let mut board = Board::new();
+    board.rectangle("STRUCTURE", (0.0, 0.0), (40.0, 20.0));
+    board.rectangle("STRUCTURE", (12.0, 2.0), (18.0, 9.0));
+    board.write("STRUCTURE", "T250", (30.0, 15.0));
+    board.write("STRUCTURE", "T350", (15.0, 6.0));
+    board.bare_tendon(BANDED, "B01", [0.0, 40.0], 5.0);
+    for (x, content) in [(5.0, "L30"), (15.0, "H165"), (25.0, "L30"), (35.0, "H165")] {
+        board.height(content, (x, 5.0));
+    }
+    let mut job = Job::default();
+    for layers in [
+        &mut job.conventions.layers.slab_edge,
+        &mut job.conventions.layers.slab_zone,
+    ] {
+        *layers = vec!["STRUCTURE".to_owned()];
+    }
+    let (floor, findings) = read(&board.drawing, &job);
+    assert_eq!(found(&floor), [250, 250, 350, 250, 250, 250].map(Some));
+    assert_eq!(floor.slab.outlines.len(), 1);
+    assert_eq!(floor.slab.zones.len(), 1);
+    assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
+}
+
+#[test]
+fn openings_that_are_hatched_and_have_no_outline_are_said() {
+    let hatched = |layer: &str, outlined: bool| {
+        let mut board = Board::slab();
+        board.bare_tendon(BANDED, "B01", [0.0, 20.0], 5.0);
+        board.drawing.layers.push(Layer {
+            name: layer.to_owned(),
+            counts: vec![("HATCH".to_owned(), 3)],
+            ..Layer::default()
+        });
+        if outlined {
+            board.rectangle(layer, (2.0, 8.0), (3.0, 9.0));
+        }
+        let (_, findings) = board.read();
+        findings
+    };
+    let text = &only(&hatched("SLAB-OPENING", false), "hatch-unread")
+        .text
+        .clone();
+    assert!(
+        text.starts_with("layer SLAB-OPENING holds 3 hatches and no line: no openings were read"),
+        "{text}"
+    );
+    for (layer, outlined) in [("SLAB-OPENING", true), ("FURNITURE", false)] {
+        assert!(
+            told(&hatched(layer, outlined), "hatch-unread").is_empty(),
+            "{layer}"
+        );
+    }
 }

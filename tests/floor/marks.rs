@@ -2,7 +2,8 @@
 
 use geo::Coord;
 use tautplan::finding::Level;
-use tautplan::floor::{Floor, Tendon};
+use tautplan::floor::{Floor, Tendon, read};
+use tautplan::job::Job;
 
 use crate::kit::{Board, Dice};
 use crate::sketch::{BANDED, DISTRIBUTED, MARK, mm, only, tendon, told};
@@ -159,4 +160,20 @@ fn on_a_plan_drawn_at_45_degrees_the_names_do_not_hang_on_rounding() {
             "by {by_m} m"
         );
     }
+}
+
+#[test]
+fn strands_that_a_note_gives_for_all_others_are_a_key_of_the_job() {
+    let mut board = Board::slab();
+    board.line(BANDED, &[(0.0, 5.0), (20.0, 5.0)]);
+    board.line(BANDED, &[(0.0, 8.0), (20.0, 8.0)]);
+    board.write(MARK, "B01", (2.0, 5.12));
+    board.write(MARK, "B02 7-12.7", (2.0, 8.12));
+    let mut job = Job::default();
+    job.tendon.default_strands = Some(4);
+    job.tendon.default_strand = Some("12.7".to_owned());
+    let (floor, findings) = read(&board.drawing, &job);
+    assert_eq!(tendon(&floor, "B01").strands, Some(4));
+    assert_eq!(tendon(&floor, "B02").strands, Some(7));
+    assert!(told(&findings, "strand-count-missing").is_empty());
 }

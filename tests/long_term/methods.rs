@@ -32,6 +32,7 @@ fn case() -> Case {
         concrete_stress_mpa: 1.6,
         steel_ratio: 0.0013,
         notional_thickness_mm: Some(220.0),
+        thickness_given: false,
         turn: Turn {
             tendons: 40.0,
             after: None,

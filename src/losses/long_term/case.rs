@@ -1,6 +1,7 @@
 //! What a method of long-term loss is given of one tendon, and what it gives back.
 
 use super::Outside;
+use super::equation::{Equation, n};
 use crate::losses::Steel;
 
 /// One tendon, as a method sees it.
@@ -14,12 +15,25 @@ pub struct Case {
     pub steel_ratio: f64,
     /// 2 A/u, mm; `None` where no thickness is known.
     pub notional_thickness_mm: Option<f64>,
+    /// Whether the job gives it.
+    pub thickness_given: bool,
     /// When its turn to be stressed comes.
     pub turn: Turn,
     /// The mean of its places.
     pub mean: Place,
     /// Greatest (A/I) z² on the way.
     pub most_eccentricity: f64,
+}
+
+impl Case {
+    /// Where the notional thickness comes from, in words.
+    pub(super) fn thickness_from(&self) -> &'static str {
+        if self.thickness_given {
+            "2 A/u as the job gives it"
+        } else {
+            "2 A/u: the slab's mean thickness along the tendon, which dries from both faces"
+        }
+    }
 }
 
 /// When a tendon's turn to be stressed comes among those that run its way.
@@ -43,6 +57,16 @@ impl Turn {
     /// The share of the whole elastic shortening: by the order of stressing, else the method's own.
     pub(super) fn share(&self, of_method: f64) -> f64 {
         self.after.unwrap_or(of_method)
+    }
+
+    /// The line of that share where it goes by the job's order of stressing.
+    pub(super) fn ordered(&self, symbol: &'static str) -> Option<Equation> {
+        let after = self.after?;
+        let clause = "the job's order of stressing";
+        Some(Equation::new(symbol, after, "", clause).by(
+            "tendons of its run stressed after it/n",
+            format!("{}/{}", n(after * self.tendons), n(self.tendons)),
+        ))
     }
 }
 

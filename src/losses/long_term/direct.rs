@@ -1,6 +1,6 @@
 //! The job gives strain and coefficients.
 
-use super::case::{Case, Lost, NoLoss, Place, When};
+use super::case::{Case, Lost, NoLoss, Place, Turn, When};
 use super::equation::{Equation, n};
 use crate::job::LongTerm;
 use crate::losses::shortening::shortening_mpa;
@@ -11,6 +11,7 @@ pub struct Direct {
     steel_modulus_mpa: f64,
     concrete_stress_mpa: f64,
     share: f64,
+    turn: Turn,
     e_ci_mpa: f64,
     e_c_mpa: f64,
     strain: f64,
@@ -27,6 +28,7 @@ impl Direct {
             steel_modulus_mpa: case.steel.modulus_mpa,
             concrete_stress_mpa: case.concrete_stress_mpa,
             share: case.turn.share(job.shortening_share),
+            turn: case.turn,
             e_ci_mpa: job.concrete_modulus_transfer_mpa,
             e_c_mpa: job.concrete_modulus_mpa,
             strain: job.shrinkage_strain,
@@ -50,7 +52,8 @@ impl Direct {
         let lost = self.at(place);
         let (modulus, stress) = (n(self.steel_modulus_mpa), n(self.concrete_stress_mpa));
         let [at_1000h, factor] = self.relaxation.map(n);
-        vec![
+        let mut lines: Vec<Equation> = self.turn.ordered("share").into_iter().collect();
+        lines.extend([
             Equation::new("shortening", lost.shortening_mpa, "MPa", "common practice").by(
                 "share (Ep/Eci) sigma_c",
                 format!(
@@ -79,6 +82,7 @@ impl Direct {
                 "rho_1000 x factor x stress after lock-off",
                 format!("{at_1000h} x {factor} x {}", n(place.lockoff_mpa)),
             ),
-        ]
+        ]);
+        lines
     }
 }

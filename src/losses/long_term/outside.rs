@@ -31,10 +31,11 @@ pub(super) fn within(
         return Ok(value);
     }
     let (least, most) = range.into_inner();
-    let covered = if most.is_finite() {
-        format!("{least} to {most}{unit}")
-    } else {
-        format!("{least}{unit} and more")
+    let [from, to] = [least, most].map(rounded);
+    let covered = match (least.is_finite(), most.is_finite()) {
+        (true, true) => format!("{from} to {to}{unit}"),
+        (true, false) => format!("{from}{unit} and more"),
+        (false, _) => format!("{to}{unit} and less"),
     };
     Err(Outside {
         symbol,

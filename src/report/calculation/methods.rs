@@ -66,7 +66,10 @@ fn working(number: &str, method: LongTermMethod, forces: &MethodForces, units: U
         mean.eccentricity
     )];
     if units == Units::Us {
-        text.push("  equations as published in SI: stresses in MPa, lengths in mm\n".to_owned());
+        text.push(format!(
+            "  equations as published in {}\n",
+            published_in(method)
+        ));
     }
     text.extend(equations.iter().map(|equation| line(equation, units)));
     text.push(format!(
@@ -90,6 +93,14 @@ fn working(number: &str, method: LongTermMethod, forces: &MethodForces, units: U
         ));
     }
     text.concat()
+}
+
+/// The units that a method is published in.
+fn published_in(method: LongTermMethod) -> &'static str {
+    match method {
+        LongTermMethod::Aci423 => "psi and inches",
+        _ => "SI: stresses in MPa, lengths in mm",
+    }
 }
 
 fn line(equation: &Equation, units: Units) -> String {
@@ -120,14 +131,16 @@ fn line(equation: &Equation, units: Units) -> String {
 }
 
 /// Service force by each method, point by point, and the mean force against time.
-pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, units: Units) -> String {
+pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, job: &Job) -> String {
+    let units = job.units;
     let force = units.of(FORCE);
     let methods = &result.by_method;
     let mut text = Vec::new();
     if methods.len() > 1 {
         text.push(format!(
-            "10. Service force by each method, {} per tendon\n",
-            force.name
+            "10. Service force by each method, {} per tendon, {}\n",
+            force.name,
+            job.long_term.asked_words()
         ));
         text.push(points(tendon, methods, units));
         if let Some(spread) = result.spread() {
@@ -142,21 +155,25 @@ pub(super) fn side_by_side(tendon: &Tendon, result: &TendonResult, units: Units)
             ));
         }
     }
-    let knows_time = |one: &MethodResult| {
-        let forces = one.outcome.as_ref().ok();
-        forces.is_some_and(|forces| forces.in_time_kn.iter().any(Option::is_some))
-    };
-    if !methods.iter().any(knows_time) {
-        return text.concat();
+    if methods.iter().any(|one| one.final_kn.is_some()) {
+        text.push(format!(
+            "{}. Mean force along the tendon against time after stressing, {} per tendon\n",
+            if methods.len() > 1 { "\n11" } else { "9" },
+            force.name
+        ));
+        text.push(in_time(methods, force));
+        text.extend(methods.iter().filter_map(without_time));
     }
-    text.push(format!(
-        "{}. Mean force along the tendon against time after stressing, {} per tendon\n",
-        if methods.len() > 1 { "\n11" } else { "9" },
-        force.name
-    ));
-    text.push(in_time(methods, force));
-    text.push("  a dash: the method gives the final loss only, or none\n".to_owned());
     text.concat()
+}
+
+/// Why a method's row holds no force before the end, or none at all.
+fn without_time(one: &MethodResult) -> Option<String> {
+    let reason = match &one.outcome {
+        Ok(_) => one.no_force_in_time()?.to_string(),
+        Err(reason) => format!("{}: no loss. {reason}", one.method.word()),
+    };
+    Some(format!("  {reason}\n"))
 }
 
 fn points(tendon: &Tendon, methods: &[MethodResult], units: Units) -> String {
@@ -195,7 +212,7 @@ fn in_time(methods: &[MethodResult], force: Unit) -> String {
                 let in_time = forces.and_then(|forces| *forces.in_time_kn.get(at)?);
                 figure(force, in_time, 2)
             }));
-            row.push(figure(force, forces.and_then(|forces| forces.final_kn), 2));
+            row.push(figure(force, one.final_kn, 2));
             row
         })
         .collect();

@@ -18,6 +18,9 @@ pub(in crate::report) struct MethodRecord {
     /// Mean force some days after stressing, in order; null where the method knows no time.
     pub(in crate::report) mean_force_in_time: Vec<InTime>,
     pub(in crate::report) mean_force_final_kn: Option<f64>,
+    /// Why there is no force before the end.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub(in crate::report) no_force_in_time: Option<String>,
     #[serde(skip_serializing_if = "Option::is_none")]
     pub(in crate::report) no_loss: Option<String>,
 }
@@ -50,7 +53,8 @@ pub(super) fn losses(result: &TendonResult) -> BTreeMap<&'static str, MethodReco
                 relaxation_mpa: lost.and_then(|lost| number(lost.relaxation_mpa)),
                 mean_service_kn: forces.and_then(|forces| number(forces.mean_service_kn)),
                 mean_force_in_time: in_time.collect(),
-                mean_force_final_kn: forces.and_then(|forces| forces.final_kn).and_then(number),
+                mean_force_final_kn: one.final_kn.and_then(number),
+                no_force_in_time: one.no_force_in_time().map(|reason| reason.to_string()),
                 no_loss: one.outcome.as_ref().err().map(ToString::to_string),
             };
             (one.method.word(), record)

@@ -1,17 +1,17 @@
 //! How much hangs on the method of long-term loss.
 
-use crate::analysis::{Analysis, pair};
-use crate::job::LongTermMethod;
+use crate::analysis::Analysis;
+use crate::job::{Job, LongTermMethod};
 use crate::report::table::{Align, plain, table};
-use crate::units::{STRESS, Unit, Units};
+use crate::units::{STRESS, Unit};
 
 /// Losses and service force by each method, and the spread between them; `None` where the job names one only.
-pub(super) fn part(analysis: &Analysis, units: Units) -> Option<String> {
+pub(super) fn part(analysis: &Analysis, job: &Job) -> Option<String> {
     let methods = analysis.methods();
     if methods.len() < 2 {
         return None;
     }
-    let stress = units.of(STRESS);
+    let stress = job.units.of(STRESS);
     let [shortening, shrinkage, creep, relaxation] =
         ["shortening", "shrinkage", "creep", "relaxation"]
             .map(|loss| format!("{loss} {}", stress.name));
@@ -29,7 +29,11 @@ pub(super) fn part(analysis: &Analysis, units: Units) -> Option<String> {
     let mut aligns = [Align::Right; 7];
     aligns[0] = Align::Left;
     let mut text = format!(
-        "Long-term loss by each method, means over the tendons that it gives a loss for; {} is drawn and checked:\n{}",
+        "Long-term loss by each method{}, means over the tendons that it gives a loss for; {} is drawn and checked:\n{}",
+        match job.long_term.published.asked_days {
+            None => String::new(),
+            Some(_) => format!(" {}", job.long_term.asked_words()),
+        },
         methods.first().map_or("", |method| method.word()),
         table(&aligns, &rows)
     );
@@ -75,16 +79,11 @@ fn row(analysis: &Analysis, method: LongTermMethod, stress: Unit) -> Vec<String>
 
 /// The spread of the mean service force, on average and at its widest.
 fn spread(analysis: &Analysis) -> Option<String> {
-    let spreads: Vec<(&str, f64)> = pair(analysis)
-        .filter_map(|(tendon, result)| Some((tendon.mark.as_str(), result.spread()?.ratio)))
-        .collect();
-    let (mark, widest) = *spreads.iter().max_by(|a, b| a.1.total_cmp(&b.1))?;
-    let count = u32::try_from(spreads.len()).ok()?;
-    let mean = spreads.iter().map(|spread| spread.1).sum::<f64>() / f64::from(count);
+    let spread = analysis.spread()?;
     Some(format!(
         "  Between the methods the mean service force of a tendon differs by {:.1} % on average, {:.1} % at most ({}).\n",
-        100.0 * mean,
-        100.0 * widest,
-        plain(mark)
+        100.0 * spread.mean_ratio,
+        100.0 * spread.widest_ratio,
+        plain(&spread.widest)
     ))
 }

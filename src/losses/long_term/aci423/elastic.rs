@@ -12,6 +12,7 @@ pub const K_CIR: f64 = 1.0;
 pub const K_CR: f64 = 1.6;
 
 /// ACI 318-19 19.2.2.1(b): `E_c` = 57 000 √`f'_c` of normal-weight concrete, psi; strength above zero.
+/// From memory.
 ///
 /// # Errors
 /// [`Outside`] where the strength is not above zero.

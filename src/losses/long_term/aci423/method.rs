@@ -1,18 +1,18 @@
 //! The method put together: what a tendon loses at a place. Its own units inside, psi and inches.
 
-use super::super::case::{Case, Lost, NoLoss, Place, When};
-use super::super::stress::load_ratios;
+use super::super::case::{Case, Lost, NoLoss, Place, Turn, When};
+use super::super::stress::Compression;
 use super::units::{inches, mpa, psi};
 use super::{elastic, relaxation, shrinkage};
-use crate::job::LongTerm;
+use crate::job::{LongTerm, RelaxationClass};
 
 /// Everything of the method that is the same along a tendon; stresses in psi.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Aci423 {
-    pub(super) bonded: bool,
+    pub(super) compression: Compression,
+    pub(super) turn: Turn,
+    pub(super) class: RelaxationClass,
     pub(super) f_cpa: f64,
-    /// Permanent over balanced load, at stressing and in the end.
-    pub(super) load_ratios: [f64; 2],
     pub(super) k_es: f64,
     pub(super) e_s: f64,
     pub(super) f_c: [f64; 2],
@@ -58,9 +58,10 @@ impl Aci423 {
         let (k_re, j) = relaxation::k_re_and_j(job.relaxation_class, f_pu_ksi)?;
         let f_pi_over_f_pu = case.mean.lockoff_mpa / case.steel.strength_mpa;
         Ok(Self {
-            bonded: job.bonded,
+            compression: Compression::of(job, case),
+            turn: case.turn,
+            class: job.relaxation_class,
             f_cpa: psi(case.concrete_stress_mpa),
-            load_ratios: load_ratios(job),
             k_es: case.turn.share(elastic::K_ES),
             e_s,
             f_c,
@@ -79,7 +80,7 @@ impl Aci423 {
 
     /// The stresses of a bonded strand's place, psi; the balanced part of each load bends against the strand.
     pub(super) fn bending(&self, place: Place) -> Bending {
-        let [at_stressing, whole] = self.load_ratios;
+        let [at_stressing, whole] = self.compression.load_ratios;
         let by_strand = self.f_cpa * place.eccentricity;
         let (f_cpi, f_g) = (self.f_cpa + by_strand, by_strand * at_stressing);
         Bending {
@@ -94,7 +95,7 @@ impl Aci423 {
     pub(super) fn elastic(&self, place: Place) -> [f64; 2] {
         let [e_ci, e_c] = self.e_c;
         let (k_es, k_cr, e_s) = (self.k_es, elastic::K_CR, self.e_s);
-        if !self.bonded {
+        if !self.compression.bonded {
             return [
                 elastic::es_unbonded(k_es, e_s, e_ci, self.f_cpa),
                 elastic::cr_unbonded(k_cr, e_s, e_c, self.f_cpa),

@@ -64,6 +64,11 @@ pub fn c(class: RelaxationClass, f_pi_over_f_pu: f64) -> Result<f64, Outside> {
     interpolated(&rows, "f_pi/f_pu", f_pi_over_f_pu, "", clause)
 }
 
+/// Whether the table's value there is from memory: all of stress-relieved strand, and below 0.64 (and so towards it).
+pub(super) fn c_is_recalled(class: RelaxationClass, f_pi_over_f_pu: f64) -> bool {
+    class != RelaxationClass::Low || f_pi_over_f_pu < 0.64
+}
+
 /// ACI-ASCE 423 method: RE = [`K_re` − J (SH + CR + ES)] C, psi; not below zero.
 pub fn re(k_re: f64, j: f64, sh: f64, cr: f64, es: f64, c: f64) -> f64 {
     ((k_re - j * (sh + cr + es)) * c).max(0.0)

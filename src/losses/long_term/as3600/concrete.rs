@@ -36,12 +36,17 @@ pub fn f_cmi(f_c_mpa: f64) -> Result<f64, Outside> {
 /// [`Outside`] that range.
 pub fn e_cj(f_cmi_mpa: f64) -> Result<f64, Outside> {
     let root = within("f_cmi", f_cmi_mpa, 0.0..=99.0, " MPa", "AS 3600 3.1.2")?.sqrt();
-    let by_root = if f_cmi_mpa <= 40.0 {
+    let by_root = if is_weak(f_cmi_mpa) {
         0.043 * root
     } else {
         0.024 * root + 0.12
     };
     Ok(2400_f64.powf(1.5) * by_root)
+}
+
+/// Whether the first branch of [`e_cj`] holds.
+pub(super) fn is_weak(f_cmi_mpa: f64) -> bool {
+    f_cmi_mpa <= 40.0
 }
 
 /// AS 3600:2018 3.1.7.2: `k_4` 0.7 arid, 0.65 interior, 0.6 temperate inland, 0.5 tropical or near-coastal.

@@ -1,9 +1,9 @@
 //! The method put together: what a tendon loses at a place.
 
 use super::super::case::{Case, Lost, NoLoss, Place, When};
-use super::super::stress::{at_level_mpa, load_ratios};
+use super::super::stress::Compression;
 use super::{concrete, creep, relaxation, shrinkage};
-use crate::job::{LongTerm, Published};
+use crate::job::{Environment, LongTerm, Published};
 use crate::losses::long_term::en1992::combined::j;
 use crate::losses::shortening::shortening_mpa;
 
@@ -11,9 +11,8 @@ use crate::losses::shortening::shortening_mpa;
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct As3600 {
     pub(super) case: Case,
-    pub(super) bonded: bool,
-    /// Permanent over balanced load, at stressing and in the end.
-    pub(super) load_ratios: [f64; 2],
+    pub(super) compression: Compression,
+    pub(super) environment: Environment,
     pub(super) share: f64,
     pub(super) f_c: f64,
     /// Mean strength at stressing (the job's, on the safe side), and at 28 days.
@@ -44,7 +43,8 @@ pub(super) struct Creep {
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub(super) struct Shrinkage {
     pub(super) eps_cse_final: f64,
-    pub(super) basic: f64,
+    /// Basic drying shrinkage: the job's, and of this strength.
+    pub(super) basic: [f64; 2],
     /// At stressing, and when asked.
     pub(super) eps_cse: [f64; 2],
     pub(super) k_1: [f64; 2],
@@ -73,8 +73,8 @@ impl As3600 {
         ];
         let method = Self {
             case: *case,
-            bonded: job.bonded,
-            load_ratios: load_ratios(job),
+            compression: Compression::of(job, case),
+            environment: job.environment,
             share: case.turn.share(j(case.turn.tendons)?),
             f_c: job.strength_mpa,
             f_cmi,
@@ -89,19 +89,9 @@ impl As3600 {
         };
         // What holds where the concrete is stressed most holds along the whole tendon.
         for eccentricity in [0.0, case.most_eccentricity] {
-            creep::k_6(method.stresses(eccentricity)[1], f_cmi[0])?;
+            creep::k_6(method.compression.stresses_mpa(eccentricity)[1], f_cmi[0])?;
         }
         Ok(method)
-    }
-
-    /// Concrete stress at the strand's level, at stressing and in the end, MPa; for an unbonded strand the mean.
-    pub(super) fn stresses(&self, eccentricity: f64) -> [f64; 2] {
-        let mean_mpa = self.case.concrete_stress_mpa;
-        if !self.bonded {
-            return [mean_mpa; 2];
-        }
-        self.load_ratios
-            .map(|load_ratio| at_level_mpa(mean_mpa, eccentricity, load_ratio))
     }
 
     /// `k_6` and φ at a sustained stress.
@@ -124,7 +114,7 @@ impl As3600 {
 
     pub(in super::super) fn at(&self, place: Place) -> Lost {
         let e_p = self.case.steel.modulus_mpa;
-        let [at_stressing, sustained] = self.stresses(place.eccentricity);
+        let [at_stressing, sustained] = self.compression.stresses_mpa(place.eccentricity);
         let [_, phi_cc] = self.phi_cc(sustained);
         let [k_4, k_5, r_b] = self.relaxation;
         let shortening_mpa = shortening_mpa(self.share, e_p, self.e_c[0], at_stressing);
@@ -169,7 +159,7 @@ impl Shrinkage {
         let (before, after) = (at(job.stressing_days)?, at(asked)?);
         Ok(Self {
             eps_cse_final,
-            basic,
+            basic: [job.drying_basic, basic],
             eps_cse: [before[0], after[0]],
             k_1: [before[1], after[1]],
             eps_cs: [before[2], after[2]],

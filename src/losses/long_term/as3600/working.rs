@@ -3,7 +3,7 @@
 use super::super::case::Place;
 use super::super::equation::{Equation, n};
 use super::method::As3600;
-use super::{creep, relaxation};
+use super::{concrete, creep, relaxation};
 
 impl As3600 {
     pub(in super::super) fn equations(&self, place: Place) -> Vec<Equation> {
@@ -17,30 +17,29 @@ impl As3600 {
     fn elastic_lines(&self, place: Place) -> Vec<Equation> {
         let [f_cmi_t, f_cmi] = self.f_cmi;
         let [e_cj, e_c] = self.e_c;
-        let [at_stressing, _] = self.stresses(place.eccentricity);
-        let clause = "AS 3600 3.1.2";
+        let [at_stressing, _] = self.compression.stresses_mpa(place.eccentricity);
         let mut lines = vec![
             Equation::new("f_cmi", f_cmi, "MPa", "AS 3600 table 3.1.2")
                 .at(format!("f'c = {} MPa", n(self.f_c)))
                 .recalled(),
-            Equation::new("E_c", e_c, "MPa", clause)
-                .at(format!("f_cmi = {} MPa", n(f_cmi)))
-                .recalled(),
-            Equation::new("E_cj", e_cj, "MPa", clause)
-                .at(format!("the strength at stressing, {} MPa", n(f_cmi_t)))
-                .recalled(),
+            modulus_line("E_c", e_c, f_cmi),
+            Equation::new(
+                "f_cmi at stressing",
+                f_cmi_t,
+                "MPa",
+                "the job's strength at stressing",
+            )
+            .at("the characteristic one, no greater than the mean".to_owned()),
+            modulus_line("E_cj", e_cj, f_cmi_t),
         ];
-        lines.extend(self.stress_line("sigma at stressing", at_stressing, place, 0));
-        let share = if self.case.turn.after.is_some() {
-            ("tendons stressed later/n", "the job's order of stressing")
-        } else {
-            ("(n - 1)/2n", "as EN 1992-1-1 5.10.5.1(2)")
-        };
-        lines.push(Equation::new("share", self.share, "", share.1).at(format!(
-            "{}, n = {}",
-            share.0,
-            n(self.case.turn.tendons)
-        )));
+        lines.extend(self.compression.line("sigma at stressing", place, 0));
+        let turn = &self.case.turn;
+        lines.push(turn.ordered("share").unwrap_or_else(|| {
+            Equation::new("share", self.share, "", "as EN 1992-1-1 5.10.5.1(2)").by(
+                "(n - 1)/2n",
+                format!("({0} - 1)/(2 x {0})", n(turn.tendons)),
+            )
+        }));
         lines.push(
             Equation::new(
                 "shortening",
@@ -63,33 +62,34 @@ impl As3600 {
         lines
     }
 
-    /// Stress at the strand's level; nothing to show for an unbonded strand, which has the mean.
-    fn stress_line(
-        &self,
-        symbol: &'static str,
-        value: f64,
-        place: Place,
-        when: usize,
-    ) -> Option<Equation> {
-        let ratio = self.load_ratios.get(when)?;
-        self.bonded.then(|| {
-            Equation::new(symbol, value, "MPa", "load balancing").by(
-                "sigma_cp [1 + (A/I) z^2 (1 - load/balanced load)]",
-                format!(
-                    "{} [1 + {} (1 - {})]",
-                    n(self.case.concrete_stress_mpa),
-                    n(place.eccentricity),
-                    n(*ratio)
-                ),
-            )
-        })
-    }
-
     fn shrinkage_lines(&self, place: Place) -> Vec<Equation> {
         let (s, clause) = (&self.shrinkage, "AS 3600 3.1.7.2");
         let [curing, _, asked] = self.ages.map(n);
         let [before, after] = s.eps_cs;
+        let f_c = n(self.f_c);
+        let (formula, numbers) = if self.f_c <= 50.0 {
+            (
+                "(0.07 f'c - 0.5) 50e-6",
+                format!("(0.07 x {f_c} - 0.5) 50e-6"),
+            )
+        } else {
+            (
+                "(0.08 f'c - 1.0) 50e-6",
+                format!("(0.08 x {f_c} - 1.0) 50e-6"),
+            )
+        };
+        let [given, basic] = s.basic;
+        let mut basic_line = Equation::new("eps_csd.b", basic, "", clause).by(
+            "(0.9 - 0.005 f'c) eps*_csd.b",
+            format!("(0.9 - 0.005 x {f_c}) {}", n(given)),
+        );
+        // Of the standard's three only the least was at hand.
+        if given > 800e-6 {
+            basic_line = basic_line.recalled();
+        }
         vec![
+            Equation::new("t_h", self.t_h, "mm", clause).at(self.case.thickness_from().to_owned()),
+            Equation::new("eps*_cse", s.eps_cse_final, "", clause).by(formula, numbers),
             Equation::new("eps_cse", s.eps_cse[1], "", clause).by(
                 "eps*_cse (1 - e^(-0.07 t))",
                 format!("{} (1 - e^(-0.07 x {asked}))", n(s.eps_cse_final)),
@@ -101,10 +101,16 @@ impl As3600 {
                     n(self.t_h)
                 ),
             ),
-            Equation::new("k_4", self.k_4, "", clause).at("the job's environment".to_owned()),
+            Equation::new("k_4", self.k_4, "", clause)
+                .at(format!("environment {}", self.environment.word())),
+            basic_line,
             Equation::new("eps_csd", after - s.eps_cse[1], "", clause).by(
-                "k_1 k_4 (0.9 - 0.005 f'c) eps*_csd.b",
-                format!("{} x {} x {}", n(s.k_1[1]), n(self.k_4), n(s.basic)),
+                "k_1 k_4 eps_csd.b",
+                format!("{} x {} x {}", n(s.k_1[1]), n(self.k_4), n(basic)),
+            ),
+            Equation::new("eps_cs at stressing", before, "", clause).by(
+                "eps_cse + eps_csd, the same at stressing",
+                format!("{} + {}", n(s.eps_cse[0]), n(before - s.eps_cse[0])),
             ),
             Equation::new("eps_cs", self.eps_cs(), "", clause).by(
                 "eps_cs(t) - eps_cs at stressing",
@@ -132,7 +138,7 @@ impl As3600 {
     fn creep_lines(&self, place: Place) -> Vec<Equation> {
         let (c, clause) = (&self.creep, "AS 3600 3.1.8.3");
         let [_, stressing, asked] = self.ages.map(n);
-        let [_, sustained] = self.stresses(place.eccentricity);
+        let [_, sustained] = self.compression.stresses_mpa(place.eccentricity);
         let [k_6, phi_cc] = self.phi_cc(sustained);
         let alpha_3 = creep::alpha_3(self.k_4, c.alpha_2);
         let mut lines = vec![
@@ -146,14 +152,14 @@ impl As3600 {
                 ),
             ),
             Equation::new("k_3", c.k_3, "", clause)
-                .by("2.7/(1 + log tau)", format!("2.7/(1 + log {stressing})")),
+                .by("2.7/(1 + log(tau))", format!("2.7/(1 + log({stressing}))")),
             Equation::new("k_5", c.k_5, "", clause).at(format!(
                 "f'c = {} MPa: 1, above 50 MPa (2 - alpha_3) - 0.02 (1 - alpha_3) f'c, alpha_3 = {}",
                 n(self.f_c),
                 n(alpha_3)
             )),
         ];
-        lines.extend(self.stress_line("sigma_ci", sustained, place, 1));
+        lines.extend(self.compression.line("sigma_ci", place, 1));
         lines.extend([
             Equation::new("k_6", k_6, "", clause).by(
                 "exp(1.5 (sigma_ci/f_cmi - 0.45)), no less than 1",
@@ -208,4 +214,22 @@ impl As3600 {
         ];
         lines.into_iter().map(Equation::recalled).collect()
     }
+}
+
+/// The modulus by the branch that holds.
+fn modulus_line(symbol: &'static str, e_mpa: f64, f_cmi_mpa: f64) -> Equation {
+    let strength = n(f_cmi_mpa);
+    let line = Equation::new(symbol, e_mpa, "MPa", "AS 3600 3.1.2");
+    let line = if concrete::is_weak(f_cmi_mpa) {
+        line.by(
+            "2400^1.5 x 0.043 sqrt(f_cmi)",
+            format!("2400^1.5 x 0.043 sqrt({strength})"),
+        )
+    } else {
+        line.by(
+            "2400^1.5 (0.024 sqrt(f_cmi) + 0.12)",
+            format!("2400^1.5 (0.024 sqrt({strength}) + 0.12)"),
+        )
+    };
+    line.recalled()
 }

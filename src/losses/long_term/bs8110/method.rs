@@ -1,17 +1,17 @@
 //! The method put together: what a tendon loses at a place.
 
-use super::super::case::{Case, Lost, NoLoss, Place, When};
-use super::super::stress::{at_level_mpa, load_ratios};
+use super::super::case::{Case, Lost, NoLoss, Place, Turn, When};
+use super::super::stress::Compression;
 use super::{concrete, relaxation};
-use crate::job::{LongTerm, Published};
+use crate::job::{Environment, LongTerm, Published, RelaxationClass};
 
 /// Everything of BS 8110 that is the same along a tendon; stresses in MPa.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Bs8110 {
-    pub(super) bonded: bool,
-    pub(super) mean_mpa: f64,
-    /// Permanent over balanced load at stressing.
-    pub(super) load_ratio: f64,
+    pub(super) compression: Compression,
+    pub(super) turn: Turn,
+    pub(super) environment: Environment,
+    pub(super) class: RelaxationClass,
     pub(super) e_s: f64,
     /// Cube strength at stressing, and at 28 days.
     pub(super) f_cu: [f64; 2],
@@ -40,9 +40,10 @@ impl Bs8110 {
         let load_over_strength = case.mean.lockoff_mpa / case.steel.strength_mpa;
         let class = job.relaxation_class;
         let method = Self {
-            bonded: job.bonded,
-            mean_mpa: case.concrete_stress_mpa,
-            load_ratio: load_ratios(job)[0],
+            compression: Compression::of(job, case),
+            turn: case.turn,
+            environment: job.environment,
+            class,
             e_s: case.steel.modulus_mpa,
             f_cu,
             e_c: [concrete::e_c_t(e_c_28, f_cu[0], f_cu[1])?, e_c_28],
@@ -63,11 +64,7 @@ impl Bs8110 {
 
     /// Concrete stress at the strand's level at stressing, MPa; for an unbonded strand the mean.
     pub(super) fn stress_mpa(&self, eccentricity: f64) -> f64 {
-        if self.bonded {
-            at_level_mpa(self.mean_mpa, eccentricity, self.load_ratio)
-        } else {
-            self.mean_mpa
-        }
+        self.compression.stresses_mpa(eccentricity)[0]
     }
 
     fn creep_mpa(&self, stress_mpa: f64) -> Result<f64, NoLoss> {

@@ -23,26 +23,19 @@ impl Bs8110 {
             ),
         ];
         let mut lines: Vec<Equation> = concrete.into_iter().map(Equation::recalled).collect();
-        if self.bonded {
-            lines.push(
-                Equation::new("stress", stress_mpa, "MPa", "load balancing").by(
-                    "mean [1 + (A/I) z^2 (1 - load at stressing/balanced load)]",
-                    format!(
-                        "{} [1 + {} (1 - {})]",
-                        n(self.mean_mpa),
-                        n(place.eccentricity),
-                        n(self.load_ratio)
-                    ),
-                ),
-            );
-        }
+        lines.extend(self.compression.line("stress", place, 0));
+        lines.push(self.turn.ordered("share").unwrap_or_else(|| {
+            Equation::new("share", self.share, "", "BS 8110-1 4.8.3")
+                .at("stressing in turn: half".to_owned())
+                .recalled()
+        }));
         let after = vec![
             Equation::new("shortening", lost.shortening_mpa, "MPa", "BS 8110-1 4.8.3").by(
                 "share (E_s/E_c,t) stress",
                 format!("{} ({e_s}/{}) {stress}", n(self.share), n(e_ci)),
             ),
             Equation::new("strain", self.strain, "", "BS 8110-1 4.8.4")
-                .at("the job's environment".to_owned()),
+                .at(format!("environment {}", self.environment.word())),
             Equation::new("shrinkage", lost.shrinkage_mpa, "MPa", "BS 8110-1 4.8.4")
                 .by("strain E_s", format!("{} x {e_s}", n(self.strain))),
             Equation::new("coefficient", self.coefficient, "", "BS 8110-1 4.8.5")
@@ -57,6 +50,12 @@ impl Bs8110 {
             )),
         ];
         lines.extend(after.into_iter().map(Equation::recalled));
+        lines.push(
+            Equation::new("factor", self.factor, "", "BS 8110-1 table 4.6").at(format!(
+                "post-tensioned strand, relaxation {}",
+                self.class.word()
+            )),
+        );
         lines.push(
             Equation::new(
                 "relaxation",

@@ -1,7 +1,7 @@
 //! The method put together: what a tendon loses at a place.
 
 use super::super::case::{Case, Lost, NoLoss, Place, When};
-use super::super::stress::{at_level_mpa, load_ratios};
+use super::super::stress::Compression;
 use super::{combined, concrete, creep, relaxation, shrinkage};
 use crate::job::{LongTerm, Published};
 use crate::losses::shortening::shortening_mpa;
@@ -10,9 +10,7 @@ use crate::losses::shortening::shortening_mpa;
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct En1992 {
     pub(super) case: Case,
-    pub(super) bonded: bool,
-    /// Permanent over balanced load, at stressing and in the end.
-    pub(super) load_ratios: [f64; 2],
+    pub(super) compression: Compression,
     pub(super) concrete: Concrete,
     pub(super) creep: Creep,
     pub(super) shrinkage: Shrinkage,
@@ -87,8 +85,7 @@ impl En1992 {
         let concrete = Concrete::of(job)?;
         let method = Self {
             case: *case,
-            bonded: job.bonded,
-            load_ratios: load_ratios(job),
+            compression: Compression::of(job, case),
             concrete,
             creep: Creep::of(job, &concrete, h_0, t)?,
             shrinkage: Shrinkage::of(job, &concrete, h_0, t)?,
@@ -106,25 +103,15 @@ impl En1992 {
         };
         // What holds where concrete and strand are stressed most holds along the whole tendon.
         for eccentricity in [0.0, case.most_eccentricity] {
-            let [_, sigma_c] = method.stresses(eccentricity);
+            let [_, sigma_c] = method.compression.stresses_mpa(eccentricity);
             creep::phi_nl(method.creep.phi, sigma_c, concrete.f_ck_t0)?;
         }
         Ok(method)
     }
 
-    /// Concrete stress at the strand's level, at stressing and in the end, MPa; for an unbonded strand the mean.
-    pub(super) fn stresses(&self, eccentricity: f64) -> [f64; 2] {
-        let mean_mpa = self.case.concrete_stress_mpa;
-        if !self.bonded {
-            return [mean_mpa; 2];
-        }
-        self.load_ratios
-            .map(|load_ratio| at_level_mpa(mean_mpa, eccentricity, load_ratio))
-    }
-
     /// Elastic shortening at a place, MPa.
     pub(super) fn shortening_mpa(&self, place: Place) -> f64 {
-        let [sigma_c, _] = self.stresses(place.eccentricity);
+        let [sigma_c, _] = self.compression.stresses_mpa(place.eccentricity);
         let steel_mpa = self.case.steel.modulus_mpa;
         shortening_mpa(self.share, steel_mpa, self.concrete.e_cm_t0, sigma_c)
     }
@@ -142,7 +129,7 @@ impl En1992 {
 
     /// Expression (5.46) at a place.
     pub(super) fn combined(&self, place: Place) -> combined::Combined {
-        let [_, sigma_c_mpa] = self.stresses(place.eccentricity);
+        let [_, sigma_c_mpa] = self.compression.stresses_mpa(place.eccentricity);
         let sigma_pi_mpa = place.lockoff_mpa - self.shortening_mpa(place);
         let phi = creep::phi_nl(self.creep.phi, sigma_c_mpa, self.concrete.f_ck_t0);
         combined::Combined {

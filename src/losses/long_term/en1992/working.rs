@@ -34,9 +34,9 @@ impl En1992 {
     }
 
     fn shortening_lines(&self, place: Place) -> Vec<Equation> {
-        let [sigma_c, _] = self.stresses(place.eccentricity);
+        let [sigma_c, _] = self.compression.stresses_mpa(place.eccentricity);
         let mut lines = vec![self.share_line()];
-        lines.extend(self.stress_line("Delta sigma_c", sigma_c, place, 0));
+        lines.extend(self.compression.line("Delta sigma_c", place, 0));
         lines.push(
             Equation::new(
                 "Delta P_el/A_p",
@@ -60,36 +60,9 @@ impl En1992 {
 
     fn share_line(&self) -> Equation {
         let tendons = n(self.case.turn.tendons);
-        if self.case.turn.after.is_some() {
-            let clause = "the job's order of stressing";
-            return Equation::new("j", self.share, "", clause).by(
-                "tendons stressed later/n",
-                format!("of n = {tendons} that run this way"),
-            );
-        }
-        Equation::new("j", self.share, "", "EN 1992-1-1 5.10.5.1(2)")
-            .by("(n - 1)/2n", format!("({tendons} - 1)/(2 x {tendons})"))
-    }
-
-    /// Stress at the strand's level; nothing to show for an unbonded strand, which has the mean.
-    fn stress_line(
-        &self,
-        symbol: &'static str,
-        value: f64,
-        place: Place,
-        when: usize,
-    ) -> Option<Equation> {
-        let ratio = self.load_ratios.get(when)?;
-        self.bonded.then(|| {
-            Equation::new(symbol, value, "MPa", "load balancing").by(
-                "sigma_cp [1 + (A/I) z^2 (1 - permanent/balanced load)]",
-                format!(
-                    "{} [1 + {} (1 - {})]",
-                    n(self.case.concrete_stress_mpa),
-                    n(place.eccentricity),
-                    n(*ratio)
-                ),
-            )
+        self.case.turn.ordered("j").unwrap_or_else(|| {
+            Equation::new("j", self.share, "", "EN 1992-1-1 5.10.5.1(2)")
+                .by("(n - 1)/2n", format!("({tendons} - 1)/(2 x {tendons})"))
         })
     }
 
@@ -104,7 +77,7 @@ impl En1992 {
         .map(n);
         vec![
             Equation::new("h_0", c.h_0, "mm", "EN 1992-1-1 (B.6)")
-                .at("2 A_c/u: the slab's thickness, or the job's".to_owned()),
+                .at(self.case.thickness_from().to_owned()),
             Equation::new("phi_RH", c.phi_rh, "", "EN 1992-1-1 (B.3)").by(
                 "[1 + alpha_1 (1 - RH/100)/(0.1 h_0^(1/3))] alpha_2",
                 format!("[1 + {a_1} (1 - {rh}/100)/(0.1 x {h_0}^(1/3))] {a_2}"),
@@ -147,11 +120,7 @@ impl En1992 {
         let (s, t) = (&self.shrinkage, n(self.creep.t));
         let [a_1, a_2] = s.alpha_ds.map(n);
         let [before, after] = s.eps_cs;
-        let drying = |at: usize| {
-            s.beta_ds
-                .get(at)
-                .map_or(0.0, |beta| beta * s.k_h * s.eps_cd_0)
-        };
+        let [early, drying] = s.beta_ds.map(|beta| beta * s.k_h * s.eps_cd_0);
         vec![
             Equation::new("beta_RH", s.beta_rh, "", "EN 1992-1-1 (B.12)").by(
                 "1.55 [1 - (RH/100)^3]",
@@ -167,7 +136,7 @@ impl En1992 {
             ),
             Equation::new("k_h", s.k_h, "", "EN 1992-1-1 table 3.3")
                 .at(format!("h_0 = {} mm", n(self.creep.h_0))),
-            Equation::new("eps_cd(t)", drying(1), "", "EN 1992-1-1 (3.9), (3.10)").by(
+            Equation::new("eps_cd(t)", drying, "", "EN 1992-1-1 (3.9), (3.10)").by(
                 "(t - t_s)/((t - t_s) + 0.04 sqrt(h_0^3)) k_h eps_cd,0",
                 format!(
                     "({t} - {0})/(({t} - {0}) + 0.04 sqrt({1}^3)) x {2} x {3}",
@@ -179,7 +148,7 @@ impl En1992 {
             ),
             Equation::new(
                 "eps_ca(t)",
-                after - drying(1),
+                after - drying,
                 "",
                 "EN 1992-1-1 (3.11) to (3.13)",
             )
@@ -189,6 +158,10 @@ impl En1992 {
                     "2.5 ({} - 10) 1e-6 [1 - exp(-0.2 sqrt({t}))]",
                     n(self.concrete.f_ck)
                 ),
+            ),
+            Equation::new("eps_cs(t_0)", before, "", "EN 1992-1-1 (3.8)").by(
+                "eps_cd(t_0) + eps_ca(t_0), the same at t_0",
+                format!("{} + {}", n(early), n(before - early)),
             ),
             Equation::new("eps_cs", after - before, "", "EN 1992-1-1 (3.8)").by(
                 "eps_cs(t) - eps_cs(t_0), from stressing on",
@@ -203,7 +176,8 @@ impl En1992 {
         let sigma_pi = place.lockoff_mpa - self.shortening_mpa(place);
         let (factor, growth) = relaxation::coefficients(r.class);
         let mut lines: Vec<Equation> = self
-            .stress_line("sigma_c,QP", all.sigma_c_mpa, place, 1)
+            .compression
+            .line("sigma_c,QP", place, 1)
             .into_iter()
             .collect();
         let (mu, clause) = (sigma_pi / steel.strength_mpa, relaxation::equation(r.class));
@@ -235,6 +209,13 @@ impl En1992 {
             );
             lines.push(nonlinear.recalled());
         }
+        let mean_mpa = self.case.mean.lockoff_mpa;
+        lines.push(
+            Equation::new("A_p/A_c", all.a_p_over_a_c, "", "A_p sigma_p = A_c sigma_c").by(
+                "sigma_cp/mean stress after lock-off",
+                format!("{}/{}", n(self.case.concrete_stress_mpa), n(mean_mpa)),
+            ),
+        );
         let modular = format!("{}/{}", n(all.e_p_mpa), n(all.e_cm_mpa));
         let denominator = all.denominator();
         lines.push(
