@@ -13,6 +13,7 @@ mod expressions;
 pub mod families;
 pub mod key;
 pub mod keys;
+mod odds;
 mod pattern;
 mod patterns;
 mod problems;
@@ -25,6 +26,7 @@ mod systems;
 mod values;
 mod writing;
 
+pub(crate) use odds::AT_ODDS;
 pub use pattern::{ForceUnit, Pattern, PatternUnit, Word};
 pub use problems::{Problem, Problems};
 pub use published::{Cement, Environment, LongTermMethod, Published, RelaxationClass};

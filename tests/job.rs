@@ -622,6 +622,142 @@ fn where_the_strand_lies_in_the_duct_is_assumed_only_for_heights_of_the_duct() {
     assert!(said("[height]\ndatum = \"duct-underside\"\n"));
 }
 
+/// Every mistake of a file, with its line.
+fn mistakes(text: &str) -> Vec<(usize, String)> {
+    let problems = job::read("job", text).err();
+    let list = problems.iter().flat_map(|all| {
+        let list = all.list().iter();
+        list.map(|one| (all.line(one), format!("{} {}", one.found, one.remedy)))
+    });
+    list.collect()
+}
+
+#[test]
+fn what_stands_in_two_lists_that_exclude_one_another_is_a_mistake_at_its_line() {
+    for (text, line, words) in [
+        (
+            "[height]\nhigh_words = [\"T\"]\nlow_words = [\"B\",\n\"t.\"]\n",
+            4,
+            "`high_words` and in `low_words`",
+        ),
+        (
+            "[ends]\nlive_blocks = [\"E*\"]\ndead_blocks = [\"e*\"]\n",
+            3,
+            "`live_blocks` and in `dead_blocks`",
+        ),
+        (
+            "[ends]\nlive_words = [\"DEAD\"]\n",
+            2,
+            "`live_words` and in `dead_words`",
+        ),
+        (
+            "[layers]\nbanded = [\"A*\"]\ndistributed = [\"A*\"]\n",
+            3,
+            "`banded` and in `distributed`",
+        ),
+        (
+            "[layers]\ntendons = [\"S\"]\nslab_edge = [\"S\"]\n",
+            3,
+            "`tendons` and in `slab_edge`",
+        ),
+    ] {
+        let found = mistakes(text);
+        assert!(
+            found
+                .iter()
+                .any(|(at, said)| *at == line && said.contains(words)),
+            "{text}: {found:?}"
+        );
+    }
+    assert_eq!(
+        mistakes("[layers]\nheights = [\"A\"]\nmarks = [\"A\"]\n"),
+        []
+    );
+    assert_eq!(
+        mistakes("[layers]\ntendons = [\"A\"]\nbanded = [\"A\"]\n"),
+        []
+    );
+}
+
+#[test]
+fn a_pattern_that_never_gives_a_reading_is_a_mistake() {
+    for (text, words) in [
+        (
+            r"[height]
+patterns = ['^(?:a^(?<value>\d+)|H\d+)$']",
+            "where no line of text leads",
+        ),
+        (
+            r"[height]
+patterns = ['^(?<word>OBEN|UNTEN) (?<value>\d+)$']",
+            "can never give a height",
+        ),
+        (
+            r"[height]
+patterns = ['^(?<value>\d+\.\d+\.\d+)$']",
+            "can never match a number",
+        ),
+        (
+            r"[height]
+patterns = ['^(?<value>[A-Z]\d+)$']",
+            "can never match a number",
+        ),
+        (
+            r"[labels]
+mark_patterns = ['^(?<strands>\d+\.\d)-(?<strand>[\d.]+)$']",
+            "never match a whole number",
+        ),
+        (
+            r"[labels]
+mark_patterns = ['^(?<strands>[1-9]\d{12})-(?<strand>[\d.]+)$']",
+            "never match a whole number",
+        ),
+    ] {
+        let found = mistakes(text);
+        assert!(
+            found.len() == 1 && found[0].0 == 2 && found[0].1.contains(words),
+            "{text}: {found:?}"
+        );
+    }
+    let known = r#"[height]
+high_words = ["OBEN"]
+low_words = ["UNTEN"]
+patterns = ['^(?<word>OBEN|UNTEN) (?<value>\d+)$']"#;
+    assert_eq!(mistakes(known), []);
+}
+
+#[test]
+fn what_checking_all_patterns_may_take_is_bounded_and_told_at_the_pattern() {
+    let heavy: Vec<String> = (0..200)
+        .map(|number| format!(r"'^(?<value>\d+)\p{{L}}{{1,100}}{number}$'"))
+        .collect();
+    let text = format!("[height]\npatterns = [\n{}\n]\n", heavy.join(",\n"));
+    let started = std::time::Instant::now();
+    let found = mistakes(&text);
+    assert!(started.elapsed().as_secs() < 120);
+    assert!(
+        found
+            .iter()
+            .all(|(line, said)| *line > 3 && said.contains("too large to be checked")),
+        "{found:?}"
+    );
+    assert!(!found.is_empty());
+    let light: Vec<String> = (0..60)
+        .map(|number| format!(r"'^(?<word>\w+)? ?(?<value>\d+) {number}$'"))
+        .collect();
+    assert_eq!(
+        mistakes(&format!("[height]\npatterns = [{}]\n", light.join(","))),
+        []
+    );
+    let found = mistakes("[height]\npatterns = ['^(?<value>\\w{0,500}\\d)\\b$']\n");
+    assert!(
+        found.len() == 1
+            && found[0].1.contains("too large")
+            && found[0].1.contains("counted repetitions"),
+        "{found:?}"
+    );
+}
+
 #[test]
 fn only_what_the_named_methods_look_at_is_assumed() {
     let read = |text: &str| job::read("job", text).unwrap_or_else(|problems| panic!("{problems}"));

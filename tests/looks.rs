@@ -109,3 +109,26 @@ fn solids_and_traces_are_read_as_their_outlines() {
     assert!((around[1] - 6.0).abs() < 1e-9, "{around:?}");
     assert!(drawing.shapes.iter().all(|shape| shape.closed));
 }
+
+#[test]
+fn what_is_invisible_is_left_out_and_counted_and_a_blocks_other_states_are_not() {
+    let tags = format!(
+        "{LAYERS} 0 SECTION 2 BLOCKS 0 BLOCK 8 0 2 B 10 0 20 0
+         0 LINE 8 PT {ENDS} 0 LINE 8 PT 60 1 {ENDS} 0 ENDBLK 0 ENDSEC
+         0 SECTION 2 ENTITIES 0 LINE 8 PT 60 0 {ENDS} 0 LINE 8 PT 60 1 {ENDS}
+         0 POINT 8 PT 60 1 10 0 20 0 0 INSERT 8 PT 2 B 10 0 20 0 0 ENDSEC 0 EOF"
+    );
+    let lines: Vec<&str> = tags.split_whitespace().collect();
+    let source = open((lines.join("\n") + "\n").into_bytes()).expect("a drawing");
+    let (drawing, findings) = read(&source, &Wanted::everything(), Some(LengthUnit::M));
+    assert_eq!((drawing.shapes.len(), drawing.dots.len()), (2, 0));
+    let said: Vec<&str> = findings
+        .iter()
+        .filter(|found| found.rule.name == "entity-invisible")
+        .map(|found| found.text.as_str())
+        .collect();
+    assert!(
+        matches!(said[..], [text] if text.starts_with("2 entities")),
+        "{said:?}"
+    );
+}

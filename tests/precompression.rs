@@ -1,9 +1,11 @@
 //! Mean concrete stress against areas and forces added up by hand.
 
+use std::f64::consts::PI;
+
 use geo::{Coord, polygon};
 use tautplan::analysis::{pair, stress, work};
 use tautplan::floor::{End, EndKind, Floor, Point, PointKind, Run, Slab, Tendon, Zone};
-use tautplan::geometry::Path;
+use tautplan::geometry::{Path, Segment};
 use tautplan::job::Job;
 use tautplan::profile;
 
@@ -137,4 +139,109 @@ fn thicker_zones_and_openings_count_in_the_section() {
         (stress_mpa - wanted_mpa).abs() < 0.01 * wanted_mpa,
         "{stress_mpa} against {wanted_mpa}"
     );
+}
+
+/// The floor mirrored about the y axis if so asked, then turned, then moved.
+fn moved(floor: &Floor, mirrored: bool, turn_rad: f64, by: Coord<f64>) -> Floor {
+    let (sin, cos) = turn_rad.sin_cos();
+    let go = |place: Coord<f64>| {
+        let x = if mirrored { -place.x } else { place.x };
+        at(
+            cos * x - sin * place.y + by.x,
+            sin * x + cos * place.y + by.y,
+        )
+    };
+    let outline = |polygon: &geo::Polygon<f64>| {
+        let ring: Vec<Coord<f64>> = polygon.exterior().coords().map(|&c| go(c)).collect();
+        geo::Polygon::new(geo::LineString::new(ring), Vec::new())
+    };
+    let mut floor = floor.clone();
+    for tendon in &mut floor.tendons {
+        let pieces = tendon.path.segments().iter().map(|piece| {
+            let bulge = match *piece {
+                Segment::Line { .. } => 0.0,
+                Segment::Arc { sweep_rad, .. } => (sweep_rad / 4.0).tan(),
+            };
+            let bulge = if mirrored { -bulge } else { bulge };
+            Segment::from_bulge(go(piece.start()), go(piece.end()), bulge)
+        });
+        tendon.path = Path::new(pieces.collect::<Vec<_>>());
+        for point in &mut tendon.points {
+            point.place = go(point.place);
+        }
+        for end in &mut tendon.ends {
+            end.place = go(end.place);
+        }
+    }
+    let slab = &mut floor.slab;
+    for polygon in slab.outlines.iter_mut().chain(&mut slab.openings) {
+        *polygon = outline(polygon);
+    }
+    for zone in &mut slab.zones {
+        zone.outline = outline(&zone.outline);
+    }
+    slab.columns.clear();
+    floor
+}
+
+/// The concrete stress of each tendon does not hang on how the plan lies.
+fn same_however_it_lies(floor: &Floor, job: &Job) {
+    let stresses = |floor: Floor| -> Vec<f64> {
+        let analysis = work(floor, job, Vec::new());
+        let stresses = pair(&analysis).filter_map(|(_, result)| result.concrete_stress_mpa);
+        stresses.collect()
+    };
+    let first = stresses(moved(floor, false, 0.0, at(0.0, 0.0)));
+    assert!(first.len() > 2);
+    for mirrored in [false, true] {
+        for turn_rad in [0.0, 0.6, 0.5 * PI, PI, 1.5 * PI] {
+            for by in [at(0.0, 0.0), at(3000.0, 0.0), at(-1234.5, 777.7)] {
+                let found = stresses(moved(floor, mirrored, turn_rad, by));
+                for (first, found) in first.iter().zip(&found) {
+                    assert!(
+                        (first - found).abs() < 1e-6 * first,
+                        "{first} MPa, {found} when turned by {turn_rad} and moved by {by:?}"
+                    );
+                }
+            }
+        }
+    }
+}
+
+#[test]
+fn stresses_do_not_hang_on_how_the_plan_lies() {
+    let mut slab = slab();
+    slab.zones.push(Zone {
+        outline: polygon![(x: 2.0, y: 4.0), (x: 10.0, y: 4.0), (x: 10.0, y: 8.0), (x: 2.0, y: 8.0)],
+        thickness_m: 0.400,
+        top_m: 0.0,
+    });
+    slab.openings
+        .push(polygon![(x: 5.2, y: 9.0), (x: 11.6, y: 9.0), (x: 11.6, y: 11.0), (x: 5.2, y: 11.0)]);
+    let tendons = vec![
+        tendon("B1", at(0.0, 2.0), at(10.0, 2.0), 1),
+        tendon("B2", at(3.6, 6.0), at(20.0, 6.0), 3),
+        tendon("B3", at(19.6, 7.0), at(6.0, 7.0), 1),
+        tendon("D1", at(10.0, 0.0), at(10.0, 12.0), 2),
+    ];
+    same_however_it_lies(&Floor { tendons, slab }, &Job::default());
+}
+
+#[test]
+fn on_a_demo_floor_stresses_do_not_hang_on_how_the_plan_lies() {
+    let folder = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("demo-drawings");
+    let text = std::fs::read_to_string(folder.join("harbour-level-2.toml")).expect("a job file");
+    let job = tautplan::job::read("", &text).expect("a job").job;
+    let bytes = std::fs::read(folder.join("harbour-level-2.dxf")).expect("a drawing");
+    let source = tautplan::drawing::open(bytes).expect("a drawing");
+    let wanted = tautplan::drawing::Wanted::layers(job.layer_patterns()).expect("patterns");
+    let (drawing, _) = tautplan::drawing::read(&source, &wanted, job.conventions.unit);
+    let (mut floor, _) = tautplan::floor::read(&drawing, &job);
+    // Bands over the columns alone would do; every tenth of the others joins them.
+    let mut count = 0;
+    floor.tendons.retain(|tendon| {
+        count += 1;
+        tendon.run == Run::Banded || count % 10 == 0
+    });
+    same_however_it_lies(&floor, &job);
 }

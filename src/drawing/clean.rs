@@ -160,7 +160,7 @@ impl<'a> Cleaner<'a> {
             return Ok(());
         }
         match (tag.code, record.type_name) {
-            (5 | 6 | 62 | 420, b"VERTEX") => {}
+            (5 | 6 | 60 | 62 | 420, b"VERTEX") => {}
             (5, b"ATTRIB") => {
                 if let Some(own) = kept.attributes.last_mut() {
                     own.handle = own.handle.take().or(written_handle(tag.word()));
@@ -172,12 +172,12 @@ impl<'a> Cleaner<'a> {
                     own.layer = Some(tag.word().to_vec());
                 }
             }
-            (6 | 62 | 420, b"ATTRIB") => {
+            (6 | 60 | 62 | 420, b"ATTRIB") => {
                 if let Some(own) = kept.attributes.last_mut() {
                     own.worn.note(tag);
                 }
             }
-            (6 | 62 | 420, _) => kept.worn.note(tag),
+            (6 | 60 | 62 | 420, _) => kept.worn.note(tag),
             _ => {}
         }
         match used(record.type_name, tag.code) {

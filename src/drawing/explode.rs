@@ -21,6 +21,7 @@ use super::{Drawing, Look, Shape, Text};
 use crate::finding::{Finding, Level, Rule};
 
 pub(super) use book::Book;
+use telling::unseen;
 pub(super) use telling::{MOST_TOLD, and_more};
 
 /// Where a record is placed.
@@ -57,6 +58,8 @@ pub(super) struct Gatherer<'b> {
     zero_layer: Option<u32>,
     drawing: Drawing,
     findings: Vec<Finding>,
+    /// Entities of model space that are not shown.
+    unseen: usize,
     expansion: Expansion,
     open: Vec<usize>,
     told: BTreeSet<(&'static str, usize)>,
@@ -82,6 +85,7 @@ impl<'b> Gatherer<'b> {
             zero_layer: book.layers.get("0").copied(),
             drawing: Drawing::default(),
             findings: Vec::new(),
+            unseen: 0,
             expansion,
             open: Vec::new(),
             told: BTreeSet::new(),
@@ -98,6 +102,7 @@ impl<'b> Gatherer<'b> {
         let mut findings = self.findings;
         let spoken = self.spoken.into_values();
         findings.extend(spoken.filter_map(|(rule, level, count)| and_more(rule, level, count)));
+        findings.extend(unseen(self.unseen));
         (drawing, findings)
     }
 
@@ -134,6 +139,10 @@ impl<'b> Gatherer<'b> {
         let own = own_handle(record);
         let handle = frame.handle.unwrap_or(&own);
         let layer = self.layer_in(record.kept.layer, frame.layer);
+        if record.kept.worn.invisible {
+            self.invisible(layer, frame);
+            return;
+        }
         if let EntityType::Insert(insert) = &record.entity {
             self.insert(record, insert, layer, handle, frame);
             return;

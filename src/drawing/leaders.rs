@@ -95,7 +95,7 @@ fn pointing(
             102 => in_group = tag.word().starts_with(b"{"),
             _ if in_group || tag.code >= 1000 => {}
             5 if handle.is_none() => handle = parse_handle(tag.word()),
-            6 | 62 | 420 => worn.note(&tag),
+            6 | 60 | 62 | 420 => worn.note(&tag),
             _ => {
                 let mut decode = |value: &[u8]| {
                     let (text, guessed) = scan.code_page.decode(value);

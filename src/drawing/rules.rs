@@ -14,6 +14,12 @@ pub(super) static ENTITY_DAMAGED: Rule = Rule {
     meaning: "An entity on a layer that is read holds a value that is no finite number, lacks a coordinate, or lies beyond a million kilometres; it is left out.",
 };
 
+/// Entities that are not shown.
+pub(super) static ENTITY_INVISIBLE: Rule = Rule {
+    name: "entity-invisible",
+    meaning: "Entities on layers that are read are hidden one by one (group 60), whatever their layer: nobody sees them, and they are left out.",
+};
+
 /// The drawing does not say its unit.
 pub(super) static UNIT_ASSUMED: Rule = Rule {
     name: "unit-assumed",
@@ -51,9 +57,10 @@ pub(super) static TEXT_CODE_PAGE: Rule = Rule {
 };
 
 /// Every rule of reading.
-pub static READING_RULES: [&Rule; 8] = [
+pub static READING_RULES: [&Rule; 9] = [
     &DRAWING_DAMAGED,
     &ENTITY_DAMAGED,
+    &ENTITY_INVISIBLE,
     &UNIT_ASSUMED,
     &BLOCK_TOO_DEEP,
     &BLOCK_IN_ITSELF,

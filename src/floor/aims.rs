@@ -6,7 +6,7 @@ use super::lines::Line;
 use super::readings::MarkText;
 use super::rules::{LABEL_SHARED, LEADER_ASTRAY};
 use crate::drawing::Text;
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 
 /// The places on tendons, one for each tendon, of which a label means one.
 pub(super) type Aim = Vec<Foot>;
@@ -77,7 +77,10 @@ fn astray(text: &Text, pointed: &Pointed) -> Option<Finding> {
         Finding::new(
             &LEADER_ASTRAY,
             Level::Warning,
-            format!("the leader of label {:?} {why}; {outcome}", text.content),
+            Wording::of(|units| {
+                let why = why.in_units(units);
+                format!("the leader of label {:?} {why}; {outcome}", text.content)
+            }),
             "draw the leader's tip onto its tendon, or give a greater `arrow_reach_mm` in the job file's [labels] table",
         )
         .at_place(*place),

@@ -11,7 +11,9 @@ use super::index::{Foot, Index, to_box_m};
 use super::layers::Roles;
 use super::strokes::{self, Stroke};
 use crate::drawing::{Drawing, Text};
+use crate::finding::Wording;
 use crate::geometry::distance_m;
+use crate::units::LONG;
 
 /// A line belongs to a text whose box is this near to its end, in heights of the text.
 pub(super) const TOUCH_H: f64 = 1.5;
@@ -34,7 +36,7 @@ pub(super) struct Pointed {
     /// A tendon, or tendons that cross there, for each arrow; in order of the tendons.
     pub(super) aims: Vec<Aim>,
     /// Why an arrow says nothing, and where its tip is.
-    pub(super) astray: Option<(String, Coord<f64>)>,
+    pub(super) astray: Option<(Wording, Coord<f64>)>,
 }
 
 impl Arrows {
@@ -99,11 +101,15 @@ impl Pointed {
             [] => {
                 let near = index.feet(tip, 20.0 * reach_m).into_iter();
                 let nearest = near.min_by(|a, b| a.distance_m.total_cmp(&b.distance_m));
-                let off = nearest.map_or_else(
-                    || "none is near".to_owned(),
-                    |foot| format!("the nearest is {:.2} m off", foot.distance_m),
-                );
-                let why = format!("points at no tendon: {off}, and {reach_m:.2} m is the reach");
+                let why = Wording::of(|units| {
+                    let long = |length_m: f64| units.of(LONG).said(length_m, 2);
+                    let off = nearest.as_ref().map_or_else(
+                        || "none is near".to_owned(),
+                        |foot| format!("the nearest is {} off", long(foot.distance_m)),
+                    );
+                    let reach = long(reach_m);
+                    format!("points at no tendon: {off}, and {reach} is the reach")
+                });
                 self.say(why, tip);
             }
             aim => self.aims.push(aim.to_vec()),
@@ -118,8 +124,8 @@ impl Pointed {
     }
 
     /// Of several arrows that say nothing the first by its place is told.
-    fn say(&mut self, why: String, tip: Coord<f64>) {
-        let before = |(_, held): &(String, Coord<f64>)| (held.x, held.y) <= (tip.x, tip.y);
+    fn say(&mut self, why: Wording, tip: Coord<f64>) {
+        let before = |(_, held): &(Wording, Coord<f64>)| (held.x, held.y) <= (tip.x, tip.y);
         if !self.astray.as_ref().is_some_and(before) {
             self.astray = Some((why, tip));
         }
@@ -207,7 +213,7 @@ fn by_stroke(
                 "crosses {} tendons of a bundle and stops at one of them: it may mean that one or all",
                 bundle.len()
             );
-            pointed.say(why, tip);
+            pointed.say(why.into(), tip);
         }
         2.. => pointed
             .aims

@@ -9,6 +9,7 @@ use super::columns::Columns;
 use super::ends;
 use super::groups::groups;
 use super::heights::{self, Height, Settled};
+use super::hidden::outranked;
 use super::index::Index;
 use super::joints::{self, joints};
 use super::labels::{Labels, labels};
@@ -19,6 +20,7 @@ use super::made::plans;
 use super::marks::{self, Marks};
 use super::missing::complete;
 use super::near::{Near, kind};
+use super::odds::odds;
 use super::points::points;
 use super::readings::{HeightText, MarkText};
 use super::slab::{Thickness, slab};
@@ -34,7 +36,9 @@ use crate::job::{Conventions, Job};
 pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let conventions = &job.conventions;
     let roles = Roles::new(drawing, conventions);
-    let mut findings = roles.hidden(drawing);
+    let (outranked, mut findings) = outranked(drawing, &roles, conventions.label_reach);
+    findings.extend(roles.hidden(drawing, &outranked));
+    findings.extend(odds(drawing, conventions));
     findings.extend(roles.hatched(drawing));
 
     let symbols = Symbols::new(drawing, conventions, &roles);
@@ -57,6 +61,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
     let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
     taken.extend(&groups.texts);
+    taken.extend(outranked);
     let (labels, found) = labels(drawing, conventions, &roles, &taken);
     findings.extend(found);
     let Labels {

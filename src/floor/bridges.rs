@@ -6,9 +6,10 @@ use rstar::primitives::GeomWithData;
 
 use super::lines::Line;
 use super::rules::{PIECES_BRIDGED, PIECES_OVERLAP};
+use super::seams::sewn;
 use crate::finding::{Finding, Level, Wording};
-use crate::geometry::{Path, Segment, turn_rad};
-use crate::units::SHORT;
+use crate::geometry::{Path, distance_m, turn_rad};
+use crate::units::{SHORT, Unit};
 
 /// Two ends face one another where each line would run into the other: within this angle, radians.
 const FACING_RAD: f64 = 0.05;
@@ -74,7 +75,7 @@ pub(super) fn bridged(
             chain.push((next, ahead_m));
             end = next;
         }
-        whole.push(run_through(&lines, &chain, reach.gap_m, findings));
+        whole.push(run_through(&lines, &chain, reach, findings));
     }
     // A ring of facing ends has no free end: its lines stay as they were drawn.
     let left = lines.into_iter().zip(used);
@@ -150,10 +151,16 @@ fn ahead_m(
     // A piece inside another is a copy of it.
     let most_m = (tip.length_m.min(other.length_m) - reach.aside_m).min(reach.overlap_m);
     let in_line = aside_m <= reach.aside_m && facing <= FACING_RAD;
-    if !in_line || ahead_m.abs() <= reach.meet_m {
+    if !in_line || dx.hypot(dy) <= reach.meet_m {
         return None;
     }
-    let in_reach = (-most_m..=reach.gap_m).contains(&ahead_m);
+    // Ends level with one another and a little aside neither overlap nor gape: what holds on either side holds here.
+    let furthest_m = if reach.overlap_m > 0.0 {
+        reach.gap_m.max(reach.meet_m)
+    } else {
+        reach.gap_m
+    };
+    let in_reach = (-most_m..=furthest_m).contains(&ahead_m);
     let at_anchor = || {
         let middle = (tip.place + other.place) / 2.0;
         (0.0..=reach.anchor_m).contains(&ahead_m)
@@ -166,10 +173,10 @@ fn ahead_m(
 fn run_through(
     lines: &[Line],
     chain: &[(usize, f64)],
-    allowed_m: f64,
+    reach: Reach,
     findings: &mut Vec<Finding>,
 ) -> (usize, Line) {
-    let mut pieces: Vec<Segment> = Vec::new();
+    let mut pieces: Vec<Path> = Vec::new();
     for &(entered, ahead_m) in chain {
         let line = &lines[entered / 2];
         let path = if entered % 2 == 0 {
@@ -177,21 +184,19 @@ fn run_through(
         } else {
             line.path.reversed()
         };
-        let path = path.between((-ahead_m).max(0.0), path.length_m());
-        if let (Some(last), Some(next)) = (pieces.last(), path.start()) {
-            let from = last.end();
-            pieces.push(Segment::Line { from, to: next });
-            findings.push(said(line, from, ahead_m, allowed_m));
+        if let (Some(end), Some(start)) = (pieces.last().and_then(Path::end), path.start()) {
+            findings.push(said(line, [end, start], ahead_m, reach));
         }
-        pieces.extend(path.segments());
+        pieces.push(path);
     }
+    let ahead_m: Vec<f64> = chain.iter().skip(1).map(|&(_, ahead_m)| ahead_m).collect();
     // Lines stand in drawn order, so the lowest index is the one drawn first; the whole runs as it was drawn.
     let (first, backwards) = chain
         .iter()
         .map(|&(entered, _)| (entered / 2, entered % 2 == 1))
         .min()
         .unwrap_or_default();
-    let path = Path::new(pieces);
+    let path = sewn(&pieces, &ahead_m, reach.meet_m);
     let line = Line {
         path: if backwards { path.reversed() } else { path },
         ..lines[first].clone()
@@ -199,17 +204,28 @@ fn run_through(
     (first, line)
 }
 
-fn said(line: &Line, place: Coord<f64>, ahead_m: f64, allowed_m: f64) -> Finding {
-    let gap_mm = ahead_m.abs() * 1000.0;
+fn said(line: &Line, [place, next]: [Coord<f64>; 2], ahead_m: f64, reach: Reach) -> Finding {
+    let (gap_mm, away_mm) = (ahead_m.abs() * 1000.0, distance_m(place, next) * 1000.0);
+    let aside_mm = (away_mm * away_mm - gap_mm * gap_mm).max(0.0).sqrt();
+    let aside = move |short: Unit| {
+        if aside_mm < 0.5 {
+            String::new()
+        } else {
+            format!(" and lies {} aside of it", short.said(aside_mm, 0))
+        }
+    };
     let (layer, handle) = (&line.layer, &line.handle);
-    let finding = if ahead_m < 0.0 {
+    let finding = if ahead_m <= reach.meet_m {
+        let over_mm = if ahead_m < 0.0 { gap_mm } else { 0.0 };
         Finding::new(
             &PIECES_OVERLAP,
             Level::Warning,
             Wording::of(|units| {
+                let short = units.of(SHORT);
                 format!(
-                    "line {handle} on layer {layer} overlaps the piece it goes on from by {}; the two were taken for one tendon",
-                    units.of(SHORT).said(gap_mm, 0)
+                    "line {handle} on layer {layer} overlaps the piece it goes on from by {}{}; the two were taken for one tendon",
+                    short.said(over_mm, 0),
+                    aside(short)
                 )
             }),
             "draw the tendon as one line, or put end symbols where two tendons end",
@@ -219,7 +235,7 @@ fn said(line: &Line, place: Coord<f64>, ahead_m: f64, allowed_m: f64) -> Finding
             &PIECES_BRIDGED,
             Level::Note,
             Wording::of(|units| {
-                let why = if ahead_m > allowed_m {
+                let why = if ahead_m > reach.gap_m {
                     "since an intermediate anchor stands in it"
                 } else {
                     "as the job file allows"

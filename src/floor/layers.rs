@@ -97,6 +97,15 @@ impl Roles {
         for text in &drawing.texts {
             roles.learn(&sets, drawing, &text.layer, text.look);
         }
+        for insert in &drawing.inserts {
+            roles.learn(&sets, drawing, &insert.layer, insert.look);
+        }
+        for leader in &drawing.leaders {
+            roles.learn(&sets, drawing, &leader.layer, leader.look);
+        }
+        for dot in &drawing.dots {
+            roles.learn(&sets, drawing, &dot.layer, dot.look);
+        }
         roles
     }
 
@@ -123,8 +132,8 @@ impl Roles {
         plain.or_else(seen).copied().unwrap_or_default()
     }
 
-    /// One finding for each hidden layer that holds what was read.
-    pub(super) fn hidden(&self, drawing: &Drawing) -> Vec<Finding> {
+    /// One finding for each hidden layer that holds what was read; `left_out` are texts that were not.
+    pub(super) fn hidden(&self, drawing: &Drawing, left_out: &BTreeSet<usize>) -> Vec<Finding> {
         let mut findings = Vec::new();
         for layer in drawing.layers.iter().filter(|l| l.off || l.frozen) {
             let shapes = drawing
@@ -137,7 +146,9 @@ impl Roles {
             let texts = drawing
                 .texts
                 .iter()
-                .filter(|t| t.layer == layer.name)
+                .enumerate()
+                .filter(|(at, t)| t.layer == layer.name && !left_out.contains(at))
+                .map(|(_, t)| t)
                 .filter(|t| self.of(&t.layer, t.look).label != Labels::default())
                 .count();
             if shapes + texts > 0 {
@@ -250,7 +261,7 @@ pub(super) fn sound(shape: &Shape) -> bool {
 }
 
 /// A job's patterns of layers; one that is none was refused where the job was read, and then none picks anything here.
-fn selectors(patterns: &[String]) -> Selectors {
+pub(super) fn selectors(patterns: &[String]) -> Selectors {
     Selectors::new(patterns).unwrap_or_default()
 }
 

@@ -11,6 +11,7 @@ use super::layers::{Roles, Way, sound};
 use super::order::{by_handle, by_place, drawn_before};
 use super::pieces::{Joint, chains, returns};
 use super::rules::{PIECES_MEET, RUN_ASSUMED, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
+use super::seams::without_slips;
 use super::symbols::Symbols;
 use super::types::Run;
 use crate::drawing::{Drawing, Shape, ShapeKind};
@@ -32,6 +33,8 @@ pub(super) struct Line {
 const SHARPEST_RAD: f64 = 1.6;
 /// An end symbol this near to a joint says that two tendons end there.
 const STOP_M: f64 = 0.05;
+/// Pieces of a line shorter than this are slips of the pencil, metres.
+const SLIP_M: f64 = 0.010;
 /// Pieces of one tendon that do not meet lie on one line within this, metres.
 const ASIDE_M: f64 = 0.020;
 
@@ -191,7 +194,7 @@ fn joined(
         let Some(&(first, backwards)) = chain.pieces.iter().min_by_key(|(piece, _)| *piece) else {
             continue;
         };
-        let path = chain.path(&paths);
+        let path = without_slips(&chain.path(&paths), SLIP_M);
         let Some(shape) = shapes.get(first) else {
             continue;
         };

@@ -10,8 +10,9 @@ use super::rules::{GROUP_MISFIT, TENDON_MADE};
 use super::slab::Thickness;
 use super::slots::{Slots, slot_marks, slots};
 use super::types::{End, Point, PointKind, PourJoint, Tendon};
-use crate::finding::{Finding, Level};
+use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment};
+use crate::units::SHORT;
 
 /// A group that can be made.
 struct Plan<'a> {
@@ -46,10 +47,13 @@ pub(super) fn plans<'a>(
                 Finding::new(
                     &GROUP_MISFIT,
                     Level::Error,
-                    format!(
-                        "extent line {} {why}: the group's undrawn tendons are missing from everything worked out here",
-                        extent.handle
-                    ),
+                    Wording::of(|units| {
+                        format!(
+                            "extent line {} {}: the group's undrawn tendons are missing from everything worked out here",
+                            extent.handle,
+                            why.in_units(units)
+                        )
+                    }),
                     "correct the extent line or its text, or draw the group's tendons",
                 )
                 .at_place(extent.path.place_at(extent.path.length_m() / 2.0)),
@@ -172,12 +176,13 @@ impl Plan<'_> {
         let found = Finding::new(
             &TENDON_MADE,
             Level::Note,
-            format!(
-                "{which} made as copies of {}, {:.0} mm apart along extent line {}",
-                typical.mark,
-                apart_m * 1000.0,
-                self.extent.handle
-            ),
+            Wording::of(|units| {
+                let apart = units.of(SHORT).said(apart_m * 1000.0, 0);
+                format!(
+                    "{which} made as copies of {}, {apart} apart along extent line {}",
+                    typical.mark, self.extent.handle
+                )
+            }),
             "check that the group is what the drawing means; draw the tendons if they differ from the typical one",
         );
         Some(

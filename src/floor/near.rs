@@ -17,6 +17,10 @@ use crate::units::{LONG, Units};
 const SEEN: f64 = 4.0;
 /// It says that a tendon lacks a height within this many times its reach.
 const LACKING: f64 = 2.0;
+/// Where no tendon is so near, it says that the nearest lacks one, within this many times its reach: a label may have
+/// slid off its tendon, and none is written for nothing. As near as the nearest is what this many times as far lies.
+const SLID: f64 = 12.0;
+const AS_NEAR: f64 = 1.25;
 
 /// Words for labels, by the tendons near to them.
 pub(super) struct Near<'a> {
@@ -143,15 +147,22 @@ impl Near<'_> {
 
     /// A label without a tendon, beside each tendon that it is near to.
     pub(super) fn beside(&self, text: &Text, kind: Option<PointKind>) -> Vec<Stray> {
-        let reach_m = LACKING * self.reach * text.height_m;
-        let feet = self.index.feet(text.place, reach_m).into_iter();
-        feet.map(|foot| Stray {
-            line: foot.line,
-            station_m: foot.station_m,
-            kind,
-            content: text.content.clone(),
-        })
-        .collect()
+        let reach_m = self.reach * text.height_m;
+        let mut feet = self.index.feet(text.place, LACKING * reach_m);
+        if feet.is_empty() && kind.is_some() {
+            feet = self.index.feet(text.place, SLID * reach_m);
+            let nearest_m = feet.iter().map(|foot| foot.distance_m);
+            let nearest_m = nearest_m.fold(f64::INFINITY, f64::min);
+            feet.retain(|foot| foot.distance_m <= AS_NEAR * nearest_m);
+        }
+        feet.into_iter()
+            .map(|foot| Stray {
+                line: foot.line,
+                station_m: foot.station_m,
+                kind,
+                content: text.content.clone(),
+            })
+            .collect()
     }
 
     /// Labels without a tendon, beside each tendon that they are near to.

@@ -26,6 +26,7 @@ pub const RULES: &[&Rule] = &[
     &LEVEL_OUTSIDE_ZONES,
     &MARK_TWICE,
     &OUTLINE_OPEN,
+    &PATTERNS_AT_ODDS,
     &PIECES_BRIDGED,
     &PIECES_MEET,
     &PIECES_OVERLAP,
@@ -40,6 +41,12 @@ pub const RULES: &[&Rule] = &[
     &THICKNESS_UNKNOWN,
     &ZONE_UNREAD,
 ];
+
+/// A name that two lists of the job file claim.
+pub(super) const PATTERNS_AT_ODDS: Rule = Rule {
+    name: "patterns-at-odds",
+    meaning: "A layer or block of the drawing fits patterns of two lists of the job file that exclude one another, such as live and dead ends.",
+};
 
 /// A height near to an end and not at it.
 pub(super) const ANCHOR_HEIGHT_INSIDE: Rule = Rule {
@@ -122,7 +129,7 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 /// Tendons or labels on a layer that nobody sees.
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
-    meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
+    meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same, but for labels beside visible ones of their kind.",
 };
 
 /// Areas that are hatched and have no outline.

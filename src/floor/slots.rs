@@ -6,6 +6,8 @@ use super::groups::{Extent, GroupText};
 use super::index::Foot;
 use super::lines::{Line, axis_rad};
 use super::readings::MarkText;
+use crate::finding::Wording;
+use crate::units::LONG;
 
 /// An extent line fits number and spacing within this share.
 const FIT: f64 = 0.02;
@@ -24,9 +26,9 @@ pub(super) struct Slots {
 }
 
 /// Lays a group out; what does not fit is said in words.
-pub(super) fn slots(extent: &Extent) -> Result<Slots, String> {
+pub(super) fn slots(extent: &Extent) -> Result<Slots, Wording> {
     if extent.crossed.is_empty() {
-        return Err("crosses no tendon about squarely".to_owned());
+        return Err("crosses no tendon about squarely".into());
     }
     let marks = marks(&extent.said)?;
     let stations_m = stations_m(extent.path.length_m(), &extent.said, marks.len())?;
@@ -79,12 +81,12 @@ pub(super) fn numbered(mark: &str) -> Option<(&str, u32, usize)> {
 }
 
 /// Stations of the tendons: from end to end of the line, or half a spacing in from either end, whichever the numbers fit.
-fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>, String> {
+fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>, Wording> {
     let counted = u32::try_from(marks).ok().filter(|&count| count > 0);
     if let (Some(number), Some(count)) = (said.number, counted)
         && number != count
     {
-        return Err(format!("says {number} tendons, and its marks are {count}"));
+        return Err(format!("says {number} tendons, and its marks are {count}").into());
     }
     let spacing_m = said.spacing_m.filter(|&spacing_m| spacing_m > 0.0);
     let number = match (said.number.or(counted), spacing_m) {
@@ -98,10 +100,10 @@ fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>,
             let gaps = (length_m / spacing_m).round().clamp(0.0, f64::from(MOST)) as u32;
             gaps + 1
         }
-        (None, None) => return Err("has no text that gives number or spacing".to_owned()),
+        (None, None) => return Err("has no text that gives number or spacing".into()),
     };
     if !(2..=MOST).contains(&number) {
-        return Err(format!("gives {number} tendons; expected 2 to {MOST}"));
+        return Err(format!("gives {number} tendons; expected 2 to {MOST}").into());
     }
     let count = f64::from(number);
     let off = |gaps: f64| {
@@ -112,11 +114,16 @@ fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>,
     // Without a spacing both fit: tendons stand at the line's ends.
     let at_ends = end_to_end <= half_in;
     if end_to_end.min(half_in) > FIT {
-        return Err(format!(
-            "is {length_m:.2} m long, and {number} tendons {:.3} m apart take {:.2} m",
-            spacing_m.unwrap_or_default(),
-            (count - 1.0) * spacing_m.unwrap_or_default()
-        ));
+        let spacing_m = spacing_m.unwrap_or_default();
+        return Err(Wording::of(|units| {
+            let long = |length_m: f64, decimals| units.of(LONG).said(length_m, decimals);
+            format!(
+                "is {} long, and {number} tendons {} apart take {}",
+                long(length_m, 2),
+                long(spacing_m, 3),
+                long((count - 1.0) * spacing_m, 2)
+            )
+        }));
     }
     let (gaps, lead) = if at_ends {
         (count - 1.0, 0.0)

@@ -132,7 +132,9 @@ impl<'a> Symbols<'a> {
         let mut of_insert: Vec<Option<usize>> = Vec::with_capacity(drawing.inserts.len());
         for insert in &drawing.inserts {
             let named = *by_name.entry(&insert.block).or_insert_with(|| {
-                if live.has(&insert.block) {
+                if live.has(&insert.block) && dead.has(&insert.block) {
+                    Some(None)
+                } else if live.has(&insert.block) {
                     Some(Some(Said::End(EndKind::Live)))
                 } else if dead.has(&insert.block) {
                     Some(Some(Said::End(EndKind::Dead)))

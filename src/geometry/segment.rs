@@ -169,6 +169,16 @@ impl Segment {
         }
     }
 
+    /// The same piece between two other points: straight, or turning by the same angle.
+    #[must_use]
+    pub fn carried(&self, from: Coord<f64>, to: Coord<f64>) -> Self {
+        match *self {
+            Self::Line { .. } => Self::Line { from, to },
+            Self::Arc { .. } if from == self.start() && to == self.end() => *self,
+            Self::Arc { sweep_rad, .. } => Self::from_bulge(from, to, (sweep_rad / 4.0).tan()),
+        }
+    }
+
     /// Curvature, 1/m, positive where the piece turns anticlockwise.
     pub fn curvature_per_m(&self) -> f64 {
         match *self {

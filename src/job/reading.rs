@@ -6,6 +6,7 @@ use std::ops::Range;
 use toml::Spanned;
 use toml::de::{DeString, DeTable, DeValue};
 
+use super::automaton::Budget;
 use super::key::Key;
 use super::keys::{KEYS, ROOT, TABLES, find, of_table};
 use super::problems::{Problem, Problems};
@@ -34,6 +35,8 @@ pub fn read(file_name: &str, text: &str) -> Result<Resolved, Problems> {
     reader.root(root.get_ref());
     reader.tables(root.get_ref());
     reader.contradictions();
+    reader.at_odds();
+    reader.pattern_words();
     reader.methods();
     // After a broken line what follows it on that line is guesswork: the mistake itself is enough.
     let (broken, mut found) = {
@@ -67,6 +70,12 @@ pub(super) struct Reader {
     pub(super) problems: Vec<Problem>,
     /// Sizes of strand that patterns name, with their places.
     pub(super) strand_names: Vec<(String, Range<usize>)>,
+    /// What patterns take for high or low, with their places.
+    pub(super) pattern_words: Vec<(Vec<String>, Range<usize>)>,
+    /// What is left for checking patterns.
+    pub(super) budget: Budget,
+    /// Words of lists: path of the key, word, place.
+    pub(super) word_spans: Vec<(String, String, Range<usize>)>,
 }
 
 impl Reader {

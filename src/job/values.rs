@@ -269,6 +269,9 @@ impl Reader {
                 format!("take the line out for the default, `{}`", key.example()),
             );
         }
+        let spans = words.iter().cloned();
+        self.word_spans
+            .extend(spans.map(|(word, span)| (key.path(), word, span)));
         (self.problems.len() == before).then_some(words)
     }
 }

@@ -122,3 +122,75 @@ fn two_tendons_that_lap_with_ends_of_their_own_stay_two() {
     board.insert("TENDON-END", "DEAD-END", at(9.0, 0.0));
     assert_eq!(lengths_cm(&floor(&board, 0.5).0), [1100.0, 1200.0]);
 }
+
+/// Angle that the only tendon turns in plan, radians: what friction sees of it.
+fn turned_rad(board: &Board, bridge_gap_m: f64) -> f64 {
+    let (floor, _) = floor(board, bridge_gap_m);
+    assert_eq!(floor.tendons.len(), 1);
+    let path = &floor.tendons[0].path;
+    let corners = path.corners();
+    let arcs = path.segments().iter();
+    let arcs: f64 = arcs.map(|s| s.length_m() * s.curvature_per_m().abs()).sum();
+    arcs + corners.iter().map(|c| c.turn_rad.abs()).sum::<f64>()
+}
+
+#[test]
+fn pieces_a_little_aside_of_one_another_bend_no_tendon_however_they_lie_and_run() {
+    for ahead_m in [-0.4, -0.2, -0.012, 0.0, 0.02, 0.4] {
+        for aside_m in [1e-16, 0.001, 0.0149, -0.0149] {
+            if f64::abs(ahead_m) <= 0.01 && f64::abs(aside_m) < 0.01 {
+                continue;
+            }
+            for turn_rad in [
+                0.0,
+                0.3,
+                std::f64::consts::FRAC_PI_2,
+                2.0,
+                std::f64::consts::PI,
+                5.0,
+            ] {
+                for turned in [[false, false], [true, false], [false, true], [true, true]] {
+                    let mut board = pieces(&[
+                        [(0.0, 0.0), (8.0, 0.0)],
+                        [(8.0 + ahead_m, aside_m), (20.0, aside_m)],
+                    ]);
+                    for (shape, turned) in board.drawing.shapes.iter_mut().zip(turned) {
+                        if turned {
+                            shape.path = shape.path.reversed();
+                        }
+                    }
+                    let found = turned_rad(&board.moved(turn_rad, at(3.0, -7.0)), 0.5);
+                    assert!(
+                        found < 1e-6,
+                        "{ahead_m} ahead, {aside_m} aside, turned by {turn_rad}: {found}"
+                    );
+                }
+            }
+        }
+    }
+}
+
+#[test]
+fn a_row_of_pieces_that_step_aside_bends_by_next_to_nothing() {
+    let row = [
+        [(0.0, 0.0), (8.0, 0.0)],
+        [(7.8, 0.012), (12.0, 0.012)],
+        [(12.3, 0.0), (12.9, 0.0)],
+        [(13.2, 0.012), (24.0, 0.012)],
+    ];
+    assert!(turned_rad(&pieces(&row), 0.5) < 0.025);
+}
+
+#[test]
+fn a_slip_of_the_pencil_at_a_vertex_bends_no_tendon() {
+    let mut board = Board::new();
+    let slip = [
+        (0.0, 0.0),
+        (8.0, 0.0),
+        (8.0, 0.004),
+        (8.001, 0.0),
+        (16.0, 0.0),
+    ];
+    board.line("TENDON-DISTRIBUTED", &slip);
+    assert!(turned_rad(&board, 0.0) < 0.002);
+}

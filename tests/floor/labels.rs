@@ -213,3 +213,55 @@ fn a_tendon_lacks_what_both_its_neighbours_have() {
     );
     assert!(points_mm(tendon(&floor, "B02")).contains(&(High, 10_000, None)));
 }
+
+#[test]
+fn a_height_that_slid_far_off_its_tendon_holds_the_forces_back() {
+    for off_m in [0.7, 1.0, 1.3, 2.5] {
+        let mut board = labelled(&[(5.0, "L30"), (15.0, "L30")]);
+        board.write(HEIGHT, "H165", (10.0, 5.0 + off_m));
+        let (points, findings) = found(&board, &Job::default());
+        assert!(
+            points.iter().any(|p| p.0 == High && p.2.is_none()),
+            "{off_m}: {points:?}"
+        );
+        assert_eq!(only(&findings, "height-missing").level, Level::Error);
+    }
+    // One whose kind the tendon does not lack says nothing.
+    let mut board = labelled(&[(5.0, "L30"), (10.0, "H165"), (15.0, "L30")]);
+    board.write(HEIGHT, "H170", (10.0, 6.3));
+    let (_, findings) = found(&board, &Job::default());
+    assert!(told(&findings, "height-missing").is_empty());
+}
+
+#[test]
+fn a_hidden_height_holds_where_nothing_is_seen_and_gives_way_where_something_is() {
+    let hide = |board: &mut Board| {
+        board.drawing.layers.push(Layer {
+            name: "TENDON-HEIGHT-OLD".to_owned(),
+            frozen: true,
+            ..Layer::default()
+        });
+    };
+    for x in [9.9, 10.1] {
+        let mut board = labelled(&[(5.0, "L30"), (10.0, "H165"), (15.0, "L30")]);
+        hide(&mut board);
+        board.write("TENDON-HEIGHT-OLD", "H120", (x, 5.1));
+        let (points, findings) = found(&board, &Job::default());
+        assert!(points.contains(&given(High, 10_000, 165)), "{points:?}");
+        assert!(
+            only(&findings, "layer-hidden")
+                .text
+                .as_str()
+                .contains("what is seen holds")
+        );
+    }
+    let mut board = labelled(&[(5.0, "L30"), (15.0, "L30")]);
+    hide(&mut board);
+    board.write("TENDON-HEIGHT-OLD", "H120", (10.0, 5.1));
+    let (points, findings) = found(&board, &Job::default());
+    assert!(
+        points.iter().any(|p| p.0 == High && p.2 == Some(120)),
+        "{points:?}"
+    );
+    assert_eq!(only(&findings, "layer-hidden").level, Level::Warning);
+}

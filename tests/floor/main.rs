@@ -22,6 +22,7 @@ mod lettering;
 mod levels;
 mod marks;
 mod midway;
+mod odds;
 mod pointing;
 mod settling;
 mod sketch;

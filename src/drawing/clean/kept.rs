@@ -41,6 +41,8 @@ pub(in crate::drawing) struct Worn {
     pub(in crate::drawing) true_colour: bool,
     /// Where in the file the linetype's name stands: first byte and past the last.
     pub(in crate::drawing) linetype: Option<(usize, usize)>,
+    /// Group 60: not shown, whatever its layer.
+    pub(in crate::drawing) invisible: bool,
 }
 
 impl Worn {
@@ -51,6 +53,7 @@ impl Worn {
                 let name = tag.value_range();
                 self.linetype = Some((name.start, name.end));
             }
+            60 => self.invisible = tag.integer() == Some(1),
             62 => self.colour = tag.integer(),
             420 => self.true_colour = true,
             _ => {}

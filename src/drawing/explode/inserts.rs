@@ -199,7 +199,12 @@ impl Gatherer<'_> {
                 _ => handle,
             };
             let lettering = of_attribute(attribute, &frame.placing);
-            self.text(lettering, place, handle, attribute.flags & 1 != 0);
+            self.text(
+                lettering,
+                place,
+                handle,
+                attribute.flags & 1 != 0 || own.worn.invisible,
+            );
         }
     }
 }

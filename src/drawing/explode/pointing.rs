@@ -13,6 +13,10 @@ impl Gatherer<'_> {
         let layer = self.layer_in(pointing.layer, frame.layer);
         let handle = frame.handle.unwrap_or(&pointing.handle);
         let wanted = self.book.wants(layer);
+        if pointing.worn.invisible {
+            self.invisible(layer, frame);
+            return;
+        }
         let seen = Place {
             layer,
             look: self.looks.seen(&pointing.worn, layer, frame.look),

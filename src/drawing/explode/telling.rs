@@ -1,13 +1,20 @@
 //! What is said of records that are left out: each thing once, and not without end.
 
-use super::Gatherer;
-use crate::drawing::rules::{BLOCK_TOO_MANY, ENTITY_DAMAGED};
+use super::{Frame, Gatherer};
+use crate::drawing::rules::{BLOCK_TOO_MANY, ENTITY_DAMAGED, ENTITY_INVISIBLE};
 use crate::finding::{Finding, Level, Rule};
 
 /// Findings of one rule that are told one by one; of the rest only the number is.
 pub(in crate::drawing) const MOST_TOLD: usize = 20;
 
 impl Gatherer<'_> {
+    /// Leaves out what is not shown. Blocks keep the parts of their other states so, which nobody misses.
+    pub(super) fn invisible(&mut self, layer: u32, frame: &Frame<'_>) {
+        if frame.handle.is_none() && self.book.wants(layer) {
+            self.unseen += 1;
+        }
+    }
+
     /// Says that an entity is left out, and why.
     pub(super) fn damaged(&mut self, layer: u32, handle: &str, reason: &str) {
         let layer = self.book.layer_name(layer);
@@ -63,6 +70,23 @@ impl Gatherer<'_> {
             self.findings.push(Finding::new(rule, level, text, remedy));
         }
     }
+}
+
+/// A finding for entities that are not shown.
+pub(super) fn unseen(count: usize) -> Option<Finding> {
+    let (them, are) = match count {
+        0 => return None,
+        1 => ("entity", "is"),
+        _ => ("entities", "are"),
+    };
+    Some(Finding::new(
+        &ENTITY_INVISIBLE,
+        Level::Warning,
+        format!(
+            "{count} {them} on layers that are read {are} invisible (group 60 of the entity) and left out"
+        ),
+        "make what is current visible (in most programs: end object isolation) and save the drawing again; delete the rest",
+    ))
 }
 
 /// A finding for what is not told one by one.

@@ -1,7 +1,7 @@
 //! The house's own patterns: that they compile, can match, and read what they always read.
 
 use super::*;
-use crate::job::automaton::{group_holds_number, matches_something};
+use crate::job::automaton::{Budget, Sought, group_holds_number, matches_something};
 
 fn group(patterns: &[Pattern], text: &str, name: &str) -> Option<String> {
     let found = patterns.iter().find_map(|pattern| pattern.captures(text))?;
@@ -24,9 +24,20 @@ fn every_pattern_of_the_house_compiles_and_can_match() {
         all.extend(thickness_patterns(unit));
     }
     for pattern in all {
-        assert!(matches_something(pattern.as_str()), "{}", pattern.label());
-        for group in ["value", "strands", "tendons", "force"] {
-            assert!(group_holds_number(pattern.as_str(), group), "{group}");
+        assert!(
+            matches_something(pattern.as_str(), &mut Budget::default()),
+            "{}",
+            pattern.label()
+        );
+        for (group, sought) in [
+            ("value", Sought::Length),
+            ("strands", Sought::Count),
+            ("tendons", Sought::Count),
+            ("force", Sought::Length),
+        ] {
+            let mut budget = Budget::default();
+            let number = group_holds_number(pattern.as_str(), group, sought, &mut budget);
+            assert!(number, "{group} of {}", pattern.label());
         }
     }
 }
