@@ -15,11 +15,12 @@ use super::layers::Roles;
 use super::levels::levels;
 use super::lines::{Line, lines};
 use super::made::plans;
+use super::marking::Marking;
 use super::marks::{self, Marks};
 use super::missing::complete;
 use super::near::{Near, kind};
 use super::points::points;
-use super::readings::{HeightText, MarkText};
+use super::readings::HeightText;
 use super::slab::{Thickness, slab};
 use super::symbols::Symbols;
 use super::ticks::aim_by_ticks;
@@ -50,10 +51,11 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
     findings.extend(found);
     let arrows = Arrows::new(drawing, &roles, &index, conventions.arrow_reach_m);
-    let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
+    let groups = groups(drawing, job, &roles, &arrows, &lines, &index);
     let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
     taken.extend(&groups.texts);
-    let (labels, found) = labels(drawing, conventions, &roles, &taken);
+    findings.extend(groups.findings.iter().cloned());
+    let (labels, found) = labels(drawing, job, &roles, &taken);
     findings.extend(found);
     let Labels {
         heights: height_labels,
@@ -73,7 +75,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let (marks, mut settled_marks) = among.marks(mark_labels);
     findings.extend(aims::shared(&marks, &lines));
     findings.extend(marks.findings);
-    let (plans, found) = plans(&groups, &settled_marks.of_line, &lines);
+    let (plans, found) = plans(&groups, &mut settled_marks.of_line, &lines);
     findings.extend(found);
     let reserved = plans.claim(&mut settled_marks.of_line);
     let names = marks::names(&lines, &settled_marks.of_line, &reserved);
@@ -120,11 +122,14 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         &strays,
         &thickness,
     ));
-    let (made, found) = plans.made(&tendons, &thickness);
+    let (made, found) = plans.made(&tendons, &settled.of_line, &thickness, &conventions.height);
     findings.extend(found);
     tendons.extend(made);
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
-    findings.extend(marks::findings(&tendons));
+    let torn = lines.iter().zip(&settled_marks.of_line);
+    let torn = torn.filter(|(_, said)| said.uncounted());
+    let torn: BTreeSet<&str> = torn.map(|(line, _)| line.handle.as_str()).collect();
+    findings.extend(marks::findings(&tendons, &torn));
     (Floor { tendons, slab }, findings)
 }
 
@@ -133,26 +138,25 @@ fn drawn(
     job: &Job,
     line: &Line,
     mark: &str,
-    said: &MarkText,
+    said: &Marking,
     ends: [End; 2],
     points: Vec<Point>,
 ) -> Tendon {
     Tendon {
         mark: mark.to_owned(),
-        mark_drawn: said.mark.is_some(),
+        mark_drawn: said.mark.one().is_some(),
         made: false,
         handle: line.handle.clone(),
         layer: line.layer.clone(),
         run: line.run,
         path: line.path.clone(),
-        tendons: said.tendons.unwrap_or(1),
-        strands: said.strands.or(job.tendon.default_strands),
-        strand: said.strand.as_ref().map(|written| {
-            let known = job.tendon.strand_named(written);
-            known.map_or_else(|| written.clone(), |size| size.name.clone())
-        }),
-        required_kn: said.required_kn,
-        required_kn_per_m: said.required_kn_per_m,
+        tendons: said.tendons.one().copied().unwrap_or(1),
+        // Whatever of the steel is contradicted, nobody knows its force.
+        strands: (said.strands.one().copied().or(job.tendon.default_strands))
+            .filter(|_| !said.uncounted()),
+        strand: said.strand.one().cloned(),
+        required_kn: said.required_kn.one().copied(),
+        required_kn_per_m: said.required_kn_per_m.one().copied(),
         ends,
         points,
     }
@@ -170,7 +174,7 @@ struct Among<'a> {
 }
 
 impl Among<'_> {
-    fn marks<'t>(&self, labels: Vec<(&'t Text, MarkText)>) -> (Aimed<'t, MarkText>, Marks) {
+    fn marks<'t>(&self, labels: Vec<(&'t Text, Marking)>) -> (Aimed<'t, Marking>, Marks) {
         let aimed = aims::aimed(labels, self.arrows, aims::share_of);
         let settled = marks::settle(&aimed.readings, &self.lies(&aimed), self.lines);
         (aimed, settled)

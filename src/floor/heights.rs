@@ -2,6 +2,7 @@
 
 use super::aims::AIMED;
 use super::candidates::Lie;
+use super::contradicted::{self, Contradiction};
 use super::habits::Habits;
 use super::lines::Line;
 use super::readings::{HeightText, Word};
@@ -35,6 +36,8 @@ pub(super) struct Settled {
     /// Labels that went to nobody.
     pub(super) unclaimed: Vec<usize>,
     pub(super) doubts: Vec<Doubt>,
+    /// Labels that contradict one that their tendon has at the same place.
+    pub(super) contradicted: Vec<Contradiction>,
 }
 
 /// Rounds of settling and learning.
@@ -43,11 +46,11 @@ const ROUNDS: usize = 6;
 const TIE: f64 = 0.02;
 const DOUBT: f64 = 0.5;
 /// Two heights nearer than this are at one place, metres and text heights.
-const SAME_PLACE_M: f64 = 0.5;
+pub(super) const SAME_PLACE_M: f64 = 0.5;
 /// Supports stand nearer to one another than this, metres (common practice: 0.8 to 1.2 m).
 const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
-const STEEP: f64 = 0.08;
+pub(super) const STEEP: f64 = 0.08;
 
 /// A text without a word whose edge is this near to an end, in text heights, speaks of the anchor; mid-depth from
 /// farther in, since it is said of hardly any other point.
@@ -97,14 +100,17 @@ pub(super) fn settle(
     let mut settlement = Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
     let doubts = doubts(&mut settlement, readings, lies);
     let taken = settlement.taken();
-    Settled {
+    let mut settled = Settled {
         of_line: by_line(readings, lies, lines.len(), fixed, taken),
         unclaimed: (0..readings.len())
             .filter(|&label| taken[label].is_none())
             .filter(|&label| !doubts.iter().any(|d| d.label == label))
             .collect(),
         doubts,
-    }
+        contradicted: Vec::new(),
+    };
+    contradicted::heights(&mut settled, readings, lies, &stakes.own);
+    settled
 }
 
 /// Heights by line, in order of station.
