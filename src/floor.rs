@@ -44,6 +44,7 @@ mod strokes;
 mod symbols;
 mod ticks;
 mod types;
+mod writing;
 mod zone_texts;
 mod zones;
 

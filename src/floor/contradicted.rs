@@ -58,14 +58,14 @@ pub(super) fn heights(settled: &mut Settled, readings: &[HeightText], lies: &[Li
             }));
         }
     }
-    // Two that a tendon has, nearer to one another than it can rise between them.
+    // Two that a tendon has, nearer to one another than it can rise between them; beside an anchor both may stand.
     for (host, heights) in settled.of_line.iter().enumerate() {
         for pair in heights.windows(2) {
             let [a, b] = pair else { continue };
             let gap_m = b.station_m - a.station_m;
             let rise_m = (b.reading.value_m - a.reading.value_m).abs();
             if let (Some(first), Some(second)) = (a.label, b.label)
-                && a.at_end == b.at_end
+                && !(a.at_end || b.at_end)
                 && gap_m < SAME_PLACE_M
                 && rise_m > STEEP * gap_m
                 && !a.reading.agrees(&b.reading)

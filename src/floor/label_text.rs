@@ -16,8 +16,6 @@ pub(super) struct LabelText {
     pub(super) against: Vec<String>,
     /// Lines that say nothing that could be read.
     pub(super) left: Vec<String>,
-    /// The word of its height may be the sign of heights, as in `H = 165`.
-    pub(super) by_sign: bool,
 }
 
 /// Reads a label on a layer of heights, of marks, or of both. Where both lie on one layer a line is a height before it
@@ -54,7 +52,6 @@ pub(super) fn label(content: &str, heights: bool, marks: bool, job: &Job) -> Lab
         }
         if let Some(said) = said {
             height.hear(Some(said));
-            whole.by_sign |= is_sign(line);
             whole.height.get_or_insert(said);
         }
         if let Some(mut named) = named {
@@ -94,12 +91,6 @@ pub(super) fn label(content: &str, heights: bool, marks: bool, job: &Job) -> Lab
     }
     whole.mark = (mark != Marking::default()).then_some(mark);
     whole
-}
-
-/// Whether a line begins as `H =` does: with the sign of heights, or the word for high.
-fn is_sign(line: &str) -> bool {
-    let rest = line.trim().strip_prefix(['H', 'h']);
-    rest.is_some_and(|rest| rest.trim_start().starts_with(['=', ':']))
 }
 
 /// Words of a line, letters and digits only.

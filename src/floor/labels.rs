@@ -6,8 +6,9 @@ use std::collections::{BTreeSet, HashMap};
 use super::label_text::{changes, label};
 use super::layers::{Labels as Role, Roles};
 use super::marking::Marking;
-use super::readings::{HeightText, Word};
+use super::readings::HeightText;
 use super::rules::{LABEL_CONTRADICTED, LABEL_UNREAD};
+use super::writing::Writing;
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
@@ -48,7 +49,7 @@ pub(super) fn labels<'a>(
     let texts = without_copies(&texts);
     let mut labels = Labels::default();
     let mut findings = Vec::new();
-    let mut signs = Vec::new();
+    let writing = Writing::of(drawing, job, roles);
     for text in texts {
         let of = roles.of(&text.layer, text.look).label;
         let said = label(&text.content, of.heights, of.marks, job);
@@ -65,34 +66,11 @@ pub(super) fn labels<'a>(
         let cannot_be_read = silent && of.heights && !text.hidden;
         labels.unread.extend(cannot_be_read.then_some(text));
         if let Some(height) = said.height {
-            signs.extend(said.by_sign.then_some(labels.heights.len()));
-            labels.heights.push((text, height));
+            labels.heights.push((text, writing.means(height)));
         }
         labels.marks.extend(said.mark.map(|mark| (text, mark)));
     }
-    // A drawing that calls nothing low says by H = only that it is a height.
-    if !signs.is_empty() && !any_low(drawing, job, roles) {
-        for at in signs {
-            if let Some((_, height)) = labels.heights.get_mut(at) {
-                height.word = None;
-                height.likely = None;
-            }
-        }
-    }
     (labels, findings)
-}
-
-/// Whether any text gives a height that it calls low.
-fn any_low(drawing: &Drawing, job: &Job, roles: &Roles) -> bool {
-    drawing.texts.iter().any(|text| {
-        let of = roles.of(&text.layer, text.look).label;
-        let low = || {
-            label(&text.content, true, false, job)
-                .height
-                .is_some_and(|h| h.word == Some(Word::Low))
-        };
-        (of.heights || of.level_lines) && low()
-    })
 }
 
 /// A label of which nothing was read.

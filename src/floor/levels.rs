@@ -14,6 +14,7 @@ use super::pieces::{Joint, chains};
 use super::points::words;
 use super::readings::{HeightText, height_of_line};
 use super::rules::LEVEL_LINE_UNREAD;
+use super::writing::Writing;
 use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment, distance_m};
@@ -128,6 +129,7 @@ fn readings(
     if paths.is_empty() {
         return said;
     }
+    let writing = Writing::of(drawing, job, roles);
     for own_layer in [true, false] {
         let mut found: Vec<(usize, usize, Vec<HeightText>)> = Vec::new();
         for (at, text) in drawing.texts.iter().enumerate() {
@@ -143,7 +145,7 @@ fn readings(
                 .filter_map(|line| height_of_line(line, &job.conventions))
                 .map(|(height, _)| HeightText {
                     torn: whole.torn,
-                    ..height
+                    ..writing.means(height)
                 })
                 .collect();
             let reach_m = job.conventions.label_reach * text.height_m;

@@ -3,7 +3,7 @@
 use regex::Match;
 
 use super::lengths::length_m;
-use crate::job::{Conventions, Datum, FromFace, Pattern, PatternUnit, Soffit};
+use crate::job::{Conventions, Datum, FromFace, Pattern, PatternUnit};
 use crate::units::LengthUnit;
 
 pub use crate::job::Word;
@@ -28,6 +28,8 @@ pub struct HeightText {
     pub datum: Datum,
     /// Another text contradicts it, or its own does: the number does not count.
     pub(super) torn: bool,
+    /// It is written as in `H = 165`, where the letter may be the sign of every height.
+    pub(super) by_equals: bool,
 }
 
 /// A mark as written; each part may be absent.
@@ -62,6 +64,7 @@ pub fn height_of_line<'c>(
             from: FromFace::Soffit,
             datum: Datum::Centroid,
             torn: false,
+            by_equals: false,
         };
         return Some((middle, None));
     }
@@ -69,18 +72,13 @@ pub fn height_of_line<'c>(
         let groups = pattern.captures(line)?;
         let unit = length_unit(pattern).unwrap_or(conventions.height.unit);
         let value = groups.name("value")?;
-        let written = groups
-            .name("word")
-            .filter(|word| !word.as_str().trim().is_empty());
-        let value_m = above_face_m(
-            length_m(value.as_str(), unit)?,
-            written.is_some(),
-            conventions,
-        )?;
+        let value_m = length_m(value.as_str(), unit)?;
+        let written = groups.name("word");
+        let by_equals = equals(line, written, value);
         let word = match written.map(|word| word.as_str().trim()) {
-            None => pattern.word,
+            None | Some("") => pattern.word,
             // The sign of a height, `h = 30`, says neither high nor low.
-            Some("h") if equals(line, written, value) => None,
+            Some("h") if by_equals => None,
             Some(word) if among(word, &conventions.high_words) => Some(Word::High),
             Some(word) if among(word, &conventions.low_words) => Some(Word::Low),
             Some(word) if among(word, &conventions.middle_words) => None,
@@ -94,24 +92,16 @@ pub fn height_of_line<'c>(
             from: pattern.from.unwrap_or(conventions.height.from),
             datum: pattern.datum.unwrap_or(conventions.height.datum),
             torn: false,
+            by_equals,
         };
         Some((height, Some(pattern)))
     })
 }
 
-/// A height by its number: none lies beyond the face that it is measured from, so before one a dash parts it from its
-/// word, as in `H-165`; without a word nobody can say what it means. Only from the general soffit one may be negative.
-fn above_face_m(value_m: f64, worded: bool, conventions: &Conventions) -> Option<f64> {
-    let general = conventions.height.soffit == Soffit::General;
-    if value_m >= 0.0 || general {
-        return Some(value_m);
-    }
-    worded.then_some(-value_m)
-}
-
-/// Whether an equals sign or a colon stands between a word and its number.
+/// Whether an equals sign or a colon stands between the letter H and a number.
 fn equals(line: &str, word: Option<Match<'_>>, value: Match<'_>) -> bool {
-    let between = word.and_then(|word| line.get(word.end()..value.start()));
+    let letter = word.filter(|word| matches!(word.as_str().trim(), "H" | "h"));
+    let between = letter.and_then(|letter| line.get(letter.end()..value.start()));
     between.is_some_and(|between| between.contains(['=', ':']))
 }
 
