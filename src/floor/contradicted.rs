@@ -125,7 +125,12 @@ pub(super) fn marks(
         for lie in homes(label, lies, own) {
             let host = lie.pairing.host;
             if let Some(contradiction) = against(label, &held[host], lie) {
-                marks.of_line[host].tear(&texts[label]);
+                let whole = &mut marks.of_line[host];
+                whole.tear(&texts[label]);
+                // Whichever of the two counts is right, the mark may stand in either.
+                if !whole.mark.is_said() {
+                    whole.mark = texts[label].mark.clone();
+                }
                 found.push(contradiction);
             }
         }
