@@ -34,6 +34,7 @@ mod nearer_face;
 mod order;
 mod outlines;
 mod pieces;
+mod plans;
 mod points;
 mod readings;
 mod rules;

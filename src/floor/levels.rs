@@ -56,23 +56,29 @@ pub(super) fn levels(
     for (path, said) in paths.iter().zip(readings) {
         match said.as_slice() {
             [] => findings.push(unread(path, |_| "has no height within reach".to_owned())),
-            [first, rest @ ..] if rest.iter().all(|other| other == first) => {
-                if first.torn {
+            [first, rest @ ..] => {
+                // Of a height that is contradicted the tendons know only that one belongs here.
+                let one = rest.iter().all(|other| other == first);
+                let reading = HeightText {
+                    torn: first.torn || !one,
+                    word: first
+                        .word
+                        .filter(|_| rest.iter().all(|other| other.word == first.word)),
+                    ..*first
+                };
+                cross(path, reading, lines, index, &mut levels.of_line);
+                if !one {
+                    findings.push(unread(path, |units| {
+                        let numbers: BTreeSet<String> =
+                            said.iter().map(|&said| words(said, units)).collect();
+                        let numbers: Vec<String> = numbers.into_iter().collect();
+                        format!("has more than one height beside it: {}", numbers.join(", "))
+                    }));
+                } else if first.torn {
                     findings.push(unread(path, |_| {
                         "has a text that contradicts itself".to_owned()
                     }));
-                    continue;
                 }
-                cross(path, *first, lines, index, &mut levels.of_line);
-            }
-            [first, rest @ ..] => {
-                findings.push(unread(path, |units| {
-                    let numbers = std::iter::once(first).chain(rest);
-                    let numbers: BTreeSet<String> =
-                        numbers.map(|&said| words(said, units)).collect();
-                    let numbers: Vec<String> = numbers.into_iter().collect();
-                    format!("has more than one height beside it: {}", numbers.join(", "))
-                }));
             }
         }
     }
