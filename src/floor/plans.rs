@@ -145,7 +145,7 @@ impl Plans<'_> {
                                 ..strands.clone()
                             });
                         } else if !own.tendons.is_said() {
-                            own.tendons = strands.tendons.clone();
+                            own.tendons = strands.tendons;
                         }
                     }
                     None => reserved.push(Marking {

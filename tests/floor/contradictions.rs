@@ -184,7 +184,7 @@ fn a_number_of_tendons_is_shared_out_among_lines_or_is_not_known() {
             let at_mm = mm(tendon.path.place_at(0.0).y);
             match expected {
                 Some(counts) => {
-                    assert_eq!((tendon.tendons, tendon.strands), counts, "{text} {at_mm}")
+                    assert_eq!((tendon.tendons, tendon.strands), counts, "{text} {at_mm}");
                 }
                 None => assert_eq!(tendon.strands, None, "{text} {at_mm}"),
             }
