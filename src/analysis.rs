@@ -3,6 +3,7 @@
 //! Two passes: all tendons are jacked and locked off first, since the concrete stress of each comes from all of them; then
 //! the sections of the slab, summed serially in the tendons' order; then transfer, service and the rules.
 
+mod assumptions;
 mod by_method;
 mod findings_on;
 mod refusals;
@@ -19,11 +20,11 @@ pub use self::refusals::{Refusal, rules};
 pub use self::spread::{FloorSpread, Spread};
 use crate::checks::{self, Ground, Turning, Worked};
 use crate::finding::Finding;
-use crate::floor::{Floor, PointKind, Tendon};
+use crate::floor::{Floor, Tendon};
 use crate::job::{Fallback, Job, LongTermMethod};
 use crate::losses::long_term::Turn;
 use crate::losses::precompression::{Crossing, Sections};
-use crate::losses::{Along, Effective, Forces, Stressed, steel, turns};
+use crate::losses::{Along, Effective, Forces, Pulls, first_end, steel, strand_size, turns};
 use crate::profile::{self, Profile, Tightest};
 
 /// A floor worked out.
@@ -68,6 +69,8 @@ pub struct TendonResult {
     pub profile: Option<Profile>,
     /// The forces, if curve, strands and ends are known; without the later losses where the concrete stress is not.
     pub forces: Option<Forces>,
+    /// Name of the strand size that was worked with: the drawing's, else the job's default; `None` where there is no area.
+    pub strand: Option<String>,
     /// Steel area of all strands of one tendon, mm², if strands and size are known.
     pub area_mm2: Option<f64>,
     /// Least radius in plan.
@@ -76,7 +79,8 @@ pub struct TendonResult {
     pub turning: Option<Turning>,
     /// At each of the tendon's points.
     pub points: Vec<PointResult>,
-    /// Between the points too, close enough to draw: stations, places, levels and forces at every stage.
+    /// Between the points too, close enough to draw: stations, places, levels and forces at every stage. An intermediate
+    /// anchor has two, one for each of the segments that meet there.
     pub samples: Vec<Sample>,
     /// Mean concrete stress used, MPa.
     pub concrete_stress_mpa: Option<f64>,
@@ -91,7 +95,8 @@ pub struct PointResult {
     pub angle_rad: Option<f64>,
     /// Level above the top of the slab, metres: as drawn, for a support too.
     pub level_m: Option<f64>,
-    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known; at a bend, the least in it.
+    /// Forces at jacking, lock-off, transfer and service, kN per tendon, as far as they are known; at a bend, the least in it,
+    /// at an intermediate anchor, the lesser of its two sides.
     pub forces_kn: [Option<f64>; 4],
 }
 
@@ -121,7 +126,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
         .par_iter()
         .map(|tendon| Ok(profile::build(tendon, &job.profile)?))
         .collect();
-    let stressed: Vec<Result<Stressed<'_>, Refusal>> = tendons
+    let stressed: Vec<Result<Pulls<'_>, Refusal>> = tendons
         .par_iter()
         .zip(&curves)
         .map(|(tendon, curve)| stress(tendon, curve.as_ref().map_err(Clone::clone)?, job))
@@ -165,7 +170,7 @@ pub fn work(floor: Floor, job: &Job, found: Vec<Finding>) -> Analysis {
     findings.extend(checks::required::per_width(&floor, &mean_service_kn));
     findings.extend(by_method::without_loss(&floor.tendons, &results));
     findings.sort_by(in_order);
-    let assumptions = assumptions(&floor, &results, job);
+    let assumptions = assumptions::sentences(&floor, &results, job);
     Analysis {
         floor,
         results,
@@ -198,23 +203,30 @@ pub fn work_tendon(
     )
 }
 
-/// Jacks a tendon and locks it off.
+/// Jacks a tendon and locks it off, pull by pull.
 ///
 /// # Errors
 /// [`Refusal`] says what is not known, or why there is no force.
-pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Stressed<'p>, Refusal> {
+pub fn stress<'p>(tendon: &Tendon, curve: &'p Profile, job: &Job) -> Result<Pulls<'p>, Refusal> {
     let steel = steel(tendon, &job.tendon).ok_or(Refusal::SteelUnknown)?;
     let [Some(start), Some(end)] = tendon.ends.map(|end| end.kind) else {
         return Err(Refusal::EndUnknown);
     };
-    Ok(Stressed::new(curve, steel, [start, end], &job.stressing)?)
+    let first_end = first_end(tendon, &job.stressing.first_pour);
+    Ok(Pulls::new(
+        curve,
+        steel,
+        [start, end],
+        first_end,
+        &job.stressing,
+    )?)
 }
 
 /// Mean concrete stress of each tendon, MPa: the job's, or from the slab's sections.
 fn concrete_stresses(
     floor: &Floor,
     job: &Job,
-    stressed: &[Result<Stressed<'_>, Refusal>],
+    stressed: &[Result<Pulls<'_>, Refusal>],
 ) -> Vec<Option<f64>> {
     let tendons = &floor.tendons;
     if let Some(given_mpa) = job.long_term.concrete_stress_mpa {
@@ -231,7 +243,7 @@ fn concrete_stresses(
         .map(|(index, (tendon, stressed))| {
             stressed.as_ref().map_or_else(
                 |_| Vec::new(),
-                |stressed| sections.crossings(index, &tendon.path, tendon.tendons, stressed),
+                |pulls| sections.crossings(index, &tendon.path, tendon.tendons, pulls),
             )
         })
         .collect();
@@ -243,7 +255,7 @@ fn finish(
     tendon: &Tendon,
     job: &Job,
     curve: Option<&Profile>,
-    stressed: Result<&Stressed<'_>, Refusal>,
+    stressed: Result<&Pulls<'_>, Refusal>,
     concrete_stress_mpa: Option<f64>,
     turn: Turn,
     ground: Option<&Ground<'_>>,
@@ -251,7 +263,7 @@ fn finish(
     let jacked = stressed.as_ref().ok().copied();
     let long_term = &job.long_term;
     let along =
-        stressed.map(|stressed| Along::new(stressed, by_method::faces(tendon, ground, long_term)));
+        stressed.map(|pulls| Along::new(pulls, by_method::faces(tendon, ground, long_term)));
     let known = along.as_ref().map_err(Clone::clone).and_then(|along| {
         let stress_mpa = concrete_stress_mpa.ok_or(Refusal::ConcreteStressUnknown)?;
         Ok((along, along.case(long_term, stress_mpa, turn)))
@@ -264,17 +276,26 @@ fn finish(
         drawn.map_err(|reason| by_method::refusal(method, reason))
     });
     // Jacking and lock-off ask nothing of the concrete.
+    let only_jacked =
+        |[jacking_kn, lockoff_kn]: [f64; 2]| [Some(jacking_kn), Some(lockoff_kn), None, None];
     let forces_kn = |station_m| match (&effective, jacked) {
         (Ok(effective), _) => effective.forces_kn(station_m).map(Some),
-        (Err(_), Some(jacked)) => {
-            let [jacking_kn, lockoff_kn] = jacked.both_kn(station_m);
-            [Some(jacking_kn), Some(lockoff_kn), None, None]
-        }
+        (Err(_), Some(jacked)) => only_jacked(jacked.both_kn(station_m)),
         (Err(_), None) => [None; 4],
+    };
+    let sides_kn = |station_m| -> Vec<[Option<f64>; 4]> {
+        match (&effective, jacked) {
+            (Ok(effective), _) => effective
+                .sides_kn(station_m)
+                .map(|kn| kn.map(Some))
+                .collect(),
+            (Err(_), Some(jacked)) => jacked.sides_kn(station_m).map(only_jacked).collect(),
+            (Err(_), None) => vec![[None; 4]],
+        }
     };
     let forces = match &effective {
         Ok(effective) => Some(effective.forces()),
-        Err(_) => jacked.map(Stressed::forces),
+        Err(_) => jacked.map(Pulls::forces),
     };
     let points = tendon
         .points
@@ -288,16 +309,20 @@ fn finish(
     let samples = curve.map_or_else(Vec::new, |curve| {
         samples::stations(tendon)
             .into_iter()
-            .map(|station_m| Sample {
-                station_m,
-                place: tendon.path.place_at(station_m),
-                level_m: curve.level_m(station_m),
-                forces_kn: forces_kn(station_m),
+            .flat_map(|station_m| {
+                let sample = move |forces_kn| Sample {
+                    station_m,
+                    place: tendon.path.place_at(station_m),
+                    level_m: curve.level_m(station_m),
+                    forces_kn,
+                };
+                sides_kn(station_m).into_iter().map(sample)
             })
             .collect()
     });
     let result = TendonResult {
         profile: curve.cloned(),
+        strand: strand_size(tendon, &job.tendon).map(|size| size.name.clone()),
         area_mm2: steel(tendon, &job.tendon).map(|steel| steel.area_mm2),
         plan_tightest: checks::plan::tightest_in_plan(&tendon.path),
         turning: curve
@@ -350,48 +375,4 @@ fn in_order(a: &Finding, b: &Finding) -> Ordering {
         .then_with(|| place(a).0.total_cmp(&place(b).0))
         .then_with(|| place(a).1.total_cmp(&place(b).1))
         .then_with(|| a.text.cmp(&b.text))
-}
-
-/// What was assumed of the floor while it was worked out, in sentences.
-fn assumptions(floor: &Floor, results: &[TendonResult], job: &Job) -> Vec<String> {
-    let mut said = Vec::new();
-    let anchors = floor
-        .tendons
-        .iter()
-        .flat_map(|tendon| &tendon.points)
-        .filter(|point| point.kind == PointKind::Anchor)
-        .filter(|point| point.drawn_m.is_none() && point.height_m.is_some())
-        .count();
-    if anchors > 0 {
-        said.push(format!(
-            "Anchors for which the drawing gives no height of their own are at mid-depth: {anchors}."
-        ));
-    }
-    let unmarked = floor.tendons.iter().filter(|tendon| !tendon.mark_drawn);
-    let unmarked = unmarked.count();
-    if unmarked > 0 {
-        said.push(format!(
-            "Tendons without a mark on the drawing were given one by their place, and it is written beside them: {unmarked}."
-        ));
-    }
-    said.extend(by_method::recalled(&job.long_term));
-    if job.long_term.concrete_stress_mpa.is_none() && !floor.slab.outlines.is_empty() {
-        said.push(
-            "The concrete stress of each tendon is the lock-off force of the floor's own tendons over the slab's sections \
-             (long_term.concrete_stress_mpa is not given)."
-                .to_owned(),
-        );
-        let without = results
-            .iter()
-            .filter(|result| result.forces.is_none())
-            .count();
-        if without > 0 && without < results.len() {
-            said.push(format!(
-                "The compression of {without} of {} tendon lines, whose forces are not known, is left out: concrete stress and losses \
-                 of the others are low.",
-                results.len()
-            ));
-        }
-    }
-    said
 }

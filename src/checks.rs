@@ -14,6 +14,7 @@ pub mod openings;
 pub mod order;
 pub mod plan;
 pub mod profile;
+mod pulls;
 pub mod required;
 pub mod soffit;
 pub mod standards;
@@ -64,6 +65,7 @@ pub fn tendon(worked: &Worked, ground: &Ground, job: &Job) -> Vec<Finding> {
     found.extend(cover::height_outside_cover(worked, ground, &chords, job));
     found.extend(soffit::soffit_doubtful(worked, ground, job));
     found.extend(profile::hogging_radius(worked, job));
+    found.extend(profile::sagging_radius(worked, job));
     found.extend(plan::plan_radius(worked, job));
     found.extend(openings::crosses_opening(worked, ground, &chords, job));
     found.extend(edge::leaves_slab(worked, ground, &chords, job));
@@ -97,7 +99,7 @@ pub fn rules() -> &'static [&'static Rule] {
 }
 
 /// This stage's own rules.
-static RULES: [&Rule; 20] = [
+static RULES: [&Rule; 21] = [
     &ends::NO_LIVE_END,
     &ends::ONE_END_LENGTH,
     &profile::HIGHS_IN_A_ROW,
@@ -107,6 +109,7 @@ static RULES: [&Rule; 20] = [
     &cover::HEIGHT_OUTSIDE_COVER,
     &soffit::SOFFIT_DOUBTFUL,
     &profile::HOGGING_RADIUS,
+    &profile::SAGGING_RADIUS,
     &plan::PLAN_RADIUS,
     &openings::CROSSES_OPENING,
     &edge::LEAVES_SLAB,

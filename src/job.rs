@@ -31,7 +31,7 @@ pub use published::{Cement, Environment, LongTermMethod, Published, RelaxationCl
 pub use reading::read;
 pub use resolved::{
     Conventions, Datum, END_SHAPES, FromFace, HeightReading, Job, Layers, Limits, LongTerm,
-    Profiling, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, TendonJob, Wobble,
+    Profiling, SIDES, SlabJob, Soffit, StepKeeps, StrandSize, Stressing, TendonJob, Wobble,
 };
 pub use systems::System;
 pub use writing::{Proposal, file};

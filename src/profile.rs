@@ -7,11 +7,13 @@ mod bends;
 mod build;
 mod curve;
 mod hogging;
+mod segments;
 mod span;
 mod supports;
 mod types;
 
 pub use build::{Unknown, build};
+pub use segments::Segment;
 pub use supports::support_residuals;
 pub use types::{Bend, Profile, Span, Tightest};
 

@@ -157,7 +157,7 @@ fn every_range_holds_its_own_ends_and_refuses_what_lies_beyond() {
         for end in [least, most] {
             let read = job::read("range", &file(&format!("{end:?}")));
             // Two limits contradict each other at the far ends of their ranges; that is another rule.
-            if !["hogging_radius", "support_residual"]
+            if !["hogging_radius", "sagging_radius", "support_residual"]
                 .iter()
                 .any(|pair| key.name.starts_with(pair))
             {
@@ -251,6 +251,10 @@ fn each_other_mistake_is_told_apart() {
         (
             "[limits]\nhogging_radius_error_m = 9\n",
             "before it is a warning",
+        ),
+        (
+            "[limits]\nsagging_radius_warning_m = 2\n",
+            "a sagging radius would be an error",
         ),
         ("stressing = 3\n", "is a table"),
         ("[stressing]\nmu_per_rad = \n", "not TOML"),

@@ -2,10 +2,10 @@
 
 use geo::Coord;
 use proptest::prelude::*;
-use tautplan::floor::{End, EndKind, Point, PointKind, Run, Tendon};
+use tautplan::floor::{End, EndKind, Point, PointKind, PourJoint, Run, Tendon};
 use tautplan::geometry::{Path, Segment};
-use tautplan::job::Profiling;
-use tautplan::losses::{Friction, Steel, Stressed};
+use tautplan::job::{Job, Profiling};
+use tautplan::losses::{Friction, Pulls, Steel, Stressed, first_end};
 use tautplan::profile::{Profile, build};
 
 use EndKind::{Dead, Live};
@@ -69,6 +69,7 @@ impl Meant {
             strand: Some("12.7".to_owned()),
             required_kn: None,
             required_kn_per_m: None,
+            joints: Vec::new(),
             ends: [end(path.place_at(0.0)), end(path.place_at(path.length_m()))],
             points: points
                 .into_iter()
@@ -104,7 +105,39 @@ fn reversed(tendon: &Tendon) -> Tendon {
     for point in &mut back.points {
         point.station_m = length_m - point.station_m;
     }
+    back.ends.reverse();
+    back.joints.reverse();
+    for joint in &mut back.joints {
+        joint.station_m = length_m - joint.station_m;
+    }
     back
+}
+
+/// The tendon with intermediate anchors at these shares of its length.
+fn divided(mut tendon: Tendon, shares: &[f64]) -> Tendon {
+    let path = &tendon.path;
+    let joints = shares.iter().map(|share| {
+        let station_m = share * path.length_m();
+        let place = path.place_at(station_m);
+        PourJoint { station_m, place }
+    });
+    tendon.joints = joints.collect();
+    tendon
+}
+
+/// All pulls of a tendon, the pour at the left or lower end first.
+fn pulled<'p>(tendon: &Tendon, profile: &'p Profile, kinds: [EndKind; 2]) -> Option<Pulls<'p>> {
+    let job = Job::default().stressing;
+    let first = first_end(tendon, &job.first_pour);
+    Pulls::new(profile, STEEL, kinds, first, &job).ok()
+}
+
+fn shares() -> impl Strategy<Value = Vec<f64>> {
+    prop_oneof![
+        Just(vec![0.5]),
+        (0.25..0.45, 0.55..0.75).prop_map(|(a, b)| vec![a, b]),
+        (0.2..0.3, 0.4..0.6, 0.7..0.8).prop_map(|(a, b, c)| vec![a, b, c]),
+    ]
 }
 
 fn stressed(profile: &Profile, kinds: [EndKind; 2], slips_m: [f64; 2]) -> Option<Stressed<'_>> {
@@ -204,6 +237,77 @@ proptest! {
         };
         for station_m in stations(&one, 50) {
             prop_assert!((a.lockoff_kn(station_m) - b.lockoff_kn(station_m)).abs() < 1e-8 * JACK_KN);
+        }
+    }
+
+    #[test]
+    fn a_segment_between_two_anchors_is_a_tendon_by_itself(meant in meant(), kinds in kinds(), shares in shares()) {
+        let tendon = divided(meant.tendon(meant.path()), &shares);
+        let whole = curve(&tendon);
+        let Some(pulls) = pulled(&tendon, &whole, kinds) else { return Ok(()) };
+        let forces = pulls.forces();
+        prop_assert_eq!(forces.pulls.len(), shares.len() + 1);
+        let (mut length_m, mut angle_rad, mut locked_kn_m) = (0.0, 0.0, 0.0);
+        for (turn, pull) in forces.pulls.iter().enumerate() {
+            let [from_m, to_m] = pull.stations_m;
+            let alone = whole.between(from_m, to_m);
+            length_m += alone.length_m();
+            angle_rad += alone.total_angle_rad();
+            // Of two live ends the first pull has two jacks; every other one has the far anchor's.
+            let own = pull.forces.ends.map(|end| end.kind);
+            prop_assert_eq!(own == [Live; 2], kinds == [Live; 2] && turn == 0);
+            let alone = Stressed::new(&alone, STEEL, own, &Job::default().stressing).expect("it was stressed");
+            locked_kn_m += alone.mean_lockoff_kn() * alone.profile().length_m();
+            for (here, by_itself) in pull.forces.ends.iter().zip(alone.ends()) {
+                prop_assert_eq!(here.kind, by_itself.kind);
+                let apart_mm = |a: Option<f64>, b: Option<f64>| a.zip(b).map_or(0.0, |(a, b)| (a - b).abs());
+                prop_assert_eq!(here.extension_mm.is_some(), by_itself.extension_mm.is_some());
+                prop_assert!(apart_mm(here.extension_mm, by_itself.extension_mm) < 1e-9);
+                prop_assert!(apart_mm(here.extension_net_mm, by_itself.extension_net_mm) < 1e-9);
+            }
+            for share in [0.001, 0.2, 0.5, 0.77, 0.999] {
+                let along_m = share * (to_m - from_m);
+                let ([ja, la], [jb, lb]) = (pulls.both_kn(from_m + along_m), alone.both_kn(along_m));
+                prop_assert!((ja - jb).abs() < 1e-9 * JACK_KN && (la - lb).abs() < 1e-9 * JACK_KN);
+            }
+        }
+        prop_assert!((length_m - whole.length_m()).abs() < 1e-9);
+        // A bare vertex may stand at an anchor.
+        let bent = whole.bends.iter().filter(|bend| tendon.joints.iter().any(|joint| (joint.station_m - bend.station_m).abs() < 1e-5));
+        let bent_rad: f64 = bent.map(|bend| bend.angle_rad).sum();
+        prop_assert!((angle_rad + bent_rad - whole.total_angle_rad()).abs() < 1e-9);
+        prop_assert!((pulls.mean_lockoff_kn() - locked_kn_m / length_m).abs() < 1e-9 * JACK_KN);
+        // At an anchor two forces meet, and the lesser is the tendon's.
+        for joint in &tendon.joints {
+            let sides: Vec<[f64; 2]> = pulls.sides_kn(joint.station_m).collect();
+            prop_assert_eq!(sides.len(), 2);
+            let [jacking_kn, lockoff_kn] = pulls.both_kn(joint.station_m);
+            prop_assert!(jacking_kn <= sides[0][0] && jacking_kn <= sides[1][0]);
+            prop_assert!(lockoff_kn <= sides[0][1] && lockoff_kn <= sides[1][1]);
+        }
+    }
+
+    #[test]
+    fn reversing_a_divided_tendon_mirrors_its_pulls(meant in meant(), kinds in kinds(), shares in shares()) {
+        let tendon = divided(meant.tendon(meant.path()), &shares);
+        let turned = reversed(&tendon);
+        let (there, back) = (curve(&tendon), curve(&turned));
+        let both = (pulled(&tendon, &there, kinds), pulled(&turned, &back, [kinds[1], kinds[0]]));
+        prop_assert_eq!(both.0.is_some(), both.1.is_some());
+        let (Some(a), Some(b)) = both else { return Ok(()) };
+        let length_m = there.plan_length_m();
+        for station_m in stations(&there, 97) {
+            let ([ja, la], [jb, lb]) = (a.both_kn(station_m), b.both_kn(length_m - station_m));
+            prop_assert!((ja - jb).abs() < 1e-6 * JACK_KN && (la - lb).abs() < 1e-6 * JACK_KN);
+        }
+        for (one, other) in a.forces().pulls.iter().zip(&b.forces().pulls) {
+            for end in [0, 1] {
+                prop_assert!((one.stations_m[end] - (length_m - other.stations_m[1 - end])).abs() < 1e-6);
+                let (here, mirrored) = (&one.forces.ends[end], &other.forces.ends[1 - end]);
+                prop_assert_eq!(here.kind, mirrored.kind);
+                let apart_mm = here.extension_mm.zip(mirrored.extension_mm).map_or(0.0, |(a, b)| (a - b).abs());
+                prop_assert!(apart_mm < 1e-4, "{apart_mm}");
+            }
         }
     }
 

@@ -42,6 +42,7 @@ fn tendon(mark: &str, from: Coord<f64>, to: Coord<f64>, tendons: u32) -> Tendon 
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [end(EndKind::Live, from), end(EndKind::Dead, to)],
         points,
     }

@@ -33,6 +33,7 @@ fn tendon(mark: &str, y: f64, ends: [Option<EndKind>; 2], heights_m: [Option<f64
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [(ends[0], 0.0), (ends[1], 10.0)].map(|(kind, x)| End {
             kind,
             place: at(x, y),
@@ -103,6 +104,7 @@ fn forces() -> Forces {
         least_jacking_kn: 670.82,
         least_jacking_station_m: 10.0,
         least_jacking_angle_rad: 0.055_985_364,
+        pulls: Vec::new(),
     }
 }
 
@@ -128,6 +130,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: Some(profile()),
             forces: Some(forces()),
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: checks::turning(&profile(), &forces()),
@@ -143,6 +146,7 @@ fn analysis() -> Analysis {
         TendonResult {
             profile: None,
             forces: None,
+            strand: Some("12.7".to_owned()),
             area_mm2: Some(493.5),
             plan_tightest: None,
             turning: None,

@@ -34,6 +34,7 @@ fn tendon(mark: &str, places: &[Coord<f64>]) -> Tendon {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [places[0], places[places.len() - 1]].map(|place| End {
             kind: Some(EndKind::Live),
             place,
@@ -199,4 +200,67 @@ fn anchors_without_a_drawn_height_are_counted_among_the_assumptions() {
     let unsaid = straight("D002", 9.0);
     let line = told(vec![said, unsaid]).expect("two anchors of D002");
     assert!(line.ends_with(": 2."), "{line}");
+}
+
+/// A count without a size is worked out with the job's default, and every output names that size and whose it is; without
+/// a default there is none to name.
+#[test]
+fn a_size_from_the_default_is_named_as_such() {
+    let facts = DrawingFacts {
+        file: "plan.dxf".to_owned(),
+        version: "AC1027".to_owned(),
+        unit_m: 0.001,
+    };
+    let worked = |strands: Option<u32>, drawn: Option<&str>, default: Option<&str>| {
+        let mut job = Job::default();
+        job.tendon.default_strand = default.map(str::to_owned);
+        let tendons = vec![Tendon {
+            strands,
+            strand: drawn.map(str::to_owned),
+            ..straight("D1", 0.0)
+        }];
+        let floor = Floor {
+            tendons,
+            slab: Slab::default(),
+        };
+        let analysis = work(floor, &job, Vec::new());
+        let record: serde_json::Value =
+            serde_json::from_str(&report::json(&facts, &[], &analysis)).expect("JSON");
+        let table = report::tendons_csv(&analysis, job.units);
+        let mut rows = csv::Reader::from_reader(table.as_bytes());
+        let column = rows
+            .headers()
+            .expect("a header")
+            .iter()
+            .position(|name| name == "strand");
+        let row = rows.records().next().expect("a row").expect("a row");
+        let cell = row[column.expect("a column")].to_owned();
+        let said = analysis
+            .all_assumptions()
+            .iter()
+            .any(|line| line.contains("default_strand, 15.7: 1"));
+        let sheet = report::calculation(&facts, &analysis, &job, "D1").expect("a sheet");
+        let tendon = &record["tendons"][0];
+        let size = (tendon["strand"].clone(), tendon["area_mm2"].clone(), cell);
+        (size, said, sheet)
+    };
+
+    let (size, said, sheet) = worked(Some(5), None, Some("15.7"));
+    assert_eq!(size, ("15.7".into(), 750.0.into(), "15.7".to_owned()));
+    assert!(said);
+    assert!(
+        sheet.contains("5 strands of size 15.7 (the job's default_strand), 150 mm2 each"),
+        "{sheet}"
+    );
+
+    let (size, said, sheet) = worked(Some(5), Some("12.7"), Some("15.7"));
+    assert_eq!((size.0, size.2), ("12.7".into(), "12.7".to_owned()));
+    assert!(!said);
+    assert!(sheet.contains("5 strands of size 12.7, "), "{sheet}");
+
+    for (strands, default) in [(Some(5), None), (None, Some("15.7"))] {
+        let (size, said, _) = worked(strands, None, default);
+        assert_eq!((size.0, size.1), (().into(), ().into()));
+        assert!(!said);
+    }
 }

@@ -154,19 +154,15 @@ pub(super) fn by_each(
 
 /// The greatest forces after elastic shortening and in service: at the samples, and where a draw-in ends.
 fn greatest(tendon: &Tendon, along: &Along<'_, '_>, effective: &Effective<'_>) -> [(f64, f64); 2] {
-    let length_m = tendon.path.length_m();
-    let [start, end] = along.stressed().ends().map(|end| end.draw_in_reach_m);
-    let peaks = [start, end.map(|reach_m| length_m - reach_m)];
-    let peaks = peaks.into_iter().flatten();
     let mut greatest = [(0.0, 0.0); 2];
-    for station_m in samples::stations(tendon)
-        .into_iter()
-        .chain(peaks.map(|station_m| station_m.clamp(0.0, length_m)))
-    {
-        let [.., transfer_kn, service_kn] = effective.forces_kn(station_m);
-        for (held, force_kn) in greatest.iter_mut().zip([transfer_kn, service_kn]) {
-            if force_kn > held.1 {
-                *held = (station_m, force_kn);
+    let stations = samples::stations(tendon).into_iter();
+    for station_m in stations.chain(along.pulls().peaks_m()) {
+        // Of the two forces at an intermediate anchor the greater counts here.
+        for [.., transfer_kn, service_kn] in effective.sides_kn(station_m) {
+            for (held, force_kn) in greatest.iter_mut().zip([transfer_kn, service_kn]) {
+                if force_kn > held.1 {
+                    *held = (station_m, force_kn);
+                }
             }
         }
     }

@@ -4,8 +4,8 @@ use super::by_method::{METHOD_WITHOUT_LOSS, REMEDY};
 use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::Tendon;
 use crate::job::LongTermMethod;
-use crate::losses::CannotStress;
 use crate::losses::long_term::NoLoss;
+use crate::losses::{CannotStress, Unstressed};
 use crate::profile::Unknown;
 use crate::units::LONG;
 
@@ -60,13 +60,32 @@ pub enum Refusal {
     EndUnknown,
     /// It cannot be stressed.
     #[error(transparent)]
-    Stress(#[from] CannotStress),
+    Stress(CannotStress),
+    /// One of its segments, in order along it, from 0, cannot be stressed.
+    #[error("segment {number}: {1}", number = .0 + 1)]
+    Segment(usize, CannotStress),
     /// The mean concrete stress is not known.
     #[error("the mean concrete stress is not known")]
     ConcreteStressUnknown,
     /// The method of long-term loss gives none.
     #[error("{word}: {1}", word = .0.word())]
     Method(LongTermMethod, NoLoss),
+}
+
+impl From<CannotStress> for Refusal {
+    fn from(reason: CannotStress) -> Self {
+        Self::Stress(reason)
+    }
+}
+
+impl From<Unstressed> for Refusal {
+    fn from(unstressed: Unstressed) -> Self {
+        let Unstressed { segment, reason } = unstressed;
+        match segment {
+            Some(segment) => Self::Segment(segment, reason),
+            None => Self::Stress(reason),
+        }
+    }
 }
 
 impl Refusal {
@@ -137,6 +156,7 @@ impl Refusal {
                 "look at draw-in, friction and wobble (whether per metre or in radians per metre), heights and long-term \
                  coefficients; stress a tendon this short or this winding in another way",
             )),
+            Self::Segment(segment, reason) => Some(in_segment(tendon, *segment, *reason)),
             Self::Method(..) => Some(at(
                 tendon,
                 &METHOD_WITHOUT_LOSS,
@@ -156,6 +176,24 @@ impl Refusal {
             )),
         }
     }
+}
+
+fn in_segment(tendon: &Tendon, segment: usize, reason: CannotStress) -> Finding {
+    let [from_m, to_m] = tendon.segment_m(segment);
+    at(
+        tendon,
+        &NO_FORCE_LEFT,
+        from_m,
+        Wording::of(|units| {
+            let [from, to] = [from_m, to_m].map(|station_m| units.of(LONG).said(station_m, 2));
+            format!(
+                "{reason} in the segment from station {from} to {to}, which is stressed by itself, so no forces are given to \
+                 the tendon; a force at every point was expected"
+            )
+        }),
+        "look at where the intermediate anchors stand, then at draw-in, friction and wobble; stress a segment this short or \
+         this winding in another way",
+    )
 }
 
 fn at(

@@ -13,7 +13,7 @@ const MOST_STEPS: f64 = 48.0;
 /// A plan arc is followed with chords that turn no more than this, radians.
 const CHORD_RAD: f64 = 0.1;
 
-/// Stations in order, from end to end: the tendon's points, the ends of its plan pieces, and regular steps between them.
+/// Stations in order, from end to end: the tendon's points and intermediate anchors, the ends of its plan pieces, and regular steps between them.
 /// About 60 for a tendon with straight pieces.
 pub(super) fn stations(tendon: &Tendon) -> Vec<f64> {
     let length_m = tendon.path.length_m();
@@ -27,17 +27,14 @@ pub(super) fn stations(tendon: &Tendon) -> Vec<f64> {
         marked.push((start_m, finest_m));
     }
     let within = |station_m: f64| station_m > 0.0 && station_m < length_m;
-    for point in &tendon.points {
-        if within(point.station_m) {
-            let before = marked
-                .iter()
-                .rev()
-                .find(|&&(station_m, _)| station_m <= point.station_m);
-            marked.push((
-                point.station_m,
-                before.map_or(step_m, |&(_, finest_m)| finest_m),
-            ));
-        }
+    let points = tendon.points.iter().map(|point| point.station_m);
+    let anchors = tendon.joints.iter().map(|joint| joint.station_m);
+    for fixed_m in points.chain(anchors).filter(|&fixed_m| within(fixed_m)) {
+        let before = marked
+            .iter()
+            .rev()
+            .find(|&&(station_m, _)| station_m <= fixed_m);
+        marked.push((fixed_m, before.map_or(step_m, |&(_, finest_m)| finest_m)));
     }
     marked.push((length_m, step_m));
     marked.sort_by(|a, b| a.0.total_cmp(&b.0));

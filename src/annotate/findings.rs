@@ -120,7 +120,11 @@ fn texts(
         };
         let spot = Spot::upright(centre, width_m, height_m);
         // A text written over is lost; a line shows through.
-        let hit = (room.texts_hit(&spot), room.lines_hit(&spot));
+        let texts = room.texts_hit(&spot);
+        if best.is_some_and(|((least, _), _)| texts > least) {
+            continue;
+        }
+        let hit = (texts, room.lines_hit(&spot));
         if best.is_none_or(|(least, _)| hit < least) {
             best = Some((hit, spot));
         }

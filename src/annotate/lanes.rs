@@ -47,12 +47,14 @@ pub(super) fn lanes(floor: &Floor, room: &Room, text_m: f64) -> Vec<Lane> {
         .iter()
         .enumerate()
         .map(|(index, tendon)| {
-            let along = along_spacing_m(room, index, tendon);
-            let spacing_m = along.unwrap_or(f64::INFINITY);
-            let end_text_m = [0.0, tendon.path.length_m()].map(|station_m| {
-                let near = spacing_at_m(room, index, tendon, station_m);
-                text_m.min(0.6 * near.unwrap_or(f64::INFINITY)).max(0.04)
-            });
+            let along = spacings_m(room, index, tendon);
+            let spacing_m = along.iter().copied().fold(f64::INFINITY, f64::min);
+            let end = |near: Option<&f64>| {
+                text_m
+                    .min(0.6 * near.copied().unwrap_or(f64::INFINITY))
+                    .max(0.04)
+            };
+            let end_text_m = [end(along.first()), end(along.last())];
             Lane {
                 spacing_m,
                 width_m: WIDTH_M.min(0.3 * spacing_m).max(0.01),
@@ -64,39 +66,34 @@ pub(super) fn lanes(floor: &Floor, room: &Room, text_m: f64) -> Vec<Lane> {
         .collect()
 }
 
-/// Distance to the nearest parallel neighbour anywhere along a tendon, metres.
-fn along_spacing_m(room: &Room, index: usize, tendon: &Tendon) -> Option<f64> {
+/// Distance to the nearest parallel neighbour at steps along a tendon, metres; infinite where there is none near.
+fn spacings_m(room: &Room, index: usize, tendon: &Tendon) -> Vec<f64> {
     const STEPS: u32 = 16;
     let length_m = tendon.path.length_m();
     (0..=STEPS)
-        .filter_map(|i| {
-            let station_m = length_m * f64::from(i) / f64::from(STEPS);
-            spacing_at_m(room, index, tendon, station_m)
+        .map(|step| {
+            let station_m = length_m * f64::from(step) / f64::from(STEPS);
+            spacing_at_m(room, index, tendon, station_m).unwrap_or(f64::INFINITY)
         })
-        .min_by(f64::total_cmp)
+        .collect()
 }
 
 /// Distance across to the nearest parallel neighbour at a station, metres. A line drawn over this one is no neighbour.
 fn spacing_at_m(room: &Room, index: usize, tendon: &Tendon, station_m: f64) -> Option<f64> {
     let place = tendon.path.place_at(station_m);
     let heading = tendon.path.heading_at(station_m);
-    room.pieces_near(place, REACH_M)
-        .into_iter()
-        .filter(|piece| piece.tendon != index)
-        .filter_map(|piece| {
-            let direction = (piece.to.y - piece.from.y).atan2(piece.to.x - piece.from.x);
-            let turn = turn_rad(direction - heading).abs();
-            let parallel = turn.min(std::f64::consts::PI - turn) < PARALLEL_RAD;
-            let across = across_m(place, heading, nearest(piece.from, piece.to, place));
-            (parallel && across > 0.02).then_some(across)
+    let (sin, cos) = heading.sin_cos();
+    let parallel = |other: usize, direction: f64| {
+        let turn = turn_rad(direction - heading).abs();
+        other != index && turn.min(std::f64::consts::PI - turn) < PARALLEL_RAD
+    };
+    room.pieces_near(place, REACH_M, parallel)
+        .map(|[from, to]| {
+            let point = nearest(from, to, place);
+            ((point.y - place.y) * cos - (point.x - place.x) * sin).abs()
         })
+        .filter(|&across| across > 0.02)
         .min_by(f64::total_cmp)
-}
-
-/// Distance of a point from the line through a place, metres.
-fn across_m(place: Coord<f64>, heading_rad: f64, point: Coord<f64>) -> f64 {
-    let (sin, cos) = heading_rad.sin_cos();
-    ((point.y - place.y) * cos - (point.x - place.x) * sin).abs()
 }
 
 /// The point of a piece that is nearest to a place.

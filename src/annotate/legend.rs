@@ -11,7 +11,6 @@ use crate::analysis::Analysis;
 use crate::cautions::CAUTIONS;
 use crate::drawing::{Align, Drawn};
 use crate::finding::Level;
-use crate::floor::EndKind;
 use crate::job::Job;
 use crate::losses::Forces;
 use crate::units::{FORCE, SHORT};
@@ -55,12 +54,17 @@ pub(super) fn legend(analysis: &Analysis, job: &Job, letter_m: f64) -> Block {
     let short = job.units.of(SHORT);
     let sample = extension::said(&short.figure(180.0, 0), &short.figure(174.0, 0), short.name);
     column.sentence(&format!("{sample}: extension at a live end before (after) wedge draw-in; strand between anchor and jack is not in it"));
-    let both_live = |forces: &Forces| forces.ends.iter().all(|end| end.kind == EndKind::Live);
-    if analysis
-        .results
-        .iter()
-        .any(|result| result.forces.as_ref().is_some_and(both_live))
-    {
+    let some = |of: fn(&Forces) -> bool| {
+        let mut forces = analysis
+            .results
+            .iter()
+            .filter_map(|result| result.forces.as_ref());
+        forces.any(of)
+    };
+    if some(|forces| !forces.pulls.is_empty()) {
+        column.sentence(&format!("{}: a tendon with intermediate anchors is stressed segment by segment, in this order, and each pull has its extension at its jack; of the two forces at an intermediate anchor the lesser is given", extension::in_pull(2, "ext ...")));
+    }
+    if some(Forces::both_live) {
         column.sentence("Live at both ends: both jacks pull together, and the two extensions add up to the tendon's; with one jack moved from end to end the first pull is longer and the second shorter");
     }
     column.sentence("Jacking, lock-off and transfer: layers TAUT-FORCE-JACKING, -LOCKOFF, -TRANSFER and their -TEXT, switched off; switch on one stage at a time, the colours mean the same");

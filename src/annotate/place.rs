@@ -25,19 +25,17 @@ pub(super) struct Room {
     texts: Boxes,
     /// The drawn tendon lines, in short pieces.
     lines: Boxes,
-    /// The tendon of each piece.
-    tendons: Vec<usize>,
+    /// What is known of each of them.
+    pieces: Vec<Piece>,
 }
 
-/// A piece of a tendon line near a place.
+/// A piece of a tendon line.
 #[derive(Debug, Clone, Copy)]
-pub(super) struct Piece {
+struct Piece {
     /// Index of the tendon in the floor.
-    pub(super) tendon: usize,
-    /// Start.
-    pub(super) from: Coord<f64>,
-    /// End.
-    pub(super) to: Coord<f64>,
+    tendon: usize,
+    /// Direction, radians.
+    heading_rad: f64,
 }
 
 impl Room {
@@ -48,7 +46,7 @@ impl Room {
             texts.insert(*quad);
         }
         let mut lines = Boxes::new(1.0);
-        let mut tendons = Vec::new();
+        let mut pieces = Vec::new();
         for (index, tendon) in floor.tendons.iter().enumerate() {
             // A line drawn in another unit must not turn into millions of pieces.
             let piece_m = PIECE_M.max(tendon.path.length_m() / 2000.0);
@@ -61,7 +59,10 @@ impl Room {
                     let from = step(line.start, heading, along_m);
                     let to = step(line.start, heading, next_m);
                     if lines.insert([from, to, to, from]) {
-                        tendons.push(index);
+                        pieces.push(Piece {
+                            tendon: index,
+                            heading_rad: (to.y - from.y).atan2(to.x - from.x),
+                        });
                     }
                     along_m = next_m;
                 }
@@ -70,7 +71,7 @@ impl Room {
         Self {
             texts,
             lines,
-            tendons,
+            pieces,
         }
     }
 
@@ -104,18 +105,23 @@ impl Room {
         self.texts.insert([from, to, to, from]);
     }
 
-    /// Pieces of tendon lines within reach of a place, in the floor's order.
-    pub(super) fn pieces_near(&self, place: Coord<f64>, reach_m: f64) -> Vec<Piece> {
+    /// Ends of the pieces of tendon lines within reach of a place whose tendon and direction are asked for, some of them
+    /// more than once.
+    pub(super) fn pieces_near(
+        &self,
+        place: Coord<f64>,
+        reach_m: f64,
+        asked: impl Fn(usize, f64) -> bool,
+    ) -> impl Iterator<Item = [Coord<f64>; 2]> {
         let quad = Spot::upright(place, 2.0 * reach_m, 2.0 * reach_m).quad(0.0);
-        self.lines
-            .near(&quad)
-            .into_iter()
-            .filter_map(|index| {
-                let [from, to, ..] = *self.lines.quad(index)?;
-                let tendon = *self.tendons.get(index)?;
-                Some(Piece { tendon, from, to })
-            })
-            .collect()
+        let pieces = move |index| {
+            let piece = self.pieces.get(index);
+            piece.is_some_and(|piece: &Piece| asked(piece.tendon, piece.heading_rad))
+        };
+        self.lines.touching(quad, pieces).filter_map(|index| {
+            let [from, to, ..] = *self.lines.quad(index)?;
+            Some([from, to])
+        })
     }
 }
 
@@ -146,8 +152,12 @@ impl Spot {
     /// Its corners, grown on all sides.
     pub(super) fn quad(&self, grow_m: f64) -> Quad {
         let (across, along) = (self.height_m / 2.0 + grow_m, self.width_m / 2.0 + grow_m);
-        let up = self.rotation_rad + std::f64::consts::FRAC_PI_2;
-        let corner = |a: f64, b: f64| step(step(self.centre, self.rotation_rad, a), up, b);
+        let (sin, cos) = self.rotation_rad.sin_cos();
+        let (sin_up, cos_up) = (self.rotation_rad + std::f64::consts::FRAC_PI_2).sin_cos();
+        let corner = |a: f64, b: f64| Coord {
+            x: self.centre.x + a * cos + b * cos_up,
+            y: self.centre.y + a * sin + b * sin_up,
+        };
         [
             corner(-along, -across),
             corner(along, -across),

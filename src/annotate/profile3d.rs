@@ -11,12 +11,14 @@ pub(super) fn curves(analysis: &Analysis) -> Vec<Mark> {
         .iter()
         .filter(|result| result.profile.is_some())
         .filter_map(|result| {
-            let points: Vec<[f64; 3]> = result
+            let mut points: Vec<[f64; 3]> = result
                 .samples
                 .iter()
                 .map(|sample| [sample.place.x, sample.place.y, sample.level_m])
                 .filter(|point| point.iter().all(|value| value.is_finite()))
                 .collect();
+            // An intermediate anchor has two samples.
+            points.dedup();
             (points.len() > 1).then(|| layers::mark(layers::PROFILE, Drawn::Line3d { points }))
         })
         .collect()

@@ -203,9 +203,7 @@ fn row(
         words::name(&tendon.mark),
         strands(tendon, job),
         job.units.of(LONG).figure(tendon.path.length_m(), 2),
-        [first, second]
-            .map(|at| end_word(&tendon.ends[at]))
-            .join("-"),
+        ends(tendon, [first, second]),
         whole(forces.map(|forces| forces.jack_kn)),
         whole(least_kn),
         whole(forces.and_then(|forces| Some(forces.later?.mean_service_kn))),
@@ -248,6 +246,16 @@ fn strands(tendon: &Tendon, job: &Job) -> String {
     let size = size.map(words::name);
     let size = size.map(|size| format!("-{size}")).unwrap_or_default();
     format!("{times}{strands}{size}")
+}
+
+/// `live-dead`; with the number of intermediate anchors between, if there are any.
+fn ends(tendon: &Tendon, in_order: [usize; 2]) -> String {
+    let words = in_order.map(|at| end_word(&tendon.ends[at])).join("-");
+    match tendon.joints.len() {
+        0 => words,
+        1 => format!("{words}, 1 joint"),
+        more => format!("{words}, {more} joints"),
+    }
 }
 
 fn end_word(end: &End) -> &'static str {

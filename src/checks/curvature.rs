@@ -1,11 +1,13 @@
 //! What the angles alone take from a tendon.
 
 use super::Worked;
+use super::pulls::Pulled;
+use super::words::{also_at, worst_of};
 use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::EndKind;
 use crate::job::Job;
-use crate::losses::Forces;
-use crate::profile::Profile;
+use crate::losses::{Forces, Pull};
+use crate::profile::{Profile, SAME_PLACE_M, Segment};
 use crate::units::{FORCE, TURN, Units};
 
 /// See [`Rule::meaning`].
@@ -29,9 +31,21 @@ pub struct Turning {
     pub angle_per_m_rad: f64,
 }
 
-/// How a tendon turns, from its curve and forces; `None` where the point of least force is the jack itself.
+/// How a tendon turns, from its curve and forces; `None` where the point of least force is the jack itself. Of several pulls,
+/// the one that leaves least while it is jacked.
 pub fn turning(profile: &Profile, forces: &Forces) -> Option<Turning> {
-    let least_m = forces.least_jacking_station_m;
+    match Pull::governing(&forces.pulls) {
+        Some(pull) => turned(profile, pull.stations_m[0], &pull.forces),
+        None => turned(profile, 0.0, forces),
+    }
+}
+
+/// The same of one pull, which starts at a station of the curve.
+fn turned(profile: &Profile, from_m: f64, forces: &Forces) -> Option<Turning> {
+    let own = |segment: &&Segment| (segment.from_m - from_m).abs() <= SAME_PLACE_M;
+    let segment = profile.segments().iter().find(own);
+    let profile = segment.map_or(profile, |segment| &segment.curve);
+    let least_m = forces.least_jacking_station_m - from_m;
     let from_start_rad = forces.least_jacking_angle_rad;
     let (angle_rad, distance_m) = if forces.ends[0].kind == EndKind::Live {
         (from_start_rad, least_m)
@@ -52,13 +66,25 @@ pub fn turning(profile: &Profile, forces: &Forces) -> Option<Turning> {
 }
 
 pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
-    let (forces, turning) = (worked.forces?, worked.turning?);
     let limits = &job.limits;
-    let costly = turning.loss_ratio > limits.curvature_loss_ratio + ROUNDING;
-    let winding = turning.angle_per_m_rad > limits.angle_per_m_rad + ROUNDING;
-    if !costly && !winding {
-        return None;
-    }
+    let costly = |turning: &Turning| turning.loss_ratio > limits.curvature_loss_ratio + ROUNDING;
+    let winding = |turning: &Turning| turning.angle_per_m_rad > limits.angle_per_m_rad + ROUNDING;
+    let own = |pull: Pulled<'_>| {
+        if pull.of_several {
+            turned(worked.profile?, pull.stations_m[0], pull.forces)
+        } else {
+            worked.turning
+        }
+    };
+    let beyond: Vec<_> = worked
+        .pulls()
+        .into_iter()
+        .filter_map(|pull| Some((pull, own(pull)?)))
+        .filter(|(_, turning)| costly(turning) || winding(turning))
+        .collect();
+    let least_m = |(pull, _): &(Pulled<'_>, Turning)| pull.forces.least_jacking_station_m;
+    let ((pull, turning), others) = worst_of(beyond, |(_, turning)| turning.loss_ratio, least_m)?;
+    let (forces, costly, winding) = (pull.forces, costly(&turning), winding(&turning));
     let expected = |units: Units| {
         let mut expected = Vec::new();
         if costly {
@@ -82,22 +108,31 @@ pub(super) fn curvature_loss(worked: &Worked, job: &Job) -> Option<Finding> {
         Wording::of(|units| {
             let force = units.of(FORCE);
             format!(
-                "down to the point of least force the tendon turns {:.3} rad, {}, which alone takes {:.1} % of the jacking \
-                 force ({} of {}); {} was expected",
+                "down to the point of least force{} the tendon turns {:.3} rad, {}, which alone takes {:.1} % of the jacking \
+                 force ({} of {}); {} was expected{}",
+                pull.of_segment(units),
                 turning.angle_rad,
                 units.of(TURN).said(turning.angle_per_m_rad, 4),
                 100.0 * turning.loss_ratio,
                 force.said(forces.totals.friction_curvature_kn, 1),
                 force.said(forces.jack_kn, 1),
-                expected(units)
+                expected(units),
+                also_at(&others, units)
             )
         }),
-        if forces.both_live() {
-            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
-             straighten the sweeps in plan, or divide the tendon at a pour joint; it is stressed from both ends already"
-        } else {
-            "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
-             straighten the sweeps in plan, or stress from both ends"
+        match (pull.of_several, forces.both_live()) {
+            (true, _) => {
+                "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+                 straighten the sweeps in plan, or move the pour joints so that the segment is shorter"
+            }
+            (false, true) => {
+                "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+                 straighten the sweeps in plan, or divide the tendon at a pour joint; it is stressed from both ends already"
+            }
+            (false, false) => {
+                "look for a height read wrong first; then flatten the drape where it balances more load than it should, \
+                 straighten the sweeps in plan, or stress from both ends"
+            }
         },
     ))
 }
@@ -109,7 +144,7 @@ mod tests {
     use crate::geometry::Path;
     use crate::job::LongTermMethod;
     use crate::losses::long_term::{Turn, When};
-    use crate::losses::{Along, Effective, Friction, Stressed, faces_by_points};
+    use crate::losses::{Along, Effective, Friction, Pulls, faces_by_points};
 
     fn found(loss_ratio: f64, drop_m: f64) -> Option<Finding> {
         let (tendon, mut forces) = (straight(10.0), forces());
@@ -211,7 +246,7 @@ mod tests {
             let steel = forces().steel;
             for kinds in [[Live, Dead], [Dead, Live], [Live, Live]] {
                 let stressed =
-                    Stressed::new(&profile, steel, kinds, &job.stressing).expect("forces");
+                    Pulls::new(&profile, steel, kinds, 0, &job.stressing).expect("forces");
                 let in_slab = Along::new(&stressed, faces_by_points(&tendon));
                 let case = in_slab.case(&job.long_term, 1.2, Turn::of_many());
                 let (direct, when) = (LongTermMethod::Direct, When::Final);
@@ -224,7 +259,7 @@ mod tests {
                     (from_angle - turned.loss_ratio).abs() < 1e-9,
                     "{kinds:?}: {turned:?}"
                 );
-                let at_least_kn = stressed.jacking_kn(forces.least_jacking_station_m);
+                let at_least_kn = stressed.both_kn(forces.least_jacking_station_m)[0];
                 assert!((at_least_kn - forces.least_jacking_kn).abs() < 1e-9);
                 // From jack to jack φ is W; two jacks leave exp(−W/2) where they meet, one leaves exp(−W).
                 let whole = Friction::of(&job.stressing)

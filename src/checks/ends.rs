@@ -1,7 +1,8 @@
 //! What stands at the two ends.
 
 use super::Worked;
-use super::words::long;
+use super::pulls::Pulled;
+use super::words::{also_at, long, worst_of};
 use crate::finding::{Finding, Level, Rule, Wording};
 use crate::floor::EndKind;
 use crate::job::Job;
@@ -23,19 +24,27 @@ pub(super) fn no_live_end(worked: &Worked) -> Option<Finding> {
     if worked.end_kinds() != [Some(EndKind::Dead); 2] {
         return None;
     }
+    let text = if worked.tendon.joints.is_empty() {
+        "both ends carry a dead-end symbol, so there is nowhere to stress the tendon from; at least one live end was \
+         expected, and no forces were worked out"
+    } else {
+        "both ends carry a dead-end symbol: stressed from joint to joint, the last segment has no end that a jack can reach; \
+         at least one live end was expected, and no forces were worked out"
+    };
     Some(worked.finding(
         &NO_LIVE_END,
         Level::Error,
         0.0,
-        "both ends carry a dead-end symbol, so there is nowhere to stress the tendon from; at least one live end was \
-         expected, and no forces were worked out"
-            .to_owned(),
+        text,
         "change the symbol at the end that a jack can reach into a live end, or correct the block names of live and dead \
          ends in the job file (ends.live_blocks, ends.dead_blocks)",
     ))
 }
 
 pub(super) fn one_end_length(worked: &Worked, job: &Job) -> Option<Finding> {
+    if !worked.tendon.joints.is_empty() {
+        return one_end_segment(worked, job);
+    }
     let [start_m, end_m] = worked.end_stations_m();
     let dead_m = match worked.end_kinds() {
         [Some(EndKind::Live), Some(EndKind::Dead)] => end_m,
@@ -59,6 +68,33 @@ pub(super) fn one_end_length(worked: &Worked, job: &Job) -> Option<Finding> {
         }),
         "make the dead end a live end and stress from both, or stop the tendon at a pour joint with an intermediate \
          anchor; where the end has to stay dead, let the engineer accept the force that is left there",
+    ))
+}
+
+/// The same of the segments of a tendon in several pours.
+fn one_end_segment(worked: &Worked, job: &Job) -> Option<Finding> {
+    let limit_m = job.limits.one_end_length_m;
+    let mut long_ones = worked.pulls();
+    long_ones.retain(|pull| pull.one_jack().is_some() && pull.length_m() > limit_m);
+    let fixed_m = |pull: &Pulled| {
+        pull.one_jack()
+            .map_or(0.0, |(_, fixed)| pull.stations_m[fixed])
+    };
+    let (worst, others) = worst_of(long_ones, Pulled::length_m, fixed_m)?;
+    Some(worked.finding(
+        &ONE_END_LENGTH,
+        Level::Warning,
+        fixed_m(&worst),
+        Wording::of(|units| {
+            format!(
+                "{}{}, stressed from one end; up to {} was expected (limits.one_end_length_m){}",
+                long(worst.length_m(), units),
+                worst.of_segment(units),
+                units.of(LONG).given(limit_m),
+                also_at(&others, units)
+            )
+        }),
+        "divide the segment at a further pour joint, or let the engineer accept the force that is left at its fixed anchor",
     ))
 }
 

@@ -27,6 +27,13 @@ pub static HOGGING_RADIUS: Rule = Rule {
               at least limits.hogging_radius_warning_m (common practice: 2.5 m and 5 m for flat ducts).",
 };
 
+/// See [`Rule::meaning`].
+pub static SAGGING_RADIUS: Rule = Rule {
+    name: "sagging-radius",
+    meaning: "At a low point the curve's least radius, l (l − a)/(2h), is at least limits.sagging_radius_error_m and should \
+              be at least limits.sagging_radius_warning_m (as over a high point: a duct kinks whichever way it is bent).",
+};
+
 /// Radii nearer to their limit than this are at it, metres.
 const ROUNDING_M: f64 = 1e-6;
 
@@ -114,55 +121,86 @@ fn in_a_row(
 
 pub(super) fn hogging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
     let limits = &job.limits;
-    let tight: Vec<(f64, f64)> = worked
-        .profile?
-        .spans
-        .iter()
-        .filter(|span| span.curvature_per_m < 0.0)
-        .map(|span| (crest_m(span), -1.0 / span.curvature_per_m))
-        .filter(|&(_, radius_m)| radius_m < limits.hogging_radius_warning_m - ROUNDING_M)
-        .collect();
-    // Both sides of one high point, and pieces cut where the plan line turns, are one place.
-    let mut crests: Vec<(f64, f64)> = Vec::new();
-    for next in tight {
-        match crests.last_mut() {
-            Some(last) if (next.0 - last.0).abs() < ONE_CREST_M => last.1 = last.1.min(next.1),
-            _ => crests.push(next),
-        }
-    }
-    let ((station_m, radius_m), others) = worst_of(crests, |c| -c.1, |c| c.0)?;
-    let (level, limit_m, key) = if radius_m < limits.hogging_radius_error_m - ROUNDING_M {
-        (
-            Level::Error,
-            limits.hogging_radius_error_m,
-            "limits.hogging_radius_error_m",
-        )
-    } else {
-        (
-            Level::Warning,
-            limits.hogging_radius_warning_m,
-            "limits.hogging_radius_warning_m",
-        )
+    let bend = Bend {
+        rule: &HOGGING_RADIUS,
+        word: "hogging",
+        sign: -1.0,
+        error_m: limits.hogging_radius_error_m,
+        warning_m: limits.hogging_radius_warning_m,
+        remedy: "lower the high point, raise the low points beside it, or spread the hogging curve over more of the span \
+                 (profile.inflection); a duct bent tighter kinks and its friction is more than was worked out",
     };
-    Some(worked.finding(
-        &HOGGING_RADIUS,
-        level,
-        station_m,
-        Wording::of(|units| {
-            format!(
-                "the curve has a hogging radius of {}; at least {} was expected ({key}){}",
-                long(radius_m, units),
-                units.of(LONG).given(limit_m),
-                also_at(&others, units)
-            )
-        }),
-        "lower the high point, raise the low points beside it, or spread the hogging curve over more of the span \
-         (profile.inflection); a duct bent tighter kinks and its friction is more than was worked out",
-    ))
+    bend.found(worked)
 }
 
-/// Where a hogging parabola is level, metres of plan line; also where only a part of it is this piece.
-fn crest_m(span: &Span) -> f64 {
+pub(super) fn sagging_radius(worked: &Worked, job: &Job) -> Option<Finding> {
+    let limits = &job.limits;
+    let bend = Bend {
+        rule: &SAGGING_RADIUS,
+        word: "sagging",
+        sign: 1.0,
+        error_m: limits.sagging_radius_error_m,
+        warning_m: limits.sagging_radius_warning_m,
+        remedy: "move the low point away from the high point or the anchor beside it, raise it, or leave the sagging curve \
+                 more of the span (profile.inflection); a duct bent tighter kinks and its friction is more than was worked out",
+    };
+    bend.found(worked)
+}
+
+/// A way to bend, and how tightly a duct may be bent so.
+struct Bend {
+    rule: &'static Rule,
+    word: &'static str,
+    /// Of the curvature.
+    sign: f64,
+    error_m: f64,
+    warning_m: f64,
+    remedy: &'static str,
+}
+
+impl Bend {
+    fn found(&self, worked: &Worked) -> Option<Finding> {
+        let tight = worked
+            .profile?
+            .spans
+            .iter()
+            .filter(|span| self.sign * span.curvature_per_m > 0.0)
+            .map(|span| (level_m(span), self.sign / span.curvature_per_m))
+            .filter(|&(_, radius_m)| radius_m < self.warning_m - ROUNDING_M);
+        // Both sides of one point, and pieces cut where the plan line turns, are one place.
+        let mut places: Vec<(f64, f64)> = Vec::new();
+        for next in tight {
+            match places.last_mut() {
+                Some(last) if (next.0 - last.0).abs() < ONE_CREST_M => last.1 = last.1.min(next.1),
+                _ => places.push(next),
+            }
+        }
+        let ((station_m, radius_m), others) = worst_of(places, |c| -c.1, |c| c.0)?;
+        let (level, limit_m, key) = if radius_m < self.error_m - ROUNDING_M {
+            (Level::Error, self.error_m, "error")
+        } else {
+            (Level::Warning, self.warning_m, "warning")
+        };
+        let word = self.word;
+        Some(worked.finding(
+            self.rule,
+            level,
+            station_m,
+            Wording::of(|units| {
+                format!(
+                    "the curve has a {word} radius of {}; at least {} was expected (limits.{word}_radius_{key}_m){}",
+                    long(radius_m, units),
+                    units.of(LONG).given(limit_m),
+                    also_at(&others, units)
+                )
+            }),
+            self.remedy,
+        ))
+    }
+}
+
+/// Where a parabola is level, metres of plan line; also where only a part of it is this piece.
+fn level_m(span: &Span) -> f64 {
     span.start_m - span.slope / span.curvature_per_m
 }
 
@@ -258,6 +296,31 @@ mod tests {
             level_at(limits.hogging_radius_error_m - 0.01),
             Some(Level::Error)
         );
+    }
+
+    #[test]
+    fn sagging_radius_warns_and_errs_at_its_limits() {
+        let tendon = straight(10.0);
+        // Radius at the low point l (l - a)/(2h), l = 5 m, h = 0.1 m.
+        let level_at = |radius_m: f64| {
+            let profile = high_to_low(5.0, 0.1, 5.0 - radius_m * 2.0 * 0.1 / 5.0);
+            let mut worked = worked(&tendon);
+            worked.profile = Some(&profile);
+            assert_eq!(hogging_radius(&worked, &job()), None);
+            sagging_radius(&worked, &job()).map(|found| {
+                assert!(found.text.contains("sagging radius") && found.station_m == Some(5.0));
+                found.level
+            })
+        };
+        let limits = job().limits;
+        assert_eq!(level_at(limits.sagging_radius_warning_m + 0.01), None);
+        for (radius_m, level) in [
+            (limits.sagging_radius_warning_m - 0.01, Level::Warning),
+            (limits.sagging_radius_error_m + 0.01, Level::Warning),
+            (limits.sagging_radius_error_m - 0.01, Level::Error),
+        ] {
+            assert_eq!(level_at(radius_m), Some(level));
+        }
     }
 
     #[test]

@@ -1,9 +1,9 @@
 //! Jacking, lock-off and the force left along the tendon.
 
 use super::Worked;
-use super::words::{long, worst_of};
+use super::pulls::Pulled;
+use super::words::{also_at, long, worst_of};
 use crate::finding::{Finding, Level, Rule, Wording};
-use crate::floor::EndKind;
 use crate::job::Job;
 use crate::units::{FORCE, STRESS, Units};
 
@@ -93,20 +93,24 @@ pub(super) fn jacking_stress(job: &Job) -> Option<Finding> {
 }
 
 pub(super) fn anchor_stress(worked: &Worked, job: &Job) -> Option<Finding> {
-    let (forces, lock_off_kn) = (worked.forces?, worked.lock_off_kn?);
-    let steel = &forces.steel;
+    let pulls = worked.pulls();
+    let steel = &worked.forces?.steel;
     let limit = job.limits.anchor_stress_ratio;
-    let [start_m, end_m] = worked.end_stations_m();
-    let high: Vec<(f64, f64)> = [(start_m, lock_off_kn[0]), (end_m, lock_off_kn[1])]
-        .into_iter()
+    let anchors = pulls
+        .iter()
+        .filter_map(|pull| Some(pull.stations_m.into_iter().zip(pull.lock_off_kn?)));
+    let high: Vec<(f64, f64)> = anchors
+        .flatten()
         .map(|(station_m, force_kn)| (station_m, steel.stress_mpa(force_kn)))
         .filter(|&(_, stress_mpa)| stress_mpa > (limit + ROUNDING) * steel.strength_mpa)
         .collect();
-    let ((station_m, stress_mpa), others) = worst_of(high, |end| end.1, |end| end.0)?;
-    let both = if others.is_empty() {
-        ""
-    } else {
-        ", and the other anchor is above it too"
+    let ((station_m, stress_mpa), mut others) = worst_of(high, |end| end.1, |end| end.0)?;
+    others.dedup();
+    others.retain(|other_m| (other_m - station_m).abs() > 0.0);
+    let also = |units: Units| match (others.is_empty(), pulls.len()) {
+        (true, _) => String::new(),
+        (false, 1) => ", and the other anchor is above it too".to_owned(),
+        (false, _) => also_at(&others, units),
     };
     Some(worked.finding(
         &ANCHOR_STRESS,
@@ -116,10 +120,11 @@ pub(super) fn anchor_stress(worked: &Worked, job: &Job) -> Option<Finding> {
             let stress = units.of(STRESS);
             format!(
                 "after lock-off the strand at the anchor carries {}, {:.3} of its strength of {}; at most {limit:.3} was \
-                 expected (limits.anchor_stress_ratio; the default is ACI 318-19 20.3.2.5.1's, from memory){both}",
+                 expected (limits.anchor_stress_ratio; the default is ACI 318-19 20.3.2.5.1's, from memory){}",
                 stress.said(stress_mpa, 0),
                 stress_mpa / steel.strength_mpa,
-                stress.said(steel.strength_mpa, 0)
+                stress.said(steel.strength_mpa, 0),
+                also(units)
             )
         }),
         "jack to less, or seat the wedges with the draw-in that the system really has: a small draw-in leaves the anchor too \
@@ -128,23 +133,31 @@ pub(super) fn anchor_stress(worked: &Worked, job: &Job) -> Option<Finding> {
 }
 
 pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
-    let forces = worked.forces?;
-    let ratio = forces.least_jacking_kn / forces.jack_kn;
     let limit = job.limits.far_end_ratio;
-    if ratio.is_nan() || ratio >= limit - ROUNDING {
-        return None;
-    }
-    let (place, remedy) = if forces.both_live() {
-        (
-            "between its two live ends",
-            "flatten the profile or the sweeps, or divide the tendon at a pour joint; it is stressed from both ends already",
-        )
+    let ratio = |pull: &Pulled| pull.forces.least_jacking_kn / pull.forces.jack_kn;
+    let mut low = worked.pulls();
+    low.retain(|pull| !ratio(pull).is_nan() && ratio(pull) < limit - ROUNDING);
+    let least_m = |pull: &Pulled| pull.forces.least_jacking_station_m;
+    let (worst, others) = worst_of(low, |pull| -ratio(pull), least_m)?;
+    let (forces, ratio) = (worst.forces, ratio(&worst));
+    let both_live = forces.both_live();
+    let place = if both_live {
+        "between its two live ends"
     } else {
-        (
-            "at its far end",
+        "at its far end"
+    };
+    let remedy = match (worst.of_several, both_live) {
+        (true, _) => {
+            "flatten the profile or the sweeps, or move the pour joints so that the segment is shorter; check the friction \
+             numbers of the job first"
+        }
+        (false, true) => {
+            "flatten the profile or the sweeps, or divide the tendon at a pour joint; it is stressed from both ends already"
+        }
+        (false, false) => {
             "stress from both ends, flatten the profile or the sweeps, or shorten the tendon; check the friction numbers of \
-             the job first",
-        )
+             the job first"
+        }
     };
     Some(worked.finding(
         &FAR_END_FORCE,
@@ -153,10 +166,12 @@ pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
         Wording::of(|units| {
             let force = units.of(FORCE);
             format!(
-                "{} of the {} jacked are left {place}, {ratio:.3} of it; at least {limit:.3} was expected \
-                 (limits.far_end_ratio)",
+                "{} of the {} jacked are left {place}{}, {ratio:.3} of it; at least {limit:.3} was expected \
+                 (limits.far_end_ratio){}",
                 force.said(forces.least_jacking_kn, 1),
-                force.said(forces.jack_kn, 1)
+                force.said(forces.jack_kn, 1),
+                worst.of_segment(units),
+                also_at(&others, units)
             )
         }),
         remedy,
@@ -164,37 +179,45 @@ pub(super) fn far_end_force(worked: &Worked, job: &Job) -> Option<Finding> {
 }
 
 pub(super) fn draw_in_reaches_dead_end(worked: &Worked) -> Option<Finding> {
-    let forces = worked.forces?;
-    let [start_m, end_m] = worked.end_stations_m();
-    let ends = &forces.ends;
-    let (live, dead_m, dead_kn) = match (ends[0].kind, ends[1].kind) {
-        (EndKind::Live, EndKind::Dead) => (&ends[0], end_m, worked.lock_off_kn.map(|kn| kn[1])),
-        (EndKind::Dead, EndKind::Live) => (&ends[1], start_m, worked.lock_off_kn.map(|kn| kn[0])),
-        _ => return None,
+    let mut reached = worked.pulls();
+    reached.retain(|pull| {
+        pull.one_jack()
+            .is_some_and(|(live, _)| live.draw_in_reaches_far)
+    });
+    let fixed_m = |pull: &Pulled| {
+        pull.one_jack()
+            .map_or(0.0, |(_, fixed)| pull.stations_m[fixed])
     };
-    if !live.draw_in_reaches_far {
-        return None;
-    }
+    // The shortest suffers most.
+    let (worst, others) = worst_of(reached, |pull| -pull.length_m(), fixed_m)?;
+    let (_, fixed) = worst.one_jack()?;
     let left = |units: Units| {
         let force = |force_kn: f64| units.of(FORCE).said(force_kn, 1);
-        dead_kn.map_or(String::new(), |dead_kn| {
+        worst.lock_off_kn.map_or(String::new(), |lock_off_kn| {
             format!(
                 ", where {} of the {} jacked are left after lock-off",
-                force(dead_kn),
-                force(forces.jack_kn)
+                force(lock_off_kn[fixed]),
+                force(worst.forces.jack_kn)
             )
         })
+    };
+    let end = if worst.of_several {
+        "fixed anchor"
+    } else {
+        "dead end"
     };
     Some(worked.finding(
         &DRAW_IN_REACHES_DEAD_END,
         Level::Warning,
-        dead_m,
+        worst.stations_m[fixed],
         Wording::of(|units| {
             format!(
-                "the draw-in is felt along the whole {}, as far as the dead end{}; it was expected to die out before it \
-                 (stressing.draw_in_mm)",
-                long(end_m - start_m, units),
-                left(units)
+                "the draw-in is felt along the whole {}{}, as far as the {end}{}; it was expected to die out before it \
+                 (stressing.draw_in_mm){}",
+                long(worst.length_m(), units),
+                worst.of_segment(units),
+                left(units),
+                also_at(&others, units)
             )
         }),
         "make sure that the force worked out for this short tendon is the one the design counts on; power seating or shims \
@@ -206,6 +229,7 @@ pub(super) fn draw_in_reaches_dead_end(worked: &Worked) -> Option<Finding> {
 mod tests {
     use super::super::testing::{forces, job, straight, worked};
     use super::*;
+    use crate::floor::EndKind;
 
     #[test]
     fn the_job_may_jack_to_the_lower_of_both_limits() {

@@ -43,6 +43,7 @@ pub(super) fn along(path: Path) -> Tendon {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [
             end(EndKind::Live, path.start()),
             end(EndKind::Dead, path.end()),
@@ -125,6 +126,7 @@ pub(super) fn forces() -> Forces {
         least_jacking_kn: 640.0,
         least_jacking_station_m: 20.0,
         least_jacking_angle_rad: 0.0,
+        pulls: Vec::new(),
     }
 }
 

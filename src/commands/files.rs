@@ -1,6 +1,5 @@
 //! Files in and out: whole files, each complete or not at all.
 
-use std::borrow::Cow;
 use std::fs;
 use std::io::{self, Write as _};
 use std::path::{Path, PathBuf};
@@ -8,9 +7,6 @@ use std::path::{Path, PathBuf};
 use tempfile::NamedTempFile;
 
 use super::Refused;
-
-/// A file's contents, piece by piece.
-pub(super) type Pieces<'a> = Vec<Cow<'a, [u8]>>;
 
 /// A file's bytes.
 pub(super) fn read(path: &Path) -> Result<Vec<u8>, Refused> {
@@ -72,29 +68,43 @@ pub(super) fn prepare(folder: &Path) -> Result<(), Refused> {
     })
 }
 
-/// Writes these files, each complete or not at all: all are complete on disk before the first takes its name, so that
-/// none is written unless there is room for all. Should a name then be refused to one, those before it have theirs.
-pub(super) fn write_all(files: &[(PathBuf, Pieces<'_>)]) -> Result<(), Refused> {
-    let mut ready = Vec::with_capacity(files.len());
-    for (path, pieces) in files {
-        let unwritable = |error| Refused::Unwritable {
-            path: path.clone(),
-            error,
-        };
-        if path.is_dir() {
-            return Err(unwritable(io::ErrorKind::IsADirectory.into()));
-        }
-        let mut file = temporary(&folder_of(path)).map_err(unwritable)?;
-        pieces
-            .iter()
-            .try_for_each(|bytes| file.write_all(bytes))
-            .and_then(|()| file.flush())
-            .map_err(unwritable)?;
-        ready.push((path, file));
+/// A file that is complete on disk and has yet to take its name; without one it vanishes.
+#[derive(Debug)]
+pub(super) struct Nameless {
+    path: PathBuf,
+    file: NamedTempFile,
+}
+
+/// Writes a file that is still without its name, piece by piece.
+pub(super) fn write<P: AsRef<[u8]>>(
+    path: &Path,
+    pieces: impl IntoIterator<Item = P>,
+) -> Result<Nameless, Refused> {
+    let unwritable = |error| Refused::Unwritable {
+        path: path.to_owned(),
+        error,
+    };
+    if path.is_dir() {
+        return Err(unwritable(io::ErrorKind::IsADirectory.into()));
     }
-    for (path, file) in ready {
-        file.persist(path).map_err(|refusal| Refused::Unwritable {
-            path: path.clone(),
+    let mut file = temporary(&folder_of(path)).map_err(unwritable)?;
+    pieces
+        .into_iter()
+        .try_for_each(|bytes| file.write_all(bytes.as_ref()))
+        .and_then(|()| file.flush())
+        .map_err(unwritable)?;
+    Ok(Nameless {
+        path: path.to_owned(),
+        file,
+    })
+}
+
+/// Gives these files their names: they are complete on disk before the first is named, so that none is written unless
+/// there is room for all. Should a name then be refused to one, those before it have theirs.
+pub(super) fn name(files: Vec<Nameless>) -> Result<(), Refused> {
+    for Nameless { path, file } in files {
+        file.persist(&path).map_err(|refusal| Refused::Unwritable {
+            path,
             error: refusal.error,
         })?;
     }

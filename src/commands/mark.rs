@@ -2,13 +2,15 @@
 
 use std::collections::BTreeMap;
 use std::ffi::OsString;
+use std::panic::resume_unwind;
 use std::path::{Path, PathBuf};
 
-use super::files::Pieces;
+use super::files::Nameless;
 use super::job_file::{self, JobFile};
-use super::work::work;
+use super::work::{Work, work};
 use super::{Outcome, Refused, files, refuse};
 use crate::finding::Level;
+use crate::job::Job;
 use crate::terminal::Terminal;
 use crate::{annotate, drawing, report};
 
@@ -73,31 +75,25 @@ fn mark(
 
     let job = &job_file.resolved.job;
     let analysis = &done.analysis;
-    let sheet = annotate::draw(analysis, &done.around, job);
-    let marked =
-        drawing::insertion(&done.source, done.facts.unit_m, &sheet).map_err(|refusal| {
-            Refused::Drawing {
-                path: plan.to_owned(),
-                refusal,
-            }
-        })?;
-    drop(sheet);
-    let contents: [Pieces<'_>; 7] = [
-        marked,
-        text(report::json(&done.facts, &job.inputs(), analysis)),
-        text(report::tendons_csv(analysis, job.units)),
-        text(report::points_csv(analysis, job.units)),
-        text(report::extensions_csv(analysis, job.units)),
-        text(report::methods_csv(analysis, job.units)),
-        text(report::findings_csv(analysis, job.units)),
-    ];
-    let written: Vec<(PathBuf, Pieces<'_>)> =
-        targets(plan, out).into_iter().zip(contents).collect();
-    files::write_all(&written)?;
+    let targets = targets(plan, out);
+    // Drawing and reports need nothing of one another.
+    let (marked, reports) = std::thread::scope(|scope| {
+        let reports = || write_reports(&targets, &done, job);
+        let beside = std::thread::Builder::new().spawn_scoped(scope, reports);
+        let marked = write_marked(&targets, plan, &done, job);
+        let reports = match beside {
+            Ok(thread) => thread.join().unwrap_or_else(|panic| resume_unwind(panic)),
+            Err(_) => reports(),
+        };
+        (marked, reports)
+    });
+    let mut written = vec![marked?];
+    written.extend(reports?);
+    files::name(written)?;
 
-    let names: Vec<String> = written
+    let names: Vec<String> = targets
         .iter()
-        .map(|(path, _)| path.display().to_string())
+        .map(|path| path.display().to_string())
         .collect();
     let summary = report::summary(&done.facts, analysis, job, &names);
     let printed = super::print(&summary, terminal);
@@ -109,23 +105,52 @@ fn mark(
     Ok(found.max(printed))
 }
 
-/// A text as a file's contents.
-fn text<'a>(text: String) -> Pieces<'a> {
-    vec![text.into_bytes().into()]
+/// The drawing with the answers on it.
+fn write_marked(
+    targets: &Targets,
+    plan: &Path,
+    done: &Work,
+    job: &Job,
+) -> Result<Nameless, Refused> {
+    let [target, ..] = targets;
+    let sheet = annotate::draw(&done.analysis, &done.around, job);
+    let marked =
+        drawing::insertion(&done.source, done.facts.unit_m, &sheet).map_err(|refusal| {
+            Refused::Drawing {
+                path: plan.to_owned(),
+                refusal,
+            }
+        })?;
+    drop(sheet);
+    files::write(target, marked)
+}
+
+/// Everything but the drawing, each text let go once it is written.
+fn write_reports(targets: &Targets, done: &Work, job: &Job) -> Result<Vec<Nameless>, Refused> {
+    let (analysis, units) = (&done.analysis, job.units);
+    let [_, result, tendons, points, extensions, methods, findings] = targets;
+    let write = |path: &Path, text: String| files::write(path, [text]);
+    Ok(vec![
+        write(result, report::json(&done.facts, &job.inputs(), analysis))?,
+        write(tendons, report::tendons_csv(analysis, units))?,
+        write(points, report::points_csv(analysis, units))?,
+        write(extensions, report::extensions_csv(analysis, units))?,
+        write(methods, report::methods_csv(analysis, units))?,
+        write(findings, report::findings_csv(analysis, units))?,
+    ])
 }
 
 /// Where a drawing's results go, in the order of [`ENDINGS`].
-fn targets(plan: &Path, out: Option<&Path>) -> Vec<PathBuf> {
+type Targets = [PathBuf; ENDINGS.len()];
+
+fn targets(plan: &Path, out: Option<&Path>) -> Targets {
     let stem = plan.file_stem().unwrap_or_default();
     let folder = out.or_else(|| plan.parent()).unwrap_or(Path::new(""));
-    ENDINGS
-        .iter()
-        .map(|ending| {
-            let mut name = OsString::from(stem);
-            name.push(ending);
-            folder.join(name)
-        })
-        .collect()
+    ENDINGS.map(|ending| {
+        let mut name = OsString::from(stem);
+        name.push(ending);
+        folder.join(name)
+    })
 }
 
 /// Before anything is written: no two drawings write one file, and no result takes an input's place.

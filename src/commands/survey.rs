@@ -11,11 +11,16 @@ use crate::terminal::Terminal;
 mod at_ends;
 mod contents;
 mod directions;
+mod extents;
+mod gaps;
 mod labels;
+mod notes;
+mod picked;
 mod proposals;
 mod readings;
 mod roles;
 mod symbols;
+mod trial;
 mod words;
 
 use contents::Contents;
@@ -43,7 +48,7 @@ pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
     let written = if files::exists(path) {
         Err(Refused::Exists(path.clone()))
     } else {
-        files::write_all(&[(path.clone(), vec![text.into_bytes().into()])])
+        files::write(path, [text.as_bytes()]).and_then(|file| files::name(vec![file]))
     };
     match written {
         Ok(()) => {
@@ -71,8 +76,25 @@ fn survey(order: &Order) -> Result<String, Refused> {
     let contents = Contents::of(&drawing, job);
     let name = order.plan.file_name().unwrap_or(order.plan.as_os_str());
     let head = words::head(&name.to_string_lossy(), &drawing, &contents, &findings, job);
-    Ok(job::file(
-        &head,
-        &proposals::proposals(&drawing, &contents, &job_file),
-    ))
+    let mut proposed = proposals::proposals(&drawing, &contents, &job_file);
+    if let Some(unit) = proposed
+        .get("drawing.unit")
+        .filter(|_| job.conventions.unit.is_none())
+    {
+        // What stands within reach of what is another matter in another unit.
+        let unit = unit.clone();
+        let mut by_unit = job_file.clone();
+        by_unit.resolved.job.conventions.unit = serde_json::from_value(unit.value.clone()).ok();
+        let job = &by_unit.resolved.job;
+        let (drawing, _) = work::read(
+            &order.plan,
+            &source,
+            &Wanted::everything(),
+            job,
+            Purpose::Survey,
+        )?;
+        proposed = proposals::proposals(&drawing, &Contents::of(&drawing, job), &by_unit);
+        proposed.insert("drawing.unit".to_owned(), unit);
+    }
+    Ok(job::file(&head, &proposed))
 }

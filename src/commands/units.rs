@@ -34,6 +34,11 @@ pub(super) fn plausible(median_m: f64) -> bool {
     (SHORTEST_M..=LONGEST_M).contains(&median_m)
 }
 
+/// Whether half of the tendons are of a length that most floors have.
+pub(super) fn usual(median_m: f64) -> bool {
+    USUAL_M.contains(&median_m)
+}
+
 /// Units in which this median, read with `unit_m` metres to the unit, would be a usual length: each with that length.
 pub(super) fn sensible(median_m: f64, unit_m: f64) -> Vec<(LengthUnit, f64)> {
     UNITS

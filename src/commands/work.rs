@@ -15,7 +15,7 @@ use crate::report::DrawingFacts;
 /// A floor worked out, and the drawing that it came from.
 #[derive(Debug)]
 pub(super) struct Work {
-    /// The drawing as it came.
+    /// The drawing as it came, for marks to be put in.
     pub(super) source: Source,
     /// What reports say of it.
     pub(super) facts: DrawingFacts,
@@ -55,7 +55,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
             texts: drawing.texts.iter().map(|text| text.corners).collect(),
             extent: drawing.extent,
         },
-        source,
+        source: source.for_insertion(),
         analysis,
     })
 }

@@ -1,81 +1,20 @@
 //! Records rewritten so that the DXF library reads them right: only the groups that are used, as UTF-8 in ASCII form,
 //! every number checked, every record under a number of our own in place of its handle.
 
+mod groups;
+mod kept;
+mod record;
+
 use std::io::Write as _;
 
 use super::code_page::CodePage;
 use super::handles::parse_handle;
 use super::scan::{Entry, Scan};
 use super::tags::{Form, Tag, Tags};
+use groups::{Use, used};
+use record::{Open, lacking};
 
-/// What the library loses of a record, kept beside it.
-#[derive(Debug, Clone, Default)]
-pub(super) struct Kept {
-    /// Number of the record's layer.
-    pub(super) layer: u32,
-    /// The record's number among its neighbours.
-    pub(super) number: u32,
-    /// Handle, upper-case hexadecimal without leading zeros.
-    pub(super) handle: Option<String>,
-    /// Number of the block's name, for an insert.
-    pub(super) block: u32,
-    /// An insert's attributes, in order.
-    pub(super) attributes: Vec<KeptAttribute>,
-    /// Offset of the record in the file.
-    pub(super) start: usize,
-    /// Colour and linetype as written.
-    pub(super) worn: Worn,
-}
-
-/// An insert's attribute: what the library loses of it.
-#[derive(Debug, Clone, Default)]
-pub(super) struct KeptAttribute {
-    /// Layer as written.
-    pub(super) layer: Option<Vec<u8>>,
-    /// Handle as for [`Kept`].
-    pub(super) handle: Option<String>,
-    /// Colour and linetype as written.
-    pub(super) worn: Worn,
-}
-
-/// Colour and linetype as an entity writes them; what it leaves out is its layer's.
-#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
-pub(super) struct Worn {
-    /// Group 62: 0 by block, 256 by layer.
-    pub(super) colour: Option<i64>,
-    /// Whether group 420 gives a true colour.
-    pub(super) true_colour: bool,
-    /// Where in the file the linetype's name stands: first byte and past the last.
-    pub(super) linetype: Option<(usize, usize)>,
-}
-
-impl Worn {
-    /// Takes note of a group that says colour or linetype.
-    pub(super) fn note(&mut self, tag: &Tag<'_>) {
-        match tag.code {
-            6 => {
-                let name = tag.value_range();
-                self.linetype = Some((name.start, name.end));
-            }
-            62 => self.colour = tag.integer(),
-            420 => self.true_colour = true,
-            _ => {}
-        }
-    }
-}
-
-/// Why a record was left out.
-#[derive(Debug, Clone)]
-pub(super) struct Damage {
-    /// What was left out.
-    pub(super) kept: Kept,
-    /// Type name.
-    pub(super) type_name: String,
-    /// Offset of the trouble in the file.
-    pub(super) at: usize,
-    /// What was found and what was expected.
-    pub(super) found: String,
-}
+pub(super) use kept::{Damage, Kept, KeptAttribute, Worn};
 
 /// A stream of cleaned records for the library.
 #[derive(Debug)]
@@ -94,15 +33,6 @@ pub(super) const NOWHERE: i32 = 64;
 
 const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
 const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
-
-/// How a group is passed on.
-#[derive(Clone, Copy, PartialEq, Eq)]
-enum Use {
-    Skip,
-    Number,
-    Short,
-    Text,
-}
 
 impl<'a> Cleaner<'a> {
     /// An empty stream from a drawing.
@@ -354,129 +284,6 @@ impl<'a> Cleaner<'a> {
         }
         self.stream.push(b'\n');
     }
-}
-
-/// The record being rewritten.
-#[derive(Default)]
-#[expect(
-    clippy::struct_excessive_bools,
-    reason = "each is a fact of its own about the record"
-)]
-struct Open<'a> {
-    type_name: &'a [u8],
-    start: usize,
-    in_group: bool,
-    /// Nothing that follows belongs to the record proper.
-    past: bool,
-    columns: bool,
-    justified: bool,
-    /// Group 2 has been seen, and is not empty.
-    named: bool,
-    last_direction: i32,
-    /// The second coordinate that a vertex still lacks.
-    half: Option<i32>,
-    /// Which of the groups 10, 20, 11, 21, 40, 50, 51 have been seen.
-    seen: u8,
-}
-
-const NOTED: [i32; 7] = [10, 20, 11, 21, 40, 50, 51];
-
-impl Open<'_> {
-    fn note(&mut self, code: i32) {
-        if let Some(bit) = NOTED.iter().position(|noted| *noted == code) {
-            self.seen |= 1 << bit;
-        }
-        if matches!(code, 11 | 50) {
-            self.last_direction = code;
-        }
-    }
-
-    fn has(&self, code: i32) -> bool {
-        NOTED
-            .iter()
-            .position(|noted| *noted == code)
-            .is_some_and(|bit| self.seen & (1 << bit) != 0)
-    }
-
-    /// Holds each vertex of a list to both its coordinates: the library would make up the other, or move the vertex
-    /// before.
-    fn pair(&mut self, code: i32) -> Result<(), String> {
-        let listed = match self.type_name {
-            b"LWPOLYLINE" => matches!(code, 10 | 20),
-            b"SPLINE" => matches!(code, 10 | 11 | 20 | 21),
-            _ => false,
-        };
-        if !listed {
-            return Ok(());
-        }
-        match self.half.take() {
-            Some(second) if second != code => Err(lacking(second)),
-            None if code >= 20 => Err(lacking(code - 10)),
-            None => {
-                self.half = Some(code + 10);
-                Ok(())
-            }
-            Some(_) => Ok(()),
-        }
-    }
-
-    /// Groups that mean something else where they stand.
-    fn leaves_out(&self, code: i32) -> bool {
-        match self.type_name {
-            b"LWPOLYLINE" => matches!(code, 20 | 42) && !self.has(10),
-            b"MTEXT" => code == 50 && self.columns,
-            _ => false,
-        }
-    }
-}
-
-/// Which groups of a record are passed on.
-fn used(type_name: &[u8], code: i32) -> Use {
-    let number = match type_name {
-        b"LINE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31),
-        b"ARC" => matches!(code, 10 | 20 | 30 | 40 | 50 | 51),
-        b"CIRCLE" => matches!(code, 10 | 20 | 30 | 40),
-        b"SOLID" | b"TRACE" => matches!(code, 10..=13 | 20..=23 | 30),
-        b"LWPOLYLINE" => matches!(code, 10 | 20 | 38 | 42),
-        b"POLYLINE" => matches!(code, 10 | 20 | 30),
-        b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
-        b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
-        b"TEXT" | b"ATTRIB" | b"ATTDEF" => {
-            matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50 | 51)
-        }
-        b"MTEXT" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 44 | 50),
-        b"INSERT" => matches!(code, 10 | 20 | 30 | 41..=45 | 50),
-        _ => false,
-    };
-    let flat = !matches!(type_name, b"LINE" | b"VERTEX");
-    if number || (flat && matches!(code, 210 | 220 | 230)) {
-        return Use::Number;
-    }
-    let short = match type_name {
-        b"LWPOLYLINE" | b"POLYLINE" | b"VERTEX" => code == 70,
-        b"SPLINE" => matches!(code, 70 | 71),
-        b"TEXT" => matches!(code, 71..=73),
-        b"ATTRIB" => matches!(code, 70..=72 | 74),
-        b"ATTDEF" => matches!(code, 71 | 72 | 74),
-        b"MTEXT" => code == 71,
-        b"INSERT" => matches!(code, 70 | 71),
-        _ => false,
-    };
-    if short {
-        return Use::Short;
-    }
-    let text = match type_name {
-        b"TEXT" | b"ATTDEF" => code == 1,
-        b"MTEXT" => matches!(code, 1 | 3 | 7),
-        b"ATTRIB" => matches!(code, 1 | 2),
-        b"INSERT" => code == 2,
-        _ => false,
-    };
-    if text { Use::Text } else { Use::Skip }
-}
-
-fn lacking(code: i32) -> String {
-    format!("there is no group {code}, and a coordinate or size was expected")
 }
 
 fn expected(tag: &Tag<'_>, what: &str) -> String {

@@ -2,35 +2,51 @@
 
 use std::collections::HashMap;
 
-/// Counts being gathered; entities of one kind stand in runs, of which only the ends are looked up.
-#[derive(Debug, Default)]
+/// Counts being gathered; those of the pairs met lately stand in a small tally, and only where two pairs share a place
+/// in it is one looked up.
+#[derive(Debug)]
 pub(super) struct Counts {
     cells: HashMap<(u32, usize), usize>,
-    run: Option<((u32, usize), usize)>,
+    tally: Vec<((u32, usize), usize)>,
+}
+
+/// Places of the tally.
+const PLACES: usize = 1 << 10;
+
+impl Default for Counts {
+    fn default() -> Self {
+        Self {
+            cells: HashMap::new(),
+            tally: vec![((0, 0), 0); PLACES],
+        }
+    }
 }
 
 impl Counts {
     /// Counts one entity.
     #[inline]
     pub(super) fn add(&mut self, layer: u32, type_id: usize) {
-        match &mut self.run {
-            Some((cell, length)) if *cell == (layer, type_id) => *length += 1,
-            _ => {
-                self.close();
-                self.run = Some(((layer, type_id), 1));
+        let pair = (layer, type_id);
+        let place = (layer as usize).wrapping_mul(13).wrapping_add(type_id) % PLACES;
+        let Some((held, count)) = self.tally.get_mut(place) else {
+            return;
+        };
+        if *held != pair {
+            let (held, count) = (std::mem::replace(held, pair), std::mem::take(count));
+            if count > 0 {
+                *self.cells.entry(held).or_default() += count;
             }
         }
-    }
-
-    fn close(&mut self) {
-        if let Some((cell, length)) = self.run.take() {
-            *self.cells.entry(cell).or_default() += length;
-        }
+        *count += 1;
     }
 
     /// By layer: type and count, in the order of the types' numbers.
     pub(super) fn into_rows(mut self, layers: usize) -> Vec<Vec<(usize, usize)>> {
-        self.close();
+        for (pair, count) in self.tally {
+            if count > 0 {
+                *self.cells.entry(pair).or_default() += count;
+            }
+        }
         let mut cells: Vec<_> = self.cells.into_iter().collect();
         cells.sort_unstable();
         let mut rows = vec![Vec::new(); layers];

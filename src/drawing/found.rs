@@ -32,6 +32,8 @@ pub(super) struct Scan {
     pub(super) code_page: CodePage,
     /// `$INSUNITS`.
     pub(super) insunits: Option<i64>,
+    /// `$MEASUREMENT`.
+    pub(super) measurement: Option<i64>,
     /// `$EXTMIN` and `$EXTMAX`: x and y as the last program to save the drawing left them, drawing units.
     pub(super) extents: [[Option<f64>; 2]; 2],
     /// Layers of the table in its order, then those that only entities name, in order of first use.
@@ -172,6 +174,7 @@ impl Scan {
             code_width: if padded { code.len() } else { 0 },
             code_page: CodePage::of("", None),
             insunits: None,
+            measurement: None,
             extents: [[None; 2]; 2],
             layers: Vec::new(),
             styles: BTreeMap::new(),

@@ -1,5 +1,6 @@
 //! DXF out: a [`Sheet`] inserted into the bytes of a drawing, of which nothing else moves.
 
+mod digits;
 mod entities;
 mod handles;
 mod layers;

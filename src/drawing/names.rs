@@ -55,7 +55,7 @@ pub(super) struct LayerNames<'a> {
     own: Vec<bool>,
     by_bytes: HashMap<&'a [u8], u32>,
     by_name: HashMap<String, u32>,
-    last: Option<(&'a [u8], u32)>,
+    lately: Lately<'a>,
     /// Whether some name could not be decoded with certainty.
     pub(super) guessed: bool,
 }
@@ -63,16 +63,14 @@ pub(super) struct LayerNames<'a> {
 impl<'a> LayerNames<'a> {
     /// The layer's number.
     pub(super) fn id(&mut self, raw: &'a [u8], code_page: &CodePage) -> u32 {
-        if let Some((held, id)) = self.last
-            && held == raw
-        {
+        if let Some(id) = self.lately.get(raw) {
             return id;
         }
         let id = match self.by_bytes.get(raw) {
             Some(&id) => id,
             None => self.learn(raw, code_page),
         };
-        self.last = Some((raw, id));
+        self.lately.put(raw, id);
         id
     }
 
@@ -120,14 +118,14 @@ pub(super) struct Types<'a> {
     read: Vec<bool>,
     points: Vec<bool>,
     ids: HashMap<&'a [u8], usize>,
-    last: usize,
+    lately: Lately<'a>,
 }
 
 impl<'a> Types<'a> {
     /// The name's number.
     pub(super) fn id(&mut self, name: &'a [u8]) -> usize {
-        if self.names.get(self.last) == Some(&name) {
-            return self.last;
+        if let Some(id) = self.lately.get(name) {
+            return id as usize;
         }
         let next = self.names.len();
         let id = *self.ids.entry(name).or_insert(next);
@@ -136,7 +134,9 @@ impl<'a> Types<'a> {
             self.read.push(READ_TYPES.contains(&name));
             self.points.push(POINTING_TYPES.contains(&name));
         }
-        self.last = id;
+        if let Ok(short) = u32::try_from(id) {
+            self.lately.put(name, short);
+        }
         id
     }
 
@@ -166,5 +166,41 @@ impl<'a> Types<'a> {
             .into_iter()
             .map(|name| String::from_utf8_lossy(name).into_owned())
             .collect()
+    }
+}
+
+/// Names met lately with their numbers, each in the one place that its length and last letters give it.
+#[derive(Debug)]
+struct Lately<'a>([(&'a [u8], u32); PLACES]);
+
+/// A power of two.
+const PLACES: usize = 256;
+
+impl Default for Lately<'_> {
+    fn default() -> Self {
+        // An empty name stands where only an empty one is looked for, but under no number that is given.
+        Self([(b"", u32::MAX); PLACES])
+    }
+}
+
+impl<'a> Lately<'a> {
+    fn place(name: &[u8]) -> usize {
+        let last = |back: usize| {
+            let byte = name.len().checked_sub(back).and_then(|at| name.get(at));
+            byte.copied().map_or(0, usize::from)
+        };
+        (last(1) + 11 * last(2) + 37 * last(4) + 101 * name.len()) % PLACES
+    }
+
+    #[inline]
+    fn get(&self, name: &[u8]) -> Option<u32> {
+        let (held, id) = self.0.get(Self::place(name))?;
+        (*held == name && *id != u32::MAX).then_some(*id)
+    }
+
+    fn put(&mut self, name: &'a [u8], id: u32) {
+        if let Some(place) = self.0.get_mut(Self::place(name)) {
+            *place = (name, id);
+        }
     }
 }

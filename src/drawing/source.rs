@@ -31,6 +31,16 @@ impl Source {
         &self.bytes
     }
 
+    /// The same without the list of its entities, which takes a fifth of the room and which insertion does not need.
+    #[must_use]
+    pub fn for_insertion(mut self) -> Self {
+        self.scan.entries = Vec::new();
+        self.scan.pointing = Vec::new();
+        self.scan.blocks = Vec::new();
+        self.scan.attribute_layers = Vec::new();
+        self
+    }
+
     /// Every layer but this tool's own, in the table's order; layers that only entities name follow.
     pub fn layers(&self) -> Vec<Layer> {
         let scan = &self.scan;

@@ -13,6 +13,8 @@ pub struct Drawing {
     pub unit_m: f64,
     /// Where the unit came from.
     pub unit_from: UnitFrom,
+    /// Whether the office works in metric units, as `$MEASUREMENT` says: 1 metric, 0 imperial.
+    pub metric: Option<bool>,
     /// Lower left and upper right of everything in the drawing, if its header says so sensibly; metres. It is as old as the
     /// last program that kept it.
     pub extent: Option<[Coord<f64>; 2]>,

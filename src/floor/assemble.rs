@@ -10,6 +10,7 @@ use super::ends;
 use super::groups::groups;
 use super::heights::{self, Height, Settled};
 use super::index::Index;
+use super::joints::{self, joints};
 use super::labels::{Labels, labels};
 use super::layers::Roles;
 use super::levels::levels;
@@ -35,6 +36,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let conventions = &job.conventions;
     let roles = Roles::new(drawing, conventions);
     let mut findings = roles.hidden(drawing);
+    findings.extend(roles.hatched(drawing));
 
     let symbols = Symbols::new(drawing, conventions, &roles);
     let (slab, unread_zones, found) = slab(drawing, job, &roles, &symbols.shapes);
@@ -42,10 +44,12 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let thickness = Thickness::new(&slab, &unread_zones);
     let columns = Columns::new(&slab.columns);
 
-    let (lines, found) = lines(drawing, job, &roles, &symbols.stops(), &symbols.shapes);
+    let (lines, found) = lines(drawing, job, &roles, &symbols);
     findings.extend(found);
     let index = Index::new(lines.iter().map(|line| &line.path));
-    let (line_ends, found) = ends::ends(&lines, &symbols.list, conventions.end_reach_m);
+    let (mut line_ends, found) = ends::ends(&lines, &symbols.list, conventions.end_reach_m);
+    findings.extend(found);
+    let (joints, found) = joints(&lines, &index, &symbols.joints, conventions.end_reach_m);
     findings.extend(found);
 
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
@@ -106,6 +110,11 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             &conventions.height,
         );
         findings.extend(found);
+        for (told, anchor) in line_ends[at].iter_mut().zip(joints.at_ends[at]) {
+            if let Some(anchor) = anchor.filter(|anchor| told.known_or_goes_on(anchor.name)) {
+                findings.push(joints::at_an_end(anchor, &names[at]));
+            }
+        }
         findings.extend(ends::unknown(
             &names[at],
             &line_ends[at],
@@ -113,7 +122,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             conventions.end_reach_m,
         ));
         let ends = line_ends[at].each_ref().map(|told| told.end);
-        tendons.push(drawn(job, line, &names[at], said, ends, points));
+        tendons.push(Tendon {
+            joints: joints.of_line[at].clone(),
+            ..drawn(job, line, &names[at], said, ends, points)
+        });
     }
     findings.extend(complete(
         &mut tendons,
@@ -158,6 +170,7 @@ fn drawn(
         required_kn: said.required_kn.one().copied(),
         required_kn_per_m: said.required_kn_per_m.one().copied(),
         ends,
+        joints: Vec::new(),
         points,
     }
 }

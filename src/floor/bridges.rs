@@ -28,6 +28,8 @@ pub(super) struct Reach {
     pub(super) meet_m: f64,
     /// How far one line may run beside the other, metres.
     pub(super) aside_m: f64,
+    /// Longest gap that is bridged where an intermediate anchor stands in it, metres: its symbol is drawn there instead.
+    pub(super) anchor_m: f64,
 }
 
 /// An end of a line, and where the line would go on from it.
@@ -39,17 +41,19 @@ struct Tip {
 }
 
 /// Lines of one layer, in drawn order, with those put together that face one another over a gap, or overlap end to end
-/// without one containing the other. Nothing is bridged where `is_stop` says that a tendon ends.
+/// without one containing the other. Nothing is bridged where `is_stop` says that a tendon ends; `is_anchor` says whether an
+/// intermediate anchor stands within a distance of a place.
 pub(super) fn bridged(
     lines: Vec<Line>,
     reach: Reach,
     is_stop: impl Fn(Coord<f64>) -> bool,
+    is_anchor: impl Fn(Coord<f64>, f64) -> bool,
     findings: &mut Vec<Finding>,
 ) -> Vec<Line> {
     let tips: Vec<Option<Tip>> = (0..2 * lines.len())
         .map(|end| tip(&lines[end / 2].path, end % 2 == 1))
         .collect();
-    let best = nearest(&tips, reach, &is_stop);
+    let best = nearest(&tips, reach, &is_stop, &is_anchor);
     // Only where each is the other's nearest: a third end in line is left alone, and remains an end to be found.
     let partner = |end: usize| best[end].filter(|&(other, _)| mutual(&best, end, other));
     if (0..tips.len()).all(|end| partner(end).is_none()) {
@@ -70,7 +74,7 @@ pub(super) fn bridged(
             chain.push((next, ahead_m));
             end = next;
         }
-        whole.push(run_through(&lines, &chain, findings));
+        whole.push(run_through(&lines, &chain, reach.gap_m, findings));
     }
     // A ring of facing ends has no free end: its lines stay as they were drawn.
     let left = lines.into_iter().zip(used);
@@ -103,6 +107,7 @@ fn nearest(
     tips: &[Option<Tip>],
     reach: Reach,
     is_stop: impl Fn(Coord<f64>) -> bool,
+    is_anchor: impl Fn(Coord<f64>, f64) -> bool,
 ) -> Vec<Option<(usize, f64)>> {
     let tree = RTree::bulk_load(
         tips.iter()
@@ -117,17 +122,27 @@ fn nearest(
         if is_stop(tip.place) {
             return None;
         }
-        let far_m = reach.gap_m.max(reach.overlap_m) + reach.aside_m;
+        let far_m = reach.gap_m.max(reach.overlap_m).max(reach.anchor_m) + reach.aside_m;
         tree.locate_within_distance([tip.place.x, tip.place.y], far_m * far_m)
             .filter(|found| found.data / 2 != end / 2)
-            .filter_map(|found| Some((found.data, ahead_m(tip, tips[found.data]?, reach)?)))
+            .filter_map(|found| {
+                Some((
+                    found.data,
+                    ahead_m(tip, tips[found.data]?, reach, &is_anchor)?,
+                ))
+            })
             .min_by(|a, b| a.1.abs().total_cmp(&b.1.abs()).then(a.0.cmp(&b.0)))
     };
     (0..tips.len()).map(facing).collect()
 }
 
 /// How far `other` lies ahead of `tip`, if the two face one another; negative where they overlap.
-fn ahead_m(tip: Tip, other: Tip, reach: Reach) -> Option<f64> {
+fn ahead_m(
+    tip: Tip,
+    other: Tip,
+    reach: Reach,
+    is_anchor: impl Fn(Coord<f64>, f64) -> bool,
+) -> Option<f64> {
     let facing = turn_rad(tip.out_rad - other.out_rad - std::f64::consts::PI).abs();
     let (sin, cos) = tip.out_rad.sin_cos();
     let (dx, dy) = (other.place.x - tip.place.x, other.place.y - tip.place.y);
@@ -135,14 +150,23 @@ fn ahead_m(tip: Tip, other: Tip, reach: Reach) -> Option<f64> {
     // A piece inside another is a copy of it.
     let most_m = (tip.length_m.min(other.length_m) - reach.aside_m).min(reach.overlap_m);
     let in_line = aside_m <= reach.aside_m && facing <= FACING_RAD;
-    let in_reach = (-most_m..=reach.gap_m).contains(&ahead_m) && ahead_m.abs() > reach.meet_m;
-    (in_line && in_reach).then_some(ahead_m)
+    if !in_line || ahead_m.abs() <= reach.meet_m {
+        return None;
+    }
+    let in_reach = (-most_m..=reach.gap_m).contains(&ahead_m);
+    let at_anchor = || {
+        let middle = (tip.place + other.place) / 2.0;
+        (0.0..=reach.anchor_m).contains(&ahead_m)
+            && is_anchor(middle, ahead_m / 2.0 + reach.aside_m)
+    };
+    (in_reach || at_anchor()).then_some(ahead_m)
 }
 
 /// One line through a chain of ends at which its pieces are entered, each with what lies between it and the one before.
 fn run_through(
     lines: &[Line],
     chain: &[(usize, f64)],
+    allowed_m: f64,
     findings: &mut Vec<Finding>,
 ) -> (usize, Line) {
     let mut pieces: Vec<Segment> = Vec::new();
@@ -157,7 +181,7 @@ fn run_through(
         if let (Some(last), Some(next)) = (pieces.last(), path.start()) {
             let from = last.end();
             pieces.push(Segment::Line { from, to: next });
-            findings.push(said(line, from, ahead_m));
+            findings.push(said(line, from, ahead_m, allowed_m));
         }
         pieces.extend(path.segments());
     }
@@ -175,7 +199,7 @@ fn run_through(
     (first, line)
 }
 
-fn said(line: &Line, place: Coord<f64>, ahead_m: f64) -> Finding {
+fn said(line: &Line, place: Coord<f64>, ahead_m: f64, allowed_m: f64) -> Finding {
     let gap_mm = ahead_m.abs() * 1000.0;
     let (layer, handle) = (&line.layer, &line.handle);
     let finding = if ahead_m < 0.0 {
@@ -195,8 +219,13 @@ fn said(line: &Line, place: Coord<f64>, ahead_m: f64) -> Finding {
             &PIECES_BRIDGED,
             Level::Note,
             Wording::of(|units| {
+                let why = if ahead_m > allowed_m {
+                    "since an intermediate anchor stands in it"
+                } else {
+                    "as the job file allows"
+                };
                 format!(
-                    "a gap of {} before line {handle} on layer {layer} was bridged, as the job file allows",
+                    "a gap of {} before line {handle} on layer {layer} was bridged, {why}",
                     units.of(SHORT).said(gap_mm, 0)
                 )
             }),

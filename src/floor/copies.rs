@@ -8,7 +8,7 @@ use super::order::by_handle;
 use super::rules::DUPLICATE_LINE;
 use crate::drawing::Shape;
 use crate::finding::{Finding, Level, Wording};
-use crate::geometry::{Path, distance_m};
+use crate::geometry::{Path, Segment, distance_m};
 use crate::units::LONG;
 
 /// Places at which a line is compared with another.
@@ -20,17 +20,33 @@ pub(super) fn without_copies<'a>(
     tolerance_m: f64,
     findings: &mut Vec<Finding>,
 ) -> Vec<&'a Shape> {
-    let index = Index::new(shapes.iter().map(|shape| &shape.path));
-    let mut dropped = vec![false; shapes.len()];
+    // Those that are the same to the last bit are told at once, however many lie on one another.
+    let mut known: BTreeMap<Vec<u64>, usize> = BTreeMap::new();
+    let first: Vec<usize> = shapes
+        .iter()
+        .enumerate()
+        .map(|(at, shape)| *known.entry(bits(&shape.path)).or_insert(at))
+        .collect();
+    let unlike: Vec<usize> = known
+        .into_values()
+        .collect::<BTreeSet<_>>()
+        .into_iter()
+        .collect();
+    let index = Index::new(unlike.iter().map(|&at| &shapes[at].path));
+    let mut twins: Vec<Option<usize>> = Vec::with_capacity(shapes.len());
     for (at, shape) in shapes.iter().enumerate() {
         let middle = shape.path.place_at(shape.path.length_m() / 2.0);
-        let twin = index
-            .within(middle, tolerance_m)
-            .into_iter()
-            .filter(|&other| other < at && !dropped[other])
-            .find(|&other| same_line(&shape.path, &shapes[other].path, tolerance_m));
+        let twin = if first[at] == at {
+            index
+                .within(middle, tolerance_m)
+                .into_iter()
+                .map(|place| unlike[place])
+                .filter(|&other| other < at && twins[other].is_none())
+                .find(|&other| same_line(&shape.path, &shapes[other].path, tolerance_m))
+        } else {
+            twins[first[at]].or(Some(first[at]))
+        };
         if let Some(twin) = twin {
-            dropped[at] = true;
             findings.push(copy(
                 &shape.handle,
                 &shape.layer,
@@ -39,10 +55,25 @@ pub(super) fn without_copies<'a>(
                 shape.path.length_m(),
             ));
         }
+        twins.push(twin);
     }
-    let kept = shapes.iter().zip(dropped);
-    kept.filter_map(|(shape, gone)| (!gone).then_some(*shape))
+    let kept = shapes.iter().zip(twins);
+    kept.filter_map(|(shape, twin)| twin.is_none().then_some(*shape))
         .collect()
+}
+
+/// A path's numbers, bit by bit.
+fn bits(path: &Path) -> Vec<u64> {
+    let numbers = path.segments().iter().flat_map(|segment| match *segment {
+        Segment::Line { from, to } => [from.x, from.y, to.x, to.y, f64::NAN],
+        Segment::Arc {
+            centre,
+            radius_m,
+            start_rad,
+            sweep_rad,
+        } => [centre.x, centre.y, radius_m, start_rad, sweep_rad],
+    });
+    numbers.map(f64::to_bits).collect()
 }
 
 /// Drops lines that lie on another tendon, whatever its layer, for more than half their length; names lesser overlaps.

@@ -26,6 +26,8 @@ enum Doubt {
     Unsaid(String),
     /// One symbol says live, another dead.
     Differ([String; 2]),
+    /// An intermediate anchor of this name stands there.
+    GoesOn(String),
 }
 
 const SIGNS: [Sign; 7] = [
@@ -61,7 +63,20 @@ pub(super) fn ends(
     for sign in SIGNS {
         let alike: Vec<&Symbol<'_>> = symbols.iter().filter(|one| one.sign == sign).collect();
         let Matched { host, near } = matched(&alike, &places, &tree, reach_m);
-        for ((symbol, host), near) in alike.into_iter().zip(host).zip(near) {
+        let of_both = match sign {
+            Sign::Block => at_one_point(&alike, &host, &places),
+            _ => Vec::new(),
+        };
+        for &(symbol, end) in &of_both {
+            of_end[end].extend(alike.get(symbol));
+        }
+        for (number, ((symbol, host), near)) in alike.into_iter().zip(host).zip(near).enumerate() {
+            if of_both
+                .binary_search_by_key(&number, |&(other, _)| other)
+                .is_ok()
+            {
+                continue;
+            }
             match host.and_then(|host| of_end.get_mut(host)) {
                 Some(held) => held.push(symbol),
                 // A symbol may be drawn with two lines alike, or lettered twice.
@@ -136,8 +151,43 @@ fn matched(
     }
 }
 
+/// Places this near to one another are one, metres.
+const ONE_POINT_M: f64 = 0.005;
+
+/// A live and a dead symbol at one point, by number, each with every end that the two were matched to: nothing tells which
+/// of them is right, or which is whose where two tendons meet.
+fn at_one_point(
+    symbols: &[&Symbol<'_>],
+    host: &[Option<usize>],
+    places: &[Coord<f64>],
+) -> Vec<(usize, usize)> {
+    let mut of_both = Vec::new();
+    let hosted = (0..symbols.len()).filter_map(|one| Some((one, host[one]?)));
+    for (one, end) in hosted {
+        let a = symbols[one];
+        // Symbols stand in order of x.
+        let near = |other: &usize| (symbols[*other].place.x - a.place.x).abs() <= ONE_POINT_M;
+        let after = (one + 1..symbols.len()).take_while(near);
+        for two in (0..one).rev().take_while(near).chain(after) {
+            let b = symbols[two];
+            let differ = matches!((a.kind, b.kind), (Some(a), Some(b)) if a != b);
+            if !differ || distance_m(a.place, b.place) > ONE_POINT_M {
+                continue;
+            }
+            // Of two ends apart from one another each has the nearer symbol.
+            let other = host[two].unwrap_or(end);
+            if distance_m(places[end], places[other]) <= ONE_POINT_M {
+                of_both.extend([(one, end), (two, end)]);
+            }
+        }
+    }
+    of_both.sort_unstable();
+    of_both.dedup();
+    of_both
+}
+
 /// A symbol's extent.
-struct Around {
+pub(super) struct Around {
     place: Coord<f64>,
     outline: Option<Polygon<f64>>,
     /// From its place to its farthest corner, metres.
@@ -145,7 +195,7 @@ struct Around {
 }
 
 impl Around {
-    fn new(symbol: &Symbol<'_>) -> Self {
+    pub(super) fn new(symbol: &Symbol<'_>) -> Self {
         let corners = symbol.corners.iter().flatten();
         Self {
             place: symbol.place,
@@ -158,7 +208,7 @@ impl Around {
         }
     }
 
-    fn gap_m(&self, place: Coord<f64>) -> f64 {
+    pub(super) fn gap_m(&self, place: Coord<f64>) -> f64 {
         match &self.outline {
             Some(outline) => Euclidean.distance(&Point(place), outline),
             None => distance_m(place, self.place),
@@ -168,7 +218,8 @@ impl Around {
 
 /// What the symbols at one end say together: the block, else the most telling shape, else the word.
 fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
-    let block = held.iter().find(|one| one.sign == Sign::Block);
+    let mut blocks = held.iter().filter(|one| one.sign == Sign::Block);
+    let block = blocks.next();
     let shape = held
         .iter()
         .find(|one| !matches!(one.sign, Sign::Block | Sign::Word));
@@ -176,6 +227,7 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
     let told: Vec<(EndKind, &str)> = [block, shape, word]
         .into_iter()
         .flatten()
+        .chain(blocks)
         .filter_map(|one| Some((one.kind?, one.name)))
         .collect();
     let first = told.first().copied();
@@ -192,6 +244,17 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
     Told {
         end: End { kind, place },
         doubt,
+    }
+}
+
+impl Told {
+    /// Whether the end's kind is known; if nothing at all is said of it, it goes on through an intermediate anchor of this
+    /// name.
+    pub(super) fn known_or_goes_on(&mut self, anchor: &str) -> bool {
+        if self.end.kind.is_none() && self.doubt.is_none() {
+            self.doubt = Some(Doubt::GoesOn(anchor.to_owned()));
+        }
+        self.end.kind.is_some()
     }
 }
 
@@ -214,6 +277,11 @@ pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64)
                         format!("block {block} marks this end, but no attribute and no word within {reach} says whether it is live or dead")
                     }),
                     "name the block among the live or dead ones in the job file, or its attribute's or text's word in live_words or dead_words",
+                ),
+                Some(Doubt::GoesOn(anchor)) => (
+                    &END_UNKNOWN,
+                    Wording::from(format!("intermediate anchor {anchor} stands at this end: the tendon is drawn up to here only and goes on in another pour, so nobody can say from where it is stressed")),
+                    "draw the tendon through its intermediate anchor to its far end, on one layer, or give the drawing of the whole tendon; if it ends at this joint, put a live or dead end symbol there instead",
                 ),
                 None => (
                     &END_UNKNOWN,
@@ -262,8 +330,8 @@ impl Stakes for OneEach {
         self.0[pairing]
     }
 
-    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-        let extra = u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX);
+    fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+        let extra = u32::try_from(pairings.count().saturating_sub(1)).unwrap_or(u32::MAX);
         10.0 * f64::from(extra)
     }
 

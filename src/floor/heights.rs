@@ -1,8 +1,14 @@
 //! Height labels settled on their tendons: what a pairing costs, round after round, as more is known of the floor.
 
+mod ties;
+
+use std::collections::BTreeSet;
+
+use self::ties::{Texts, tied};
 use super::aims::AIMED;
 use super::candidates::Lie;
 use super::contradicted::{self, Contradiction};
+use super::even::even;
 use super::habits::Habits;
 use super::lines::Line;
 use super::readings::{HeightText, Word};
@@ -78,27 +84,60 @@ pub(super) fn settle(
 ) -> Settled {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
     let mut taken: Vec<Option<usize>> = vec![None; readings.len()];
+    let even = even(lies, lines);
     let mut known = None;
     let mut stakes = HeightStakes {
         own: Vec::new(),
-        readings,
-        lies,
-        fixed,
+        told: lies.iter().map(|lie| told(lie, readings)).collect(),
+        fixed: in_order(fixed),
     };
     for _ in 0..ROUNDS {
-        stakes.own = costs(readings, lies, lines, fixed, &taken, known.as_ref());
+        let floor = Known {
+            heights: by_line(readings, lies, lines.len(), fixed, &taken),
+            sides: sides(lies, lines.len(), &taken, &even),
+            habits: known.as_ref(),
+        };
+        let own = lies.iter().map(|lie| cost(readings, lie, lines, &floor));
+        stakes.own = own.collect();
         let mut settlement =
             Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
         let next = settlement.settle();
         let steady = next == taken && known.is_some();
         taken = next;
-        known = Some(learn(lies, lines, &taken, readings.len()));
+        known = Some(learn(lies, lines, &taken, &even, readings.len()));
         if steady {
             break;
         }
     }
     let mut settlement = Settlement::new(&pairings, readings.len(), lines.len(), &stakes, &taken);
-    let doubts = doubts(&mut settlement, readings, lies);
+    let mut doubts = doubts(&mut settlement, readings, lies);
+    let floor = Known {
+        heights: by_line(readings, lies, lines.len(), fixed, &taken),
+        sides: sides(lies, lines.len(), &taken, &even),
+        habits: known.as_ref(),
+    };
+    let texts = Texts {
+        readings,
+        lies,
+        lines,
+        fixed,
+    };
+    let tied = tied(floor, &texts, &taken, &even, &stakes);
+    let of_tie: BTreeSet<usize> = tied
+        .iter()
+        .map(|&(now, _)| lies[now].pairing.label)
+        .collect();
+    doubts.retain(|doubt| !of_tie.contains(&doubt.label));
+    doubts.extend(tied.iter().map(|&(now, other)| Doubt {
+        label: lies[now].pairing.label,
+        hosts: [now, other].map(|pairing| lies[pairing].pairing.host),
+        stations_m: [now, other].map(|pairing| lies[pairing].pairing.station_m),
+        tied: true,
+    }));
+    doubts.sort_by_key(|doubt| doubt.label);
+    for doubt in doubts.iter().filter(|doubt| doubt.tied) {
+        settlement.release(doubt.label);
+    }
     let taken = settlement.taken();
     let mut settled = Settled {
         of_line: by_line(readings, lies, lines.len(), fixed, taken),
@@ -111,6 +150,25 @@ pub(super) fn settle(
     };
     contradicted::heights(&mut settled, readings, lies, &stakes.own);
     settled
+}
+
+/// The height that a label gives if it belongs to this tendon.
+fn told(lie: &Lie, readings: &[HeightText]) -> Height {
+    Height {
+        station_m: lie.pairing.station_m,
+        at_end: lie.at_end,
+        reading: readings[lie.pairing.label],
+        label: Some(lie.pairing.label),
+    }
+}
+
+/// Heights of each line in order of station.
+fn in_order(heights: &[Vec<Height>]) -> Vec<Vec<Height>> {
+    let mut ordered = heights.to_vec();
+    for heights in &mut ordered {
+        heights.sort_by(|a, b| a.station_m.total_cmp(&b.station_m));
+    }
+    ordered
 }
 
 /// Heights by line, in order of station.
@@ -127,12 +185,7 @@ fn by_line(
     }
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
-        of_line[lie.pairing.host].push(Height {
-            station_m: lie.pairing.station_m,
-            at_end: lie.at_end,
-            reading: readings[lie.pairing.label],
-            label: Some(lie.pairing.label),
-        });
+        of_line[lie.pairing.host].push(told(lie, readings));
     }
     for heights in &mut of_line {
         heights.sort_by(|a, b| {
@@ -144,12 +197,22 @@ fn by_line(
     of_line
 }
 
-fn learn(lies: &[Lie], lines: &[Line], taken: &[Option<usize>], labels: usize) -> Habits {
+fn learn(
+    lies: &[Lie],
+    lines: &[Line],
+    taken: &[Option<usize>],
+    even: &[Option<usize>],
+    labels: usize,
+) -> Habits {
     let mut choices = vec![0_u32; labels];
     for lie in lies {
         choices[lie.pairing.label] += 1;
     }
-    Habits::learn(taken.iter().flatten().map(|&pairing| {
+    let telling = taken
+        .iter()
+        .flatten()
+        .filter(|&&pairing| even[pairing].is_none());
+    Habits::learn(telling.map(|&pairing| {
         let lie = &lies[pairing];
         let sure = choices[lie.pairing.label] == 1;
         (
@@ -160,44 +223,41 @@ fn learn(lies: &[Lie], lines: &[Line], taken: &[Option<usize>], labels: usize) -
     }))
 }
 
-/// Cost of each pairing by itself, given what the last round found.
-fn costs(
-    readings: &[HeightText],
-    lies: &[Lie],
-    lines: &[Line],
-    fixed: &[Vec<Height>],
-    taken: &[Option<usize>],
-    habits: Option<&Habits>,
-) -> Vec<f64> {
-    let known = by_line(readings, lies, lines.len(), fixed, taken);
-    let sides = sides(lies, lines.len(), taken);
-    lies.iter()
-        .map(|lie| {
-            let reading = readings[lie.pairing.label];
-            let run = lines[lie.pairing.host].run;
-            let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
-            if lie.aimed {
-                cost -= AIMED;
-            }
-            match habits {
-                None => {
-                    let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
-                    cost += 0.6 * lie.gap_h + struck;
-                }
-                Some(habits) => {
-                    cost += 0.4 * lie.gap_h
-                        + habits.cost(run, lie)
-                        + resemblance(reading, lie, &known)
-                        + if lie.aimed {
-                            0.0
-                        } else {
-                            side(lie, &sides[lie.pairing.host])
-                        };
-                }
-            }
-            cost
-        })
-        .collect()
+/// What is known of the floor while a label is judged.
+struct Known<'h> {
+    /// Heights of each tendon.
+    heights: Vec<Vec<Height>>,
+    /// See [`sides`].
+    sides: Vec<Vec<(usize, f64)>>,
+    /// What is usual, once something was learned.
+    habits: Option<&'h Habits>,
+}
+
+/// Cost of a pairing by itself.
+fn cost(readings: &[HeightText], lie: &Lie, lines: &[Line], known: &Known<'_>) -> f64 {
+    let reading = readings[lie.pairing.label];
+    let run = lines[lie.pairing.host].run;
+    let mut cost = 0.05 * lie.off_h.abs().min(6.0) + at_column(reading, lie);
+    if lie.aimed {
+        cost -= AIMED;
+    }
+    match known.habits {
+        None => {
+            let struck = if lie.gap_h <= 0.0 { 0.2 } else { 0.0 };
+            cost += 0.6 * lie.gap_h + struck;
+        }
+        Some(habits) => {
+            cost += 0.4 * lie.gap_h
+                + habits.cost(run, lie)
+                + resemblance(reading, lie, &known.heights)
+                + if lie.aimed {
+                    0.0
+                } else {
+                    side(lie, &known.sides[lie.pairing.host])
+                };
+        }
+    }
+    cost
 }
 
 /// High points stand over the middle of columns.
@@ -209,12 +269,17 @@ fn at_column(reading: HeightText, lie: &Lie) -> f64 {
     }
 }
 
-/// Offsets of the labels that each tendon holds, with the label.
-fn sides(lies: &[Lie], lines: usize, taken: &[Option<usize>]) -> Vec<Vec<(usize, f64)>> {
+/// Offsets of the labels that each tendon holds, with the label; those midway between two tendons tell nothing.
+fn sides(
+    lies: &[Lie],
+    lines: usize,
+    taken: &[Option<usize>],
+    even: &[Option<usize>],
+) -> Vec<Vec<(usize, f64)>> {
     let mut sides = vec![Vec::new(); lines];
     for &pairing in taken.iter().flatten() {
         let lie = &lies[pairing];
-        if lie.aimed {
+        if lie.aimed || even[pairing].is_some() {
             continue;
         }
         sides[lie.pairing.host].push((lie.pairing.label, lie.off_h));
@@ -280,38 +345,32 @@ fn unlike(difference_m: f64) -> f64 {
 }
 
 /// Costs of height labels.
-struct HeightStakes<'a> {
+struct HeightStakes {
     own: Vec<f64>,
-    readings: &'a [HeightText],
-    lies: &'a [Lie],
-    fixed: &'a [Vec<Height>],
+    /// By pairing, the height that it stands for.
+    told: Vec<Height>,
+    /// Heights from level lines, by line, in order of station.
+    fixed: Vec<Vec<Height>>,
 }
 
-impl Stakes for HeightStakes<'_> {
+impl Stakes for HeightStakes {
     fn own(&self, pairing: usize) -> f64 {
         self.own[pairing]
     }
 
-    fn shared(&self, host: usize, pairings: &[usize]) -> f64 {
+    fn shared(&self, host: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
         let fixed = &self.fixed[host];
-        if pairings.is_empty() && fixed.is_empty() {
+        let told = pairings.map(|pairing| &self.told[pairing]);
+        if !fixed.is_empty() {
+            return sequence(Merged {
+                told: told.peekable(),
+                fixed,
+            });
+        }
+        if told.clone().next().is_none() {
             return 1.0;
         }
-        let mut heights: Vec<Height> = Vec::with_capacity(pairings.len() + fixed.len());
-        heights.extend(pairings.iter().map(|&pairing| {
-            let lie = &self.lies[pairing];
-            Height {
-                station_m: lie.pairing.station_m,
-                at_end: lie.at_end,
-                reading: self.readings[lie.pairing.label],
-                label: Some(lie.pairing.label),
-            }
-        }));
-        if !fixed.is_empty() {
-            heights.extend(fixed);
-            heights.sort_by(|a, b| a.station_m.total_cmp(&b.station_m));
-        }
-        sequence(&heights)
+        sequence(told)
     }
 
     fn apart_m(&self) -> f64 {
@@ -319,12 +378,37 @@ impl Stakes for HeightStakes<'_> {
     }
 }
 
-/// Cost of a tendon's heights together.
-fn sequence(heights: &[Height]) -> f64 {
+/// Heights of labels and of level lines in order of station; of two at one station, the label's goes first.
+#[derive(Clone)]
+struct Merged<'a, I: Iterator<Item = &'a Height>> {
+    told: std::iter::Peekable<I>,
+    fixed: &'a [Height],
+}
+
+impl<'a, I: Iterator<Item = &'a Height>> Iterator for Merged<'a, I> {
+    type Item = &'a Height;
+
+    fn next(&mut self) -> Option<&'a Height> {
+        let Some((fixed, rest)) = self.fixed.split_first() else {
+            return self.told.next();
+        };
+        let not_behind = |told: &&Height| told.station_m.total_cmp(&fixed.station_m).is_le();
+        self.told.next_if(not_behind).or_else(|| {
+            self.fixed = rest;
+            Some(fixed)
+        })
+    }
+}
+
+/// Cost of a tendon's heights together, given in order of station.
+fn sequence<'a>(heights: impl Iterator<Item = &'a Height> + Clone) -> f64 {
     let mut cost = 0.0;
-    for pair in heights.windows(2) {
-        let (a, b) = (&pair[0], &pair[1]);
-        cost += neighbours(a, b) + bare(a, b);
+    let mut before: Option<&Height> = None;
+    for height in heights.clone() {
+        if let Some(before) = before {
+            cost += neighbours(before, height) + bare(before, height);
+        }
+        before = Some(height);
     }
     // Two of a kind in a row; numbers without a word between them may be the missing other kind.
     let mut last: Option<&Height> = None;
@@ -389,7 +473,7 @@ fn neighbours(a: &Height, b: &Height) -> f64 {
     (30.0 * (rise_m / gap_m - STEEP)).clamp(0.0, 4.0)
 }
 
-/// Labels that would fit elsewhere about as well, where it matters; ties go to nobody.
+/// Labels that would fit elsewhere about as well, where it matters.
 fn doubts<S: Stakes>(
     settlement: &mut Settlement<'_, S>,
     readings: &[HeightText],
@@ -418,9 +502,6 @@ fn doubts<S: Stakes>(
             stations_m: [lies[now].pairing.station_m, lies[then].pairing.station_m],
             tied: more < TIE,
         });
-    }
-    for doubt in doubts.iter().filter(|doubt| doubt.tied) {
-        settlement.release(doubt.label);
     }
     doubts
 }

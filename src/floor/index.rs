@@ -19,6 +19,8 @@ pub(super) struct Chord {
     segment: Segment,
     /// Station of the segment's start.
     start_m: f64,
+    /// Direction of a straight segment, which is asked for again and again.
+    straight_rad: Option<f64>,
 }
 
 impl RTreeObject for Chord {
@@ -50,6 +52,8 @@ impl Index {
         let mut chords = Vec::new();
         for (line, path) in paths.enumerate() {
             for (start_m, &segment) in path.pieces() {
+                let straight = matches!(segment, Segment::Line { .. });
+                let straight_rad = straight.then(|| segment.heading_at(0.0));
                 let whole = Path::new([segment]).to_line_string(CHORD_M);
                 for pair in whole.0.windows(2) {
                     split(pair[0], pair[1], |from, to| {
@@ -59,6 +63,7 @@ impl Index {
                             to,
                             segment,
                             start_m,
+                            straight_rad,
                         });
                     });
                 }
@@ -100,8 +105,11 @@ impl Index {
 
     /// For each line within reach, in order of lines, the place nearest to `place`.
     pub(super) fn feet(&self, place: Coord<f64>, reach_m: f64) -> Vec<Foot> {
-        let mut feet: Vec<Foot> = self
-            .around(&[place], reach_m + CHORD_M)
+        let mut chords = self.around(&[place], reach_m + CHORD_M);
+        // Chords of one piece of a line have one foot.
+        chords.sort_unstable_by(|a, b| a.line.cmp(&b.line).then(a.start_m.total_cmp(&b.start_m)));
+        chords.dedup_by(|a, b| a.is_of_piece(b));
+        let mut feet: Vec<Foot> = chords
             .into_iter()
             .map(|chord| chord.foot(place))
             .filter(|foot| foot.distance_m <= reach_m)
@@ -118,6 +126,13 @@ impl Index {
 }
 
 impl Chord {
+    /// Whether both belong to the same piece of the same line.
+    fn is_of_piece(&self, other: &Self) -> bool {
+        self.line == other.line
+            && self.start_m.total_cmp(&other.start_m).is_eq()
+            && self.segment == other.segment
+    }
+
     /// The place nearest to a point on the piece of line that the chord belongs to.
     pub(super) fn foot(&self, place: Coord<f64>) -> Foot {
         let along_m = self.segment.nearest_along_m(place);
@@ -126,7 +141,9 @@ impl Chord {
             line: self.line,
             station_m: self.start_m + along_m,
             place: foot,
-            heading_rad: self.segment.heading_at(along_m),
+            heading_rad: self
+                .straight_rad
+                .unwrap_or_else(|| self.segment.heading_at(along_m)),
             distance_m: distance_m(foot, place),
         }
     }

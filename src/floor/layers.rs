@@ -1,10 +1,10 @@
 //! What lies on which layer: the job's patterns turned into roles.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use geo::Coord;
 
-use super::rules::LAYER_HIDDEN;
+use super::rules::{HATCH_UNREAD, LAYER_HIDDEN};
 use super::types::Run;
 use crate::drawing::{Drawing, Look, Shape};
 use crate::finding::{Finding, Level};
@@ -152,6 +152,37 @@ impl Roles {
                     "thaw and switch on the layer if it is current; else delete it or take it out of the job's layer patterns",
                 ));
             }
+        }
+        findings.sort_by(|a, b| a.text.cmp(&b.text));
+        findings
+    }
+
+    /// One finding for each layer of outlines on which there are hatches and nothing else that is read.
+    pub(super) fn hatched(&self, drawing: &Drawing) -> Vec<Finding> {
+        let drawn: BTreeSet<&str> = drawing.shapes.iter().map(|s| s.layer.as_str()).collect();
+        let mut findings = Vec::new();
+        for layer in &drawing.layers {
+            let hatches = layer.counts.iter().find(|(kind, _)| kind == "HATCH");
+            let Some((_, count)) = hatches.filter(|_| !drawn.contains(layer.name.as_str())) else {
+                continue;
+            };
+            let what = match self.of(&layer.name, Look::default()).ground {
+                Ground::Nothing => continue,
+                Ground::Edge => "slab edges",
+                Ground::Opening => "openings",
+                Ground::Zone => "zones",
+                Ground::Slab => "slab edges and zones",
+                Ground::Column => "columns",
+            };
+            findings.push(Finding::new(
+                &HATCH_UNREAD,
+                Level::Warning,
+                format!(
+                    "layer {} holds {count} hatches and no line: no {what} were read from it; expected closed lines",
+                    layer.name
+                ),
+                "draw the outlines of the hatches as closed polylines on that layer",
+            ));
         }
         findings.sort_by(|a, b| a.text.cmp(&b.text));
         findings

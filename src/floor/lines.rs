@@ -1,8 +1,9 @@
 //! Tendon lines: shapes on tendon layers, joined, each drawn line once.
 
-use std::collections::{BTreeMap, BTreeSet};
+use std::collections::BTreeMap;
 
 use geo::Coord;
+use rstar::RTree;
 
 use super::bridges::{Reach, bridged};
 use super::copies::{without_copies, without_overlaps};
@@ -10,6 +11,7 @@ use super::layers::{Roles, Way, sound};
 use super::order::{by_handle, by_place, drawn_before};
 use super::pieces::{Joint, chains, returns};
 use super::rules::{PIECES_MEET, RUN_ASSUMED, TENDON_CLOSED, TENDON_STUB, TENDONS_MISSING};
+use super::symbols::Symbols;
 use super::types::Run;
 use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::finding::{Finding, Level, Wording};
@@ -38,16 +40,19 @@ pub(super) fn lines(
     drawing: &Drawing,
     job: &Job,
     roles: &Roles,
-    ends: &[Coord<f64>],
-    symbols: &BTreeSet<usize>,
+    symbols: &Symbols<'_>,
 ) -> (Vec<Line>, Vec<Finding>) {
+    let through = Through {
+        stops: placed(&symbols.stops()),
+        anchors: placed(&symbols.anchors()),
+    };
     let mut findings = Vec::new();
     let mut by_layer: BTreeMap<(&str, Way), Vec<&Shape>> = BTreeMap::new();
     for (at, shape) in drawing.shapes.iter().enumerate() {
         let Some(way) = roles.of(&shape.layer, shape.look).run else {
             continue;
         };
-        if !sound(shape) || shape.kind == ShapeKind::Solid || symbols.contains(&at) {
+        if !sound(shape) || shape.kind == ShapeKind::Solid || symbols.shapes.contains(&at) {
             continue;
         }
         let gap_m = job.conventions.join_gap_m;
@@ -65,7 +70,7 @@ pub(super) fn lines(
     for ((_, way), mut shapes) in by_layer {
         shapes.sort_by(|a, b| drawn_before(a, b));
         let shapes = without_copies(&shapes, tolerance_m, &mut findings);
-        lines.extend(joined(&shapes, way, job, ends, &mut findings));
+        lines.extend(joined(&shapes, way, job, &through, &mut findings));
     }
     if by_direction && job.conventions.banded_along_rad.is_none() {
         findings.push(Finding::new(
@@ -157,7 +162,7 @@ fn joined(
     shapes: &[&Shape],
     way: Way,
     job: &Job,
-    ends: &[Coord<f64>],
+    through: &Through,
     findings: &mut Vec<Finding>,
 ) -> Vec<Line> {
     let paths: Vec<&Path> = shapes.iter().map(|shape| &shape.path).collect();
@@ -165,13 +170,7 @@ fn joined(
         gap_m: job.conventions.join_gap_m,
         turn_rad: SHARPEST_RAD,
     };
-    let stops = rstar::RTree::bulk_load(ends.iter().map(|end| [end.x, end.y]).collect());
-    let is_stop = |place: Coord<f64>| {
-        stops
-            .locate_within_distance([place.x, place.y], STOP_M * STOP_M)
-            .next()
-            .is_some()
-    };
+    let is_stop = |place: Coord<f64>| stands(&through.stops, place, STOP_M);
     let (chains, meetings) = chains(&paths, joint, is_stop);
     let layer = shapes.first().map_or("", |shape| shape.layer.as_str());
     findings.extend(meetings.iter().map(|meeting| {
@@ -212,8 +211,29 @@ fn joined(
         overlap_m: job.conventions.overlap_m,
         meet_m: job.conventions.join_gap_m,
         aside_m: job.conventions.join_gap_m.max(ASIDE_M),
+        anchor_m: if through.anchors.size() > 0 {
+            job.conventions.end_reach_m
+        } else {
+            0.0
+        },
     };
-    bridged(lines, reach, is_stop, findings)
+    let is_anchor = |place, within_m| stands(&through.anchors, place, within_m);
+    bridged(lines, reach, is_stop, is_anchor, findings)
+}
+
+/// What decides whether a line goes on: symbols of ends, at which it does not, and of intermediate anchors, at which it does.
+struct Through {
+    stops: RTree<[f64; 2]>,
+    anchors: RTree<[f64; 2]>,
+}
+
+fn placed(places: &[Coord<f64>]) -> RTree<[f64; 2]> {
+    RTree::bulk_load(places.iter().map(|place| [place.x, place.y]).collect())
+}
+
+fn stands(symbols: &RTree<[f64; 2]>, place: Coord<f64>, within_m: f64) -> bool {
+    let mut near = symbols.locate_within_distance([place.x, place.y], within_m * within_m);
+    near.next().is_some()
 }
 
 /// The direction in which a run goes, from −45° up to 135°.

@@ -11,7 +11,7 @@ use super::plans::{Plan, Plans};
 use super::points::points;
 use super::rules::{DUPLICATE_LINE, TENDON_MADE};
 use super::slab::Thickness;
-use super::types::{End, Point, Tendon};
+use super::types::{End, Point, PourJoint, Tendon};
 use crate::finding::{Finding, Level};
 use crate::geometry::{Path, Segment};
 use crate::job::HeightReading;
@@ -129,6 +129,10 @@ fn copy(
         place: end.place + by,
         ..end
     };
+    let joints = typical.joints.iter().map(|joint| PourJoint {
+        place: joint.place + by,
+        ..*joint
+    });
     let segments = typical.path.segments().iter();
     let line = Line {
         handle: typical.handle.clone(),
@@ -167,6 +171,7 @@ fn copy(
         mark,
         path: line.path,
         ends: typical.ends.map(end),
+        joints: joints.collect(),
         points,
         made: true,
         ..typical.clone()

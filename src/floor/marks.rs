@@ -1,10 +1,14 @@
 //! Marks and strand counts settled on their tendons, and names for tendons that have none.
 
+mod doubts;
+
 use std::collections::{BTreeMap, BTreeSet};
 
+use self::doubts::{MarkDoubt, doubts};
 use super::aims::AIMED;
 use super::candidates::Lie;
 use super::contradicted::{self, Contradiction};
+use super::even::even;
 use super::habits::Habits;
 use super::lines::{Line, axis_rad};
 use super::marking::Marking;
@@ -19,54 +23,50 @@ pub(super) struct Marks {
     pub(super) of_line: Vec<Marking>,
     /// Labels that went to nobody.
     pub(super) unclaimed: Vec<usize>,
-    /// Labels that fit another line about as well: label, line taken, other line.
-    pub(super) doubts: Vec<(usize, usize, usize)>,
+    /// Labels that fit another line about as well.
+    pub(super) doubts: Vec<MarkDoubt>,
     /// Labels that contradict one that their line has.
     pub(super) contradicted: Vec<Contradiction>,
 }
 
 /// Rounds of settling and learning.
 const ROUNDS: usize = 3;
-/// Costs that differ by less are too near to be silent about.
-const DOUBT: f64 = 0.4;
-
 /// Settles marks.
 pub(super) fn settle(texts: &[Marking], lies: &[Lie], lines: &[Line]) -> Marks {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
     let mut taken: Vec<Option<usize>> = vec![None; texts.len()];
+    let even = even(lies, lines);
     let mut stakes = MarkStakes {
         own: Vec::new(),
         texts,
         lies,
     };
     for round in 0..ROUNDS {
-        stakes.own = costs(texts, lies, lines, &taken, round > 0);
+        stakes.own = costs(texts, lies, lines, &taken, &even, round > 0);
         let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
         taken = settlement.settle();
     }
     let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
+    let doubts = doubts(&mut settlement, &taken, &even, texts, lies);
+    let tied: BTreeSet<usize> = doubts
+        .iter()
+        .filter(|doubt| doubt.tied)
+        .map(|doubt| doubt.label)
+        .collect();
     let mut marks = Marks {
         of_line: vec![Marking::default(); lines.len()],
         unclaimed: Vec::new(),
-        doubts: Vec::new(),
+        doubts,
         contradicted: Vec::new(),
     };
-    for label in 0..texts.len() {
-        let Some(now) = taken[label] else {
-            marks.unclaimed.push(label);
-            continue;
-        };
-        let whole = &mut marks.of_line[lies[now].pairing.host];
-        let said = &texts[label];
-        whole.join(said.clone());
-        if settlement.choices(label).len() < 2 {
-            continue;
-        }
-        if let Some((_, changes)) = settlement.second_best(label, DOUBT)
-            && let Some(&(_, Some(then))) = changes.iter().find(|(changed, _)| *changed == label)
-        {
-            let hosts = (lies[now].pairing.host, lies[then].pairing.host);
-            marks.doubts.push((label, hosts.0, hosts.1));
+    for &label in &tied {
+        taken[label] = None;
+    }
+    for (label, said) in texts.iter().enumerate() {
+        match taken[label] {
+            Some(now) => marks.of_line[lies[now].pairing.host].join(said.clone()),
+            None if tied.contains(&label) => {}
+            None => marks.unclaimed.push(label),
         }
     }
     contradicted::marks(&mut marks, texts, lies, &stakes.own, &taken);
@@ -78,6 +78,7 @@ fn costs(
     lies: &[Lie],
     lines: &[Line],
     taken: &[Option<usize>],
+    even: &[Option<usize>],
     learned: bool,
 ) -> Vec<f64> {
     let mut choices = vec![0_u32; texts.len()];
@@ -85,7 +86,13 @@ fn costs(
         choices[lie.pairing.label] += 1;
     }
     let sure = |label: usize| if choices[label] == 1 { 1.0 } else { 0.2 };
-    let held = || taken.iter().flatten().map(|&pairing| &lies[pairing]);
+    let held = || {
+        let telling = taken
+            .iter()
+            .flatten()
+            .filter(|&&pairing| even[pairing].is_none());
+        telling.map(|&pairing| &lies[pairing])
+    };
     let habits = Habits::learn(held().map(|lie| {
         let run = lines[lie.pairing.host].run;
         (run, lie, sure(lie.pairing.label))
@@ -137,20 +144,23 @@ impl Stakes for MarkStakes<'_> {
         self.own[pairing]
     }
 
-    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-        if pairings.is_empty() {
+    fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+        let mut texts = pairings.map(|pairing| &self.texts[self.lies[pairing].pairing.label]);
+        let Some(mut text) = texts.next() else {
             return 1.0;
-        }
+        };
         let mut cost = 0.0;
-        for (at, &a) in pairings.iter().enumerate() {
-            for &b in &pairings[at + 1..] {
-                let text = |pairing: usize| &self.texts[self.lies[pairing].pairing.label];
-                if clash(text(a), text(b)) {
+        loop {
+            for other in texts.clone() {
+                if clash(text, other) {
                     cost += 8.0;
                 }
             }
+            match texts.next() {
+                Some(next) => text = next,
+                None => return cost,
+            }
         }
-        cost
     }
 
     /// A tendon has one mark, wherever along it another is written.

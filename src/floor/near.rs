@@ -34,18 +34,29 @@ impl Near<'_> {
             .iter()
             .map(|&label| self.unclaimed(texts[label]))
             .collect();
-        findings.extend(marks.doubts.iter().map(|&(label, here, there)| {
-            let text = texts[label];
+        findings.extend(marks.doubts.iter().map(|doubt| {
+            let text = texts[doubt.label];
+            let [here, there] = doubt.lines.map(|line| &self.lines[line].handle);
+            let (level, tail) = if doubt.tied {
+                (
+                    Level::Error,
+                    format!("fits the lines with handles {here} and {there} equally well; neither was given it"),
+                )
+            } else {
+                (
+                    Level::Warning,
+                    format!(
+                        "was taken for the line with handle {here}, but fits the one with handle {there} about as well"
+                    ),
+                )
+            };
             Finding::new(
                 &LABEL_AMBIGUOUS,
-                Level::Warning,
-                format!(
-                    "mark {:?} was taken for the line with handle {}, but fits the one with handle {} about as well",
-                    text.content, self.lines[here].handle, self.lines[there].handle
-                ),
+                level,
+                format!("mark {:?} {tail}", text.content),
                 "move the mark nearer to its tendon, along it",
             )
-            .on_tendon(&self.names[here])
+            .on_tendon(&self.names[doubt.lines[0]])
             .at_place(text.place)
         }));
         findings.extend(self.contradicted(texts, &marks.contradicted, "of one tendon"));

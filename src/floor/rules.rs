@@ -12,7 +12,9 @@ pub const RULES: &[&Rule] = &[
     &FACE_BY_NEIGHBOURS,
     &FACE_UNKNOWN,
     &GROUP_MISFIT,
+    &HATCH_UNREAD,
     &HEIGHT_MISSING,
+    &JOINT_UNCLAIMED,
     &LABEL_AMBIGUOUS,
     &LABEL_CONTRADICTED,
     &LABEL_SHARED,
@@ -94,6 +96,12 @@ pub(super) const HEIGHT_MISSING: Rule = Rule {
     meaning: "A tendon has no height where its neighbours, a column or an unclaimed label say that one belongs.",
 };
 
+/// An intermediate anchor that divides no tendon.
+pub(super) const JOINT_UNCLAIMED: Rule = Rule {
+    name: "joint-unclaimed",
+    meaning: "An intermediate anchor's symbol stands on no tendon, on several equally well, or at an end that has its own symbol: it divides none.",
+};
+
 /// A label that might as well belong elsewhere.
 pub(super) const LABEL_AMBIGUOUS: Rule = Rule {
     name: "label-ambiguous",
@@ -122,6 +130,13 @@ pub(super) const LABEL_UNREAD: Rule = Rule {
 pub(super) const LAYER_HIDDEN: Rule = Rule {
     name: "layer-hidden",
     meaning: "A layer that is off or frozen holds tendons or labels; they were read all the same.",
+};
+
+/// Areas that are hatched and have no outline.
+pub(super) const HATCH_UNREAD: Rule = Rule {
+    name: "hatch-unread",
+    meaning: "A layer of slab edges, openings, zones or columns holds hatches and no closed line: hatches are not read, \
+              their outlines are.",
 };
 
 /// A level that belongs to no zone.
@@ -163,7 +178,7 @@ pub(super) const PIECES_MEET: Rule = Rule {
 /// A gap in a tendon.
 pub(super) const PIECES_BRIDGED: Rule = Rule {
     name: "pieces-bridged",
-    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length.",
+    meaning: "A gap in a tendon line was bridged, since the job allows gaps of that length or an intermediate anchor stands in it.",
 };
 
 /// Two pieces of a tendon that overlap.

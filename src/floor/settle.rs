@@ -6,6 +6,7 @@
 //! layer, as in Bellman and Ford's method) is taken if the total falls. Nothing depends on the order of the labels but
 //! the choice among exact equals.
 
+use std::cell::Cell;
 use std::collections::BTreeMap;
 
 /// A label and a host that it may belong to.
@@ -22,7 +23,7 @@ pub(super) trait Stakes {
     /// Cost of a pairing by itself.
     fn own(&self, pairing: usize) -> f64;
     /// Cost of a host's pairings together, given in order of station.
-    fn shared(&self, host: usize, pairings: &[usize]) -> f64;
+    fn shared(&self, host: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64;
     /// Labels of one host farther apart along it than this leave one another in peace, metres.
     fn apart_m(&self) -> f64;
 }
@@ -46,6 +47,8 @@ pub(super) struct Settlement<'a, S: Stakes> {
     choices: Vec<Vec<usize>>,
     /// Pairings that each host holds, in order of station.
     held: Vec<Vec<usize>>,
+    /// What these cost each host together, once it has been asked for.
+    standing: Vec<Cell<Option<f64>>>,
     /// Pairing that each label has taken.
     taken: Vec<Option<usize>>,
 }
@@ -88,6 +91,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
             stakes,
             choices,
             held: vec![Vec::new(); hosts],
+            standing: vec![Cell::new(None); hosts],
             taken: vec![None; labels],
         };
         for &pairing in before.iter().flatten() {
@@ -128,6 +132,11 @@ impl<'a, S: Stakes> Settlement<'a, S> {
                 (more <= margin).then_some((more, changes))
             })
             .min_by(|a, b| a.0.total_cmp(&b.0))
+    }
+
+    /// By how much more the whole costs with these changes.
+    pub(super) fn cost_of_changes(&mut self, changes: &[(usize, Option<usize>)]) -> f64 {
+        self.try_changes(changes, f64::NEG_INFINITY).unwrap_or(0.0)
     }
 
     /// Takes a label from its host for good.
@@ -173,22 +182,32 @@ impl<'a, S: Stakes> Settlement<'a, S> {
         cheapest && self.leaving(taken) > -0.1
     }
 
+    /// What a host's pairings cost together.
+    fn standing(&self, host: usize) -> f64 {
+        let known = &self.standing[host];
+        known.get().unwrap_or_else(|| {
+            let cost = self.stakes.shared(host, self.held[host].iter().copied());
+            known.set(Some(cost));
+            cost
+        })
+    }
+
     /// Change of a host's cost when a pairing leaves.
     fn leaving(&self, pairing: usize) -> f64 {
         let host = self.pairings[pairing].host;
-        let held = &self.held[host];
-        let without: Vec<usize> = held.iter().copied().filter(|&p| p != pairing).collect();
-        self.stakes.shared(host, &without) - self.stakes.shared(host, held)
+        let without = self.held[host].iter().copied().filter(|&p| p != pairing);
+        self.stakes.shared(host, without) - self.standing(host)
     }
 
     /// Change of a host's cost when a pairing enters and another leaves.
     fn entering(&self, host: usize, pairing: usize, out: Option<usize>) -> f64 {
         let held = &self.held[host];
-        let mut with: Vec<usize> = Vec::with_capacity(held.len() + 1);
-        with.extend(held.iter().copied().filter(|&p| Some(p) != out));
-        let at = self.slot(&with, pairing);
-        with.insert(at, pairing);
-        self.stakes.shared(host, &with) - self.stakes.shared(host, held)
+        let (before, behind) = held.split_at(self.slot(held, pairing));
+        let stays = |&p: &usize| Some(p) != out;
+        let before = before.iter().copied().filter(stays);
+        let behind = behind.iter().copied().filter(stays);
+        let with = before.chain(std::iter::once(pairing)).chain(behind);
+        self.stakes.shared(host, with) - self.standing(host)
     }
 
     fn slot(&self, held: &[usize], pairing: usize) -> usize {
@@ -203,6 +222,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
         let Pairing { label, host, .. } = self.pairings[pairing];
         let at = self.slot(&self.held[host], pairing);
         self.held[host].insert(at, pairing);
+        self.standing[host].set(None);
         self.taken[label] = Some(pairing);
     }
 
@@ -212,9 +232,10 @@ impl<'a, S: Stakes> Settlement<'a, S> {
             return UNCLAIMED;
         };
         let host = self.pairings[pairing].host;
-        let before = self.stakes.shared(host, &self.held[host]);
+        let before = self.standing(host);
         self.held[host].retain(|&p| p != pairing);
-        before - self.stakes.shared(host, &self.held[host]) + self.stakes.own(pairing)
+        self.standing[host].set(None);
+        before - self.standing(host) + self.stakes.own(pairing)
     }
 
     fn improve(&mut self, label: usize) -> bool {
@@ -357,6 +378,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
             if let Some(pairing) = self.taken[label].take() {
                 let host = self.pairings[pairing].host;
                 self.held[host].retain(|&p| p != pairing);
+                self.standing[host].set(None);
             }
         }
         for pairing in changes.iter().filter_map(|&(_, pairing)| pairing) {
@@ -365,10 +387,7 @@ impl<'a, S: Stakes> Settlement<'a, S> {
     }
 
     fn cost_of(&self, hosts: &[usize], labels: &[(usize, Option<usize>)]) -> f64 {
-        let shared: f64 = hosts
-            .iter()
-            .map(|&host| self.stakes.shared(host, &self.held[host]))
-            .sum();
+        let shared: f64 = hosts.iter().map(|&host| self.standing(host)).sum();
         let own: f64 = labels
             .iter()
             .map(|&(_, pairing)| pairing.map_or(UNCLAIMED, |p| self.stakes.own(p)))
@@ -399,8 +418,8 @@ mod tests {
             self.0[pairing]
         }
 
-        fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-            10.0 * f64::from(u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX))
+        fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+            10.0 * f64::from(u32::try_from(pairings.count().saturating_sub(1)).unwrap_or(u32::MAX))
         }
 
         fn apart_m(&self) -> f64 {

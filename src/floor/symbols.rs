@@ -1,4 +1,4 @@
-//! What marks the ends of tendons: blocks by name or attribute, shapes, words.
+//! What marks the anchors of tendons, at their ends and between: blocks by name or attribute, shapes, words.
 
 mod shapes;
 mod words;
@@ -12,13 +12,15 @@ use super::types::EndKind;
 use crate::drawing::{Drawing, Insert};
 use crate::job::Conventions;
 pub use shapes::{Figure, figures};
-pub use words::EndWords;
+pub use words::{EndWords, Said};
 
 /// A symbol on the plan.
 #[derive(Debug, Clone)]
 pub(super) struct Symbol<'a> {
     /// Live or dead; `None` for a block that marks an end and does not tell.
     pub(super) kind: Option<EndKind>,
+    /// Whether it is an intermediate anchor: no end, but a place where the tendon goes on into the next pour.
+    pub(super) intermediate: bool,
     pub(super) sign: Sign,
     /// Where a block was placed, the middle of what is drawn or written.
     pub(super) place: Coord<f64>,
@@ -54,11 +56,26 @@ impl Sign {
     }
 }
 
+impl Symbol<'_> {
+    /// Takes what a name, an attribute or a word says, unless something has said it before.
+    fn told(&mut self, said: Said) {
+        if self.kind.is_some() || self.intermediate {
+            return;
+        }
+        match said {
+            Said::End(kind) => self.kind = Some(kind),
+            Said::Intermediate => self.intermediate = true,
+        }
+    }
+}
+
 /// All symbols of a drawing, and what of it they consist of.
 #[derive(Debug, Default)]
 pub(super) struct Symbols<'a> {
-    /// In an order that their places decide.
+    /// Those of ends, in an order that their places decide.
     pub(super) list: Vec<Symbol<'a>>,
+    /// Those of intermediate anchors, likewise.
+    pub(super) joints: Vec<Symbol<'a>>,
     /// Numbers of the shapes that belong to symbols.
     pub(super) shapes: BTreeSet<usize>,
     /// Numbers of the texts that are nothing but an end's word.
@@ -81,12 +98,20 @@ impl<'a> Symbols<'a> {
                 .then_with(|| a.name.cmp(b.name))
                 .then_with(|| a.handle.cmp(b.handle))
         });
+        let all = std::mem::take(&mut symbols.list);
+        (symbols.joints, symbols.list) = all.into_iter().partition(|one| one.intermediate);
         symbols
     }
 
-    /// Places of blocks and shapes: where one stands on a joint of two pieces, two tendons end.
+    /// Places of blocks and shapes of ends: where one stands on a joint of two pieces, two tendons end.
     pub(super) fn stops(&self) -> Vec<Coord<f64>> {
         let drawn = self.list.iter().filter(|one| one.sign != Sign::Word);
+        drawn.map(|one| one.place).collect()
+    }
+
+    /// Places of the blocks of intermediate anchors.
+    pub(super) fn anchors(&self) -> Vec<Coord<f64>> {
+        let drawn = self.joints.iter().filter(|one| one.sign != Sign::Word);
         drawn.map(|one| one.place).collect()
     }
 
@@ -99,39 +124,48 @@ impl<'a> Symbols<'a> {
     ) -> Vec<Option<usize>> {
         let live = names(&conventions.live_end_blocks);
         let dead = names(&conventions.dead_end_blocks);
-        let either = names(&conventions.end_blocks);
+        let between = names(&conventions.intermediate_blocks);
+        let untold = names(&conventions.end_blocks);
         let tags = names(&conventions.end_attributes);
-        let mut by_name: BTreeMap<&str, Option<Option<EndKind>>> = BTreeMap::new();
+        // By name: no symbol, one that does not tell what it is, or one that does.
+        let mut by_name: BTreeMap<&str, Option<Option<Said>>> = BTreeMap::new();
         let mut of_insert: Vec<Option<usize>> = Vec::with_capacity(drawing.inserts.len());
         for insert in &drawing.inserts {
-            let said = *by_name.entry(&insert.block).or_insert_with(|| {
+            let named = *by_name.entry(&insert.block).or_insert_with(|| {
                 if live.has(&insert.block) {
-                    Some(Some(EndKind::Live))
+                    Some(Some(Said::End(EndKind::Live)))
                 } else if dead.has(&insert.block) {
-                    Some(Some(EndKind::Dead))
+                    Some(Some(Said::End(EndKind::Dead)))
+                } else if between.has(&insert.block) {
+                    Some(Some(Said::Intermediate))
                 } else {
-                    either.has(&insert.block).then_some(None)
+                    untold.has(&insert.block).then_some(None)
                 }
             });
             let around = insert.within.and_then(|outer| *of_insert.get(outer)?);
             let stands = insert.place.x.is_finite() && insert.place.y.is_finite();
-            let Some(kind) = said.filter(|_| stands && around.is_none()) else {
+            let Some(named) = named.filter(|_| stands && around.is_none()) else {
                 of_insert.push(around);
                 continue;
             };
             let told = |insert: &Insert| {
                 let mut asked = insert.attributes.iter().filter(|(tag, _)| tags.has(tag));
-                asked.find_map(|(_, value)| words.kind(value))
+                asked.find_map(|(_, value)| words.said(value))
             };
-            of_insert.push(Some(self.list.len()));
-            self.list.push(Symbol {
-                kind: kind.or_else(|| told(insert)),
+            let mut symbol = Symbol {
+                kind: None,
+                intermediate: false,
                 sign: Sign::Block,
                 place: insert.place,
                 corners: None,
                 handle: &insert.handle,
                 name: &insert.block,
-            });
+            };
+            if let Some(said) = named.or_else(|| told(insert)) {
+                symbol.told(said);
+            }
+            of_insert.push(Some(self.list.len()));
+            self.list.push(symbol);
         }
         for (at, shape) in drawing.shapes.iter().enumerate() {
             if shape
@@ -152,12 +186,12 @@ impl<'a> Symbols<'a> {
         of_insert: &[Option<usize>],
     ) {
         for (at, text) in drawing.texts.iter().enumerate() {
-            let Some((kind, whole)) = words.found_in(&text.content) else {
+            let Some((said, whole)) = words.found_in(&text.content) else {
                 continue;
             };
             let inside = text.within.and_then(|insert| *of_insert.get(insert)?);
             if let Some(block) = inside.and_then(|symbol| self.list.get_mut(symbol)) {
-                block.kind = block.kind.or(Some(kind));
+                block.told(said);
                 if whole {
                     self.texts.insert(at);
                 }
@@ -173,14 +207,17 @@ impl<'a> Symbols<'a> {
             if whole {
                 self.texts.insert(at);
             }
-            self.list.push(Symbol {
-                kind: Some(kind),
+            let mut symbol = Symbol {
+                kind: None,
+                intermediate: false,
                 sign: Sign::Word,
                 place: middle(&corners),
                 corners: Some(corners),
                 handle: &text.handle,
                 name: text.content.trim(),
-            });
+            };
+            symbol.told(said);
+            self.list.push(symbol);
         }
     }
 
@@ -219,6 +256,7 @@ impl<'a> Symbols<'a> {
             let handle = figure.pieces.first().and_then(|at| drawing.shapes.get(*at));
             self.list.push(Symbol {
                 kind: Some(kind),
+                intermediate: false,
                 sign: Sign::of(word),
                 place: middle(&figure.corners),
                 corners: Some(figure.corners),

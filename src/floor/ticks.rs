@@ -107,8 +107,8 @@ impl Stakes for OneEach {
         self.costs.get(pairing).copied().unwrap_or(f64::INFINITY)
     }
 
-    fn shared(&self, _: usize, pairings: &[usize]) -> f64 {
-        let more = u32::try_from(pairings.len().saturating_sub(1)).unwrap_or(u32::MAX);
+    fn shared(&self, _: usize, pairings: impl Iterator<Item = usize> + Clone) -> f64 {
+        let more = u32::try_from(pairings.count().saturating_sub(1)).unwrap_or(u32::MAX);
         12.0 * f64::from(more)
     }
 

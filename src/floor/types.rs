@@ -42,8 +42,32 @@ pub struct Tendon {
     pub required_kn_per_m: Option<f64>,
     /// The two ends: at station 0 and at the path's end.
     pub ends: [End; 2],
+    /// Intermediate anchors between the ends, in order of station: each segment between two anchors is stressed by itself.
+    pub joints: Vec<PourJoint>,
     /// Profile points in order of station: anchor first, anchor last.
     pub points: Vec<Point>,
+}
+
+/// An intermediate anchor: the tendon goes on through it from one pour into the next.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct PourJoint {
+    /// Station along the plan line, metres.
+    pub station_m: f64,
+    /// Place on the plan line, metres.
+    pub place: Coord<f64>,
+}
+
+impl Tendon {
+    /// Stations of the anchors on either side of a segment, the first of which is number 0, metres.
+    pub fn segment_m(&self, segment: usize) -> [f64; 2] {
+        let joint_m = |at: usize| Some(self.joints.get(at)?.station_m);
+        let from_m = segment.checked_sub(1).and_then(joint_m);
+        let to_m = joint_m(segment);
+        [
+            from_m.unwrap_or(0.0),
+            to_m.unwrap_or_else(|| self.path.length_m()),
+        ]
+    }
 }
 
 /// Which way a tendon serves the floor.

@@ -3,7 +3,7 @@
 //! The defaults hold what can be read in one way only on a layer of its kind. What may mean two things (`12T`: twelve
 //! tendons, or twelve at the top) is offered, with what it would be taken for, and never taken by itself.
 
-use std::sync::LazyLock;
+use std::sync::{LazyLock, OnceLock};
 
 use regex::Regex;
 
@@ -104,8 +104,10 @@ fn compiled_marks() -> Vec<Pattern> {
 
 /// Heights whose numbers are in this unit: `H165`, `H 165`, `HP=165`, `165H`, `165 (H)`, `165`.
 pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
-        by_unit(&[
+    static BY_UNIT: ByUnit = ByUnit::new();
+    BY_UNIT.of(
+        unit,
+        &[
             (
                 "height",
                 r"(?i)^(?:(?<word>\p{L}[\p{L}.\s]*?)\s*[=:]?\s*)?\(?(?<value>NUMBER)\)?$",
@@ -114,9 +116,8 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
                 "height, word last",
                 r"(?i)^\(?(?<value>NUMBER)\)?\s*\(?(?<word>\p{L}[\p{L}.\s]*?)\)?$",
             ),
-        ])
-    });
-    in_unit(&BY_UNIT, unit)
+        ],
+    )
 }
 
 /// Thickness and levels of slab and zones in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`; `TOS -50`,
@@ -124,8 +125,10 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
 /// thickness, `U.N.O.` behind either. A drop may be one of the top or a panel below the soffit, and a finished level is
 /// none of the structure: neither is read.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
-    static BY_UNIT: LazyLock<ByUnit> = LazyLock::new(|| {
-        by_unit(&[
+    static BY_UNIT: ByUnit = ByUnit::new();
+    BY_UNIT.of(
+        unit,
+        &[
             ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)NOTE$"),
             (
                 "thickness, word first",
@@ -157,40 +160,49 @@ pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
             ),
             // Without a word a level has its sign.
             ("signed level", r"(?i)^BEHIND(?<top>[-+−–±]LEVEL)NOTE$"),
-        ])
-    });
-    in_unit(&BY_UNIT, unit)
+        ],
+    )
 }
 
-type ByUnit = [(LengthUnit, Vec<Pattern>); 5];
+/// Patterns with a number of each unit in them, each unit's made when it is first asked for.
+struct ByUnit([OnceLock<Vec<Pattern>>; 5]);
 
-/// Patterns with a number of each unit in them.
-fn by_unit(expressions: &[(&str, &str)]) -> ByUnit {
-    use LengthUnit::{Cm, Ft, In, M, Mm};
-    [Mm, Cm, M, In, Ft].map(|unit| {
-        let with_number = |(name, expression): &(&str, &str)| {
-            let expression = expression
-                .replace("NOTE", NOTE)
-                .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
-                .replace(
-                    "LEVEL",
-                    &format!(
-                        r"[-+−–±]?\s*(?:\d+[.,]\d+\s*m|\d+[.,]\d{{3}}|{})",
-                        number(unit)
-                    ),
-                )
-                .replace("NUMBER", number(unit));
-            pattern(name, &expression)
+impl ByUnit {
+    const fn new() -> Self {
+        Self([const { OnceLock::new() }; 5])
+    }
+
+    fn of(&self, unit: LengthUnit, expressions: &[(&str, &str)]) -> Vec<Pattern> {
+        use LengthUnit::{Cm, Ft, In, M, Mm};
+        let place = match unit {
+            Mm => 0,
+            Cm => 1,
+            M => 2,
+            In => 3,
+            Ft => 4,
         };
-        (unit, expressions.iter().filter_map(with_number).collect())
-    })
+        let made = self.0.get(place);
+        made.map(|made| made.get_or_init(|| in_unit(unit, expressions)).clone())
+            .unwrap_or_default()
+    }
 }
 
-fn in_unit(by_unit: &ByUnit, unit: LengthUnit) -> Vec<Pattern> {
-    let found = by_unit.iter().find(|(of, _)| *of == unit);
-    found
-        .map(|(_, patterns)| patterns.clone())
-        .unwrap_or_default()
+fn in_unit(unit: LengthUnit, expressions: &[(&str, &str)]) -> Vec<Pattern> {
+    let with_number = |(name, expression): &(&str, &str)| {
+        let expression = expression
+            .replace("NOTE", NOTE)
+            .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
+            .replace(
+                "LEVEL",
+                &format!(
+                    r"[-+−–±]?\s*(?:\d+[.,]\d+\s*m|\d+[.,]\d{{3}}|{})",
+                    number(unit)
+                ),
+            )
+            .replace("NUMBER", number(unit));
+        pattern(name, &expression)
+    };
+    expressions.iter().filter_map(with_number).collect()
 }
 
 /// The family that a line belongs to, of those that a survey offers; the first in their order.
@@ -246,6 +258,13 @@ fn offers() -> Vec<Offer> {
             "other mark, strands and size",
             &format!(
                 r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d*[.,]\d+|\d/\d|½){SIZE_SIGN}\s*\)?$"
+            ),
+            "What stands before the strands is taken for the tendon's mark.",
+        ),
+        marks(
+            "other mark and strands in words",
+            &format!(
+                r"(?i)^{ANY_MARK}{AFTER_MARK}{TENDONS}(?<strands>\d+)[\s-]*(?:STRANDS?|STRS?\.?)$"
             ),
             "What stands before the strands is taken for the tendon's mark.",
         ),

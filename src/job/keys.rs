@@ -2,8 +2,8 @@
 
 use super::key::{Key, Kind, Place};
 use super::{
-    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, Soffit,
-    StepKeeps, System, Wobble,
+    Cement, Datum, END_SHAPES, Environment, FromFace, Job, LongTermMethod, RelaxationClass, SIDES,
+    Soffit, StepKeeps, System, Wobble,
 };
 use crate::units::{LengthUnit, Units};
 
@@ -193,6 +193,11 @@ pub static KEYS: &[Key] = &[
         "common practice"),
     key("ends", "dead_words", Kind::Words(place!(conventions.dead_end_words)),
         "Words at a fixed end, likewise.", "common practice"),
+    key("ends", "intermediate_blocks", Kind::Shell(place!(conventions.intermediate_blocks)),
+        "Blocks that mark an intermediate anchor, where a tendon goes on into the next pour (shell patterns, any letter case).",
+        CONVENTION),
+    key("ends", "intermediate_words", Kind::Words(place!(conventions.intermediate_words)),
+        "Words at an intermediate anchor, as texts or attributes of ends.blocks, in any letter case.", CONVENTION),
     key("ends", "live_shapes", Kind::Choices {
             words: END_SHAPES,
             place: place!(conventions.live_end_shapes),
@@ -353,6 +358,13 @@ pub static KEYS: &[Key] = &[
         "wobble_rad_per_m"),
     key("stressing", "draw_in_mm", number!(0.0..=50.0, stressing.draw_in_m, MM),
         "Wedge draw-in at each live end.", "common practice, 5 to 8 mm"),
+    key("stressing", "first_pour", Kind::Choices {
+            words: SIDES,
+            place: place!(stressing.first_pour),
+        },
+        "Side of the plan whose pour is stressed first, of a tendon with intermediate anchors between two live ends: left or right \
+         for one that runs rather across than up, bottom or top for the others. With one live end the pours follow from the dead end.",
+        "judgement of this program: the pour at the left or the lower end"),
     key("stressing", "order", Kind::Shell(place!(stressing.order)),
         "Order of stressing: marks or shell patterns, the first stressed first; a tendon that no entry names is stressed after \
          all that are named. Elastic shortening then goes tendon by tendon.",
@@ -449,6 +461,10 @@ pub static KEYS: &[Key] = &[
         "Hogging radius below which is an error.", "common practice for flat ducts"),
     key("limits", "hogging_radius_warning_m", number!(0.1..=100.0, limits.hogging_radius_warning_m, ONE),
         "Hogging radius below which is a warning.", "common practice for flat ducts"),
+    key("limits", "sagging_radius_error_m", number!(0.1..=100.0, limits.sagging_radius_error_m, ONE),
+        "Sagging radius below which is an error.", "as for hogging: a duct kinks whichever way it is bent"),
+    key("limits", "sagging_radius_warning_m", number!(0.1..=100.0, limits.sagging_radius_warning_m, ONE),
+        "Sagging radius below which is a warning.", "as for hogging: a duct kinks whichever way it is bent"),
     key("limits", "support_residual_warning_mm", number!(0.0..=1000.0, limits.support_residual_warning_m, MM),
         "Drawn support height off the curve, above which is a warning.", "heights are drawn to 5 mm"),
     key("limits", "support_residual_error_mm", number!(0.0..=1000.0, limits.support_residual_error_m, MM),

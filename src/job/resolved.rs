@@ -33,6 +33,9 @@ pub struct Job {
 /// Words for the shapes that may mark an end.
 pub const END_SHAPES: &[&str] = &["circle", "triangle", "square", "bar", "solid"];
 
+/// Words for the sides of a plan.
+pub const SIDES: &[&str] = &["left", "right", "bottom", "top"];
+
 /// How the drawing is to be read.
 #[derive(Debug, Clone)]
 pub struct Conventions {
@@ -54,6 +57,10 @@ pub struct Conventions {
     pub live_end_words: Vec<String>,
     /// Words that mark a dead end.
     pub dead_end_words: Vec<String>,
+    /// Names of the blocks that mark an intermediate anchor, where a tendon goes on into the next pour.
+    pub intermediate_blocks: Vec<String>,
+    /// Words that mark an intermediate anchor.
+    pub intermediate_words: Vec<String>,
     /// Shapes that mark a live end: words of [`END_SHAPES`].
     pub live_end_shapes: Vec<String>,
     /// Shapes that mark a dead end, likewise.
@@ -252,6 +259,9 @@ pub struct Stressing {
     pub wobble: Wobble,
     /// Wedge draw-in at each live end, metres.
     pub draw_in_m: f64,
+    /// Sides of the plan ([`SIDES`]): of a tendon with intermediate anchors between two live ends, the pour at the end that
+    /// lies there is stressed first. The first word that tells the two ends apart holds.
+    pub first_pour: Vec<String>,
     /// Order of stressing: marks or shell patterns, any letter case; empty where the job gives none.
     pub order: Vec<String>,
 }
@@ -310,6 +320,10 @@ pub struct Limits {
     pub hogging_radius_error_m: f64,
     /// Hogging radius below which is a warning, metres.
     pub hogging_radius_warning_m: f64,
+    /// Sagging radius below which is an error, metres.
+    pub sagging_radius_error_m: f64,
+    /// Sagging radius below which is a warning, metres.
+    pub sagging_radius_warning_m: f64,
     /// Support height off the curve, metres, above which is a warning.
     pub support_residual_warning_m: f64,
     /// Support height off the curve, metres, above which is an error.

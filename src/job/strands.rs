@@ -161,19 +161,34 @@ impl Reader {
         }
         self.unknown_strands();
         let limits = &self.job.limits;
-        if limits.hogging_radius_error_m > limits.hogging_radius_warning_m {
-            let found = format!(
-                "a hogging radius would be an error ({} m) before it is a warning ({} m)",
-                limits.hogging_radius_error_m, limits.hogging_radius_warning_m
-            );
-            let span = at(self, "limits.hogging_radius_error_m")
-                .or_else(|| at(self, "limits.hogging_radius_warning_m"))
+        let radii = [
+            (
+                "hogging",
+                limits.hogging_radius_error_m,
+                limits.hogging_radius_warning_m,
+            ),
+            (
+                "sagging",
+                limits.sagging_radius_error_m,
+                limits.sagging_radius_warning_m,
+            ),
+        ];
+        for (word, error_m, warning_m) in radii {
+            if error_m <= warning_m {
+                continue;
+            }
+            let span = at(self, &format!("limits.{word}_radius_error_m"))
+                .or_else(|| at(self, &format!("limits.{word}_radius_warning_m")))
                 .unwrap_or(0..0);
             self.mistake(
                 span,
-                found,
-                "expected hogging_radius_error_m to be the smaller",
-                "type for example `hogging_radius_error_m = 2.5` and `hogging_radius_warning_m = 5`",
+                format!(
+                    "a {word} radius would be an error ({error_m} m) before it is a warning ({warning_m} m)"
+                ),
+                format!("expected {word}_radius_error_m to be the smaller"),
+                format!(
+                    "type for example `{word}_radius_error_m = 2.5` and `{word}_radius_warning_m = 5`"
+                ),
             );
         }
         let limits = &self.job.limits;

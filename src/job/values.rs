@@ -24,26 +24,8 @@ impl Reader {
                     set(&mut self.job, number);
                 }
             }
-            (
-                Kind::Count {
-                    least, most, set, ..
-                },
-                DeValue::Integer(_) | DeValue::Float(_),
-            ) => {
-                let range = (f64::from(*least), f64::from(*most));
-                match self
-                    .number(key.name, range, &key.example(), entry)
-                    .map(whole)
-                {
-                    Some(Some(count)) => set(&mut self.job, count),
-                    Some(None) => self.mistake(
-                        entry.span(),
-                        format!("`{}` is not a whole number", key.name),
-                        format!("expected {}", key.expected()),
-                        format!("type for example `{}`", key.example()),
-                    ),
-                    None => {}
-                }
+            (Kind::Count { .. }, DeValue::Integer(_) | DeValue::Float(_)) => {
+                self.count(key, entry);
             }
             (Kind::Choice { words, set, .. }, DeValue::String(word)) => {
                 if words.contains(&word.as_ref()) {
@@ -113,6 +95,28 @@ impl Reader {
             _ => self.mistake(
                 entry.span(),
                 format!("`{}` cannot be {}", key.name, kind_word(entry.get_ref())),
+                format!("expected {}", key.expected()),
+                format!("type for example `{}`", key.example()),
+            ),
+        }
+    }
+
+    fn count(&mut self, key: &Key, entry: &Entry<'_>) {
+        let Kind::Count {
+            least, most, set, ..
+        } = key.kind
+        else {
+            return;
+        };
+        let range = (f64::from(least), f64::from(most));
+        let Some(number) = self.number(key.name, range, &key.example(), entry) else {
+            return;
+        };
+        match whole(number) {
+            Some(count) => set(&mut self.job, count),
+            None => self.mistake(
+                entry.span(),
+                format!("`{}` is not a whole number", key.name),
                 format!("expected {}", key.expected()),
                 format!("type for example `{}`", key.example()),
             ),

@@ -1,6 +1,6 @@
 //! The places along a tendon, as the methods of long-term loss ask for them.
 
-use super::Stressed;
+use super::Pulls;
 use super::long_term::{Case, Place, Turn};
 use crate::floor::{Faces, Tendon};
 use crate::job::LongTerm;
@@ -9,7 +9,7 @@ use crate::numerics::integrate;
 /// A stressed tendon in its slab.
 #[derive(Debug, Clone)]
 pub struct Along<'s, 'p> {
-    stressed: &'s Stressed<'p>,
+    pulls: &'s Pulls<'p>,
     /// Where the concrete lies, from each station on.
     steps: Vec<Step>,
 }
@@ -56,7 +56,7 @@ pub fn faces_by_points(tendon: &Tendon) -> Vec<(f64, Faces)> {
 
 impl<'s, 'p> Along<'s, 'p> {
     /// The tendon in a slab that lies so from each station on, in order; a stretch of unknown thickness is passed over.
-    pub fn new(stressed: &'s Stressed<'p>, faces: impl IntoIterator<Item = (f64, Faces)>) -> Self {
+    pub fn new(pulls: &'s Pulls<'p>, faces: impl IntoIterator<Item = (f64, Faces)>) -> Self {
         let step = |(from_m, faces): (f64, Faces)| {
             Some(Step {
                 from_m,
@@ -65,30 +65,30 @@ impl<'s, 'p> Along<'s, 'p> {
             })
         };
         let steps = faces.into_iter().filter_map(step).collect();
-        Self { stressed, steps }
+        Self { pulls, steps }
     }
 
     /// The tendon.
-    pub fn stressed(&self) -> &'s Stressed<'p> {
-        self.stressed
+    pub fn pulls(&self) -> &'s Pulls<'p> {
+        self.pulls
     }
 
     /// The place at a station.
     pub(super) fn place(&self, station_m: f64) -> Place {
-        self.place_of(station_m, self.stressed.lockoff_kn(station_m))
+        self.place_of(station_m, self.pulls.lockoff_kn(station_m))
     }
 
     /// The place at a station, its force after lock-off known.
     pub(super) fn place_of(&self, station_m: f64, lockoff_kn: f64) -> Place {
         Place {
-            lockoff_mpa: self.stressed.steel().stress_mpa(lockoff_kn),
+            lockoff_mpa: self.pulls.steel().stress_mpa(lockoff_kn),
             eccentricity: self.eccentricity(station_m),
         }
     }
 
     /// (A/I) z² at a station; 0 where no thickness is known.
     fn eccentricity(&self, station_m: f64) -> f64 {
-        let level_m = self.stressed.profile().level_m(station_m);
+        let level_m = self.pulls.profile().level_m(station_m);
         self.step(station_m)
             .map_or(0.0, |step| step.eccentricity(level_m))
     }
@@ -102,7 +102,7 @@ impl<'s, 'p> Along<'s, 'p> {
     /// Greatest (A/I) z²: level and slab have their extremes where pieces begin and end, where the curve is level, and on
     /// both sides of a step.
     fn most_eccentricity(&self) -> f64 {
-        let profile = self.stressed.profile();
+        let profile = self.pulls.profile();
         let of_curve = profile.spans.iter().flat_map(|span| {
             let turn_m = span.start_m - span.slope / span.curvature_per_m;
             let within = (span.start_m..=span.end_m()).contains(&turn_m);
@@ -125,7 +125,7 @@ impl<'s, 'p> Along<'s, 'p> {
 
     /// Means along the tendon in space, quadrature to 1e-7.
     pub(super) fn means<const N: usize>(&self, of: impl Fn(f64) -> [f64; N]) -> [f64; N] {
-        let profile = self.stressed.profile();
+        let profile = self.pulls.profile();
         let weighted = |station_m: f64| {
             let steep = profile.slope(station_m).hypot(1.0);
             of(station_m).map(|value| value * steep)
@@ -133,6 +133,7 @@ impl<'s, 'p> Along<'s, 'p> {
         let mut breaks: Vec<f64> = profile.spans.iter().map(|span| span.start_m).collect();
         breaks.extend(self.steps.iter().map(|step| step.from_m));
         breaks.extend(profile.bends.iter().map(|bend| bend.station_m));
+        breaks.extend(self.pulls.anchors_m());
         breaks.push(profile.plan_length_m());
         breaks.sort_by(f64::total_cmp);
         let mut sums = [0.0; N];
@@ -150,8 +151,8 @@ impl<'s, 'p> Along<'s, 'p> {
 
     /// The tendon as the job's methods see it, at this mean concrete stress, MPa.
     pub fn case(&self, job: &LongTerm, concrete_stress_mpa: f64, turn: Turn) -> Case {
-        let steel = self.stressed.steel();
-        let mean_mpa = steel.stress_mpa(self.stressed.mean_lockoff_kn());
+        let steel = self.pulls.steel();
+        let mean_mpa = steel.stress_mpa(self.pulls.mean_lockoff_kn());
         let published = job.asks_published();
         let [eccentricity] = if published {
             self.means(|station_m| [self.eccentricity(station_m)])

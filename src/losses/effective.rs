@@ -2,6 +2,7 @@
 
 use super::along::Along;
 use super::long_term::{Case, Lost, Method, NoLoss, Place, When};
+use super::pulls::least;
 use super::{CannotStress, Forces, LaterLosses};
 use crate::job::{LongTerm, LongTermMethod};
 
@@ -64,8 +65,8 @@ impl<'a> Effective<'a> {
             places,
             mean_lost: method.at(case.mean),
         };
-        let stressed = along.stressed();
-        let least_mpa = stressed.steel().stress_mpa(stressed.least_lockoff_kn());
+        let pulls = along.pulls();
+        let least_mpa = pulls.steel().stress_mpa(pulls.least_lockoff_kn());
         for eccentricity in [0.0, case.most_eccentricity] {
             let worst = Place {
                 lockoff_mpa: least_mpa,
@@ -121,27 +122,36 @@ impl<'a> Effective<'a> {
         }
     }
 
-    /// Force at jacking, lock-off, transfer and service, kN; at a bend, the least in it.
-    pub fn forces_kn(&self, station_m: f64) -> [f64; 4] {
-        let stressed = self.along.stressed();
-        let steel = stressed.steel();
-        let [jacking_kn, lockoff_kn] = stressed.both_kn(station_m);
-        let place = self.along.place_of(station_m, lockoff_kn);
-        let lost = self.method.at(self.seen(place));
-        let transfer_kn = lockoff_kn - steel.force_kn(lost.shortening_mpa);
-        let service_kn = transfer_kn - steel.force_kn(lost.long_term_mpa());
-        [jacking_kn, lockoff_kn, transfer_kn, service_kn]
+    /// Force at jacking, lock-off, transfer and service, kN, of each segment that holds a station: two at an intermediate
+    /// anchor, in order along the tendon. At a bend, the least in it.
+    pub fn sides_kn(&self, station_m: f64) -> impl Iterator<Item = [f64; 4]> {
+        let pulls = self.along.pulls();
+        let steel = pulls.steel();
+        pulls
+            .sides_kn(station_m)
+            .map(move |[jacking_kn, lockoff_kn]| {
+                let place = self.along.place_of(station_m, lockoff_kn);
+                let lost = self.method.at(self.seen(place));
+                let transfer_kn = lockoff_kn - steel.force_kn(lost.shortening_mpa);
+                let service_kn = transfer_kn - steel.force_kn(lost.long_term_mpa());
+                [jacking_kn, lockoff_kn, transfer_kn, service_kn]
+            })
     }
 
-    /// Effective force, kN; at a bend, the least in it.
+    /// Force at jacking, lock-off, transfer and service, kN: the least at the station.
+    pub fn forces_kn(&self, station_m: f64) -> [f64; 4] {
+        least(self.sides_kn(station_m))
+    }
+
+    /// Effective force, kN: the least at the station.
     pub fn service_kn(&self, station_m: f64) -> f64 {
         self.forces_kn(station_m)[3]
     }
 
     /// Mean effective force along the tendon, kN.
     pub fn mean_service_kn(&self) -> f64 {
-        let stressed = self.along.stressed();
-        stressed.mean_lockoff_kn() - stressed.steel().force_kn(self.mean_lost.all_mpa())
+        let pulls = self.along.pulls();
+        pulls.mean_lockoff_kn() - pulls.steel().force_kn(self.mean_lost.all_mpa())
     }
 
     /// What is reported of the tendon as a whole.
@@ -155,7 +165,7 @@ impl<'a> Effective<'a> {
                 relaxation_mpa: lost.relaxation_mpa,
                 mean_service_kn: self.mean_service_kn(),
             }),
-            ..self.along.stressed().forces()
+            ..self.along.pulls().forces()
         }
     }
 }

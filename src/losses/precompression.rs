@@ -13,7 +13,7 @@ use crate::geometry::{Coord, Path, Segment};
 
 use self::direction::Direction;
 use self::section::{Leg, legs};
-use super::Stressed;
+use super::Pulls;
 
 /// Lines across each direction.
 const LINES: u32 = 25;
@@ -88,7 +88,7 @@ impl Sections {
         tendon: usize,
         path: &Path,
         tendons: u32,
-        stressed: &Stressed<'_>,
+        pulls: &Pulls<'_>,
     ) -> Vec<Crossing> {
         let own = self.of_tendon.get(tendon).copied();
         let mut found = Vec::new();
@@ -110,11 +110,11 @@ impl Sections {
                         };
                         let station_m = start_m + along_m;
                         let turn_rad = piece.heading_at(along_m) - direction.heading_rad();
-                        let level = 1.0 / stressed.profile().slope(station_m).hypot(1.0);
+                        let level = 1.0 / pulls.profile().slope(station_m).hypot(1.0);
                         let normal = turn_rad.cos().abs() * level * f64::from(tendons);
                         found.push(Crossing {
                             section,
-                            normal_kn: normal * stressed.lockoff_kn(station_m),
+                            normal_kn: normal * pulls.lockoff_kn(station_m),
                             own: own == Some(line.direction),
                         });
                     }

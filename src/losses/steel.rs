@@ -2,22 +2,26 @@
 
 use super::Steel;
 use crate::floor::Tendon;
-use crate::job::TendonJob;
+use crate::job::{StrandSize, TendonJob};
 
 /// The steel of one tendon; `None` where the count of strands is not known, or the size is not among the job's.
 /// A mark without a size has the job's default size, if there is one.
 pub fn steel(tendon: &Tendon, known: &TendonJob) -> Option<Steel> {
     let strands = tendon.strands.filter(|&strands| strands > 0)?;
-    let name = tendon
-        .strand
-        .as_deref()
-        .or(known.default_strand.as_deref())?;
-    let size = known.strands.iter().find(|size| size.name == name)?;
+    let size = strand_size(tendon, known)?;
     Some(Steel {
         area_mm2: f64::from(strands) * size.area_mm2,
         strength_mpa: size.strength_mpa,
         modulus_mpa: known.strand_modulus_mpa,
     })
+}
+
+/// The size that a tendon with strands is worked out with: the drawing's, or the job's default where the drawing gives none.
+/// `None` as for [`steel`].
+pub fn strand_size<'a>(tendon: &Tendon, known: &'a TendonJob) -> Option<&'a StrandSize> {
+    tendon.strands.filter(|&strands| strands > 0)?;
+    let name = tendon.strand.as_ref().or(known.default_strand.as_ref())?;
+    known.strands.iter().find(|size| size.name == *name)
 }
 
 impl Steel {

@@ -1,4 +1,4 @@
-//! A tendon jacked and locked off: its force at those two stages, anywhere.
+//! A tendon, or a segment of one, jacked and locked off in one pull: its force at those two stages, anywhere.
 
 use super::draw_in::{DrawnIn, from_both_ends, from_one_end};
 use super::exponent::{At, Exponent, Side};
@@ -233,6 +233,7 @@ impl<'p> Stressed<'p> {
             least_jacking_kn,
             least_jacking_station_m,
             least_jacking_angle_rad: self.least_jacking_angle_rad(),
+            pulls: Vec::new(),
         }
     }
 
@@ -273,7 +274,16 @@ impl<'p> Stressed<'p> {
 
     /// Mean force after lock-off along the tendon in space, kN.
     pub fn mean_lockoff_kn(&self) -> f64 {
-        let length_m = self.along.whole().arc_m;
+        self.lockoff_area_kn_m() / self.length_m()
+    }
+
+    /// Length in space, metres.
+    pub(super) fn length_m(&self) -> f64 {
+        self.along.whole().arc_m
+    }
+
+    /// ∫ P ds after lock-off, kN m.
+    pub(super) fn lockoff_area_kn_m(&self) -> f64 {
         let jacking_kn_m: f64 = self
             .jacking_shares_kn_m()
             .into_iter()
@@ -286,7 +296,7 @@ impl<'p> Stressed<'p> {
             .flatten()
             .map(|end| end.area_kn_m)
             .sum();
-        (jacking_kn_m - drawn_in_kn_m) / length_m
+        jacking_kn_m - drawn_in_kn_m
     }
 
     /// Least force after lock-off, kN.

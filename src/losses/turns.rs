@@ -67,6 +67,7 @@ mod tests {
             strand: None,
             required_kn: None,
             required_kn_per_m: None,
+            joints: Vec::new(),
             ends: [end, end],
             points: Vec::new(),
         }

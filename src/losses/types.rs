@@ -30,16 +30,62 @@ pub enum CannotStress {
     LossesTakeAll,
 }
 
-/// Forces of one tendon as a whole; forces at a place are asked of [`super::Stressed`] and [`super::Effective`].
+/// A tendon that cannot be stressed.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
+#[error("{reason}")]
+pub struct Unstressed {
+    /// Which of several segments cannot, in order along the tendon, from 0; `None`: the tendon as a whole.
+    pub segment: Option<usize>,
+    /// Why not.
+    pub reason: CannotStress,
+}
+
+impl From<CannotStress> for Unstressed {
+    fn from(reason: CannotStress) -> Self {
+        Self {
+            segment: None,
+            reason,
+        }
+    }
+}
+
+/// One of several pulls of a tendon: a segment between two neighbouring anchors.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Pull {
+    /// Stations of its two anchors, metres of plan line.
+    pub stations_m: [f64; 2],
+    /// Force at them after lock-off, on this segment's side, kN.
+    pub lock_off_kn: [f64; 2],
+    /// Its forces, as of a tendon by itself; without the later losses, which are the whole tendon's.
+    pub forces: Forces,
+}
+
+impl Pull {
+    /// Its jacked anchors: station, metres, and what the jack does there.
+    pub fn jacks(&self) -> impl Iterator<Item = (f64, &EndForces)> {
+        let ends = self.stations_m.into_iter().zip(&self.forces.ends);
+        ends.filter(|(_, end)| end.kind == EndKind::Live)
+    }
+
+    /// Of several pulls, the one that leaves least while it is jacked; of equals, the first.
+    pub fn governing(pulls: &[Self]) -> Option<&Self> {
+        pulls.iter().min_by(|a, b| {
+            let least_kn = |pull: &Self| pull.forces.least_jacking_kn;
+            least_kn(a).total_cmp(&least_kn(b))
+        })
+    }
+}
+
+/// Forces of one tendon as a whole; forces at a place are asked of [`super::Pulls`] and [`super::Effective`].
 #[derive(Debug, Clone, PartialEq)]
 pub struct Forces {
     /// The steel.
     pub steel: Steel,
     /// Jacking force, kN.
     pub jack_kn: f64,
-    /// The two ends, at station 0 and at the path's end.
+    /// The two ends, at station 0 and at the path's end; of several pulls, each end by its own.
     pub ends: [EndForces; 2],
-    /// Losses at jacking and lock-off.
+    /// Losses at jacking and lock-off; of several pulls, of the one that leaves least.
     pub totals: LossTotals,
     /// What comes after lock-off; `None` where the concrete's stress is not known, or where nothing would be left.
     pub later: Option<LaterLosses>,
@@ -47,8 +93,11 @@ pub struct Forces {
     pub least_jacking_kn: f64,
     /// Station of the least jacking-stage force, metres of plan line.
     pub least_jacking_station_m: f64,
-    /// Angle turned from station 0 to there, radians; of a bend there, the share up to its least force.
+    /// Angle turned from station 0, or from the start of its pull, to there, radians; of a bend there, the share up to its
+    /// least force.
     pub least_jacking_angle_rad: f64,
+    /// The pulls in order of stressing; none where the tendon is stressed in one.
+    pub pulls: Vec<Pull>,
 }
 
 /// Forces at an end.
@@ -93,8 +142,11 @@ pub struct LaterLosses {
 }
 
 impl Forces {
-    /// Whether the tendon is stressed from both ends.
+    /// Whether it is stressed from both ends at once, as a whole or in one of its pulls.
     pub fn both_live(&self) -> bool {
-        self.ends.iter().all(|end| end.kind == EndKind::Live)
+        if self.pulls.is_empty() {
+            return self.ends.iter().all(|end| end.kind == EndKind::Live);
+        }
+        self.pulls.iter().any(|pull| pull.forces.both_live())
     }
 }

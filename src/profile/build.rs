@@ -56,7 +56,8 @@ pub fn build(tendon: &Tendon, job: &Profiling) -> Result<Profile, Unknown> {
     let corners = tendon.path.corners();
     let spans = cut_to_plan(rising, &tendon.path);
     let bends = turned_at(&spans, &corners);
-    Ok(Profile::new(spans, bends))
+    let anchors_m: Vec<f64> = tendon.joints.iter().map(|joint| joint.station_m).collect();
+    Ok(Profile::new(spans, bends).divided(&anchors_m))
 }
 
 /// The points that bend the curve, checked: known levels, in order, from end to end.

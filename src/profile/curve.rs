@@ -1,7 +1,7 @@
 //! What a whole curve answers at a station.
 
 use super::types::{SoFar, Tightest};
-use super::{Bend, Profile, SAME_PLACE_M, Span};
+use super::{Bend, Profile, SAME_PLACE_M, Segment, Span};
 
 impl Profile {
     /// A curve from its pieces (in order, without gaps) and bends (in order of station).
@@ -24,7 +24,13 @@ impl Profile {
             bends,
             starts,
             bends_before_rad,
+            segments: Vec::new(),
         }
+    }
+
+    /// What lies between each two neighbouring anchors, in order; none where there are only the two at the ends.
+    pub fn segments(&self) -> &[Segment] {
+        &self.segments
     }
 
     /// Index of the piece that holds a station (the later of two that meet there), and the plan distance from its start.

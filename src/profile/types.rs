@@ -1,5 +1,7 @@
 //! A tendon's curve in space.
 
+use super::Segment;
+
 /// A tendon's curve: pieces over plan stations, on each of which the level is one parabola and the plan line is
 /// straight or one arc. Made by [`crate::profile::build()`] or [`Profile::new`].
 #[derive(Debug, Clone, PartialEq)]
@@ -12,6 +14,8 @@ pub struct Profile {
     pub(super) starts: Vec<SoFar>,
     /// Sum of the bends before each bend, and of all, radians.
     pub(super) bends_before_rad: Vec<f64>,
+    /// What lies between each two neighbouring anchors, in order; none where there are only the two at the ends.
+    pub(super) segments: Vec<Segment>,
 }
 
 /// Length and smooth angle from station 0.

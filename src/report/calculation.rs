@@ -5,6 +5,7 @@ mod drawn;
 mod forces;
 mod friction;
 mod methods;
+mod pulls;
 
 use super::DrawingFacts;
 use super::summary::{assumed, cautions};
@@ -43,8 +44,9 @@ fn sheet(
             parts.push(curve::part(job, profile, result.plan_tightest));
             match &result.forces {
                 Some(known) => {
-                    parts.push(friction::part(job, tendon, profile, known, result));
-                    parts.push(forces::part(job, tendon, known, result));
+                    let pulls = pulls::shown(tendon, profile, known, result);
+                    parts.push(friction::part(job, tendon, known, &pulls, result));
+                    parts.push(forces::part(job, tendon, known, &pulls, result));
                 }
                 None => parts.push(
                     "No forces: what the tendon lacks is among the findings below.\n".to_owned(),

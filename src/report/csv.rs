@@ -1,8 +1,10 @@
 //! The result as CSV tables (RFC 4180), one for each reader: units in the header, as the job wants them, numbers rounded to what is measured.
 
 mod cells;
+mod extensions;
 mod methods;
 
+pub use self::extensions::extensions_csv;
 pub use self::methods::methods_csv;
 
 use self::cells::{end_kind, figure, point_kind, rounded, run, text, written};
@@ -104,11 +106,6 @@ pub fn tendons_csv(analysis: &Analysis, units: Units) -> String {
 
 /// What a point's height is, whatever the drawing's own datum is.
 const HEIGHT_IS: &str = "strand centroid above local soffit";
-/// What an extension at either of two live ends is.
-const BOTH_LIVE: &str =
-    "both jacks pull together; with one jack moved from end to end the first pull is longer";
-/// What no extension holds.
-const BEYOND_ANCHOR: &str = "strand between anchor and jack is not included";
 
 /// A row a profile point; forces are per tendon.
 pub fn points_csv(analysis: &Analysis, units: Units) -> String {
@@ -163,64 +160,6 @@ pub fn points_csv(analysis: &Analysis, units: Units) -> String {
             }));
             row
         })
-    });
-    written(&header, rows)
-}
-
-/// A row a live end, with empty cells where the extension is not known.
-pub fn extensions_csv(analysis: &Analysis, units: Units) -> String {
-    let (force, long, short) = (units.of(FORCE), units.of(LONG), units.of(SHORT));
-    let header = [
-        "mark".to_owned(),
-        "handle".to_owned(),
-        "end".to_owned(),
-        long.column("x"),
-        long.column("y"),
-        "tendons".to_owned(),
-        "strands".to_owned(),
-        "strand".to_owned(),
-        force.column("jacking"),
-        short.column("extension"),
-        short.column("extension_net"),
-        long.column("draw_in_reach"),
-        "note".to_owned(),
-    ];
-    let rows = pair(analysis).flat_map(|(tendon, result)| {
-        let record = TendonRecord::of(tendon, result);
-        let note = if record.ends.iter().all(|end| end.live.is_some()) {
-            format!("{BOTH_LIVE}; {BEYOND_ANCHOR}")
-        } else {
-            BEYOND_ANCHOR.to_owned()
-        };
-        let known = [
-            text(record.mark),
-            text(record.handle),
-            record.tendons.to_string(),
-            record.strands.map(|n| n.to_string()).unwrap_or_default(),
-            text(record.strand.unwrap_or_default()),
-        ];
-        ["start", "end"]
-            .into_iter()
-            .zip(record.ends)
-            .filter_map(move |(which, end)| {
-                let live = end.live?;
-                let [mark, handle, tendons, strands, strand] = known.clone();
-                Some(vec![
-                    mark,
-                    handle,
-                    which.to_owned(),
-                    figure(long, end.x_m, 3),
-                    figure(long, end.y_m, 3),
-                    tendons,
-                    strands,
-                    strand,
-                    figure(force, live.jacking_kn, 1),
-                    figure(short, live.extension_mm, 1),
-                    figure(short, live.extension_net_mm, 1),
-                    figure(long, live.draw_in_reach_m, 2),
-                    note.clone(),
-                ])
-            })
     });
     written(&header, rows)
 }

@@ -1,12 +1,14 @@
 //! A tendon's result under the names and in the units that the outputs share.
 
 mod methods;
+mod pulls;
 
 use std::collections::BTreeMap;
 
 use serde::Serialize;
 
 use self::methods::MethodRecord;
+use self::pulls::{JointRecord, PullRecord};
 use crate::analysis::{PointResult, TendonResult};
 use crate::finding::{Finding, Level};
 use crate::floor::{EndKind, Point, PointKind, Run, Tendon};
@@ -24,6 +26,7 @@ pub(super) struct TendonRecord<'a> {
     pub(super) run: Run,
     pub(super) tendons: u32,
     pub(super) strands: Option<u32>,
+    /// The size worked with; where there is none, what the drawing says.
     pub(super) strand: Option<&'a str>,
     #[serde(skip_serializing_if = "Option::is_none")]
     pub(super) required_kn: Option<f64>,
@@ -35,6 +38,10 @@ pub(super) struct TendonRecord<'a> {
     pub(super) radius_min_m: Option<f64>,
     pub(super) radius_plan_min_m: Option<f64>,
     pub(super) ends: [EndRecord; 2],
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub(super) joints: Vec<JointRecord>,
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub(super) pulls: Vec<PullRecord>,
     pub(super) points: Vec<PointRecord>,
     pub(super) losses: Option<LossRecord>,
     pub(super) mean_service_kn: Option<f64>,
@@ -118,7 +125,7 @@ pub(super) fn number(value: f64) -> Option<f64> {
 
 impl<'a> TendonRecord<'a> {
     /// One tendon's record.
-    pub(super) fn of(tendon: &'a Tendon, result: &TendonResult) -> Self {
+    pub(super) fn of(tendon: &'a Tendon, result: &'a TendonResult) -> Self {
         let forces = result.forces.as_ref();
         Self {
             mark: &tendon.mark,
@@ -128,7 +135,7 @@ impl<'a> TendonRecord<'a> {
             run: tendon.run,
             tendons: tendon.tendons,
             strands: tendon.strands,
-            strand: tendon.strand.as_deref(),
+            strand: result.strand.as_deref().or(tendon.strand.as_deref()),
             required_kn: tendon.required_kn.and_then(number),
             required_kn_per_m: tendon.required_kn_per_m.and_then(number),
             area_mm2: result.area_mm2.and_then(number),
@@ -148,6 +155,8 @@ impl<'a> TendonRecord<'a> {
                 EndRecord::of(tendon, forces, 0),
                 EndRecord::of(tendon, forces, 1),
             ],
+            joints: pulls::joints(tendon),
+            pulls: pulls::pulls(forces),
             points: points(tendon, result),
             losses: forces.map(LossRecord::of),
             mean_service_kn: forces.and_then(|forces| number(forces.later?.mean_service_kn)),

@@ -96,9 +96,17 @@ fn counts(facts: &DrawingFacts, analysis: &Analysis, job: &Job) -> String {
         stand
     };
     let lines = if all == 1 { "line" } else { "lines" };
+    let several = tendons.iter().filter(|tendon| !tendon.joints.is_empty());
+    let several = match several.count() {
+        0 => String::new(),
+        count => {
+            format!("Stressed in several pulls, from anchor to intermediate anchor: {count}.\n")
+        }
+    };
     format!(
         "{}: {all} tendon {lines} ({banded} banded, {} distributed){stand}.\n\
          Forces were worked out for {worked} of {all} {lines}{only}{rest}.\n\
+         {several}\
          Heights read as {}.\n",
         plain(&facts.file),
         all - banded,

@@ -1,4 +1,5 @@
-//! The reference floor end to end against the `dxf` crate's load alone of the same file, in pairs.
+//! The reference floor end to end against the `dxf` crate's load alone of the same file, in pairs: ASCII, release 12 and
+//! binary.
 //!
 //! `cargo bench --bench reference` draws the floor below `target/`, then runs both in turn, each in a process of its
 //! own, and prints times, peak memory and ratios; it judges nothing. `cargo bench --bench reference -- FILE` takes
@@ -26,26 +27,30 @@ fn main() {
         [mode, file] if mode == "--crate-load" => crate_load(file),
         [mode, file] if mode == "--whole-job" => whole_job(file),
         [file] => compare(Path::new(file)),
-        _ => compare(&reference_floor()),
+        _ => ["reference", "r12", "binary"]
+            .into_iter()
+            .for_each(|form| compare(&reference_floor(form))),
     }
 }
 
-/// One measured run: seconds and peak memory in bytes.
+/// One measured run: seconds by the clock and of all its processors, and peak memory in bytes.
 #[derive(Clone, Copy)]
 struct Run {
     seconds: f64,
+    busy_seconds: f64,
     peak_bytes: f64,
 }
 
 fn compare(file: &Path) {
     let size = std::fs::metadata(file).expect("the drawing is there").len() as f64;
     println!("{}: {:.1} MB", file.display(), size / 1e6);
-    let mut ratios = Vec::new();
+    let (mut ratios, mut busy_ratios) = (Vec::new(), Vec::new());
     let (mut loads, mut jobs) = (Vec::new(), Vec::new());
     for _ in 0..PAIRS {
         let load = child("--crate-load", file);
         let job = child("--whole-job", file);
         ratios.push(job.seconds / load.seconds);
+        busy_ratios.push(job.busy_seconds / load.busy_seconds);
         loads.push(load);
         jobs.push(job);
     }
@@ -62,8 +67,9 @@ fn compare(file: &Path) {
         memory(&jobs)
     );
     println!(
-        "whole job / load     {:.2} (median of {PAIRS} pairs)",
-        middle(ratios)
+        "whole job / load     {:.2}, of processor time {:.2} (medians of {PAIRS} pairs)",
+        middle(ratios),
+        middle(busy_ratios)
     );
 }
 
@@ -90,7 +96,8 @@ fn child(mode: &str, file: &Path) -> Run {
         .collect();
     Run {
         seconds: numbers[0],
-        peak_bytes: numbers[1],
+        busy_seconds: numbers[1],
+        peak_bytes: numbers[2],
     }
 }
 
@@ -109,19 +116,34 @@ fn whole_job(file: &str) {
     report(start.elapsed().as_secs_f64());
 }
 
-/// Says the time and this process's peak memory, where the system tells it.
+/// Says the time, and this process's time on processors and peak memory where the system tells them.
 fn report(seconds: f64) {
-    let status = std::fs::read_to_string("/proc/self/status").unwrap_or_default();
-    let kilobytes: f64 = status
+    let about = |file: &str| std::fs::read_to_string(file).unwrap_or_default();
+    let kilobytes: f64 = about("/proc/self/status")
         .lines()
         .find_map(|line| line.strip_prefix("VmHWM:"))
         .and_then(|rest| rest.split_whitespace().next()?.parse().ok())
         .unwrap_or(f64::NAN);
-    eprintln!("measured {seconds} {}", kilobytes * 1024.0);
+    // Behind the name in brackets: user and system time are the 12th and 13th, in hundredths of a second.
+    let busy_hundredths: f64 = about("/proc/self/stat")
+        .rsplit(')')
+        .next()
+        .unwrap_or_default()
+        .split_whitespace()
+        .skip(11)
+        .take(2)
+        .filter_map(|word| word.parse::<f64>().ok())
+        .sum();
+    eprintln!(
+        "measured {seconds} {} {}",
+        busy_hundredths / 100.0,
+        kilobytes * 1024.0
+    );
 }
 
-fn reference_floor() -> PathBuf {
-    let file = PathBuf::from(env!("CARGO_MANIFEST_DIR")).join("target/reference.dxf");
+/// The floor in this form.
+fn reference_floor(form: &str) -> PathBuf {
+    let file = PathBuf::from(env!("CARGO_MANIFEST_DIR")).join(format!("target/{form}.dxf"));
     let status = Command::new(env!("CARGO"))
         .args([
             "run",
@@ -130,7 +152,7 @@ fn reference_floor() -> PathBuf {
             "--example",
             "draw-floors",
             "--",
-            "reference",
+            form,
         ])
         .arg(&file)
         .status()

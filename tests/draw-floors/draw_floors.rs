@@ -1,7 +1,8 @@
 //! Draws the demonstration floors, and floors of any size for measuring.
 //!
 //! `cargo run --example draw-floors -- demos` rewrites `demo-drawings/` and, beside the tests, what was drawn in them;
-//! `-- reference PATH` writes a floor of about 400 tendons in 20 MB; `-- tendons N PATH` one of N plain tendons.
+//! `-- reference PATH` writes a floor of about 400 tendons in 20 MB, `-- r12 PATH` and `-- binary PATH` the same floor
+//! as release 12 or in binary form; `-- tendons N PATH` one of N plain tendons.
 //! The same call writes the same bytes. Nothing here uses the crate under test or its DXF library.
 
 mod background;
@@ -42,7 +43,8 @@ impl Floor {
     }
 }
 
-const USAGE: &str = "usage: draw-floors demos | reference PATH | tendons N PATH";
+const USAGE: &str =
+    "usage: draw-floors demos | reference PATH | r12 PATH | binary PATH | tendons N PATH";
 
 fn main() -> ExitCode {
     let words = std::env::args().skip(1).collect::<Vec<_>>();
@@ -50,6 +52,8 @@ fn main() -> ExitCode {
     let done = match words.as_slice() {
         ["demos"] => demos(),
         ["reference", path] => anywhere(path, reference::floor()),
+        ["r12", path] => write(FilePath::new(path), dxf::older(&reference())),
+        ["binary", path] => write(FilePath::new(path), dxf::binary(&reference())),
         ["tendons", count, path] => match count.parse::<u32>() {
             Ok(count @ 1..=100_000) => anywhere(path, growth::floor(count)),
             _ => Err(io::Error::other(format!(
@@ -68,6 +72,11 @@ fn main() -> ExitCode {
     }
 }
 
+/// The reference floor's drawing.
+fn reference() -> String {
+    reference::floor().finish().drawing.to_dxf()
+}
+
 fn demos() -> io::Result<()> {
     let top = PathBuf::from(env!("CARGO_MANIFEST_DIR"));
     let (drawings, truths) = (top.join("demo-drawings"), top.join("tests/data/demos"));
@@ -78,7 +87,7 @@ fn demos() -> io::Result<()> {
     }
     write(
         &drawings.join("faulty-floor-faults.csv"),
-        &faulty::to_csv(&faults),
+        faulty::to_csv(&faults),
     )
 }
 
@@ -96,14 +105,14 @@ fn anywhere(path: &str, floor: Floor) -> io::Result<()> {
 fn save(drawing: &FilePath, truth: &FilePath, floor: Floor) -> io::Result<()> {
     let floor = floor.finish();
     let file = drawing.file_name().unwrap_or_default().to_string_lossy();
-    write(drawing, &floor.drawing.to_dxf())?;
-    write(truth, &truth::to_json(&file, &floor.slab, &floor.tendons))
+    write(drawing, floor.drawing.to_dxf())?;
+    write(truth, truth::to_json(&file, &floor.slab, &floor.tendons))
 }
 
-fn write(path: &FilePath, text: &str) -> io::Result<()> {
+fn write(path: &FilePath, contents: impl AsRef<[u8]>) -> io::Result<()> {
     if let Some(folder) = path.parent() {
         std::fs::create_dir_all(folder)?;
     }
-    std::fs::write(path, text)
+    std::fs::write(path, contents)
         .map_err(|problem| io::Error::other(format!("{}: {problem}", path.display())))
 }

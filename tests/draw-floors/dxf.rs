@@ -3,13 +3,18 @@
 //! It shares no line with the reader under test, so that a drawing made here is a second opinion.
 //! Lengths are millimetres, angles are radians until they are written (DXF wants degrees).
 
+mod binary;
 mod entities;
 mod measure;
 mod objects;
+mod older;
+mod records;
 mod shapes;
 mod tables;
 mod tags;
 
+pub(crate) use binary::binary;
+pub(crate) use older::older;
 pub(crate) use shapes::{Across, Shape, Text, Up};
 
 use measure::Measure;

@@ -98,3 +98,46 @@ fn symbols_go_by_the_name_of_their_block_whatever_their_layer() {
     assert_eq!(kinds(&floor.tendons[0]), [Some(Dead), Some(Live)]);
     assert!(told(&findings, "end-unclaimed").is_empty());
 }
+
+#[test]
+fn a_live_and_a_dead_symbol_at_one_point_are_taken_for_neither() {
+    // At the end of one tendon, and where two meet.
+    for second in [false, true] {
+        let mut board = Board::slab();
+        board.line(BANDED, &[(0.0, 5.0), (10.0, 5.0)]);
+        board.live((0.0, 5.0));
+        board.live((10.0, 5.0));
+        board.dead((10.0, 5.0));
+        if second {
+            board.line(BANDED, &[(10.0, 5.0), (20.0, 5.0)]);
+            board.dead((20.0, 5.0));
+        }
+        for seed in 0..4 {
+            board.shuffle(&mut Dice(seed));
+            let (floor, findings) = board.read();
+            let mut found: Vec<_> = floor.tendons.iter().flat_map(kinds).collect();
+            found.retain(Option::is_some);
+            assert_eq!(found.len(), 1 + usize::from(second), "{findings:#?}");
+            let contradicted = told(&findings, "end-contradicted");
+            assert_eq!(contradicted.len(), floor.tendons.len());
+            assert_eq!(contradicted[0].place, Some(at(10.0, 5.0)));
+            assert!(told(&findings, "end-unclaimed").is_empty());
+        }
+    }
+}
+
+#[test]
+fn two_symbols_where_two_tendons_end_apart_go_to_one_each() {
+    let mut board = Board::slab();
+    board.line(BANDED, &[(0.0, 5.0), (9.9, 5.0)]);
+    board.line(BANDED, &[(10.1, 5.0), (20.0, 5.0)]);
+    board.live((0.0, 5.0));
+    board.dead((9.95, 5.0));
+    board.live((10.05, 5.0));
+    board.dead((20.0, 5.0));
+    let (floor, findings) = board.read();
+    for tendon in &floor.tendons {
+        assert_eq!(kinds(tendon), [Some(Live), Some(Dead)]);
+    }
+    assert!(told(&findings, "end-contradicted").is_empty());
+}

@@ -1,5 +1,6 @@
 //! Slab zones, and the thickness that points take from them.
 
+use tautplan::drawing::Layer;
 use tautplan::finding::{Finding, Level};
 use tautplan::floor::{Floor, Tendon, read};
 use tautplan::job::Job;
@@ -149,4 +150,35 @@ fn of_outlines_on_one_layer_for_edge_and_zones_the_inner_are_zones() {
     assert_eq!(floor.slab.outlines.len(), 1);
     assert_eq!(floor.slab.zones.len(), 1);
     assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
+}
+
+#[test]
+fn openings_that_are_hatched_and_have_no_outline_are_said() {
+    let hatched = |layer: &str, outlined: bool| {
+        let mut board = Board::slab();
+        board.bare_tendon(BANDED, "B01", [0.0, 20.0], 5.0);
+        board.drawing.layers.push(Layer {
+            name: layer.to_owned(),
+            counts: vec![("HATCH".to_owned(), 3)],
+            ..Layer::default()
+        });
+        if outlined {
+            board.rectangle(layer, (2.0, 8.0), (3.0, 9.0));
+        }
+        let (_, findings) = board.read();
+        findings
+    };
+    let text = &only(&hatched("SLAB-OPENING", false), "hatch-unread")
+        .text
+        .clone();
+    assert!(
+        text.starts_with("layer SLAB-OPENING holds 3 hatches and no line: no openings were read"),
+        "{text}"
+    );
+    for (layer, outlined) in [("SLAB-OPENING", true), ("FURNITURE", false)] {
+        assert!(
+            told(&hatched(layer, outlined), "hatch-unread").is_empty(),
+            "{layer}"
+        );
+    }
 }

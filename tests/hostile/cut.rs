@@ -2,7 +2,7 @@
 
 use tautplan::drawing::{Wanted, open, read};
 
-use crate::drawings::{everything, file, marks_without_loss, rules};
+use crate::drawings::{everything, file, marks_without_loss, of_tags, rules};
 
 /// Cuts a file at these bytes. What is read of the rest is what the whole file has there, and nothing else.
 fn cut_at(name: &str, cuts: impl Iterator<Item = usize>) -> (usize, usize) {
@@ -71,4 +71,18 @@ fn newer_files_and_demos_are_cut_at_some_bytes() {
         let (read_on, _) = cut_at(name, (0..length).step_by(step));
         assert!(read_on > 10, "{name}: {read_on}");
     }
+}
+
+/// Found by fuzzing: a table set in between a record's missing name and its handle made that handle count.
+#[test]
+fn marks_stand_before_a_record_without_a_name() {
+    let mut bytes = of_tags(
+        "0 SECTION 2 ENTITIES 0 LINE 5 61 8 A 10 0 20 0 11 1 21 0 0 ENDSEC
+         0 SECTION 2 TABLES 0 TABLE 2 VPORT 70 1",
+    );
+    bytes.extend(b"0\n\n5\nA1\n8\n0EOF\n");
+    let (source, drawing, findings) = everything(bytes);
+    assert_eq!(drawing.shapes.len(), 1);
+    assert_eq!(rules(&findings), ["drawing-damaged"]);
+    marks_without_loss(&source, 0.001);
 }

@@ -47,6 +47,7 @@ pub(crate) fn tendon(points: &[(PointKind, f64, f64, f64, f64)]) -> Tendon {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [end(EndKind::Live, 0.0), end(EndKind::Dead, 20.0)],
         points: points
             .iter()

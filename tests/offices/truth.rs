@@ -77,6 +77,19 @@ pub(crate) fn tendon_differences(
         points.reverse();
     }
     held("ends", serde_json::json!(ends), &truth["ends"]);
+    let mut joints = tendon.joints.clone();
+    if !forwards {
+        joints.reverse();
+    }
+    let divided = truth["joints"].as_array().cloned().unwrap_or_default();
+    let divided_alike = joints.len() == divided.len()
+        && joints.iter().zip(&divided).all(|(joint, meant)| {
+            (joint.place.x - number(&meant["x_m"])).hypot(joint.place.y - number(&meant["y_m"]))
+                < NEAR_M
+        });
+    if !divided_alike {
+        found.push(format!("joints {joints:?}, meant {divided:?}"));
+    }
     let meant = truth["points"].as_array().expect("points");
     let same = points.len() == meant.len()
         && points.iter().zip(meant).all(|(point, meant)| {

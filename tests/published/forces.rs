@@ -32,6 +32,7 @@ fn tendon(points: &[(PointKind, f64, f64)], thickness_m: f64) -> Tendon {
         strand: None,
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends: [end(0.0), end(length_m)],
         points: points
             .iter()

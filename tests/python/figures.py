@@ -3,7 +3,7 @@
 Usage: figures.py MARKED.dxf RESULT.json
 
 Every force figure equals, rounded, the force of a profile point near it at that layer's stage; where it can be that of one
-point only, the figures of a tendon follow one another as their points do; every extension equals a live end's; the table
+point only, the figures of a tendon follow one another as their points do; every extension equals a jack's; the table
 has a row a tendon with its mark; a tendon in space passes through its points at their level.
 """
 
@@ -53,6 +53,16 @@ def out_of_order(worked, figures, key):
     return wrong, sum(len(found) - 1 for found in stands.values())
 
 
+def jacks(tendon):
+    """Where each jack of a tendon stands, and what it does."""
+    live = [(e["x_m"], e["y_m"], e) for e in tendon["ends"] if e["kind"] == "live"]
+    if not tendon.get("pulls"):
+        return live
+    anchors = [tendon["points"][0], *tendon["joints"], tendon["points"][-1]]
+    return [(a["x_m"], a["y_m"], pull) for pull in tendon["pulls"] for a in anchors
+            if abs(a["station_m"] - pull["at_m"]) < 1e-6]
+
+
 def texts(space, layer):
     for text in space.query(f'TEXT[layer=="{layer}"]'):
         place = text.dxf.get("align_point") if text.dxf.get("halign") or text.dxf.get("valign") else None
@@ -78,14 +88,16 @@ def main():
             if not any(math.dist(here, p[:2]) < NEAR_M and abs(p[2] - float(content)) <= 0.5000001 for p in points):
                 wrong.append(f"{stage} figure {content} at {here} belongs to no point")
 
-    ends = [(e["x_m"], e["y_m"], e) for t in worked for e in t["ends"] if e["kind"] == "live"]
+    ends = [jack for t in worked for jack in jacks(t)]
     for content, place in texts(space, "TAUT-EXTENSION"):
         seen += 1
         here = (place[0] * unit, place[1] * unit)
-        gross, net = (float(v) for v in re.findall(r"-?\d+", content)[:2])
+        pull, said = re.fullmatch(r"(?:pull (\d+): )?(ext .*)", content).groups()
+        gross, net = (float(v) for v in re.findall(r"-?\d+", said)[:2])
         if not any(math.dist(here, e[:2]) < NEAR_M and abs(e[2]["extension_mm"] - gross) <= 0.5000001
-                   and abs(e[2]["extension_net_mm"] - net) <= 0.5000001 for e in ends):
-            wrong.append(f"extension '{content}' at {here} belongs to no live end")
+                   and abs(e[2]["extension_net_mm"] - net) <= 0.5000001
+                   and e[2].get("order") == (int(pull) if pull else None) for e in ends):
+            wrong.append(f"extension '{content}' at {here} belongs to no jack")
 
     table = {content for content, _ in texts(space, "TAUT-TABLE")}
     wrong += [f"the table has no row for {t['mark']}" for t in result["tendons"] if t["mark"] not in table]

@@ -6,8 +6,9 @@ TENDONS is how many must have forces, so that a result that lost some does not p
 
 Shares no formula with the program: the plan line comes from the drawing through ezdxf, the levels from integrating a
 piecewise constant curvature twice, the angle from the turning between neighbouring chords of the curve in space, the
-friction from marching along it, the draw-in from bisection on the area between the two curves. What it takes from the
-result file are the inputs, the concrete stress and where the points are. Forces at every point, angles, losses, means and
+friction from marching along it, the draw-in from bisection on the area between the two curves. A tendon with intermediate
+anchors is stressed segment by segment, in an order found here. What it takes from the result file are the inputs, the
+concrete stress and where points and intermediate anchors are. Forces at every point, angles, losses, means and
 extensions must agree within 0.1 %, the reach of the draw-in and the least radius within what the step can tell.
 """
 
@@ -164,11 +165,11 @@ def levels(stations, pieces):
     return z
 
 
-def march(line, points, inflection):
-    """Arc length in space and angle turned, at dense stations that include every break of curvature."""
+def march(line, points, joints, inflection):
+    """Arc length in space and angle turned, at dense stations that include every break of curvature and these joints."""
     plan, stations = densify(line)
     pieces = bending(points, inflection)
-    breaks = sorted({round(v, 12) for p in pieces for v in p[:2]} | {p["station_m"] for p in points})
+    breaks = sorted({round(v, 12) for p in pieces for v in p[:2]} | {p["station_m"] for p in points} | set(joints))
     breaks = [b for b in breaks if 0 < b < stations[-1]]
     merged = np.unique(np.concatenate([stations, breaks]))
     merged = merged[np.concatenate([[True], np.diff(merged) > 1e-7])]
@@ -235,67 +236,133 @@ def lower_both(jacking, phi, arc, jack, wanted):
     return locked((a_low + a_high) / 2, (b_low + b_high) / 2)
 
 
-def work(tendon, line, inputs):
-    points = tendon["points"]
-    stations, arc, before, after = march(line, points, inputs["inflection"])
-    mu = inputs["mu_per_rad"]
-    per_m = inputs["wobble_per_m"] if inputs.get("wobble_per_m") is not None else mu * inputs["wobble_rad_per_m"]
-    angle = (before + after) / 2
-    phi = mu * angle + per_m * arc
-    area = tendon["area_mm2"]
-    live = [end["kind"] == "live" for end in tendon["ends"]]
-    jack = next(end["jacking_kn"] for end in tendon["ends"] if end["kind"] == "live")
-    wanted = inputs["draw_in_mm"] / 1000 * inputs["strand_modulus_mpa"] * area / 1000
+def jacked(tendon, joints, inputs):
+    """Whether each end of each segment is jacked, in order along the tendon, and when its turn comes, from 1."""
+    kinds = [end["kind"] for end in tendon["ends"]]
+    count = len(joints) + 1
+    backwards = kinds == ["live", "dead"]
+    if kinds == ["live", "live"] and joints:
+        (xa, ya), (xb, yb) = [(end["x_m"], end["y_m"]) for end in tendon["ends"]]
+        level = abs(xb - xa) >= abs(yb - ya)
+        side = next(s for s in inputs["first_pour"] + ["left", "bottom"] if (s in ("left", "right")) == level)
+        along = xb - xa if level else yb - ya
+        backwards = (along < 0) == (side in ("left", "bottom"))
+    found = []
+    for at in range(count):
+        turn = count - at if backwards else at + 1
+        # The side that the tendon goes on to is jacked; an end is, if it is live.
+        start = kinds[0] == "live" if at == 0 else backwards
+        end = kinds[1] == "live" if at == count - 1 else not backwards
+        found.append((start, end, turn))
+    return found
+
+
+def stress(arc, phi, live, jack, wanted):
+    """Force while the jacks hold and after lock-off, along one segment."""
     forward, backward = jack * np.exp(-phi), jack * np.exp(phi - phi[-1])
     if all(live):
         jacking = np.maximum(forward, backward)
-        locked = lower_both(jacking, phi, arc, jack, wanted)
-    elif live[0]:
-        jacking = forward
-        locked = lower(jacking, phi, arc, jack, wanted)
-    else:
-        jacking = backward
-        locked = lower(jacking, phi[-1] - phi, arc, jack, wanted)
+        return jacking, lower_both(jacking, phi, arc, jack, wanted)
+    if live[0]:
+        return forward, lower(forward, phi, arc, jack, wanted)
+    return backward, lower(backward, phi[-1] - phi, arc, jack, wanted)
+
+
+def segments(tendon, line, inputs):
+    """The whole tendon's march, and what each segment between two anchors comes to when it is stressed by itself."""
+    joints = [joint["station_m"] for joint in tendon.get("joints", [])]
+    stations, arc, before, after = march(line, tendon["points"], joints, inputs["inflection"])
+    mu = inputs["mu_per_rad"]
+    per_m = inputs["wobble_per_m"] if inputs.get("wobble_per_m") is not None else mu * inputs["wobble_rad_per_m"]
+    jack = next(end["jacking_kn"] for end in tendon["ends"] if end["kind"] == "live")
+    wanted = inputs["draw_in_mm"] / 1000 * inputs["strand_modulus_mpa"] * tendon["area_mm2"] / 1000
+    cuts = [0] + [int(np.argmin(np.abs(stations - at))) for at in joints] + [len(stations) - 1]
+    found = []
+    for (i, j), (start, end, turn) in zip(itertools.pairwise(cuts), jacked(tendon, joints, inputs)):
+        own = slice(i, j + 1)
+        # A corner at an anchor turns in neither segment.
+        angle = (before[own] + after[own]) / 2 - after[i]
+        angle[0], angle[-1] = (0.0 if i else angle[0]), (before[j] - after[i] if j < len(stations) - 1 else angle[-1])
+        length = arc[own] - arc[i]
+        phi = mu * angle + per_m * length
+        jacking, locked = stress(length, phi, (start, end), jack, wanted)
+        found.append({"stations": stations[own], "arc": length, "angle": angle, "mu": mu, "jack": jack,
+                      "live": (start, end), "turn": turn, "jacking_kn": jacking, "lockoff_kn": locked})
+    return (stations, arc, before, after), found
+
+
+def work(tendon, line, inputs):
+    points, area = tendon["points"], tendon["area_mm2"]
+    (stations, arc, before, after), parts = segments(tendon, line, inputs)
 
     modulus, sigma = inputs["strand_modulus_mpa"], tendon["concrete_stress_mpa"]
     shortening = inputs["shortening_share"] * modulus / inputs["concrete_modulus_transfer_mpa"] * sigma
     steady = modulus * inputs["shrinkage_strain"] \
         + modulus / inputs["concrete_modulus_mpa"] * inputs["creep_coefficient"] * sigma
     relaxed = inputs["relaxation_1000h"] * inputs["relaxation_factor"]
-    transfer = locked - shortening * area / 1000
-    service = transfer - steady * area / 1000 - relaxed * locked
+    for part in parts:
+        part["transfer_kn"] = part["lockoff_kn"] - shortening * area / 1000
+        part["service_kn"] = part["transfer_kn"] - steady * area / 1000 - relaxed * part["lockoff_kn"]
 
-    stretch = (jacking[1:] + jacking[:-1]) / 2 * np.diff(arc) / (modulus * area / 1000)
-    worst = 0.0
-    curves = {"jacking_kn": jacking, "lockoff_kn": locked, "transfer_kn": transfer, "service_kn": service}
-    for point in points:
-        near = np.abs(stations - point["station_m"]) <= 2 * STEP_M
-        if not near.any():
-            near = np.abs(stations - point["station_m"]) == np.abs(stations - point["station_m"]).min()
-        for name, curve in curves.items():
-            value = point[name]
-            # At a corner the force is a step: any value between its two sides will do.
-            low, high = curve[near].min(), curve[near].max()
-            off = max(low - value, value - high, 0.0) / high
-            worst = max(worst, off)
-    division = int(np.argmin(jacking))
-    if all(live):
-        shares = [float(stretch[:division].sum()), float(stretch[division:].sum())]
-    else:
-        shares = [float(stretch.sum())] * 2
-    for end, share in zip(tendon["ends"], shares):
-        if end["kind"] == "live":
-            worst = max(worst, abs(end["extension_mm"] - share * 1000) / (share * 1000))
-            net = share * 1000 - inputs["draw_in_mm"]
-            worst = max(worst, abs(end["extension_net_mm"] - net) / net)
-    off = {"points and extensions": worst, "length_m": abs(tendon["length_m"] - arc[-1]) / arc[-1]}
-    off |= losses(tendon, {
-        "arc": arc, "angle": angle, "mu": mu, "jack": jack, "live": live, **curves,
-    }, {"shortening_mpa": shortening, "shrinkage_mpa": modulus * inputs["shrinkage_strain"],
+    off = {"points": max(point_off(point, parts) for point in points),
+           "length_m": abs(tendon["length_m"] - arc[-1]) / arc[-1]}
+    off |= extensions(tendon, parts, modulus * area / 1000, inputs["draw_in_mm"])
+    off |= losses(tendon, parts, {
+        "shortening_mpa": shortening, "shrinkage_mpa": modulus * inputs["shrinkage_strain"],
         "creep_mpa": modulus / inputs["concrete_modulus_mpa"] * inputs["creep_coefficient"] * sigma,
-        "relaxation_mpa": relaxed * mean(locked, arc) / area * 1000})
-    off |= reaches(tendon, arc, jacking, locked)
+        "relaxation_mpa": relaxed * mean_of(parts, "lockoff_kn") / area * 1000})
     off |= bends(tendon, points, stations, before, after, inputs["inflection"])
+    return off
+
+
+def point_off(point, parts):
+    """How far a point's forces are from those of its segment; at an intermediate anchor the lesser of two counts."""
+    worst = 0.0
+    for name in ("jacking_kn", "lockoff_kn", "transfer_kn", "service_kn"):
+        ranges = []
+        for part in parts:
+            away = np.abs(part["stations"] - point["station_m"])
+            beyond = part is not parts[-1] and point["station_m"] > part["stations"][-1] + 1e-6
+            if beyond or (part is not parts[0] and point["station_m"] < part["stations"][0] - 1e-6):
+                continue
+            near = away <= 2 * STEP_M
+            if not near.any():
+                near = away == away.min()
+            # At a corner the force is a step: any value between its two sides will do.
+            ranges.append((part[name][near].min(), part[name][near].max()))
+        low, high = min(ranges)
+        worst = max(worst, max(low - point[name], point[name] - high, 0.0) / high)
+    return worst
+
+
+def extensions(tendon, parts, stiffness, draw_in):
+    """Extension and draw-in at each jack, of a tendon with intermediate anchors pull by pull."""
+    off, said, last = {"extension": 0.0, "draw_in_reach_m": 0.0}, [], parts[-1]["stations"][-1]
+    for part in parts:
+        stretch = (part["jacking_kn"][1:] + part["jacking_kn"][:-1]) / 2 * np.diff(part["arc"]) / stiffness * 1000
+        division = int(np.argmin(part["jacking_kn"]))
+        shares, open_mm = [float(stretch.sum())] * 2, 0.0
+        if all(part["live"]):
+            # Where the two curves meet is known to a step.
+            open_mm = float(stretch.max())
+            shares = [float(stretch[:division].sum()), float(stretch[division:].sum())]
+        for side in (0, 1):
+            if not part["live"][side]:
+                continue
+            at = part["stations"][-side]
+            told = [pull for pull in tendon.get("pulls", []) if abs(pull["at_m"] - at) < 1e-6
+                    and abs(pull["from_m"] - part["stations"][0]) < 1e-6 and abs(pull["to_m"] - part["stations"][-1]) < 1e-6
+                    and pull["order"] == part["turn"]]
+            if len(parts) > 1 and len(told) != 1:
+                return off | {f"pulls with a jack at {at:.3f}": float(len(told) + 1)}
+            said += told
+            if at in (0.0, last):
+                told = told + [tendon["ends"][side]]
+            for jack in told:
+                for name, wanted in (("extension_mm", shares[side]), ("extension_net_mm", shares[side] - draw_in)):
+                    off["extension"] = max(off["extension"], max(abs(jack[name] - wanted) - open_mm, 0.0) / abs(wanted))
+                off["draw_in_reach_m"] = max(off["draw_in_reach_m"], reach_off(part, side, jack["draw_in_reach_m"]))
+    off["number of jacks"] = float(len(said) != len(tendon.get("pulls", [])))
     return off
 
 
@@ -307,10 +374,16 @@ def relative(value, wanted, floor=1e-9):
     return abs(value - wanted) / max(abs(wanted), floor)
 
 
-def losses(tendon, seen, later_mpa):
-    """How far each loss that is reported is from its own."""
+def mean_of(parts, name):
+    """Mean along all segments, by their lengths."""
+    return sum(mean(part[name], part["arc"]) * part["arc"][-1] for part in parts) / sum(part["arc"][-1] for part in parts)
+
+
+def losses(tendon, parts, later_mpa):
+    """How far each loss that is reported is from its own; of several pulls, those of the one that leaves least."""
     said = tendon["losses"]
     off = {name: relative(said[name], wanted, 0.01) for name, wanted in later_mpa.items()}
+    seen = min(parts, key=lambda part: (float(part["jacking_kn"].min()), part["turn"]))
     jacking, angle, jack = seen["jacking_kn"], seen["angle"], seen["jack"]
     least = int(np.argmin(jacking))
     # Where both jacks give the same force, the loss may be told from either.
@@ -324,23 +397,21 @@ def losses(tendon, seen, later_mpa):
     off["friction"] = max(abs(both - (jack - float(jacking.min()))) - open_kn, 0.0) / jack
     at = 0 if seen["live"][0] else -1
     off["draw_in_kn"] = relative(said["draw_in_kn"], jack - float(seen["lockoff_kn"][at]), 1e-2 * jack)
-    off["mean_service_kn"] = relative(tendon["mean_service_kn"], mean(seen["service_kn"], seen["arc"]))
+    off["mean_service_kn"] = relative(tendon["mean_service_kn"], mean_of(parts, "service_kn"))
     return off
 
 
-def reaches(tendon, arc, jacking, locked):
+def reach_off(part, side, said):
     """Draw-in is felt from the anchor to where the two curves meet, if they do before the other end's begins."""
-    off = {}
-    felt = jacking - locked > 1e-4 * jacking.max()
-    for end, forwards in zip(tendon["ends"], (True, False)):
-        if end["kind"] != "live" or felt.all():
-            continue
-        run = felt if forwards else felt[::-1]
-        along = arc if forwards else arc[-1] - arc[::-1]
-        reach = float(along[np.argmin(run)])
-        # The curves close slowly where they meet: what is felt ends a little before.
-        off["draw_in_reach_m"] = max(abs(end["draw_in_reach_m"] - reach) - 0.03 * reach - 0.05, 0.0) / reach
-    return off
+    jacking, arc = part["jacking_kn"], part["arc"]
+    felt = jacking - part["lockoff_kn"] > 1e-4 * jacking.max()
+    if felt.all():
+        return 0.0
+    run = felt if side == 0 else felt[::-1]
+    along = arc if side == 0 else arc[-1] - arc[::-1]
+    reach = float(along[np.argmin(run)])
+    # The curves close slowly where they meet: what is felt ends a little before.
+    return max(abs(said - reach) - 0.03 * reach - 0.05, 0.0) / reach
 
 
 def bends(tendon, points, stations, before, after, inflection):

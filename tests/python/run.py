@@ -118,6 +118,12 @@ def main():
         methods, out = floor.with_name("harbour-level-2-methods.toml"), scratch / "methods"
         if check("mark by every method", [program, "mark", floor, "--job", methods, "--out", out]):
             check("methods", script("methods", out / "harbour-level-2-result.json"))
+        for office in ("intermediate-anchors", "joints-by-attribute"):
+            plan = ROOT / "tests/data/offices" / f"{office}.dxf"
+            given = ["--job", plan.with_suffix(".toml")] if plan.with_suffix(".toml").exists() else []
+            out = scratch / office
+            if check(f"mark {office}", [program, "mark", plan, *given, "--out", out], expected=(0, 1)):
+                check(f"recompute {office}", script("recompute", plan, out / f"{office}-result.json", 7))
         for job in sorted((ROOT / "tests/data/methods").glob("*.toml")):
             check(f"workings by {job.name}", script("workings", program, ROOT / "demo-drawings" / "small-floor.dxf", job, "B01", "B04", "D001", "D010"))
         check("workings by every method", script("workings", program, floor, methods, "B01", "D031", "D043", "D070"))

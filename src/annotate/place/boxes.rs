@@ -56,7 +56,7 @@ impl Boxes {
 
     /// Numbers of the quadrangles that overlap this one, in the order they came.
     pub(in crate::annotate) fn near(&self, quad: &Quad) -> Vec<usize> {
-        let mut found: Vec<usize> = self.touching(quad).collect();
+        let mut found: Vec<usize> = self.touching(*quad, |_| true).collect();
         found.sort_unstable();
         found.dedup();
         found
@@ -69,12 +69,16 @@ impl Boxes {
 
     /// Whether no quadrangle overlaps this one.
     pub(in crate::annotate) fn is_clear(&self, quad: &Quad) -> bool {
-        self.touching(quad).next().is_none()
+        self.touching(*quad, |_| true).next().is_none()
     }
 
-    /// Numbers of the quadrangles that overlap this one, some of them more than once.
-    fn touching(&self, quad: &Quad) -> impl Iterator<Item = usize> {
-        let cells = self.cells_of(quad);
+    /// Numbers of those of the quadrangles asked for that overlap this one, some of them more than once.
+    pub(in crate::annotate) fn touching(
+        &self,
+        quad: Quad,
+        asked: impl Fn(usize) -> bool,
+    ) -> impl Iterator<Item = usize> {
+        let cells = self.cells_of(&quad);
         let every = cells.is_none().then_some(0..self.quads.len());
         let filed = cells
             .into_iter()
@@ -83,9 +87,9 @@ impl Boxes {
             .flatten()
             .chain(&self.large)
             .copied();
-        let quad = *quad;
         filed
             .chain(every.into_iter().flatten())
+            .filter(move |&index| asked(index))
             .filter(move |&index| {
                 self.quad(index)
                     .is_some_and(|other| !apart_by_bounds(&quad, other) && overlap(&quad, other))
@@ -128,22 +132,21 @@ fn apart_by_bounds(a: &Quad, b: &Quad) -> bool {
 pub(in crate::annotate) fn overlap(a: &Quad, b: &Quad) -> bool {
     const TOUCH_M: f64 = 1e-9;
     let splits = |one: &Quad, other: &Quad, from: Coord<f64>, to: Coord<f64>| {
-        let length = (to.x - from.x).hypot(to.y - from.y);
-        if length <= 0.0 {
-            return false;
-        }
-        let (nx, ny) = ((from.y - to.y) / length, (to.x - from.x) / length);
+        let (across, along) = (from.y - to.y, to.x - from.x);
         // Measured from a corner: far from the origin, plain products would lose the millimetres.
         let span = |quad: &Quad| {
             quad.iter()
-                .map(|c| (c.x - from.x) * nx + (c.y - from.y) * ny)
+                .map(|c| (c.x - from.x) * across + (c.y - from.y) * along)
                 .fold((f64::INFINITY, f64::NEG_INFINITY), |(low, high), value| {
                     (low.min(value), high.max(value))
                 })
         };
         let (low_1, high_1) = span(one);
         let (low_2, high_2) = span(other);
-        low_1 > high_2 - TOUCH_M || low_2 > high_1 - TOUCH_M
+        // Apart by so much, in metres times the edge's length, which is rarely needed itself.
+        let gap = (low_1 - high_2).max(low_2 - high_1);
+        let at_most_m = across.abs() + along.abs();
+        at_most_m > 0.0 && gap > -TOUCH_M * at_most_m && gap > -TOUCH_M * across.hypot(along)
     };
     let parted = |one: &Quad, other: &Quad| {
         let [p, q, r, s] = *one;

@@ -209,6 +209,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
     let result = TendonResult {
         profile: Some(Profile::new(Vec::new(), Vec::new())),
         forces: Some(whole(length_m, kinds)),
+        strand: Some("12.7".to_owned()),
         area_mm2: Some(493.5),
         plan_tightest: None,
         turning: None,
@@ -230,6 +231,7 @@ fn through(mark: &str, places: &[Coord<f64>], both_live: bool) -> Worked {
         strand: Some("12.7".to_owned()),
         required_kn: None,
         required_kn_per_m: None,
+        joints: Vec::new(),
         ends,
         points,
     };
@@ -266,6 +268,7 @@ fn whole(length_m: f64, kinds: [EndKind; 2]) -> Forces {
         least_jacking_kn: forces_kn(least_m, length_m, both_live)[0],
         least_jacking_station_m: least_m,
         least_jacking_angle_rad: 0.0,
+        pulls: Vec::new(),
     }
 }
 

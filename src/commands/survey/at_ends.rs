@@ -32,8 +32,12 @@ pub(super) struct AtEnds {
     pub(super) insert_layers: BTreeMap<usize, String>,
     /// By number of a shape that is a line: how many of its ends have something that marks them.
     pub(super) marked: BTreeMap<usize, usize>,
+    /// Ends at which a block or a shape stands.
+    pub(super) stops: Vec<Coord<f64>>,
     /// Numbers of texts that stand at an end: they are no legend.
     texts: BTreeSet<usize>,
+    /// Blocks on lines whose names, or a legend, call them intermediate anchors.
+    pub(super) between: BTreeSet<String>,
     /// What legends say of blocks.
     pub(super) legend_blocks: BTreeMap<String, EndKind>,
     /// What legends say of shapes.
@@ -85,6 +89,9 @@ impl AtEnds {
                     let key = (piece.layer.clone(), *word);
                     *found.shapes.entry(key).or_default() += 1;
                 }
+                if block.is_some() || figure.is_some() {
+                    found.stops.push(place);
+                }
                 marked += usize::from(block.is_some() || word.is_some() || figure.is_some());
             }
             if marked > 0 {
@@ -92,7 +99,30 @@ impl AtEnds {
             }
         }
         found.legend(drawing, &inserts, &shapes, &figures);
+        found.between(drawing, reach_m);
         found
+    }
+
+    /// Blocks that say by their names that a tendon goes on through them, where they stand on an open line.
+    fn between(&mut self, drawing: &Drawing, reach_m: f64) {
+        for insert in drawing
+            .inserts
+            .iter()
+            .filter(|insert| is_between(&insert.block))
+        {
+            if self.between.contains(&insert.block) {
+                continue;
+            }
+            let mut lines = drawing.shapes.iter().filter(|shape| !shape.closed);
+            let on = |shape: &Shape| {
+                let near = shape.path.project(insert.place);
+                near.is_some_and(|near| near.distance_m <= reach_m)
+                    && shape.path.length_m() >= LINE * reach_m
+            };
+            if lines.any(on) {
+                self.between.insert(insert.block.clone());
+            }
+        }
     }
 
     /// Whether a shape is part of a block that stands at line ends, here or elsewhere: no line of its layer.
@@ -125,9 +155,10 @@ impl AtEnds {
         figures: &[Figure],
     ) {
         for (number, text) in drawing.texts.iter().enumerate() {
-            let Some(kind) = hinted(&text.content).filter(|_| text.content.contains(' ')) else {
+            let (kind, between) = (hinted(&text.content), is_between(&text.content));
+            if kind.is_none() && !between || !text.content.contains(' ') {
                 continue;
-            };
+            }
             if text.within.is_some() || self.texts.contains(&number) {
                 continue;
             }
@@ -144,7 +175,14 @@ impl AtEnds {
                     .get(insert)
                     .is_some_and(|insert| level(insert.place))
             });
-            if let Some(insert) = insert.and_then(|insert| drawing.inserts.get(insert)) {
+            let insert = insert.and_then(|insert| drawing.inserts.get(insert));
+            if let Some(insert) = insert.filter(|_| between) {
+                self.between.insert(insert.block.clone());
+            }
+            let Some(kind) = kind else {
+                continue;
+            };
+            if let Some(insert) = insert {
                 self.legend_blocks
                     .entry(insert.block.clone())
                     .or_insert(kind);
@@ -161,15 +199,49 @@ impl AtEnds {
     }
 }
 
+/// Words that are part of what other offices call a dead or a live end, also in French, German, Spanish, Russian and
+/// Chinese (from memory).
+const DEAD: [&str; 8] = [
+    "DEAD",
+    "FIXED",
+    "PASSIV",
+    "PASSIF",
+    "PASIVO",
+    "FESTANKER",
+    "ПАССИВН",
+    "固定端",
+];
+const LIVE: [&str; 9] = [
+    "LIVE",
+    "STRESSING",
+    "ACTIV",
+    "ACTIF",
+    "JACK",
+    "SPANNANKER",
+    "АКТИВН",
+    "НАТЯЖН",
+    "张拉端",
+];
+
 /// What a name or a word of another office says of an end.
 pub(super) fn hinted(text: &str) -> Option<EndKind> {
+    if is_between(text) {
+        return None;
+    }
     let text = text.to_uppercase();
     let says = |words: &[&str]| words.iter().any(|word| text.contains(word));
-    if says(&["DEAD", "FIXED", "PASSIVE"]) {
+    if says(&DEAD) {
         Some(EndKind::Dead)
     } else {
-        says(&["LIVE", "STRESSING", "ACTIVE", "JACK"]).then_some(EndKind::Live)
+        says(&LIVE).then_some(EndKind::Live)
     }
+}
+
+/// Whether a name or a word of another office speaks of an anchor between the ends of a tendon.
+fn is_between(text: &str) -> bool {
+    let text = text.to_uppercase();
+    let mut words = text.split(|sign: char| !sign.is_alphanumeric());
+    text.contains("INTERMED") || text.contains("COUPL") || words.any(|word| word == "IA")
 }
 
 /// A short text without digits.

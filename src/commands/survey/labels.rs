@@ -62,7 +62,7 @@ fn layers<'c>(
 }
 
 /// The unit that the drawing's own unit is nearest to.
-fn unit_of(drawing: &Drawing) -> LengthUnit {
+pub(super) fn unit_of(drawing: &Drawing) -> LengthUnit {
     use LengthUnit::{Cm, Ft, In, M, Mm};
     let off = |unit: LengthUnit| (drawing.unit_m / unit.metres()).ln().abs();
     let nearest = [Mm, Cm, M, In, Ft]

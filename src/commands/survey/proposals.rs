@@ -7,9 +7,9 @@ use serde_json::{Value, json};
 use super::at_ends::hinted;
 use super::contents::Contents;
 use super::directions::two_ways;
-use super::labels;
+use super::picked::Picked;
 use super::roles::{Guesses, guesses, is_grid};
-use super::symbols;
+use super::{extents, gaps, labels, notes, symbols, trial};
 use crate::commands::job_file::JobFile;
 use crate::commands::{units, work};
 use crate::drawing::{Drawing, UnitFrom, Wanted};
@@ -17,6 +17,7 @@ use crate::floor::EndWords;
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
 use crate::patterns::{Selectors, pattern_of};
+use crate::units::LengthUnit;
 
 /// What to set in the job file, by path of the key.
 pub(super) fn proposals(
@@ -40,13 +41,59 @@ pub(super) fn proposals(
             },
         );
     }
+    let tendons = Picked::tendons(job, &proposals);
+    let at_ends = &contents.at_ends;
+    let unread = |layer: &str| is_free(drawing, &named, layer) && !guessed(&guesses, layer);
+    let extents = extents::layers(drawing, at_ends, &tendons, job, unread);
+    if !extents.is_empty() {
+        let why = "Lines here cross tendons, and texts beside them name groups. Check it.";
+        put(&mut proposals, "layers.extents", json!(extents), why);
+    }
     if let Some(proposal) = unit(drawing, contents, job, &proposals) {
         proposals.insert("drawing.unit".to_owned(), proposal);
     }
+    let gap = gaps::proposal(drawing, at_ends, &tendons, job);
+    proposals.extend(gap.map(|gap| ("drawing.bridge_gap_mm".to_owned(), gap)));
     let of_labels = labels::proposals(drawing, contents, job, &proposals);
     proposals.extend(of_labels);
+    proposals.extend(notes::thickness(drawing, contents, job));
+    us_units(drawing, &mut proposals);
     keep_given(job_file, &mut proposals);
+    for (key, proposal) in trial::proposals(drawing, &proposals) {
+        proposals.entry(key).or_insert(proposal);
+    }
     proposals
+}
+
+fn put(proposals: &mut BTreeMap<String, Proposal>, key: &str, value: Value, why: &str) {
+    let why = why.to_owned();
+    proposals.insert(key.to_owned(), Proposal { value, why });
+}
+
+/// Whether a layer is proposed for something already.
+fn guessed(guesses: &Guesses, layer: &str) -> bool {
+    let patterns = guesses.values().flatten().cloned();
+    work::wanted(patterns).has(layer)
+}
+
+/// Reports in kips and inches where the drawing is in inches or feet, or its labels are.
+fn us_units(drawing: &Drawing, proposals: &mut BTreeMap<String, Proposal>) {
+    let inches = |key: &str| {
+        let value = proposals
+            .get(key)
+            .and_then(|proposal| proposal.value.as_str());
+        value.is_some_and(|unit| ["in", "ft"].contains(&unit))
+    };
+    let drawn = matches!(labels::unit_of(drawing), LengthUnit::In | LengthUnit::Ft)
+        && !proposals.contains_key("drawing.unit");
+    let why = if drawn || inches("drawing.unit") {
+        "The drawing is in inches or feet."
+    } else if inches("height.unit") {
+        "Heights are in inches."
+    } else {
+        return;
+    };
+    put(proposals, "units", json!("us"), why);
 }
 
 /// What the job file that was given sets stays set.
@@ -204,12 +251,21 @@ fn unit(
         .filter(|(name, _)| wanted.has(name))
         .flat_map(|(_, held)| held.open_m.iter().copied());
     let median_m = units::median_m(lengths_m)?;
-    if units::plausible(median_m) || drawing.unit_from == UnitFrom::Job {
+    // What the drawing says is doubted where it cannot be; what is assumed already where it would be strange.
+    let fits = match drawing.unit_from {
+        UnitFrom::Job => true,
+        UnitFrom::Header => units::plausible(median_m),
+        UnitFrom::Assumed => units::usual(median_m),
+    };
+    if fits {
         return None;
     }
-    let (unit, would_m) = units::sensible(median_m, drawing.unit_m)
-        .into_iter()
-        .next()?;
+    let fits = units::sensible(median_m, drawing.unit_m);
+    // Of units that would do, one of the office's own system.
+    let inch = |unit: LengthUnit| matches!(unit, LengthUnit::In | LengthUnit::Ft);
+    let own =
+        |(unit, _): &&(LengthUnit, f64)| drawing.metric.is_some_and(|metric| metric != inch(*unit));
+    let (unit, would_m) = *fits.iter().find(own).or(fits.first())?;
     Some(Proposal {
         value: json!(unit.name()),
         why: format!(

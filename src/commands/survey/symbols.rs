@@ -14,6 +14,7 @@ use crate::patterns::{Names, pattern_of};
 pub(super) fn proposals(contents: &Contents, job: &Job) -> BTreeMap<String, Proposal> {
     let mut proposals = BTreeMap::new();
     blocks(contents, job, &mut proposals);
+    between(contents, job, &mut proposals);
     attributes(contents, job, &mut proposals);
     words(contents, job, &mut proposals);
     shapes(contents, job, &mut proposals);
@@ -61,6 +62,9 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             continue;
         }
         let says = |block: &&String| {
+            if found.between.contains(*block) {
+                return false;
+            }
             let legend = found.legend_blocks.get(*block).copied();
             hinted(block).or(legend) == Some(kind)
         };
@@ -72,6 +76,19 @@ fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             "No block at a line end fits the default; the name or the legend says so.",
         );
     }
+}
+
+/// Blocks on lines that are intermediate anchors by their names or a legend, where none fits the job.
+fn between(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
+    let found = &contents.at_ends.between;
+    let known = names(&job.conventions.intermediate_blocks);
+    if found.iter().any(|block| known.has(block)) {
+        return;
+    }
+    let blocks = found.iter().map(|block| pattern_of(block)).collect();
+    let why =
+        "No block fits the default; the name or the legend says that tendons go on through these.";
+    put(proposals, "intermediate_blocks", &blocks, why);
 }
 
 /// Blocks at line ends that an attribute tells apart.
@@ -89,8 +106,11 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
     let (mut blocks, mut tags) = (BTreeSet::new(), BTreeSet::new());
     let mut new_words =
         BTreeMap::from(KINDS.map(|(kind, _)| (kind == EndKind::Live, BTreeSet::new())));
+    let other = by_elimination(contents, &said);
     for (block, tag, value) in contents.at_ends.attributes.keys() {
-        let Some(kind) = said.kind(value).or_else(|| hinted(value)) else {
+        let place = (block.as_str(), tag.as_str(), value.as_str());
+        let told = said.kind(value).or_else(|| hinted(value));
+        let Some(kind) = told.or_else(|| other.get(&place).copied()) else {
             continue;
         };
         if known.has(block) || hinted(block).is_some() {
@@ -116,6 +136,12 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
         &tags,
         "The attributes that say it.",
     );
+    let guessed = if other.is_empty() {
+        "Values of those attributes, and the defaults."
+    } else {
+        "Values of those attributes, and the defaults. Of two values one is known; the other is taken for the other end: a \
+         guess, look at the legend."
+    };
     for (kind, word) in KINDS {
         let mut words = new_words
             .remove(&(kind == EndKind::Live))
@@ -123,13 +149,43 @@ fn attributes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, P
         if !words.is_empty() {
             words.extend(known_words(job, kind).iter().cloned());
         }
-        put(
-            proposals,
-            &format!("{word}_words"),
-            &words,
-            "Values of those attributes, and the defaults.",
-        );
+        put(proposals, &format!("{word}_words"), &words, guessed);
     }
+}
+
+/// Where an attribute has two values at line ends, each at several, and one is known, what the other must be: block, tag
+/// and value.
+fn by_elimination<'c>(
+    contents: &'c Contents,
+    said: &EndWords,
+) -> BTreeMap<(&'c str, &'c str, &'c str), EndKind> {
+    let mut values: BTreeMap<(&str, &str), Vec<(&str, usize)>> = BTreeMap::new();
+    for ((block, tag, value), count) in &contents.at_ends.attributes {
+        values
+            .entry((block, tag))
+            .or_default()
+            .push((value, *count));
+    }
+    let kind = |value: &str| said.kind(value).or_else(|| hinted(value));
+    let mut found = BTreeMap::new();
+    for ((block, tag), values) in values {
+        let [(one, ones), (two, twos)] = values[..] else {
+            continue;
+        };
+        let (known, unknown) = match (kind(one), kind(two)) {
+            (Some(known), None) => (known, two),
+            (None, Some(known)) => (known, one),
+            _ => continue,
+        };
+        if ones.min(twos) > 1 {
+            let other = match known {
+                EndKind::Live => EndKind::Dead,
+                EndKind::Dead => EndKind::Live,
+            };
+            found.insert((block, tag, unknown), other);
+        }
+    }
+    found
 }
 
 /// Texts at line ends that say what they are in words the job does not know.

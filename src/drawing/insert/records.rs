@@ -2,6 +2,7 @@
 
 use std::io::Write as _;
 
+use super::digits::Digits;
 use crate::drawing::tags::Form;
 
 /// The steps between DXF versions at which a record's shape changes.
@@ -98,67 +99,60 @@ impl Records {
     /// A handle or a pointer to one; nothing where there is none.
     pub(super) fn handle(&mut self, code: i16, handle: Option<u64>) {
         if let Some(handle) = handle {
-            self.formatted(code, format_args!("{handle:X}"));
+            self.code(code);
+            let digits = Digits::before(self.behind()).hexadecimal(handle);
+            self.bytes.extend_from_slice(digits.shown());
         }
     }
 
     /// A short whole number (codes 60-79, 170-179, 370-379).
     pub(super) fn short(&mut self, code: i16, value: i16) {
+        self.code(code);
         match self.style.form {
-            Form::Ascii => self.formatted(code, format_args!("{value:>6}")),
-            Form::Binary { .. } => {
-                self.code(code);
-                self.bytes.extend_from_slice(&value.to_le_bytes());
-            }
+            Form::Ascii => self.whole(value.into(), 6),
+            Form::Binary { .. } => self.bytes.extend_from_slice(&value.to_le_bytes()),
         }
     }
 
     /// A long whole number (codes 90-99, 420-429).
     pub(super) fn long(&mut self, code: i16, value: i32) {
+        self.code(code);
         match self.style.form {
-            Form::Ascii => self.formatted(code, format_args!("{value:>9}")),
-            Form::Binary { .. } => {
-                self.code(code);
-                self.bytes.extend_from_slice(&value.to_le_bytes());
-            }
+            Form::Ascii => self.whole(value, 9),
+            Form::Binary { .. } => self.bytes.extend_from_slice(&value.to_le_bytes()),
         }
+    }
+
+    /// A whole number as text, padded to a width.
+    fn whole(&mut self, value: i32, width: usize) {
+        let room = width.min(Digits::WIDEST);
+        self.bytes.extend(std::iter::repeat_n(b' ', width - room));
+        let digits = Digits::before(self.behind()).whole(value, room);
+        self.bytes.extend_from_slice(digits.shown());
     }
 
     /// A real number (codes 10-59), which the caller has rounded; in ASCII the shortest text that reads back the same.
     pub(super) fn real(&mut self, code: i16, value: f64) {
         // Adding zero turns -0.0 into 0.0.
         let value = value + 0.0;
-        match self.style.form {
-            // A whole number prints without its point; asking for one decimal is many times slower.
-            Form::Ascii if value.fract() == 0.0 => self.formatted(code, format_args!("{value}.0")),
-            Form::Ascii => self.formatted(code, format_args!("{value}")),
-            Form::Binary { .. } => {
-                self.code(code);
-                self.bytes.extend_from_slice(&value.to_le_bytes());
-            }
-        }
-    }
-
-    fn formatted(&mut self, code: i16, value: std::fmt::Arguments<'_>) {
         self.code(code);
-        // Writing into memory cannot fail.
-        let _ = self.bytes.write_fmt(value);
-        self.end_text();
+        match self.style.form {
+            Form::Ascii => {
+                if let Some(digits) = Digits::before(self.behind()).millionths(value) {
+                    self.bytes.extend_from_slice(digits.shown());
+                    return;
+                }
+                let point = if value.fract() == 0.0 { ".0" } else { "" };
+                // Writing into memory cannot fail.
+                let _ = write!(self.bytes, "{value}{point}{}", self.style.line_end);
+            }
+            Form::Binary { .. } => self.bytes.extend_from_slice(&value.to_le_bytes()),
+        }
     }
 
     fn code(&mut self, code: i16) {
         match self.style.form {
-            Form::Ascii => {
-                // By hand: a third of all bytes written are codes.
-                let digits = [code / 1000, code / 100 % 10, code / 10 % 10, code % 10];
-                let first = digits.iter().position(|&digit| digit != 0).unwrap_or(3);
-                let blanks = self.style.code_width.saturating_sub(digits.len() - first);
-                self.bytes.extend(std::iter::repeat_n(b' ', blanks));
-                let shown = digits.iter().skip(first);
-                self.bytes
-                    .extend(shown.map(|&digit| b'0' + u8::try_from(digit).unwrap_or(0)));
-                self.bytes.extend_from_slice(self.style.line_end.as_bytes());
-            }
+            Form::Ascii => self.whole(code.into(), self.style.code_width),
             Form::Binary { wide: true } => self.bytes.extend_from_slice(&code.to_le_bytes()),
             Form::Binary { wide: false } => match u8::try_from(code) {
                 Ok(narrow) if narrow < 255 => self.bytes.push(narrow),
@@ -171,9 +165,15 @@ impl Records {
     }
 
     fn end_text(&mut self) {
+        let behind = self.behind();
+        self.bytes.extend_from_slice(behind.as_bytes());
+    }
+
+    /// What stands behind a text.
+    fn behind(&self) -> &'static str {
         match self.style.form {
-            Form::Ascii => self.bytes.extend_from_slice(self.style.line_end.as_bytes()),
-            Form::Binary { .. } => self.bytes.push(0),
+            Form::Ascii => self.style.line_end,
+            Form::Binary { .. } => "\0",
         }
     }
 }

@@ -1,4 +1,4 @@
-//! Words that say what an end is: `LE`, `L.E.`, `live end`, `(DE)`.
+//! Words that say what an anchor is: `LE`, `L.E.`, `live end`, `(DE)`, `INTERMEDIATE ANCHOR`.
 
 use super::super::types::EndKind;
 use crate::job::Conventions;
@@ -9,24 +9,40 @@ use crate::patterns::folded;
 pub struct EndWords {
     live: Vec<String>,
     dead: Vec<String>,
+    intermediate: Vec<String>,
     /// Whether some word holds a digit; if none does, most labels are passed over at a glance.
     digits: bool,
+}
+
+/// What a word says of an anchor.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Said {
+    /// It is an end of this kind.
+    End(EndKind),
+    /// The tendon goes on through it.
+    Intermediate,
 }
 
 impl EndWords {
     /// The words of a job.
     pub fn new(conventions: &Conventions) -> Self {
-        let plain = |words: &[String]| words.iter().map(|word| plain(word)).collect();
-        let (live, dead): (Vec<String>, Vec<String>) = (
-            plain(&conventions.live_end_words),
-            plain(&conventions.dead_end_words),
-        );
-        let digits = live.iter().chain(&dead).any(|word| has_digit(word));
-        Self { live, dead, digits }
+        let plain =
+            |words: &[String]| -> Vec<String> { words.iter().map(|word| plain(word)).collect() };
+        let live = plain(&conventions.live_end_words);
+        let dead = plain(&conventions.dead_end_words);
+        let intermediate = plain(&conventions.intermediate_words);
+        let mut all = live.iter().chain(&dead).chain(&intermediate);
+        let digits = all.any(|word| has_digit(word));
+        Self {
+            live,
+            dead,
+            intermediate,
+            digits,
+        }
     }
 
-    /// What one line says.
-    pub fn kind(&self, line: &str) -> Option<EndKind> {
+    /// What one line says of an anchor.
+    pub fn said(&self, line: &str) -> Option<Said> {
         if !self.digits && has_digit(line) {
             return None;
         }
@@ -34,18 +50,28 @@ impl EndWords {
         let short = line.strip_suffix(" END").unwrap_or(&line);
         let among = |words: &[String]| words.iter().any(|word| *word == line || word == short);
         if among(&self.live) {
-            Some(EndKind::Live)
+            Some(Said::End(EndKind::Live))
+        } else if among(&self.dead) {
+            Some(Said::End(EndKind::Dead))
         } else {
-            among(&self.dead).then_some(EndKind::Dead)
+            among(&self.intermediate).then_some(Said::Intermediate)
+        }
+    }
+
+    /// The kind of end that one line names.
+    pub fn kind(&self, line: &str) -> Option<EndKind> {
+        match self.said(line)? {
+            Said::End(kind) => Some(kind),
+            Said::Intermediate => None,
         }
     }
 
     /// What a text says in one of its lines, and whether it says nothing else.
-    pub(super) fn found_in(&self, content: &str) -> Option<(EndKind, bool)> {
+    pub(super) fn found_in(&self, content: &str) -> Option<(Said, bool)> {
         let mut lines = content.lines().filter(|line| !line.trim().is_empty());
-        let kind = lines.clone().find_map(|line| self.kind(line))?;
-        let whole = lines.all(|line| self.kind(line).is_some());
-        Some((kind, whole))
+        let said = lines.clone().find_map(|line| self.said(line))?;
+        let whole = lines.all(|line| self.said(line).is_some());
+        Some((said, whole))
     }
 }
 
@@ -88,9 +114,15 @@ mod tests {
         }
         assert_eq!(
             words.found_in("D1 5-12.7\nLE"),
-            Some((EndKind::Live, false))
+            Some((Said::End(EndKind::Live), false))
         );
-        assert_eq!(words.found_in("DE\n"), Some((EndKind::Dead, true)));
+        let dead = Said::End(EndKind::Dead);
+        assert_eq!(words.found_in("DE\n"), Some((dead, true)));
+        for text in ["Intermediate Anchor", "(INT. ANCHOR)", "INTERMEDIATE"] {
+            assert_eq!(words.said(text), Some(Said::Intermediate), "{text}");
+            assert_eq!(words.kind(text), None, "{text}");
+        }
+        assert_eq!(words.said("INTERMEDIATE ANCHOR BY OTHERS"), None);
         conventions.live_end_words = vec!["J1".to_owned()];
         assert_eq!(EndWords::new(&conventions).kind("j1"), Some(EndKind::Live));
     }

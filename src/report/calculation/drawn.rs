@@ -4,7 +4,7 @@ use super::{figure, grid, number, over_1000};
 use crate::analysis::TendonResult;
 use crate::floor::{EndKind, Point, Tendon};
 use crate::job::{HeightReading, Job};
-use crate::losses::steel;
+use crate::losses::{steel, strand_size};
 use crate::report::DrawingFacts;
 use crate::report::table::plain;
 use crate::units::{FORCE, FORCE_PER_WIDTH, LONG, SHORT, STEEL, STRESS, Unit};
@@ -43,8 +43,18 @@ pub(super) fn part(
         Some(EndKind::Dead) => "dead",
         None => "unknown",
     });
+    let joints: Vec<String> = tendon
+        .joints
+        .iter()
+        .map(|joint| long.said(joint.station_m, 3))
+        .collect();
+    let between = if joints.is_empty() {
+        String::new()
+    } else {
+        format!("; intermediate anchors at station {}", joints.join(", "))
+    };
     text.push(format!(
-        "  ends: {} at station 0, {} at the last station\n\n",
+        "  ends: {} at station 0, {} at the last station{between}\n\n",
         ends[0], ends[1]
     ));
     let reading = &job.conventions.height;
@@ -125,9 +135,16 @@ fn strands(job: &Job, tendon: &Tendon) -> String {
         (Some(count), Some(steel)) => {
             let units = job.units;
             let (area, stress) = (units.of(STEEL), units.of(STRESS));
+            let size = strand_size(tendon, &job.tendon).map_or("", |size| size.name.as_str());
+            let whose = if tendon.strand.is_none() {
+                " (the job's default_strand)"
+            } else {
+                ""
+            };
             format!(
-                "  {count} strands of {}: Ap = {whole}, fpk = {strength}, Ep = {}{several}\n  \
+                "  {count} strands of size {}{whose}, {} each: Ap = {whole}, fpk = {strength}, Ep = {}{several}\n  \
                  P0 = {} x {strength} x {whole}{} = {}\n",
+                plain(size),
                 area.given(steel.area_mm2 / f64::from(count)),
                 stress.given(steel.modulus_mpa),
                 job.stressing.jacking_ratio,

@@ -1,16 +1,23 @@
 //! Draw-in, elastic shortening, long-term loss, the forces that are left, and the extension.
 
 use super::drawn::kind;
+use super::pulls::Shown;
 use super::{figure, grid, methods, number, over_1000};
 use crate::analysis::TendonResult;
-use crate::floor::{EndKind, Tendon};
+use crate::floor::Tendon;
 use crate::job::Job;
 use crate::losses::Forces;
 use crate::units::{FORCE, LONG, SHORT, STEEL, STRESS, WORK};
 
 /// Everything after jacking.
-pub(super) fn part(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
-    let mut parts = vec![draw_in(job, tendon, forces, result)];
+pub(super) fn part(
+    job: &Job,
+    tendon: &Tendon,
+    forces: &Forces,
+    pulls: &[Shown<'_>],
+    result: &TendonResult,
+) -> String {
+    let mut parts = vec![draw_in(job, forces, pulls)];
     parts.push(if forces.later.is_some() {
         methods::drawn(job, result)
     } else {
@@ -18,7 +25,7 @@ pub(super) fn part(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonR
             .to_owned()
     });
     parts.push(left(tendon, forces, result, job));
-    parts.push(extension(job, forces));
+    parts.push(extension(job, forces, pulls));
     parts.push(methods::others(result, job.units));
     parts.push(methods::side_by_side(tendon, result, job));
     parts.retain(|part| !part.is_empty());
@@ -30,7 +37,7 @@ fn stiffness_kn(forces: &Forces) -> f64 {
     forces.steel.modulus_mpa * forces.steel.area_mm2 / 1000.0
 }
 
-fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -> String {
+fn draw_in(job: &Job, forces: &Forces, pulls: &[Shown<'_>]) -> String {
     let stiffness_kn = stiffness_kn(forces);
     let units = job.units;
     let (force, long) = (units.of(FORCE), units.of(LONG));
@@ -46,24 +53,20 @@ fn draw_in(job: &Job, tendon: &Tendon, forces: &Forces, result: &TendonResult) -
             .of(WORK)
             .said(job.stressing.draw_in_m * stiffness_kn, 3)
     )];
-    for (index, end) in forces.ends.iter().enumerate() {
-        let point = if index == 0 {
-            result.points.first()
-        } else {
-            result.points.last()
-        };
-        let locked = point.and_then(|point| point.forces_kn[1]);
-        if end.kind == EndKind::Live {
+    for pull in pulls {
+        for (station_m, locked_kn, end) in pull.jacks() {
+            let at = match pull.order {
+                Some(order) => format!("pull {order}, anchor at station"),
+                None => "anchor at station".to_owned(),
+            };
+            let ratio =
+                locked_kn.map(|kn| kn * 1000.0 / forces.steel.area_mm2 / forces.steel.strength_mpa);
             text.push(format!(
-                "  anchor at station {}: PA = {} {} ({} of fpk), felt over {} {}{}\n",
-                long.said([0.0, tendon.path.length_m()][index], 3),
-                figure(force, locked, 2),
+                "  {at} {}: PA = {} {} ({} of fpk), felt over {} {}{}\n",
+                long.said(station_m, 3),
+                figure(force, locked_kn, 2),
                 force.name,
-                number(
-                    locked
-                        .map(|kn| kn * 1000.0 / forces.steel.area_mm2 / forces.steel.strength_mpa),
-                    4
-                ),
+                number(ratio, 4),
                 figure(long, end.draw_in_reach_m, 3),
                 long.name,
                 if end.draw_in_reaches_far {
@@ -120,16 +123,29 @@ fn left(tendon: &Tendon, forces: &Forces, result: &TendonResult, job: &Job) -> S
     text.concat()
 }
 
-fn extension(job: &Job, forces: &Forces) -> String {
+fn extension(job: &Job, forces: &Forces, pulls: &[Shown<'_>]) -> String {
     let stiffness_kn = stiffness_kn(forces);
     let units = job.units;
     let short = units.of(SHORT);
     let mut text = vec!["8. Extension: integral of P ds / (E A), from the jack to the point of least force; net = gross - draw-in\n"
             .to_owned()];
-    for (end, name) in forces.ends.iter().zip(["station 0", "the last station"]) {
-        if let (Some(gross_mm), Some(net_mm)) = (end.extension_mm, end.extension_net_mm) {
+    for pull in pulls {
+        let mut gross_of_two_mm = 0.0;
+        for (station_m, _, end) in pull.jacks() {
+            let (Some(gross_mm), Some(net_mm)) = (end.extension_mm, end.extension_net_mm) else {
+                continue;
+            };
+            gross_of_two_mm += gross_mm;
+            let at = match pull.order {
+                Some(order) => {
+                    let station = units.of(LONG).said(station_m, 3);
+                    format!("pull {order}, at station {station}")
+                }
+                None if station_m <= 0.0 => "at station 0".to_owned(),
+                None => "at the last station".to_owned(),
+            };
             text.push(format!(
-                "  at {name}: {} / {} = {} gross; - {} = {} net\n",
+                "  {at}: {} / {} = {} gross; - {} = {} net\n",
                 units.of(WORK).said(gross_mm / 1000.0 * stiffness_kn, 2),
                 units.of(FORCE).said(stiffness_kn, 1),
                 short.said(gross_mm, 1),
@@ -137,14 +153,13 @@ fn extension(job: &Job, forces: &Forces) -> String {
                 short.said(net_mm, 1)
             ));
         }
-    }
-    if forces.ends.iter().all(|end| end.kind == EndKind::Live) {
-        let total_mm: f64 = forces.ends.iter().filter_map(|end| end.extension_mm).sum();
-        text.push(format!(
-            "  both jacks pull together; the two add up to {} gross; with one jack moved from end to end the first \
-             pull is longer and the second shorter\n",
-            short.said(total_mm, 1)
-        ));
+        if pull.forces.both_live() {
+            text.push(format!(
+                "  both jacks pull together; the two add up to {} gross; with one jack moved from end to end the first \
+                 pull is longer and the second shorter\n",
+                short.said(gross_of_two_mm, 1)
+            ));
+        }
     }
     text.push("  strand between anchor and jack is not in these figures\n".to_owned());
     text.concat()

@@ -20,6 +20,7 @@ class Tendon:
     required_kn: float | None = None
     required_kn_per_m: float | None = None
     points: list = field(default_factory=list)  # (kind, station in metres, height)
+    joints: list = field(default_factory=list)  # stations of intermediate anchors, metres
 
     def length(self):
         return sum(math.dist(a, b) for a, b in zip(self.plan, self.plan[1:]))
@@ -208,5 +209,8 @@ class Office:
                 x, y = self.sheet.metres(*meant.place(station))
                 record["points"].append({"kind": kind, "x_m": round(x, 6), "y_m": round(y, 6),
                                          "height_mm": round(height, 9)})
+            if meant.joints:
+                places = [self.sheet.metres(*meant.place(station)) for station in meant.joints]
+                record["joints"] = [{"x_m": round(x, 6), "y_m": round(y, 6)} for x, y in places]
             return record
         return {"habit": self.habit, "unit_m": UNITS[self.unit][1], "tendons": [tendon(t) for t in self.tendons]}
