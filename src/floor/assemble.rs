@@ -138,11 +138,15 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     findings.extend(found);
     tendons.extend(made);
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
-    let torn = lines.iter().zip(&settled_marks.of_line);
-    let torn = torn.filter(|(_, said)| said.uncounted());
-    let torn: BTreeSet<&str> = torn.map(|(line, _)| line.handle.as_str()).collect();
+    let torn = uncounted(&lines, &settled_marks.of_line);
     findings.extend(marks::findings(&tendons, &torn));
     (Floor { tendons, slab }, findings)
+}
+
+/// Lines of which the labels contradict one another in what they count, by handle.
+fn uncounted<'l>(lines: &'l [Line], said: &[Marking]) -> BTreeSet<&'l str> {
+    let torn = lines.iter().zip(said).filter(|(_, said)| said.uncounted());
+    torn.map(|(line, _)| line.handle.as_str()).collect()
 }
 
 /// A tendon that the drawing shows.
