@@ -11,7 +11,7 @@ use super::groups::groups;
 use super::heights::{self, Height, Settled};
 use super::index::Index;
 use super::joints::{self, joints};
-use super::labels::{Labels, labels};
+use super::labels::labels;
 use super::layers::Roles;
 use super::levels::levels;
 use super::lines::{Line, lines};
@@ -56,16 +56,11 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     findings.extend(found);
     let arrows = Arrows::new(drawing, &roles, &index, conventions.arrow_reach_m);
     let groups = groups(drawing, job, &roles, &arrows, &lines, &index);
-    let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
-    taken.extend(&groups.texts);
+    let of_others = [&levels.texts, &symbols.texts, &groups.texts];
+    let taken = of_others.into_iter().flatten().copied().collect();
     findings.extend(groups.findings.iter().cloned());
     let (labels, found) = labels(drawing, job, &roles, &taken);
     findings.extend(found);
-    let Labels {
-        heights: height_labels,
-        marks: mark_labels,
-        unread,
-    } = labels;
 
     let among = Among {
         drawing,
@@ -76,7 +71,7 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         columns: &columns,
         arrows: &arrows,
     };
-    let (marks, mut settled_marks) = among.marks(mark_labels);
+    let (marks, mut settled_marks) = among.marks(labels.marks);
     findings.extend(aims::shared(&marks, &lines));
     findings.extend(marks.findings);
     let (plans, found) = plans(&groups, &mut settled_marks.of_line, &lines);
@@ -91,10 +86,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     };
     findings.extend(near.marks(&marks.texts, &settled_marks));
 
-    let (heights, settled) = among.heights(height_labels, &thickness, &levels.of_line);
+    let (heights, settled) = among.heights(labels.heights, &thickness, &levels.of_line);
     findings.extend(heights.findings);
     findings.extend(near.heights(&heights.texts, &heights.readings, &settled));
-    let mut strays = near.strays(&heights.texts, &heights.readings, &settled, &unread);
+    let mut strays = near.strays(&heights.texts, &heights.readings, &settled, &labels.unread);
     for (text, reading) in heights.astray {
         strays.extend(near.beside(text, kind(reading)));
     }
@@ -138,8 +133,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     findings.extend(found);
     tendons.extend(made);
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
-    let torn = uncounted(&lines, &settled_marks.of_line);
-    findings.extend(marks::findings(&tendons, &torn));
+    findings.extend(marks::findings(
+        &tendons,
+        &uncounted(&lines, &settled_marks.of_line),
+    ));
     (Floor { tendons, slab }, findings)
 }
 
