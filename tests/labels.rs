@@ -86,6 +86,16 @@ fn strands_and_required_forces() {
             ("5-1/2\"", "5 of 12.7"),
             ("5-1/2\" DIA. STRANDS", "5 of 12.7"),
             ("4-½\"", "4 of 12.7"),
+            ("4 x 1/2\"", "4 of 12.7"),
+            ("4x1/2\"", "4 of 12.7"),
+            ("10 No. 1/2\"", "10 of 12.7"),
+            ("D3: 4 x ½\"", "D3: 4 of 12.7"),
+            ("2 x 4 - 1/2\"", "2 x 4 of 12.7"),
+            ("2x5/12.7", "2 x 5 of 12.7"),
+            // No number of tendons, one beyond counting, and a mark that meets half an inch.
+            ("0x5-12.7", "-"),
+            ("99999999999x5-12.7", "-"),
+            ("D1/2-12.7", "-"),
             ("4-0.6", "4 of 15.2"),
             ("4-0.62\"", "4 of 15.7"),
             ("3-12", "3 of ?"),
@@ -140,7 +150,7 @@ fn strands_and_required_forces() {
             ("5-12.7", "-"),
         ],
     );
-    assert_eq!(rows, 62);
+    assert_eq!(rows, 71);
 }
 
 #[test]
@@ -154,6 +164,9 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("H 165", "H 165"),
             ("H=165", "H 165"),
             ("H: 165", "H 165"),
+            ("h=165", "165"),
+            ("h : 30", "30"),
+            ("h 30", "H 30"),
             ("HP165", "H 165"),
             ("H.P. 165", "H 165"),
             ("HIGH 165", "H 165"),
@@ -207,7 +220,7 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("0.165 m", "165"),
         ],
     );
-    assert_eq!(rows, 44);
+    assert_eq!(rows, 47);
 }
 
 #[test]

@@ -1,9 +1,10 @@
 //! Labels that say by an arrow, a stroke or a tick which tendon is theirs.
 
 use super::arrows::{Arrows, Pointed};
+use super::heard::Heard;
 use super::index::Foot;
 use super::lines::Line;
-use super::readings::MarkText;
+use super::marking::Marking;
 use super::rules::{LABEL_SHARED, LEADER_ASTRAY};
 use crate::drawing::Text;
 use crate::finding::{Finding, Level, Wording};
@@ -87,21 +88,30 @@ fn astray(text: &Text, pointed: &Pointed) -> Option<Finding> {
     )
 }
 
-/// What a mark that points at several lines says of one of them: of `3x5-12.7` on three lines each stands for one
-/// tendon, and their marks are numbered.
-pub(super) fn share_of(whole: &MarkText, number: usize, of: usize) -> MarkText {
-    let shared = whole
-        .tendons
-        .is_some_and(|tendons| usize::try_from(tendons) == Ok(of));
-    MarkText {
-        mark: whole.mark.as_ref().map(|mark| format!("{mark}.{number}")),
-        tendons: if shared { Some(1) } else { whole.tendons },
-        ..whole.clone()
+/// What a mark that points at several lines says of one of them: of `6x5-12.7` on three lines each stands for two
+/// tendons, and their marks are numbered. A number that the lines do not divide, and a force of which nobody can say
+/// whether it is that of each line or of all, count for none.
+pub(super) fn share_of(whole: &Marking, number: usize, of: usize) -> Marking {
+    let mut part = whole.clone();
+    if let Heard::One(mark) = &mut part.mark {
+        *mark = format!("{mark}.{number}");
     }
+    if let Heard::One(tendons) = whole.tendons {
+        let lines = u32::try_from(of).unwrap_or(u32::MAX);
+        part.tendons = if tendons % lines == 0 {
+            Heard::One(tendons / lines)
+        } else {
+            Heard::Torn
+        };
+    }
+    if whole.required_kn.is_said() {
+        part.required_kn = Heard::Torn;
+    }
+    part
 }
 
 /// Marks that were numbered because their label points at several lines.
-pub(super) fn shared(aimed: &Aimed<'_, MarkText>, lines: &[Line]) -> Vec<Finding> {
+pub(super) fn shared(aimed: &Aimed<'_, Marking>, lines: &[Line]) -> Vec<Finding> {
     let mut findings = Vec::new();
     let mut at = 0;
     while let Some(text) = aimed.texts.get(at) {
@@ -110,13 +120,13 @@ pub(super) fn shared(aimed: &Aimed<'_, MarkText>, lines: &[Line]) -> Vec<Finding
         let count = run.count();
         let parts = aimed.readings.get(at..at + count).unwrap_or_default();
         let aims = aimed.aims.get(at..at + count).unwrap_or_default();
-        if count > 1 && parts.iter().any(|part| part.mark.is_some()) {
+        if count > 1 && parts.iter().any(|part| part.mark.one().is_some()) {
             let said: Vec<String> = parts
                 .iter()
                 .zip(aims)
                 .filter_map(|(part, aim)| {
                     let line = lines.get(aim.as_ref()?.first()?.line)?;
-                    Some(format!("{} (line {})", part.mark.as_ref()?, line.handle))
+                    Some(format!("{} (line {})", part.mark.one()?, line.handle))
                 })
                 .collect();
             findings.push(
@@ -133,7 +143,37 @@ pub(super) fn shared(aimed: &Aimed<'_, MarkText>, lines: &[Line]) -> Vec<Finding
                 .at_place(text.place),
             );
         }
+        if let Some(part) = parts.first().filter(|_| count > 1) {
+            findings.extend(undivided(text, part, count));
+        }
         at += count.max(1);
+    }
+    findings
+}
+
+/// What a label that points at several lines does not say of each.
+fn undivided(text: &Text, part: &Marking, lines: usize) -> Vec<Finding> {
+    let wrong = |why: &str, remedy: &str| {
+        Finding::new(
+            &LABEL_SHARED,
+            Level::Error,
+            format!("label {:?} points at {lines} lines, {why}", text.content),
+            remedy,
+        )
+        .at_place(text.place)
+    };
+    let mut findings = Vec::new();
+    if part.tendons.is_torn() {
+        findings.push(wrong(
+            "and its number of tendons cannot be shared out among them: it was not used",
+            "write beside each line how many tendons it stands for",
+        ));
+    }
+    if part.required_kn.is_torn() {
+        findings.push(wrong(
+            "and does not say whether its force is that of each of them or of all together: it was not used",
+            "write the force that is required beside each line",
+        ));
     }
     findings
 }

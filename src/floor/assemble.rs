@@ -12,17 +12,18 @@ use super::heights::{self, Height, Settled};
 use super::hidden::outranked;
 use super::index::Index;
 use super::joints::{self, joints};
-use super::labels::{Labels, labels};
+use super::labels::labels;
 use super::layers::Roles;
 use super::levels::levels;
 use super::lines::{Line, lines};
-use super::made::plans;
+use super::marking::Marking;
 use super::marks::{self, Marks};
 use super::missing::complete;
 use super::near::{Near, kind};
 use super::odds::odds;
+use super::plans::plans;
 use super::points::points;
-use super::readings::{HeightText, MarkText};
+use super::readings::HeightText;
 use super::slab::{Thickness, slab};
 use super::symbols::Symbols;
 use super::ticks::aim_by_ticks;
@@ -58,17 +59,13 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     let (levels, found) = levels(drawing, job, &roles, &lines, &index);
     findings.extend(found);
     let arrows = Arrows::new(drawing, &roles, &index, conventions.arrow_reach_m);
-    let groups = groups(drawing, conventions, &roles, &arrows, &lines, &index);
-    let mut taken: BTreeSet<usize> = levels.texts.union(&symbols.texts).copied().collect();
-    taken.extend(&groups.texts);
-    taken.extend(outranked);
-    let (labels, found) = labels(drawing, conventions, &roles, &taken);
+    let groups = groups(drawing, job, &roles, &arrows, &lines, &index);
+    let of_others = [&levels.texts, &symbols.texts, &groups.texts];
+    let taken = of_others.into_iter().flatten().copied();
+    let taken = taken.chain(outranked).collect();
+    findings.extend(groups.findings.iter().cloned());
+    let (labels, found) = labels(drawing, job, &roles, &taken);
     findings.extend(found);
-    let Labels {
-        heights: height_labels,
-        marks: mark_labels,
-        unread,
-    } = labels;
 
     let among = Among {
         drawing,
@@ -79,10 +76,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         columns: &columns,
         arrows: &arrows,
     };
-    let (marks, mut settled_marks) = among.marks(mark_labels);
+    let (marks, mut settled_marks) = among.marks(labels.marks);
     findings.extend(aims::shared(&marks, &lines));
     findings.extend(marks.findings);
-    let (plans, found) = plans(&groups, &settled_marks.of_line, &lines);
+    let (plans, found) = plans(&groups, &mut settled_marks.of_line, &lines);
     findings.extend(found);
     let reserved = plans.claim(&mut settled_marks.of_line);
     let names = marks::names(&lines, &settled_marks.of_line, &reserved);
@@ -94,10 +91,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
     };
     findings.extend(near.marks(&marks.texts, &settled_marks));
 
-    let (heights, settled) = among.heights(height_labels, &thickness, &levels.of_line);
+    let (heights, settled) = among.heights(labels.heights, &thickness, &levels.of_line);
     findings.extend(heights.findings);
     findings.extend(near.heights(&heights.texts, &heights.readings, &settled));
-    let mut strays = near.strays(&heights.texts, &heights.readings, &settled, &unread);
+    let mut strays = near.strays(&heights.texts, &heights.readings, &settled, &labels.unread);
     for (text, reading) in heights.astray {
         strays.extend(near.beside(text, kind(reading)));
     }
@@ -113,18 +110,10 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
             &conventions.height,
         );
         findings.extend(found);
-        for (told, anchor) in line_ends[at].iter_mut().zip(joints.at_ends[at]) {
-            if let Some(anchor) = anchor.filter(|anchor| told.known_or_goes_on(anchor.name)) {
-                findings.push(joints::at_an_end(anchor, &names[at]));
-            }
-            told.or_dead(conventions.unmarked_is_dead);
-        }
-        findings.extend(ends::unknown(
-            &names[at],
-            &line_ends[at],
-            line.path.length_m(),
-            conventions.end_reach_m,
-        ));
+        let told = &mut line_ends[at];
+        findings.extend(joints::at_ends(joints.at_ends[at], told, &names[at]));
+        let length_m = line.path.length_m();
+        findings.extend(ends::left_open(&names[at], told, length_m, conventions));
         let ends = line_ends[at].each_ref().map(|told| told.end);
         tendons.push(Tendon {
             joints: joints.of_line[at].clone(),
@@ -138,12 +127,21 @@ pub fn read(drawing: &Drawing, job: &Job) -> (Floor, Vec<Finding>) {
         &strays,
         &thickness,
     ));
-    let (made, found) = plans.made(&tendons, &thickness);
+    let (made, found) = plans.made(&tendons, &settled.of_line, &thickness, &conventions.height);
     findings.extend(found);
     tendons.extend(made);
     tendons.sort_by_cached_key(|tendon| natural(&tendon.mark));
-    findings.extend(marks::findings(&tendons));
+    findings.extend(marks::findings(
+        &tendons,
+        &uncounted(&lines, &settled_marks.of_line),
+    ));
     (Floor { tendons, slab }, findings)
+}
+
+/// Lines of which the labels contradict one another in what they count, by handle.
+fn uncounted<'l>(lines: &'l [Line], said: &[Marking]) -> BTreeSet<&'l str> {
+    let torn = lines.iter().zip(said).filter(|(_, said)| said.uncounted());
+    torn.map(|(line, _)| line.handle.as_str()).collect()
 }
 
 /// A tendon that the drawing shows.
@@ -151,26 +149,25 @@ fn drawn(
     job: &Job,
     line: &Line,
     mark: &str,
-    said: &MarkText,
+    said: &Marking,
     ends: [End; 2],
     points: Vec<Point>,
 ) -> Tendon {
     Tendon {
         mark: mark.to_owned(),
-        mark_drawn: said.mark.is_some(),
+        mark_drawn: said.mark.one().is_some(),
         made: false,
         handle: line.handle.clone(),
         layer: line.layer.clone(),
         run: line.run,
         path: line.path.clone(),
-        tendons: said.tendons.unwrap_or(1),
-        strands: said.strands.or(job.tendon.default_strands),
-        strand: said.strand.as_ref().map(|written| {
-            let known = job.tendon.strand_named(written);
-            known.map_or_else(|| written.clone(), |size| size.name.clone())
-        }),
-        required_kn: said.required_kn,
-        required_kn_per_m: said.required_kn_per_m,
+        tendons: said.tendons.one().copied().unwrap_or(1),
+        // Whatever of the steel is contradicted, nobody knows its force.
+        strands: (said.strands.one().copied().or(job.tendon.default_strands))
+            .filter(|_| !said.uncounted()),
+        strand: said.strand.one().cloned(),
+        required_kn: said.required_kn.one().copied(),
+        required_kn_per_m: said.required_kn_per_m.one().copied(),
         ends,
         joints: Vec::new(),
         points,
@@ -189,7 +186,7 @@ struct Among<'a> {
 }
 
 impl Among<'_> {
-    fn marks<'t>(&self, labels: Vec<(&'t Text, MarkText)>) -> (Aimed<'t, MarkText>, Marks) {
+    fn marks<'t>(&self, labels: Vec<(&'t Text, Marking)>) -> (Aimed<'t, Marking>, Marks) {
         let aimed = aims::aimed(labels, self.arrows, aims::share_of);
         let settled = marks::settle(&aimed.readings, &self.lies(&aimed), self.lines);
         (aimed, settled)

@@ -11,6 +11,7 @@ use super::symbols::{Sign, Symbol};
 use super::types::{End, EndKind};
 use crate::finding::{Finding, Level, Wording};
 use crate::geometry::distance_m;
+use crate::job::Conventions;
 use crate::units::LONG;
 
 /// An end, and why its kind is not known if it is not.
@@ -41,7 +42,7 @@ const SIGNS: [Sign; 7] = [
 ];
 
 /// Each line's two ends; findings for symbols without an end. Symbols of one sort are matched to ends one to one; an end
-/// may have one of each sort. What is wrong with an end itself is told by [`unknown`].
+/// may have one of each sort. What is wrong with an end itself is told by [`left_open`].
 pub(super) fn ends(
     lines: &[Line],
     symbols: &[Symbol<'_>],
@@ -249,7 +250,7 @@ fn tell(place: Coord<f64>, held: &[&Symbol<'_>]) -> Told {
 
 impl Told {
     /// Takes an end of which nothing is said as dead, where the drawing marks live ends only.
-    pub(super) fn or_dead(&mut self, unmarked_is_dead: bool) {
+    fn or_dead(&mut self, unmarked_is_dead: bool) {
         if unmarked_is_dead && self.doubt.is_none() {
             self.end.kind = self.end.kind.or(Some(EndKind::Dead));
         }
@@ -265,8 +266,17 @@ impl Told {
     }
 }
 
-/// One finding for each end of a tendon whose kind is not known.
-pub(super) fn unknown(mark: &str, ends: &[Told; 2], length_m: f64, reach_m: f64) -> Vec<Finding> {
+/// Takes ends of which nothing is said as the job says, and gives one finding for each whose kind is not known then.
+pub(super) fn left_open(
+    mark: &str,
+    ends: &mut [Told; 2],
+    length_m: f64,
+    conventions: &Conventions,
+) -> Vec<Finding> {
+    let reach_m = conventions.end_reach_m;
+    for told in ends.iter_mut() {
+        told.or_dead(conventions.unmarked_is_dead);
+    }
     ends.iter()
         .zip([0.0, length_m])
         .filter(|(told, _)| told.end.kind.is_none())

@@ -3,17 +3,18 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::arrows::Arrows;
+use super::group_text::{GroupText, group_text};
 use super::index::{Foot, Index};
+use super::labels::left_over;
 use super::layers::{Roles, sound};
-use super::lengths::length_m;
 use super::lines::Line;
 use super::order::{by_handle, by_place};
 use super::pieces::{Joint, chains};
-use super::readings::{MarkText, label, length_unit};
 use super::strokes;
 use crate::drawing::{Drawing, Text};
+use crate::finding::Finding;
 use crate::geometry::{Path, distance_m};
-use crate::job::Conventions;
+use crate::job::Job;
 
 /// Extent lines are at least this long, metres: what is shorter is an arrow of one.
 const SHORTEST_M: f64 = 0.5;
@@ -34,33 +35,25 @@ pub(super) struct Extent {
     pub(super) crossed: Vec<Foot>,
 }
 
-/// What the texts of a group say.
-#[derive(Debug, Clone, Default, PartialEq)]
-pub(super) struct GroupText {
-    pub(super) first: Option<String>,
-    pub(super) last: Option<String>,
-    pub(super) number: Option<u32>,
-    pub(super) spacing_m: Option<f64>,
-    /// Strands, written in the same text.
-    pub(super) strands: MarkText,
-}
-
 /// Groups, and the texts, by place in the drawing's list, that are theirs.
 #[derive(Default)]
 pub(super) struct Groups {
     pub(super) extents: Vec<Extent>,
     pub(super) texts: BTreeSet<usize>,
+    /// What could not be read in them.
+    pub(super) findings: Vec<Finding>,
 }
 
 /// Reads groups; `index` holds the tendon lines.
 pub(super) fn groups(
     drawing: &Drawing,
-    conventions: &Conventions,
+    job: &Job,
     roles: &Roles,
     arrows: &Arrows,
     lines: &[Line],
     index: &Index,
 ) -> Groups {
+    let conventions = &job.conventions;
     let mut extents = extents(drawing, roles);
     if extents.is_empty() {
         return Groups::default();
@@ -69,16 +62,20 @@ pub(super) fn groups(
         extent.crossed = tendons(&extent.path, lines, index, conventions.arrow_reach_m);
     }
     let by_place = Index::new(extents.iter().map(|extent| &extent.path));
+    let mut findings = Vec::new();
     let mut texts: Vec<(usize, usize, GroupText)> = Vec::new();
     for (at, text) in drawing.texts.iter().enumerate() {
         let role = roles.of(&text.layer, text.look);
         if !(role.extents || role.label.marks || role.label.heights) {
             continue;
         }
-        if let Some(said) = group_text(&text.content, conventions) {
+        if let Some((said, left)) = group_text(&text.content, job) {
             let reach_m = conventions.label_reach * text.height_m;
             let own = beside(text, &by_place, reach_m)
                 .or_else(|| at_typical(text, arrows, &extents, index, reach_m));
+            if own.is_some() && !text.hidden {
+                findings.extend(left.iter().map(|line| left_over(text, line)));
+            }
             texts.extend(own.map(|extent| (extent, at, said)));
         }
     }
@@ -97,65 +94,14 @@ pub(super) fn groups(
     for (extent, at, said) in texts {
         taken.insert(at);
         if let Some(extent) = extents.get_mut(extent) {
-            extent.said.add(said);
+            extent.said.join(said);
         }
     }
     Groups {
         extents,
         texts: taken,
+        findings,
     }
-}
-
-impl GroupText {
-    fn add(&mut self, other: Self) {
-        self.first = self.first.take().or(other.first);
-        self.last = self.last.take().or(other.last);
-        self.number = self.number.or(other.number);
-        self.spacing_m = self.spacing_m.or(other.spacing_m);
-        let (own, more) = (&mut self.strands, other.strands);
-        own.tendons = own.tendons.or(more.tendons);
-        own.strands = own.strands.or(more.strands);
-        own.strand = own.strand.take().or(more.strand);
-        own.required_kn = own.required_kn.or(more.required_kn);
-        own.required_kn_per_m = own.required_kn_per_m.or(more.required_kn_per_m);
-    }
-}
-
-/// What a text says of a group: each pattern tried on each line, and what they leave of it read as a mark.
-pub(super) fn group_text(content: &str, conventions: &Conventions) -> Option<GroupText> {
-    let mut said = GroupText::default();
-    let mut rest: Vec<String> = Vec::new();
-    for line in content.lines() {
-        let mut left: Vec<Option<char>> = line.chars().map(Some).collect();
-        for pattern in &conventions.group_patterns {
-            let Some(found) = pattern.captures(line) else {
-                continue;
-            };
-            let unit = length_unit(pattern).unwrap_or(conventions.height.unit);
-            let part = |name: &str| {
-                let part = found.name(name)?.as_str().trim();
-                (!part.is_empty()).then(|| part.to_owned())
-            };
-            said.first = said.first.or_else(|| part("first"));
-            said.last = said.last.or_else(|| part("last"));
-            said.number = said.number.or_else(|| part("number")?.parse().ok());
-            said.spacing_m = said.spacing_m.or_else(|| length_m(&part("spacing")?, unit));
-            let whole = found.get(0).map_or(0..0, |whole| whole.range());
-            for ((at, _), sign) in line.char_indices().zip(&mut left) {
-                if whole.contains(&at) {
-                    *sign = None;
-                }
-            }
-        }
-        let left: String = left.into_iter().flatten().collect();
-        rest.push(left.trim_matches([' ', ',', ';', '(', ')']).to_owned());
-    }
-    if said == GroupText::default() {
-        return None;
-    }
-    let rest = label(&rest.join("\n"), false, true, conventions);
-    said.strands = rest.mark.unwrap_or_default();
-    Some(said)
 }
 
 /// Lines of the extent layers, pieces put together, in an order that their places decide.

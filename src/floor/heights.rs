@@ -7,6 +7,7 @@ use std::collections::BTreeSet;
 use self::ties::{Texts, tied};
 use super::aims::AIMED;
 use super::candidates::Lie;
+use super::contradicted::{self, Contradiction};
 use super::even::even;
 use super::habits::Habits;
 use super::lines::Line;
@@ -41,6 +42,8 @@ pub(super) struct Settled {
     /// Labels that went to nobody.
     pub(super) unclaimed: Vec<usize>,
     pub(super) doubts: Vec<Doubt>,
+    /// Labels that contradict one that their tendon has at the same place.
+    pub(super) contradicted: Vec<Contradiction>,
 }
 
 /// Rounds of settling and learning.
@@ -49,11 +52,11 @@ const ROUNDS: usize = 6;
 const TIE: f64 = 0.02;
 const DOUBT: f64 = 0.5;
 /// Two heights nearer than this are at one place, metres and text heights.
-const SAME_PLACE_M: f64 = 0.5;
+pub(super) const SAME_PLACE_M: f64 = 0.5;
 /// Supports stand nearer to one another than this, metres (common practice: 0.8 to 1.2 m).
 const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
-const STEEP: f64 = 0.08;
+pub(super) const STEEP: f64 = 0.08;
 
 /// A text without a word whose edge is this near to an end, in text heights, speaks of the anchor; mid-depth from
 /// farther in, since it is said of hardly any other point.
@@ -136,14 +139,17 @@ pub(super) fn settle(
         settlement.release(doubt.label);
     }
     let taken = settlement.taken();
-    Settled {
+    let mut settled = Settled {
         of_line: by_line(readings, lies, lines.len(), fixed, taken),
         unclaimed: (0..readings.len())
             .filter(|&label| taken[label].is_none())
             .filter(|&label| !doubts.iter().any(|d| d.label == label))
             .collect(),
         doubts,
-    }
+        contradicted: Vec::new(),
+    };
+    contradicted::heights(&mut settled, readings, lies, &stakes.own);
+    settled
 }
 
 /// The height that a label gives if it belongs to this tendon.

@@ -1,6 +1,6 @@
 //! Intermediate anchors: each divides the tendon that it stands on.
 
-use super::ends::Around;
+use super::ends::{Around, Told};
 use super::index::{Foot, Index};
 use super::lines::Line;
 use super::rules::JOINT_UNCLAIMED;
@@ -95,8 +95,22 @@ fn end_at(lines: &[Line], foot: &Foot, reach_m: f64) -> Option<usize> {
         .position(|end| end.is_some_and(|end| distance_m(end, foot.place) <= reach_m))
 }
 
+/// Intermediate anchors at a tendon's ends: an end with a symbol of its own keeps that, and another goes on.
+pub(super) fn at_ends(
+    anchors: [Option<&Symbol<'_>>; 2],
+    told: &mut [Told; 2],
+    mark: &str,
+) -> Vec<Finding> {
+    let ends = told.iter_mut().zip(anchors);
+    ends.filter_map(|(told, anchor)| {
+        let anchor = anchor.filter(|anchor| told.known_or_goes_on(anchor.name))?;
+        Some(at_an_end(anchor, mark))
+    })
+    .collect()
+}
+
 /// Said of an intermediate anchor at an end that has a symbol of its own.
-pub(super) fn at_an_end(symbol: &Symbol<'_>, mark: &str) -> Finding {
+fn at_an_end(symbol: &Symbol<'_>, mark: &str) -> Finding {
     said(
         symbol,
         Level::Warning,

@@ -3,20 +3,23 @@
 use std::cmp::Ordering;
 use std::collections::{BTreeSet, HashMap};
 
-use super::layers::Roles;
-use super::readings::{HeightText, MarkText, height, label};
-use super::rules::LABEL_UNREAD;
+use super::label_text::{changes, label};
+use super::layers::{Labels as Role, Roles};
+use super::marking::Marking;
+use super::readings::HeightText;
+use super::rules::{LABEL_CONTRADICTED, LABEL_UNREAD};
+use super::writing::Writing;
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level};
 use crate::geometry::distance_m;
-use crate::job::Conventions;
+use crate::job::Job;
 use crate::job::families::offered;
 
 /// Texts on label layers.
 #[derive(Default)]
 pub(super) struct Labels<'a> {
     pub(super) heights: Vec<(&'a Text, HeightText)>,
-    pub(super) marks: Vec<(&'a Text, MarkText)>,
+    pub(super) marks: Vec<(&'a Text, Marking)>,
     /// Texts on layers of heights that say none.
     pub(super) unread: Vec<&'a Text>,
 }
@@ -27,7 +30,7 @@ const COPY_M: f64 = 0.005;
 /// Reads all labels but those that level lines took.
 pub(super) fn labels<'a>(
     drawing: &'a Drawing,
-    conventions: &Conventions,
+    job: &Job,
     roles: &Roles,
     taken: &BTreeSet<usize>,
 ) -> (Labels<'a>, Vec<Finding>) {
@@ -46,44 +49,74 @@ pub(super) fn labels<'a>(
     let texts = without_copies(&texts);
     let mut labels = Labels::default();
     let mut findings = Vec::new();
+    let writing = Writing::of(drawing, job, roles);
     for text in texts {
         let of = roles.of(&text.layer, text.look).label;
-        let said = label(&text.content, of.heights, of.marks, conventions);
-        if said.other_height.is_some() {
-            findings.push(unread(
-                text,
-                "says two heights, of which the first was taken",
-                "one height in a label",
-            ));
-        }
+        let said = label(&text.content, of.heights, of.marks, job);
         let silent = said.height.is_none() && said.mark.is_none();
-        labels
-            .heights
-            .extend(said.height.map(|height| (text, height)));
-        labels.marks.extend(said.mark.map(|mark| (text, mark)));
+        findings.extend(said.against.iter().map(|why| contradicted(text, why)));
         // What nobody sees need not say anything that is for us.
-        if silent && !text.hidden {
-            let expected = match (of.heights || of.level_lines, of.marks) {
-                (true, false) => "a height such as H165, L30 or 165",
-                (false, true) => "a mark or strand count such as D012 5-12.7",
-                _ => "a height such as H165 or a mark such as D012 5-12.7",
-            };
-            let readable = height(&text.content, conventions).is_some();
-            if readable && of.level_lines {
-                findings.push(unread(
-                    text,
-                    "is a height, but no level line is within reach",
-                    expected,
-                ));
+        if !text.hidden {
+            if silent {
+                findings.push(silent_label(text, of, job));
             } else {
-                findings.push(unread(text, "cannot be read", expected));
-                if of.heights {
-                    labels.unread.push(text);
-                }
+                findings.extend(said.left.iter().map(|line| left_over(text, line)));
             }
         }
+        let cannot_be_read = silent && of.heights && !text.hidden;
+        labels.unread.extend(cannot_be_read.then_some(text));
+        if let Some(height) = said.height {
+            labels.heights.push((text, writing.means(height)));
+        }
+        labels.marks.extend(said.mark.map(|mark| (text, mark)));
     }
     (labels, findings)
+}
+
+/// A label of which nothing was read.
+fn silent_label(text: &Text, of: Role, job: &Job) -> Finding {
+    let expected = match (of.heights || of.level_lines, of.marks) {
+        (true, false) => "a height such as H165, L30 or 165",
+        (false, true) => "a mark or strand count such as D012 5-12.7",
+        _ => "a height such as H165 or a mark such as D012 5-12.7",
+    };
+    let readable = label(&text.content, true, false, job).height.is_some();
+    let what = if readable && of.level_lines {
+        "is a height, but no level line is within reach"
+    } else {
+        "cannot be read"
+    };
+    unread(text, what, expected)
+}
+
+/// A line of a label of which another line was read.
+pub(super) fn left_over(text: &Text, line: &str) -> Finding {
+    let what = if changes(line) {
+        format!(
+            "has the line {line:?}, which cannot be read and may change what the others say; they were taken as they stand"
+        )
+    } else {
+        format!("has the line {line:?}, which cannot be read; the others were")
+    };
+    unread(
+        text,
+        &what,
+        "a height, a mark or a strand count in each line",
+    )
+}
+
+/// A label that speaks against itself.
+fn contradicted(text: &Text, why: &str) -> Finding {
+    Finding::new(
+        &LABEL_CONTRADICTED,
+        Level::Error,
+        format!(
+            "text {:?} on layer {} contradicts itself: {why}; neither was used",
+            text.content, text.layer
+        ),
+        "correct the text, so that it says each thing once",
+    )
+    .at_place(text.place)
 }
 
 /// Of texts that say the same at one place the first, wherever in the order the others stand.

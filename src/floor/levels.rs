@@ -6,13 +6,15 @@ use geo::Coord;
 
 use super::heights::Height;
 use super::index::Index;
+use super::label_text::label;
 use super::layers::{Roles, sound};
 use super::lines::Line;
 use super::order::{by_handle, by_place};
 use super::pieces::{Joint, chains};
 use super::points::words;
-use super::readings::{HeightText, height};
+use super::readings::{HeightText, height_of_line};
 use super::rules::LEVEL_LINE_UNREAD;
+use super::writing::Writing;
 use crate::drawing::{Drawing, Shape, ShapeKind};
 use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment, distance_m};
@@ -54,17 +56,29 @@ pub(super) fn levels(
     for (path, said) in paths.iter().zip(readings) {
         match said.as_slice() {
             [] => findings.push(unread(path, |_| "has no height within reach".to_owned())),
-            [first, rest @ ..] if rest.iter().all(|other| other == first) => {
-                cross(path, *first, lines, index, &mut levels.of_line);
-            }
             [first, rest @ ..] => {
-                findings.push(unread(path, |units| {
-                    let numbers = std::iter::once(first).chain(rest);
-                    let numbers: BTreeSet<String> =
-                        numbers.map(|&said| words(said, units)).collect();
-                    let numbers: Vec<String> = numbers.into_iter().collect();
-                    format!("has more than one height beside it: {}", numbers.join(", "))
-                }));
+                // Of a height that is contradicted the tendons know only that one belongs here.
+                let one = rest.iter().all(|other| other == first);
+                let reading = HeightText {
+                    torn: first.torn || !one,
+                    word: first
+                        .word
+                        .filter(|_| rest.iter().all(|other| other.word == first.word)),
+                    ..*first
+                };
+                cross(path, reading, lines, index, &mut levels.of_line);
+                if !one {
+                    findings.push(unread(path, |units| {
+                        let numbers: BTreeSet<String> =
+                            said.iter().map(|&said| words(said, units)).collect();
+                        let numbers: Vec<String> = numbers.into_iter().collect();
+                        format!("has more than one height beside it: {}", numbers.join(", "))
+                    }));
+                } else if first.torn {
+                    findings.push(unread(path, |_| {
+                        "has a text that contradicts itself".to_owned()
+                    }));
+                }
             }
         }
     }
@@ -121,16 +135,25 @@ fn readings(
     if paths.is_empty() {
         return said;
     }
+    let writing = Writing::of(drawing, job, roles);
     for own_layer in [true, false] {
-        let mut found: Vec<(usize, usize, HeightText)> = Vec::new();
+        let mut found: Vec<(usize, usize, Vec<HeightText>)> = Vec::new();
         for (at, text) in drawing.texts.iter().enumerate() {
             let labels = roles.of(&text.layer, text.look).label;
             if labels.level_lines != own_layer || !(labels.level_lines || labels.heights) {
                 continue;
             }
-            let Some(reading) = height(&text.content, &job.conventions) else {
+            let Some(whole) = label(&text.content, true, false, job).height else {
                 continue;
             };
+            let lines = text.content.lines();
+            let given: Vec<HeightText> = lines
+                .filter_map(|line| height_of_line(line, &job.conventions))
+                .map(|(height, _)| HeightText {
+                    torn: whole.torn,
+                    ..writing.means(height)
+                })
+                .collect();
             let reach_m = job.conventions.label_reach * text.height_m;
             let Some((gap_m, line)) = nearest(&level_lines, &text.corners, reach_m) else {
                 continue;
@@ -154,14 +177,15 @@ fn readings(
                     continue;
                 }
             }
-            found.push((line, at, reading));
+            found.push((line, at, given));
         }
         let before: Vec<Option<HeightText>> = said.iter().map(|s| s.first().copied()).collect();
-        for (line, at, reading) in found {
+        for (line, at, given) in found {
             // A level line that has its height takes no more than repeats of it from the layer of heights.
-            let repeats = before[line].is_none_or(|first| first == reading);
+            let repeats =
+                before[line].is_none_or(|first| given.iter().all(|given| *given == first));
             if own_layer || repeats {
-                said[line].push(reading);
+                said[line].extend(given);
                 taken.insert(at);
             }
         }

@@ -1,101 +1,36 @@
-//! Tendons that the drawing shows by a typical one: marks for the group, and copies where none is drawn.
+//! Tendons that the drawing shows by a typical one: copies of it where none is drawn.
+
+use std::collections::BTreeSet;
 
 use geo::Coord;
 
-use super::groups::{Extent, Groups};
-use super::index::Foot;
+use super::heights::Height;
+use super::index::{Foot, Index};
 use super::lines::Line;
-use super::readings::MarkText;
-use super::rules::{GROUP_MISFIT, TENDON_MADE};
+use super::plans::{Plan, Plans};
+use super::points::points;
+use super::rules::{DUPLICATE_LINE, TENDON_MADE};
 use super::slab::Thickness;
-use super::slots::{Slots, slot_marks, slots};
-use super::types::{End, Point, PointKind, PourJoint, Tendon};
+use super::types::{End, Point, PourJoint, Tendon};
 use crate::finding::{Finding, Level, Wording};
 use crate::geometry::{Path, Segment};
+use crate::job::HeightReading;
 use crate::units::SHORT;
 
-/// A group that can be made.
-struct Plan<'a> {
-    extent: &'a Extent,
-    slots: Slots,
-    /// Mark of each slot, where the group's text gives marks.
-    marks: Vec<Option<String>>,
-}
-
-/// Groups whose extent lines fit what their texts say.
-pub(super) struct Plans<'a>(Vec<Plan<'a>>);
-
-/// Lays the groups out; what does not fit is a finding, and nothing is made of it.
-pub(super) fn plans<'a>(
-    groups: &'a Groups,
-    said: &[MarkText],
-    lines: &[Line],
-) -> (Plans<'a>, Vec<Finding>) {
-    let mut plans = Vec::new();
-    let mut findings = Vec::new();
-    for extent in &groups.extents {
-        match slots(extent) {
-            Ok(slots) => {
-                let marks = slot_marks(extent, &slots, said, lines);
-                plans.push(Plan {
-                    extent,
-                    slots,
-                    marks,
-                });
-            }
-            Err(why) => findings.push(
-                Finding::new(
-                    &GROUP_MISFIT,
-                    Level::Error,
-                    Wording::of(|units| {
-                        format!(
-                            "extent line {} {}: the group's undrawn tendons are missing from everything worked out here",
-                            extent.handle,
-                            why.in_units(units)
-                        )
-                    }),
-                    "correct the extent line or its text, or draw the group's tendons",
-                )
-                .at_place(extent.path.place_at(extent.path.length_m() / 2.0)),
-            ),
-        }
-    }
-    (Plans(plans), findings)
-}
+/// Points nearer than this are one, metres.
+const SAME_STATION_M: f64 = 1e-6;
+/// A made tendon this near to another, metres, and within this sine of its direction, lies on it.
+const ON_M: f64 = 0.020;
+const ALONG: f64 = 0.05;
 
 impl Plans<'_> {
-    /// Gives the group's drawn tendons the marks and strands that they lack; returns the marks of those to be made, so
-    /// that nobody else is called by them.
-    pub(super) fn claim(&self, said: &mut [MarkText]) -> Vec<MarkText> {
-        let mut reserved = Vec::new();
-        for plan in &self.0 {
-            let strands = plan.strands(said);
-            for (foot, mark) in plan.slots.drawn.iter().zip(&plan.marks) {
-                match foot.as_ref().and_then(|foot| said.get_mut(foot.line)) {
-                    Some(own) => {
-                        own.mark = own.mark.take().or_else(|| mark.clone());
-                        if own.strands.is_none() {
-                            own.add(&MarkText {
-                                mark: None,
-                                ..strands.clone()
-                            });
-                        }
-                    }
-                    None => reserved.push(MarkText {
-                        mark: mark.clone(),
-                        ..MarkText::default()
-                    }),
-                }
-            }
-        }
-        reserved
-    }
-
-    /// The tendons that are not drawn; `tendons` are those drawn, by line.
+    /// The tendons that are not drawn; `tendons` are those drawn, by line, and `heights` what was settled on each.
     pub(super) fn made(
         &self,
         tendons: &[Tendon],
+        heights: &[Vec<Height>],
         thickness: &Thickness<'_>,
+        job: &HeightReading,
     ) -> (Vec<Tendon>, Vec<Finding>) {
         let mut made = Vec::new();
         let mut findings = Vec::new();
@@ -111,30 +46,20 @@ impl Plans<'_> {
                     let mark = mark
                         .clone()
                         .unwrap_or_else(|| format!("{}.{number}", typical.mark));
-                    made.push(copy(typical, mark, by, thickness));
+                    let heights = heights.get(from.line).map_or(&[][..], Vec::as_slice);
+                    let (copy, found) = copy(typical, mark, by, heights, thickness, job);
+                    findings.extend(found.into_iter().filter(|f| f.level == Level::Error));
+                    made.push(copy);
                 }
             }
             findings.extend(plan.said(typical, made.get(before..).unwrap_or_default()));
         }
+        findings.extend(on_one_another(&made, tendons));
         (made, findings)
     }
 }
 
 impl Plan<'_> {
-    /// Strands of the group: by its text, else by the first of its tendons that says them.
-    fn strands(&self, said: &[MarkText]) -> MarkText {
-        let text = &self.extent.said.strands;
-        let drawn = self.slots.drawn.iter().flatten();
-        let mut known = drawn.filter_map(|foot| said.get(foot.line));
-        if text.strands.is_some() {
-            return text.clone();
-        }
-        known
-            .find(|own| own.strands.is_some())
-            .cloned()
-            .unwrap_or_default()
-    }
-
     /// The drawn tendon of which most heights are known.
     fn typical<'t>(&self, tendons: &'t [Tendon]) -> Option<(&'t Tendon, Foot)> {
         let drawn = self.slots.drawn.iter().flatten();
@@ -193,8 +118,15 @@ impl Plan<'_> {
     }
 }
 
-/// A tendon like the typical one, moved; heights stand above the soffit where it comes to lie.
-fn copy(typical: &Tendon, mark: String, by: Coord<f64>, thickness: &Thickness<'_>) -> Tendon {
+/// A tendon like the typical one, moved: what is drawn on that one is measured again where the copy comes to lie.
+fn copy(
+    typical: &Tendon,
+    mark: String,
+    by: Coord<f64>,
+    heights: &[Height],
+    thickness: &Thickness<'_>,
+    job: &HeightReading,
+) -> (Tendon, Vec<Finding>) {
     let end = |end: End| End {
         place: end.place + by,
         ..end
@@ -203,38 +135,94 @@ fn copy(typical: &Tendon, mark: String, by: Coord<f64>, thickness: &Thickness<'_
         place: joint.place + by,
         ..*joint
     });
-    let points = typical.points.iter().map(|point| {
-        let place = point.place + by;
-        let thickness_m = thickness.at(place);
-        // An anchor to which the drawing gives no height is at mid-depth, wherever it stands.
-        let free = point.kind == PointKind::Anchor && point.drawn_m.is_none();
-        let middle = thickness_m.map(|thickness_m| thickness_m / 2.0);
-        Point {
-            place,
-            thickness_m,
-            height_m: if free {
-                point.height_m.and(middle)
-            } else {
-                point.height_m
-            },
-            ..*point
+    let segments = typical.path.segments().iter();
+    let line = Line {
+        handle: typical.handle.clone(),
+        layer: typical.layer.clone(),
+        run: typical.run,
+        path: Path::new(segments.map(|&piece| moved(piece, by))),
+    };
+    let (mut points, findings) = points(&mark, &line, heights, thickness, job);
+    // What the typical one lacks its copy lacks too.
+    for lacking in typical
+        .points
+        .iter()
+        .filter(|point| point.height_m.is_none())
+    {
+        let there = points
+            .iter_mut()
+            .find(|point| (point.station_m - lacking.station_m).abs() < SAME_STATION_M);
+        if let Some(there) = there {
+            there.height_m = None;
+            continue;
         }
-    });
-    Tendon {
+        let place = lacking.place + by;
+        let faces = thickness.faces_at(place);
+        let at = points.partition_point(|point| point.station_m <= lacking.station_m);
+        points.insert(
+            at.min(points.len().saturating_sub(1)),
+            Point {
+                place,
+                thickness_m: faces.thickness_m,
+                top_m: faces.top_m,
+                ..*lacking
+            },
+        );
+    }
+    let copy = Tendon {
         mark,
-        path: Path::new(
-            typical
-                .path
-                .segments()
-                .iter()
-                .map(|&piece| moved(piece, by)),
-        ),
+        path: line.path,
         ends: typical.ends.map(end),
         joints: joints.collect(),
-        points: points.collect(),
+        points,
         made: true,
         ..typical.clone()
+    };
+    (copy, findings)
+}
+
+/// Made tendons that lie on drawn ones, or on one another.
+fn on_one_another(made: &[Tendon], drawn: &[Tendon]) -> Vec<Finding> {
+    let all = drawn.iter().chain(made);
+    let index = Index::new(all.clone().map(|tendon| &tendon.path));
+    let mut findings = Vec::new();
+    for (at, tendon) in made.iter().enumerate() {
+        let length_m = tendon.path.length_m();
+        let own = drawn.len() + at;
+        let on: Vec<BTreeSet<usize>> = [0.25, 0.5, 0.75]
+            .map(|share| {
+                let station_m = share * length_m;
+                let heading_rad = tendon.path.heading_at(station_m);
+                let feet = index
+                    .feet(tendon.path.place_at(station_m), ON_M)
+                    .into_iter();
+                feet.filter(|foot| foot.line < own)
+                    .filter(|foot| (foot.heading_rad - heading_rad).sin().abs() < ALONG)
+                    .map(|foot| foot.line)
+                    .collect()
+            })
+            .into();
+        // On one of its quarters by chance, on two of them along it.
+        let times = |line: &usize| on.iter().filter(|here| here.contains(line)).count();
+        let other = on.iter().flatten().find(|line| times(line) > 1);
+        let Some(other) = other.and_then(|&line| all.clone().nth(line)) else {
+            continue;
+        };
+        findings.push(
+            Finding::new(
+                &DUPLICATE_LINE,
+                Level::Error,
+                format!(
+                    "tendon {}, made as a copy of its group's typical one, lies on {}; expected each tendon once",
+                    tendon.mark, other.mark
+                ),
+                "correct the group's extent line or its spacing, or delete the line that is drawn there",
+            )
+            .on_tendon(&tendon.mark)
+            .at_place(tendon.path.place_at(length_m / 2.0)),
+        );
     }
+    findings
 }
 
 fn moved(piece: Segment, by: Coord<f64>) -> Segment {

@@ -7,10 +7,11 @@ use std::collections::{BTreeMap, BTreeSet};
 use self::doubts::{MarkDoubt, doubts};
 use super::aims::AIMED;
 use super::candidates::Lie;
+use super::contradicted::{self, Contradiction};
 use super::even::even;
 use super::habits::Habits;
 use super::lines::{Line, axis_rad};
-use super::readings::MarkText;
+use super::marking::Marking;
 use super::rules::{MARK_TWICE, STRAND_COUNT_MISSING};
 use super::settle::{Pairing, Settlement, Stakes};
 use super::types::{Run, Tendon};
@@ -19,17 +20,19 @@ use crate::finding::{Finding, Level};
 /// Marks settled.
 pub(super) struct Marks {
     /// What each line's labels say together.
-    pub(super) of_line: Vec<MarkText>,
+    pub(super) of_line: Vec<Marking>,
     /// Labels that went to nobody.
     pub(super) unclaimed: Vec<usize>,
     /// Labels that fit another line about as well.
     pub(super) doubts: Vec<MarkDoubt>,
+    /// Labels that contradict one that their line has.
+    pub(super) contradicted: Vec<Contradiction>,
 }
 
 /// Rounds of settling and learning.
 const ROUNDS: usize = 3;
 /// Settles marks.
-pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks {
+pub(super) fn settle(texts: &[Marking], lies: &[Lie], lines: &[Line]) -> Marks {
     let pairings: Vec<Pairing> = lies.iter().map(|lie| lie.pairing).collect();
     let mut taken: Vec<Option<usize>> = vec![None; texts.len()];
     let even = even(lies, lines);
@@ -45,30 +48,33 @@ pub(super) fn settle(texts: &[MarkText], lies: &[Lie], lines: &[Line]) -> Marks 
     }
     let mut settlement = Settlement::new(&pairings, texts.len(), lines.len(), &stakes, &taken);
     let doubts = doubts(&mut settlement, &taken, &even, texts, lies);
-    let nobodys: BTreeSet<usize> = doubts
+    let tied: BTreeSet<usize> = doubts
         .iter()
         .filter(|doubt| doubt.tied)
         .map(|doubt| doubt.label)
         .collect();
     let mut marks = Marks {
-        of_line: vec![MarkText::default(); lines.len()],
+        of_line: vec![Marking::default(); lines.len()],
         unclaimed: Vec::new(),
         doubts,
+        contradicted: Vec::new(),
     };
+    for &label in &tied {
+        taken[label] = None;
+    }
     for (label, said) in texts.iter().enumerate() {
         match taken[label] {
-            Some(now) if !nobodys.contains(&label) => {
-                marks.of_line[lies[now].pairing.host].add(said);
-            }
-            Some(_) => {}
+            Some(now) => marks.of_line[lies[now].pairing.host].join(said.clone()),
+            None if tied.contains(&label) => {}
             None => marks.unclaimed.push(label),
         }
     }
+    contradicted::marks(&mut marks, texts, lies, &stakes.own, &taken);
     marks
 }
 
 fn costs(
-    texts: &[MarkText],
+    texts: &[Marking],
     lies: &[Lie],
     lines: &[Line],
     taken: &[Option<usize>],
@@ -120,8 +126,8 @@ fn costs(
 }
 
 /// The letters that a mark begins with.
-fn prefix(text: &MarkText) -> String {
-    let mark = text.mark.as_deref().unwrap_or("");
+fn prefix(text: &Marking) -> String {
+    let mark = text.mark.one().map_or("", String::as_str);
     let letters = mark.chars().take_while(|c| c.is_alphabetic());
     letters.flat_map(char::to_uppercase).collect()
 }
@@ -129,7 +135,7 @@ fn prefix(text: &MarkText) -> String {
 /// Costs of marks.
 struct MarkStakes<'a> {
     own: Vec<f64>,
-    texts: &'a [MarkText],
+    texts: &'a [Marking],
     lies: &'a [Lie],
 }
 
@@ -164,21 +170,16 @@ impl Stakes for MarkStakes<'_> {
 }
 
 /// Whether two texts cannot both belong to one tendon.
-fn clash(a: &MarkText, b: &MarkText) -> bool {
-    fn differ<T: PartialEq>(a: Option<&T>, b: Option<&T>) -> bool {
-        matches!((a, b), (Some(a), Some(b)) if a != b)
-    }
-    differ(a.mark.as_ref(), b.mark.as_ref())
-        || differ(a.strands.as_ref(), b.strands.as_ref())
-        || differ(a.tendons.as_ref(), b.tendons.as_ref())
-        || differ(a.strand.as_ref(), b.strand.as_ref())
+fn clash(a: &Marking, b: &Marking) -> bool {
+    a.mark.differs(&b.mark)
+        || a.counts_otherwise(b)
         // Two counts without a mark are those of two tendons, even if they are equal; a count and a force are not.
-        || (a.mark.is_none() && b.mark.is_none() && alike(a, b))
+        || (!a.mark.is_said() && !b.mark.is_said() && alike(a, b))
 }
 
 /// Whether two texts say the same kind of thing.
-fn alike(a: &MarkText, b: &MarkText) -> bool {
-    let counts = |text: &MarkText| text.strands.is_some() || text.tendons.is_some();
+fn alike(a: &Marking, b: &Marking) -> bool {
+    let counts = |text: &Marking| text.strands.is_said() || text.tendons.is_said();
     (counts(a) && counts(b)) || (a.requires() && b.requires()) || (!a.counts() && !b.counts())
 }
 
@@ -190,16 +191,16 @@ const UPRIGHT_RAD: f64 = std::f64::consts::FRAC_PI_4 + 0.001;
 
 /// Names for lines without a mark: `B001`, `D001`, ... by place across the run, then along it.
 /// Nobody is called by a mark that is reserved.
-pub(super) fn names(lines: &[Line], drawn: &[MarkText], reserved: &[MarkText]) -> Vec<String> {
+pub(super) fn names(lines: &[Line], drawn: &[Marking], reserved: &[Marking]) -> Vec<String> {
     let used: BTreeSet<String> = drawn
         .iter()
         .chain(reserved)
-        .filter_map(|text| text.mark.as_ref())
+        .filter_map(|text| text.mark.one())
         .map(|mark| mark.to_uppercase())
         .collect();
     let mut names: Vec<String> = drawn
         .iter()
-        .map(|text| text.mark.clone().unwrap_or_default())
+        .map(|text| text.mark.one().cloned().unwrap_or_default())
         .collect();
     for (run, letter) in [(Run::Banded, 'B'), (Run::Distributed, 'D')] {
         let of_run = || (0..lines.len()).filter(|&line| lines[line].run == run);
@@ -231,14 +232,15 @@ pub(super) fn names(lines: &[Line], drawn: &[MarkText], reserved: &[MarkText]) -
     names
 }
 
-/// Findings on marks and strand counts.
-pub(super) fn findings(tendons: &[Tendon]) -> Vec<Finding> {
+/// Findings on marks and strand counts; of the lines in `torn`, by handle, it is said elsewhere why they have no count.
+pub(super) fn findings(tendons: &[Tendon], torn: &BTreeSet<&str>) -> Vec<Finding> {
     let mut findings = Vec::new();
     let mut first: BTreeMap<String, &Tendon> = BTreeMap::new();
     for tendon in tendons {
         let middle_m = tendon.path.length_m() / 2.0;
         let required = tendon.required_kn.is_some() || tendon.required_kn_per_m.is_some();
         let no_count = match tendon.strands {
+            None if torn.contains(tendon.handle.as_str()) => None,
             None if required => Some((
                 "a label gives the force that is required here, but none the number of strands, which is not worked out from it",
                 "write mark and strands beside the tendon, on the layer of marks",

@@ -1,5 +1,6 @@
 //! What is said of labels, by the tendons near to them.
 
+use super::contradicted::Contradiction;
 use super::heights::{Doubt, Settled};
 use super::index::Index;
 use super::lacks::Stray;
@@ -7,7 +8,7 @@ use super::lines::Line;
 use super::marks::Marks;
 use super::points::words;
 use super::readings::{HeightText, Word};
-use super::rules::{LABEL_AMBIGUOUS, LABEL_UNCLAIMED};
+use super::rules::{LABEL_AMBIGUOUS, LABEL_CONTRADICTED, LABEL_UNCLAIMED};
 use super::types::PointKind;
 use crate::drawing::Text;
 use crate::finding::{Finding, Level, Wording};
@@ -62,7 +63,28 @@ impl Near<'_> {
             .on_tendon(&self.names[doubt.lines[0]])
             .at_place(text.place)
         }));
+        findings.extend(self.contradicted(texts, &marks.contradicted, "of one tendon"));
         findings
+    }
+
+    fn contradicted(&self, texts: &[&Text], found: &[Contradiction], of: &str) -> Vec<Finding> {
+        let finding = |found: &Contradiction| {
+            let mut said = found.labels.map(|label| texts[label].content.as_str());
+            said.sort_unstable();
+            Finding::new(
+                &LABEL_CONTRADICTED,
+                Level::Error,
+                format!(
+                    "labels {:?} and {:?} {of} contradict one another: neither was used where they differ",
+                    said[0], said[1]
+                ),
+                "delete the one that is wrong, or move it to the tendon that it is meant for",
+            )
+            .on_tendon(&self.names[found.host])
+            .at_station(found.station_m)
+            .at_place(texts[found.labels[1]].place)
+        };
+        found.iter().map(finding).collect()
     }
 
     pub(super) fn heights(
@@ -101,6 +123,7 @@ impl Near<'_> {
             .at_station(doubt.stations_m[0])
             .at_place(texts[doubt.label].place)
         }));
+        findings.extend(self.contradicted(texts, &settled.contradicted, "at one place"));
         findings
     }
 

@@ -25,7 +25,7 @@ struct Mark {
     reading: HeightText,
     at_end: bool,
     faces: Faces,
-    /// Two level lines contradict one another here.
+    /// Two level lines, or two labels, contradict one another here.
     torn: bool,
 }
 
@@ -37,7 +37,7 @@ impl Mark {
 
     /// Whether its number is to the nearer face.
     fn is_to_nearer_face(&self) -> bool {
-        self.reading.from == FromFace::NearerFace && !self.reading.middle
+        self.reading.from == FromFace::NearerFace && !self.reading.middle && !self.torn
     }
 }
 
@@ -185,7 +185,7 @@ fn merged(
             reading: height.reading,
             at_end: height.at_end,
             faces: thickness.faces_at(place),
-            torn: false,
+            torn: height.reading.torn,
         };
         new.reading.weigh(new.faces.thickness_m);
         let labelled = height.label.is_some();
@@ -202,7 +202,8 @@ fn merged(
             marks.push((new, labelled));
             continue;
         };
-        if !agree(held.reading, new.reading) {
+        let counted = !held.reading.torn && !new.reading.torn;
+        if counted && !held.reading.agrees(&new.reading) {
             let both_lines = !*by_label && !labelled;
             held.torn |= both_lines;
             held.at_end |= both_lines && new.at_end;
@@ -240,11 +241,6 @@ fn merged(
         }
     }
     (marks.into_iter().map(|(mark, _)| mark).collect(), findings)
-}
-
-fn agree(a: HeightText, b: HeightText) -> bool {
-    (a.value_m - b.value_m).abs() < SAME_M
-        && (a.word == b.word || a.word.is_none() || b.word.is_none())
 }
 
 fn said(reading: HeightText, by_label: bool, units: Units) -> String {

@@ -1,10 +1,15 @@
 //! What labels say: texts turned into heights, marks and thicknesses by the job's patterns.
 
+use regex::Match;
+
 use super::lengths::length_m;
 use crate::job::{Conventions, Datum, FromFace, Pattern, PatternUnit};
 use crate::units::LengthUnit;
 
 pub use crate::job::Word;
+
+/// Heights that differ by less are equal, metres.
+const SAME_M: f64 = 0.0005;
 
 /// A height as written.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -21,6 +26,10 @@ pub struct HeightText {
     pub from: FromFace,
     /// What it is measured to.
     pub datum: Datum,
+    /// Another text contradicts it, or its own does: the number does not count.
+    pub(super) torn: bool,
+    /// It is written as in `H = 165`, where the letter may be the sign of every height.
+    pub(super) by_equals: bool,
 }
 
 /// A mark as written; each part may be absent.
@@ -40,23 +49,6 @@ pub struct MarkText {
     pub required_kn_per_m: Option<f64>,
 }
 
-/// A label, each of its lines read for what it is.
-#[derive(Debug, Clone, Default)]
-pub(super) struct LabelText {
-    /// The first height.
-    pub(super) height: Option<HeightText>,
-    /// A second height that differs from the first.
-    pub(super) other_height: Option<HeightText>,
-    /// Mark, strands, required force, gathered over the lines.
-    pub(super) mark: Option<MarkText>,
-}
-
-/// The height that a text gives: of its lines, the first that is one.
-pub(super) fn height(content: &str, conventions: &Conventions) -> Option<HeightText> {
-    let mut lines = content.lines();
-    lines.find_map(|line| height_of_line(line, conventions).map(|(height, _)| height))
-}
-
 /// The height that a line gives, and the pattern that read it; none where a word did.
 pub fn height_of_line<'c>(
     line: &str,
@@ -71,15 +63,22 @@ pub fn height_of_line<'c>(
             middle: true,
             from: FromFace::Soffit,
             datum: Datum::Centroid,
+            torn: false,
+            by_equals: false,
         };
         return Some((middle, None));
     }
     conventions.height_patterns.iter().find_map(|pattern| {
         let groups = pattern.captures(line)?;
         let unit = length_unit(pattern).unwrap_or(conventions.height.unit);
-        let value_m = length_m(groups.name("value")?.as_str(), unit)?;
-        let word = match groups.name("word").map(|word| word.as_str().trim()) {
+        let value = groups.name("value")?;
+        let value_m = length_m(value.as_str(), unit)?;
+        let written = groups.name("word");
+        let by_equals = equals(line, written, value);
+        let word = match written.map(|word| word.as_str().trim()) {
             None | Some("") => pattern.word,
+            // The sign of a height, `h = 30`, says neither high nor low.
+            Some("h") if by_equals => None,
             Some(word) if among(word, &conventions.high_words) => Some(Word::High),
             Some(word) if among(word, &conventions.low_words) => Some(Word::Low),
             Some(word) if among(word, &conventions.middle_words) => None,
@@ -92,9 +91,18 @@ pub fn height_of_line<'c>(
             middle: false,
             from: pattern.from.unwrap_or(conventions.height.from),
             datum: pattern.datum.unwrap_or(conventions.height.datum),
+            torn: false,
+            by_equals,
         };
         Some((height, Some(pattern)))
     })
+}
+
+/// Whether an equals sign or a colon stands between the letter H and a number.
+fn equals(line: &str, word: Option<Match<'_>>, value: Match<'_>) -> bool {
+    let letter = word.filter(|word| matches!(word.as_str().trim(), "H" | "h"));
+    let between = letter.and_then(|letter| line.get(letter.end()..value.start()));
+    between.is_some_and(|between| between.contains(['=', ':']))
 }
 
 impl HeightText {
@@ -119,64 +127,21 @@ impl HeightText {
     }
 
     /// Whether the text says by itself that it is a height.
-    fn plain(&self) -> bool {
+    pub(super) fn plain(&self) -> bool {
         self.word.is_some() || self.middle
     }
-}
 
-/// Reads a label on a layer of heights, of marks, or of both. Where both lie on one layer a line is a height before it
-/// is a mark. A label of several lines may hold both whatever its layer is for; then what is not of its layer counts
-/// only where it speaks for itself: a height with a word, a mark with strands or a force.
-pub(super) fn label(
-    content: &str,
-    heights: bool,
-    marks: bool,
-    conventions: &Conventions,
-) -> LabelText {
-    let mut whole = LabelText::default();
-    let mut mark = MarkText::default();
-    let lines: Vec<&str> = content
-        .lines()
-        .filter(|line| !line.trim().is_empty())
-        .collect();
-    for line in &lines {
-        let as_height = height_of_line(line, conventions).map(|(height, _)| height);
-        let as_mark = mark_of_line(line, &conventions.mark_patterns).map(|(mark, _)| mark);
-        let (height, said) = match (as_height, as_mark) {
-            (Some(height), _) if heights => (Some(height), None),
-            (Some(height), Some(name)) if lines.len() > 1 && height.plain() => {
-                // On a layer of marks alone, `H165` below another mark is no second mark.
-                if mark.mark.is_some() && !name.counts() {
-                    (Some(height), None)
-                } else {
-                    (None, Some(name))
-                }
-            }
-            (Some(height), None) if lines.len() > 1 && height.plain() => (Some(height), None),
-            (_, Some(said)) if marks || (lines.len() > 1 && said.counts()) => (None, Some(said)),
-            _ => (None, None),
-        };
-        if let Some(height) = height {
-            match whole.height {
-                None => whole.height = Some(height),
-                Some(first) if first != height && whole.other_height.is_none() => {
-                    whole.other_height = Some(height);
-                }
-                Some(_) => {}
-            }
-        }
-        if let Some(said) = said {
-            mark.add(&said);
-        }
+    /// Whether another says the same, or leaves open what this one says.
+    pub(super) fn agrees(&self, other: &Self) -> bool {
+        (self.value_m - other.value_m).abs() < SAME_M
+            && (self.word == other.word || self.word.is_none() || other.word.is_none())
     }
-    whole.mark = (mark != MarkText::default()).then_some(mark);
-    whole
 }
 
 /// What a line says of marks, strands and required force, and the pattern that read it.
 pub fn mark_of_line<'p>(line: &str, patterns: &'p [Pattern]) -> Option<(MarkText, &'p Pattern)> {
     let line = line.trim();
-    patterns.iter().find_map(|pattern| {
+    let found = patterns.iter().find_map(|pattern| {
         let groups = pattern.captures(line)?;
         let part = |name: &str| {
             groups
@@ -184,6 +149,9 @@ pub fn mark_of_line<'p>(line: &str, patterns: &'p [Pattern]) -> Option<(MarkText
                 .map(|found| found.as_str().trim().to_owned())
                 .filter(|found| !found.is_empty())
         };
+        if is_fraction(line, groups.name("mark"), groups.name("strands")) {
+            return Some(None);
+        }
         let force = |name: &str| {
             let number = part(name)?.replace([',', ' '], "").parse::<f64>().ok()?;
             let Some(PatternUnit::Force(unit)) = pattern.unit else {
@@ -191,9 +159,17 @@ pub fn mark_of_line<'p>(line: &str, patterns: &'p [Pattern]) -> Option<(MarkText
             };
             Some(number * unit.kilonewtons()).filter(|kn| kn.is_finite() && *kn > 0.0)
         };
-        let tendons = count(part("tendons"));
-        // None is a count too, if a wrong one: what the label says is told.
-        let strands = part("strands").and_then(|count| count.parse().ok());
+        // A line that counts no tendons, or more than anyone can, is not read at all. That it counts no strands is told of
+        // its tendon.
+        let (tendons, strands) = (part("tendons"), part("strands"));
+        let tendons = match tendons.map(|count| count.parse().ok().filter(|&count| count > 0)) {
+            Some(None) => return Some(None),
+            said => said.flatten(),
+        };
+        let strands: Option<u32> = match strands.map(|count| count.parse().ok()) {
+            Some(None) => return Some(None),
+            said => said.flatten(),
+        };
         let counted = tendons.is_some() || strands.is_some();
         let said = MarkText {
             mark: part("mark"),
@@ -203,8 +179,21 @@ pub fn mark_of_line<'p>(line: &str, patterns: &'p [Pattern]) -> Option<(MarkText
             required_kn: force("force"),
             required_kn_per_m: force("force_per_width"),
         };
-        (said != MarkText::default()).then_some((said, pattern))
-    })
+        (said != MarkText::default()).then_some(Some((said, pattern)))
+    });
+    found.flatten()
+}
+
+/// Whether mark and number of strands meet in what may as well be a size in inches, as in `D1/2-12.7`.
+fn is_fraction(line: &str, mark: Option<Match<'_>>, strands: Option<Match<'_>>) -> bool {
+    let (Some(mark), Some(strands)) = (mark, strands) else {
+        return false;
+    };
+    let digits = mark
+        .as_str()
+        .trim_start_matches(|sign: char| !sign.is_ascii_digit());
+    line.get(mark.end()..strands.start()) == Some("/")
+        && matches!((digits, strands.as_str()), ("1", "2") | ("3" | "5", "8"))
 }
 
 impl MarkText {
@@ -217,16 +206,6 @@ impl MarkText {
     pub(super) fn requires(&self) -> bool {
         self.required_kn.is_some() || self.required_kn_per_m.is_some()
     }
-
-    /// Takes what this one leaves open from another.
-    pub(super) fn add(&mut self, other: &Self) {
-        self.mark = self.mark.take().or_else(|| other.mark.clone());
-        self.tendons = self.tendons.or(other.tendons);
-        self.strands = self.strands.or(other.strands);
-        self.strand = self.strand.take().or_else(|| other.strand.clone());
-        self.required_kn = self.required_kn.or(other.required_kn);
-        self.required_kn_per_m = self.required_kn_per_m.or(other.required_kn_per_m);
-    }
 }
 
 /// The unit that a pattern gives its lengths.
@@ -235,10 +214,6 @@ pub(super) fn length_unit(pattern: &Pattern) -> Option<LengthUnit> {
         Some(PatternUnit::Length(unit)) => Some(unit),
         _ => None,
     }
-}
-
-fn count(text: Option<String>) -> Option<u32> {
-    text?.parse().ok().filter(|&number| number > 0)
 }
 
 /// Whether a word is in a list; blanks, full stops and hyphens do not matter, nor does letter case.

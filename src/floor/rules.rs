@@ -16,6 +16,7 @@ pub const RULES: &[&Rule] = &[
     &HEIGHT_MISSING,
     &JOINT_UNCLAIMED,
     &LABEL_AMBIGUOUS,
+    &LABEL_CONTRADICTED,
     &LABEL_SHARED,
     &LABEL_UNCLAIMED,
     &LABEL_UNREAD,
@@ -114,6 +115,12 @@ pub(super) const LABEL_AMBIGUOUS: Rule = Rule {
     meaning: "A label fits two tendons about equally well, and the choice changes a height.",
 };
 
+/// Labels that speak against one another.
+pub(super) const LABEL_CONTRADICTED: Rule = Rule {
+    name: "label-contradicted",
+    meaning: "Two lines of a label, or two labels of one tendon, say different things of one thing or at one place: neither was used.",
+};
+
 /// A label without a tendon.
 pub(super) const LABEL_UNCLAIMED: Rule = Rule {
     name: "label-unclaimed",
@@ -123,7 +130,7 @@ pub(super) const LABEL_UNCLAIMED: Rule = Rule {
 /// A text that is not what its layer holds.
 pub(super) const LABEL_UNREAD: Rule = Rule {
     name: "label-unread",
-    meaning: "A text on a label layer matches none of the job's patterns.",
+    meaning: "A text on a label layer, a line of one, or a text on a slab layer that speaks of a level matches none of the job's patterns.",
 };
 
 /// Tendons or labels on a layer that nobody sees.

@@ -8,9 +8,9 @@ use super::areas::Areas;
 use super::layers::{Ground, Roles};
 use super::outlines::outlines;
 
-use super::rules::{LEVEL_OUTSIDE_ZONES, THICKNESS_UNKNOWN};
+use super::rules::{LABEL_UNREAD, LEVEL_OUTSIDE_ZONES, THICKNESS_UNKNOWN};
 use super::types::{Faces, Slab};
-use super::zone_texts::{short, zone_text};
+use super::zone_texts::{Unread, short, zone_text};
 use super::zones::{self, SAME_M, Said, differing};
 use crate::drawing::{Drawing, Text};
 use crate::finding::{Finding, Level, Wording};
@@ -38,6 +38,9 @@ pub(super) fn slab(
     };
     let rings_of_zones = [inner, rings(Ground::Zone)].concat();
     let mut said: Vec<Vec<Said>> = vec![Vec::new(); rings_of_zones.len()];
+    // Levels of zones that nobody can read.
+    let mut doubted: Vec<Option<String>> = vec![None; rings_of_zones.len()];
+    let mut findings_of_texts = Vec::new();
     let mut general: Vec<Said> = Vec::new();
     let areas = Areas::new(rings_of_zones.iter());
     let mut texts: Vec<&Text> = drawing.texts.iter().collect();
@@ -51,26 +54,39 @@ pub(super) fn slab(
         if !matches!(ground, Ground::Zone | Ground::Edge | Ground::Slab) {
             continue;
         }
-        let Some(read) = zone_text(&text.content, &job.conventions) else {
-            continue;
-        };
-        let read = Said {
+        let (read, cannot) = zone_text(&text.content, &job.conventions);
+        let read = read.into_iter().map(|read| Said {
             text: read,
             place: text.place,
-        };
+        });
         let zone = areas.smallest(text.place, 0.0);
-        match zone.or_else(|| areas.smallest(middle(text), 0.0)) {
-            Some(zone) => said[zone].push(read),
-            None => general.push(read),
+        let zone = zone.or_else(|| areas.smallest(middle(text), 0.0));
+        match zone {
+            Some(zone) => said[zone].extend(read),
+            None => general.extend(read),
+        }
+        for cannot in cannot.into_iter().filter(|_| !text.hidden) {
+            findings_of_texts.push(unread(text, &cannot, zone.is_some()));
+            if let Some(zone) = zone.filter(|_| cannot.alone) {
+                doubted[zone].get_or_insert(cannot.line);
+            }
         }
     }
     let mut of_slab = Vec::new();
     general_thickness(&mut slab, &general, job, &mut of_slab);
     let around = Faces::general(slab.thickness_m);
-    let (zones, unread) = zones::zones(rings_of_zones, &said, around, &job.slab, &mut findings);
+    let (zones, silent) = zones::zones(
+        rings_of_zones,
+        &said,
+        &doubted,
+        around,
+        &job.slab,
+        &mut findings,
+    );
     slab.zones = zones;
     findings.extend(of_slab);
-    (slab, unread, findings)
+    findings.extend(findings_of_texts);
+    (slab, silent, findings)
 }
 
 /// Outlines that lie in another, and those that lie in none.
@@ -150,6 +166,26 @@ fn level_outside(level_m: f64, place: Coord<f64>) -> Finding {
         "write the level inside its zone and close the zone's line; if it is the general slab's top, set slab.top_level_m",
     )
     .at_place(place)
+}
+
+/// A text on a slab layer that speaks of a level and cannot be read.
+fn unread(text: &Text, cannot: &Unread, in_zone: bool) -> Finding {
+    let outcome = match (cannot.alone, in_zone) {
+        (true, true) => "where its zone lies nobody knows",
+        (false, true) => "it was taken for a note, and its zone for what the other texts say",
+        (_, false) => "outside the zones the slab was taken for what the other texts say",
+    };
+    Finding::new(
+        &LABEL_UNREAD,
+        Level::Warning,
+        format!(
+            "{:?} on layer {} speaks of a level or a thickness and cannot be read: {outcome}; expected such as T350, TOS -50 or \
+             50 SET DOWN",
+            cannot.line, text.layer
+        ),
+        "correct the text, move it to another layer if it is a note, or give its pattern in the job file",
+    )
+    .at_place(text.place)
 }
 
 fn middle(text: &Text) -> Coord<f64> {

@@ -2,15 +2,18 @@
 
 use geo::Coord;
 
-use super::groups::{Extent, GroupText};
+use super::group_text::GroupText;
+use super::groups::Extent;
 use super::index::Foot;
 use super::lines::{Line, axis_rad};
-use super::readings::MarkText;
+use super::marking::Marking;
 use crate::finding::Wording;
 use crate::units::LONG;
 
 /// An extent line fits number and spacing within this share.
 const FIT: f64 = 0.02;
+/// A drawn tendon stands at its place within this share of the spacing.
+pub(super) const OFF: f64 = 0.25;
 /// More tendons than this are no group.
 const MOST: u32 = 1000;
 
@@ -30,20 +33,36 @@ pub(super) fn slots(extent: &Extent) -> Result<Slots, Wording> {
     if extent.crossed.is_empty() {
         return Err("crosses no tendon about squarely".into());
     }
+    if let Some(torn) = extent.said.torn() {
+        return Err(format!("has texts that give two {torn}").into());
+    }
     let marks = marks(&extent.said)?;
-    let stations_m = stations_m(extent.path.length_m(), &extent.said, marks.len())?;
+    let length_m = extent.path.length_m();
+    let stations_m = stations_m(length_m, &extent.said, marks.len())?;
+    let apart_m = match stations_m.as_slice() {
+        [a, b, ..] => b - a,
+        _ => length_m,
+    };
     let mut drawn: Vec<Option<Foot>> = vec![None; stations_m.len()];
     for foot in &extent.crossed {
-        let free = stations_m.iter().zip(&drawn).enumerate();
-        let nearest = free
-            .filter(|(_, (_, drawn))| drawn.is_none())
-            .min_by(|(_, (a, _)), (_, (b, _))| {
-                let off = |station_m: f64| (station_m - foot.distance_m).abs();
-                off(**a).total_cmp(&off(**b))
-            })
-            .map(|(at, _)| at);
-        if let Some(slot) = nearest.and_then(|at| drawn.get_mut(at)) {
-            *slot = Some(*foot);
+        let off_m = |station_m: f64| (station_m - foot.distance_m).abs();
+        let own = stations_m.iter().zip(&mut drawn);
+        let own = own
+            .map(|(&station_m, slot)| (off_m(station_m), slot))
+            .min_by(|a, b| a.0.total_cmp(&b.0));
+        match own {
+            Some((off_m, slot)) if off_m <= OFF * apart_m && slot.is_none() => *slot = Some(*foot),
+            _ => {
+                return Err(Wording::of(|units| {
+                    let long = units.of(LONG);
+                    format!(
+                        "crosses a line {} from its end, at which it has no place left: it gives {} tendons, {} apart",
+                        long.said(foot.distance_m, 2),
+                        stations_m.len(),
+                        long.said(apart_m, 3)
+                    )
+                }));
+            }
         }
     }
     Ok(Slots {
@@ -55,7 +74,7 @@ pub(super) fn slots(extent: &Extent) -> Result<Slots, Wording> {
 
 /// The marks from first to last; none where the text gives none.
 fn marks(said: &GroupText) -> Result<Vec<String>, String> {
-    let (Some(first), Some(last)) = (&said.first, &said.last) else {
+    let (Some(first), Some(last)) = (said.first.one(), said.last.one()) else {
         return Ok(Vec::new());
     };
     let wrong = || format!("has the marks {first} to {last}, which do not count up");
@@ -83,13 +102,18 @@ pub(super) fn numbered(mark: &str) -> Option<(&str, u32, usize)> {
 /// Stations of the tendons: from end to end of the line, or half a spacing in from either end, whichever the numbers fit.
 fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>, Wording> {
     let counted = u32::try_from(marks).ok().filter(|&count| count > 0);
-    if let (Some(number), Some(count)) = (said.number, counted)
+    let said_number = said.number.one().copied();
+    if let (Some(number), Some(count)) = (said_number, counted)
         && number != count
     {
         return Err(format!("says {number} tendons, and its marks are {count}").into());
     }
-    let spacing_m = said.spacing_m.filter(|&spacing_m| spacing_m > 0.0);
-    let number = match (said.number.or(counted), spacing_m) {
+    let spacing_m = said
+        .spacing_m
+        .one()
+        .copied()
+        .filter(|&spacing_m| spacing_m > 0.0);
+    let number = match (said_number.or(counted), spacing_m) {
         (Some(number), _) => number,
         (None, Some(spacing_m)) => {
             #[expect(
@@ -110,6 +134,17 @@ fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>,
         let wanted_m = gaps * spacing_m.unwrap_or(length_m / gaps);
         ((length_m - wanted_m) / wanted_m).abs()
     };
+    // `3T @ 1000`: three in all, where the line is as long as three take, or three at each place.
+    if let Some(&each) = said.each.one()
+        && each > 1
+        && said_number.or(counted).is_none()
+        && off(f64::from(each) - 1.0).min(off(f64::from(each))) <= FIT
+    {
+        return Err(format!(
+            "says {each}T, which may be the number of all its tendons or of those at each place"
+        )
+        .into());
+    }
     let (end_to_end, half_in) = (off(count - 1.0), off(count));
     // Without a spacing both fit: tendons stand at the line's ends.
     let at_ends = end_to_end <= half_in;
@@ -139,11 +174,11 @@ fn stations_m(length_m: f64, said: &GroupText, marks: usize) -> Result<Vec<f64>,
 pub(super) fn slot_marks(
     extent: &Extent,
     slots: &Slots,
-    said: &[MarkText],
+    said: &[Marking],
     lines: &[Line],
 ) -> Vec<Option<String>> {
     let count = slots.stations_m.len();
-    let own = |foot: &Option<Foot>| said.get(foot.as_ref()?.line)?.mark.clone();
+    let own = |foot: &Option<Foot>| said.get(foot.as_ref()?.line)?.mark.one().cloned();
     let mut marks: Vec<Option<String>> = slots.drawn.iter().map(own).collect();
     if slots.marks.len() != count {
         return marks;

@@ -19,19 +19,113 @@ pub struct ZoneText {
     pub down_m: Option<f64>,
 }
 
-/// What a text on a slab layer says, gathered over its lines.
-pub(super) fn zone_text(content: &str, conventions: &Conventions) -> Option<ZoneText> {
-    let mut whole = ZoneText::default();
-    for (said, _) in content
-        .lines()
-        .filter_map(|line| zone_text_of_line(line, conventions))
-    {
-        whole.thickness_m = whole.thickness_m.or(said.thickness_m);
-        whole.top_m = whole.top_m.or(said.top_m);
-        whole.soffit_m = whole.soffit_m.or(said.soffit_m);
-        whole.down_m = whole.down_m.or(said.down_m);
+/// What a text on a slab layer says, line by line, and the lines that speak of a level or a thickness and cannot be read.
+pub(super) fn zone_text(content: &str, conventions: &Conventions) -> (Vec<ZoneText>, Vec<Unread>) {
+    let (mut said, mut unread) = (Vec::new(), Vec::new());
+    for line in content.lines() {
+        match zone_text_of_line(line, conventions) {
+            Some((text, _)) => said.push(text),
+            None => unread.extend(speaks(line)),
+        }
     }
-    (whole != ZoneText::default()).then_some(whole)
+    (said, unread)
+}
+
+/// A line that speaks of a level or a thickness and cannot be read.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) struct Unread {
+    pub(super) line: String,
+    /// It says nothing else, so it is no note but the level itself.
+    pub(super) alone: bool,
+}
+
+/// Words of levels and thicknesses, of the structure or of its finish, and what may stand beside their number.
+const LEVEL_WORDS: &[&str] = &[
+    "SSL",
+    "SFL",
+    "FFL",
+    "FSL",
+    "FGL",
+    "RL",
+    "EL",
+    "LVL",
+    "LEVEL",
+    "TOS",
+    "TOC",
+    "BOS",
+    "BOC",
+    "USL",
+    "SOFFIT",
+    "SOF",
+    "STEP",
+    "DROP",
+    "RECESS",
+    "SETDOWN",
+    "SD",
+    "SUNK",
+    "SUNKEN",
+    "LOWERED",
+    "RAISED",
+    "UPSTAND",
+    "DEPRESSION",
+    "THK",
+    "THICK",
+    "THICKNESS",
+    "DEEP",
+    "DEPTH",
+    "OKRD",
+    "UKRD",
+    "OKFF",
+    "OK",
+    "UK",
+];
+const BESIDE_THEM: &[&str] = &[
+    "TOP",
+    "OF",
+    "SLAB",
+    "CONCRETE",
+    "STRUCTURAL",
+    "FINISHED",
+    "FLOOR",
+    "T",
+    "O",
+    "S",
+    "C",
+    "B",
+    "U",
+    "SET",
+    "DOWN",
+    "UP",
+    "DN",
+    "N",
+    "UNO",
+    "TYP",
+    "TYPICAL",
+    "MM",
+    "CM",
+    "M",
+    "IN",
+    "MIN",
+    "MAX",
+];
+
+/// A line with a number and a word of levels.
+fn speaks(line: &str) -> Option<Unread> {
+    let upper = line.to_uppercase();
+    let words: Vec<&str> = upper
+        .split(|sign: char| !sign.is_alphabetic())
+        .filter(|word| !word.is_empty())
+        .collect();
+    let spelt = words.concat();
+    let of_level = words.iter().any(|word| LEVEL_WORDS.contains(word))
+        || ["TOS", "TOC", "SETDOWN", "STEPDOWN", "US", "T", "SD"].contains(&spelt.as_str());
+    let alone = words
+        .iter()
+        .all(|word| LEVEL_WORDS.contains(word) || BESIDE_THEM.contains(word));
+    (of_level && upper.contains(|sign: char| sign.is_ascii_digit())).then(|| Unread {
+        line: line.trim().to_owned(),
+        alone,
+    })
 }
 
 /// What a line says of a slab, and the pattern that read it.
@@ -79,7 +173,10 @@ fn level_m(text: &str, unit: LengthUnit) -> Option<f64> {
     if unit == LengthUnit::Mm && bare && decimals >= 2 {
         length_m(&text, LengthUnit::M)
     } else {
-        length_m(&text, unit)
+        // With one decimal and below ten nobody knows whether it is tenths of a metre or of a millimetre.
+        let level_m = length_m(&text, unit)?;
+        let vague = unit == LengthUnit::Mm && bare && decimals == 1 && level_m.abs() < 0.010;
+        Some(level_m).filter(|level_m| !vague || *level_m == 0.0)
     }
 }
 
@@ -97,10 +194,19 @@ pub(super) fn short(length_m: f64, units: Units) -> String {
 mod tests {
     use super::*;
 
+    /// Thickness, top, soffit, down, millimetres, each line after the other.
+    fn read(text: &str) -> Vec<[Option<i64>; 4]> {
+        let conventions = crate::job::Job::default().conventions;
+        let (said, _) = zone_text(text, &conventions);
+        #[expect(clippy::cast_possible_truncation, reason = "small numbers")]
+        let mm = |part: Option<f64>| part.map(|m| (m * 1000.0).round() as i64);
+        let parts =
+            |said: &ZoneText| [said.thickness_m, said.top_m, said.soffit_m, said.down_m].map(mm);
+        said.iter().map(parts).collect()
+    }
+
     #[test]
     fn texts_of_zones_give_thickness_and_levels() {
-        let conventions = crate::job::Job::default().conventions;
-        // Thickness, top, soffit, down, millimetres.
         for (text, expected) in [
             ("T350", [Some(350), None, None, None]),
             ("TOS -50", [None, Some(-50), None, None]),
@@ -113,20 +219,45 @@ mod tests {
             ("TOS -0.1 m", [None, Some(-100), None, None]),
             ("-50.00 mm", [None, Some(-50), None, None]),
             ("SOFFIT -400", [None, None, Some(-400), None]),
-            ("T300\nTOS -50", [Some(300), Some(-50), None, None]),
             ("T300 / TOS -50", [Some(300), Some(-50), None, None]),
             ("t300 +25", [Some(300), Some(25), None, None]),
             ("SD 50", [None, None, None, Some(50)]),
             ("50 SET DOWN", [None, None, None, Some(50)]),
+            ("-50 SSL", [None, Some(-50), None, None]),
+            ("+0.05 TOS", [None, Some(50), None, None]),
+            ("TOS -50 U.N.O.", [None, Some(-50), None, None]),
+            ("SLAB 350 THICK U.N.O.", [Some(350), None, None, None]),
+            ("T200 (TYP.)", [Some(200), None, None, None]),
+            ("STEP 50", [None, None, None, Some(50)]),
+            ("RECESS 50", [None, None, None, Some(50)]),
+            ("50 RECESS UNO", [None, None, None, Some(50)]),
         ] {
-            let read = zone_text(text, &conventions).unwrap_or_default();
-            let found = [read.thickness_m, read.top_m, read.soffit_m, read.down_m];
-            #[expect(clippy::cast_possible_truncation, reason = "small numbers")]
-            let found = found.map(|part| part.map(|m| (m * 1000.0).round() as i64));
-            assert_eq!(found, expected, "{text}");
+            assert_eq!(read(text), [expected], "{text}");
         }
-        for text in ["50", "STEP", "TOS", "SEE DETAIL 4", "T0", "T-50"] {
-            assert_eq!(zone_text(text, &conventions), None, "{text}");
+        // Each line for itself: two of one thing are a contradiction, told where they are put together.
+        assert_eq!(read("T200\nPT\nT300").len(), 2);
+        assert_eq!(read("T300\nTOS -50").len(), 2);
+    }
+
+    #[test]
+    fn what_speaks_of_a_level_and_cannot_be_read_is_kept_to_be_said() {
+        let conventions = crate::job::Job::default().conventions;
+        for (text, alone) in [
+            ("FFL -0.050", Some(true)),
+            ("50 DROP", Some(true)),
+            ("SSL -0.1", Some(true)),
+            ("T.O.S. 12.5.1", Some(true)),
+            ("STEP 50 SEE DETAIL", Some(false)),
+            ("T-50", Some(true)),
+            ("50", None),
+            ("STEP", None),
+            ("TOS", None),
+            ("SEE DETAIL 4", None),
+            ("GRID 4", None),
+        ] {
+            let (said, unread) = zone_text(text, &conventions);
+            assert!(said.is_empty(), "{text}");
+            assert_eq!(unread.first().map(|unread| unread.alone), alone, "{text}");
         }
     }
 }

@@ -25,11 +25,13 @@ pub(super) struct Said {
     pub(super) place: Coord<f64>,
 }
 
-/// Zones of known thickness, in the order of their outlines; those without are returned apart. What a zone's text leaves
+/// Zones of known thickness, in the order of their outlines; those without, and those `doubted` for a text that cannot be
+/// read, are returned apart. What a zone's text leaves
 /// open it has of the smallest zone that holds the whole of it, or of the general slab.
 pub(super) fn zones(
     outlines: Vec<Polygon<f64>>,
     said: &[Vec<Said>],
+    doubted: &[Option<String>],
     general: Faces,
     job: &SlabJob,
     findings: &mut Vec<Finding>,
@@ -45,7 +47,16 @@ pub(super) fn zones(
             .around(&outlines[at], sizes_m2[at])
             .and_then(|outer| faces[outer])
             .unwrap_or(general);
-        let here = read(&said[at], &outlines[at], around, job, &mut found[at]);
+        let here = match &doubted[at] {
+            None => read(&said[at], &outlines[at], around, job, &mut found[at]),
+            Some(line) => {
+                let what = format!(
+                    "has the text {line:?} inside, which cannot be read; expected a text such as T350 or TOS -50"
+                );
+                found[at].push(unread(&outlines[at], |_| what.clone()));
+                None
+            }
+        };
         // Through a zone that says nothing the top runs on; how thick it is nobody knows.
         faces[at] = Some(here.unwrap_or(Faces {
             top_m: around.top_m,
@@ -301,7 +312,14 @@ mod tests {
             .collect();
         let general = Faces::general(Some(0.25));
         let mut findings = Vec::new();
-        let (zones, _) = zones(outlines.clone(), &said, general, job, &mut findings);
+        let (zones, _) = zones(
+            outlines.clone(),
+            &said,
+            &vec![None; said.len()],
+            general,
+            job,
+            &mut findings,
+        );
         let found = outlines.iter().map(|outline| {
             let zone = zones.iter().find(|zone| zone.outline == *outline)?;
             Some([zone.top_m, zone.thickness_m].map(|m| (m * 1e6).round() / 1e3))

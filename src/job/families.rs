@@ -31,6 +31,8 @@ const AFTER_MARK: &str = r"(?:\s*[:;,/]\s*|\s*\(\s*|\s+(?:[-–]\s+)?)";
 const OF_SIZE: &str = r"\s*(?:[-–/SØ∅⌀]|NOS?\.?)\s*[Ø∅⌀]?\s*";
 /// Inches or millimetres after a size.
 const SIZE_SIGN: &str = r#"\s*(?:mm|"|″|”|''|in\.?)?\s*[Ø∅⌀]?(?:\s*DIA\.?)?(?:\s*STRANDS?)?"#;
+/// What may stand behind a text that holds generally.
+const NOTE: &str = r"(?:\s*\(?(?:U\.?N\.?O|TYP(?:ICAL)?)\.?\)?)?";
 /// A number of tendons before their strands.
 const TENDONS: &str = r"(?:(?<tendons>\d+)\s*(?:[x×*]|TENDONS?(?:\s+OF)?|NOS?\.?)\s*)?";
 /// A force, perhaps with the letters that it goes by, and in groups of three.
@@ -55,6 +57,13 @@ fn compiled_marks() -> Vec<Pattern> {
         })
     };
     [
+        // Before the others, to which 4 x 1/2" would be four tendons of one strand of size 2.
+        pattern(
+            "strands x fraction",
+            &format!(
+                r"(?i)^{mark}(?<strands>\d+)\s*(?:[x×*]|NOS?\.?)\s*[Ø∅⌀]?\s*(?<strand>\d/\d|½){SIZE_SIGN}\s*\)?$"
+            ),
+        ),
         pattern(
             "strands and size",
             &format!(
@@ -112,39 +121,45 @@ pub fn height_patterns(unit: LengthUnit) -> Vec<Pattern> {
 }
 
 /// Thickness and levels of slab and zones in this unit: `T350`, `T 350`, `T=350`, `350 THK`, `THK. 350`; `TOS -50`,
-/// `SSL +0.05`, `+0.05`; `SOFFIT -400`; `50 SET DOWN`. A level may stand behind a thickness.
+/// `SSL +0.05`, `-50 SSL`, `+0.05`; `SOFFIT -400`; `50 SET DOWN`, `STEP 50`, `RECESS 50`. A level may stand behind a
+/// thickness, `U.N.O.` behind either. A drop may be one of the top or a panel below the soffit, and a finished level is
+/// none of the structure: neither is read.
 pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
     static BY_UNIT: ByUnit = ByUnit::new();
     BY_UNIT.of(
         unit,
         &[
-            ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)$"),
+            ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)NOTE$"),
             (
                 "thickness, word first",
-                r"(?i)^(?:SLAB\s+)?(?:THK|THICK(?:NESS)?)\.?\s*[=:]?\s*(?<value>NUMBER)$",
+                r"(?i)^(?:SLAB\s+)?(?:THK|THICK(?:NESS)?)\.?\s*[=:]?\s*(?<value>NUMBER)NOTE$",
             ),
             (
                 "thickness, word last",
-                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?$",
+                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?NOTE$",
             ),
             (
                 "top level",
-                r"(?i)^BEHIND(?:T\.?O\.?[SC]\.?|SSL|TOP)\s*[=:]?\s*(?<top>LEVEL)$",
+                r"(?i)^BEHIND(?:T\.?O\.?[SC]\.?|SSL|TOP)\s*[=:]?\s*(?<top>LEVEL)NOTE$",
             ),
             (
                 "soffit level",
-                r"(?i)^BEHIND(?:SOFFIT|SOF|U/S|USL|B\.?O\.?S\.?)\s*[=:]?\s*(?<soffit>LEVEL)$",
+                r"(?i)^BEHIND(?:SOFFIT|SOF|U/S|USL|B\.?O\.?S\.?)\s*[=:]?\s*(?<soffit>LEVEL)NOTE$",
             ),
             (
                 "set down, word first",
-                r"(?i)^BEHIND(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)\s*[=:]?\s*(?<down>NUMBER)$",
+                r"(?i)^BEHIND(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN|STEP|RECESS)\s*[=:]?\s*(?<down>NUMBER)NOTE$",
             ),
             (
                 "set down, word last",
-                r"(?i)^BEHIND(?<down>NUMBER)\s*(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN)$",
+                r"(?i)^BEHIND(?<down>NUMBER)\s*(?:S\.?D\.?|(?:SET|STEP)[ -]?DOWN|STEP|RECESS)NOTE$",
+            ),
+            (
+                "top level, word last",
+                r"(?i)^BEHIND(?<top>[-+−–±]?LEVEL)\s*(?:T\.?O\.?[SC]\.?|SSL)NOTE$",
             ),
             // Without a word a level has its sign.
-            ("signed level", r"(?i)^BEHIND(?<top>[-+−–±]LEVEL)$"),
+            ("signed level", r"(?i)^BEHIND(?<top>[-+−–±]LEVEL)NOTE$"),
         ],
     )
 }
@@ -175,6 +190,7 @@ impl ByUnit {
 fn in_unit(unit: LengthUnit, expressions: &[(&str, &str)]) -> Vec<Pattern> {
     let with_number = |(name, expression): &(&str, &str)| {
         let expression = expression
+            .replace("NOTE", NOTE)
             .replace("BEHIND", r"(?:T\s*=?\s*(?<value>NUMBER)[\s,;/]+)?")
             .replace(
                 "LEVEL",
@@ -303,6 +319,10 @@ pub(super) fn group_patterns() -> Vec<Pattern> {
         (
             "number at a spacing",
             r"(?i)(?:^|[\s,;(])(?<number>\d+)\s*(?:no|nos|x)?\.?\s*@\s*\d",
+        ),
+        (
+            "tendons at each place",
+            r"(?i)(?:^|[\s,;(])(?<each>\d+)\s*T(?:ENDONS?)?\.?\s*@\s*\d",
         ),
         (
             "spacing",

@@ -233,12 +233,12 @@ pub static KEYS: &[Key] = &[
     key("labels", "tick_blocks", Kind::Shell(place!(conventions.tick_blocks)),
         "Blocks on the layers of heights that mark the place of a height on its tendon (shell patterns, any letter case).", CONVENTION),
     key("labels", "group_patterns", Kind::Expressions {
-            groups: &["first", "last", "number", "spacing"],
+            groups: &["first", "last", "number", "each", "spacing"],
             also: &[],
             says: &["unit"],
             place: place!(conventions.group_patterns),
         },
-        "Groups of like tendons, beside a line of layers.extents: groups first, last, number, spacing, gathered from all patterns that fit.", CONVENTION),
+        "Groups of like tendons, beside a line of layers.extents: groups first, last, number, each (tendons at a place), spacing, gathered from all patterns that fit.", CONVENTION),
 
     key("height", "unit", unit!(conventions.height.unit),
         "Unit of the numbers; in and ft may be written with fractions.", CONVENTION),

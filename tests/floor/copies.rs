@@ -151,12 +151,9 @@ fn a_label_written_twice_is_one_also_where_others_stand_level_with_it() {
         told(&findings, "label-unclaimed").is_empty(),
         "{findings:#?}"
     );
-    // Another text at that place is no copy.
+    // Another text at that place is no copy, but a contradiction.
     board.write(HEIGHT, "L165", (10.001, 5.12));
     let (_, findings) = board.read();
-    assert!(
-        only(&findings, "label-unclaimed")
-            .text
-            .contains("has its own label")
-    );
+    let text = &only(&findings, "label-contradicted").text;
+    assert!(text.contains("\"H165\" and \"L165\""), "{text}");
 }

@@ -228,3 +228,112 @@ fn copies_stand_at_the_same_height_above_the_soffit_where_they_lie() {
     let high = tendon(&floor, "D2").points[2];
     assert_eq!(mm(high.level_m().unwrap_or_default()), -80);
 }
+
+#[test]
+fn a_group_that_contradicts_its_drawn_tendons_is_not_made() {
+    // Strands by its text and by the tendon's own label.
+    let (floor, findings) = group(2.0, [2.0, 6.0], &["5 @ 1000 4-12.7"]).read();
+    assert_eq!((floor.tendons.len(), floor.tendons[0].strands), (1, None));
+    assert!(only(&findings, "group-misfit").text.contains("otherwise"));
+    // Two numbers in two texts; two parts in one.
+    for texts in [&["5 @ 1000", "6 @ 1000"][..], &["3 @ 1000, 4 @ 500"]] {
+        let (floor, findings) = group(2.0, [2.0, 6.0], texts).read();
+        assert_eq!(floor.tendons.len(), 1);
+        assert!(only(&findings, "group-misfit").text.contains("give two"));
+    }
+    // More lines than places, and one beside its place.
+    for (y, others, text) in [
+        (2.0, &[3.0, 4.0, 5.0, 6.0][..], "3 @ 2000"),
+        (2.4, &[], "5 @ 1000"),
+    ] {
+        let mut board = group(y, [2.0, 6.0], &[text]);
+        for &other in others {
+            board.line(DISTRIBUTED, &[(0.0, other), (20.0, other)]);
+        }
+        let (floor, findings) = board.read();
+        assert_eq!(floor.tendons.len(), 1 + others.len());
+        assert!(
+            only(&findings, "group-misfit")
+                .text
+                .contains("no place left")
+        );
+        let counted = floor.tendons.iter().filter(|t| t.strands.is_some());
+        assert_eq!(counted.count(), 1);
+    }
+    // Its places are 250 mm accurate at 1000 mm.
+    let (floor, _) = group(2.2, [2.0, 6.0], &["5 @ 1000"]).read();
+    assert_eq!(floor.tendons.len(), 5);
+}
+
+#[test]
+fn tendons_at_each_place_are_counted_unless_they_may_be_all() {
+    let (floor, findings) = group(2.0, [2.0, 8.0], &["2T @ 1000"]).read();
+    assert_eq!(floor.tendons.len(), 7);
+    assert!(
+        floor
+            .tendons
+            .iter()
+            .all(|t| (t.tendons, t.strands) == (2, Some(5)))
+    );
+    untold(&findings);
+    let (floor, findings) = group(2.0, [2.0, 4.0], &["3T @ 1000"]).read();
+    assert_eq!(floor.tendons.len(), 1);
+    assert!(only(&findings, "group-misfit").text.contains("says 3T"));
+}
+
+#[test]
+fn one_typical_tendon_has_one_extent_or_several_that_go_on_from_it() {
+    let second = |line: [f64; 2], text: &str| {
+        let mut board = group(4.0, [4.0, 8.0], &["5 @ 1000"]);
+        board.line(EXTENT, &[(12.0, line[0]), (12.0, line[1])]);
+        board.text(
+            MARK,
+            text,
+            at(12.1, f64::midpoint(line[0], line[1]) + 0.37),
+            0.1,
+            0.0,
+            false,
+        );
+        board.read()
+    };
+    // The same once more; on the other side of it; over the same places otherwise.
+    assert_eq!(second([4.0, 8.0], "5 @ 1000").0.tendons.len(), 5);
+    assert_eq!(second([2.0, 4.0], "3 @ 1000").0.tendons.len(), 7);
+    let (floor, findings) = second([4.0, 8.0], "9 @ 500");
+    assert_eq!(
+        (floor.tendons.len(), told(&findings, "group-misfit").len()),
+        (1, 2)
+    );
+}
+
+#[test]
+fn a_made_tendon_that_lies_on_another_is_said() {
+    let mut board = group(2.0, [2.0, 6.0], &["5 @ 1000"]);
+    board.line(crate::sketch::BANDED, &[(0.0, 4.0), (20.0, 4.0)]);
+    let (_, findings) = board.read();
+    let found = only(&findings, "duplicate-line");
+    assert!(found.level == Level::Error && found.text.contains("made as a copy"));
+}
+
+#[test]
+fn a_copy_in_another_part_of_the_slab_is_measured_there() {
+    let high_mm = |job: &str, zone: &str| {
+        let mut board = group(2.0, [2.0, 5.6], &["D1-D4 @ 1200"]);
+        board.rectangle("SLAB-ZONE", (-0.5, 4.0), (20.5, 5.0));
+        board.write("SLAB-ZONE", zone, (9.5, 4.7));
+        let job = tautplan::job::read("tautplan.toml", job).expect("a sound job");
+        let (floor, _) = tautplan::floor::read(&board.drawing, &job.job);
+        let high = tendon(&floor, "D3").points[2];
+        (
+            mm(high.height_m.unwrap_or_default()),
+            mm(high.level_m().unwrap_or_default()),
+        )
+    };
+    // The slab is 250 thick; the label says 170.
+    assert_eq!(high_mm("", "TOS -20"), (170, -100));
+    assert_eq!(high_mm("[height]\nfrom = \"top\"", "T280"), (110, -170));
+    assert_eq!(
+        high_mm("[height]\nsoffit = \"general\"", "T280"),
+        (200, -80)
+    );
+}

@@ -89,8 +89,11 @@ fn a_line_that_does_not_speak_for_itself_stays_with_its_layer() {
 #[test]
 fn two_heights_in_one_label_are_said() {
     let (tendon, findings) = only("", &[(MARKS, "D1 5-12.7", 3.0), (HEIGHTS, "L30\nL40", 6.0)]);
-    assert_eq!(heights(&tendon), [(PointKind::Low, 30)]);
-    let found = findings.iter().find(|f| f.rule.name == "label-unread");
+    let low = tendon.points[1];
+    assert_eq!((low.kind, low.height_m), (PointKind::Low, None));
+    let found = findings
+        .iter()
+        .find(|f| f.rule.name == "label-contradicted");
     assert!(
         found.expect("said").text.contains("two heights"),
         "{findings:?}"

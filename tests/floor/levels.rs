@@ -100,7 +100,7 @@ fn of_two_heights_beside_one_level_line_none_is_taken_whichever_was_drawn_first(
         })
     };
     let (floor, findings) = read([("H165", 6.5), ("H160", 7.0)]);
-    assert_eq!(middle(&floor, "B01"), None);
+    assert_eq!(middle(&floor, "B01"), Some((10_000, None)));
     assert!(
         only(&findings, "level-line-unread")
             .text

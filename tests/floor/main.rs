@@ -7,6 +7,7 @@
 
 mod anchors;
 mod bridging;
+mod contradictions;
 mod conventions;
 mod copies;
 mod ends;

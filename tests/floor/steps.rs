@@ -347,3 +347,46 @@ fn the_demos_have_no_doubtful_soffit_and_no_assumed_step() {
         }
     }
 }
+
+#[test]
+fn a_level_of_a_zone_that_cannot_be_read_leaves_the_zone_open() {
+    let high = |texts: &[&str]| {
+        let (floor, findings) = board(FLAT, Some(texts)).read();
+        let level = levels_mm(&floor)[2];
+        (level, findings)
+    };
+    // Read, in one text or in two.
+    for texts in [
+        &["T250", "-50 SSL"][..],
+        &["T250", "STEP 50"],
+        &["T250 U.N.O.", "TOS -50 U.N.O."],
+        &["T250\nRECESS 50"],
+    ] {
+        let (level, findings) = high(texts);
+        assert_eq!(level, Some(-85), "{texts:?}");
+        assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
+    }
+    // A finished level, a drop that may be a panel below, tenths of who knows what.
+    for text in ["FFL -0.050", "50 DROP", "SSL -0.1"] {
+        let (level, findings) = high(&["T250", text]);
+        assert_eq!(level, None, "{text}");
+        let zone = only(&findings, "zone-unread");
+        assert!(zone.level == Level::Error && zone.text.contains(text));
+        let unread = only(&findings, "label-unread");
+        assert!(unread.level == Level::Warning && unread.text.contains(text));
+    }
+    // A note leaves the zone as its other texts say.
+    let (level, findings) = high(&["T250", "STEP 50 SEE DETAIL 3"]);
+    assert_eq!(level, Some(-35));
+    assert!(
+        only(&findings, "label-unread")
+            .text
+            .contains("taken for a note")
+    );
+    let (_, findings) = high(&["T250", "SEE DETAIL 3"]);
+    assert_eq!(rules(&findings), [""; 0], "{findings:#?}");
+    // Two of one thing in one text are two.
+    let (level, findings) = high(&["T250\nPT\nT300"]);
+    assert_eq!(level, None);
+    assert_eq!(only(&findings, "thickness-differs").level, Level::Error);
+}

@@ -4,7 +4,7 @@ use std::collections::BTreeSet;
 
 use crate::floor::candidates::Lie;
 use crate::floor::even::between;
-use crate::floor::readings::MarkText;
+use crate::floor::marking::Marking;
 use crate::floor::settle::{Settlement, Stakes};
 
 /// A mark that fits two lines about equally well.
@@ -27,7 +27,7 @@ pub(super) fn doubts<S: Stakes>(
     settlement: &mut Settlement<'_, S>,
     taken: &[Option<usize>],
     even: &[Option<usize>],
-    texts: &[MarkText],
+    texts: &[Marking],
     lies: &[Lie],
 ) -> Vec<MarkDoubt> {
     let mut doubts: Vec<MarkDoubt> = Vec::new();
@@ -76,7 +76,7 @@ pub(super) fn doubts<S: Stakes>(
 fn matters(
     taken: &[Option<usize>],
     changes: &[(usize, Option<usize>)],
-    texts: &[MarkText],
+    texts: &[Marking],
     lies: &[Lie],
 ) -> bool {
     let said = |pairing: usize| {
@@ -84,7 +84,7 @@ fn matters(
         (lie.pairing.host, &texts[lie.pairing.label])
     };
     let gone = changes.iter().filter_map(|&(label, _)| taken[label]);
-    let mut gone: Vec<(usize, &MarkText)> = gone.map(said).collect();
+    let mut gone: Vec<(usize, &Marking)> = gone.map(said).collect();
     for come in changes.iter().filter_map(|&(_, pairing)| pairing).map(said) {
         match gone.iter().position(|old| *old == come) {
             Some(at) => {
