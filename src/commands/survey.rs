@@ -13,6 +13,7 @@ mod contents;
 mod directions;
 mod extents;
 mod gaps;
+mod grids;
 mod labels;
 mod notes;
 mod picked;
@@ -20,6 +21,7 @@ mod proposals;
 mod readings;
 mod roles;
 mod symbols;
+mod trade_words;
 mod trial;
 mod words;
 

@@ -6,6 +6,8 @@ use geo::Coord;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
+use super::grids::Grids;
+use super::trade_words::{Trade, hinted, is_between, named};
 use crate::drawing::{Drawing, Shape};
 use crate::floor::{EndKind, Figure, figures};
 use crate::job::Job;
@@ -48,18 +50,19 @@ type Placed = GeomWithData<[f64; 2], usize>;
 
 impl AtEnds {
     /// Looks at the ends of every open line.
-    pub(super) fn of(drawing: &Drawing, job: &Job) -> Self {
+    pub(super) fn of(drawing: &Drawing, job: &Job, grids: &Grids) -> Self {
         let reach_m = job.conventions.end_reach_m;
         let gap_m = job.conventions.join_gap_m;
         let figures = figures(drawing, gap_m, 2.0 * reach_m, |shape| {
-            shape.within.is_none()
+            shape.within.is_none() && !named(Trade::Column, &shape.layer)
         });
         let inserts = tree(drawing.inserts.iter().map(|insert| insert.place));
         let texts = tree(drawing.texts.iter().map(|text| middle(&text.corners)));
         let shapes = tree(figures.iter().map(|figure| middle(&figure.corners)));
         let mut found = Self::default();
         for (number, shape) in drawing.shapes.iter().enumerate() {
-            if shape.closed || shape.path.length_m() < LINE * reach_m {
+            let short = shape.path.length_m() < LINE * reach_m;
+            if shape.closed || short || grids.draw(number, shape) {
                 continue;
             }
             let holding = holding(drawing, shape);
@@ -197,51 +200,6 @@ impl AtEnds {
             }
         }
     }
-}
-
-/// Words that are part of what other offices call a dead or a live end, also in French, German, Spanish, Russian and
-/// Chinese (from memory).
-const DEAD: [&str; 8] = [
-    "DEAD",
-    "FIXED",
-    "PASSIV",
-    "PASSIF",
-    "PASIVO",
-    "FESTANKER",
-    "ПАССИВН",
-    "固定端",
-];
-const LIVE: [&str; 9] = [
-    "LIVE",
-    "STRESSING",
-    "ACTIV",
-    "ACTIF",
-    "JACK",
-    "SPANNANKER",
-    "АКТИВН",
-    "НАТЯЖН",
-    "张拉端",
-];
-
-/// What a name or a word of another office says of an end.
-pub(super) fn hinted(text: &str) -> Option<EndKind> {
-    if is_between(text) {
-        return None;
-    }
-    let text = text.to_uppercase();
-    let says = |words: &[&str]| words.iter().any(|word| text.contains(word));
-    if says(&DEAD) {
-        Some(EndKind::Dead)
-    } else {
-        says(&LIVE).then_some(EndKind::Live)
-    }
-}
-
-/// Whether a name or a word of another office speaks of an anchor between the ends of a tendon.
-fn is_between(text: &str) -> bool {
-    let text = text.to_uppercase();
-    let mut words = text.split(|sign: char| !sign.is_alphanumeric());
-    text.contains("INTERMED") || text.contains("COUPL") || words.any(|word| word == "IA")
 }
 
 /// A short text without digits.

@@ -5,12 +5,15 @@ use std::collections::{BTreeMap, BTreeSet};
 use geo::Coord;
 
 use super::at_ends::AtEnds;
+use super::grids::Grids;
 use super::readings::{Reading, hint, reading};
 use crate::drawing::{Drawing, Look, ShapeKind};
 use crate::job::Job;
 
 /// Texts shown of each layer.
 const SAMPLES: usize = 4;
+/// Lines up to this many text heights long are ticks, leaders and symbols.
+const SMALL: f64 = 15.0;
 /// A word beside so many numbers is no chance.
 const OFTEN: usize = 3;
 
@@ -23,6 +26,8 @@ pub(super) struct Contents {
     pub(super) looks: BTreeMap<String, BTreeMap<Look, Held>>,
     /// What stands at line ends.
     pub(super) at_ends: AtEnds,
+    /// Grid lines: no tendons, and their names are no heights.
+    pub(super) grids: Grids,
 }
 
 /// What lies on a layer, or on it in one look.
@@ -40,6 +45,10 @@ pub(super) struct Held {
     pub(super) blocks_at_ends: usize,
     /// Texts.
     pub(super) texts: usize,
+    /// Heights of their capitals, metres.
+    pub(super) text_m: Vec<f64>,
+    /// Texts that are a mark and no more, each with its number of times.
+    pub(super) bare_marks: BTreeMap<String, usize>,
     /// Texts that say a thickness.
     pub(super) thicknesses: usize,
     /// Texts that say a height.
@@ -68,12 +77,15 @@ pub(super) struct Held {
 impl Contents {
     /// Counts what a drawing holds; texts are read by the job's patterns.
     pub(super) fn of(drawing: &Drawing, job: &Job) -> Self {
+        let grids = Grids::of(drawing);
         let mut contents = Self {
-            at_ends: AtEnds::of(drawing, job),
+            at_ends: AtEnds::of(drawing, job, &grids),
+            grids,
             ..Self::default()
         };
         for (number, shape) in drawing.shapes.iter().enumerate() {
-            if shape.kind == ShapeKind::Solid || contents.at_ends.draws(drawing, shape) {
+            let grid = contents.grids.draw(number, shape);
+            if grid || shape.kind == ShapeKind::Solid || contents.at_ends.draws(drawing, shape) {
                 continue;
             }
             let marked = contents.at_ends.marked.get(&number).copied().unwrap_or(0);
@@ -88,16 +100,24 @@ impl Contents {
                 held.spans.push([start, end]);
             }
         }
-        for text in &drawing.texts {
+        for (number, text) in drawing.texts.iter().enumerate() {
+            if contents.grids.write(number, text) {
+                continue;
+            }
             let said = reading(&text.content, job);
             let held = contents.held(&text.layer, text.look);
             held.texts += 1;
+            held.text_m.push(text.height_m);
             match &said {
                 Reading::Thickness(_) => held.thicknesses += 1,
                 Reading::Height(_) => held.heights += 1,
                 Reading::Mark { strands: true, .. } => held.strands += 1,
                 Reading::Offered(family) => *held.offered.entry(family).or_default() += 1,
-                Reading::Mark { .. } | Reading::Unread => {}
+                Reading::Mark { .. } => {
+                    let mark = text.content.trim().to_owned();
+                    *held.bare_marks.entry(mark).or_default() += 1;
+                }
+                Reading::Unread => {}
             }
             held.hints(&text.content, &said, job);
             keep_sample(&mut held.samples, &text.content, said);
@@ -146,6 +166,15 @@ impl Held {
 
     /// `T165` beside `B30` is no thickness but a top.
     fn settle(&mut self) {
+        if self.counts_marks() {
+            for mark in self.bare_marks.keys() {
+                let word = mark
+                    .chars()
+                    .filter(|sign| sign.is_alphabetic())
+                    .collect::<String>();
+                self.words.remove(&word.to_uppercase());
+            }
+        }
         if self.thicknesses > 0 && self.words.keys().any(|word| word == "B") {
             self.words.insert("T".to_owned(), self.thicknesses);
             self.heights_mm.append(&mut self.thicknesses_mm);
@@ -183,6 +212,23 @@ impl Held {
         }
     }
 
+    /// Whether what might be marks or heights, as `B01` or `B30`, is marks: nearly all different, or numbered from 0 on.
+    pub(super) fn counts_marks(&self) -> bool {
+        let all: usize = self.bare_marks.values().sum();
+        let nought = |mark: &String| {
+            mark.trim_start_matches(|sign: char| !sign.is_ascii_digit())
+                .starts_with('0')
+        };
+        let noughts = self.bare_marks.keys().filter(|mark| nought(mark)).count();
+        all > 0 && (5 * self.bare_marks.len() >= 4 * all || 2 * noughts > self.bare_marks.len())
+    }
+
+    /// Whether its lines are no longer than ticks, leaders and symbols beside its texts.
+    pub(super) fn lines_are_small(&self) -> bool {
+        let text_m = middle(&self.text_m).unwrap_or(0.0);
+        middle(&self.open_m).is_none_or(|length_m| length_m <= SMALL * text_m)
+    }
+
     /// Texts that would be heights by another unit or other words.
     pub(super) fn likely_heights(&self) -> usize {
         self.inched + self.words.values().sum::<usize>()
@@ -204,6 +250,10 @@ impl Held {
         self.ends_marked += other.ends_marked;
         self.blocks_at_ends += other.blocks_at_ends;
         self.texts += other.texts;
+        self.text_m.extend(&other.text_m);
+        for (mark, count) in &other.bare_marks {
+            *self.bare_marks.entry(mark.clone()).or_default() += count;
+        }
         self.thicknesses += other.thicknesses;
         self.heights += other.heights;
         self.strands += other.strands;
@@ -227,6 +277,12 @@ impl Held {
             keep_sample(&mut self.samples, text, said.clone());
         }
     }
+}
+
+fn middle(values: &[f64]) -> Option<f64> {
+    let mut sorted = values.to_vec();
+    sorted.sort_by(f64::total_cmp);
+    sorted.get(sorted.len() / 2).copied()
 }
 
 /// The first few in the order of the alphabet, so that the order of the entities does not matter; of those that were

@@ -8,7 +8,7 @@ use rstar::{AABB, RTree};
 
 use super::at_ends::AtEnds;
 use super::picked::Picked;
-use super::roles::is_grid;
+use super::trade_words::{Trade, named};
 use crate::drawing::{Drawing, Shape, Text};
 use crate::job::Job;
 use crate::patterns::pattern_of;
@@ -43,7 +43,7 @@ pub(super) fn layers(
     );
     let mut by_layer: BTreeMap<&str, Vec<Line<f64>>> = BTreeMap::new();
     for shape in &drawing.shapes {
-        let candidate = !shape.closed && is_free(&shape.layer) && !is_grid(&shape.layer);
+        let candidate = !shape.closed && is_free(&shape.layer) && !named(Trade::Grid, &shape.layer);
         if candidate
             && !tendons.picks(drawing, shape)
             && !at_ends.draws(drawing, shape)

@@ -4,11 +4,11 @@ use std::collections::BTreeMap;
 
 use serde_json::{Value, json};
 
-use super::at_ends::hinted;
 use super::contents::Contents;
 use super::directions::two_ways;
 use super::picked::Picked;
-use super::roles::{Guesses, guesses, is_grid};
+use super::roles::{Guesses, guesses};
+use super::trade_words::{Trade, hinted, named as named_for};
 use super::{extents, gaps, labels, notes, symbols, trial};
 use crate::commands::job_file::JobFile;
 use crate::commands::{units, work};
@@ -160,7 +160,7 @@ fn end_layers(
     let drawn = found
         .shapes
         .keys()
-        .filter(|(layer, shape)| !is_grid(layer) && proposed(shape));
+        .filter(|(layer, shape)| !named_for(Trade::Grid, layer) && proposed(shape));
     let drawn = drawn.map(|(layer, _)| layer);
     for layer in lettered.map(|(layer, _)| layer).chain(drawn) {
         if !named.has(layer) {

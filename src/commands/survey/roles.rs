@@ -3,6 +3,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::contents::{Contents, Held};
+use super::trade_words::{Trade, named};
 use crate::drawing::{Drawing, Look};
 use crate::patterns::pattern_of;
 
@@ -74,7 +75,7 @@ pub(super) fn guesses(
 fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
     let most = |part: usize, all: usize| all > 0 && part * 2 > all;
     // Grid lines carry bubbles at their ends and numbers in them: they look like tendons and heights.
-    if is_grid(name) {
+    if named(Trade::Grid, name) {
         return Vec::new();
     }
     if most(held.thicknesses + held.inched_thicknesses, held.texts) {
@@ -84,7 +85,7 @@ fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
     let mut roles: Vec<&'static str> = lines.into_iter().collect();
     let tendons = matches!(lines, Some("banded" | "distributed"));
     // Texts beside their own tendons, or on a layer of texts alone.
-    let labels = tendons || held.open_m.is_empty() && held.closed_m.is_empty();
+    let labels = tendons || held.lines_are_small() && held.closed_m.is_empty();
     let some = |part: usize| part > 0 && 8 * part >= held.texts;
     let (strands, in_words) = (
         held.strands + held.offered_counts(),
@@ -95,7 +96,8 @@ fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
         roles.push("marks");
     }
     let heights = most(in_words, held.texts) || (tendons || marks) && some(in_words);
-    if heights && in_words >= 3 && (tendons || held.open_m.is_empty()) {
+    // Lines beside heights are ticks or leaders.
+    if heights && in_words >= 3 && (tendons || lines.is_none()) {
         roles.push("heights");
     }
     if held.blocks_at_ends > 0 && (roles.is_empty() || tendons) {
@@ -104,33 +106,26 @@ fn roles(name: &str, held: &Held, longest_m: Option<f64>) -> Vec<&'static str> {
     roles
 }
 
-/// Whether a layer is named for grid lines.
-pub(super) fn is_grid(layer: &str) -> bool {
-    let layer = layer.to_uppercase();
-    ["GRID", "AXIS", "AXES"]
-        .iter()
-        .any(|word| layer.contains(word))
-}
-
 /// What its lines are.
 fn line_role(name: &str, held: &Held, longest_m: Option<f64>) -> Option<&'static str> {
-    let name = name.to_uppercase();
-    let says = |words: &[&str]| words.iter().any(|word| name.contains(word));
-    if says(&["OPENING", "VOID", "HOLE"]) {
+    if named(Trade::Opening, name) {
         return Some("slab_opening");
     }
-    if says(&["COLUMN", "WALL"]) {
+    if named(Trade::Column, name) {
         return Some("column");
     }
-    if !held.closed_m.is_empty() && says(&["EDGE", "OUTLINE"]) {
+    if !held.closed_m.is_empty() && named(Trade::Edge, name) {
         return Some("slab_edge");
     }
     let open = held.open_m.len();
-    if open > 0 && says(&["BANDED", "BAND-", "-BAND"]) {
+    let upper = name.to_uppercase();
+    let banded = ["BANDED", "BAND-", "-BAND"];
+    if open > 0 && banded.iter().any(|word| upper.contains(word)) {
         return Some("banded");
     }
     // Two ends a line: lines that mostly carry a symbol at an end are tendons.
-    if open > 0 && (says(&["DISTRIB", "TENDON", "CABLE"]) || held.ends_marked > open) {
+    let small = held.texts > 0 && held.lines_are_small();
+    if open > 0 && (named(Trade::Tendon, name) && !small || held.ends_marked > open) {
         return Some("distributed");
     }
     let longest_m = longest_m.filter(|_| open == 0)?;

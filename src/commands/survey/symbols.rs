@@ -4,8 +4,8 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use serde_json::json;
 
-use super::at_ends::hinted;
 use super::contents::Contents;
+use super::trade_words::{Trade, hinted, named};
 use crate::floor::{EndKind, EndWords};
 use crate::job::{Job, Proposal};
 use crate::patterns::{Names, pattern_of};
@@ -232,7 +232,7 @@ fn shapes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
         return;
     }
     let drawn = contents.at_ends.shapes.iter();
-    let drawn = drawn.filter(|((layer, _), _)| !super::roles::is_grid(layer));
+    let drawn = drawn.filter(|((layer, _), _)| !named(Trade::Grid, layer));
     let most = drawn.clone().map(|(_, count)| *count).max().unwrap_or(0);
     let found: BTreeSet<&str> = drawn
         .filter(|(_, count)| 5 * **count >= most)
