@@ -7,8 +7,8 @@ use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
 use super::grids::Grids;
-use super::trade_words::{Trade, hinted, is_between, named};
-use crate::drawing::{Drawing, Shape};
+use super::trade_words::{Trade, hinted, is_between, named, shape_in};
+use crate::drawing::{Drawing, Shape, Text};
 use crate::floor::{EndKind, Figure, figures};
 use crate::job::Job;
 
@@ -74,7 +74,7 @@ impl AtEnds {
                     drawing
                         .texts
                         .get(text)
-                        .is_some_and(|text| is_word(&text.content))
+                        .is_some_and(|text| is_word(&text.content) && !is_value(drawing, text))
                 });
                 let figure = nearest(&shapes, at, reach_m, |_| true);
                 found.block(drawing, block);
@@ -165,6 +165,10 @@ impl AtEnds {
             if text.within.is_some() || self.texts.contains(&number) {
                 continue;
             }
+            if let Some(shape) = shape_in(&text.content) {
+                self.legend_shapes.entry(shape).or_insert(kind);
+                continue;
+            }
             let reach_m = LEGEND * text.height_m;
             // A legend's words stand level with its symbol and to the right of it.
             let level = |place: Coord<f64>| {
@@ -207,6 +211,13 @@ fn is_word(text: &str) -> bool {
     let text = text.trim();
     let letters = text.chars().any(char::is_alphabetic);
     letters && text.len() <= LONGEST_WORD && !text.bytes().any(|byte| byte.is_ascii_digit())
+}
+
+/// Whether a text is an attribute of its insert: it is told with the block.
+fn is_value(drawing: &Drawing, text: &Text) -> bool {
+    let insert = text.within.and_then(|insert| drawing.inserts.get(insert));
+    let mut values = insert.into_iter().flat_map(|insert| &insert.attributes);
+    values.any(|(_, value)| *value == text.content)
 }
 
 /// The inserts that a shape lies in: it is no tendon that they mark.

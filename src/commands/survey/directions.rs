@@ -2,7 +2,8 @@
 
 use geo::Coord;
 
-use super::contents::{Contents, Held};
+use super::contents::Contents;
+use super::held::Held;
 use crate::geometry::turn_rad;
 use crate::patterns::Selectors;
 

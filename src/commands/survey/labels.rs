@@ -4,7 +4,8 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use serde_json::{Value, json};
 
-use super::contents::{Contents, Held};
+use super::contents::Contents;
+use super::held::Held;
 use super::readings::{high_word, low_word};
 use crate::commands::work;
 use crate::drawing::Drawing;

@@ -2,7 +2,8 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use super::contents::{Contents, Held};
+use super::contents::Contents;
+use super::held::Held;
 use super::trade_words::{Trade, named};
 use crate::drawing::{Drawing, Look};
 use crate::patterns::pattern_of;
@@ -28,7 +29,9 @@ pub(super) fn guesses(
         let several = looks.filter(|looks| {
             let lines: BTreeSet<Option<&str>> = looks
                 .values()
-                .filter(|held| !held.open_m.is_empty() || !held.closed_m.is_empty())
+                .filter(|held| {
+                    !held.open_m.is_empty() || !held.closed_m.is_empty() || held.of_grid > 0
+                })
                 .map(|held| line_role("", held, Some(longest_m)))
                 .collect();
             lines.len() > 1 && lines.iter().flatten().next().is_some()

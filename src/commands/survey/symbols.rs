@@ -5,6 +5,7 @@ use std::collections::{BTreeMap, BTreeSet};
 use serde_json::json;
 
 use super::contents::Contents;
+use super::pairs::{Pairs, opposite};
 use super::trade_words::{Trade, hinted, named};
 use crate::floor::{EndKind, EndWords};
 use crate::job::{Job, Proposal};
@@ -49,31 +50,40 @@ fn known_words(job: &Job, kind: EndKind) -> &[String] {
     }
 }
 
-/// Blocks at line ends whose names, or a legend, say what they are, where none fits the job.
+/// Blocks at line ends whose names, a legend, or the other of two say what they are, where none fits the job.
 fn blocks(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
     let read = &job.conventions;
     let found = &contents.at_ends;
-    for (kind, word) in KINDS {
-        let known = names(match kind {
-            EndKind::Live => &read.live_end_blocks,
-            EndKind::Dead => &read.dead_end_blocks,
-        });
+    let counts = found
+        .blocks
+        .iter()
+        .filter(|(block, _)| !found.between.contains(*block))
+        .map(|(block, count)| (block.as_str(), *count));
+    let known = [&read.live_end_blocks, &read.dead_end_blocks].map(|blocks| names(blocks));
+    let told = |block: &str| {
+        let [live, dead] = [0, 1].map(|kind| known.get(kind).is_some_and(|names| names.has(block)));
+        let by_job = KINDS
+            .into_iter()
+            .zip([live, dead])
+            .find(|(_, has)| *has)
+            .map(|((kind, _), _)| kind);
+        by_job
+            .or_else(|| hinted(block))
+            .or_else(|| found.legend_blocks.get(block).copied())
+    };
+    let pairs = Pairs::of(&counts.collect(), told);
+    for ((kind, word), known) in KINDS.into_iter().zip(&known) {
         if found.blocks.keys().any(|block| known.has(block)) {
             continue;
         }
-        let says = |block: &&String| {
-            if found.between.contains(*block) {
-                return false;
-            }
-            let legend = found.legend_blocks.get(*block).copied();
-            hinted(block).or(legend) == Some(kind)
-        };
-        let blocks = found.blocks.keys().filter(says);
+        let caution = pairs.caution(kind);
         put(
             proposals,
             &format!("{word}_blocks"),
-            &blocks.map(|block| pattern_of(block)).collect(),
-            "No block at a line end fits the default; the name or the legend says so.",
+            &pairs.names(kind).map(pattern_of).collect(),
+            &format!(
+                "No block at a line end fits the default; the name or the legend says so.{caution}"
+            ),
         );
     }
 }
@@ -178,11 +188,7 @@ fn by_elimination<'c>(
             _ => continue,
         };
         if ones.min(twos) > 1 {
-            let other = match known {
-                EndKind::Live => EndKind::Dead,
-                EndKind::Dead => EndKind::Live,
-            };
-            found.insert((block, tag, unknown), other);
+            found.insert((block, tag, unknown), opposite(known));
         }
     }
     found
@@ -191,10 +197,15 @@ fn by_elimination<'c>(
 /// Texts at line ends that say what they are in words the job does not know.
 fn words(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Proposal>) {
     let known = EndWords::new(&job.conventions);
+    let mut counts: BTreeMap<&str, usize> = BTreeMap::new();
+    for ((_, text), count) in &contents.at_ends.words {
+        *counts.entry(text).or_default() += count;
+    }
+    let pairs = Pairs::of(&counts, |text| known.kind(text));
     for (kind, word) in KINDS {
-        let texts = contents.at_ends.words.keys().map(|(_, text)| text);
-        let mut new: BTreeSet<String> = texts
-            .filter(|text| known.kind(text).is_none() && hinted(text) == Some(kind))
+        let mut new: BTreeSet<String> = pairs
+            .names(kind)
+            .filter(|text| known.kind(text).is_none())
             .flat_map(|text| text.lines().map(str::trim).map(str::to_owned))
             .collect();
         let key = format!("ends.{word}_words");
@@ -202,12 +213,11 @@ fn words(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propos
             continue;
         }
         new.extend(known_words(job, kind).iter().cloned());
-        put(
-            proposals,
-            &format!("{word}_words"),
-            &new,
-            "Texts at line ends, and the defaults.",
+        let why = format!(
+            "Texts at line ends, and the defaults.{}",
+            pairs.caution(kind)
         );
+        put(proposals, &format!("{word}_words"), &new, &why);
     }
 }
 
@@ -239,7 +249,21 @@ fn shapes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
         .map(|((_, word), _)| *word)
         .collect();
     let legend = &contents.at_ends.legend_shapes;
+    let mut legend: BTreeMap<&str, EndKind> =
+        legend.iter().map(|(word, kind)| (*word, *kind)).collect();
     let by_legend = found.iter().any(|word| legend.contains_key(word));
+    // A legend of two shapes of which only one is met: the other is drawn in a way that is not known, and may be read as it.
+    if by_legend && found.len() == 1 && legend.len() > 1 {
+        return;
+    }
+    let two: Vec<&str> = found.iter().copied().collect();
+    if let [one, other] = two[..] {
+        let kinds = [one, other].map(|word| legend.get(word).copied());
+        if let [Some(kind), None] | [None, Some(kind)] = kinds {
+            let left = if kinds[0].is_none() { one } else { other };
+            legend.insert(left, opposite(kind));
+        }
+    }
     let pointed = ["triangle", "solid"]
         .into_iter()
         .find(|word| found.contains(word));
@@ -249,7 +273,7 @@ fn shapes(contents: &Contents, job: &Job, proposals: &mut BTreeMap<String, Propo
             let shapes = found.iter().filter(says).map(|&shape| shape.to_owned());
             (
                 shapes.collect(),
-                "Shapes at line ends, as words beside them elsewhere say.",
+                "Shapes at line ends, as words beside them elsewhere, or a note, say of them or of the other of two.",
             )
         } else if let Some(pointed) = pointed
             && found.len() == 2

@@ -123,6 +123,27 @@ const CODES: [(EndKind, &str); 2] = [
     (EndKind::Dead, "DE FE PE NE D F P N"),
 ];
 
+/// Words for shapes in a legend's line, with what the shape is called in a job (English is common practice, the rest from
+/// memory).
+const SHAPES: &[(&str, &str)] = &[
+    ("circle", "CIRCLE KREIS CERCLE CIRC CIRK SIRKEL CERCHIO"),
+    (
+        "triangle",
+        "TRIANG ARROW DREIECK PFEIL TREKANT FLECHA FLÈCHE",
+    ),
+    ("square", "SQUARE BOX QUADRAT CARRÉ CUADRAD KVADRAT FYRKANT"),
+    ("bar", "BAR DASH STRICH BALKEN TRAIT BARRA STREK"),
+    ("solid", "SOLID FILLED GEFÜLLT PLEIN RELLEN FYLLD"),
+];
+
+/// The one shape that a legend's line speaks of.
+pub(super) fn shape_in(text: &str) -> Option<&'static str> {
+    let text = text.to_uppercase();
+    let mut found = SHAPES.iter().filter(|(_, words)| has(&text, Begins, words));
+    let (shape, _) = found.next()?;
+    found.next().is_none().then_some(*shape)
+}
+
 /// What a name or a word of another office says of an end.
 pub(super) fn hinted(text: &str) -> Option<EndKind> {
     if is_between(text) {

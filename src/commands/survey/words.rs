@@ -153,6 +153,7 @@ fn looks(drawing: &Drawing, contents: &Contents) -> Vec<String> {
             "lines open",
             "closed",
             "texts",
+            "of a grid",
         ]
         .map(str::to_owned)
         .to_vec(),
@@ -167,6 +168,7 @@ fn looks(drawing: &Drawing, contents: &Contents) -> Vec<String> {
                 held.open_m.len().to_string(),
                 held.closed_m.len().to_string(),
                 held.texts.to_string(),
+                held.of_grid.to_string(),
             ]);
         }
     }
