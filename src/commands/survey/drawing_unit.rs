@@ -3,6 +3,7 @@
 use serde_json::json;
 
 use super::contents::Contents;
+use super::labels::unit_of;
 use super::picked::Picked;
 use crate::commands::units;
 use crate::drawing::{Drawing, UnitFrom};
@@ -49,8 +50,9 @@ pub(super) fn proposal(
     }
     // Of units that would do, one of the office's own system.
     let inch = |unit: LengthUnit| matches!(unit, LengthUnit::In | LengthUnit::Ft);
-    let own =
-        |(unit, _): &&(LengthUnit, f64)| drawing.metric.is_some_and(|metric| metric != inch(*unit));
+    let drawn = (drawing.unit_from == UnitFrom::Header).then(|| !inch(unit_of(drawing)));
+    let metric = drawn.or(drawing.metric);
+    let own = |(unit, _): &&(LengthUnit, f64)| metric.is_some_and(|metric| metric != inch(*unit));
     let (unit, would_m) = *fits.iter().find(own).or(fits.first())?;
     Some(Proposal {
         value: json!(unit.name()),

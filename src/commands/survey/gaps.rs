@@ -1,8 +1,8 @@
 //! Tendons that are drawn broken at their labels or where another crosses: how long a gap is to be bridged.
 
-use geo::{Coord, Intersects, Line};
+use geo::{BoundingRect, Coord, Intersects, Line};
 use rstar::primitives::{GeomWithData, Rectangle};
-use rstar::{AABB, RTree};
+use rstar::{AABB, PointDistance, RTree};
 use serde_json::json;
 
 use super::at_ends::AtEnds;
@@ -16,7 +16,9 @@ const LONGEST_M: f64 = 3.0;
 /// Ends face one another within this angle, radians, and this far to the side, metres.
 const FACING_RAD: f64 = 0.05;
 const ASIDE_M: f64 = 0.02;
-/// So many gaps with something in them are a habit.
+/// A closed line no longer than this around may be a column, metres.
+const COLUMN_M: f64 = 8.0;
+/// So many gaps with something in them are a habit; one at a column is one.
 const HABIT: usize = 3;
 /// Gaps of one habit: none is longer than this many times their middle one.
 const ALIKE: f64 = 2.0;
@@ -35,6 +37,7 @@ struct Tip<'d> {
 struct Gap {
     length_m: f64,
     explained: bool,
+    at_column: bool,
 }
 
 /// How long a gap to bridge, in millimetres; `None` where no gap, or too few, have a text or another tendon in them.
@@ -56,13 +59,17 @@ pub(super) fn proposal(
     explained_m.sort_by(f64::total_cmp);
     let middle_m = *explained_m.get(explained_m.len() / 2)?;
     explained_m.retain(|length_m| *length_m <= ALIKE * middle_m);
-    let most_m = (explained_m.last()? / STEP_M - 1e-9).ceil() * STEP_M;
+    // A little more than the longest: a gap is as long as it was drawn, give or take rounding.
+    let most_m = ((explained_m.last()? / STEP_M + 1e-6).floor() + 1.0) * STEP_M;
     let bridged = gaps.iter().filter(|gap| gap.length_m <= most_m).count();
     // What else would be bridged must be the exception.
-    (explained_m.len() >= HABIT && 5 * explained_m.len() >= 4 * bridged).then(|| Proposal {
+    let at_column = gaps
+        .iter()
+        .all(|gap| gap.at_column || gap.length_m > most_m);
+    ((explained_m.len() >= HABIT || at_column) && 5 * explained_m.len() >= 4 * bridged).then(|| Proposal {
         value: json!((most_m * 1000.0).round()),
         why: format!(
-            "{} gaps between pieces in line, without a symbol at them, have a label or a crossing tendon in them. Check it.",
+            "{} gaps between pieces in line, without a symbol at them, have a label, a column or a crossing tendon in them. Check it.",
             explained_m.len()
         ),
     })
@@ -94,9 +101,11 @@ fn gaps(drawing: &Drawing, at_ends: &AtEnds, tendons: &Picked, job: &Job) -> Vec
             && let Some(over) = tips.get(other)
         {
             let gap = Line::new(tip.place, over.place);
+            let at_column = reasons.column_in(gap);
             gaps.push(Gap {
                 length_m,
-                explained: reasons.stand_in(gap),
+                explained: at_column || reasons.stand_in(gap),
+                at_column,
             });
         }
     }
@@ -153,10 +162,11 @@ fn ahead_m(tip: &Tip<'_>, other: &Tip<'_>) -> Option<f64> {
     (one_line && facing && aside_m <= ASIDE_M && ahead_m > 0.0).then_some(ahead_m)
 }
 
-/// What a line may be broken for: texts, and tendons that cross.
+/// What a line may be broken for: texts, columns, and tendons that cross.
 struct Reasons<'d> {
     texts: RTree<GeomWithData<[f64; 2], &'d Text>>,
     crossing: RTree<GeomWithData<Rectangle<[f64; 2]>, Line<f64>>>,
+    columns: RTree<Rectangle<[f64; 2]>>,
 }
 
 impl<'d> Reasons<'d> {
@@ -178,7 +188,23 @@ impl<'d> Reasons<'d> {
                     Rectangle::from_corners([line.start.x, line.start.y], [line.end.x, line.end.y]);
                 GeomWithData::new(corners, line)
             });
+        let small = drawing
+            .shapes
+            .iter()
+            .filter(|shape| shape.closed && shape.path.length_m() <= COLUMN_M);
+        let columns = small.filter_map(|shape| {
+            let around = shape.path.to_line_string(ASIDE_M).bounding_rect()?;
+            Some(Rectangle::from_corners(
+                [around.min().x, around.min().y],
+                [around.max().x, around.max().y],
+            ))
+        });
         Self {
+            columns: RTree::bulk_load(
+                columns
+                    .filter(|one| one.distance_2(&[0.0, 0.0]).is_finite())
+                    .collect(),
+            ),
             texts: RTree::bulk_load(
                 texts
                     .filter(|text| text.geom().iter().all(|x| x.is_finite()))
@@ -186,6 +212,14 @@ impl<'d> Reasons<'d> {
             ),
             crossing: RTree::bulk_load(lines.filter(|line| finite(line.data)).collect()),
         }
+    }
+
+    fn column_in(&self, gap: Line<f64>) -> bool {
+        let middle = [
+            f64::midpoint(gap.start.x, gap.end.x),
+            f64::midpoint(gap.start.y, gap.end.y),
+        ];
+        self.columns.locate_at_point(&middle).is_some()
     }
 
     fn stand_in(&self, gap: Line<f64>) -> bool {

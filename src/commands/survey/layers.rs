@@ -2,7 +2,7 @@
 
 use std::collections::BTreeMap;
 
-use serde_json::{Value, json};
+use serde_json::json;
 
 use super::contents::Contents;
 use super::directions::two_ways;
@@ -10,7 +10,7 @@ use super::picked::Picked;
 use super::proposals::{patterns, put};
 use super::roles::{Guesses, guesses};
 use super::trade_words::{Trade, named as named_for};
-use super::{beside_tendons, extents, level_lines, revisions};
+use super::{beside_tendons, extents, level_lines, revisions, slab};
 use crate::commands::work;
 use crate::drawing::{Drawing, Wanted};
 use crate::floor::EndWords;
@@ -41,6 +41,7 @@ pub(super) fn propose(
     };
     let before = guesses.clone();
     let free = |layer: &str| unread(layer, &before);
+    slab::propose(drawing, contents, &tendons, job, free, &mut guesses);
     beside_tendons::judge(drawing, contents, &tendons, free, &mut guesses);
     let of_heights = guesses.get("heights").cloned().unwrap_or_default();
     let levels = level_lines::layers(drawing, &contents.layers, &tendons, job, |layer| {
@@ -136,7 +137,12 @@ fn end_layers(
 
 fn why(role: &str) -> &'static str {
     match role {
-        "slab_zone" => "No layer fits the default; most texts here say a slab thickness.",
+        "slab_edge" => {
+            "No layer fits the default; by name, size, or since tendons end at it, this is the edge."
+        }
+        "slab_zone" => {
+            "No layer fits the default; texts here say a slab thickness, or closed lines hold such a text."
+        }
         "marks" => {
             "No layer fits the default; texts here count strands, or are marks beside tendons."
         }

@@ -31,6 +31,8 @@ pub(super) fn proposals(
     let of_labels = labels::proposals(drawing, contents, job, &proposals);
     proposals.extend(of_labels);
     proposals.extend(notes::thickness(drawing, contents, job));
+    proposals.extend(notes::each(drawing, job));
+    proposals.extend(notes::measure(drawing));
     us_units(drawing, &mut proposals);
     keep_given(job_file, &mut proposals);
     for (key, proposal) in trial::proposals(drawing, &proposals) {

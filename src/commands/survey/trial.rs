@@ -1,5 +1,5 @@
 //! Keys that only the floor as read by the other proposals suggests: from which face heights are counted and to what, and
-//! how far labels reach.
+//! how far labels and symbols reach.
 
 use std::collections::BTreeMap;
 
@@ -8,9 +8,8 @@ use rstar::primitives::Rectangle;
 use rstar::{AABB, RTree};
 use serde_json::json;
 
-use super::notes;
+use super::{notes, reaches};
 use crate::drawing::Drawing;
-use crate::finding::Finding;
 use crate::floor::{self, Floor, Point, PointKind, height_of_line};
 use crate::job::{self, Datum, FromFace, Job, Proposal, Soffit};
 
@@ -33,9 +32,6 @@ const UNMOVED: f64 = 0.25;
 /// No spacer holds a duct nearer to the form than this, metres (common practice: 20 mm and more; three quarters of an inch to a
 /// bare strand).
 const LEAST_COVER_M: f64 = 0.005;
-/// Reaches of labels that are tried, in text heights.
-const REACHES: [f64; 4] = [4.0, 5.0, 6.0, 8.0];
-
 /// What the floor suggests once it is read by these proposals, by path of the key.
 pub(super) fn proposals(
     drawing: &Drawing,
@@ -57,11 +53,11 @@ pub(super) fn proposals(
     if counted.any(|tendon| tendon.strand.is_none()) {
         found.extend(notes::strand(drawing, &job));
     }
-    found.extend(reach(drawing, &floor, &job, &findings));
+    found.extend(reaches::proposals(drawing, &floor, &job, &findings));
     found
 }
 
-fn said(key: &str, value: serde_json::Value, why: String) -> (String, Proposal) {
+pub(super) fn said(key: &str, value: serde_json::Value, why: String) -> (String, Proposal) {
     let proposal = Proposal { value, why };
     (key.to_owned(), proposal)
 }
@@ -212,50 +208,4 @@ fn datum(floor: &Floor, job: &Job) -> Option<(String, Proposal)> {
         under_m * 1000.0
     );
     Some(said("height.datum", json!(word), why))
-}
-
-/// A longer reach of labels, where labels are left over and most tendons get no mark or no strands.
-fn reach(
-    drawing: &Drawing,
-    floor: &Floor,
-    job: &Job,
-    findings: &[Finding],
-) -> Option<(String, Proposal)> {
-    let without = |floor: &Floor| {
-        let tendons = floor.tendons.iter();
-        tendons
-            .filter(|tendon| tendon.strands.is_none() || !tendon.mark_drawn)
-            .count()
-    };
-    let all = floor.tendons.len();
-    let before = without(floor);
-    let (over, doubtful) = (
-        told(findings, "label-unclaimed"),
-        told(findings, "label-ambiguous"),
-    );
-    if before < SOME || 2 * before < all || over == 0 {
-        return None;
-    }
-    let longer = REACHES
-        .into_iter()
-        .filter(|reach| *reach > job.conventions.label_reach);
-    longer.into_iter().find_map(|reach| {
-        let mut wider = job.clone();
-        wider.conventions.label_reach = reach;
-        let (floor, findings) = floor::read(drawing, &wider);
-        let after = without(&floor);
-        let helps = floor.tendons.len() == all && 5 * after <= all && told(&findings, "label-ambiguous") <= doubtful;
-        helps.then(|| {
-            let why = format!(
-                "With {} text heights {before} of {all} tendons have no mark or no strands, with these {after}. Check it.",
-                job.conventions.label_reach
-            );
-            said("labels.reach_text_heights", json!(reach), why)
-        })
-    })
-}
-
-fn told(findings: &[Finding], rule: &str) -> usize {
-    let of_rule = findings.iter().filter(|finding| finding.rule.name == rule);
-    of_rule.count()
 }
