@@ -20,6 +20,7 @@ mod grids;
 mod held;
 mod labels;
 mod layers;
+mod left_open;
 mod level_lines;
 mod notes;
 mod pairs;
@@ -87,8 +88,8 @@ fn survey(order: &Order) -> Result<String, Refused> {
     )?;
     let contents = Contents::of(&drawing, job);
     let name = order.plan.file_name().unwrap_or(order.plan.as_os_str());
-    let head = words::head(&name.to_string_lossy(), &drawing, &contents, &findings, job);
     let mut proposed = proposals::proposals(&drawing, &contents, &job_file);
+    let mut in_unit = None;
     if let Some(unit) = proposed
         .get("drawing.unit")
         .filter(|_| job.conventions.unit.is_none())
@@ -107,6 +108,15 @@ fn survey(order: &Order) -> Result<String, Refused> {
         )?;
         proposed = proposals::proposals(&drawing, &Contents::of(&drawing, job), &by_unit);
         proposed.insert("drawing.unit".to_owned(), unit);
+        in_unit = Some(drawing);
     }
+    // What is said of the drawing is said as the proposal reads it.
+    let resolved = job::read("survey", &job::file(&[], &proposed)).map(|resolved| resolved.job);
+    let by_proposal = resolved.as_ref().unwrap_or(job);
+    let as_read = in_unit.as_ref().unwrap_or(&drawing);
+    let contents = Contents::of(as_read, by_proposal);
+    let name = name.to_string_lossy();
+    let mut head = words::head(&name, &drawing, &contents, &findings, by_proposal);
+    head.extend(left_open::lines(as_read, &contents, by_proposal));
     Ok(job::file(&head, &proposed))
 }

@@ -22,9 +22,14 @@ const UNITS: [LengthUnit; 5] = [
     LengthUnit::Cm,
 ];
 
-/// Median of the tendons' lengths in plan, metres.
+/// Lines shorter than this share of the longest are ticks, bars and arrows among tendons.
+const SHORT: f64 = 0.1;
+
+/// Median of the tendons' lengths in plan, metres; of what else is drawn among them, short as it is, nothing is counted.
 pub(super) fn median_m(lengths_m: impl IntoIterator<Item = f64>) -> Option<f64> {
     let mut lengths_m: Vec<f64> = lengths_m.into_iter().collect();
+    let longest_m = lengths_m.iter().copied().fold(0.0, f64::max);
+    lengths_m.retain(|length_m| *length_m >= SHORT * longest_m);
     lengths_m.sort_by(f64::total_cmp);
     lengths_m.get(lengths_m.len() / 2).copied()
 }

@@ -10,8 +10,6 @@ use crate::drawing::{Drawing, UnitFrom};
 use crate::job::Proposal;
 use crate::units::LengthUnit;
 
-/// Lines shorter than this share of the longest are ticks, bars and arrows among tendons.
-const SHORT: f64 = 0.1;
 /// Heights of label texts on a floor, metres (common practice: 2 to 5 mm on paper at 1:50 to 1:200, with room to spare).
 const TEXT_M: std::ops::RangeInclusive<f64> = 0.04..=1.2;
 /// Floors seldom have longer tendons, metres: with texts of a strange size, doubt enough.
@@ -26,11 +24,9 @@ pub(super) fn proposal(
     let lines = drawing.shapes.iter().enumerate().filter(|(number, shape)| {
         !shape.closed && tendons.picks(drawing, shape) && !contents.grids.draw(*number, shape)
     });
-    let mut lengths_m: Vec<f64> = lines.map(|(_, shape)| shape.path.length_m()).collect();
-    let longest_m = lengths_m.iter().copied().fold(0.0, f64::max);
-    lengths_m.retain(|length_m| *length_m >= SHORT * longest_m);
+    let lengths_m = lines.map(|(_, shape)| shape.path.length_m());
     let median_m = units::median_m(lengths_m)?;
-    let text_m = units::median_m(drawing.texts.iter().map(|text| text.height_m));
+    let text_m = middle(drawing.texts.iter().map(|text| text.height_m).collect());
     let large = text_m.is_some_and(|text_m| text_m > *TEXT_M.end());
     // What the drawing says is doubted where it cannot be; what is assumed already where it would be strange.
     let fits = match drawing.unit_from {
@@ -62,4 +58,9 @@ pub(super) fn proposal(
             unit.name()
         ),
     })
+}
+
+fn middle(mut values: Vec<f64>) -> Option<f64> {
+    values.sort_by(f64::total_cmp);
+    values.get(values.len() / 2).copied()
 }

@@ -27,7 +27,7 @@ pub(super) fn layers(
     let texts: Vec<&Text> = drawing
         .texts
         .iter()
-        .filter(|text| names_group(text, job))
+        .filter(|text| names_group(&text.content, job))
         .collect();
     if texts.is_empty() {
         return BTreeSet::new();
@@ -64,9 +64,9 @@ pub(super) fn layers(
 }
 
 /// Whether a text names the first and the last of a group, or how many at what spacing.
-fn names_group(text: &Text, job: &Job) -> bool {
+pub(super) fn names_group(text: &str, job: &Job) -> bool {
     let group = |name: &str| {
-        text.content.lines().any(|line| {
+        text.lines().any(|line| {
             let patterns = job.conventions.group_patterns.iter();
             let mut found = patterns.filter_map(|pattern| pattern.captures(line));
             found.any(|groups| groups.name(name).is_some())

@@ -50,6 +50,9 @@ pub(super) struct Held {
     /// Texts that would be heights, or thicknesses, in inches.
     pub(super) inched: usize,
     pub(super) inched_thicknesses: usize,
+    /// Texts that count strands and may as well be inches with fractions; whether some size among them is none of strands.
+    either: usize,
+    strange_size: bool,
     /// Words beside numbers that are words of heights, though not of the job's.
     pub(super) words: BTreeMap<String, usize>,
     /// Of these, words that nobody knows and whose numbers say what they mean.
@@ -89,6 +92,8 @@ impl Held {
         self.heights_mm.extend(hint.height_mm);
         self.thicknesses_mm.extend(hint.thickness_mm);
         self.inched += usize::from(hint.inched);
+        self.either += usize::from(hint.either.is_some());
+        self.strange_size |= hint.either == Some(true);
         self.inched_thicknesses += usize::from(hint.inched_thickness);
         if let Some(word) = hint.word {
             *self.words.entry(word).or_default() += 1;
@@ -100,6 +105,11 @@ impl Held {
 
     /// `T165` beside `B30` is no thickness but a top.
     pub(super) fn settle(&mut self) {
+        if self.strange_size {
+            let inches = std::mem::take(&mut self.either);
+            self.strands = self.strands.saturating_sub(inches);
+            self.inched += inches;
+        }
         if self.counts_marks() {
             for mark in self.bare_marks.keys() {
                 let word = mark
@@ -203,6 +213,8 @@ impl Held {
         self.heights_mm.extend(&other.heights_mm);
         self.thicknesses_mm.extend(&other.thicknesses_mm);
         self.inched += other.inched;
+        self.either += other.either;
+        self.strange_size |= other.strange_size;
         self.inched_thicknesses += other.inched_thicknesses;
         for (word, count) in &other.words {
             *self.words.entry(word.clone()).or_default() += count;

@@ -7,7 +7,7 @@ use serde_json::json;
 use super::contents::Contents;
 use super::directions::two_ways;
 use super::picked::Picked;
-use super::proposals::{patterns, put};
+use super::proposals::{is_fitted, put};
 use super::roles::{Guesses, guesses};
 use super::trade_words::{Trade, named as named_for};
 use super::{beside_tendons, extents, level_lines, revisions, slab};
@@ -84,15 +84,6 @@ fn set(
 fn guessed(guesses: &Guesses, layer: &str) -> bool {
     let patterns = guesses.values().flatten().cloned();
     work::wanted(patterns).has(layer)
-}
-
-/// Whether some layer with anything on it fits the job's patterns of a role.
-fn is_fitted(drawing: &Drawing, job: &Job, role: &str) -> bool {
-    let wanted = work::wanted(patterns(job, role));
-    drawing
-        .layers
-        .iter()
-        .any(|layer| !layer.counts.is_empty() && wanted.has(&layer.name))
 }
 
 /// Whether no pattern of the job fits a layer that something lies on.

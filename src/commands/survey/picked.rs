@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use serde_json::Value;
 
 use super::proposals::patterns;
-use crate::drawing::{Drawing, Shape};
+use crate::drawing::{Drawing, Shape, Text};
 use crate::job::{Job, Proposal};
 use crate::patterns::Selectors;
 
@@ -41,5 +41,12 @@ impl Picked {
         let look = shape.look;
         self.0
             .picks(&shape.layer, look.colour, drawing.linetype(look))
+    }
+
+    /// Whether a text lies on one of them, and is seen as its pattern asks.
+    pub(super) fn writes(&self, drawing: &Drawing, text: &Text) -> bool {
+        let look = text.look;
+        self.0
+            .picks(&text.layer, look.colour, drawing.linetype(look))
     }
 }

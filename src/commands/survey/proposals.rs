@@ -8,6 +8,7 @@ use super::contents::Contents;
 use super::picked::Picked;
 use super::{drawing_unit, gaps, labels, layers, notes, symbols, trial};
 use crate::commands::job_file::JobFile;
+use crate::commands::work;
 use crate::drawing::Drawing;
 use crate::job::keys::{KEYS, of_table};
 use crate::job::{Job, Proposal};
@@ -92,4 +93,13 @@ pub(super) fn patterns(job: &Job, role: &str) -> Vec<String> {
             .collect(),
         _ => Vec::new(),
     }
+}
+
+/// Whether some layer with anything on it fits the job's patterns of a role.
+pub(super) fn is_fitted(drawing: &Drawing, job: &Job, role: &str) -> bool {
+    let wanted = work::wanted(patterns(job, role));
+    drawing
+        .layers
+        .iter()
+        .any(|layer| !layer.counts.is_empty() && wanted.has(&layer.name))
 }

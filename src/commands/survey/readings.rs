@@ -120,6 +120,8 @@ pub(super) struct Hint {
     /// Its height or thickness, millimetres.
     pub(super) height_mm: Option<f64>,
     pub(super) thickness_mm: Option<f64>,
+    /// It counts strands, and may as well be inches with a fraction, `7-1/2"`; whether its size is none of strands.
+    pub(super) either: Option<bool>,
     /// It would be a height, or a thickness, in inches.
     pub(super) inched: bool,
     pub(super) inched_thickness: bool,
@@ -168,7 +170,19 @@ pub(super) fn hint(text: &str, said: &Reading, job: &Job) -> Hint {
                 hint.unknown = unknown_word(line, &read.height_patterns);
             }
         }
-        Reading::Mark { .. } => {}
+        Reading::Mark { .. } => {
+            let line = text.trim();
+            let inches = families::height_patterns(LengthUnit::In);
+            let marked = mark_of_line(line, &read.mark_patterns).map(|(said, _)| said);
+            hint.either = marked
+                .filter(|said| said.mark.is_none() && said.tendons.is_none())
+                .and_then(|said| {
+                    let size = said.strand?;
+                    let inched =
+                        line.contains(['"', '″', '”']) && inches.iter().any(|p| p.is_match(line));
+                    inched.then(|| job.tendon.strand_named(&size).is_none())
+                });
+        }
     }
     hint
 }

@@ -3,10 +3,13 @@
 use std::collections::BTreeMap;
 
 use super::contents::Contents;
+use super::extents::names_group;
 use super::proposals::patterns;
+use super::readings::Reading;
 use crate::commands::work;
 use crate::drawing::{Drawing, Layer, UnitFrom, Wanted};
 use crate::finding::Finding;
+use crate::floor::{EndKind, EndWords};
 use crate::job::Job;
 use crate::job::keys::of_table;
 use crate::report::{Align, plain, table};
@@ -35,10 +38,10 @@ pub(super) fn head(
         ),
         String::new(),
     ];
-    lines.extend(layers(drawing, job));
+    lines.extend(layers(drawing, contents, job));
     lines.extend(looks(drawing, contents));
     lines.extend(at_ends(contents));
-    lines.extend(texts(contents));
+    lines.extend(texts(contents, job));
     lines.extend(leaders(drawing));
     if !findings.is_empty() {
         lines.push(String::new());
@@ -56,7 +59,8 @@ pub(super) fn head(
     lines
 }
 
-fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
+/// What lies on each layer, and what this proposal reads it as; blank: not read.
+fn layers(drawing: &Drawing, contents: &Contents, job: &Job) -> Vec<String> {
     let roles: Vec<(&str, Wanted)> = of_table("layers")
         .map(|key| (key.name, work::wanted(patterns(job, key.name))))
         .collect();
@@ -71,11 +75,15 @@ fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
             (false, true) => "off",
             (false, false) => "",
         };
-        let fitting: Vec<&str> = roles
-            .iter()
-            .filter(|(_, wanted)| wanted.has(&layer.name))
-            .map(|(role, _)| *role)
-            .collect();
+        let fitting = roles.iter().filter(|(_, wanted)| wanted.has(&layer.name));
+        let mut fitting: Vec<&str> = fitting.map(|(role, _)| *role).collect();
+        let of_grid = contents
+            .layers
+            .get(&layer.name)
+            .is_some_and(|held| held.of_grid > 0);
+        if of_grid {
+            fitting.push("(grid)");
+        }
         vec![
             format!("  {}", plain(&layer.name)),
             fitting.join(", "),
@@ -102,6 +110,19 @@ fn layers(drawing: &Drawing, job: &Job) -> Vec<String> {
     lines
 }
 
+/// Keys below `[layers]` whose layers hold texts that are read.
+const LABELLED: [&str; 10] = [
+    "banded",
+    "distributed",
+    "tendons",
+    "heights",
+    "level_lines",
+    "marks",
+    "extents",
+    "ends",
+    "slab_zone",
+    "slab_edge",
+];
 /// Rows shown of what stands at line ends.
 const SHOWN: usize = 24;
 
@@ -183,7 +204,25 @@ fn looks(drawing: &Drawing, contents: &Contents) -> Vec<String> {
     lines
 }
 
-fn texts(contents: &Contents) -> Vec<String> {
+fn texts(contents: &Contents, job: &Job) -> Vec<String> {
+    let labels = LABELLED.iter().flat_map(|role| patterns(job, role));
+    let labels = work::wanted(labels);
+    let ends = EndWords::new(&job.conventions);
+    let says = |layer: &str, text: &str, said: &Reading| {
+        let end = || text.lines().find_map(|line| ends.kind(line));
+        match said {
+            _ if !labels.has(layer) => "not read".to_owned(),
+            Reading::Unread | Reading::Offered(_) if names_group(text, job) => {
+                "group of tendons".to_owned()
+            }
+            Reading::Unread | Reading::Offered(_) => match end() {
+                Some(EndKind::Live) => "live end".to_owned(),
+                Some(EndKind::Dead) => "dead end".to_owned(),
+                None => said.words().to_owned(),
+            },
+            _ => said.words().to_owned(),
+        }
+    };
     let mut rows = vec![vec![
         "Layer".to_owned(),
         "texts, such as".to_owned(),
@@ -196,7 +235,7 @@ fn texts(contents: &Contents) -> Vec<String> {
                 _ => String::new(),
             };
             let short: String = text.chars().take(40).collect();
-            rows.push(vec![name, plain(&short), said.words().to_owned()]);
+            rows.push(vec![name, plain(&short), says(layer, text, said)]);
         }
     }
     if rows.len() == 1 {
