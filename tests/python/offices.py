@@ -12,12 +12,12 @@ import re
 import sys
 import tempfile
 
-from office import anchors, heights, joints, lines, marks, names, pointing, slabs
+from office import anchors, heights, joints, lines, marks, names, pointing, seen, slabs
 
 HERE = pathlib.Path(__file__).resolve().parent
 OUT = HERE.parent / "data" / "offices"
 LARGEST = 60_000
-ROOMS = [names, anchors, joints, heights, marks, lines, slabs, pointing]
+ROOMS = [names, anchors, joints, heights, marks, lines, slabs, pointing, seen]
 
 
 def name_of(office):
