@@ -6,6 +6,7 @@ use super::chords::Chords;
 use super::contents::Contents;
 use super::picked::Picked;
 use super::roles::Guesses;
+use super::slab::outside_edges;
 use crate::drawing::{Drawing, Text};
 use crate::patterns::{Selectors, pattern_of};
 
@@ -18,12 +19,17 @@ const TENDONS: usize = 3;
 pub(super) fn judge(
     drawing: &Drawing,
     contents: &Contents,
-    tendons: &Picked,
+    [tendons, edge]: [&Picked; 2],
     is_free: impl Fn(&str) -> bool,
     guesses: &mut Guesses,
 ) {
+    // A legend's or an elevation's lines have words beside them that are no labels.
+    let out = outside_edges(drawing, tendons, edge);
     let lines = drawing.shapes.iter().enumerate().filter(|(number, shape)| {
-        !shape.closed && tendons.picks(drawing, shape) && !contents.grids.draw(*number, shape)
+        !shape.closed
+            && !out.contains(number)
+            && tendons.picks(drawing, shape)
+            && !contents.grids.draw(*number, shape)
     });
     let lines: Vec<_> = lines.map(|(_, shape)| shape).collect();
     let chords = Chords::of(lines.iter().copied());

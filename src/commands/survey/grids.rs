@@ -1,6 +1,6 @@
 //! Grid lines: they look like tendons, carry bubbles at their ends and run beyond the slab.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
 
 use geo::{Contains, Coord, Distance, Euclidean, Line, LineString, Point, Polygon};
 use rstar::RTree;
@@ -60,7 +60,7 @@ impl Grids {
         };
         let outlines = outlines(drawing);
         let mut found = Self::default();
-        let mut counts = std::collections::BTreeMap::<(&str, Look), [usize; 2]>::new();
+        let mut counts = BTreeMap::<(&str, Look), [usize; 2]>::new();
         for (number, shape) in drawing.shapes.iter().enumerate() {
             let Some(ends) = ends(shape) else { continue };
             let carried = ends.map(carries);

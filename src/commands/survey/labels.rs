@@ -16,6 +16,8 @@ use crate::units::LengthUnit;
 /// Below this the middle of all heights is no millimetres, and below the second no centimetres either.
 const LEAST_MM: f64 = 25.0;
 const LEAST_CM: f64 = 1.5;
+/// A tenth of the heights above this are high points in millimetres.
+const LEAST_HIGH_MM: f64 = 80.0;
 /// The same of slab thickness.
 const LEAST_SLAB_MM: f64 = 80.0;
 const LEAST_SLAB_CM: f64 = 2.0;
@@ -168,6 +170,14 @@ fn height_unit(layers: &[&Held], job: &Job, inches: bool) -> Option<(String, Pro
     if inched > 0 && inched * 10 >= all {
         let why = format!("{inched} of {all} height texts have inch signs or fractions.");
         return Some(unit("height.unit", "in", why));
+    }
+    // Low points of a thin slab are small in millimetres too, its high points are not.
+    values_mm.sort_by(f64::total_cmp);
+    if values_mm
+        .get(values_mm.len() * 9 / 10)
+        .is_some_and(|high_mm| *high_mm >= LEAST_HIGH_MM)
+    {
+        return None;
     }
     by_size(
         "height.unit",

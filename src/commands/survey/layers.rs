@@ -42,7 +42,9 @@ pub(super) fn propose(
     let before = guesses.clone();
     let free = |layer: &str| unread(layer, &before);
     slab::propose(drawing, contents, &tendons, job, free, &mut guesses);
-    beside_tendons::judge(drawing, contents, &tendons, free, &mut guesses);
+    set("slab_edge", &guesses, &left_out, proposals);
+    let edge = Picked::of(&["slab_edge"], job, proposals);
+    beside_tendons::judge(drawing, contents, [&tendons, &edge], free, &mut guesses);
     let of_heights = guesses.get("heights").cloned().unwrap_or_default();
     let levels = level_lines::layers(drawing, &contents.layers, &tendons, job, |layer| {
         unread(layer, &guesses) || of_heights.contains(&pattern_of(layer))

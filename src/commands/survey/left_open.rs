@@ -1,22 +1,21 @@
 //! What a proposal leaves open, why, and which line of the job file would say it; and notes to hold against its keys.
 
-use geo::{Intersects, LineString, Point, Polygon};
+use std::collections::BTreeMap;
 
 use super::contents::Contents;
 use super::notes;
 use super::picked::Picked;
 use super::proposals::is_fitted;
-use crate::drawing::{Drawing, Shape};
-use crate::floor::EndWords;
+use super::slab::outside_edges;
+use crate::commands::work;
+use crate::drawing::{Drawing, Text};
+use crate::floor::{EndKind, EndWords};
 use crate::job::Job;
 use crate::patterns::Names;
 use crate::report::plain;
 
 /// Things named of each kind.
 const NAMED: usize = 4;
-/// Curves are taken as chords within this, metres.
-const CHORD_M: f64 = 0.02;
-
 /// Lines for the head of the file; `job` is the proposal, and the contents are as it reads them.
 pub(super) fn lines(drawing: &Drawing, contents: &Contents, job: &Job) -> Vec<String> {
     let has = |role: &str| is_fitted(drawing, job, role);
@@ -75,7 +74,7 @@ pub(super) fn lines(drawing: &Drawing, contents: &Contents, job: &Job) -> Vec<St
 
 /// Whether no text on layers of marks counts strands or tendons.
 fn counts_none(drawing: &Drawing, contents: &Contents, job: &Job) -> bool {
-    let marks = Picked::of(&["marks"], job, &std::collections::BTreeMap::new());
+    let marks = Picked::of(&["marks"], job, &BTreeMap::new());
     let mut layers = contents.layers.iter().filter(|(layer, _)| {
         drawing
             .texts
@@ -87,14 +86,14 @@ fn counts_none(drawing: &Drawing, contents: &Contents, job: &Job) -> bool {
 
 /// Layers with several texts that hold numbers and are not named for anything, with one text of each.
 fn other_texts(contents: &Contents, job: &Job, drawing: &Drawing) -> String {
-    let named = crate::commands::work::wanted(job.layer_patterns());
+    let named = work::wanted(job.layer_patterns());
     let mut found: Vec<String> = Vec::new();
     for (layer, held) in contents
         .layers
         .iter()
         .filter(|(layer, held)| held.texts > 2 && !named.has(layer))
     {
-        let numbered = |text: &&crate::drawing::Text| {
+        let numbered = |text: &&Text| {
             text.layer == *layer && text.content.bytes().any(|byte| byte.is_ascii_digit())
         };
         let mut texts: Vec<&str> = drawing
@@ -124,7 +123,7 @@ fn ends(contents: &Contents, job: &Job) -> Option<String> {
     let found = &contents.at_ends;
     let words = EndWords::new(read);
     let names = |blocks: &[String]| Names::new(blocks).unwrap_or_default();
-    let told = |kind: crate::floor::EndKind, blocks: &[String], shapes: &[String]| {
+    let told = |kind: EndKind, blocks: &[String], shapes: &[String]| {
         let blocks = names(blocks);
         let by_value = names(&read.end_blocks);
         found.blocks.keys().any(|block| blocks.has(block))
@@ -141,16 +140,8 @@ fn ends(contents: &Contents, job: &Job) -> Option<String> {
                 .keys()
                 .any(|(_, shape)| shapes.iter().any(|known| known == shape))
     };
-    let live = told(
-        crate::floor::EndKind::Live,
-        &read.live_end_blocks,
-        &read.live_end_shapes,
-    );
-    let dead = told(
-        crate::floor::EndKind::Dead,
-        &read.dead_end_blocks,
-        &read.dead_end_shapes,
-    );
+    let live = told(EndKind::Live, &read.live_end_blocks, &read.live_end_shapes);
+    let dead = told(EndKind::Dead, &read.dead_end_blocks, &read.dead_end_shapes);
     let missing = match (live, dead) {
         (true, true) => return None,
         (true, false) => "nothing at line ends tells dead ends",
@@ -192,30 +183,18 @@ fn ends(contents: &Contents, job: &Job) -> Option<String> {
 
 /// Lines on layers of tendons that lie outside every edge of the slab.
 fn outside(drawing: &Drawing, contents: &Contents, job: &Job) -> Option<String> {
-    let none = std::collections::BTreeMap::new();
+    let none = BTreeMap::new();
     let (tendons, edge) = (
         Picked::tendons(job, &none),
         Picked::of(&["slab_edge"], job, &none),
     );
-    let rings: Vec<Polygon<f64>> = drawing
-        .shapes
-        .iter()
-        .filter(|shape| shape.closed && edge.picks(drawing, shape))
-        .map(|shape| Polygon::new(shape.path.to_line_string(CHORD_M), Vec::new()))
-        .collect();
-    let lies_out = |shape: &Shape| {
-        let line: LineString<f64> = shape.path.to_line_string(CHORD_M);
-        let touches = |ring: &Polygon<f64>| {
-            line.coords().any(|at| ring.intersects(&Point::from(*at)))
-                || ring.exterior().intersects(&line)
-        };
-        !rings.iter().any(touches)
+    let out = outside_edges(drawing, &tendons, &edge);
+    let drawn = |number: &&usize| {
+        let shape = drawing.shapes.get(**number);
+        shape.is_some_and(|shape| !contents.at_ends.draws(drawing, shape))
     };
-    let lines = drawing.shapes.iter().filter(|shape| {
-        !shape.closed && tendons.picks(drawing, shape) && !contents.at_ends.draws(drawing, shape)
-    });
-    let count = lines.filter(|shape| lies_out(shape)).count();
-    (!rings.is_empty() && count > 0).then(|| {
+    let count = out.iter().filter(drawn).count();
+    (count > 0).then(|| {
         format!("{count} lines on layers of tendons lie outside the slab's edge: if they are a legend or an elevation, they must go to another layer, or they are read as tendons")
     })
 }

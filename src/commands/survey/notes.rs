@@ -27,7 +27,7 @@ static SIZE: LazyLock<Option<Regex>> = LazyLock::new(|| {
 
 /// `ALL TENDONS 5-12.7 U.N.O.`, `TENDONS ARE 4 x 15.2 mm STRANDS UNLESS NOTED`.
 static EACH: LazyLock<Option<Regex>> = LazyLock::new(|| {
-    Regex::new(r#"(?i)\b(?:TENDONS|C[AÂ]BLES|CABOS|SPANNGLIEDER|KABLAR|KABLER)\b\D*?\b(\d{1,2})\s*(?:[-–x×/S]|NOS?\.?|STRANDS? OF)\s*[Øø∅]?\s*(\d+[.,]\d+|[.,]\d+|\d/\d+)"#).ok()
+    Regex::new(r"(?i)\b(?:TENDONS|C[AÂ]BLES|CABOS|SPANNGLIEDER|KABLAR|KABLER)\b\D*?\b(\d{1,2})\s*(?:[-–x×/S]|NOS?\.?|STRANDS? OF)\s*[Øø∅]?\s*(\d+[.,]\d+|[.,]\d+|\d/\d+)").ok()
 });
 
 /// Lines of notes.
@@ -223,7 +223,7 @@ pub(super) fn measure(drawing: &Drawing) -> Vec<(String, Proposal)> {
     let mut found = Vec::new();
     match (duct, chair, strands) {
         (Some(note), None, None) => {
-            found.push(proposal("height.datum", json!("duct-underside"), note))
+            found.push(proposal("height.datum", json!("duct-underside"), note));
         }
         (None, Some(note), None) => found.push(proposal("height.datum", json!("chair"), note)),
         _ => {}

@@ -1,9 +1,10 @@
 //! Hidden layers: a frozen or switched-off layer beside a visible one of the same kind holds an older state.
 
-use crate::commands::work;
-use crate::drawing::Drawing;
+use std::collections::BTreeSet;
 
 use super::roles::Guesses;
+use crate::commands::work;
+use crate::drawing::Drawing;
 
 /// Takes hidden layers from guesses that have visible ones too; gives what was taken, by role.
 pub(super) fn leave_out(drawing: &Drawing, guesses: &mut Guesses) -> Guesses {
@@ -18,8 +19,7 @@ pub(super) fn leave_out(drawing: &Drawing, guesses: &mut Guesses) -> Guesses {
     };
     let mut out = Guesses::new();
     for (role, patterns) in guesses {
-        let old: std::collections::BTreeSet<String> =
-            patterns.iter().filter(|p| hidden(p)).cloned().collect();
+        let old: BTreeSet<String> = patterns.iter().filter(|p| hidden(p)).cloned().collect();
         if old.len() < patterns.len() {
             patterns.retain(|pattern| !old.contains(pattern));
             if !old.is_empty() {

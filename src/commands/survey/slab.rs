@@ -2,7 +2,7 @@
 
 use std::collections::{BTreeMap, BTreeSet};
 
-use geo::{Area, Contains, Coord, Distance, Euclidean, LineString, Point, Polygon};
+use geo::{Area, Contains, Coord, Distance, Euclidean, Intersects, LineString, Point, Polygon};
 
 use super::contents::Contents;
 use super::picked::Picked;
@@ -95,6 +95,26 @@ pub(super) fn propose(
         .filter(|(_, [all, told])| 2 * told > *all);
     let zones: Vec<String> = zones.map(|(layer, _)| pattern_of(layer)).collect();
     guesses.entry("slab_zone").or_default().extend(zones);
+}
+
+/// Numbers of the lines of tendons that lie outside every edge; none where there is no edge.
+pub(super) fn outside_edges(drawing: &Drawing, tendons: &Picked, edge: &Picked) -> BTreeSet<usize> {
+    let edges = drawing
+        .shapes
+        .iter()
+        .filter(|shape| shape.closed && edge.picks(drawing, shape));
+    let rings: Vec<Polygon<f64>> = edges.filter_map(area).collect();
+    let lies_out = |shape: &Shape| {
+        let line: LineString<f64> = shape.path.to_line_string(CHORD_M);
+        !rings.iter().any(|ring| ring.intersects(&line))
+    };
+    let lines = drawing
+        .shapes
+        .iter()
+        .enumerate()
+        .filter(|(_, shape)| !shape.closed && tendons.picks(drawing, shape));
+    let out = lines.filter(|(_, shape)| !rings.is_empty() && lies_out(shape));
+    out.map(|(number, _)| number).collect()
 }
 
 /// Both ends of every line of tendons.
