@@ -42,6 +42,9 @@ pub(super) fn layers(
             lines.any(|line| height_of_line(line, &job.conventions).is_some())
         };
         let heights: Vec<&&Text> = texts.iter().filter(reads).collect();
+        if 2 * heights.len() <= texts.len() {
+            return false;
+        }
         let lines: Vec<Line<f64>> = drawing
             .shapes
             .iter()
@@ -56,10 +59,7 @@ pub(super) fn layers(
                     .any(|text| gap_m(text, **line) <= reach_m(text))
         };
         let good = lines.iter().filter(labelled).count();
-        !lines.is_empty()
-            && 5 * good >= 4 * lines.len()
-            && 2 * heights.len() > texts.len()
-            && texts.len() <= 2 * lines.len()
+        !lines.is_empty() && 5 * good >= 4 * lines.len() && texts.len() <= 2 * lines.len()
     };
     let candidates = layers.iter().filter(|(layer, held)| {
         held.texts > 0 && !held.open_m.is_empty() && held.closed_m.is_empty() && is_free(layer)

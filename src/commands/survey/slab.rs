@@ -19,6 +19,8 @@ const AT_EDGE_M: f64 = 0.5;
 const ENDING: f64 = 0.4;
 /// An edge holds at least this share of all ends: a sheet may show several slabs.
 const HOLDS: f64 = 0.2;
+/// An edge is at least this share of the longest closed line around.
+const LARGE: f64 = 0.1;
 /// Curves are taken as chords within this, metres.
 const CHORD_M: f64 = 0.02;
 
@@ -49,7 +51,15 @@ pub(super) fn propose(
         .filter_map(|(_, shape)| Some((shape, area(shape)?)))
         .collect();
     if !guesses.contains_key("slab_edge") {
-        let edges = edges(&ends(drawing, contents, tendons), &rings);
+        let around_m = |(shape, _): &&(&Shape, Polygon<f64>)| shape.path.length_m();
+        let longest_m = rings.iter().map(|ring| around_m(&ring)).fold(0.0, f64::max);
+        let large = rings
+            .iter()
+            .filter(|ring| around_m(ring) >= LARGE * longest_m);
+        let edges = edges(
+            &ends(drawing, contents, tendons),
+            &large.collect::<Vec<_>>(),
+        );
         let patterns: BTreeSet<String> = edges
             .into_iter()
             .map(|shape| {
@@ -127,7 +137,7 @@ fn ends(drawing: &Drawing, contents: &Contents, tendons: &Picked) -> Vec<Point<f
 }
 
 /// Closed lines at which the tendons within end; of one in another the outer one.
-fn edges<'s>(ends: &[Point<f64>], rings: &[(&'s Shape, Polygon<f64>)]) -> Vec<&'s Shape> {
+fn edges<'s>(ends: &[Point<f64>], rings: &[&(&'s Shape, Polygon<f64>)]) -> Vec<&'s Shape> {
     let is_edge = |area: &Polygon<f64>| {
         let off_m = |end: &Point<f64>| Euclidean.distance(end, area.exterior());
         let inside: Vec<f64> = ends
@@ -141,8 +151,11 @@ fn edges<'s>(ends: &[Point<f64>], rings: &[(&'s Shape, Polygon<f64>)]) -> Vec<&'
             |part: usize, share: f64, all: usize| part > 1 && part as f64 >= share * all as f64;
         enough(inside.len(), HOLDS, ends.len()) && enough(at, ENDING, inside.len())
     };
-    let found: Vec<&(&Shape, Polygon<f64>)> =
-        rings.iter().filter(|(_, area)| is_edge(area)).collect();
+    let found: Vec<&(&Shape, Polygon<f64>)> = rings
+        .iter()
+        .copied()
+        .filter(|(_, area)| is_edge(area))
+        .collect();
     let outer = |area: &Polygon<f64>| {
         let start = area.exterior().points().next();
         !found.iter().any(|(_, other)| {
