@@ -165,7 +165,7 @@ impl AtEnds {
             if text.within.is_some() || self.texts.contains(&number) {
                 continue;
             }
-            if let Some(shape) = shape_in(&text.content) {
+            if let Some((shape, kind)) = shape_in(&text.content).zip(kind) {
                 self.legend_shapes.entry(shape).or_insert(kind);
                 continue;
             }
