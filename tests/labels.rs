@@ -59,7 +59,7 @@ fn check(job: &str, read: fn(&str, &Job) -> String, rows: &[(&str, &str)]) -> us
     rows.len()
 }
 
-/// Sources: practice.md's families are common practice; each row's arithmetic is by hand (1 in = 25.4 mm,
+/// Sources: the families are common practice; each row's arithmetic is by hand (1 in = 25.4 mm,
 /// 1 kip = 4.4482 kN, 1 kip/ft = 14.594 kN/m).
 #[test]
 fn strands_and_required_forces() {
@@ -87,6 +87,9 @@ fn strands_and_required_forces() {
             ("5-1/2\" DIA. STRANDS", "5 of 12.7"),
             ("4-½\"", "4 of 12.7"),
             ("4 x 1/2\"", "4 of 12.7"),
+            ("B01 (5) 1/2\"Ø", "B01: 5 of 12.7"),
+            ("(18) 1/2\"Ø STRANDS", "18 of 12.7"),
+            ("B02 (4) 12.7", "B02: 4 of 12.7"),
             ("4x1/2\"", "4 of 12.7"),
             ("10 No. 1/2\"", "10 of 12.7"),
             ("D3: 4 x ½\"", "D3: 4 of 12.7"),
@@ -150,7 +153,7 @@ fn strands_and_required_forces() {
             ("5-12.7", "-"),
         ],
     );
-    assert_eq!(rows, 71);
+    assert_eq!(rows, 74);
 }
 
 #[test]
@@ -164,6 +167,11 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("H 165", "H 165"),
             ("H=165", "H 165"),
             ("H: 165", "H 165"),
+            ("z=165", "165"),
+            ("V = 165", "165"),
+            ("CG: 165", "165"),
+            ("e=165", "-"),
+            ("z165", "-"),
             ("h=165", "165"),
             ("h : 30", "30"),
             ("h 30", "H 30"),
@@ -220,7 +228,7 @@ fn heights_in_millimetres_centimetres_and_metres() {
             ("0.165 m", "165"),
         ],
     );
-    assert_eq!(rows, 47);
+    assert_eq!(rows, 52);
 }
 
 #[test]
@@ -297,6 +305,17 @@ fn thicknesses() {
             ("T8\"", "-"),
             ("TYP", "-"),
             ("350", "-"),
+            ("d=25cm", "250.0"),
+            ("h = 250", "250.0"),
+            ("e=250", "250.0"),
+            ("ép. 260", "260.0"),
+            ("tl. 250", "250.0"),
+            ("SLAB 250 THICK U.N.O.", "250.0"),
+            ("250 mm THK. PT SLAB", "250.0"),
+            ("250 P.T. SLAB", "250.0"),
+            ("EP250X", "-"),
+            ("SLAB", "-"),
+            ("D 250", "-"),
         ],
     );
     rows += check(
@@ -306,9 +325,11 @@ fn thicknesses() {
             ("T8", "203.2"),
             ("T=8 1/2\"", "215.9"),
             ("8\" THK", "203.2"),
+            ("8\" P.T. SLAB", "203.2"),
+            ("10\" SLAB", "254.0"),
         ],
     );
-    assert_eq!(rows, 12);
+    assert_eq!(rows, 25);
 }
 
 /// The README's job file is one.

@@ -11,6 +11,12 @@ pub use crate::job::Word;
 /// Heights that differ by less are equal, metres.
 const SAME_M: f64 = 0.0005;
 
+/// What a height goes by in an equation, `z = 165`, and is neither high nor low by; `e` is not among them, which is an
+/// eccentricity as well (common practice).
+const SIGNS: &[&str] = &[
+    "z", "Z", "y", "Y", "v", "V", "cg", "CG", "cgs", "CGS", "C.G.", "C.G.S.",
+];
+
 /// A height as written.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct HeightText {
@@ -74,14 +80,15 @@ pub fn height_of_line<'c>(
         let value = groups.name("value")?;
         let value_m = length_m(value.as_str(), unit)?;
         let written = groups.name("word");
-        let by_equals = equals(line, written, value);
+        let by_equals = equals(line, written, value, &["H", "h"]);
+        let signed = equals(line, written, value, SIGNS);
         let word = match written.map(|word| word.as_str().trim()) {
             None | Some("") => pattern.word,
             // The sign of a height, `h = 30`, says neither high nor low.
             Some("h") if by_equals => None,
             Some(word) if among(word, &conventions.high_words) => Some(Word::High),
             Some(word) if among(word, &conventions.low_words) => Some(Word::Low),
-            Some(word) if among(word, &conventions.middle_words) => None,
+            Some(word) if signed || among(word, &conventions.middle_words) => None,
             Some(_) => return None,
         };
         let height = HeightText {
@@ -98,9 +105,9 @@ pub fn height_of_line<'c>(
     })
 }
 
-/// Whether an equals sign or a colon stands between the letter H and a number.
-fn equals(line: &str, word: Option<Match<'_>>, value: Match<'_>) -> bool {
-    let letter = word.filter(|word| matches!(word.as_str().trim(), "H" | "h"));
+/// Whether an equals sign or a colon stands between one of these letters and a number.
+fn equals(line: &str, word: Option<Match<'_>>, value: Match<'_>, letters: &[&str]) -> bool {
+    let letter = word.filter(|word| letters.contains(&word.as_str().trim()));
     let between = letter.and_then(|letter| line.get(letter.end()..value.start()));
     between.is_some_and(|between| between.contains(['=', ':']))
 }

@@ -70,6 +70,13 @@ fn compiled_marks() -> Vec<Pattern> {
                 r"(?i)^{mark}{TENDONS}(?<strands>\d+){OF_SIZE}(?<strand>\d+(?:[.,]\d+)?|[.,]\d+|\d+/\d+|½){SIZE_SIGN}\s*\)?$"
             ),
         ),
+        // Brackets around a number before a size hold the number of strands.
+        pattern(
+            "(strands) size",
+            &format!(
+                r"(?i)^{mark}{TENDONS}\((?<strands>\d+)\)\s*[-–x×]?\s*[Ø∅⌀]?\s*(?<strand>\d*[.,]\d+|\d/\d+|½){SIZE_SIGN}$"
+            ),
+        ),
         pattern("mark", &format!("(?i)^{MARK}$")),
         pattern(
             "strands x size",
@@ -130,13 +137,26 @@ pub fn thickness_patterns(unit: LengthUnit) -> Vec<Pattern> {
         unit,
         &[
             ("thickness", r"(?i)^T\s*=?\s*(?<value>NUMBER)NOTE$"),
+            // The letters that a depth goes by, and its word in other languages (from memory).
+            (
+                "thickness, letter",
+                r"(?i)^(?:[DHE]|TH|TK)\s*[=:]\s*(?<value>NUMBER)NOTE$",
+            ),
+            (
+                "thickness, foreign word",
+                r"(?i)^(?:[EÉ]P|[EÉ]PAISSEUR|ESP|ESPESOR|ESPESSURA|TL|TLOUŠŤKA|DICKE|STÄRKE|DIKTE|SPESSORE|GRUBOŚĆ|TJOCKLEK|TYKKELSE)\b\.?\s*[=:]?\s*(?<value>NUMBER)NOTE$",
+            ),
+            (
+                "thickness, slab",
+                r"(?i)^(?:P\.?T\.?\s+)?SLAB\s*[=:]?\s*(?<value>NUMBER)(?:\s*(?:THK|THICK)\.?)?NOTE$",
+            ),
             (
                 "thickness, word first",
                 r"(?i)^(?:SLAB\s+)?(?:THK|THICK(?:NESS)?)\.?\s*[=:]?\s*(?<value>NUMBER)NOTE$",
             ),
             (
                 "thickness, word last",
-                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:THK|THICK)\.?(?:\s+SLAB)?NOTE$",
+                r"(?i)^(?:SLAB\s+)?(?<value>NUMBER)\s*(?:(?:THK|THICK)\.?(?:\s+(?:P\.?T\.?\s+)?SLAB)?|(?:P\.?T\.?\s+)?SLAB)NOTE$",
             ),
             (
                 "top level",

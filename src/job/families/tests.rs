@@ -10,7 +10,7 @@ fn group(patterns: &[Pattern], text: &str, name: &str) -> Option<String> {
 
 #[test]
 fn every_pattern_of_the_house_compiles_and_can_match() {
-    assert_eq!(mark_patterns().len(), 10);
+    assert_eq!(mark_patterns().len(), 11);
     assert_eq!(offers().len(), 7);
     let mut all = mark_patterns();
     all.extend(offers().into_iter().map(|offer| offer.pattern));
@@ -19,7 +19,7 @@ fn every_pattern_of_the_house_compiles_and_can_match() {
             panic!("{unit}");
         };
         assert_eq!(height_patterns(unit).len(), 2);
-        assert_eq!(thickness_patterns(unit).len(), 9);
+        assert_eq!(thickness_patterns(unit).len(), 12);
         all.extend(height_patterns(unit));
         all.extend(thickness_patterns(unit));
     }
