@@ -19,6 +19,7 @@ mod names;
 mod placing;
 mod read;
 mod refusal;
+mod release;
 mod resume;
 mod rules;
 mod scan;

@@ -8,6 +8,8 @@ use encoding_rs::{
     WINDOWS_1258,
 };
 
+use super::release;
+
 /// How a drawing's strings turn into characters.
 #[derive(Debug, Clone)]
 pub(super) struct CodePage {
@@ -22,7 +24,7 @@ impl CodePage {
     /// The code page of a drawing with this `$ACADVER` (empty if absent) and `$DWGCODEPAGE`.
     pub(super) fn of(version: &str, named: Option<&str>) -> Self {
         let known = named.and_then(by_name);
-        let utf8 = version >= "AC1021" && version.starts_with("AC1");
+        let utf8 = release::number(version) >= release::R2007;
         let encoding = if utf8 {
             UTF_8
         } else {

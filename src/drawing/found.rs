@@ -22,6 +22,8 @@ pub(super) const OWN_LAYER: &str = "TAUT-";
 pub(super) struct Scan {
     /// `$ACADVER`, such as `AC1027`; empty if the header has none.
     pub(super) version: String,
+    /// Number of the release; where the header names none, R2000 for a drawing with subclass markers, else 0.
+    pub(super) release: u32,
     /// ASCII or binary.
     pub(super) form: Form,
     /// Line end of the first line: `\n` or `\r\n`.
@@ -165,6 +167,7 @@ impl Scan {
         let padded = code.first().is_some_and(|b| *b == b' ');
         Self {
             version: String::new(),
+            release: 0,
             form,
             line_end: if line.len() == code.len() {
                 "\n"

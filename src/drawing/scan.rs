@@ -10,7 +10,7 @@ mod tests;
 
 use super::code_page::CodePage;
 use super::counts::Counts;
-use super::handles::{Handles, parse_handle};
+use super::handles::{Handles, is_pointer, names_a_handle, parse_handle};
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
 use super::tags::{BadTag, Tag, Tags};
@@ -134,10 +134,8 @@ impl<'a> Pass<'a> {
             return;
         }
         let of_use = |code| {
-            matches!(
-                code,
-                0 | 2 | 5 | 6 | 8 | 62 | 66 | 67 | 70 | 101 | 102 | 105 | 320..=369 | 390..=399 | 480 | 481 | 999 | 1005
-            )
+            matches!(code, 0 | 2 | 6 | 8 | 62 | 66 | 67 | 70 | 101 | 102 | 999)
+                || names_a_handle(code)
         };
         if let Some(end) = tags.pass_over(|code| !of_use(code)) {
             self.scan.tags_end = end;
@@ -152,9 +150,11 @@ impl<'a> Pass<'a> {
         match (self.variable, tag.code) {
             (b"$ACADVER", 1) => {
                 self.scan.version = String::from_utf8_lossy(tag.word()).to_ascii_uppercase();
+                self.settle_code_page();
             }
             (b"$DWGCODEPAGE", 3) => {
                 self.code_page_name = Some(String::from_utf8_lossy(tag.word()).into_owned());
+                self.settle_code_page();
             }
             (b"$EXTMIN", 10) => self.scan.extents[0][0] = tag.float(),
             (b"$EXTMIN", 20) => self.scan.extents[0][1] = tag.float(),
@@ -171,6 +171,9 @@ impl<'a> Pass<'a> {
             }
             _ => {}
         }
+    }
+
+    fn settle_code_page(&mut self) {
         self.scan.code_page = CodePage::of(&self.scan.version, self.code_page_name.as_deref());
     }
 
@@ -179,9 +182,9 @@ impl<'a> Pass<'a> {
         match tag.code {
             5 if self.record != Record::Dimstyle => self.handles.own(tag.word()),
             105 => self.handles.own(tag.word()),
-            320..=369 | 390..=399 | 480 | 481 | 1005 => self.handles.pointer(tag.word()),
             101 => self.embedded = true,
             102 => self.in_group = tag.word().starts_with(b"{"),
+            code if is_pointer(code) => self.handles.pointer(tag.word()),
             _ => {}
         }
         if self.record == Record::None || self.in_group || self.embedded || tag.code >= 1000 {

@@ -12,6 +12,7 @@ use std::ops::Range;
 
 use numbers::{decimal, to_whole, whole};
 
+pub(super) use ascii::code_of;
 pub(super) use bad::{Bad, BadTag, place_in_words, shown};
 pub(super) use numbers::is_name;
 pub(super) use sequence::Tags;

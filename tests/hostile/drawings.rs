@@ -93,7 +93,7 @@ fn without_seed(bytes: &[u8]) -> Option<usize> {
     bytes.windows(9).position(|window| window == b"$HANDSEED")
 }
 
-fn sheet() -> Sheet {
+pub(crate) fn sheet() -> Sheet {
     let ink = Ink {
         index: 1,
         rgb: Some([255, 0, 0]),

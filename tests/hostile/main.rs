@@ -4,6 +4,7 @@
 mod caps;
 mod corrupted;
 mod cut;
+mod damaged;
 mod drawings;
 mod huge;
 mod nested;

@@ -1,5 +1,7 @@
 //! What could not be read, told.
 
+use std::fmt::Write as _;
+
 use crate::drawing::explode::{MOST_TOLD, and_more};
 use crate::drawing::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE};
 use crate::drawing::scan::Scan;
@@ -14,11 +16,19 @@ pub(super) fn passed_over_finding(scan: &Scan) -> Option<Finding> {
         1 => String::new(),
         places => format!(" (the first of {places} such places)"),
     };
-    let (level, left_out) = match over.left_out {
+    let (level, mut left_out) = match over.left_out {
         0 => (Level::Warning, "no entity is left out for it".to_owned()),
         1 => (Level::Error, "one entity is left out for it".to_owned()),
         n => (Level::Error, format!("{n} entities are left out for it")),
     };
+    for (lost, what) in [
+        (over.in_header, "variables of the header"),
+        (over.in_tables, "layers or text styles of its tables"),
+    ] {
+        if lost {
+            let _ = write!(left_out, ", {what} may be lost");
+        }
+    }
     Some(Finding::new(
         &DRAWING_DAMAGED,
         level,

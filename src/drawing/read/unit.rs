@@ -25,9 +25,17 @@ pub(super) fn unit_finding(scan: &Scan, from: UnitFrom) -> Option<Finding> {
             format!("$INSUNITS of the drawing is {number}, which names no unit of plans")
         }
     };
+    let over = scan.passed_over.as_ref();
+    let lost = scan.insunits.is_none() && over.is_some_and(|over| over.in_header);
+    let (level, header) = if lost {
+        let header = "the header of the drawing is damaged, and its $INSUNITS was not found";
+        (Level::Error, header.to_owned())
+    } else {
+        (Level::Note, header)
+    };
     let finding = Finding::new(
         &UNIT_ASSUMED,
-        Level::Note,
+        level,
         format!("{header}; millimetres are assumed"),
         "set the drawing's unit in the job file",
     );

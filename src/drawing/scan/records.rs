@@ -22,7 +22,10 @@ impl<'a> Pass<'a> {
             b"STYLE" => Record::Style,
             _ => Record::None,
         };
-        self.gathered = Gathered::default();
+        self.gathered = Gathered {
+            start,
+            ..Gathered::default()
+        };
     }
 
     pub(super) fn begin_entity(&mut self, name: &'a [u8], start: usize) {
