@@ -125,8 +125,9 @@ pub(super) struct Entry {
 pub(super) struct BlockEntry {
     /// Name, decoded.
     pub(super) name: String,
-    /// Base point, drawing units.
-    pub(super) base: [f64; 2],
+    /// Base point, drawing units; the origin where none is written. `None` where its record is damaged: what the block
+    /// holds then lies nowhere.
+    pub(super) base: Option<[f64; 2]>,
     /// Entities that can be read.
     pub(super) entries: Vec<Entry>,
     /// Layers of its inserts' attributes, where they are not the insert's.

@@ -87,7 +87,7 @@ fn pointing(
     let mut handle = None;
     let mut worn = Worn::default();
     let mut in_group = false;
-    for tag in Tags::within(&source.bytes, scan.form, entry.start..entry.end) {
+    for tag in Tags::within(&source.bytes, scan.form, entry.start..entry.end).forgiving() {
         let Ok(tag) = tag else { break };
         match tag.code {
             0 if record.type_name.is_empty() => record.type_name = tag.word(),

@@ -207,8 +207,11 @@ impl<'a> Pass<'a> {
             5 if held.handle.is_none() => held.handle = Some(tag.word()),
             6 if self.record == Record::Layer => held.linetype = Some(tag.word()),
             8 if held.layer.is_none() => held.layer = Some(tag.word()),
-            10 => held.base[0] = tag.float().unwrap_or(0.0),
-            20 => held.base[1] = tag.float().unwrap_or(0.0),
+            10 | 20 => {
+                let number = tag.float();
+                held.bad_base |= number.is_none();
+                held.base[usize::from(tag.code == 20)] = number;
+            }
             41 => held.style.width_factor = tag.float().unwrap_or(1.0),
             50 => held.style.oblique_deg = tag.float().unwrap_or(0.0),
             62 => held.colour = tag.integer(),

@@ -124,3 +124,68 @@ fn handles_of_what_is_passed_over_are_not_given_again() {
         }
     }
 }
+
+/// A block of one line at its base point (5000, 0), inserted at (1000, 0), from what its record holds.
+fn placed(record: &str) -> (Drawing, Vec<Finding>) {
+    let tags = format!(
+        "0 SECTION 2 BLOCKS 0 BLOCK 8 0 {record} 0 LINE 8 A 10 5000 20 0 11 7000 21 0 0 ENDBLK 8 0
+         0 ENDSEC 0 SECTION 2 ENTITIES 0 INSERT 5 B1 8 A 2 T 10 1000 20 0 {LINE} 0 ENDSEC 0 EOF"
+    );
+    let (source, drawing, findings) = everything(of_tags(&tags));
+    marks_without_loss(&source, drawing.unit_m);
+    (drawing, findings)
+}
+
+#[test]
+fn a_block_without_a_sound_base_point_is_left_out_and_said() {
+    let (drawing, findings) = placed("2 T 10 5000 20 0");
+    assert!(rules(&findings).is_empty());
+    let start = drawing.shapes[0].path.start().expect("a start");
+    assert!((start.x - 1.0).abs() < 1e-12, "{start:?}");
+    for record in [
+        "2 T 10 5,000.0 20 0",
+        "2 T 10 nan 20 0",
+        "2 T 10 5000 20 1e999",
+        "2 T 10 5000",
+        "2 T oops 10 5000 20 0",
+        "2 T 10 5000 20 0 oops",
+    ] {
+        let (drawing, findings) = placed(record);
+        assert_eq!(drawing.shapes.len(), 1, "{record}");
+        assert!(drawing.inserts.is_empty());
+        let said = said(&findings, "entity-damaged").expect(record);
+        assert_eq!(said.level, Level::Error);
+        assert!(
+            said.text.contains("insert B1") && said.text.contains("block T"),
+            "{}",
+            said.text
+        );
+    }
+    // Nothing written at all is the origin.
+    assert_eq!(rules(&placed("2 T").1), [""; 0]);
+}
+
+#[test]
+fn an_empty_line_costs_a_leader_nothing_and_garbage_is_counted() {
+    let leader = |harm: &str| {
+        let text = format!(
+            "0\nSECTION\n2\nENTITIES\n0\nLEADER\n5\nB1\n8\nA\n76\n2\n10\n0\n20\n0\n{harm}10\n5\n20\n5\n0\nPOINT\n8\nA\n10\n0\n{harm}20\n3000\n0\nLINE\n8\nA\n10\n0\n20\n0\n11\n1\n21\n1\n0\nENDSEC\n0\nEOF\n"
+        );
+        let (_, drawing, findings) = everything(text.into_bytes());
+        let damage = said(&findings, "drawing-damaged").map(|finding| finding.text.to_string());
+        (
+            drawing.leaders.len(),
+            drawing.dots,
+            damage.unwrap_or_default(),
+        )
+    };
+    let (leaders, dots, said) = leader("");
+    assert_eq!((leaders, dots.len(), said.as_str()), (1, 1, ""));
+    let (leaders, dots, said) = leader("\n");
+    assert_eq!((leaders, dots.len()), (1, 1), "{said}");
+    assert!((dots[0].place.y - 3.0).abs() < 1e-12);
+    assert!(said.contains("no entity is left out"), "{said}");
+    let (leaders, dots, said) = leader("oops\n");
+    assert_eq!((leaders, dots.len()), (0, 0));
+    assert!(said.contains("2 entities are left out"), "{said}");
+}

@@ -42,6 +42,11 @@ impl Book<'_> {
         name.map_or("", String::as_str)
     }
 
+    /// A block's base point; `None` for a damaged one.
+    pub(super) fn base(&self, block: usize) -> Option<[f64; 2]> {
+        self.scan.blocks.get(block).and_then(|block| block.base)
+    }
+
     pub(super) fn block(&self, name: u32) -> Option<usize> {
         self.block_of_name.get(name as usize).copied().flatten()
     }

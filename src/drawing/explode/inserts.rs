@@ -9,12 +9,13 @@ use crate::drawing::clean::NOWHERE;
 use crate::drawing::convert::{TOO_FAR, is_near};
 use crate::drawing::lettering::{attribute_content, normal, of_attribute};
 use crate::drawing::placing::Placing;
-use crate::drawing::rules::{BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP};
+use crate::drawing::rules::{BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, ENTITY_DAMAGED};
 use crate::drawing::windows::Record;
 use crate::finding::Level;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
+
 impl Gatherer<'_> {
     pub(super) fn insert(
         &mut self,
@@ -43,6 +44,11 @@ impl Gatherer<'_> {
         if wanted && block.is_none() {
             self.missing(record, handle);
         }
+        let base = block.map_or(Some([0.0; 2]), |block| self.book.base(block));
+        let Some([base_x, base_y]) = base else {
+            self.baseless(record, layer, handle);
+            return;
+        };
         let plane = Placing::extruded(normal(&insert.extrusion_direction), insert.location.z);
         let plane = frame.placing.after(&plane);
         let rotation_rad = insert.rotation.to_radians();
@@ -90,12 +96,6 @@ impl Gatherer<'_> {
                     });
                 }
                 let Some(block) = block else { continue };
-                let [base_x, base_y] = self
-                    .book
-                    .scan
-                    .blocks
-                    .get(block)
-                    .map_or([0.0; 2], |b| b.base);
                 let placing = cell
                     .after(&Placing::stretched(
                         insert.x_scale_factor,
@@ -118,6 +118,20 @@ impl Gatherer<'_> {
                 self.block(block, &inside, handle);
             }
         }
+    }
+
+    /// Says that an insert is left out, since nobody knows where its block's base point is.
+    fn baseless(&mut self, record: &Record, layer: u32, handle: &str) {
+        let (layer, name) = (
+            self.book.layer_name(layer),
+            self.book.block_name(record.kept.block),
+        );
+        self.say(&ENTITY_DAMAGED, Level::Error, || {
+            (
+                format!("insert {handle} on layer {layer} is left out: the record of its block {name} is damaged, or its base point is no finite number"),
+                "define the block again, or export the drawing again".to_owned(),
+            )
+        });
     }
 
     /// Says that an insert's block is not there.

@@ -97,7 +97,7 @@ impl<'a> Pass<'a> {
                 self.scan.names_are_guessed |= guessed;
                 self.scan.blocks.push(BlockEntry {
                     name: plain_name(&name),
-                    base: self.gathered.base,
+                    base: base_of(&self.gathered),
                     ..BlockEntry::default()
                 });
                 self.block_open = true;
@@ -165,6 +165,7 @@ impl<'a> Pass<'a> {
         let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
         let broken = held.broken;
         let reads = self.types.is_read(held.type_id) && !is_form && !broken;
+        let points = points && !broken;
         if broken {
             self.left_out();
         }
@@ -207,6 +208,16 @@ impl<'a> Pass<'a> {
         } else if points {
             self.scan.pointing.push(entry);
         }
+    }
+}
+
+/// A block's base point, unless its record is damaged.
+fn base_of(held: &Gathered<'_>) -> Option<[f64; 2]> {
+    match held.base {
+        _ if held.broken || held.bad_base => None,
+        [Some(x), Some(y)] => Some([x, y]),
+        [None, None] => Some([0.0; 2]),
+        _ => None,
     }
 }
 
