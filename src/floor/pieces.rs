@@ -106,7 +106,7 @@ fn outward(path: &Path, at_end: bool, gap_m: f64) -> Option<(Coord<f64>, f64)> {
 
 /// Groups of ends that lie within the gap of one another.
 fn nodes(ends: &[Option<(Coord<f64>, f64)>], gap_m: f64) -> Vec<Vec<usize>> {
-    let tree = RTree::bulk_load(
+    let mut tree = RTree::bulk_load(
         ends.iter()
             .enumerate()
             .filter_map(|(end, found)| {
@@ -128,7 +128,8 @@ fn nodes(ends: &[Option<(Coord<f64>, f64)>], gap_m: f64) -> Vec<Vec<usize>> {
             let Some((place, _)) = ends[end] else {
                 continue;
             };
-            for near in tree.locate_within_distance([place.x, place.y], gap_m * gap_m) {
+            // Each end is met once, however many meet in one place.
+            for near in tree.drain_within_distance([place.x, place.y], gap_m * gap_m) {
                 if !seen[near.data] {
                     seen[near.data] = true;
                     group.push(near.data);
@@ -162,25 +163,55 @@ fn join(
         link[b] = Some(a);
         return 0;
     }
-    let best = |end: usize, but: usize| {
-        node.iter()
-            .filter(|&&other| other != end && other != but)
-            .map(|&other| turn(end, other))
-            .fold(f64::INFINITY, f64::min)
-    };
+    let fan = Fan::of(node, ends);
     let mut left = node.len();
-    for (at, &a) in node.iter().enumerate() {
-        for &b in &node[at + 1..] {
-            let here = turn(a, b);
-            let next = best(a, b).min(best(b, a));
-            if here < SMOOTH_RAD && here < joint.turn_rad && next > here + CLEARLY_RAD {
-                link[a] = Some(b);
-                link[b] = Some(a);
-                left -= 2;
-            }
+    for at in 0..fan.0.len() {
+        let Some((onward, here)) = fan.clear_partner(at, turn) else {
+            continue;
+        };
+        let back = fan.clear_partner(onward, turn);
+        let mutual = at < onward && back.is_some_and(|(back, _)| back == at);
+        if mutual && here < SMOOTH_RAD && here < joint.turn_rad {
+            let ((_, a), (_, b)) = (fan.0[at], fan.0[onward]);
+            link[a] = Some(b);
+            link[b] = Some(a);
+            left -= 2;
         }
     }
     left
+}
+
+/// The ends of one node by their headings, so that what goes on from an end is found without trying all others.
+struct Fan(Vec<(f64, usize)>);
+
+impl Fan {
+    fn of(node: &[usize], ends: &[Option<(Coord<f64>, f64)>]) -> Self {
+        let headings = node.iter().filter_map(|&end| Some((ends[end]?.1, end)));
+        let mut fan: Vec<(f64, usize)> = headings.map(|(out, end)| (turn_rad(out), end)).collect();
+        fan.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
+        Self(fan)
+    }
+
+    /// The place in the fan of the end that the one at a place goes on into with the least turn, and that turn, where
+    /// every other turn is clearly greater.
+    fn clear_partner(&self, at: usize, turn: impl Fn(usize, usize) -> f64) -> Option<(usize, f64)> {
+        let fan = &self.0;
+        let count = fan.len();
+        let onward = turn_rad(fan[at].0 + std::f64::consts::PI);
+        let there = fan.partition_point(|(heading, _)| *heading < onward);
+        // The end itself may be among the three on either side, and two must be left to be compared.
+        let reach = 3.min(count);
+        let mut near: Vec<(f64, usize)> = (0..2 * reach)
+            .map(|step| (there + count + step - reach) % count)
+            .filter(|&other| other != at)
+            .map(|other| (turn(fan[at].1, fan[other].1), other))
+            .collect();
+        near.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
+        near.dedup_by_key(|(_, other)| *other);
+        let &(here, partner) = near.first()?;
+        let next = near.get(1).map_or(f64::INFINITY, |(turn, _)| *turn);
+        (next > here + CLEARLY_RAD).then_some((partner, here))
+    }
 }
 
 /// Follows the links from every free end, then around what is left.
@@ -295,6 +326,56 @@ mod tests {
             line(&[(5.0, -4.0), (5.0, 0.0)]),
         ]);
         assert_eq!((found, meetings), (vec![7, 12], 0));
+    }
+
+    #[test]
+    fn of_thousands_of_ends_in_one_place_pairs_are_found_without_trying_all() {
+        let spoke = |turn: f64| {
+            let (sin, cos) = turn.to_radians().sin_cos();
+            line(&[(0.0, 0.0), (9.0 * cos, 9.0 * sin)])
+        };
+        let few = [0.0, 60.0, 120.0, 180.0, 225.0].map(spoke);
+        assert_eq!(lengths(&few), (vec![9, 9, 9, 18], 1));
+        let many: Vec<Path> = (0..20_000).map(|n| spoke(f64::from(n) * 0.018)).collect();
+        let begun = std::time::Instant::now();
+        let (found, meetings) = lengths(&many);
+        // At the hub, and all around the rim.
+        assert_eq!((found.len(), meetings), (20_000, 2));
+        assert!(begun.elapsed().as_secs() < 30, "{:?}", begun.elapsed());
+    }
+
+    #[test]
+    fn the_partners_are_those_that_trying_all_would_find() {
+        let mut seed = 1_u32;
+        let mut roll = |below: u32| {
+            seed = seed.wrapping_mul(1_664_525).wrapping_add(1_013_904_223);
+            (seed >> 8) % below
+        };
+        let mut joined = 0;
+        for _ in 0..500 {
+            let count = 3 + roll(7);
+            let ends: Vec<_> = (0..count)
+                .map(|_| Some((Coord::default(), f64::from(roll(72)) * 0.0873)))
+                .collect();
+            let node: Vec<usize> = (0..ends.len()).collect();
+            let mut link = vec![None; ends.len()];
+            join(&node, &ends, JOINT, &mut link);
+            let turn = |a: usize, b: usize| {
+                let [a, b] = [a, b].map(|end| ends[end].map_or(0.0, |(_, out)| out));
+                turn_rad(a - b - std::f64::consts::PI).abs()
+            };
+            for &a in &node {
+                let partner = node.iter().copied().find(|&b| {
+                    let others = node.iter().filter(|&&other| other != a && other != b);
+                    let rivals = others.flat_map(|&other| [turn(a, other), turn(b, other)]);
+                    let next = rivals.fold(f64::INFINITY, f64::min);
+                    a != b && turn(a, b) < SMOOTH_RAD && next > turn(a, b) + CLEARLY_RAD
+                });
+                assert_eq!(link[a], partner, "{ends:?}");
+                joined += usize::from(partner.is_some());
+            }
+        }
+        assert!(joined > 100, "{joined}");
     }
 
     #[test]
