@@ -152,6 +152,10 @@ pub(super) const READ_TYPES: [&[u8]; 12] = [
     b"ATTDEF",
 ];
 
+/// Columns that programs write codes in, at most and as a rule.
+const WIDEST: usize = 6;
+const USUAL_WIDTH: usize = 3;
+
 impl Scan {
     /// Whole entities of model space, of whatever type.
     pub(super) fn entity_count(&self) -> usize {
@@ -166,6 +170,7 @@ impl Scan {
         let line = memchr::memchr(b'\n', rest).map_or(rest, |length| &rest[..length]);
         let code = line.strip_suffix(b"\r").unwrap_or(line);
         let padded = code.first().is_some_and(|b| *b == b' ');
+        let width = code.trim_ascii_end().len();
         Self {
             version: String::new(),
             release: 0,
@@ -175,7 +180,11 @@ impl Scan {
             } else {
                 "\r\n"
             },
-            code_width: if padded { code.len() } else { 0 },
+            code_width: match width {
+                _ if !padded => 0,
+                0..=WIDEST => width,
+                _ => USUAL_WIDTH,
+            },
             code_page: CodePage::of("", None),
             insunits: None,
             measurement: None,

@@ -91,7 +91,7 @@ pub enum ShapeKind {
     Arc,
     /// CIRCLE.
     Circle,
-    /// SPLINE, as arcs that leave it by no more than 1 mm.
+    /// SPLINE, as arcs that leave it by no more than 1 mm, or a millionth of its size.
     Spline,
     /// SOLID or TRACE: a filled triangle or quadrangle, as its outline.
     Solid,

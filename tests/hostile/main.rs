@@ -10,4 +10,5 @@ mod huge;
 mod nested;
 mod numbers;
 mod program;
+mod room;
 mod twisted;

@@ -32,9 +32,9 @@ impl Book<'_> {
         self.wanted.get(layer as usize).copied().unwrap_or(false)
     }
 
-    pub(super) fn layer_name(&self, layer: u32) -> String {
+    pub(super) fn layer_name(&self, layer: u32) -> &str {
         let layer = self.scan.layers.get(layer as usize);
-        layer.map_or_else(|| "0".to_owned(), |layer| layer.name.clone())
+        layer.map_or("0", |layer| layer.name.as_str())
     }
 
     pub(super) fn block_name(&self, name: u32) -> &str {

@@ -35,6 +35,7 @@ impl Gatherer<'_> {
             within: wanted
                 .then_some(self.drawing.inserts.len())
                 .or(frame.within),
+            counted: false,
         };
         self.attributes(record, insert, seen, handle, frame);
         let holds = block.is_some_and(|block| self.book.holds_wanted.get(block) == Some(&true));
@@ -64,10 +65,11 @@ impl Gatherer<'_> {
         let weight: usize = attributes
             .iter()
             .map(|(tag, value)| 64 + tag.len() + value.len())
-            .sum();
+            .sum::<usize>()
+            .saturating_add(self.book.block_name(record.kept.block).len());
         for row in 0..insert.row_count.max(1) {
             for column in 0..insert.column_count.max(1) {
-                if !self.spend(handle, weight) {
+                if !self.spend(handle) {
                     return;
                 }
                 let step = Coord {
@@ -83,10 +85,13 @@ impl Gatherer<'_> {
                     return;
                 }
                 if wanted {
+                    if !self.afford(seen, handle, weight) {
+                        return;
+                    }
                     let along = cell.carry(Coord { x: 1.0, y: 0.0 });
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
-                        layer: self.book.layer_name(layer),
+                        layer: self.book.layer_name(layer).to_owned(),
                         look,
                         within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
@@ -174,13 +179,13 @@ impl Gatherer<'_> {
         };
         self.open.push(block);
         for record in records {
-            if !self.spend(handle, record.weight()) {
+            if !self.spend(handle) {
                 break;
             }
             self.place(record, inside);
         }
         for pointing in book.pointing.get(block).into_iter().flatten() {
-            if !self.spend(handle, pointing.weight()) {
+            if !self.spend(handle) {
                 break;
             }
             self.point(pointing, inside);
@@ -207,6 +212,7 @@ impl Gatherer<'_> {
                 layer,
                 look: self.looks.seen(&own.worn, layer, seen.look),
                 within: seen.within,
+                counted: false,
             };
             let handle = match &own.handle {
                 Some(own) if frame.handle.is_none() => own,
