@@ -38,6 +38,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
         return Err(Refused::NoTendons {
             path: plan.to_owned(),
             layers: listed(&tendon_layers),
+            references: references(&source),
         });
     }
     units::check(plan, &floor.tendons, drawing.unit_m, drawing.unit_from)?;
@@ -133,7 +134,20 @@ fn tendon_layers(plan: &Path, source: &Source, job: &Job) -> Result<Vec<Layer>, 
             .unwrap_or_default(),
         patterns: patterns.join(", "),
         layers: listed(&all),
+        references: references(source),
     })
+}
+
+/// References whose contents are not in the drawing, in a line of their own; nothing if there is none.
+fn references(source: &Source) -> String {
+    let absent = source.absent_references();
+    match absent.as_slice() {
+        [] => String::new(),
+        names => format!(
+            "\nexternal references whose contents are not in the drawing: {}; bind them if the tendons are drawn there",
+            names.join(", ")
+        ),
+    }
 }
 
 /// Layers with what lies on them, in one line.

@@ -9,9 +9,6 @@ use super::names::ScannedLayer;
 use super::scan::PassedOver;
 use super::tags::{Form, form_of};
 
-/// Layers of this tool's own begin so, in any letter case; they are never read and their entities are replaced.
-pub(super) const OWN_LAYER: &str = "TAUT-";
-
 /// What one pass over a drawing finds. Offsets are of the file's bytes; those called `_start` and `_end` point at the
 /// first byte of a `0` code line, where something can be inserted.
 #[derive(Debug, Clone)]
@@ -32,8 +29,8 @@ pub(super) struct Scan {
     pub(super) code_width: usize,
     /// How strings turn into characters.
     pub(super) code_page: CodePage,
-    /// `$INSUNITS`.
-    pub(super) insunits: Option<i64>,
+    /// `$INSUNITS`, if the header has it; `None` within for what is no whole number.
+    pub(super) insunits: Option<Option<i64>>,
     /// `$MEASUREMENT`.
     pub(super) measurement: Option<i64>,
     /// `$EXTMIN` and `$EXTMAX`: x and y as the last program to save the drawing left them, drawing units.
@@ -134,15 +131,30 @@ pub(super) struct BlockEntry {
     pub(super) attribute_layers: Vec<u32>,
     /// Leaders and points.
     pub(super) pointing: Vec<Entry>,
+    /// Whether it stands for another drawing.
+    pub(super) is_reference: bool,
+    /// What is of types that are not read: how many by number of the layer and of the type.
+    pub(super) unread: BTreeMap<(u32, usize), usize>,
+}
+
+impl BlockEntry {
+    /// Whether it stands for another drawing of which nothing is here.
+    pub(super) fn is_absent_reference(&self) -> bool {
+        self.is_reference
+            && self.entries.is_empty()
+            && self.pointing.is_empty()
+            && self.unread.is_empty()
+    }
 }
 
 /// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.
-pub(super) const READ_TYPES: [&[u8]; 12] = [
+pub(super) const READ_TYPES: [&[u8]; 13] = [
     b"LINE",
     b"LWPOLYLINE",
     b"POLYLINE",
     b"ARC",
     b"CIRCLE",
+    b"ELLIPSE",
     b"SPLINE",
     b"SOLID",
     b"TRACE",

@@ -22,7 +22,7 @@ use super::{Refusal, Sheet, SheetLayer, Source};
 /// The drawing with the sheet's layers and marks in it, as the bytes of a DXF file.
 ///
 /// Every byte of the drawing stays, in its order, except for two things: the value of `$HANDSEED`, and the marks of an
-/// earlier run, which are those entities of ENTITIES that lie on layers whose names begin with `TAUT-`; the new ones
+/// earlier run, which are those entities of ENTITIES that lie on [`OWN_LAYERS`](super::OWN_LAYERS); the new ones
 /// are put in instead. Inserting the same sheet into the result gives the same bytes again. Layers that the drawing has
 /// already, in whatever letter case, keep their records. A mark that shows nothing (a line of one point, a circle or
 /// text without size, an empty text) is left out.

@@ -20,7 +20,7 @@ use sight::refuse_at_sight;
 
 pub(super) use recovery::PassedOver;
 
-pub(super) use super::found::{BlockEntry, Entry, OWN_LAYER, READ_TYPES, Scan};
+pub(super) use super::found::{BlockEntry, Entry, READ_TYPES, Scan};
 
 /// Scans a drawing: strictly, and where that fails once more, passing over what makes no sense.
 ///
@@ -160,7 +160,7 @@ impl<'a> Pass<'a> {
             (b"$EXTMIN", 20) => self.scan.extents[0][1] = tag.float(),
             (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
             (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
-            (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
+            (b"$INSUNITS", 70) => self.scan.insunits = Some(tag.integer()),
             (b"$MEASUREMENT", 70) => self.scan.measurement = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.

@@ -31,14 +31,15 @@ impl Spline {
             && knots.len() == points.len() + order
             && rising
             && knots.get(degree) < knots.get(points.len());
-        if !sound {
+        let weighed = weights.len() == points.len() && weights.iter().all(|weight| *weight > 0.0);
+        if !sound || !(weights.is_empty() || weighed) {
             return None;
         }
-        let even = weights.len() != points.len() || weights.iter().any(|w| *w <= 0.0);
-        let poles = points.iter().enumerate().map(|(index, point)| {
-            let weight = if even { 1.0 } else { weights[index] };
-            [point.x * weight, point.y * weight, weight]
-        });
+        let weights = weights.iter().copied().chain(std::iter::repeat(1.0));
+        let poles = points
+            .iter()
+            .zip(weights)
+            .map(|(point, weight)| [point.x * weight, point.y * weight, weight]);
         Some(Self {
             degree,
             knots: knots.to_vec(),
@@ -53,17 +54,39 @@ impl Spline {
         leaving: Option<Coord<f64>>,
         arriving: Option<Coord<f64>>,
     ) -> Option<Self> {
-        let mut kept: Vec<Coord<f64>> = Vec::with_capacity(points.len());
-        for point in points {
-            if kept.last() != Some(point) {
-                kept.push(*point);
-            }
-        }
-        let spans: Vec<f64> = kept
-            .windows(2)
-            .map(|pair| (pair[1].x - pair[0].x).hypot(pair[1].y - pair[0].y))
-            .collect();
+        let kept = apart(points);
+        let spans = spans_of(&kept);
         let slopes = slopes(&kept, &spans, leaving, arriving)?;
+        Self::of_cubics(&kept, &spans, &slopes)
+    }
+
+    /// The same around and back to the first point, curvature continuous there too.
+    pub(super) fn around(points: &[Coord<f64>]) -> Option<Self> {
+        let mut ring = apart(points);
+        if ring.len() > 1 && ring.first() == ring.last() {
+            ring.pop();
+        }
+        let count = ring.len();
+        if count < 3 {
+            return Self::through(points, None, None);
+        }
+        // What the ends of an open curve do fades by a factor of some four from point to point: so many more on either
+        // side leave nothing of it.
+        let turns = FADING.div_ceil(count);
+        let long: Vec<_> = ring
+            .iter()
+            .cycle()
+            .take((2 * turns + 1) * count + 1)
+            .copied()
+            .collect();
+        let slopes = slopes(&long, &spans_of(&long), None, None)?;
+        let from = turns * count;
+        let own = from..=from + count;
+        let kept = long.get(own.clone())?;
+        Self::of_cubics(kept, &spans_of(kept), slopes.get(own)?)
+    }
+
+    fn of_cubics(kept: &[Coord<f64>], spans: &[f64], slopes: &[Coord<f64>]) -> Option<Self> {
         // Each cubic by its Bézier points; knots of multiplicity three join them.
         let first = *kept.first()?;
         let mut poles = vec![[first.x, first.y, 1.0]];
@@ -167,6 +190,23 @@ impl Spline {
         };
         (point, slope)
     }
+}
+
+/// Points beyond the ends of a curve that its middle no longer feels: 4⁻²⁴ is 4e-15.
+const FADING: usize = 24;
+
+/// The points without those that stand on the one before.
+fn apart(points: &[Coord<f64>]) -> Vec<Coord<f64>> {
+    let mut kept = points.to_vec();
+    kept.dedup();
+    kept
+}
+
+fn spans_of(points: &[Coord<f64>]) -> Vec<f64> {
+    let pairs = points.windows(2);
+    pairs
+        .map(|pair| (pair[1].x - pair[0].x).hypot(pair[1].y - pair[0].y))
+        .collect()
 }
 
 #[expect(clippy::cast_precision_loss, reason = "a degree of at most 11")]
@@ -310,6 +350,48 @@ mod tests {
             Spline::through(&points, Some(at(2.0, 0.0)), Some(at(1.0, 0.0))).expect("a spline");
         assert!(level.at(0.0).1.y.abs() < 1e-12);
         assert!(!level.is_closed());
+    }
+
+    #[test]
+    fn a_closed_curve_comes_back_without_a_corner_or_a_jump_of_curvature() {
+        let ring = [
+            at(0.0, 0.0),
+            at(9.0, 1.0),
+            at(8.0, 6.0),
+            at(3.0, 9.0),
+            at(-1.0, 4.0),
+        ];
+        let with_first_again = [&ring[..], &ring[..1]].concat();
+        for points in [&ring[..], &with_first_again] {
+            let spline = Spline::around(points).expect("a spline");
+            assert!(spline.is_closed());
+            let path = path(&spline);
+            for point in ring {
+                assert!(path.project(point).is_some_and(|p| p.distance_m < 1e-9));
+            }
+            let (from, to) = spline.domain();
+            let curvature = |t: f64, step: f64| (spline.at(t + step).1 - spline.at(t).1) / step;
+            let (leaving, arriving) = (spline.at(from).1, spline.at(to).1);
+            assert!(distance_m(leaving, arriving) < 1e-9);
+            let jump = curvature(from, 1e-5) - curvature(to, -1e-5);
+            assert!(jump.x.hypot(jump.y) < 1e-4, "{jump:?}");
+        }
+    }
+
+    #[test]
+    fn weights_are_whole_or_none() {
+        let points = [at(1.0, 0.0), at(1.0, 1.0), at(0.0, 1.0)];
+        let knots = [0.0, 0.0, 0.0, 1.0, 1.0, 1.0];
+        let with = |weights: &[f64]| Spline::new(2, &knots, &points, weights);
+        assert!(with(&[]).is_some() && with(&[1.0, 0.7, 1.0]).is_some());
+        for weights in [
+            &[1.0, 0.0, 1.0][..],
+            &[1.0, -1.0, 1.0],
+            &[1.0, 0.7],
+            &[1.0; 4],
+        ] {
+            assert_eq!(with(weights), None);
+        }
     }
 
     #[test]

@@ -26,6 +26,8 @@ pub(super) struct Losses {
     pub(super) damaged: Vec<Damage>,
     /// Strings whose characters had to be guessed.
     pub(super) guessed: usize,
+    /// Records that may lack something and are read as they are.
+    pub(super) doubtful: Vec<Damage>,
 }
 
 const WINDOW_BYTES: usize = 1 << 20;
@@ -51,6 +53,7 @@ pub(super) fn read_records<'e>(
     }
     load(source, &mut cleaner, &window, losses, &mut hand_on);
     losses.guessed += cleaner.guessed;
+    losses.doubtful.append(&mut cleaner.doubtful);
 }
 
 /// Loads one window; if the library fails or loses a record, each half of it, down to the record.

@@ -12,3 +12,4 @@ mod numbers;
 mod program;
 mod room;
 mod twisted;
+mod unread;

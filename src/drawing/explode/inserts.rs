@@ -5,7 +5,6 @@ use geo::Coord;
 
 use super::{Frame, Gatherer, Place};
 use crate::drawing::Insert;
-use crate::drawing::clean::NOWHERE;
 use crate::drawing::convert::{TOO_FAR, is_near};
 use crate::drawing::lettering::{attribute_content, normal, of_attribute};
 use crate::drawing::placing::Placing;
@@ -205,7 +204,7 @@ impl Gatherer<'_> {
         for (attribute, own) in insert.attributes().zip(&record.kept.attributes) {
             let named = own.layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(seen.layer), Some(seen.layer));
-            if attribute.flags & NOWHERE != 0 || !self.book.wants(layer) {
+            if own.nowhere || !self.book.wants(layer) {
                 continue;
             }
             let place = Place {

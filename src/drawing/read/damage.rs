@@ -2,6 +2,7 @@
 
 use std::fmt::Write as _;
 
+use crate::drawing::clean::Damage;
 use crate::drawing::explode::{MOST_TOLD, and_more};
 use crate::drawing::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE};
 use crate::drawing::scan::Scan;
@@ -41,8 +42,14 @@ pub(super) fn passed_over_finding(scan: &Scan) -> Option<Finding> {
 }
 
 pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> {
+    let mut findings = told(source, &losses.damaged, "is left out");
+    findings.extend(told(source, &losses.doubtful, "is read as it stands"));
+    findings
+}
+
+fn told(source: &Source, damages: &[Damage], what: &str) -> Vec<Finding> {
     let scan = &source.scan;
-    let shown = losses.damaged.iter().take(MOST_TOLD);
+    let shown = damages.iter().take(MOST_TOLD);
     let mut findings: Vec<Finding> = shown
         .map(|damage| {
             let layer = scan.layers.get(damage.kept.layer as usize);
@@ -55,7 +62,7 @@ pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> 
                 &ENTITY_DAMAGED,
                 Level::Error,
                 format!(
-                    "{} {handle} on layer {layer} is left out: at {}, {}",
+                    "{} {handle} on layer {layer} {what}: at {}, {}",
                     damage.type_name,
                     place_in_words(&source.bytes, scan.form, damage.at),
                     damage.found
@@ -64,11 +71,7 @@ pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> 
             )
         })
         .collect();
-    findings.extend(and_more(
-        &ENTITY_DAMAGED,
-        Level::Error,
-        losses.damaged.len(),
-    ));
+    findings.extend(and_more(&ENTITY_DAMAGED, Level::Error, damages.len()));
     findings
 }
 

@@ -98,6 +98,8 @@ impl<'a> Pass<'a> {
                 self.scan.blocks.push(BlockEntry {
                     name: plain_name(&name),
                     base: base_of(&self.gathered),
+                    // 4: attached, 8: laid over.
+                    is_reference: self.gathered.flags & (4 | 8) != 0,
                     ..BlockEntry::default()
                 });
                 self.block_open = true;
@@ -187,6 +189,11 @@ impl<'a> Pass<'a> {
             {
                 entry.number = to_u32(block.pointing.len()) + 1;
                 block.pointing.push(entry);
+            } else if let Some(block) = self.scan.blocks.last_mut()
+                && !broken
+                && !is_form
+            {
+                *block.unread.entry((layer, held.type_id)).or_default() += 1;
             }
             return;
         }

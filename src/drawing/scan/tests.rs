@@ -32,14 +32,17 @@ fn one_pass_finds_layers_sections_and_handles() {
         "{HEADER}{TABLES}0 SECTION 2 ENTITIES
          0 LINE 5 A0 330 1C 8 slab 10 1.0 20 2.0 11 3.0 21 4.0
          0 TEXT 5 2a1 102 {{ACAD 330 9999 102 }} 8 New 67 1 1 x
-         0 POLYLINE 5 A2 8 taut-x 66 1 0 VERTEX 5 300 8 0 0 SEQEND 5 301 8 0
+         0 POLYLINE 5 A2 8 taut-table 66 1 0 VERTEX 5 300 8 0 0 SEQEND 5 301 8 0
          0 LINE 5 A3 8 New 0 ENDSEC 0 EOF"
     ));
     let scan = scan(&bytes).expect("read");
-    assert_eq!((scan.version.as_str(), scan.insunits), ("AC1015", Some(6)));
+    assert_eq!(
+        (scan.version.as_str(), scan.insunits),
+        ("AC1015", Some(Some(6)))
+    );
     assert_eq!((scan.line_end, scan.code_width), ("\r\n", 3));
     let names: Vec<_> = scan.layers.iter().map(|l| l.name.as_str()).collect();
-    assert_eq!(names, ["0", "Slab", "New", "taut-x"]);
+    assert_eq!(names, ["0", "Slab", "New", "taut-table"]);
     assert!(scan.layers[1].off() && scan.layers[1].frozen());
     assert_eq!(scan.zero_layer_pointers[0].as_deref(), Some("F"));
     assert!(scan.layers_have_handles && scan.uses_handles);
