@@ -1,10 +1,15 @@
 //! Pieces that meet end to end, put together: the same for tendons and for outlines.
 
+mod fan;
+#[cfg(test)]
+mod tests;
+
 use geo::Coord;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
 use crate::geometry::{Path, distance_m, turn_rad};
+use fan::Fan;
 
 /// How ends may be joined.
 #[derive(Debug, Clone, Copy)]
@@ -50,9 +55,8 @@ pub(super) struct Meeting {
     pub(super) left: usize,
 }
 
-/// Smooth enough to be told apart from what merely meets, and how much better it must be than the next best, radians.
+/// Smooth enough to be told apart from what merely meets, radians.
 const SMOOTH_RAD: f64 = 0.26;
-const CLEARLY_RAD: f64 = 0.35;
 
 /// Joins pieces whose ends meet. Two ends join unless the turn is too sharp or `is_stop` says that something ends here;
 /// of more than two, only those that go on smoothly into one another beyond doubt.
@@ -181,39 +185,6 @@ fn join(
     left
 }
 
-/// The ends of one node by their headings, so that what goes on from an end is found without trying all others.
-struct Fan(Vec<(f64, usize)>);
-
-impl Fan {
-    fn of(node: &[usize], ends: &[Option<(Coord<f64>, f64)>]) -> Self {
-        let headings = node.iter().filter_map(|&end| Some((ends[end]?.1, end)));
-        let mut fan: Vec<(f64, usize)> = headings.map(|(out, end)| (turn_rad(out), end)).collect();
-        fan.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
-        Self(fan)
-    }
-
-    /// The place in the fan of the end that the one at a place goes on into with the least turn, and that turn, where
-    /// every other turn is clearly greater.
-    fn clear_partner(&self, at: usize, turn: impl Fn(usize, usize) -> f64) -> Option<(usize, f64)> {
-        let fan = &self.0;
-        let count = fan.len();
-        let onward = turn_rad(fan[at].0 + std::f64::consts::PI);
-        let there = fan.partition_point(|(heading, _)| *heading < onward);
-        // The end itself may be among the three on either side, and two must be left to be compared.
-        let reach = 3.min(count);
-        let mut near: Vec<(f64, usize)> = (0..2 * reach)
-            .map(|step| (there + count + step - reach) % count)
-            .filter(|&other| other != at)
-            .map(|other| (turn(fan[at].1, fan[other].1), other))
-            .collect();
-        near.sort_by(|a, b| a.0.total_cmp(&b.0).then(a.1.cmp(&b.1)));
-        near.dedup_by_key(|(_, other)| *other);
-        let &(here, partner) = near.first()?;
-        let next = near.get(1).map_or(f64::INFINITY, |(turn, _)| *turn);
-        (next > here + CLEARLY_RAD).then_some((partner, here))
-    }
-}
-
 /// Follows the links from every free end, then around what is left.
 fn walk(pieces: usize, link: &[Option<usize>]) -> Vec<Chain> {
     let mut used = vec![false; pieces];
@@ -250,154 +221,5 @@ pub(super) fn returns(path: &Path, gap_m: f64) -> bool {
     match (path.start(), path.end()) {
         (Some(start), Some(end)) => distance_m(start, end) <= gap_m,
         _ => false,
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    const JOINT: Joint = Joint {
-        gap_m: 0.01,
-        turn_rad: 1.6,
-    };
-
-    fn line(points: &[(f64, f64)]) -> Path {
-        let points: Vec<Coord<f64>> = points.iter().map(|&(x, y)| Coord { x, y }).collect();
-        Path::through(&points)
-    }
-
-    fn lengths(paths: &[Path]) -> (Vec<i64>, usize) {
-        let refs: Vec<&Path> = paths.iter().collect();
-        let (chains, meetings) = chains(&refs, JOINT, |_| false);
-        let mut lengths: Vec<i64> = chains
-            .iter()
-            .map(|chain| {
-                #[expect(clippy::cast_possible_truncation, reason = "lengths of a few metres")]
-                let rounded = chain.path(&refs).length_m().round() as i64;
-                rounded
-            })
-            .collect();
-        lengths.sort_unstable();
-        (lengths, meetings.len())
-    }
-
-    #[test]
-    fn pieces_join_in_any_order_and_direction() {
-        let (found, meetings) = lengths(&[
-            line(&[(10.0, 0.0), (5.0, 0.0)]),
-            line(&[(10.005, 0.0), (17.0, 1.0)]),
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![17], 0));
-    }
-
-    #[test]
-    fn neighbours_that_stand_apart_stay_apart() {
-        let (found, _) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.3, 0.0), (10.3, 0.0)]),
-        ]);
-        assert_eq!(found, vec![5, 5]);
-    }
-
-    #[test]
-    fn of_three_ends_only_the_smooth_pair_joins() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.1)]),
-            line(&[(5.0, 0.0), (5.0, 3.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![3, 12], 1));
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.1)]),
-            line(&[(5.0, 0.0), (9.0, -0.1)]),
-        ]);
-        assert_eq!((found, meetings), (vec![4, 5, 7], 1));
-    }
-
-    #[test]
-    fn a_crossing_of_four_ends_gives_two_lines() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.0)]),
-            line(&[(5.0, 0.0), (5.0, 3.0)]),
-            line(&[(5.0, -4.0), (5.0, 0.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![7, 12], 0));
-    }
-
-    #[test]
-    fn of_thousands_of_ends_in_one_place_pairs_are_found_without_trying_all() {
-        let spoke = |turn: f64| {
-            let (sin, cos) = turn.to_radians().sin_cos();
-            line(&[(0.0, 0.0), (9.0 * cos, 9.0 * sin)])
-        };
-        let few = [0.0, 60.0, 120.0, 180.0, 225.0].map(spoke);
-        assert_eq!(lengths(&few), (vec![9, 9, 9, 18], 1));
-        let many: Vec<Path> = (0..20_000).map(|n| spoke(f64::from(n) * 0.018)).collect();
-        let begun = std::time::Instant::now();
-        let (found, meetings) = lengths(&many);
-        // At the hub, and all around the rim.
-        assert_eq!((found.len(), meetings), (20_000, 2));
-        assert!(begun.elapsed().as_secs() < 30, "{:?}", begun.elapsed());
-    }
-
-    #[test]
-    fn the_partners_are_those_that_trying_all_would_find() {
-        let mut seed = 1_u32;
-        let mut roll = |below: u32| {
-            seed = seed.wrapping_mul(1_664_525).wrapping_add(1_013_904_223);
-            (seed >> 8) % below
-        };
-        let mut joined = 0;
-        for _ in 0..500 {
-            let count = 3 + roll(7);
-            let ends: Vec<_> = (0..count)
-                .map(|_| Some((Coord::default(), f64::from(roll(72)) * 0.0873)))
-                .collect();
-            let node: Vec<usize> = (0..ends.len()).collect();
-            let mut link = vec![None; ends.len()];
-            join(&node, &ends, JOINT, &mut link);
-            let turn = |a: usize, b: usize| {
-                let [a, b] = [a, b].map(|end| ends[end].map_or(0.0, |(_, out)| out));
-                turn_rad(a - b - std::f64::consts::PI).abs()
-            };
-            for &a in &node {
-                let partner = node.iter().copied().find(|&b| {
-                    let others = node.iter().filter(|&&other| other != a && other != b);
-                    let rivals = others.flat_map(|&other| [turn(a, other), turn(b, other)]);
-                    let next = rivals.fold(f64::INFINITY, f64::min);
-                    a != b && turn(a, b) < SMOOTH_RAD && next > turn(a, b) + CLEARLY_RAD
-                });
-                assert_eq!(link[a], partner, "{ends:?}");
-                joined += usize::from(partner.is_some());
-            }
-        }
-        assert!(joined > 100, "{joined}");
-    }
-
-    #[test]
-    fn a_line_does_not_double_back() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (0.0, 0.1)]),
-        ]);
-        assert_eq!((found, meetings), (vec![5, 5], 1));
-    }
-
-    #[test]
-    fn a_ring_closes() {
-        let paths = [
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 4.0), (5.0, 0.0)]),
-            line(&[(5.0, 4.0), (0.0, 4.0), (0.0, 0.0)]),
-        ];
-        let refs: Vec<&Path> = paths.iter().collect();
-        let (chains, _) = chains(&refs, JOINT, |_| false);
-        assert_eq!(chains.len(), 1);
-        assert!(chains[0].closed);
-        assert!((chains[0].path(&refs).length_m() - 18.0).abs() < 1e-9);
     }
 }
