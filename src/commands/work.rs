@@ -130,7 +130,7 @@ fn tendon_layers(plan: &Path, source: &Source, job: &Job) -> Result<Vec<Layer>, 
     Err(Refused::NoTendonLayer {
         path: plan.to_owned(),
         near: nearest(&all, &patterns)
-            .map(|(layer, pattern)| format!("\nlayer {layer} comes nearest, to {pattern}"))
+            .map(|(layer, pattern)| format!("\nlayer {} comes nearest, to {pattern}", short(layer)))
             .unwrap_or_default(),
         patterns: patterns.join(", "),
         layers: listed(&all),
@@ -145,8 +145,22 @@ fn references(source: &Source) -> String {
         [] => String::new(),
         names => format!(
             "\nexternal references whose contents are not in the drawing: {}; bind them if the tendons are drawn there",
-            names.join(", ")
+            names
+                .iter()
+                .take(8)
+                .map(|name| short(name))
+                .collect::<Vec<_>>()
+                .join(", ")
         ),
+    }
+}
+
+/// A name that a message may hold.
+fn short(name: &str) -> String {
+    const LONGEST: usize = 80;
+    match name.char_indices().nth(LONGEST) {
+        Some((end, _)) => format!("{}...", name.get(..end).unwrap_or(name)),
+        None => name.to_owned(),
     }
 }
 
@@ -166,7 +180,7 @@ fn listed(layers: &[Layer]) -> String {
                 .iter()
                 .map(|(name, count)| format!("{count} {name}"))
                 .collect();
-            format!("{} ({})", layer.name, counts.join(", "))
+            format!("{} ({})", short(&layer.name), counts.join(", "))
         })
         .collect();
     if filled.len() > SHOWN {

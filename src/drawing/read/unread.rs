@@ -99,7 +99,9 @@ pub(super) fn references_finding(source: &Source, book: &Book<'_>) -> Option<Fin
 /// Names in one line, the first few of many.
 fn listed(names: &[&str]) -> String {
     const SHOWN: usize = 8;
-    let mut words: Vec<String> = names.iter().take(SHOWN).map(|n| (*n).to_owned()).collect();
+    const LONGEST: usize = 80;
+    let short = |name: &&str| name.chars().take(LONGEST).collect();
+    let mut words: Vec<String> = names.iter().take(SHOWN).map(short).collect();
     if let Some(more) = names.len().checked_sub(SHOWN).filter(|more| *more > 0) {
         words.push(format!("and {more} more"));
     }

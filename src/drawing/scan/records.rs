@@ -180,7 +180,7 @@ impl<'a> Pass<'a> {
                 block.entries.push(entry);
                 for name in self.attribute_layers.drain(..) {
                     let own_layer = self.names.id(name, &self.scan.code_page);
-                    if own_layer != layer && !block.attribute_layers.contains(&own_layer) {
+                    if own_layer != layer && block.attribute_layers.last() != Some(&own_layer) {
                         block.attribute_layers.push(own_layer);
                     }
                 }
