@@ -38,7 +38,7 @@ pub use read::{read, read_within};
 pub use refusal::Refusal;
 pub use rules::READING_RULES;
 pub use sheet::{Align, Drawn, Ink, Mark, OWN_LAYERS, Sheet, SheetLayer};
-pub use source::{Source, open};
+pub use source::{Source, open, open_within};
 pub use types::{
     Dot, Drawing, Insert, Layer, Leader, Look, Shape, ShapeKind, Text, UnitFrom, Unsaid,
 };

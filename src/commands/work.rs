@@ -66,7 +66,7 @@ pub(super) fn open(plan: &Path, job: &Job) -> Result<Source, Refused> {
     caps(job)
         .admit_file(files::size(plan)?)
         .map_err(|refusal| refused(plan, refusal))?;
-    drawing::open(files::read(plan)?).map_err(|refusal| refused(plan, refusal))
+    drawing::open_within(files::read(plan)?, &caps(job)).map_err(|refusal| refused(plan, refusal))
 }
 
 /// Reads the wanted layers of a drawing, unless they hold more than the job allows.

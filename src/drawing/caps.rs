@@ -53,6 +53,28 @@ impl Caps {
         self.admit(needed, || format!("the file has {} MB", in_mb(bytes)))
     }
 
+    /// How many names of layers and types there is room for beside a file of so many bytes.
+    pub(super) fn most_names(&self, file: usize) -> usize {
+        let file = PER_FILE_BYTE.saturating_mul(file as u64);
+        let room = self.memory_mb.saturating_mul(MB).saturating_sub(file);
+        usize::try_from(room / PER_NAME).unwrap_or(usize::MAX)
+    }
+
+    /// The refusal of a file of so many bytes in which that many names stand before one of them.
+    pub(super) fn names_refused(&self, file: usize, at: usize) -> Refusal {
+        let most = self.most_names(file) as u64;
+        let file = file as u64;
+        // As many for each byte that is still to come.
+        let all = most.saturating_mul(file) / (at as u64).max(1);
+        let names = PER_NAME.saturating_mul(all.max(most).saturating_add(1));
+        let needed = PER_FILE_BYTE.saturating_mul(file).saturating_add(names);
+        Refusal::TooLarge {
+            what: format!("there are more than {most} names of layers and types"),
+            needed_mb: in_mb(needed).max(self.memory_mb.saturating_add(1)),
+            allowed_mb: self.memory_mb,
+        }
+    }
+
     /// Admits the reading of these layers before any entity is.
     ///
     /// # Errors

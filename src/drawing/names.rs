@@ -91,6 +91,11 @@ impl<'a> LayerNames<'a> {
         id
     }
 
+    /// How many there are.
+    pub(super) fn len(&self) -> usize {
+        self.layers.len()
+    }
+
     /// Whether the layer is this tool's own.
     pub(super) fn is_own(&self, id: u32) -> bool {
         self.own.get(id as usize).copied().unwrap_or(false)
@@ -138,6 +143,11 @@ impl<'a> Types<'a> {
             self.lately.put(name, short);
         }
         id
+    }
+
+    /// How many there are.
+    pub(super) fn len(&self) -> usize {
+        self.names.len()
     }
 
     /// Whether the number is of this name.

@@ -8,6 +8,7 @@ mod sight;
 #[cfg(test)]
 mod tests;
 
+use super::caps::Caps;
 use super::code_page::CodePage;
 use super::counts::Counts;
 use super::handles::{Handles, is_pointer, names_a_handle, parse_handle};
@@ -25,14 +26,18 @@ pub(super) use super::found::{BlockEntry, Entry, READ_TYPES, Scan};
 /// Scans a drawing: strictly, and where that fails once more, passing over what makes no sense.
 ///
 /// # Errors
-/// A [`Refusal`] for what is no DXF, or is cut short or damaged so that no entity of model space is left.
-pub(super) fn scan(bytes: &[u8]) -> Result<Scan, Refusal> {
+/// A [`Refusal`] for what is no DXF, is cut short or damaged so that no entity of model space is left, or holds more names
+/// than the caps have room for.
+pub(super) fn scan(bytes: &[u8], caps: &Caps) -> Result<Scan, Refusal> {
     refuse_at_sight(bytes)?;
-    strict(bytes).or_else(|refusal| recover(bytes, refusal))
+    strict(bytes, caps).or_else(|refusal| match refusal {
+        Refusal::TooLarge { .. } => Err(refusal),
+        _ => recover(bytes, caps, refusal),
+    })
 }
 
-fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
-    let mut pass = Pass::new(bytes);
+fn strict(bytes: &[u8], caps: &Caps) -> Result<Scan, Refusal> {
+    let mut pass = Pass::new(bytes, caps);
     let mut tags = Tags::new(bytes);
     while let Some(tag) = tags.next() {
         tag.and_then(|tag| pass.take(&tag))
@@ -48,6 +53,8 @@ fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
 )]
 struct Pass<'a> {
     bytes: &'a [u8],
+    caps: Caps,
+    most_names: usize,
     scan: Scan,
     section: Section,
     record: Record,
@@ -77,9 +84,11 @@ struct Pass<'a> {
 }
 
 impl<'a> Pass<'a> {
-    fn new(bytes: &'a [u8]) -> Self {
+    fn new(bytes: &'a [u8], caps: &Caps) -> Self {
         Self {
             bytes,
+            caps: *caps,
+            most_names: caps.most_names(bytes.len()),
             scan: Scan::new(bytes),
             section: Section::Outside,
             record: Record::None,

@@ -3,6 +3,7 @@
 use std::collections::{BTreeMap, BTreeSet};
 
 use super::Layer;
+use super::caps::Caps;
 use super::refusal::Refusal;
 use super::scan::{Scan, scan};
 use crate::patterns::folded;
@@ -19,7 +20,15 @@ pub struct Source {
 /// # Errors
 /// A [`Refusal`] for what is no DXF, is cut short, or holds a line that is no group code.
 pub fn open(bytes: Vec<u8>) -> Result<Source, Refusal> {
-    let scan = scan(&bytes)?;
+    open_within(bytes, &Caps::default())
+}
+
+/// The same within these caps.
+///
+/// # Errors
+/// As [`open`], and for more names of layers and types than there is room for.
+pub fn open_within(bytes: Vec<u8>, caps: &Caps) -> Result<Source, Refusal> {
+    let scan = scan(&bytes, caps)?;
     Ok(Source { bytes, scan })
 }
 

@@ -1,6 +1,6 @@
 //! Room that small files ask for: taken from `limits.memory_mb` where it is taken, however it is asked for.
 
-use tautplan::drawing::{Caps, Drawing, Purpose, Wanted, open, read_within};
+use tautplan::drawing::{Caps, Drawing, Purpose, Wanted, open, open_within, read_within};
 use tautplan::finding::Finding;
 
 use crate::drawings::with_blocks;
@@ -115,6 +115,22 @@ fn records_of_blocks_and_names_are_counted_before_they_are_read() {
             .expect_err(what)
             .to_string();
         assert!(refusal.contains(words), "{what}: {refusal}");
+    }
+}
+
+#[test]
+fn names_without_end_are_refused_while_they_are_met() {
+    let layers: String = (0..100_000).map(|n| format!("0 LINE 8 L{n} ")).collect();
+    let types: String = (0..100_000).map(|n| format!("0 T{n} 8 L ")).collect();
+    for tags in [layers, types] {
+        let bytes = with_blocks("", &tags);
+        assert!(open(bytes.clone()).is_ok());
+        for bytes in [bytes.clone(), [b"oops\n", &bytes[..]].concat()] {
+            let refusal = open_within(bytes, &CAPS).map(|_| ()).expect_err("refused");
+            let said = refusal.to_string();
+            assert!(said.contains("names of layers and types"), "{said}");
+            assert!(said.contains("limits.memory_mb allows 50"), "{said}");
+        }
     }
 }
 

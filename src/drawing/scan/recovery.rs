@@ -2,6 +2,7 @@
 
 use std::ops::Range;
 
+use super::super::caps::Caps;
 use super::super::resume::{handles_in, resume, resume_in_header};
 use super::super::tags::{Bad, BadTag, Tags, place_in_words};
 use super::{Pass, Record, Refusal, Scan, Section};
@@ -28,8 +29,8 @@ pub(in crate::drawing) struct PassedOver {
 }
 
 /// Reads what can be read of a drawing that was refused; the refusal stands if there is no entity of model space in it.
-pub(super) fn recover(bytes: &[u8], refusal: Refusal) -> Result<Scan, Refusal> {
-    let mut pass = Pass::new(bytes);
+pub(super) fn recover(bytes: &[u8], caps: &Caps, refusal: Refusal) -> Result<Scan, Refusal> {
+    let mut pass = Pass::new(bytes, caps);
     pass.forgives = true;
     let mut tags = Tags::new(bytes);
     while let Some(tag) = tags.next() {
@@ -40,6 +41,9 @@ pub(super) fn recover(bytes: &[u8], refusal: Refusal) -> Result<Scan, Refusal> {
             },
             Err(bad) => bad,
         };
+        if bad.kind == Bad::Names {
+            return Err(pass.refusal(&bad));
+        }
         if bad.kind == Bad::Cut {
             // The end of the file, which is found to be in the wrong place when the pass is finished.
             break;
@@ -179,6 +183,7 @@ impl Pass<'_> {
         let place = place_in_words(self.bytes, self.scan.form, bad.at);
         match bad.kind {
             Bad::Unclosed => Refusal::Unclosed { place },
+            Bad::Names => self.caps.names_refused(self.bytes.len(), bad.at),
             _ if self.sections == 0 => Refusal::NotDxf {
                 found: bad.found.clone(),
             },

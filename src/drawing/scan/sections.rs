@@ -37,6 +37,13 @@ impl<'a> Pass<'a> {
                 found: shown(name),
             });
         }
+        if self.names.len() + self.types.len() > self.most_names {
+            return Err(BadTag {
+                at: tag.start,
+                kind: Bad::Names,
+                found: self.most_names.to_string(),
+            });
+        }
         let in_entities = matches!(self.section, Section::Entities | Section::Blocks);
         if in_entities
             && let Some(head) = self.sequence
