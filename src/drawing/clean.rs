@@ -265,10 +265,11 @@ impl<'a> Cleaner<'a> {
             let found = "there is no group 2, and a block's name was expected".to_owned();
             return Err((record.type_name, record.start, found));
         }
-        if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
-            if let Some(own) = kept.attributes.last_mut() {
-                own.nowhere = true;
-            }
+        if record.type_name == b"ATTRIB"
+            && !(record.has(10) && record.has(20))
+            && let Some(own) = kept.attributes.last_mut()
+        {
+            own.nowhere = true;
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.

@@ -3,6 +3,7 @@
 use std::collections::BTreeMap;
 use std::ops::Range;
 
+use super::Unsaid;
 use super::code_page::CodePage;
 use super::lettering::Style;
 use super::names::ScannedLayer;
@@ -29,8 +30,8 @@ pub(super) struct Scan {
     pub(super) code_width: usize,
     /// How strings turn into characters.
     pub(super) code_page: CodePage,
-    /// `$INSUNITS`, if the header has it; `None` within for what is no whole number.
-    pub(super) insunits: Option<Option<i64>>,
+    /// `$INSUNITS`, or why there is none.
+    pub(super) insunits: Result<i64, Unsaid>,
     /// `$MEASUREMENT`.
     pub(super) measurement: Option<i64>,
     /// `$EXTMIN` and `$EXTMAX`: x and y as the last program to save the drawing left them, drawing units.
@@ -198,7 +199,7 @@ impl Scan {
                 _ => USUAL_WIDTH,
             },
             code_page: CodePage::of("", None),
-            insunits: None,
+            insunits: Err(Unsaid::Absent),
             measurement: None,
             extents: [[None; 2]; 2],
             layers: Vec::new(),

@@ -8,6 +8,7 @@ mod sight;
 #[cfg(test)]
 mod tests;
 
+use super::Unsaid;
 use super::caps::Caps;
 use super::code_page::CodePage;
 use super::counts::Counts;
@@ -169,7 +170,9 @@ impl<'a> Pass<'a> {
             (b"$EXTMIN", 20) => self.scan.extents[0][1] = tag.float(),
             (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
             (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
-            (b"$INSUNITS", 70) => self.scan.insunits = Some(tag.integer()),
+            (b"$INSUNITS", 70) => {
+                self.scan.insunits = tag.integer().ok_or(Unsaid::NoNumber);
+            }
             (b"$MEASUREMENT", 70) => self.scan.measurement = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.

@@ -31,6 +31,10 @@ fn held(drawing: &Drawing) -> usize {
     shapes.chain(texts).chain(inserts).chain(leaders).sum()
 }
 
+fn each_of(count: u32, tags: impl Fn(u32) -> String) -> String {
+    (0..count).map(tags).collect::<Vec<_>>().concat()
+}
+
 #[test]
 fn whatever_multiplies_is_cut_where_the_room_ends_and_said() {
     let long = "X".repeat(20_000);
@@ -99,7 +103,7 @@ fn records_of_blocks_and_names_are_counted_before_they_are_read() {
         "0 BLOCK 8 0 2 A 10 0 20 0 {} 0 ENDBLK 8 0",
         format!("{LINE} ").repeat(40_000)
     );
-    let layers: String = (0..100_000).map(|n| format!("0 LINE 8 L{n} ")).collect();
+    let layers = each_of(100_000, |n| format!("0 LINE 8 L{n} "));
     for (what, bytes, words) in [
         (
             "records",
@@ -120,8 +124,8 @@ fn records_of_blocks_and_names_are_counted_before_they_are_read() {
 
 #[test]
 fn names_without_end_are_refused_while_they_are_met() {
-    let layers: String = (0..100_000).map(|n| format!("0 LINE 8 L{n} ")).collect();
-    let types: String = (0..100_000).map(|n| format!("0 T{n} 8 L ")).collect();
+    let layers = each_of(100_000, |n| format!("0 LINE 8 L{n} "));
+    let types = each_of(100_000, |n| format!("0 T{n} 8 L "));
     for tags in [layers, types] {
         let bytes = with_blocks("", &tags);
         assert!(open(bytes.clone()).is_ok());

@@ -38,10 +38,8 @@ pub(super) fn unit_finding(from: UnitFrom) -> Option<Finding> {
 fn in_header(scan: &Scan) -> Result<f64, Unsaid> {
     let over = scan.passed_over.as_ref();
     match scan.insunits {
-        None if over.is_some_and(|over| over.in_header) => Err(Unsaid::Lost),
-        None => Err(Unsaid::Absent),
-        Some(None) => Err(Unsaid::NoNumber),
-        Some(Some(number)) => metres_of(number),
+        Err(Unsaid::Absent) if over.is_some_and(|over| over.in_header) => Err(Unsaid::Lost),
+        said => said.and_then(metres_of),
     }
 }
 

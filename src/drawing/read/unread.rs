@@ -6,7 +6,7 @@ use super::reach::inserted;
 use crate::drawing::explode::{Book, MOST_TOLD, and_more};
 use crate::drawing::leaders::POINTING_TYPES;
 use crate::drawing::rules::{ENTITY_UNREAD, REFERENCE_EMPTY};
-use crate::drawing::scan::READ_TYPES;
+use crate::drawing::scan::{BlockEntry, READ_TYPES};
 use crate::drawing::source::Source;
 use crate::finding::{Finding, Level};
 
@@ -81,7 +81,7 @@ pub(super) fn references_finding(source: &Source, book: &Book<'_>) -> Option<Fin
     }
     let wanted = source.scan.entries.iter().any(|entry| {
         let block = inserted(book, entry).and_then(|block| source.scan.blocks.get(block));
-        block.is_some_and(|block| block.is_absent_reference())
+        block.is_some_and(BlockEntry::is_absent_reference)
             && book.wanted.get(entry.layer as usize) == Some(&true)
     });
     let level = if wanted { Level::Warning } else { Level::Note };

@@ -36,10 +36,7 @@ fn one_pass_finds_layers_sections_and_handles() {
          0 LINE 5 A3 8 New 0 ENDSEC 0 EOF"
     ));
     let scan = scan(&bytes, &Caps::default()).expect("read");
-    assert_eq!(
-        (scan.version.as_str(), scan.insunits),
-        ("AC1015", Some(Some(6)))
-    );
+    assert_eq!((scan.version.as_str(), scan.insunits), ("AC1015", Ok(6)));
     assert_eq!((scan.line_end, scan.code_width), ("\r\n", 3));
     let names: Vec<_> = scan.layers.iter().map(|l| l.name.as_str()).collect();
     assert_eq!(names, ["0", "Slab", "New", "taut-table"]);
