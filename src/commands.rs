@@ -14,6 +14,7 @@ mod work;
 
 pub use refused::Refused;
 
+use crate::finding::{Finding, Level};
 use crate::terminal::Terminal;
 
 /// How a command ended, from best to worst.
@@ -25,6 +26,18 @@ pub enum Outcome {
     Found,
     /// Not done, or not all of it.
     NotDone,
+}
+
+impl Outcome {
+    /// Of something done with these findings.
+    fn of<'f>(findings: impl IntoIterator<Item = &'f Finding>) -> Self {
+        let mut levels = findings.into_iter().map(|finding| finding.level);
+        if levels.any(|level| level == Level::Error) {
+            Self::Found
+        } else {
+            Self::Done
+        }
+    }
 }
 
 impl From<Outcome> for ExitCode {

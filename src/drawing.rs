@@ -19,6 +19,7 @@ mod names;
 mod placing;
 mod read;
 mod refusal;
+mod release;
 mod resume;
 mod rules;
 mod scan;
@@ -36,7 +37,9 @@ pub use insert::{insert, insertion};
 pub use read::{read, read_within};
 pub use refusal::Refusal;
 pub use rules::READING_RULES;
-pub use sheet::{Align, Drawn, Ink, Mark, Sheet, SheetLayer};
-pub use source::{Source, open};
-pub use types::{Dot, Drawing, Insert, Layer, Leader, Look, Shape, ShapeKind, Text, UnitFrom};
+pub use sheet::{Align, Drawn, Ink, Mark, OWN_LAYERS, Sheet, SheetLayer};
+pub use source::{Source, open, open_within};
+pub use types::{
+    Dot, Drawing, Insert, Layer, Leader, Look, Shape, ShapeKind, Text, UnitFrom, Unsaid,
+};
 pub use wanted::Wanted;

@@ -175,7 +175,7 @@ fn attributes_lie_on_their_own_layer_or_on_the_inserts() {
 fn our_own_layers_are_never_read() {
     let (drawing, _) = drawing(
         "",
-        "0 LINE 8 taut-force 10 0 20 0 11 1 21 0 0 LINE 8 B 10 0 20 0 11 1 21 0",
+        "0 LINE 8 taut-table 10 0 20 0 11 1 21 0 0 LINE 8 B 10 0 20 0 11 1 21 0",
     );
     assert_eq!(drawing.shapes.len(), 1);
     assert_eq!(drawing.shapes[0].handle, "#1");

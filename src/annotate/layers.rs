@@ -111,6 +111,7 @@ pub(super) fn inked(layer: &str, ink: Ink, drawn: Drawn) -> Mark {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::drawing::OWN_LAYERS;
 
     #[test]
     fn names_fit_the_oldest_layer_table() {
@@ -124,6 +125,13 @@ mod tests {
                 "{}",
                 layer.name
             );
+        }
+    }
+
+    #[test]
+    fn each_of_them_is_found_again_and_replaced() {
+        for layer in layers() {
+            assert!(OWN_LAYERS.contains(&layer.name.as_str()), "{}", layer.name);
         }
     }
 

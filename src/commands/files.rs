@@ -68,7 +68,7 @@ pub(super) fn prepare(folder: &Path) -> Result<(), Refused> {
     })
 }
 
-/// A file that is complete on disk and has yet to take its name; without one it vanishes.
+/// A file that is written whole and has yet to take its name; without one it vanishes.
 #[derive(Debug)]
 pub(super) struct Nameless {
     path: PathBuf,
@@ -99,7 +99,7 @@ pub(super) fn write<P: AsRef<[u8]>>(
     })
 }
 
-/// Gives these files their names: they are complete on disk before the first is named, so that none is written unless
+/// Gives these files their names: they are written whole before the first is named, so that none is written unless
 /// there is room for all. Should a name then be refused to one, those before it have theirs.
 pub(super) fn name(files: Vec<Nameless>) -> Result<(), Refused> {
     for Nameless { path, file } in files {

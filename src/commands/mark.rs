@@ -9,7 +9,6 @@ use super::files::Nameless;
 use super::job_file::{self, JobFile};
 use super::work::{Work, work};
 use super::{Outcome, Refused, files, refuse};
-use crate::finding::Level;
 use crate::job::Job;
 use crate::terminal::Terminal;
 use crate::{annotate, drawing, report};
@@ -97,12 +96,7 @@ fn mark(
         .collect();
     let summary = report::summary(&done.facts, analysis, job, &names);
     let printed = super::print(&summary, terminal);
-    let grave = analysis
-        .findings
-        .iter()
-        .any(|finding| finding.level == Level::Error);
-    let found = if grave { Outcome::Found } else { Outcome::Done };
-    Ok(found.max(printed))
+    Ok(Outcome::of(&analysis.findings).max(printed))
 }
 
 /// The drawing with the answers on it.

@@ -47,7 +47,7 @@ pub enum Refused {
     },
     /// No layer of the drawing is a tendon layer by the job.
     #[error(
-        "{}: no layer fits the tendon patterns {patterns}\nlayers of the drawing: {layers}{near}\nname the tendon layers in the job file, below [layers], as banded and distributed; `tautplan survey` proposes one", path.display()
+        "{}: no layer fits the tendon patterns {patterns}\nlayers of the drawing: {layers}{near}{references}\nname the tendon layers in the job file, below [layers], as banded and distributed; `tautplan survey` proposes one", path.display()
     )]
     NoTendonLayer {
         /// Which drawing.
@@ -58,16 +58,20 @@ pub enum Refused {
         layers: String,
         /// A layer whose name is close to a pattern, or nothing.
         near: String,
+        /// References whose contents are missing, or nothing.
+        references: String,
     },
     /// Tendon layers, but nothing on them that could be a tendon.
     #[error(
-        "{}: no line on the tendon layers {layers}\nexpected LINE, LWPOLYLINE, POLYLINE, ARC or SPLINE in model space; check that the tendons are on these layers and not in paper space or an external reference", path.display()
+        "{}: no line on the tendon layers {layers}\nexpected LINE, LWPOLYLINE, POLYLINE, ARC or SPLINE in model space; check that the tendons are on these layers and not in paper space or an external reference{references}", path.display()
     )]
     NoTendons {
         /// Which drawing.
         path: PathBuf,
         /// The layers with counts.
         layers: String,
+        /// References whose contents are missing, or nothing.
+        references: String,
     },
     /// The unit gives lengths that no floor has.
     #[error(

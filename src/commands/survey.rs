@@ -51,12 +51,12 @@ pub struct Order {
 
 /// Prints or writes the survey.
 pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
-    let text = match survey(order) {
-        Ok(text) => text,
+    let (text, found) = match survey(order) {
+        Ok(survey) => survey,
         Err(refused) => return refuse(&refused, terminal),
     };
     let Some(path) = &order.out else {
-        return print(&text, terminal);
+        return found.max(print(&text, terminal));
     };
     let written = if files::exists(path) {
         Err(Refused::Exists(path.clone()))
@@ -66,13 +66,13 @@ pub fn run(order: &Order, terminal: &mut Terminal) -> Outcome {
     match written {
         Ok(()) => {
             terminal.progress(&format!("{}: job file proposed", path.display()));
-            Outcome::Done
+            found
         }
         Err(refused) => refuse(&refused, terminal),
     }
 }
 
-fn survey(order: &Order) -> Result<String, Refused> {
+fn survey(order: &Order) -> Result<(String, Outcome), Refused> {
     let job_file = match &order.job {
         Some(path) => job_file::named(path)?,
         None => JobFile::default(),
@@ -118,5 +118,5 @@ fn survey(order: &Order) -> Result<String, Refused> {
     let name = name.to_string_lossy();
     let mut head = words::head(&name, &drawing, &contents, &findings, by_proposal);
     head.extend(left_open::lines(as_read, &contents, by_proposal));
-    Ok(job::file(&head, &proposed))
+    Ok((job::file(&head, &proposed), Outcome::of(&findings)))
 }

@@ -76,7 +76,8 @@ pub(super) fn check(
         );
     let unit = match from {
         UnitFrom::Header => format!("{name} as $INSUNITS of the drawing says"),
-        _ => format!("{name}, since the drawing has no $INSUNITS"),
+        UnitFrom::Assumed(unsaid) => format!("{name}, since {unsaid}"),
+        UnitFrom::Job => name,
     };
     let fits: Vec<String> = sensible(median_m, unit_m)
         .into_iter()

@@ -38,6 +38,7 @@ pub(super) fn work(plan: &Path, job_file: &JobFile) -> Result<Work, Refused> {
         return Err(Refused::NoTendons {
             path: plan.to_owned(),
             layers: listed(&tendon_layers),
+            references: references(&source),
         });
     }
     units::check(plan, &floor.tendons, drawing.unit_m, drawing.unit_from)?;
@@ -65,7 +66,7 @@ pub(super) fn open(plan: &Path, job: &Job) -> Result<Source, Refused> {
     caps(job)
         .admit_file(files::size(plan)?)
         .map_err(|refusal| refused(plan, refusal))?;
-    drawing::open(files::read(plan)?).map_err(|refusal| refused(plan, refusal))
+    drawing::open_within(files::read(plan)?, &caps(job)).map_err(|refusal| refused(plan, refusal))
 }
 
 /// Reads the wanted layers of a drawing, unless they hold more than the job allows.
@@ -129,11 +130,38 @@ fn tendon_layers(plan: &Path, source: &Source, job: &Job) -> Result<Vec<Layer>, 
     Err(Refused::NoTendonLayer {
         path: plan.to_owned(),
         near: nearest(&all, &patterns)
-            .map(|(layer, pattern)| format!("\nlayer {layer} comes nearest, to {pattern}"))
+            .map(|(layer, pattern)| format!("\nlayer {} comes nearest, to {pattern}", short(layer)))
             .unwrap_or_default(),
         patterns: patterns.join(", "),
         layers: listed(&all),
+        references: references(source),
     })
+}
+
+/// References whose contents are not in the drawing, in a line of their own; nothing if there is none.
+fn references(source: &Source) -> String {
+    let absent = source.absent_references();
+    match absent.as_slice() {
+        [] => String::new(),
+        names => format!(
+            "\nexternal references whose contents are not in the drawing: {}; bind them if the tendons are drawn there",
+            names
+                .iter()
+                .take(8)
+                .map(|name| short(name))
+                .collect::<Vec<_>>()
+                .join(", ")
+        ),
+    }
+}
+
+/// A name that a message may hold.
+fn short(name: &str) -> String {
+    const LONGEST: usize = 80;
+    match name.char_indices().nth(LONGEST) {
+        Some((end, _)) => format!("{}...", name.get(..end).unwrap_or(name)),
+        None => name.to_owned(),
+    }
 }
 
 /// Layers with what lies on them, in one line.
@@ -152,7 +180,7 @@ fn listed(layers: &[Layer]) -> String {
                 .iter()
                 .map(|(name, count)| format!("{count} {name}"))
                 .collect();
-            format!("{} ({})", layer.name, counts.join(", "))
+            format!("{} ({})", short(&layer.name), counts.join(", "))
         })
         .collect();
     if filled.len() > SHOWN {

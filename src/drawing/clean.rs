@@ -26,10 +26,9 @@ pub(super) struct Cleaner<'a> {
     kept: Vec<Kept>,
     /// Strings whose characters had to be guessed.
     pub(super) guessed: usize,
+    /// Records that may lack something and are read as they are.
+    pub(super) doubtful: Vec<Damage>,
 }
-
-/// Flag of an attribute without a place; the format itself has no such flag.
-pub(super) const NOWHERE: i32 = 64;
 
 const HEAD: &[u8] = b"0\nSECTION\n2\nENTITIES\n";
 const TAIL: &[u8] = b"0\nENDSEC\n0\nEOF\n";
@@ -44,6 +43,7 @@ impl<'a> Cleaner<'a> {
             stream: HEAD.to_vec(),
             kept: Vec::new(),
             guessed: 0,
+            doubtful: Vec::new(),
         }
     }
 
@@ -97,7 +97,7 @@ impl<'a> Cleaner<'a> {
             let Ok(tag) = tag else { break };
             if tag.code == 0 {
                 if !record.type_name.is_empty() {
-                    self.close(&record)?;
+                    self.close(&record, kept)?;
                 }
                 let first = record.type_name.is_empty();
                 record = Open {
@@ -133,7 +133,7 @@ impl<'a> Cleaner<'a> {
                 .map_err(|found| (record.type_name, tag.start, found))?;
         }
         if !record.type_name.is_empty() && record.type_name != b"SEQEND" {
-            self.close(&record)?;
+            self.close(&record, kept)?;
         }
         if sequence {
             self.line(b"0", b"SEQEND");
@@ -154,6 +154,9 @@ impl<'a> Cleaner<'a> {
             // The second half of an old attribute repeats groups in another sense.
             100 if tag.word() == b"AcDbXrecord" => record.past = true,
             75 if record.type_name == b"MTEXT" => record.columns = true,
+            90 if record.type_name == b"LWPOLYLINE" && !record.in_group && !record.past => {
+                record.announced = tag.integer();
+            }
             _ => {}
         }
         if record.in_group || record.past || tag.code >= 1000 {
@@ -214,17 +217,27 @@ impl<'a> Cleaner<'a> {
                 } else {
                     self.line(tag.code.to_string().as_bytes(), word);
                 }
+                if record.type_name == b"SPLINE" && matches!(tag.code, 20 | 21) {
+                    // The library takes no point without its level.
+                    let level: &[u8] = if tag.code == 20 { b"30" } else { b"31" };
+                    self.line(level, b"0");
+                }
             }
         }
         Ok(())
     }
 
     /// Ends a record: what it must have is there, what contradicts is settled.
-    fn close(&mut self, record: &Open<'a>) -> Result<(), (&'a [u8], usize, String)> {
+    fn close(
+        &mut self,
+        record: &Open<'a>,
+        kept: &mut Kept,
+    ) -> Result<(), (&'a [u8], usize, String)> {
         let needed: &[i32] = match record.type_name {
             b"LINE" => &[10, 20, 11, 21],
             b"ARC" => &[10, 20, 40, 50, 51],
             b"CIRCLE" => &[10, 20, 40],
+            b"ELLIPSE" => &[10, 20, 11, 21, 40],
             b"LWPOLYLINE" | b"VERTEX" | b"SOLID" | b"TRACE" | b"TEXT" | b"ATTDEF" | b"MTEXT"
             | b"INSERT" => &[10, 20],
             _ => &[],
@@ -235,13 +248,28 @@ impl<'a> Cleaner<'a> {
         if let Some(code) = needed.iter().find(|code| !record.has(**code)) {
             return Err((record.type_name, record.start, lacking(*code)));
         }
+        if let Some(announced) = record.announced
+            && (record.vertices + 1..=i64::from(i32::MAX)).contains(&announced)
+        {
+            self.doubtful.push(Damage {
+                kept: kept.clone(),
+                type_name: String::from_utf8_lossy(record.type_name).into_owned(),
+                at: record.start,
+                found: format!(
+                    "group 90 announces {announced} vertices, and there are {}",
+                    record.vertices
+                ),
+            });
+        }
         if record.type_name == b"INSERT" && !record.named {
             let found = "there is no group 2, and a block's name was expected".to_owned();
             return Err((record.type_name, record.start, found));
         }
-        if record.type_name == b"ATTRIB" && !(record.has(10) && record.has(20)) {
-            // Its value counts, but it stands nowhere.
-            self.line(b"70", NOWHERE.to_string().as_bytes());
+        if record.type_name == b"ATTRIB"
+            && !(record.has(10) && record.has(20))
+            && let Some(own) = kept.attributes.last_mut()
+        {
+            own.nowhere = true;
         }
         if record.justified && !(record.has(11) && record.has(21)) {
             // Without an alignment point the insertion point, left on the base line, is all there is.
@@ -272,6 +300,7 @@ impl<'a> Cleaner<'a> {
     /// A string as UTF-8; carets are written so that the library gives them back as they came.
     fn text(&mut self, tag: &Tag<'a>) {
         let (text, guessed) = self.code_page.decode(tag.value);
+        let text = self.code_page.numbered(text);
         self.guessed += usize::from(guessed);
         let _ = writeln!(self.stream, "{}", tag.code);
         for byte in text.bytes() {
@@ -286,7 +315,8 @@ impl<'a> Cleaner<'a> {
     }
 }
 
-fn expected(tag: &Tag<'_>, what: &str) -> String {
+/// What a group holds, in at most so many bytes, and what was expected.
+pub(super) fn expected(tag: &Tag<'_>, what: &str) -> String {
     let word = tag.word();
     let short = word.get(..40).unwrap_or(word).escape_ascii();
     format!(

@@ -2,12 +2,13 @@
 
 use std::f64::consts::TAU;
 
-use dxf::entities::{EntityType, LwPolyline, Polyline, Spline as DxfSpline};
+use dxf::entities::{Ellipse, EntityType, LwPolyline, Polyline, Spline as DxfSpline};
 use geo::Coord;
 
 use super::ShapeKind;
+use super::curves::arcs_along;
 use super::lettering::normal;
-use super::placing::Placing;
+use super::placing::{Placing, across};
 use super::spline::Spline;
 use super::windows::Record;
 use crate::geometry::{Path, Segment};
@@ -104,6 +105,11 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
                 .segments(&piece, TOLERANCE_M, &mut pieces);
             (ShapeKind::Circle, true)
         }
+        EntityType::Ellipse(ellipse) => {
+            ellipse_arc(ellipse, placing, &mut pieces)?;
+            let whole = (ellipse.end_parameter - ellipse.start_parameter).abs() >= TAU - 1e-9;
+            (ShapeKind::Ellipse, whole)
+        }
         EntityType::Solid(_) | EntityType::Trace(_) => {
             filled(&record.entity, placing, &mut pieces);
             (ShapeKind::Solid, true)
@@ -113,7 +119,8 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
             if !is_near(points.map(|point| placing.place(flat(point)))) {
                 return Err(TOO_FAR);
             }
-            let curve = curve_of(spline).ok_or("its points, knots and degree make no curve")?;
+            let curve =
+                curve_of(spline).ok_or("its points, knots, weights and degree make no curve")?;
             curve.segments(placing, TOLERANCE_M, &mut pieces);
             (
                 ShapeKind::Spline,
@@ -138,6 +145,53 @@ pub(super) fn line_of(record: &Record, placing: &Placing) -> Result<Option<Line>
     }
     let closed = flagged || Placing::joins(start, end, SAME_PLACE_M);
     Ok(Some(Line { kind, path, closed }))
+}
+
+/// An ellipse or a part of one, from its start parameter counterclockwise to its end (DXF reference: its points are
+/// `centre + cos t · major axis + sin t · minor axis`, in world axes).
+fn ellipse_arc(
+    ellipse: &Ellipse,
+    placing: &Placing,
+    out: &mut Vec<Segment>,
+) -> Result<(), &'static str> {
+    let major = [
+        ellipse.major_axis.x,
+        ellipse.major_axis.y,
+        ellipse.major_axis.z,
+    ];
+    let ratio = ellipse.minor_axis_ratio;
+    let minor = across(normal(&ellipse.normal), major).map(|part| part * ratio);
+    let from = ellipse.start_parameter;
+    let swept = (ellipse.end_parameter - from).rem_euclid(TAU);
+    let sweep = if swept > 1e-12 { swept } else { TAU };
+    let half_axes = [major, minor].map(|[x, y, z]| (x * x + y * y + z * z).sqrt());
+    if !half_axes
+        .iter()
+        .all(|length| *length > 0.0 && length.is_finite())
+        || !sweep.is_finite()
+    {
+        return Err("one of its axes has no length");
+    }
+    let centre = flat(&ellipse.center);
+    let along = |t: f64| {
+        let (sin, cos) = t.sin_cos();
+        let mixed = |a: f64, b: f64| Coord {
+            x: a * major[0] + b * minor[0],
+            y: a * major[1] + b * minor[1],
+        };
+        (
+            placing.place(centre + mixed(cos, sin)),
+            placing.carry(mixed(-sin, cos)),
+        )
+    };
+    let breaks: Vec<f64> = (0..=8)
+        .map(|eighth| from + sweep * f64::from(eighth) / 8.0)
+        .collect();
+    if !is_near(breaks.iter().map(|t| along(*t).0)) {
+        return Err(TOO_FAR);
+    }
+    arcs_along(&along, &breaks, TOLERANCE_M, out);
+    Ok(())
 }
 
 fn sound_radius(radius: f64) -> Result<f64, &'static str> {
@@ -221,6 +275,9 @@ fn curve_of(spline: &DxfSpline) -> Option<Spline> {
     let degree = usize::try_from(spline.degree_of_curve).ok()?;
     Spline::new(degree, &spline.knot_values, &points, &spline.weight_values).or_else(|| {
         let fits: Vec<_> = spline.fit_points.iter().map(flat).collect();
+        if spline.flags & 1 != 0 {
+            return Spline::around(&fits);
+        }
         let direction = |tangent: &dxf::Point| {
             let direction = flat(tangent);
             (direction.x != 0.0 || direction.y != 0.0).then_some(direction)

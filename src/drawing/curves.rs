@@ -12,8 +12,10 @@ const HALVINGS: u32 = 12;
 /// Arcs for a curve, and more for each of its stretches, beyond which it is no longer halved: no drawn curve comes near.
 const MOST_ARCS: usize = 4096;
 const MOST_ARCS_A_STRETCH: usize = 32;
+/// How far arcs may leave a large curve, of its size: a millimetre in a kilometre.
+const OF_SIZE: f64 = 1e-6;
 
-/// Draws a curve by arcs no further than `tolerance_m` from it. `breaks` are parameters in rising order, the first and
+/// Draws a curve by arcs no further from it than `tolerance_m` or a millionth of its size, whichever is more. `breaks` are parameters in rising order, the first and
 /// last being the curve's ends; between them the curve must be smooth, and at them its direction may jump.
 pub(super) fn arcs_along(
     curve: &Curve<'_>,
@@ -21,6 +23,7 @@ pub(super) fn arcs_along(
     tolerance_m: f64,
     out: &mut Vec<Segment>,
 ) {
+    let tolerance_m = tolerance_m.max(OF_SIZE * size_m(curve, breaks));
     let mut held: Option<Coord<f64>> = None;
     let most = out.len() + MOST_ARCS + MOST_ARCS_A_STRETCH * breaks.len();
     for (index, pair) in breaks.windows(2).enumerate() {
@@ -47,6 +50,24 @@ pub(super) fn arcs_along(
             out,
         );
     }
+}
+
+/// The larger side of a box around points at the breaks and midway between them, metres.
+fn size_m(curve: &Curve<'_>, breaks: &[f64]) -> f64 {
+    let midway = breaks.windows(2).filter_map(|pair| match *pair {
+        [from, to] => Some(f64::midpoint(from, to)),
+        _ => None,
+    });
+    let places = breaks.iter().copied().chain(midway).map(|t| curve(t).0);
+    let (mut low, mut high) = ([f64::INFINITY; 2], [f64::NEG_INFINITY; 2]);
+    for place in places {
+        for (axis, value) in [place.x, place.y].into_iter().enumerate() {
+            low[axis] = low[axis].min(value);
+            high[axis] = high[axis].max(value);
+        }
+    }
+    let size = (high[0] - low[0]).max(high[1] - low[1]);
+    if size.is_finite() { size } else { 0.0 }
 }
 
 fn same_direction(a: Coord<f64>, b: Coord<f64>) -> bool {
@@ -138,6 +159,7 @@ fn unit(v: Coord<f64>) -> Option<Coord<f64>> {
 mod tests {
     use super::*;
     use crate::geometry::Path;
+    use std::f64::consts::TAU;
 
     #[test]
     fn a_sine_wave_is_followed_within_the_tolerance_and_without_corners() {
@@ -156,6 +178,26 @@ mod tests {
             }
             assert!(path.segments().len() < 400);
         }
+    }
+
+    #[test]
+    fn a_curve_of_the_size_of_the_moon_is_few_arcs() {
+        let curve = |t: f64| {
+            let (sin, cos) = t.sin_cos();
+            let point = Coord {
+                x: 4e8 * cos,
+                y: 2e8 * sin,
+            };
+            let slope = Coord {
+                x: -4e8 * sin,
+                y: 2e8 * cos,
+            };
+            (point, slope)
+        };
+        let breaks: Vec<f64> = (0..=8).map(|n| f64::from(n) * TAU / 8.0).collect();
+        let mut out = Vec::new();
+        arcs_along(&curve, &breaks, 1e-3, &mut out);
+        assert!((16..512).contains(&out.len()), "{}", out.len());
     }
 
     #[test]

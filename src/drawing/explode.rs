@@ -19,10 +19,14 @@ use super::placing::Placing;
 use super::windows::Record;
 use super::{Drawing, Look, Shape, Text};
 use crate::finding::{Finding, Level, Rule};
+use crate::geometry::Segment;
 
 pub(super) use book::Book;
 use telling::unseen;
 pub(super) use telling::{MOST_TOLD, and_more};
+
+/// Bytes of a plan line's piece.
+const PIECE: usize = size_of::<Segment>();
 
 /// Where a record is placed.
 #[derive(Debug, Clone, Copy)]
@@ -46,6 +50,8 @@ struct Place {
     layer: u32,
     look: Look,
     within: Option<usize>,
+    /// Whether room was taken for it when the layers were counted.
+    counted: bool,
 }
 
 /// Gathers what the records hold.
@@ -154,6 +160,7 @@ impl<'b> Gatherer<'b> {
             layer,
             look: self.looks.seen(&record.kept.worn, layer, frame.look),
             within: frame.within,
+            counted: frame.handle.is_none(),
         };
         match &record.entity {
             EntityType::Text(text) => {
@@ -165,9 +172,11 @@ impl<'b> Gatherer<'b> {
                 self.text(lettering, worn, handle, false);
             }
             _ => match line_of(record, &frame.placing) {
+                Ok(Some(line))
+                    if !self.afford(worn, handle, line.path.segments().len() * PIECE) => {}
                 Ok(Some(line)) => self.drawing.shapes.push(Shape {
                     handle: handle.to_owned(),
-                    layer: self.book.layer_name(layer),
+                    layer: self.book.layer_name(layer).to_owned(),
                     look: worn.look,
                     within: worn.within,
                     kind: line.kind,
@@ -197,9 +206,12 @@ impl<'b> Gatherer<'b> {
             self.damaged(place.layer, handle, TOO_FAR);
             return;
         }
+        if !self.afford(place, handle, lettering.content.len()) {
+            return;
+        }
         self.drawing.texts.push(Text {
             handle: handle.to_owned(),
-            layer: self.book.layer_name(place.layer),
+            layer: self.book.layer_name(place.layer).to_owned(),
             look: place.look,
             within: place.within,
             content: lettering.content,

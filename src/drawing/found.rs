@@ -3,14 +3,12 @@
 use std::collections::BTreeMap;
 use std::ops::Range;
 
+use super::Unsaid;
 use super::code_page::CodePage;
 use super::lettering::Style;
 use super::names::ScannedLayer;
 use super::scan::PassedOver;
 use super::tags::{Form, form_of};
-
-/// Layers of this tool's own begin so, in any letter case; they are never read and their entities are replaced.
-pub(super) const OWN_LAYER: &str = "TAUT-";
 
 /// What one pass over a drawing finds. Offsets are of the file's bytes; those called `_start` and `_end` point at the
 /// first byte of a `0` code line, where something can be inserted.
@@ -22,6 +20,8 @@ pub(super) const OWN_LAYER: &str = "TAUT-";
 pub(super) struct Scan {
     /// `$ACADVER`, such as `AC1027`; empty if the header has none.
     pub(super) version: String,
+    /// Number of the release; where the header names none, R2000 for a drawing with subclass markers, else 0.
+    pub(super) release: u32,
     /// ASCII or binary.
     pub(super) form: Form,
     /// Line end of the first line: `\n` or `\r\n`.
@@ -30,8 +30,8 @@ pub(super) struct Scan {
     pub(super) code_width: usize,
     /// How strings turn into characters.
     pub(super) code_page: CodePage,
-    /// `$INSUNITS`.
-    pub(super) insunits: Option<i64>,
+    /// `$INSUNITS`, or why there is none.
+    pub(super) insunits: Result<i64, Unsaid>,
     /// `$MEASUREMENT`.
     pub(super) measurement: Option<i64>,
     /// `$EXTMIN` and `$EXTMAX`: x and y as the last program to save the drawing left them, drawing units.
@@ -123,23 +123,39 @@ pub(super) struct Entry {
 pub(super) struct BlockEntry {
     /// Name, decoded.
     pub(super) name: String,
-    /// Base point, drawing units.
-    pub(super) base: [f64; 2],
+    /// Base point, drawing units; the origin where none is written. `None` where its record is damaged: what the block
+    /// holds then lies nowhere.
+    pub(super) base: Option<[f64; 2]>,
     /// Entities that can be read.
     pub(super) entries: Vec<Entry>,
     /// Layers of its inserts' attributes, where they are not the insert's.
     pub(super) attribute_layers: Vec<u32>,
     /// Leaders and points.
     pub(super) pointing: Vec<Entry>,
+    /// Whether it stands for another drawing.
+    pub(super) is_reference: bool,
+    /// What is of types that are not read: how many by number of the layer and of the type.
+    pub(super) unread: BTreeMap<(u32, usize), usize>,
+}
+
+impl BlockEntry {
+    /// Whether it stands for another drawing of which nothing is here.
+    pub(super) fn is_absent_reference(&self) -> bool {
+        self.is_reference
+            && self.entries.is_empty()
+            && self.pointing.is_empty()
+            && self.unread.is_empty()
+    }
 }
 
 /// Entity types that are read; of ATTDEF, those of blocks that are constant, since these alone are seen.
-pub(super) const READ_TYPES: [&[u8]; 12] = [
+pub(super) const READ_TYPES: [&[u8]; 13] = [
     b"LINE",
     b"LWPOLYLINE",
     b"POLYLINE",
     b"ARC",
     b"CIRCLE",
+    b"ELLIPSE",
     b"SPLINE",
     b"SOLID",
     b"TRACE",
@@ -148,6 +164,10 @@ pub(super) const READ_TYPES: [&[u8]; 12] = [
     b"INSERT",
     b"ATTDEF",
 ];
+
+/// Columns that programs write codes in, at most and as a rule.
+const WIDEST: usize = 6;
+const USUAL_WIDTH: usize = 3;
 
 impl Scan {
     /// Whole entities of model space, of whatever type.
@@ -163,17 +183,23 @@ impl Scan {
         let line = memchr::memchr(b'\n', rest).map_or(rest, |length| &rest[..length]);
         let code = line.strip_suffix(b"\r").unwrap_or(line);
         let padded = code.first().is_some_and(|b| *b == b' ');
+        let width = code.trim_ascii_end().len();
         Self {
             version: String::new(),
+            release: 0,
             form,
             line_end: if line.len() == code.len() {
                 "\n"
             } else {
                 "\r\n"
             },
-            code_width: if padded { code.len() } else { 0 },
+            code_width: match width {
+                _ if !padded => 0,
+                0..=WIDEST => width,
+                _ => USUAL_WIDTH,
+            },
             code_page: CodePage::of("", None),
-            insunits: None,
+            insunits: Err(Unsaid::Absent),
             measurement: None,
             extents: [[None; 2]; 2],
             layers: Vec::new(),

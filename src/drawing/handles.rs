@@ -23,6 +23,18 @@ pub(super) fn parse_handle(word: &[u8]) -> Option<u64> {
     Some(number)
 }
 
+/// Whether a group's value is a handle, or a pointer to a record.
+#[inline]
+pub(super) fn names_a_handle(code: i32) -> bool {
+    matches!(code, 5 | 105) || is_pointer(code)
+}
+
+/// Whether a group's value is a pointer to a record; of the owners (330 to 339) most are.
+#[inline]
+pub(super) fn is_pointer(code: i32) -> bool {
+    matches!(code, 320..=369 | 390..=399 | 480 | 481 | 1005)
+}
+
 /// What a pass has met so far.
 #[derive(Debug, Default)]
 pub(super) struct Handles {
@@ -58,6 +70,12 @@ impl Handles {
         if let Some(handle) = parse_handle(word) {
             self.open = self.open.max(handle);
         }
+    }
+
+    /// Takes what may be handles in a stretch that is passed over: nothing new may have one of them.
+    pub(super) fn passed_over(&mut self, handles: &[u64]) {
+        let greatest = handles.iter().copied().max().unwrap_or(0);
+        self.greatest = self.greatest.max(greatest);
     }
 
     /// Closes a record that is no entity.

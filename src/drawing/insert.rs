@@ -22,7 +22,7 @@ use super::{Refusal, Sheet, SheetLayer, Source};
 /// The drawing with the sheet's layers and marks in it, as the bytes of a DXF file.
 ///
 /// Every byte of the drawing stays, in its order, except for two things: the value of `$HANDSEED`, and the marks of an
-/// earlier run, which are those entities of ENTITIES that lie on layers whose names begin with `TAUT-`; the new ones
+/// earlier run, which are those entities of ENTITIES that lie on [`OWN_LAYERS`](super::OWN_LAYERS); the new ones
 /// are put in instead. Inserting the same sheet into the result gives the same bytes again. Layers that the drawing has
 /// already, in whatever letter case, keep their records. A mark that shows nothing (a line of one point, a circle or
 /// text without size, an empty text) is left out.
@@ -48,7 +48,7 @@ pub fn insertion<'a>(
         form: scan.form,
         line_end: scan.line_end,
         code_width: scan.code_width,
-        edition: Edition::of(&scan.version),
+        edition: Edition::of(scan.release),
     };
     let lacking = lacking_layers(scan, sheet);
     let mut supply = supply(
@@ -158,10 +158,12 @@ fn supply(bytes: &[u8], scan: &Scan, count: u64) -> Supply {
     if !scan.uses_handles {
         return Supply::none();
     }
+    let passed_over = scan.passed_over.as_ref();
+    let passed_over = passed_over.map_or(&[][..], |over| &over.handles);
     let own_least = scan.own_handles.map(|(least, _)| least);
     known(scan)
         .first_above(count)
-        .or_else(|| first_in_gap(bytes, &scan.own_marks, own_least, count))
+        .or_else(|| first_in_gap(bytes, &scan.own_marks, passed_over, own_least, count))
         .map_or(Supply::none(), Supply::from)
 }
 

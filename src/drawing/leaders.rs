@@ -5,7 +5,7 @@ use dxf::enums::AttachmentPoint;
 use dxf::{Point, Vector};
 use geo::Coord;
 
-use super::clean::{Damage, Kept, Worn};
+use super::clean::{Damage, Kept, Worn, expected};
 use super::handles::parse_handle;
 use super::scan::Entry;
 use super::source::Source;
@@ -87,7 +87,7 @@ fn pointing(
     let mut handle = None;
     let mut worn = Worn::default();
     let mut in_group = false;
-    for tag in Tags::within(&source.bytes, scan.form, entry.start..entry.end) {
+    for tag in Tags::within(&source.bytes, scan.form, entry.start..entry.end).forgiving() {
         let Ok(tag) = tag else { break };
         match tag.code {
             0 if record.type_name.is_empty() => record.type_name = tag.word(),
@@ -103,7 +103,6 @@ fn pointing(
                     text.into_owned()
                 };
                 if record.take(&tag, &mut decode).is_none() {
-                    let word = String::from_utf8_lossy(tag.word()).into_owned();
                     return Err(Box::new(Damage {
                         kept: Kept {
                             layer: entry.layer,
@@ -114,10 +113,7 @@ fn pointing(
                         },
                         type_name: String::from_utf8_lossy(record.type_name).into_owned(),
                         at: tag.start,
-                        found: format!(
-                            "group {} holds {word:?}, and a finite number was expected",
-                            tag.code
-                        ),
+                        found: expected(&tag, "a finite number"),
                     }));
                 }
             }

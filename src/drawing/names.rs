@@ -4,7 +4,8 @@ use std::collections::HashMap;
 
 use super::code_page::CodePage;
 use super::leaders::POINTING_TYPES;
-use super::scan::{OWN_LAYER, READ_TYPES};
+use super::scan::READ_TYPES;
+use super::sheet::OWN_LAYERS;
 use super::text_decode::plain_name;
 use crate::patterns::folded;
 
@@ -42,10 +43,9 @@ impl ScannedLayer {
     }
 }
 
-/// Whether a layer of this name is this tool's own.
+/// Whether a layer of this name is this tool's own, in any letter case.
 pub(super) fn is_own(name: &str) -> bool {
-    name.get(..OWN_LAYER.len())
-        .is_some_and(|head| head.eq_ignore_ascii_case(OWN_LAYER))
+    OWN_LAYERS.iter().any(|own| own.eq_ignore_ascii_case(name))
 }
 
 /// Layer names and what is known of each layer.
@@ -89,6 +89,11 @@ impl<'a> LayerNames<'a> {
         }
         self.by_bytes.insert(raw, id);
         id
+    }
+
+    /// How many there are.
+    pub(super) fn len(&self) -> usize {
+        self.layers.len()
     }
 
     /// Whether the layer is this tool's own.
@@ -138,6 +143,11 @@ impl<'a> Types<'a> {
             self.lately.put(name, short);
         }
         id
+    }
+
+    /// How many there are.
+    pub(super) fn len(&self) -> usize {
+        self.names.len()
     }
 
     /// Whether the number is of this name.

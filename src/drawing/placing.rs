@@ -181,6 +181,12 @@ impl Placing {
     }
 }
 
+/// The vector at right angles to a unit of the first and to the second, as long as the second where they are at right
+/// angles themselves.
+pub(super) fn across(normal: [f64; 3], vector: [f64; 3]) -> [f64; 3] {
+    cross(unit(normal), vector)
+}
+
 fn cross(a: [f64; 3], b: [f64; 3]) -> [f64; 3] {
     [
         a[1] * b[2] - a[2] * b[1],

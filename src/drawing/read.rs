@@ -3,6 +3,7 @@
 mod damage;
 mod reach;
 mod unit;
+mod unread;
 
 use geo::Coord;
 
@@ -24,6 +25,7 @@ use reach::{
     top_entries, wanted_pointing,
 };
 use unit::{unit_finding, unit_of};
+use unread::{references_finding, unread_findings};
 
 /// Reads the wanted layers of a drawing's model space, blocks exploded, in metres. `unit` is what the job says of the
 /// drawing's unit, which goes before the header's word. What could not be read is among the findings.
@@ -76,7 +78,11 @@ pub fn read_within(
     };
     drawing.extent = extent_of(scan, unit_m);
     drawing.layers = source.layers();
-    let mut findings: Vec<Finding> = unit_finding(scan, unit_from).into_iter().collect();
+    let mut findings: Vec<Finding> = unit_finding(unit_from).into_iter().collect();
+    if wanted.chooses() {
+        findings.extend(unread_findings(source, &book, &needed));
+    }
+    findings.extend(references_finding(source, &book));
     findings.extend(passed_over_finding(scan));
     findings.extend(damage_findings(source, &losses));
     findings.append(&mut of_blocks);

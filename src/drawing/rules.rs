@@ -11,7 +11,7 @@ pub(super) static DRAWING_DAMAGED: Rule = Rule {
 /// An entity that could not be read.
 pub(super) static ENTITY_DAMAGED: Rule = Rule {
     name: "entity-damaged",
-    meaning: "An entity on a layer that is read holds a value that is no finite number, lacks a coordinate, or lies beyond a million kilometres; it is left out.",
+    meaning: "An entity on a layer that is read holds a value that is no finite number, lacks a coordinate, or lies beyond a million kilometres, and is left out; or it has fewer vertices than it announces, and is read as it stands.",
 };
 
 /// Entities that are not shown.
@@ -56,8 +56,20 @@ pub(super) static TEXT_CODE_PAGE: Rule = Rule {
     meaning: "Texts hold characters beyond ASCII that the drawing's code page does not settle; they were read as Windows-1252.",
 };
 
+/// Entities of types that are not read.
+pub(super) static ENTITY_UNREAD: Rule = Rule {
+    name: "entity-unread",
+    meaning: "Entities on a layer that the job names are of a type that is not read, such as HATCH or MLINE.",
+};
+
+/// References that are not there.
+pub(super) static REFERENCE_EMPTY: Rule = Rule {
+    name: "reference-empty",
+    meaning: "The drawing inserts an external reference and does not hold its contents; nothing of it is read.",
+};
+
 /// Every rule of reading.
-pub static READING_RULES: [&Rule; 9] = [
+pub static READING_RULES: [&Rule; 11] = [
     &DRAWING_DAMAGED,
     &ENTITY_DAMAGED,
     &ENTITY_INVISIBLE,
@@ -67,4 +79,6 @@ pub static READING_RULES: [&Rule; 9] = [
     &BLOCK_TOO_MANY,
     &BLOCK_MISSING,
     &TEXT_CODE_PAGE,
+    &ENTITY_UNREAD,
+    &REFERENCE_EMPTY,
 ];

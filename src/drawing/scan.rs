@@ -8,9 +8,11 @@ mod sight;
 #[cfg(test)]
 mod tests;
 
+use super::Unsaid;
+use super::caps::Caps;
 use super::code_page::CodePage;
 use super::counts::Counts;
-use super::handles::{Handles, parse_handle};
+use super::handles::{Handles, is_pointer, names_a_handle, parse_handle};
 use super::names::{LayerNames, Types};
 use super::refusal::Refusal;
 use super::tags::{BadTag, Tag, Tags};
@@ -20,19 +22,23 @@ use sight::refuse_at_sight;
 
 pub(super) use recovery::PassedOver;
 
-pub(super) use super::found::{BlockEntry, Entry, OWN_LAYER, READ_TYPES, Scan};
+pub(super) use super::found::{BlockEntry, Entry, READ_TYPES, Scan};
 
 /// Scans a drawing: strictly, and where that fails once more, passing over what makes no sense.
 ///
 /// # Errors
-/// A [`Refusal`] for what is no DXF, or is cut short or damaged so that no entity of model space is left.
-pub(super) fn scan(bytes: &[u8]) -> Result<Scan, Refusal> {
+/// A [`Refusal`] for what is no DXF, is cut short or damaged so that no entity of model space is left, or holds more names
+/// than the caps have room for.
+pub(super) fn scan(bytes: &[u8], caps: &Caps) -> Result<Scan, Refusal> {
     refuse_at_sight(bytes)?;
-    strict(bytes).or_else(|refusal| recover(bytes, refusal))
+    strict(bytes, caps).or_else(|refusal| match refusal {
+        Refusal::TooLarge { .. } => Err(refusal),
+        _ => recover(bytes, caps, refusal),
+    })
 }
 
-fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
-    let mut pass = Pass::new(bytes);
+fn strict(bytes: &[u8], caps: &Caps) -> Result<Scan, Refusal> {
+    let mut pass = Pass::new(bytes, caps);
     let mut tags = Tags::new(bytes);
     while let Some(tag) = tags.next() {
         tag.and_then(|tag| pass.take(&tag))
@@ -48,6 +54,8 @@ fn strict(bytes: &[u8]) -> Result<Scan, Refusal> {
 )]
 struct Pass<'a> {
     bytes: &'a [u8],
+    caps: Caps,
+    most_names: usize,
     scan: Scan,
     section: Section,
     record: Record,
@@ -77,9 +85,11 @@ struct Pass<'a> {
 }
 
 impl<'a> Pass<'a> {
-    fn new(bytes: &'a [u8]) -> Self {
+    fn new(bytes: &'a [u8], caps: &Caps) -> Self {
         Self {
             bytes,
+            caps: *caps,
+            most_names: caps.most_names(bytes.len()),
             scan: Scan::new(bytes),
             section: Section::Outside,
             record: Record::None,
@@ -134,10 +144,8 @@ impl<'a> Pass<'a> {
             return;
         }
         let of_use = |code| {
-            matches!(
-                code,
-                0 | 2 | 5 | 6 | 8 | 62 | 66 | 67 | 70 | 101 | 102 | 105 | 320..=369 | 390..=399 | 480 | 481 | 999 | 1005
-            )
+            matches!(code, 0 | 2 | 6 | 8 | 62 | 66 | 67 | 70 | 101 | 102 | 999)
+                || names_a_handle(code)
         };
         if let Some(end) = tags.pass_over(|code| !of_use(code)) {
             self.scan.tags_end = end;
@@ -152,15 +160,19 @@ impl<'a> Pass<'a> {
         match (self.variable, tag.code) {
             (b"$ACADVER", 1) => {
                 self.scan.version = String::from_utf8_lossy(tag.word()).to_ascii_uppercase();
+                self.settle_code_page();
             }
             (b"$DWGCODEPAGE", 3) => {
                 self.code_page_name = Some(String::from_utf8_lossy(tag.word()).into_owned());
+                self.settle_code_page();
             }
             (b"$EXTMIN", 10) => self.scan.extents[0][0] = tag.float(),
             (b"$EXTMIN", 20) => self.scan.extents[0][1] = tag.float(),
             (b"$EXTMAX", 10) => self.scan.extents[1][0] = tag.float(),
             (b"$EXTMAX", 20) => self.scan.extents[1][1] = tag.float(),
-            (b"$INSUNITS", 70) => self.scan.insunits = tag.integer(),
+            (b"$INSUNITS", 70) => {
+                self.scan.insunits = tag.integer().ok_or(Unsaid::NoNumber);
+            }
             (b"$MEASUREMENT", 70) => self.scan.measurement = tag.integer(),
             (b"$HANDSEED", 5) => {
                 // An unreadable seed stands for none, but its place is where a good one belongs.
@@ -171,6 +183,9 @@ impl<'a> Pass<'a> {
             }
             _ => {}
         }
+    }
+
+    fn settle_code_page(&mut self) {
         self.scan.code_page = CodePage::of(&self.scan.version, self.code_page_name.as_deref());
     }
 
@@ -179,9 +194,9 @@ impl<'a> Pass<'a> {
         match tag.code {
             5 if self.record != Record::Dimstyle => self.handles.own(tag.word()),
             105 => self.handles.own(tag.word()),
-            320..=369 | 390..=399 | 480 | 481 | 1005 => self.handles.pointer(tag.word()),
             101 => self.embedded = true,
             102 => self.in_group = tag.word().starts_with(b"{"),
+            code if is_pointer(code) => self.handles.pointer(tag.word()),
             _ => {}
         }
         if self.record == Record::None || self.in_group || self.embedded || tag.code >= 1000 {
@@ -204,8 +219,11 @@ impl<'a> Pass<'a> {
             5 if held.handle.is_none() => held.handle = Some(tag.word()),
             6 if self.record == Record::Layer => held.linetype = Some(tag.word()),
             8 if held.layer.is_none() => held.layer = Some(tag.word()),
-            10 => held.base[0] = tag.float().unwrap_or(0.0),
-            20 => held.base[1] = tag.float().unwrap_or(0.0),
+            10 | 20 => {
+                let number = tag.float();
+                held.bad_base |= number.is_none();
+                held.base[usize::from(tag.code == 20)] = number;
+            }
             41 => held.style.width_factor = tag.float().unwrap_or(1.0),
             50 => held.style.oblique_deg = tag.float().unwrap_or(0.0),
             62 => held.colour = tag.integer(),

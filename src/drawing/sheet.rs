@@ -2,6 +2,23 @@
 
 use geo::Coord;
 
+/// Layers of this tool's own: all that marks lie on, now or in any earlier version. They are never read, and what lies on
+/// them in model space is replaced. A user's layer that is merely named alike is none of them.
+pub const OWN_LAYERS: [&str; 12] = [
+    "TAUT-FORCE-JACKING",
+    "TAUT-FORCE-JACKING-TEXT",
+    "TAUT-FORCE-LOCKOFF",
+    "TAUT-FORCE-LOCKOFF-TEXT",
+    "TAUT-FORCE-TRANSFER",
+    "TAUT-FORCE-TRANSFER-TEXT",
+    "TAUT-FORCE-SERVICE",
+    "TAUT-FORCE-SERVICE-TEXT",
+    "TAUT-EXTENSION",
+    "TAUT-PROFILE",
+    "TAUT-FINDING",
+    "TAUT-TABLE",
+];
+
 /// Everything to insert into one drawing.
 #[derive(Debug, Clone, Default, PartialEq)]
 pub struct Sheet {
@@ -14,7 +31,7 @@ pub struct Sheet {
 /// A layer to insert.
 #[derive(Debug, Clone, PartialEq)]
 pub struct SheetLayer {
-    /// Name: at most 31 characters of `A-Z 0-9 - _ $`, as R12 demands.
+    /// Name, one of [`OWN_LAYERS`]: at most 31 characters of `A-Z 0-9 - _ $`, as R12 demands.
     pub name: String,
     /// Colour of what has no colour of its own.
     pub ink: Ink,

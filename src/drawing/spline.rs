@@ -1,5 +1,9 @@
 //! SPLINE entities: rational B-splines by their control points, or a smooth curve through fit points.
 
+mod fitted;
+#[cfg(test)]
+mod tests;
+
 use geo::Coord;
 
 use crate::geometry::Segment;
@@ -31,59 +35,19 @@ impl Spline {
             && knots.len() == points.len() + order
             && rising
             && knots.get(degree) < knots.get(points.len());
-        if !sound {
+        let weighed = weights.len() == points.len() && weights.iter().all(|weight| *weight > 0.0);
+        if !sound || !(weights.is_empty() || weighed) {
             return None;
         }
-        let even = weights.len() != points.len() || weights.iter().any(|w| *w <= 0.0);
-        let poles = points.iter().enumerate().map(|(index, point)| {
-            let weight = if even { 1.0 } else { weights[index] };
-            [point.x * weight, point.y * weight, weight]
-        });
+        let weights = weights.iter().copied().chain(std::iter::repeat(1.0));
+        let poles = points
+            .iter()
+            .zip(weights)
+            .map(|(point, weight)| [point.x * weight, point.y * weight, weight]);
         Some(Self {
             degree,
             knots: knots.to_vec(),
             poles: poles.collect(),
-        })
-    }
-
-    /// The curve through fit points: piecewise cubic, curvature continuous, spaced by chord length; straight ends
-    /// where no end direction is given.
-    pub(super) fn through(
-        points: &[Coord<f64>],
-        leaving: Option<Coord<f64>>,
-        arriving: Option<Coord<f64>>,
-    ) -> Option<Self> {
-        let mut kept: Vec<Coord<f64>> = Vec::with_capacity(points.len());
-        for point in points {
-            if kept.last() != Some(point) {
-                kept.push(*point);
-            }
-        }
-        let spans: Vec<f64> = kept
-            .windows(2)
-            .map(|pair| (pair[1].x - pair[0].x).hypot(pair[1].y - pair[0].y))
-            .collect();
-        let slopes = slopes(&kept, &spans, leaving, arriving)?;
-        // Each cubic by its Bézier points; knots of multiplicity three join them.
-        let first = *kept.first()?;
-        let mut poles = vec![[first.x, first.y, 1.0]];
-        let mut knots = vec![0.0; 4];
-        let mut length = 0.0;
-        for (index, span) in spans.iter().enumerate() {
-            let (from, to) = (kept[index], kept[index + 1]);
-            let third = span / 3.0;
-            let (leave, arrive) = (slopes[index], slopes[index + 1]);
-            poles.push([from.x + third * leave.x, from.y + third * leave.y, 1.0]);
-            poles.push([to.x - third * arrive.x, to.y - third * arrive.y, 1.0]);
-            poles.push([to.x, to.y, 1.0]);
-            length += span;
-            knots.extend([length; 3]);
-        }
-        knots.push(length);
-        Some(Self {
-            degree: 3,
-            knots,
-            poles,
         })
     }
 
@@ -172,152 +136,4 @@ impl Spline {
 #[expect(clippy::cast_precision_loss, reason = "a degree of at most 11")]
 fn to_f64(degree: usize) -> f64 {
     degree as f64
-}
-
-/// Slopes at the points of a curvature-continuous cubic (tridiagonal system, Thomas's elimination).
-fn slopes(
-    points: &[Coord<f64>],
-    spans: &[f64],
-    leaving: Option<Coord<f64>>,
-    arriving: Option<Coord<f64>>,
-) -> Option<Vec<Coord<f64>>> {
-    let count = points.len();
-    if count < 2 {
-        return None;
-    }
-    let chord = |at: usize| (points[at + 1] - points[at]) / spans[at];
-    let unit = |v: Coord<f64>| {
-        let length = v.x.hypot(v.y);
-        (length > 0.0).then(|| v / length)
-    };
-    // Rows: lower·m[i−1] + main·m[i] + upper·m[i+1] = right.
-    let mut main = vec![0.0; count];
-    let mut upper = vec![0.0; count];
-    let mut right = vec![Coord { x: 0.0, y: 0.0 }; count];
-    if let Some(direction) = leaving.and_then(unit) {
-        (main[0], right[0]) = (1.0, direction);
-    } else {
-        (main[0], upper[0], right[0]) = (2.0, 1.0, chord(0) * 3.0);
-    }
-    for at in 1..count {
-        let (lower, own, above, wanted) = if at + 1 < count {
-            let (before, after) = (spans[at - 1], spans[at]);
-            let wanted = (chord(at - 1) * after + chord(at) * before) * 3.0;
-            (after, 2.0 * (before + after), before, wanted)
-        } else {
-            match arriving.and_then(unit) {
-                Some(direction) => (0.0, 1.0, 0.0, direction),
-                None => (1.0, 2.0, 0.0, chord(at - 1) * 3.0),
-            }
-        };
-        let factor = lower / main[at - 1];
-        main[at] = own - factor * upper[at - 1];
-        upper[at] = above;
-        right[at] = wanted - right[at - 1] * factor;
-    }
-    let mut slopes = right;
-    slopes[count - 1] = slopes[count - 1] / main[count - 1];
-    for at in (0..count - 1).rev() {
-        slopes[at] = (slopes[at] - slopes[at + 1] * upper[at]) / main[at];
-    }
-    Some(slopes)
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-    use crate::geometry::{Path, distance_m};
-
-    fn at(x: f64, y: f64) -> Coord<f64> {
-        Coord { x, y }
-    }
-
-    fn path(spline: &Spline) -> Path {
-        let mut out = Vec::new();
-        spline.segments(&Placing::scaled(1.0), 1e-3, &mut out);
-        Path::new(out)
-    }
-
-    #[test]
-    fn a_rational_quadratic_is_an_exact_quarter_circle() {
-        let spline = Spline::new(
-            2,
-            &[0.0, 0.0, 0.0, 1.0, 1.0, 1.0],
-            &[at(1.0, 0.0), at(1.0, 1.0), at(0.0, 1.0)],
-            &[1.0, std::f64::consts::FRAC_1_SQRT_2, 1.0],
-        )
-        .expect("a spline");
-        for step in 0..=20 {
-            let (point, slope) = spline.at(f64::from(step) / 20.0);
-            assert!((point.x.hypot(point.y) - 1.0).abs() < 1e-12);
-            assert!((point.x * slope.x + point.y * slope.y).abs() < 1e-12);
-        }
-        assert!((path(&spline).length_m() - std::f64::consts::FRAC_PI_2).abs() < 1e-6);
-    }
-
-    #[test]
-    fn a_uniform_cubic_has_no_corners() {
-        let points = [(0.0, 0.0), (3.0, 4.0), (6.0, -4.0), (9.0, 0.0), (12.0, 3.0)];
-        let points: Vec<_> = points.iter().map(|&(x, y)| at(x, y)).collect();
-        let knots = [0.0, 0.0, 0.0, 0.0, 1.0, 2.0, 2.0, 2.0, 2.0];
-        let spline = Spline::new(3, &knots, &points, &[]).expect("a spline");
-        let path = path(&spline);
-        assert!(
-            path.start()
-                .is_some_and(|p| distance_m(p, points[0]) < 1e-12)
-        );
-        assert!(path.end().is_some_and(|p| distance_m(p, points[4]) < 1e-12));
-        assert!(
-            path.corners()
-                .iter()
-                .all(|corner| corner.turn_rad.abs() < 1e-6)
-        );
-        for step in 0..=200 {
-            let point = spline.at(2.0 * f64::from(step) / 200.0).0;
-            assert!(path.project(point).is_some_and(|p| p.distance_m < 1.2e-3));
-        }
-    }
-
-    #[test]
-    fn a_degree_of_one_keeps_its_corners() {
-        let points = [at(0.0, 0.0), at(4.0, 0.0), at(4.0, 3.0)];
-        let spline = Spline::new(1, &[0.0, 0.0, 1.0, 2.0, 2.0], &points, &[]).expect("a spline");
-        let path = path(&spline);
-        assert!((path.length_m() - 7.0).abs() < 1e-9);
-        let turns: Vec<_> = path
-            .corners()
-            .iter()
-            .filter(|c| c.turn_rad.abs() > 1e-6)
-            .copied()
-            .collect();
-        assert_eq!(turns.len(), 1);
-    }
-
-    #[test]
-    fn fit_points_are_passed_through() {
-        let points = [at(0.0, 0.0), at(4.0, 1.0), at(7.0, -1.0), at(12.0, 0.0)];
-        let spline = Spline::through(&points, None, None).expect("a spline");
-        let path = path(&spline);
-        for point in points {
-            assert!(path.project(point).is_some_and(|p| p.distance_m < 1e-9));
-        }
-        assert!(
-            path.corners()
-                .iter()
-                .all(|corner| corner.turn_rad.abs() < 1e-6)
-        );
-        let level =
-            Spline::through(&points, Some(at(2.0, 0.0)), Some(at(1.0, 0.0))).expect("a spline");
-        assert!(level.at(0.0).1.y.abs() < 1e-12);
-        assert!(!level.is_closed());
-    }
-
-    #[test]
-    fn nonsense_is_no_spline() {
-        assert_eq!(Spline::new(3, &[0.0, 1.0], &[at(0.0, 0.0)], &[]), None);
-        assert_eq!(
-            Spline::through(&[at(1.0, 1.0), at(1.0, 1.0)], None, None),
-            None
-        );
-    }
 }

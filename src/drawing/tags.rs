@@ -12,6 +12,7 @@ use std::ops::Range;
 
 use numbers::{decimal, to_whole, whole};
 
+pub(super) use ascii::code_of;
 pub(super) use bad::{Bad, BadTag, place_in_words, shown};
 pub(super) use numbers::is_name;
 pub(super) use sequence::Tags;
@@ -121,7 +122,9 @@ pub(super) fn form_of(bytes: &[u8]) -> (Form, usize) {
     for signature in SIGNATURES {
         if bytes.starts_with(signature) {
             let first = signature.len();
-            let wide = bytes.get(first..first + 2) == Some(&[0, 0]);
+            // The first group is 0, or a comment's 999, of which narrow codes make three bytes.
+            let code = bytes.get(first..first + 2);
+            let wide = matches!(code, Some([0, 0] | [0xE7, 0x03]));
             return (Form::Binary { wide }, first);
         }
     }

@@ -49,9 +49,11 @@ pub(super) fn text_line(raw: &str) -> String {
 pub(super) fn text_lines(raw: &str) -> String {
     let mut out = String::with_capacity(raw.len());
     let mut rest = raw;
+    // Bytes from the last semicolon on: behind it, none is looked for.
+    let tail = raw.rfind(';').map_or(usize::MAX, |at| raw.len() - at);
     while let Some(next) = rest.chars().next() {
         let length = match next {
-            '\\' => backslash(rest, &mut out),
+            '\\' => backslash(rest, tail, &mut out),
             '{' | '}' => 1,
             '%' => percent(rest, &mut out),
             '^' => caret(rest, &mut out),
@@ -65,8 +67,9 @@ pub(super) fn text_lines(raw: &str) -> String {
     out
 }
 
-/// Decodes one code of MTEXT at the start of `rest`; returns its length in bytes.
-fn backslash(rest: &str, out: &mut String) -> usize {
+/// Decodes one code of MTEXT at the start of `rest`, of which the last `tail` bytes begin with the last semicolon;
+/// returns its length in bytes.
+fn backslash(rest: &str, tail: usize, out: &mut String) -> usize {
     if let Some((character, length)) = escaped_character(rest) {
         out.push_str(&character);
         return length;
@@ -91,6 +94,7 @@ fn backslash(rest: &str, out: &mut String) -> usize {
                 .is_some_and(|after| after.starts_with(';'));
             return 2 + number + usize::from(semicolon);
         }
+        'f' | 'F' | 'p' if argument.len() < tail => return 2,
         'f' | 'F' | 'p' => return 2 + argument.find(';').map_or(0, |at| at + 1),
         'S' => {
             let length = stack_length(argument);
@@ -164,9 +168,20 @@ fn escaped_character(rest: &str) -> Option<(String, usize)> {
     let rest = rest.strip_prefix('\\')?;
     let head = rest.get(..2)?;
     if head.eq_ignore_ascii_case("U+") {
-        let digits = rest.get(2..6)?;
-        let number = hexadecimal(digits)?;
-        return Some((char::from_u32(number)?.to_string(), 7));
+        let number = hexadecimal(rest.get(2..6)?)?;
+        if let Some(character) = char::from_u32(number) {
+            return Some((character.to_string(), 7));
+        }
+        // A character beyond the first 65536 is two codes.
+        let second = rest.get(6..)?.strip_prefix('\\')?;
+        let second = second
+            .get(..2)
+            .filter(|head| head.eq_ignore_ascii_case("U+"))?
+            .len()
+            + 7;
+        let pair = [number, hexadecimal(rest.get(second..second + 4)?)?];
+        let units = pair.map(|unit| u16::try_from(unit).unwrap_or(0));
+        return Some((String::from_utf16(&units).ok()?, 14));
     }
     if head.eq_ignore_ascii_case("M+") {
         let page = rest.get(2..3)?.parse().ok()?;
@@ -242,6 +257,8 @@ mod tests {
             ("%%065%%128 50% %%x", "A 50% %%x"),
             (r"T\U+00E9l \u+2205", "Tél ∅"),
             (r"\M+5D6D0\M+5CEC4", "中文"),
+            (r"a\U+D83D\U+DE00b", "a😀b"),
+            (r"\U+D83D \U+DE00\U+D83D", r"\U+D83D \U+DE00\U+D83D"),
             ("m^2 a^ b^Ic^", "m^2 a^b c^"),
             (r"12\P34 C:\", r"12\P34 C:\"),
         ] {
@@ -263,9 +280,22 @@ mod tests {
             (r"\\U+00D8", r"\U+00D8"),
             (r"\H3", ""),
             (r"\S1/4", "1/4"),
+            (r"\fArial", "Arial"),
+            (r"a;\fArial\pb;c\fd", "a;cd"),
         ] {
             assert_eq!(text_lines(raw), shown, "{raw}");
         }
+    }
+
+    #[test]
+    fn codes_without_their_end_cost_no_more_than_others() {
+        let begun = std::time::Instant::now();
+        for code in [r"\f", r"\p", r"\S", r"\H", "%%", "^", r"\U+D83D"] {
+            let raw = code.repeat(200_000);
+            assert!(text_lines(&raw).len() <= raw.len());
+            assert!(text_line(&raw).len() <= raw.len());
+        }
+        assert!(begun.elapsed().as_secs() < 20, "{:?}", begun.elapsed());
     }
 
     #[test]

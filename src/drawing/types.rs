@@ -46,15 +46,45 @@ impl Drawing {
 pub(super) const CONTINUOUS: &str = "Continuous";
 
 /// Where a drawing's unit came from.
-#[derive(Debug, Clone, Copy, Default, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum UnitFrom {
     /// The job file names it.
     Job,
     /// `$INSUNITS` of the drawing.
     Header,
     /// Neither: millimetres are assumed, and that is said.
-    #[default]
-    Assumed,
+    Assumed(Unsaid),
+}
+
+impl Default for UnitFrom {
+    fn default() -> Self {
+        Self::Assumed(Unsaid::Absent)
+    }
+}
+
+/// Why the header does not say the unit.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, thiserror::Error)]
+pub enum Unsaid {
+    /// No such variable.
+    #[error("the drawing has no $INSUNITS")]
+    Absent,
+    /// It may have been where the header is damaged.
+    #[error("the header of the drawing is damaged, and its $INSUNITS was not found")]
+    Lost,
+    /// No whole number.
+    #[error("$INSUNITS of the drawing is no whole number")]
+    NoNumber,
+    /// A number that stands for no unit.
+    #[error("$INSUNITS of the drawing is {0}, which stands for no unit")]
+    NoUnit(i64),
+    /// A unit that no plan is drawn in.
+    #[error("$INSUNITS of the drawing is {number} ({name}), in which no plan is drawn")]
+    NoPlans {
+        /// The number.
+        number: i64,
+        /// The unit's name.
+        name: &'static str,
+    },
 }
 
 /// A layer and how it stands in the drawing.
@@ -91,7 +121,9 @@ pub enum ShapeKind {
     Arc,
     /// CIRCLE.
     Circle,
-    /// SPLINE, as arcs that leave it by no more than 1 mm.
+    /// ELLIPSE, as arcs that leave it by as much.
+    Ellipse,
+    /// SPLINE, as arcs that leave it by no more than 1 mm, or a millionth of its size.
     Spline,
     /// SOLID or TRACE: a filled triangle or quadrangle, as its outline.
     Solid,

@@ -28,6 +28,11 @@ impl Wanted {
         })
     }
 
+    /// Whether layers are chosen by name.
+    pub(super) fn chooses(&self) -> bool {
+        self.patterns.is_some()
+    }
+
     /// Whether a layer of this name is to be read.
     pub fn has(&self, layer: &str) -> bool {
         let fits = |patterns: &Selectors| patterns.may_pick(layer);

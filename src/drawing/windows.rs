@@ -7,7 +7,6 @@ use dxf::entities::{Entity, EntityType};
 use super::clean::{Cleaner, Damage, Kept};
 use super::scan::Entry;
 use super::source::Source;
-use crate::geometry::Segment;
 
 /// A record as the library reads it, with what the library loses.
 #[derive(Debug, Clone)]
@@ -20,30 +19,6 @@ pub(super) struct Record {
     pub(super) kept: Kept,
 }
 
-impl Record {
-    /// Bytes that a copy of it may take beyond what any entity does: a piece for each vertex, the characters of a text.
-    pub(super) fn weight(&self) -> usize {
-        match &self.entity {
-            EntityType::LwPolyline(line) => PIECE * line.vertices.len(),
-            EntityType::Polyline(line) => PIECE * line.vertices().count(),
-            EntityType::Spline(line) => {
-                PIECES_OF_A_SPAN * PIECE * (line.control_points.len() + line.fit_points.len())
-            }
-            EntityType::MText(text) => {
-                let chunks = text.extended_text.iter().map(String::len);
-                text.text.len() + chunks.sum::<usize>()
-            }
-            EntityType::Text(text) => text.value.len(),
-            _ => 0,
-        }
-    }
-}
-
-/// Bytes of a plan line's piece.
-const PIECE: usize = size_of::<Segment>();
-/// Arcs that stand for a span of a spline, as a rule at most.
-const PIECES_OF_A_SPAN: usize = 16;
-
 /// What was left out or guessed on the way.
 #[derive(Debug, Default)]
 pub(super) struct Losses {
@@ -51,6 +26,8 @@ pub(super) struct Losses {
     pub(super) damaged: Vec<Damage>,
     /// Strings whose characters had to be guessed.
     pub(super) guessed: usize,
+    /// Records that may lack something and are read as they are.
+    pub(super) doubtful: Vec<Damage>,
 }
 
 const WINDOW_BYTES: usize = 1 << 20;
@@ -76,6 +53,7 @@ pub(super) fn read_records<'e>(
     }
     load(source, &mut cleaner, &window, losses, &mut hand_on);
     losses.guessed += cleaner.guessed;
+    losses.doubtful.append(&mut cleaner.doubtful);
 }
 
 /// Loads one window; if the library fails or loses a record, each half of it, down to the record.

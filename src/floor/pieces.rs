@@ -1,10 +1,15 @@
 //! Pieces that meet end to end, put together: the same for tendons and for outlines.
 
+mod fan;
+#[cfg(test)]
+mod tests;
+
 use geo::Coord;
 use rstar::RTree;
 use rstar::primitives::GeomWithData;
 
 use crate::geometry::{Path, distance_m, turn_rad};
+use fan::Fan;
 
 /// How ends may be joined.
 #[derive(Debug, Clone, Copy)]
@@ -50,9 +55,8 @@ pub(super) struct Meeting {
     pub(super) left: usize,
 }
 
-/// Smooth enough to be told apart from what merely meets, and how much better it must be than the next best, radians.
+/// Smooth enough to be told apart from what merely meets, radians.
 const SMOOTH_RAD: f64 = 0.26;
-const CLEARLY_RAD: f64 = 0.35;
 
 /// Joins pieces whose ends meet. Two ends join unless the turn is too sharp or `is_stop` says that something ends here;
 /// of more than two, only those that go on smoothly into one another beyond doubt.
@@ -106,7 +110,7 @@ fn outward(path: &Path, at_end: bool, gap_m: f64) -> Option<(Coord<f64>, f64)> {
 
 /// Groups of ends that lie within the gap of one another.
 fn nodes(ends: &[Option<(Coord<f64>, f64)>], gap_m: f64) -> Vec<Vec<usize>> {
-    let tree = RTree::bulk_load(
+    let mut tree = RTree::bulk_load(
         ends.iter()
             .enumerate()
             .filter_map(|(end, found)| {
@@ -128,7 +132,8 @@ fn nodes(ends: &[Option<(Coord<f64>, f64)>], gap_m: f64) -> Vec<Vec<usize>> {
             let Some((place, _)) = ends[end] else {
                 continue;
             };
-            for near in tree.locate_within_distance([place.x, place.y], gap_m * gap_m) {
+            // Each end is met once, however many meet in one place.
+            for near in tree.drain_within_distance([place.x, place.y], gap_m * gap_m) {
                 if !seen[near.data] {
                     seen[near.data] = true;
                     group.push(near.data);
@@ -162,22 +167,19 @@ fn join(
         link[b] = Some(a);
         return 0;
     }
-    let best = |end: usize, but: usize| {
-        node.iter()
-            .filter(|&&other| other != end && other != but)
-            .map(|&other| turn(end, other))
-            .fold(f64::INFINITY, f64::min)
-    };
+    let fan = Fan::of(node, ends);
     let mut left = node.len();
-    for (at, &a) in node.iter().enumerate() {
-        for &b in &node[at + 1..] {
-            let here = turn(a, b);
-            let next = best(a, b).min(best(b, a));
-            if here < SMOOTH_RAD && here < joint.turn_rad && next > here + CLEARLY_RAD {
-                link[a] = Some(b);
-                link[b] = Some(a);
-                left -= 2;
-            }
+    for at in 0..fan.0.len() {
+        let Some((onward, here)) = fan.clear_partner(at, turn) else {
+            continue;
+        };
+        let back = fan.clear_partner(onward, turn);
+        let mutual = at < onward && back.is_some_and(|(back, _)| back == at);
+        if mutual && here < SMOOTH_RAD && here < joint.turn_rad {
+            let ((_, a), (_, b)) = (fan.0[at], fan.0[onward]);
+            link[a] = Some(b);
+            link[b] = Some(a);
+            left -= 2;
         }
     }
     left
@@ -219,104 +221,5 @@ pub(super) fn returns(path: &Path, gap_m: f64) -> bool {
     match (path.start(), path.end()) {
         (Some(start), Some(end)) => distance_m(start, end) <= gap_m,
         _ => false,
-    }
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    const JOINT: Joint = Joint {
-        gap_m: 0.01,
-        turn_rad: 1.6,
-    };
-
-    fn line(points: &[(f64, f64)]) -> Path {
-        let points: Vec<Coord<f64>> = points.iter().map(|&(x, y)| Coord { x, y }).collect();
-        Path::through(&points)
-    }
-
-    fn lengths(paths: &[Path]) -> (Vec<i64>, usize) {
-        let refs: Vec<&Path> = paths.iter().collect();
-        let (chains, meetings) = chains(&refs, JOINT, |_| false);
-        let mut lengths: Vec<i64> = chains
-            .iter()
-            .map(|chain| {
-                #[expect(clippy::cast_possible_truncation, reason = "lengths of a few metres")]
-                let rounded = chain.path(&refs).length_m().round() as i64;
-                rounded
-            })
-            .collect();
-        lengths.sort_unstable();
-        (lengths, meetings.len())
-    }
-
-    #[test]
-    fn pieces_join_in_any_order_and_direction() {
-        let (found, meetings) = lengths(&[
-            line(&[(10.0, 0.0), (5.0, 0.0)]),
-            line(&[(10.005, 0.0), (17.0, 1.0)]),
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![17], 0));
-    }
-
-    #[test]
-    fn neighbours_that_stand_apart_stay_apart() {
-        let (found, _) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.3, 0.0), (10.3, 0.0)]),
-        ]);
-        assert_eq!(found, vec![5, 5]);
-    }
-
-    #[test]
-    fn of_three_ends_only_the_smooth_pair_joins() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.1)]),
-            line(&[(5.0, 0.0), (5.0, 3.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![3, 12], 1));
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.1)]),
-            line(&[(5.0, 0.0), (9.0, -0.1)]),
-        ]);
-        assert_eq!((found, meetings), (vec![4, 5, 7], 1));
-    }
-
-    #[test]
-    fn a_crossing_of_four_ends_gives_two_lines() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (12.0, 0.0)]),
-            line(&[(5.0, 0.0), (5.0, 3.0)]),
-            line(&[(5.0, -4.0), (5.0, 0.0)]),
-        ]);
-        assert_eq!((found, meetings), (vec![7, 12], 0));
-    }
-
-    #[test]
-    fn a_line_does_not_double_back() {
-        let (found, meetings) = lengths(&[
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 0.0), (0.0, 0.1)]),
-        ]);
-        assert_eq!((found, meetings), (vec![5, 5], 1));
-    }
-
-    #[test]
-    fn a_ring_closes() {
-        let paths = [
-            line(&[(0.0, 0.0), (5.0, 0.0)]),
-            line(&[(5.0, 4.0), (5.0, 0.0)]),
-            line(&[(5.0, 4.0), (0.0, 4.0), (0.0, 0.0)]),
-        ];
-        let refs: Vec<&Path> = paths.iter().collect();
-        let (chains, _) = chains(&refs, JOINT, |_| false);
-        assert_eq!(chains.len(), 1);
-        assert!(chains[0].closed);
-        assert!((chains[0].path(&refs).length_m() - 18.0).abs() < 1e-9);
     }
 }

@@ -89,9 +89,12 @@ impl Names {
     }
 }
 
+/// References in references that are looked behind; nobody nests so many.
+const MOST_PREFIXES: usize = 32;
+
 /// A name, then what stands behind each prefix of a reference in it.
 pub fn tails(name: &str) -> impl Iterator<Item = &str> {
-    std::iter::successors(Some(name), |name| behind_prefix(name))
+    std::iter::successors(Some(name), |name| behind_prefix(name)).take(MOST_PREFIXES + 1)
 }
 
 /// A name as it is compared: without regard to letter case.
@@ -173,6 +176,17 @@ mod tests {
             assert!(!names.has(name), "{name}");
         }
         assert!(!Names::default().has("PT"));
+    }
+
+    #[test]
+    fn prefixes_without_end_cost_no_more_than_a_few() {
+        let names = Names::new(["PT"]).expect("a pattern");
+        let begun = std::time::Instant::now();
+        for prefix in ["A|", "A$0$", "$1", "A$1"] {
+            assert!(!names.has(&prefix.repeat(100_000)));
+        }
+        assert!(begun.elapsed().as_secs() < 10, "{:?}", begun.elapsed());
+        assert!(names.has(&("A|".repeat(MOST_PREFIXES) + "PT")));
     }
 
     #[test]

@@ -9,8 +9,11 @@ pub enum Align {
     Right,
 }
 
-/// Rows of cells in columns as wide as their widest cell, counted in characters; two blanks between columns, none at a
-/// line's end. The first row is the header.
+/// Cells wider than this stand out of their column: no name in a drawing makes every row as long as itself.
+const WIDEST: usize = 80;
+
+/// Rows of cells in columns as wide as their widest cell, counted in characters, up to a bound; two blanks between
+/// columns, none at a line's end. The first row is the header.
 pub fn table(aligns: &[Align], rows: &[Vec<String>]) -> String {
     let widths: Vec<usize> = (0..aligns.len())
         .map(|column| {
@@ -19,6 +22,7 @@ pub fn table(aligns: &[Align], rows: &[Vec<String>]) -> String {
                 .map(|cell| cell.chars().count())
                 .max()
                 .unwrap_or(0)
+                .min(WIDEST)
         })
         .collect();
     let mut text = String::new();
@@ -66,6 +70,13 @@ mod tests {
             table(&[Align::Left, Align::Right], &rows),
             "  mark     m\n  É1    12.0\n  B10      7\n"
         );
+    }
+
+    #[test]
+    fn one_long_name_does_not_widen_every_row() {
+        let rows = ["x", &"y".repeat(100_000)].map(|name| vec![name.to_owned(), "1".to_owned()]);
+        let text = table(&[Align::Left, Align::Right], &rows);
+        assert!(text.len() < 101_000, "{}", text.len());
     }
 
     #[test]

@@ -27,7 +27,7 @@ const WORDS: [&[u8]; 16] = [
     b"1e308\n",
     b"102\n{\n",
     b"101\nEmbedded Object\n",
-    b"  8\nTAUT-X\n",
+    b"  8\nTAUT-TABLE\n",
     b"\0",
     b"\0\0LINE\0",
     b"\xFF\xFF",

@@ -61,12 +61,11 @@ pub(crate) fn marks_without_loss(source: &Source, unit_m: f64) {
 /// `$HANDSEED` alone may differ, and marks of an earlier run may go.
 fn keeps(original: &[u8], marked: &[u8]) -> bool {
     if original.starts_with(b"AutoCAD Binary DXF") {
+        let marked = without_seed(marked);
         let mut rest = marked.iter();
-        // The seed may lose no digit and gain none that matters: bytes in order but for its own few.
-        let missing = original
+        return without_seed(original)
             .iter()
-            .filter(|byte| !rest.by_ref().any(|other| other == *byte));
-        return missing.count() == 0 || without_seed(original) == without_seed(marked);
+            .all(|byte| rest.any(|other| other == byte));
     }
     let mut rest = marked.split_inclusive(|b| *b == b'\n');
     let mut seed_in = 0_u8;
@@ -89,11 +88,35 @@ fn keeps(original: &[u8], marked: &[u8]) -> bool {
     true
 }
 
-fn without_seed(bytes: &[u8]) -> Option<usize> {
-    bytes.windows(9).position(|window| window == b"$HANDSEED")
+/// A binary drawing without the value of its `$HANDSEED`.
+fn without_seed(bytes: &[u8]) -> Vec<u8> {
+    const NAME: &[u8] = b"$HANDSEED\0";
+    let name = bytes.windows(NAME.len()).position(|window| window == NAME);
+    let Some(code) = name.map(|at| at + NAME.len()) else {
+        return bytes.to_vec();
+    };
+    let is_digit = |byte: &u8| byte.is_ascii_hexdigit();
+    let from = code + bytes[code..].iter().position(is_digit).unwrap_or(0);
+    let length = bytes[from..].iter().take_while(|byte| is_digit(byte));
+    let to = from + length.count();
+    [&bytes[..from], &bytes[to..]].concat()
 }
 
-fn sheet() -> Sheet {
+#[test]
+fn the_comparison_of_binary_drawings_sees_a_loss_anywhere() {
+    let whole = file("tests/data/versions/plan-R2018-binary.dxf");
+    let source = open(whole.clone()).expect("read");
+    let marked = insert(&source, 0.001, &sheet()).expect("marked");
+    assert!(keeps(&whole, &marked));
+    let seed = whole.windows(9).position(|window| window == b"$HANDSEED");
+    for at in [100, seed.expect("a seed") + 40, whole.len() - 20] {
+        // A run that stands in no mark.
+        let harmed = [&marked[..at], &marked[(at + 60).min(marked.len())..]].concat();
+        assert!(!keeps(&whole, &harmed), "{at}");
+    }
+}
+
+pub(crate) fn sheet() -> Sheet {
     let ink = Ink {
         index: 1,
         rgb: Some([255, 0, 0]),

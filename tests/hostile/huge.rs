@@ -58,7 +58,8 @@ fn spline_points_without_sense_make_few_pieces() {
     let begun = Instant::now();
     let (_, drawing, _) = everything(of_tags(&tags));
     let pieces: usize = drawing.shapes.iter().map(|s| s.path.segments().len()).sum();
-    assert!(pieces < 200_000, "{pieces}");
+    // A hundred spans at least are curves, or the spline was not read at all.
+    assert!((1000..200_000).contains(&pieces), "{pieces}");
     in_time(begun, 20);
 }
 

@@ -4,9 +4,12 @@
 mod caps;
 mod corrupted;
 mod cut;
+mod damaged;
 mod drawings;
 mod huge;
 mod nested;
 mod numbers;
 mod program;
+mod room;
 mod twisted;
+mod unread;

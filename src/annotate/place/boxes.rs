@@ -11,6 +11,9 @@ pub(in crate::annotate) type Quad = [Coord<f64>; 4];
 /// Cells that one box may be filed in; a larger one is looked at every time.
 const MOST_CELLS: i64 = 1024;
 
+/// So many boxes in the way are a crowd, each counted as often as it is met.
+const CROWD: usize = 256;
+
 /// A set of quadrangles.
 #[derive(Debug)]
 pub(in crate::annotate) struct Boxes {
@@ -62,9 +65,12 @@ impl Boxes {
         found
     }
 
-    /// How many quadrangles overlap this one.
+    /// How many quadrangles overlap this one, counted no further than to where no place is any better than another.
     pub(in crate::annotate) fn count(&self, quad: &Quad) -> usize {
-        self.near(quad).len()
+        let mut found: Vec<usize> = self.touching(*quad, |_| true).take(CROWD).collect();
+        found.sort_unstable();
+        found.dedup();
+        found.len()
     }
 
     /// Whether no quadrangle overlaps this one.

@@ -32,7 +32,7 @@ pub(super) fn proposal(
     let fits = match drawing.unit_from {
         UnitFrom::Job => true,
         UnitFrom::Header => units::plausible(median_m) && !(large && median_m > LONG_M),
-        UnitFrom::Assumed => units::usual(median_m),
+        UnitFrom::Assumed(_) => units::usual(median_m),
     };
     if fits {
         return None;

@@ -23,9 +23,9 @@ pub(super) fn head(
     job: &Job,
 ) -> Vec<String> {
     let unit = match drawing.unit_from {
-        UnitFrom::Job => "by the job file",
-        UnitFrom::Header => "by $INSUNITS",
-        UnitFrom::Assumed => "assumed, since the drawing has no $INSUNITS",
+        UnitFrom::Job => "by the job file".to_owned(),
+        UnitFrom::Header => "by $INSUNITS".to_owned(),
+        UnitFrom::Assumed(unsaid) => format!("assumed, since {unsaid}"),
     };
     let mut lines = vec![
         format!("Job file proposed from {}.", plain(file)),

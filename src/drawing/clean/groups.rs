@@ -15,11 +15,13 @@ pub(super) fn used(type_name: &[u8], code: i32) -> Use {
         b"LINE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31),
         b"ARC" => matches!(code, 10 | 20 | 30 | 40 | 50 | 51),
         b"CIRCLE" => matches!(code, 10 | 20 | 30 | 40),
+        b"ELLIPSE" => matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40..=42),
         b"SOLID" | b"TRACE" => matches!(code, 10..=13 | 20..=23 | 30),
         b"LWPOLYLINE" => matches!(code, 10 | 20 | 38 | 42),
         b"POLYLINE" => matches!(code, 10 | 20 | 30),
         b"VERTEX" => matches!(code, 10 | 20 | 30 | 42),
-        b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 30..=33 | 40 | 41),
+        // Levels, which a plan has no use for, are given anew.
+        b"SPLINE" => matches!(code, 10..=13 | 20..=23 | 32 | 33 | 40 | 41),
         b"TEXT" | b"ATTRIB" | b"ATTDEF" => {
             matches!(code, 10 | 20 | 30 | 11 | 21 | 31 | 40 | 41 | 50 | 51)
         }

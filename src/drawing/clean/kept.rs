@@ -30,6 +30,8 @@ pub(in crate::drawing) struct KeptAttribute {
     pub(in crate::drawing) handle: Option<String>,
     /// Colour and linetype as written.
     pub(in crate::drawing) worn: Worn,
+    /// It is written without a place: its value counts, but it stands nowhere.
+    pub(in crate::drawing) nowhere: bool,
 }
 
 /// Colour and linetype as an entity writes them; what it leaves out is its layer's.

@@ -17,6 +17,9 @@ pub(super) struct Open<'a> {
     /// Group 2 has been seen, and is not empty.
     pub(super) named: bool,
     pub(super) last_direction: i32,
+    /// How many vertices a light polyline announces, and how many it has.
+    pub(super) announced: Option<i64>,
+    pub(super) vertices: i64,
     /// The second coordinate that a vertex still lacks.
     pub(super) half: Option<i32>,
     /// Which of the groups 10, 20, 11, 21, 40, 50, 51 have been seen.
@@ -27,6 +30,7 @@ const NOTED: [i32; 7] = [10, 20, 11, 21, 40, 50, 51];
 
 impl Open<'_> {
     pub(super) fn note(&mut self, code: i32) {
+        self.vertices += i64::from(code == 10);
         if let Some(bit) = NOTED.iter().position(|noted| *noted == code) {
             self.seen |= 1 << bit;
         }

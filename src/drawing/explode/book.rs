@@ -32,14 +32,19 @@ impl Book<'_> {
         self.wanted.get(layer as usize).copied().unwrap_or(false)
     }
 
-    pub(super) fn layer_name(&self, layer: u32) -> String {
+    pub(super) fn layer_name(&self, layer: u32) -> &str {
         let layer = self.scan.layers.get(layer as usize);
-        layer.map_or_else(|| "0".to_owned(), |layer| layer.name.clone())
+        layer.map_or("0", |layer| layer.name.as_str())
     }
 
     pub(super) fn block_name(&self, name: u32) -> &str {
         let name = self.scan.block_names.get(name as usize);
         name.map_or("", String::as_str)
+    }
+
+    /// A block's base point; `None` for a damaged one.
+    pub(super) fn base(&self, block: usize) -> Option<[f64; 2]> {
+        self.scan.blocks.get(block).and_then(|block| block.base)
     }
 
     pub(super) fn block(&self, name: u32) -> Option<usize> {

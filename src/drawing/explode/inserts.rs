@@ -5,16 +5,16 @@ use geo::Coord;
 
 use super::{Frame, Gatherer, Place};
 use crate::drawing::Insert;
-use crate::drawing::clean::NOWHERE;
 use crate::drawing::convert::{TOO_FAR, is_near};
 use crate::drawing::lettering::{attribute_content, normal, of_attribute};
 use crate::drawing::placing::Placing;
-use crate::drawing::rules::{BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP};
+use crate::drawing::rules::{BLOCK_IN_ITSELF, BLOCK_MISSING, BLOCK_TOO_DEEP, ENTITY_DAMAGED};
 use crate::drawing::windows::Record;
 use crate::finding::Level;
 
 /// Blocks inside blocks, at most.
 const DEEPEST: usize = 32;
+
 impl Gatherer<'_> {
     pub(super) fn insert(
         &mut self,
@@ -34,6 +34,7 @@ impl Gatherer<'_> {
             within: wanted
                 .then_some(self.drawing.inserts.len())
                 .or(frame.within),
+            counted: false,
         };
         self.attributes(record, insert, seen, handle, frame);
         let holds = block.is_some_and(|block| self.book.holds_wanted.get(block) == Some(&true));
@@ -43,6 +44,11 @@ impl Gatherer<'_> {
         if wanted && block.is_none() {
             self.missing(record, handle);
         }
+        let base = block.map_or(Some([0.0; 2]), |block| self.book.base(block));
+        let Some([base_x, base_y]) = base else {
+            self.baseless(record, layer, handle);
+            return;
+        };
         let plane = Placing::extruded(normal(&insert.extrusion_direction), insert.location.z);
         let plane = frame.placing.after(&plane);
         let rotation_rad = insert.rotation.to_radians();
@@ -58,10 +64,11 @@ impl Gatherer<'_> {
         let weight: usize = attributes
             .iter()
             .map(|(tag, value)| 64 + tag.len() + value.len())
-            .sum();
+            .sum::<usize>()
+            .saturating_add(self.book.block_name(record.kept.block).len());
         for row in 0..insert.row_count.max(1) {
             for column in 0..insert.column_count.max(1) {
-                if !self.spend(handle, weight) {
+                if !self.spend(handle) {
                     return;
                 }
                 let step = Coord {
@@ -77,10 +84,13 @@ impl Gatherer<'_> {
                     return;
                 }
                 if wanted {
+                    if !self.afford(seen, handle, weight) {
+                        return;
+                    }
                     let along = cell.carry(Coord { x: 1.0, y: 0.0 });
                     self.drawing.inserts.push(Insert {
                         handle: handle.to_owned(),
-                        layer: self.book.layer_name(layer),
+                        layer: self.book.layer_name(layer).to_owned(),
                         look,
                         within: frame.within,
                         block: self.book.block_name(record.kept.block).to_owned(),
@@ -90,12 +100,6 @@ impl Gatherer<'_> {
                     });
                 }
                 let Some(block) = block else { continue };
-                let [base_x, base_y] = self
-                    .book
-                    .scan
-                    .blocks
-                    .get(block)
-                    .map_or([0.0; 2], |b| b.base);
                 let placing = cell
                     .after(&Placing::stretched(
                         insert.x_scale_factor,
@@ -118,6 +122,20 @@ impl Gatherer<'_> {
                 self.block(block, &inside, handle);
             }
         }
+    }
+
+    /// Says that an insert is left out, since nobody knows where its block's base point is.
+    fn baseless(&mut self, record: &Record, layer: u32, handle: &str) {
+        let (layer, name) = (
+            self.book.layer_name(layer),
+            self.book.block_name(record.kept.block),
+        );
+        self.say(&ENTITY_DAMAGED, Level::Error, || {
+            (
+                format!("insert {handle} on layer {layer} is left out: the record of its block {name} is damaged, or its base point is no finite number"),
+                "define the block again, or export the drawing again".to_owned(),
+            )
+        });
     }
 
     /// Says that an insert's block is not there.
@@ -160,13 +178,13 @@ impl Gatherer<'_> {
         };
         self.open.push(block);
         for record in records {
-            if !self.spend(handle, record.weight()) {
+            if !self.spend(handle) {
                 break;
             }
             self.place(record, inside);
         }
         for pointing in book.pointing.get(block).into_iter().flatten() {
-            if !self.spend(handle, pointing.weight()) {
+            if !self.spend(handle) {
                 break;
             }
             self.point(pointing, inside);
@@ -186,13 +204,14 @@ impl Gatherer<'_> {
         for (attribute, own) in insert.attributes().zip(&record.kept.attributes) {
             let named = own.layer.as_deref().and_then(|raw| self.book.layer_id(raw));
             let layer = self.layer_in(named.unwrap_or(seen.layer), Some(seen.layer));
-            if attribute.flags & NOWHERE != 0 || !self.book.wants(layer) {
+            if own.nowhere || !self.book.wants(layer) {
                 continue;
             }
             let place = Place {
                 layer,
                 look: self.looks.seen(&own.worn, layer, seen.look),
                 within: seen.within,
+                counted: false,
             };
             let handle = match &own.handle {
                 Some(own) if frame.handle.is_none() => own,

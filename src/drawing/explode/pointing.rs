@@ -21,11 +21,18 @@ impl Gatherer<'_> {
             layer,
             look: self.looks.seen(&pointing.worn, layer, frame.look),
             within: frame.within,
+            counted: wanted && frame.handle.is_none(),
         };
+        if matches!(pointing.what, What::Leader(_)) || wanted {
+            let weight = pointing.weight();
+            if !self.afford(seen, handle, weight) {
+                return;
+            }
+        }
         match &pointing.what {
             What::Dot(place) if wanted => self.drawing.dots.push(Dot {
                 handle: handle.to_owned(),
-                layer: self.book.layer_name(layer),
+                layer: self.book.layer_name(layer).to_owned(),
                 look: seen.look,
                 place: frame.placing.place(*place),
             }),
@@ -48,7 +55,7 @@ impl Gatherer<'_> {
                 };
                 self.drawing.leaders.push(Leader {
                     handle: handle.to_owned(),
-                    layer: self.book.layer_name(layer),
+                    layer: self.book.layer_name(layer).to_owned(),
                     look: seen.look,
                     arrows: placed(&lines.arrows),
                     tails: placed(&lines.tails),

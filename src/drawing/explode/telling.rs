@@ -1,6 +1,7 @@
 //! What is said of records that are left out: each thing once, and not without end.
 
-use super::{Frame, Gatherer};
+use super::{Frame, Gatherer, Place};
+use crate::drawing::caps::NAME_COPIES;
 use crate::drawing::rules::{BLOCK_TOO_MANY, ENTITY_DAMAGED, ENTITY_INVISIBLE};
 use crate::finding::{Finding, Level, Rule};
 
@@ -26,21 +27,32 @@ impl Gatherer<'_> {
         });
     }
 
-    /// Takes one entity, with what weighs beyond it, from what may still be expanded.
-    pub(super) fn spend(&mut self, handle: &str, weight: usize) -> bool {
-        let room = self.expansion.spend(weight);
-        if !room {
-            let (cap, remedy) = self.expansion.words();
+    /// Takes one entity of a block from what may still be expanded.
+    pub(super) fn spend(&mut self, handle: &str) -> bool {
+        let left = self.expansion.spend();
+        self.say_if_not(left, handle)
+    }
+
+    /// Takes room for something that is kept, with these bytes beyond what any entity takes, and its layer's name.
+    pub(super) fn afford(&mut self, place: Place, handle: &str, bytes: usize) -> bool {
+        let name = NAME_COPIES.saturating_mul(self.book.layer_name(place.layer).len());
+        let left = self
+            .expansion
+            .take(bytes.saturating_add(name), place.counted);
+        self.say_if_not(left, handle)
+    }
+
+    fn say_if_not(&mut self, left: bool, handle: &str) -> bool {
+        if !left {
+            let (grown, remedy) = self.expansion.words();
             self.tell(&BLOCK_TOO_MANY, Level::Error, 0, || {
                 (
-                    format!(
-                        "block inserts expand to {cap} (at insert {handle}); the rest is left out"
-                    ),
+                    format!("{grown} (at {handle}); the rest is left out"),
                     remedy,
                 )
             });
         }
-        room
+        left
     }
 
     /// Says something once for each `about`.

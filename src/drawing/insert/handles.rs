@@ -2,6 +2,7 @@
 
 use std::ops::Range;
 
+use crate::drawing::handles::{names_a_handle, parse_handle};
 use crate::drawing::tags::Tags;
 
 /// Gives out handles in ascending order; or none, for a drawing that has none.
@@ -72,19 +73,22 @@ impl Known {
 }
 
 /// The first of `count` free handles in a gap between those that are used or pointed at, for a drawing whose greatest
-/// handle leaves no room above it. Where earlier marks of ours stood is tried first. Reads the drawing once more.
+/// handle leaves no room above it; what may be handles in damaged places counts as used. Where earlier marks of ours stood
+/// is tried first. Reads the drawing once more.
 pub(super) fn first_in_gap(
     bytes: &[u8],
     own_marks: &[Range<usize>],
+    passed_over: &[u64],
     own_least: Option<u64>,
     count: u64,
 ) -> Option<u64> {
     let mut used: Vec<u64> = Tags::new(bytes)
         .forgiving()
         .map_while(Result::ok)
-        .filter(|tag| matches!(tag.code, 5 | 105 | 320..=369 | 390..=399 | 480 | 481 | 1005))
+        .filter(|tag| names_a_handle(tag.code))
         .filter(|tag| !stands_in(own_marks, tag.start))
-        .filter_map(|tag| u64::from_str_radix(std::str::from_utf8(tag.word()).ok()?, 16).ok())
+        .filter_map(|tag| parse_handle(tag.word()))
+        .chain(passed_over.iter().copied())
         .collect();
     used.sort_unstable();
     let starts = used.iter().filter_map(|handle| handle.checked_add(1));
@@ -169,9 +173,10 @@ mod tests {
     #[test]
     fn a_gap_is_found_between_what_is_used_and_pointed_at() {
         let text = b"0\nA\n5\n1\n330\n5\n0\nB\n5\nFFFFFFFFFFFFFFFE\n0\nC\n5\n3\n";
-        assert_eq!(first_in_gap(text, &[], None, 1), Some(2));
-        assert_eq!(first_in_gap(text, &[], None, 2), Some(6));
-        assert_eq!(first_in_gap(text, &[], Some(0x20), 2), Some(0x20));
-        assert_eq!(first_in_gap(text, &[], Some(0x5), 2), Some(6));
+        assert_eq!(first_in_gap(text, &[], &[], None, 1), Some(2));
+        assert_eq!(first_in_gap(text, &[], &[], None, 2), Some(6));
+        assert_eq!(first_in_gap(text, &[], &[], Some(0x20), 2), Some(0x20));
+        assert_eq!(first_in_gap(text, &[], &[], Some(0x5), 2), Some(6));
+        assert_eq!(first_in_gap(text, &[], &[7], None, 2), Some(8));
     }
 }

@@ -25,14 +25,9 @@ pub(super) enum Edition {
 }
 
 impl Edition {
-    /// The edition of a `$ACADVER` value, such as `AC1027`; anything that is none counts as R12.
-    pub(super) fn of(version: &str) -> Self {
-        let number = version
-            .trim()
-            .strip_prefix("AC")
-            .and_then(|digits| digits.parse::<u32>().ok())
-            .unwrap_or(0);
-        match number {
+    /// The edition of a release's number; 0 counts as R12.
+    pub(super) fn of(release: u32) -> Self {
+        match release {
             ..1012 => Self::R12,
             1012..1014 => Self::R13,
             1014..1015 => Self::R14,
@@ -181,6 +176,7 @@ impl Records {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::drawing::release;
 
     const ASCII: Style = Style {
         form: Form::Ascii,
@@ -205,7 +201,7 @@ mod tests {
             ("AC1032", Edition::R2013),
             ("AC1099", Edition::R2013),
         ] {
-            assert_eq!(Edition::of(version), edition, "{version}");
+            assert_eq!(Edition::of(release::number(version)), edition, "{version}");
         }
     }
 

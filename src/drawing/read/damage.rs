@@ -1,5 +1,8 @@
 //! What could not be read, told.
 
+use std::fmt::Write as _;
+
+use crate::drawing::clean::Damage;
 use crate::drawing::explode::{MOST_TOLD, and_more};
 use crate::drawing::rules::{DRAWING_DAMAGED, ENTITY_DAMAGED, TEXT_CODE_PAGE};
 use crate::drawing::scan::Scan;
@@ -14,11 +17,19 @@ pub(super) fn passed_over_finding(scan: &Scan) -> Option<Finding> {
         1 => String::new(),
         places => format!(" (the first of {places} such places)"),
     };
-    let (level, left_out) = match over.left_out {
+    let (level, mut left_out) = match over.left_out {
         0 => (Level::Warning, "no entity is left out for it".to_owned()),
         1 => (Level::Error, "one entity is left out for it".to_owned()),
         n => (Level::Error, format!("{n} entities are left out for it")),
     };
+    for (lost, what) in [
+        (over.in_header, "variables of the header"),
+        (over.in_tables, "layers or text styles of its tables"),
+    ] {
+        if lost {
+            let _ = write!(left_out, ", {what} may be lost");
+        }
+    }
     Some(Finding::new(
         &DRAWING_DAMAGED,
         level,
@@ -31,8 +42,14 @@ pub(super) fn passed_over_finding(scan: &Scan) -> Option<Finding> {
 }
 
 pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> {
+    let mut findings = told(source, &losses.damaged, "is left out");
+    findings.extend(told(source, &losses.doubtful, "is read as it stands"));
+    findings
+}
+
+fn told(source: &Source, damages: &[Damage], what: &str) -> Vec<Finding> {
     let scan = &source.scan;
-    let shown = losses.damaged.iter().take(MOST_TOLD);
+    let shown = damages.iter().take(MOST_TOLD);
     let mut findings: Vec<Finding> = shown
         .map(|damage| {
             let layer = scan.layers.get(damage.kept.layer as usize);
@@ -45,7 +62,7 @@ pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> 
                 &ENTITY_DAMAGED,
                 Level::Error,
                 format!(
-                    "{} {handle} on layer {layer} is left out: at {}, {}",
+                    "{} {handle} on layer {layer} {what}: at {}, {}",
                     damage.type_name,
                     place_in_words(&source.bytes, scan.form, damage.at),
                     damage.found
@@ -54,11 +71,7 @@ pub(super) fn damage_findings(source: &Source, losses: &Losses) -> Vec<Finding> 
             )
         })
         .collect();
-    findings.extend(and_more(
-        &ENTITY_DAMAGED,
-        Level::Error,
-        losses.damaged.len(),
-    ));
+    findings.extend(and_more(&ENTITY_DAMAGED, Level::Error, damages.len()));
     findings
 }
 

@@ -31,7 +31,7 @@ fn is_wanted(book: &Book<'_>, layer: u32) -> bool {
     book.wanted.get(layer as usize).copied().unwrap_or(false)
 }
 
-fn inserted(book: &Book<'_>, entry: &Entry) -> Option<usize> {
+pub(super) fn inserted(book: &Book<'_>, entry: &Entry) -> Option<usize> {
     let named = book.block_of_name.get(entry.block as usize);
     named.copied().flatten().filter(|_| entry.is_insert)
 }

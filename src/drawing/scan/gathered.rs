@@ -48,7 +48,9 @@ pub(super) struct Gathered<'a> {
     pub(super) linetype: Option<&'a [u8]>,
     pub(super) colour: Option<i64>,
     pub(super) flags: i64,
-    pub(super) base: [f64; 2],
+    pub(super) base: [Option<f64>; 2],
+    /// A coordinate of the base that is no finite number.
+    pub(super) bad_base: bool,
     pub(super) pointers: [Option<&'a [u8]>; 3],
     pub(super) style: Style,
     /// Something in it makes no sense and was passed over.

@@ -22,7 +22,10 @@ impl<'a> Pass<'a> {
             b"STYLE" => Record::Style,
             _ => Record::None,
         };
-        self.gathered = Gathered::default();
+        self.gathered = Gathered {
+            start,
+            ..Gathered::default()
+        };
     }
 
     pub(super) fn begin_entity(&mut self, name: &'a [u8], start: usize) {
@@ -94,7 +97,9 @@ impl<'a> Pass<'a> {
                 self.scan.names_are_guessed |= guessed;
                 self.scan.blocks.push(BlockEntry {
                     name: plain_name(&name),
-                    base: self.gathered.base,
+                    base: base_of(&self.gathered),
+                    // 4: attached, 8: laid over.
+                    is_reference: self.gathered.flags & (4 | 8) != 0,
                     ..BlockEntry::default()
                 });
                 self.block_open = true;
@@ -162,6 +167,7 @@ impl<'a> Pass<'a> {
         let is_form = self.types.is(held.type_id, b"ATTDEF") && (!in_block || held.flags & 2 == 0);
         let broken = held.broken;
         let reads = self.types.is_read(held.type_id) && !is_form && !broken;
+        let points = points && !broken;
         if broken {
             self.left_out();
         }
@@ -174,7 +180,7 @@ impl<'a> Pass<'a> {
                 block.entries.push(entry);
                 for name in self.attribute_layers.drain(..) {
                     let own_layer = self.names.id(name, &self.scan.code_page);
-                    if own_layer != layer && !block.attribute_layers.contains(&own_layer) {
+                    if own_layer != layer && block.attribute_layers.last() != Some(&own_layer) {
                         block.attribute_layers.push(own_layer);
                     }
                 }
@@ -183,6 +189,11 @@ impl<'a> Pass<'a> {
             {
                 entry.number = to_u32(block.pointing.len()) + 1;
                 block.pointing.push(entry);
+            } else if let Some(block) = self.scan.blocks.last_mut()
+                && !broken
+                && !is_form
+            {
+                *block.unread.entry((layer, held.type_id)).or_default() += 1;
             }
             return;
         }
@@ -204,6 +215,16 @@ impl<'a> Pass<'a> {
         } else if points {
             self.scan.pointing.push(entry);
         }
+    }
+}
+
+/// A block's base point, unless its record is damaged.
+fn base_of(held: &Gathered<'_>) -> Option<[f64; 2]> {
+    match held.base {
+        _ if held.broken || held.bad_base => None,
+        [Some(x), Some(y)] => Some([x, y]),
+        [None, None] => Some([0.0; 2]),
+        _ => None,
     }
 }
 

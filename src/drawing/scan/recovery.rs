@@ -1,6 +1,9 @@
 //! The second reading, for a drawing whose tags do not hold together: what makes no sense is passed over and counted.
 
-use super::super::resume::resume;
+use std::ops::Range;
+
+use super::super::caps::Caps;
+use super::super::resume::{handles_in, resume, resume_in_header};
 use super::super::tags::{Bad, BadTag, Tags, place_in_words};
 use super::{Pass, Record, Refusal, Scan, Section};
 
@@ -15,11 +18,19 @@ pub(in crate::drawing) struct PassedOver {
     pub(in crate::drawing) what: String,
     /// Entities of model space and of blocks that are left out for it.
     pub(in crate::drawing) left_out: usize,
+    /// Whether variables of the header may be among it.
+    pub(in crate::drawing) in_header: bool,
+    /// Whether records of tables, such as layers and text styles, may be among it.
+    pub(in crate::drawing) in_tables: bool,
+    /// What may be handles of records that are passed over.
+    pub(in crate::drawing) handles: Vec<u64>,
+    /// Past the last of it.
+    end: usize,
 }
 
 /// Reads what can be read of a drawing that was refused; the refusal stands if there is no entity of model space in it.
-pub(super) fn recover(bytes: &[u8], refusal: Refusal) -> Result<Scan, Refusal> {
-    let mut pass = Pass::new(bytes);
+pub(super) fn recover(bytes: &[u8], caps: &Caps, refusal: Refusal) -> Result<Scan, Refusal> {
+    let mut pass = Pass::new(bytes, caps);
     pass.forgives = true;
     let mut tags = Tags::new(bytes);
     while let Some(tag) = tags.next() {
@@ -30,16 +41,35 @@ pub(super) fn recover(bytes: &[u8], refusal: Refusal) -> Result<Scan, Refusal> {
             },
             Err(bad) => bad,
         };
+        if bad.kind == Bad::Names {
+            return Err(pass.refusal(&bad));
+        }
         if bad.kind == Bad::Cut {
             // The end of the file, which is found to be in the wrong place when the pass is finished.
             break;
         }
         pass.note(bad.at, || bad.words());
-        let Some(found) = resume(bytes, pass.scan.form, bad.at) else {
+        let found = match pass.section {
+            Section::Outside | Section::Named | Section::Header => {
+                resume_in_header(bytes, pass.scan.form, bad.at)
+            }
+            _ => resume(bytes, pass.scan.form, bad.at),
+        };
+        let Some(found) = found else {
             break;
         };
-        pass.gathered.broken |= !found.whole;
+        if !found.whole {
+            pass.lose(bad.at..found.at);
+        }
         tags = Tags::within(bytes, pass.scan.form, found.at..bytes.len());
+        let next = tags.clone().next();
+        let variable = next.is_some_and(|tag| tag.is_ok_and(|tag| tag.code == 9));
+        if variable && !found.whole && pass.section != Section::Header {
+            // The damage took the header's beginning.
+            pass.sections += 1;
+            pass.section = Section::Header;
+            pass.lose_header();
+        }
     }
     match pass.finish() {
         Ok(scan) if scan.entity_count() > 0 => Ok(scan),
@@ -58,8 +88,46 @@ impl Pass<'_> {
                     first: place_in_words(self.bytes, self.scan.form, at),
                     what: what(),
                     left_out: 0,
+                    in_header: false,
+                    in_tables: false,
+                    handles: Vec::new(),
+                    end: 0,
                 });
             }
+        }
+    }
+
+    /// Marks what a stretch that is passed over may have belonged to.
+    fn lose(&mut self, stretch: Range<usize>) {
+        self.gathered.broken = true;
+        let in_header = self.section == Section::Header;
+        // What comes next is no value of the variable at hand.
+        self.variable = b"";
+        if in_header {
+            self.lose_header();
+        }
+        if let Some(over) = &mut self.scan.passed_over {
+            over.in_tables |= self.section == Section::Tables;
+            if in_header {
+                // No record is there, and the seed is raised with what is drawn.
+                return;
+            }
+            // Codes and values may have been out of step before that was seen.
+            let start = match self.record {
+                Record::None => stretch.start,
+                _ => self.gathered.start.min(stretch.start).max(over.end),
+            };
+            over.end = stretch.end;
+            let first = over.handles.len();
+            let part = self.bytes.get(start..stretch.end).unwrap_or_default();
+            handles_in(part, self.scan.form, &mut over.handles);
+            self.handles.passed_over(&over.handles[first..]);
+        }
+    }
+
+    fn lose_header(&mut self) {
+        if let Some(over) = &mut self.scan.passed_over {
+            over.in_header = true;
         }
     }
 
@@ -115,6 +183,7 @@ impl Pass<'_> {
         let place = place_in_words(self.bytes, self.scan.form, bad.at);
         match bad.kind {
             Bad::Unclosed => Refusal::Unclosed { place },
+            Bad::Names => self.caps.names_refused(self.bytes.len(), bad.at),
             _ if self.sections == 0 => Refusal::NotDxf {
                 found: bad.found.clone(),
             },

@@ -1,6 +1,7 @@
 //! Sections and records, as they begin and end.
 
-use super::super::tags::{Bad, BadTag, Tag, is_name, place_in_words, shown};
+use super::super::release;
+use super::super::tags::{Bad, BadTag, Tag, Tags, is_name, place_in_words, shown};
 use super::super::text_decode::plain_name;
 use super::records::text;
 use super::{Pass, Record, Refusal, Scan, Section};
@@ -34,6 +35,13 @@ impl<'a> Pass<'a> {
                 at: tag.start,
                 kind: Bad::Name,
                 found: shown(name),
+            });
+        }
+        if self.names.len() + self.types.len() > self.most_names {
+            return Err(BadTag {
+                at: tag.start,
+                kind: Bad::Names,
+                found: self.most_names.to_string(),
             });
         }
         let in_entities = matches!(self.section, Section::Entities | Section::Blocks);
@@ -142,11 +150,11 @@ impl<'a> Pass<'a> {
         let handles = &self.handles;
         self.scan.greatest_handle = handles.greatest;
         self.scan.own_handles = handles.own_range;
-        let number = self.scan.version.strip_prefix("AC");
-        let with_handles = number
-            .and_then(|digits| digits.parse::<u32>().ok())
-            .is_some_and(|number| number >= 1012);
-        self.scan.uses_handles = with_handles || handles.in_use();
+        self.scan.release = match release::number(&self.scan.version) {
+            0 if shows_subclasses(self.bytes) => release::R2000,
+            number => number,
+        };
+        self.scan.uses_handles = self.scan.release >= release::R13 || handles.in_use();
         if self.scan.model_space_record.is_none() {
             self.scan.model_space_record = text(self.owner_seen);
         }
@@ -162,6 +170,12 @@ impl<'a> Pass<'a> {
         }
         Ok(self.scan)
     }
+}
+
+/// Whether a drawing's records show subclass markers, as those of no release before R13 do.
+fn shows_subclasses(bytes: &[u8]) -> bool {
+    let mut tags = Tags::new(bytes).forgiving().map_while(Result::ok);
+    tags.any(|tag| tag.code == 100 && tag.word().starts_with(b"AcDb"))
 }
 
 /// Whether a record continues the sequence that `head` began.

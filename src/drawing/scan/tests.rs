@@ -32,14 +32,14 @@ fn one_pass_finds_layers_sections_and_handles() {
         "{HEADER}{TABLES}0 SECTION 2 ENTITIES
          0 LINE 5 A0 330 1C 8 slab 10 1.0 20 2.0 11 3.0 21 4.0
          0 TEXT 5 2a1 102 {{ACAD 330 9999 102 }} 8 New 67 1 1 x
-         0 POLYLINE 5 A2 8 taut-x 66 1 0 VERTEX 5 300 8 0 0 SEQEND 5 301 8 0
+         0 POLYLINE 5 A2 8 taut-table 66 1 0 VERTEX 5 300 8 0 0 SEQEND 5 301 8 0
          0 LINE 5 A3 8 New 0 ENDSEC 0 EOF"
     ));
-    let scan = scan(&bytes).expect("read");
-    assert_eq!((scan.version.as_str(), scan.insunits), ("AC1015", Some(6)));
+    let scan = scan(&bytes, &Caps::default()).expect("read");
+    assert_eq!((scan.version.as_str(), scan.insunits), ("AC1015", Ok(6)));
     assert_eq!((scan.line_end, scan.code_width), ("\r\n", 3));
     let names: Vec<_> = scan.layers.iter().map(|l| l.name.as_str()).collect();
-    assert_eq!(names, ["0", "Slab", "New", "taut-x"]);
+    assert_eq!(names, ["0", "Slab", "New", "taut-table"]);
     assert!(scan.layers[1].off() && scan.layers[1].frozen());
     assert_eq!(scan.zero_layer_pointers[0].as_deref(), Some("F"));
     assert!(scan.layers_have_handles && scan.uses_handles);
@@ -70,7 +70,7 @@ fn one_pass_finds_layers_sections_and_handles() {
 fn a_sequence_without_its_end_is_open() {
     let open = |entities: &str| {
         let bytes = dxf(&format!("0 SECTION 2 ENTITIES {entities} 0 ENDSEC 0 EOF"));
-        scan(&bytes).expect("read").open_sequence
+        scan(&bytes, &Caps::default()).expect("read").open_sequence
     };
     assert!(open("0 POLYLINE 8 0 66 1 0 VERTEX 8 0"));
     assert!(open("0 INSERT 8 0 66 1 2 B 0 ATTRIB 8 0"));
@@ -84,7 +84,7 @@ fn old_drawings_use_handles_where_their_entities_do() {
         let bytes = dxf(&format!(
             "0 SECTION 2 TABLES 0 TABLE 2 LAYER 0 LAYER {tags} 0 ENDSEC 0 EOF"
         ));
-        scan(&bytes).expect("read").uses_handles
+        scan(&bytes, &Caps::default()).expect("read").uses_handles
     };
     let to_entities = "2 0 0 ENDTAB 0 ENDSEC 0 SECTION 2 ENTITIES 0 LINE";
     assert!(uses(&format!("{to_entities} 5 A1 8 0")));
@@ -95,7 +95,12 @@ fn old_drawings_use_handles_where_their_entities_do() {
 
 #[test]
 fn what_is_no_drawing_is_refused_in_words() {
-    let refused = |bytes: &[u8]| scan(bytes).map(|_| ()).expect_err("refused").to_string();
+    let refused = |bytes: &[u8]| {
+        scan(bytes, &Caps::default())
+            .map(|_| ())
+            .expect_err("refused")
+            .to_string()
+    };
     assert!(refused(b" \n").contains("empty"));
     assert!(refused(b"AC1032\0\0\0\0").contains("DWG (AC1032)"));
     assert!(refused(b"%PDF-1.7\n").contains("\"%PDF-1.7\""));
@@ -109,5 +114,5 @@ fn what_is_no_drawing_is_refused_in_words() {
     assert!(
         refused(&dxf("0 SECTION 2 ENTITIES oops 8 0 ENDSEC")).contains("line 5: found \"oops\"")
     );
-    assert!(scan(&dxf("0 SECTION 2 HEADER 0 ENDSEC 0 EOF")).is_ok());
+    assert!(scan(&dxf("0 SECTION 2 HEADER 0 ENDSEC 0 EOF"), &Caps::default()).is_ok());
 }

@@ -64,7 +64,7 @@ pub(super) fn near(byte: u8, bytes: &[u8]) -> Option<usize> {
 
 /// A code line's number; blanks and tabs around it are allowed.
 #[inline]
-pub(super) fn code_of(line: &[u8]) -> Option<i32> {
+pub(in crate::drawing) fn code_of(line: &[u8]) -> Option<i32> {
     let word = line.trim_ascii();
     if word.is_empty() || word.len() > 6 {
         return None;

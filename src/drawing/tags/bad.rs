@@ -26,6 +26,8 @@ pub(in crate::drawing) enum Bad {
     Name,
     /// A section that begins inside another.
     Unclosed,
+    /// More names than there is room for.
+    Names,
 }
 
 impl BadTag {
@@ -36,6 +38,9 @@ impl BadTag {
             Bad::Code => format!("found {found} where a group code was expected"),
             Bad::Name => format!("found {found} where a record's name was expected"),
             Bad::Cut => format!("the file ends inside {found}"),
+            Bad::Names => {
+                format!("{found} names of layers and types are more than there is room for")
+            }
             Bad::Unclosed => "a new section starts although ENTITIES is not closed".to_owned(),
         }
     }

@@ -62,6 +62,17 @@ fn numbers_must_be_plain_and_finite() {
 }
 
 #[test]
+fn a_comment_may_come_first_in_binary() {
+    let mut wide = SIGNATURES[0].to_vec();
+    let mut narrow = wide.clone();
+    wide.extend(b"\xE7\x03hello\0\0\0LINE\0");
+    narrow.extend(b"\xFF\xE7\x03hello\0\0LINE\0");
+    for bytes in [wide, narrow] {
+        assert_eq!(codes(&bytes), [(0, b"LINE".to_vec())]);
+    }
+}
+
+#[test]
 fn binary_codes_of_both_widths_read_alike() {
     let mut wide = SIGNATURES[0].to_vec();
     let mut narrow = wide.clone();
