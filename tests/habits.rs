@@ -140,7 +140,7 @@ fn gaps_left_for_crossing_tendons_are_bridged_and_gaps_at_joints_are_not() {
         plan.line("TENDON-BANDED", (10.0, 0.0), (10.0, 16.0));
         plan.proposed()
     };
-    assert_eq!(crossed(false), ["bridge_gap_mm = 400"]);
+    assert_eq!(crossed(false), ["bridge_gap_mm = 450"]);
     assert_eq!(crossed(true), NOTHING);
 }
 

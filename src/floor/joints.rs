@@ -13,6 +13,9 @@ use crate::units::LONG;
 /// Of two tendons whose distances from a symbol differ by less, nothing tells whose it is, metres.
 const TIED_M: f64 = 0.010;
 
+/// A symbol that is drawn stands on its tendon within this share of the ends' reach.
+const ON: f64 = 0.5;
+
 /// Where the intermediate anchors stand.
 #[derive(Debug)]
 pub(super) struct Joints<'a> {
@@ -41,7 +44,13 @@ pub(super) fn joints<'a>(
         drawn.iter().any(|one| around.gap_m(one.place) <= reach_m)
     };
     for symbol in drawn.iter().chain(&words).copied() {
-        let feet = index.feet(symbol.place, reach_m);
+        // A symbol is drawn on its tendon; a word is written beside it.
+        let on_m = match symbol.sign {
+            Sign::Word => reach_m,
+            _ => ON * reach_m,
+        };
+        let mut feet = index.feet(symbol.place, reach_m);
+        feet.retain(|foot| foot.distance_m <= on_m || end_at(lines, foot, reach_m).is_some());
         let least_m = feet
             .iter()
             .map(|foot| foot.distance_m)

@@ -155,7 +155,7 @@ impl<'a> TendonRecord<'a> {
                 EndRecord::of(tendon, forces, 0),
                 EndRecord::of(tendon, forces, 1),
             ],
-            joints: pulls::joints(tendon),
+            joints: pulls::joints(tendon, result),
             pulls: pulls::pulls(forces),
             points: points(tendon, result),
             losses: forces.map(LossRecord::of),

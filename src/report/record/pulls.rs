@@ -3,20 +3,24 @@
 use serde::Serialize;
 
 use super::{LiveRecord, number};
+use crate::analysis::{Sample, TendonResult};
 use crate::floor::{PourJoint, Tendon};
 use crate::losses::Forces;
 
-/// An intermediate anchor.
+/// An intermediate anchor; the forces are the lesser of those on its two sides.
 #[derive(Debug, Serialize)]
-#[expect(
-    clippy::struct_field_names,
-    reason = "a name that holds a length says its unit"
-)]
 pub(in crate::report) struct JointRecord {
     pub(in crate::report) station_m: Option<f64>,
     pub(in crate::report) x_m: Option<f64>,
     pub(in crate::report) y_m: Option<f64>,
+    pub(in crate::report) jacking_kn: Option<f64>,
+    pub(in crate::report) lockoff_kn: Option<f64>,
+    pub(in crate::report) transfer_kn: Option<f64>,
+    pub(in crate::report) service_kn: Option<f64>,
 }
+
+/// Samples nearer to a joint than this are at it, metres.
+const AT_M: f64 = 1e-6;
 
 /// A jack of a pull; where two pull together, each has a record of the same order.
 #[derive(Debug, Serialize)]
@@ -32,11 +36,24 @@ pub(in crate::report) struct PullRecord {
 }
 
 /// The intermediate anchors of a tendon, in order of station.
-pub(super) fn joints(tendon: &Tendon) -> Vec<JointRecord> {
-    let of = |joint: &PourJoint| JointRecord {
-        station_m: number(joint.station_m),
-        x_m: number(joint.place.x),
-        y_m: number(joint.place.y),
+pub(super) fn joints(tendon: &Tendon, result: &TendonResult) -> Vec<JointRecord> {
+    let of = |joint: &PourJoint| {
+        let at = |sample: &&Sample| (sample.station_m - joint.station_m).abs() <= AT_M;
+        let least = |stage: usize| {
+            let sides = result.samples.iter().filter(at);
+            let forces_kn = sides.filter_map(|sample| *sample.forces_kn.get(stage)?);
+            forces_kn.reduce(f64::min).and_then(number)
+        };
+        let [jacking_kn, lockoff_kn, transfer_kn, service_kn] = [0, 1, 2, 3].map(least);
+        JointRecord {
+            station_m: number(joint.station_m),
+            x_m: number(joint.place.x),
+            y_m: number(joint.place.y),
+            jacking_kn,
+            lockoff_kn,
+            transfer_kn,
+            service_kn,
+        }
     };
     tendon.joints.iter().map(of).collect()
 }
