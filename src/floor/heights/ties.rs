@@ -1,6 +1,8 @@
 //! Labels midway between two tendons that may all change places and nothing is the worse for it.
 
-use super::{Height, Known, TIE, cost, matters};
+use super::Height;
+use super::cost::{Known, cost};
+use super::doubts::{TIE, matters};
 use crate::floor::candidates::Lie;
 use crate::floor::even::{Between, between, exchanged, held};
 use crate::floor::lines::Line;
