@@ -58,12 +58,16 @@ fn working(number: &str, method: LongTermMethod, forces: &MethodForces, units: U
     let stress = units.of(STRESS);
     let (mean, lost) = (&forces.mean, &forces.lost);
     let equations = forces.made.equations(*mean);
+    // A method that does not ask for the tendon's level was not told it.
+    let level = if mean.eccentricity > 0.0 {
+        format!(", (A/I) z^2 = {:.4}", mean.eccentricity)
+    } else {
+        String::new()
+    };
     let mut text = vec![format!(
-        "{number} Elastic shortening and long-term loss, method {}, where the tendon is at its mean: {} after lock-off, \
-         (A/I) z^2 = {:.4}\n",
+        "{number} Elastic shortening and long-term loss, method {}, where the tendon is at its mean: {} after lock-off{level}\n",
         method.word(),
         stress.said(mean.lockoff_mpa, 3),
-        mean.eccentricity
     )];
     if units == Units::Us {
         text.push(format!(
