@@ -148,6 +148,13 @@ fn at_ends(contents: &Contents) -> Vec<String> {
         row(format!("{shape} on {}", plain(layer)), *count);
     }
     let mut lines = vec![String::new()];
+    if !found.between.is_empty() {
+        let blocks: Vec<String> = found.between.iter().map(|block| plain(block)).collect();
+        lines.push(format!(
+            "On lines, between their ends, by their names or a legend: blocks {}",
+            blocks.join(", ")
+        ));
+    }
     if rows.is_empty() {
         lines.push(
             "Nothing that could be a symbol stands at the end of a line: live and dead ends are not known.".to_owned(),
