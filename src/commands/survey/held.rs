@@ -6,6 +6,7 @@ use geo::Coord;
 
 use super::readings::{Reading, hint};
 use crate::drawing::Text;
+use crate::floor::height_of_line;
 use crate::job::Job;
 
 /// Texts shown of each layer.
@@ -40,6 +41,8 @@ pub(super) struct Held {
     pub(super) bare_marks: BTreeMap<String, usize>,
     /// Texts that say a thickness.
     pub(super) thicknesses: usize,
+    /// Of these, texts that would be heights as well: `h=205`.
+    or_heights: usize,
     /// Texts that say a height.
     pub(super) heights: usize,
     /// Texts that say strands.
@@ -72,7 +75,11 @@ impl Held {
         self.texts += 1;
         self.text_m.push(text.height_m);
         match &said {
-            Reading::Thickness(_) => self.thicknesses += 1,
+            Reading::Thickness(_) => {
+                self.thicknesses += 1;
+                let as_height = height_of_line(&text.content, &job.conventions);
+                self.or_heights += usize::from(as_height.is_some());
+            }
             Reading::Height(_) => self.heights += 1,
             Reading::Mark { strands: true, .. } => self.strands += 1,
             Reading::Offered(family) => *self.offered.entry(family).or_default() += 1,
@@ -125,7 +132,23 @@ impl Held {
             self.inched += std::mem::take(&mut self.inched_thicknesses);
             self.thicknesses = 0;
         }
+        self.tell_heights();
         self.tell_words();
+    }
+
+    /// `h=45` and `h=205` on one layer are heights: slabs of one floor do not differ so.
+    fn tell_heights(&mut self) {
+        let least_mm = self.thicknesses_mm.iter().copied().reduce(f64::min);
+        let most_mm = self.thicknesses_mm.iter().copied().reduce(f64::max);
+        let apart = least_mm
+            .zip(most_mm)
+            .is_some_and(|(least_mm, most_mm)| most_mm > 2.5 * least_mm);
+        if self.or_heights >= OFTEN && apart {
+            let heights = std::mem::take(&mut self.or_heights);
+            self.thicknesses = self.thicknesses.saturating_sub(heights);
+            self.heights += heights;
+            self.heights_mm.append(&mut self.thicknesses_mm);
+        }
     }
 
     /// Two words that nobody knows, of which one stands beside the larger numbers everywhere, are high and low.
@@ -208,6 +231,7 @@ impl Held {
             *self.bare_marks.entry(mark.clone()).or_default() += count;
         }
         self.thicknesses += other.thicknesses;
+        self.or_heights += other.or_heights;
         self.heights += other.heights;
         self.strands += other.strands;
         self.heights_mm.extend(&other.heights_mm);
