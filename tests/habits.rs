@@ -345,3 +345,22 @@ fn marks_out_of_reach_widen_it() {
     // That far off nobody would look.
     assert_eq!(of(2.5), NOTHING);
 }
+
+#[test]
+fn the_letter_h_stands_for_heights_where_its_numbers_are_those_of_heights() {
+    let of = |numbers: [&str; 3]| {
+        let mut plan = Plan::metric();
+        for y in [0.0, 8.0, 16.0] {
+            plan.line("TENDON-BANDED", (0.0, y), (20.0, y));
+            plan.ends(y);
+            plan.text("TENDON-MARK", "5-12.7", (2.0, y + 0.05));
+            for (number, x) in numbers.into_iter().zip([5.0, 10.0, 15.0]) {
+                plan.text("HOOGTE", &format!("h={number}"), (x, y + 0.05));
+            }
+        }
+        plan.proposed()
+    };
+    let heights = ["heights = [\"HOOGTE\"]"];
+    assert_eq!(of(["45", "205", "45"]), heights);
+    assert_eq!(of(["220", "250", "220"]), ["slab_zone = [\"HOOGTE\"]"]);
+}
