@@ -332,6 +332,20 @@ fn thicknesses() {
     assert_eq!(rows, 25);
 }
 
+/// What a note says of all marks, a pattern may say of them.
+#[test]
+fn a_pattern_may_give_strands_that_the_text_does_not() {
+    let job = job_of(
+        "[labels]\nmark_patterns = [{ expression = '^(?<mark>[BD]\\d+)$', strands = 5, strand = \"12.7\" }]",
+    );
+    assert_eq!(mark("B01", &job), "B01: 5 of 12.7");
+    let job = job_of(
+        "[labels]\nmark_patterns = [{ expression = '^(?<mark>[BD]\\d+)( (?<tendons>\\d+)T)?$', strands = 1 }]",
+    );
+    assert_eq!(mark("B01", &job), "B01:");
+    assert_eq!(mark("B01 4T", &job), "B01: 4 x 1");
+}
+
 /// The README's job file is one.
 #[test]
 fn the_patterns_of_the_readme_are_read() {

@@ -177,7 +177,9 @@ pub fn mark_of_line<'p>(line: &str, patterns: &'p [Pattern]) -> Option<(MarkText
             Some(None) => return Some(None),
             said => said.flatten(),
         };
-        let counted = tendons.is_some() || strands.is_some();
+        // A pattern that looks for no number and gives one says it of every text that it reads.
+        let by_pattern = pattern.strands.is_some() && !pattern.has_group("tendons");
+        let counted = tendons.is_some() || strands.is_some() || by_pattern;
         let said = MarkText {
             mark: part("mark"),
             tendons,
