@@ -144,7 +144,9 @@ fn ends(contents: &Contents, job: &Job) -> Option<String> {
     let dead = told(EndKind::Dead, &read.dead_end_blocks, &read.dead_end_shapes);
     let missing = match (live, dead) {
         (true, true) => return None,
-        (true, false) => "nothing at line ends tells dead ends",
+        (true, false) => {
+            "nothing at line ends tells dead ends (where a drawing marks live ends only, write unmarked_is_dead = true below [ends])"
+        }
         (false, true) => "nothing at line ends tells live ends",
         (false, false) => "nothing at line ends tells live and dead ends",
     };
