@@ -80,8 +80,8 @@ pub struct Quantity {
 
 const INCH_MM: f64 = 25.4;
 const FOOT_M: f64 = 0.3048;
-/// A pound-force is 0.45359237 kg at 9.80665 m/s², both exactly (NIST SP 811 B.8).
-const KIP_KN: f64 = 0.453_592_37 * 9.806_65;
+/// Kilonewtons in one kip: a pound-force is 0.45359237 kg at 9.80665 m/s², both exactly (NIST SP 811 B.8).
+pub const KIP_KN: f64 = 0.453_592_37 * 9.806_65;
 
 /// Force of strands.
 pub const FORCE: Quantity = quantity("kN", "kip", KIP_KN, 1);

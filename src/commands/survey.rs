@@ -5,7 +5,7 @@ use std::path::PathBuf;
 use super::job_file::{self, JobFile};
 use super::{Outcome, Refused, files, print, refuse, work};
 use crate::drawing::{Purpose, Wanted};
-use crate::job;
+use crate::job::{self, Job};
 use crate::terminal::Terminal;
 
 mod at_ends;
@@ -79,13 +79,11 @@ fn survey(order: &Order) -> Result<(String, Outcome), Refused> {
     };
     let job = &job_file.resolved.job;
     let source = work::open(&order.plan, job)?;
-    let (drawing, findings) = work::read(
-        &order.plan,
-        &source,
-        &Wanted::everything(),
-        job,
-        Purpose::Survey,
-    )?;
+    let read = |job: &Job| {
+        let everything = Wanted::everything();
+        work::read(&order.plan, &source, &everything, job, Purpose::Survey)
+    };
+    let (drawing, findings) = read(job)?;
     let contents = Contents::of(&drawing, job);
     let name = order.plan.file_name().unwrap_or(order.plan.as_os_str());
     let mut proposed = proposals::proposals(&drawing, &contents, &job_file);
@@ -99,13 +97,7 @@ fn survey(order: &Order) -> Result<(String, Outcome), Refused> {
         let mut by_unit = job_file.clone();
         by_unit.resolved.job.conventions.unit = serde_json::from_value(unit.value.clone()).ok();
         let job = &by_unit.resolved.job;
-        let (drawing, _) = work::read(
-            &order.plan,
-            &source,
-            &Wanted::everything(),
-            job,
-            Purpose::Survey,
-        )?;
+        let (drawing, _) = read(job)?;
         proposed = proposals::proposals(&drawing, &Contents::of(&drawing, job), &by_unit);
         proposed.insert("drawing.unit".to_owned(), unit);
         in_unit = Some(drawing);

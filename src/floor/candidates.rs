@@ -12,7 +12,7 @@ use crate::drawing::Text;
 use crate::geometry::{distance_m, turn_rad};
 
 /// Tendons this near to a label tell what is usual beside it, metres.
-const BESIDE_M: f64 = 3.2;
+pub(super) const BESIDE_M: f64 = 3.2;
 /// Of these, the nearest so many count.
 const BESIDE: usize = 6;
 /// Columns this near belong to the place, metres.

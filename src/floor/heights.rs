@@ -10,7 +10,7 @@ use std::collections::BTreeSet;
 use self::cost::{Known, cost, sides};
 use self::doubts::doubts;
 use self::stakes::HeightStakes;
-pub(super) use self::stakes::{SAME_PLACE_M, STEEP};
+pub(super) use self::stakes::{SAME_PLACE_M, STEEP, SUPPORTS_M};
 use self::ties::{Texts, tied};
 use super::candidates::Lie;
 use super::contradicted::{self, Contradiction};

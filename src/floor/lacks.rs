@@ -2,6 +2,7 @@
 
 use geo::Intersects;
 
+use super::candidates::BESIDE_M;
 use super::columns::{Columns, WALL_M};
 use super::index::Index;
 use super::types::{Point, PointKind, Tendon};
@@ -25,8 +26,6 @@ pub(super) struct Lack {
     pub(super) because: String,
 }
 
-/// Neighbours farther off than this say nothing, metres.
-const BESIDE_M: f64 = 3.2;
 /// A point this near to one that is there is that one, drawn a little elsewhere, metres.
 const APART_M: f64 = 0.8;
 /// Neighbours on either side agree on a point within this, metres.

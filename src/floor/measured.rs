@@ -70,8 +70,8 @@ impl Measures<'_> {
         }
     }
 
-    /// A chair stands on the form and carries the duct: its height is that of the duct's underside. To the underside, the strand lies higher in the duct at a low point than at a high one; between, and at an
-    /// anchor, it is taken midway.
+    /// A chair stands on the form and carries the duct: its height is that of the duct's underside. From there the strand
+    /// lies higher in the duct at a low point than at a high one; between, and at an anchor, it is taken midway.
     fn in_duct_m(&self, datum: Datum, kind: PointKind) -> f64 {
         let job = self.job;
         match (datum, kind) {

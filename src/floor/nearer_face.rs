@@ -1,6 +1,7 @@
 //! Distances to the nearer face: a high point's is from the top, a low point's from the soffit, and a bare number is
 //! what the words beside it leave.
 
+use super::heights::SUPPORTS_M;
 use super::readings::Word;
 use super::rules::{FACE_BY_NEIGHBOURS, FACE_UNKNOWN};
 use super::zone_texts::short;
@@ -15,8 +16,6 @@ pub(super) struct Bare {
     pub(super) word: Option<Word>,
 }
 
-/// Supports may stand nearer to one another than this, metres (common practice: 0.8 to 1.2 m).
-const SUPPORTS_M: f64 = 2.5;
 /// So many are named in a finding, the rest are counted.
 const NAMED: usize = 5;
 

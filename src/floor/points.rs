@@ -1,6 +1,6 @@
 //! Profile points of a tendon from the heights that were settled on it.
 
-use super::heights::Height;
+use super::heights::{Height, SAME_PLACE_M};
 use super::inward::Inside;
 use super::lines::Line;
 use super::measured::{Measured, Measures};
@@ -13,8 +13,6 @@ use crate::finding::{Finding, Level, Wording};
 use crate::job::{FromFace, HeightReading, Soffit};
 use crate::units::{SHORT, Units};
 
-/// A level line and a label nearer than this speak of one place, metres.
-const SAME_PLACE_M: f64 = 0.5;
 /// Heights that differ by less are equal, metres.
 const SAME_M: f64 = 0.0005;
 

@@ -328,7 +328,6 @@ fn number(unit: LengthUnit) -> &'static str {
     }
 }
 
-/// A named pattern; that all of them compile the tests count.
 /// Groups of like tendons; what each pattern leaves open another may give.
 pub(super) fn group_patterns() -> Vec<Pattern> {
     [
@@ -354,6 +353,7 @@ pub(super) fn group_patterns() -> Vec<Pattern> {
     .collect()
 }
 
+/// A named pattern; that all of them compile the tests count.
 fn pattern(name: &str, expression: &str) -> Option<Pattern> {
     let expression = Regex::new(expression).ok()?;
     Some(Pattern {

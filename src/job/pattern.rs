@@ -4,7 +4,7 @@ use regex::{Captures, Regex};
 use serde_json::{Map, Value, json};
 
 use super::{Datum, FromFace};
-use crate::units::LengthUnit;
+use crate::units::{KIP_KN, LengthUnit};
 
 /// A named pattern. What it leaves open, the job's own keys (`height.unit`, `height.from`, ...) decide.
 #[derive(Debug, Clone)]
@@ -65,7 +65,6 @@ pub(super) const FORCE_WORDS: &[&str] = &["kN", "kip", "kN/m", "kip/ft"];
 impl ForceUnit {
     /// Kilonewtons, or kilonewtons per metre, in one of this unit.
     pub fn kilonewtons(self) -> f64 {
-        const KIP_KN: f64 = 4.448_221_615_260_5;
         match self {
             Self::Kn | Self::KnPerM => 1.0,
             Self::Kip => KIP_KN,

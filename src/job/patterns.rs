@@ -35,15 +35,7 @@ impl Reader {
                 DeValue::Table(fields) => {
                     patterns.extend(self.pattern(key, &item.span(), fields));
                 }
-                other => self.mistake(
-                    item.span(),
-                    match other {
-                        DeValue::String(_) => format!("`{}` holds an empty word", key.name),
-                        _ => format!("`{}` cannot hold {}", key.name, kind_word(other)),
-                    },
-                    format!("expected {}", key.expected()),
-                    format!("type for example `{}`", key.example()),
-                ),
+                other => self.no_item(key, other, item.span()),
             }
         }
         Some(patterns)

@@ -236,6 +236,20 @@ impl Reader {
         }
     }
 
+    /// Says that a list of this key cannot hold this.
+    pub(super) fn no_item(&mut self, key: &Key, item: &DeValue<'_>, span: Range<usize>) {
+        let found = match item {
+            DeValue::String(_) => format!("`{}` holds an empty word", key.name),
+            _ => format!("`{}` cannot hold {}", key.name, kind_word(item)),
+        };
+        self.mistake(
+            span,
+            found,
+            format!("expected {}", key.expected()),
+            format!("type for example `{}`", key.example()),
+        );
+    }
+
     /// A list of words that is not empty (unless the default is), each with its place.
     pub(super) fn words(
         &mut self,
@@ -250,15 +264,7 @@ impl Reader {
                 DeValue::String(word) if !word.is_empty() => {
                     words.push((word.to_string(), item.span()));
                 }
-                other => self.mistake(
-                    item.span(),
-                    match other {
-                        DeValue::String(_) => format!("`{}` holds an empty word", key.name),
-                        _ => format!("`{}` cannot hold {}", key.name, kind_word(other)),
-                    },
-                    format!("expected {}", key.expected()),
-                    format!("type for example `{}`", key.example()),
-                ),
+                other => self.no_item(key, other, item.span()),
             }
         }
         if items.iter().next().is_none() && !key.may_be_empty() {

@@ -6,7 +6,7 @@ use crate::floor::settle::Stakes;
 /// Two heights nearer than this are at one place, metres and text heights.
 pub(in crate::floor) const SAME_PLACE_M: f64 = 0.5;
 /// Supports stand nearer to one another than this, metres (common practice: 0.8 to 1.2 m).
-const SUPPORTS_M: f64 = 2.5;
+pub(in crate::floor) const SUPPORTS_M: f64 = 2.5;
 /// Steeper than this no strand runs between two heights, metre per metre.
 pub(in crate::floor) const STEEP: f64 = 0.08;
 
